@@ -1,0 +1,71 @@
+import * as z from 'zod/mini'
+import { id } from '@/lib/model/id'
+
+/** Version of the messages; the server takes this one and the one before (P13). */
+export const PROTOCOL = 1
+export const MAX_OPS = 500
+export const MAX_OP_BYTES = 16_384
+export const MAX_INFLATED_BYTES = 8 * 1024 * 1024
+export const PAGE_ROWS = 500
+
+/** Where a device stands in its shop's change log (P12). `seq` is the shop's dense change number. */
+export const cursor = z.strictObject({ epoch: z.string(), shop: id, scopeVersion: z.int(), seq: z.int().check(z.minimum(0)) })
+export type Cursor = z.infer<typeof cursor>
+
+/**
+ * One POST /api/sync. Body: gzip of this JSON. Headers, all of them signed together with the body:
+ * `x-farbench-shop`, `x-farbench-person`, `x-farbench-device`, `x-farbench-dseq` (`first-last` or `-`),
+ * `x-farbench-signature` = base64url of ECDSA P-256 (r||s) over `${shop}\n${person}\n${device}\n${dseq}\n${base64url sha256(body as sent)}`.
+ */
+export const syncRequest = z.object({
+  protocol: z.int(), schema: z.int(),
+  /** Client clock when sent, for the offset the answer carries. */
+  clientTime: z.string(),
+  /** Kept as they are: each op is parsed on its own so that one bad op costs only itself. */
+  ops: z.array(z.unknown()).check(z.maxLength(MAX_OPS)),
+  cursor: z.nullable(cursor),
+  /** False when the device only pushes (a worker without a session). */
+  pull: z.boolean(),
+})
+export type SyncRequest = z.infer<typeof syncRequest>
+
+/** Why an op was refused for good; the phone shows the sentence for the code and keeps the op (P16). */
+export const REJECT_CODES = ['invalid', 'too_big', 'unknown_kind', 'id_reuse', 'no_parent', 'forbidden', 'stale_status', 'not_yours'] as const
+
+/** Only what is not simply accepted is itemised (P5). */
+export const opResult = z.discriminatedUnion('result', [
+  z.object({ opId: z.string(), result: z.literal('duplicate') }),
+  z.object({ opId: z.string(), result: z.literal('merged'), loser: z.unknown() }),
+  z.object({ opId: z.string(), result: z.literal('rejected'), code: z.enum(REJECT_CODES), field: z.nullable(z.string()), detail: z.nullable(z.string()) }),
+  /** Waits for a parent that has not landed. */
+  z.object({ opId: z.string(), result: z.literal('blocked'), on: z.nullable(z.string()) }),
+  z.object({ opId: z.string(), result: z.literal('retry') }),
+])
+export type OpResult = z.infer<typeof opResult>
+
+/** Entities that travel down. `book` only says that a new code book version is published. */
+export const PULL_ENTITIES = ['shop', 'person', 'machineModel', 'machine', 'meterProfile', 'bag', 'job', 'logEntry', 'partRequest', 'photo', 'book'] as const
+export type PullEntity = (typeof PULL_ENTITIES)[number]
+
+/** One row of a pull, in change order. `evict`: it left this person's scope; `deleted`: a tombstone. */
+export const pullRow = z.object({
+  seq: z.int(), entity: z.string(), id: z.string(), jobId: z.nullable(z.string()),
+  state: z.enum(['present', 'deleted', 'evict']), row: z.unknown(),
+})
+export type PullRow = z.infer<typeof pullRow>
+
+export const pullAnswer = z.discriminatedUnion('kind', [
+  z.object({ kind: z.literal('page'), rows: z.array(pullRow), cursor, more: z.boolean() }),
+  /** The cursor is of another epoch, shop or scope, or too old: drop pulled rows, keep the outbox, start at seq 0. */
+  z.object({ kind: z.literal('reset'), cursor }),
+  z.object({ kind: z.literal('signIn') }),
+  z.object({ kind: z.literal('notAsked') }),
+])
+export type PullAnswer = z.infer<typeof pullAnswer>
+
+export const syncResponse = z.object({
+  protocol: z.int(), serverTime: z.string(),
+  /** Highest op accepted or refused in this request by device sequence; results list the exceptions. */
+  taken: z.array(z.string()), results: z.array(opResult), pull: pullAnswer,
+})
+export type SyncResponse = z.infer<typeof syncResponse>
