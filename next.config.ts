@@ -1,0 +1,29 @@
+import type { NextConfig } from 'next'
+
+const config: NextConfig = {
+  poweredByHeader: false,
+  reactStrictMode: true,
+  /** Every field screen is the one static document /field; the service worker maps the same way offline. */
+  rewrites: async () => [{ source: '/field/:path+', destination: '/field' }],
+  headers: async () => [
+    {
+      source: '/sw.js',
+      headers: [
+        { key: 'cache-control', value: 'no-cache, no-store, must-revalidate' },
+        { key: 'content-type', value: 'application/javascript; charset=utf-8' },
+      ],
+    },
+    {
+      source: '/:path*',
+      headers: [
+        { key: 'x-content-type-options', value: 'nosniff' },
+        { key: 'referrer-policy', value: 'same-origin' },
+        { key: 'cross-origin-opener-policy', value: 'same-origin' },
+        { key: 'permissions-policy', value: 'geolocation=(self), camera=(self), microphone=(self)' },
+      ],
+    },
+  ],
+  serverExternalPackages: ['pg', 'graphile-worker', 'nodemailer'],
+}
+
+export default config

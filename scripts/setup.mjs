@@ -1,0 +1,158 @@
+// Brings a bare clone to a state that can run. Node built-ins only, as it runs before node_modules
+// exists. Every step is skipped when it is already done.
+import { spawn, spawnSync } from 'node:child_process'
+import { createHash, randomBytes } from 'node:crypto'
+import { existsSync, mkdirSync, readdirSync, readFileSync, statSync, writeFileSync } from 'node:fs'
+import { createServer } from 'node:net'
+import { dirname, join, resolve } from 'node:path'
+import { fileURLToPath } from 'node:url'
+
+export const root = resolve(dirname(fileURLToPath(import.meta.url)), '..')
+process.chdir(root)
+const began = Date.now()
+
+/** Prints one line with the seconds since the start. */
+export const say = (words) =>
+  console.log(`[${((Date.now() - began) / 1000).toFixed(1).padStart(6)} s] ${words}`)
+
+/** Runs a command to its end; throws when it fails. */
+export function run(command, args, options = {}) {
+  const done = spawnSync(command, args, { stdio: 'inherit', cwd: root, ...options })
+  if (done.status !== 0)
+    throw new Error(`${command} ${args.join(' ')} ended with ${done.status ?? done.signal}`)
+}
+
+const markOf = (name) => join(root, '.data', 'marks', name)
+const isDone = (name, key) => existsSync(markOf(name)) && readFileSync(markOf(name), 'utf8') === key
+function setDone(name, key) {
+  mkdirSync(dirname(markOf(name)), { recursive: true })
+  writeFileSync(markOf(name), key)
+}
+
+/** Installs Debian packages; without root it says which are missing. */
+export function installPackages(...names) {
+  if (process.getuid?.() !== 0) throw new Error(`Please install: ${names.join(' ')}`)
+  say(`installing ${names.join(', ')}`)
+  const options = {
+    env: { ...process.env, DEBIAN_FRONTEND: 'noninteractive' },
+    stdio: ['ignore', 'ignore', 'inherit'],
+  }
+  run('apt-get', ['update', '-qq'], options)
+  run('apt-get', ['install', '-y', '-qq', '--no-install-recommends', ...names], options)
+}
+
+/** The npm packages of package-lock.json, build tools included. */
+export function modules() {
+  const key = createHash('sha256').update(readFileSync('package-lock.json')).digest('hex')
+  if (existsSync('node_modules/next/package.json') && isDone('modules', key)) return
+  say('npm ci')
+  run('npm', ['ci', '--include=dev', '--no-audit', '--no-fund'], {
+    env: { ...process.env, NODE_ENV: 'development' },
+  })
+  setDone('modules', key)
+}
+
+/** Random secrets and the port's address in .env.local; what is set in the environment wins. */
+export function settings() {
+  const text = existsSync('.env.local') ? readFileSync('.env.local', 'utf8') : ''
+  const known = new Map(
+    text.split('\n').flatMap((line) => {
+      const match = /^([A-Z_]+)=(.*)$/.exec(line)
+      return match ? [[match[1], match[2]]] : []
+    }),
+  )
+  const wanted = {
+    NEXTAUTH_SECRET: () => randomBytes(32).toString('base64url'),
+    DEMO_PASSWORD: () => `trail-${randomBytes(5).toString('hex')}`,
+  }
+  let added = ''
+  for (const [name, make] of Object.entries(wanted)) {
+    if (known.has(name)) continue
+    known.set(name, make())
+    added += `${name}=${known.get(name)}\n`
+  }
+  if (added) {
+    const gap = text && !text.endsWith('\n') ? '\n' : ''
+    writeFileSync('.env.local', `${text}${gap}${added}`, { mode: 0o600 })
+  }
+  for (const [name, value] of known) process.env[name] ??= value
+  process.env.PORT ??= '3111'
+  process.env.NEXTAUTH_URL ??= `http://127.0.0.1:${process.env.PORT}`
+  process.env.NEXT_TELEMETRY_DISABLED = '1'
+}
+
+/** Starts the project's own PostgreSQL and sets the addresses; answers whether this call started it. */
+export async function database(databaseName) {
+  const { startDatabase } = await import('./db.mjs')
+  const db = await startDatabase({ databaseName })
+  process.env.DATABASE_URL = db.appUrl
+  process.env.DATABASE_OWNER_URL = db.ownerUrl
+  process.env.DATABASE_ADMIN_URL = db.adminUrl
+  if (db.workUrl) process.env.DATABASE_WORK_URL = db.workUrl
+  say(`PostgreSQL on ${new URL(db.appUrl).host}, database ${databaseName}`)
+  return db
+}
+
+/** Tables to the newest migration and the demo shops, both idempotent. */
+export function fillDatabase() {
+  run('node_modules/.bin/tsx', ['scripts/migrate.ts'])
+  run('node_modules/.bin/tsx', ['scripts/seed.ts'])
+}
+
+const SOURCES = [
+  'app', 'components', 'lib', 'db', 'public', 'next.config.ts', 'tailwind.config.ts',
+  'postcss.config.mjs', 'proxy.ts', 'package-lock.json', 'tsconfig.json',
+  'scripts/build.mjs', 'scripts/build-csp.mjs', 'scripts/build-sw.mjs',
+]
+
+function* filesOf(path) {
+  if (!existsSync(path)) return
+  if (!statSync(path).isDirectory()) yield path
+  else
+    for (const name of readdirSync(path).sort())
+      if (name !== 'sw.js') yield* filesOf(join(path, name))
+}
+
+function sourceKey() {
+  const hash = createHash('sha256')
+  for (const source of SOURCES)
+    for (const file of filesOf(source)) hash.update(file).update('\0').update(readFileSync(file))
+  return hash.digest('hex')
+}
+
+/** The production build, made again only when a source file differs. */
+export function build() {
+  const key = sourceKey()
+  if (existsSync('.next/BUILD_ID') && existsSync('public/sw.js') && isDone('build', key)) {
+    say('build is current')
+    return
+  }
+  say('building')
+  run(process.execPath, ['scripts/build.mjs'])
+  setDone('build', key)
+}
+
+/** Answers whether nothing listens on the loopback port. */
+export const isFree = (port) =>
+  new Promise((answer) => {
+    const probe = createServer()
+    probe.once('error', () => answer(false))
+    probe.listen(port, '127.0.0.1', () => probe.close(() => answer(true)))
+  })
+
+/** First free loopback port from `port` upward. */
+export async function freePort(port) {
+  for (let tried = port; tried < port + 100; tried++) if (await isFree(tried)) return tried
+  throw new Error(`No free port between ${port} and ${port + 100}`)
+}
+
+/** Starts a long-running child; its exit is reported through `onExit`. */
+export function service(command, args, onExit, env = {}) {
+  const child = spawn(command, args, {
+    cwd: root,
+    stdio: ['ignore', 'inherit', 'inherit'],
+    env: { ...process.env, ...env },
+  })
+  child.on('exit', (code, signal) => onExit(code, signal))
+  return child
+}
