@@ -1,0 +1,79 @@
+import * as z from 'zod/mini'
+import { machineModel } from './code-book'
+import { id } from './id'
+import { job } from './job'
+import { logRow } from './log-entry'
+import { machine } from './machine'
+import { partLine, partLineState, partRequest, partRequestRow } from './part-request'
+import { person } from './person'
+import { photoRow } from './photo'
+import { shop } from './shop'
+
+/**
+ * What the desk reads: three answers, each whole as of change number `seq` of the shop. Unknown
+ * fields are ignored, so that an open desk survives a newer server.
+ */
+const seq = z.int().check(z.minimum(0))
+
+/** A job on the board: the job itself and what the shop has heard about it. */
+export const boardJob = z.object({
+  job,
+  /** The machine in words: maker, model and unit number, as far as known. */
+  machineWords: z.string(),
+  entries: z.int(),
+  /** Server times: when the last entry came in, and when any device of its people last reached us. */
+  lastEntryAt: z.nullable(z.string()),
+  /** Photos that entries name and whose bytes are not here. */
+  photosMissing: z.int(),
+  partsOpen: z.int(),
+})
+export type BoardJob = z.infer<typeof boardJob>
+
+export const deskBoard = z.object({
+  seq,
+  whose: z.enum(['all', 'own']),
+  open: z.array(boardJob),
+  /** Closed within the last 24 hours of the server's clock, newest first. */
+  closed: z.array(boardJob),
+})
+export type DeskBoard = z.infer<typeof deskBoard>
+
+/** One job with everything the shop holds of it. */
+export const deskJob = z.object({
+  seq,
+  shop,
+  job,
+  machineWords: z.string(),
+  machine: z.nullable(machine),
+  model: z.nullable(machineModel),
+  entries: z.array(logRow),
+  photos: z.array(photoRow),
+  parts: z.array(partRequestRow),
+  /** Everyone of the shop, for names and for assigning. */
+  people: z.array(person),
+})
+export type DeskJob = z.infer<typeof deskJob>
+
+/** One line of a part request as a row of the parts desk's table. */
+export const deskPartLine = z.object({
+  line: z.object({ ...partLine.shape, state: partLineState }),
+  request: z.pick(z.object(partRequest.shape), {
+    id: true,
+    jobId: true,
+    askedAt: true,
+    urgency: true,
+    note: true,
+    advice: true,
+  }),
+  askedBy: z.nullable(z.string()),
+  jobNumber: z.nullable(z.string()),
+  complaint: z.string(),
+  machineWords: z.string(),
+})
+export type DeskPartLine = z.infer<typeof deskPartLine>
+
+export const deskParts = z.object({ seq, currency: z.string(), lines: z.array(deskPartLine) })
+export type DeskParts = z.infer<typeof deskParts>
+
+/** Ids the desk names in a request. */
+export const deskJobRef = z.strictObject({ jobId: id })
