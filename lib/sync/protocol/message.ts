@@ -9,7 +9,12 @@ export const MAX_INFLATED_BYTES = 8 * 1024 * 1024
 export const PAGE_ROWS = 500
 
 /** Where a device stands in its shop's change log (P12). `seq` is the shop's dense change number. */
-export const cursor = z.strictObject({ epoch: z.string(), shop: id, scopeVersion: z.int(), seq: z.int().check(z.minimum(0)) })
+export const cursor = z.strictObject({
+  epoch: z.string(),
+  shop: id,
+  scopeVersion: z.int(),
+  seq: z.int().check(z.minimum(0)),
+})
 export type Cursor = z.infer<typeof cursor>
 
 /**
@@ -18,7 +23,8 @@ export type Cursor = z.infer<typeof cursor>
  * `x-farbench-signature` = base64url of ECDSA P-256 (r||s) over `${shop}\n${person}\n${device}\n${dseq}\n${base64url sha256(body as sent)}`.
  */
 export const syncRequest = z.object({
-  protocol: z.int(), schema: z.int(),
+  protocol: z.int(),
+  schema: z.int(),
   /** Client clock when sent, for the offset the answer carries. */
   clientTime: z.string(),
   /** Kept as they are: each op is parsed on its own so that one bad op costs only itself. */
@@ -30,13 +36,28 @@ export const syncRequest = z.object({
 export type SyncRequest = z.infer<typeof syncRequest>
 
 /** Why an op was refused for good; the phone shows the sentence for the code and keeps the op (P16). */
-export const REJECT_CODES = ['invalid', 'too_big', 'unknown_kind', 'id_reuse', 'no_parent', 'forbidden', 'stale_status', 'not_yours'] as const
+export const REJECT_CODES = [
+  'invalid',
+  'too_big',
+  'unknown_kind',
+  'id_reuse',
+  'no_parent',
+  'forbidden',
+  'stale_status',
+  'not_yours',
+] as const
 
 /** Only what is not simply accepted is itemised (P5). */
 export const opResult = z.discriminatedUnion('result', [
   z.object({ opId: z.string(), result: z.literal('duplicate') }),
   z.object({ opId: z.string(), result: z.literal('merged'), loser: z.unknown() }),
-  z.object({ opId: z.string(), result: z.literal('rejected'), code: z.enum(REJECT_CODES), field: z.nullable(z.string()), detail: z.nullable(z.string()) }),
+  z.object({
+    opId: z.string(),
+    result: z.literal('rejected'),
+    code: z.enum(REJECT_CODES),
+    field: z.nullable(z.string()),
+    detail: z.nullable(z.string()),
+  }),
   /** Waits for a parent that has not landed. */
   z.object({ opId: z.string(), result: z.literal('blocked'), on: z.nullable(z.string()) }),
   z.object({ opId: z.string(), result: z.literal('retry') }),
@@ -44,13 +65,29 @@ export const opResult = z.discriminatedUnion('result', [
 export type OpResult = z.infer<typeof opResult>
 
 /** Entities that travel down. `book` only says that a new code book version is published. */
-export const PULL_ENTITIES = ['shop', 'person', 'machineModel', 'machine', 'meterProfile', 'bag', 'job', 'logEntry', 'partRequest', 'photo', 'book'] as const
+export const PULL_ENTITIES = [
+  'shop',
+  'person',
+  'machineModel',
+  'machine',
+  'meterProfile',
+  'bag',
+  'job',
+  'logEntry',
+  'partRequest',
+  'photo',
+  'book',
+] as const
 export type PullEntity = (typeof PULL_ENTITIES)[number]
 
 /** One row of a pull, in change order. `evict`: it left this person's scope; `deleted`: a tombstone. */
 export const pullRow = z.object({
-  seq: z.int(), entity: z.string(), id: z.string(), jobId: z.nullable(z.string()),
-  state: z.enum(['present', 'deleted', 'evict']), row: z.unknown(),
+  seq: z.int(),
+  entity: z.string(),
+  id: z.string(),
+  jobId: z.nullable(z.string()),
+  state: z.enum(['present', 'deleted', 'evict']),
+  row: z.unknown(),
 })
 export type PullRow = z.infer<typeof pullRow>
 
@@ -64,8 +101,11 @@ export const pullAnswer = z.discriminatedUnion('kind', [
 export type PullAnswer = z.infer<typeof pullAnswer>
 
 export const syncResponse = z.object({
-  protocol: z.int(), serverTime: z.string(),
+  protocol: z.int(),
+  serverTime: z.string(),
   /** Highest op accepted or refused in this request by device sequence; results list the exceptions. */
-  taken: z.array(z.string()), results: z.array(opResult), pull: pullAnswer,
+  taken: z.array(z.string()),
+  results: z.array(opResult),
+  pull: pullAnswer,
 })
 export type SyncResponse = z.infer<typeof syncResponse>

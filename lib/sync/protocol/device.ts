@@ -1,0 +1,50 @@
+import * as z from 'zod/mini'
+import { id } from '@/lib/model/id'
+import { actor } from '@/lib/model/person'
+
+/**
+ * POST /api/devices: tells the shop the public half of a phone's key. Needs a session; sent as often as
+ * the phone likes: the same key of the same person answers the same device (P18).
+ */
+export const enrolRequest = z.object({
+  /** The id the phone made for itself (UUIDv7); the answer's id is the one that counts. */
+  deviceId: id,
+  publicKey: z.object({
+    kty: z.literal('EC'),
+    crv: z.literal('P-256'),
+    x: z.string(),
+    y: z.string(),
+  }),
+  /** What kind of phone it calls itself, for the list of phones at the desk. */
+  words: z.string().check(z.maxLength(120)),
+})
+export type EnrolRequest = z.infer<typeof enrolRequest>
+
+export const enrolAnswer = z.object({ deviceId: id, serverTime: z.string() })
+export type EnrolAnswer = z.infer<typeof enrolAnswer>
+
+/** GET /api/me: who the session says is at work; 401 without a session. */
+export const meAnswer = actor
+
+/** Names of the headers that carry and sign a push or a photo (message.ts). */
+export const HEADERS = {
+  shop: 'x-farbench-shop',
+  person: 'x-farbench-person',
+  device: 'x-farbench-device',
+  dseq: 'x-farbench-dseq',
+  signature: 'x-farbench-signature',
+} as const
+
+/**
+ * The text a device signs (ECDSA P-256, SHA-256, raw r||s, base64url): who, which device, which op numbers
+ * (`first-last`, or `-` for a pull or a photo), and the base64url SHA-256 of the body exactly as sent.
+ */
+export function signedText(of: {
+  shop: string
+  person: string
+  device: string
+  dseq: string
+  bodyHash: string
+}): string {
+  return [of.shop, of.person, of.device, of.dseq, of.bodyHash].join('\n')
+}
