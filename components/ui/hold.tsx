@@ -1,0 +1,92 @@
+'use client'
+
+import { useEffect, useRef, useState } from 'react'
+import { classes } from './class-names'
+import { Key } from './key'
+
+/** How long a finger must stay, in milliseconds. */
+const HOLD_MS = 800
+
+type Props = {
+  /** What happens, e.g. "Record codes cleared". */
+  label: string
+  /** Asked of who presses without holding (keyboard, switch): two plain keys follow. */
+  question: string
+  confirmLabel: string
+  onConfirm: () => void
+  disabled?: boolean
+}
+
+/** Hold 800 ms to confirm, or press once and answer with one of two keys. */
+export function Hold({ label, question, confirmLabel, onConfirm, disabled = false }: Props) {
+  const [held, setHeld] = useState(false)
+  const [asking, setAsking] = useState(false)
+  const timer = useRef<ReturnType<typeof setTimeout> | null>(null)
+  const done = useRef<boolean>(false)
+  const letGo = () => {
+    if (timer.current !== null) {
+      clearTimeout(timer.current)
+      timer.current = null
+    }
+    setHeld(false)
+  }
+  useEffect(() => () => (timer.current === null ? undefined : clearTimeout(timer.current)), [])
+  const press = () => {
+    if (disabled) {
+      return
+    }
+    done.current = false
+    setHeld(true)
+    timer.current = setTimeout(() => {
+      done.current = true
+      letGo()
+      setAsking(false)
+      onConfirm()
+    }, HOLD_MS)
+  }
+  return (
+    <div className="grid gap-2">
+      <Key
+        disabled={disabled}
+        className={classes('relative w-full select-none', held && 'hold-on')}
+        onPointerDown={press}
+        onPointerUp={letGo}
+        onPointerLeave={letGo}
+        onPointerCancel={letGo}
+        onContextMenu={(e) => e.preventDefault()}
+        onClick={() => {
+          if (!done.current) {
+            setAsking(true)
+          }
+        }}
+      >
+        {label}
+        <span className="hold-fill" aria-hidden="true" />
+      </Key>
+      {asking ? (
+        <fieldset className="grid gap-2 border-2 border-ink p-3">
+          <legend className="px-1 font-bold">{question}</legend>
+          <div className="grid grid-cols-2 gap-2">
+            <Key small onClick={() => setAsking(false)}>
+              No
+            </Key>
+            <Key
+              small
+              kind="plate"
+              onClick={() => {
+                setAsking(false)
+                onConfirm()
+              }}
+            >
+              {confirmLabel}
+            </Key>
+          </div>
+        </fieldset>
+      ) : (
+        <p className="text-second text-ink2">
+          Hold the key for a second, or press once and answer.
+        </p>
+      )}
+    </div>
+  )
+}
