@@ -1,0 +1,58 @@
+'use client'
+import { useMemo } from 'react'
+import type { Bag } from '@/lib/model/bag'
+import type { MachineModel } from '@/lib/model/code-book'
+import type { Id } from '@/lib/model/id'
+import type { Job } from '@/lib/model/job'
+import type { Machine } from '@/lib/model/machine'
+import type { MeterProfile } from '@/lib/model/meter-profile'
+import type { PartRequestRow } from '@/lib/model/part-request'
+import type { Person } from '@/lib/model/person'
+import type { Shop } from '@/lib/model/shop'
+import type { RowOf, StoredEntity } from '@/lib/sync/client/entities'
+import { usePhone } from './store-provider'
+import { still, useWatch } from './use-watch'
+
+const OPENING = still(undefined)
+
+/** Rows of one entity, of one job when it is named; undefined while opening. */
+function useRows<E extends StoredEntity>(entity: E, jobId?: Id): RowOf<E>[] | undefined {
+  const phone = usePhone()
+  return useWatch(phone === null ? OPENING : phone.rows(entity, jobId))
+}
+
+/** The shop; undefined while opening and before it was fetched once. */
+export const useShop = (): Shop | undefined => useRows('shop')?.[0]
+
+/** Every job this phone holds, newest first. */
+export function useJobs(): Job[] | undefined {
+  const rows = useRows('job')
+  return useMemo(() => rows?.toSorted((a, b) => b.openedAt.localeCompare(a.openedAt)), [rows])
+}
+
+/** One job; null when this phone does not hold it. */
+export function useJob(id: Id): Job | null | undefined {
+  const rows = useRows('job')
+  return useMemo(() => rows && (rows.find((row) => row.id === id) ?? null), [rows, id])
+}
+
+export const useMachines = (): Machine[] | undefined => useRows('machine')
+
+export const useModels = (): MachineModel[] | undefined => useRows('machineModel')
+
+export const useMeters = (): MeterProfile[] | undefined => useRows('meterProfile')
+
+export const usePeople = (): Person[] | undefined => useRows('person')
+
+/** The bag of the person at work; null when the shop has none for them. */
+export function useBag(): Bag | null | undefined {
+  const phone = usePhone()
+  const rows = useRows('bag')
+  return rows && (rows.find((row) => row.personId === phone?.actor.personId) ?? null)
+}
+
+/** Part requests of a job, oldest first. */
+export function usePartRequests(jobId: Id): PartRequestRow[] | undefined {
+  const rows = useRows('partRequest', jobId)
+  return useMemo(() => rows?.toSorted((a, b) => a.askedAt.localeCompare(b.askedAt)), [rows])
+}
