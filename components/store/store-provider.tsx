@@ -1,10 +1,9 @@
 'use client'
 import { createContext, type ReactNode, use, useEffect, useState } from 'react'
 import { AppError } from '@/lib/model/result'
-import type { FieldPorts } from '@/lib/ports/field-ports'
+import { browserPorts, type FieldPorts } from '@/lib/ports/field-ports'
 import { FieldStore } from '@/lib/sync/client/field-store'
 import type { Phone } from '@/lib/sync/client/phone'
-import { browserPorts } from './browser-ports'
 import { useWatch } from './use-watch'
 
 const StoreContext = createContext<{ store: FieldStore; ports: FieldPorts } | null>(null)

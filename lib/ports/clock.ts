@@ -4,6 +4,9 @@ export type Clock = { now(): number }
 /** The machine's own clock. */
 export const systemClock: Clock = { now: () => Date.now() }
 
+/** The machine's IANA time zone, e.g. `Etc/GMT+6`. */
+export const systemZone = (): string => new Intl.DateTimeFormat().resolvedOptions().timeZone
+
 /** Runs something later; the answer calls it off. */
 export type Timer = { after(delayMs: number, run: () => void): () => void }
 
