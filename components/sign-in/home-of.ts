@@ -1,0 +1,16 @@
+import type { Role } from '@/lib/model/role'
+
+const FIELD_ONLY: readonly Role[] = ['mechanic', 'guide']
+
+/** Where a person's work is: the field for people who only work there, else the desk. */
+export const homeOf = (roles: readonly Role[]): '/field' | '/desk' =>
+  roles.every((role) => FIELD_ONLY.includes(role)) ? '/field' : '/desk'
+
+/**
+ * The page asked for before signing in, when it is one of ours; else null. Only paths under the two
+ * places of work count, so that a link cannot send a signed-in person elsewhere.
+ */
+export function pathAskedFor(search: string): string | null {
+  const to = new URLSearchParams(search).get('to')
+  return to && /^\/(desk|field)(\/[A-Za-z0-9-]+)*$/.test(to) ? to : null
+}
