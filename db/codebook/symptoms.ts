@@ -1,0 +1,44 @@
+import type { SymptomItem } from '@/lib/model/code-book'
+import { OWN_WORDS } from './sources'
+
+/** Complaints the book holds suspects for. `twoWrongOf100` is m of rule R5: practice where nobody knows. */
+export const SYMPTOMS: SymptomItem[] = [
+  {
+    kind: 'symptom',
+    id: 'startsThenDies',
+    name: 'Starts, then dies',
+    gate: {},
+    riderWords: [
+      'starts then dies',
+      'starts and stops',
+      'starts and dies right away',
+      'fires up and cuts out',
+      'runs a second and quits',
+      'runs two seconds and stops',
+      'will not stay running',
+      'will not keep running',
+      'cuts out',
+      'cut out and now only runs for a moment',
+      'stalls straight after starting',
+      'stalls',
+      'conks out',
+      'dies',
+      'keeps dying',
+      'catches and dies',
+      'dies when I let go of the starter',
+    ],
+    conditions: [
+      { id: 'afterSeconds', name: 'After one to three seconds' },
+      { id: 'afterMinutes', name: 'After some minutes' },
+      { id: 'whenCold', name: 'When cold' },
+      { id: 'whenHot', name: 'When hot' },
+      { id: 'whenWet', name: 'When wet' },
+      { id: 'whenLeaning', name: 'When leaning or on a slope' },
+      { id: 'always', name: 'Every time' },
+      { id: 'nowAndThen', name: 'Now and then' },
+      { id: 'lampOn', name: 'Engine lamp on' },
+    ],
+    twoWrongOf100: 5,
+    source: `${OWN_WORDS}; two things wrong in 5 of 100 where nobody knows (common practice, no source)`,
+  },
+]
