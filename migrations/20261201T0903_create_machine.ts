@@ -1,7 +1,21 @@
 import { type Kysely, sql } from 'kysely'
 import { demandChange, oneOf, protect } from './support/protect'
 
-const KINDS = ['feature', 'symptom', 'fault', 'check', 'swap', 'spn', 'pcode', 'failure', 'setup', 'part', 'tool', 'system', 'circuit']
+const KINDS = [
+  'feature',
+  'symptom',
+  'fault',
+  'check',
+  'swap',
+  'spn',
+  'pcode',
+  'failure',
+  'setup',
+  'part',
+  'tool',
+  'system',
+  'circuit',
+]
 
 /** Machines with their models, the meters and bags, bookings, and the code book. */
 export async function up(db: Kysely<unknown>): Promise<void> {

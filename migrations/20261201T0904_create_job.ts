@@ -1,11 +1,33 @@
 import { type Kysely, sql } from 'kysely'
 import { demandChange, oneOf, protect } from './support/protect'
 
-const JOB_STATES = ['called', 'open', 'assigned', 'underWay', 'waitingParts', 'waitingApproval', 'waitingRetrieval', 'closed']
+const JOB_STATES = [
+  'called',
+  'open',
+  'assigned',
+  'underWay',
+  'waitingParts',
+  'waitingApproval',
+  'waitingRetrieval',
+  'closed',
+]
 const PEOPLE_STATES = ['withMachine', 'onTheWay', 'beingFetched', 'safe']
 const MACHINE_STATES = ['stranded', 'runs', 'limping', 'onTow', 'leftBehind', 'atShop']
 const WAYS_OUT = ['repairHere', 'limpOut', 'tow', 'returnLater']
-const LINE_STATES = ['asked', 'identified', 'quoted', 'ordered', 'promised', 'received', 'allocated', 'dispatched', 'fitted', 'returned', 'credited', 'cancelled']
+const LINE_STATES = [
+  'asked',
+  'identified',
+  'quoted',
+  'ordered',
+  'promised',
+  'received',
+  'allocated',
+  'dispatched',
+  'fitted',
+  'returned',
+  'credited',
+  'cancelled',
+]
 
 /** A job with people state and machine state apart (R2, R13), and what hangs on it. */
 export async function up(db: Kysely<unknown>): Promise<void> {

@@ -1,7 +1,23 @@
 import { type Kysely, sql } from 'kysely'
 import { demandChange, oneOf, protect } from './support/protect'
 
-const LOG_KINDS = ['symptom', 'code', 'codesUnreadable', 'codesCleared', 'check', 'couldNot', 'reading', 'swap', 'fix', 'proofRun', 'photo', 'note', 'people', 'wayOut', 'correction']
+const LOG_KINDS = [
+  'symptom',
+  'code',
+  'codesUnreadable',
+  'codesCleared',
+  'check',
+  'couldNot',
+  'reading',
+  'swap',
+  'fix',
+  'proofRun',
+  'photo',
+  'note',
+  'people',
+  'wayOut',
+  'correction',
+]
 
 /**
  * The job log and the audit trail: insert only for the app role, each chained in server order by

@@ -7,8 +7,16 @@
 import { spawnSync } from 'node:child_process'
 import { createHash, randomBytes } from 'node:crypto'
 import {
-  chmodSync, chownSync, existsSync, mkdirSync, readdirSync, readFileSync, readlinkSync, rmSync,
-  statSync, writeFileSync,
+  chmodSync,
+  chownSync,
+  existsSync,
+  mkdirSync,
+  readdirSync,
+  readFileSync,
+  readlinkSync,
+  rmSync,
+  statSync,
+  writeFileSync,
 } from 'node:fs'
 import { createServer } from 'node:net'
 import { dirname, join, resolve } from 'node:path'
@@ -93,9 +101,10 @@ function findServer() {
     : []
   const newest = versions.sort((a, b) => Number(b) - Number(a))
   // Data made by one major version is only read by the same one.
-  const made = dataDirFound && existsSync(join(dataDirFound, 'PG_VERSION'))
-    ? readFileSync(join(dataDirFound, 'PG_VERSION'), 'utf8').trim()
-    : null
+  const made =
+    dataDirFound && existsSync(join(dataDirFound, 'PG_VERSION'))
+      ? readFileSync(join(dataDirFound, 'PG_VERSION'), 'utf8').trim()
+      : null
   const version = made && newest.includes(made) ? made : newest[0]
   if (version) return join(base, version, 'bin')
   if (!isRoot) throw new Error('PostgreSQL server not found: install the package "postgresql"')
@@ -242,8 +251,11 @@ async function startServer(bin, passwords) {
     while (!process.env.PGPORT && !(await isFree(port))) port++
     // No Unix socket: its path may be at most 107 bytes, which a deep checkout exceeds.
     const settings = [
-      'listen_addresses=127.0.0.1', "unix_socket_directories=''", 'shared_buffers=64MB',
-      'max_connections=120', 'timezone=UTC',
+      'listen_addresses=127.0.0.1',
+      "unix_socket_directories=''",
+      'shared_buffers=64MB',
+      'max_connections=120',
+      'timezone=UTC',
     ].map((setting) => `-c ${setting}`)
     const args = ['-w', '-t', '60', '-l', log, '-o', `${settings.join(' ')} -p ${port}`, 'start']
     try {
@@ -296,7 +308,10 @@ end $$;
 alter role ${role} login nosuperuser nocreatedb nocreaterole noreplication nobypassrls
   password '${password}';`
   must(
-    psql(passwords, 'postgres', `
+    psql(
+      passwords,
+      'postgres',
+      `
 set client_min_messages = warning;
 select pg_advisory_lock(7244301);
 ${login('farbench_owner', passwords.PG_OWNER_PASSWORD)}
@@ -314,7 +329,8 @@ select format('create database %I owner farbench_owner', '${databaseName}')
   where not exists (select from pg_database where datname = '${databaseName}') \\gexec
 revoke all on database ${databaseName} from public;
 grant connect on database ${databaseName} to farbench_app, farbench_work;
-`),
+`,
+    ),
     'roles',
   )
 }

@@ -23,7 +23,8 @@ export async function migrateDatabase({ ownerUrl, workUrl }: MigrateAddresses): 
     })
     const { error, results } = await migrator.migrateToLatest()
     if (error) {
-      const failed = results?.find((result) => result.status === 'Error')?.migrationName ?? 'before any'
+      const failed =
+        results?.find((result) => result.status === 'Error')?.migrationName ?? 'before any'
       throw new Error(`Migration ${failed} failed`, { cause: error })
     }
     await migrateQueue(pool, workUrl)
@@ -35,10 +36,14 @@ export async function migrateDatabase({ ownerUrl, workUrl }: MigrateAddresses): 
 
 /** Migration files only; each exports `up`. */
 async function readMigrations(): Promise<Record<string, Migration>> {
-  const files = (await readdir(folder)).filter((name) => /^\d{8}T\d{4}_[a-z_]+\.ts$/.test(name)).sort()
+  const files = (await readdir(folder))
+    .filter((name) => /^\d{8}T\d{4}_[a-z_]+\.ts$/.test(name))
+    .sort()
   const loaded = await Promise.all(
     files.map(async (file) => {
-      const module: Migration = await import(/* @vite-ignore */ pathToFileURL(join(folder, file)).href)
+      const module: Migration = await import(
+        /* @vite-ignore */ pathToFileURL(join(folder, file)).href
+      )
       return [file.slice(0, -3), module] as const
     }),
   )

@@ -1,0 +1,82 @@
+// One pool per process, as role farbench_app. Every statement about a shop runs inside asShop, which
+// sets app.shop_id for that transaction alone: a forgotten asShop sees nothing, because row-level
+// security compares with it. It costs two round trips (bones.md 5), and queries still name the shop.
+import { CamelCasePlugin, Kysely, PostgresDialect, sql, type Transaction } from 'kysely'
+import pg from 'pg'
+import { env } from '@/lib/env'
+import type { Id } from '@/lib/model/id'
+import type { Database } from './tables/database'
+
+export type Db = Kysely<Database>
+/** A transaction bound to one shop; only asShop makes one. Queries filter on `shopId` themselves, too. */
+export type ShopTx = Transaction<Database> & { readonly shopId: Id; readonly [shopBound]: true }
+/** A transaction with no shop: every table is empty in it; for the sign-in functions. */
+export type NoShopTx = Transaction<Database> & { readonly [noShop]: true }
+
+declare const shopBound: unique symbol
+declare const noShop: unique symbol
+
+/** The pool of this process, opened at the first use from DATABASE_URL. */
+export function appDb(): Db {
+  const holder = globalThis as { [key: symbol]: Db | undefined }
+  holder[POOL] ??= openDb(env().DATABASE_URL)
+  return holder[POOL]
+}
+
+/** Makes `url` (or nothing: the setting again) the pool of this process; for scripts and tests. */
+export async function useDatabase(url: string | null): Promise<void> {
+  const holder = globalThis as { [key: symbol]: Db | undefined }
+  await holder[POOL]?.destroy()
+  holder[POOL] = url === null ? undefined : openDb(url)
+}
+
+/** Opens a pool of its own; the caller destroys it. */
+export function openDb(url: string, max = 10): Db {
+  const pool = new pg.Pool({
+    connectionString: url,
+    max,
+    types: { getTypeParser },
+    // lock_timeout and the idle limit bind writers that hold the counter (sync.md section 1).
+    options: '-c timezone=UTC -c lock_timeout=2000 -c idle_in_transaction_session_timeout=5000',
+  })
+  // An idle connection whose server went away is dropped by the pool; without a listener it would
+  // end the process. The next query reports the trouble to its own caller.
+  pool.on('error', () => undefined)
+  return new Kysely<Database>({
+    dialect: new PostgresDialect({ pool }),
+    plugins: [new CamelCasePlugin({ maintainNestedObjectKeys: true })],
+  })
+}
+
+/** Runs `run` in one transaction that sees `shopId` and nothing else; rolls back when it throws. */
+export function asShop<T>(shopId: Id, run: (tx: ShopTx) => Promise<T>): Promise<T> {
+  return asShopOn(appDb(), shopId, run)
+}
+
+/** As asShop, on a pool of one's own (the seed runs as farbench_owner). */
+export function asShopOn<T>(db: Db, shopId: Id, run: (tx: ShopTx) => Promise<T>): Promise<T> {
+  return db.transaction().execute(async (tx) => {
+    await sql`select set_config('app.shop_id', ${shopId}, true)`.execute(tx)
+    return run(Object.assign(tx, { shopId }) as ShopTx)
+  })
+}
+
+/** Runs the look-ups that come before a shop is known; tables answer nothing in here. */
+export function withNoShop<T>(run: (tx: NoShopTx) => Promise<T>): Promise<T> {
+  return appDb()
+    .transaction()
+    .execute((tx) => run(tx as NoShopTx))
+}
+
+const POOL = Symbol.for('farbench.db')
+
+/** Instants as ISO text with milliseconds; bigint as number, which holds every amount and count here. */
+function getTypeParser(oid: number, format?: 'text' | 'binary') {
+  if (oid === pg.types.builtins.TIMESTAMPTZ) return (text: string) => toInstant(text)
+  if (oid === pg.types.builtins.INT8) return (text: string) => Number(text)
+  return format === 'binary' ? pg.types.getTypeParser(oid, 'binary') : pg.types.getTypeParser(oid)
+}
+
+function toInstant(text: string): string {
+  return new Date(`${text.replace(' ', 'T')}:00`).toISOString()
+}
