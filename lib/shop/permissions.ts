@@ -53,7 +53,6 @@ const GUIDE: readonly Action[] = [
   'field.see',
   'job.open',
   'job.work',
-  'machine.add',
   'log.add',
   'check.guideSafe',
   'advice.keep',
