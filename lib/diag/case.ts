@@ -1,0 +1,65 @@
+import type { SpecSheet } from '@/lib/model/code-book'
+import type { Features } from '@/lib/model/features'
+import type { Job } from '@/lib/model/job'
+import type { LogEntry } from '@/lib/model/log-entry'
+import type { MeterProfile } from '@/lib/model/meter-profile'
+import type { BookIndex } from './book-index'
+
+/** Everything the engine looks at for one job: pure data, the same on phone, server and desk. */
+export type Case = {
+  index: BookIndex
+  features: Features
+  spec: SpecSheet | null
+  /** The symptom that is the condition of the belief (rule R5): the complaint's, else the first one taken down. */
+  symptom: string | null
+  /** Living entries in the order they happened (then written, then id). */
+  entries: readonly LogEntry[]
+  /** The meter in the bag, where known: it decides what a reading can tell before it is taken. */
+  meter: MeterProfile | null
+}
+
+/**
+ * A job as the engine sees it. Entries that a later one supersedes or corrects are left out; a correction
+ * that was itself corrected no longer counts. The order is by `happenedAt`, then `writtenAt`, then id, so
+ * that two devices holding the same entries reckon the same figures.
+ */
+export function buildCase(input: {
+  index: BookIndex
+  features: Features
+  spec: SpecSheet | null
+  job: Pick<Job, 'complaint'>
+  entries: readonly LogEntry[]
+  meter?: MeterProfile | null
+}): Case {
+  const entries = living(input.entries)
+  const first = entries.find((e) => e.body.kind === 'symptom')?.body
+  const taken = first?.kind === 'symptom' ? first.symptom : null
+  return {
+    index: input.index,
+    features: input.features,
+    spec: input.spec,
+    symptom: input.job.complaint.symptom ?? taken,
+    entries,
+    meter: input.meter ?? null,
+  }
+}
+
+/** The entries still in evidence, in the order they happened; corrections themselves are left out. */
+export function living(entries: readonly LogEntry[]): LogEntry[] {
+  const undone = new Set<string>()
+  for (const e of entries)
+    if (e.body.kind === 'correction' && e.supersedes !== null) undone.add(e.supersedes)
+  const out = new Set<string>()
+  for (const e of entries) {
+    if (e.supersedes === null) continue
+    if (e.body.kind === 'correction' && undone.has(e.id)) continue
+    out.add(e.supersedes)
+  }
+  return entries.filter((e) => !out.has(e.id) && e.body.kind !== 'correction').sort(byTime)
+}
+
+function byTime(a: LogEntry, b: LogEntry): number {
+  if (a.happenedAt !== b.happenedAt) return a.happenedAt < b.happenedAt ? -1 : 1
+  if (a.writtenAt !== b.writtenAt) return a.writtenAt < b.writtenAt ? -1 : 1
+  return a.id < b.id ? -1 : a.id > b.id ? 1 : 0
+}

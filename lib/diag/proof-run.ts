@@ -1,0 +1,50 @@
+/**
+ * What a proof run proves (F7). Bounds are one-sided Clopper-Pearson (1934): the largest fault share at
+ * which seeing this few faults still has chance 1 - confidence; found by bisection on the exact binomial.
+ */
+import { binomialCdf, clopperPearson } from './exact-intervals'
+
+/** Upper bound on the share of starts that could still fail after `starts` clean ones; 1 with no starts. */
+export function boundAfterClean(starts: number, confidence = 0.95): number {
+  if (starts <= 0) return 1
+  return 1 - (1 - confidence) ** (1 / starts)
+}
+
+/** Upper bound on the share that fails after `faults` in `trials`, one-sided; 1 when every trial failed. */
+export function upperBound(faults: number, trials: number, confidence = 0.95): number {
+  if (trials <= 0 || faults >= trials) return 1
+  if (faults <= 0) return boundAfterClean(trials, confidence)
+  return clopperPearson(faults, trials, 2 * confidence - 1).high
+}
+
+/** The rule of three: after n clean trials up to 3/n could still fail, about 95 % (common practice); at most 1. */
+export const ruleOfThree = (n: number): number => (n <= 0 ? 1 : Math.min(1, 3 / n))
+
+/** Clean starts needed before the bound falls to `share` (0 to 1) or below. Infinite for a share of 0. */
+export function cleanStartsFor(share: number, confidence = 0.95): number {
+  if (share >= 1) return 0
+  if (share <= 0) return Number.POSITIVE_INFINITY
+  const n = Math.max(1, Math.ceil(Math.log(1 - confidence) / Math.log(1 - share) - 1e-9))
+  return n
+}
+
+/**
+ * Chance that an intermittent fault is still there after `minutes` without it: p e^(-rt) / (p e^(-rt) + 1 - p),
+ * p the chance before, r its rate per minute under the condition (engine.md 1).
+ */
+export function chanceLeft(before: number, ratePerMinute: number, minutes: number): number {
+  const unseen = before * Math.exp(-ratePerMinute * minutes)
+  return unseen / (unseen + 1 - before)
+}
+
+/** Whole clean minutes needed until that chance is `target` or less; 0 when it already is, infinite at rate 0. */
+export function minutesFor(before: number, ratePerMinute: number, target: number): number {
+  if (before <= target) return 0
+  if (ratePerMinute <= 0 || target <= 0) return Number.POSITIVE_INFINITY
+  const ratio = (before * (1 - target)) / (target * (1 - before))
+  return Math.ceil(Math.log(ratio) / ratePerMinute - 1e-9)
+}
+
+/** Chance of at most `faults` faults in `trials` at a true share; the figure behind the bounds. */
+export const chanceOfAtMost = (faults: number, trials: number, share: number): number =>
+  binomialCdf(faults, trials, share)
