@@ -19,7 +19,10 @@ const config: NextConfig = {
         { key: 'x-content-type-options', value: 'nosniff' },
         { key: 'referrer-policy', value: 'same-origin' },
         { key: 'cross-origin-opener-policy', value: 'same-origin' },
-        { key: 'permissions-policy', value: 'geolocation=(self), camera=(self), microphone=(self)' },
+        {
+          key: 'permissions-policy',
+          value: 'geolocation=(self), camera=(self), microphone=(self)',
+        },
       ],
     },
   ],

@@ -9,7 +9,7 @@ import { envPublic } from '@/lib/env-public'
  * hashes were written at build time (scripts/build-csp.mjs); every other page gets a nonce. Both
  * forbid inline script that is not ours. Without csp.json a production server must not answer.
  */
-type Hashes = Record<string, string[]>
+type Hashes = Record<string, string[] | undefined>
 
 function readHashes(): Hashes {
   try {

@@ -13,11 +13,20 @@ function clockRule() {
     for (const entry of readdirSync(folder, { withFileTypes: true })) {
       const path = join(folder, entry.name)
       if (entry.isDirectory()) walk(path)
-      else if (/\.tsx?$/.test(path) && !/\.test\.tsx?$/.test(path) && !path.startsWith('lib/ports/'))
-        readFileSync(path, 'utf8').split('\n').forEach((line, index) => {
-          if (/\bDate\.now\(|new Date\(\)|Math\.random\(|performance\.now\(/.test(line) && !/^\s*(\*|\/\/)/.test(line))
-            found.push(`${path}:${index + 1}: ${line.trim()}`)
-        })
+      else if (
+        /\.tsx?$/.test(path) &&
+        !/\.test\.tsx?$/.test(path) &&
+        !path.startsWith('lib/ports/')
+      )
+        readFileSync(path, 'utf8')
+          .split('\n')
+          .forEach((line, index) => {
+            if (
+              /\bDate\.now\(|new Date\(\)|Math\.random\(|performance\.now\(/.test(line) &&
+              !/^\s*(\*|\/\/)/.test(line)
+            )
+              found.push(`${path}:${index + 1}: ${line.trim()}`)
+          })
     }
   }
   for (const folder of ['app', 'components', 'lib', 'db']) walk(folder)
@@ -28,7 +37,22 @@ const commands = [
   ['style (biome)', bin('biome'), ['check', '--error-on-warnings', '.']],
   ['route types (next typegen)', bin('next'), ['typegen']],
   ['types (tsc)', bin('tsc'), ['--noEmit']],
-  ['import directions (dependency-cruiser)', bin('depcruise'), ['app', 'components', 'lib', 'db', 'migrations', 'scripts', 'tests', 'proxy.ts', '--config', '.dependency-cruiser.cjs']],
+  [
+    'import directions (dependency-cruiser)',
+    bin('depcruise'),
+    [
+      'app',
+      'components',
+      'lib',
+      'db',
+      'migrations',
+      'scripts',
+      'tests',
+      'proxy.ts',
+      '--config',
+      '.dependency-cruiser.cjs',
+    ],
+  ],
   ['unused code (knip)', bin('knip'), []],
   ['code book', bin('tsx'), ['scripts/codebook-check.ts']],
 ]

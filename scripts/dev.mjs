@@ -14,7 +14,11 @@ const end = (code) => process.exit(code ?? 0)
 const children = [
   service(process.execPath, ['scripts/fakes/mail.mjs'], end),
   service('node_modules/.bin/tsx', ['scripts/work.ts'], end),
-  service(process.execPath, ['node_modules/next/dist/bin/next', 'dev', '-H', '127.0.0.1', '-p', process.env.PORT], end),
+  service(
+    process.execPath,
+    ['node_modules/next/dist/bin/next', 'dev', '-H', '127.0.0.1', '-p', process.env.PORT],
+    end,
+  ),
 ]
 for (const signal of ['SIGINT', 'SIGTERM'])
   process.on(signal, () => {

@@ -62,14 +62,14 @@ export function settings() {
     }),
   )
   const wanted = {
-    NEXTAUTH_SECRET: () => randomBytes(32).toString('base64url'),
-    DEMO_PASSWORD: () => `trail-${randomBytes(5).toString('hex')}`,
+    NEXTAUTH_SECRET: randomBytes(32).toString('base64url'),
+    DEMO_PASSWORD: `trail-${randomBytes(5).toString('hex')}`,
   }
   let added = ''
-  for (const [name, make] of Object.entries(wanted)) {
+  for (const [name, value] of Object.entries(wanted)) {
     if (known.has(name)) continue
-    known.set(name, make())
-    added += `${name}=${known.get(name)}\n`
+    known.set(name, value)
+    added += `${name}=${value}\n`
   }
   if (added) {
     const gap = text && !text.endsWith('\n') ? '\n' : ''
@@ -100,9 +100,20 @@ export function fillDatabase() {
 }
 
 const SOURCES = [
-  'app', 'components', 'lib', 'db', 'public', 'next.config.ts', 'tailwind.config.ts',
-  'postcss.config.mjs', 'proxy.ts', 'package-lock.json', 'tsconfig.json',
-  'scripts/build.mjs', 'scripts/build-csp.mjs', 'scripts/build-sw.mjs',
+  'app',
+  'components',
+  'lib',
+  'db',
+  'public',
+  'next.config.ts',
+  'tailwind.config.ts',
+  'postcss.config.mjs',
+  'proxy.ts',
+  'package-lock.json',
+  'tsconfig.json',
+  'scripts/build.mjs',
+  'scripts/build-csp.mjs',
+  'scripts/build-sw.mjs',
 ]
 
 function* filesOf(path) {

@@ -2,12 +2,25 @@
 // migrates, seeds the demo shops, builds and serves. Ctrl-C stops all it started; data stays.
 import { mkdirSync } from 'node:fs'
 import { join } from 'node:path'
-import { build, database, fillDatabase, freePort, isFree, modules, root, say, service, settings } from './setup.mjs'
+import {
+  build,
+  database,
+  fillDatabase,
+  freePort,
+  isFree,
+  modules,
+  root,
+  say,
+  service,
+  settings,
+} from './setup.mjs'
 
 settings()
 const port = Number(process.env.PORT)
 if (!(await isFree(port))) {
-  console.error(`Port ${port} on 127.0.0.1 is taken. Stop what uses it or set another: PORT=3112 npm start`)
+  console.error(
+    `Port ${port} on 127.0.0.1 is taken. Stop what uses it or set another: PORT=3112 npm start`,
+  )
   process.exit(1)
 }
 modules()
@@ -64,7 +77,10 @@ children.push(
 
 const address = `http://127.0.0.1:${port}`
 for (let tries = 0; !stopping; tries++) {
-  const up = await fetch(`${address}/api/health`).then((answer) => answer.ok, () => false)
+  const up = await fetch(`${address}/api/health`).then(
+    (answer) => answer.ok,
+    () => false,
+  )
   if (up) break
   if (tries > 300) await stop(1)
   await new Promise((wait) => setTimeout(wait, 100))

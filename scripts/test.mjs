@@ -3,7 +3,16 @@
 import { spawnSync } from 'node:child_process'
 import { existsSync, mkdirSync, readFileSync, rmSync } from 'node:fs'
 import { join } from 'node:path'
-import { build, database, fillDatabase, installPackages, modules, root, say, settings } from './setup.mjs'
+import {
+  build,
+  database,
+  fillDatabase,
+  installPackages,
+  modules,
+  root,
+  say,
+  settings,
+} from './setup.mjs'
 
 const only = process.argv[2]
 const wants = (part) => only === undefined || only === part
@@ -19,7 +28,11 @@ const db = await database('farbench_test')
 /** Runs one runner; a runner that dies without a result counts as one failure. */
 function runner(name, command, args, count, env = {}) {
   say(name)
-  const done = spawnSync(command, args, { stdio: 'inherit', cwd: root, env: { ...process.env, ...env } })
+  const done = spawnSync(command, args, {
+    stdio: 'inherit',
+    cwd: root,
+    env: { ...process.env, ...env },
+  })
   let counted = { passed: 0, failed: 0 }
   try {
     counted = count(done)
@@ -44,10 +57,20 @@ if (wants('unit'))
   runner(
     'unit, standards, database, sync',
     join('node_modules', '.bin', 'vitest'),
-    ['run', '--reporter=default', '--reporter=json', `--outputFile.json=${join(results, 'vitest.json')}`],
+    [
+      'run',
+      '--reporter=default',
+      '--reporter=json',
+      `--outputFile.json=${join(results, 'vitest.json')}`,
+    ],
     () => {
       const report = readJson('vitest.json')
-      return { passed: report.numPassedTests, failed: report.numFailedTests + (report.numFailedTestSuites > 0 && report.numFailedTests === 0 ? 1 : 0) }
+      return {
+        passed: report.numPassedTests,
+        failed:
+          report.numFailedTests +
+          (report.numFailedTestSuites > 0 && report.numFailedTests === 0 ? 1 : 0),
+      }
     },
   )
 
@@ -56,10 +79,16 @@ if (wants('e2e')) {
   build()
   await database('farbench_e2e')
   fillDatabase()
-  runner('end to end', join('node_modules', '.bin', 'playwright'), ['test'], () => {
-    const { stats } = readJson('e2e.json')
-    return { passed: stats.expected, failed: stats.unexpected + stats.flaky }
-  }, { NODE_ENV: 'test' })
+  runner(
+    'end to end',
+    join('node_modules', '.bin', 'playwright'),
+    ['test'],
+    () => {
+      const { stats } = readJson('e2e.json')
+      return { passed: stats.expected, failed: stats.unexpected + stats.flaky }
+    },
+    { NODE_ENV: 'test' },
+  )
 }
 
 if (db.started) {

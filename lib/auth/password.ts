@@ -11,8 +11,12 @@ const MAX_MEMORY = 256 * 1024 * 1024
 
 const derive = (password: string, salt: Buffer, cost: ScryptOptions) =>
   new Promise<Buffer>((resolve, reject) =>
-    scrypt(password.normalize('NFKC'), salt, LENGTH, { ...cost, maxmem: MAX_MEMORY }, (error, key) =>
-      error ? reject(error) : resolve(key),
+    scrypt(
+      password.normalize('NFKC'),
+      salt,
+      LENGTH,
+      { ...cost, maxmem: MAX_MEMORY },
+      (error, key) => (error ? reject(error) : resolve(key)),
     ),
   )
 
@@ -20,7 +24,14 @@ const derive = (password: string, salt: Buffer, cost: ScryptOptions) =>
 export async function hashPassword(password: string): Promise<string> {
   const salt = randomBytes(16)
   const key = await derive(password, salt, COST)
-  return ['scrypt', COST.N, COST.r, COST.p, salt.toString('base64url'), key.toString('base64url')].join('$')
+  return [
+    'scrypt',
+    COST.N,
+    COST.r,
+    COST.p,
+    salt.toString('base64url'),
+    key.toString('base64url'),
+  ].join('$')
 }
 
 /** Answers whether the password belongs to the hash; false for a hash it cannot read. */
@@ -28,7 +39,11 @@ export async function verifyPassword(password: string, stored: string): Promise<
   const [scheme, n, r, p, salt, hash] = stored.split('$')
   if (scheme !== 'scrypt' || !n || !r || !p || !salt || !hash) return false
   const wanted = Buffer.from(hash, 'base64url')
-  const key = await derive(password, Buffer.from(salt, 'base64url'), { N: Number(n), r: Number(r), p: Number(p) })
+  const key = await derive(password, Buffer.from(salt, 'base64url'), {
+    N: Number(n),
+    r: Number(r),
+    p: Number(p),
+  })
   return key.length === wanted.length && timingSafeEqual(key, wanted)
 }
 

@@ -19,13 +19,20 @@ export const caution = z.strictObject({ signal: z.enum(SIGNALS), text: sentence 
 export type Caution = z.infer<typeof caution>
 
 export const featureItem = z.strictObject({
-  kind: z.literal('feature'), id: slug, name: sentence,
+  kind: z.literal('feature'),
+  id: slug,
+  name: sentence,
   /** The plain question that finds it out in the field, and each answer's words by value. */
-  question: sentence, answers: z.record(z.string(), z.string()), source,
+  question: sentence,
+  answers: z.record(z.string(), z.string()),
+  source,
 })
 
 export const symptomItem = z.strictObject({
-  kind: z.literal('symptom'), id: slug, name: sentence, gate,
+  kind: z.literal('symptom'),
+  id: slug,
+  name: sentence,
+  gate,
   /** How riders say it; searched as typed. */
   riderWords: z.array(z.string()),
   conditions: z.array(z.strictObject({ id: slug, name: z.string() })),
@@ -41,86 +48,198 @@ export const circuitRole = z.enum(CIRCUIT_ROLES)
 export type CircuitRole = z.infer<typeof circuitRole>
 
 export const faultItem = z.strictObject({
-  kind: z.literal('fault'), id: slug, name: z.string().check(z.minLength(3), z.maxLength(60)), system: slug, gate,
+  kind: z.literal('fault'),
+  id: slug,
+  name: z.string().check(z.minLength(3), z.maxLength(60)),
+  system: slug,
+  gate,
   /** Share of 100 such calls (this complaint, this kind of machine), something else included (rule R5). */
-  shares: z.array(z.strictObject({ symptom: slug, gate, of100: z.number().check(z.positive(), z.maximum(100)) })),
+  shares: z.array(
+    z.strictObject({ symptom: slug, gate, of100: z.number().check(z.positive(), z.maximum(100)) }),
+  ),
   /** Circuits this fault sits in and what it is there; codes name circuits. */
   circuits: z.array(z.strictObject({ circuit: slug, role: circuitRole })),
-  repair: z.nullable(z.strictObject({
-    words: sentence, doesNotFix: z.nullable(sentence), minutes: z.number(), costMinor: z.int(),
-    part: z.nullable(slug), setups: z.array(slug),
-    /** Chance of 100 that the repair, rightly done, cures this fault. */
-    successOf100: z.number().check(z.minimum(1), z.maximum(100)),
-  })),
-  onset: z.nullable(sentence), wayOut: z.enum(['repairHere', 'limpOut', 'tow', 'returnLater']),
-  limpRefused: z.nullable(sentence), provedBy: sentence, source,
+  repair: z.nullable(
+    z.strictObject({
+      words: sentence,
+      doesNotFix: z.nullable(sentence),
+      minutes: z.number(),
+      costMinor: z.int(),
+      part: z.nullable(slug),
+      setups: z.array(slug),
+      /** Chance of 100 that the repair, rightly done, cures this fault. */
+      successOf100: z.number().check(z.minimum(1), z.maximum(100)),
+    }),
+  ),
+  onset: z.nullable(sentence),
+  wayOut: z.enum(['repairHere', 'limpOut', 'tow', 'returnLater']),
+  limpRefused: z.nullable(sentence),
+  provedBy: sentence,
+  source,
 })
 export type FaultItem = z.infer<typeof faultItem>
 
 /** A piece of a distribution: `weight` spread evenly over `from`..`to`, as factors of the nominal value. */
-const piece = z.strictObject({ weight: z.number().check(z.positive()), from: z.number(), to: z.number() })
+const piece = z.strictObject({
+  weight: z.number().check(z.positive()),
+  from: z.number(),
+  to: z.number(),
+})
 export type Piece = z.infer<typeof piece>
 
-export const MACHINE_STATES = ['off', 'keyOn', 'cranking', 'runningNeutral', 'guardedStand'] as const
+export const MACHINE_STATES = [
+  'off',
+  'keyOn',
+  'cranking',
+  'runningNeutral',
+  'guardedStand',
+] as const
 
 export const checkItem = z.strictObject({
-  kind: z.literal('check'), id: slug, name: z.string().check(z.minLength(3), z.maxLength(60)), purpose: sentence, gate,
-  people: z.union([z.literal(1), z.literal(2)]), onePersonWay: z.nullable(sentence),
-  roles: z.array(role), guideSafe: z.boolean(), light: z.enum(['any', 'lampEnough', 'daylight']), weather: z.nullable(sentence),
-  setups: z.array(slug), tools: z.array(z.strictObject({ tool: slug, accuracy: z.nullable(z.string()) })),
-  machineState: z.enum(MACHINE_STATES), mayMoveMachine: z.boolean(),
-  minutes: z.number().check(z.positive()), costMinor: z.int(),
-  steps: z.array(z.strictObject({ text: sentence, caution: z.nullable(caution) })).check(z.minLength(1)),
-  cautions: z.array(caution), record: sentence,
+  kind: z.literal('check'),
+  id: slug,
+  name: z.string().check(z.minLength(3), z.maxLength(60)),
+  purpose: sentence,
+  gate,
+  people: z.union([z.literal(1), z.literal(2)]),
+  onePersonWay: z.nullable(sentence),
+  roles: z.array(role),
+  guideSafe: z.boolean(),
+  light: z.enum(['any', 'lampEnough', 'daylight']),
+  weather: z.nullable(sentence),
+  setups: z.array(slug),
+  tools: z.array(z.strictObject({ tool: slug, accuracy: z.nullable(z.string()) })),
+  machineState: z.enum(MACHINE_STATES),
+  mayMoveMachine: z.boolean(),
+  minutes: z.number().check(z.positive()),
+  costMinor: z.int(),
+  steps: z
+    .array(z.strictObject({ text: sentence, caution: z.nullable(caution) }))
+    .check(z.minLength(1)),
+  cautions: z.array(caution),
+  record: sentence,
   /** First outcome is the good one; the others run from mild to plain bad (the noisy-max order). */
-  outcomes: z.array(z.strictObject({ id: slug, name: z.string(), good: z.boolean() })).check(z.minLength(2)),
+  outcomes: z
+    .array(z.strictObject({ id: slug, name: z.string(), good: z.boolean() }))
+    .check(z.minLength(2)),
   /** Outcome table "of 100" per fault; `otherwise` holds with none of the listed faults present. */
-  table: z.record(slug, of100), otherwise: of100,
+  table: z.record(slug, of100),
+  otherwise: of100,
   expected: z.array(z.strictObject({ words: sentence, source })),
   /** For numeric checks: which figure of the spec sheet judges it, and where the true value lies in each state. */
-  reading: z.nullable(z.strictObject({
-    quantity, component: slug, value: slug,
-    /** Used, and labelled common practice, when the spec sheet has no such figure. */
-    fallback: z.nullable(z.strictObject({ low: z.nullable(z.number()), high: z.nullable(z.number()), unit: z.string(), source })),
-    good: z.array(piece), byFault: z.record(slug, z.array(piece)),
-  })),
-  passDoesNotProve: sentence, stopWhen: z.nullable(sentence), basis: z.enum(['physics', 'commonPractice', 'guess']), basisWords: sentence, source,
+  reading: z.nullable(
+    z.strictObject({
+      quantity,
+      component: slug,
+      value: slug,
+      /** Used, and labelled common practice, when the spec sheet has no such figure. */
+      fallback: z.nullable(
+        z.strictObject({
+          low: z.nullable(z.number()),
+          high: z.nullable(z.number()),
+          unit: z.string(),
+          source,
+        }),
+      ),
+      good: z.array(piece),
+      byFault: z.record(slug, z.array(piece)),
+    }),
+  ),
+  passDoesNotProve: sentence,
+  stopWhen: z.nullable(sentence),
+  basis: z.enum(['physics', 'commonPractice', 'guess']),
+  basisWords: sentence,
+  source,
 })
 export type CheckItem = z.infer<typeof checkItem>
 
 /** A swap with a known-good part, in the order fit, refit, fit (A-B-A). Outcomes: noChange, goneOnce, goneAndBack. */
 export const swapItem = z.strictObject({
-  kind: z.literal('swap'), id: slug, name: sentence, fault: slug, part: slug, gate,
-  minutes: z.number(), setups: z.array(slug), guideSafe: z.boolean(), cautions: z.array(caution),
+  kind: z.literal('swap'),
+  id: slug,
+  name: sentence,
+  fault: slug,
+  part: slug,
+  gate,
+  minutes: z.number(),
+  setups: z.array(slug),
+  guideSafe: z.boolean(),
+  cautions: z.array(caution),
   steps: z.array(z.strictObject({ text: sentence, caution: z.nullable(caution) })),
   /** Per fault, of 100: [no change, gone with the good part and not back with the old, gone and back again]. */
-  table: z.record(slug, z.tuple([z.number(), z.number(), z.number()])), otherwise: z.tuple([z.number(), z.number(), z.number()]),
-  basis: z.enum(['physics', 'commonPractice', 'guess']), basisWords: sentence, source,
+  table: z.record(slug, z.tuple([z.number(), z.number(), z.number()])),
+  otherwise: z.tuple([z.number(), z.number(), z.number()]),
+  basis: z.enum(['physics', 'commonPractice', 'guess']),
+  basisWords: sentence,
+  source,
 })
 export type SwapItem = z.infer<typeof swapItem>
 
 export const spnItem = z.strictObject({
-  kind: z.literal('spn'), id: z.string(), spn: z.int(), name: sentence, circuit: z.nullable(slug), group: z.string(),
-  confidence: z.string(), makersDiffer: z.boolean(), source,
+  kind: z.literal('spn'),
+  id: z.string(),
+  spn: z.int(),
+  name: sentence,
+  circuit: z.nullable(slug),
+  group: z.string(),
+  confidence: z.string(),
+  makersDiffer: z.boolean(),
+  source,
 })
 export const pcodeItem = z.strictObject({
-  kind: z.literal('pcode'), id: z.string(), code: z.string(), name: sentence, circuit: z.nullable(slug),
-  failure: z.string(), group: z.string(), makersDiffer: z.boolean(), source,
+  kind: z.literal('pcode'),
+  id: z.string(),
+  code: z.string(),
+  name: sentence,
+  circuit: z.nullable(slug),
+  failure: z.string(),
+  group: z.string(),
+  makersDiffer: z.boolean(),
+  source,
 })
 /** An FMI (or the failure kind of a P-code): what it says, and of 100 faults in each role how many would set it. */
 export const failureItem = z.strictObject({
-  kind: z.literal('failure'), id: z.string(), fmi: z.nullable(z.int()), name: sentence, failure: z.string(), firstThought: z.nullable(sentence),
+  kind: z.literal('failure'),
+  id: z.string(),
+  fmi: z.nullable(z.int()),
+  name: sentence,
+  failure: z.string(),
+  firstThought: z.nullable(sentence),
   /** null: the kind argues for nothing in particular, so it moves no suspect within its circuit. */
-  byRole: z.nullable(z.partialRecord(circuitRole, z.number())), otherwise: z.number(), supports: z.nullable(sentence), arguesAgainst: z.nullable(sentence), source,
+  byRole: z.nullable(z.partialRecord(circuitRole, z.number())),
+  otherwise: z.number(),
+  supports: z.nullable(sentence),
+  arguesAgainst: z.nullable(sentence),
+  source,
 })
 export const setupItem = z.strictObject({
-  kind: z.literal('setup'), id: slug, name: z.string(), minutes: z.number(), requires: z.array(slug), closedByTest: z.boolean(), source,
+  kind: z.literal('setup'),
+  id: slug,
+  name: z.string(),
+  minutes: z.number(),
+  requires: z.array(slug),
+  closedByTest: z.boolean(),
+  source,
 })
 /** A part or a tool by the name the trade uses. */
-export const wordItem = z.strictObject({ kind: z.enum(['part', 'tool', 'system', 'circuit']), id: slug, name: z.string(), source })
+export const wordItem = z.strictObject({
+  kind: z.enum(['part', 'tool', 'system', 'circuit']),
+  id: slug,
+  name: z.string(),
+  source,
+})
 
 export const codeBookItem = z.discriminatedUnion('kind', [
-  featureItem, symptomItem, faultItem, checkItem, swapItem, spnItem, pcodeItem, failureItem, setupItem, wordItem,
+  featureItem,
+  symptomItem,
+  faultItem,
+  checkItem,
+  swapItem,
+  spnItem,
+  pcodeItem,
+  failureItem,
+  setupItem,
+  wordItem,
 ])
 export type CodeBookItem = z.infer<typeof codeBookItem>
 export type SpnItem = z.infer<typeof spnItem>
@@ -132,38 +251,74 @@ export type FeatureItem = z.infer<typeof featureItem>
 
 /** A whole published version as served and as cached on the phone. `hash` is the SHA-256 of the items' canonical JSON. */
 export const codeBook = z.object({
-  version: z.int().check(z.minimum(1)), hash: z.string(), publishedAt: z.string(), items: z.array(codeBookItem),
+  version: z.int().check(z.minimum(1)),
+  hash: z.string(),
+  publishedAt: z.string(),
+  items: z.array(codeBookItem),
 })
 export type CodeBook = z.infer<typeof codeBook>
 
 /** A value with limits on a model's spec sheet (rule R18). Limits win over nominal and tolerance. */
 export const specValue = z.strictObject({
-  id: slug, name: z.string(), quantity, unit: z.string(),
-  nominal: z.nullable(z.number()), tolerancePercent: z.nullable(z.number()), low: z.nullable(z.number()), high: z.nullable(z.number()),
-  partTempC: z.nullable(z.number()), material: z.nullable(z.enum(['copper', 'ntc'])), conditions: z.nullable(z.string()), source,
+  id: slug,
+  name: z.string(),
+  quantity,
+  unit: z.string(),
+  nominal: z.nullable(z.number()),
+  tolerancePercent: z.nullable(z.number()),
+  low: z.nullable(z.number()),
+  high: z.nullable(z.number()),
+  partTempC: z.nullable(z.number()),
+  material: z.nullable(z.enum(['copper', 'ntc'])),
+  conditions: z.nullable(z.string()),
+  source,
 })
 export type SpecValue = z.infer<typeof specValue>
 
 export const specSheet = z.strictObject({
   showCodes: z.strictObject({ steps: z.array(sentence), clearSteps: z.array(sentence), source }),
-  components: z.array(z.strictObject({
-    id: slug, name: z.string(), place: sentence, setups: z.array(slug), fasteners: z.nullable(sentence),
-    connector: z.nullable(sentence), pins: z.array(z.strictObject({ pin: z.string(), colour: z.string(), carries: z.string() })),
-    torqueNm: z.nullable(z.number()), values: z.array(specValue), source,
-  })),
-  cutOut: z.nullable(z.enum(['opensToStop', 'closesToStop'])), engagementRpm: z.nullable(z.number()), massKg: z.nullable(z.number()),
+  components: z.array(
+    z.strictObject({
+      id: slug,
+      name: z.string(),
+      place: sentence,
+      setups: z.array(slug),
+      fasteners: z.nullable(sentence),
+      connector: z.nullable(sentence),
+      pins: z.array(z.strictObject({ pin: z.string(), colour: z.string(), carries: z.string() })),
+      torqueNm: z.nullable(z.number()),
+      values: z.array(specValue),
+      source,
+    }),
+  ),
+  cutOut: z.nullable(z.enum(['opensToStop', 'closesToStop'])),
+  engagementRpm: z.nullable(z.number()),
+  massKg: z.nullable(z.number()),
   towPreparation: z.nullable(sentence),
   /** Which part the shop buys for each part word, and what it costs (invented in the demo). */
-  parts: z.array(z.strictObject({
-    part: slug, genuineNumber: z.string(), genuineMinor: z.int(), aftermarketNumber: z.nullable(z.string()), aftermarketMinor: z.nullable(z.int()),
-    genuineFailsOf100: z.number(), aftermarketFailsOf100: z.nullable(z.number()), source,
-  })),
+  parts: z.array(
+    z.strictObject({
+      part: slug,
+      genuineNumber: z.string(),
+      genuineMinor: z.int(),
+      aftermarketNumber: z.nullable(z.string()),
+      aftermarketMinor: z.nullable(z.int()),
+      genuineFailsOf100: z.number(),
+      aftermarketFailsOf100: z.nullable(z.number()),
+      source,
+    }),
+  ),
   demo: z.boolean(),
 })
 export type SpecSheet = z.infer<typeof specSheet>
 
 /** A machine model of the shop with its features and spec sheet. Maker and model are as typed. */
 export const machineModel = z.strictObject({
-  id: z.uuid(), maker: z.string(), model: z.string(), features, specSheet: z.nullable(specSheet), source,
+  id: z.uuid(),
+  maker: z.string(),
+  model: z.string(),
+  features,
+  specSheet: z.nullable(specSheet),
+  source,
 })
 export type MachineModel = z.infer<typeof machineModel>

@@ -8,9 +8,18 @@ export const codeSeen = z.discriminatedUnion('format', [
     spn: z.int().check(z.minimum(0), z.maximum(524287)),
     fmi: z.int().check(z.minimum(0), z.maximum(31)),
   }),
-  z.strictObject({ format: z.literal('pcode'), code: z.string().check(z.regex(/^[PCBU][0-3][0-9A-F]{3}$/)) }),
-  z.strictObject({ format: z.literal('flash'), pattern: z.string().check(z.regex(/^\d{1,2}(-\d{1,2}){0,4}$/)) }),
-  z.strictObject({ format: z.literal('asShown'), text: z.string().check(z.minLength(1), z.maxLength(80)) }),
+  z.strictObject({
+    format: z.literal('pcode'),
+    code: z.string().check(z.regex(/^[PCBU][0-3][0-9A-F]{3}$/)),
+  }),
+  z.strictObject({
+    format: z.literal('flash'),
+    pattern: z.string().check(z.regex(/^\d{1,2}(-\d{1,2}){0,4}$/)),
+  }),
+  z.strictObject({
+    format: z.literal('asShown'),
+    text: z.string().check(z.minLength(1), z.maxLength(80)),
+  }),
 ])
 export type CodeSeen = z.infer<typeof codeSeen>
 

@@ -4,7 +4,16 @@ import { place } from './place'
 import { instant, zone } from './time'
 
 /** Job states after rule R13. `waiting` says for what; reopened is `open` with the closing kept in the log. */
-export const JOB_STATES = ['called', 'open', 'assigned', 'underWay', 'waitingParts', 'waitingApproval', 'waitingRetrieval', 'closed'] as const
+export const JOB_STATES = [
+  'called',
+  'open',
+  'assigned',
+  'underWay',
+  'waitingParts',
+  'waitingApproval',
+  'waitingRetrieval',
+  'closed',
+] as const
 export const jobState = z.enum(JOB_STATES)
 export type JobState = z.infer<typeof jobState>
 
@@ -14,7 +23,14 @@ export const peopleState = z.enum(PEOPLE_STATES)
 export type PeopleState = z.infer<typeof peopleState>
 
 /** Where the machine is and how (rule R2). */
-export const MACHINE_STATES = ['stranded', 'runs', 'limping', 'onTow', 'leftBehind', 'atShop'] as const
+export const MACHINE_STATES = [
+  'stranded',
+  'runs',
+  'limping',
+  'onTow',
+  'leftBehind',
+  'atShop',
+] as const
 export const jobMachineState = z.enum(MACHINE_STATES)
 export type JobMachineState = z.infer<typeof jobMachineState>
 
@@ -23,7 +39,15 @@ export const wayOut = z.enum(WAYS_OUT)
 export type WayOut = z.infer<typeof wayOut>
 
 /** What happened just before (F1); a set, in the order shown. */
-export const BEFORE = ['water', 'rollover', 'refuel', 'jump', 'longStorage', 'recentWork', 'nothing'] as const
+export const BEFORE = [
+  'water',
+  'rollover',
+  'refuel',
+  'jump',
+  'longStorage',
+  'recentWork',
+  'nothing',
+] as const
 
 /** A job as opened: what is written once, in the field or at the desk. Later changes are ops of their own. */
 export const jobOpening = z.strictObject({
@@ -31,10 +55,16 @@ export const jobOpening = z.strictObject({
   machineId: id,
   people: z.strictObject({
     count: z.int().check(z.minimum(1), z.maximum(99)),
-    hurt: z.boolean(), missing: z.boolean(), exposed: z.boolean(),
+    hurt: z.boolean(),
+    missing: z.boolean(),
+    exposed: z.boolean(),
   }),
   place: z.nullable(place),
-  complaint: z.strictObject({ words: z.string().check(z.minLength(1), z.maxLength(500)), symptom: z.nullable(slug), lampOn: z.nullable(z.boolean()) }),
+  complaint: z.strictObject({
+    words: z.string().check(z.minLength(1), z.maxLength(500)),
+    symptom: z.nullable(slug),
+    lampOn: z.nullable(z.boolean()),
+  }),
   before: z.array(z.enum(BEFORE)),
   airTempC: z.nullable(z.number().check(z.minimum(-60), z.maximum(60))),
   weather: z.nullable(z.string().check(z.maxLength(120))),

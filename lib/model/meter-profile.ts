@@ -29,7 +29,10 @@ export const meterProfile = z.strictObject({
   id,
   name: z.string().check(z.minLength(1), z.maxLength(80)),
   functions: z.partialRecord(quantity, meterFunction),
-  leadsOhm: z.strictObject({ low: z.number().check(z.minimum(0)), high: z.number().check(z.minimum(0)) }),
+  leadsOhm: z.strictObject({
+    low: z.number().check(z.minimum(0)),
+    high: z.number().check(z.minimum(0)),
+  }),
   /** Widening per kelvin outside 18 to 28 C, as a share of the accuracy (rule R7; typical data sheet, from memory). */
   perKelvin: z.number().check(z.minimum(0)),
   source: z.string().check(z.minLength(1)),

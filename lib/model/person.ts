@@ -11,5 +11,10 @@ export const person = z.strictObject({
 export type Person = z.infer<typeof person>
 
 /** Who is at work: the shop, the person and the set of roles. Everything on the server starts from one. */
-export const actor = z.strictObject({ shopId: id, personId: id, roles: z.array(role), name: z.nullable(z.string()) })
+export const actor = z.strictObject({
+  shopId: id,
+  personId: id,
+  roles: z.array(role),
+  name: z.nullable(z.string()),
+})
 export type Actor = z.infer<typeof actor>

@@ -12,5 +12,11 @@ export const photoRef = z.strictObject({
 export type PhotoRef = z.infer<typeof photoRef>
 
 /** The server's word on a photo: received and verified, or still on the phone (then there is no row). */
-export const photoRow = z.object({ hash: sha256Hex, jobId: id, bytes: z.int(), mime: z.string(), receivedAt: z.string() })
+export const photoRow = z.object({
+  hash: sha256Hex,
+  jobId: id,
+  bytes: z.int(),
+  mime: z.string(),
+  receivedAt: z.string(),
+})
 export type PhotoRow = z.infer<typeof photoRow>
