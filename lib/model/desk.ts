@@ -1,6 +1,5 @@
 import * as z from 'zod/mini'
 import { machineModel } from './code-book'
-import { id } from './id'
 import { job } from './job'
 import { logRow } from './log-entry'
 import { machine } from './machine'
@@ -21,8 +20,8 @@ export const boardJob = z.object({
   /** The machine in words: maker, model and unit number, as far as known. */
   machineWords: z.string(),
   entries: z.int(),
-  /** Server times: when the last entry came in, and when any device of its people last reached us. */
-  lastEntryAt: z.nullable(z.string()),
+  /** Server time at which the last entry came in. */
+  heardAt: z.nullable(z.string()),
   /** Photos that entries name and whose bytes are not here. */
   photosMissing: z.int(),
   partsOpen: z.int(),
@@ -44,6 +43,8 @@ export const deskJob = z.object({
   shop,
   job,
   machineWords: z.string(),
+  /** Server time at which a phone that wrote into this job last reached us. */
+  reachedAt: z.nullable(z.string()),
   machine: z.nullable(machine),
   model: z.nullable(machineModel),
   entries: z.array(logRow),
@@ -74,6 +75,3 @@ export type DeskPartLine = z.infer<typeof deskPartLine>
 
 export const deskParts = z.object({ seq, currency: z.string(), lines: z.array(deskPartLine) })
 export type DeskParts = z.infer<typeof deskParts>
-
-/** Ids the desk names in a request. */
-export const deskJobRef = z.strictObject({ jobId: id })

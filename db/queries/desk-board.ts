@@ -1,0 +1,145 @@
+import { sql } from 'kysely'
+import type { BoardJob, DeskBoard } from '@/lib/model/desk'
+import type { Id } from '@/lib/model/id'
+import { asShop, type ShopTx } from '../client'
+import { lastChange } from './changes'
+
+/** Whose jobs: every job of the shop, or those a person opened or is assigned to. */
+export type Whose = { kind: 'all' } | { kind: 'own'; personId: Id }
+
+const DAY_MS = 24 * 3600 * 1000
+
+/**
+ * The board as of one change number: open jobs, and those closed within 24 hours before `now` (ms since
+ * 1970). The order is the screen's business.
+ */
+export function readBoard(shopId: Id, whose: Whose, now: number): Promise<DeskBoard> {
+  return asShop(shopId, async (tx) => {
+    const seq = await lastChange(tx)
+    const rows = await boardRows(tx, whose)
+      .where((eb) =>
+        eb.or([
+          eb('job.state', '!=', 'closed'),
+          eb('job.closedAt', '>', new Date(now - DAY_MS).toISOString()),
+        ]),
+      )
+      .orderBy('job.openedAt')
+      .orderBy('job.id')
+      .execute()
+    const jobs = rows.map(toBoardJob)
+    return {
+      seq,
+      whose: whose.kind,
+      open: jobs.filter(({ job }) => job.state !== 'closed'),
+      closed: jobs.filter(({ job }) => job.state === 'closed').reverse(),
+    }
+  })
+}
+
+/** Jobs with what the shop has heard of them; the caller adds its own conditions. */
+export function boardRows(tx: ShopTx, whose: Whose) {
+  const query = tx
+    .selectFrom('job')
+    .innerJoin('machine', (join) =>
+      join.onRef('machine.shopId', '=', 'job.shopId').onRef('machine.id', '=', 'job.machineId'),
+    )
+    .leftJoin('machineModel', (join) =>
+      join
+        .onRef('machineModel.shopId', '=', 'machine.shopId')
+        .onRef('machineModel.id', '=', 'machine.modelId'),
+    )
+    .selectAll('job')
+    .select([
+      'machine.unitNumber',
+      'machine.makerTyped',
+      'machine.modelTyped',
+      'machineModel.maker',
+      'machineModel.model',
+      assigned().as('assigned'),
+      entryCount().as('entries'),
+      sql<string | null>`(select max(e.received_at) from log_entry e
+        where e.shop_id = job.shop_id and e.job_id = job.id)`.as('heardAt'),
+      photosMissing().as('photosMissing'),
+      partsOpen().as('partsOpen'),
+    ])
+    .where('job.shopId', '=', tx.shopId)
+    .where('job.deletedAt', 'is', null)
+  if (whose.kind === 'all') return query
+  const { personId } = whose
+  return query.where((eb) =>
+    eb.or([
+      eb('job.openedBy', '=', personId),
+      eb.exists(
+        eb
+          .selectFrom('jobAssignment')
+          .select('personId')
+          .whereRef('jobAssignment.shopId', '=', 'job.shopId')
+          .whereRef('jobAssignment.jobId', '=', 'job.id')
+          .where('personId', '=', personId),
+      ),
+    ]),
+  )
+}
+
+const assigned = () =>
+  sql<string[]>`array(select a.person_id::text from job_assignment a
+    where a.shop_id = job.shop_id and a.job_id = job.id order by a.assigned_at, a.person_id)`
+
+const entryCount = () =>
+  sql<number>`(select count(*)::int from log_entry e
+    where e.shop_id = job.shop_id and e.job_id = job.id)`
+
+/** Photos that living or struck entries name and whose bytes have not come. */
+const photosMissing = () =>
+  sql<number>`(select count(distinct e.body -> 'photo' ->> 'hash')::int from log_entry e
+    where e.shop_id = job.shop_id and e.job_id = job.id and e.kind = 'photo'
+      and not exists (select 1 from photo p
+        where p.shop_id = e.shop_id and p.hash = e.body -> 'photo' ->> 'hash'))`
+
+const partsOpen = () =>
+  sql<number>`(select count(*)::int from part_line l join part_request r
+      on r.shop_id = l.shop_id and r.id = l.request_id
+    where r.shop_id = job.shop_id and r.job_id = job.id and r.deleted_at is null
+      and l.state not in ('fitted', 'returned', 'credited', 'cancelled'))`
+
+type BoardRow = Awaited<ReturnType<ReturnType<typeof boardRows>['execute']>>[number]
+
+/** A row of boardRows in the words of the model. */
+export function toBoardJob(row: BoardRow): BoardJob {
+  return {
+    job: {
+      id: row.id,
+      number: row.number,
+      machineId: row.machineId,
+      people: row.people,
+      place: row.place,
+      complaint: row.complaint,
+      before: row.before,
+      airTempC: row.airTempC,
+      weather: row.weather,
+      openedAt: row.openedAt,
+      zone: row.zone,
+      state: row.state,
+      peopleState: row.peopleState,
+      machineState: row.machineState,
+      wayOut: row.wayOut,
+      openedBy: row.openedBy,
+      assignedTo: row.assigned,
+    },
+    machineWords: machineWords(row),
+    entries: row.entries,
+    heardAt: row.heardAt,
+    photosMissing: row.photosMissing,
+    partsOpen: row.partsOpen,
+  }
+}
+
+type Named = Pick<BoardRow, 'unitNumber' | 'makerTyped' | 'modelTyped' | 'maker' | 'model'>
+
+/** Maker, model and unit in words, as typed where there is no model of the shop's. */
+export function machineWords(row: Named): string {
+  const maker = row.maker ?? row.makerTyped
+  const model = row.model ?? row.modelTyped
+  const name = [maker, model].filter(Boolean).join(' ') || 'Machine not named'
+  return row.unitNumber ? `${name}, unit ${row.unitNumber}` : name
+}

@@ -1,0 +1,123 @@
+import type { DeskParts } from '@/lib/model/desk'
+import type { Id } from '@/lib/model/id'
+import type { PartLine, PartLineState } from '@/lib/model/part-request'
+import { asShop, type ShopTx } from '../client'
+import type { PartLineTable } from '../tables/job'
+import { lastChange } from './changes'
+import { machineWords } from './desk-board'
+import { getShop } from './shop'
+
+/** How long a line that needs nothing more stays in the table, in ms: 14 days (choice). */
+const DONE_KEPT_MS = 14 * 24 * 3600 * 1000
+const DONE: PartLineState[] = ['fitted', 'returned', 'credited', 'cancelled']
+
+/**
+ * The parts desk's table as of one change number: every open line, and done ones asked for within the
+ * 14 days before `now` (ms since 1970); newest request first.
+ */
+export function readParts(shopId: Id, now: number): Promise<DeskParts> {
+  return asShop(shopId, async (tx) => {
+    const seq = await lastChange(tx)
+    const shop = await getShop(tx)
+    const rows = await lineRows(tx)
+      .where((eb) =>
+        eb.or([
+          eb('partLine.state', 'not in', DONE),
+          eb('partRequest.askedAt', '>', new Date(now - DONE_KEPT_MS).toISOString()),
+        ]),
+      )
+      .execute()
+    return { seq, currency: shop.currency, lines: rows.map(toDeskLine) }
+  })
+}
+
+function lineRows(tx: ShopTx) {
+  return tx
+    .selectFrom('partLine')
+    .innerJoin('partRequest', (join) =>
+      join
+        .onRef('partRequest.shopId', '=', 'partLine.shopId')
+        .onRef('partRequest.id', '=', 'partLine.requestId'),
+    )
+    .innerJoin('job', (join) =>
+      join.onRef('job.shopId', '=', 'partRequest.shopId').onRef('job.id', '=', 'partRequest.jobId'),
+    )
+    .innerJoin('machine', (join) =>
+      join.onRef('machine.shopId', '=', 'job.shopId').onRef('machine.id', '=', 'job.machineId'),
+    )
+    .leftJoin('machineModel', (join) =>
+      join
+        .onRef('machineModel.shopId', '=', 'machine.shopId')
+        .onRef('machineModel.id', '=', 'machine.modelId'),
+    )
+    .leftJoin('personContact', (join) =>
+      join
+        .onRef('personContact.shopId', '=', 'partRequest.shopId')
+        .onRef('personContact.personId', '=', 'partRequest.askedBy'),
+    )
+    .selectAll('partLine')
+    .select([
+      'partRequest.jobId',
+      'partRequest.askedAt',
+      'partRequest.urgency',
+      'partRequest.note',
+      'partRequest.advice',
+      'personContact.name as askedBy',
+      'job.number as jobNumber',
+      'job.complaint',
+      'machine.unitNumber',
+      'machine.makerTyped',
+      'machine.modelTyped',
+      'machineModel.maker',
+      'machineModel.model',
+    ])
+    .where('partLine.shopId', '=', tx.shopId)
+    .where('partRequest.deletedAt', 'is', null)
+    .orderBy('partRequest.askedAt', 'desc')
+    .orderBy('partRequest.id')
+    .orderBy('partLine.lineNo')
+}
+
+type LineRow = Awaited<ReturnType<ReturnType<typeof lineRows>['execute']>>[number]
+
+function toDeskLine(row: LineRow): DeskParts['lines'][number] {
+  return {
+    line: toPartLine(row),
+    request: {
+      id: row.requestId,
+      jobId: row.jobId,
+      askedAt: row.askedAt,
+      urgency: row.urgency,
+      note: row.note,
+      advice: row.advice,
+    },
+    askedBy: row.askedBy,
+    jobNumber: row.jobNumber,
+    complaint: row.complaint.words,
+    machineWords: machineWords(row),
+  }
+}
+
+type StoredLine = Omit<PartLineTable, 'shopId' | 'requestId' | 'lineNo' | 'state'> & {
+  state: PartLineState
+}
+
+/** A stored line in the words of the model: price with its currency, or none. */
+export function toPartLine(row: StoredLine): PartLine & { state: PartLineState } {
+  const { priceMinor, priceCurrency } = row
+  return {
+    id: row.id,
+    part: row.part,
+    words: row.words,
+    position: row.position,
+    quantity: row.quantity,
+    choice: row.choice,
+    number: row.number,
+    price:
+      priceMinor === null || priceCurrency === null
+        ? null
+        : { minor: priceMinor, currency: priceCurrency },
+    condemnedBy: row.condemnedBy,
+    state: row.state,
+  }
+}
