@@ -16,18 +16,34 @@ export type NoShopTx = Transaction<Database> & { readonly [noShop]: true }
 declare const shopBound: unique symbol
 declare const noShop: unique symbol
 
+type Opened = { url: string; db: Db }
+const OPENED = Symbol.for('farbench.db')
+const holder = globalThis as { [key: symbol]: Opened | undefined }
+
 /** The pool of this process, opened at the first use from DATABASE_URL. */
 export function appDb(): Db {
-  const holder = globalThis as { [key: symbol]: Db | undefined }
-  holder[POOL] ??= openDb(env().DATABASE_URL)
-  return holder[POOL]
+  return opened().db
 }
 
-/** Makes `url` (or nothing: the setting again) the pool of this process; for scripts and tests. */
+/** The address behind appDb, for the connection that listens. */
+export function appDbUrl(): string {
+  return opened().url
+}
+
+function opened(): Opened {
+  const present = holder[OPENED]
+  if (present) return present
+  const url = env().DATABASE_URL
+  const made = { url, db: openDb(url) }
+  holder[OPENED] = made
+  return made
+}
+
+/** Makes `url` the address of this process (null: the setting again); for scripts and tests. */
 export async function useDatabase(url: string | null): Promise<void> {
-  const holder = globalThis as { [key: symbol]: Db | undefined }
-  await holder[POOL]?.destroy()
-  holder[POOL] = url === null ? undefined : openDb(url)
+  const before = holder[OPENED]
+  holder[OPENED] = url === null ? undefined : { url, db: openDb(url) }
+  await before?.db.destroy()
 }
 
 /** Opens a pool of its own; the caller destroys it. */
@@ -68,15 +84,14 @@ export function withNoShop<T>(run: (tx: NoShopTx) => Promise<T>): Promise<T> {
     .execute((tx) => run(tx as NoShopTx))
 }
 
-const POOL = Symbol.for('farbench.db')
-
 /** Instants as ISO text with milliseconds; bigint as number, which holds every amount and count here. */
 function getTypeParser(oid: number, format?: 'text' | 'binary') {
-  if (oid === pg.types.builtins.TIMESTAMPTZ) return (text: string) => toInstant(text)
-  if (oid === pg.types.builtins.INT8) return (text: string) => Number(text)
+  if (oid === pg.types.builtins.TIMESTAMPTZ) return toInstant
+  if (oid === pg.types.builtins.INT8) return Number
   return format === 'binary' ? pg.types.getTypeParser(oid, 'binary') : pg.types.getTypeParser(oid)
 }
 
+/** PostgreSQL writes `2026-12-01 09:30:00.123+00` in a session that keeps UTC. */
 function toInstant(text: string): string {
   return new Date(`${text.replace(' ', 'T')}:00`).toISOString()
 }

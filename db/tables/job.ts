@@ -24,6 +24,8 @@ export type JobTable = {
   machineState: JobMachineState
   wayOut: WayOut | null
   closedAt: string | null
+  /** The phone that closed it; null when the desk did. */
+  closedOn: string | null
   /** Set 60 days after closing: from then on no phone holds the job (R22). */
   leftFieldAt: string | null
   deletedAt: string | null

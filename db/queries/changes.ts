@@ -1,0 +1,69 @@
+import { sql } from 'kysely'
+import type { Id } from '@/lib/model/id'
+import type { ShopTx } from '../client'
+
+/** Entities whose rows travel to phones and desks, by the name they travel under. */
+export type ChangeEntity =
+  | 'shop'
+  | 'person'
+  | 'machineModel'
+  | 'machine'
+  | 'meterProfile'
+  | 'bag'
+  | 'job'
+  | 'logEntry'
+  | 'partRequest'
+  | 'photo'
+  | 'book'
+
+/**
+ * One row that changed. `jobId` is the job it belongs to (a job's own id for a job), null for none.
+ * `whole` on a job: who may hold it changed, so all its rows are numbered again (docs/spec/data.md).
+ */
+export type Change = {
+  entity: ChangeEntity
+  id: string
+  jobId: Id | null
+  state?: 'present' | 'deleted'
+  whole?: boolean
+}
+
+/**
+ * Answers the shop's last change number and makes this transaction its only writer of numbers until
+ * it ends. Call it when all checking is done: nothing slow may follow (sync.md section 1). Waits 2 s
+ * at most, then fails with PostgreSQL's 55P03: tell the phone to retry.
+ */
+export async function lockShop(tx: ShopTx): Promise<number> {
+  const { rows } = await sql<{ seq: number }>`select lock_counter(${tx.shopId}) as seq`.execute(tx)
+  return Number(rows[0]?.seq)
+}
+
+/** Answers the shop's last change number without locking it. */
+export async function lastChange(tx: ShopTx): Promise<number> {
+  const row = await tx
+    .selectFrom('shopCounter')
+    .select('seq')
+    .where('shopId', '=', tx.shopId)
+    .executeTakeFirst()
+  return row?.seq ?? 0
+}
+
+/**
+ * Gives the rows their change numbers in the order given and tells the listeners once, at commit.
+ * Answers the last number (the shop's present one for an empty list). Every insert, update or delete
+ * of a pulled table needs its number in the same transaction, or the commit is refused (FB002).
+ */
+export async function takeChanges(tx: ShopTx, changes: readonly Change[]): Promise<number> {
+  const { rows } = await sql<{ last: number | null }>`
+    select max(seq) as last from take_changes(${tx.shopId}, ${JSON.stringify(changes)}::jsonb)
+  `.execute(tx)
+  return rows[0]?.last ?? (await lastChange(tx))
+}
+
+/** Answers the next `count` job numbers, `J-0001` and on; a rollback gives them back. Locks the shop. */
+export async function takeJobNumbers(tx: ShopTx, count: number): Promise<string[]> {
+  const { rows } = await sql<{ number: string }>`
+    select number from take_job_numbers(${tx.shopId}, ${count}) as number
+  `.execute(tx)
+  return rows.map((row) => row.number)
+}
