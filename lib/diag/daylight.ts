@@ -2,7 +2,7 @@
  * Sunrise, sunset and civil twilight of one local day. suncalc finds the moments; this file is the only one
  * that may import it or hold a Date. Standard zeniths: 90.833 degrees for rise and set, 96 for civil twilight.
  */
-import { getTimes } from 'suncalc'
+import { getPosition, getTimes } from 'suncalc'
 
 /** Instants in milliseconds UTC; null when the moment does not come that day, with `never` saying why. */
 export type SunTimes = {
@@ -30,6 +30,10 @@ export function sunTimes(lat: number, lon: number, dayMs: number): SunTimes {
   }
   return { ...sun, never: never(sun, times.alwaysUp === true) }
 }
+
+/** Apparent height of the sun over the horizon in degrees, refraction included, at an instant (ms). */
+export const sunHeight = (lat: number, lon: number, atMs: number): number =>
+  getPosition(new Date(atMs), lat, lon).altitude
 
 /** Minutes left to work: leave-by minus now, leave-by = civil dusk - ride-out - margin (rule R6). Null without dusk. */
 export function minutesToLeaveBy(at: {
