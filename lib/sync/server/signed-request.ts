@@ -1,0 +1,47 @@
+import { createHash } from 'node:crypto'
+import { type Id, id } from '@/lib/model/id'
+import { HEADERS, signedText } from '@/lib/sync/protocol/device'
+
+/** What a signed request says of itself, before anybody looked whether it is true (P18). */
+export type Claim = {
+  shopId: Id
+  personId: Id
+  deviceId: Id
+  /** The op numbers the body holds, or null for none. */
+  dseq: { first: number; last: number } | null
+  /** The text that was signed, and the raw r||s of 64 bytes. */
+  text: string
+  signature: Buffer
+}
+
+const DSEQ = /^([1-9]\d{0,14})-([1-9]\d{0,14})$/
+const SIGNATURE = /^[A-Za-z0-9_-]{86}$/
+
+function dseqOf(text: string): Claim['dseq'] | undefined {
+  if (text === '-') return null
+  const match = DSEQ.exec(text)
+  if (!match) return undefined
+  const [first, last] = [Number(match[1]), Number(match[2])]
+  return first <= last ? { first, last } : undefined
+}
+
+/** Reads the signing headers over these bytes as sent; null when one is missing or malformed. */
+export function readClaim(headers: Headers, body: Uint8Array): Claim | null {
+  const shop = headers.get(HEADERS.shop) ?? ''
+  const person = headers.get(HEADERS.person) ?? ''
+  const device = headers.get(HEADERS.device) ?? ''
+  const dseqText = headers.get(HEADERS.dseq) ?? ''
+  const signature = headers.get(HEADERS.signature) ?? ''
+  if (![shop, person, device].every((value) => id.safeParse(value).success)) return null
+  const dseq = dseqOf(dseqText)
+  if (dseq === undefined || !SIGNATURE.test(signature)) return null
+  const bodyHash = createHash('sha256').update(body).digest('base64url')
+  return {
+    shopId: shop.toLowerCase(),
+    personId: person.toLowerCase(),
+    deviceId: device.toLowerCase(),
+    dseq,
+    text: signedText({ shop, person, device, dseq: dseqText, bodyHash }),
+    signature: Buffer.from(signature, 'base64url'),
+  }
+}
