@@ -1,12 +1,60 @@
 'use client'
 
-import { FieldRouter } from './router'
+import { useSyncExternalStore } from 'react'
+import { StoreProvider } from '@/components/store/store-provider'
+import { useSession } from '@/components/store/use-session'
+import { Screen } from '@/components/ui/screen'
+import { routeOf } from './route'
+import { FieldRouter, useRoute } from './router'
+import { Screens } from './screens'
+import { Shell } from './shell'
+import { SignedOut } from './signed-out'
 
-/** The field app: everything under /field. */
+const never = () => () => undefined
+
+/** The field app: everything under /field. The one static document holds no screen; the phone draws it. */
 export function FieldApp() {
+  const onPhone = useSyncExternalStore<boolean>(
+    never,
+    () => true,
+    () => false,
+  )
+  if (!onPhone) {
+    return <Opening />
+  }
   return (
     <FieldRouter>
-      <p>Opening what this phone holds.</p>
+      <StoreProvider>
+        <Inside />
+      </StoreProvider>
     </FieldRouter>
+  )
+}
+
+function Inside() {
+  const session = useSession()
+  const { path } = useRoute()
+  const route = routeOf(path)
+  if (session.kind === 'opening') {
+    return <Opening />
+  }
+  return (
+    <Shell route={route}>
+      {session.kind === 'signedOut' && route.name !== 'about' ? (
+        <SignedOut />
+      ) : (
+        <Screens route={route} />
+      )}
+    </Shell>
+  )
+}
+
+function Opening() {
+  return (
+    <main className="flex min-h-dvh flex-col">
+      <Screen title="Farbench">
+        <p className="text-ink2">Opening what this phone holds.</p>
+      </Screen>
+    </main>
   )
 }

@@ -1,0 +1,152 @@
+'use client'
+
+import { useState } from 'react'
+import { useBook } from '@/components/store/use-book'
+import { useDraft } from '@/components/store/use-draft'
+import { useRecord } from '@/components/store/use-record'
+import { useShop } from '@/components/store/use-rows'
+import { useStamp } from '@/components/store/use-stamp'
+import { announce } from '@/components/ui/announce'
+import { Hold } from '@/components/ui/hold'
+import { Key } from '@/components/ui/key'
+import { Screen } from '@/components/ui/screen'
+import { jobHref } from '../route'
+import { useRoute } from '../router'
+import { ComplaintStep } from './complaint-step'
+import {
+  EMPTY_INTAKE,
+  INTAKE_KEY,
+  type IntakeDraft,
+  type IntakeStep,
+  missingFrom,
+  STEPS,
+} from './intake-draft'
+import { MachineStep } from './machine-step'
+import { opsOf } from './open-job'
+import { PeopleStep } from './people-step'
+import { PlaceStep } from './place-step'
+
+const TITLES: Record<IntakeStep, string> = {
+  people: 'People first',
+  machine: 'Which machine?',
+  complaint: 'The complaint',
+  place: 'Where is it?',
+}
+
+/** A new job in four steps, kept to the keystroke. */
+export function IntakeScreen() {
+  const { value: draft, set, clear, ready } = useDraft<IntakeDraft>(INTAKE_KEY, EMPTY_INTAKE)
+  const { go } = useRoute()
+  const save = useOpenJob(draft)
+  const [told, setTold] = useState(false)
+  const at = STEPS.indexOf(draft.step)
+  const missing = missingFrom(draft, draft.step)
+  const change = (next: Partial<IntakeDraft>) => set({ ...draft, ...next })
+  const move = (by: number) => {
+    const step = STEPS[at + by]
+    if (step !== undefined) {
+      setTold(false)
+      change({ step })
+      window.scrollTo(0, 0)
+      document.getElementById('screen-title')?.focus()
+    }
+  }
+  const onward = () => {
+    if (missing !== null) {
+      setTold(true)
+      return
+    }
+    if (at < STEPS.length - 1) {
+      move(1)
+    } else {
+      save.run()
+    }
+  }
+  const Step = {
+    people: PeopleStep,
+    machine: MachineStep,
+    complaint: ComplaintStep,
+    place: PlaceStep,
+  }[draft.step]
+  return (
+    <Screen
+      title={TITLES[draft.step]}
+      second={`New job, step ${at + 1} of ${STEPS.length}. Saved on this phone as you type.`}
+      foot={
+        <>
+          <p role="status" className="font-bold text-nogo empty:hidden">
+            {told ? missing : save.problem}
+          </p>
+          <div className="flex gap-2">
+            {at > 0 ? (
+              <Key className="key-tall" onClick={() => move(-1)}>
+                Back
+              </Key>
+            ) : null}
+            <Key kind="main" disabled={!ready || save.busy} onClick={onward}>
+              {onwardWords(draft)}
+            </Key>
+          </div>
+        </>
+      }
+    >
+      <Step draft={draft} change={change} />
+      {at === 0 && draft !== EMPTY_INTAKE ? (
+        <details>
+          <summary className="flex min-h-target items-center text-second font-bold">
+            Throw this new job away
+          </summary>
+          <Hold
+            label="Throw it away"
+            question="Throw away what was typed?"
+            confirmLabel="Throw away"
+            onConfirm={() => {
+              clear()
+                .then(() => go('/field', { replace: true }))
+                .catch(() => announce('Could not be thrown away.', 'assertive'))
+            }}
+          />
+        </details>
+      ) : null}
+    </Screen>
+  )
+}
+
+function onwardWords(draft: IntakeDraft): string {
+  if (draft.step === 'place') {
+    return 'Open the job'
+  }
+  return draft.step === 'people' && draft.dangers.length === 0 ? 'All well, go on' : 'Go on'
+}
+
+/** Records the machine, the job and its first lines in one piece, then goes to the job. */
+function useOpenJob(draft: IntakeDraft) {
+  const record = useRecord()
+  const stamp = useStamp()
+  const shop = useShop()
+  const { index } = useBook()
+  const { go } = useRoute()
+  const [busy, setBusy] = useState<boolean>(false)
+  const [problem, setProblem] = useState<string | null>(null)
+  const open = async () => {
+    const symptomName =
+      draft.symptom === null ? null : (index?.symptoms.get(draft.symptom)?.name ?? null)
+    const { jobId, ops } = opsOf(draft, {
+      stamp,
+      symptomName,
+      emergencyNumber: shop?.emergencyNumber ?? null,
+    })
+    await record(ops, { clearDrafts: [INTAKE_KEY] })
+    announce('Job opened and saved on this phone.')
+    go(jobHref(jobId), { replace: true })
+  }
+  const run = () => {
+    setBusy(true)
+    setProblem(null)
+    open().catch(() => {
+      setBusy(false)
+      setProblem('Could not be saved. Nothing typed is lost: try again.')
+    })
+  }
+  return { run, busy, problem }
+}

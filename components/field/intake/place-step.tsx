@@ -1,0 +1,217 @@
+'use client'
+
+import { useState } from 'react'
+import { usePorts } from '@/components/store/store-provider'
+import { useJobs } from '@/components/store/use-rows'
+import { useStamp } from '@/components/store/use-stamp'
+import { Caution } from '@/components/ui/caution'
+import { Field } from '@/components/ui/field'
+import { Figure } from '@/components/ui/figure'
+import { Key } from '@/components/ui/key'
+import { RuleEdge } from '@/components/ui/rule-edge'
+import type { Place } from '@/lib/model/place'
+import type { PositionProblem } from '@/lib/ports/position'
+import { type Doubt, doubtsOf, inDegrees, inMinutes, type Point } from '../place-doubt'
+import { type PlaceProblem, parsePlace } from '../place-text'
+import { span } from '../times'
+import { useNow } from '../use-now'
+import type { StepProps } from './intake-draft'
+
+const FIX_WORDS: Record<PositionProblem['kind'], string> = {
+  refused:
+    'This phone does not let the app use its position. Allow it in the phone’s settings, or type it.',
+  notHeard: 'No satellite heard. Go where the sky is open, or type the position.',
+  tooSlow: 'No position within 25 seconds. Try again under open sky, or type it.',
+  noReceiver: 'This device has no position receiver. Type the position.',
+}
+
+const TYPED_WORDS: Record<PlaceProblem['kind'], string> = {
+  empty: '',
+  notTwo: 'Two numbers are needed, each with N or S and E or W: 47.1 N 93.2 W.',
+  twoOfOneKind: 'One must be N or S, the other E or W.',
+  latitudeRange: 'North and south end at 90 degrees.',
+  longitudeRange: 'East and west end at 180 degrees.',
+  minutesRange: 'Minutes and seconds go up to 59, and only the last number may have decimals.',
+}
+
+/** Where it stands: a fix with accuracy and age, or typed; and the air. */
+export function PlaceStep({ draft, change }: StepProps) {
+  const near = useLastPoint()
+  return (
+    <>
+      <FixPart place={draft.place} onPlace={(place) => change({ place, placeText: '' })} />
+      <TypedPart
+        text={draft.placeText}
+        near={near}
+        onText={(placeText, place) =>
+          change({ placeText, ...(place === undefined ? {} : { place }) })
+        }
+      />
+      {draft.place === null ? null : <PlaceShown place={draft.place} />}
+      <Field
+        label="The place in words"
+        hint="Trail, marker, what stands there."
+        value={draft.placeWords}
+        onChange={(placeWords) => change({ placeWords })}
+        maxLength={200}
+        autoCapitalize="sentences"
+      />
+      <RuleEdge>Air</RuleEdge>
+      <Field
+        label="Air temperature, °C"
+        hint="If you know it. A meter and a coil read differently in the cold."
+        value={draft.air}
+        onChange={(air) => change({ air: air.slice(0, 6) })}
+        inputMode="text"
+        figures
+      />
+      <Field
+        label="Weather"
+        value={draft.weather}
+        onChange={(weather) => change({ weather })}
+        maxLength={120}
+        autoCapitalize="sentences"
+      />
+    </>
+  )
+}
+
+function useLastPoint(): Point | null {
+  return useJobs()?.find((job) => job.place !== null)?.place ?? null
+}
+
+function FixPart({ place, onPlace }: { place: Place | null; onPlace: (place: Place) => void }) {
+  const { position } = usePorts()
+  const [looking, setLooking] = useState<boolean>(false)
+  const [problem, setProblem] = useState<string | null>(null)
+  const look = async () => {
+    setLooking(true)
+    setProblem(null)
+    const answer = await position.fix()
+    setLooking(false)
+    if (!answer.ok) {
+      setProblem(FIX_WORDS[answer.problem.kind])
+      return
+    }
+    onPlace({ ...answer.value, source: 'fix', asTyped: null, words: null })
+  }
+  return (
+    <div className="grid gap-2">
+      <Key
+        kind="plate"
+        disabled={looking}
+        onClick={() => {
+          look().catch(() => setLooking(false))
+        }}
+      >
+        {looking
+          ? 'Listening for satellites'
+          : place?.source === 'fix'
+            ? 'Take it again'
+            : 'Take my position'}
+      </Key>
+      <p role="status" className="text-second font-bold text-nogo empty:hidden">
+        {problem}
+      </p>
+    </div>
+  )
+}
+
+function TypedPart(props: {
+  text: string
+  near: Point | null
+  onText: (text: string, place?: Place | null) => void
+}) {
+  const stamp = useStamp()
+  const read = parsePlace(props.text)
+  const type = (text: string) => {
+    const next = parsePlace(text)
+    if (!next.ok) {
+      // What the fix gave stays until a typed position can be read.
+      props.onText(text)
+      return
+    }
+    props.onText(text, typedPlace(next.value, text, stamp.now()))
+  }
+  const doubts = read.ok ? doubtsOf(read.value, props.near) : []
+  return (
+    <>
+      <Field
+        label="Or type it"
+        hint="47.1 N 93.2 W, or 47 06.0 N 93 12.0 W, or 47 06 00 N 93 12 00 W."
+        value={props.text}
+        onChange={type}
+        maxLength={120}
+        autoCapitalize="characters"
+        figures
+        error={read.ok ? null : TYPED_WORDS[read.problem.kind] || null}
+      />
+      {doubts.map((doubt) => (
+        <DoubtShown
+          key={doubt.kind}
+          doubt={doubt}
+          onTake={(point) =>
+            props.onText(inDegrees(point), typedPlace(point, inDegrees(point), stamp.now()))
+          }
+        />
+      ))}
+    </>
+  )
+}
+
+const typedPlace = (point: Point, text: string, at: string): Place => ({
+  latitude: point.latitude,
+  longitude: point.longitude,
+  source: 'typed',
+  accuracyMetres: null,
+  at,
+  asTyped: text.trim(),
+  words: null,
+})
+
+const DOUBT_WORDS: Record<Doubt['kind'], string> = {
+  otherHalf: 'With the other N/S or E/W it lies by the last job.',
+  swapped: 'With the two numbers swapped it lies by the last job.',
+  readAsMinutes: 'Read as degrees and minutes it lies by the last job.',
+  far: 'That is far from the last job. Read the digits back one by one.',
+  noLetters: 'No N, S, E or W: read as north and east.',
+}
+
+function DoubtShown({ doubt, onTake }: { doubt: Doubt; onTake: (point: Point) => void }) {
+  const { meant, km } = doubt
+  return (
+    <div className="grid gap-2">
+      <Caution signal="NOTICE">
+        {DOUBT_WORDS[doubt.kind]}
+        {km !== null && meant === null ? ` ${Math.round(km)} km.` : ''}
+      </Caution>
+      {meant === null ? null : (
+        <Key small quiet onClick={() => onTake(meant)}>
+          Take {inDegrees(meant)}
+        </Key>
+      )}
+    </div>
+  )
+}
+
+/** A position in the two ways people read it out, with how good and how old it is. */
+export function PlaceShown({ place }: { place: Place }) {
+  const now = useNow()
+  return (
+    <div className="grid gap-1">
+      <p className="figures text-row">{inDegrees(place)}</p>
+      <p className="figures text-second text-ink2">{inMinutes(place)}</p>
+      <p className="text-second text-ink2">
+        {place.source === 'fix' ? (
+          <>
+            Position fix, good to{' '}
+            <Figure value={Math.round(place.accuracyMetres ?? 0)} unit="m" size="body" />,{' '}
+            {span(now - Date.parse(place.at))} old.
+          </>
+        ) : (
+          `Typed as ${place.asTyped ?? 'given'}, ${span(now - Date.parse(place.at))} ago.`
+        )}
+      </p>
+    </div>
+  )
+}

@@ -1,0 +1,171 @@
+'use client'
+
+import { type ReactNode, useEffect, useRef } from 'react'
+import { useJob, useMachines, useModels } from '@/components/store/use-rows'
+import { useUnsent } from '@/components/store/use-unsent'
+import { useAppUpdate } from '@/components/store/use-updates'
+import { announce } from '@/components/ui/announce'
+import { classes } from '@/components/ui/class-names'
+import { JobTag } from '@/components/ui/job-tag'
+import { Key } from '@/components/ui/key'
+import { LiveRegion } from '@/components/ui/live-region'
+import { Tabs } from '@/components/ui/tabs'
+import { TaskHeader } from '@/components/ui/task-header'
+import { WitnessMark, type WitnessState } from '@/components/ui/witness-mark'
+import { backOf, isForm, type JobTab, jobHref, type Route } from './route'
+import { ThemeKey, useThemeByTheSun } from './theme-menu'
+import { machineName } from './words'
+
+const TABS: readonly JobTab[] = ['job', 'checks', 'log', 'parts']
+
+/** Everything around a screen: skip link, header, tabs, live regions, the bar that offers a new version. */
+export function Shell({ route, children }: { route: Route; children: ReactNode }) {
+  useThemeByTheSun()
+  useSendingNews()
+  const tab = TABS.find((name) => name === route.name)
+  return (
+    <div
+      className={classes(
+        'mx-auto flex min-h-dvh max-w-column flex-col',
+        tab !== undefined && 'has-tabs',
+      )}
+    >
+      <a
+        href="#main"
+        className="visually-hidden focus:[clip-path:none] focus:static! focus:h-auto! focus:w-auto! focus:p-3"
+      >
+        Skip to the screen
+      </a>
+      <header className="safe-sides flex flex-wrap items-center gap-2 pt-[max(0.5rem,env(safe-area-inset-top))] pb-2">
+        <Header route={route} onTab={tab !== undefined} />
+      </header>
+      {isForm(route) ? null : <UpdateBar />}
+      <main id="main" className="flex flex-1 flex-col">
+        {children}
+      </main>
+      {tab !== undefined && 'jobId' in route ? (
+        <div className="tabs-bar safe-bottom bg-ground">
+          <Tabs
+            label="Job"
+            tabs={TABS.map((name) => ({
+              label: name,
+              href: jobHref(route.jobId, name === 'job' ? '' : name),
+              current: name === tab,
+            }))}
+          />
+        </div>
+      ) : null}
+      <LiveRegion />
+    </div>
+  )
+}
+
+function Header({ route, onTab }: { route: Route; onTab: boolean }) {
+  const back = backOf(route)
+  const tag = 'jobId' in route ? <TagOf jobId={route.jobId} /> : <Name />
+  if (back !== null) {
+    return (
+      <div className="w-full">
+        <TaskHeader backHref={back.href} backLabel={back.label} tag={tag} witness={<Witness />} />
+      </div>
+    )
+  }
+  return (
+    <>
+      <div className="min-w-0 flex-1">{tag}</div>
+      {onTab ? null : <ThemeKey />}
+      <Witness />
+    </>
+  )
+}
+
+const Name = () => <p className="caps text-plate">Farbench</p>
+
+function TagOf({ jobId }: { jobId: string }) {
+  const job = useJob(jobId)
+  const machine = useMachines()?.find((m) => m.id === job?.machineId)
+  const models = useModels()
+  if (!job) {
+    return <Name />
+  }
+  return (
+    <JobTag
+      complaint={job.complaint.words}
+      number={job.number}
+      machine={machineName(machine, models)}
+      href={jobHref(jobId)}
+    />
+  )
+}
+
+function Witness() {
+  const unsent = useUnsent()
+  const sending = unsent.sending
+  return (
+    <WitnessMark
+      id="witness"
+      href="/field/unsent"
+      state={witnessState(unsent)}
+      count={unsent.count}
+      progress={sending === null || sending.total === 0 ? 0 : sending.done / sending.total}
+    />
+  )
+}
+
+/** Stuck work outshouts sending, sending outshouts waiting. */
+export function witnessState(of: {
+  count: number
+  stuckCount: number
+  sending: unknown
+}): WitnessState {
+  if (of.stuckCount > 0) {
+    return 'stuck'
+  }
+  if (of.count === 0) {
+    return 'whole'
+  }
+  return of.sending === null ? 'broken' : 'sending'
+}
+
+/** Says when the last thing was accepted (with one short buzz) and, at once, when something is stuck. */
+function useSendingNews(): void {
+  const { count, stuckCount, storageKept } = useUnsent()
+  const before = useRef<{ count: number; stuck: number }>({ count: 0, stuck: 0 })
+  useEffect(() => {
+    const was = before.current
+    before.current = { count, stuck: stuckCount }
+    if (was.count > 0 && count === 0) {
+      announce('Everything is at the shop.')
+      if ('vibrate' in navigator) {
+        navigator.vibrate(30)
+      }
+    } else if (count > was.count) {
+      announce(`${count} not sent. All of it is saved on this phone.`)
+    }
+    if (stuckCount > was.stuck) {
+      announce(`${stuckCount} stuck. Open the list of unsent work.`, 'assertive')
+    }
+  }, [count, stuckCount])
+  useEffect(() => {
+    if (storageKept === false && count > 0) {
+      announce('The phone may clear this store when it runs short of room.', 'assertive')
+    }
+  }, [storageKept, count])
+}
+
+function UpdateBar() {
+  const { waiting, apply } = useAppUpdate()
+  if (!waiting) {
+    return null
+  }
+  return (
+    <div className="safe-sides flex flex-wrap items-center gap-3 border-y-2 border-ink py-2">
+      <p className="min-w-40 flex-1 font-bold">
+        New version is ready. Everything recorded is kept.
+      </p>
+      <Key small onClick={apply}>
+        Take it now
+      </Key>
+    </div>
+  )
+}
