@@ -1,7 +1,22 @@
 import type { CodeBookItem, FaultItem } from '@/lib/model/code-book'
+import { AIR_CHECKS } from './checks-air'
+import { CARBURETTOR_CHECKS } from './checks-carburettor'
 import { COIL_CHECKS } from './checks-coil'
+import { ENGINE_CHECKS } from './checks-engine'
+import { INJECTOR_CHECKS } from './checks-injector'
+import { POWER_CHECKS } from './checks-power'
+import { PUMP_CHECKS } from './checks-pump'
+import { SIGNAL_CHECKS } from './checks-signal'
+import { SPARK_CHECKS } from './checks-spark'
+import { TANK_CHECKS } from './checks-tank'
 import type { FaultData } from './fault-data'
+import { AIR_FAULTS } from './faults-air'
+import { CARBURETTOR_FAULTS } from './faults-carburettor'
+import { ENGINE_FAULTS } from './faults-engine'
+import { FUEL_FAULTS } from './faults-fuel'
 import { IGNITION_FAULTS } from './faults-ignition'
+import { POWER_FAULTS } from './faults-power'
+import { SIGNAL_FAULTS } from './faults-signal'
 import { FEATURE_ITEMS } from './features'
 import { FAILURES } from './fmi'
 import { PCODES } from './pcodes'
@@ -13,7 +28,15 @@ import { SWAPS } from './swaps'
 import { SYMPTOMS } from './symptoms'
 import { WORDS } from './words'
 
-const FAULTS: FaultData[] = [...IGNITION_FAULTS]
+const FAULTS: FaultData[] = [
+  ...FUEL_FAULTS,
+  ...CARBURETTOR_FAULTS,
+  ...IGNITION_FAULTS,
+  ...SIGNAL_FAULTS,
+  ...POWER_FAULTS,
+  ...AIR_FAULTS,
+  ...ENGINE_FAULTS,
+]
 
 /** The whole code book, in the order it is published. Faults get their shares from `shares.ts`. */
 export const BOOK_ITEMS: CodeBookItem[] = [
@@ -22,7 +45,16 @@ export const BOOK_ITEMS: CodeBookItem[] = [
   ...SETUPS,
   ...SYMPTOMS,
   ...FAULTS.map(withShares),
+  ...TANK_CHECKS,
+  ...PUMP_CHECKS,
+  ...INJECTOR_CHECKS,
+  ...CARBURETTOR_CHECKS,
   ...COIL_CHECKS,
+  ...SPARK_CHECKS,
+  ...SIGNAL_CHECKS,
+  ...POWER_CHECKS,
+  ...AIR_CHECKS,
+  ...ENGINE_CHECKS,
   ...SWAPS,
   ...FAILURES,
   ...SPNS,
