@@ -136,10 +136,11 @@ export function toBoardJob(row: BoardRow): BoardJob {
 
 type Named = Pick<BoardRow, 'unitNumber' | 'makerTyped' | 'modelTyped' | 'maker' | 'model'>
 
-/** Maker, model and unit in words, as typed where there is no model of the shop's. */
+/** Unit, maker and model in words, as typed where there is no model of the shop's. */
 export function machineWords(row: Named): string {
   const maker = row.maker ?? row.makerTyped
   const model = row.model ?? row.modelTyped
-  const name = [maker, model].filter(Boolean).join(' ') || 'Machine not named'
-  return row.unitNumber ? `${name}, unit ${row.unitNumber}` : name
+  const made = [maker, model].filter(Boolean).join(' ')
+  const unit = row.unitNumber ? `Unit ${row.unitNumber}` : ''
+  return [unit, made].filter(Boolean).join(', ') || 'Machine without a name'
 }

@@ -1,0 +1,207 @@
+import { type RawBuilder, type SqlBool, sql } from 'kysely'
+import type { Id } from '@/lib/model/id'
+import type { Actor } from '@/lib/model/person'
+import type { Role } from '@/lib/model/role'
+import type { ShopTx } from '../client'
+import type { ChangeEntity } from './changes'
+import { versionsByNumber } from './code-book'
+import { jobsById, onPhoneOf } from './jobs'
+import { logEntriesById } from './log-entries'
+import { listBags, listMeters, listModels, machinesById } from './machines'
+import { listPartRequests } from './part-requests'
+import { findMembership, peopleById } from './people'
+import { photosByHash } from './photos'
+import { getShop } from './shop'
+
+/** Where a device stands: the same shape as the sync protocol's cursor (P12). */
+export type LogCursor = { epoch: string; shop: Id; scopeVersion: number; seq: number }
+
+/** One row of a page. `evict`: it left this person's scope; then and for `deleted` the row is null. */
+export type LogPageRow = {
+  seq: number
+  entity: ChangeEntity
+  id: string
+  jobId: Id | null
+  state: 'present' | 'deleted' | 'evict'
+  row: unknown
+}
+
+export type LogPage =
+  | { kind: 'page'; rows: LogPageRow[]; cursor: LogCursor; more: boolean }
+  | { kind: 'reset'; cursor: LogCursor }
+  | { kind: 'signIn' }
+
+/** A page ends at 256 KB of rows (P7). */
+const PAGE_BYTES = 256 * 1024
+
+/**
+ * Answers what changed for this person after the cursor, in change order, each row once at its last
+ * change (P7). The roles are read from the membership, never from the caller (P11). Null for a cursor:
+ * from the start. `reset`: the cursor is of another epoch, shop or scope, too old, or of the future.
+ * `signIn`: there is no live membership. The cursor of an empty page moves on all the same.
+ */
+export async function pullPage(
+  tx: ShopTx,
+  {
+    actor,
+    cursor,
+    limit,
+  }: { actor: Pick<Actor, 'personId'>; cursor: LogCursor | null; limit: number },
+): Promise<LogPage> {
+  const membership = await findMembership(tx, actor.personId)
+  if (!membership) return { kind: 'signIn' }
+  const counter = await readCounter(tx)
+  const { epoch, seq: upTo } = counter
+  const start = { epoch, shop: tx.shopId, scopeVersion: membership.scopeVersion, seq: 0 }
+  if (cursor !== null && !fits(cursor, start, counter)) return { kind: 'reset', cursor: start }
+  const after = cursor?.seq ?? 0
+  const scope = { shopId: tx.shopId, personId: actor.personId, roles: membership.roles }
+  const heads = await readHeads(tx, scope, { after, upTo, limit: limit + 1 })
+  const { rows, isCut } = cutPage(await withRows(tx, heads.slice(0, limit)))
+  const more = isCut || heads.length > limit
+  const seq = more ? (rows.at(-1)?.seq ?? after) : upTo
+  return { kind: 'page', rows, cursor: { ...start, seq }, more }
+}
+
+/** Answers up to `limit` changes after `seq` as they were numbered, for the desk's stream of events. */
+export async function changesAfter(
+  tx: ShopTx,
+  { seq, limit }: { seq: number; limit: number },
+): Promise<{ seq: number; entity: string; id: string; jobId: Id | null; state: string }[]> {
+  return await tx
+    .selectFrom('changeLog')
+    .select(['seq', 'entity', 'entityId as id', 'jobId', 'state'])
+    .where('shopId', '=', tx.shopId)
+    .where('seq', '>', seq)
+    .orderBy('seq')
+    .limit(limit)
+    .execute()
+}
+
+type Counter = { epoch: string; seq: number; floorSeq: number }
+type Scope = { shopId: Id; personId: Id; roles: readonly Role[] }
+type Head = Omit<LogPageRow, 'row'>
+
+async function readCounter(tx: ShopTx): Promise<Counter> {
+  return await tx
+    .selectFrom('shopCounter')
+    .select(['epoch', 'seq', 'floorSeq'])
+    .where('shopId', '=', tx.shopId)
+    .executeTakeFirstOrThrow()
+}
+
+function fits(cursor: LogCursor, start: LogCursor, counter: Counter): boolean {
+  const isOurs =
+    cursor.epoch === start.epoch &&
+    cursor.shop === start.shop &&
+    cursor.scopeVersion === start.scopeVersion
+  const isReadable =
+    cursor.seq <= counter.seq && (cursor.seq === 0 || cursor.seq >= counter.floorSeq)
+  return isOurs && isReadable
+}
+
+/**
+ * The last change of each entity within (after, upTo]. The counter was read by an earlier statement, so
+ * every number up to it is visible in this one. A row that is gone or out of scope is told only to
+ * those who could hold it: it had a number at or before their cursor.
+ */
+async function readHeads(
+  tx: ShopTx,
+  scope: Scope,
+  { after, upTo, limit }: { after: number; upTo: number; limit: number },
+): Promise<Head[]> {
+  if (after >= upTo) return []
+  const { rows } = await sql<Head>`
+    select c.seq, c.entity, c.entity_id as id, c.job_id,
+      case when v.visible then c.state else 'evict' end as state
+    from change_log c cross join lateral (select ${isVisible(scope)} as visible) v
+    where c.shop_id = ${scope.shopId} and c.seq > ${after} and c.seq <= ${upTo}
+      and not exists (select 1 from change_log l
+        where l.shop_id = c.shop_id and l.entity = c.entity and l.entity_id = c.entity_id
+          and l.seq > c.seq and l.seq <= ${upTo})
+      and ((v.visible and c.state = 'present')
+        or exists (select 1 from change_log b
+          where b.shop_id = c.shop_id and b.entity = c.entity and b.entity_id = c.entity_id
+            and b.seq <= ${after}))
+    order by c.seq
+    limit ${limit}
+  `.execute(tx)
+  return rows
+}
+
+const FIELD: readonly Role[] = ['mechanic', 'guide']
+const ALL: readonly Role[] = ['dispatcher', 'owner']
+
+/** What each role's devices hold (P11); a person's roles are a set, so it is the union. */
+function isVisible(scope: Scope): RawBuilder<SqlBool> {
+  const has = (roles: readonly Role[]) => scope.roles.some((role) => roles.includes(role))
+  if (has(ALL)) return sql<SqlBool>`true`
+  const parts: RawBuilder<SqlBool>[] = []
+  if (scope.roles.length > 0) {
+    parts.push(sql`c.entity in ('shop', 'person', 'machineModel', 'machine', 'book')`)
+  }
+  if (has(['parts'])) parts.push(sql`c.entity = 'partRequest'`)
+  if (has(FIELD)) {
+    parts.push(
+      sql`c.entity = 'meterProfile'`,
+      sql`c.entity = 'bag' and exists (select 1 from bag g where g.shop_id = ${scope.shopId}
+        and g.id::text = c.entity_id and g.person_id = ${scope.personId})`,
+      sql`c.entity in ('job', 'logEntry', 'partRequest', 'photo')
+        and ${onPhoneOf(scope, sql.ref('c.jobId'))}`,
+    )
+  }
+  return parts.length === 0
+    ? sql<SqlBool>`false`
+    : sql<SqlBool>`(${sql.join(
+        parts.map((part) => sql`(${part})`),
+        sql` or `,
+      )})`
+}
+
+type Keyed = readonly [id: string, row: unknown]
+const keyed = <R>(rows: readonly R[], key: (row: R) => string): Keyed[] =>
+  rows.map((row) => [key(row), row])
+
+/** How the rows of each entity are read, as the phone and the desk are to have them. */
+const READ: Record<ChangeEntity, (tx: ShopTx, ids: string[]) => Promise<Keyed[]>> = {
+  shop: async (tx) => keyed([await getShop(tx)], (row) => row.id),
+  person: async (tx, ids) => keyed(await peopleById(tx, ids), (row) => row.id),
+  machineModel: async (tx, ids) => keyed(await listModels(tx, ids), (row) => row.id),
+  machine: async (tx, ids) => keyed(await machinesById(tx, ids), (row) => row.id),
+  meterProfile: async (tx, ids) => keyed(await listMeters(tx, ids), (row) => row.id),
+  bag: async (tx, ids) => keyed(await listBags(tx, ids), (row) => row.id),
+  job: async (tx, ids) => keyed(await jobsById(tx, ids), (row) => row.id),
+  logEntry: async (tx, ids) => keyed(await logEntriesById(tx, ids), (row) => row.id),
+  partRequest: async (tx, ids) => keyed(await listPartRequests(tx, { ids }), (row) => row.id),
+  photo: async (tx, hashes) => keyed(await photosByHash(tx, hashes), (row) => row.hash),
+  book: async (tx, ids) =>
+    keyed(await versionsByNumber(tx, ids.map(Number)), (row) => String(row.version)),
+}
+
+/** Puts the rows to the heads. One deleted since then is told as such: its own number follows. */
+async function withRows(tx: ShopTx, heads: readonly Head[]): Promise<LogPageRow[]> {
+  const wanted = new Map<ChangeEntity, string[]>()
+  for (const head of heads) {
+    if (head.state !== 'present') continue
+    const ids = wanted.get(head.entity) ?? []
+    wanted.set(head.entity, ids)
+    ids.push(head.id)
+  }
+  const found = new Map<ChangeEntity, Map<string, unknown>>()
+  for (const [entity, ids] of wanted) found.set(entity, new Map(await READ[entity](tx, ids)))
+  return heads.map((head) => {
+    if (head.state !== 'present') return { ...head, row: null }
+    const row = found.get(head.entity)?.get(head.id)
+    return row === undefined ? { ...head, state: 'deleted', row: null } : { ...head, row }
+  })
+}
+
+/** At least one row, and no more than fit the page. */
+function cutPage(rows: readonly LogPageRow[]): { rows: LogPageRow[]; isCut: boolean } {
+  let bytes = 0
+  const end = rows.findIndex((row, index) => {
+    bytes += Buffer.byteLength(JSON.stringify(row))
+    return index > 0 && bytes > PAGE_BYTES
+  })
+  return end === -1 ? { rows: [...rows], isCut: false } : { rows: rows.slice(0, end), isCut: true }
+}

@@ -1,0 +1,123 @@
+import { type Selectable, sql } from 'kysely'
+import type { Id } from '@/lib/model/id'
+import type { LogEntry, LogRow } from '@/lib/model/log-entry'
+import type { Result } from '@/lib/model/result'
+import type { Instant } from '@/lib/model/time'
+import { type ChainProblem, canonicalText, linkHash, verifyChain } from '../chain'
+import type { ShopTx } from '../client'
+import type { LogEntryTable } from '../tables/log-entry'
+import { lockShop } from './changes'
+
+/** Rows per insert statement: PostgreSQL takes 65,535 parameters, an entry has 18. */
+const CHUNK = 1000
+
+/**
+ * Appends entries to their jobs' chains in the order given and answers them with their places. Locks
+ * the shop's counter first, as the head of an insert-only chain cannot be locked. Ids must be new and
+ * jobs present. Take a change number (logEntry) for each.
+ */
+export async function appendLogEntries(
+  tx: ShopTx,
+  { entries, receivedAt }: { entries: readonly LogEntry[]; receivedAt: Instant },
+): Promise<LogRow[]> {
+  if (entries.length === 0) return []
+  await lockShop(tx)
+  const heads = await chainHeads(tx, [...new Set(entries.map((entry) => entry.jobId))])
+  const rows = entries.map((entry) => {
+    const head = heads.get(entry.jobId) ?? { order: 0, hash: null }
+    const order = head.order + 1
+    const canonical = canonicalText(recordOf(entry, { order, receivedAt, shop: tx.shopId }))
+    const hash = linkHash(head.hash, canonical)
+    heads.set(entry.jobId, { order, hash })
+    return { entry, order, canonical, prevHash: head.hash, hash }
+  })
+  for (let start = 0; start < rows.length; start += CHUNK) {
+    await tx
+      .insertInto('logEntry')
+      .values(
+        rows.slice(start, start + CHUNK).map(({ entry, order, ...link }) => {
+          const { body, ...columns } = entry
+          return {
+            shopId: tx.shopId,
+            ...columns,
+            kind: body.kind,
+            body: JSON.stringify(body),
+            orderNo: order,
+            receivedAt,
+            ...link,
+          }
+        }),
+      )
+      .execute()
+  }
+  return rows.map(({ entry, order, hash }) => ({ ...entry, receivedAt, order, hash }))
+}
+
+/** What the hash of an entry covers. */
+const recordOf = (entry: LogEntry, at: { order: number; receivedAt: Instant; shop: Id }) => ({
+  ...at,
+  entry,
+})
+
+async function chainHeads(tx: ShopTx, jobIds: Id[]) {
+  const { rows } = await sql<{ jobId: Id; order: number; hash: string }>`
+    select distinct on (job_id) job_id, order_no as order, hash from log_entry
+    where shop_id = ${tx.shopId} and job_id = any(${jobIds}::uuid[])
+    order by job_id, order_no desc
+  `.execute(tx)
+  return new Map<Id, { order: number; hash: string | null }>(rows.map((row) => [row.jobId, row]))
+}
+
+/** Answers a job's log in chain order. */
+export async function listLog(tx: ShopTx, jobId: Id): Promise<LogRow[]> {
+  const rows = await entries(tx).where('jobId', '=', jobId).orderBy('orderNo').execute()
+  return rows.map(toLogRow)
+}
+
+/** Answers the entries with these ids that are there, in no order. */
+export async function logEntriesById(tx: ShopTx, ids: readonly Id[]): Promise<LogRow[]> {
+  if (ids.length === 0) return []
+  return (await entries(tx).where('id', 'in', ids).execute()).map(toLogRow)
+}
+
+/** Answers which of these ids are entries, with the job each is of. */
+export async function jobsOfEntries(tx: ShopTx, ids: readonly Id[]): Promise<Map<Id, Id>> {
+  if (ids.length === 0) return new Map()
+  const rows = await tx
+    .selectFrom('logEntry')
+    .select(['id', 'jobId'])
+    .where('shopId', '=', tx.shopId)
+    .where('id', 'in', ids)
+    .execute()
+  return new Map(rows.map((row) => [row.id, row.jobId]))
+}
+
+/** Answers how many entries of the job's chain hold, or where it breaks: hash, order, or a column. */
+export async function verifyLog(tx: ShopTx, jobId: Id): Promise<Result<number, ChainProblem>> {
+  const rows = await entries(tx).where('jobId', '=', jobId).orderBy('orderNo').execute()
+  const links = rows.map((row) => ({ ...row, order: row.orderNo }))
+  return verifyChain(links, (link) => {
+    const { order, hash, receivedAt, ...entry } = toLogRow(link)
+    return link.canonical === canonicalText(recordOf(entry, { order, receivedAt, shop: tx.shopId }))
+  })
+}
+
+const entries = (tx: ShopTx) =>
+  tx.selectFrom('logEntry').selectAll().where('shopId', '=', tx.shopId)
+
+const toLogRow = (row: Selectable<LogEntryTable>): LogRow => ({
+  id: row.id,
+  jobId: row.jobId,
+  supersedes: row.supersedes,
+  happenedAt: row.happenedAt,
+  writtenAt: row.writtenAt,
+  zone: row.zone,
+  authorId: row.authorId,
+  deviceId: row.deviceId,
+  engineVersion: row.engineVersion,
+  bookVersion: row.bookVersion,
+  body: row.body,
+  receivedAt: row.receivedAt,
+  order: row.orderNo,
+  hash: row.hash,
+})
