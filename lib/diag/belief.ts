@@ -1,0 +1,148 @@
+/**
+ * The belief of rule R5: independent gated faults, given that at least one is present, under all the evidence
+ * of the job log. `why` splits the change of log-odds in the order of the log: each piece gets the change it
+ * makes after all earlier ones, so the pieces sum to the whole exactly; the chances do not depend on that order.
+ */
+import { SOMETHING_ELSE } from './book-index'
+import type { Case } from './case'
+import { evidenceOf } from './evidence'
+import type { About, Evidence, Multipliers } from './evidence-table'
+import { absorb, type Joint, type Summary, startJoint, summarise, type Term } from './joint'
+import { type Candidate, candidates } from './priors'
+
+/** One line of "why": `logRatio` is the change of this suspect's log-odds (natural log) by that piece. */
+export type Why = {
+  entryId: string | null
+  about: About
+  label: string
+  logRatio: number
+  saysNothing: boolean
+}
+
+/** A suspect with its own chance of being present (0 to 1), never rescaled; `prior` is that before evidence. */
+export type Suspect = {
+  fault: string
+  name: string
+  chance: number
+  prior: number
+  ruledOutBy: string | null
+  why: Why[]
+}
+
+export type Belief = {
+  /** By chance, ruled-out ones last; `somethingElse` is always among them. */
+  suspects: Suspect[]
+  chanceOfTwoOrMore: number
+  chanceOnlySomethingElse: number
+  notices: ('moreThanOneLikely' | 'maybeNotInList')[]
+}
+
+/** Above this chance the screen gives notice and the plan looks one action ahead (rule R5). */
+export const NOTICE_ABOVE = 0.25
+/** A suspect counts as ruled out below 1 of 100, if one piece alone took its odds down to a fifth or less. */
+export const RULED_OUT_BELOW = 0.01
+
+/** What was reckoned on the way to a belief: for outlooks and plans. */
+export type Reckoning = {
+  suspects: readonly Candidate[]
+  evidence: readonly Evidence[]
+  /** Summaries before any evidence and after each piece. */
+  steps: readonly Summary[]
+  last: Summary
+  terms: readonly Term[]
+}
+
+/** The belief of a case: every suspect with its chance, its prior and what moved it. */
+export function belief(c: Case): Belief {
+  const reckoning = reckon(c)
+  const { suspects, last } = reckoning
+  const listed = suspects.map((s, i) => suspectOf(reckoning, s, i))
+  const only = last.only[suspects.findIndex((s) => s.fault === SOMETHING_ELSE)] ?? 0
+  const notices: Belief['notices'] = []
+  if (last.twoOrMore > NOTICE_ABOVE) notices.push('moreThanOneLikely')
+  if (only > NOTICE_ABOVE) notices.push('maybeNotInList')
+  return {
+    suspects: listed.sort(byChance),
+    chanceOfTwoOrMore: last.twoOrMore,
+    chanceOnlySomethingElse: only,
+    notices,
+  }
+}
+
+/** The evidence of a case taken in one piece after the other. */
+export function reckon(c: Case): Reckoning {
+  const suspects = candidates(c)
+  const evidence = evidenceOf(c, suspects)
+  const joint = startJoint(evidence.flatMap((e) => (e.factor === null ? [] : [e.factor])))
+  let terms: Term[] = [{ weight: 1, odds: suspects.map((s) => s.odds) }]
+  const steps = [summarise(joint, terms)]
+  for (const piece of evidence) {
+    terms = takeIn(joint, terms, piece)
+    steps.push(isSilent(piece) ? (steps.at(-1) as Summary) : summarise(joint, terms))
+  }
+  return { suspects, evidence, steps, last: steps.at(-1) as Summary, terms }
+}
+
+/** The terms after a sum-of-products piece: every old term times every new one. */
+export function multiply(terms: readonly Term[], by: Multipliers): Term[] {
+  return terms.flatMap((t) =>
+    by.map(({ weight, of }) => ({
+      weight: t.weight * weight,
+      odds: t.odds.map((o, f) => o * of(f)),
+    })),
+  )
+}
+
+function takeIn(joint: Joint, terms: Term[], piece: Evidence): Term[] {
+  if (piece.factor !== null) absorb(joint, piece.factor)
+  return piece.multipliers === null ? terms : multiply(terms, piece.multipliers)
+}
+
+const isSilent = (piece: Evidence): boolean => piece.factor === null && piece.multipliers === null
+
+function suspectOf({ evidence, steps, last }: Reckoning, s: Candidate, at: number): Suspect {
+  const chanceAfter = (step: number) => steps[step]?.marginals[at] ?? 0
+  const why: Why[] = evidence.map((piece, i) => ({
+    entryId: piece.entryId,
+    about: piece.about,
+    label: piece.label,
+    logRatio: isSilent(piece) ? 0 : logOdds(chanceAfter(i + 1)) - logOdds(chanceAfter(i)),
+    saysNothing: isSilent(piece),
+  }))
+  const chance = last.marginals[at] ?? 0
+  return {
+    fault: s.fault,
+    name: s.name,
+    chance,
+    prior: chanceAfter(0),
+    ruledOutBy: ruledOutBy(chance, why),
+    why: [shareWhy(s), ...why],
+  }
+}
+
+/** Where the suspect starts from; its log-odds are the start of the sum, so it adds nothing to the change. */
+const shareWhy = (s: Candidate): Why => ({
+  entryId: null,
+  about: 'share',
+  label: `Of 100 such calls: ${Number(s.of100.toFixed(1))}`,
+  logRatio: 0,
+  saysNothing: false,
+})
+
+/** Log-odds kept within +-34 so that certainty stays a number. */
+export function logOdds(p: number): number {
+  const held = Math.min(1 - 1e-15, Math.max(1e-15, p))
+  return Math.log(held / (1 - held))
+}
+
+function ruledOutBy(chance: number, why: readonly Why[]): string | null {
+  if (chance >= RULED_OUT_BELOW) return null
+  let worst: Why | null = null
+  for (const w of why) if (w.logRatio < (worst?.logRatio ?? -Math.log(5))) worst = w
+  return worst?.entryId ?? null
+}
+
+function byChance(a: Suspect, b: Suspect): number {
+  const out = Number(a.ruledOutBy !== null) - Number(b.ruledOutBy !== null)
+  return out || b.chance - a.chance || (a.fault < b.fault ? -1 : 1)
+}

@@ -1,0 +1,173 @@
+/**
+ * A reading as evidence: the density of what was read given each state, the true value spread evenly over the
+ * book's pieces and blurred by the uncertainty of meter and leads, with an outlier floor so that no single
+ * reading sets a suspect to nought. With several affecting faults present the mean of their densities speaks.
+ * A good twin read with the same meter comes first (rules R7, R17): when the two agree and the meter cannot
+ * decide the figure, the check says nothing; else the difference is the evidence, for it sheds what both share.
+ */
+import type { CheckItem, Piece, SpecValue } from '@/lib/model/code-book'
+import type { LogEntry, ReadingBody } from '@/lib/model/log-entry'
+import type { Case } from './case'
+import { type Evidence, nothing, type Sight, tableOf } from './evidence-table'
+import { type Factor, tableFactor } from './factor'
+import { between } from './normal'
+import { canDecide, judge, middleOf } from './reading'
+import { budgetOf } from './reading-budget'
+
+/** Share of readings that have nothing to do with the part (slipped probe, wrong pin; guess). */
+const OUTLIERS = 0.02
+
+type Model = NonNullable<CheckItem['reading']>
+type Shown = { at: number; standardU: number; overRange: boolean }
+
+/** The evidence of a reading; a known-good one only speaks through the suspect's. */
+export function readingEvidence(sight: Sight, entry: LogEntry, body: ReadingBody): Evidence {
+  const check = sight.c.index.checks.get(body.checkId)
+  const label = `${check?.name ?? body.checkId}: ${body.asTyped} ${body.unit}`
+  if (body.subject === 'knownGood') return nothing(entry, 'reading', `${label} on a known-good one`)
+  if (check === undefined) return nothing(entry, 'reading', label)
+  const twin = twinOf(sight.c, body)
+  const model = check.reading
+  const nominal = model === null ? null : nominalOf(body.spec, model)
+  if (twin !== null && agrees(body, twin) && !decides(body))
+    return nothing(entry, 'reading', `${label}: a good one reads the same, so it says nothing`)
+  if (model === null || nominal === null)
+    return { ...nothing(entry, 'reading', label), factor: verdictFactor(sight, check, body) }
+  const shown = twin === null ? shownBy(body) : againstTwin(body, twin, { model, nominal })
+  return {
+    ...nothing(entry, 'reading', label),
+    factor: densityFactor(sight, model, { shown, nominal }),
+  }
+}
+
+/** The value the pieces are factors of: the sheet's nominal, the middle of its limits, else the book's fallback. */
+export function nominalOf(spec: SpecValue | null, model: Model): number | null {
+  const own = middleOf(spec)
+  if (own !== null) return own
+  const { low = null, high = null } = model.fallback ?? {}
+  if (low !== null && high !== null) return (low + high) / 2
+  return low ?? high
+}
+
+/** The living twin reading of the same check, the latest; null without one. */
+export function twinOf({ entries }: Case, { checkId, quantity }: ReadingBody): ReadingBody | null {
+  const found = entries.findLast(
+    ({ body }) =>
+      body.kind === 'reading' &&
+      body.subject === 'knownGood' &&
+      body.checkId === checkId &&
+      body.quantity === quantity,
+  )
+  return found?.body.kind === 'reading' ? found.body : null
+}
+
+/** u of the difference of two readings. With the same meter and leads only gain, steps and contact remain. */
+export function differenceU(a: ReadingBody, b: ReadingBody): number {
+  if (!sameSetUp(a, b)) return Math.hypot(budgetOf(a).standardU, budgetOf(b).standardU)
+  const { percent, resolution } = a.meterFunction
+  const gain = (percent / 100) * Math.abs(a.value - b.value)
+  const step = resolution / 2
+  const contact = a.quantity === 'resistance' ? step : 0
+  return Math.sqrt((gain ** 2 + 2 * step ** 2 + contact ** 2) / 3)
+}
+
+/** Whether suspect and twin read alike within U = 2u of their difference. */
+export function agrees(suspect: ReadingBody, twin: ReadingBody): boolean {
+  if (suspect.overRange || twin.overRange) return suspect.overRange === twin.overRange
+  const apart = Math.abs(budgetOf(suspect).estimate - budgetOf(twin).estimate)
+  return apart <= 2 * differenceU(suspect, twin) + 1e-12
+}
+
+/** Likelihood of a shown value under a state, in units of 1 / nominal, with the floor; a chance over range. */
+export function likelihood(pieces: readonly Piece[], shown: Shown, nominal: number): number {
+  const size = Math.abs(nominal)
+  if (shown.overRange) return (1 - OUTLIERS) * tail(pieces, shown.at / nominal) + OUTLIERS * 0.05
+  const x = shown.at / nominal
+  const u = Math.max(shown.standardU / size, 1e-9)
+  const far = Math.abs(x) <= 5 ? 1 : (5 / Math.abs(x)) ** 2
+  return (1 - OUTLIERS) * density(pieces, x, u) + (OUTLIERS * far) / 10
+}
+
+function densityFactor(
+  { place }: Sight,
+  model: Model,
+  { shown, nominal }: { shown: Shown; nominal: number },
+): Factor {
+  const good = likelihood(model.good, shown, nominal)
+  const bad = new Map<number, number>()
+  for (const [fault, pieces] of Object.entries(model.byFault)) {
+    const at = place.get(fault)
+    if (at !== undefined) bad.set(at, likelihood(pieces, shown, nominal))
+  }
+  return {
+    scope: [...bad.keys()],
+    at: (present) => {
+      if (present.length === 0) return good
+      return present.reduce((sum, f) => sum + (bad.get(f) ?? good), 0) / present.length
+    },
+  }
+}
+
+const weightOf = (pieces: readonly Piece[]): number => pieces.reduce((sum, p) => sum + p.weight, 0)
+
+function density(pieces: readonly Piece[], x: number, u: number): number {
+  const sum = pieces.reduce((total, { weight, from, to }) => {
+    const width = Math.max(to - from, u * 1e-3)
+    return total + (weight / width) * between((from - x) / u, (from + width - x) / u)
+  }, 0)
+  return sum / weightOf(pieces)
+}
+
+function tail(pieces: readonly Piece[], x: number): number {
+  const sum = pieces.reduce((total, { weight, from, to }) => {
+    const width = to - from
+    const above = width > 0 ? Math.min(1, Math.max(0, (to - x) / width)) : from > x ? 1 : 0
+    return total + weight * above
+  }, 0)
+  return sum / weightOf(pieces)
+}
+
+function shownBy(body: ReadingBody): Shown {
+  const { estimate, standardU } = budgetOf(body)
+  return { at: estimate, standardU, overRange: body.overRange }
+}
+
+/** The suspect's value as the twin shows it: the middle of the good state plus the difference. */
+function againstTwin(
+  body: ReadingBody,
+  twin: ReadingBody,
+  { model, nominal }: { model: Model; nominal: number },
+): Shown {
+  if (body.overRange || twin.overRange) return shownBy(body)
+  const total = weightOf(model.good)
+  const mean = model.good.reduce((s, p) => s + (p.weight * (p.from + p.to)) / 2, 0) / total
+  const variance =
+    model.good.reduce((s, p) => {
+      const middle = (p.from + p.to) / 2
+      return s + p.weight * ((middle - mean) ** 2 + (p.to - p.from) ** 2 / 12)
+    }, 0) / total
+  const apart = budgetOf(body).estimate - budgetOf(twin).estimate
+  const standardU = Math.hypot(differenceU(body, twin), Math.sqrt(variance) * nominal)
+  return { at: mean * nominal + apart, standardU, overRange: false }
+}
+
+/** Without a model of the true value the three-valued verdict enters as virtual evidence on the outcome table. */
+function verdictFactor({ place }: Sight, check: CheckItem, body: ReadingBody): Factor | null {
+  const { verdict, conformance } = judge(body)
+  if (verdict === null) return null
+  const named = check.outcomes.findIndex((o) => o.id === verdict)
+  const chance = conformance ?? 0.5
+  const weights = check.outcomes.map((o, k) => {
+    if (named >= 0) return k === named ? 1 : 0
+    return o.good ? chance : 1 - chance
+  })
+  return tableFactor(tableOf(place, check), weights)
+}
+
+const sameSetUp = (a: ReadingBody, b: ReadingBody): boolean =>
+  a.meterId === b.meterId &&
+  a.nulled === b.nulled &&
+  a.meterFunction.resolution === b.meterFunction.resolution &&
+  a.meterFunction.percent === b.meterFunction.percent
+
+const decides = (body: ReadingBody): boolean => canDecide(body).decides
