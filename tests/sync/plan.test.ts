@@ -178,17 +178,16 @@ describe('planning a push', () => {
     const { device, known, jobId, stand } = world()
     const closed: Known = { ...known, jobs: new Map([[jobId, { ...stand, state: 'closed' }]]) }
     const entry = () => device.op(logAdd(device, jobId, note('late')))
-    expect(plan([entry(), entry()], closed).effects.reopened).toEqual([jobId])
-    expect(plan([entry()], { ...closed, closedHere: new Set([jobId]) }).effects.reopened).toEqual(
-      [],
-    )
+    const reopened = [{ jobId, what: 'job', from: 'closed', to: 'open' }]
+    expect(plan([entry(), entry()], closed).effects.steps).toEqual(reopened)
+    expect(plan([entry()], { ...closed, closedHere: new Set([jobId]) }).effects.steps).toEqual([])
     const own = device.op({
       kind: 'job.move',
       entityId: jobId,
       jobId,
       fields: { from: 'open', to: 'closed', reason: null },
     })
-    expect(plan([own, entry()], known).effects.reopened).toEqual([])
+    expect(plan([own, entry()], known).effects.steps).toHaveLength(1)
   })
 })
 

@@ -45,14 +45,17 @@ export type Known = {
   guideSafe: ReadonlySet<string>
 }
 
+/** One step of one of a job's states, for the audit trail. */
+export type JobStep = { jobId: Id; what: 'job' | 'people' | 'machine'; from: string; to: string }
+
 /** What a plan asks the write phase to do, each list in the order of the ops. */
 export type Effects = {
   machines: Machine[]
   jobs: { opening: JobOpening; stand: JobStand }[]
   /** Existing jobs whose stand changed, with the stand they end in. */
   changedJobs: Map<Id, JobStand>
-  /** Jobs that came back from closed because the field wrote on (R13). */
-  reopened: Id[]
+  /** Steps of job states as they were taken; a job that the field's writing reopened is one of them. */
+  steps: JobStep[]
   entries: LogEntry[]
   partRequests: PartRequest[]
   advice: Advice[]
@@ -77,7 +80,7 @@ export class Draft {
     machines: [],
     jobs: [],
     changedJobs: new Map(),
-    reopened: [],
+    steps: [],
     entries: [],
     partRequests: [],
     advice: [],
@@ -141,11 +144,10 @@ export class Draft {
     return this.#closed.has(id) || this.known.closedHere.has(id)
   }
 
-  reopenJob(id: Id): void {
-    const stand = this.job(id)
-    if (!stand) return
-    this.effects.reopened.push(id)
-    this.changeJob(id, { ...stand, state: 'open' })
+  /** As changeJob, along one of its states and kept in the audit trail. */
+  stepJob(step: JobStep, stand: JobStand): void {
+    this.effects.steps.push(step)
+    this.changeJob(step.jobId, stand)
   }
 
   addEntry(entry: LogEntry): void {

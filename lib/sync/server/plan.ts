@@ -3,7 +3,7 @@ import type { OpResult } from '@/lib/sync/protocol/message'
 import type { Op } from '@/lib/sync/protocol/op'
 import { Draft, type Effects, type Known, type Outcome } from './draft'
 import { planAdviceKeep } from './ops/advice'
-import { planJobMachine, planJobMove, planJobOpen, planJobPeople } from './ops/job'
+import { planJobOpen, planJobStep } from './ops/job'
 import { planLogAdd } from './ops/log-entry'
 import { planMachineAdd } from './ops/machine'
 import { planPartRequestAsk } from './ops/part-request'
@@ -33,11 +33,9 @@ function step(op: Op, draft: Draft): Outcome {
     case 'job.open':
       return planJobOpen(op, draft)
     case 'job.move':
-      return planJobMove(op, draft)
     case 'job.people':
-      return planJobPeople(op, draft)
     case 'job.machine':
-      return planJobMachine(op, draft)
+      return planJobStep(op, draft)
     case 'log.add':
       return planLogAdd(op, draft)
     case 'partRequest.ask':

@@ -1,9 +1,16 @@
-import type { Id } from '@/lib/model/id'
 import { actionToMoveJob, mayMove, type StateKind } from '@/lib/shop/job-states'
-import { may } from '@/lib/shop/permissions'
+import { type Action, may } from '@/lib/shop/permissions'
 import { seesJob } from '@/lib/shop/scope'
 import type { Op } from '@/lib/sync/protocol/op'
-import { ACCEPTED, type Draft, type JobStand, type Outcome, reject, waitFor } from '../draft'
+import {
+  ACCEPTED,
+  type Draft,
+  type JobStand,
+  type JobStep,
+  type Outcome,
+  reject,
+  waitFor,
+} from '../draft'
 
 type OpOf<K extends Op['kind']> = Extract<Op, { kind: K }>
 
@@ -27,7 +34,7 @@ export function planJobOpen(op: OpOf<'job.open'>, draft: Draft): Outcome {
 }
 
 /** The job an op moves: known, named alike twice, and in this person's hands. */
-function jobToMove(op: OpOf<'job.move' | 'job.people' | 'job.machine'>, draft: Draft) {
+function jobToMove(op: Move, draft: Draft) {
   if (op.jobId !== null && op.jobId !== op.entityId) return { refusal: reject('invalid', 'jobId') }
   const job = draft.job(op.entityId)
   if (!job) return { refusal: waitFor(op.entityId) }
@@ -41,36 +48,38 @@ function judgeMove(kind: StateKind, now: string, from: string, to: string): Outc
   return legal ? ACCEPTED : reject('invalid', 'fields.to', `${from} cannot become ${to}`)
 }
 
-function move(draft: Draft, id: Id, verdict: Outcome, next: JobStand): Outcome {
-  if (verdict.kind === 'accepted') draft.changeJob(id, next)
+type Move = OpOf<'job.move' | 'job.people' | 'job.machine'>
+type Ways = {
+  [K in Move['kind']]: {
+    what: JobStep['what']
+    field: 'state' | 'peopleState' | 'machineState'
+    action(to: string): Action
+  }
+}
+
+const WAYS: Ways = {
+  // Along the job's states (R13).
+  'job.move': {
+    what: 'job',
+    field: 'state',
+    action: (to) => actionToMoveJob(to as JobStand['state']),
+  },
+  // Where the people are (R2).
+  'job.people': { what: 'people', field: 'peopleState', action: () => 'job.work' },
+  // Where the machine is and how (R2).
+  'job.machine': { what: 'machine', field: 'machineState', action: () => 'job.work' },
+}
+
+/** job.move, job.people, job.machine: one step along one of the job's three states. */
+export function planJobStep(op: Move, draft: Draft): Outcome {
+  const { job, refusal } = jobToMove(op, draft)
+  if (!job) return refusal
+  const { what, field, action } = WAYS[op.kind]
+  const { from, to } = op.fields
+  if (!may(draft.known.actor.roles, action(to))) return reject('forbidden')
+  const verdict = judgeMove(what, job[field], from, to)
+  if (verdict.kind === 'accepted') {
+    draft.stepJob({ jobId: op.entityId, what, from, to }, { ...job, [field]: to })
+  }
   return verdict
-}
-
-/** job.move: along the job's states (R13). */
-export function planJobMove(op: OpOf<'job.move'>, draft: Draft): Outcome {
-  const { job, refusal } = jobToMove(op, draft)
-  if (!job) return refusal
-  const { from, to } = op.fields
-  if (!may(draft.known.actor.roles, actionToMoveJob(to))) return reject('forbidden')
-  return move(draft, op.entityId, judgeMove('job', job.state, from, to), { ...job, state: to })
-}
-
-/** job.people: where the people are (R2). */
-export function planJobPeople(op: OpOf<'job.people'>, draft: Draft): Outcome {
-  const { job, refusal } = jobToMove(op, draft)
-  if (!job) return refusal
-  if (!may(draft.known.actor.roles, 'job.work')) return reject('forbidden')
-  const { from, to } = op.fields
-  const verdict = judgeMove('people', job.peopleState, from, to)
-  return move(draft, op.entityId, verdict, { ...job, peopleState: to })
-}
-
-/** job.machine: where the machine is and how (R2). */
-export function planJobMachine(op: OpOf<'job.machine'>, draft: Draft): Outcome {
-  const { job, refusal } = jobToMove(op, draft)
-  if (!job) return refusal
-  if (!may(draft.known.actor.roles, 'job.work')) return reject('forbidden')
-  const { from, to } = op.fields
-  const verdict = judgeMove('machine', job.machineState, from, to)
-  return move(draft, op.entityId, verdict, { ...job, machineState: to })
 }

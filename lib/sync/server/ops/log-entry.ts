@@ -48,9 +48,15 @@ export function planLogAdd(op: Extract<Op, { kind: 'log.add' }>, draft: Draft): 
   if (entry.body.kind === 'wayOut') {
     draft.changeJob(entry.jobId, { ...job, wayOut: entry.body.wayOut })
   }
-  const fromField = may(draft.known.actor.roles, 'check.guideSafe')
-  if (job.state === 'closed' && fromField && !draft.isClosedHere(entry.jobId)) {
-    draft.reopenJob(entry.jobId)
-  }
+  reopen(entry, draft)
   return ACCEPTED
+}
+
+/** Closed at the desk, or by another phone, while this one was still writing: it is open again. */
+function reopen({ jobId }: LogEntry, draft: Draft): void {
+  const job = draft.job(jobId)
+  const fromField = may(draft.known.actor.roles, 'check.guideSafe')
+  if (job?.state !== 'closed' || !fromField || draft.isClosedHere(jobId)) return
+  const step = { jobId, what: 'job', from: 'closed', to: 'open' } as const
+  draft.stepJob(step, { ...job, state: 'open' })
 }

@@ -1,0 +1,161 @@
+import type { ShopTx } from '@/db/client'
+import { insertAdvice } from '@/db/queries/advice'
+import { appendAudit } from '@/db/queries/audit'
+import { type Change, takeChanges, takeJobNumbers } from '@/db/queries/changes'
+import { insertJobs, setJobStand } from '@/db/queries/jobs'
+import { appendLogEntries } from '@/db/queries/log-entries'
+import { insertMachines } from '@/db/queries/machines'
+import { insertPartRequests } from '@/db/queries/part-requests'
+import { type StoredOp, saveOps } from '@/db/queries/sync-ops'
+import { enqueueWork } from '@/db/queries/work'
+import type { Id } from '@/lib/model/id'
+import type { Actor } from '@/lib/model/person'
+import type { Instant } from '@/lib/model/time'
+import type { Effects, JobStand, Known, Outcome } from './draft'
+import type { Plan } from './plan'
+import type { ReadOp } from './read-ops'
+
+/** Who sends, and when it came by the server's clock. */
+export type Sender = { actor: Actor; deviceId: Id; at: Instant; newId: () => Id }
+
+/**
+ * Writes a plan. The caller holds the shop's counter, so nothing of the shop moves meanwhile: only bulk
+ * statements here, and the numbers last (sync.md section 1).
+ */
+export async function applyPlan(
+  tx: ShopTx,
+  { plan, known, sender }: { plan: Plan; known: Known; sender: Sender },
+): Promise<void> {
+  const { effects } = plan
+  const { actor, deviceId, at } = sender
+  await insertMachines(tx, effects.machines)
+  await writeJobs(tx, effects, sender)
+  await appendLogEntries(tx, { entries: effects.entries, receivedAt: at })
+  await insertPartRequests(
+    tx,
+    effects.partRequests.map((request) => ({
+      request,
+      askedBy: actor.personId,
+      askedOn: deviceId,
+      receivedAt: at,
+    })),
+  )
+  await insertAdvice(
+    tx,
+    effects.advice.map((advice) => ({
+      advice,
+      personId: actor.personId,
+      deviceId,
+      receivedAt: at,
+    })),
+  )
+  await appendAudit(tx, auditOf(effects, sender))
+  await saveOps(
+    tx,
+    plan.outcomes.map(({ op, outcome }) => storedOp(op, outcome, sender)),
+  )
+  for (const { id } of effects.partRequests) {
+    await enqueueWork(tx, {
+      task: 'partRequestMail',
+      payload: { requestId: id },
+      key: `partRequestMail:${id}`,
+    })
+  }
+  const changes = changesOf(effects, known)
+  if (changes.length > 0) await takeChanges(tx, changes)
+}
+
+async function writeJobs(tx: ShopTx, effects: Effects, sender: Sender): Promise<void> {
+  const { actor, deviceId, at } = sender
+  const numbers = await takeNumbers(tx, effects.jobs.length)
+  await insertJobs(
+    tx,
+    effects.jobs.map(({ opening, stand }, index) => ({
+      opening,
+      stand: statesOf(stand),
+      number: numbers[index] ?? '',
+      openedBy: actor.personId,
+      openedOn: deviceId,
+      receivedAt: at,
+    })),
+  )
+  for (const [id, stand] of effects.changedJobs) {
+    await setJobStand(tx, { id, stand: statesOf(stand), by: { deviceId, at } })
+  }
+}
+
+const takeNumbers = (tx: ShopTx, count: number): Promise<string[]> =>
+  count === 0 ? Promise.resolve([]) : takeJobNumbers(tx, count)
+
+const statesOf = ({ state, peopleState, machineState, wayOut }: JobStand) => ({
+  state,
+  peopleState,
+  machineState,
+  wayOut,
+})
+
+const auditOf = ({ steps }: Effects, { actor, deviceId, at, newId }: Sender) =>
+  steps.map(({ jobId, what, from, to }) => ({
+    id: newId(),
+    jobId,
+    at,
+    actorId: actor.personId,
+    deviceId,
+    action: `job.${what}`,
+    entity: 'job',
+    entityId: jobId,
+    detail: { from, to },
+  }))
+
+/** Where an op of any shape points, as far as it says so in a form that can be kept. */
+function placeOf({ read }: ReadOp) {
+  if (read.kind !== 'op') return { kind: read.kind, entityId: null, jobId: null }
+  const { kind, entityId, jobId } = read.op
+  return { kind, entityId, jobId }
+}
+
+function storedOp(op: ReadOp, outcome: Outcome, { actor, deviceId, at }: Sender): StoredOp {
+  const refusal = outcome.kind === 'rejected' ? outcome : null
+  return {
+    opId: op.opId,
+    deviceId,
+    dseq: op.dseq,
+    personId: actor.personId,
+    ...placeOf(op),
+    raw: op.raw,
+    outcome: outcome.kind,
+    code: refusal?.code ?? null,
+    field: refusal?.field ?? null,
+    detail: refusal?.detail ?? null,
+    blockedOn: outcome.kind === 'blocked' ? outcome.on : null,
+    loser: null,
+    receivedAt: at,
+    settledAt: outcome.kind === 'blocked' ? null : at,
+  }
+}
+
+/**
+ * What gets a number, parents first. A job that was closed or reopened is numbered whole: its rows, the
+ * new ones among them, then travel with it.
+ */
+function changesOf(effects: Effects, known: Known): Change[] {
+  const changes: Change[] = []
+  const whole = new Set<Id>()
+  for (const { id } of effects.machines) changes.push({ entity: 'machine', id, jobId: null })
+  for (const { opening } of effects.jobs) {
+    changes.push({ entity: 'job', id: opening.id, jobId: opening.id })
+  }
+  for (const [id, stand] of effects.changedJobs) {
+    const wasClosed = known.jobs.get(id)?.state === 'closed'
+    const isWhole = wasClosed !== (stand.state === 'closed')
+    if (isWhole) whole.add(id)
+    changes.push({ entity: 'job', id, jobId: id, whole: isWhole })
+  }
+  for (const { id, jobId } of effects.entries) {
+    if (!whole.has(jobId)) changes.push({ entity: 'logEntry', id, jobId })
+  }
+  for (const { id, jobId } of effects.partRequests) {
+    if (!whole.has(jobId)) changes.push({ entity: 'partRequest', id, jobId })
+  }
+  return changes
+}

@@ -1,0 +1,103 @@
+import { asShop, type ShopTx } from '@/db/client'
+import { lastChange, lockShop } from '@/db/queries/changes'
+import { knownOps } from '@/db/queries/sync-ops'
+import type { Id } from '@/lib/model/id'
+import type { OpResult } from '@/lib/sync/protocol/message'
+import { applyPlan, type Sender } from './apply-plan'
+import { troubleOf } from './database-trouble'
+import type { Known } from './draft'
+import { loadKnown } from './load-known'
+import { type Plan, planPush } from './plan'
+import { type ReadOp, readOp } from './read-ops'
+
+/**
+ * Takes a push. All checking is done on what was read without a lock; then the shop's counter is locked,
+ * and only if the shop changed since is the batch planned again on fresh data. So the lock is held for
+ * the bulk writes alone, and never across a network wait.
+ */
+export type PushAnswer = { taken: string[]; results: OpResult[] }
+
+/** How many transactions one push may cost when the database itself refuses ops in it. */
+const MAX_TRIES = 64
+
+/** Takes the ops of one signed push in their order; each is settled once, however often it comes (P4). */
+export function takePush(ops: readonly unknown[], sender: Sender): Promise<PushAnswer> {
+  return takeBatch(ops.map(readOp), sender, { tries: 0 })
+}
+
+async function takeBatch(
+  ops: readonly ReadOp[],
+  sender: Sender,
+  spent: { tries: number },
+): Promise<PushAnswer> {
+  if (ops.length === 0) return { taken: [], results: [] }
+  spent.tries += 1
+  if (spent.tries > MAX_TRIES) return laterAnswer(ops)
+  try {
+    const { taken, results } = await asShop(sender.actor.shopId, (tx) => settle(tx, ops, sender))
+    return { taken, results }
+  } catch (error) {
+    const trouble = troubleOf(error)
+    if (trouble === 'retry') return laterAnswer(ops)
+    if (trouble === 'badData') return takeHalves(ops, sender, spent)
+    throw error
+  }
+}
+
+const laterAnswer = (ops: readonly ReadOp[]): PushAnswer => ({
+  taken: [],
+  results: ops.map(({ opId }) => ({ opId, result: 'retry' })),
+})
+
+/** Finds the op that the database refuses by halving, so that it costs only itself (P5). */
+async function takeHalves(
+  ops: readonly ReadOp[],
+  sender: Sender,
+  spent: { tries: number },
+): Promise<PushAnswer> {
+  const [only] = ops
+  if (ops.length === 1 && only) {
+    const detail = 'The shop’s database cannot keep a value of it'
+    const result = {
+      opId: only.opId,
+      result: 'rejected',
+      code: 'invalid',
+      field: null,
+      detail,
+    } as const
+    // A second refusal of the database can only come from what the op says of itself: then keep nothing.
+    const isRefused = only.read.kind === 'refused'
+    return isRefused
+      ? { taken: [], results: [result] }
+      : takeBatch([{ ...only, read: { kind: 'refused', result } }], sender, spent)
+  }
+  const middle = Math.ceil(ops.length / 2)
+  const first = await takeBatch(ops.slice(0, middle), sender, spent)
+  const second = await takeBatch(ops.slice(middle), sender, spent)
+  return {
+    taken: [...first.taken, ...second.taken],
+    results: [...first.results, ...second.results],
+  }
+}
+
+async function settle(tx: ShopTx, ops: readonly ReadOp[], sender: Sender): Promise<Plan> {
+  const ask = { actor: sender.actor, deviceId: sender.deviceId, ops }
+  // The counter is read first: as long as it stands there, what is read after it is still so.
+  const readAt = await lastChange(tx)
+  let known = await loadKnown(tx, ask)
+  let plan = planPush(ops, known)
+  if (plan.outcomes.length === 0) return plan
+  const lockedAt = await lockShop(tx)
+  if (lockedAt !== readAt || (await hasTwin(tx, ops, known))) {
+    known = await loadKnown(tx, ask)
+    plan = planPush(ops, known)
+  }
+  await applyPlan(tx, { plan, known, sender })
+  return plan
+}
+
+/** True when another request settled one of these ops since they were looked up. */
+async function hasTwin(tx: ShopTx, ops: readonly ReadOp[], known: Known): Promise<boolean> {
+  const ids: Id[] = ops.map((op) => op.opId).filter((opId) => !known.seen.has(opId))
+  return (await knownOps(tx, ids)).size > 0
+}
