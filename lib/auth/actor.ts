@@ -1,6 +1,7 @@
 import { cookies } from 'next/headers'
 import { decode } from 'next-auth/jwt'
-import { findSession } from '@/db/queries/sessions'
+import { withNoShop } from '@/db/client'
+import { liveSession } from '@/db/queries/sign-in'
 import { env } from '@/lib/env'
 import { id } from '@/lib/model/id'
 import type { Actor } from '@/lib/model/person'
@@ -35,5 +36,6 @@ async function actorOfToken(token: string): Promise<Actor | null> {
   const claims = await decode({ token, secret: env().NEXTAUTH_SECRET }).catch(() => null)
   const sid = id.safeParse(claims?.sid)
   if (!sid.success) return null
-  return findSession(sid.data, new Date(systemClock.now()).toISOString())
+  const now = new Date(systemClock.now()).toISOString()
+  return (await withNoShop((tx) => liveSession(tx, { id: sid.data, now }))) ?? null
 }

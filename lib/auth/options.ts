@@ -1,8 +1,8 @@
 import type { NextAuthOptions } from 'next-auth'
 import Credentials from 'next-auth/providers/credentials'
 import * as z from 'zod/mini'
-import { insertSession, revokeSession } from '@/db/queries/sessions'
-import { findSignIn } from '@/db/queries/sign-in'
+import { asShop, withNoShop } from '@/db/client'
+import { findSignIn, insertSession, revokeSession } from '@/db/queries/sign-in'
 import { env } from '@/lib/env'
 import { systemClock } from '@/lib/ports/clock'
 import { uuidv7 } from '@/lib/ports/ids'
@@ -27,7 +27,7 @@ async function checkSignIn(credentials: unknown): Promise<SignedIn | null> {
   const { email, password } = parsed.data
   const now = systemClock.now()
   if (!mayTry(email, now)) throw new Error('locked')
-  const found = await findSignIn(email)
+  const found = await withNoShop((tx) => findSignIn(tx, email))
   if (found.length === 0) await spendCheck(password)
   for (const row of found) {
     if (await verifyPassword(password, row.passwordHash)) {
@@ -61,12 +61,14 @@ export function authOptions(): NextAuthOptions {
         if (!signedIn) return token
         const sid = uuidv7.next()
         const now = systemClock.now()
-        await insertSession(signedIn.shopId, {
-          id: sid,
-          personId: signedIn.id,
-          createdAt: new Date(now).toISOString(),
-          expiresAt: new Date(now + SESSION_SECONDS * 1000).toISOString(),
-        })
+        await asShop(signedIn.shopId, (tx) =>
+          insertSession(tx, {
+            id: sid,
+            personId: signedIn.id,
+            createdAt: new Date(now).toISOString(),
+            expiresAt: new Date(now + SESSION_SECONDS * 1000).toISOString(),
+          }),
+        )
         return { sub: signedIn.id, shopId: signedIn.shopId, sid }
       },
     },
@@ -74,7 +76,9 @@ export function authOptions(): NextAuthOptions {
       async signOut({ token }) {
         const { sid, shopId } = token as { sid?: unknown; shopId?: unknown }
         if (typeof sid === 'string' && typeof shopId === 'string')
-          await revokeSession(shopId, sid, new Date(systemClock.now()).toISOString())
+          await asShop(shopId, (tx) =>
+            revokeSession(tx, { id: sid, now: new Date(systemClock.now()).toISOString() }),
+          )
       },
     },
   }
