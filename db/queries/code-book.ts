@@ -9,11 +9,13 @@ import type { ShopTx } from '../client'
 /** A published version without its items. */
 export type BookVersion = { version: number; hash: string; publishedAt: Instant }
 
-/** Answers the newest published version; undefined before the first. */
-export async function publishedVersion(tx: ShopTx): Promise<BookVersion | undefined> {
+/** Answers the newest published version and who published it (null: it was shipped); undefined before the first. */
+export async function publishedVersion(
+  tx: ShopTx,
+): Promise<(BookVersion & { publishedBy: Id | null }) | undefined> {
   return await tx
     .selectFrom('codeBookVersion')
-    .select(['version', 'hash', 'publishedAt'])
+    .select(['version', 'hash', 'publishedAt', 'publishedBy'])
     .where('shopId', '=', tx.shopId)
     .orderBy('version', 'desc')
     .limit(1)
@@ -39,6 +41,7 @@ export async function publishedBook(tx: ShopTx, version?: number): Promise<CodeB
   const found =
     version === undefined ? await publishedVersion(tx) : (await versionsByNumber(tx, [version]))[0]
   if (!found) return undefined
+  const { hash, publishedAt } = found
   const rows = await tx
     .selectFrom('codeBookItem')
     .select('body')
@@ -46,7 +49,7 @@ export async function publishedBook(tx: ShopTx, version?: number): Promise<CodeB
     .where('version', '=', found.version)
     .orderBy('place')
     .execute()
-  return { ...found, items: rows.map((row) => row.body) }
+  return { version: found.version, hash, publishedAt, items: rows.map((row) => row.body) }
 }
 
 /** Answers the ids of checks and swaps that the newest version marks safe for guides. */

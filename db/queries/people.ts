@@ -66,6 +66,7 @@ export type NewPerson = {
 
 /** Stores people that are new; present ones are left alone. Take a change number for each. */
 export async function insertPeople(tx: ShopTx, people: readonly NewPerson[]): Promise<void> {
+  if (people.length === 0) return
   const shopId = tx.shopId
   await tx
     .insertInto('person')
@@ -87,6 +88,17 @@ export async function insertPeople(tx: ShopTx, people: readonly NewPerson[]): Pr
   for (const { id, passwordHash } of people) {
     if (passwordHash !== null) await setPassword(tx, { personId: id, passwordHash })
   }
+}
+
+/** Answers the hash of a person's password; undefined when there is none. */
+export async function passwordHashOf(tx: ShopTx, personId: Id): Promise<string | undefined> {
+  const row = await tx
+    .selectFrom('credential')
+    .select('passwordHash')
+    .where('shopId', '=', tx.shopId)
+    .where('personId', '=', personId)
+    .executeTakeFirst()
+  return row?.passwordHash
 }
 
 /** Stores the hash of a person's password in place of the one before. */

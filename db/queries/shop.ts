@@ -5,7 +5,14 @@ import type { ShopTx } from '../client'
 
 /** Answers the shop's settings; throws when this transaction's shop does not exist. */
 export async function getShop(tx: ShopTx): Promise<Shop> {
-  const row = await tx
+  const found = await findShop(tx)
+  if (!found) throw new AppError('noSuchShop', { context: { shopId: tx.shopId } })
+  return found
+}
+
+/** Answers the shop's settings; undefined when there is no such shop. */
+export async function findShop(tx: ShopTx): Promise<Shop | undefined> {
+  return await tx
     .selectFrom('shop')
     .select([
       'shopId as id',
@@ -20,8 +27,6 @@ export async function getShop(tx: ShopTx): Promise<Shop> {
     ])
     .where('shopId', '=', tx.shopId)
     .executeTakeFirst()
-  if (!row) throw new AppError('noSuchShop', { context: { shopId: tx.shopId } })
-  return row
 }
 
 /** Stores a shop with its counter, or new settings of one; take a change number for entity `shop`. */
