@@ -25,8 +25,15 @@ function dseqOf(text: string): Claim['dseq'] | undefined {
   return first <= last ? { first, last } : undefined
 }
 
-/** Reads the signing headers over these bytes as sent; null when one is missing or malformed. */
-export function readClaim(headers: Headers, body: Uint8Array): Claim | null {
+/** The base64url SHA-256 of these bytes, as it stands in the signed text. */
+export const bodyHashOf = (body: Uint8Array): string =>
+  createHash('sha256').update(body).digest('base64url')
+
+/**
+ * Reads the signing headers over a body of this hash; null when one is missing or malformed. Who knows
+ * the hash beforehand (a picture's address) need not have the bytes yet, but must compare them later.
+ */
+export function readClaim(headers: Headers, bodyHash: string): Claim | null {
   const shop = headers.get(HEADERS.shop) ?? ''
   const person = headers.get(HEADERS.person) ?? ''
   const device = headers.get(HEADERS.device) ?? ''
@@ -35,7 +42,6 @@ export function readClaim(headers: Headers, body: Uint8Array): Claim | null {
   if (![shop, person, device].every((value) => id.safeParse(value).success)) return null
   const dseq = dseqOf(dseqText)
   if (dseq === undefined || !SIGNATURE.test(signature)) return null
-  const bodyHash = createHash('sha256').update(body).digest('base64url')
   return {
     shopId: shop.toLowerCase(),
     personId: person.toLowerCase(),

@@ -1,0 +1,59 @@
+import { asShop } from '@/db/client'
+import { appendAudit } from '@/db/queries/audit'
+import { lockShop } from '@/db/queries/changes'
+import { enrolDevice, findDevice, listDevices } from '@/db/queries/devices'
+import type { Id } from '@/lib/model/id'
+import type { Actor } from '@/lib/model/person'
+import { fail, ok, type Result } from '@/lib/model/result'
+import { type EnrolAnswer, type EnrolRequest, enrolRequest } from '@/lib/sync/protocol/device'
+import { readCapped, readJson } from './body'
+import type { HttpProblem } from './problems'
+
+/** Most bytes of an enrolment: a key and a few words. */
+const MAX_BYTES = 8 * 1024
+
+/** Reads what a phone sends to be enrolled; whether the key is a key at all is asked apart. */
+export async function readEnrolment(request: Request): Promise<Result<EnrolRequest, HttpProblem>> {
+  const body = await readCapped(request, MAX_BYTES)
+  if (!body.ok) return body
+  const json = await readJson(body.value, null)
+  const asked = enrolRequest.safeParse(json.ok ? json.value : null)
+  return asked.success ? ok(asked.data) : fail({ kind: 'badJson' })
+}
+
+/**
+ * Makes a phone known to the shop under the public half of its key (P18). The same key of the same
+ * person is the same phone, however often it asks; a revoked one stays revoked under its old key.
+ */
+export function enrol(
+  actor: Actor,
+  request: EnrolRequest,
+  { now, newId }: { now: number; newId: () => Id },
+): Promise<Result<EnrolAnswer, HttpProblem>> {
+  const at = new Date(now).toISOString()
+  const { kty, crv, x, y } = request.publicKey
+  return asShop(actor.shopId, async (tx) => {
+    // Two tabs of one phone ask at once: the second finds what the first stored.
+    await lockShop(tx)
+    const known = (await listDevices(tx)).find(
+      (device) =>
+        device.personId === actor.personId && device.publicKey.x === x && device.publicKey.y === y,
+    )
+    if (known?.revokedAt) return fail<HttpProblem>({ kind: 'deviceRevoked' })
+    if (known) return ok({ deviceId: known.id, serverTime: at })
+    const isTaken = (await findDevice(tx, request.deviceId)) !== undefined
+    const id = isTaken ? newId() : request.deviceId
+    const publicKey = { kty, crv, x, y }
+    await enrolDevice(tx, {
+      id,
+      personId: actor.personId,
+      name: request.words,
+      publicKey,
+      enrolledAt: at,
+    })
+    const entry = { id: newId(), jobId: null, at, actorId: actor.personId, deviceId: id }
+    const what = { action: 'device.enrolled', entity: 'device', entityId: id, detail: {} }
+    await appendAudit(tx, [{ ...entry, ...what }])
+    return ok({ deviceId: id, serverTime: at })
+  })
+}
