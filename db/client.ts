@@ -40,7 +40,7 @@ function opened(): Opened {
 }
 
 /** Makes `url` the address of this process (null: the setting again); for scripts and tests. */
-export async function useDatabase(url: string | null): Promise<void> {
+export async function switchDatabase(url: string | null): Promise<void> {
   const before = holder[OPENED]
   holder[OPENED] = url === null ? undefined : { url, db: openDb(url) }
   await before?.db.destroy()

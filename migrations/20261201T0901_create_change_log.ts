@@ -121,11 +121,13 @@ async function createTake(db: Kysely<unknown>): Promise<void> {
 
 /**
  * The trigger behind demandChange. It runs as farbench_lookup, whose policy lets it read the log of
- * every shop: at commit app.shop_id may already name the next shop of the same transaction.
+ * every shop: at commit app.shop_id may already name the next shop of the same transaction. The owner is
+ * a member of farbench_lookup (to hand it functions), so the policy asks who acts, not who may.
  */
 async function createDemand(db: Kysely<unknown>): Promise<void> {
   await sql`
-    create policy for_check on change_log for select to farbench_lookup using (true);
+    create policy for_check on change_log for select to farbench_lookup
+      using (current_user = 'farbench_lookup');
     grant select on change_log to farbench_lookup;
     create function demand_change() returns trigger
       language plpgsql security definer set search_path = pg_catalog, public, pg_temp as $$

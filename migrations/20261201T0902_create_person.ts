@@ -126,7 +126,8 @@ export async function up(db: Kysely<unknown>): Promise<void> {
 async function createSignIn(db: Kysely<unknown>): Promise<void> {
   for (const table of ['person_contact', 'membership', 'credential', 'session', 'shop']) {
     await sql`
-      create policy for_sign_in on ${sql.table(table)} for select to farbench_lookup using (true);
+      create policy for_sign_in on ${sql.table(table)} for select to farbench_lookup
+        using (current_user = 'farbench_lookup');
       grant select on ${sql.table(table)} to farbench_lookup;
     `.execute(db)
   }
