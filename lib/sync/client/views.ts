@@ -45,7 +45,7 @@ export type UnsentItem = {
 }
 
 /** What must happen before the phone can hand over or fetch again; null when nothing must. */
-export type Need = 'signIn' | 'updateApp' | 'enrol' | null
+export type Need = 'signIn' | 'updateApp' | 'refused' | null
 
 /** Everything about unsent work, for the mark at the top and the screen behind it. */
 export type UnsentView = {
@@ -66,4 +66,6 @@ export type UnsentView = {
   fetchedAt: Instant | null
   /** Rows of the shop this version could not read: kept aside, not shown. */
   setAside: number
+  /** False when the last keystrokes could not be kept: the phone has no room. */
+  draftsKept: boolean
 }

@@ -27,15 +27,22 @@ export class Cell<T> implements Watch<T> {
 /** What a live source calls: `emit` with each new value. Answers the function that ends it. */
 export type Source<T> = (emit: (value: T) => void) => () => void
 
-/** A watch that runs its source only while somebody listens, and keeps the last value between. */
+/**
+ * A watch that runs its source only while somebody listens. The last value stays for the next listener,
+ * unless it is one that ends with its source (`lasts` false).
+ */
 export class LiveCell<T> implements Watch<T> {
   readonly #cell: Cell<T>
   readonly #source: Source<T>
+  readonly #initial: T
+  readonly #lasts: boolean
   #listening = 0
   #end: (() => void) | null = null
 
-  constructor(initial: T, source: Source<T>) {
+  constructor(initial: T, source: Source<T>, lasts = true) {
     this.#cell = new Cell(initial)
+    this.#initial = initial
+    this.#lasts = lasts
     this.#source = source
   }
 
@@ -54,6 +61,7 @@ export class LiveCell<T> implements Watch<T> {
       if (this.#listening > 0) return
       this.#end?.()
       this.#end = null
+      if (!this.#lasts) this.#cell.set(this.#initial)
     }
   }
 }

@@ -1,0 +1,91 @@
+import type { Id } from '@/lib/model/id'
+import type { Job } from '@/lib/model/job'
+import type { LogBody } from '@/lib/model/log-entry'
+import { assertNever } from '@/lib/model/result'
+import { mayMove } from '@/lib/shop/job-states'
+import type { Op } from '@/lib/sync/protocol/op'
+import type { StoredEntity } from './entities'
+
+/**
+ * What an op does to the rows, as the shop will do it (P9): so a screen shows at once what will come
+ * back. Where the shop would refuse, the rows stay as they are; its answer says so later.
+ */
+export type Who = { personId: Id }
+export type Touched = { entity: StoredEntity; id: Id; jobId: Id | null }
+
+/** The rows an op may change. */
+export function rowsTouched(op: Op): Touched[] {
+  switch (op.kind) {
+    case 'machine.add':
+      return [{ entity: 'machine', id: op.entityId, jobId: null }]
+    case 'job.open':
+    case 'job.move':
+    case 'job.people':
+    case 'job.machine':
+      return [jobAt(op.entityId)]
+    case 'log.add':
+      return [
+        { entity: 'logEntry', id: op.entityId, jobId: op.fields.jobId },
+        jobAt(op.fields.jobId),
+      ]
+    case 'partRequest.ask':
+      return [{ entity: 'partRequest', id: op.entityId, jobId: op.fields.jobId }]
+    case 'advice.keep':
+      return []
+    default:
+      return assertNever(op)
+  }
+}
+
+const jobAt = (id: Id): Touched => ({ entity: 'job', id, jobId: id })
+
+/** The row after the op: `row` itself when the op does not change it, undefined when there is none. */
+export function applyOpLocally(row: unknown, at: Touched, op: Op, who: Who): unknown {
+  if (at.entity === 'job') return applyToJob(row as Job | undefined, op, who)
+  // Evidence, machines and requests are only ever added: what is there stays.
+  if (row !== undefined || op.entityId !== at.id) return row
+  if (op.kind === 'machine.add' || op.kind === 'log.add') return op.fields
+  if (op.kind !== 'partRequest.ask') return row
+  const lines = op.fields.lines.map((line) => ({ ...line, state: 'asked' as const }))
+  return { ...op.fields, askedBy: who.personId, lines }
+}
+
+function applyToJob(job: Job | undefined, op: Op, who: Who): Job | undefined {
+  if (op.kind === 'job.open') return job ?? openedJob(op.fields, who)
+  if (job === undefined) return undefined
+  switch (op.kind) {
+    case 'job.move': {
+      const { from, to } = op.fields
+      return job.state === from && mayMove('job', from, to) ? { ...job, state: to } : job
+    }
+    case 'job.people': {
+      const { from, to } = op.fields
+      const moves = job.peopleState === from && mayMove('people', from, to)
+      return moves ? { ...job, peopleState: to } : job
+    }
+    case 'job.machine': {
+      const { from, to } = op.fields
+      const moves = job.machineState === from && mayMove('machine', from, to)
+      return moves ? { ...job, machineState: to } : job
+    }
+    case 'log.add':
+      return withWayOut(job, op.fields.body)
+    default:
+      return job
+  }
+}
+
+const openedJob = (fields: Extract<Op, { kind: 'job.open' }>['fields'], who: Who): Job => ({
+  ...fields,
+  number: null,
+  state: 'open',
+  peopleState: 'withMachine',
+  machineState: 'stranded',
+  wayOut: null,
+  openedBy: who.personId,
+  assignedTo: [],
+})
+
+/** The way out stands on the job; that a closed job comes back as open (R13) the shop alone decides. */
+const withWayOut = (job: Job, body: LogBody): Job =>
+  body.kind === 'wayOut' ? { ...job, wayOut: body.wayOut } : job

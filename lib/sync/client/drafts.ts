@@ -1,0 +1,124 @@
+import type { Core } from './core'
+import { openJson, sealJson } from './seal'
+import { Cell, type Watch } from './watch'
+
+/** What is half written under a key; `value` undefined: nothing. `ready` once the store was looked at. */
+export type DraftView = { ready: boolean; value: unknown }
+
+type Home = Pick<Core, 'db' | 'keys' | 'step'> & {
+  now(): number
+  /** Told whether the last write was kept. */
+  kept(isKept: boolean): void
+}
+
+/** The place a draft is sealed for. */
+export const draftPlace = (key: string) => `draft/${key}`
+
+/**
+ * One draft, written sealed at every change (R8: to the keystroke). Writes go one after the other; what
+ * is typed while one runs is written next, and only the last of it.
+ */
+export class Draft {
+  readonly #cell = new Cell<DraftView>({ ready: false, value: undefined })
+  readonly #home: Home
+  readonly #key: string
+  #tail: Promise<void> = Promise.resolve()
+  /** What is queued to be written; changed in place until its turn comes. */
+  #slot: { value: unknown; off: boolean } | null = null
+  #touched: boolean = false
+
+  constructor(home: Home, key: string) {
+    this.#home = home
+    this.#key = key
+    this.#tail = this.#load()
+  }
+
+  get watch(): Watch<DraftView> {
+    return this.#cell
+  }
+
+  /** Shows the value at once and writes it. */
+  set(value: unknown): void {
+    this.#touched = true
+    this.#cell.set({ ready: true, value })
+    if (this.#slot !== null) {
+      this.#slot.value = value
+      return
+    }
+    const slot = { value, off: false }
+    this.#slot = slot
+    this.#queue(() => this.#write(slot)).catch(() => undefined)
+  }
+
+  /** Forgets it, also what was still to be written. */
+  clear(): Promise<void> {
+    this.#touched = true
+    if (this.#slot !== null) this.#slot.off = true
+    this.#slot = null
+    this.#cell.set({ ready: true, value: undefined })
+    return this.#queue(() => this.#home.db.draft.delete(this.#key))
+  }
+
+  /** Resolves when everything set so far is written. */
+  written(): Promise<void> {
+    return this.#tail
+  }
+
+  #queue(work: () => Promise<void>): Promise<void> {
+    this.#tail = this.#tail.then(work).then(
+      () => this.#home.kept(true),
+      () => this.#home.kept(false),
+    )
+    return this.#tail
+  }
+
+  async #load(): Promise<void> {
+    const { db, keys } = this.#home
+    let value: unknown
+    try {
+      const [held] = await db.draft.where('key').equals(this.#key).toArray()
+      if (held !== undefined) value = await openJson(keys.store, draftPlace(this.#key), held.body)
+    } catch {
+      // One that does not open is shown as nothing; it is not deleted until something new is written.
+      value = undefined
+    }
+    if (!this.#touched) this.#cell.set({ ready: true, value })
+  }
+
+  async #write(slot: { value: unknown; off: boolean }): Promise<void> {
+    if (slot.off) return
+    if (this.#slot === slot) this.#slot = null
+    const { db, keys, now, step } = this.#home
+    const body = await sealJson(keys.store, draftPlace(this.#key), slot.value)
+    step('draftSealed')
+    await db.draft.put({ key: this.#key, at: now(), body })
+  }
+}
+
+/** All drafts of a store; the same key is the same draft wherever it is shown. */
+export class Drafts {
+  readonly #held = new Map<string, Draft>()
+  readonly #home: Home
+
+  constructor(home: Home) {
+    this.#home = home
+  }
+
+  of(key: string): Draft {
+    const held = this.#held.get(key)
+    if (held !== undefined) return held
+    const draft = new Draft(this.#home, key)
+    this.#held.set(key, draft)
+    return draft
+  }
+
+  /** Waits for what is still being written of these drafts. */
+  async settled(keys: readonly string[]): Promise<void> {
+    await Promise.all(keys.map((key) => this.#held.get(key)?.written()))
+  }
+
+  /** After a record finished them: nothing of them is left, also not what was written meanwhile. */
+  async finished(keys: readonly string[]): Promise<void> {
+    await Promise.all(keys.map((key) => this.#held.get(key)?.clear()))
+  }
+}

@@ -1,0 +1,185 @@
+import type { SyncPorts } from '@/lib/ports/sync-ports'
+import { enrol } from './enrol'
+import type { SendKeys } from './keys'
+import { type PhoneDb, readMeta, writeMeta } from './phone-db'
+import { type BatchSize, type Progress, type RunEnd, type RunStore, SyncRun } from './sync-run'
+import type { Need } from './views'
+import { Cell } from './watch'
+
+/** Why the sender is called. `record` does not hurry a line that just failed; the others do. */
+export type Cause = 'open' | 'record' | 'online' | 'visible' | 'timer' | 'tap' | 'background'
+
+export type SendState = {
+  running: Progress | null
+  /** Whether the shop answered last time; null before the first call. */
+  reached: boolean | null
+  need: Need
+}
+
+/** P16: full jitter under a ceiling that doubles from 1 s to 5 min. */
+const FIRST_CEILING_MS = 1_000
+const LAST_CEILING_MS = 300_000
+/** How often an idle, visible phone asks what is new (a choice: one small request a minute). */
+const IDLE_MS = 60_000
+/** After a failure a new record waits for the timer unless the last try is this old. */
+const CALM_MS = 5_000
+/** A sender that has not moved for this long has lost its turn (P19). */
+const STALE_MS = 60_000
+const BEAT_MS = 15_000
+
+/** Milliseconds to wait after so many failures in a row; `share` is an even random figure in [0, 1). */
+export function backoffMs(failures: number, share: number): number {
+  return share * Math.min(LAST_CEILING_MS, FIRST_CEILING_MS * 2 ** failures)
+}
+
+/** The one way anything leaves this phone, in the page and in the worker, under one lock (P19, P20). */
+export class PhoneSender {
+  readonly state = new Cell<SendState>({ running: null, reached: null, need: null })
+  readonly #store: () => Promise<RunStore>
+  readonly #db: PhoneDb
+  readonly #keys: SendKeys
+  readonly #ports: SyncPorts
+  readonly #lockName: string
+  readonly #size: BatchSize = { limit: 500 }
+  readonly #onBook: () => void
+  #running: Promise<void> | null = null
+  #again: boolean = false
+  #failures = 0
+  #lastTryMs = Number.NEGATIVE_INFINITY
+  #callOff: (() => void) | null = null
+  #stopped: boolean = false
+
+  constructor(of: {
+    store: () => Promise<RunStore>
+    db: PhoneDb
+    keys: SendKeys
+    ports: SyncPorts
+    shopId: string
+    onBook?: () => void
+  }) {
+    this.#store = of.store
+    this.#db = of.db
+    this.#keys = of.keys
+    this.#ports = of.ports
+    this.#lockName = `sync:${of.shopId}`
+    this.#onBook = of.onBook ?? (() => undefined)
+  }
+
+  /** Calls for a run and does not wait for it. */
+  poke(cause: Cause): void {
+    if (cause === 'record' && this.#failures > 0 && this.#sinceLastTry() < CALM_MS) return
+    this.sendNow(cause).catch(() => undefined)
+  }
+
+  /** Runs, or has the present run go round once more; resolves when nothing is left to try. */
+  sendNow(cause: Cause): Promise<void> {
+    if (this.#stopped) return Promise.resolve()
+    if (cause !== 'record' && cause !== 'timer') this.#failures = 0
+    this.#again = true
+    this.#running ??= this.#rounds().finally(() => {
+      this.#running = null
+    })
+    return this.#running
+  }
+
+  stop(): void {
+    this.#stopped = true
+    this.#callOff?.()
+  }
+
+  #sinceLastTry(): number {
+    return this.#ports.clock.now() - this.#lastTryMs
+  }
+
+  async #rounds(): Promise<void> {
+    let end: RunEnd = { kind: 'done' }
+    while (this.#again && !this.#stopped) {
+      this.#again = false
+      await this.#ports.lock.run(
+        this.#lockName,
+        async () => {
+          end = await this.#underLock()
+        },
+        () => this.#isStale(),
+      )
+      if (end.kind !== 'done') break
+    }
+    this.#schedule(end)
+  }
+
+  async #isStale(): Promise<boolean> {
+    const beat = (await readMeta(this.#db, 'heartbeat')) ?? 0
+    return Math.abs(this.#ports.clock.now() - beat) > STALE_MS
+  }
+
+  async #underLock(): Promise<RunEnd> {
+    const stopBeating = this.#beat()
+    try {
+      const end = await this.#oneRun()
+      if (end.kind !== 'enrol') return end
+      const enrolled = await enrol(this.#db, this.#keys, this.#ports)
+      if (enrolled.ok) return await this.#oneRun()
+      if (enrolled.problem.kind === 'unreachable') return { kind: 'unreachable' }
+      return { kind: 'need', need: enrolled.problem.kind }
+    } finally {
+      stopBeating()
+      this.#tell({ running: null })
+    }
+  }
+
+  async #oneRun(): Promise<RunEnd> {
+    this.#lastTryMs = this.#ports.clock.now()
+    const run = new SyncRun({
+      store: await this.#store(),
+      ports: this.#ports,
+      size: this.#size,
+      tell: (running) => this.#tell({ running }),
+    })
+    const end = await run.run()
+    const need = end.kind === 'need' ? end.need : null
+    const reached = run.reached || (end.kind !== 'unreachable' && end.kind !== 'wait')
+    this.#tell({ reached: end.kind === 'unreachable' ? false : reached, need })
+    if (run.bookChanged) this.#onBook()
+    return end
+  }
+
+  /** Says while it moves that it moves. */
+  #beat(): () => void {
+    let callOff: () => void = () => undefined
+    let over = false
+    const beat = () => {
+      if (over) return
+      writeMeta(this.#db, 'heartbeat', this.#ports.clock.now()).catch(() => undefined)
+      callOff = this.#ports.timer.after(BEAT_MS, beat)
+    }
+    beat()
+    return () => {
+      over = true
+      callOff()
+    }
+  }
+
+  #schedule(end: RunEnd): void {
+    const failed = end.kind === 'unreachable' || end.kind === 'wait'
+    this.#failures = failed ? this.#failures + 1 : 0
+    const asked = end.kind === 'wait' ? (end.afterMs ?? 0) : 0
+    const delay = failed
+      ? asked + backoffMs(this.#failures, this.#ports.ids.share())
+      : IDLE_MS * (0.75 + this.#ports.ids.share() / 2)
+    this.#callOff?.()
+    this.#callOff = null
+    if (this.#stopped) return
+    this.#callOff = this.#ports.timer.after(delay, () => this.#onTimer(failed))
+  }
+
+  /** A hidden page asks for nothing new; what waits is tried all the same. */
+  #onTimer(failed: boolean): void {
+    const hidden = globalThis.document?.visibilityState === 'hidden'
+    if (failed || !hidden) this.poke('timer')
+    else this.#schedule({ kind: 'done' })
+  }
+
+  #tell(change: Partial<SendState>): void {
+    if (!this.#stopped) this.state.set({ ...this.state.get(), ...change })
+  }
+}

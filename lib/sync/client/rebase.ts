@@ -1,0 +1,61 @@
+import type { Op } from '@/lib/sync/protocol/op'
+import { applyOpLocally, rowsTouched, type Touched } from './apply-op'
+import type { Core } from './core'
+import { type OutboxRecord, type RowRecord, rowKey } from './phone-db'
+import { openJson, type Sealed, sealJson } from './seal'
+
+/**
+ * Works out rows again: the shop's row with this phone's ops on top, in the order they were made (P9).
+ * An op stays on top until a whole pull has been applied after the shop took it. A refused op that only
+ * adds something stays too (the work is kept and shown); a refused move does not.
+ */
+const MOVES: readonly Op['kind'][] = ['job.move', 'job.people', 'job.machine']
+
+/** True while an op of the outbox lies on top of the shop's rows. */
+export const isOnTop = (record: Pick<OutboxRecord, 'state' | 'kind'>): boolean =>
+  record.state === 'stuck' ? !MOVES.includes(record.kind) : record.state !== 'done'
+
+/** Ops that lie on top, oldest first, by the key of each row they touch. */
+export type Overlay = Map<string, { at: Touched; ops: Op[] }>
+
+/** Reads the outbox as it would be after `changes`, and orders it by row. */
+export async function readOverlay(
+  core: Core,
+  changes: readonly OutboxRecord[] = [],
+): Promise<Overlay> {
+  const held = await core.db.outbox.where('state').notEqual('done').toArray()
+  const changed = new Map(changes.map((record) => [record.dseq, record]))
+  const records = held.map((record) => changed.get(record.dseq) ?? record)
+  records.sort((a, b) => a.dseq - b.dseq)
+  const overlay: Overlay = new Map()
+  for (const record of records.filter(isOnTop)) {
+    const op = await core.cache.op(core.keys.outbox, record)
+    for (const at of rowsTouched(op)) {
+      const key = rowKey(at.entity, at.id)
+      const entry = overlay.get(key) ?? { at, ops: [] }
+      entry.ops.push(op)
+      overlay.set(key, entry)
+    }
+  }
+  return overlay
+}
+
+type Shop = { base: Sealed | null; seq: number | null; gen: number; jobId: string | null }
+
+/** The record of a row with its ops on top of `shop`; null when nothing is left of it. */
+export async function rebasedRow(
+  core: Core,
+  key: string,
+  shop: Shop & { entity: string; id: string },
+  overlay: Overlay,
+): Promise<Omit<RowRecord, 'turn'> | null> {
+  const entry = overlay.get(key)
+  const record = { key, ...shop, body: null }
+  if (entry === undefined) return shop.base === null ? null : record
+  const base = shop.base === null ? undefined : await openJson(core.keys.store, key, shop.base)
+  const who = { personId: core.personId }
+  const top = entry.ops.reduce((row, op) => applyOpLocally(row, entry.at, op, who), base)
+  if (top === undefined) return null
+  if (top === base) return record
+  return { ...record, jobId: entry.at.jobId, body: await sealJson(core.keys.store, key, top) }
+}

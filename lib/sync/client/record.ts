@@ -1,0 +1,146 @@
+import type { Id } from '@/lib/model/id'
+import { AppError } from '@/lib/model/result'
+import { MAX_OP_BYTES } from '@/lib/sync/protocol/message'
+import { type Op, type OpInput, op as opShape } from '@/lib/sync/protocol/op'
+import { applyOpLocally, rowsTouched, type Touched } from './apply-op'
+import { commit, noWrites, type Writes } from './commit'
+import { type Core, opPlace } from './core'
+import { type OutboxRecord, type PhotoRecord, type RowRecord, readMeta, rowKey } from './phone-db'
+import { sealBytes, sealJson } from './seal'
+import { stampOps } from './stamp'
+import type { NewPhoto } from './views'
+
+/** What one call keeps together. */
+export type Recorded = {
+  ops: readonly OpInput[]
+  /** An id for each op, made before, so that a second try keeps them. */
+  ids: readonly Id[]
+  deviceId: Id
+  nowMs: number
+  photos: readonly NewPhoto[]
+  clearDrafts: readonly string[]
+}
+
+/**
+ * Keeps ops with the rows they change, their photos and the drafts they finish, all in one transaction
+ * (P1): after a kill at any moment either all of it is there or none. Throws AppError `badRecord` when
+ * an op has not the shape the shop takes, `recordTooBig`, or `storeFull` when the phone has no room;
+ * drafts then stay.
+ */
+export async function record(core: Core, of: Recorded): Promise<void> {
+  const photos = await Promise.all(of.photos.map((photo) => sealPhoto(core, photo, of.nowMs)))
+  core.step('photosSealed')
+  try {
+    await commit(core, () => prepare(core, of, photos))
+  } catch (cause) {
+    if (isFull(cause)) throw new AppError('storeFull', { cause })
+    throw cause
+  }
+}
+
+async function prepare(core: Core, of: Recorded, photos: PhotoRecord[]): Promise<Writes> {
+  const { ops, counter } = await stampOps({
+    db: core.db,
+    inputs: of.ops,
+    ids: of.ids,
+    deviceId: of.deviceId,
+    nowMs: of.nowMs,
+  })
+  const checked = ops.map(checkedOp)
+  return {
+    ...noWrites(),
+    outbox: await Promise.all(checked.map((op) => sealOp(core, op, of.nowMs))),
+    rows: await changedRows(core, checked),
+    photos,
+    dropDrafts: [...of.clearDrafts],
+    meta: { stamp: counter },
+  }
+}
+
+function checkedOp(stamped: Op): Op {
+  const read = opShape.safeParse(stamped)
+  if (!read.success) {
+    const fields = read.error.issues.map((issue) => issue.path.join('.'))
+    throw new AppError('badRecord', { context: { kind: stamped.kind, fields }, cause: read.error })
+  }
+  return read.data
+}
+
+async function sealOp(core: Core, op: Op, nowMs: number): Promise<OutboxRecord> {
+  const sealed = await sealJson(core.keys.outbox, opPlace(op.dseq, op.id), op)
+  if (sealed.byteLength > MAX_OP_BYTES) throw new AppError('recordTooBig')
+  core.step('opSealed')
+  return {
+    dseq: op.dseq,
+    opId: op.id,
+    kind: op.kind,
+    jobId: op.jobId,
+    entityId: op.entityId,
+    since: nowMs,
+    bytes: sealed.byteLength,
+    state: 'waiting',
+    reason: null,
+    detail: null,
+    unsettled: 0,
+    takenAt: null,
+    op: sealed,
+  }
+}
+
+async function sealPhoto(core: Core, photo: NewPhoto, nowMs: number): Promise<PhotoRecord> {
+  return {
+    hash: photo.hash,
+    jobId: photo.jobId,
+    mime: photo.mime,
+    size: photo.bytes.byteLength,
+    since: nowMs,
+    state: 'waiting',
+    reason: null,
+    bytes: await sealBytes(core.keys.store, photoPlace(photo.hash), photo.bytes),
+  }
+}
+
+/** The place a photo is sealed for. */
+export const photoPlace = (hash: string) => `photo/${hash}`
+
+/** Every row the ops change, as it is after all of them. */
+async function changedRows(core: Core, ops: Op[]): Promise<Omit<RowRecord, 'turn'>[]> {
+  const places = new Map<string, Touched>()
+  for (const op of ops) for (const at of rowsTouched(op)) places.set(rowKey(at.entity, at.id), at)
+  const gen = (await readMeta(core.db, 'gen')) ?? 0
+  const rows = await Promise.all(
+    [...places].map(([key, at]) => changedRow(core, { key, at, ops, gen })),
+  )
+  return rows.filter((row) => row !== null)
+}
+
+async function changedRow(
+  core: Core,
+  of: { key: string; at: Touched; ops: Op[]; gen: number },
+): Promise<Omit<RowRecord, 'turn'> | null> {
+  const { key, at } = of
+  const held = await core.db.row.get(key)
+  const before = held && (await core.cache.row(core.keys, held))
+  const who = { personId: core.personId }
+  const after = of.ops.reduce((row, op) => applyOpLocally(row, at, op, who), before)
+  if (after === undefined || after === before) return null
+  const body = await sealJson(core.keys.store, key, after)
+  core.step('rowSealed')
+  return {
+    key,
+    entity: at.entity,
+    id: at.id,
+    jobId: at.jobId,
+    seq: held?.seq ?? null,
+    gen: held?.gen ?? of.gen,
+    base: held?.base ?? null,
+    body,
+  }
+}
+
+/** IndexedDB's word for "no room", also as the cause of an aborted transaction. */
+function isFull(cause: unknown): boolean {
+  if (typeof cause !== 'object' || cause === null) return false
+  const { name, inner } = cause as { name?: unknown; inner?: unknown }
+  return name === 'QuotaExceededError' || isFull(inner)
+}
