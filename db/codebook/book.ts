@@ -1,10 +1,11 @@
 import type { CodeBookItem, FaultItem } from '@/lib/model/code-book'
 import { AIR_CHECKS } from './checks-air'
+import { BATTERY_CHECKS } from './checks-battery'
 import { CARBURETTOR_CHECKS } from './checks-carburettor'
 import { COIL_CHECKS } from './checks-coil'
+import { ELECTRICS_CHECKS } from './checks-electrics'
 import { ENGINE_CHECKS } from './checks-engine'
 import { INJECTOR_CHECKS } from './checks-injector'
-import { POWER_CHECKS } from './checks-power'
 import { PUMP_CHECKS } from './checks-pump'
 import { SIGNAL_CHECKS } from './checks-signal'
 import { SPARK_CHECKS } from './checks-spark'
@@ -52,7 +53,8 @@ export const BOOK_ITEMS: CodeBookItem[] = [
   ...COIL_CHECKS,
   ...SPARK_CHECKS,
   ...SIGNAL_CHECKS,
-  ...POWER_CHECKS,
+  ...BATTERY_CHECKS,
+  ...ELECTRICS_CHECKS,
   ...AIR_CHECKS,
   ...ENGINE_CHECKS,
   ...SWAPS,

@@ -134,6 +134,7 @@ export const AIR_CHECKS: CheckItem[] = [
         text: 'Water only. Never spray fuel or brake cleaner at a running engine: it burns.',
       },
       MOVES,
+      MONOXIDE,
     ],
     record: 'The joint, and whether it repeats.',
     outcomes: [

@@ -1,5 +1,5 @@
 import type { CheckItem } from '@/lib/model/code-book'
-import { HIGH_VOLTAGE, HOT_ENGINE, KEY_OFF, MOVES, MOVING_PARTS } from './cautions'
+import { HIGH_VOLTAGE, HOT_ENGINE, KEY_OFF, MONOXIDE, MOVES, MOVING_PARTS } from './cautions'
 import { GUESS, PRACTICE } from './sources'
 
 /** Checks of the coil's own circuit, from a look that costs nothing to the wire that proves the driver. */
@@ -36,7 +36,7 @@ export const COIL_CHECKS: CheckItem[] = [
       },
       { text: 'Push the plug on until it clicks.', caution: null },
     ],
-    cautions: [HIGH_VOLTAGE],
+    cautions: [HOT_ENGINE],
     record: 'What you saw, and a photo of the open plug.',
     outcomes: [
       { id: 'sound', name: 'Clean, dry, tight', good: true },
@@ -354,7 +354,7 @@ export const COIL_CHECKS: CheckItem[] = [
         caution: null,
       },
     ],
-    cautions: [HIGH_VOLTAGE, MOVES],
+    cautions: [HIGH_VOLTAGE, MOVES, MONOXIDE],
     record: 'Spark strong to the last turn, weak, or gone before the engine stopped.',
     outcomes: [
       { id: 'stays', name: 'Strong until the engine stops turning', good: true },

@@ -1,5 +1,5 @@
 import type { CheckItem } from '@/lib/model/code-book'
-import { MOVES, MOVING_PARTS, VAPOUR } from './cautions'
+import { MONOXIDE, MOVES, MOVING_PARTS, VAPOUR } from './cautions'
 import { GUESS, PRACTICE } from './sources'
 
 /** The injector and what the module sends it. */
@@ -131,7 +131,7 @@ export const INJECTOR_CHECKS: CheckItem[] = [
   },
   {
     kind: 'check',
-    id: 'freshInjector',
+    id: 'injectorListen',
     name: 'Listen and compare the injector',
     purpose: 'Parts a blocked injector from one that works: sound, and speed when fuel is helped.',
     gate: { fuelling: ['injection'] },
@@ -155,7 +155,7 @@ export const INJECTOR_CHECKS: CheckItem[] = [
       { text: 'Start it. Listen: sharp even ticks, dull, or none.', caution: MOVING_PARTS },
       { text: 'Key off. Note whether the plug was dry after it died.', caution: null },
     ],
-    cautions: [MOVING_PARTS, MOVES],
+    cautions: [MOVING_PARTS, MOVES, VAPOUR, MONOXIDE],
     record: 'Ticks sharp, dull or none.',
     outcomes: [
       { id: 'sharp', name: 'Sharp even ticks', good: true },

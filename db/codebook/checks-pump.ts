@@ -30,7 +30,7 @@ export const PUMP_CHECKS: CheckItem[] = [
     ],
     cautions: [
       {
-        signal: 'NOTICE',
+        signal: 'WARNING',
         text: 'Key on only, no start. If you smell petrol, key off and step back.',
       },
     ],
@@ -126,7 +126,7 @@ export const PUMP_CHECKS: CheckItem[] = [
   },
   {
     kind: 'check',
-    id: 'fuelPressure',
+    id: 'fuelPressureGauge',
     name: 'Fuel pressure with a gauge',
     purpose: 'Shows whether pump, filter and regulator make the pressure the injector needs.',
     gate: { fuelling: ['injection'] },

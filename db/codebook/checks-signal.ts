@@ -1,5 +1,5 @@
 import type { CheckItem } from '@/lib/model/code-book'
-import { HOT_ENGINE, MOVES, MOVING_PARTS } from './cautions'
+import { HOT_ENGINE, MONOXIDE, MOVES, MOVING_PARTS } from './cautions'
 import { GUESS, PRACTICE } from './sources'
 
 /** Crank signal, stop circuit and tip-over sensor. */
@@ -225,7 +225,7 @@ export const SIGNAL_CHECKS: CheckItem[] = [
         caution: null,
       },
     ],
-    cautions: [MOVES],
+    cautions: [MOVES, MONOXIDE],
     record: 'Level or not, tight or not, ran after it or not.',
     outcomes: [
       { id: 'noChange', name: 'Tight and level, no change', good: true },

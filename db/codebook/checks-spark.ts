@@ -1,5 +1,5 @@
 import type { CheckItem } from '@/lib/model/code-book'
-import { HIGH_VOLTAGE, HOT_ENGINE, MOVES, VAPOUR } from './cautions'
+import { HIGH_VOLTAGE, HOT_ENGINE, MONOXIDE, MOVES, VAPOUR } from './cautions'
 import { GUESS, PRACTICE } from './sources'
 
 /** Spark: plug, lead and the pulse that drives the coil. */
@@ -96,7 +96,7 @@ export const SPARK_CHECKS: CheckItem[] = [
       },
       { text: 'Look and listen: ticking, sparks outside, or does it die at once?', caution: null },
     ],
-    cautions: [HIGH_VOLTAGE, MOVES],
+    cautions: [HIGH_VOLTAGE, MOVES, MONOXIDE],
     record: 'Tracks, ticking, change with mist.',
     outcomes: [
       { id: 'sound', name: 'No tracks, mist changes nothing', good: true },

@@ -18,7 +18,6 @@ const ROWS: readonly Row[] = [
   ['plugOut', 'Spark plug out', 4, [], true],
   ['coilPlugOff', 'Coil connector off', 1, ['sidePanelOff'], true],
   ['modulePlugOff', 'Control module connector off', 2, ['seatOff'], true],
-  ['pumpPlugOff', 'Fuel pump connector off', 1, ['tankCoverOff'], true],
   ['railRelieved', 'Fuel pressure let off', 3, ['tankCoverOff'], true],
   ['gaugeInLine', 'Pressure gauge in the fuel line', 4, ['railRelieved'], true],
   ['airboxOpen', 'Air box open', 2, ['seatOff'], true],

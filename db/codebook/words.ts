@@ -27,7 +27,6 @@ const CIRCUITS: readonly Row[] = [
   ['crankSensor', 'Crank position sensor'],
   ['throttleSensor', 'Throttle position sensor'],
   ['mapSensor', 'Intake pressure sensor'],
-  ['airTempSensor', 'Air temperature sensor'],
   ['coolantTempSensor', 'Coolant temperature sensor'],
   ['idleAir', 'Idle air valve'],
   ['systemVoltage', 'Battery and module supply volts'],
