@@ -15,6 +15,9 @@ export const ALLOWANCES = {
   stream: { name: 'stream', limit: 120, windowMs: 60_000 },
 } as const satisfies Record<string, Allowance>
 
+/** Event streams one process keeps open at once. */
+export const MAX_STREAMS = 500
+
 const MAX_KEYS = 20_000
 const counts = new Map<string, { since: number; count: number }>()
 
