@@ -3,6 +3,7 @@ import type { Job, JobState } from '@/lib/model/job'
 import type { PartLine, PartLineState } from '@/lib/model/part-request'
 import type { Actor, Person } from '@/lib/model/person'
 import { fail, ok, type Result } from '@/lib/model/result'
+import type { Shop } from '@/lib/model/shop'
 import type { Instant } from '@/lib/model/time'
 import { asShop } from '../client'
 import { appendAudit } from './audit'
@@ -10,6 +11,7 @@ import { lockShop, takeChanges } from './changes'
 import { assignJob, findJob, setJobStand, unassignJob } from './jobs'
 import { findPartRequest, movePartLine, setPartLine } from './part-requests'
 import { peopleById } from './people'
+import { getShop } from './shop'
 
 /**
  * What the desk writes: the row, its change number and its audit entry in one transaction. The shop's
@@ -56,7 +58,7 @@ type Moved = Pick<Line, 'state' | 'number' | 'price'>
 export function changePartLine<P>(
   actor: Actor,
   input: { requestId: Id; lineId: Id; stamp: Stamp },
-  decide: (line: Line) => Result<Moved, P>,
+  decide: (line: Line, shop: Shop) => Result<Moved, P>,
 ): Promise<Result<null, P | NotThere>> {
   const { requestId, lineId, stamp } = input
   return asShop(actor.shopId, async (tx) => {
@@ -64,7 +66,7 @@ export function changePartLine<P>(
     const request = await findPartRequest(tx, requestId)
     const line = request?.lines.find(({ id }) => id === lineId)
     if (!request || !line) return fail({ kind: 'notFound' as const })
-    const decided = decide(line)
+    const decided = decide(line, await getShop(tx))
     if (!decided.ok) return decided
     const { state: to, number, price } = decided.value
     await movePartLine(tx, { lineId, from: line.state, to })

@@ -2,7 +2,7 @@ import type { LogShape } from '@/components/ui/log-icon'
 import type { CodeSeen } from '@/lib/model/code-seen'
 import type { LogBody, LogEntry } from '@/lib/model/log-entry'
 import { assertNever } from '@/lib/model/result'
-import { MACHINE_WORDS, PEOPLE_WORDS, WAY_OUT_WORDS } from '../desk-words'
+import { MACHINE_WORDS, PEOPLE_WORDS, WAY_OUT_WORDS } from '../../field/words'
 
 /** Looks up the code book's names; an id the book does not know answers itself. */
 export type BookNames = {

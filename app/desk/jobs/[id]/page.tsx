@@ -1,0 +1,11 @@
+import type { Metadata } from 'next'
+import { Board } from '@/components/desk/board/board'
+import { assignPerson } from '../../actions'
+import { movePartLine } from '../../parts/actions'
+
+export const metadata: Metadata = { title: 'Job' }
+
+/** The same board with the job of the address picked. */
+export default function DeskJobPage() {
+  return <Board assign={assignPerson} move={movePartLine} />
+}

@@ -1,0 +1,130 @@
+'use client'
+
+import { useEffect, useMemo, useRef } from 'react'
+import { keepNights } from '@/components/field/theme'
+import { announce } from '@/components/ui/announce'
+import type { BoardJob, DeskBoard, DeskJob } from '@/lib/model/desk'
+import { byExposure } from '@/lib/shop/exposure'
+import { may } from '@/lib/shop/permissions'
+import { isDark } from '../daylight/day-window'
+import { DaylightPanel } from '../daylight/daylight-panel'
+import type { AssignAction, MoveLineAction } from '../desk-actions'
+import { useDesk } from '../desk-context'
+import { deskPaths, usePickedJob, useSoftJobLinks } from '../desk-path'
+import { readSentence } from '../desk-sentences'
+import { HandsPanel } from '../hands/hands-panel'
+import { PickedJob } from '../job/picked-job'
+import { useJobCase } from '../job/use-job-case'
+import { PartsAsked } from '../parts/parts-asked'
+import { useBoard, useDeskJob } from '../use-desk-reads'
+import { useNow } from '../use-now'
+import { boardNews } from './board-news'
+import { ClosedJobs } from './closed-jobs'
+import { JobsWire } from './jobs-wire'
+import { useFresh } from './use-fresh'
+
+type Props = { assign: AssignAction; move: MoveLineAction }
+
+/** The board: jobs on the wire, the picked job, and what is to be done about it. */
+export function Board(actions: Props) {
+  const { actor } = useDesk()
+  const whose = may(actor.roles, 'job.seeAll') ? 'all' : 'own'
+  const board = useBoard(whose)
+  const picked = usePickedJob()
+  const found = useDeskJob(picked)
+  const root = useRef<HTMLElement>(null)
+  useSoftJobLinks(root)
+  useNews(board.data)
+  return (
+    <main
+      ref={root}
+      id="desk-main"
+      tabIndex={-1}
+      className="desk-board"
+      data-picked={picked !== null}
+    >
+      <Jobs board={board.data} error={board.error} picked={picked} />
+      <Picked found={found.data} error={found.error} picked={picked} actions={actions} />
+    </main>
+  )
+}
+
+type JobsProps = { board: DeskBoard | undefined; error: Error | null; picked: string | null }
+
+function Jobs({ board, error, picked }: JobsProps) {
+  const now = useNow()
+  const fresh = useFresh(board?.open, picked)
+  const dark = useMemo(
+    () =>
+      ({ job }: Pick<BoardJob, 'job'>) =>
+        now !== null && job.place !== null && isDark(job.place, now),
+    [now],
+  )
+  const rows = useMemo(() => byExposure(board?.open ?? [], (job) => dark({ job })), [board, dark])
+  useNights(rows)
+  return (
+    <section className="desk-jobs" aria-label="Jobs">
+      <div className="flex items-end justify-between">
+        <h1 className="caps text-figure">{board?.whose === 'own' ? 'My jobs' : 'Open jobs'}</h1>
+        <span className="figures text-plate">{board ? rows.length : ''}</span>
+      </div>
+      {error ? <p className="mt-2 font-bold text-nogo">{readSentence(error)}</p> : null}
+      {!board && !error ? <p className="mt-2">Reading the board.</p> : null}
+      {board && rows.length === 0 ? <p className="mt-2">No open jobs.</p> : null}
+      <JobsWire rows={rows} picked={picked} fresh={fresh} dark={dark} />
+      <ClosedJobs rows={board?.closed ?? []} />
+    </section>
+  )
+}
+
+type PickedProps = {
+  found: DeskJob | undefined
+  error: Error | null
+  picked: string | null
+  actions: Props
+}
+
+function Picked({ found, error, picked, actions }: PickedProps) {
+  const reckoned = useJobCase(found)
+  return (
+    <>
+      <section className="desk-picked" aria-label="The picked job">
+        <a href={deskPaths.board} className="desk-back">
+          All jobs
+        </a>
+        {picked === null ? <p className="text-body text-ink2">Pick a job to see it here.</p> : null}
+        {error ? <p className="font-bold text-nogo">{readSentence(error)}</p> : null}
+        {picked !== null && !found && !error ? <p>Reading the job.</p> : null}
+        {found ? <PickedJob found={found} reckoned={reckoned} /> : null}
+      </section>
+      <section className="desk-aside" aria-label="Daylight, hands and parts">
+        {found ? (
+          <>
+            <DaylightPanel place={found.job.place} />
+            <HandsPanel key={found.job.id} found={found} assign={actions.assign} />
+            <PartsAsked found={found} move={actions.move} />
+          </>
+        ) : null}
+      </section>
+    </>
+  )
+}
+
+/** Says what changed on the board to people who do not see it move. */
+function useNews(board: DeskBoard | undefined) {
+  const before = useRef<DeskBoard | undefined>(undefined)
+  useEffect(() => {
+    if (before.current && board)
+      for (const words of boardNews(before.current, board)) announce(words)
+    before.current = board
+  }, [board])
+}
+
+/** Keeps the nights at the first job's place, by which theme `auto` chooses on this browser. */
+function useNights(rows: readonly BoardJob[]) {
+  const now = useNow()
+  const place = rows.find(({ job }) => job.place !== null)?.job.place
+  useEffect(() => {
+    if (place && now !== null) keepNights(place, now)
+  }, [place, now])
+}

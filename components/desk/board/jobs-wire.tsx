@@ -1,0 +1,82 @@
+'use client'
+
+import { JobTag } from '@/components/ui/job-tag'
+import { WitnessMark } from '@/components/ui/witness-mark'
+import type { BoardJob } from '@/lib/model/desk'
+import { EXPOSURES, type Exposure, exposureOf } from '@/lib/shop/exposure'
+import { counted, JOB_STATE_WORDS, WAY_OUT_WORDS } from '../../field/words'
+import { useDesk } from '../desk-context'
+import { deskPaths } from '../desk-path'
+import { whenWords } from '../desk-time'
+import { useNow } from '../use-now'
+
+type Props = {
+  rows: readonly BoardJob[]
+  picked: string | null
+  /** Entries that came in since the job was last looked at on this desk. */
+  fresh: ReadonlyMap<string, number>
+  dark: (row: BoardJob) => boolean
+}
+
+/** Open jobs strung on a wire, the most exposed first. */
+export function JobsWire({ rows, picked, fresh, dark }: Props) {
+  return (
+    <ol className="desk-wire">
+      {rows.map((row) => (
+        <li key={row.job.id}>
+          <div className="flex items-center gap-3">
+            <JobTag
+              className="min-w-0 flex-1"
+              complaint={row.job.complaint.words}
+              number={row.job.number}
+              machine={row.machineWords}
+              href={deskPaths.job(row.job.id)}
+              current={row.job.id === picked}
+            />
+            <WitnessMark
+              state={row.photosMissing > 0 ? 'broken' : 'whole'}
+              count={row.photosMissing}
+            />
+          </div>
+          <BelowTag row={row} fresh={fresh.get(row.job.id) ?? 0} dark={dark(row)} />
+        </li>
+      ))}
+    </ol>
+  )
+}
+
+const EXPOSURE_WORDS: Partial<Record<Exposure, string>> = {
+  hurtOrMissing: 'Hurt or missing',
+  exposedAndStill: 'Exposed',
+  noPosition: 'No position',
+  aloneInTheDark: 'Alone, dark',
+}
+
+function BelowTag({ row, fresh, dark }: { row: BoardJob; fresh: number; dark: boolean }) {
+  const { shop } = useDesk()
+  const now = useNow()
+  const { job } = row
+  const exposure = exposureOf(job, dark)
+  const heard = row.heardAt ?? null
+  const inWords =
+    row.photosMissing > 0 ? `${counted(row.photosMissing, 'photo')} on the phone` : 'all in'
+  return (
+    <p className="mt-1 flex flex-wrap items-baseline gap-x-2 pl-12 text-second text-ink2">
+      {EXPOSURE_WORDS[exposure] ? (
+        <strong
+          className={EXPOSURES[exposure] < 4 ? 'caps text-row text-nogo' : 'caps text-row text-ink'}
+        >
+          {EXPOSURE_WORDS[exposure]}
+        </strong>
+      ) : null}
+      <strong className="caps text-row text-ink">
+        {job.wayOut ? WAY_OUT_WORDS[job.wayOut] : JOB_STATE_WORDS[job.state]}
+      </strong>
+      <span>
+        {inWords}
+        {heard ? `, ${whenWords(heard, shop.zone, now)}` : ', nothing written yet'}
+      </span>
+      {fresh > 0 ? <span className="desk-count">{fresh} new</span> : null}
+    </p>
+  )
+}

@@ -1,0 +1,13 @@
+import type { Result } from '@/lib/model/result'
+import type { AssignProblem, LineProblem } from '@/lib/shop/desk-moves'
+import type { AssignForm } from './hands/assign.schema'
+import type { LineMoveForm } from './parts/line-move.schema'
+
+/** What every desk action may answer besides its own refusals. */
+export type DeskProblem = { kind: 'signIn' | 'invalid' | 'forbidden' | 'notFound' }
+
+/** The server actions of the desk; pages hand them in, so that components know no routes. */
+export type AssignAction = (form: AssignForm) => Promise<Result<null, DeskProblem | AssignProblem>>
+export type MoveLineAction = (
+  form: LineMoveForm,
+) => Promise<Result<null, DeskProblem | LineProblem>>

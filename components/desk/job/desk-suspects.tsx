@@ -1,0 +1,102 @@
+'use client'
+
+import { useMemo, useState } from 'react'
+import { SuspectRows } from '@/components/suspects/suspect-rows'
+import { Key } from '@/components/ui/key'
+import { RuleEdge } from '@/components/ui/rule-edge'
+import type { Suspect } from '@/lib/diag/belief'
+import type { DeskJob } from '@/lib/model/desk'
+import { bookNames } from '../log/book-names'
+import { tellEntry } from '../log/tell-entry'
+import type { JobCase } from './use-job-case'
+
+/** Rows shown before the rest is asked for. */
+const FIRST_ROWS = 6
+
+/** The suspects as the log leaves them, with the reasons of each on asking. */
+export function DeskSuspects({ found, reckoned }: { found: DeskJob; reckoned: JobCase }) {
+  const [open, setOpen] = useState<string | null>(null)
+  const [all, setAll] = useState(false)
+  const words = useMemo(() => {
+    const names = bookNames(reckoned.index)
+    return new Map(found.entries.map((entry) => [entry.id, tellEntry(entry, names).title]))
+  }, [found.entries, reckoned.index])
+  const belief = reckoned.answer?.belief
+  return (
+    <section className="mt-7" aria-busy={reckoned.working}>
+      <RuleEdge end="of 100">Suspects after</RuleEdge>
+      <p className="text-second text-ink2">More than one can be true. {asOf(found, reckoned)}</p>
+      {reckoned.failed ? (
+        <p className="font-bold text-nogo">
+          The suspects could not be worked out here. The job log below is whole.
+        </p>
+      ) : null}
+      {belief ? (
+        <>
+          <Notices notices={belief.notices} />
+          <div className="mt-2">
+            <SuspectRows
+              suspects={all ? belief.suspects : belief.suspects.slice(0, FIRST_ROWS)}
+              entryWords={(id) => words.get(id) ?? 'an entry of the log'}
+              open={open}
+              onOpen={setOpen}
+              why={(suspect) => <WhyList suspect={suspect} />}
+            />
+          </div>
+          {belief.suspects.length > FIRST_ROWS ? (
+            <Key small={true} quiet={true} className="mt-3" onClick={() => setAll(!all)}>
+              {all ? 'Show the first six' : `Show all ${belief.suspects.length}`}
+            </Key>
+          ) : null}
+        </>
+      ) : null}
+    </section>
+  )
+}
+
+function asOf({ entries }: DeskJob, { index, working }: JobCase): string {
+  if (!index) return 'Reading the code book.'
+  const last = entries.at(-1)
+  const after = last ? `after ${entries.length} entries` : 'from the complaint alone'
+  return `Worked out here ${after}, code book version ${index.version}.${working ? ' Working.' : ''}`
+}
+
+const NOTICE_WORDS = {
+  moreThanOneLikely: 'More than one fault is likely.',
+  maybeNotInList: 'The fault may not be in this list.',
+}
+
+function Notices({ notices }: { notices: readonly (keyof typeof NOTICE_WORDS)[] }) {
+  return notices.map((notice) => (
+    <p key={notice} className="mt-1 font-bold">
+      {NOTICE_WORDS[notice]}
+    </p>
+  ))
+}
+
+/** Each piece of evidence and how much it moved this suspect, as factors of the odds. */
+function WhyList({ suspect }: { suspect: Suspect }) {
+  return (
+    <ul className="mt-1 border-l-4 border-ink pl-3 text-second">
+      {suspect.why.map((why) => (
+        <li
+          key={`${why.about} ${why.entryId ?? ''} ${why.label}`}
+          className="flex justify-between gap-3"
+        >
+          <span className="min-w-0">{why.label}</span>
+          <span className="figures shrink-0 text-ink2">
+            {factorWords(why.logRatio, why.saysNothing)}
+          </span>
+        </li>
+      ))}
+    </ul>
+  )
+}
+
+/** `odds x 3.2` or `odds / 3.2`; evidence that moves nothing says so. */
+function factorWords(logRatio: number, saysNothing: boolean): string {
+  if (saysNothing || Math.abs(logRatio) < 0.005) return 'says nothing'
+  const factor = Math.exp(Math.abs(logRatio))
+  const shown = factor >= 100 ? Math.round(factor).toString() : factor.toPrecision(2)
+  return logRatio > 0 ? `odds × ${shown}` : `odds ÷ ${shown}`
+}

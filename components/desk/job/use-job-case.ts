@@ -1,0 +1,64 @@
+import { useQuery } from '@tanstack/react-query'
+import { useMemo } from 'react'
+import { specForEngine } from '@/components/engine/advice'
+import { engine } from '@/components/engine/engine-client'
+import { keyOf } from '@/components/engine/use-engine'
+import type { Answer, Question } from '@/components/engine/work'
+import { type BookIndex, indexBook } from '@/lib/diag/book-index'
+import type { DeskJob } from '@/lib/model/desk'
+import { useDeskBook } from '../use-desk-reads'
+
+/** The code book version the job's newest entry was written with; null: none says, take the newest. */
+export function bookVersionOf(found: Pick<DeskJob, 'entries'>): number | null {
+  const versions = found.entries.flatMap(({ bookVersion }) =>
+    bookVersion === null ? [] : [bookVersion],
+  )
+  return versions.length === 0 ? null : Math.max(...versions)
+}
+
+/** What the engine is asked: the very input the phone gives it, from the same entries and spec sheet. */
+export function questionOf(found: DeskJob): Question {
+  return {
+    case: {
+      features: { ...found.model?.features, ...found.machine?.features },
+      spec: specForEngine(found.model?.specSheet ?? null),
+      job: { complaint: found.job.complaint },
+      entries: found.entries,
+      meter: null,
+    },
+    means: null,
+    outlookOf: [],
+  }
+}
+
+export type JobCase = {
+  index: BookIndex | null
+  answer: Answer | null
+  /** A newer answer is being worked out; the one shown is of fewer entries. */
+  working: boolean
+  failed: boolean
+}
+
+/** Suspects of a job, worked out here by the engine of the phone. The last answer stands meanwhile. */
+export function useJobCase(found: DeskJob | undefined): JobCase {
+  const version = found ? bookVersionOf(found) : null
+  const book = useDeskBook(version, found !== undefined)
+  const index = useMemo(() => (book.data ? indexBook(book.data) : null), [book.data])
+  const question = useMemo(() => (found ? questionOf(found) : null), [found])
+  const reckoned = useQuery<Answer>({
+    queryKey: ['reckoned', found?.job.id, index?.version, question ? keyOf(question) : null],
+    queryFn: () => {
+      if (!index || !question) throw new Error('asked before the book was there')
+      return engine.ask(index, question)
+    },
+    enabled: index !== null && question !== null,
+    staleTime: Number.POSITIVE_INFINITY,
+    placeholderData: (before, query) => (query?.queryKey[1] === found?.job.id ? before : undefined),
+  })
+  return {
+    index,
+    answer: reckoned.data ?? null,
+    working: reckoned.isPlaceholderData || reckoned.isPending,
+    failed: reckoned.isError || book.isError,
+  }
+}

@@ -1,0 +1,153 @@
+'use client'
+
+import { useMemo } from 'react'
+import { shortUnit } from '@/components/reading-strip/figures'
+import { VerdictLine } from '@/components/reading-strip/verdict-line'
+import { Figure } from '@/components/ui/figure'
+import { LogIcon } from '@/components/ui/log-icon'
+import type { BookIndex } from '@/lib/diag/book-index'
+import type { DeskJob } from '@/lib/model/desk'
+import type { LogRow } from '@/lib/model/log-entry'
+import { clockTime, span } from '../../field/times'
+import { useDesk } from '../desk-context'
+import { dayName } from '../desk-time'
+import { bookNames } from './book-names'
+import { PhotoFrame } from './photo-frame'
+import { type TellingLine, tellEntry } from './tell-entry'
+
+/** Gaps over 20 min show as a broken wire with the time (design 5c). */
+const GAP_MS = 20 * 60_000
+
+type Props = { found: DeskJob; index: BookIndex | null }
+
+/** The job log, oldest first, in the shop's order: an ordered list strung on a wire. */
+export function JobLog({ found, index }: Props) {
+  const names = useMemo(() => bookNames(index), [index])
+  const struck = useMemo(() => struckBy(found.entries), [found.entries])
+  const who = useMemo(
+    () => new Map(found.people.map(({ id, name }) => [id, name ?? 'name erased'])),
+    [found.people],
+  )
+  const here = new Set(found.photos.map(({ hash }) => hash))
+  if (found.entries.length === 0)
+    return <p className="text-second text-ink2">Nothing written yet.</p>
+  return (
+    <ol className="desk-log">
+      {found.entries.map((entry, at) => (
+        <LogItem
+          key={entry.id}
+          entry={entry}
+          line={lineOf(entry, found.entries, names)}
+          before={found.entries[at - 1] ?? null}
+          struck={struck.has(entry.id)}
+          author={who.get(entry.authorId) ?? 'somebody who left'}
+          photoHere={entry.body.kind === 'photo' && here.has(entry.body.photo.hash)}
+        />
+      ))}
+    </ol>
+  )
+}
+
+/** A correction repeats the shape of the entry it points back to. */
+function lineOf(
+  entry: LogRow,
+  all: readonly LogRow[],
+  names: ReturnType<typeof bookNames>,
+): TellingLine & { bar: boolean } {
+  const line = tellEntry(entry, names)
+  if (entry.supersedes === null) return { ...line, bar: false }
+  const earlier = all.find(({ id }) => id === entry.supersedes)
+  const shape =
+    entry.body.kind === 'correction' && earlier ? tellEntry(earlier, names).shape : line.shape
+  return { ...line, shape, bar: true }
+}
+
+/** Entries that a later one took out of evidence. */
+const struckBy = (entries: readonly LogRow[]) =>
+  new Set(entries.flatMap(({ supersedes }) => (supersedes === null ? [] : [supersedes])))
+
+type ItemProps = {
+  entry: LogRow
+  line: TellingLine & { bar: boolean }
+  before: LogRow | null
+  struck: boolean
+  author: string
+  photoHere: boolean
+}
+
+function LogItem({ entry, line, before, struck, author, photoHere }: ItemProps) {
+  const { shop } = useDesk()
+  const gap = before ? Date.parse(entry.happenedAt) - Date.parse(before.happenedAt) : 0
+  const newDay =
+    !before || dayName(before.happenedAt, shop.zone) !== dayName(entry.happenedAt, shop.zone)
+  return (
+    <li className={gap > GAP_MS ? 'desk-log-gap' : undefined}>
+      {newDay ? (
+        <p className="desk-log-day figures">{dayName(entry.happenedAt, shop.zone)}</p>
+      ) : null}
+      {gap > GAP_MS ? <p className="desk-log-gap-words figures">{span(gap)} later</p> : null}
+      <div className="desk-log-line">
+        <time dateTime={entry.happenedAt} className="figures text-second">
+          {clockTime(entry.happenedAt, shop.zone)}
+        </time>
+        <span className="desk-log-node">
+          <LogIcon shape={line.shape} bar={line.bar} className="size-8" />
+        </span>
+        <div className={struck ? 'min-w-0 line-through' : 'min-w-0'}>
+          <h3 className="text-row font-bold">
+            <span className="visually-hidden">
+              {line.bar ? `${line.kind}, correction: ` : `${line.kind}: `}
+            </span>
+            {line.title}
+          </h3>
+          <ReadingLine entry={entry} />
+          {line.lines.map((text) => (
+            <p key={text} className="text-second text-ink2">
+              {text}
+            </p>
+          ))}
+          {entry.body.kind === 'photo' ? (
+            <PhotoFrame photo={entry.body.photo} caption={entry.body.caption} here={photoHere} />
+          ) : null}
+          <Provenance entry={entry} author={author} kind={line.kind} struck={struck} />
+        </div>
+      </div>
+    </li>
+  )
+}
+
+function ReadingLine({ entry: { body } }: { entry: LogRow }) {
+  if (body.kind !== 'reading') return null
+  return (
+    <p className="flex flex-wrap items-center gap-x-3">
+      <Figure
+        value={body.overRange ? 'OL' : body.asTyped}
+        unit={shortUnit(body.quantity)}
+        size="row"
+      />
+      <VerdictLine verdict={body.result?.verdict ?? null} />
+    </p>
+  )
+}
+
+function Provenance({
+  entry,
+  author,
+  kind,
+  struck,
+}: {
+  entry: LogRow
+  author: string
+  kind: string
+  struck: boolean
+}) {
+  const { shop } = useDesk()
+  const late = Date.parse(entry.receivedAt) - Date.parse(entry.happenedAt) > 60_000
+  return (
+    <p className="text-second text-ink2">
+      {kind}, {author}
+      {late ? `, in at ${clockTime(entry.receivedAt, shop.zone)}` : ''}
+      {struck ? '. Taken out of evidence below.' : ''}
+    </p>
+  )
+}
