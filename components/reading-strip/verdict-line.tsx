@@ -1,0 +1,30 @@
+import { JawGlyph } from './jaw-glyph'
+import { type Verdict, verdictWords } from './verdict'
+
+/** Colour of the verdict word: ink in the day theme, where coloured words are the first to go. */
+export const VERDICT_INK: Record<Verdict, string> = {
+  in: 'text-(--verdict-go)',
+  outLow: 'text-(--verdict-nogo)',
+  outHigh: 'text-(--verdict-nogo)',
+  tooClose: 'text-(--verdict-close)',
+}
+
+/** Jaw glyph and verdict word in one line, as the log and the desk show it. */
+export function VerdictLine({
+  verdict,
+  large = false,
+}: {
+  verdict: Verdict | null
+  large?: boolean
+}) {
+  return (
+    <span className="inline-flex items-center gap-2">
+      <JawGlyph verdict={verdict} size={large ? 28 : 20} />
+      <span
+        className={`caps ${large ? 'text-screen' : 'text-section'} ${verdict === null ? 'text-ink2' : VERDICT_INK[verdict]}`}
+      >
+        {verdictWords(verdict)}
+      </span>
+    </span>
+  )
+}

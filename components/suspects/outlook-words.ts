@@ -1,0 +1,45 @@
+import type { Outlook } from './suspect-rows'
+
+/** Two suspects' marks nearer than this (of 100) are no difference a person can use. */
+const SAYS_NOTHING_UNDER = 3
+
+export type Mark = {
+  outcome: string
+  /** `if good`, `if bad`, or the outcome's own name when there are more than two. */
+  words: string
+  shape: 'ring' | 'cross' | 'diamond' | 'square'
+  /** Chance of the suspect after this outcome, 0 to 1. */
+  chance: number
+}
+
+/** Where each outcome of the check that is up would put a suspect; empty without a check. */
+export function marksOf(fault: string, outlook: readonly Outlook[]): Mark[] {
+  const two = outlook.length === 2
+  return outlook.flatMap((row, i) => {
+    const chance = row.chances[fault]
+    if (chance === undefined) return []
+    return [
+      {
+        outcome: row.outcome,
+        words: two ? twoWords(row) : row.name,
+        shape: shapeOf(row, i, outlook.length),
+        chance,
+      },
+    ]
+  })
+}
+
+const twoWords = (row: Outlook): string => (row.good ? 'if good' : 'if bad')
+
+function shapeOf(row: Outlook, i: number, count: number): Mark['shape'] {
+  if (row.good) return 'ring'
+  if (i === count - 1 || count === 2) return 'cross'
+  return i % 2 === 1 ? 'diamond' : 'square'
+}
+
+/** True when no outcome moves the suspect by 3 of 100 from another. */
+export function saysNothing(marks: readonly Mark[]): boolean {
+  if (marks.length === 0) return false
+  const chances = marks.map((mark) => mark.chance)
+  return (Math.max(...chances) - Math.min(...chances)) * 100 < SAYS_NOTHING_UNDER
+}

@@ -1,0 +1,127 @@
+'use client'
+import type { ReactNode } from 'react'
+import type { Suspect } from '@/lib/diag/belief'
+import type { outlook } from '@/lib/diag/outlook'
+import { of100 } from '../reading-strip/figures'
+import { ChanceRail } from './chance-rail'
+import { MarkPicture } from './mark-sign'
+import { type Mark, marksOf, saysNothing } from './outlook-words'
+import { useSlide } from './use-slide'
+
+export type Outlook = ReturnType<typeof outlook>[number]
+
+type Props = {
+  /** Sorted, ruled out last, "something else" always in: as the engine gives them. */
+  suspects: readonly Suspect[]
+  /** Outcomes of the check that is up; empty when none is. */
+  outlook?: readonly Outlook[]
+  /** What ruled a suspect out, in words, by the entry's id. */
+  entryWords?: (entryId: string) => string
+  /** The suspect whose "why" is open, and what to show there. */
+  open?: string | null
+  onOpen?: (fault: string | null) => void
+  why?: (suspect: Suspect) => ReactNode
+}
+
+/** The suspects in order: name, chance of 100, rail with the marks of the check that is up, and its words. */
+export function SuspectRows(props: Props) {
+  const { suspects, outlook = [] } = props
+  const list = useSlide<HTMLOListElement>(suspects.map((s) => s.fault).join(' '))
+  return (
+    <ol ref={list} className="grid gap-3">
+      {suspects.map((suspect, i) => (
+        <li key={suspect.fault} data-row={suspect.fault} className="min-w-0">
+          {suspect.ruledOutBy === null ? (
+            <Standing {...props} suspect={suspect} rank={i + 1} outlook={outlook} />
+          ) : (
+            <RuledOut
+              suspect={suspect}
+              by={props.entryWords?.(suspect.ruledOutBy) ?? null}
+              {...props}
+            />
+          )}
+        </li>
+      ))}
+    </ol>
+  )
+}
+
+type One = Props & { suspect: Suspect }
+
+function Standing(props: One & { rank: number; outlook: readonly Outlook[] }) {
+  const { suspect, rank } = props
+  const marks = marksOf(suspect.fault, props.outlook)
+  const silent = saysNothing(marks)
+  return (
+    <>
+      <Head {...props} lead={<span className="figures w-7 shrink-0 text-section">{rank}</span>}>
+        <span className="min-w-0 flex-1 text-row font-bold">{suspect.name}</span>
+        <span className="figures shrink-0 text-key">{of100(suspect.chance)}</span>
+      </Head>
+      <ChanceRail chance={suspect.chance} marks={silent ? [] : marks} />
+      <MarkWords marks={marks} silent={silent} />
+      {props.open === suspect.fault && props.why?.(suspect)}
+    </>
+  )
+}
+
+function MarkWords({ marks, silent }: { marks: readonly Mark[]; silent: boolean }) {
+  if (marks.length === 0) return null
+  if (silent) return <p className="mt-1 text-second text-ink2">this check says nothing about it</p>
+  return (
+    <p className="mt-1 flex flex-wrap gap-x-5 gap-y-0.5 text-second text-ink2">
+      {marks.map((mark) => (
+        <span key={mark.outcome} className="inline-flex items-center gap-1.5">
+          <MarkPicture shape={mark.shape} />
+          {mark.words} <span className="figures text-ink">{of100(mark.chance)}</span>
+        </span>
+      ))}
+    </p>
+  )
+}
+
+function RuledOut(props: One & { by: string | null }) {
+  const { suspect, by } = props
+  return (
+    <>
+      <Head {...props} lead={<span className="w-7 shrink-0" />}>
+        <span className="min-w-0 flex-1">
+          <s className="text-row font-bold">{suspect.name}</s>
+          <span className="block text-second text-ink2">
+            ruled out{by === null ? '' : ` by ${by}`}
+          </span>
+        </span>
+        <span className="figures shrink-0 text-body text-ink2">{of100(suspect.chance)}</span>
+      </Head>
+      {props.open === suspect.fault && props.why?.(suspect)}
+    </>
+  )
+}
+
+/** The row's first line; a key that opens the reasons where there are any to show. */
+function Head(props: One & { lead: ReactNode; children: ReactNode }) {
+  const { suspect, open, onOpen, why } = props
+  if (why === undefined || onOpen === undefined) {
+    return (
+      <div className="flex min-h-9 items-end gap-1">
+        {props.lead}
+        {props.children}
+      </div>
+    )
+  }
+  const isOpen = open === suspect.fault
+  return (
+    <button
+      type="button"
+      aria-expanded={isOpen}
+      onClick={() => onOpen(isOpen ? null : suspect.fault)}
+      className="flex min-h-target w-full items-end gap-1 pb-0.5 text-left"
+    >
+      {props.lead}
+      {props.children}
+      <span className="w-14 shrink-0 text-right text-second font-bold underline underline-offset-3">
+        {isOpen ? 'close' : 'why'}
+      </span>
+    </button>
+  )
+}
