@@ -1,0 +1,89 @@
+'use client'
+import { useEffect, useMemo, useState } from 'react'
+import { sunTimes } from '@/lib/diag/daylight'
+import type { Means } from '@/lib/diag/plan'
+import type { Id } from '@/lib/model/id'
+import type { Place } from '@/lib/model/place'
+import { usePorts } from '../store/store-provider'
+import { useDraft } from '../store/use-draft'
+import { useBag, useJob, useShop } from '../store/use-rows'
+import { useSession } from '../store/use-session'
+
+/** What the person says about the plan of one job; kept on the phone, changed at any time. */
+export type MeansChoice = {
+  /** Minute of the day to leave by, in the job's zone; null: no limit (rule R6 leaves it to the person). */
+  leaveBy: string | null
+  dark: 'bySun' | 'yes' | 'no'
+  people: 1 | 2
+}
+const FIRST: MeansChoice = { leaveBy: null, dark: 'bySun', people: 1 }
+const MINUTE_MS = 60_000
+
+export type MeansView = {
+  means: Means | null
+  choice: MeansChoice
+  choose(next: MeansChoice): void
+  /** Civil dusk at the job's place today, as an instant in ms; null without a place or where it never gets dark. */
+  duskMs: number | null
+  darkBySun: boolean
+}
+
+/** What the plan may count on: bag, roles, time, light, people, and the shop's prices. */
+export function useMeans(jobId: Id): MeansView {
+  const job = useJob(jobId)
+  const bag = useBag()
+  const shop = useShop()
+  const session = useSession()
+  const { value: choice, set } = useDraft<MeansChoice>(`means:${jobId}`, FIRST)
+  const now = useMinute()
+  const sun = useMemo(() => sunAt(job?.place ?? null, now), [job?.place, now])
+  const zone = job?.zone ?? 'UTC'
+  const minutesLeft = choice.leaveBy === null ? null : minutesUntil(choice.leaveBy, zone, now)
+  const dark = choice.dark === 'bySun' ? sun.dark : choice.dark === 'yes'
+  const means = useMemo<Means | null>(() => {
+    if (shop === undefined || bag === undefined || session.kind !== 'ready') return null
+    const { perMinuteMinor, towMinor, recoveryMinor } = shop
+    return {
+      bag,
+      roles: session.actor.roles,
+      minutesToLeaveBy: minutesLeft,
+      shop: { perMinuteMinor, towMinor, recoveryMinor },
+      dark,
+      people: choice.people,
+    }
+  }, [shop, bag, session, minutesLeft, dark, choice.people])
+  return { means, choice, choose: set, duskMs: sun.duskMs, darkBySun: sun.dark }
+}
+
+/** The present minute by the phone's clock, in ms; changes once a minute. */
+export function useMinute(): number {
+  const { clock } = usePorts()
+  const [minute, setMinute] = useState(() => Math.floor(clock.now() / MINUTE_MS))
+  useEffect(() => {
+    const timer = setInterval(() => setMinute(Math.floor(clock.now() / MINUTE_MS)), 5000)
+    return () => clearInterval(timer)
+  }, [clock])
+  return minute * MINUTE_MS
+}
+
+function sunAt(place: Place | null, nowMs: number): { dark: boolean; duskMs: number | null } {
+  if (place === null) return { dark: false, duskMs: null }
+  const sun = sunTimes(place.latitude, place.longitude, nowMs)
+  if (sun.civilDusk === null || sun.civilDawn === null)
+    return { dark: sun.never === 'rises', duskMs: null }
+  return { dark: nowMs > sun.civilDusk || nowMs < sun.civilDawn, duskMs: sun.civilDusk }
+}
+
+/** Whole minutes from now until a `HH:MM` of today in a zone; negative once it is past. */
+export function minutesUntil(clockTime: string, zone: string, nowMs: number): number {
+  const [hour = 0, minute = 0] = clockTime.split(':').map(Number)
+  const parts = new Intl.DateTimeFormat('en-GB', {
+    timeZone: zone,
+    hour: '2-digit',
+    minute: '2-digit',
+    hourCycle: 'h23',
+  }).formatToParts(nowMs)
+  const of = (type: 'hour' | 'minute') =>
+    Number(parts.find((part) => part.type === type)?.value ?? 0)
+  return hour * 60 + minute - (of('hour') * 60 + of('minute'))
+}
