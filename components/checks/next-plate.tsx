@@ -1,0 +1,43 @@
+import type { BookIndex } from '@/lib/diag/book-index'
+import { wordName } from '@/lib/diag/book-index'
+import type { Plan, PlannedAction } from '@/lib/diag/plan'
+import { Caution } from '../ui/caution'
+import { Plate } from '../ui/plate'
+import { minutesWords } from './words'
+
+const HEADINGS: Record<PlannedAction['type'], string> = {
+  check: 'Next best check',
+  swap: 'Next best check: a swap',
+  repair: 'Next best step: a repair',
+  stop: 'Next best step: a way out',
+}
+
+/** The plate: what to do next, what it takes, what it decides. No score. */
+export function NextPlate({ plan, index }: { plan: Plan; index: BookIndex }) {
+  const { next } = plan
+  return (
+    <Plate>
+      <p className="text-second text-scribe2">{HEADINGS[next.type]}</p>
+      <h2 className="caps mt-1 text-plate">{next.name}</h2>
+      <p className="mt-2 flex flex-wrap items-baseline gap-x-4 gap-y-1">
+        <span className="figures text-key">{minutesWords(next.minutes)}</span>
+        <span className="text-second text-scribe2">
+          {toolWords(next.tools, index)}
+          {next.people > 1 ? ', two people' : ''}
+        </span>
+      </p>
+      {plan.decides !== '' && <p className="mt-2 text-body">{plan.decides}</p>}
+      {next.caution !== null && (
+        <Caution signal={next.caution.signal} onPlate className="mt-3">
+          {next.caution.text}
+        </Caution>
+      )}
+    </Plate>
+  )
+}
+
+/** Tools by the names of the trade. */
+export function toolWords(tools: readonly string[], index: BookIndex): string {
+  if (tools.length === 0) return 'no tools'
+  return tools.map((tool) => wordName(index, 'tool', tool).toLowerCase()).join(', ')
+}

@@ -1,0 +1,88 @@
+'use client'
+import { useState } from 'react'
+import type { BookIndex } from '@/lib/diag/book-index'
+import type { Plan } from '@/lib/diag/plan'
+import { Key } from '../ui/key'
+import { RuleEdge } from '../ui/rule-edge'
+import { toolWords } from './next-plate'
+import { PickInstead } from './pick-instead'
+import type { ActOn } from './use-act-on'
+import { minutesWords, moneyWords } from './words'
+
+type Props = { plan: Plan; currency: string; index: BookIndex; actOn: ActOn }
+
+/** Everything else that can be done, and what was left out with the reason; all of it can be picked. */
+export function OtherChecks({ plan, currency, index, actOn }: Props) {
+  const [open, setOpen] = useState(false)
+  const rest = plan.others.filter((one) => one.id !== plan.next.id && one.id !== plan.runnerUp?.id)
+  if (rest.length + plan.leftOut.length === 0) return null
+  if (!open)
+    return (
+      <Key small aria-expanded={false} onClick={() => setOpen(true)}>
+        Pick another check
+      </Key>
+    )
+  return (
+    <section aria-labelledby="others" className="grid gap-4">
+      <div>
+        <RuleEdge id="others" end={String(rest.length)}>
+          Other steps
+        </RuleEdge>
+        <p className="text-second text-ink2">
+          In the order of what the whole rest of the job is expected to cost.
+        </p>
+        <ul>
+          {rest.map((one) => (
+            <li key={`${one.type} ${one.id}`}>
+              <PickInstead
+                action={one}
+                insteadOf={plan.next}
+                actOn={actOn}
+                second={`${minutesWords(one.minutes)}, ${toolWords(one.tools, index)}`}
+                end={`+${moneyWords(Math.max(0, Math.round(one.expectedCostMinor - plan.next.expectedCostMinor)), currency)}`}
+              />
+            </li>
+          ))}
+        </ul>
+      </div>
+      <LeftOut plan={plan} index={index} actOn={actOn} />
+      <Key small aria-expanded onClick={() => setOpen(false)}>
+        Close the list
+      </Key>
+    </section>
+  )
+}
+
+function LeftOut({ plan, index, actOn }: Omit<Props, 'currency'>) {
+  if (plan.leftOut.length === 0) return null
+  return (
+    <div>
+      <RuleEdge level={3} end={String(plan.leftOut.length)}>
+        Left out of the plan
+      </RuleEdge>
+      <ul>
+        {plan.leftOut.map((one) => (
+          <li key={`${one.kind} ${one.id}`}>
+            <PickInstead
+              action={{ type: kindOf(one.kind), id: one.id, name: nameOf(one, index) }}
+              insteadOf={plan.next}
+              actOn={actOn}
+              second={one.reason}
+            />
+          </li>
+        ))}
+      </ul>
+    </div>
+  )
+}
+
+type Left = Plan['leftOut'][number]
+
+const kindOf = (kind: Left['kind']): 'check' | 'swap' | 'repair' | 'stop' =>
+  kind === 'swap' || kind === 'repair' || kind === 'stop' ? kind : 'check'
+
+const nameOf = (one: Left, index: BookIndex): string =>
+  index.checks.get(one.id)?.name ??
+  index.swaps.get(one.id)?.name ??
+  index.faults.get(one.id)?.repair?.words ??
+  one.id

@@ -1,0 +1,145 @@
+'use client'
+import type { BookIndex } from '@/lib/diag/book-index'
+import type { CheckItem } from '@/lib/model/code-book'
+import type { Id } from '@/lib/model/id'
+import type { LogBody, LogEntry } from '@/lib/model/log-entry'
+import { clockTime } from '../field/times'
+import { useDraft } from '../store/use-draft'
+import { useStamp } from '../store/use-stamp'
+import { Field } from '../ui/field'
+import { Key, KeyLink } from '../ui/key'
+import { RuleEdge } from '../ui/rule-edge'
+import { aboutInstant } from './about-time'
+import { useTimesDone } from './check-steps'
+import { FRESH, type HowDone, HowDoneForm } from './how-done'
+import { NotSaved, useSave } from './use-save'
+import { entryWords } from './words'
+
+type Props = {
+  jobId: Id
+  check: CheckItem
+  index: BookIndex
+  /** Living entries of this check, oldest first. */
+  before: readonly LogEntry[]
+  onSaved: (entryId: Id) => void
+}
+
+/** What was found: one big key per named outcome, "could not", and how and when it was done. */
+export function RecordOutcome({ jobId, check, index, before, onSaved }: Props) {
+  const { value: how, set, how: outcome } = useOutcome(jobId, check, onSaved)
+  const timeProblem =
+    how.earlier && outcome.happenedAt() === null ? 'Type the time as 14:05.' : null
+  const blocked =
+    outcome.saving || timeProblem !== null || (!how.asWritten && how.differed.trim() === '')
+  return (
+    <section aria-labelledby="found" className="grid gap-4">
+      <RuleEdge id="found">What did you find</RuleEdge>
+      <Earlier before={before} index={index} />
+      <p>
+        <b>Write down:</b> {check.record}
+      </p>
+      {check.reading !== null && (
+        <KeyLink kind="main" href={`/field/jobs/${jobId}/checks/${check.id}/reading`}>
+          Take the reading
+        </KeyLink>
+      )}
+      <HowDoneForm value={how} onChange={set} timeProblem={timeProblem} />
+      {check.reading !== null && <p className="font-bold">Without a figure:</p>}
+      <div className="grid gap-2">
+        {check.outcomes.map((one) => (
+          <Key
+            key={one.id}
+            quiet
+            className="w-full"
+            disabled={blocked}
+            onClick={() => outcome.found(one.id)}
+          >
+            {one.name}
+          </Key>
+        ))}
+      </div>
+      <CouldNot how={how} set={set} disabled={outcome.saving} onSave={outcome.couldNot} />
+      <NotSaved problem={outcome.problem} />
+    </section>
+  )
+}
+
+function useOutcome(jobId: Id, check: CheckItem, onSaved: (id: Id) => void) {
+  const key = `check:${jobId}:${check.id}`
+  const { value, set } = useDraft<HowDone>(key, FRESH)
+  const times = useTimesDone(check.id)
+  const stamp = useStamp()
+  const { save, saving, problem } = useSave()
+  const happenedAt = () =>
+    value.earlier ? aboutInstant(value.about, stamp.zone, stamp.now()) : stamp.now()
+  const keep = async (body: LogBody) => {
+    const at = happenedAt()
+    if (at === null) return
+    const op = stamp.entry(jobId, body, value.earlier ? { happenedAt: at } : {})
+    if (!(await save([op], { clearDrafts: [key] }))) return
+    if (body.kind === 'check') times.set(times.value + 1)
+    onSaved(op.fields.id)
+  }
+  const found = (outcome: string) =>
+    keep({
+      kind: 'check',
+      checkId: check.id,
+      outcome,
+      asWritten: value.asWritten,
+      differed: value.asWritten ? null : value.differed.trim(),
+    })
+  const couldNot = () => keep({ kind: 'couldNot', checkId: check.id, reason: value.reason.trim() })
+  return { value, set, how: { found, couldNot, saving, problem, happenedAt } }
+}
+
+function Earlier({ before, index }: { before: readonly LogEntry[]; index: BookIndex }) {
+  if (before.length === 0) return null
+  return (
+    <ul className="grid gap-1 border-l-4 border-ink pl-3">
+      {before.map((entry) => (
+        <li key={entry.id}>
+          <span className="figures mr-2 text-ink2">{clockTime(entry.happenedAt, entry.zone)}</span>
+          {entryWords(entry, index)}
+        </li>
+      ))}
+      <li className="text-second text-ink2">
+        The same check again under the same conditions is no new evidence.
+      </li>
+    </ul>
+  )
+}
+
+type CouldNotProps = {
+  how: HowDone
+  set: (next: HowDone) => void
+  disabled: boolean
+  onSave: () => void
+}
+
+function CouldNot({ how, set, disabled, onSave }: CouldNotProps) {
+  if (!how.couldNot)
+    return (
+      <Key small onClick={() => set({ ...how, couldNot: true })}>
+        Could not do it
+      </Key>
+    )
+  return (
+    <div className="grid gap-2 border-2 border-ink p-3">
+      <Field
+        label="Why not"
+        hint="It moves no suspect and is not offered again."
+        value={how.reason}
+        onChange={(reason) => set({ ...how, reason })}
+        maxLength={500}
+      />
+      <div className="grid grid-cols-2 gap-2">
+        <Key small onClick={() => set({ ...how, couldNot: false })}>
+          Back
+        </Key>
+        <Key small kind="plate" disabled={disabled || how.reason.trim() === ''} onClick={onSave}>
+          Record it
+        </Key>
+      </div>
+    </div>
+  )
+}

@@ -1,0 +1,35 @@
+'use client'
+import type { BookIndex } from '@/lib/diag/book-index'
+import type { Plan } from '@/lib/diag/plan'
+import { RuleEdge } from '../ui/rule-edge'
+import { toolWords } from './next-plate'
+import { PickInstead } from './pick-instead'
+import type { ActOn } from './use-act-on'
+import { minutesWords, moneyWords } from './words'
+
+type Props = { plan: Plan; currency: string; index: BookIndex; actOn: ActOn }
+
+/** The second-best step and why it loses. */
+export function RunnerUp({ plan, currency, index, actOn }: Props) {
+  const { runnerUp, next } = plan
+  if (runnerUp === null) return null
+  return (
+    <section aria-labelledby="runner-up" className="grid gap-1">
+      <RuleEdge id="runner-up">Runner-up</RuleEdge>
+      <PickInstead
+        action={runnerUp}
+        insteadOf={next}
+        actOn={actOn}
+        second={`${minutesWords(runnerUp.minutes)}, ${toolWords(runnerUp.tools, index)}`}
+      />
+      <p className="text-second">{whyItLoses(plan, currency)}</p>
+    </section>
+  )
+}
+
+/** One sentence: by how much the runner-up makes the rest of the job dearer, or that it is a tie. */
+export function whyItLoses(plan: Plan, currency: string): string {
+  if (plan.equal) return 'It comes out equal: pick whichever is nearer to hand.'
+  const more = moneyWords(Math.round(plan.differenceMinor), currency)
+  return `It loses: with it first, the rest of the job is expected to cost ${more} more.`
+}

@@ -1,0 +1,59 @@
+'use client'
+import { useCallback } from 'react'
+import type { PlannedAction } from '@/lib/diag/plan'
+import type { Id } from '@/lib/model/id'
+import { adviceOf } from '../engine/advice'
+import type { PlanView } from '../engine/use-plan'
+import { useRoute } from '../field/router'
+import { useBook } from '../store/use-book'
+import { useStamp } from '../store/use-stamp'
+import { useSave } from './use-save'
+
+export type Act = Pick<PlannedAction, 'type' | 'id'>
+export type ActOn = (action: Act, reason: string | null) => void
+
+/** Where each kind of step is done. */
+export function hrefOf(jobId: Id, action: Act): string {
+  switch (action.type) {
+    case 'check':
+      return `/field/jobs/${jobId}/checks/${action.id}`
+    case 'swap':
+      return `/field/jobs/${jobId}/swap/${action.id}`
+    case 'repair':
+      return `/field/jobs/${jobId}/fix?fault=${encodeURIComponent(action.id)}`
+    case 'stop':
+      return `/field/jobs/${jobId}/wayout`
+  }
+}
+
+/** Starts a step, and keeps the advice that was on the screen as followed or overridden (rule R23). */
+export function useActOn(jobId: Id, view: PlanView): ActOn {
+  const { go } = useRoute()
+  const { version } = useBook()
+  const { save } = useSave()
+  const stamp = useStamp()
+  return useCallback(
+    (action, reason) => {
+      const { answer, input, asked } = view
+      const leave = () => go(hrefOf(jobId, action))
+      if (answer?.plan == null || input === null || version === null) {
+        leave()
+        return
+      }
+      const fields = adviceOf({
+        id: stamp.newId(),
+        jobId,
+        at: stamp.now(),
+        bookVersion: version,
+        case: input,
+        means: asked,
+        answer,
+        plan: answer.plan,
+        chose: action.id,
+        reason,
+      })
+      save([{ kind: 'advice.keep', fields }]).then(leave, leave)
+    },
+    [jobId, view, version, go, save, stamp],
+  )
+}

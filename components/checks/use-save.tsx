@@ -1,0 +1,57 @@
+'use client'
+import { useCallback, useState } from 'react'
+import { AppError } from '@/lib/model/result'
+import type { OpInput } from '@/lib/sync/protocol/op'
+import { useRecord } from '../store/use-record'
+import { announce } from '../ui/announce'
+
+type More = { clearDrafts?: string[] }
+export type Save = {
+  /** True when it is on the phone; false when it is not, and then `problem` says why. */
+  save: (ops: OpInput[], more?: More) => Promise<boolean>
+  saving: boolean
+  problem: string | null
+}
+
+/** Records what a person did, and says plainly when the phone could not keep it. */
+export function useSave(): Save {
+  const record = useRecord()
+  const [saving, setSaving] = useState(false)
+  const [problem, setProblem] = useState<string | null>(null)
+  const save = useCallback(
+    async (ops: OpInput[], more: More = {}) => {
+      setSaving(true)
+      try {
+        await record(ops, more)
+        setProblem(null)
+        return true
+      } catch (error) {
+        const words = whyNotSaved(error)
+        setProblem(words)
+        announce(words, 'assertive')
+        return false
+      } finally {
+        setSaving(false)
+      }
+    },
+    [record],
+  )
+  return { save, saving, problem }
+}
+
+/** Sentences by what went wrong; what was typed is still there in every case. */
+export function whyNotSaved(error: unknown): string {
+  const kind = error instanceof AppError ? error.kind : 'unknown'
+  const words: Record<string, string> = {
+    storeFull: 'Not saved: this phone has no room left. What you typed is still here.',
+    recordTooBig: 'Not saved: this is too long for one entry. Make the words shorter.',
+    badRecord: 'Not saved: the entry is not in order. What you typed is still here.',
+    nobodyAtWork: 'Not saved: nobody is signed in on this phone.',
+  }
+  return words[kind] ?? 'Not saved. Try once more; what you typed is still here.'
+}
+
+/** The sentence of a failed save, beside the key that failed. */
+export function NotSaved({ problem }: { problem: string | null }) {
+  return problem === null ? null : <p className="font-bold text-(--verdict-nogo)">{problem}</p>
+}
