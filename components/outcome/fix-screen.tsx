@@ -1,0 +1,92 @@
+'use client'
+import { useState } from 'react'
+import { living } from '@/lib/diag/case'
+import type { Id } from '@/lib/model/id'
+import { UndoBar } from '../checks/undo-bar'
+import { useJustSaved } from '../checks/use-just-saved'
+import { useCase } from '../engine/use-case'
+import { clockTime } from '../field/times'
+import { useBook } from '../store/use-book'
+import { Key, KeyLink } from '../ui/key'
+import { RuleEdge } from '../ui/rule-edge'
+import { Screen } from '../ui/screen'
+import { CodesCleared } from './codes-cleared'
+import { FixForm } from './fix-form'
+
+/** What was mended, temporary or for good; then the codes, then the proof run. */
+export function FixScreen({ jobId }: { jobId: Id }) {
+  const { index } = useBook()
+  const found = useCase(jobId)
+  const { savedId, keepSaved, forget } = useJustSaved(found?.entries ?? [])
+  const [another, setAnother] = useState(false)
+  if (found === null)
+    return (
+      <Screen title="Fix">
+        <p role="status">Opening the job.</p>
+      </Screen>
+    )
+  const fixes = living(found.entries).filter((entry) => entry.body.kind === 'fix')
+  const showForm = fixes.length === 0 || another
+  return (
+    <Screen
+      title="Fix"
+      second="What you did, in words the next mechanic can use."
+      foot={
+        showForm ? null : (
+          <KeyLink kind="main" href={`/field/jobs/${jobId}/proof`}>
+            To the proof run
+          </KeyLink>
+        )
+      }
+    >
+      {savedId !== null && (
+        <UndoBar
+          key={savedId}
+          jobId={jobId}
+          entryId={savedId}
+          what="Fix recorded"
+          onUndone={forget}
+        />
+      )}
+      {fixes.length > 0 && (
+        <section aria-labelledby="fixes" className="grid gap-2">
+          <RuleEdge id="fixes">Recorded</RuleEdge>
+          <ul>
+            {fixes.map(({ id, body, happenedAt, zone }) =>
+              body.kind === 'fix' ? (
+                <li key={id} className="flex gap-3 border-b-[1.5px] border-rule py-2">
+                  <span className="figures text-ink2">{clockTime(happenedAt, zone)}</span>
+                  <span className="min-w-0">
+                    <b className="block">{index?.faults.get(body.fault)?.name ?? body.fault}</b>
+                    {body.words}
+                    {body.temporary !== null && (
+                      <span className="block font-bold">
+                        Temporary. Limit: {body.temporary.limit}. To undo: {body.temporary.undo}
+                      </span>
+                    )}
+                  </span>
+                </li>
+              ) : null,
+            )}
+          </ul>
+        </section>
+      )}
+      {showForm ? (
+        <FixForm
+          jobId={jobId}
+          onSaved={(id) => {
+            keepSaved(id)
+            setAnother(false)
+          }}
+        />
+      ) : (
+        <>
+          <CodesCleared jobId={jobId} found={found} />
+          <Key small onClick={() => setAnother(true)}>
+            Record another fix
+          </Key>
+        </>
+      )}
+    </Screen>
+  )
+}

@@ -1,0 +1,58 @@
+import { boundAfterClean, cleanStartsFor, ruleOfThree, upperBound } from '@/lib/diag/proof-run'
+import { of100 } from '../reading-strip/figures'
+
+export type ProofCount = { starts: number; faults: number }
+
+/** The share the mechanic is asked to get under before a machine goes back out: 10 of 100 (shop practice). */
+export const WANTED_SHARE = 0.1
+
+export type ProofBound = {
+  /** Shares of starts, 0 to 1; null without a start. The rule of three only speaks with no fault seen. */
+  exact: number | null
+  ruleOfThree: number | null
+  /** Clean starts still wanted to get under 10 of 100; 0 when it is under; null when a fault came. */
+  more: number | null
+}
+
+/** One-sided 95 % bound on what could still fail after these starts. */
+export function proofBound({ starts, faults }: ProofCount): ProofBound {
+  if (starts <= 0) return { exact: null, ruleOfThree: null, more: cleanStartsFor(WANTED_SHARE) }
+  if (faults > 0) return { exact: upperBound(faults, starts), ruleOfThree: null, more: null }
+  return {
+    exact: boundAfterClean(starts),
+    ruleOfThree: ruleOfThree(starts),
+    more: Math.max(0, cleanStartsFor(WANTED_SHARE) - starts),
+  }
+}
+
+/** What the count proves, in one or two plain sentences. */
+export function proofSentence(count: ProofCount): string {
+  const { starts, faults } = count
+  const bound = proofBound(count)
+  if (bound.exact === null) return 'No start yet, so nothing is proved.'
+  if (faults > 0)
+    return `${faults} of ${starts} ${plural(starts, 'restart')} with the fault: up to ${of100(bound.exact)} of 100 starts could fail (one-sided 95 %). The repair is not proved.`
+  const three = bound.ruleOfThree === null ? '' : ` The 3/n rule says ${of100(bound.ruleOfThree)}.`
+  return `${starts} clean ${plural(starts, 'restart')}: up to ${of100(bound.exact)} of 100 starts could still fail (one-sided 95 %).${three}`
+}
+
+/** How many more clean starts are wanted; null when a fault came. */
+export function moreSentence(count: ProofCount): string | null {
+  const { more } = proofBound(count)
+  if (more === null) return null
+  if (more === 0) return 'That is under 10 of 100.'
+  return `${more} more clean ${plural(more, 'start')} would bring it under 10 of 100.`
+}
+
+const plural = (n: number, word: string): string => (n === 1 ? word : `${word}s`)
+
+/** `10:05` from milliseconds; hours once there are any. */
+export function stopwatch(ms: number): string {
+  const seconds = Math.max(0, Math.floor(ms / 1000))
+  const two = (n: number) => String(n).padStart(2, '0')
+  const hours = Math.floor(seconds / 3600)
+  const minutes = Math.floor((seconds % 3600) / 60)
+  return hours > 0
+    ? `${hours}:${two(minutes)}:${two(seconds % 60)}`
+    : `${minutes}:${two(seconds % 60)}`
+}

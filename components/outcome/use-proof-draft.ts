@@ -1,0 +1,61 @@
+'use client'
+import { useEffect, useState } from 'react'
+import type { Id } from '@/lib/model/id'
+import type { Instant } from '@/lib/model/time'
+import { usePorts } from '../store/store-provider'
+import { useDraft } from '../store/use-draft'
+
+/** A proof run under way. The start instant is kept, so the clock runs on while the phone is dead. */
+export type ProofDraft = {
+  starts: number
+  faults: number
+  /** Set while the clock runs. */
+  runningSince: Instant | null
+  /** Time of earlier stretches. */
+  ranMs: number
+  /** Minutes typed by hand; they win over the clock. */
+  typedMinutes: string
+  hot: 'hot' | 'cold' | null
+  words: string
+}
+const FIRST: ProofDraft = {
+  starts: 0,
+  faults: 0,
+  runningSince: null,
+  ranMs: 0,
+  typedMinutes: '',
+  hot: null,
+  words: '',
+}
+
+export const proofDraftKey = (jobId: Id): string => `proof:${jobId}`
+export const useProofDraft = (jobId: Id) => useDraft<ProofDraft>(proofDraftKey(jobId), FIRST)
+
+/** Time run so far in ms; ticks each half second while the clock runs. */
+export function useRanMs(draft: ProofDraft): number {
+  const { clock } = usePorts()
+  const [now, setNow] = useState(() => clock.now())
+  const since = draft.runningSince
+  useEffect(() => {
+    if (since === null) return
+    setNow(clock.now())
+    const timer = setInterval(() => setNow(clock.now()), 500)
+    return () => clearInterval(timer)
+  }, [clock, since])
+  return ranUntil(draft, now)
+}
+
+/** Time run until an instant, in ms; never negative, whatever the clock did. */
+export const ranUntil = (
+  draft: Pick<ProofDraft, 'runningSince' | 'ranMs'>,
+  nowMs: number,
+): number =>
+  draft.ranMs +
+  (draft.runningSince === null ? 0 : Math.max(0, nowMs - Date.parse(draft.runningSince)))
+
+/** Minutes to record: as typed when typed, else the clock's to a tenth. */
+export function minutesOf(draft: ProofDraft, ranMs: number): number {
+  const typed = Number(draft.typedMinutes.replace(',', '.'))
+  if (draft.typedMinutes.trim() !== '' && Number.isFinite(typed) && typed >= 0) return typed
+  return Math.round(ranMs / 6000) / 10
+}

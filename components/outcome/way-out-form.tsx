@@ -1,0 +1,212 @@
+'use client'
+import { living } from '@/lib/diag/case'
+import type { Id } from '@/lib/model/id'
+import type { Job, JobMachineState, JobState, PeopleState, WayOut } from '@/lib/model/job'
+import { mayMove, movesFrom } from '@/lib/shop/job-states'
+import type { OpInput } from '@/lib/sync/protocol/op'
+import { NotSaved, useSave } from '../checks/use-save'
+import type { JobCase } from '../engine/use-case'
+import { MACHINE_WORDS, PEOPLE_WORDS } from '../field/words'
+import { useStamp } from '../store/use-stamp'
+import { Choice } from '../ui/choice'
+import { Field } from '../ui/field'
+import { Key, KeyLink } from '../ui/key'
+import type { SaidByHand } from './way-out-rules'
+import { MACHINE_AFTER, PEOPLE_AFTER } from './way-out-words'
+
+export type WayOutDraft = {
+  way: WayOut | null
+  said: SaidByHand[]
+  machine: JobMachineState | null
+  people: PeopleState | null
+  reasons: string
+  /** What a machine left behind demands (rule R2). */
+  left: { key: string; tap: string; secured: string; land: string; fetch: string }
+}
+export const FRESH_WAY_OUT: WayOutDraft = {
+  way: null,
+  said: [],
+  machine: null,
+  people: null,
+  reasons: '',
+  left: { key: '', tap: '', secured: '', land: '', fetch: '' },
+}
+export const wayOutDraftKey = (jobId: Id): string => `wayout:${jobId}`
+
+type Props = {
+  jobId: Id
+  found: JobCase
+  way: WayOut
+  draft: WayOutDraft
+  set: (next: WayOutDraft) => void
+  onSaved: (entryId: Id) => void
+}
+
+/** Machine, people and reasons; for a machine left behind everything the next person needs to find it. */
+export function WayOutForm({ jobId, found, way, draft, set, onSaved }: Props) {
+  const { job } = found
+  const stamp = useStamp()
+  const { save, saving, problem } = useSave()
+  const machine = draft.machine ?? firstOf('machine', job.machineState, MACHINE_AFTER[way])
+  const people = draft.people ?? firstOf('people', job.peopleState, PEOPLE_AFTER[way])
+  const missing = whatIsMissing(draft, machine, found)
+  const keep = async () => {
+    const reasons = [draft.reasons.trim(), ...saidLines(draft), ...leftLines(draft, machine)]
+      .filter((line) => line !== '')
+      .join('\n')
+    const entry = stamp.entry(jobId, {
+      kind: 'wayOut',
+      wayOut: way,
+      reasons,
+      machineState: machine,
+      peopleState: people,
+    })
+    const ops = [entry, ...movesOf(job, { machine, people })]
+    if (await save(ops, { clearDrafts: [wayOutDraftKey(jobId)] })) onSaved(entry.fields.id)
+  }
+  return (
+    <>
+      <Choice
+        legend="The machine is then"
+        value={machine}
+        onChange={(next) => set({ ...draft, machine: next })}
+        columns={2}
+        options={[job.machineState, ...movesFrom('machine', job.machineState)].map((value) => ({
+          value,
+          label: MACHINE_WORDS[value],
+        }))}
+      />
+      <Choice
+        legend="The people are then"
+        value={people}
+        onChange={(next) => set({ ...draft, people: next })}
+        columns={2}
+        options={[job.peopleState, ...movesFrom('people', job.peopleState)].map((value) => ({
+          value,
+          label: PEOPLE_WORDS[value],
+        }))}
+      />
+      {machine === 'leftBehind' && (
+        <LeftBehind jobId={jobId} draft={draft} set={set} found={found} />
+      )}
+      <Field
+        label="Reasons"
+        hint="Why this way and not another"
+        value={draft.reasons}
+        onChange={(reasons) => set({ ...draft, reasons })}
+        lines={3}
+        maxLength={1200}
+      />
+      {missing !== null && <p className="text-second text-ink2">{missing}</p>}
+      <NotSaved problem={problem} />
+      <Key kind="main" disabled={saving || missing !== null} onClick={keep}>
+        Record the way out
+      </Key>
+    </>
+  )
+}
+
+function firstOf<K extends 'machine' | 'people'>(
+  kind: K,
+  from: K extends 'machine' ? JobMachineState : PeopleState,
+  wanted: K extends 'machine' ? JobMachineState : PeopleState,
+) {
+  return from === wanted || mayMove(kind, from as never, wanted as never) ? wanted : from
+}
+
+/** The moves of machine, people and job that follow from a way out, those that change something. */
+export function movesOf(
+  job: Pick<Job, 'id' | 'machineState' | 'peopleState' | 'state'>,
+  to: { machine: JobMachineState; people: PeopleState },
+): OpInput[] {
+  const ops: OpInput[] = []
+  const jobId = job.id
+  if (to.machine !== job.machineState)
+    ops.push({ kind: 'job.machine', jobId, fields: { from: job.machineState, to: to.machine } })
+  if (to.people !== job.peopleState)
+    ops.push({ kind: 'job.people', jobId, fields: { from: job.peopleState, to: to.people } })
+  const state = jobStateAfter(job.state, to.machine)
+  if (state !== job.state && mayMove('job', job.state, state))
+    ops.push({ kind: 'job.move', jobId, fields: { from: job.state, to: state, reason: null } })
+  return ops
+}
+
+/** A machine left behind waits to be fetched; otherwise a job not yet begun is under way now. */
+function jobStateAfter(state: JobState, machine: JobMachineState): JobState {
+  if (state === 'closed') return state
+  if (machine === 'leftBehind') return 'waitingRetrieval'
+  return state === 'called' || state === 'open' || state === 'assigned' ? 'underWay' : state
+}
+
+function whatIsMissing(
+  draft: WayOutDraft,
+  machine: JobMachineState,
+  found: JobCase,
+): string | null {
+  if (draft.reasons.trim() === '') return 'Say in a few words why.'
+  if (machine !== 'leftBehind') return null
+  if (found.job.place === null) return 'A machine left behind needs a position on the job.'
+  if (!living(found.entries).some(({ body }) => body.kind === 'photo'))
+    return 'A machine left behind needs a photo in the log.'
+  return Object.values(draft.left).some((words) => words.trim() === '')
+    ? 'A machine left behind needs every line above.'
+    : null
+}
+
+const saidLines = ({ said }: WayOutDraft): string[] =>
+  said.length === 0
+    ? []
+    : [`Against riding it out: ${said.map((one) => SAID_SHORT[one]).join(', ')}.`]
+
+const SAID_SHORT: Record<SaidByHand, string> = {
+  noBrake: 'no working brake',
+  loose: 'steering or suspension loose',
+  fuelLeak: 'fuel leak',
+  burntWiring: 'burnt wiring',
+  fluidLost: 'coolant or oil lost',
+  knock: 'knock',
+  unfit: 'rider not fit',
+}
+
+const LEFT_WORDS = {
+  key: 'Where the key is',
+  tap: 'Fuel tap and leaks',
+  secured: 'How it is secured and marked',
+  land: 'Whose land or gate',
+  fetch: 'Fetch by, and weather until then',
+} as const
+
+const leftLines = ({ left }: WayOutDraft, machine: JobMachineState): string[] =>
+  machine === 'leftBehind'
+    ? (Object.keys(LEFT_WORDS) as (keyof typeof LEFT_WORDS)[]).map(
+        (key) => `${LEFT_WORDS[key]}: ${left[key].trim()}`,
+      )
+    : []
+
+function LeftBehind({
+  jobId,
+  draft,
+  set,
+  found,
+}: Pick<Props, 'jobId' | 'draft' | 'set' | 'found'>) {
+  const photo = living(found.entries).some(({ body }) => body.kind === 'photo')
+  return (
+    <div className="grid gap-3 border-2 border-ink p-3">
+      <p className="font-bold">Left behind: whoever fetches it has only this.</p>
+      <p>
+        Position: {found.job.place === null ? 'missing on the job' : 'on the job'}. Photo:{' '}
+        {photo ? 'in the log' : 'missing'}.
+      </p>
+      {!photo && <KeyLink href={`/field/jobs/${jobId}/photo`}>Take a photo</KeyLink>}
+      {(Object.keys(LEFT_WORDS) as (keyof typeof LEFT_WORDS)[]).map((key) => (
+        <Field
+          key={key}
+          label={LEFT_WORDS[key]}
+          value={draft.left[key]}
+          onChange={(words) => set({ ...draft, left: { ...draft.left, [key]: words } })}
+          maxLength={120}
+        />
+      ))}
+    </div>
+  )
+}

@@ -1,0 +1,183 @@
+'use client'
+import { useState } from 'react'
+import type { Id } from '@/lib/model/id'
+import { WAYS_OUT, type WayOut } from '@/lib/model/job'
+import { UndoBar } from '../checks/undo-bar'
+import { useJustSaved } from '../checks/use-just-saved'
+import { useBelief } from '../engine/use-belief'
+import { type JobCase, useCase } from '../engine/use-case'
+import { clockTime } from '../field/times'
+import { MACHINE_WORDS, PEOPLE_WORDS, WAY_OUT_WORDS } from '../field/words'
+import { useBook } from '../store/use-book'
+import { useDraft } from '../store/use-draft'
+import { Caution } from '../ui/caution'
+import { Choice, ChoiceMany } from '../ui/choice'
+import { Key, KeyLink } from '../ui/key'
+import { RuleEdge } from '../ui/rule-edge'
+import { Screen } from '../ui/screen'
+import { FRESH_WAY_OUT, type WayOutDraft, WayOutForm, wayOutDraftKey } from './way-out-form'
+import { limpRefusals, notices, SAID_BY_HAND, SAID_WORDS, type WayOutFacts } from './way-out-rules'
+import { WAY_CAUTIONS } from './way-out-words'
+
+/** Repair here, limp out, tow, return later: refusals first, then the person decides (F6, rules R2, R10). */
+export function WayOutScreen({ jobId }: { jobId: Id }) {
+  const found = useCase(jobId)
+  const { savedId, keepSaved, forget } = useJustSaved(found?.entries ?? [])
+  const [again, setAgain] = useState(false)
+  if (found === null)
+    return (
+      <Screen title="Way out">
+        <p role="status">Opening the job.</p>
+      </Screen>
+    )
+  const last = found.entries.findLast(({ body }) => body.kind === 'wayOut')
+  const decided = last !== undefined && !again
+  return (
+    <Screen
+      title="Way out"
+      second="You decide. The reasons go into the log."
+      foot={
+        decided ? (
+          <KeyLink kind="main" href={`/field/jobs/${jobId}`}>
+            To the job
+          </KeyLink>
+        ) : null
+      }
+    >
+      {savedId !== null && (
+        <UndoBar
+          key={savedId}
+          jobId={jobId}
+          entryId={savedId}
+          what="Way out recorded"
+          onUndone={forget}
+        />
+      )}
+      {last?.body.kind === 'wayOut' && (
+        <section aria-labelledby="decided" className="grid gap-1">
+          <RuleEdge id="decided">Decided</RuleEdge>
+          <p className="text-row font-bold">
+            <span className="figures mr-2 text-ink2">{clockTime(last.happenedAt, last.zone)}</span>
+            {WAY_OUT_WORDS[last.body.wayOut]}
+          </p>
+          <p>
+            Machine: {MACHINE_WORDS[last.body.machineState].toLowerCase()}. People:{' '}
+            {PEOPLE_WORDS[last.body.peopleState].toLowerCase()}.
+          </p>
+          <p className="whitespace-pre-line">{last.body.reasons}</p>
+        </section>
+      )}
+      {decided ? (
+        <Key small onClick={() => setAgain(true)}>
+          Decide again
+        </Key>
+      ) : (
+        <Deciding
+          jobId={jobId}
+          found={found}
+          onSaved={(id) => {
+            keepSaved(id)
+            setAgain(false)
+          }}
+        />
+      )}
+    </Screen>
+  )
+}
+
+type DecidingProps = { jobId: Id; found: JobCase; onSaved: (entryId: Id) => void }
+
+function Deciding({ jobId, found, onSaved }: DecidingProps) {
+  const { value: draft, set } = useDraft<WayOutDraft>(wayOutDraftKey(jobId), FRESH_WAY_OUT)
+  const { index } = useBook()
+  const { answer } = useBelief(jobId)
+  const facts: WayOutFacts = {
+    job: found.job,
+    features: found.input.features,
+    entries: found.entries,
+    suspects: answer?.belief.suspects ?? [],
+    index,
+    said: draft.said,
+  }
+  const refused = limpRefusals(facts)
+  const way = draft.way === 'limpOut' && refused.length > 0 ? null : draft.way
+  return (
+    <>
+      <ChoiceMany
+        legend="Is any of these so?"
+        hint="With any of them riding out is not offered."
+        value={draft.said}
+        onChange={(said) => set({ ...draft, said })}
+        options={SAID_BY_HAND.map((value) => ({ value, label: SAID_WORDS[value] }))}
+        columns={2}
+      />
+      {refused.length > 0 && (
+        <section aria-labelledby="refused" className="grid gap-1 border-2 border-nogo p-3">
+          <h2 id="refused" className="caps text-section">
+            Limp out refused
+          </h2>
+          <ul className="grid gap-1">
+            {refused.map((reason) => (
+              <li key={reason}>{reason}</li>
+            ))}
+          </ul>
+          <p className="text-second text-ink2">Whatever a tow costs.</p>
+        </section>
+      )}
+      <Choice
+        legend="Way out"
+        value={way}
+        onChange={(next) => set({ ...draft, way: next, machine: null, people: null })}
+        options={WAYS_OUT.map((value) => ({
+          value,
+          label: WAY_OUT_WORDS[value],
+          disabled: value === 'limpOut' && refused.length > 0,
+          ...(value === 'limpOut' && refused.length > 0 ? { hint: 'refused' } : {}),
+        }))}
+      />
+      {way !== null && (
+        <>
+          <Remarks way={way} facts={facts} found={found} />
+          <WayOutForm
+            jobId={jobId}
+            found={found}
+            way={way}
+            draft={draft}
+            set={set}
+            onSaved={onSaved}
+          />
+        </>
+      )}
+    </>
+  )
+}
+
+function Remarks({ way, facts, found }: { way: WayOut; facts: WayOutFacts; found: JobCase }) {
+  const list = notices(way, facts)
+  return (
+    <div className="grid gap-3">
+      {WAY_CAUTIONS[way].map((one) => (
+        <Caution key={one.text} signal={one.signal}>
+          {one.text}
+        </Caution>
+      ))}
+      {way === 'tow' && (
+        <p>
+          <b>Before towing:</b>{' '}
+          {found.spec?.towPreparation ??
+            'The spec sheet says nothing on towing this model. Belt off or neutral, driven wheels or track free: see the maker’s manual.'}
+        </p>
+      )}
+      {list.length > 0 && (
+        <ul className="grid gap-1 border-l-4 border-ink pl-3 font-bold">
+          {list.map((one) => (
+            <li key={one}>{one}</li>
+          ))}
+        </ul>
+      )}
+      <p className="text-second text-ink2">
+        Common practice, no source. The maker&apos;s manual and local rules come first.
+      </p>
+    </div>
+  )
+}

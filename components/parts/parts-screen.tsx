@@ -1,0 +1,83 @@
+'use client'
+import { wordName } from '@/lib/diag/book-index'
+import type { Id } from '@/lib/model/id'
+import type { PartRequestRow } from '@/lib/model/part-request'
+import { useBelief } from '../engine/use-belief'
+import { useCase } from '../engine/use-case'
+import { clockTime } from '../field/times'
+import { of100 } from '../reading-strip/figures'
+import { useBook } from '../store/use-book'
+import { usePartRequests } from '../store/use-rows'
+import { Row } from '../ui/row'
+import { RuleEdge } from '../ui/rule-edge'
+import { Screen } from '../ui/screen'
+import { CHOICE_WORDS, LINE_STATE_WORDS, URGENCY_WORDS } from './part-words'
+
+/** PARTS: what was asked for and where it stands, and what may be asked for, from the suspects. */
+export function PartsScreen({ jobId }: { jobId: Id }) {
+  const requests = usePartRequests(jobId)
+  const found = useCase(jobId)
+  return (
+    <Screen title="Parts" second="What the shop is asked for, and where each line stands.">
+      <section aria-labelledby="asked" className="grid gap-1">
+        <RuleEdge id="asked" end={requests === undefined ? null : String(requests.length)}>
+          Asked for
+        </RuleEdge>
+        {requests?.length === 0 && <p>Nothing yet.</p>}
+        <ul>
+          {requests?.map((request) => (
+            <Asked key={request.id} request={request} zone={found?.job.zone ?? 'UTC'} />
+          ))}
+        </ul>
+      </section>
+      <FromSuspects jobId={jobId} />
+    </Screen>
+  )
+}
+
+function Asked({ request, zone }: { request: PartRequestRow; zone: string }) {
+  return (
+    <>
+      {request.lines.map((line) => (
+        <li key={line.id}>
+          <Row
+            title={`${line.words}, ${line.quantity}`}
+            second={`${CHOICE_WORDS[line.choice]}${line.number === null ? '' : `, ${line.number}`}. ${URGENCY_WORDS[request.urgency]}, asked ${clockTime(request.askedAt, zone)}.`}
+            end={<span className="caps text-section">{LINE_STATE_WORDS[line.state]}</span>}
+          />
+        </li>
+      ))}
+      {request.note !== null && <li className="py-1 text-second text-ink2">{request.note}</li>}
+    </>
+  )
+}
+
+/** One tap on a suspect, one on ASK. */
+function FromSuspects({ jobId }: { jobId: Id }) {
+  const { index } = useBook()
+  const { answer } = useBelief(jobId)
+  if (index === null || answer === null) return null
+  const rows = answer.belief.suspects.flatMap((suspect) => {
+    const part = index.faults.get(suspect.fault)?.repair?.part ?? null
+    return part === null || suspect.ruledOutBy !== null ? [] : [{ suspect, part }]
+  })
+  return (
+    <section aria-labelledby="ask-for" className="grid gap-1">
+      <RuleEdge id="ask-for">Ask for a part</RuleEdge>
+      <p className="text-second text-ink2">By suspect, with its chance of 100.</p>
+      {rows.length === 0 && <p>No suspect needs a part.</p>}
+      <ul>
+        {rows.map(({ suspect, part }) => (
+          <li key={suspect.fault}>
+            <Row
+              title={wordName(index, 'part', part)}
+              second={suspect.name}
+              end={of100(suspect.chance)}
+              href={`/field/jobs/${jobId}/parts/ask?part=${encodeURIComponent(part)}&fault=${encodeURIComponent(suspect.fault)}`}
+            />
+          </li>
+        ))}
+      </ul>
+    </section>
+  )
+}
