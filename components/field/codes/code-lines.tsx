@@ -1,0 +1,40 @@
+'use client'
+
+import { useBook } from '@/components/store/use-book'
+import { LogIcon } from '@/components/ui/log-icon'
+import { Row } from '@/components/ui/row'
+import { explainCode } from '@/lib/diag/code-words'
+import type { Features } from '@/lib/model/features'
+import type { LogEntry } from '@/lib/model/log-entry'
+import { contextWords } from './context-words'
+
+type Props = { entries: readonly LogEntry[]; features: Features; empty: string }
+
+/** Every code taken down, in the order of the screen they came from, with its circuit and failure in words. */
+export function CodeLines({ entries, features, empty }: Props) {
+  const { index } = useBook()
+  const codes = entries.flatMap((e) => (e.body.kind === 'code' ? [{ id: e.id, body: e.body }] : []))
+  if (codes.length === 0) {
+    return <p className="text-ink2">{empty}</p>
+  }
+  return (
+    <ul>
+      {codes.map(({ id, body }) => {
+        const words = index === null ? null : explainCode(index, body.seen, features)
+        return (
+          <li key={id}>
+            <Row
+              icon={<LogIcon shape="diamond" />}
+              title={words?.title ?? 'Code'}
+              second={
+                words === null
+                  ? contextWords(body.context)
+                  : `${words.circuitName}${words.failure === null ? '' : `: ${words.failure.name}`}. ${contextWords(body.context)}`
+              }
+            />
+          </li>
+        )
+      })}
+    </ul>
+  )
+}

@@ -1,0 +1,124 @@
+'use client'
+
+import { useEffect, useState } from 'react'
+import { useDraft } from '@/components/store/use-draft'
+import { useLog } from '@/components/store/use-log'
+import { Key } from '@/components/ui/key'
+import { RuleEdge } from '@/components/ui/rule-edge'
+import { Screen } from '@/components/ui/screen'
+import { Steps } from '@/components/ui/steps'
+import { living } from '@/lib/diag/case'
+import type { SpecSheet } from '@/lib/model/code-book'
+import type { LogEntry } from '@/lib/model/log-entry'
+import { OfJob } from '../of-job'
+import { jobHref } from '../route'
+import { useRoute } from '../router'
+import type { JobFacts } from '../use-job-facts'
+import { ClearedPart } from './cleared-part'
+import { type CodeDraft, codeKey, EMPTY_CODE } from './code-draft'
+import { CodeForm } from './code-form'
+import { CodeMeaning } from './code-meaning'
+
+/** Codes: how to show them, what the dash showed, what that means, and clearing them. */
+export function CodesScreen({ jobId }: { jobId: string }) {
+  return <OfJob jobId={jobId}>{(facts) => <Codes facts={facts} />}</OfJob>
+}
+
+type CodeEntry = LogEntry & { body: Extract<LogEntry['body'], { kind: 'code' }> }
+const isCode = (entry: LogEntry): entry is CodeEntry => entry.body.kind === 'code'
+
+function Codes({ facts }: { facts: JobFacts }) {
+  const { job, model, features } = facts
+  const log = useLog(job.id)
+  const { go } = useRoute()
+  const entries = living((log ?? []).map((line) => line.entry))
+  const codes = entries.filter(isCode)
+  const [adding, setAdding] = useState<boolean>(false)
+  const [fresh, setFresh] = useState<string | null>(null)
+  const unreadable = entries.findLast((e) => e.body.kind === 'codesUnreadable')?.body
+  const draft = useDraft<CodeDraft>(codeKey(job.id), EMPTY_CODE)
+  const writing = adding || codes.length === 0 || draft.value !== EMPTY_CODE
+  // After a save the focus goes to the meaning of what was just taken down.
+  useEffect(() => {
+    if (fresh !== null && codes.some((c) => c.id === fresh)) {
+      document
+        .getElementById(`code-${fresh}`)
+        ?.querySelector<HTMLElement>('[data-meaning]')
+        ?.focus()
+      setFresh(null)
+    }
+  }, [fresh, codes])
+  return (
+    <Screen
+      title="Codes"
+      second="Take them down before anything is cleared or the battery comes off."
+      foot={
+        writing ? null : (
+          <div className="grid grid-cols-2 gap-2">
+            <Key onClick={() => setAdding(true)}>One more</Key>
+            <Key kind="plate" onClick={() => go(jobHref(job.id, 'checks'))}>
+              To checks
+            </Key>
+          </div>
+        )
+      }
+    >
+      <ShowSteps sheet={model?.specSheet ?? null} folded={codes.length > 0} />
+      {unreadable?.kind === 'codesUnreadable' ? (
+        <p className="font-bold">Could not be read: {unreadable.reason}</p>
+      ) : null}
+      {codes.map((code) => (
+        <div key={code.id} id={`code-${code.id}`}>
+          <CodeMeaning seen={code.body.seen} context={code.body.context} features={features} />
+        </div>
+      ))}
+      {writing && log !== undefined ? (
+        <section className="grid gap-4">
+          <RuleEdge>{codes.length === 0 ? 'Take it down' : `Code ${codes.length + 1}`}</RuleEdge>
+          <CodeForm
+            jobId={job.id}
+            order={codes.length + 1}
+            onSaved={(id) => {
+              setAdding(false)
+              setFresh(id)
+            }}
+          />
+        </section>
+      ) : null}
+      <ClearedPart jobId={job.id} entries={entries} sheet={model?.specSheet ?? null} />
+    </Screen>
+  )
+}
+
+function ShowSteps({ sheet, folded }: { sheet: SpecSheet | null; folded: boolean }) {
+  if (sheet === null) {
+    return (
+      <p>
+        No spec sheet for this machine: the maker’s manual says how its dash shows codes. Often it
+        is a long press with the key on. Common practice, no source.
+      </p>
+    )
+  }
+  const steps = (
+    <>
+      <Steps steps={sheet.showCodes.steps.map((text) => ({ text }))} />
+      <p className="text-second text-ink2">From: {sheet.showCodes.source}</p>
+    </>
+  )
+  if (folded) {
+    return (
+      <details className="border-b-2 border-ink">
+        <summary className="flex min-h-target items-center font-bold">
+          How to show codes on this model
+        </summary>
+        <div className="grid gap-3 pb-3">{steps}</div>
+      </details>
+    )
+  }
+  return (
+    <section className="grid gap-3">
+      <RuleEdge>How to show them on this model</RuleEdge>
+      {steps}
+    </section>
+  )
+}

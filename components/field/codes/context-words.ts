@@ -1,0 +1,12 @@
+import type { CodeContext } from '@/lib/model/code-seen'
+
+/** "Module 0, active, counted 4." */
+export function contextWords(context: CodeContext): string {
+  const words = [
+    context.module === null ? '' : `module ${context.module}`,
+    { active: 'active', stored: 'stored', unknown: 'active or stored not shown' }[context.status],
+    context.count === null ? '' : `counted ${context.count}`,
+  ].filter(Boolean)
+  const line = words.join(', ')
+  return `${line.charAt(0).toUpperCase()}${line.slice(1)}.`
+}

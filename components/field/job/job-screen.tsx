@@ -1,0 +1,103 @@
+'use client'
+
+import { useBook } from '@/components/store/use-book'
+import { useLog } from '@/components/store/use-log'
+import { Caution } from '@/components/ui/caution'
+import { KeyLink } from '@/components/ui/key'
+import { Row } from '@/components/ui/row'
+import { RuleEdge } from '@/components/ui/rule-edge'
+import { Screen } from '@/components/ui/screen'
+import { living } from '@/lib/diag/case'
+import type { Job } from '@/lib/model/job'
+import { CodeLines } from '../codes/code-lines'
+import { PlaceShown } from '../intake/place-step'
+import { OfJob } from '../of-job'
+import { jobHref } from '../route'
+import { clockTime, dayOf } from '../times'
+import type { JobFacts } from '../use-job-facts'
+import { BEFORE_WORDS, counted } from '../words'
+import { NextRows } from './next-rows'
+import { StatesPart } from './states-part'
+
+/** The JOB tab: what is wrong, who and what is where, and what comes next. */
+export function JobScreen({ jobId }: { jobId: string }) {
+  return <OfJob jobId={jobId}>{(facts) => <Open facts={facts} />}</OfJob>
+}
+
+function Open({ facts }: { facts: JobFacts }) {
+  const { job, model } = facts
+  const log = useLog(job.id)
+  const entries = living((log ?? []).map((line) => line.entry))
+  return (
+    <Screen
+      title="Job"
+      second={`Opened ${dayOf(job.openedAt, job.zone)} at ${clockTime(job.openedAt, job.zone)}.`}
+    >
+      <Complaint job={job} />
+      <StatesPart job={job} />
+      <section className="grid gap-1">
+        <RuleEdge>Next</RuleEdge>
+        <NextRows jobId={job.id} entries={entries} wayOut={job.wayOut} />
+      </section>
+      <section className="grid gap-2">
+        <RuleEdge>Codes taken down</RuleEdge>
+        <CodeLines entries={entries} empty="None yet." features={facts.features} />
+      </section>
+      <section className="grid gap-2">
+        <RuleEdge>Place</RuleEdge>
+        {job.place === null ? (
+          <p className="font-bold">No position. Write it into a note as soon as you have one.</p>
+        ) : (
+          <>
+            <PlaceShown place={job.place} />
+            {job.place.words ? <p>{job.place.words}</p> : null}
+          </>
+        )}
+        {job.airTempC === null && job.weather === null ? null : (
+          <p className="text-second text-ink2">
+            {job.airTempC === null ? '' : `Air ${String(job.airTempC).replace('-', '−')} °C. `}
+            {job.weather ?? ''}
+          </p>
+        )}
+      </section>
+      <section className="grid gap-1">
+        <RuleEdge>Machine</RuleEdge>
+        <Row
+          title={facts.machineName}
+          second={
+            model?.specSheet
+              ? `Spec sheet: ${counted(model.specSheet.components.length, 'component')}`
+              : 'No spec sheet on this phone'
+          }
+          href={jobHref(job.id, 'sheet')}
+        />
+      </section>
+      <Caution signal="NOTICE">
+        The maker’s manual, local rules and licensed practice come before anything shown here.
+        Chances are the model’s own. You decide.
+      </Caution>
+      <KeyLink small quiet href="/field">
+        All jobs on this phone
+      </KeyLink>
+    </Screen>
+  )
+}
+
+function Complaint({ job }: { job: Job }) {
+  const { index } = useBook()
+  const symptom =
+    job.complaint.symptom === null
+      ? null
+      : (index?.symptoms.get(job.complaint.symptom)?.name ?? null)
+  const lamp = { true: 'on', false: 'off', null: 'not seen' }[String(job.complaint.lampOn)]
+  const before = job.before.map((b) => BEFORE_WORDS[b].toLowerCase()).join(', ')
+  return (
+    <section className="grid gap-1">
+      <p className="text-row font-bold">“{job.complaint.words}”</p>
+      {symptom !== null && symptom !== job.complaint.words ? <p>{symptom}.</p> : null}
+      <p className="text-second text-ink2">
+        Engine lamp {lamp}. Just before: {before === '' ? 'not asked' : before}.
+      </p>
+    </section>
+  )
+}

@@ -1,0 +1,74 @@
+'use client'
+
+import { useState } from 'react'
+import { useBook } from '@/components/store/use-book'
+import { useDraft } from '@/components/store/use-draft'
+import { useLog } from '@/components/store/use-log'
+import { useRecord } from '@/components/store/use-record'
+import { useStamp } from '@/components/store/use-stamp'
+import { announce } from '@/components/ui/announce'
+import { Field } from '@/components/ui/field'
+import { Key } from '@/components/ui/key'
+import { Screen } from '@/components/ui/screen'
+import { jobHref } from '../route'
+import { useRoute } from '../router'
+import { entryWords, kindWord } from './log-words'
+
+/** A correction: the earlier entry stays, struck through, and counts no more. */
+export function CorrectScreen({ jobId, entryId }: { jobId: string; entryId: string }) {
+  const key = `job.${jobId}.correct.${entryId}`
+  const { value: reason, set, ready } = useDraft<string>(key, '')
+  const [problem, setProblem] = useState<string | null>(null)
+  const log = useLog(jobId)
+  const { index } = useBook()
+  const record = useRecord()
+  const stamp = useStamp()
+  const { go } = useRoute()
+  const entry = log?.find((line) => line.entry.id === entryId)?.entry
+  const save = () => {
+    if (reason.trim() === '') {
+      setProblem('Say what was wrong with it.')
+      return
+    }
+    record(
+      [stamp.entry(jobId, { kind: 'correction', reason: reason.trim() }, { supersedes: entryId })],
+      { clearDrafts: [key] },
+    )
+      .then(() => {
+        announce('Correction saved on this phone.')
+        go(jobHref(jobId, 'log'), { replace: true })
+      })
+      .catch(() => setProblem('Could not be saved. Nothing typed is lost: try again.'))
+  }
+  return (
+    <Screen
+      title="Correct an entry"
+      second="The entry stays in the log, struck through. It no longer counts as evidence."
+      foot={
+        <Key kind="main" disabled={!ready || entry === undefined} onClick={save}>
+          Save correction
+        </Key>
+      }
+    >
+      {entry === undefined ? (
+        <p>This entry is not on this phone.</p>
+      ) : (
+        <p className="border-2 border-ink p-3 font-bold">
+          {kindWord(entry.body.kind)}: {entryWords(entry.body, index).title}
+        </p>
+      )}
+      <Field
+        label="What was wrong with it?"
+        value={reason}
+        onChange={(text) => {
+          setProblem(null)
+          set(text)
+        }}
+        lines={3}
+        maxLength={2000}
+        autoCapitalize="sentences"
+        error={problem}
+      />
+    </Screen>
+  )
+}

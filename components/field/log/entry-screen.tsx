@@ -1,0 +1,128 @@
+'use client'
+
+import { useState } from 'react'
+import { asTypedOnScreen, shortUnit } from '@/components/reading-strip/figures'
+import { VerdictLine } from '@/components/reading-strip/verdict-line'
+import { useBook } from '@/components/store/use-book'
+import { useLog } from '@/components/store/use-log'
+import { usePhoto } from '@/components/store/use-photo'
+import { usePeople } from '@/components/store/use-rows'
+import { useSession } from '@/components/store/use-session'
+import { classes } from '@/components/ui/class-names'
+import { KeyLink } from '@/components/ui/key'
+import { LogIcon } from '@/components/ui/log-icon'
+import { Photo } from '@/components/ui/photo'
+import { Screen } from '@/components/ui/screen'
+import type { LogEntry, ReadingBody } from '@/lib/model/log-entry'
+import { mayLog } from '@/lib/shop/permissions'
+import { jobHref } from '../route'
+import { clockTime, dayOf } from '../times'
+import { entryWords, kindWord, shapeOf } from './log-words'
+
+/** One entry of the log, whole, with who wrote it and when; and the way to correct it. */
+export function EntryScreen({ jobId, entryId }: { jobId: string; entryId: string }) {
+  const log = useLog(jobId)
+  const session = useSession()
+  const { index } = useBook()
+  const line = log?.find((l) => l.entry.id === entryId)
+  const roles = session.kind === 'ready' ? session.actor.roles : []
+  if (line === undefined) {
+    return (
+      <Screen title="Entry">
+        <p>{log === undefined ? 'Opening the entry.' : 'This entry is not on this phone.'}</p>
+      </Screen>
+    )
+  }
+  const { entry } = line
+  const words = entryWords(entry.body, index)
+  const later = log?.find((l) => l.entry.supersedes === entry.id)?.entry
+  const corrects =
+    later === undefined && entry.body.kind !== 'correction' && mayLog(roles, 'correction', false)
+  return (
+    <Screen
+      title={
+        <span className="flex items-center gap-3">
+          <LogIcon shape={shapeOf(entry.body.kind)} className="size-8 shrink-0" />
+          {kindWord(entry.body.kind)}
+        </span>
+      }
+      foot={
+        corrects ? (
+          <KeyLink href={jobHref(jobId, `log/${entryId}/correct`)}>Correct this</KeyLink>
+        ) : null
+      }
+    >
+      <p className={classes('text-row font-bold whitespace-pre-line', later && 'line-through')}>
+        {words.title}
+      </p>
+      {words.second ? <p className="whitespace-pre-line">{words.second}</p> : null}
+      {entry.body.kind === 'reading' ? <Reading body={entry.body} /> : null}
+      {entry.body.kind === 'photo' ? (
+        <Picture hash={entry.body.photo.hash} words={words.title} />
+      ) : null}
+      {later === undefined ? null : (
+        <p className="font-bold">
+          {later.body.kind === 'correction'
+            ? `Corrected at ${clockTime(later.happenedAt, later.zone)}: ${later.body.reason}`
+            : `Replaced at ${clockTime(later.happenedAt, later.zone)}.`}
+        </p>
+      )}
+      <Written entry={entry} sent={line.sent} order={line.order} />
+    </Screen>
+  )
+}
+
+function Reading({ body }: { body: ReadingBody }) {
+  return (
+    <>
+      <p>
+        <span className="figures text-figure">
+          {body.overRange ? 'OL' : asTypedOnScreen(body.asTyped)}
+        </span>{' '}
+        <b>{shortUnit(body.quantity)}</b>
+      </p>
+      {body.result === null ? null : <VerdictLine verdict={body.result.verdict} large />}
+    </>
+  )
+}
+
+/** At night a photo is dimmed until it is pressed. */
+function Picture({ hash, words }: { hash: string; words: string }) {
+  const { url } = usePhoto(hash)
+  const [bright, setBright] = useState<boolean>(false)
+  if (url === null) {
+    return <p>The picture is on the phone that took it and not at the shop yet.</p>
+  }
+  return (
+    <button
+      type="button"
+      aria-pressed={bright}
+      aria-label={`${words}. Press for full brightness.`}
+      onClick={() => setBright(!bright)}
+    >
+      <Photo url={url} alt="" bright={bright} className="w-full" />
+    </button>
+  )
+}
+
+function Written({ entry, sent, order }: { entry: LogEntry; sent: boolean; order: number | null }) {
+  const author = usePeople()?.find((person) => person.id === entry.authorId)
+  const at = (instant: string) => `${dayOf(instant, entry.zone)}, ${clockTime(instant, entry.zone)}`
+  const lines = [
+    ['Happened', at(entry.happenedAt)],
+    ['Written', at(entry.writtenAt)],
+    ['By', author?.name ?? 'Name not on this phone'],
+    ['Where it is', sent ? `At the shop, line ${order ?? ''} of the log` : 'On this phone only'],
+    ['Code book', entry.bookVersion === null ? 'None at the time' : `Version ${entry.bookVersion}`],
+  ] as const
+  return (
+    <dl className="grid gap-2 border-t-2 border-ink pt-3">
+      {lines.map(([name, value]) => (
+        <div key={name} className="grid grid-cols-[7rem_minmax(0,1fr)] gap-3">
+          <dt className="text-second text-ink2">{name}</dt>
+          <dd>{value}</dd>
+        </div>
+      ))}
+    </dl>
+  )
+}

@@ -1,0 +1,129 @@
+'use client'
+
+import { asTypedOnScreen, shortUnit } from '@/components/reading-strip/figures'
+import { VerdictLine } from '@/components/reading-strip/verdict-line'
+import type { StoredEntry } from '@/components/store/use-log'
+import { usePhoto } from '@/components/store/use-photo'
+import { classes } from '@/components/ui/class-names'
+import { LogIcon } from '@/components/ui/log-icon'
+import { Photo } from '@/components/ui/photo'
+import type { BookIndex } from '@/lib/diag/book-index'
+import type { LogEntry, ReadingBody } from '@/lib/model/log-entry'
+import { jobHref } from '../route'
+import { clockTime, span } from '../times'
+import { entryWords, kindWord, shapeOf } from './log-words'
+
+type Props = {
+  line: StoredEntry
+  log: readonly StoredEntry[]
+  index: BookIndex | null
+  /** Time since the entry before, when it was long. */
+  gapMs: number | null
+  /** The day, when it is not the day of the entry before. */
+  day: string | null
+}
+
+/** One entry on the wire: time, node, what it says. It opens the whole entry. */
+export function LogItem({ line, log, index, gapMs, day }: Props) {
+  const { entry, sent } = line
+  const target = log.find((other) => other.entry.id === entry.supersedes)?.entry ?? null
+  const later = log.find((other) => other.entry.supersedes === entry.id)?.entry ?? null
+  const words = entryWords(entry.body, index)
+  const time = clockTime(entry.happenedAt, entry.zone)
+  const bar = entry.body.kind === 'correction'
+  return (
+    <li className={classes('log-item', !sent && 'log-item-here')}>
+      <p className="log-time figures text-second">{time}</p>
+      <div className="log-node">
+        <span className={classes('log-wire', gapMs !== null && 'log-gap')} aria-hidden="true" />
+        <LogIcon shape={shapeOf(bar && target ? target.body.kind : entry.body.kind)} bar={bar} />
+      </div>
+      <div className="log-text">
+        {day === null ? null : <p className="caps text-section">{day}</p>}
+        {gapMs === null ? null : <p className="text-second text-ink2">{span(gapMs)} later</p>}
+        <a
+          href={jobHref(entry.jobId, `log/${entry.id}`)}
+          className="block min-h-14 text-ink no-underline"
+        >
+          <span className="visually-hidden">{kindWord(entry.body.kind)}: </span>
+          <Title entry={entry} title={words.title} struck={later !== null} />
+          {entry.body.kind === 'reading' ? (
+            <ReadingLine body={entry.body} struck={later !== null} />
+          ) : null}
+          {words.second ? (
+            <span className="line-clamp-3 block text-second text-ink2">{words.second}</span>
+          ) : null}
+          {target === null ? null : (
+            <span className="block text-second text-ink2">
+              Points back to {clockTime(target.happenedAt, target.zone)},{' '}
+              {kindWord(target.body.kind).toLowerCase()}.
+            </span>
+          )}
+          {later === null ? null : (
+            <span className="block text-second font-bold">
+              {later.body.kind === 'correction' ? 'Corrected' : 'Replaced'} at{' '}
+              {clockTime(later.happenedAt, later.zone)}.
+            </span>
+          )}
+        </a>
+        {entry.body.kind === 'photo' ? (
+          <Thumb hash={entry.body.photo.hash} words={words.title} />
+        ) : null}
+      </div>
+    </li>
+  )
+}
+
+/** Decisions and fixes stand in the display face; a note is a sentence and does not. */
+function Title({ entry, title, struck }: { entry: LogEntry; title: string; struck: boolean }) {
+  const decided = entry.body.kind === 'wayOut'
+  return (
+    <span
+      className={classes(
+        'block',
+        decided ? 'caps text-key' : 'line-clamp-4 text-row font-bold',
+        struck && 'line-through',
+      )}
+    >
+      {title}
+    </span>
+  )
+}
+
+function ReadingLine({ body, struck }: { body: ReadingBody; struck: boolean }) {
+  return (
+    <span className={classes('flex flex-wrap items-center gap-x-3', struck && 'line-through')}>
+      <span className="whitespace-nowrap">
+        <span className="figures text-row">
+          {body.overRange ? 'OL' : asTypedOnScreen(body.asTyped)}
+        </span>{' '}
+        <b>{shortUnit(body.quantity)}</b>
+      </span>
+      {body.result === null ? null : <VerdictLine verdict={body.result.verdict} />}
+    </span>
+  )
+}
+
+function Thumb({ hash, words }: { hash: string; words: string }) {
+  const { url } = usePhoto(hash)
+  return url === null ? (
+    <p className="text-second text-ink2">The picture is on the phone that took it.</p>
+  ) : (
+    <Photo url={url} alt={words} className="mt-1 max-h-40" />
+  )
+}
+
+/** Where unsent work begins: the wire is cut and the lower end is set off. */
+export function CutWire() {
+  return (
+    <li className="log-cut">
+      <svg viewBox="0 0 50 30" className="h-7.5 w-12.5 overflow-visible" aria-hidden="true">
+        <g fill="var(--paint)" stroke="var(--paint-ink)" strokeWidth="2.4">
+          <rect x="2" y="2" width="26" height="9" />
+          <rect x="14" y="19" width="26" height="9" />
+        </g>
+      </svg>
+      <p className="caps text-section">Below: this phone only</p>
+    </li>
+  )
+}

@@ -1,0 +1,119 @@
+'use client'
+
+import { useEffect, useRef } from 'react'
+import { useBook } from '@/components/store/use-book'
+import { type StoredEntry, useLog } from '@/components/store/use-log'
+import { useSession } from '@/components/store/use-session'
+import { KeyLink } from '@/components/ui/key'
+import { RuleEdge } from '@/components/ui/rule-edge'
+import { Screen } from '@/components/ui/screen'
+import { mayLog } from '@/lib/shop/permissions'
+import { OfJob } from '../of-job'
+import { jobHref } from '../route'
+import { dayOf } from '../times'
+import { CutWire, LogItem } from './log-item'
+
+/** Longer than this between two entries and the wire is drawn broken, with the time that passed. */
+const GAP_MS = 20 * 60_000
+
+/** The LOG tab: dated, append-only, newest at the thumb. */
+export function LogScreen({ jobId }: { jobId: string }) {
+  const session = useSession()
+  const roles = session.kind === 'ready' ? session.actor.roles : []
+  return (
+    <OfJob jobId={jobId}>
+      {({ job }) => (
+        <Screen
+          title="Log"
+          titleHidden
+          foot={
+            <div className="grid grid-cols-3 gap-2">
+              {mayLog(roles, 'note', false) ? (
+                <KeyLink href={jobHref(job.id, 'note')}>Note</KeyLink>
+              ) : null}
+              {mayLog(roles, 'photo', false) ? (
+                <KeyLink href={jobHref(job.id, 'photo')}>Photo</KeyLink>
+              ) : null}
+              <KeyLink kind="plate" href={jobHref(job.id, 'checks')}>
+                Reading
+              </KeyLink>
+            </div>
+          }
+        >
+          <Lines jobId={job.id} openedAt={job.openedAt} zone={job.zone} />
+        </Screen>
+      )}
+    </OfJob>
+  )
+}
+
+function Lines({ jobId, openedAt, zone }: { jobId: string; openedAt: string; zone: string }) {
+  const log = useLog(jobId)
+  const { index } = useBook()
+  const end = useRef<HTMLDivElement>(null)
+  const shown = useRef<boolean>(false)
+  // Newest at the thumb: the first look at a log is at its end.
+  useEffect(() => {
+    if (log !== undefined && !shown.current) {
+      shown.current = true
+      if (log.length > 6) {
+        end.current?.scrollIntoView({ block: 'end' })
+      }
+    }
+  }, [log])
+  if (log === undefined) {
+    return <p className="text-ink2">Opening the log.</p>
+  }
+  const firstHere = log.findIndex((line) => !line.sent)
+  return (
+    <section className="grid gap-3">
+      <RuleEdge end={String(log.length)}>
+        Log, {dayOf(log[0]?.entry.happenedAt ?? openedAt, zone)}
+      </RuleEdge>
+      {log.length === 0 ? (
+        <p>
+          Nothing yet. Codes, checks, readings, notes and photos stand here as they are recorded.
+        </p>
+      ) : null}
+      <ol>
+        {log.map((line, i) => (
+          <LineWithCut
+            key={line.entry.id}
+            cut={i === firstHere}
+            line={line}
+            before={log[i - 1] ?? null}
+            log={log}
+            index={index}
+          />
+        ))}
+      </ol>
+      <div ref={end} />
+    </section>
+  )
+}
+
+function LineWithCut(props: {
+  cut: boolean
+  line: StoredEntry
+  before: StoredEntry | null
+  log: readonly StoredEntry[]
+  index: Parameters<typeof LogItem>[0]['index']
+}) {
+  const { entry } = props.line
+  const before = props.before?.entry ?? null
+  const gapMs = before === null ? 0 : Date.parse(entry.happenedAt) - Date.parse(before.happenedAt)
+  const newDay =
+    before !== null && dayOf(before.happenedAt, before.zone) !== dayOf(entry.happenedAt, entry.zone)
+  return (
+    <>
+      {props.cut ? <CutWire /> : null}
+      <LogItem
+        line={props.line}
+        log={props.log}
+        index={props.index}
+        gapMs={gapMs > GAP_MS ? gapMs : null}
+        day={newDay ? dayOf(entry.happenedAt, entry.zone) : null}
+      />
+    </>
+  )
+}

@@ -1,0 +1,89 @@
+'use client'
+
+import { useState } from 'react'
+import { useDraft } from '@/components/store/use-draft'
+import { useRecord } from '@/components/store/use-record'
+import { useStamp } from '@/components/store/use-stamp'
+import { announce } from '@/components/ui/announce'
+import { Field } from '@/components/ui/field'
+import { Key } from '@/components/ui/key'
+import { Screen } from '@/components/ui/screen'
+import { OfJob } from '../of-job'
+import { jobHref } from '../route'
+import { useRoute } from '../router'
+import { happenedAbout } from './happened-about'
+
+type NoteDraft = { words: string; about: string }
+const EMPTY: NoteDraft = { words: '', about: '' }
+
+/** A note, kept to the keystroke; when it happened may be typed, "about 11:30". */
+export function NoteScreen({ jobId }: { jobId: string }) {
+  return <OfJob jobId={jobId}>{({ job }) => <Note jobId={job.id} zone={job.zone} />}</OfJob>
+}
+
+function Note({ jobId, zone }: { jobId: string; zone: string }) {
+  const key = `job.${jobId}.note`
+  const { value: draft, set, ready } = useDraft<NoteDraft>(key, EMPTY)
+  const [problem, setProblem] = useState<{ field: keyof NoteDraft; words: string } | null>(null)
+  const record = useRecord()
+  const stamp = useStamp()
+  const { go } = useRoute()
+  const change = (next: Partial<NoteDraft>) => {
+    setProblem(null)
+    set({ ...draft, ...next })
+  }
+  const save = () => {
+    const words = draft.words.trim()
+    const about = happenedAbout(draft.about, stamp.now(), zone)
+    if (words === '') {
+      setProblem({ field: 'words', words: 'Write something first.' })
+    } else if (about === null) {
+      setProblem({ field: 'about', words: 'A time of the last 24 hours, like 11:30, or nothing.' })
+    } else {
+      record([stamp.entry(jobId, { kind: 'note', words }, { happenedAt: about })], {
+        clearDrafts: [key],
+      })
+        .then(() => {
+          announce('Note saved on this phone.')
+          go(jobHref(jobId, 'log'), { replace: true })
+        })
+        .catch(() =>
+          setProblem({
+            field: 'words',
+            words: 'Could not be saved. Nothing typed is lost: try again.',
+          }),
+        )
+    }
+  }
+  return (
+    <Screen
+      title="Note"
+      second="Saved on this phone as you type."
+      foot={
+        <Key kind="main" disabled={!ready} onClick={save}>
+          Save note
+        </Key>
+      }
+    >
+      <Field
+        label="What is it?"
+        value={draft.words}
+        onChange={(words) => change({ words })}
+        lines={6}
+        maxLength={2000}
+        autoCapitalize="sentences"
+        error={problem?.field === 'words' ? problem.words : null}
+      />
+      <Field
+        label="Happened about"
+        hint="Leave it empty for now."
+        value={draft.about}
+        onChange={(about) => change({ about: about.slice(0, 5) })}
+        inputMode="text"
+        placeholder="11:30"
+        figures
+        error={problem?.field === 'about' ? problem.words : null}
+      />
+    </Screen>
+  )
+}

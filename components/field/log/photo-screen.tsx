@@ -1,0 +1,134 @@
+'use client'
+
+import { Camera as CameraIcon } from 'lucide-react'
+import { useEffect, useState } from 'react'
+import { usePorts } from '@/components/store/store-provider'
+import { useDraft } from '@/components/store/use-draft'
+import { useRecord } from '@/components/store/use-record'
+import { useStamp } from '@/components/store/use-stamp'
+import { announce } from '@/components/ui/announce'
+import { Field } from '@/components/ui/field'
+import { Key } from '@/components/ui/key'
+import { Photo } from '@/components/ui/photo'
+import { Screen } from '@/components/ui/screen'
+import type { CameraProblem, TakenPhoto } from '@/lib/ports/camera'
+import { OfJob } from '../of-job'
+import { jobHref } from '../route'
+import { useRoute } from '../router'
+import { size } from '../times'
+
+const CAMERA_WORDS: Record<CameraProblem['kind'], string> = {
+  notReadable: 'This phone cannot open that picture. Take it again.',
+  tooBig: 'That picture cannot be made small enough to keep. Take it again.',
+}
+
+type Shown = { photo: TakenPhoto; url: string }
+
+/** One photo with a caption: made small, without position data, kept with its entry. */
+export function PhotoScreen({ jobId }: { jobId: string }) {
+  return <OfJob jobId={jobId}>{({ job }) => <TakePhoto jobId={job.id} />}</OfJob>
+}
+
+function TakePhoto({ jobId }: { jobId: string }) {
+  const key = `job.${jobId}.photo`
+  const { value: caption, set } = useDraft<string>(key, '')
+  const { shown, busy, problem, take } = useTakenPhoto()
+  const [failed, setFailed] = useState<string | null>(null)
+  const record = useRecord()
+  const stamp = useStamp()
+  const { go } = useRoute()
+  const save = ({ photo }: Shown) => {
+    const { bytes, ...about } = photo
+    const body = {
+      kind: 'photo' as const,
+      photo: { ...about, bytes: bytes.byteLength },
+      caption: caption.trim() === '' ? null : caption.trim(),
+    }
+    record([stamp.entry(jobId, body)], {
+      photos: [{ hash: photo.hash, jobId, bytes, mime: photo.mime }],
+      clearDrafts: [key],
+    })
+      .then(() => {
+        announce('Photo saved on this phone.')
+        go(jobHref(jobId, 'log'), { replace: true })
+      })
+      .catch(() => setFailed('Could not be saved. Is the phone’s store full? Try again.'))
+  }
+  return (
+    <Screen
+      title="Photo"
+      second="Position data in the picture is taken out."
+      foot={
+        shown === null ? null : (
+          <Key kind="main" onClick={() => save(shown)}>
+            Save photo
+          </Key>
+        )
+      }
+    >
+      {shown === null ? null : (
+        <figure>
+          <Photo url={shown.url} alt="What was just taken" className="w-full" />
+          <figcaption className="pt-1 text-second text-ink2">
+            {shown.photo.width} × {shown.photo.height}, {size(shown.photo.bytes.byteLength)}
+          </figcaption>
+        </figure>
+      )}
+      <label className="key key-plate relative w-full">
+        <CameraIcon aria-hidden="true" strokeWidth={2.5} />
+        {busy ? 'Making it small' : shown === null ? 'Take a photo' : 'Take it again'}
+        <input
+          type="file"
+          accept="image/*"
+          capture="environment"
+          disabled={busy}
+          className="absolute inset-0 cursor-pointer opacity-0"
+          onChange={(e) => {
+            const file = e.target.files?.[0]
+            if (file) {
+              take(file)
+            }
+            e.target.value = ''
+          }}
+        />
+      </label>
+      <p role="status" className="font-bold text-nogo empty:hidden">
+        {problem ?? failed}
+      </p>
+      <Field
+        label="Caption"
+        value={caption}
+        onChange={set}
+        maxLength={300}
+        autoCapitalize="sentences"
+      />
+    </Screen>
+  )
+}
+
+/** A picked file made into a photo that can be kept, with an address to look at it. */
+function useTakenPhoto() {
+  const { camera } = usePorts()
+  const [shown, setShown] = useState<Shown | null>(null)
+  const [busy, setBusy] = useState<boolean>(false)
+  const [problem, setProblem] = useState<string | null>(null)
+  const url = shown?.url ?? null
+  useEffect(() => () => (url === null ? undefined : URL.revokeObjectURL(url)), [url])
+  const ready = async (file: File) => {
+    const photo = await camera.ready(file)
+    if (!photo.ok) {
+      setProblem(CAMERA_WORDS[photo.problem.kind])
+      return
+    }
+    const { bytes, mime } = photo.value
+    setShown({ photo: photo.value, url: URL.createObjectURL(new Blob([bytes], { type: mime })) })
+  }
+  const take = (file: File) => {
+    setBusy(true)
+    setProblem(null)
+    ready(file)
+      .catch(() => setProblem(CAMERA_WORDS.notReadable))
+      .finally(() => setBusy(false))
+  }
+  return { shown, busy, problem, take }
+}
