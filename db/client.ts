@@ -55,9 +55,10 @@ export function openDb(url: string, max = 10): Db {
     // lock_timeout and the idle limit bind writers that hold the counter (sync.md section 1).
     options: '-c timezone=UTC -c lock_timeout=2000 -c idle_in_transaction_session_timeout=5000',
   })
-  // An idle connection whose server went away is dropped by the pool; without a listener it would
-  // end the process. The next query reports the trouble to its own caller.
+  // A connection that the server ends emits an error, idle or in use; without a listener that would end
+  // the process. The pool drops it, and whoever uses it has the trouble from its own query.
   pool.on('error', () => undefined)
+  pool.on('connect', (client) => client.on('error', () => undefined))
   return new Kysely<Database>({
     dialect: new PostgresDialect({ pool }),
     plugins: [new CamelCasePlugin({ maintainNestedObjectKeys: true })],
