@@ -180,7 +180,7 @@ export const COIL_CHECKS: CheckItem[] = [
       },
       { text: 'Meter on volts. Red on battery plus, black on the feed pin.', caution: null },
       {
-        text: 'Key on. The bulb must light. Read the volts within five seconds.',
+        text: 'Key on. The bulb must light. Read the volts at once, while it is lit: some relays let go after two seconds.',
         caution: HIGH_VOLTAGE,
       },
       { text: 'Key off. Bulb off. Plug the coil in until it clicks.', caution: null },

@@ -1,0 +1,124 @@
+import { expect, test } from 'vitest'
+import { FAILURES } from '@/db/codebook/fmi'
+import { PCODES } from '@/db/codebook/pcodes'
+import { SPNS } from '@/db/codebook/spn'
+
+const spn = (n: number) => SPNS.find((s) => s.spn === n)
+const pcode = (code: string) => PCODES.find((p) => p.code === code)
+const fmi = (n: number) => FAILURES.find((f) => f.fmi === n)
+
+test('[CB17] the tables hold all rows of the checked starting set', () => {
+  expect([SPNS.length, PCODES.length]).toEqual([174, 157])
+  expect(FAILURES.filter((f) => f.fmi !== null).map((f) => f.fmi)).toEqual(
+    Array.from({ length: 32 }, (_, n) => n),
+  )
+})
+
+// Number and subject: SAE J1939 Digital Annex, also seen in an open J1939 list.
+test.each([
+  [51, /throttle position/, 'throttleSensor'],
+  [84, /vehicle speed/, null],
+  [94, /fuel supply.*pressure/, 'fuelPressure'],
+  [102, /intake manifold.*pressure/, 'mapSensor'],
+  [110, /coolant temperature/, 'coolantTempSensor'],
+  [158, /key-switch battery voltage/, 'systemVoltage'],
+  [168, /battery voltage/, 'systemVoltage'],
+  [190, /engine speed/, 'crankSensor'],
+  [620, /5 V sensor supply/, 'sensorSupply'],
+  [636, /position sensor \(crank or cam\)/, 'crankSensor'],
+  [651, /injector, cylinder 1/, 'injector1'],
+  [677, /starter motor relay/, null],
+  [1268, /ignition coil 1/, 'ignitionCoil1'],
+  [1269, /ignition coil 2/, 'ignitionCoil2'],
+  [1323, /misfire, cylinder 1/, null],
+] as const)(
+  '[CB17] SPN %i is what the standard says (SAE J1939 Digital Annex)',
+  (n, name, circuit) => {
+    expect(spn(n)?.name).toMatch(name)
+    expect(spn(n)?.circuit).toBe(circuit)
+  },
+)
+
+// No standard number for tip-over; pump and fan relays, gear and steering are often coded makers' own way.
+test('[CB17] numbers that makers use their own way say so', () => {
+  for (const n of [520192, 931, 1071, 523, 1807]) expect(spn(n)?.makersDiffer, `${n}`).toBe(true)
+  for (const n of [168, 1268, 190]) expect(spn(n)?.makersDiffer, `${n}`).toBe(false)
+  expect(SPNS.some((s) => s.spn < 520192 && /tip-over/.test(s.name))).toBe(false)
+})
+
+// SAE J1939-73 Appendix A / ISO 11783-12 Annex E, seen in two open libraries.
+test.each([
+  [0, /above normal, most severe/, 'highSevere'],
+  [1, /below normal, most severe/, 'lowSevere'],
+  [2, /erratic, intermittent or incorrect/, 'erratic'],
+  [3, /voltage above normal, or shorted to a high source/, 'voltHigh'],
+  [4, /voltage below normal, or shorted to a low source/, 'voltLow'],
+  [5, /current below normal, or open circuit/, 'currentLow'],
+  [6, /current above normal, or grounded circuit/, 'currentHigh'],
+  [7, /mechanical system not responding/, 'mechanical'],
+  [8, /abnormal frequency, pulse width or period/, 'frequency'],
+  [9, /abnormal update rate/, 'updateRate'],
+  [10, /abnormal rate of change/, 'rateOfChange'],
+  [12, /bad intelligent device/, 'badDevice'],
+  [13, /out of calibration/, 'calibration'],
+  [19, /received network data in error/, 'networkError'],
+  [22, /reserved/, 'reserved'],
+  [31, /condition/, 'exists'],
+] as const)(
+  '[CB17] FMI %i is what the standard says (SAE J1939-73 Appendix A)',
+  (n, name, failure) => {
+    expect(fmi(n)?.name).toMatch(name)
+    expect(fmi(n)?.failure).toBe(failure)
+  },
+)
+
+test('[CB17] kind 3 speaks for part, wiring and driver and against supply; kind 5 for what is open', () => {
+  const high = fmi(3)?.byRole
+  expect(Math.min(high?.part ?? 0, high?.wiring ?? 0, high?.driver ?? 0)).toBeGreaterThan(
+    5 * (high?.supply ?? 100),
+  )
+  const open = fmi(5)?.byRole
+  expect(Math.min(open?.part ?? 0, open?.wiring ?? 0)).toBeGreaterThan(open?.driver ?? 100)
+})
+
+test('[CB17] kinds that tell nothing of the cause move nothing within the circuit', () => {
+  for (const n of [9, 11, 14, 19, 22, 30, 31]) expect(fmi(n)?.byRole, `${n}`).toBeNull()
+})
+
+// SAE J2012 / ISO 15031-6.
+test.each([
+  ['P0107', /pressure signal low/, 'low', 'mapSensor'],
+  ['P0117', /coolant temperature signal low/, 'low', 'coolantTempSensor'],
+  ['P0122', /throttle position A signal low/, 'low', 'throttleSensor'],
+  ['P0123', /throttle position A signal high/, 'high', 'throttleSensor'],
+  ['P0201', /injector circuit, cylinder 1/, 'circuit', 'injector1'],
+  ['P0230', /fuel pump primary/, 'circuit', 'fuelPump'],
+  ['P0301', /misfire cylinder 1/, 'condition', null],
+  ['P0335', /crank position sensor A circuit/, 'circuit', 'crankSensor'],
+  ['P0336', /crank position sensor A out of plausible range/, 'range', 'crankSensor'],
+  ['P0337', /crank position sensor A signal low/, 'low', 'crankSensor'],
+  ['P0351', /ignition coil A circuit/, 'circuit', 'ignitionCoil1'],
+  ['P0352', /ignition coil B circuit/, 'circuit', 'ignitionCoil2'],
+  ['P0505', /idle control system/, 'condition', 'idleAir'],
+  ['P0562', /system voltage low/, 'low', 'systemVoltage'],
+  ['P0563', /system voltage high/, 'high', 'systemVoltage'],
+  ['P0641', /sensor reference voltage A circuit open/, 'circuit', 'sensorSupply'],
+] as const)('[CB17] %s is what the standard says (SAE J2012)', (code, name, failure, circuit) => {
+  expect(pcode(code)?.name).toMatch(name)
+  expect(pcode(code)?.failure).toBe(failure)
+  expect(pcode(code)?.circuit).toBe(circuit)
+})
+
+test('[CB17] the classic groups keep their suffixes: x2 low, x3 high, x4 intermittent (SAE J2012)', () => {
+  for (const base of ['P011', 'P012']) {
+    const group = base === 'P011' ? ['P0112', 'P0113', 'P0114'] : ['P0122', 'P0123', 'P0124']
+    expect(group.map((code) => pcode(code)?.failure)).toEqual(['low', 'high', 'intermittent'])
+  }
+})
+
+test('[CB4] every row names the standard it comes from, or says it is from memory', () => {
+  for (const row of [...SPNS, ...PCODES, ...FAILURES])
+    expect(row.source, row.id).toMatch(/^SAE J(1939|2012)/)
+  expect(pcode('P0562')?.source).toMatch(/from memory/)
+  expect(pcode('P0351')?.source).not.toMatch(/from memory/)
+})
