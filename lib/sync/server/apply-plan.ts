@@ -101,7 +101,7 @@ const auditOf = ({ steps }: Effects, { actor, deviceId, at, newId }: Sender) =>
     at,
     actorId: actor.personId,
     deviceId,
-    action: `job.${what}`,
+    action: what === 'job' ? 'job.move' : `job.${what}`,
     entity: 'job',
     entityId: jobId,
     detail: { from, to },
