@@ -82,6 +82,11 @@ export class PhoneSender {
     return this.#running
   }
 
+  /** Resolves when no run goes on. */
+  async idle(): Promise<void> {
+    await this.#running
+  }
+
   stop(): void {
     this.#stopped = true
     this.#callOff?.()
@@ -102,6 +107,8 @@ export class PhoneSender {
         },
         () => this.#isStale(),
       )
+      const reached = end.kind !== 'unreachable'
+      this.#tell({ reached, need: end.kind === 'need' ? end.need : null })
       if (end.kind !== 'done') break
     }
     this.#schedule(end)
@@ -116,15 +123,19 @@ export class PhoneSender {
     const stopBeating = this.#beat()
     try {
       const end = await this.#oneRun()
-      if (end.kind !== 'enrol') return end
-      const enrolled = await enrol(this.#db, this.#keys, this.#ports)
-      if (enrolled.ok) return await this.#oneRun()
-      if (enrolled.problem.kind === 'unreachable') return { kind: 'unreachable' }
-      return { kind: 'need', need: enrolled.problem.kind }
+      return end.kind === 'enrol' ? await this.#enrolAndRun() : end
     } finally {
       stopBeating()
       this.#tell({ running: null })
     }
+  }
+
+  /** The shop does not know this phone's key: tell it, and try once more (P18). */
+  async #enrolAndRun(): Promise<RunEnd> {
+    const enrolled = await enrol(this.#db, this.#keys, this.#ports)
+    if (enrolled.ok) return await this.#oneRun()
+    if (enrolled.problem.kind === 'unreachable') return { kind: 'unreachable' }
+    return { kind: 'need', need: enrolled.problem.kind }
   }
 
   async #oneRun(): Promise<RunEnd> {
@@ -136,9 +147,6 @@ export class PhoneSender {
       tell: (running) => this.#tell({ running }),
     })
     const end = await run.run()
-    const need = end.kind === 'need' ? end.need : null
-    const reached = run.reached || (end.kind !== 'unreachable' && end.kind !== 'wait')
-    this.#tell({ reached: end.kind === 'unreachable' ? false : reached, need })
     if (run.bookChanged) this.#onBook()
     return end
   }

@@ -45,7 +45,6 @@ const MOST_RESETS = 2
  */
 export class SyncRun {
   bookChanged: boolean = false
-  reached: boolean = false
   #need: Need = null
   #waits: boolean = false
   #upToDate: boolean
@@ -145,7 +144,6 @@ export class SyncRun {
   }): Promise<void> {
     const { db, apply } = this.#store
     const { response } = of
-    this.reached = true
     this.#size.limit = Math.min(FULL, this.#size.limit * 2)
     const receivedMs = this.#ports.clock.now()
     const held = await readMeta(db, 'clockOffset')
@@ -198,7 +196,6 @@ export class SyncRun {
   }
 
   #endOf(reply: Exclude<Reply, { kind: 'ours' | 'smaller' | 'never' }>): RunEnd {
-    if (reply.kind !== 'unreachable') this.reached = true
     switch (reply.kind) {
       case 'unreachable':
         return { kind: 'unreachable' }
@@ -213,7 +210,6 @@ export class SyncRun {
 
   /** Halves what is sent until the one op is found that the shop will not have; that one is set aside. */
   async #smaller(batch: OutboxRecord[], reason: string): Promise<RunEnd | null> {
-    this.reached = true
     const [only] = batch
     if (batch.length > 1) {
       this.#size.limit = Math.max(1, batch.length >> 1)
@@ -242,7 +238,6 @@ export class SyncRun {
     const reply = await sendPhoto(this.#ports, sender, photo, await openPhoto(photo))
     this.#heldPhotos.add(photo.hash)
     if (reply.kind === 'ours') {
-      this.reached = true
       await markPhoto(db, photo.hash, { state: 'sent', reason: null })
     } else if (reply.kind === 'never' || reply.kind === 'smaller') {
       const reason = reply.kind === 'never' ? reply.code : 'too_big'

@@ -31,9 +31,8 @@ export function watchUnsent(of: {
     open: async (kept) => ({ items: await listOps(core, kept.records), kept }),
     failed: of.failed,
   })
-  const view = (): UnsentView => {
+  const view = (now: NonNullable<Listed>): UnsentView => {
     const state = of.state.get()
-    const now = listed.get()
     const base = {
       ...NOTHING_UNSENT,
       ...of.room.get(),
@@ -42,7 +41,6 @@ export function watchUnsent(of: {
       needs: state.need,
       draftsKept: of.draftsKept.get(),
     }
-    if (now === null) return base
     const sending = state.running !== null
     const ops = now.items.map(({ record, item }) => ({
       ...item,
@@ -53,11 +51,18 @@ export function watchUnsent(of: {
     return { ...base, ...summed([...ops, ...photos]), fetchedAt, setAside }
   }
   return new LiveCell(NOTHING_UNSENT, (emit) => {
-    const tell = () => emit(view())
-    const ends = [listed, of.state, of.room, of.draftsKept].map((watch) => watch.subscribe(tell))
-    tell()
+    let isFresh = false
+    const tell = () => {
+      const now = listed.get()
+      if (isFresh && now !== null) emit(view(now))
+    }
+    const ends = [of.state, of.room, of.draftsKept].map((watch) => watch.subscribe(tell))
+    const end = listed.subscribe(() => {
+      isFresh = true
+      tell()
+    })
     return () => {
-      for (const end of ends) end()
+      for (const leave of [...ends, end]) leave()
     }
   })
 }

@@ -1,0 +1,31 @@
+import { createHash } from 'node:crypto'
+import type { OpInput } from '@/lib/sync/protocol/op'
+import { jobOpen, machineAdd } from './field-ops'
+import { createPhone, type TestPhone } from './phone'
+import { jpegOf } from './pictures'
+import { ShopDouble } from './shop-double'
+
+/** A note as the phone writes it. */
+export const note = (of: TestPhone, jobId: string, words: string): OpInput =>
+  of.phone.entry(jobId, { kind: 'note', words }, { bookVersion: 1 })
+
+/** A phone that the shop knows, with one job of its own. */
+export async function atWork(
+  shop = new ShopDouble(),
+  options: Parameters<typeof createPhone>[0]['ports'] = {},
+) {
+  const phone = await createPhone({ fetch: shop.fetch, ports: options, name: 'one' })
+  await phone.phone.enrol()
+  const machine = machineAdd()
+  const job = jobOpen(machine.fields.id)
+  return { shop, phone, machine, job, jobId: job.fields.id }
+}
+
+export const outbox = (of: TestPhone) => of.phone.core.db.outbox.toArray()
+export const states = async (of: TestPhone) => (await outbox(of)).map((record) => record.state)
+/** A small real picture of a job. */
+export const photoOf = (jobId: string) => {
+  const bytes = new Uint8Array(jpegOf())
+  const hash = createHash('sha256').update(bytes).digest('hex')
+  return { hash, jobId, bytes: bytes.buffer, mime: 'image/jpeg' as const }
+}

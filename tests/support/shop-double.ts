@@ -1,0 +1,242 @@
+import { createHash, createPublicKey, verify } from 'node:crypto'
+import { gunzipSync } from 'node:zlib'
+import { v7 } from 'uuid'
+import { HEADERS, signedText } from '@/lib/sync/protocol/device'
+import {
+  type Cursor,
+  type OpResult,
+  type PullAnswer,
+  type PullRow,
+  type SyncRequest,
+  type SyncResponse,
+  syncRequest,
+} from '@/lib/sync/protocol/message'
+import { type Op, op as opShape } from '@/lib/sync/protocol/op'
+import { MECHANIC, type TestFetch } from './phone'
+
+type Row = { entity: string; id: string; jobId: string | null; row: unknown }
+
+/** What a test does to one request: answer instead of the shop, or lose the shop's answer. */
+export type Fault = (request: {
+  path: string
+  body: Uint8Array
+}) => { instead: Response } | { noLine: true } | { loseReply: true } | null
+
+const json = (body: unknown, status = 200, headers: Record<string, string> = {}) =>
+  new Response(JSON.stringify(body), {
+    status,
+    headers: { 'content-type': 'application/json', ...headers },
+  })
+
+const problem = (status: number, kind: string) => json({ kind, status }, status)
+
+/**
+ * A shop in memory that speaks the protocol and nothing of our server's code: it checks signatures,
+ * takes each op once, numbers every change densely and hands out pages. Tests bend it by `fault`,
+ * `refuse`, `pageRows` and `session`.
+ */
+export class ShopDouble {
+  session: boolean = true
+  epoch = 'first'
+  scopeVersion = 1
+  pageRows = 500
+  nowMs = Date.UTC(2026, 10, 24, 18, 40)
+  fault: Fault = () => null
+  /** Answers a result for an op that is not simply taken. */
+  refuse: (op: Op) => OpResult | null = () => null
+  readonly requests: { path: string; ops: number; bytes: number }[] = []
+  readonly ops = new Map<string, Op>()
+  readonly photos = new Map<string, Uint8Array>()
+  readonly seenDseqs: number[] = []
+  readonly #devices = new Map<string, { x: string; y: string }>()
+  readonly #rows = new Map<string, Row & { seq: number; state: PullRow['state'] }>()
+  #seq = 0
+  #jobs = 0
+  #orders = new Map<string, number>()
+
+  /** Adds or changes a row as the desk would. */
+  put(entity: string, id: string, row: unknown, jobId: string | null = null): void {
+    this.#seq += 1
+    this.#rows.set(`${entity}/${id}`, { entity, id, jobId, row, seq: this.#seq, state: 'present' })
+  }
+
+  remove(entity: string, id: string, state: 'deleted' | 'evict' = 'deleted'): void {
+    this.#seq += 1
+    this.#rows.set(`${entity}/${id}`, { entity, id, jobId: null, row: null, seq: this.#seq, state })
+  }
+
+  row(entity: string, id: string): unknown {
+    return this.#rows.get(`${entity}/${id}`)?.row
+  }
+
+  rowsOf(entity: string): unknown[] {
+    return [...this.#rows.values()]
+      .filter((row) => row.entity === entity && row.state === 'present')
+      .map((row) => row.row)
+  }
+
+  forgetDevices(): void {
+    this.#devices.clear()
+  }
+
+  /** As after a backup an hour old was brought back: the given ops are gone, a new epoch begins. */
+  restoreWithout(opIds: readonly string[]): void {
+    this.epoch = `${this.epoch}+`
+    for (const opId of opIds) {
+      const op = this.ops.get(opId)
+      this.ops.delete(opId)
+      if (op) this.#rows.delete(`${op.kind === 'log.add' ? 'logEntry' : 'job'}/${op.entityId}`)
+    }
+  }
+
+  readonly fetch: TestFetch = (path, init) => Promise.resolve().then(() => this.#serve(path, init))
+
+  #serve(path: string, init: RequestInit): Response {
+    const body = init.body instanceof Uint8Array ? init.body : new Uint8Array()
+    const fault = this.fault({ path, body })
+    if (fault !== null && 'noLine' in fault) throw new TypeError('Failed to fetch')
+    if (fault !== null && 'instead' in fault) return fault.instead
+    const answer = this.#answer(path, new Headers(init.headers), body)
+    if (fault !== null) throw new TypeError('Failed to fetch')
+    return answer
+  }
+
+  #answer(path: string, headers: Headers, body: Uint8Array): Response {
+    if (path === '/api/devices') return this.#enrol(body)
+    if (path === '/api/me') return this.session ? json(MECHANIC) : problem(401, 'signIn')
+    if (path === '/api/sync') return this.#sync(headers, body)
+    if (path.startsWith('/api/photos/')) return this.#photo(path, headers, body)
+    return problem(404, 'notFound')
+  }
+
+  #enrol(body: Uint8Array): Response {
+    if (!this.session) return problem(401, 'signIn')
+    const { deviceId, publicKey } = JSON.parse(Buffer.from(body).toString('utf8'))
+    this.#devices.set(deviceId, publicKey)
+    return json({ deviceId, serverTime: new Date(this.nowMs).toISOString() })
+  }
+
+  #signed(headers: Headers, body: Uint8Array): Response | null {
+    const of = (name: keyof typeof HEADERS) => headers.get(HEADERS[name]) ?? ''
+    const key = this.#devices.get(of('device'))
+    if (key === undefined) return problem(401, 'unknownDevice')
+    const text = signedText({
+      shop: of('shop'),
+      person: of('person'),
+      device: of('device'),
+      dseq: of('dseq'),
+      bodyHash: createHash('sha256').update(body).digest('base64url'),
+    })
+    const publicKey = createPublicKey({
+      key: { kty: 'EC', crv: 'P-256', x: key.x, y: key.y },
+      format: 'jwk',
+    })
+    const fits = verify(
+      'sha256',
+      Buffer.from(text),
+      { key: publicKey, dsaEncoding: 'ieee-p1363' },
+      Buffer.from(of('signature'), 'base64url'),
+    )
+    return fits ? null : problem(401, 'badSignature')
+  }
+
+  #sync(headers: Headers, body: Uint8Array): Response {
+    const refusal = this.#signed(headers, body)
+    if (refusal !== null) return refusal
+    const request = syncRequest.parse(JSON.parse(gunzipSync(body).toString('utf8')))
+    this.requests.push({ path: '/api/sync', ops: request.ops.length, bytes: body.byteLength })
+    const taken: string[] = []
+    const results: OpResult[] = []
+    for (const raw of request.ops) {
+      const op = opShape.parse(raw)
+      const result = this.#take(op)
+      if (result === null) taken.push(op.id)
+      else results.push(result)
+    }
+    const answer: SyncResponse = {
+      protocol: 1,
+      serverTime: new Date(this.nowMs).toISOString(),
+      taken,
+      results,
+      pull: this.#pull(request),
+    }
+    return json(answer)
+  }
+
+  #take(op: Op): OpResult | null {
+    if (this.ops.has(op.id)) return { opId: op.id, result: 'duplicate' }
+    const refused = this.refuse(op)
+    if (refused !== null) return refused
+    this.ops.set(op.id, op)
+    this.seenDseqs.push(op.dseq)
+    this.#apply(op)
+    return null
+  }
+
+  #apply(op: Op): void {
+    if (op.kind === 'machine.add') this.put('machine', op.entityId, op.fields)
+    if (op.kind === 'job.open') this.put('job', op.entityId, this.#opened(op), op.entityId)
+    if (op.kind === 'job.move') {
+      const job = this.row('job', op.entityId) as object
+      this.put('job', op.entityId, { ...job, state: op.fields.to }, op.entityId)
+    }
+    if (op.kind === 'log.add') {
+      const order = (this.#orders.get(op.fields.jobId) ?? 0) + 1
+      this.#orders.set(op.fields.jobId, order)
+      const row = {
+        ...op.fields,
+        order,
+        hash: v7(),
+        receivedAt: new Date(this.nowMs).toISOString(),
+      }
+      this.put('logEntry', op.entityId, row, op.fields.jobId)
+    }
+    if (op.kind === 'partRequest.ask') {
+      const lines = op.fields.lines.map((line) => ({ ...line, state: 'asked' }))
+      const row = { ...op.fields, lines, askedBy: MECHANIC.personId }
+      this.put('partRequest', op.entityId, row, op.fields.jobId)
+    }
+  }
+
+  #opened(op: Extract<Op, { kind: 'job.open' }>) {
+    this.#jobs += 1
+    return {
+      ...op.fields,
+      number: `J-${this.#jobs}`,
+      state: 'open',
+      peopleState: 'withMachine',
+      machineState: 'stranded',
+      wayOut: null,
+      openedBy: MECHANIC.personId,
+      assignedTo: [],
+    }
+  }
+
+  #pull(request: SyncRequest): PullAnswer {
+    if (!request.pull) return { kind: 'notAsked' }
+    if (!this.session) return { kind: 'signIn' }
+    const { epoch, scopeVersion } = this
+    const start: Cursor = { epoch, shop: MECHANIC.shopId, scopeVersion, seq: 0 }
+    const held = request.cursor
+    const isReset =
+      held !== null && (held.epoch !== this.epoch || held.scopeVersion !== this.scopeVersion)
+    if (isReset) return { kind: 'reset', cursor: start }
+    const after = held?.seq ?? 0
+    const all = [...this.#rows.values()].filter((row) => row.seq > after)
+    all.sort((a, b) => a.seq - b.seq)
+    const rows = all.slice(0, this.pageRows)
+    const more = all.length > rows.length
+    const seq = more ? (rows.at(-1)?.seq ?? after) : this.#seq
+    return { kind: 'page', rows, cursor: { ...start, seq }, more }
+  }
+
+  #photo(path: string, headers: Headers, body: Uint8Array): Response {
+    const refusal = this.#signed(headers, body)
+    if (refusal !== null) return refusal
+    const hash = path.slice('/api/photos/'.length)
+    this.requests.push({ path: '/api/photos', ops: 0, bytes: body.byteLength })
+    if (createHash('sha256').update(body).digest('hex') !== hash) return problem(422, 'wrongHash')
+    this.photos.set(hash, body)
+    return json({ hash }, 201)
+  }
+}
