@@ -14,7 +14,6 @@ export default {
       ink: token('ink'),
       ink2: token('ink2'),
       rule: token('rule'),
-      plate: token('plate'),
       plateEdge: token('plate-edge'),
       scribe: token('scribe'),
       scribe2: token('scribe2'),
@@ -46,6 +45,11 @@ export default {
     fontWeight: { normal: '500', bold: '650', heavy: '800' },
     borderRadius: { none: '0', plate: '2px', key: '4px' },
     extend: {
+      // Not under `colors`: `text-plate` is a size. The plate is a ground and a line, never text.
+      backgroundColor: { plate: token('plate') },
+      borderColor: { plate: token('plate') },
+      fill: { plate: token('plate') },
+      stroke: { plate: token('plate') },
       minHeight: { target: '3.5rem', key: '4rem', main: '4.5rem', row: '4.25rem' },
       maxWidth: { column: '42.5rem' },
       transitionDuration: { press: '90ms', slide: '160ms', home: '240ms' },

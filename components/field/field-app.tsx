@@ -4,6 +4,7 @@ import { useSyncExternalStore } from 'react'
 import { StoreProvider } from '@/components/store/store-provider'
 import { useSession } from '@/components/store/use-session'
 import { Screen } from '@/components/ui/screen'
+import type { FieldPorts } from '@/lib/ports/field-ports'
 import { routeOf } from './route'
 import { FieldRouter, useRoute } from './router'
 import { Screens } from './screens'
@@ -13,7 +14,7 @@ import { SignedOut } from './signed-out'
 const never = () => () => undefined
 
 /** The field app: everything under /field. The one static document holds no screen; the phone draws it. */
-export function FieldApp() {
+export function FieldApp({ ports }: { ports?: FieldPorts }) {
   const onPhone = useSyncExternalStore<boolean>(
     never,
     () => true,
@@ -24,7 +25,7 @@ export function FieldApp() {
   }
   return (
     <FieldRouter>
-      <StoreProvider>
+      <StoreProvider {...(ports ? { ports } : {})}>
         <Inside />
       </StoreProvider>
     </FieldRouter>

@@ -19,7 +19,10 @@ type Router = {
   /** Segments after `/field`, decoded. */
   path: string[]
   search: URLSearchParams
-  go: (to: string, options?: { replace?: boolean }) => void
+  /** `from`: goes only when that is still the address, e.g. after a save during which the person left. */
+  go: (to: string, options?: { replace?: boolean; from?: string }) => void
+  /** The address now, without its question mark. */
+  here: string
   back: () => void
 }
 
@@ -37,7 +40,10 @@ function subscribe(listener: () => void): () => void {
 const address = () => window.location.pathname + window.location.search
 const serverAddress = () => '/field'
 
-function go(to: string, options: { replace?: boolean } = {}): void {
+function go(to: string, options: { replace?: boolean; from?: string } = {}): void {
+  if (options.from !== undefined && options.from !== window.location.pathname) {
+    return
+  }
   if (options.replace === true) {
     window.history.replaceState(null, '', to)
   } else {
@@ -61,7 +67,7 @@ export function FieldRouter({ children }: { children: ReactNode }) {
       .split('/')
       .filter((part) => part !== '')
       .slice(1)
-    return { path: path.map(decoded), search: url.searchParams, go, back }
+    return { path: path.map(decoded), search: url.searchParams, go, back, here: url.pathname }
   }, [now])
   return <RouterContext value={router}>{children}</RouterContext>
 }

@@ -94,6 +94,7 @@ function TagOf({ jobId }: { jobId: string }) {
       number={job.number}
       machine={machineName(machine, models)}
       href={jobHref(jobId)}
+      compact
     />
   )
 }

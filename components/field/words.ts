@@ -66,3 +66,6 @@ export function machineName(
 /** "1 code", "2 codes": a count with its noun. */
 export const counted = (n: number, one: string, many = `${one}s`): string =>
   `${n} ${n === 1 ? one : many}`
+
+/** The text with a capital at its front, for names of the code book that begin a line. */
+export const sentence = (text: string): string => `${text.charAt(0).toUpperCase()}${text.slice(1)}`

@@ -7,21 +7,41 @@ type Props = {
   machine: string
   href?: string
   current?: boolean
+  /** In a header: smaller, at most three lines. */
+  compact?: boolean
   className?: string
 }
 
 /** The chamfered tag with the punched hole: complaint, job number, machine. Used for jobs only. */
-export function JobTag({ complaint, number, machine, href, current, className }: Props) {
+export function JobTag({
+  complaint,
+  number,
+  machine,
+  href,
+  current,
+  compact = false,
+  className,
+}: Props) {
   const face = (
     <span className="tag-edge">
       <span className="tag-face">
         <Hole />
         <span className="min-w-0 flex-1">
-          <span className="caps line-clamp-2 block text-[1.625rem] leading-[1.05]">
+          <span
+            className={classes(
+              'caps line-clamp-2 leading-[1.05]',
+              compact ? 'text-section' : 'text-[1.625rem]',
+            )}
+          >
             {complaint}
           </span>
-          <span className="block text-second leading-tight text-ink2">
-            <span className="figures mr-2">{number ?? 'no number yet'}</span>
+          <span
+            className={classes(
+              'text-second leading-tight text-ink2',
+              compact ? 'block truncate' : 'block',
+            )}
+          >
+            <span className="figures mr-2">{number ?? 'unsent'}</span>
             {machine}
           </span>
         </span>

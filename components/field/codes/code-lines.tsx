@@ -6,6 +6,7 @@ import { Row } from '@/components/ui/row'
 import { explainCode } from '@/lib/diag/code-words'
 import type { Features } from '@/lib/model/features'
 import type { LogEntry } from '@/lib/model/log-entry'
+import { sentence } from '../words'
 import { contextWords } from './context-words'
 
 type Props = { entries: readonly LogEntry[]; features: Features; empty: string }
@@ -29,7 +30,7 @@ export function CodeLines({ entries, features, empty }: Props) {
               second={
                 words === null
                   ? contextWords(body.context)
-                  : `${words.circuitName}${words.failure === null ? '' : `: ${words.failure.name}`}. ${contextWords(body.context)}`
+                  : `${sentence(words.circuitName)}${words.failure === null ? '' : `: ${words.failure.name}`}. ${contextWords(body.context)}`
               }
             />
           </li>

@@ -6,6 +6,7 @@ import { RuleEdge } from '@/components/ui/rule-edge'
 import { explainCode, type FaultRef } from '@/lib/diag/code-words'
 import type { CodeContext, CodeSeen } from '@/lib/model/code-seen'
 import type { Features } from '@/lib/model/features'
+import { sentence } from '../words'
 import { contextWords } from './context-words'
 
 type Props = { seen: CodeSeen; context: CodeContext; features: Features }
@@ -24,8 +25,8 @@ export function CodeMeaning({ seen, context, features }: Props) {
         <h2 data-meaning="" tabIndex={-1} className="caps text-plate">
           {words.title}
         </h2>
-        <p className="pt-1 text-row font-bold">{words.circuitName}</p>
-        {words.failure === null ? null : <p className="text-row">{words.failure.name}</p>}
+        <p className="pt-1 text-row font-bold">{sentence(words.circuitName)}</p>
+        {words.failure === null ? null : <p className="text-row">{sentence(words.failure.name)}</p>}
       </Plate>
       <p className="text-row font-bold">{words.doesNotProve}</p>
       {words.failure === null ? null : (

@@ -1,4 +1,5 @@
 import type { CodeContext } from '@/lib/model/code-seen'
+import { sentence } from '../words'
 
 /** "Module 0, active, counted 4." */
 export function contextWords(context: CodeContext): string {
@@ -7,6 +8,5 @@ export function contextWords(context: CodeContext): string {
     { active: 'active', stored: 'stored', unknown: 'active or stored not shown' }[context.status],
     context.count === null ? '' : `counted ${context.count}`,
   ].filter(Boolean)
-  const line = words.join(', ')
-  return `${line.charAt(0).toUpperCase()}${line.slice(1)}.`
+  return `${sentence(words.join(', '))}.`
 }

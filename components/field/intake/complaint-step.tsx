@@ -65,6 +65,7 @@ export function ComplaintStep({ draft, change }: StepProps) {
       {picked && picked.conditions.length > 0 ? (
         <ChoiceMany
           legend="When does it do it?"
+          columns={2}
           value={draft.conditions}
           onChange={(conditions) => change({ conditions })}
           options={picked.conditions.map((c) => ({ value: c.id, label: c.name }))}

@@ -36,7 +36,7 @@ const TITLES: Record<IntakeStep, string> = {
 /** A new job in four steps, kept to the keystroke. */
 export function IntakeScreen() {
   const { value: draft, set, clear, ready } = useDraft<IntakeDraft>(INTAKE_KEY, EMPTY_INTAKE)
-  const { go } = useRoute()
+  const { go, here } = useRoute()
   const save = useOpenJob(draft)
   const [told, setTold] = useState(false)
   const at = STEPS.indexOf(draft.step)
@@ -80,7 +80,7 @@ export function IntakeScreen() {
           <div className="flex gap-2">
             {at > 0 ? (
               <Key className="key-tall" onClick={() => move(-1)}>
-                Back
+                Step back
               </Key>
             ) : null}
             <Key kind="main" disabled={!ready || save.busy} onClick={onward}>
@@ -102,7 +102,7 @@ export function IntakeScreen() {
             confirmLabel="Throw away"
             onConfirm={() => {
               clear()
-                .then(() => go('/field', { replace: true }))
+                .then(() => go('/field', { replace: true, from: here }))
                 .catch(() => announce('Could not be thrown away.', 'assertive'))
             }}
           />
@@ -125,7 +125,7 @@ function useOpenJob(draft: IntakeDraft) {
   const stamp = useStamp()
   const shop = useShop()
   const { index } = useBook()
-  const { go } = useRoute()
+  const { go, here } = useRoute()
   const [busy, setBusy] = useState<boolean>(false)
   const [problem, setProblem] = useState<string | null>(null)
   const open = async () => {
@@ -138,7 +138,7 @@ function useOpenJob(draft: IntakeDraft) {
     })
     await record(ops, { clearDrafts: [INTAKE_KEY] })
     announce('Job opened and saved on this phone.')
-    go(jobHref(jobId), { replace: true })
+    go(jobHref(jobId), { replace: true, from: here })
   }
   const run = () => {
     setBusy(true)

@@ -6,6 +6,7 @@ import { useSession } from '@/components/store/use-session'
 import { useStamp } from '@/components/store/use-stamp'
 import { announce } from '@/components/ui/announce'
 import { Choice } from '@/components/ui/choice'
+import { classes } from '@/components/ui/class-names'
 import { Field } from '@/components/ui/field'
 import { Key } from '@/components/ui/key'
 import type { Job, JobMachineState, JobState, PeopleState } from '@/lib/model/job'
@@ -25,6 +26,7 @@ export function StatesPart({ job }: { job: Job }) {
   const state = (which: Which, title: string, word: string, second: string) => (
     <State
       title={title}
+      wide={which === 'job'}
       word={word}
       second={second}
       open={open === which}
@@ -33,7 +35,7 @@ export function StatesPart({ job }: { job: Job }) {
   )
   return (
     <section className="grid gap-2" aria-label="People, machine and job">
-      <div className="grid grid-cols-1 min-[340px]:grid-cols-2">
+      <div className="grid grid-cols-1 gap-x-2 gap-y-2 min-[22rem]:grid-cols-2">
         {state('people', 'People', PEOPLE_WORDS[job.peopleState], peopleLine(job))}
         {state('machine', 'Machine', MACHINE_WORDS[job.machineState], '')}
       </div>
@@ -60,13 +62,21 @@ function State(props: {
   word: string
   second: string
   open: boolean
+  wide?: boolean
   onChange: (() => void) | null
 }) {
   return (
-    <div className="state-box grid content-between gap-1 border-2 border-ink p-3">
-      <p className="text-second text-ink2">{props.title}</p>
-      <p className="caps text-section">{props.word}</p>
-      {props.second ? <p className="text-second">{props.second}</p> : null}
+    <div
+      className={classes(
+        'flex gap-2 border-2 border-ink p-3',
+        props.wide ? 'flex-wrap items-center' : 'flex-col',
+      )}
+    >
+      <div className="flex-1">
+        <p className="text-second text-ink2">{props.title}</p>
+        <p className="caps text-section">{props.word}</p>
+        {props.second ? <p className="text-second">{props.second}</p> : null}
+      </div>
       {props.onChange === null ? null : (
         <Key small quiet aria-expanded={props.open} onClick={props.onChange}>
           {props.open ? 'Leave it' : 'Change'}

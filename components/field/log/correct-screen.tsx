@@ -23,7 +23,7 @@ export function CorrectScreen({ jobId, entryId }: { jobId: string; entryId: stri
   const { index } = useBook()
   const record = useRecord()
   const stamp = useStamp()
-  const { go } = useRoute()
+  const { go, here } = useRoute()
   const entry = log?.find((line) => line.entry.id === entryId)?.entry
   const save = () => {
     if (reason.trim() === '') {
@@ -36,7 +36,7 @@ export function CorrectScreen({ jobId, entryId }: { jobId: string; entryId: stri
     )
       .then(() => {
         announce('Correction saved on this phone.')
-        go(jobHref(jobId, 'log'), { replace: true })
+        go(jobHref(jobId, 'log'), { replace: true, from: here })
       })
       .catch(() => setProblem('Could not be saved. Nothing typed is lost: try again.'))
   }

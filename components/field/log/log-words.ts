@@ -3,7 +3,7 @@ import { type BookIndex, wordName } from '@/lib/diag/book-index'
 import { explainCode } from '@/lib/diag/code-words'
 import type { LogBody, LogKind } from '@/lib/model/log-entry'
 import { contextWords } from '../codes/context-words'
-import { counted, MACHINE_WORDS, PEOPLE_WORDS, WAY_OUT_WORDS } from '../words'
+import { counted, MACHINE_WORDS, PEOPLE_WORDS, sentence, WAY_OUT_WORDS } from '../words'
 
 /** Shape and word of each kind of entry: the word always stands beside the shape. */
 const KINDS: Record<LogKind, { shape: LogShape; word: string }> = {
@@ -105,7 +105,7 @@ function codeWords(body: Of<'code'>, index: Names): EntryWords {
   }
   const words = explainCode(index, body.seen)
   const failure = words.failure === null ? '' : `: ${words.failure.name}`
-  return { title: words.title, second: `${words.circuitName}${failure}. ${context}` }
+  return { title: words.title, second: `${sentence(words.circuitName)}${failure}. ${context}` }
 }
 
 function checkWords(body: Of<'check'>, index: Names): EntryWords {

@@ -27,7 +27,7 @@ function Note({ jobId, zone }: { jobId: string; zone: string }) {
   const [problem, setProblem] = useState<{ field: keyof NoteDraft; words: string } | null>(null)
   const record = useRecord()
   const stamp = useStamp()
-  const { go } = useRoute()
+  const { go, here } = useRoute()
   const change = (next: Partial<NoteDraft>) => {
     setProblem(null)
     set({ ...draft, ...next })
@@ -45,7 +45,7 @@ function Note({ jobId, zone }: { jobId: string; zone: string }) {
       })
         .then(() => {
           announce('Note saved on this phone.')
-          go(jobHref(jobId, 'log'), { replace: true })
+          go(jobHref(jobId, 'log'), { replace: true, from: here })
         })
         .catch(() =>
           setProblem({

@@ -36,7 +36,7 @@ function TakePhoto({ jobId }: { jobId: string }) {
   const [failed, setFailed] = useState<string | null>(null)
   const record = useRecord()
   const stamp = useStamp()
-  const { go } = useRoute()
+  const { go, here } = useRoute()
   const save = ({ photo }: Shown) => {
     const { bytes, ...about } = photo
     const body = {
@@ -50,7 +50,7 @@ function TakePhoto({ jobId }: { jobId: string }) {
     })
       .then(() => {
         announce('Photo saved on this phone.')
-        go(jobHref(jobId, 'log'), { replace: true })
+        go(jobHref(jobId, 'log'), { replace: true, from: here })
       })
       .catch(() => setFailed('Could not be saved. Is the phone’s store full? Try again.'))
   }
