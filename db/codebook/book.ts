@@ -3,12 +3,16 @@ import { AIR_CHECKS } from './checks-air'
 import { BATTERY_CHECKS } from './checks-battery'
 import { CARBURETTOR_CHECKS } from './checks-carburettor'
 import { COIL_CHECKS } from './checks-coil'
+import { COIL_DRIVE_CHECKS } from './checks-coil-drive'
+import { CRANK_CHECKS } from './checks-crank'
 import { ELECTRICS_CHECKS } from './checks-electrics'
 import { ENGINE_CHECKS } from './checks-engine'
 import { INJECTOR_CHECKS } from './checks-injector'
+import { MIXTURE_CHECKS } from './checks-mixture'
+import { PRESSURE_CHECKS } from './checks-pressure'
 import { PUMP_CHECKS } from './checks-pump'
-import { SIGNAL_CHECKS } from './checks-signal'
 import { SPARK_CHECKS } from './checks-spark'
+import { STOP_CHECKS } from './checks-stops'
 import { TANK_CHECKS } from './checks-tank'
 import type { FaultData } from './fault-data'
 import { AIR_FAULTS } from './faults-air'
@@ -19,7 +23,9 @@ import { IGNITION_FAULTS } from './faults-ignition'
 import { POWER_FAULTS } from './faults-power'
 import { SIGNAL_FAULTS } from './faults-signal'
 import { FEATURE_ITEMS } from './features'
-import { FAILURES } from './fmi'
+import { FMI_LINE } from './fmi'
+import { FMI_UPPER } from './fmi-upper'
+import { PCODE_KINDS } from './pcode-kinds'
 import { PCODES } from './pcodes'
 import { SETUPS } from './setups'
 import { SHARE_GROUPS, SHARE_ROWS } from './shares'
@@ -48,17 +54,23 @@ export const BOOK_ITEMS: CodeBookItem[] = [
   ...FAULTS.map(withShares),
   ...TANK_CHECKS,
   ...PUMP_CHECKS,
+  ...PRESSURE_CHECKS,
   ...INJECTOR_CHECKS,
   ...CARBURETTOR_CHECKS,
   ...COIL_CHECKS,
+  ...COIL_DRIVE_CHECKS,
   ...SPARK_CHECKS,
-  ...SIGNAL_CHECKS,
+  ...CRANK_CHECKS,
+  ...STOP_CHECKS,
   ...BATTERY_CHECKS,
   ...ELECTRICS_CHECKS,
   ...AIR_CHECKS,
+  ...MIXTURE_CHECKS,
   ...ENGINE_CHECKS,
   ...SWAPS,
-  ...FAILURES,
+  ...FMI_LINE,
+  ...FMI_UPPER,
+  ...PCODE_KINDS,
   ...SPNS,
   ...PCODES,
 ]

@@ -1,8 +1,11 @@
 import { expect, test } from 'vitest'
-import { FAILURES } from '@/db/codebook/fmi'
+import { FMI_LINE } from '@/db/codebook/fmi'
+import { FMI_UPPER } from '@/db/codebook/fmi-upper'
+import { PCODE_KINDS } from '@/db/codebook/pcode-kinds'
 import { PCODES } from '@/db/codebook/pcodes'
 import { SPNS } from '@/db/codebook/spn'
 
+const FAILURES = [...FMI_LINE, ...FMI_UPPER, ...PCODE_KINDS]
 const spn = (n: number) => SPNS.find((s) => s.spn === n)
 const pcode = (code: string) => PCODES.find((p) => p.code === code)
 const fmi = (n: number) => FAILURES.find((f) => f.fmi === n)
