@@ -97,7 +97,7 @@ export class PhoneSender {
   }
 
   async #rounds(): Promise<void> {
-    let end: RunEnd = { kind: 'done' }
+    let end = { kind: 'done' } as RunEnd
     while (this.#again && !this.#stopped) {
       this.#again = false
       await this.#ports.lock.run(
