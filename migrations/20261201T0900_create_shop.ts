@@ -17,13 +17,12 @@ export async function up(db: Kysely<unknown>): Promise<void> {
       created_at timestamptz not null default now(),
       updated_at timestamptz not null default now()
     );
-    -- One row per shop. seq: last change number given out. floor_seq: cursors below it are too old
-    -- for a partial pull. epoch: another one after a restore from a backup.
+    -- One row per shop. seq: last change number given out. epoch: another one after a restore from a
+    -- backup.
     create table shop_counter (
       shop_id uuid primary key references shop,
       epoch text not null default gen_random_uuid()::text,
       seq bigint not null default 0 check (seq >= 0),
-      floor_seq bigint not null default 0 check (floor_seq >= 0),
       last_job_number integer not null default 0 check (last_job_number >= 0)
     );
   `.execute(db)

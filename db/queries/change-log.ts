@@ -31,22 +31,26 @@ export type LogPage =
   | { kind: 'reset'; cursor: LogCursor }
   | { kind: 'signIn' }
 
+export type PullArgs = {
+  actor: Pick<Actor, 'personId'>
+  cursor: LogCursor | null
+  limit: number
+  deviceId?: Id | null
+}
+
 /** A page ends at 256 KB of rows (P7). */
 const PAGE_BYTES = 256 * 1024
 
 /**
  * Answers what changed for this person after the cursor, in change order, each row once at its last
  * change (P7). The roles are read from the membership, never from the caller (P11). Null for a cursor:
- * from the start. `reset`: the cursor is of another epoch, shop or scope, too old, or of the future.
+ * from the start. `deviceId`: the phone that asks, so that it is also told of rows made on it that are
+ * out of scope by now. `reset`: the cursor is of another epoch, shop or scope, or of the future.
  * `signIn`: there is no live membership. The cursor of an empty page moves on all the same.
  */
 export async function pullPage(
   tx: ShopTx,
-  {
-    actor,
-    cursor,
-    limit,
-  }: { actor: Pick<Actor, 'personId'>; cursor: LogCursor | null; limit: number },
+  { actor, cursor, limit, deviceId = null }: PullArgs,
 ): Promise<LogPage> {
   const membership = await findMembership(tx, actor.personId)
   if (!membership) return { kind: 'signIn' }
@@ -55,7 +59,8 @@ export async function pullPage(
   const start = { epoch, shop: tx.shopId, scopeVersion: membership.scopeVersion, seq: 0 }
   if (cursor !== null && !fits(cursor, start, counter)) return { kind: 'reset', cursor: start }
   const after = cursor?.seq ?? 0
-  const scope = { shopId: tx.shopId, personId: actor.personId, roles: membership.roles }
+  const { personId } = actor
+  const scope = { shopId: tx.shopId, personId, roles: membership.roles, deviceId }
   const heads = await readHeads(tx, scope, { after, upTo, limit: limit + 1 })
   const { rows, isCut } = cutPage(await withRows(tx, heads.slice(0, limit)))
   const more = isCut || heads.length > limit
@@ -78,14 +83,14 @@ export async function changesAfter(
     .execute()
 }
 
-type Counter = { epoch: string; seq: number; floorSeq: number }
-type Scope = { shopId: Id; personId: Id; roles: readonly Role[] }
+type Counter = { epoch: string; seq: number }
+type Scope = { shopId: Id; personId: Id; roles: readonly Role[]; deviceId: Id | null }
 type Head = Omit<LogPageRow, 'row'>
 
 async function readCounter(tx: ShopTx): Promise<Counter> {
   return await tx
     .selectFrom('shopCounter')
-    .select(['epoch', 'seq', 'floorSeq'])
+    .select(['epoch', 'seq'])
     .where('shopId', '=', tx.shopId)
     .executeTakeFirstOrThrow()
 }
@@ -95,15 +100,13 @@ function fits(cursor: LogCursor, start: LogCursor, counter: Counter): boolean {
     cursor.epoch === start.epoch &&
     cursor.shop === start.shop &&
     cursor.scopeVersion === start.scopeVersion
-  const isReadable =
-    cursor.seq <= counter.seq && (cursor.seq === 0 || cursor.seq >= counter.floorSeq)
-  return isOurs && isReadable
+  return isOurs && cursor.seq <= counter.seq
 }
 
 /**
  * The last change of each entity within (after, upTo]. The counter was read by an earlier statement, so
  * every number up to it is visible in this one. A row that is gone or out of scope is told only to
- * those who could hold it: it had a number at or before their cursor.
+ * those who could hold it: it had a number at or before their cursor, or it was made on their phone.
  */
 async function readHeads(
   tx: ShopTx,
@@ -122,11 +125,26 @@ async function readHeads(
       and ((v.visible and c.state = 'present')
         or exists (select 1 from change_log b
           where b.shop_id = c.shop_id and b.entity = c.entity and b.entity_id = c.entity_id
-            and b.seq <= ${after}))
+            and b.seq <= ${after})
+        or ${wasMadeOn(scope)})
     order by c.seq
     limit ${limit}
   `.execute(tx)
   return rows
+}
+
+/** Rows that a phone made are on it before they have a number. */
+function wasMadeOn({ shopId, deviceId }: Scope): RawBuilder<SqlBool> {
+  if (deviceId === null) return sql<SqlBool>`false`
+  const made = (table: string, column: string) => sql<SqlBool>`exists (select 1
+    from ${sql.table(table)} m where m.shop_id = ${shopId} and m.id = c.entity_id::uuid
+      and ${sql.ref(`m.${column}`)} = ${deviceId})`
+  // A case, so that only ids of these tables are read as a uuid.
+  return sql<SqlBool>`case c.entity
+    when 'logEntry' then ${made('log_entry', 'device_id')}
+    when 'partRequest' then ${made('part_request', 'asked_on')}
+    when 'job' then ${made('job', 'opened_on')}
+    else false end`
 }
 
 const FIELD: readonly Role[] = ['mechanic', 'guide']

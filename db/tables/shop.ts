@@ -20,7 +20,6 @@ export type ShopCounterTable = {
   shopId: string
   epoch: Generated<string>
   seq: Generated<number>
-  floorSeq: Generated<number>
   lastJobNumber: Generated<number>
 }
 

@@ -93,6 +93,7 @@ async function pullFor({ device, session, message }: Exchange): Promise<PullAnsw
       actor: device.actor,
       cursor: message.cursor as Cursor | null,
       limit: PAGE_ROWS,
+      deviceId: device.deviceId,
     }),
   )
 }
