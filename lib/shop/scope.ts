@@ -3,6 +3,9 @@ import type { JobState } from '@/lib/model/job'
 import type { Actor } from '@/lib/model/person'
 import { may } from './permissions'
 
+/** Days after which a closed job leaves the phones (R22). */
+export const FIELD_DAYS = 60
+
 /** What decides whose job it is. */
 export type JobHands = { state: JobState; openedBy: Id; assignedTo: readonly Id[] }
 

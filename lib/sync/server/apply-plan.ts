@@ -11,9 +11,12 @@ import { enqueueWork } from '@/db/queries/work'
 import type { Id } from '@/lib/model/id'
 import type { Actor } from '@/lib/model/person'
 import type { Instant } from '@/lib/model/time'
+import { FIELD_DAYS } from '@/lib/shop/scope'
 import type { Effects, JobStand, Known, Outcome } from './draft'
 import type { Plan } from './plan'
 import type { ReadOp } from './read-ops'
+
+const DAY_MS = 24 * 3_600_000
 
 /** Who sends, and when it came by the server's clock. */
 export type Sender = { actor: Actor; deviceId: Id; at: Instant; newId: () => Id }
@@ -54,13 +57,7 @@ export async function applyPlan(
     tx,
     plan.outcomes.map(({ op, outcome }) => storedOp(op, outcome, sender)),
   )
-  for (const { id } of effects.partRequests) {
-    await enqueueWork(tx, {
-      task: 'partRequestMail',
-      payload: { requestId: id },
-      key: `partRequestMail:${id}`,
-    })
-  }
+  await enqueueTasks(tx, effects, at)
   const changes = changesOf(effects, known)
   if (changes.length > 0) await takeChanges(tx, changes)
 }
@@ -106,6 +103,19 @@ const auditOf = ({ steps }: Effects, { actor, deviceId, at, newId }: Sender) =>
     entityId: jobId,
     detail: { from, to },
   }))
+
+/** After-commit work: it is queued only if this transaction commits (lib/work). */
+async function enqueueTasks(tx: ShopTx, effects: Effects, at: Instant): Promise<void> {
+  for (const { id } of effects.partRequests) {
+    const key = `partRequestMail:${id}`
+    await enqueueWork(tx, { task: 'partRequestMail', payload: { requestId: id }, key })
+  }
+  const closed = effects.steps.filter((step) => step.what === 'job' && step.to === 'closed')
+  const runAt = new Date(Date.parse(at) + (FIELD_DAYS + 1) * DAY_MS).toISOString()
+  for (const { jobId } of closed) {
+    await enqueueWork(tx, { task: 'leaveField', payload: {}, key: `leaveField:${jobId}`, runAt })
+  }
+}
 
 /** Where an op of any shape points, as far as it says so in a form that can be kept. */
 function placeOf({ read }: ReadOp) {
