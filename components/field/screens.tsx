@@ -1,5 +1,14 @@
 'use client'
 
+import { CheckScreen } from '@/components/checks/check-screen'
+import { ChecksScreen } from '@/components/checks/checks-screen'
+import { ReadingScreen } from '@/components/checks/reading-screen'
+import { SwapScreen } from '@/components/checks/swap-screen'
+import { FixScreen } from '@/components/outcome/fix-screen'
+import { ProofScreen } from '@/components/outcome/proof-screen'
+import { WayOutScreen } from '@/components/outcome/way-out-screen'
+import { AskPartScreen } from '@/components/parts/ask-part-screen'
+import { PartsScreen } from '@/components/parts/parts-screen'
 import { KeyLink } from '@/components/ui/key'
 import { Screen } from '@/components/ui/screen'
 import { CodesScreen } from './codes/codes-screen'
@@ -43,7 +52,25 @@ export function Screens({ route }: { route: Route }) {
       return <NoteScreen jobId={route.jobId} />
     case 'photo':
       return <PhotoScreen jobId={route.jobId} />
-    default:
+    case 'checks':
+      return <ChecksScreen jobId={route.jobId} />
+    case 'check':
+      return <CheckScreen jobId={route.jobId} checkId={route.checkId} />
+    case 'reading':
+      return <ReadingScreen jobId={route.jobId} checkId={route.checkId} />
+    case 'swap':
+      return <SwapScreen jobId={route.jobId} swapId={route.swapId} />
+    case 'fix':
+      return <FixScreen jobId={route.jobId} />
+    case 'proof':
+      return <ProofScreen jobId={route.jobId} />
+    case 'wayOut':
+      return <WayOutScreen jobId={route.jobId} />
+    case 'parts':
+      return <PartsScreen jobId={route.jobId} />
+    case 'askPart':
+      return <AskPartScreen jobId={route.jobId} />
+    case 'unknown':
       return <Unknown />
   }
 }

@@ -17,6 +17,12 @@ import { ThemeKey, useThemeByTheSun } from './theme-menu'
 import { machineName } from './words'
 
 const TABS: readonly JobTab[] = ['job', 'checks', 'log', 'parts']
+const TAB_WORDS: Record<JobTab, string> = {
+  job: 'Job',
+  checks: 'Checks',
+  log: 'Log',
+  parts: 'Parts',
+}
 
 /** Everything around a screen: skip link, header, tabs, live regions, the bar that offers a new version. */
 export function Shell({ route, children }: { route: Route; children: ReactNode }) {
@@ -48,7 +54,7 @@ export function Shell({ route, children }: { route: Route; children: ReactNode }
           <Tabs
             label="Job"
             tabs={TABS.map((name) => ({
-              label: name,
+              label: TAB_WORDS[name],
               href: jobHref(route.jobId, name === 'job' ? '' : name),
               current: name === tab,
             }))}

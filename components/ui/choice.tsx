@@ -80,7 +80,10 @@ function Keys<T extends string>(
       {props.hint ? <p className="mb-1.5 text-second text-ink2">{props.hint}</p> : null}
       <div className={classes('grid gap-2', COLUMNS[props.columns ?? 1])}>
         {props.options.map((option) => (
-          <label key={option.value} className="choice">
+          <label
+            key={option.value}
+            className={classes('choice', props.columns === 3 && 'choice-tight')}
+          >
             <input
               type={props.type}
               name={name}

@@ -108,9 +108,7 @@ function ShowSteps({ sheet, folded }: { sheet: SpecSheet | null; folded: boolean
   if (folded) {
     return (
       <details className="border-b-2 border-ink">
-        <summary className="flex min-h-target items-center font-bold">
-          How to show codes on this model
-        </summary>
+        <summary className="fold">How to show codes on this model</summary>
         <div className="grid gap-3 pb-3">{steps}</div>
       </details>
     )

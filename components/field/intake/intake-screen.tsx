@@ -93,9 +93,7 @@ export function IntakeScreen() {
       <Step draft={draft} change={change} />
       {at === 0 && draft !== EMPTY_INTAKE ? (
         <details>
-          <summary className="flex min-h-target items-center text-second font-bold">
-            Throw this new job away
-          </summary>
+          <summary className="fold">Throw this new job away</summary>
           <Hold
             label="Throw it away"
             question="Throw away what was typed?"

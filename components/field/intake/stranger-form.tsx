@@ -59,7 +59,7 @@ export function StrangerForm({ value, onChange }: Props) {
       {first.map(ask)}
       {rest.length > 0 ? (
         <details className="border-t-2 border-ink">
-          <summary className="flex min-h-target items-center font-bold">
+          <summary className="fold">
             More questions: {rest.length}. Each answer shortens the lists.
           </summary>
           <div className="grid gap-4 pt-2">{rest.map(ask)}</div>

@@ -50,9 +50,12 @@ function Sheet({ sheet, source }: { sheet: SpecSheet; source: string }) {
       {facts.map((line) => (
         <p key={line}>{line}</p>
       ))}
-      {sheet.components.map((component) => (
-        <ComponentPart key={component.id} component={component} />
-      ))}
+      <section>
+        <RuleEdge end={String(sheet.components.length)}>Components</RuleEdge>
+        {sheet.components.map((component) => (
+          <ComponentPart key={component.id} component={component} />
+        ))}
+      </section>
       <p className="text-second text-ink2">Sheet from: {source}</p>
     </>
   )
@@ -62,23 +65,25 @@ function ComponentPart({ component }: { component: Component }) {
   const { index } = useBook()
   const setups = component.setups.map((id) => index?.setups.get(id)?.name ?? id)
   return (
-    <section className="grid gap-2">
-      <RuleEdge>{component.name}</RuleEdge>
-      <p>{component.place}</p>
-      {setups.length > 0 ? <p>Take off first: {setups.join(', ')}.</p> : null}
-      {component.fasteners ? <p>{component.fasteners}</p> : null}
-      {component.connector ? <p>Connector: {component.connector}</p> : null}
-      {component.torqueNm === null ? null : (
-        <p>
-          Torque <Figure value={component.torqueNm} unit="N m" />
-        </p>
-      )}
-      {component.pins.length > 0 ? <Pins pins={component.pins} /> : null}
-      {component.values.map((value) => (
-        <Value key={value.id} value={value} />
-      ))}
-      <p className="text-second text-ink2">From: {component.source}</p>
-    </section>
+    <details className="border-b-2 border-ink">
+      <summary className="fold">{component.name}</summary>
+      <div className="grid gap-2 pb-4">
+        <p>{component.place}</p>
+        {setups.length > 0 ? <p>Take off first: {setups.join(', ')}.</p> : null}
+        {component.fasteners ? <p>{component.fasteners}</p> : null}
+        {component.connector ? <p>Connector: {component.connector}</p> : null}
+        {component.torqueNm === null ? null : (
+          <p>
+            Torque <Figure value={component.torqueNm} unit="N m" />
+          </p>
+        )}
+        {component.pins.length > 0 ? <Pins pins={component.pins} /> : null}
+        {component.values.map((value) => (
+          <Value key={value.id} value={value} />
+        ))}
+        <p className="text-second text-ink2">From: {component.source}</p>
+      </div>
+    </details>
   )
 }
 

@@ -65,10 +65,10 @@ export function LogItem({ line, log, index, gapMs, day }: Props) {
               {clockTime(later.happenedAt, later.zone)}.
             </span>
           )}
+          {entry.body.kind === 'photo' ? (
+            <Thumb hash={entry.body.photo.hash} words={words.title} />
+          ) : null}
         </a>
-        {entry.body.kind === 'photo' ? (
-          <Thumb hash={entry.body.photo.hash} words={words.title} />
-        ) : null}
       </div>
     </li>
   )
@@ -107,7 +107,7 @@ function ReadingLine({ body, struck }: { body: ReadingBody; struck: boolean }) {
 function Thumb({ hash, words }: { hash: string; words: string }) {
   const { url } = usePhoto(hash)
   return url === null ? (
-    <p className="text-second text-ink2">The picture is on the phone that took it.</p>
+    <span className="block text-second text-ink2">The picture is on the phone that took it.</span>
   ) : (
     <Photo url={url} alt={words} className="mt-1 max-h-40" />
   )

@@ -7,6 +7,7 @@ import { useDraft } from '@/components/store/use-draft'
 import { useRecord } from '@/components/store/use-record'
 import { useStamp } from '@/components/store/use-stamp'
 import { announce } from '@/components/ui/announce'
+import { classes } from '@/components/ui/class-names'
 import { Field } from '@/components/ui/field'
 import { Key } from '@/components/ui/key'
 import { Photo } from '@/components/ui/photo'
@@ -74,7 +75,7 @@ function TakePhoto({ jobId }: { jobId: string }) {
           </figcaption>
         </figure>
       )}
-      <label className="key key-plate relative w-full">
+      <label className={classes('key relative w-full', shown === null && 'key-plate')}>
         <CameraIcon aria-hidden="true" strokeWidth={2.5} />
         {busy ? 'Making it small' : shown === null ? 'Take a photo' : 'Take it again'}
         <input

@@ -102,13 +102,32 @@ function Needs() {
   )
 }
 
+/** Lines of the job log by their titles; what is not among them is somebody's word. */
+const LOG_SHAPES: Readonly<Record<string, LogShape>> = {
+  Symptom: 'triangle',
+  Code: 'diamond',
+  'Codes not readable': 'diamond',
+  'Codes cleared': 'diamond',
+  Check: 'gauge',
+  'Check not possible': 'gauge',
+  Reading: 'gauge',
+  'Swap step': 'hexagon',
+  Fix: 'flag',
+  'Proof run': 'flag',
+  'Photo entry': 'frame',
+  'Way out': 'flag',
+}
+
+const shapeOf = (item: UnsentItem): LogShape =>
+  item.kind === 'log.add' ? (LOG_SHAPES[item.title] ?? 'ring') : SHAPES[item.kind]
+
 const SHAPES: Record<UnsentItem['kind'], LogShape> = {
   'machine.add': 'ring',
   'job.open': 'triangle',
   'job.move': 'flag',
   'job.people': 'ring',
   'job.machine': 'flag',
-  'log.add': 'gauge',
+  'log.add': 'ring',
   'partRequest.ask': 'hexagon',
   'advice.keep': 'flag',
   photoBytes: 'frame',
@@ -126,7 +145,7 @@ function Items({ title, items }: { title: string; items: readonly UnsentItem[] }
         {items.map((item) => (
           <li key={item.key}>
             <Row
-              icon={<LogIcon shape={SHAPES[item.kind]} />}
+              icon={<LogIcon shape={shapeOf(item)} />}
               title={item.title}
               second={itemWords(item)}
               end={clockTime(item.since, zone)}
