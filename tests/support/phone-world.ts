@@ -29,3 +29,15 @@ export const photoOf = (jobId: string) => {
   const hash = createHash('sha256').update(bytes).digest('hex')
   return { hash, jobId, bytes: bytes.buffer, mime: 'image/jpeg' as const }
 }
+
+/** Throws at the n-th step of the store, as if the process had been killed there. */
+export function killer(at: number) {
+  let steps = 0
+  return {
+    died: () => steps >= at,
+    step: () => {
+      steps += 1
+      if (steps >= at) throw new Error('killed')
+    },
+  }
+}

@@ -3,8 +3,40 @@ import { describe, expect, test } from 'vitest'
 import type { Job } from '@/lib/model/job'
 import { readMeta } from '@/lib/sync/client/phone-db'
 import { createPhone, newIndexed } from '../../support/phone'
-import { atWork, note, states } from '../../support/phone-world'
+import { atWork, killer, note, states } from '../../support/phone-world'
 import { ShopDouble } from '../../support/shop-double'
+
+/** Syncs a phone that dies at step `at`; then a fresh start ends in the same state. False: it outlived them. */
+async function killedWhileSyncing(at: number): Promise<boolean> {
+  const shop = new ShopDouble()
+  shop.pageRows = 2
+  shop.put('person', PERSON.id, PERSON)
+  const indexed = newIndexed()
+  const { phone: first, machine, job, jobId } = await atWork(shop, { indexed })
+  shop.fault = () => ({ noLine: true })
+  await first.record([machine, job, note(first, jobId, 'Coil was wet')])
+  first.kill()
+  shop.fault = () => null
+
+  const death = killer(at)
+  const dying = await createPhone({ fetch: shop.fetch, ports: { indexed, step: death.step } })
+  await dying.sync().catch(() => undefined)
+  const cursor = (await readMeta(dying.phone.core.db, 'cursor'))?.seq ?? 0
+  const held = await dying.phone.core.db.row.filter((row) => row.seq !== null).toArray()
+  expect(held.map((row) => row.seq).sort()).toEqual(Array.from({ length: cursor }, (_, i) => i + 1))
+  dying.kill()
+
+  const after = await createPhone({ fetch: shop.fetch, ports: { indexed } })
+  await after.sync()
+  expect(shop.ops.size).toBe(3)
+  expect(await states(after)).toEqual(['done', 'done', 'done'])
+  expect(await after.rows('person')).toEqual([PERSON])
+  expect(await after.see(after.phone.log(jobId))).toMatchObject([{ sent: true, order: 1 }])
+  after.kill()
+  return death.died()
+}
+
+const PERSON = { id: '01980000-0000-7000-8000-000000000102', name: 'Ansel Quay', roles: ['guide'] }
 
 describe('the phone takes what the shop has', () => {
   test('[P9] keeps unsent moves on top of what the shop sends, and lets a stale one go', async () => {
@@ -57,6 +89,12 @@ describe('the phone takes what the shop has', () => {
     expect(shop.ops.has(lost?.id ?? '')).toBe(true)
     expect(shop.rowsOf('logEntry')).toHaveLength(2)
     expect((await phone.see(phone.phone.unsent)).count).toBe(0)
+  })
+
+  test('[P8] [P4] killed at any step of a sync, page and cursor and results stand or fall together', async () => {
+    let at = 1
+    while (await killedWhileSyncing(at)) at += 1
+    expect(at).toBeGreaterThan(20)
   })
 
   test('[P10] a reset keeps unsent work and drops what the shop no longer shows', async () => {
