@@ -1,0 +1,166 @@
+/**
+ * Two-step look-ahead, for models too large to search exactly: every action, then the best one after it, then
+ * repairs in p/c order with the cheapest stop behind them (optimal without checks and set-ups: Heckerman,
+ * Breese and Rommelse 1995). Its answer is the cost of a plan that can really be carried out, so an upper bound.
+ */
+
+import type { ActionType } from './search'
+import type { Problem, Repair } from './search-problem'
+import { bestStop, dot, priceOf, survive } from './search-steps'
+
+/** A state by lists, for any number of checks and repairs. */
+export type Spot = {
+  w: Float64Array
+  checks: readonly number[]
+  repairs: readonly number[]
+  open: number
+  elapsed: number
+}
+
+/** A first action with the cost of the plan found behind it (weighted by the spot's mass). */
+export type Candidate = { type: ActionType; index: number; cost: number }
+
+/** How many of the best checks by one step are looked at two steps deep. */
+const DEEP = 8
+
+/** All first actions, cheapest first; those not worth a second step carry their one-step cost. */
+export function lookAhead(problem: Problem, spot: Spot): Candidate[] {
+  const first = actions(problem, spot).map((a) => ({ ...a, cost: oneStep(problem, spot, a) }))
+  first.sort((a, b) => a.cost - b.cost)
+  let checks = 0
+  const deeper = first.map((a) => {
+    if (a.type === 'stop' || (a.type === 'check' && ++checks > DEEP)) return a
+    return { ...a, cost: Math.min(a.cost, twoSteps(problem, spot, a)) }
+  })
+  return deeper.sort((a, b) => a.cost - b.cost)
+}
+
+/** Cost of repairs in p/c order with the cheapest stop at the best place in the row. */
+export function repairsOnly(problem: Problem, spot: Spot): number {
+  let best = bestStop(problem, spot.w).cost
+  let here = spot
+  let spent = 0
+  for (const index of inOrder(problem, spot)) {
+    const repair = problem.repairs[index]
+    const priced = repair === undefined ? null : priceOf(problem, { ...here, index }, repair)
+    if (repair === undefined || priced === null) continue
+    const after = survive(problem, repair, { w: here.w, price: priced.price })
+    spent += after.fixed
+    if (spent >= best) break
+    here = {
+      ...here,
+      w: after.w,
+      open: openAfter(problem, here, repair),
+      elapsed: here.elapsed + priced.minutes,
+    }
+    if (after.mass <= 1e-15) return Math.min(best, spent)
+    best = Math.min(best, spent + bestStop(problem, here.w).cost)
+  }
+  return best
+}
+
+/** A lower bound at any size: each fault at its stop or its cheapest cure alone. */
+export function leastCost(problem: Problem, w: Float64Array): number {
+  const least = Float64Array.from(problem.faults, (_, f) => {
+    const stop = Math.min(Number.POSITIVE_INFINITY, ...problem.stops.map((s) => s.byFault[f] ?? 0))
+    const cures = problem.repairs.flatMap((r) => ((r.fails[f] ?? 1) < 1 ? [r.price] : []))
+    const slip = (problem.falsePass[f] ?? 0) > 0 ? [problem.comeback] : []
+    return Math.min(stop, ...cures, ...slip)
+  })
+  return dot(w, least)
+}
+
+type Action = { type: ActionType; index: number }
+
+function actions(problem: Problem, spot: Spot): Action[] {
+  const { stop } = bestStop(problem, spot.w)
+  const list: Action[] = stop < 0 ? [] : [{ type: 'stop', index: stop }]
+  for (const index of spot.repairs) list.push({ type: 'repair', index })
+  for (const index of spot.checks) list.push({ type: 'check', index })
+  return list
+}
+
+function oneStep(problem: Problem, spot: Spot, action: Action): number {
+  return stepCost(problem, spot, action, repairsOnly)
+}
+
+function twoSteps(problem: Problem, spot: Spot, action: Action): number {
+  return stepCost(problem, spot, action, (p, next) => {
+    let best = repairsOnly(p, next)
+    for (const index of next.checks)
+      best = Math.min(best, oneStep(p, next, { type: 'check', index }))
+    return best
+  })
+}
+
+function stepCost(
+  problem: Problem,
+  spot: Spot,
+  action: Action,
+  then: (problem: Problem, next: Spot) => number,
+): number {
+  if (action.type === 'stop') return bestStop(problem, spot.w).cost
+  const step =
+    action.type === 'check'
+      ? checked(problem, spot, action.index)
+      : repaired(problem, spot, action.index)
+  if (step === null) return Number.POSITIVE_INFINITY
+  return step.next.reduce((cost, next) => cost + then(problem, next), step.fixed)
+}
+
+function checked(
+  problem: Problem,
+  spot: Spot,
+  index: number,
+): { fixed: number; next: Spot[] } | null {
+  const check = problem.checks[index]
+  const priced = check === undefined ? null : priceOf(problem, { ...spot, index }, check)
+  if (check === undefined || priced === null) return null
+  const mass = spot.w.reduce((sum, x) => sum + x, 0)
+  const next = check.p.map((row) => ({
+    w: spot.w.map((x, f) => x * (row[f] ?? 0)),
+    checks: spot.checks.filter((c) => c !== index),
+    repairs: spot.repairs,
+    open: spot.open | check.setups,
+    elapsed: spot.elapsed + priced.minutes,
+  }))
+  return { fixed: priced.price * mass, next: next.filter((n) => n.w.some((x) => x > 0)) }
+}
+
+function repaired(
+  problem: Problem,
+  spot: Spot,
+  index: number,
+): { fixed: number; next: Spot[] } | null {
+  const repair = problem.repairs[index]
+  const priced = repair === undefined ? null : priceOf(problem, { ...spot, index }, repair)
+  if (repair === undefined || priced === null) return null
+  const after = survive(problem, repair, { w: spot.w, price: priced.price })
+  if (after.mass <= 1e-15) return { fixed: after.fixed, next: [] }
+  const next = {
+    w: after.w,
+    checks: spot.checks,
+    repairs: spot.repairs.filter((r) => r !== index),
+    open: openAfter(problem, spot, repair),
+    elapsed: spot.elapsed + priced.minutes,
+  }
+  return { fixed: after.fixed, next: [next] }
+}
+
+const openAfter = (problem: Problem, spot: Spot, repair: Repair): number =>
+  (spot.open | repair.setups) & ~problem.closed
+
+/** Repairs by what they cure per unit of price, best first; the first of equals in the model's order. */
+function inOrder(problem: Problem, spot: Spot): number[] {
+  const worth = spot.repairs.map((index) => {
+    const repair = problem.repairs[index]
+    const priced = repair === undefined ? null : priceOf(problem, { ...spot, index }, repair)
+    if (repair === undefined || priced === null) return { index, ratio: 0 }
+    const cured = spot.w.reduce((sum, x, f) => sum + x * (1 - (repair.fails[f] ?? 1)), 0)
+    return { index, ratio: cured / Math.max(priced.price, 1e-12) }
+  })
+  return worth
+    .filter((r) => r.ratio > 0)
+    .sort((a, b) => b.ratio - a.ratio || a.index - b.index)
+    .map((r) => r.index)
+}

@@ -1,0 +1,200 @@
+/**
+ * A `single` model with numbers for names: what one step costs and what it leaves. Beliefs are carried as joint
+ * weights (prior x likelihood x chance of having failed so far), never normalised: the cost of a plan is then
+ * linear in them, and a state is worth the same whichever way it was reached.
+ */
+import { AppError } from '@/lib/model/result'
+import type { SearchState, SingleModel } from './troubleshoot-model'
+
+/** A repair: `fails[f]` is the chance that fault f survives it. */
+export type Repair = {
+  id: string
+  price: number
+  minutes: number
+  setups: number
+  fails: Float64Array
+}
+/** A check: `p[o][f]` is the chance of outcome o given fault f. */
+export type Check = {
+  id: string
+  price: number
+  minutes: number
+  setups: number
+  outcomes: readonly string[]
+  p: readonly Float64Array[]
+}
+
+export type Problem = {
+  faults: readonly string[]
+  repairs: readonly Repair[]
+  checks: readonly Check[]
+  /** Cost of each stop per fault. */
+  stops: readonly { id: string; byFault: Float64Array }[]
+  setups: readonly { price: number; minutes: number }[]
+  /** Set-ups closed by a test run, as a mask: those that say so and all that require them. */
+  closed: number
+  /** Chance that the test run passes wrongly, per fault, and what a comeback then costs. */
+  falsePass: Float64Array
+  comeback: number
+  /** Minutes in all; infinite without daylight. */
+  daylight: number
+}
+
+/** A point in the search: joint weights, checks and repairs left as masks, open set-ups, minutes gone. */
+export type Point = {
+  w: Float64Array
+  checks: number
+  repairs: number
+  open: number
+  elapsed: number
+  /** Outcomes seen so far as digits, one place per check: part of the point's key. */
+  code: number
+}
+
+/** Checks and repairs up to this many are searched exactly; above it a mask no longer holds them. */
+export const MOST_IN_MASK = 30
+
+/** The model as a problem; throws AppError `badModel` on names that do not exist or more than 30 set-ups. */
+export function problemOf(model: SingleModel): Problem {
+  const faults = model.faults.map((f) => f.id)
+  const setupIds = (model.setups ?? []).map((s) => s.id)
+  if (setupIds.length > 30) throw new AppError('badModel', { context: { field: 'setups' } })
+  const closure = closureOf(model)
+  const maskOf = (ids: readonly string[]) => ids.reduce((mask, id) => mask | closure(id), 0)
+  const rate = model.ratePerMinute
+  const test = model.verify ?? { cost: 0, minutes: 0 }
+  const testPrice = test.cost + rate * test.minutes
+  const onHand = new Set(model.parts?.onHand ?? [])
+  const repairs = repairsOf(model)
+    .filter((r) => r.needsPart === undefined || onHand.has(r.needsPart))
+    .map((r) => ({
+      id: r.id,
+      price: r.cost + rate * r.minutes + testPrice,
+      minutes: r.minutes + test.minutes,
+      setups: maskOf(r.setup),
+      fails: Float64Array.from(faults, (f) => 1 - (r.fixes[f] ?? 0)),
+    }))
+  const checks = model.checks.map((c) => ({
+    id: c.id,
+    price: c.cost + rate * c.minutes,
+    minutes: c.minutes,
+    setups: maskOf(c.setup),
+    outcomes: c.outcomes,
+    p: c.outcomes.map((_, o) =>
+      Float64Array.from(faults, (f) => c.p[f]?.[o] ?? 1 / c.outcomes.length),
+    ),
+  }))
+  return {
+    faults,
+    repairs,
+    checks,
+    stops: model.stops.map((s) => ({
+      id: s.id,
+      byFault: Float64Array.from(
+        faults,
+        (f) => s.cost + rate * (s.minutes ?? 0) + (s.costByFault?.[f] ?? 0),
+      ),
+    })),
+    setups: (model.setups ?? []).map((s) => ({
+      price: (s.cost ?? 0) + rate * s.minutes,
+      minutes: s.minutes,
+    })),
+    closed: closedMask(model, closure),
+    falsePass: Float64Array.from(faults, (f) => falsePassOf(test.falsePass, f)),
+    comeback: test.comebackCost ?? 0,
+    daylight: model.daylight?.minutes ?? Number.POSITIVE_INFINITY,
+  }
+}
+
+/** Joint weights of a state: prior x likelihood of its outcomes x chance that its repairs failed (sum <= 1). */
+export function weightsOf(model: SingleModel, problem: Problem, state: SearchState): Float64Array {
+  const total = model.faults.reduce((sum, f) => sum + f.prior, 0)
+  const w = Float64Array.from(model.faults, (f) => f.prior / total)
+  for (const check of problem.checks) {
+    const outcome = state.evidence[check.id]
+    if (outcome === undefined) continue
+    const row = check.p[check.outcomes.indexOf(outcome)]
+    if (row === undefined)
+      throw new AppError('badModel', { context: { field: `state.evidence.${check.id}` } })
+    for (let f = 0; f < w.length; f++) w[f] = (w[f] ?? 0) * (row[f] ?? 0)
+  }
+  for (const { id, fixes } of repairsOf(model)) {
+    if (!state.tried.includes(id)) continue
+    problem.faults.forEach((fault, f) => {
+      const stays = (1 - (fixes[fault] ?? 0)) * (1 - (problem.falsePass[f] ?? 0))
+      w[f] = (w[f] ?? 0) * stays
+    })
+  }
+  return w
+}
+
+/** What is left of checks and repairs in a state, by place. */
+export function leftOf(
+  problem: Problem,
+  state: SearchState,
+): { checks: number[]; repairs: number[] } {
+  return {
+    checks: problem.checks.flatMap((c, i) => (state.evidence[c.id] === undefined ? [i] : [])),
+    repairs: problem.repairs.flatMap((r, i) => (state.tried.includes(r.id) ? [] : [i])),
+  }
+}
+
+/** The set-ups a state holds open, with what they require. */
+export function openOf(model: SingleModel, state: SearchState): number {
+  const closure = closureOf(model)
+  return state.open.reduce((mask, id) => mask | closure(id), 0)
+}
+
+/** Price and minutes of opening what `need` asks for beyond what is open. */
+export function opening(
+  problem: Problem,
+  need: number,
+  open: number,
+): { price: number; minutes: number } {
+  let missing = need & ~open
+  let price = 0
+  let minutes = 0
+  for (let i = 0; missing !== 0; i++, missing >>>= 1) {
+    if ((missing & 1) === 0) continue
+    price += problem.setups[i]?.price ?? 0
+    minutes += problem.setups[i]?.minutes ?? 0
+  }
+  return { price, minutes }
+}
+
+function repairsOf(model: SingleModel) {
+  const own = model.faults.flatMap(({ id, repair }) =>
+    repair === null
+      ? []
+      : [{ ...repair, id, fixes: { [id]: repair.success ?? 1 } as Record<string, number> }],
+  )
+  return [...own, ...(model.extraRepairs ?? [])]
+}
+
+const falsePassOf = (
+  falsePass: number | Readonly<Record<string, number>> | undefined,
+  fault: string,
+): number => (typeof falsePass === 'number' ? falsePass : (falsePass?.[fault] ?? 0))
+
+function closureOf(model: SingleModel): (id: string) => number {
+  const setups = model.setups ?? []
+  const at = new Map(setups.map((s, i) => [s.id, i]))
+  const masks = new Map<string, number>()
+  const closure = (id: string): number => {
+    const known = masks.get(id)
+    if (known !== undefined) return known
+    const i = at.get(id)
+    if (i === undefined) throw new AppError('badModel', { context: { field: `setup ${id}` } })
+    masks.set(id, 1 << i)
+    const mask = (setups[i]?.requires ?? []).reduce((m, other) => m | closure(other), 1 << i)
+    masks.set(id, mask)
+    return mask
+  }
+  return closure
+}
+
+function closedMask(model: SingleModel, closure: (id: string) => number): number {
+  const setups = model.setups ?? []
+  const closing = setups.reduce((m, s, i) => (s.closedByTest ? m | (1 << i) : m), 0)
+  return setups.reduce((m, s, i) => ((closure(s.id) & closing) !== 0 ? m | (1 << i) : m), 0)
+}
