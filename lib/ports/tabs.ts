@@ -19,6 +19,8 @@ function lead(name: string, run: () => void): () => void {
   })
   navigator.locks
     .request(name, { signal: wait.signal }, async () => {
+      // The lock may have been given just before it was given up.
+      if (wait.signal.aborted) return
       run()
       await held
     })

@@ -66,7 +66,7 @@ function Jobs({ board, error, picked }: JobsProps) {
     <section className="desk-jobs" aria-label="Jobs">
       <div className="flex items-end justify-between">
         <h1 className="caps text-figure">{board?.whose === 'own' ? 'My jobs' : 'Open jobs'}</h1>
-        <span className="figures text-plate">{board ? rows.length : ''}</span>
+        <span className="figures text-screen">{board ? rows.length : ''}</span>
       </div>
       {error ? <p className="mt-2 font-bold text-nogo">{readSentence(error)}</p> : null}
       {!board && !error ? <p className="mt-2">Reading the board.</p> : null}

@@ -5,7 +5,9 @@ import { SuspectRows } from '@/components/suspects/suspect-rows'
 import { Key } from '@/components/ui/key'
 import { RuleEdge } from '@/components/ui/rule-edge'
 import type { Suspect } from '@/lib/diag/belief'
+import { SOMETHING_ELSE } from '@/lib/diag/book-index'
 import type { DeskJob } from '@/lib/model/desk'
+import { counted } from '../../field/words'
 import { bookNames } from '../log/book-names'
 import { tellEntry } from '../log/tell-entry'
 import type { JobCase } from './use-job-case'
@@ -24,8 +26,12 @@ export function DeskSuspects({ found, reckoned }: { found: DeskJob; reckoned: Jo
   const belief = reckoned.answer?.belief
   return (
     <section className="mt-7" aria-busy={reckoned.working}>
-      <RuleEdge end="of 100">Suspects after</RuleEdge>
-      <p className="text-second text-ink2">More than one can be true. {asOf(found, reckoned)}</p>
+      <RuleEdge end="of 100">
+        {found.entries.length === 0
+          ? 'Suspects from the complaint'
+          : `Suspects after ${counted(found.entries.length, 'entry', 'entries')}`}
+      </RuleEdge>
+      <p className="text-second text-ink2">More than one can be true. {asOf(reckoned)}</p>
       {reckoned.failed ? (
         <p className="font-bold text-nogo">
           The suspects could not be worked out here. The job log below is whole.
@@ -36,7 +42,7 @@ export function DeskSuspects({ found, reckoned }: { found: DeskJob; reckoned: Jo
           <Notices notices={belief.notices} />
           <div className="mt-2">
             <SuspectRows
-              suspects={all ? belief.suspects : belief.suspects.slice(0, FIRST_ROWS)}
+              suspects={all ? belief.suspects : firstRows(belief.suspects)}
               entryWords={(id) => words.get(id) ?? 'an entry of the log'}
               open={open}
               onOpen={setOpen}
@@ -45,7 +51,7 @@ export function DeskSuspects({ found, reckoned }: { found: DeskJob; reckoned: Jo
           </div>
           {belief.suspects.length > FIRST_ROWS ? (
             <Key small={true} quiet={true} className="mt-3" onClick={() => setAll(!all)}>
-              {all ? 'Show the first six' : `Show all ${belief.suspects.length}`}
+              {all ? 'Show the first ones' : `Show all ${belief.suspects.length}`}
             </Key>
           ) : null}
         </>
@@ -54,11 +60,16 @@ export function DeskSuspects({ found, reckoned }: { found: DeskJob; reckoned: Jo
   )
 }
 
-function asOf({ entries }: DeskJob, { index, working }: JobCase): string {
+function asOf({ index, working }: JobCase): string {
   if (!index) return 'Reading the code book.'
-  const last = entries.at(-1)
-  const after = last ? `after ${entries.length} entries` : 'from the complaint alone'
-  return `Worked out here ${after}, code book version ${index.version}.${working ? ' Working.' : ''}`
+  return `Worked out here with code book version ${index.version}.${working ? ' Working.' : ''}`
+}
+
+/** The first rows, and something else always among them (rule R5). */
+function firstRows(suspects: readonly Suspect[]): readonly Suspect[] {
+  const first = suspects.slice(0, FIRST_ROWS)
+  const other = suspects.find(({ fault }) => fault === SOMETHING_ELSE)
+  return !other || first.includes(other) ? first : [...first, other]
 }
 
 const NOTICE_WORDS = {

@@ -20,7 +20,7 @@ export function JobFacts({ found }: { found: DeskJob }) {
   const { job } = found
   return (
     <>
-      <p className="text-body text-ink2">
+      <p className="mt-1 text-body text-ink2">
         <span className="figures mr-2 text-ink">{job.number}</span>
         {found.machineWords}. <Heard found={found} />
       </p>

@@ -10,14 +10,36 @@ import type { LogEntry, ReadingBody } from '@/lib/model/log-entry'
 import { clockTime } from '../../field/times'
 import { useDesk } from '../desk-context'
 
-/** The last living reading of the suspect part, as it was judged in the field; none: nothing. */
+type Read = { at: string; body: ReadingBody }
+
+/**
+ * The last living reading of the suspect part, as it was judged in the field, and the last one of a
+ * known-good part by the same check; null where there is none.
+ */
 export function latestReading(
   entries: readonly LogEntry[],
-): { at: string; body: ReadingBody } | null {
-  for (const entry of living(entries).reverse()) {
-    if (entry.body.kind === 'reading') return { at: entry.happenedAt, body: entry.body }
-  }
-  return null
+): { read: Read; twin: Read | null } | null {
+  const all = living(entries)
+    .reverse()
+    .flatMap(({ happenedAt, body }) => (body.kind === 'reading' ? [{ at: happenedAt, body }] : []))
+  const read = all.find(({ body }) => body.subject === 'suspect') ?? all[0]
+  if (!read) return null
+  const twin = all.find(
+    (one) =>
+      one !== read && one.body.subject === 'knownGood' && one.body.checkId === read.body.checkId,
+  )
+  return { read, twin: twin ?? null }
+}
+
+const shown = (body: ReadingBody) => `${body.overRange ? 'over range' : body.asTyped} ${body.unit}`
+
+/** Where the band comes from, which meter, and what a known-good part read. */
+function provenance({ read: { body }, twin }: { read: Read; twin: Read | null }): string {
+  const band = body.spec
+    ? `Band: ${body.spec.name}, ${body.spec.source}.`
+    : 'No band for this reading.'
+  const good = twin ? ` A known-good part read ${shown(twin.body)}.` : ''
+  return `${band} ${body.meterName}.${good}`
 }
 
 /** The newest reading on its rule. */
@@ -25,26 +47,21 @@ export function LatestReading({ found, index }: { found: DeskJob; index: BookInd
   const { shop } = useDesk()
   const latest = latestReading(found.entries)
   if (!latest) return null
-  const { body, at } = latest
+  const { body, at } = latest.read
   const strip = stripOfBody(body)
-  const name = index?.checks.get(body.checkId)?.name ?? body.checkId
-  const whose = body.subject === 'knownGood' ? ', known-good part' : ''
-  const band = body.spec
-    ? `Band: ${body.spec.name}, ${body.spec.source}.`
-    : 'No band for this reading.'
   return (
     <section className="mt-7">
       <RuleEdge end={clockTime(at, shop.zone)}>
-        {name}
-        {whose}
+        {index?.checks.get(body.checkId)?.name ?? body.checkId}
+        {body.subject === 'knownGood' ? ', known-good part' : ''}
       </RuleEdge>
       {strip ? (
         <div className="mt-2">
-          <ReadingStrip reading={strip} provenance={`${band} ${body.meterName}.`} />
+          <ReadingStrip reading={strip} provenance={provenance(latest)} />
         </div>
       ) : (
         <p className="text-body">
-          <span className="figures">{body.asTyped}</span> {body.unit}, not judged. {band}
+          <span className="figures">{shown(body)}</span>, not judged. {provenance(latest)}
         </p>
       )}
     </section>

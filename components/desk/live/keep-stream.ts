@@ -33,6 +33,7 @@ export function keepStream(line: ShopLine, owner: KeptStreamOwner) {
   }
 
   function open() {
+    if (stopped) return
     rest()
     let again = false
     close = line.openStream(STREAM_PATH, NAMES, {

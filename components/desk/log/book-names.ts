@@ -17,7 +17,8 @@ export function bookNames(index: BookIndex | null): BookNames {
       if (!index) return null
       const words = explainCode(index, seen)
       if (words.unknown) return 'Not in the code book: kept as shown.'
-      return [words.circuitName, words.failure?.name].filter(Boolean).join(': ')
+      const said = [words.circuitName, words.failure?.name].filter(Boolean).join(': ')
+      return `${said.slice(0, 1).toUpperCase()}${said.slice(1)}.`
     },
   }
 }

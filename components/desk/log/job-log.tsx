@@ -93,8 +93,8 @@ function LogItem({ entry, line, before, struck, author, photoHere }: ItemProps) 
         <span className="desk-log-node">
           <LogIcon shape={line.shape} bar={line.bar} className="size-8" />
         </span>
-        <div className={struck ? 'min-w-0 line-through' : 'min-w-0'}>
-          <h3 className="text-row font-bold">
+        <div className="min-w-0">
+          <h3 className={struck ? 'text-row font-bold line-through' : 'text-row font-bold'}>
             <span className="visually-hidden">
               {line.bar ? `${line.kind}, correction: ` : `${line.kind}: `}
             </span>
@@ -109,7 +109,8 @@ function LogItem({ entry, line, before, struck, author, photoHere }: ItemProps) 
           {entry.body.kind === 'photo' ? (
             <PhotoFrame photo={entry.body.photo} caption={entry.body.caption} here={photoHere} />
           ) : null}
-          <Provenance entry={entry} author={author} kind={line.kind} struck={struck} />
+          <Provenance entry={entry} before={before} author={author} kind={line.kind} />
+          {struck ? <p className="text-second">Taken out of evidence below.</p> : null}
         </div>
       </div>
     </li>
@@ -130,24 +131,18 @@ function ReadingLine({ entry: { body } }: { entry: LogRow }) {
   )
 }
 
-function Provenance({
-  entry,
-  author,
-  kind,
-  struck,
-}: {
-  entry: LogRow
-  author: string
-  kind: string
-  struck: boolean
-}) {
+type ProvenanceProps = { entry: LogRow; before: LogRow | null; author: string; kind: string }
+
+/** What kind, by whom, and when it reached the shop where that is another minute than the entry before. */
+function Provenance({ entry, before, author, kind }: ProvenanceProps) {
   const { shop } = useDesk()
-  const late = Date.parse(entry.receivedAt) - Date.parse(entry.happenedAt) > 60_000
+  const at = clockTime(entry.receivedAt, shop.zone)
+  const lateMs = Date.parse(entry.receivedAt) - Date.parse(entry.happenedAt)
+  const alike = before && clockTime(before.receivedAt, shop.zone) === at
   return (
     <p className="text-second text-ink2">
       {kind}, {author}
-      {late ? `, in at ${clockTime(entry.receivedAt, shop.zone)}` : ''}
-      {struck ? '. Taken out of evidence below.' : ''}
+      {lateMs > 60_000 && !alike ? `, in at ${at}` : ''}
     </p>
   )
 }
