@@ -35,11 +35,10 @@ export const BATTERY_CHECKS: CheckItem[] = [
     outcomes: [
       { id: 'in', name: 'Within limits', good: true },
       { id: 'tooClose', name: 'Too close to call', good: false },
-      { id: 'outHigh', name: 'Above limits', good: false },
       { id: 'outLow', name: 'Below limits', good: false },
     ],
-    table: { batteryLow: [16, 14, 1, 69] },
-    otherwise: [88, 8, 1, 3],
+    table: { batteryLow: [16, 14, 70] },
+    otherwise: [88, 8, 4],
     expected: [
       {
         words: '12.4 V or more; 12.65 V is full, 12.06 V a quarter (flooded, 26.7 C).',
@@ -154,7 +153,7 @@ export const BATTERY_CHECKS: CheckItem[] = [
     minutes: 4,
     costMinor: 0,
     steps: [
-      { text: 'Try to turn each clamp by hand. It may not move.', caution: BATTERY_GAS },
+      { text: 'Try to turn each clamp by hand. It must not move.', caution: BATTERY_GAS },
       {
         text: 'Meter on DC volts. One probe on the post, the other on the clamp of the same post.',
         caution: null,
@@ -222,11 +221,11 @@ export const BATTERY_CHECKS: CheckItem[] = [
     steps: [
       {
         text: 'Meter on DC volts. One probe on the minus post, the other on bare engine metal.',
-        caution: null,
+        caution: MOVING_PARTS,
       },
+      { text: 'Scratch one spot bright if the probe slips.', caution: null },
       { text: 'Crank three seconds. Read.', caution: MOVES },
       { text: 'Do the same from the minus post to bare frame metal.', caution: null },
-      { text: 'Clean one spot to bright metal if the probe slips.', caution: MOVING_PARTS },
     ],
     cautions: [BATTERY_GAS, MOVES],
     record: 'Volts to engine and to frame.',

@@ -112,7 +112,6 @@ export const CARBURETTOR_CHECKS: CheckItem[] = [
     setups: [],
     tools: [
       { tool: 'screwdriver', accuracy: null },
-      { tool: 'fuelCan', accuracy: null },
       { tool: 'jar', accuracy: null },
     ],
     machineState: 'off',
@@ -120,7 +119,7 @@ export const CARBURETTOR_CHECKS: CheckItem[] = [
     minutes: 6,
     costMinor: 0,
     steps: [
-      { text: 'Can under the bowl. Open the drain screw.', caution: VAPOUR },
+      { text: 'Jar under the bowl. Open the drain screw.', caution: VAPOUR },
       {
         text: 'Catch what comes: it must run, then keep dribbling as the bowl refills.',
         caution: null,
@@ -168,7 +167,7 @@ export const CARBURETTOR_CHECKS: CheckItem[] = [
     weather: null,
     setups: ['tankCoverOff'],
     tools: [
-      { tool: 'fuelCan', accuracy: null },
+      { tool: 'jar', accuracy: null },
       { tool: 'pliers', accuracy: null },
     ],
     machineState: 'cranking',
@@ -180,7 +179,7 @@ export const CARBURETTOR_CHECKS: CheckItem[] = [
       { text: 'Fuel in the pulse hose means a split diaphragm.', caution: null },
       { text: 'Bend the hose: cracks, splits, loose on its stub?', caution: null },
       {
-        text: 'Fuel hose into the can. Turn the engine over: fuel must come in steady spurts.',
+        text: 'Stop switch to stop, so that it cannot fire. Fuel hose into the jar. Turn the engine over: fuel must come in steady spurts.',
         caution: MOVES,
       },
     ],

@@ -33,12 +33,15 @@ export const COIL_DRIVE_CHECKS: CheckItem[] = [
         caution: HIGH_VOLTAGE,
       },
       { text: 'Key off. Measure ohms from the same pin to engine metal. Note it.', caution: null },
-      { text: 'Unplug the control module. Do the volts and the ohms again.', caution: KEY_OFF },
+      {
+        text: 'Key off. Unplug the control module. Key on: volts again. Key off: ohms again.',
+        caution: KEY_OFF,
+      },
       {
         text: 'Measure ohms along the wire, coil plug to module plug, while you move the loom.',
         caution: null,
       },
-      { text: 'Plug the module in, then the coil.', caution: null },
+      { text: 'Key off. Plug the module in, then the coil, until they click.', caution: null },
     ],
     cautions: [
       { signal: 'NOTICE', text: 'Back probes only. Do not spread the pins of the module plug.' },

@@ -1,5 +1,5 @@
 import type { CheckItem } from '@/lib/model/code-book'
-import { HOT_ENGINE, MOVES, MOVING_PARTS } from './cautions'
+import { HOT_ENGINE, KEY_OFF, MOVES, MOVING_PARTS } from './cautions'
 import { GUESS, PRACTICE } from './sources'
 
 /** The crank signal. */
@@ -23,10 +23,13 @@ export const CRANK_CHECKS: CheckItem[] = [
     minutes: 6,
     costMinor: 0,
     steps: [
-      { text: 'Key off. Unplug the crank sensor behind the panel.', caution: null },
+      { text: 'Key off. Unplug the crank sensor behind the panel.', caution: KEY_OFF },
       { text: 'Meter on ohms. Measure across the two pins on the sensor side.', caution: null },
       { text: 'Measure from each pin to engine metal: no path.', caution: null },
-      { text: 'Warm the sensor end if the fault comes when hot, and read again.', caution: null },
+      {
+        text: 'If the fault comes when it is hot: measure at once after it dies. Write down the part temperature.',
+        caution: HOT_ENGINE,
+      },
       { text: 'Plug it in until it clicks.', caution: null },
     ],
     cautions: [HOT_ENGINE],
@@ -88,7 +91,7 @@ export const CRANK_CHECKS: CheckItem[] = [
     minutes: 7,
     costMinor: 0,
     steps: [
-      { text: 'Key off. Unplug the crank sensor.', caution: null },
+      { text: 'Key off. Unplug the crank sensor.', caution: KEY_OFF },
       { text: 'Peak adapter and meter on the sensor side, AC volts.', caution: null },
       { text: 'Hands and leads clear. Crank five seconds.', caution: MOVING_PARTS },
       { text: 'Read the peak volts. Note battery volts while cranking.', caution: null },

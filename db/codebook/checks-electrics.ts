@@ -34,7 +34,12 @@ export const ELECTRICS_CHECKS: CheckItem[] = [
       { text: 'Do the same to the far side of the key switch. Read.', caution: null },
       { text: 'Move the key and the loom while you read.', caution: null },
     ],
-    cautions: [KEY_OFF],
+    cautions: [
+      {
+        signal: 'NOTICE',
+        text: 'A slipped probe bridges live pins and blows the fuse. One hand, thin probes.',
+      },
+    ],
     record: 'Volts over the relay and over the switch, and any jump.',
     outcomes: [
       { id: 'in', name: 'Within limits', good: true },

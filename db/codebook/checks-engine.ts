@@ -27,16 +27,16 @@ export const ENGINE_CHECKS: CheckItem[] = [
     costMinor: 0,
     steps: [
       { text: 'Engine cold through: hand-cold, not just off.', caution: null },
-      { text: 'Cover off. Turn the engine by hand to the mark, both valves loose.', caution: null },
-      { text: 'Slide the feeler gauge in: light drag is the gap.', caution: null },
-      { text: 'Write down each valve. Turn twice round and measure again.', caution: null },
       {
-        text: 'Cover on with a whole gasket.',
+        text: 'Cover off. Turn the engine by hand to the mark, both valves loose.',
         caution: {
           signal: 'WARNING',
           text: 'Key out and plug cap off while hands are inside: the engine must not turn.',
         },
       },
+      { text: 'Slide the feeler gauge in: light drag is the gap.', caution: null },
+      { text: 'Write down each valve. Turn twice round and measure again.', caution: null },
+      { text: 'Cover on with a whole gasket.', caution: null },
     ],
     cautions: [HOT_ENGINE],
     record: 'Gap of each valve, engine temperature.',

@@ -1,5 +1,5 @@
 import type { CheckItem } from '@/lib/model/code-book'
-import { MONOXIDE, MOVES, MOVING_PARTS, VAPOUR } from './cautions'
+import { KEY_OFF, MONOXIDE, MOVES, MOVING_PARTS, VAPOUR } from './cautions'
 import { GUESS, PRACTICE } from './sources'
 
 /** The injector and what the module sends it. */
@@ -23,7 +23,7 @@ export const INJECTOR_CHECKS: CheckItem[] = [
     minutes: 6,
     costMinor: 0,
     steps: [
-      { text: 'Key off. Unplug the injector.', caution: null },
+      { text: 'Key off. Unplug the injector.', caution: KEY_OFF },
       {
         text: 'Put the injector light in the plug. Only a light made for injectors, never a bulb.',
         caution: {
@@ -85,9 +85,12 @@ export const INJECTOR_CHECKS: CheckItem[] = [
     minutes: 5,
     costMinor: 0,
     steps: [
-      { text: 'Key off. Unplug the injector.', caution: null },
+      { text: 'Key off. Unplug the injector.', caution: KEY_OFF },
       { text: 'Meter on ohms. Hold the probes together, note what the leads show.', caution: null },
-      { text: 'Measure across the two pins of the injector.', caution: null },
+      {
+        text: 'Measure across the two pins of the injector. Write down how warm it is.',
+        caution: null,
+      },
       { text: 'Tug the wires at the plug. Look for green pins.', caution: null },
       { text: 'Plug it in until it clicks.', caution: null },
     ],

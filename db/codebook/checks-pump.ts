@@ -198,7 +198,7 @@ export const PUMP_CHECKS: CheckItem[] = [
     setups: ['tankCoverOff'],
     tools: [
       { tool: 'pliers', accuracy: null },
-      { tool: 'fuelCan', accuracy: null },
+      { tool: 'jar', accuracy: null },
       { tool: 'lamp', accuracy: null },
     ],
     machineState: 'off',
@@ -206,7 +206,7 @@ export const PUMP_CHECKS: CheckItem[] = [
     minutes: 9,
     costMinor: 0,
     steps: [
-      { text: 'Tap shut or pressure off. Take the filter out over the can.', caution: VAPOUR },
+      { text: 'Tap shut or pressure off. Take the filter out over the jar.', caution: VAPOUR },
       { text: 'Pour its tank side onto white paper. Look for dirt, rust, water.', caution: null },
       { text: 'Blow through it gently the right way round. It must be easy.', caution: null },
       {

@@ -86,7 +86,7 @@ export const STOP_CHECKS: CheckItem[] = [
         caution: null,
       },
       {
-        text: 'Turn the bars full left and right in run. Shake the switch. The reading may not jump.',
+        text: 'Turn the bars full left and right in run. Shake the switch. The reading must not jump.',
         caution: null,
       },
       { text: 'Plug it in. Try the stop switch before the proof run.', caution: null },

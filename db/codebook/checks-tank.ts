@@ -27,7 +27,7 @@ export const TANK_CHECKS: CheckItem[] = [
       { text: 'Rock the machine. Listen for fuel moving in the tank.', caution: null },
       { text: 'Look at the tap: on, off or reserve. Turn it to reserve.', caution: null },
       {
-        text: 'Follow the hose with your eyes and fingers. It may not be flat, kinked or off.',
+        text: 'Follow the hose with your eyes and fingers. It must be round, not kinked, and on at both ends.',
         caution: null,
       },
     ],
@@ -61,17 +61,14 @@ export const TANK_CHECKS: CheckItem[] = [
     light: 'lampEnough',
     weather: 'Not in rain or snowfall: it spoils the sample.',
     setups: [],
-    tools: [
-      { tool: 'jar', accuracy: null },
-      { tool: 'fuelCan', accuracy: null },
-    ],
+    tools: [{ tool: 'jar', accuracy: null }],
     machineState: 'off',
     mayMoveMachine: false,
     minutes: 6,
     costMinor: 0,
     steps: [
       {
-        text: 'Engine cold enough to touch. No flame, no phone torch with a hot lamp near it.',
+        text: 'Engine cold enough to touch. No flame, no cigarette, no hot lamp near it.',
         caution: VAPOUR,
       },
       {
@@ -84,7 +81,7 @@ export const TANK_CHECKS: CheckItem[] = [
         caution: null,
       },
       { text: 'Smell the jar from an arm away: fresh, or sour like varnish.', caution: null },
-      { text: 'Pour it into the fuel can, never on the ground.', caution: null },
+      { text: 'Keep the jar shut and carry it home. Never pour it on the ground.', caution: null },
     ],
     cautions: [VAPOUR],
     record: 'Layers, colour, smell, and a photo of the jar.',

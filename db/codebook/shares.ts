@@ -1,7 +1,7 @@
 import type { Gate } from '@/lib/model/features'
 
 /** One elicited list: of 100 calls with this complaint on this kind of machine (rule R5). */
-export type ShareGroup = { symptom: string; gate: Gate; somethingElse: number }
+type ShareGroup = { symptom: string; gate: Gate; somethingElse: number }
 
 /** The groups of machines that were thought of one by one. They do not overlap. */
 export const SHARE_GROUPS = {
@@ -21,8 +21,6 @@ export const SHARE_GROUPS = {
     somethingElse: 8,
   },
 } as const satisfies Record<string, ShareGroup>
-
-export type ShareGroupId = keyof typeof SHARE_GROUPS
 
 type Row = readonly [
   fault: string,

@@ -5,4 +5,3 @@ export const OWN_WORDS = 'own words; common practice, no source'
 /** Shares, outcome tables and minutes that nobody counted. */
 export const GUESS =
   'common practice, no source; shares and tables are guesses, no count behind them'
-export const MEMORY = 'from memory'
