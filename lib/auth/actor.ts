@@ -26,9 +26,18 @@ export function actorOfRequest(request: Request): Promise<Actor | null> {
   for (const pair of header.split(';')) {
     const at = pair.indexOf('=')
     if (COOKIE_NAMES.includes(pair.slice(0, at).trim()))
-      return actorOfToken(decodeURIComponent(pair.slice(at + 1).trim()))
+      return actorOfToken(decoded(pair.slice(at + 1).trim()))
   }
   return Promise.resolve(null)
+}
+
+/** A cookie's value; as it stands when it is no percent-encoding. */
+function decoded(value: string): string {
+  try {
+    return decodeURIComponent(value)
+  } catch {
+    return value
+  }
 }
 
 /** The one place that turns a token into an Actor: signature, session row, membership, in that order. */

@@ -124,7 +124,7 @@ export async function pullAll(device: RawDevice, cookie: string) {
 }
 
 export const problemOf = async (answer: Response) => ({
+  ...((await answer.json()) as { kind: string; title: string }),
   status: answer.status,
   type: answer.headers.get('content-type'),
-  ...((await answer.json()) as { kind: string; title: string }),
 })
