@@ -26,6 +26,8 @@ const config: NextConfig = {
       ],
     },
   ],
+  /** Types are checked once, by npm run check; a build on a bare machine need not do it again. */
+  typescript: { ignoreBuildErrors: true },
   serverExternalPackages: ['pg', 'graphile-worker', 'nodemailer'],
 }
 
