@@ -1,4 +1,10 @@
-import type { CodeBookItem, MachineModel, WordItem } from '@/lib/model/code-book'
+import type {
+  CheckItem,
+  CodeBookItem,
+  MachineModel,
+  SwapItem,
+  WordItem,
+} from '@/lib/model/code-book'
 import { FEATURES, type FeatureName, type Features, type Gate } from '@/lib/model/features'
 
 /** What the checker of a code book can find; each kind is a rule of docs/spec/code-book.md. */
@@ -81,14 +87,24 @@ export function runningSums(row: readonly number[]): number[] {
   })
 }
 
-/** How far two rows differ in one outcome, at most: a ratio, taken where one of them has 5 of 100 or more. */
-export function widestRatio(a: readonly number[], b: readonly number[]): number {
+/**
+ * How far two rows of an action differ in one outcome, at most: a ratio, taken where one of them has `least`
+ * of 100 or more. "Too close to call" tells of the meter, not of the fault, and is left out.
+ */
+export function widestRatio(
+  action: CheckItem | SwapItem,
+  [a, b]: readonly [readonly number[], readonly number[]],
+  least: number,
+): number {
   return a.reduce((widest, x, i) => {
+    if (action.kind === 'check' && action.outcomes[i]?.id === 'tooClose') return widest
     const y = b[i] ?? 0
     const high = Math.max(x, y)
-    return high < 5 ? widest : Math.max(widest, high / Math.max(Math.min(x, y), 0.1))
+    return high < least ? widest : Math.max(widest, high / Math.max(Math.min(x, y), 0.1))
   }, 1)
 }
 
 /** Two rows that part at least this far tell their faults apart. */
 export const TELLS = 1.5
+/** An outcome counts for the worth of a check from 5 of 100, for telling two faults apart from 20 of 100. */
+export const COUNTS = { forCheck: 5, forPair: 20 }

@@ -3,6 +3,7 @@ import type { Features, Gate } from '@/lib/model/features'
 import {
   type BookProblem,
   type Books,
+  COUNTS,
   machinesFor,
   passes,
   TELLS,
@@ -113,12 +114,14 @@ const rowOf = (action: Action, fault: string): readonly number[] =>
   action.table[fault] ?? action.otherwise
 
 const tellsApart = (action: Action, a: string, b: string): boolean =>
-  widestRatio(rowOf(action, a), rowOf(action, b)) >= TELLS
+  widestRatio(action, [rowOf(action, a), rowOf(action, b)], COUNTS.forPair) >= TELLS
 
 function unreachable(x: { fault: FaultItem; actions: Action[]; sees: Sees }): BookProblem[] {
   const { fault, actions, sees } = x
   const reached = actions.some(
-    (a) => widestRatio(rowOf(a, fault.id), a.otherwise) >= TELLS && sees([fault], a),
+    (a) =>
+      widestRatio(a, [rowOf(a, fault.id), a.otherwise], COUNTS.forPair) >= TELLS &&
+      sees([fault], a),
   )
   return reached
     ? []

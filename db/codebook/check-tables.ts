@@ -1,6 +1,13 @@
 import type { CheckItem, SwapItem } from '@/lib/model/code-book'
 import { QUANTITIES } from '@/lib/model/meter-profile'
-import { type BookProblem, type Books, runningSums, TELLS, widestRatio } from './book-problem'
+import {
+  type BookProblem,
+  type Books,
+  COUNTS,
+  runningSums,
+  TELLS,
+  widestRatio,
+} from './book-problem'
 
 const isHundred = (row: readonly number[]): boolean =>
   Math.abs(row.reduce((sum, x) => sum + x, 0) - 100) < 1e-6
@@ -65,7 +72,9 @@ function ownFaultMoves({ id, fault, table, otherwise }: SwapItem): BookProblem[]
 
 function tellsNothing(item: CheckItem | SwapItem): BookProblem[] {
   const all = [...Object.values(item.table), item.otherwise]
-  const tells = all.some((a, i) => all.slice(i + 1).some((b) => widestRatio(a, b) >= TELLS))
+  const tells = all.some((a, i) =>
+    all.slice(i + 1).some((b) => widestRatio(item, [a, b], COUNTS.forCheck) >= TELLS),
+  )
   return tells
     ? []
     : [{ kind: 'tellsNothing', id: item.id, words: `no two rows part by ${TELLS} to 1` }]

@@ -244,4 +244,14 @@ export const RECORD_BREAKS: Break[] = [
       b.item('check', 'exhaustLook').otherwise = [92, 6, 2]
     },
   ],
+  [
+    'CB8 a check that tells only in too close to call',
+    'tellsNothing',
+    /coilPrimaryResistance/,
+    (b) => {
+      const check = b.item('check', 'coilPrimaryResistance')
+      check.table.ignitionCoilPart = [50, 48, 1, 1]
+      check.otherwise = [70, 28, 1, 1]
+    },
+  ],
 ]
