@@ -1,64 +1,29 @@
 import { sql } from 'kysely'
 import { afterAll, beforeAll, describe, expect, it } from 'vitest'
-import { asShop, asShopOn, openDb } from '@/db/client'
+import { asShop, openDb } from '@/db/client'
+import { listenForChanges } from '@/db/listen'
 import { changesAfter, type LogCursor, pullPage } from '@/db/queries/change-log'
-import {
-  type Change,
-  lastChange,
-  lockShop,
-  takeChanges,
-  takeJobNumbers,
-} from '@/db/queries/changes'
+import { type Change, lastChange, takeChanges } from '@/db/queries/changes'
 import { assignJob, findJob, setJobStand } from '@/db/queries/jobs'
 import { insertMachines } from '@/db/queries/machines'
 import { openTestDatabase, type TestDatabase } from '../support/database'
+import { AT, machineOf, makeJob, newId, STAND } from '../support/shop-fixture'
 import {
-  AT,
-  addJob,
-  machineOf,
-  makeJob,
-  makeShop,
-  newId,
-  STAND,
-  type TestShop,
-} from '../support/shop-fixture'
+  codeOf,
+  machineChange,
+  numbersOf,
+  oneTo,
+  owned,
+  seededDelays,
+  wait,
+  write,
+} from '../support/writers'
 
 let test: TestDatabase
 beforeAll(async () => {
   test = await openTestDatabase()
 })
 afterAll(() => test.close())
-
-const machineChange = (id: string): Change => ({ entity: 'machine', id, jobId: null })
-const owned = () => makeShop({ owner: ['owner'] })
-const wait = (ms: number) => new Promise((done) => setTimeout(done, ms))
-const codeOf = (promise: Promise<unknown>) =>
-  promise.then(
-    () => 'no error',
-    (error: { code?: string }) => error.code ?? String(error),
-  )
-/** Writes one machine; waits a while between writing and numbering, and again before the commit. */
-const write = (shop: TestShop, id: string, [before, after] = [0, 0]) =>
-  asShop(shop.id, async (tx) => {
-    await insertMachines(tx, [machineOf(id)])
-    await wait(before)
-    const seq = await takeChanges(tx, [machineChange(id)])
-    await wait(after)
-    return seq
-  })
-const numbersOf = async (shop: TestShop) =>
-  (await asShop(shop.id, (tx) => changesAfter(tx, { seq: 0, limit: 100_000 }))).map(
-    ({ seq }) => seq,
-  )
-/** Delays from a seed, so that a failure can be had again. */
-function seededDelays(seed: number) {
-  let state = seed
-  return (most: number) => {
-    state = (state * 1103515245 + 12345) % 2147483648
-    return (state / 2147483648) * most
-  }
-}
-const oneTo = (last: number) => Array.from({ length: last }, (_, n) => n + 1)
 
 describe('[P7] change numbers', () => {
   it('[P7] are dense and in the order asked for', async () => {
@@ -182,7 +147,6 @@ describe('[P7] change numbers', () => {
   })
 
   it('[P7] tell the listeners once per call, with shop and number and nothing else', async () => {
-    const { listenForChanges } = await import('@/db/listen')
     const shop = await owned()
     const heard: [string, number][] = []
     const listener = listenForChanges(
@@ -200,7 +164,6 @@ describe('[P7] change numbers', () => {
   })
 
   it('[P7] a listener whose connection is cut comes back and asks to read again', async () => {
-    const { listenForChanges } = await import('@/db/listen')
     const shop = await owned()
     const heard: number[] = []
     let resyncs = 0
@@ -303,110 +266,4 @@ describe('[P7] rows without a number', () => {
       assignedTo: [owner.id],
     })
   })
-})
-
-describe('[D5] the counter as a lock', () => {
-  it('[D5] gives up after two seconds, and the waiting transaction leaves no trace', async () => {
-    const shop = await owned()
-    let release: () => void = () => undefined
-    const held = new Promise<void>((done) => {
-      release = done
-    })
-    let locked: () => void = () => undefined
-    const isLocked = new Promise<void>((done) => {
-      locked = done
-    })
-    const holder = asShop(shop.id, async (tx) => {
-      await lockShop(tx)
-      locked()
-      await held
-    })
-    await isLocked
-    const began = performance.now()
-    expect(await codeOf(write(shop, newId()))).toBe('55P03')
-    const tookMs = performance.now() - began
-    release()
-    await holder
-    expect(tookMs).toBeGreaterThan(1900)
-    expect(tookMs).toBeLessThan(4000)
-    const numbers = await numbersOf(shop)
-    expect(numbers).toEqual(oneTo(numbers.length))
-  })
-
-  it('[D5] a writer that hangs while it holds the lock is ended after five seconds', async () => {
-    const shop = await owned()
-    const hanging = asShop(shop.id, async (tx) => {
-      await lockShop(tx)
-      await wait(5600)
-      await sql`select 1`.execute(tx)
-    })
-    const outcome = codeOf(hanging)
-    await wait(5100)
-    expect(await codeOf(write(shop, newId()))).toBe('no error')
-    expect(await outcome).not.toBe('no error')
-  }, 15_000)
-
-  it('[D5] one shop does not wait for another', async () => {
-    const [held, free] = [await owned(), await owned()]
-    await asShop(held.id, async (tx) => {
-      await lockShop(tx)
-      const began = performance.now()
-      await write(free, newId())
-      expect(performance.now() - began).toBeLessThan(1000)
-    })
-  })
-
-  it('[D5] limits are those of the role, whoever connects with it', async () => {
-    const { rows } = await sql<{ name: string }>`select unnest(rolconfig) as name from pg_roles
-      where rolname = 'farbench_app' order by 1`.execute(test.admin)
-    expect(rows.map((row) => row.name)).toEqual([
-      'idle_in_transaction_session_timeout=5s',
-      'lock_timeout=2s',
-    ])
-  })
-})
-
-describe('[D6] job numbers', () => {
-  it('[D6] have no gaps and no doubles when jobs open at once and some fail', async () => {
-    const shop = await owned()
-    const by = shop.people.owner!
-    const open = async (n: number) => {
-      const id = newId()
-      await asShop(shop.id, async (tx) => {
-        await addJob(tx, { id, shop, by })
-        if (n % 4 === 0) throw new Error('lost')
-      }).catch(() => undefined)
-    }
-    await Promise.all(Array.from({ length: 20 }, (_, n) => open(n)))
-    const jobs = await asShop(shop.id, (tx) =>
-      tx.selectFrom('job').select('number').orderBy('number').execute(),
-    )
-    expect(jobs.map((job) => job.number)).toEqual(
-      oneTo(15).map((n) => `J-${String(n).padStart(4, '0')}`),
-    )
-  })
-
-  it('[D6] go on past 9999', async () => {
-    const shop = await owned()
-    await sql`update shop_counter set last_job_number = 9998 where shop_id = ${shop.id}`.execute(
-      test.admin,
-    )
-    const numbers = await asShop(shop.id, (tx) => takeJobNumbers(tx, 3))
-    expect(numbers).toEqual(['J-9999', 'J-10000', 'J-10001'])
-  })
-})
-
-it('[D5] numbers survive a whole transaction over two shops', async () => {
-  const [one, two] = [await owned(), await owned()]
-  const ids = [newId(), newId()]
-  await asShopOn(test.app, one.id, async (tx) => {
-    await insertMachines(tx, [machineOf(ids[0]!)])
-    await takeChanges(tx, [machineChange(ids[0]!)])
-    await sql`select set_config('app.shop_id', ${two.id}, true)`.execute(tx)
-    const second = Object.assign(tx, { shopId: two.id })
-    await insertMachines(second, [machineOf(ids[1]!)])
-    await takeChanges(second, [machineChange(ids[1]!)])
-  })
-  expect((await numbersOf(one)).length).toBe(4)
-  expect((await numbersOf(two)).length).toBe(4)
 })

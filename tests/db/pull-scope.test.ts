@@ -1,23 +1,30 @@
 import { sql } from 'kysely'
 import { afterAll, beforeAll, describe, expect, it } from 'vitest'
 import { asShop } from '@/db/client'
-import { type LogCursor, type LogPageRow, pullPage } from '@/db/queries/change-log'
+import { pullPage } from '@/db/queries/change-log'
 import { type Change, takeChanges } from '@/db/queries/changes'
 import { assignJob, leaveField, setJobStand, unassignJob } from '@/db/queries/jobs'
 import { saveBag, saveMeter } from '@/db/queries/machines'
-import { insertPartRequests } from '@/db/queries/part-requests'
-import { revokeMembership, setRoles } from '@/db/queries/people'
-import { insertPhoto } from '@/db/queries/photos'
 import type { Id } from '@/lib/model/id'
 import { seesJob } from '@/lib/shop/scope'
 import { openTestDatabase, type TestDatabase } from '../support/database'
+import {
+  alter,
+  close,
+  entitiesOf,
+  has,
+  heldOf,
+  makeFullJob,
+  makeFullShop,
+  pullAll,
+  reopen,
+} from '../support/pulling-phone'
 import {
   AT,
   makeEntries,
   makeJob,
   makeShop,
   newId,
-  requestOf,
   STAND,
   type TestPerson,
   type TestShop,
@@ -30,108 +37,6 @@ beforeAll(async () => {
   test = await openTestDatabase()
 })
 afterAll(() => test.close())
-
-const makeFullShop = () =>
-  makeShop({
-    mechanic: ['mechanic'],
-    second: ['mechanic'],
-    guide: ['guide'],
-    dispatcher: ['dispatcher'],
-    parts: ['parts'],
-    owner: ['owner'],
-  })
-
-/** Follows the pages to the end, as a phone does, and answers what it holds then. */
-async function pullAll(
-  shop: TestShop,
-  {
-    by,
-    held = { rows: new Map(), cursor: null },
-    limit = 500,
-  }: { by: TestPerson; held?: Held; limit?: number },
-): Promise<Held & { told: LogPageRow[] }> {
-  const rows = new Map(held.rows)
-  const told: LogPageRow[] = []
-  let cursor = held.cursor
-  for (;;) {
-    const from = cursor
-    const page = await asShop(shop.id, (tx) =>
-      pullPage(tx, { actor: { personId: by.id }, cursor: from, limit }),
-    )
-    if (page.kind !== 'page') throw new Error(page.kind)
-    for (const row of page.rows) {
-      told.push(row)
-      const key = `${row.entity} ${row.id}`
-      if (row.state === 'present') rows.set(key, row.row)
-      else rows.delete(key)
-    }
-    cursor = page.cursor
-    if (!page.more) return { rows, cursor, told }
-  }
-}
-type Held = { rows: Map<string, unknown>; cursor: LogCursor | null }
-const entitiesOf = (held: Held) =>
-  [...new Set([...held.rows.keys()].map((key) => key.split(' ')[0]))].sort()
-const has = (held: Held, entity: string, id: Id) => held.rows.has(`${entity} ${id}`)
-
-/** A job with two entries, a part request and a photo. */
-async function makeFullJob(shop: TestShop, by: TestPerson) {
-  const jobId = await makeJob(shop, by)
-  const entries = await makeEntries(shop, { jobId, by, count: 2 })
-  const request = requestOf(jobId)
-  const hash = Array.from({ length: 64 }, () => Math.floor(Math.random() * 16).toString(16)).join(
-    '',
-  )
-  await asShop(shop.id, async (tx) => {
-    await insertPartRequests(tx, [
-      { request, askedBy: by.id, askedOn: by.deviceId, receivedAt: AT },
-    ])
-    await insertPhoto(tx, {
-      hash,
-      jobId,
-      bytes: 9,
-      mime: 'image/jpeg',
-      receivedAt: AT,
-      receivedFrom: by.deviceId,
-    })
-    await takeChanges(tx, [
-      { entity: 'partRequest', id: request.id, jobId },
-      { entity: 'photo', id: hash, jobId },
-    ])
-  })
-  const rows: [string, string][] = [
-    ['job', jobId],
-    ...entries.map((id): [string, string] => ['logEntry', id]),
-    ['partRequest', request.id],
-    ['photo', hash],
-  ]
-  return { jobId, rows }
-}
-const heldOf = (held: Held, job: { rows: [string, string][] }) =>
-  job.rows.filter(([entity, id]) => has(held, entity, id)).length
-
-/** Changes a job and gives the whole of it new numbers. */
-const alter = (
-  shop: TestShop,
-  jobId: Id,
-  run: (tx: Parameters<typeof takeChanges>[0]) => Promise<void>,
-) =>
-  asShop(shop.id, async (tx) => {
-    await run(tx)
-    await takeChanges(tx, [{ entity: 'job', id: jobId, jobId, whole: true }])
-  })
-const close = (shop: TestShop, jobId: Id) =>
-  alter(shop, jobId, (tx) =>
-    setJobStand(tx, {
-      id: jobId,
-      stand: { ...STAND, state: 'closed' },
-      by: { deviceId: null, at: AT },
-    }),
-  )
-const reopen = (shop: TestShop, jobId: Id) =>
-  alter(shop, jobId, (tx) =>
-    setJobStand(tx, { id: jobId, stand: STAND, by: { deviceId: null, at: AT } }),
-  )
 
 describe('[P11] two shops by five roles', () => {
   let shops: TestShop[]
@@ -374,140 +279,5 @@ describe('[P11] rows that leave the scope', () => {
         }
       }
     }
-  })
-})
-
-describe('[P12] the cursor', () => {
-  it('[P10] a tombstone travels to those who held the row, and a fresh pull knows nothing of it', async () => {
-    const shop = await makeFullShop()
-    const { mechanic } = shop.people as Record<string, TestPerson>
-    const held = await pullAll(shop, { by: mechanic! })
-    await asShop(shop.id, async (tx) => {
-      await tx.updateTable('machine').set({ deletedAt: AT }).execute()
-      await takeChanges(tx, [
-        { entity: 'machine', id: shop.machineId, jobId: null, state: 'deleted' },
-      ])
-    })
-    const after = await pullAll(shop, { by: mechanic!, held })
-    expect(after.told).toMatchObject([
-      { entity: 'machine', id: shop.machineId, state: 'deleted', row: null },
-    ])
-    expect(has(after, 'machine', shop.machineId)).toBe(false)
-    expect(
-      (await pullAll(shop, { by: mechanic! })).told.filter((row) => row.entity === 'machine'),
-    ).toEqual([])
-  })
-
-  it('[P7] moves on over changes that are not for this person', async () => {
-    const shop = await makeFullShop()
-    const { parts, mechanic } = shop.people as Record<string, TestPerson>
-    const held = await pullAll(shop, { by: parts! })
-    await makeJob(shop, mechanic!)
-    const after = await pullAll(shop, { by: parts!, held })
-    expect(after.told).toEqual([])
-    expect(after.cursor!.seq).toBe(held.cursor!.seq + 1)
-  })
-
-  it('[P7] gives each row once in pages of any size, with the same end', async () => {
-    const shop = await makeFullShop()
-    const { mechanic } = shop.people as Record<string, TestPerson>
-    const job = await makeFullJob(shop, mechanic!)
-    await makeEntries(shop, { jobId: job.jobId, by: mechanic!, count: 23 })
-    const whole = await pullAll(shop, { by: mechanic! })
-    for (const limit of [1, 2, 7]) {
-      const paged = await pullAll(shop, { by: mechanic!, limit })
-      expect(paged.told).toEqual(whole.told)
-      expect(paged.cursor).toEqual(whole.cursor)
-    }
-    const seqs = whole.told.map((row) => row.seq)
-    expect(seqs).toEqual([...seqs].sort((a, b) => a - b))
-  })
-
-  it('[P7] ends a page at 256 KB and goes on where it ended', async () => {
-    const shop = await makeFullShop()
-    const { mechanic } = shop.people as Record<string, TestPerson>
-    const jobId = await makeJob(shop, mechanic!)
-    const { appendLogEntries } = await import('@/db/queries/log-entries')
-    const { entryOf } = await import('../support/shop-fixture')
-    const entries = Array.from({ length: 300 }, () =>
-      entryOf(jobId, mechanic!, { kind: 'note', words: 'x'.repeat(1900) }),
-    )
-    await asShop(shop.id, async (tx) => {
-      await appendLogEntries(tx, { entries, receivedAt: AT })
-      await takeChanges(
-        tx,
-        entries.map(({ id }): Change => ({ entity: 'logEntry', id, jobId })),
-      )
-    })
-    const first = await asShop(shop.id, (tx) =>
-      pullPage(tx, { actor: { personId: mechanic!.id }, cursor: null, limit: 500 }),
-    )
-    if (first.kind !== 'page') throw new Error(first.kind)
-    expect(first.more).toBe(true)
-    expect(Buffer.byteLength(JSON.stringify(first.rows))).toBeLessThanOrEqual(257 * 1024)
-    const all = await pullAll(shop, { by: mechanic! })
-    expect(all.told.filter((row) => row.entity === 'logEntry').length).toBe(300)
-  })
-
-  it('[P9] a second pull moves no rows', async () => {
-    const shop = await makeFullShop()
-    const { mechanic } = shop.people as Record<string, TestPerson>
-    await makeFullJob(shop, mechanic!)
-    const held = await pullAll(shop, { by: mechanic! })
-    expect((await pullAll(shop, { by: mechanic!, held })).told).toEqual([])
-  })
-
-  it('[P11] roles that changed start the phone over, with what the new roles hold', async () => {
-    const shop = await makeFullShop()
-    const { dispatcher, mechanic } = shop.people as Record<string, TestPerson>
-    const job = await makeFullJob(shop, mechanic!)
-    const held = await pullAll(shop, { by: dispatcher! })
-    await asShop(shop.id, async (tx) => {
-      await setRoles(tx, { personId: dispatcher!.id, roles: ['parts'] })
-      await takeChanges(tx, [{ entity: 'person', id: dispatcher!.id, jobId: null }])
-    })
-    const page = await asShop(shop.id, (tx) =>
-      pullPage(tx, { actor: { personId: dispatcher!.id }, cursor: held.cursor, limit: 500 }),
-    )
-    expect(page).toEqual({
-      kind: 'reset',
-      cursor: { ...held.cursor, scopeVersion: held.cursor!.scopeVersion + 1, seq: 0 },
-    })
-    expect(heldOf(await pullAll(shop, { by: dispatcher! }), job)).toBe(1)
-  })
-
-  it('[P11] a membership that ended pulls nothing more', async () => {
-    const shop = await makeFullShop()
-    const { mechanic } = shop.people as Record<string, TestPerson>
-    const held = await pullAll(shop, { by: mechanic! })
-    await asShop(shop.id, async (tx) => {
-      await revokeMembership(tx, { personId: mechanic!.id, now: AT })
-      await takeChanges(tx, [{ entity: 'person', id: mechanic!.id, jobId: null }])
-    })
-    const page = await asShop(shop.id, (tx) =>
-      pullPage(tx, { actor: { personId: mechanic!.id }, cursor: held.cursor, limit: 500 }),
-    )
-    expect(page).toEqual({ kind: 'signIn' })
-  })
-
-  it('[P12] of another epoch, scope or shop, or of the future is answered with a reset', async () => {
-    const [shop, other] = [await makeFullShop(), await makeFullShop()]
-    const { mechanic } = shop.people as Record<string, TestPerson>
-    const { cursor } = await pullAll(shop, { by: mechanic! })
-    const answer = async (wrong: Partial<LogCursor>) => {
-      const page = await asShop(shop.id, (tx) =>
-        pullPage(tx, {
-          actor: { personId: mechanic!.id },
-          cursor: { ...cursor!, ...wrong },
-          limit: 500,
-        }),
-      )
-      return page.kind
-    }
-    expect(await answer({})).toBe('page')
-    expect(await answer({ epoch: 'another' })).toBe('reset')
-    expect(await answer({ shop: other.id })).toBe('reset')
-    expect(await answer({ seq: cursor!.seq + 1 })).toBe('reset')
-    expect(await answer({ scopeVersion: 9 })).toBe('reset')
   })
 })
