@@ -65,19 +65,44 @@ export function meterInput(
   }
 }
 
-/** `Pocket meter, leads not nulled, part 20 °C, meter 20 °C`. */
+/** `Leads not nulled, part 20 °C, meter 20 °C`. */
 export function setupWords(
   { meter, setup }: MeterView,
   quantity: ReadingInput['quantity'],
 ): string {
   if (meter === null) return 'No meter picked'
   const leads =
-    quantity !== 'resistance' ? [] : [setup.nulled ? 'leads nulled' : 'leads not nulled']
-  const temps = [
-    setup.partTempC === null ? 'part not measured' : `part ${degrees(setup.partTempC)}`,
-    setup.meterTempC === null ? 'meter at room warmth?' : `meter ${degrees(setup.meterTempC)}`,
+    quantity === 'resistance' ? [setup.nulled ? 'leads nulled' : 'leads not nulled'] : []
+  const words = [...leads, ...temperatureWords(setup)].join(', ')
+  return `${words.slice(0, 1).toUpperCase()}${words.slice(1)}`
+}
+
+/** The same in the fewest words, for a key: `Not nulled, 20 °C`. */
+export function setupShort(
+  { meter, setup }: MeterView,
+  quantity: ReadingInput['quantity'],
+): string {
+  if (meter === null) return 'Pick a meter'
+  const leads = quantity !== 'resistance' ? [] : [setup.nulled ? 'nulled' : 'not nulled']
+  const { partTempC, meterTempC } = setup
+  const said = partTempC !== null && meterTempC !== null
+  const temps = said
+    ? [
+        partTempC === meterTempC
+          ? degrees(partTempC)
+          : `${degrees(partTempC)}, ${degrees(meterTempC)}`,
+      ]
+    : ['no temperature']
+  const words = [...leads, ...temps].join(', ')
+  return `${words.slice(0, 1).toUpperCase()}${words.slice(1)}`
+}
+
+function temperatureWords({ partTempC, meterTempC }: MeterSetup): string[] {
+  if (partTempC === null && meterTempC === null) return ['temperatures not said']
+  return [
+    partTempC === null ? 'part temperature not said' : `part ${degrees(partTempC)}`,
+    meterTempC === null ? 'meter temperature not said' : `meter ${degrees(meterTempC)}`,
   ]
-  return [meter.name, ...leads, ...temps].join(', ')
 }
 
 const degrees = (celsius: number): string => `${String(celsius).replace('-', '−')} °C`

@@ -18,7 +18,7 @@ export function NextPlate({ plan, index }: { plan: Plan; index: BookIndex }) {
   return (
     <Plate>
       <p className="text-second text-scribe2">{HEADINGS[next.type]}</p>
-      <h2 className="caps mt-1 text-plate">{next.name}</h2>
+      <h2 className="caps mt-1 text-[2.25rem]/none">{next.name}</h2>
       <p className="mt-2 flex flex-wrap items-baseline gap-x-4 gap-y-1">
         <span className="figures text-key">{minutesWords(next.minutes)}</span>
         <span className="text-second text-scribe2">
@@ -29,12 +29,15 @@ export function NextPlate({ plan, index }: { plan: Plan; index: BookIndex }) {
       {plan.decides !== '' && <p className="mt-2 text-body">{plan.decides}</p>}
       {next.caution !== null && (
         <Caution signal={next.caution.signal} onPlate className="mt-3">
-          {next.caution.text}
+          {firstSentence(next.caution.text)}
         </Caution>
       )}
     </Plate>
   )
 }
+
+/** The plate has room for one line of risk; the check itself says it whole before the first step. */
+const firstSentence = (text: string): string => /^.*?[.!](?=\s|$)/.exec(text)?.[0] ?? text
 
 /** Tools by the names of the trade. */
 export function toolWords(tools: readonly string[], index: BookIndex): string {

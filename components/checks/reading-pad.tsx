@@ -3,14 +3,14 @@ import { useState } from 'react'
 import type { CheckItem } from '@/lib/model/code-book'
 import type { Id } from '@/lib/model/id'
 import type { JobCase } from '../engine/use-case'
-import { asTypedOnScreen, THIN, twoDigits } from '../reading-strip/figures'
+import { asTypedOnScreen, fixed, THIN, twoDigits } from '../reading-strip/figures'
 import { Rule } from '../reading-strip/reading-strip'
-import { distanceWords } from '../reading-strip/verdict'
+import { acrossOf, distanceWords, placesOf, type StripReading } from '../reading-strip/verdict'
 import { VerdictLine } from '../reading-strip/verdict-line'
 import { useStamp } from '../store/use-stamp'
 import { Key } from '../ui/key'
 import { Keypad } from './keypad'
-import { setupWords, useMeterSetup } from './meter-setup'
+import { setupShort, setupWords, useMeterSetup } from './meter-setup'
 import { MeterSetupForm } from './meter-setup-form'
 import {
   type Live,
@@ -20,14 +20,18 @@ import {
   useLive,
   useReadingDraft,
 } from './reading-draft'
-import { type Judged, provenanceOf, specOf } from './spec-of'
+import { type Judged, sourceOf, specOf } from './spec-of'
 import { neverNegative } from './units'
 import { NotSaved, useSave } from './use-save'
 import { onScreen } from './words'
 
 type Props = { jobId: Id; check: CheckItem; found: JobCase; onSaved: (entryId: Id) => void }
 
-const WIDE = '[@media(max-height:37.5rem)_and_(min-width:37.5rem)]'
+/** A phone lying down: keypad right, strip left. Whole class names, so that the style sheet finds them. */
+const LYING_DOWN = {
+  row: '[@media(max-height:37.5rem)_and_(min-width:37.5rem)]:flex-row [@media(max-height:37.5rem)_and_(min-width:37.5rem)]:items-start',
+  pad: '[@media(max-height:37.5rem)_and_(min-width:37.5rem)]:w-1/2',
+}
 
 /** The keypad with the figure, the verdict and the rule above it; side by side on a phone lying down. */
 export function ReadingPad({ jobId, check, found, onSaved }: Props) {
@@ -39,17 +43,22 @@ export function ReadingPad({ jobId, check, found, onSaved }: Props) {
   const live = useLive(draft, view, { quantity, judged })
   const { keep, saving, problem } = useKeep({ jobId, check, draft, view, live, onSaved })
   return (
-    <div className={`flex flex-1 flex-col ${WIDE}:flex-row ${WIDE}:items-start`}>
+    <div className={`flex flex-1 flex-col ${LYING_DOWN.row}`}>
       <div className="safe-sides grid min-w-0 flex-1 grid-cols-[minmax(0,1fr)] content-start gap-1 pb-3">
         <h1 id="screen-title" tabIndex={-1} className="caps text-screen">
           {check.name}
         </h1>
-        <p className="text-second text-ink2">{setupWords(view, quantity)}</p>
-        <Shown draft={draft} live={live} judged={judged} />
         <div className="mt-1 grid grid-cols-2 gap-1.5">
           <SubjectKey draft={draft} set={set} />
-          <Key small aria-expanded={open} onClick={() => setOpen(!open)}>
-            {open ? 'Close set-up' : 'Meter set-up'}
+          <Key
+            small
+            quiet
+            className="text-second! leading-tight"
+            aria-label={`Meter set-up: ${setupWords(view, quantity)}`}
+            aria-expanded={open}
+            onClick={() => setOpen(!open)}
+          >
+            {open ? 'Close set-up' : setupShort(view, quantity)}
           </Key>
         </div>
         {open && (
@@ -66,9 +75,10 @@ export function ReadingPad({ jobId, check, found, onSaved }: Props) {
             )}
           </div>
         )}
+        <Shown draft={draft} live={live} judged={judged} />
         <NotSaved problem={problem} />
       </div>
-      <div className={`screen-foot no-print safe-sides bg-ground py-2 ${WIDE}:w-1/2`}>
+      <div className={`screen-foot no-print safe-sides bg-ground py-2 ${LYING_DOWN.pad}`}>
         <Keypad
           quantity={quantity}
           value={draft}
@@ -107,7 +117,7 @@ function Shown({ draft, live, judged }: { draft: ReadingDraft; live: Live; judge
   const { strip, unit } = live
   return (
     <div>
-      <p className="mt-1 flex items-baseline justify-between gap-3">
+      <p className="mt-1 flex items-end justify-between gap-3">
         <output className="min-w-0" aria-label="Figure">
           <span className="figures text-hero">
             {draft.overRange && <span className="caps text-screen">OL &gt; </span>}
@@ -119,9 +129,7 @@ function Shown({ draft, live, judged }: { draft: ReadingDraft; live: Live; judge
           </span>
         </output>
         {strip !== null && !draft.overRange && (
-          <span className="figures shrink-0 text-section text-ink2">
-            ±{twoDigits(strip.expandedU).text}
-          </span>
+          <Meant strip={strip} typed={live.input?.value ?? null} />
         )}
       </p>
       {strip === null ? (
@@ -136,16 +144,33 @@ function Shown({ draft, live, judged }: { draft: ReadingDraft; live: Live; judge
             className="flex min-h-9 flex-wrap items-center justify-between gap-x-3"
             aria-live="polite"
           >
-            <VerdictLine verdict={strip.verdict} large />
+            <VerdictLine verdict={strip.verdict} across={acrossOf(strip)} large />
             <span className="text-second text-ink2">{distanceWords(strip)}</span>
           </div>
           <Rule reading={strip} />
         </>
       )}
-      <p className="mt-1 text-second text-ink2">{onScreen(provenanceOf(judged))}</p>
+      <p className="mt-1 text-second text-ink2">{onScreen(sourceOf(judged))}</p>
     </div>
   )
 }
+
+/** What the figure means: +-U, and the estimate where leads or temperature are taken off. */
+function Meant({ strip, typed }: { strip: StripReading; typed: number | null }) {
+  const same = typed === null || Math.abs(strip.estimate - typed) < strip.resolution / 20
+  return (
+    <span className="shrink-0 text-right text-ink2">
+      {!same && <span className="block text-second">{takenOff(strip)}</span>}
+      <span className="figures text-section">
+        {!same && <span className="text-ink">{fixed(strip.estimate, placesOf(strip))} </span>}±
+        {twoDigits(strip.expandedU).text}
+      </span>
+    </span>
+  )
+}
+
+const takenOff = ({ quantity }: StripReading): string =>
+  quantity === 'resistance' ? 'less the leads' : 'corrected'
 
 /** Whose figure it is: the suspect part's, or that of a known-good one of the same kind (rule R17). */
 function SubjectKey({ draft, set }: { draft: ReadingDraft; set: (next: ReadingDraft) => void }) {
@@ -153,6 +178,7 @@ function SubjectKey({ draft, set }: { draft: ReadingDraft; set: (next: ReadingDr
   return (
     <Key
       small
+      quiet
       aria-pressed={good}
       aria-label={`Measured on: ${good ? 'known-good part' : 'suspect part'}. Change`}
       className={good ? 'key-down' : ''}

@@ -8,7 +8,13 @@ import type { Id } from '@/lib/model/id'
 import type { LogEntry, ReadingBody } from '@/lib/model/log-entry'
 import { fixed, shortUnit, twoDigits } from '../reading-strip/figures'
 import { ReadingFigure, Rule } from '../reading-strip/reading-strip'
-import { distanceWords, placesOf, type StripReading, stripOfBody } from '../reading-strip/verdict'
+import {
+  acrossOf,
+  distanceWords,
+  placesOf,
+  type StripReading,
+  stripOfBody,
+} from '../reading-strip/verdict'
 import { VerdictLine } from '../reading-strip/verdict-line'
 import { Key, KeyLink } from '../ui/key'
 import { Screen } from '../ui/screen'
@@ -42,7 +48,13 @@ export function SavedReading({ jobId, entry, body, check, index, entries, onAgai
   }
   return (
     <Screen
-      title={<VerdictLine verdict={body.result?.verdict ?? null} large />}
+      title={
+        <VerdictLine
+          verdict={body.result?.verdict ?? null}
+          across={strip === null ? 'low' : acrossOf(strip)}
+          large
+        />
+      }
       second={`${check.name}${body.subject === 'knownGood' ? ', on a known-good part' : ''}`}
       foot={
         <KeyLink kind="main" href={`/field/jobs/${jobId}/checks`}>

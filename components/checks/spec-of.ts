@@ -36,7 +36,13 @@ export function specOf(check: CheckItem, sheet: SpecSheet | null): Judged {
   return { value: fallback, from: 'practice', component }
 }
 
-/** One line: the band, where it comes from and how sure. */
+/** One short line for under the rule: where the band comes from. */
+export function sourceOf({ value, from }: Judged): string {
+  if (value === null || from === 'none') return 'No figure to judge by: kept without a verdict.'
+  return `${from === 'sheet' ? 'Spec sheet' : 'Common practice'}: ${value.source}.`
+}
+
+/** The band in words, where it comes from and how sure. */
 export function provenanceOf(judged: Judged): string {
   const { value, from } = judged
   if (value === null || from === 'none')

@@ -1,4 +1,5 @@
 'use client'
+import { useState } from 'react'
 import type { BookIndex } from '@/lib/diag/book-index'
 import { wordName } from '@/lib/diag/book-index'
 import { living } from '@/lib/diag/case'
@@ -7,7 +8,7 @@ import type { Id } from '@/lib/model/id'
 import { type JobCase, useCase } from '../engine/use-case'
 import { useBook } from '../store/use-book'
 import { Caution } from '../ui/caution'
-import { KeyLink } from '../ui/key'
+import { Key, KeyLink } from '../ui/key'
 import { RuleEdge } from '../ui/rule-edge'
 import { Screen } from '../ui/screen'
 import { Steps } from '../ui/steps'
@@ -72,27 +73,43 @@ function OneSwap({ jobId, swap, index, found }: Props) {
       )}
       <SwapDone jobId={jobId} swap={swap} progress={progress} index={index} />
       {progress.next !== null && (
-        <SwapStepForm
-          jobId={jobId}
-          swap={swap}
-          part={part}
-          step={progress.next}
-          onSaved={keepSaved}
-        />
+        <>
+          {swap.cautions.map((one) => (
+            <Caution key={one.text} signal={one.signal}>
+              {one.text}
+            </Caution>
+          ))}
+          <How swap={swap} begun={progress.done.length > 0} />
+          <SwapStepForm
+            jobId={jobId}
+            swap={swap}
+            part={part}
+            step={progress.next}
+            onSaved={keepSaved}
+          />
+        </>
       )}
-      <section aria-labelledby="how" className="grid gap-3">
-        <RuleEdge id="how">How</RuleEdge>
-        {swap.cautions.map((one) => (
-          <Caution key={one.text} signal={one.signal}>
-            {one.text}
-          </Caution>
-        ))}
-        <Steps steps={swap.steps} />
+    </Screen>
+  )
+}
+
+/** All steps before the first answer; once begun they fold away, the cautions stay. */
+function How({ swap, begun }: { swap: SwapItem; begun: boolean }) {
+  const [picked, setPicked] = useState<boolean | null>(null)
+  const open = picked ?? !begun
+  return (
+    <section aria-labelledby="how" className="grid gap-3">
+      <RuleEdge id="how">How</RuleEdge>
+      {open && <Steps steps={swap.steps} />}
+      {open && (
         <p className="text-second text-ink2">
           {swap.basisWords} Source: {swap.source}.
         </p>
-      </section>
-    </Screen>
+      )}
+      <Key small aria-expanded={open} onClick={() => setPicked(!open)}>
+        {open ? 'Fold the steps' : 'Show the steps'}
+      </Key>
+    </section>
   )
 }
 

@@ -18,7 +18,7 @@ export function WhyView({ suspect, entries, index }: Props) {
         <b className="figures">{of100(suspect.chance)}</b>.
       </p>
       <ul className="grid gap-2">
-        {suspect.why.map((why) => (
+        {suspect.why.filter(speaks).map((why) => (
           <WhyRow
             key={`${why.entryId} ${why.about} ${why.label}`}
             why={why}
@@ -27,12 +27,27 @@ export function WhyView({ suspect, entries, index }: Props) {
           />
         ))}
       </ul>
+      <Silent suspect={suspect} entries={entries} index={index} />
       {repair !== undefined && <p className="text-second">Proved by: {repair.provedBy}</p>}
       <p className="text-second text-ink2">
         The chances are the model&apos;s own, from the code book and this job&apos;s log.
       </p>
     </div>
   )
+}
+
+const speaks = (why: Suspect['why'][number]): boolean =>
+  why.about === 'share' || whyLine(why).direction !== 'nothing'
+
+/** What was looked at and says nothing about this suspect, in one line. */
+function Silent({ suspect, entries, index }: Props) {
+  const words = suspect.why
+    .filter((why) => !speaks(why))
+    .map((why) => entries.find((entry) => entry.id === why.entryId))
+    .filter((entry) => entry !== undefined)
+    .map((entry) => entryWords(entry, index))
+  if (words.length === 0) return null
+  return <p className="text-second text-ink2">Says nothing about it: {words.join('; ')}.</p>
 }
 
 type RowProps = { why: Suspect['why'][number]; entry: LogEntry | null; index: BookIndex }

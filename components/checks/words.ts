@@ -40,7 +40,10 @@ export const LIGHT_WORDS: Record<CheckItem['light'], string> = {
 
 /** The engine writes plain ASCII; the screen shows the signs. */
 export const onScreen = (words: string): string =>
-  words.replaceAll('+-', '±').replace(/(^|[\s(])-(?=\d)/g, '$1−')
+  words
+    .replaceAll('+-', '±')
+    .replace(/(\d) C\b/g, '$1 °C')
+    .replace(/(^|[\s(])-(?=\d)/g, '$1−')
 
 /** What an entry says in a few words, for "ruled out by ..." and "why". */
 export function entryWords(entry: LogEntry, index: BookIndex): string {
@@ -54,7 +57,7 @@ export function entryWords(entry: LogEntry, index: BookIndex): string {
     case 'reading':
       return readingWords(body, index)
     case 'swap':
-      return `${index.swaps.get(body.swapId)?.name ?? body.swapId}: ${SWAP_WORDS[body.step]}`
+      return `${index.swaps.get(body.swapId)?.name ?? body.swapId}: ${SWAP_WORDS[body.step]}, ${faultWords(body.faultPresent)}`
     case 'code':
       return `code ${codeWords(body.seen)}`
     case 'symptom':
@@ -74,6 +77,9 @@ const readingWords = (body: Extract<LogEntry['body'], { kind: 'reading' }>, inde
   const verdict = verdictWords(body.result?.verdict ?? null)
   return `${name}${whose}: ${asTypedOnScreen(body.asTyped)} ${body.unit}, ${verdict}`
 }
+
+const faultWords = (present: boolean | null): string =>
+  present === null ? 'not tried' : present ? 'fault there' : 'fault gone'
 
 export const SWAP_WORDS = {
   spareFitted: 'spare fitted',

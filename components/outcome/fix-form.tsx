@@ -1,5 +1,5 @@
 'use client'
-import { useState } from 'react'
+import { type ReactNode, useState } from 'react'
 import type { Suspect } from '@/lib/diag/belief'
 import { SOMETHING_ELSE } from '@/lib/diag/book-index'
 import type { Id } from '@/lib/model/id'
@@ -14,6 +14,7 @@ import { Caution } from '../ui/caution'
 import { Choice } from '../ui/choice'
 import { Field } from '../ui/field'
 import { Key } from '../ui/key'
+import { Screen } from '../ui/screen'
 
 type FixDraft = {
   fault: string | null
@@ -24,8 +25,15 @@ type FixDraft = {
 }
 const FIRST: FixDraft = { fault: null, words: '', temporary: 'no', limit: '', undo: '' }
 
+type FormProps = {
+  jobId: Id
+  onSaved: (entryId: Id) => void
+  /** What is already on record. */
+  children: ReactNode
+}
+
 /** Which fault, what was done, and whether it is only a temporary measure (rule R3). */
-export function FixForm({ jobId, onSaved }: { jobId: Id; onSaved: (entryId: Id) => void }) {
+export function FixForm({ jobId, onSaved, children }: FormProps) {
   const { search } = useRoute()
   const key = `fix:${jobId}`
   const { value, set } = useDraft<FixDraft>(key, FIRST)
@@ -41,7 +49,19 @@ export function FixForm({ jobId, onSaved }: { jobId: Id; onSaved: (entryId: Id) 
     if (await save([op], { clearDrafts: [key] })) onSaved(op.fields.id)
   }
   return (
-    <div className="grid gap-5">
+    <Screen
+      title="Fix"
+      second="What you did, in words the next mechanic can use."
+      foot={
+        <>
+          {missing !== null && <p className="text-second text-ink2">{missing}</p>}
+          <Key kind="main" disabled={saving || missing !== null} onClick={keep}>
+            Record the fix
+          </Key>
+        </>
+      }
+    >
+      {children}
       <WhichFault jobId={jobId} fault={fault} onPick={(next) => set({ ...value, fault: next })} />
       <Suggested fault={fault} words={value.words} onUse={(words) => set({ ...value, words })} />
       <Field
@@ -63,11 +83,7 @@ export function FixForm({ jobId, onSaved }: { jobId: Id; onSaved: (entryId: Id) 
       />
       {value.temporary === 'yes' && <Temporary value={value} set={set} />}
       <NotSaved problem={problem} />
-      {missing !== null && <p className="text-second text-ink2">{missing}</p>}
-      <Key kind="main" disabled={saving || missing !== null} onClick={keep}>
-        Record the fix
-      </Key>
-    </div>
+    </Screen>
   )
 }
 
@@ -120,7 +136,7 @@ function Suggested(props: { fault: string | null; words: string; onUse: (words: 
     <div className="grid gap-2 border-l-4 border-ink pl-3">
       <p className="text-second">
         The code book says: {repair.words}
-        {repair.doesNotFix === null ? '' : ` It does not fix: ${repair.doesNotFix}`}
+        {repair.doesNotFix === null ? '' : ` ${repair.doesNotFix}`}
       </p>
       <Key small onClick={() => props.onUse(repair.words)}>
         Use these words

@@ -2,6 +2,7 @@
 import { useState } from 'react'
 import { living } from '@/lib/diag/case'
 import type { Id } from '@/lib/model/id'
+import type { LogEntry } from '@/lib/model/log-entry'
 import { UndoBar } from '../checks/undo-bar'
 import { useJustSaved } from '../checks/use-just-saved'
 import { useCase } from '../engine/use-case'
@@ -15,7 +16,6 @@ import { FixForm } from './fix-form'
 
 /** What was mended, temporary or for good; then the codes, then the proof run. */
 export function FixScreen({ jobId }: { jobId: Id }) {
-  const { index } = useBook()
   const found = useCase(jobId)
   const { savedId, keepSaved, forget } = useJustSaved(found?.entries ?? [])
   const [another, setAnother] = useState(false)
@@ -26,17 +26,24 @@ export function FixScreen({ jobId }: { jobId: Id }) {
       </Screen>
     )
   const fixes = living(found.entries).filter((entry) => entry.body.kind === 'fix')
-  const showForm = fixes.length === 0 || another
+  const saved = (id: Id) => {
+    keepSaved(id)
+    setAnother(false)
+  }
+  if (fixes.length === 0 || another)
+    return (
+      <FixForm jobId={jobId} onSaved={saved}>
+        <Fixes fixes={fixes} />
+      </FixForm>
+    )
   return (
     <Screen
       title="Fix"
-      second="What you did, in words the next mechanic can use."
+      second="On record. Next: the codes, then the proof run."
       foot={
-        showForm ? null : (
-          <KeyLink kind="main" href={`/field/jobs/${jobId}/proof`}>
-            To the proof run
-          </KeyLink>
-        )
+        <KeyLink kind="main" href={`/field/jobs/${jobId}/proof`}>
+          To the proof run
+        </KeyLink>
       }
     >
       {savedId !== null && (
@@ -48,45 +55,40 @@ export function FixScreen({ jobId }: { jobId: Id }) {
           onUndone={forget}
         />
       )}
-      {fixes.length > 0 && (
-        <section aria-labelledby="fixes" className="grid gap-2">
-          <RuleEdge id="fixes">Recorded</RuleEdge>
-          <ul>
-            {fixes.map(({ id, body, happenedAt, zone }) =>
-              body.kind === 'fix' ? (
-                <li key={id} className="flex gap-3 border-b-[1.5px] border-rule py-2">
-                  <span className="figures text-ink2">{clockTime(happenedAt, zone)}</span>
-                  <span className="min-w-0">
-                    <b className="block">{index?.faults.get(body.fault)?.name ?? body.fault}</b>
-                    {body.words}
-                    {body.temporary !== null && (
-                      <span className="block font-bold">
-                        Temporary. Limit: {body.temporary.limit}. To undo: {body.temporary.undo}
-                      </span>
-                    )}
-                  </span>
-                </li>
-              ) : null,
-            )}
-          </ul>
-        </section>
-      )}
-      {showForm ? (
-        <FixForm
-          jobId={jobId}
-          onSaved={(id) => {
-            keepSaved(id)
-            setAnother(false)
-          }}
-        />
-      ) : (
-        <>
-          <CodesCleared jobId={jobId} found={found} />
-          <Key small onClick={() => setAnother(true)}>
-            Record another fix
-          </Key>
-        </>
-      )}
+      <Fixes fixes={fixes} />
+      <CodesCleared jobId={jobId} found={found} />
+      <Key small onClick={() => setAnother(true)}>
+        Record another fix
+      </Key>
     </Screen>
+  )
+}
+
+/** The fixes on record, temporary ones with their limit and how to undo them. */
+function Fixes({ fixes }: { fixes: readonly LogEntry[] }) {
+  const { index } = useBook()
+  if (fixes.length === 0) return null
+  return (
+    <section aria-labelledby="fixes" className="grid gap-2">
+      <RuleEdge id="fixes">Recorded</RuleEdge>
+      <ul>
+        {fixes.map(({ id, body, happenedAt, zone }) =>
+          body.kind === 'fix' ? (
+            <li key={id} className="flex gap-3 border-b-[1.5px] border-rule py-2">
+              <span className="figures text-ink2">{clockTime(happenedAt, zone)}</span>
+              <span className="min-w-0">
+                <b className="block">{index?.faults.get(body.fault)?.name ?? body.fault}</b>
+                {body.words}
+                {body.temporary !== null && (
+                  <span className="block font-bold">
+                    Temporary. Limit: {body.temporary.limit}. To undo: {body.temporary.undo}
+                  </span>
+                )}
+              </span>
+            </li>
+          ) : null,
+        )}
+      </ul>
+    </section>
   )
 }

@@ -1,4 +1,5 @@
 'use client'
+import type { ReactNode } from 'react'
 import { living } from '@/lib/diag/case'
 import type { Id } from '@/lib/model/id'
 import type { Job, JobMachineState, JobState, PeopleState, WayOut } from '@/lib/model/job'
@@ -36,34 +37,77 @@ export const wayOutDraftKey = (jobId: Id): string => `wayout:${jobId}`
 type Props = {
   jobId: Id
   found: JobCase
-  way: WayOut
+  way: WayOut | null
   draft: WayOutDraft
   set: (next: WayOutDraft) => void
   onSaved: (entryId: Id) => void
 }
 
-/** Machine, people and reasons; for a machine left behind everything the next person needs to find it. */
-export function WayOutForm({ jobId, found, way, draft, set, onSaved }: Props) {
+/** Machine, people and reasons, and the key that records them; nothing before a way is picked. */
+export function useWayOutForm({ jobId, found, way, draft, set, onSaved }: Props): {
+  fields: ReactNode
+  foot: ReactNode
+} {
   const { job } = found
   const stamp = useStamp()
   const { save, saving, problem } = useSave()
+  if (way === null) return { fields: null, foot: null }
   const machine = draft.machine ?? firstOf('machine', job.machineState, MACHINE_AFTER[way])
   const people = draft.people ?? firstOf('people', job.peopleState, PEOPLE_AFTER[way])
   const missing = whatIsMissing(draft, machine, found)
   const keep = async () => {
-    const reasons = [draft.reasons.trim(), ...saidLines(draft), ...leftLines(draft, machine)]
-      .filter((line) => line !== '')
-      .join('\n')
     const entry = stamp.entry(jobId, {
       kind: 'wayOut',
       wayOut: way,
-      reasons,
+      reasons: reasonsOf(draft, machine),
       machineState: machine,
       peopleState: people,
     })
     const ops = [entry, ...movesOf(job, { machine, people })]
     if (await save(ops, { clearDrafts: [wayOutDraftKey(jobId)] })) onSaved(entry.fields.id)
   }
+  return {
+    fields: (
+      <>
+        <After job={job} machine={machine} people={people} draft={draft} set={set} />
+        {machine === 'leftBehind' && (
+          <LeftBehind jobId={jobId} draft={draft} set={set} found={found} />
+        )}
+        <Field
+          label="Reasons"
+          hint="Why this way and not another"
+          value={draft.reasons}
+          onChange={(reasons) => set({ ...draft, reasons })}
+          lines={3}
+          maxLength={1200}
+        />
+        <NotSaved problem={problem} />
+      </>
+    ),
+    foot: (
+      <>
+        {missing !== null && <p className="text-second text-ink2">{missing}</p>}
+        <Key kind="main" disabled={saving || missing !== null} onClick={keep}>
+          Record the way out
+        </Key>
+      </>
+    ),
+  }
+}
+
+const reasonsOf = (draft: WayOutDraft, machine: JobMachineState): string =>
+  [draft.reasons.trim(), ...saidLines(draft), ...leftLines(draft, machine)]
+    .filter((line) => line !== '')
+    .join('\n')
+
+type AfterProps = Pick<Props, 'draft' | 'set'> & {
+  job: Job
+  machine: JobMachineState
+  people: PeopleState
+}
+
+/** Where machine and people are afterwards: as now, or where they may move to (rule R2). */
+function After({ job, machine, people, draft, set }: AfterProps) {
   return (
     <>
       <Choice
@@ -86,22 +130,6 @@ export function WayOutForm({ jobId, found, way, draft, set, onSaved }: Props) {
           label: PEOPLE_WORDS[value],
         }))}
       />
-      {machine === 'leftBehind' && (
-        <LeftBehind jobId={jobId} draft={draft} set={set} found={found} />
-      )}
-      <Field
-        label="Reasons"
-        hint="Why this way and not another"
-        value={draft.reasons}
-        onChange={(reasons) => set({ ...draft, reasons })}
-        lines={3}
-        maxLength={1200}
-      />
-      {missing !== null && <p className="text-second text-ink2">{missing}</p>}
-      <NotSaved problem={problem} />
-      <Key kind="main" disabled={saving || missing !== null} onClick={keep}>
-        Record the way out
-      </Key>
     </>
   )
 }

@@ -1,7 +1,9 @@
 'use client'
-import { useState } from 'react'
+import { type ReactNode, useState } from 'react'
+import { living } from '@/lib/diag/case'
 import type { Id } from '@/lib/model/id'
 import { WAYS_OUT, type WayOut } from '@/lib/model/job'
+import type { LogEntry } from '@/lib/model/log-entry'
 import { UndoBar } from '../checks/undo-bar'
 import { useJustSaved } from '../checks/use-just-saved'
 import { useBelief } from '../engine/use-belief'
@@ -15,7 +17,7 @@ import { Choice, ChoiceMany } from '../ui/choice'
 import { Key, KeyLink } from '../ui/key'
 import { RuleEdge } from '../ui/rule-edge'
 import { Screen } from '../ui/screen'
-import { FRESH_WAY_OUT, type WayOutDraft, WayOutForm, wayOutDraftKey } from './way-out-form'
+import { FRESH_WAY_OUT, useWayOutForm, type WayOutDraft, wayOutDraftKey } from './way-out-form'
 import { limpRefusals, notices, SAID_BY_HAND, SAID_WORDS, type WayOutFacts } from './way-out-rules'
 import { WAY_CAUTIONS } from './way-out-words'
 
@@ -30,18 +32,24 @@ export function WayOutScreen({ jobId }: { jobId: Id }) {
         <p role="status">Opening the job.</p>
       </Screen>
     )
-  const last = found.entries.findLast(({ body }) => body.kind === 'wayOut')
-  const decided = last !== undefined && !again
+  const last = living(found.entries).findLast(({ body }) => body.kind === 'wayOut')
+  const saved = (id: Id) => {
+    keepSaved(id)
+    setAgain(false)
+  }
+  if (last === undefined || again)
+    return (
+      <Deciding jobId={jobId} found={found} onSaved={saved}>
+        {last !== undefined && <Decided entry={last} />}
+      </Deciding>
+    )
   return (
     <Screen
       title="Way out"
-      second="You decide. The reasons go into the log."
       foot={
-        decided ? (
-          <KeyLink kind="main" href={`/field/jobs/${jobId}`}>
-            To the job
-          </KeyLink>
-        ) : null
+        <KeyLink kind="main" href={`/field/jobs/${jobId}`}>
+          To the job
+        </KeyLink>
       }
     >
       {savedId !== null && (
@@ -53,41 +61,42 @@ export function WayOutScreen({ jobId }: { jobId: Id }) {
           onUndone={forget}
         />
       )}
-      {last?.body.kind === 'wayOut' && (
-        <section aria-labelledby="decided" className="grid gap-1">
-          <RuleEdge id="decided">Decided</RuleEdge>
-          <p className="text-row font-bold">
-            <span className="figures mr-2 text-ink2">{clockTime(last.happenedAt, last.zone)}</span>
-            {WAY_OUT_WORDS[last.body.wayOut]}
-          </p>
-          <p>
-            Machine: {MACHINE_WORDS[last.body.machineState].toLowerCase()}. People:{' '}
-            {PEOPLE_WORDS[last.body.peopleState].toLowerCase()}.
-          </p>
-          <p className="whitespace-pre-line">{last.body.reasons}</p>
-        </section>
-      )}
-      {decided ? (
-        <Key small onClick={() => setAgain(true)}>
-          Decide again
-        </Key>
-      ) : (
-        <Deciding
-          jobId={jobId}
-          found={found}
-          onSaved={(id) => {
-            keepSaved(id)
-            setAgain(false)
-          }}
-        />
-      )}
+      <Decided entry={last} />
+      <Key small onClick={() => setAgain(true)}>
+        Decide again
+      </Key>
     </Screen>
   )
 }
 
-type DecidingProps = { jobId: Id; found: JobCase; onSaved: (entryId: Id) => void }
+function Decided({ entry }: { entry: LogEntry }) {
+  const { body } = entry
+  if (body.kind !== 'wayOut') return null
+  return (
+    <section aria-labelledby="decided" className="grid gap-1">
+      <RuleEdge id="decided">Decided</RuleEdge>
+      <p className="text-row font-bold">
+        <span className="figures mr-2 text-ink2">{clockTime(entry.happenedAt, entry.zone)}</span>
+        {WAY_OUT_WORDS[body.wayOut]}
+      </p>
+      <p>
+        Machine: {MACHINE_WORDS[body.machineState].toLowerCase()}. People:{' '}
+        {PEOPLE_WORDS[body.peopleState].toLowerCase()}.
+      </p>
+      <p className="whitespace-pre-line">{body.reasons}</p>
+    </section>
+  )
+}
 
-function Deciding({ jobId, found, onSaved }: DecidingProps) {
+type DecidingProps = {
+  jobId: Id
+  found: JobCase
+  onSaved: (entryId: Id) => void
+  /** The decision that stands, when it is being made again. */
+  children: ReactNode
+}
+
+function Deciding({ jobId, found, onSaved, children }: DecidingProps) {
   const { value: draft, set } = useDraft<WayOutDraft>(wayOutDraftKey(jobId), FRESH_WAY_OUT)
   const { index } = useBook()
   const { answer } = useBelief(jobId)
@@ -101,8 +110,10 @@ function Deciding({ jobId, found, onSaved }: DecidingProps) {
   }
   const refused = limpRefusals(facts)
   const way = draft.way === 'limpOut' && refused.length > 0 ? null : draft.way
+  const form = useWayOutForm({ jobId, found, way, draft, set, onSaved })
   return (
-    <>
+    <Screen title="Way out" second="You decide. The reasons go into the log." foot={form.foot}>
+      {children}
       <ChoiceMany
         legend="Is any of these so?"
         hint="With any of them riding out is not offered."
@@ -138,17 +149,10 @@ function Deciding({ jobId, found, onSaved }: DecidingProps) {
       {way !== null && (
         <>
           <Remarks way={way} facts={facts} found={found} />
-          <WayOutForm
-            jobId={jobId}
-            found={found}
-            way={way}
-            draft={draft}
-            set={set}
-            onSaved={onSaved}
-          />
+          {form.fields}
         </>
       )}
-    </>
+    </Screen>
   )
 }
 

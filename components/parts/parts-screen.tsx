@@ -1,4 +1,5 @@
 'use client'
+import { useState } from 'react'
 import { wordName } from '@/lib/diag/book-index'
 import type { Id } from '@/lib/model/id'
 import type { PartRequestRow } from '@/lib/model/part-request'
@@ -8,6 +9,7 @@ import { clockTime } from '../field/times'
 import { of100 } from '../reading-strip/figures'
 import { useBook } from '../store/use-book'
 import { usePartRequests } from '../store/use-rows'
+import { Key } from '../ui/key'
 import { Row } from '../ui/row'
 import { RuleEdge } from '../ui/rule-edge'
 import { Screen } from '../ui/screen'
@@ -56,18 +58,20 @@ function Asked({ request, zone }: { request: PartRequestRow; zone: string }) {
 function FromSuspects({ jobId }: { jobId: Id }) {
   const { index } = useBook()
   const { answer } = useBelief(jobId)
+  const [all, setAll] = useState(false)
   if (index === null || answer === null) return null
   const rows = answer.belief.suspects.flatMap((suspect) => {
     const part = index.faults.get(suspect.fault)?.repair?.part ?? null
     return part === null || suspect.ruledOutBy !== null ? [] : [{ suspect, part }]
   })
+  const shown = all ? rows : rows.filter(({ suspect }, i) => i < 3 || suspect.chance >= 0.03)
   return (
     <section aria-labelledby="ask-for" className="grid gap-1">
       <RuleEdge id="ask-for">Ask for a part</RuleEdge>
       <p className="text-second text-ink2">By suspect, with its chance of 100.</p>
       {rows.length === 0 && <p>No suspect needs a part.</p>}
       <ul>
-        {rows.map(({ suspect, part }) => (
+        {shown.map(({ suspect, part }) => (
           <li key={suspect.fault}>
             <Row
               title={wordName(index, 'part', part)}
@@ -78,6 +82,16 @@ function FromSuspects({ jobId }: { jobId: Id }) {
           </li>
         ))}
       </ul>
+      {shown.length < rows.length && (
+        <Key small className="mt-2" onClick={() => setAll(true)}>
+          Parts of all suspects
+        </Key>
+      )}
+      {shown.length < rows.length && (
+        <Key small className="mt-2" onClick={() => setAll(true)}>
+          Parts of all suspects
+        </Key>
+      )}
     </section>
   )
 }

@@ -36,11 +36,13 @@ export function fixed(value: number, places: number): string {
   return Number(text) === 0 ? text.slice(1) : `${MINUS}${text.slice(1)}`
 }
 
-/** An uncertainty with two significant digits, e.g. 0.3956 gives `0.40`, 12.4 gives `12`. */
+/** An uncertainty with two significant digits, one from a 5 up: 0.3956 is `0.40`, 0.92 is `0.9`, 12.4 is `12`. */
 export function twoDigits(value: number): { text: string; places: number } {
   if (!(value > 0)) return { text: '0', places: 0 }
-  const places = Math.max(0, 1 - Math.floor(Math.log10(value)))
-  return { text: value.toFixed(Math.min(places, 6)), places: Math.min(places, 6) }
+  const power = Math.floor(Math.log10(value))
+  const digits = value / 10 ** power >= 5 ? 1 : 2
+  const places = Math.min(6, Math.max(0, digits - 1 - power))
+  return { text: value.toFixed(places), places }
 }
 
 /** A share as a whole number of 100; under one of 100 it says `under 1`, never a bare 0. */

@@ -4,7 +4,14 @@ import { asTypedOnScreen, fixed, shortUnit, THIN, twoDigits } from './figures'
 import { RULE_HEIGHT, RuleDrawing } from './rule-drawing'
 import { stripAxis } from './scale'
 import { useWidth } from './use-width'
-import { bandWords, distanceWords, placesOf, type StripReading, stripSentence } from './verdict'
+import {
+  acrossOf,
+  bandWords,
+  distanceWords,
+  placesOf,
+  type StripReading,
+  stripSentence,
+} from './verdict'
 import { VerdictLine } from './verdict-line'
 
 const NEVER_NEGATIVE = new Set(['resistance', 'pressure', 'flow', 'length', 'time', 'acVoltage'])
@@ -23,7 +30,7 @@ export function ReadingStrip({ reading, provenance, figure = true }: Props) {
     <figure className="m-0">
       {figure && <ReadingFigure reading={reading} />}
       <div className="mt-1 flex flex-wrap items-center justify-between gap-x-3">
-        <VerdictLine verdict={reading.verdict} large />
+        <VerdictLine verdict={reading.verdict} across={acrossOf(reading)} large />
         <span className="text-second text-ink2">{distanceWords(reading)}</span>
       </div>
       <Rule reading={reading} />
@@ -82,23 +89,25 @@ export function Rule({ reading }: { reading: StripReading }) {
 function HiddenTable({ reading }: { reading: StripReading }) {
   const unit = shortUnit(reading.quantity)
   return (
-    <table className="visually-hidden">
-      <thead>
-        <tr>
-          <th scope="col">Shown</th>
-          <th scope="col">Best estimate, {unit}</th>
-          <th scope="col">Plus or minus, {unit}</th>
-          <th scope="col">Good band, {unit}</th>
-        </tr>
-      </thead>
-      <tbody>
-        <tr>
-          <td>{asTypedOnScreen(reading.shown)}</td>
-          <td>{reading.overRange ? 'over range' : fixed(reading.estimate, placesOf(reading))}</td>
-          <td>{twoDigits(reading.expandedU).text}</td>
-          <td>{reading.limits === null ? 'none' : bandWords(reading.limits)}</td>
-        </tr>
-      </tbody>
-    </table>
+    <div className="visually-hidden">
+      <table>
+        <thead>
+          <tr>
+            <th scope="col">Shown</th>
+            <th scope="col">Best estimate, {unit}</th>
+            <th scope="col">Plus or minus, {unit}</th>
+            <th scope="col">Good band, {unit}</th>
+          </tr>
+        </thead>
+        <tbody>
+          <tr>
+            <td>{asTypedOnScreen(reading.shown)}</td>
+            <td>{reading.overRange ? 'over range' : fixed(reading.estimate, placesOf(reading))}</td>
+            <td>{twoDigits(reading.expandedU).text}</td>
+            <td>{reading.limits === null ? 'none' : bandWords(reading.limits)}</td>
+          </tr>
+        </tbody>
+      </table>
+    </div>
   )
 }

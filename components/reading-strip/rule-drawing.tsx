@@ -2,12 +2,15 @@ import { type Axis, beamParts, type Limits, xOf } from './scale'
 import type { StripReading } from './verdict'
 import { plain } from './verdict'
 
-const TOP = 44
-const FLOOR = 88
-const LINE = 97
-const HEIGHT = 134
+const TOP = 42
+const FLOOR = 84
+const MID = 63
+const LINE = 93
+const HEIGHT = 126
 const TICK = { long: 17, mid: 12, short: 8 }
 const DIGIT = 9.4
+/** Half the pentagon and some air, in px. */
+const POINTER_HALF = 15
 
 /** The steel rule of one reading: jaws, hatch, scale, blade and I-beam. Pure drawing, no words of its own. */
 export function RuleDrawing({ reading, axis, width, hatch }: Drawing & { hatch: string }) {
@@ -26,7 +29,12 @@ export function RuleDrawing({ reading, axis, width, hatch }: Drawing & { hatch: 
       </defs>
       <Slot axis={axis} limits={reading.limits} width={width} hatch={hatch} />
       <Scale axis={axis} width={width} />
-      <Jaws axis={axis} limits={reading.limits} width={width} />
+      <Jaws
+        axis={axis}
+        limits={reading.limits}
+        width={width}
+        pointer={xOf(axis, reading.estimate, width)}
+      />
       <Blade reading={reading} axis={axis} width={width} />
     </>
   )
@@ -70,22 +78,21 @@ function Outside({ from, to, hatch }: { from: number; to: number; hatch: string 
   )
 }
 
-function Jaws({ axis, limits, width }: Part) {
+function Jaws({ axis, limits, width, pointer }: Part & { pointer: number }) {
   const low = limits?.low ?? null
   const high = limits?.high ?? null
-  const xs = labelPlaces(
-    [low, high]
-      .filter((x): x is number => x !== null)
-      .map((x) => ({ x: xOf(axis, x, width), text: plain(x) })),
-    width,
-  )
+  const marks = [
+    low === null ? null : { x: xOf(axis, low, width), text: plain(low), side: -1 as const },
+    high === null ? null : { x: xOf(axis, high, width), text: plain(high), side: 1 as const },
+  ].filter((mark) => mark !== null)
   return (
     <g>
-      {low !== null && <Jaw x={xOf(axis, low, width)} side={-1} />}
-      {high !== null && <Jaw x={xOf(axis, high, width)} side={1} />}
-      {xs.map((mark) => (
+      {marks.map((mark) => (
+        <Jaw key={mark.side} x={mark.x} side={mark.side} />
+      ))}
+      {labelPlaces(marks, width, pointer).map((mark) => (
         <text
-          key={mark.text}
+          key={mark.side}
           x={mark.x}
           y={TOP - 9}
           textAnchor="middle"
@@ -110,21 +117,29 @@ function Jaw({ x, side }: { x: number; side: 1 | -1 }) {
   )
 }
 
-/** Two limit figures that would touch are moved apart and kept on the strip. */
-export function labelPlaces(marks: { x: number; text: string }[], width: number) {
-  const half = (text: string) => (text.length * DIGIT * 1.06) / 2
-  const keep = (x: number, text: string) => Math.min(width - half(text), Math.max(half(text), x))
-  const [a, b] = marks
-  if (a === undefined || b === undefined) return marks.map((m) => ({ ...m, x: keep(m.x, m.text) }))
+type LimitMark = { x: number; text: string; side: 1 | -1 }
+
+/** Limit figures stand over their jaws, out of the pointer's way, off each other and on the strip. */
+export function labelPlaces(marks: LimitMark[], width: number, pointer: number): LimitMark[] {
+  const half = (text: string) => (text.length * DIGIT * 1.08) / 2
+  const placed = marks.map((mark) => {
+    const need = half(mark.text) + POINTER_HALF
+    const free = Math.abs(mark.x - pointer) >= need
+    return { ...mark, x: free ? mark.x : pointer + mark.side * need }
+  })
+  const kept = placed.map((mark) => ({ ...mark, x: onStrip(mark.x, half(mark.text), width) }))
+  const [a, b] = kept
+  if (a === undefined || b === undefined) return kept
   const need = half(a.text) + half(b.text) + 8
-  const gap = Math.max(0, need - (b.x - a.x)) / 2
-  const left = keep(a.x - gap, a.text)
-  const right = keep(Math.max(b.x + gap, left + need), b.text)
-  return [
-    { ...a, x: Math.min(left, right - need) },
-    { ...b, x: right },
-  ]
+  const short = Math.max(0, need - (b.x - a.x))
+  a.x = onStrip(a.x - short / 2, half(a.text), width)
+  b.x = onStrip(Math.max(b.x, a.x + need), half(b.text), width)
+  a.x = Math.min(a.x, b.x - need)
+  return kept
 }
+
+const onStrip = (x: number, half: number, width: number): number =>
+  Math.min(width - half, Math.max(half, x))
 
 function Scale({ axis, width }: { axis: Axis; width: number }) {
   return (
@@ -173,43 +188,11 @@ function Blade({ reading, axis, width }: Drawing) {
   const fill = reading.verdict === null ? 'fill-ink' : FILL[reading.verdict]
   const stroke = reading.verdict === null ? 'stroke-ink' : STROKE[reading.verdict]
   const x = Math.min(width - 3, Math.max(3, xOf(axis, reading.estimate, width)))
-  const input = {
-    value: reading.estimate,
-    halfWidth: reading.expandedU,
-    limits: reading.limits,
-    neverNegative: false,
-  }
-  const parts = reading.overRange ? [] : beamParts(axis, input, { width, minPx: 12 })
-  const left = parts[0]?.from ?? x
-  const right = parts.at(-1)?.to ?? x
-  const mid = (TOP + FLOOR) / 2
   return (
     <g>
-      <path
-        d={`M${left} ${mid - 15}V${mid + 15}M${right} ${mid - 15}V${mid + 15}M${left} ${mid}H${right}`}
-        className="stroke-ground"
-        strokeWidth="20"
-        strokeLinecap="square"
-        opacity={parts.length === 0 ? 0 : 1}
-      />
       <path d={`M${x} ${TOP - 2}V${LINE + 12}`} className="stroke-ground" strokeWidth="10" />
-      {parts.map((part) => (
-        <rect
-          key={part.from}
-          x={part.from + (part.hollow ? 1.3 : 0)}
-          y={mid - (part.hollow ? 8.2 : 9.5)}
-          width={Math.max(0, part.to - part.from - (part.hollow ? 2.6 : 0))}
-          height={part.hollow ? 16.4 : 19}
-          className={part.hollow ? `fill-ground ${stroke}` : fill}
-          strokeWidth={part.hollow ? 2.6 : 0}
-        />
-      ))}
-      {parts.length > 0 && (
-        <path
-          d={`M${left + 1.5} ${mid - 16}v32M${right - 1.5} ${mid - 16}v32`}
-          className={stroke}
-          strokeWidth="3.4"
-        />
+      {!reading.overRange && (
+        <Beam reading={reading} axis={axis} width={width} fill={fill} stroke={stroke} />
       )}
       <path d={`M${x} ${TOP - 2}V${LINE + 11}`} className={stroke} strokeWidth="4.5" />
       <path
@@ -220,12 +203,42 @@ function Blade({ reading, axis, width }: Drawing) {
       />
       {reading.overRange && (
         <path
-          d={`M${x - 26} ${mid - 11}l14 11l-14 11`}
+          d={`M${x - 26} ${MID - 11}l14 11l-14 11`}
           fill="none"
           className={stroke}
           strokeWidth="5"
         />
       )}
+    </g>
+  )
+}
+
+/** As wide as +-U: solid within the limits, hollow beyond one. */
+function Beam({ reading, axis, width, fill, stroke }: Drawing & { fill: string; stroke: string }) {
+  const parts = beamParts(
+    axis,
+    { value: reading.estimate, halfWidth: reading.expandedU, limits: reading.limits },
+    { width, minPx: 12 },
+  )
+  const left = parts[0]?.from ?? 0
+  const right = parts.at(-1)?.to ?? 0
+  const caps = `M${left + 1.5} ${MID - 16}v32M${right - 1.5} ${MID - 16}v32`
+  return (
+    <g>
+      <path d={caps} className="stroke-ground" strokeWidth="9" />
+      <rect x={left} y={MID - 12.5} width={right - left} height="25" className="fill-ground" />
+      {parts.map((part) => (
+        <rect
+          key={part.from}
+          x={part.from + (part.hollow ? 1.3 : 0)}
+          y={MID - (part.hollow ? 8.2 : 9.5)}
+          width={Math.max(0, part.to - part.from - (part.hollow ? 2.6 : 0))}
+          height={part.hollow ? 16.4 : 19}
+          className={part.hollow ? `fill-ground ${stroke}` : fill}
+          strokeWidth={part.hollow ? 2.6 : 0}
+        />
+      ))}
+      <path d={caps} className={stroke} strokeWidth="3.4" />
     </g>
   )
 }

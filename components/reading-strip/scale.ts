@@ -91,7 +91,7 @@ export const xOf = (axis: Axis, value: number, width: number): number =>
 /** Parts of the I-beam: `solid` inside the limits, `hollow` beyond one. Never under `minPx` wide. */
 export function beamParts(
   axis: Axis,
-  input: AxisInput,
+  input: Omit<AxisInput, 'neverNegative'>,
   box: { width: number; minPx: number },
 ): { from: number; to: number; hollow: boolean }[] {
   const mid = xOf(axis, input.value, box.width)

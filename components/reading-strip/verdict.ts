@@ -55,7 +55,7 @@ const unitAsTyped = (body: ReadingBody): string =>
   body.unit === QUANTITIES[body.quantity] ? shortUnit(body.quantity) : body.unit
 
 /** How the estimate stands to the nearest limit: `17.6 V under`, `6.2 V clear`, `on the limit`. */
-export function distanceWords(reading: StripReading): string {
+export function distanceWords(reading: StripReading, withUnit = true): string {
   const { limits, estimate, quantity, verdict } = reading
   if (reading.overRange) return 'over the range'
   if (limits === null) return ''
@@ -67,11 +67,22 @@ export function distanceWords(reading: StripReading): string {
   const nearest = gaps.sort((a, b) => a.gap - b.gap)[0]
   if (nearest === undefined) return ''
   const size = fixed(Math.abs(nearest.gap), places)
-  const unit = shortUnit(quantity).split(' ')[0] ?? ''
+  const unit = withUnit ? `${shortUnit(quantity).split(' ')[0] ?? ''} ` : ''
   if (Number(size) === 0) return 'on the limit'
-  if (nearest.gap < 0) return `${size} ${unit} ${nearest.out}`
-  return verdict === 'tooClose' ? `${size} ${unit} from the limit` : `${size} ${unit} clear`
+  if (nearest.gap < 0) return `${size} ${unit}${nearest.out}`
+  return verdict === 'tooClose' ? `${size} ${unit}inside` : `${size} ${unit}clear`
 }
+
+/** Which jaw an undecided reading lies across, for its glyph. */
+export function acrossOf(reading: Pick<StripReading, 'estimate' | 'expandedU' | 'limits'>): Across {
+  const { estimate, expandedU, limits } = reading
+  const hits = (limit: number | null | undefined) =>
+    limit !== null && limit !== undefined && Math.abs(limit - estimate) < expandedU
+  const low = hits(limits?.low)
+  const high = hits(limits?.high)
+  return low && high ? 'both' : high ? 'high' : 'low'
+}
+export type Across = 'low' | 'high' | 'both'
 
 /** The good band in words: `45 to 60`, `12.4 or more`, `0.1 or less`. */
 export function bandWords(limits: Limits): string {
@@ -93,7 +104,7 @@ export function stripSentence(reading: StripReading): string {
     ? `Over range on the meter, above ${asTypedOnScreen(reading.shown)} ${unit}.`
     : `${fixed(reading.estimate, placesOf(reading))} ${unit}, plus or minus ${u.text}.`
   const band = reading.limits === null ? '' : ` Good band ${bandWords(reading.limits)}.`
-  const distance = distanceWords(reading)
+  const distance = distanceWords(reading, false)
   const words = sentenceCase(verdictWords(reading.verdict))
   return `${first}${band} ${words}${distance === '' ? '' : `, ${distance}`}.`
 }

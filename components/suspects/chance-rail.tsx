@@ -7,12 +7,15 @@ const HEIGHT = 50
 const BASE = 42
 const BAR = 20
 const MARK_Y = 11
+/** A mark keeps this far from the rail's ends and from the next mark, in px. */
+const EDGE = 9
+const APART = 18
 
 /** A rail of 100 with a tick each 10, the bar to the chance, and over it where each outcome would put it. */
 export function ChanceRail({ chance, marks }: { chance: number; marks: readonly Mark[] }) {
   const [ref, width] = useWidth<SVGSVGElement>(358)
   const x = (share: number) => 1 + Math.min(1, Math.max(0, share)) * (width - 2)
-  const at = marks.map((mark) => ({ ...mark, x: Math.min(width - 9, Math.max(9, x(mark.chance))) }))
+  const at = spread(marks, x, width)
   const xs = at.map((mark) => mark.x)
   const top = marks.length === 0 ? 18 : 0
   return (
@@ -43,6 +46,30 @@ export function ChanceRail({ chance, marks }: { chance: number; marks: readonly 
       ))}
     </svg>
   )
+}
+
+type Placed = Mark & { x: number }
+
+/** Marks that would lie on each other are moved apart; their feet stay at the true place. */
+export function spread(
+  marks: readonly Mark[],
+  x: (share: number) => number,
+  width: number,
+): Placed[] {
+  const sorted = marks
+    .map((mark) => ({ ...mark, x: Math.min(width - EDGE, Math.max(EDGE, x(mark.chance))) }))
+    .sort((a, b) => a.x - b.x)
+  sorted.forEach((mark, i) => {
+    const before = sorted[i - 1]
+    if (before !== undefined) mark.x = Math.max(mark.x, before.x + APART)
+  })
+  const over = Math.max(0, (sorted.at(-1)?.x ?? 0) - (width - EDGE))
+  for (let i = sorted.length - 1; over > 0 && i >= 0; i--) {
+    const mark = sorted[i]
+    const limit = (sorted[i + 1]?.x ?? width - EDGE + APART) - APART
+    if (mark !== undefined) mark.x = Math.min(mark.x, limit)
+  }
+  return sorted
 }
 
 function Rail({ width, x }: { width: number; x: (share: number) => number }) {

@@ -1,8 +1,10 @@
 'use client'
-import type { ReactNode } from 'react'
+import { type ReactNode, useState } from 'react'
 import type { Suspect } from '@/lib/diag/belief'
+import { SOMETHING_ELSE } from '@/lib/diag/book-index'
 import type { outlook } from '@/lib/diag/outlook'
 import { of100 } from '../reading-strip/figures'
+import { Key } from '../ui/key'
 import { ChanceRail } from './chance-rail'
 import { MarkPicture } from './mark-sign'
 import { type Mark, marksOf, saysNothing } from './outlook-words'
@@ -26,24 +28,56 @@ type Props = {
 /** The suspects in order: name, chance of 100, rail with the marks of the check that is up, and its words. */
 export function SuspectRows(props: Props) {
   const { suspects, outlook = [] } = props
-  const list = useSlide<HTMLOListElement>(suspects.map((s) => s.fault).join(' '))
+  const [all, setAll] = useState(false)
+  const ranked = suspects.map((suspect, i) => ({ suspect, rank: i + 1 }))
+  const shown = all ? ranked : ranked.filter(({ suspect, rank }) => standsOut(suspect, rank, props))
+  const folded = ranked.length - shown.length
+  const list = useSlide<HTMLOListElement>(shown.map(({ suspect }) => suspect.fault).join(' '))
   return (
-    <ol ref={list} className="grid gap-3">
-      {suspects.map((suspect, i) => (
-        <li key={suspect.fault} data-row={suspect.fault} className="min-w-0">
-          {suspect.ruledOutBy === null ? (
-            <Standing {...props} suspect={suspect} rank={i + 1} outlook={outlook} />
-          ) : (
-            <RuledOut
-              suspect={suspect}
-              by={props.entryWords?.(suspect.ruledOutBy) ?? null}
-              {...props}
-            />
-          )}
-        </li>
-      ))}
-    </ol>
+    <>
+      <ol ref={list} className="grid gap-3">
+        {shown.map(({ suspect, rank }) => (
+          <li key={suspect.fault} data-row={suspect.fault} className="min-w-0">
+            {suspect.ruledOutBy === null ? (
+              <Standing {...props} suspect={suspect} rank={rank} outlook={outlook} />
+            ) : (
+              <RuledOut
+                {...props}
+                suspect={suspect}
+                by={props.entryWords?.(suspect.ruledOutBy) ?? null}
+              />
+            )}
+          </li>
+        ))}
+      </ol>
+      {(folded > 0 || all) && (
+        <Key small quiet className="w-full" aria-expanded={all} onClick={() => setAll(!all)}>
+          {all ? 'Only the likely ones' : foldWords(ranked, shown)}
+        </Key>
+      )}
+    </>
   )
+}
+
+type Ranked = { suspect: Suspect; rank: number }
+
+/** A row each for the first five, all from 3 of 100 up, "something else", the ruled-out and the open one. */
+function standsOut(suspect: Suspect, rank: number, { open }: Props): boolean {
+  return (
+    rank <= 5 ||
+    suspect.chance >= 0.03 ||
+    suspect.fault === SOMETHING_ELSE ||
+    suspect.ruledOutBy !== null ||
+    suspect.fault === open
+  )
+}
+
+/** `33 more, each 2 of 100 or less`. */
+function foldWords(ranked: readonly Ranked[], shown: readonly Ranked[]): string {
+  const seen = new Set(shown.map(({ suspect }) => suspect.fault))
+  const hidden = ranked.filter(({ suspect }) => !seen.has(suspect.fault))
+  const most = Math.max(...hidden.map(({ suspect }) => suspect.chance))
+  return `${hidden.length} more, each ${Math.max(1, Math.ceil(most * 100))} of 100 or less`
 }
 
 type One = Props & { suspect: Suspect }
@@ -54,7 +88,7 @@ function Standing(props: One & { rank: number; outlook: readonly Outlook[] }) {
   const silent = saysNothing(marks)
   return (
     <>
-      <Head {...props} lead={<span className="figures w-7 shrink-0 text-section">{rank}</span>}>
+      <Head {...props} lead={<span className="caps w-7 shrink-0 text-key">{rank}</span>}>
         <span className="min-w-0 flex-1 text-row font-bold">{suspect.name}</span>
         <span className="figures shrink-0 text-key">{of100(suspect.chance)}</span>
       </Head>
