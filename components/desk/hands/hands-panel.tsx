@@ -30,7 +30,9 @@ export function HandsPanel({ found, assign }: Props) {
       assigned ? `${who} has the job.` : `${who} has the job no more.`,
     )
   }
-  const free = people.filter((person) => canTakeJobs(person) && !job.assignedTo.includes(person.id))
+  const free = people
+    .filter((person) => canTakeJobs(person) && !job.assignedTo.includes(person.id))
+    .sort((a, b) => Number(b.roles.includes('mechanic')) - Number(a.roles.includes('mechanic')))
   return (
     <section className="mt-7">
       <RuleEdge end={JOB_STATE_WORDS[job.state]}>In whose hands</RuleEdge>

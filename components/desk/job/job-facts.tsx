@@ -97,7 +97,9 @@ function Position({ place }: { place: Place | null }) {
         {degrees(latitude)} {degrees(longitude)}
       </span>{' '}
       {accuracyMetres === null ? null : (
-        <span className="figures whitespace-nowrap text-ink2">±{Math.round(accuracyMetres)} m</span>
+        <span className="figures ml-2 whitespace-nowrap text-ink2">
+          ±{Math.round(accuracyMetres)} m
+        </span>
       )}
       <span className="block text-second text-ink2">
         {source === 'fix' ? 'Position fix' : `Typed${place.asTyped ? ` as ${place.asTyped}` : ''}`}{' '}
@@ -112,7 +114,7 @@ function Position({ place }: { place: Place | null }) {
 /** What happened before, weather and air temperature in one sentence each, as far as taken down. */
 function conditions(job: Job): string {
   const before = job.before.map((word) => BEFORE_WORDS[word].toLowerCase()).join(', ')
-  const air = job.airTempC === null ? '' : `${String(job.airTempC).replace('-', '−')} °C`
+  const air = job.airTempC === null ? '' : `${String(job.airTempC).replace('-', '−')} °C`
   const weather = [job.weather, air].filter(Boolean).join(', ')
   return [
     before && `Before it: ${before}.`,

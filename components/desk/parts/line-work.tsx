@@ -69,13 +69,15 @@ export function LineWork({ requestId, line, move }: Props) {
       </div>
       {refusal ? <p className="font-bold text-nogo">{refusal}</p> : null}
       {can('cancelled') ? (
-        <Hold
-          label="Cancel the line"
-          question={`Cancel ${line.words}?`}
-          confirmLabel="Cancel it"
-          disabled={busy}
-          onConfirm={() => send({ ...head, to: 'cancelled' })}
-        />
+        <div className="max-w-80">
+          <Hold
+            label="Cancel the line"
+            question={`Cancel ${line.words}?`}
+            confirmLabel="Cancel it"
+            disabled={busy}
+            onConfirm={() => send({ ...head, to: 'cancelled' })}
+          />
+        </div>
       ) : null}
     </form>
   )

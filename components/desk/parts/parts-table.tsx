@@ -49,7 +49,7 @@ export function PartsTable({ rows, move }: Props) {
                     <Key
                       small={true}
                       quiet={true}
-                      className="desk-key"
+                      className="desk-key whitespace-nowrap"
                       aria-expanded={isOpen}
                       aria-label={isOpen ? `Close ${line.words}` : `Work on ${line.words}`}
                       onClick={() => setOpen(isOpen ? null : line.id)}
