@@ -45,6 +45,8 @@ export default {
     fontWeight: { normal: '500', bold: '650', heavy: '800' },
     borderRadius: { none: '0', plate: '2px', key: '4px' },
     extend: {
+      // In rem, so that they follow the person's own text size: 320 and 360 px at 16 px text.
+      screens: { slim: '20rem', roomy: '22.5rem' },
       // Not under `colors`: `text-plate` is a size. The plate is a ground and a line, never text.
       backgroundColor: { plate: token('plate') },
       borderColor: { plate: token('plate') },

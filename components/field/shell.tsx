@@ -28,7 +28,9 @@ const TAB_WORDS: Record<JobTab, string> = {
 export function Shell({ route, children }: { route: Route; children: ReactNode }) {
   useThemeByTheSun()
   useSendingNews()
-  const tab = TABS.find((name) => name === route.name)
+  const jobId = 'jobId' in route ? route.jobId : null
+  const held = useJob(jobId ?? '') !== null
+  const tab = held ? TABS.find((name) => name === route.name) : undefined
   return (
     <div
       className={classes(
@@ -49,13 +51,13 @@ export function Shell({ route, children }: { route: Route; children: ReactNode }
       <main id="main" className="flex flex-1 flex-col">
         {children}
       </main>
-      {tab !== undefined && 'jobId' in route ? (
+      {tab !== undefined && jobId !== null ? (
         <div className="tabs-bar safe-bottom bg-ground">
           <Tabs
             label="Job"
             tabs={TABS.map((name) => ({
               label: TAB_WORDS[name],
-              href: jobHref(route.jobId, name === 'job' ? '' : name),
+              href: jobHref(jobId, name === 'job' ? '' : name),
               current: name === tab,
             }))}
           />
@@ -78,7 +80,7 @@ function Header({ route, onTab }: { route: Route; onTab: boolean }) {
   }
   return (
     <>
-      <div className="min-w-0 flex-1">{tag}</div>
+      <div className="min-w-36 flex-1">{tag}</div>
       {onTab ? null : <ThemeKey />}
       <Witness />
     </>

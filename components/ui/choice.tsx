@@ -25,8 +25,8 @@ type Many<T extends string> = Shared<T> & { value: readonly T[]; onChange: (next
 
 const COLUMNS = {
   1: 'grid-cols-1',
-  2: 'grid-cols-1 min-[360px]:grid-cols-2',
-  3: 'grid-cols-1 min-[360px]:grid-cols-3',
+  2: 'grid-cols-1 slim:grid-cols-2',
+  3: 'grid-cols-1 slim:grid-cols-3',
 }
 
 /** Big radio keys: one of several. */

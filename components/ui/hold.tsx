@@ -66,7 +66,7 @@ export function Hold({ label, question, confirmLabel, onConfirm, disabled = fals
       {asking ? (
         <fieldset className="grid gap-2 border-2 border-ink p-3">
           <legend className="px-1 font-bold">{question}</legend>
-          <div className="grid grid-cols-2 gap-2">
+          <div className="grid grid-cols-1 gap-2 slim:grid-cols-2">
             <Key small onClick={() => setAsking(false)}>
               No
             </Key>

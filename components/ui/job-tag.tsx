@@ -64,7 +64,12 @@ export function JobTag({
 
 function Hole() {
   return (
-    <svg viewBox="0 0 30 30" className="size-7.5 shrink-0" fill="none" aria-hidden="true">
+    <svg
+      viewBox="0 0 30 30"
+      className="hidden size-7.5 shrink-0 slim:block"
+      fill="none"
+      aria-hidden="true"
+    >
       <circle cx="15" cy="15" r="12.6" stroke="var(--ink)" strokeWidth="2.2" />
       <circle cx="15" cy="15" r="6.4" fill="var(--ground)" stroke="var(--ink)" strokeWidth="2.6" />
     </svg>

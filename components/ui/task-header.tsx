@@ -5,7 +5,7 @@ type Props = { backHref: string; backLabel: string; tag: ReactNode; witness: Rea
 /** Header of a task screen: Back, the job's tag, the witness mark. */
 export function TaskHeader({ backHref, backLabel, tag, witness }: Props) {
   return (
-    <div className="flex items-center gap-2">
+    <div className="flex flex-wrap items-center justify-between gap-2">
       <a
         href={backHref}
         aria-label={`Back to ${backLabel}`}
@@ -16,7 +16,7 @@ export function TaskHeader({ backHref, backLabel, tag, witness }: Props) {
         </svg>
         <span className="text-second">Back</span>
       </a>
-      <div className="min-w-0 flex-1">{tag}</div>
+      <div className="order-last w-full min-w-0 slim:order-none slim:w-auto slim:flex-1">{tag}</div>
       {witness}
     </div>
   )

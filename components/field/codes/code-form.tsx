@@ -147,7 +147,7 @@ function Boxes(props: {
   switch (draft.format) {
     case 'spn':
       return (
-        <div className="grid grid-cols-1 items-end gap-3 min-[360px]:grid-cols-3">
+        <div className="grid grid-cols-1 items-end gap-3 roomy:grid-cols-3">
           {box('module', 'Module', { numeric: true })}
           {box('spn', 'SPN', { numeric: true })}
           {box('fmi', 'FMI', { numeric: true })}

@@ -54,7 +54,7 @@ function Codes({ facts }: { facts: JobFacts }) {
       second="Take them down before anything is cleared or the battery comes off."
       foot={
         writing ? null : (
-          <div className="grid grid-cols-2 gap-2">
+          <div className="grid grid-cols-1 gap-2 slim:grid-cols-2">
             <Key onClick={() => setAdding(true)}>One more</Key>
             <Key kind="plate" onClick={() => go(jobHref(job.id, 'checks'))}>
               To checks

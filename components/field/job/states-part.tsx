@@ -35,7 +35,7 @@ export function StatesPart({ job }: { job: Job }) {
   )
   return (
     <section className="grid gap-2" aria-label="People, machine and job">
-      <div className="grid grid-cols-1 gap-x-2 gap-y-2 min-[22rem]:grid-cols-2">
+      <div className="grid grid-cols-1 gap-x-2 gap-y-2 roomy:grid-cols-2">
         {state('people', 'People', PEOPLE_WORDS[job.peopleState], peopleLine(job))}
         {state('machine', 'Machine', MACHINE_WORDS[job.machineState], '')}
       </div>

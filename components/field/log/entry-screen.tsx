@@ -118,7 +118,7 @@ function Written({ entry, sent, order }: { entry: LogEntry; sent: boolean; order
   return (
     <dl className="grid gap-2 border-t-2 border-ink pt-3">
       {lines.map(([name, value]) => (
-        <div key={name} className="grid grid-cols-[7rem_minmax(0,1fr)] gap-3">
+        <div key={name} className="grid gap-x-3 slim:grid-cols-[7rem_minmax(0,1fr)]">
           <dt className="text-second text-ink2">{name}</dt>
           <dd>{value}</dd>
         </div>

@@ -27,7 +27,7 @@ export function LogScreen({ jobId }: { jobId: string }) {
           title="Log"
           titleHidden
           foot={
-            <div className="grid grid-cols-3 gap-2">
+            <div className="grid grid-cols-1 gap-2 slim:grid-cols-3">
               {mayLog(roles, 'note', false) ? (
                 <KeyLink href={jobHref(job.id, 'note')}>Note</KeyLink>
               ) : null}

@@ -82,7 +82,7 @@ function Holds() {
       <RuleEdge>It holds</RuleEdge>
       <dl className="grid gap-1.5">
         {lines.map(([name, value]) => (
-          <div key={name} className="grid grid-cols-[minmax(0,1fr)_minmax(0,1fr)] gap-3">
+          <div key={name} className="grid gap-x-3 slim:grid-cols-2">
             <dt className="text-ink2">{name}</dt>
             <dd className="font-bold">{value}</dd>
           </div>

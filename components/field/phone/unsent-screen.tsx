@@ -2,6 +2,7 @@
 
 import { FileDown, ShieldAlert, ShieldCheck } from 'lucide-react'
 import { type ReactNode, useState } from 'react'
+import { of100 } from '@/components/reading-strip/figures'
 import { useSession } from '@/components/store/use-session'
 import { useStamp } from '@/components/store/use-stamp'
 import { type UnsentItem, type UnsentView, useUnsent } from '@/components/store/use-unsent'
@@ -30,7 +31,7 @@ export function UnsentScreen() {
       titleHidden
       foot={<Ways />}
     >
-      <div className="flex items-center gap-5">
+      <div className="flex flex-wrap items-center gap-5">
         <WitnessMark state={state} count={0} large progress={share(unsent.sending)} />
         <p aria-hidden="true" className="caps text-hero">
           {unsent.count === 0 ? 'All sent' : `${unsent.count} not sent`}
@@ -170,8 +171,7 @@ function itemWords(item: UnsentItem): ReactNode {
 
 function Storage() {
   const { storageKept, quotaShare } = useUnsent()
-  const room =
-    quotaShare === null ? '' : ` ${Math.round(quotaShare * 100)} of 100 parts of its room are used.`
+  const room = quotaShare === null ? '' : ` ${of100(quotaShare)} of 100 parts of its room used.`
   if (storageKept === true) {
     return (
       <p className="flex items-start gap-3">
