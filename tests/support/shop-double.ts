@@ -1,6 +1,7 @@
 import { createHash, createPublicKey, verify } from 'node:crypto'
 import { gunzipSync } from 'node:zlib'
 import { v7 } from 'uuid'
+import type { Actor } from '@/lib/model/person'
 import { HEADERS, signedText } from '@/lib/sync/protocol/device'
 import {
   type Cursor,
@@ -37,6 +38,8 @@ const problem = (status: number, kind: string) => json({ kind, status }, status)
  */
 export class ShopDouble {
   session: boolean = true
+  /** Whose session it is. */
+  actor: Actor = MECHANIC
   epoch = 'first'
   scopeVersion = 1
   pageRows = 500
@@ -48,6 +51,8 @@ export class ShopDouble {
   readonly ops = new Map<string, Op>()
   readonly photos = new Map<string, Uint8Array>()
   readonly seenDseqs: number[] = []
+  /** Person of every signed request that was let in. */
+  readonly senders: string[] = []
   readonly #devices = new Map<string, { x: string; y: string }>()
   readonly #rows = new Map<string, Row & { seq: number; state: PullRow['state'] }>()
   #seq = 0
@@ -103,10 +108,17 @@ export class ShopDouble {
 
   #answer(path: string, headers: Headers, body: Uint8Array): Response {
     if (path === '/api/devices') return this.#enrol(body)
-    if (path === '/api/me') return this.session ? json(MECHANIC) : problem(401, 'signIn')
+    if (path === '/api/me') return this.session ? json(this.actor) : problem(401, 'signIn')
+    if (path === '/api/auth/csrf') return json({ csrfToken: 'token' })
+    if (path === '/api/auth/signout') return this.#signOut()
     if (path === '/api/sync') return this.#sync(headers, body)
     if (path.startsWith('/api/photos/')) return this.#photo(path, headers, body)
     return problem(404, 'notFound')
+  }
+
+  #signOut(): Response {
+    this.session = false
+    return json({ url: '/' })
   }
 
   #enrol(body: Uint8Array): Response {
@@ -137,7 +149,9 @@ export class ShopDouble {
       { key: publicKey, dsaEncoding: 'ieee-p1363' },
       Buffer.from(of('signature'), 'base64url'),
     )
-    return fits ? null : problem(401, 'badSignature')
+    if (!fits) return problem(401, 'badSignature')
+    this.senders.push(of('person'))
+    return null
   }
 
   #sync(headers: Headers, body: Uint8Array): Response {

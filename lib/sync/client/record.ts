@@ -105,21 +105,30 @@ export const photoPlace = (hash: string) => `photo/${hash}`
 
 /** Every row the ops change, as it is after all of them. */
 async function changedRows(core: Core, ops: Op[]): Promise<Omit<RowRecord, 'turn'>[]> {
-  const places = new Map<string, Touched>()
-  for (const op of ops) for (const at of rowsTouched(op)) places.set(rowKey(at.entity, at.id), at)
+  const touched = new Map<string, { at: Touched; ops: Op[] }>()
+  for (const op of ops) {
+    for (const at of rowsTouched(op)) {
+      const key = rowKey(at.entity, at.id)
+      const entry = touched.get(key) ?? { at, ops: [] }
+      entry.ops.push(op)
+      touched.set(key, entry)
+    }
+  }
   const gen = (await readMeta(core.db, 'gen')) ?? 0
+  const held = await core.db.row.bulkGet([...touched.keys()])
   const rows = await Promise.all(
-    [...places].map(([key, at]) => changedRow(core, { key, at, ops, gen })),
+    [...touched].map(([key, entry], index) =>
+      changedRow(core, { key, ...entry, held: held[index], gen }),
+    ),
   )
   return rows.filter((row) => row !== null)
 }
 
 async function changedRow(
   core: Core,
-  of: { key: string; at: Touched; ops: Op[]; gen: number },
+  of: { key: string; at: Touched; ops: Op[]; held: RowRecord | undefined; gen: number },
 ): Promise<Omit<RowRecord, 'turn'> | null> {
-  const { key, at } = of
-  const held = await core.db.row.get(key)
+  const { key, at, held } = of
   const before = held && (await core.cache.row(core.keys, held))
   const who = { personId: core.personId }
   const after = of.ops.reduce((row, op) => applyOpLocally(row, at, op, who), before)

@@ -44,17 +44,18 @@ export async function stampOps(of: {
 }): Promise<{ ops: Op[]; counter: Counter }> {
   let counter = await readCounter(of.db)
   const ops: Op[] = []
+  const places = of.inputs.map(placeOf)
+  const rows = await of.db.row.bulkGet(places.map((at) => rowKey(at.entity, at.entityId)))
   for (const [index, input] of of.inputs.entries()) {
     counter = { dseq: counter.dseq + 1, hlc: nextHlc(counter.hlc, of.nowMs) }
     const place = placeOf(input)
-    const held = await of.db.row.get(rowKey(place.entity, place.entityId))
     const head = {
       id: of.ids[index] ?? '',
       dev: of.deviceId,
       ...counter,
       entityId: place.entityId,
       jobId: place.jobId,
-      base: held?.seq ?? null,
+      base: rows[index]?.seq ?? null,
       schema: OP_SCHEMA,
     }
     ops.push({ ...head, kind: input.kind, fields: input.fields } as Op)

@@ -37,6 +37,8 @@ export type BatchSize = { limit: number }
 
 const FULL = 500
 const LEAST = 25
+/** A try that failed sooner met no line at all (a choice). */
+const UNDER_WAY_MS = 2_000
 const MOST_RESETS = 2
 
 /**
@@ -129,6 +131,7 @@ export class SyncRun {
     step('afterSend')
     const reply = readReply(answer, this.#ports.clock.now())
     const batch = front.slice(0, packed.count)
+    if (reply.kind === 'unreachable') this.#halveAfter(this.#ports.clock.now() - sentMs)
     if (reply.kind !== 'ours') return this.#notTaken(reply, batch)
     const response = syncResponse.safeParse(reply.json)
     if (!response.success) return this.#notTaken({ kind: 'unreachable' }, batch)
@@ -183,15 +186,18 @@ export class SyncRun {
     this.#tell(this.#progress)
   }
 
+  /** A request that was under way when it was cut goes in smaller parts; one that never left does not. */
+  #halveAfter(tookMs: number): void {
+    if (tookMs < UNDER_WAY_MS || this.#size.limit <= LEAST) return
+    this.#size.limit = Math.max(LEAST, this.#size.limit >> 1)
+  }
+
   #notTaken(
     reply: Exclude<Reply, { kind: 'ours' }>,
     batch: OutboxRecord[],
   ): Promise<RunEnd | null> | RunEnd {
     if (reply.kind === 'smaller') return this.#smaller(batch, 'too_big')
     if (reply.kind === 'never') return this.#smaller(batch, 'invalid')
-    if (reply.kind === 'unreachable' || reply.kind === 'later') {
-      this.#size.limit = Math.max(Math.min(LEAST, this.#size.limit), this.#size.limit >> 1)
-    }
     return this.#endOf(reply)
   }
 
