@@ -46,10 +46,11 @@ export async function up(db: Kysely<unknown>): Promise<void> {
       prev_hash text,
       hash text not null,
       primary key (shop_id, id),
+      -- One entry for each place, and each place after the first names the one before it: no chain can
+      -- fork or leave a place out. The places come first in the key, so that 500 checks are 500 look-ups.
+      prev_order integer generated always as (nullif(order_no - 1, 0)) stored,
       unique (shop_id, job_id, order_no),
-      unique (shop_id, job_id, hash),
-      -- Nobody can fork a chain.
-      unique nulls not distinct (shop_id, job_id, prev_hash),
+      unique (shop_id, job_id, order_no, hash),
       check ((order_no = 1) = (prev_hash is null)),
       constraint log_entry_hash check (
         hash = encode(sha256(convert_to(coalesce(prev_hash, '') || chr(10) || canonical, 'UTF8')), 'hex')),
@@ -57,7 +58,8 @@ export async function up(db: Kysely<unknown>): Promise<void> {
       foreign key (shop_id, author_id) references person (shop_id, id),
       foreign key (shop_id, device_id) references device (shop_id, id),
       foreign key (shop_id, supersedes) references log_entry (shop_id, id),
-      foreign key (shop_id, job_id, prev_hash) references log_entry (shop_id, job_id, hash)
+      foreign key (shop_id, job_id, prev_order, prev_hash)
+        references log_entry (shop_id, job_id, order_no, hash)
     );
     alter table part_line add foreign key (shop_id, condemned_by) references log_entry (shop_id, id)
       deferrable initially deferred;
@@ -80,9 +82,9 @@ export async function up(db: Kysely<unknown>): Promise<void> {
       prev_hash text,
       hash text not null,
       primary key (shop_id, id),
+      prev_order integer generated always as (nullif(order_no - 1, 0)) stored,
       unique (shop_id, chain, order_no),
-      unique (shop_id, chain, hash),
-      unique nulls not distinct (shop_id, chain, prev_hash),
+      unique (shop_id, chain, order_no, hash),
       check ((order_no = 1) = (prev_hash is null)),
       check (chain = coalesce(job_id, shop_id)),
       constraint audit_entry_hash check (
@@ -90,7 +92,8 @@ export async function up(db: Kysely<unknown>): Promise<void> {
       foreign key (shop_id, job_id) references job,
       foreign key (shop_id, actor_id) references person (shop_id, id),
       foreign key (shop_id, device_id) references device (shop_id, id),
-      foreign key (shop_id, chain, prev_hash) references audit_entry (shop_id, chain, hash)
+      foreign key (shop_id, chain, prev_order, prev_hash)
+        references audit_entry (shop_id, chain, order_no, hash)
     );
   `.execute(db)
   await protect(db, 'log_entry', 'select, insert')

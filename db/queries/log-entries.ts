@@ -8,9 +8,6 @@ import type { ShopTx } from '../client'
 import type { LogEntryTable } from '../tables/log-entry'
 import { lockShop } from './changes'
 
-/** Rows per insert statement: PostgreSQL takes 65,535 parameters, an entry has 18. */
-const CHUNK = 1000
-
 /**
  * Appends entries to their jobs' chains in the order given and answers them with their places. Locks
  * the shop's counter first, as the head of an insert-only chain cannot be locked. Ids must be new and
@@ -31,26 +28,33 @@ export async function appendLogEntries(
     heads.set(entry.jobId, { order, hash })
     return { entry, order, canonical, prevHash: head.hash, hash }
   })
-  for (let start = 0; start < rows.length; start += CHUNK) {
-    await tx
-      .insertInto('logEntry')
-      .values(
-        rows.slice(start, start + CHUNK).map(({ entry, order, ...link }) => {
-          const { body, ...columns } = entry
-          return {
-            shopId: tx.shopId,
-            ...columns,
-            kind: body.kind,
-            body: JSON.stringify(body),
-            orderNo: order,
-            receivedAt,
-            ...link,
-          }
-        }),
-      )
-      .execute()
-  }
+  await insertRows(tx, rows, receivedAt)
   return rows.map(({ entry, order, hash }) => ({ ...entry, receivedAt, order, hash }))
+}
+
+type NewLink = {
+  entry: LogEntry
+  order: number
+  canonical: string
+  prevHash: string | null
+  hash: string
+}
+
+/** One statement with one parameter: 500 entries as 9,000 parameters hold the lock three times as long. */
+async function insertRows(tx: ShopTx, rows: NewLink[], receivedAt: Instant): Promise<void> {
+  const plain = rows.map(({ entry, ...link }) => ({ ...entry, ...link, kind: entry.body.kind }))
+  await sql`
+    insert into log_entry (shop_id, id, job_id, order_no, supersedes, happened_at, written_at, zone,
+      author_id, device_id, engine_version, book_version, kind, body, received_at, canonical,
+      prev_hash, hash)
+    select ${tx.shopId}::uuid, e.id, e."jobId", e."order", e.supersedes, e."happenedAt", e."writtenAt",
+      e.zone, e."authorId", e."deviceId", e."engineVersion", e."bookVersion", e.kind, e.body,
+      ${receivedAt}::timestamptz, e.canonical, e."prevHash", e.hash
+    from json_to_recordset(${JSON.stringify(plain)}::json) as e (id uuid, "jobId" uuid,
+      "order" integer, supersedes uuid, "happenedAt" timestamptz, "writtenAt" timestamptz, zone text,
+      "authorId" uuid, "deviceId" uuid, "engineVersion" text, "bookVersion" integer, kind text,
+      body jsonb, canonical text, "prevHash" text, hash text)
+  `.execute(tx)
 }
 
 /** What the hash of an entry covers. */
