@@ -2,9 +2,13 @@ import type { Role } from '@/lib/model/role'
 
 const FIELD_ONLY: readonly Role[] = ['mechanic', 'guide']
 
-/** Where a person's work is: the field for people who only work there, else the desk. */
-export const homeOf = (roles: readonly Role[]): '/field' | '/desk' =>
-  roles.every((role) => FIELD_ONLY.includes(role)) ? '/field' : '/desk'
+export type Home = '/field' | '/desk' | '/desk/parts'
+
+/** Where a person's work begins: the field, the parts desk for people who only work there, else the board. */
+export function homeOf(roles: readonly Role[]): Home {
+  if (roles.every((role) => FIELD_ONLY.includes(role))) return '/field'
+  return roles.every((role) => role === 'parts') ? '/desk/parts' : '/desk'
+}
 
 /**
  * The page asked for before signing in, when it is one of ours; else null. Only paths under the two

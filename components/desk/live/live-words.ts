@@ -43,7 +43,7 @@ export function readWord(said: unknown): LiveWord | null {
   return answer.success ? answer.data : null
 }
 
-/** Pause before the next try of a closed stream: 1, 2, 4 .. 30 s (common practice, no source). */
+/** Pause before the next try of a closed stream: 1, 2, 4, 8, then 15 s (common practice, no source). */
 export function backoffMs(tries: number): number {
-  return Math.min(30_000, 1000 * 2 ** Math.min(tries, 5))
+  return Math.min(15_000, 1000 * 2 ** Math.min(tries, 4))
 }
