@@ -29,10 +29,10 @@ export type Joint = {
   likelihood: Float64Array
 }
 
-/** A joint with no evidence yet over the suspects that `factors` touch. */
-export function startJoint(factors: readonly Factor[]): Joint {
+/** A joint with no evidence yet over the suspects that `factors` touch; `exact` bounds the full enumeration. */
+export function startJoint(factors: readonly Factor[], exact = EXACT): Joint {
   const touched = [...new Set(factors.flatMap((f) => f.scope))].sort((a, b) => a - b)
-  const members = subsets(touched, touched.length <= EXACT ? touched.length : FEW)
+  const members = subsets(touched, touched.length <= exact ? touched.length : FEW)
   return { touched, members, likelihood: new Float64Array(members.length).fill(1) }
 }
 

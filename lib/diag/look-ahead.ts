@@ -24,9 +24,10 @@ export type Candidate = { type: ActionType; index: number; cost: number }
 const DEEP = 8
 
 /** All first actions, cheapest first; those not worth a second step carry their one-step cost. */
-export function lookAhead(problem: Problem, spot: Spot): Candidate[] {
+export function lookAhead(problem: Problem, spot: Spot, steps: 1 | 2 = 2): Candidate[] {
   const first = actions(problem, spot).map((a) => ({ ...a, cost: oneStep(problem, spot, a) }))
   first.sort((a, b) => a.cost - b.cost)
+  if (steps === 1) return first
   let checks = 0
   const deeper = first.map((a) => {
     if (a.type === 'stop' || (a.type === 'check' && ++checks > DEEP)) return a

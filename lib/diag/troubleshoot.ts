@@ -19,8 +19,9 @@ import { leftOf, MOST_IN_MASK, openOf, type Problem, problemOf, weightsOf } from
 import { massOf } from './search-steps'
 import type { NoisyOrModel, SearchState, SingleModel } from './troubleshoot-model'
 
-/** Expansions allowed when the caller names none. */
+/** Expansions allowed when the caller names none, at 8 faults and 17 actions; wider models get fewer. */
 export const DEFAULT_LIMIT = 20_000
+const WIDTH = 8 * 17
 
 export type NextAction = {
   type: ActionType
@@ -67,7 +68,8 @@ function searched(
   spot: Spot,
   limit: number,
 ): { exact: true; answer: NextAction } | { exact: false; search: Search } {
-  const search = startSearch(problem, limit)
+  const width = problem.faults.length * (problem.checks.length + problem.repairs.length)
+  const search = startSearch(problem, Math.ceil(Math.min(limit, (limit * WIDTH) / width)))
   const mask = (left: readonly number[]) => left.reduce((m, i) => m | (1 << i), 0)
   const { w, open, elapsed } = spot
   const point = {

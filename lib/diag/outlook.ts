@@ -1,0 +1,81 @@
+import { type ActionTable, checkTable, swapTable } from './action-table'
+import { type Reckoning, reckon } from './belief'
+import type { Case } from './case'
+import { type Sight, sightOf } from './evidence-table'
+import type { Factor } from './factor'
+import { absorb, type Summary, startJoint, summarise } from './joint'
+
+/** What one outcome would lead to: how likely it is now, and every suspect's chance after it (0 to 1). */
+export type Outcome = {
+  outcome: string
+  name: string
+  good: boolean
+  probability: number
+  chances: Record<string, number>
+}
+
+/** A change of less than this much in every suspect is no news. */
+export const SAYS_NOTHING_BELOW = 0.03
+
+/**
+ * The outlook of a check or swap: every outcome with its chance and the belief it would lead to. A reading is
+ * looked at with the case's meter. Empty for an unknown id and for a swap whose steps have told all they can.
+ */
+export function outlook(c: Case, action: { kind: 'check' | 'swap'; id: string }): Outcome[] {
+  const reckoning = reckon(c)
+  const table = tableFor(sightOf(c, reckoning.suspects), action)
+  return table === null ? [] : outlookOf(reckoning, table).outcomes
+}
+
+/** The table of an action by its id; null when there is none or it has nothing more to tell. */
+export function tableFor(
+  sight: Sight,
+  { kind, id }: { kind: 'check' | 'swap'; id: string },
+): ActionTable | null {
+  const check = kind === 'check' ? sight.c.index.checks.get(id) : undefined
+  if (check !== undefined) return checkTable(sight, check)
+  const swap = kind === 'swap' ? sight.c.index.swaps.get(id) : undefined
+  return swap === undefined ? null : swapTable(sight, swap)
+}
+
+/** The outlook on a reckoned belief, and whether no outcome moves any suspect by 3 of 100 or more. */
+export function outlookOf(
+  reckoning: Reckoning,
+  table: ActionTable,
+): { outcomes: Outcome[]; saysNothing: boolean; summaries: Summary[] } {
+  const { suspects, last } = reckoning
+  const summaries = summariesAfter(reckoning, table)
+  const total = summaries.reduce((sum, s) => sum + s.evidence, 0)
+  const outcomes = table.outcomes.map(({ id, name, good }, k) => {
+    const summary = summaries[k]
+    const probability = (summary?.evidence ?? 0) / total
+    const chances = suspects.map((s, f) => [s.fault, summary?.marginals[f] ?? 0] as const)
+    return { outcome: id, name, good, probability, chances: Object.fromEntries(chances) }
+  })
+  const moved = summaries.some((s) =>
+    s.marginals.some((p, f) => Math.abs(p - (last.marginals[f] ?? 0)) >= SAYS_NOTHING_BELOW),
+  )
+  return { outcomes, saysNothing: !moved, summaries }
+}
+
+/** Full enumeration for outlooks up to this many touched suspects, see joint.ts for what is left out above it. */
+const EXACT_OUTLOOK = 12
+
+function summariesAfter(reckoning: Reckoning, table: ActionTable): Summary[] {
+  const factors = reckoning.evidence.flatMap((e) => (e.factor === null ? [] : [e.factor]))
+  const known = new Map<string, number[]>()
+  const chances = (present: readonly number[]): number[] => {
+    const key = present.join()
+    const row = known.get(key) ?? table.chances(present)
+    known.set(key, row)
+    return row
+  }
+  const seen: Factor = { scope: table.scope, at: () => 1 }
+  const base = startJoint([...factors, seen], EXACT_OUTLOOK)
+  for (const factor of factors) absorb(base, factor)
+  return table.outcomes.map((_, k) => {
+    const joint = { ...base, likelihood: Float64Array.from(base.likelihood) }
+    absorb(joint, { scope: table.scope, at: (present) => chances(present)[k] ?? 0 })
+    return summarise(joint, reckoning.terms)
+  })
+}

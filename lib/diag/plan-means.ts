@@ -1,0 +1,70 @@
+import type { Bag } from '@/lib/model/bag'
+import type { CheckItem, FaultItem, SwapItem } from '@/lib/model/code-book'
+import type { Role } from '@/lib/model/role'
+import type { Shop } from '@/lib/model/shop'
+import { type BookIndex, wordName } from './book-index'
+
+/** What the plan may count on. `bag` null: not known, nothing is left out for tools or parts. */
+export type Means = {
+  bag: Bag | null
+  roles: Role[]
+  /** Minutes to the leave-by time (rule R6); null: no limit. */
+  minutesToLeaveBy: number | null
+  shop: Pick<Shop, 'perMinuteMinor' | 'towMinor' | 'recoveryMinor'>
+  dark: boolean
+  people: 1 | 2
+}
+
+export type Kind = 'check' | 'swap' | 'repair' | 'stop'
+/** Something that cannot be done now, with the reason as a sentence. */
+export type LeftOut = { id: string; kind: Kind; reason: string }
+
+/** After dusk minutes grow by this factor (rule R6; common practice, no source). */
+export const DARK_FACTOR = 1.3
+
+/** Minutes of work as they will be taken here. */
+export const minutesHere = (minutes: number, means: Means): number =>
+  means.dark ? minutes * DARK_FACTOR : minutes
+
+/** Why a check cannot be done with these means, in a sentence; null when it can. */
+export function whyNotCheck(index: BookIndex, check: CheckItem, means: Means): string | null {
+  if (!check.roles.some((role) => means.roles.includes(role)))
+    return `For ${check.roles.join(' or ')} only.`
+  if (!check.guideSafe && means.roles.every((role) => role === 'guide'))
+    return 'Not marked safe for guides.'
+  if (check.people > means.people && check.onePersonWay === null) return 'Needs two people.'
+  if (check.light === 'daylight' && means.dark) return 'Needs daylight.'
+  return missingTools(
+    index,
+    check.tools.map((t) => t.tool),
+    means,
+  )
+}
+
+/** Why a swap cannot be done with these means; null when it can. */
+export function whyNotSwap(index: BookIndex, swap: SwapItem, means: Means): string | null {
+  if (!swap.guideSafe && !means.roles.includes('mechanic')) return 'For mechanics only.'
+  if (means.bag === null) return null
+  const name = wordName(index, 'part', swap.part).toLowerCase()
+  const held = means.bag.parts.filter((p) => p.part === swap.part && p.quantity > 0)
+  if (held.length === 0) return `No ${name} in the bag.`
+  return held.some((p) => p.knownGood) ? null : `The ${name} in the bag is not known to be good.`
+}
+
+/** Why a fault cannot be repaired here; null when it can. */
+export function whyNotRepair(index: BookIndex, fault: FaultItem, means: Means): string | null {
+  const { repair } = fault
+  if (repair === null) return 'Not repaired in the field.'
+  if (!means.roles.includes('mechanic')) return 'For mechanics only.'
+  if (repair.part === null || means.bag === null) return null
+  const held = means.bag.parts.some((p) => p.part === repair.part && p.quantity > 0)
+  return held ? null : `No ${wordName(index, 'part', repair.part).toLowerCase()} in the bag.`
+}
+
+function missingTools(index: BookIndex, tools: readonly string[], { bag }: Means): string | null {
+  if (bag === null) return null
+  const missing = tools.filter((tool) => !bag.tools.includes(tool))
+  if (missing.length === 0) return null
+  const names = missing.map((tool) => wordName(index, 'tool', tool).toLowerCase())
+  return `Not in the bag: ${names.join(', ')}.`
+}

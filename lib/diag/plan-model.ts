@@ -1,0 +1,257 @@
+/**
+ * The bridge from belief to plan (rule R5): each suspect as "only this one is wrong", and one lump "two or
+ * more, or something else" that no repair mends, so that the plan never counts on the list being whole. The
+ * rows of the lump are what is left of each outcome's chance when the single faults are taken out.
+ */
+import type { CheckItem, FaultItem, SwapItem } from '@/lib/model/code-book'
+import { type ActionTable, checkTable, swapTable } from './action-table'
+import { type Reckoning, reckon } from './belief'
+import { SOMETHING_ELSE } from './book-index'
+import type { Case } from './case'
+import { type Sight, sightOf } from './evidence-table'
+import { letsThrough } from './gate'
+import { type Outcome, outlookOf } from './outlook'
+import {
+  type Kind,
+  type LeftOut,
+  type Means,
+  minutesHere,
+  whyNotCheck,
+  whyNotRepair,
+  whyNotSwap,
+} from './plan-means'
+import { stopsOf } from './plan-stops'
+import type { SearchState, SingleModel } from './troubleshoot-model'
+import { fitnessFor } from './verdict-table'
+
+/** The lump's id in the model. */
+export const LUMP = 'twoOrMoreOrSomethingElse'
+/** Minutes of the test run after a repair (common practice, no source). */
+export const TEST_RUN_MINUTES = 5
+/** A repair that cannot be done is only listed for suspects from this chance on. */
+const WORTH_NAMING = 0.02
+
+export type PlanModel = {
+  model: SingleModel
+  state: SearchState
+  leftOut: LeftOut[]
+  reckoning: Reckoning
+  /** Outlooks of everything in the model, by `check:id` and `swap:id`. */
+  outlooks: ReadonlyMap<string, Outcome[]>
+}
+
+type Doing = { c: Case; means: Means; sight: Sight; reckoning: Reckoning; leftOut: LeftOut[] }
+
+/** The planner's model of a case with these means, and everything that was left out of it with the reason. */
+export function planModel(c: Case, means: Means): PlanModel {
+  const reckoning = reckon(c)
+  const sight = sightOf(c, reckoning.suspects)
+  const doing: Doing = { c, means, sight, reckoning, leftOut: [] }
+  const outlooks = new Map<string, Outcome[]>()
+  const checks = [...checksOf(doing, outlooks), ...swapsOf(doing, outlooks)]
+  const faults = faultsOf(doing)
+  const stops = stopsOf(c, means, reckoning)
+  doing.leftOut.push(...stops.leftOut)
+  const minutes = means.minutesToLeaveBy
+  const model: SingleModel = {
+    kind: 'single',
+    ratePerMinute: means.shop.perMinuteMinor,
+    faults,
+    parts: {
+      onHand: means.bag?.parts.filter((p) => p.quantity > 0).map((p) => p.part) ?? allParts(doing),
+    },
+    checks,
+    setups: [...c.index.setups.values()].map(({ id, minutes: m, requires, closedByTest }) => ({
+      id,
+      minutes: minutesHere(m, means),
+      requires,
+      closedByTest,
+    })),
+    verify: { cost: 0, minutes: minutesHere(TEST_RUN_MINUTES, means) },
+    stops: stops.stops,
+    ...(minutes === null ? {} : { daylight: { minutes: Math.max(0, minutes) } }),
+  }
+  const state = { evidence: {}, tried: [], open: openSetups(c), elapsed: 0 }
+  return { model, state, leftOut: tooLate(model, doing), reckoning, outlooks }
+}
+
+/** Faults named by a fix entry so far. */
+export function fixedFaults({ entries }: Case): string[] {
+  return entries.flatMap(({ body }) => (body.kind === 'fix' ? [body.fault] : []))
+}
+
+function checksOf(doing: Doing, outlooks: Map<string, Outcome[]>): SingleModel['checks'] {
+  const { c, means } = doing
+  return [...c.index.checks.values()].flatMap((check) => {
+    if (!letsThrough(check.gate, c.features)) return []
+    const table = checkTable(doing.sight, check)
+    if (table.scope.length === 0) return []
+    const why = recorded(c, check) ?? whyNotCheck(c.index, check, means)
+    const action = {
+      id: check.id,
+      cost: check.costMinor,
+      minutes: check.minutes,
+      setup: check.setups,
+    }
+    const built =
+      why ??
+      enter(doing, outlooks, { kind: 'check', action, table, cannot: () => cannotDecide(c, check) })
+    return list(doing, { id: check.id, kind: 'check' }, built)
+  })
+}
+
+function swapsOf(doing: Doing, outlooks: Map<string, Outcome[]>): SingleModel['checks'] {
+  const { c, means } = doing
+  return [...c.index.swaps.values()].flatMap((swap: SwapItem) => {
+    const isSuspect = doing.reckoning.suspects.some((s) => s.fault === swap.fault)
+    if (!isSuspect || !letsThrough(swap.gate, c.features)) return []
+    const table = swapTable(doing.sight, swap)
+    const why = table === null ? 'Done.' : whyNotSwap(c.index, swap, means)
+    const action = { id: swap.id, cost: 0, minutes: swap.minutes, setup: swap.setups }
+    const built =
+      why ?? (table === null ? 'Done.' : enter(doing, outlooks, { kind: 'swap', action, table }))
+    return list(doing, { id: swap.id, kind: 'swap' }, built)
+  })
+}
+
+type Entry = SingleModel['checks'][number]
+
+/** The model's entry, or the sentence that keeps it out. */
+function enter(
+  { means, reckoning }: Doing,
+  outlooks: Map<string, Outcome[]>,
+  given: {
+    kind: 'check' | 'swap'
+    action: { id: string; cost: number; minutes: number; setup: readonly string[] }
+    table: ActionTable
+    cannot?: () => string | null
+  },
+): Entry | string {
+  const { action, table, kind } = given
+  const cannot = given.cannot?.() ?? null
+  if (cannot !== null) return cannot
+  const { outcomes, saysNothing } = outlookOf(reckoning, table)
+  if (saysNothing) return 'Says nothing here: no outcome moves a suspect by 3 of 100.'
+  outlooks.set(`${kind}:${action.id}`, outcomes)
+  return {
+    ...action,
+    minutes: minutesHere(action.minutes, means),
+    outcomes: table.outcomes.map((o) => o.id),
+    p: rowsOf(reckoning, { table, outcomes }),
+  }
+}
+
+function list(doing: Doing, what: { id: string; kind: Kind }, built: Entry | string): Entry[] {
+  if (typeof built !== 'string') return [built]
+  doing.leftOut.push({ ...what, reason: built })
+  return []
+}
+
+/** Chances of each outcome for every single fault, and for the lump by what they leave. */
+function rowsOf(
+  { suspects, last }: Reckoning,
+  { table, outcomes }: { table: ActionTable; outcomes: readonly Outcome[] },
+): Record<string, number[]> {
+  const rows: Record<string, number[]> = {}
+  const rest = outcomes.map((o) => o.probability)
+  suspects.forEach((s, f) => {
+    if (s.fault === SOMETHING_ELSE) return
+    const row = table.chances(table.scope.includes(f) ? [f] : [])
+    rows[s.fault] = row
+    row.forEach((p, k) => {
+      rest[k] = (rest[k] ?? 0) - p * (last.only[f] ?? 0)
+    })
+  })
+  const held = rest.map((x) => Math.max(0, x))
+  const sum = held.reduce((total, x) => total + x, 0)
+  rows[LUMP] = sum > 1e-12 ? held.map((x) => x / sum) : table.chances([])
+  return rows
+}
+
+function faultsOf(doing: Doing): SingleModel['faults'] {
+  const { c, means, reckoning } = doing
+  const fixed = fixedFaults(c)
+  let lump = 1
+  const faults = reckoning.suspects.flatMap((s, f) => {
+    const item = c.index.faults.get(s.fault)
+    if (s.fault === SOMETHING_ELSE || item === undefined) return []
+    const only = reckoning.last.only[f] ?? 0
+    lump -= only
+    const why = fixed.includes(s.fault) ? 'Done already.' : whyNotRepair(c.index, item, means)
+    if (why !== null && (reckoning.last.marginals[f] ?? 0) >= WORTH_NAMING)
+      doing.leftOut.push({ id: s.fault, kind: 'repair', reason: why })
+    return [{ id: s.fault, prior: only, repair: why === null ? repairOf(doing, item) : null }]
+  })
+  return [...faults, { id: LUMP, prior: Math.max(1e-9, lump), repair: null }]
+}
+
+/** A repair at its price: the book's own, and the part's from the spec sheet. */
+function repairOf(
+  { c, means }: Doing,
+  { repair }: FaultItem,
+): SingleModel['faults'][number]['repair'] {
+  if (repair === null) return null
+  const part = c.spec?.parts.find((p) => p.part === repair.part)
+  return {
+    cost: repair.costMinor + (part?.genuineMinor ?? 0),
+    minutes: minutesHere(repair.minutes, means),
+    setup: repair.setups,
+    success: repair.successOf100 / 100,
+    ...(repair.part === null ? {} : { needsPart: repair.part }),
+  }
+}
+
+function recorded({ entries }: Case, check: CheckItem): string | null {
+  const last = entries.findLast(
+    ({ body }) =>
+      (body.kind === 'check' || body.kind === 'couldNot' || body.kind === 'reading') &&
+      body.checkId === check.id,
+  )?.body
+  if (last === undefined) return null
+  return last.kind === 'couldNot' ? `Could not be done: ${last.reason}` : 'Done.'
+}
+
+function cannotDecide(c: Case, check: CheckItem): string | null {
+  const fitness = fitnessFor(c, check)
+  return fitness === null || fitness.decides ? null : fitness.words
+}
+
+const allParts = ({ c }: Doing): string[] =>
+  [...c.index.faults.values()].flatMap((f) => (f.repair?.part == null ? [] : [f.repair.part]))
+
+/** Set-ups opened by what was done since the last proof run, where a test run closes them, else for good. */
+function openSetups({ entries, index }: Case): string[] {
+  let open: string[] = []
+  for (const { body } of entries) {
+    if (body.kind === 'proofRun' && body.starts > 0)
+      open = open.filter((id) => index.setups.get(id)?.closedByTest !== true)
+    const item =
+      body.kind === 'check' || body.kind === 'reading'
+        ? index.checks.get(body.checkId)
+        : body.kind === 'swap'
+          ? index.swaps.get(body.swapId)
+          : undefined
+    open.push(...(item?.setups ?? []).filter((id) => index.setups.has(id)))
+  }
+  return [...new Set(open)]
+}
+
+/** What no longer fits before the leave-by time, with how far it is over (rule R6). */
+function tooLate(model: SingleModel, { leftOut }: Doing): LeftOut[] {
+  const daylight = model.daylight?.minutes
+  if (daylight === undefined) return leftOut
+  const test = model.verify?.minutes ?? 0
+  const late = (id: string, kind: Kind, minutes: number): LeftOut[] =>
+    minutes > daylight
+      ? [{ id, kind, reason: `${Math.ceil(minutes - daylight)} min over the leave-by time.` }]
+      : []
+  return [
+    ...leftOut,
+    ...model.checks.flatMap((check) => late(check.id, 'check', check.minutes)),
+    ...model.faults.flatMap((f) =>
+      f.repair === null || f.prior < WORTH_NAMING
+        ? []
+        : late(f.id, 'repair', f.repair.minutes + test),
+    ),
+  ]
+}

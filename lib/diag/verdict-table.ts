@@ -1,0 +1,169 @@
+/**
+ * What a reading's verdict would be in each state, before it is taken: the book's pieces of the true value,
+ * the meter's uncertainty there, and the places where the verdict turns (JCGM 106). So the outlook of a reading
+ * is that of the meter in the bag, not of meters in general.
+ */
+import type { CheckItem, Piece, SpecValue } from '@/lib/model/code-book'
+import type { MeterProfile } from '@/lib/model/meter-profile'
+import type { Case } from './case'
+import { nominalOf } from './evidence-reading'
+import type { Sight } from './evidence-table'
+import { type OutcomeTable, TABLE_FLOOR } from './factor'
+import { phi } from './normal'
+import { canDecide, type MeterFitness } from './reading'
+import { budgetOf, limitsOf, type ReadingInput } from './reading-budget'
+
+const VERDICTS = ['in', 'tooClose', 'outLow', 'outHigh'] as const
+
+/** True values looked at in each piece. */
+const SAMPLES = 48
+
+/** The spec of a check on this machine: the sheet's figure, else the book's fallback limits, else null. */
+export function specFor({ spec }: Case, check: CheckItem): SpecValue | null {
+  const model = check.reading
+  if (model === null) return null
+  const component = spec?.components.find((part) => part.id === model.component)
+  const own = component?.values.find((value) => value.id === model.value)
+  if (own !== undefined) return own
+  if (model.fallback === null) return null
+  const { low, high, unit, source } = model.fallback
+  return {
+    id: model.value,
+    name: check.name,
+    quantity: model.quantity,
+    unit,
+    nominal: null,
+    tolerancePercent: null,
+    low,
+    high,
+    partTempC: null,
+    material: null,
+    conditions: null,
+    source,
+  }
+}
+
+/** The reading as it would be taken with this meter now: leads as they are, everything at its reference. */
+export function readingWith(
+  meter: MeterProfile,
+  check: CheckItem,
+  spec: SpecValue | null,
+): Omit<ReadingInput, 'value' | 'overRange'> | null {
+  const meterFunction = check.reading === null ? undefined : meter.functions[check.reading.quantity]
+  if (check.reading === null || meterFunction === undefined) return null
+  return {
+    quantity: check.reading.quantity,
+    meterFunction,
+    leadsOhm: meter.leadsOhm,
+    nulled: false,
+    partTempC: spec?.partTempC ?? null,
+    meterTempC: null,
+    perKelvin: meter.perKelvin,
+    spec,
+  }
+}
+
+/** Whether the meter in the bag can decide a check's figure; null without a figure, a meter or its function. */
+export function fitnessFor(c: Case, check: CheckItem): MeterFitness | null {
+  const spec = specFor(c, check)
+  if (c.meter === null || spec === null || limitsOf(spec) === null) return null
+  const input = readingWith(c.meter, check, spec)
+  return input === null ? null : canDecide(input)
+}
+
+/** Chances of the check's outcomes per state with the meter at hand; null when the book's own table must do. */
+export function verdictTable({ c, place }: Sight, check: CheckItem): OutcomeTable | null {
+  const spec = specFor(c, check)
+  const limits = limitsOf(spec)
+  const model = check.reading
+  if (c.meter === null || model === null || spec === null || limits === null) return null
+  const input = readingWith(c.meter, check, spec)
+  const nominal = nominalOf(spec, model)
+  if (input === null || nominal === null) return null
+  const seats = VERDICTS.map((v) => check.outcomes.findIndex((o) => o.id === v))
+  const edges = edgesOf(input, limits)
+  const row = (pieces: readonly Piece[]) =>
+    rowOf({ pieces, nominal, edges, input, seats, count: check.outcomes.length })
+  const otherwise = row(model.good)
+  if (otherwise === null) return null
+  const rows = new Map<number, readonly number[]>()
+  for (const [fault, pieces] of Object.entries(model.byFault)) {
+    const at = place.get(fault)
+    const chances = row(pieces)
+    if (chances === null) return null
+    if (at !== undefined) rows.set(at, chances)
+  }
+  return { rows, otherwise }
+}
+
+type Input = Omit<ReadingInput, 'value' | 'overRange'>
+/** Estimates at which the verdict turns: outLow up to a, in from b to c, outHigh from d. */
+type Edges = { a: number; b: number; c: number; d: number }
+
+function edgesOf(input: Input, { low, high }: { low: number | null; high: number | null }): Edges {
+  const none = Number.NEGATIVE_INFINITY
+  return {
+    a: low === null ? none : turning(input, low, 2),
+    b: low === null ? none : turning(input, low, -2),
+    c: high === null ? Number.POSITIVE_INFINITY : turning(input, high, 2),
+    d: high === null ? Number.POSITIVE_INFINITY : turning(input, high, -2),
+  }
+}
+
+/** The estimate y at which y + k u(y) meets the limit; u grows slower than y, so there is just one. */
+function turning(input: Input, limit: number, k: number): number {
+  const reach = 10 * (Math.abs(limit) + uAt(input, limit))
+  let from = limit - reach
+  let to = limit + reach
+  for (let i = 0; i < 100; i++) {
+    const y = (from + to) / 2
+    if (y + k * uAt(input, y) < limit) from = y
+    else to = y
+  }
+  return (from + to) / 2
+}
+
+function uAt(input: Input, estimate: number): number {
+  const leads = input.quantity === 'resistance' && !input.nulled
+  const shift = leads ? (input.leadsOhm.low + input.leadsOhm.high) / 2 : 0
+  return budgetOf({ ...input, value: estimate + shift, overRange: false }).standardU
+}
+
+type RowOf = {
+  pieces: readonly Piece[]
+  nominal: number
+  edges: Edges
+  input: Input
+  seats: readonly number[]
+  count: number
+}
+
+function rowOf({ pieces, nominal, edges, input, seats, count }: RowOf): number[] | null {
+  const total = pieces.reduce((sum, p) => sum + p.weight, 0)
+  const verdicts = [0, 0, 0, 0]
+  for (const { weight, from, to } of pieces)
+    for (let i = 0; i < SAMPLES; i++) {
+      const t = nominal * (from + ((i + 0.5) / SAMPLES) * (to - from))
+      const shares = sharesAt(t, uAt(input, t), edges)
+      shares.forEach((p, v) => {
+        verdicts[v] = (verdicts[v] ?? 0) + (p * weight) / total / SAMPLES
+      })
+    }
+  const row = new Array<number>(count).fill(TABLE_FLOOR)
+  for (const [v, p] of verdicts.entries()) {
+    const seat = seats[v] ?? -1
+    if (seat < 0 && p > 1e-3) return null
+    if (seat >= 0) row[seat] = (row[seat] ?? 0) + p
+  }
+  const sum = row.reduce((s, p) => s + p, 0)
+  return row.map((p) => p / sum)
+}
+
+/** Chances of in, too close, out low and out high for a true value read with this u. */
+function sharesAt(t: number, u: number, { a, b, c, d }: Edges): number[] {
+  const below = (edge: number) => phi((edge - t) / Math.max(u, 1e-12))
+  const outLow = below(a)
+  const outHigh = 1 - below(d)
+  const inside = Math.max(0, below(c) - below(b))
+  return [inside, Math.max(0, 1 - outLow - outHigh - inside), outLow, outHigh]
+}
