@@ -45,7 +45,7 @@ const ascending = (changes: Change[]) =>
   changes.every((change, i) => i === 0 || change.seq > (changes[i - 1]?.seq ?? 0))
 
 describe('GET /api/events', () => {
-  it('[R13] tells what changed in commit order and nothing of what is in it', async () => {
+  it('[EV1] tells what changed in commit order and nothing of what is in it', async () => {
     const { listener } = await openAs('dispatcher')
     const job = await openJob()
     await writeNotes(job, 3)
@@ -74,7 +74,7 @@ describe('GET /api/events', () => {
     listener.close()
   })
 
-  it('[R13] leaves no hole and repeats nothing over reconnects during writes', async () => {
+  it('[EV1] leaves no hole and repeats nothing over reconnects during writes', async () => {
     const { listener: first, cookie } = await openAs('owner')
     const job = await openJob()
     const from = Number(first.lastId)
@@ -101,7 +101,7 @@ describe('GET /api/events', () => {
     )
   })
 
-  it('[R13] reads on after the line to the database broke', async () => {
+  it('[EV1] reads on after the line to the database broke', async () => {
     const { listener } = await openAs('owner')
     const job = await openJob()
     await sql`select pg_terminate_backend(pid) from pg_stat_activity
@@ -114,7 +114,7 @@ describe('GET /api/events', () => {
     listener.close()
   })
 
-  it('[P12] asks a desk to read anew whose number is not of this log or too long ago', async () => {
+  it('[EV1] [P12] asks a desk to read anew whose number is not of this log or too long ago', async () => {
     const { cookie } = await signIn(world.a, 'owner')
     for (const lastEventId of ['999999999', 'x', '-1']) {
       const listener = await EventListener.open({ cookie, lastEventId })
@@ -124,7 +124,7 @@ describe('GET /api/events', () => {
     }
   })
 
-  it('[P11] tells a mechanic at the desk only of rows of jobs in their hands or in nobody’s', async () => {
+  it('[EV3] tells a mechanic at the desk only of rows of jobs in their hands or in nobody’s', async () => {
     const { listener } = await openAs('second')
     const job = await openJob()
     await writeNotes(job, 1)
@@ -156,7 +156,7 @@ describe('GET /api/events', () => {
     expect(POST().status).toBe(405)
   })
 
-  it('[R22] ends the stream of a revoked session at the next beat', async () => {
+  it('[EV2] [R22] ends the stream of a revoked session at the next beat', async () => {
     const { cookie, sessionId } = await signIn(world.a, 'owner')
     const request = new Request('http://shop.invalid/api/events', { headers: { cookie } })
     const { actorOfRequest } = await import('@/lib/auth/actor')
@@ -182,7 +182,7 @@ describe('GET /api/events', () => {
     expect(listener.events.every((event) => event.event === 'beat')).toBe(true)
   })
 
-  it('[R13] lets a reader go who does not read, and forgets those who left', async () => {
+  it('[EV2] lets a reader go who does not read, and forgets those who left', async () => {
     const hub = eventHub()
     const before = hub.size
     const actor = {
@@ -212,7 +212,7 @@ describe('GET /api/events', () => {
     expect(hub.size).toBe(before)
   })
 
-  it('[R13] ends every stream when the process is told to stop', async () => {
+  it('[EV2] ends every stream when the process is told to stop', async () => {
     const hub = new EventHub()
     const actor = {
       shopId: world.a.id,

@@ -57,7 +57,7 @@ async function askForParts() {
 }
 
 describe('work after a commit', () => {
-  it('[F8] tells the parts people of a request by one letter, however often it is sent', async () => {
+  it('[AC1] tells the parts people of a request by one letter, however often it is sent', async () => {
     const { ops, request, job } = await askForParts()
     await sync(device, ops)
     await work()
@@ -82,7 +82,7 @@ describe('work after a commit', () => {
     expect(await waiting()).toEqual([])
   })
 
-  it('[F8] tries again when the mail server is away, and loses nothing', async () => {
+  it('[AC1] tries again when the mail server is away, and loses nothing', async () => {
     const before = letters().length
     const { request } = await askForParts()
     await work(1)
@@ -96,7 +96,7 @@ describe('work after a commit', () => {
     expect(await waiting()).toEqual([])
   })
 
-  it('[F8] sends nothing for a push that was refused', async () => {
+  it('[AC1] sends nothing for a push that was refused', async () => {
     const before = letters().length
     const guide = (await phoneOf(world.a, 'guide')).device
     const opening = jobOpen(world.a.machineId)
