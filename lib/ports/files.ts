@@ -22,7 +22,7 @@ const isMissing = (error: unknown): boolean =>
  * Files in a local folder. A file is written beside its place, brought to the disk and then moved, so
  * that a crash leaves the old one, the new one or none, never half.
  */
-export function localFiles(folder: string): Files {
+function localFiles(folder: string): Files {
   const pathOf = (key: string): string => {
     if (!KEY.test(key)) throw new AppError('badFileKey', { context: { key } })
     return join(folder, key)

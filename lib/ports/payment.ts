@@ -2,13 +2,13 @@ import type { Money } from '@/lib/model/money'
 import { fail, type Result } from '@/lib/model/result'
 
 /** A card payment to start: what for, how much, and where the payer comes back to. */
-export type PaymentOrder = { id: string; amount: Money; words: string; returnUrl: string }
+type PaymentOrder = { id: string; amount: Money; words: string; returnUrl: string }
 
 /** Where the payer goes to pay. */
-export type PaymentStart = { providerId: string; url: string }
+type PaymentStart = { providerId: string; url: string }
 
 /** `notSetUp`: the shop has no payment provider, so nothing was started and nothing charged. */
-export type PaymentProblem = { kind: 'notSetUp' }
+type PaymentProblem = { kind: 'notSetUp' }
 
 export type Payment = { start(order: PaymentOrder): Promise<Result<PaymentStart, PaymentProblem>> }
 

@@ -1,7 +1,7 @@
 import { actorOfRequest } from '@/lib/auth/actor'
 import { answered } from '@/lib/sync/server/answer'
 import { answerBook } from '@/lib/sync/server/code-book'
-import { problemAnswer, refuseMethod } from '@/lib/sync/server/problems'
+import { problemAnswer, refusing } from '@/lib/sync/server/problems'
 
 /** The shop's code book, the newest or `?version=`; 304 when the caller holds it. */
 export const GET = (request: Request) =>
@@ -12,7 +12,4 @@ export const GET = (request: Request) =>
     return answerBook(actor, wanted, request.headers.get('if-none-match'))
   })
 
-export const POST = refuseMethod('GET')
-export const PUT = POST
-export const PATCH = POST
-export const DELETE = POST
+export const { POST, PUT, PATCH, DELETE } = refusing('GET')

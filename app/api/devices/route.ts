@@ -6,7 +6,7 @@ import { may } from '@/lib/shop/permissions'
 import { ALLOWANCES, spend } from '@/lib/sync/server/allowance'
 import { answered, jsonAnswer } from '@/lib/sync/server/answer'
 import { enrol, readEnrolment } from '@/lib/sync/server/enrol'
-import { problemAnswer, refuseMethod } from '@/lib/sync/server/problems'
+import { problemAnswer, refusing } from '@/lib/sync/server/problems'
 
 /** Makes the phone of whoever is signed in known to the shop. */
 export const POST = (request: Request) =>
@@ -24,7 +24,4 @@ export const POST = (request: Request) =>
     return done.ok ? jsonAnswer(done.value) : problemAnswer(done.problem)
   })
 
-export const GET = refuseMethod('POST')
-export const PUT = GET
-export const PATCH = GET
-export const DELETE = GET
+export const { GET, PUT, PATCH, DELETE } = refusing('POST')

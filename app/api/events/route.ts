@@ -5,7 +5,7 @@ import { ALLOWANCES, MAX_STREAMS, spend } from '@/lib/sync/server/allowance'
 import { answered } from '@/lib/sync/server/answer'
 import { eventHub } from '@/lib/sync/server/event-hub'
 import { streamEvents } from '@/lib/sync/server/event-stream'
-import { problemAnswer, refuseMethod } from '@/lib/sync/server/problems'
+import { problemAnswer, refusing } from '@/lib/sync/server/problems'
 
 export const dynamic = 'force-dynamic'
 
@@ -25,7 +25,4 @@ export const GET = (request: Request) =>
     return streamEvents({ hub, actor, lastEventId, signal: request.signal, isStillGood })
   })
 
-export const POST = refuseMethod('GET')
-export const PUT = POST
-export const PATCH = POST
-export const DELETE = POST
+export const { POST, PUT, PATCH, DELETE } = refusing('GET')

@@ -2,7 +2,7 @@ import { readFile } from 'node:fs/promises'
 import { join } from 'node:path'
 import { pingDatabase } from '@/db/queries/health'
 import { answered, jsonAnswer } from '@/lib/sync/server/answer'
-import { refuseMethod } from '@/lib/sync/server/problems'
+import { refusing } from '@/lib/sync/server/problems'
 
 const buildId = (): Promise<string> =>
   readFile(join(process.cwd(), '.next', 'BUILD_ID'), 'utf8').then(
@@ -19,7 +19,4 @@ export const GET = () =>
     return jsonAnswer({ ok: true, build: await buildId() })
   })
 
-export const POST = refuseMethod('GET')
-export const PUT = POST
-export const PATCH = POST
-export const DELETE = POST
+export const { POST, PUT, PATCH, DELETE } = refusing('GET')

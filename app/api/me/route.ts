@@ -1,6 +1,6 @@
 import { actorOfRequest } from '@/lib/auth/actor'
 import { answered, jsonAnswer } from '@/lib/sync/server/answer'
-import { problemAnswer, refuseMethod } from '@/lib/sync/server/problems'
+import { problemAnswer, refusing } from '@/lib/sync/server/problems'
 
 /** Who the session says is at work. */
 export const GET = (request: Request) =>
@@ -9,7 +9,4 @@ export const GET = (request: Request) =>
     return actor ? jsonAnswer(actor) : problemAnswer({ kind: 'signIn' })
   })
 
-export const POST = refuseMethod('GET')
-export const PUT = POST
-export const PATCH = POST
-export const DELETE = POST
+export const { POST, PUT, PATCH, DELETE } = refusing('GET')

@@ -4,7 +4,7 @@ import { systemClock } from '@/lib/ports/clock'
 import { uuidv7 } from '@/lib/ports/ids'
 import { ALLOWANCES, inSlot, spend } from '@/lib/sync/server/allowance'
 import { answered, jsonAnswer } from '@/lib/sync/server/answer'
-import { problemAnswer, refuseMethod } from '@/lib/sync/server/problems'
+import { problemAnswer, refusing } from '@/lib/sync/server/problems'
 import { exchange, openPush, readPush } from '@/lib/sync/server/sync'
 
 /** One exchange with a phone: ops and cursor in, results, rows and the next cursor out (P3). */
@@ -28,7 +28,4 @@ export const POST = (request: Request) =>
     return answer ?? problemAnswer({ kind: 'busy', retryAfterSeconds: 5 })
   })
 
-export const GET = refuseMethod('POST')
-export const PUT = GET
-export const PATCH = GET
-export const DELETE = GET
+export const { GET, PUT, PATCH, DELETE } = refusing('POST')

@@ -91,7 +91,7 @@ function webpHasGps(bytes: Buffer): boolean {
 const HAS_GPS = { 'image/jpeg': jpegHasGps, 'image/png': pngHasGps, 'image/webp': webpHasGps }
 
 /** True when the picture still says where it was taken. */
-export const hasPosition = (bytes: Buffer, mime: PictureMime): boolean =>
+const hasPosition = (bytes: Buffer, mime: PictureMime): boolean =>
   XMP_WORDS.some((word) => bytes.includes(word)) || HAS_GPS[mime](bytes)
 
 /**

@@ -36,14 +36,7 @@ const TABLE = {
   tooNew: [503, 'The shop’s server is older than the app. The work is kept; try again later.'],
 } as const satisfies Record<string, readonly [number, string]>
 
-export type ProblemKind = keyof typeof TABLE
-export type HttpProblem = { kind: ProblemKind; retryAfterSeconds?: number; allow?: string }
-
-/** The sentence a person may read for this kind. */
-export const problemWords = (kind: ProblemKind): string => TABLE[kind][1]
-
-/** The HTTP status of this kind. */
-export const problemStatus = (kind: ProblemKind): number => TABLE[kind][0]
+export type HttpProblem = { kind: keyof typeof TABLE; retryAfterSeconds?: number; allow?: string }
 
 /** Turns a problem into its answer: `application/problem+json`, never cached. */
 export function problemAnswer(problem: HttpProblem): Response {
@@ -60,6 +53,8 @@ export function problemAnswer(problem: HttpProblem): Response {
   return new Response(JSON.stringify(body), { status, headers })
 }
 
-/** A handler for the methods a route does not take. */
-export const refuseMethod = (allow: string) => (): Response =>
-  problemAnswer({ kind: 'methodNotAllowed', allow })
+/** Handlers for the methods a route does not take; it exports those it has not. */
+export function refusing(allow: string) {
+  const refuse = () => problemAnswer({ kind: 'methodNotAllowed', allow })
+  return { GET: refuse, POST: refuse, PUT: refuse, PATCH: refuse, DELETE: refuse }
+}

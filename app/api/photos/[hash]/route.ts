@@ -6,7 +6,7 @@ import { ALLOWANCES, spend } from '@/lib/sync/server/allowance'
 import { answered, jsonAnswer } from '@/lib/sync/server/answer'
 import { readCapped } from '@/lib/sync/server/body'
 import { MAX_PHOTO_BYTES, readPhoto, readPhotoClaim, takePhoto } from '@/lib/sync/server/photos'
-import { problemAnswer, refuseMethod } from '@/lib/sync/server/problems'
+import { problemAnswer, refusing } from '@/lib/sync/server/problems'
 
 type Context = { params: Promise<{ hash: string }> }
 
@@ -46,6 +46,4 @@ export const GET = (request: Request, { params }: Context) =>
     return new Response(bytes, { headers })
   })
 
-export const POST = refuseMethod('GET, PUT')
-export const PATCH = POST
-export const DELETE = POST
+export const { POST, PATCH, DELETE } = refusing('GET, PUT')
