@@ -52,6 +52,7 @@ export default {
       borderColor: { plate: token('plate') },
       fill: { plate: token('plate') },
       stroke: { plate: token('plate') },
+      minWidth: { target: '3.5rem' },
       minHeight: { target: '3.5rem', key: '4rem', main: '4.5rem', row: '4.25rem' },
       maxWidth: { column: '42.5rem' },
       transitionDuration: { press: '90ms', slide: '160ms', home: '240ms' },

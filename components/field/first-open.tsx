@@ -36,9 +36,9 @@ export function FirstOpen() {
       </p>
       <ul className="grid gap-1">
         {parts.map((part) => (
-          <li key={part.name} className="flex items-center gap-3">
+          <li key={part.name} className="flex flex-wrap items-center gap-x-3">
             <Ticked on={part.there} />
-            <span className="flex-1">{part.name}</span>
+            <span className="min-w-40 flex-1">{part.name}</span>
             <span className="caps text-section">{part.there ? 'here' : 'missing'}</span>
           </li>
         ))}

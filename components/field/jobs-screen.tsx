@@ -2,6 +2,7 @@
 
 import { useMemo } from 'react'
 import { useBook } from '@/components/store/use-book'
+import { useDraft } from '@/components/store/use-draft'
 import { useJobs, useMachines, useModels, useShop } from '@/components/store/use-rows'
 import { useSession } from '@/components/store/use-session'
 import { useUnsent } from '@/components/store/use-unsent'
@@ -12,6 +13,7 @@ import { Screen } from '@/components/ui/screen'
 import type { Job } from '@/lib/model/job'
 import { may } from '@/lib/shop/permissions'
 import { FirstOpen } from './first-open'
+import { EMPTY_INTAKE, INTAKE_KEY } from './intake/intake-draft'
 import { jobHref } from './route'
 import { JOB_STATE_WORDS, MACHINE_WORDS, machineName, PEOPLE_WORDS } from './words'
 
@@ -22,6 +24,7 @@ export function JobsScreen() {
   const shop = useShop()
   const me = session.kind === 'ready' ? session.actor : null
   const lists = useMemo(() => split(jobs ?? [], me?.personId ?? null), [jobs, me?.personId])
+  const draft = useDraft(INTAKE_KEY, EMPTY_INTAKE)
   const opens = me !== null && may(me.roles, 'job.open')
   return (
     <Screen
@@ -30,7 +33,7 @@ export function JobsScreen() {
       foot={
         opens ? (
           <KeyLink kind="main" href="/field/new">
-            New job
+            {draft.value === EMPTY_INTAKE ? 'New job' : 'Go on with new job'}
           </KeyLink>
         ) : null
       }

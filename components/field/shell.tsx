@@ -13,6 +13,7 @@ import { Tabs } from '@/components/ui/tabs'
 import { TaskHeader } from '@/components/ui/task-header'
 import { WitnessMark, type WitnessState } from '@/components/ui/witness-mark'
 import { backOf, isForm, type JobTab, jobHref, type Route } from './route'
+import { useRoute } from './router'
 import { ThemeKey, useThemeByTheSun } from './theme-menu'
 import { machineName } from './words'
 
@@ -28,6 +29,7 @@ const TAB_WORDS: Record<JobTab, string> = {
 export function Shell({ route, children }: { route: Route; children: ReactNode }) {
   useThemeByTheSun()
   useSendingNews()
+  useFocusOnArrival(route)
   const jobId = 'jobId' in route ? route.jobId : null
   const held = useJob(jobId ?? '') !== null
   const tab = held ? TABS.find((name) => name === route.name) : undefined
@@ -160,6 +162,20 @@ function useSendingNews(): void {
       announce('The phone may clear this store when it runs short of room.', 'assertive')
     }
   }, [storageKept, count])
+}
+
+/** A new screen is read from its title; leaving the list of unsent work leads back to the mark. */
+function useFocusOnArrival(route: Route): void {
+  const { here } = useRoute()
+  const before = useRef<{ here: string; name: Route['name'] } | null>(null)
+  useEffect(() => {
+    const was = before.current
+    before.current = { here, name: route.name }
+    if (was !== null && was.here !== here) {
+      const id = was.name === 'unsent' ? 'witness' : 'screen-title'
+      document.getElementById(id)?.focus({ preventScroll: true })
+    }
+  }, [here, route.name])
 }
 
 function UpdateBar() {

@@ -69,6 +69,7 @@ function Keys<T extends string>(
     <fieldset
       className={classes('min-w-0', props.className)}
       aria-describedby={props.error ? `${name}-error` : undefined}
+      data-invalid={props.error ? true : undefined}
     >
       <legend
         className={

@@ -74,8 +74,6 @@ function Drawing({ state, count, progress = 0, large }: Props) {
           transform="rotate(-90 32 40)"
         />
       ) : null}
-      <Stub y={12.2} />
-      <Stub y={57.2} />
       <g className="witness-head">
         <path
           d="M32 22.5 47.2 31.2V48.8L32 57.5 16.8 48.8V31.2Z"
@@ -93,6 +91,8 @@ function Drawing({ state, count, progress = 0, large }: Props) {
           strokeWidth="2.4"
         />
       </g>
+      <Stub y={12.2} />
+      <Stub y={57.2} />
       {state === 'stuck' ? <Stuck /> : null}
       {count > 0 ? (
         <>

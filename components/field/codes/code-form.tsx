@@ -8,6 +8,7 @@ import { announce } from '@/components/ui/announce'
 import { Choice } from '@/components/ui/choice'
 import { Field } from '@/components/ui/field'
 import { Key } from '@/components/ui/key'
+import { useFocusInvalid } from '@/components/ui/use-focus-invalid'
 import type { LogBody } from '@/lib/model/log-entry'
 import { fail, ok, type Result } from '@/lib/model/result'
 import {
@@ -36,6 +37,7 @@ export function CodeForm({ jobId, order, onSaved }: Props) {
   const key = codeKey(jobId)
   const { value: draft, set } = useDraft<CodeDraft>(key, EMPTY_CODE)
   const [problem, setProblem] = useState<CodeProblem | null>(null)
+  useFocusInvalid(problem)
   const record = useRecord()
   const stamp = useStamp()
   const change = (next: Partial<CodeDraft>) => {

@@ -61,12 +61,12 @@ function Faults(props: { title: string; sign: 'for' | 'against'; faults: readonl
         {props.faults.map((fault) => (
           <li
             key={fault.fault}
-            className="flex min-h-12 items-center gap-3 border-b-[1.5px] border-rule py-1"
+            className="flex min-h-12 flex-wrap items-center gap-x-3 border-b-[1.5px] border-rule py-1"
           >
             <Sign sign={props.sign} />
-            <span className="flex-1">{fault.name}</span>
+            <span className="min-w-36 flex-1">{fault.name}</span>
             {fault.of100 === null ? null : (
-              <span className="shrink-0 text-second text-ink2">
+              <span className="text-second text-ink2">
                 sets it in <span className="figures">{Math.round(fault.of100)}</span> of 100
               </span>
             )}

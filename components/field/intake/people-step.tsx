@@ -15,7 +15,7 @@ export function PeopleStep({ draft, change }: StepProps) {
     <>
       <fieldset>
         <legend className="mb-1.5 font-bold">How many people are there?</legend>
-        <div className="flex items-center gap-4">
+        <div className="flex flex-wrap items-center gap-4">
           <Key aria-label="One fewer" onClick={() => count(-1)} disabled={draft.count <= 1}>
             <Minus aria-hidden="true" strokeWidth={3} />
           </Key>

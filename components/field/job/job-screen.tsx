@@ -2,6 +2,7 @@
 
 import { useBook } from '@/components/store/use-book'
 import { useLog } from '@/components/store/use-log'
+import { useSession } from '@/components/store/use-session'
 import { Caution } from '@/components/ui/caution'
 import { KeyLink } from '@/components/ui/key'
 import { Row } from '@/components/ui/row'
@@ -26,6 +27,7 @@ export function JobScreen({ jobId }: { jobId: string }) {
 
 function Open({ facts }: { facts: JobFacts }) {
   const { job, model } = facts
+  const session = useSession()
   const log = useLog(job.id)
   const entries = living((log ?? []).map((line) => line.entry))
   return (
@@ -37,7 +39,12 @@ function Open({ facts }: { facts: JobFacts }) {
       <StatesPart job={job} />
       <section className="grid gap-1">
         <RuleEdge>Next</RuleEdge>
-        <NextRows jobId={job.id} entries={entries} wayOut={job.wayOut} />
+        <NextRows
+          jobId={job.id}
+          entries={entries}
+          wayOut={job.wayOut}
+          roles={session.kind === 'ready' ? session.actor.roles : []}
+        />
       </section>
       <section className="grid gap-2">
         <RuleEdge>Codes taken down</RuleEdge>

@@ -3,15 +3,24 @@ import type { ReactNode } from 'react'
 import { Row } from '@/components/ui/row'
 import type { WayOut } from '@/lib/model/job'
 import type { LogEntry, LogKind } from '@/lib/model/log-entry'
+import type { Role } from '@/lib/model/role'
+import { mayLog } from '@/lib/shop/permissions'
 import { jobHref } from '../route'
 import { counted, WAY_OUT_WORDS } from '../words'
 
-type Props = { jobId: string; entries: readonly LogEntry[]; wayOut: WayOut | null }
+type Props = {
+  jobId: string
+  entries: readonly LogEntry[]
+  wayOut: WayOut | null
+  roles: readonly Role[]
+}
 
-/** The things to do on a job, each with what is recorded of it. */
-export function NextRows({ jobId, entries, wayOut }: Props) {
+type NextRow = { name: string; screen: string; icon: ReactNode; done: string; kind?: LogKind }
+
+/** The things to do on a job, each with what is recorded of it; only what the person may record. */
+export function NextRows({ jobId, entries, wayOut, roles }: Props) {
   const count = (...kinds: LogKind[]) => entries.filter((e) => kinds.includes(e.body.kind)).length
-  const rows: { name: string; screen: string; icon: ReactNode; done: string }[] = [
+  const rows: NextRow[] = [
     {
       name: 'Codes',
       screen: 'codes',
@@ -34,12 +43,14 @@ export function NextRows({ jobId, entries, wayOut }: Props) {
     {
       name: 'Fix',
       screen: 'fix',
+      kind: 'fix',
       icon: <Wrench aria-hidden="true" strokeWidth={2.5} />,
       done: some(count('fix'), 'fix', 'fixes') || 'None yet',
     },
     {
       name: 'Proof run',
       screen: 'proof',
+      kind: 'proofRun',
       icon: <Timer aria-hidden="true" strokeWidth={2.5} />,
       done: proofDone(entries),
     },
@@ -52,16 +63,18 @@ export function NextRows({ jobId, entries, wayOut }: Props) {
   ]
   return (
     <ul>
-      {rows.map((row) => (
-        <li key={row.screen}>
-          <Row
-            title={row.name}
-            second={row.done}
-            icon={row.icon}
-            href={jobHref(jobId, row.screen)}
-          />
-        </li>
-      ))}
+      {rows
+        .filter((row) => row.kind === undefined || mayLog(roles, row.kind, false))
+        .map((row) => (
+          <li key={row.screen}>
+            <Row
+              title={row.name}
+              second={row.done}
+              icon={row.icon}
+              href={jobHref(jobId, row.screen)}
+            />
+          </li>
+        ))}
     </ul>
   )
 }

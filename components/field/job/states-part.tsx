@@ -78,9 +78,14 @@ function State(props: {
         {props.second ? <p className="text-second">{props.second}</p> : null}
       </div>
       {props.onChange === null ? null : (
-        <Key small quiet aria-expanded={props.open} onClick={props.onChange}>
+        <Key
+          small
+          quiet
+          aria-expanded={props.open}
+          aria-label={`${props.open ? 'Leave it' : 'Change'}: ${props.title.toLowerCase()}`}
+          onClick={props.onChange}
+        >
           {props.open ? 'Leave it' : 'Change'}
-          <span className="visually-hidden">: {props.title.toLowerCase()}</span>
         </Key>
       )}
     </div>

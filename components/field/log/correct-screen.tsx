@@ -10,6 +10,7 @@ import { announce } from '@/components/ui/announce'
 import { Field } from '@/components/ui/field'
 import { Key } from '@/components/ui/key'
 import { Screen } from '@/components/ui/screen'
+import { useFocusInvalid } from '@/components/ui/use-focus-invalid'
 import { jobHref } from '../route'
 import { useRoute } from '../router'
 import { entryWords, kindWord } from './log-words'
@@ -21,6 +22,7 @@ export function CorrectScreen({ jobId, entryId }: { jobId: string; entryId: stri
   const [problem, setProblem] = useState<string | null>(null)
   const log = useLog(jobId)
   const { index } = useBook()
+  useFocusInvalid(problem)
   const record = useRecord()
   const stamp = useStamp()
   const { go, here } = useRoute()

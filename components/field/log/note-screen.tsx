@@ -8,6 +8,7 @@ import { announce } from '@/components/ui/announce'
 import { Field } from '@/components/ui/field'
 import { Key } from '@/components/ui/key'
 import { Screen } from '@/components/ui/screen'
+import { useFocusInvalid } from '@/components/ui/use-focus-invalid'
 import { OfJob } from '../of-job'
 import { jobHref } from '../route'
 import { useRoute } from '../router'
@@ -25,6 +26,7 @@ function Note({ jobId, zone }: { jobId: string; zone: string }) {
   const key = `job.${jobId}.note`
   const { value: draft, set, ready } = useDraft<NoteDraft>(key, EMPTY)
   const [problem, setProblem] = useState<{ field: keyof NoteDraft; words: string } | null>(null)
+  useFocusInvalid(problem)
   const record = useRecord()
   const stamp = useStamp()
   const { go, here } = useRoute()

@@ -171,7 +171,8 @@ function itemWords(item: UnsentItem): ReactNode {
 
 function Storage() {
   const { storageKept, quotaShare } = useUnsent()
-  const room = quotaShare === null ? '' : ` ${of100(quotaShare)} of 100 parts of its room used.`
+  const room =
+    quotaShare === null ? '' : ` Of its room, ${of100(quotaShare)} of 100 parts are used.`
   if (storageKept === true) {
     return (
       <p className="flex items-start gap-3">
