@@ -6,7 +6,7 @@
 
 import type { ActionType } from './search'
 import type { Problem, Repair } from './search-problem'
-import { bestStop, dot, priceOf, survive } from './search-steps'
+import { bestStop, dot, massOf, priceOf, survive } from './search-steps'
 
 /** A state by lists, for any number of checks and repairs. */
 export type Spot = {
@@ -38,26 +38,50 @@ export function lookAhead(problem: Problem, spot: Spot, steps: 1 | 2 = 2): Candi
 
 /** Cost of repairs in p/c order with the cheapest stop at the best place in the row. */
 export function repairsOnly(problem: Problem, spot: Spot): number {
-  let best = bestStop(problem, spot.w).cost
-  let here = spot
+  const running = {
+    w: Float64Array.from(spot.w),
+    mass: massOf(spot.w),
+    stops: problem.stops.map((s) => dot(spot.w, s.byFault)),
+  }
+  let best = Math.min(Number.POSITIVE_INFINITY, ...running.stops)
+  let here = { open: spot.open, elapsed: spot.elapsed }
   let spent = 0
   for (const index of inOrder(problem, spot)) {
     const repair = problem.repairs[index]
     const priced = repair === undefined ? null : priceOf(problem, { ...here, index }, repair)
     if (repair === undefined || priced === null) continue
-    const after = survive(problem, repair, { w: here.w, price: priced.price })
-    spent += after.fixed
+    spent += priced.price * running.mass
     if (spent >= best) break
+    spent += mend(problem, repair, running)
     here = {
-      ...here,
-      w: after.w,
-      open: openAfter(problem, here, repair),
+      open: (here.open | repair.setups) & ~problem.closed,
       elapsed: here.elapsed + priced.minutes,
     }
-    if (after.mass <= 1e-15) return Math.min(best, spent)
-    best = Math.min(best, spent + bestStop(problem, here.w).cost)
+    if (running.mass <= 1e-15) return Math.min(best, spent)
+    for (const stop of running.stops) best = Math.min(best, spent + Math.max(0, stop))
   }
   return best
+}
+
+type Running = { w: Float64Array; mass: number; stops: number[] }
+
+/** Takes out what a repair mends (and what passes its test run wrongly); answers what the wrong passes cost. */
+function mend(problem: Problem, repair: Repair, running: Running): number {
+  let wrong = 0
+  const faults = problem.slips ? problem.faults.keys() : repair.cures
+  for (const f of faults) {
+    const x = running.w[f] ?? 0
+    const left = x * (repair.fails[f] ?? 1)
+    const slipped = left * (problem.falsePass[f] ?? 0)
+    wrong += slipped
+    const gone = x - left + slipped
+    running.w[f] = left - slipped
+    running.mass -= gone
+    problem.stops.forEach((s, i) => {
+      running.stops[i] = (running.stops[i] ?? 0) - gone * (s.byFault[f] ?? 0)
+    })
+  }
+  return wrong * problem.comeback
 }
 
 /** A lower bound at any size: each fault at its stop or its cheapest cure alone. */
@@ -157,7 +181,8 @@ function inOrder(problem: Problem, spot: Spot): number[] {
     const repair = problem.repairs[index]
     const priced = repair === undefined ? null : priceOf(problem, { ...spot, index }, repair)
     if (repair === undefined || priced === null) return { index, ratio: 0 }
-    const cured = spot.w.reduce((sum, x, f) => sum + x * (1 - (repair.fails[f] ?? 1)), 0)
+    let cured = 0
+    for (const f of repair.cures) cured += (spot.w[f] ?? 0) * (1 - (repair.fails[f] ?? 1))
     return { index, ratio: cured / Math.max(priced.price, 1e-12) }
   })
   return worth

@@ -68,7 +68,7 @@ export function budgetOf(input: ReadingInput): Budget {
 }
 
 /** The half-widths of the independent rectangles behind a budget: meter and meter temperature are one. */
-export function rectangles(lines: readonly BudgetLine[]): number[] {
+export function rectangles(lines: readonly Pick<BudgetLine, 'source' | 'halfWidth'>[]): number[] {
   return groups(lines)
 }
 

@@ -6,9 +6,10 @@
 import { AppError } from '@/lib/model/result'
 import type { SearchState, SingleModel } from './troubleshoot-model'
 
-/** A repair: `fails[f]` is the chance that fault f survives it. */
+/** A repair: `fails[f]` is the chance that fault f survives it; `cures` lists the faults it may mend. */
 export type Repair = {
   id: string
+  cures: readonly number[]
   price: number
   minutes: number
   setups: number
@@ -35,6 +36,8 @@ export type Problem = {
   closed: number
   /** Chance that the test run passes wrongly, per fault, and what a comeback then costs. */
   falsePass: Float64Array
+  /** Whether any test run can pass wrongly. */
+  slips: boolean
   comeback: number
   /** Minutes in all; infinite without daylight. */
   daylight: number
@@ -69,6 +72,7 @@ export function problemOf(model: SingleModel): Problem {
     .filter((r) => r.needsPart === undefined || onHand.has(r.needsPart))
     .map((r) => ({
       id: r.id,
+      cures: faults.flatMap((f, i) => ((r.fixes[f] ?? 0) > 0 ? [i] : [])),
       price: r.cost + rate * r.minutes + testPrice,
       minutes: r.minutes + test.minutes,
       setups: maskOf(r.setup),
@@ -101,6 +105,7 @@ export function problemOf(model: SingleModel): Problem {
     })),
     closed: closedMask(model, closure),
     falsePass: Float64Array.from(faults, (f) => falsePassOf(test.falsePass, f)),
+    slips: faults.some((f) => falsePassOf(test.falsePass, f) > 0),
     comeback: test.comebackCost ?? 0,
     daylight: model.daylight?.minutes ?? Number.POSITIVE_INFINITY,
   }

@@ -16,6 +16,9 @@ import {
   priceOf,
 } from './search-steps'
 
+/** A child is followed this much further than needed: fewer returns for a few expansions more. */
+const EAGER = 0.01
+
 export type ActionType = 'check' | 'repair' | 'stop'
 
 /** An action at a point; `bound` is at most its true cost, and equals it when `exact`. */
@@ -134,7 +137,8 @@ function deepen(
   for (const child of option.children) {
     if (child.solved) continue
     if (option.bound > upTo) return
-    solve(search, child, child.bound + Math.max(0, upTo - option.bound) + search.slack)
+    const room = Math.max(0, upTo - option.bound) + search.slack + EAGER * child.bound
+    solve(search, child, child.bound + room)
     refresh(option)
   }
 }
@@ -152,7 +156,7 @@ function refresh(option: Option): void {
 
 function optionsAt(search: Search, point: Point): Option[] {
   const { problem } = search
-  const blank = { fixed: 0, exact: false, children: null }
+  const common = commonOf(search, point)
   const { stop, cost } = bestStop(problem, point.w)
   const options: Option[] = []
   if (stop >= 0)
@@ -167,8 +171,9 @@ function optionsAt(search: Search, point: Point): Option[] {
       bound: cost,
     })
   eachLeft(search, point, (type, priced) => {
-    const bound = (type === 'repair' ? repairBound : checkBound)(search, point, priced)
-    options.push({ ...blank, ...priced, type, bound })
+    const { index, price, minutes } = priced
+    const bound = boundOf(search, point, { type, priced, common })
+    options.push({ type, index, price, minutes, bound, fixed: 0, exact: false, children: null })
   })
   return options
 }
@@ -208,17 +213,33 @@ function repairBound({ problem, known }: Search, point: Point, at: Priced): numb
   return total
 }
 
-function checkBound({ problem, known }: Search, point: Point, at: Priced): number {
-  const open = point.open | (problem.checks[at.index]?.setups ?? 0)
-  const costs = known(open, point.repairs, point.elapsed + at.minutes)
-  return at.price * massOf(point.w) + dot(point.w, costs)
+/** What all checks of a point share: its mass, and the known costs when nothing new is opened. */
+type Common = { mass: number; known: number | null }
+
+function commonOf({ known, problem }: Search, { w, open, repairs, elapsed }: Point): Common {
+  const timeless = problem.daylight === Number.POSITIVE_INFINITY
+  return { mass: massOf(w), known: timeless ? dot(w, known(open, repairs, elapsed)) : null }
+}
+
+function boundOf(
+  search: Search,
+  point: Point,
+  { type, priced, common }: { type: 'check' | 'repair'; priced: Priced; common: Common },
+): number {
+  if (type === 'repair') return repairBound(search, point, priced)
+  const setups = search.problem.checks[priced.index]?.setups ?? 0
+  const opens = (setups & ~point.open) !== 0
+  if (common.known !== null && !opens) return priced.price * common.mass + common.known
+  const costs = search.known(point.open | setups, point.repairs, point.elapsed + priced.minutes)
+  return priced.price * common.mass + dot(point.w, costs)
 }
 
 /** The least bound over the actions of a point: one step further than "the fault is known". */
 function lowerBound(search: Search, point: Point): number {
+  const common = commonOf(search, point)
   let least = bestStop(search.problem, point.w).cost
   eachLeft(search, point, (type, priced) => {
-    const bound = (type === 'repair' ? repairBound : checkBound)(search, point, priced)
+    const bound = boundOf(search, point, { type, priced, common })
     if (bound < least) least = bound
   })
   return least

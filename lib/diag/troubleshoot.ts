@@ -19,7 +19,7 @@ import { leftOf, MOST_IN_MASK, openOf, type Problem, problemOf, weightsOf } from
 import { massOf } from './search-steps'
 import type { NoisyOrModel, SearchState, SingleModel } from './troubleshoot-model'
 
-/** Expansions allowed when the caller names none, at 8 faults and 17 actions; wider models get fewer. */
+/** Expansions allowed when the caller names none, at 8 faults and 17 actions; wider models get fewer, by the square. */
 export const DEFAULT_LIMIT = 20_000
 const WIDTH = 8 * 17
 
@@ -69,7 +69,7 @@ function searched(
   limit: number,
 ): { exact: true; answer: NextAction } | { exact: false; search: Search } {
   const width = problem.faults.length * (problem.checks.length + problem.repairs.length)
-  const search = startSearch(problem, Math.ceil(Math.min(limit, (limit * WIDTH) / width)))
+  const search = startSearch(problem, Math.ceil(limit * Math.min(1, (WIDTH / width) ** 2)))
   const mask = (left: readonly number[]) => left.reduce((m, i) => m | (1 << i), 0)
   const { w, open, elapsed } = spot
   const point = {

@@ -11,12 +11,12 @@ import type { Sight } from './evidence-table'
 import { type OutcomeTable, TABLE_FLOOR } from './factor'
 import { phi } from './normal'
 import { canDecide, type MeterFitness } from './reading'
-import { budgetOf, limitsOf, type ReadingInput } from './reading-budget'
+import { budgetOf, limitsOf, type ReadingInput, rectangles } from './reading-budget'
 
 const VERDICTS = ['in', 'tooClose', 'outLow', 'outHigh'] as const
 
 /** True values looked at in each piece. */
-const SAMPLES = 48
+const SAMPLES = 24
 
 /** The spec of a check on this machine: the sheet's figure, else the book's fallback limits, else null. */
 export function specFor({ spec }: Case, check: CheckItem): SpecValue | null {
@@ -81,9 +81,10 @@ export function verdictTable({ c, place }: Sight, check: CheckItem): OutcomeTabl
   const nominal = nominalOf(spec, model)
   if (input === null || nominal === null) return null
   const seats = VERDICTS.map((v) => check.outcomes.findIndex((o) => o.id === v))
-  const edges = edgesOf(input, limits)
+  const u = uAlong(input)
+  const edges = edgesOf(u, limits)
   const row = (pieces: readonly Piece[]) =>
-    rowOf({ pieces, nominal, edges, input, seats, count: check.outcomes.length })
+    rowOf({ pieces, nominal, edges, u, seats, count: check.outcomes.length })
   const otherwise = row(model.good)
   if (otherwise === null) return null
   const rows = new Map<number, readonly number[]>()
@@ -100,51 +101,65 @@ type Input = Omit<ReadingInput, 'value' | 'overRange'>
 /** Estimates at which the verdict turns: outLow up to a, in from b to c, outHigh from d. */
 type Edges = { a: number; b: number; c: number; d: number }
 
-function edgesOf(input: Input, { low, high }: { low: number | null; high: number | null }): Edges {
+function edgesOf(
+  u: (estimate: number) => number,
+  { low, high }: { low: number | null; high: number | null },
+): Edges {
   const none = Number.NEGATIVE_INFINITY
   return {
-    a: low === null ? none : turning(input, low, 2),
-    b: low === null ? none : turning(input, low, -2),
-    c: high === null ? Number.POSITIVE_INFINITY : turning(input, high, 2),
-    d: high === null ? Number.POSITIVE_INFINITY : turning(input, high, -2),
+    a: low === null ? none : turning(u, low, 2),
+    b: low === null ? none : turning(u, low, -2),
+    c: high === null ? Number.POSITIVE_INFINITY : turning(u, high, 2),
+    d: high === null ? Number.POSITIVE_INFINITY : turning(u, high, -2),
   }
 }
 
 /** The estimate y at which y + k u(y) meets the limit; u grows slower than y, so there is just one. */
-function turning(input: Input, limit: number, k: number): number {
-  const reach = 10 * (Math.abs(limit) + uAt(input, limit))
+function turning(u: (estimate: number) => number, limit: number, k: number): number {
+  const reach = 10 * (Math.abs(limit) + u(limit))
   let from = limit - reach
   let to = limit + reach
-  for (let i = 0; i < 100; i++) {
+  for (let i = 0; i < 60; i++) {
     const y = (from + to) / 2
-    if (y + k * uAt(input, y) < limit) from = y
+    if (y + k * u(y) < limit) from = y
     else to = y
   }
   return (from + to) / 2
 }
 
-function uAt(input: Input, estimate: number): number {
+/** u by estimate: every half-width of a budget grows straight with the value, so two budgets give them all. */
+function uAlong(input: Input): (estimate: number) => number {
   const leads = input.quantity === 'resistance' && !input.nulled
   const shift = leads ? (input.leadsOhm.low + input.leadsOhm.high) / 2 : 0
-  return budgetOf({ ...input, value: estimate + shift, overRange: false }).standardU
+  const at = (value: number) => budgetOf({ ...input, value, overRange: false })
+  const [none, one] = [at(shift), at(shift + 1)]
+  const lines = one.lines.map(({ source, halfWidth }) => {
+    const start = none.lines.find((line) => line.source === source)?.halfWidth ?? 0
+    return { source, halfWidth: start, slope: (halfWidth - start) / (one.estimate - none.estimate) }
+  })
+  return (estimate) => {
+    const size = Math.max(0, estimate)
+    const widths = lines.map((l) => ({ ...l, halfWidth: l.halfWidth + l.slope * size }))
+    return Math.sqrt(rectangles(widths).reduce((sum, a) => sum + (a * a) / 3, 0))
+  }
 }
 
 type RowOf = {
   pieces: readonly Piece[]
   nominal: number
   edges: Edges
-  input: Input
+  u: (estimate: number) => number
   seats: readonly number[]
   count: number
 }
 
-function rowOf({ pieces, nominal, edges, input, seats, count }: RowOf): number[] | null {
+function rowOf({ pieces, nominal, edges, u, seats, count }: RowOf): number[] | null {
   const total = pieces.reduce((sum, p) => sum + p.weight, 0)
   const verdicts = [0, 0, 0, 0]
   for (const { weight, from, to } of pieces)
     for (let i = 0; i < SAMPLES; i++) {
       const t = nominal * (from + ((i + 0.5) / SAMPLES) * (to - from))
-      const shares = sharesAt(t, uAt(input, t), edges)
+      const shares = sharesAt(t, u(t), edges)
       shares.forEach((p, v) => {
         verdicts[v] = (verdicts[v] ?? 0) + (p * weight) / total / SAMPLES
       })
