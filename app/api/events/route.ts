@@ -18,7 +18,8 @@ export const GET = (request: Request) =>
     const wait = spend(ALLOWANCES.stream, actor.personId, systemClock.now())
     if (wait !== null) return problemAnswer({ kind: 'tooMany', retryAfterSeconds: wait })
     const hub = eventHub()
-    if (hub.size >= MAX_STREAMS) return problemAnswer({ kind: 'busy', retryAfterSeconds: 30 })
+    if (hub.isClosed || hub.size >= MAX_STREAMS)
+      return problemAnswer({ kind: 'busy', retryAfterSeconds: 30 })
     const roles = actor.roles.join()
     const isStillGood = async () => (await actorOfRequest(request))?.roles.join() === roles
     const lastEventId = request.headers.get('last-event-id')

@@ -30,6 +30,7 @@ export class EventHub {
   readonly #shops = new Map<Id, ShopEar>()
   readonly #streams = new Set<() => void>()
   readonly #ear: Ear
+  #isClosed = false
 
   constructor(listen: (listener: ChangeListener) => Ear = listenForChanges) {
     this.#ear = listen({
@@ -38,6 +39,11 @@ export class EventHub {
         for (const shopId of this.#shops.keys()) this.#read(shopId)
       },
     })
+  }
+
+  /** True once the process is ending: a desk that comes back now would keep it from stopping. */
+  get isClosed(): boolean {
+    return this.#isClosed
   }
 
   /** Open streams of this process. */
@@ -112,6 +118,7 @@ export class EventHub {
 
   /** Ends every stream and stops listening: an open stream would keep the server from stopping. */
   async close(): Promise<void> {
+    this.#isClosed = true
     for (const close of [...this.#streams]) close()
     await this.#ear.close()
   }
@@ -119,7 +126,7 @@ export class EventHub {
 
 const HUB = Symbol.for('farbench.events')
 
-/** The hub of this process, made at the first use; it ends with SIGTERM or SIGINT. */
+/** The hub of this process, made at the first use; it ends with SIGTERM or SIGINT, and none follows it. */
 export function eventHub(): EventHub {
   const holder = globalThis as { [key: symbol]: EventHub | undefined }
   const known = holder[HUB]
@@ -127,10 +134,7 @@ export function eventHub(): EventHub {
   const hub = new EventHub()
   holder[HUB] = hub
   for (const signal of ['SIGTERM', 'SIGINT'] as const) {
-    process.once(signal, () => {
-      holder[HUB] = undefined
-      void hub.close()
-    })
+    process.once(signal, () => void hub.close())
   }
   return hub
 }
