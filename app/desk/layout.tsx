@@ -2,6 +2,7 @@ import { redirect } from 'next/navigation'
 import type { ReactNode } from 'react'
 import { DeskProvider } from '@/components/desk/desk-context'
 import { DeskHeader } from '@/components/desk/desk-header'
+import { LiveRegion } from '@/components/ui/live-region'
 import { readDeskShop } from '@/db/queries/desk-shop'
 import { actorOf } from '@/lib/auth/actor'
 import { may } from '@/lib/shop/permissions'
@@ -19,6 +20,7 @@ export default async function DeskLayout({ children }: { children: ReactNode }) 
     <DeskProvider actor={actor} shop={shop}>
       <DeskHeader />
       {children}
+      <LiveRegion />
     </DeskProvider>
   )
 }

@@ -2,7 +2,6 @@
 
 import { usePathname } from 'next/navigation'
 import { useEffect, useRef, useState } from 'react'
-import { LiveRegion } from '@/components/ui/live-region'
 import { may } from '@/lib/shop/permissions'
 import { SignOutKey } from '../sign-in/sign-out-key'
 import { useDesk } from './desk-context'
@@ -38,7 +37,6 @@ export function DeskHeader() {
       </nav>
       <LineState />
       <PersonMenu />
-      <LiveRegion />
     </header>
   )
 }
