@@ -1,11 +1,10 @@
-import { asShop } from '@/db/client'
+import { asShop, type ShopTx } from '@/db/client'
 import { pullPage } from '@/db/queries/change-log'
 import { noteDevice } from '@/db/queries/devices'
 import type { Id } from '@/lib/model/id'
 import type { Actor } from '@/lib/model/person'
 import { fail, ok, type Result } from '@/lib/model/result'
 import {
-  type Cursor,
   PAGE_ROWS,
   PROTOCOL,
   type PullAnswer,
@@ -62,38 +61,34 @@ export async function exchange(with_: Exchange): Promise<SyncResponse> {
   const { device, message, now, newId } = with_
   const at = new Date(now).toISOString()
   const pushed = await takePush(message.ops, { ...device, at, newId })
-  await noteContact(with_, at)
-  return { protocol: PROTOCOL, serverTime: at, ...pushed, pull: await pullFor(with_) }
+  const pull = await asShop(device.actor.shopId, async (tx) => {
+    await noteDevice(tx, contactOf(with_, at))
+    return await pullFor(tx, with_)
+  })
+  return { protocol: PROTOCOL, serverTime: at, ...pushed, pull }
 }
 
-/** What the phone's clock is ahead of ours, in ms; null when it says nothing readable. */
-function offsetOf(clientTime: string, now: number): number | null {
-  const said = Date.parse(clientTime)
-  return Number.isFinite(said) ? said - now : null
-}
-
-function noteContact({ device, message, dseq, now }: Exchange, at: string): Promise<void> {
-  return asShop(device.actor.shopId, (tx) =>
-    noteDevice(tx, {
-      id: device.deviceId,
-      at,
-      clockOffsetMs: offsetOf(message.clientTime, now),
-      highestDseq: dseq?.last ?? null,
-    }),
-  )
+/** What the shop notes of a phone that reached it: its clock, and how far its numbers have come (P22). */
+function contactOf({ device, message, dseq, now }: Exchange, at: string) {
+  const said = Date.parse(message.clientTime)
+  return {
+    id: device.deviceId,
+    at,
+    clockOffsetMs: Number.isFinite(said) ? said - now : null,
+    highestDseq: dseq?.last ?? null,
+  }
 }
 
 /** A pull needs the session of the very person whose phone asks; anybody else's is no session (P18). */
-async function pullFor({ device, session, message }: Exchange): Promise<PullAnswer> {
+async function pullFor(tx: ShopTx, { device, session, message }: Exchange): Promise<PullAnswer> {
   if (!message.pull) return { kind: 'notAsked' }
   const { shopId, personId } = device.actor
   if (session?.shopId !== shopId || session.personId !== personId) return { kind: 'signIn' }
-  return await asShop(shopId, (tx) =>
-    pullPage(tx, {
-      actor: device.actor,
-      cursor: message.cursor as Cursor | null,
-      limit: PAGE_ROWS,
-      deviceId: device.deviceId,
-    }),
-  )
+  const { cursor } = message
+  return await pullPage(tx, {
+    actor: device.actor,
+    cursor,
+    limit: PAGE_ROWS,
+    deviceId: device.deviceId,
+  })
 }
