@@ -67,7 +67,7 @@ function OneCheck({ jobId, check, index, found }: Props) {
       <WhereItIs check={check} spec={found.spec} index={index} />
       <section aria-labelledby="steps" className="grid gap-3">
         <RuleEdge id="steps">Steps</RuleEdge>
-        {check.cautions.map((one) => (
+        {generalCautions(check).map((one) => (
           <Caution key={one.text} signal={one.signal}>
             {one.text}
           </Caution>
@@ -84,4 +84,10 @@ function OneCheck({ jobId, check, index, found }: Props) {
       />
     </Screen>
   )
+}
+
+/** Those of the whole check; one that belongs to a step stands before that step. */
+function generalCautions(check: CheckItem): CheckItem['cautions'] {
+  const ofSteps = new Set(check.steps.map((step) => step.caution?.text))
+  return check.cautions.filter((caution) => !ofSteps.has(caution.text))
 }

@@ -1,16 +1,21 @@
 'use client'
 import { useState } from 'react'
 import type { BookIndex } from '@/lib/diag/book-index'
+import { living } from '@/lib/diag/case'
 import type { Plan } from '@/lib/diag/plan'
 import type { Id } from '@/lib/model/id'
 import type { LogEntry } from '@/lib/model/log-entry'
+import { decidesWords, nextOutlook } from '../engine/decides'
+import { useBelief } from '../engine/use-belief'
 import { useCase } from '../engine/use-case'
 import { type PlanView, usePlan } from '../engine/use-plan'
-import { type Answer, outlookKey } from '../engine/work'
+import type { Answer, OutlookRow } from '../engine/work'
+import { proofSentence } from '../outcome/proof-words'
 import { useBook } from '../store/use-book'
 import { useShop } from '../store/use-rows'
 import { SuspectRows } from '../suspects/suspect-rows'
 import { Key, KeyLink } from '../ui/key'
+import { Plate } from '../ui/plate'
 import { RuleEdge } from '../ui/rule-edge'
 import { Screen } from '../ui/screen'
 import { AssumesPanel } from './assumes-panel'
@@ -27,6 +32,8 @@ import { entryWords } from './words'
 export function ChecksScreen({ jobId }: { jobId: Id }) {
   const { index } = useBook()
   const found = useCase(jobId)
+  // Asked before the plan: the suspects are there at once, the plan may take its time.
+  const suspects = useBelief(jobId)
   const plan = usePlan(jobId)
   const symptom =
     found !== null &&
@@ -35,16 +42,16 @@ export function ChecksScreen({ jobId }: { jobId: Id }) {
     <BookGate>
       {found !== null && !symptom ? (
         <NoSymptom jobId={jobId} />
-      ) : index === null || plan.answer?.plan == null ? (
-        <Waiting view={plan} />
+      ) : index === null || found === null || suspects.answer === null ? (
+        <Waiting failed={suspects.failed} />
       ) : (
         <Ready
           jobId={jobId}
           index={index}
           view={plan}
-          answer={plan.answer}
-          plan={plan.answer.plan}
-          entries={found?.entries ?? []}
+          belief={suspects.answer.belief}
+          stale={suspects.working}
+          entries={found.entries}
         />
       )}
     </BookGate>
@@ -69,10 +76,10 @@ function NoSymptom({ jobId }: { jobId: Id }) {
   )
 }
 
-function Waiting({ view }: { view: PlanView }) {
+function Waiting({ failed }: { failed: boolean }) {
   return (
     <Screen title="Checks">
-      {view.failed ? (
+      {failed ? (
         <p role="alert">
           The sums could not be done for this job. Nothing recorded is lost, and notes, readings and
           the way out can still be recorded.
@@ -88,52 +95,112 @@ type ReadyProps = {
   jobId: Id
   index: BookIndex
   view: PlanView
-  answer: Answer
-  plan: Plan
+  belief: Answer['belief']
+  /** A newer entry is being worked into the suspects. */
+  stale: boolean
   entries: readonly LogEntry[]
 }
 
-function Ready({ jobId, index, view, answer, plan, entries }: ReadyProps) {
-  const [open, setOpen] = useState<string | null>(null)
+function Ready({ jobId, index, view, belief, stale, entries }: ReadyProps) {
   const shop = useShop()
   const actOn = useActOn(jobId, view)
-  const { next } = plan
-  const outlook =
-    next.type === 'check' || next.type === 'swap'
-      ? (answer.outlooks[outlookKey({ kind: next.type, id: next.id })] ?? [])
-      : []
-  useFirstSaid(jobId, answer.belief.suspects)
+  const plan = view.answer?.plan ?? null
   const currency = shop?.currency ?? ''
+  const run = cleanRun(entries)
+  useFirstSaid(jobId, belief.suspects)
   return (
     <Screen
       title="Checks"
       titleHidden
       foot={
-        <Key kind="main" onClick={() => actOn(next, null)}>
-          {START[next.type]}
-        </Key>
+        <StartKey
+          jobId={jobId}
+          plan={plan}
+          view={view}
+          run={run}
+          onPress={(next) => actOn(next, null)}
+        />
       }
     >
-      <NextPlate plan={plan} index={index} />
-      <section aria-labelledby="suspects" className="grid gap-2">
-        <RuleEdge id="suspects">Suspects, of 100</RuleEdge>
-        <p className="text-second text-ink2">
-          more than one can be true{view.working ? ' · working out the newest entry' : ''}
-        </p>
-        <Notices notices={answer.belief.notices} />
-        <SuspectRows
-          suspects={answer.belief.suspects}
-          outlook={outlook}
-          open={open}
-          onOpen={setOpen}
-          entryWords={(id) => wordsOf(id, entries, index)}
-          why={(suspect) => <WhyView suspect={suspect} entries={entries} index={index} />}
-        />
-      </section>
-      <RunnerUp plan={plan} currency={currency} index={index} actOn={actOn} />
-      <OtherChecks plan={plan} currency={currency} index={index} actOn={actOn} />
+      {plan === null ? (
+        <NoPlanYet failed={view.failed} />
+      ) : (
+        <Top plan={plan} answer={view.answer} index={index} run={run} />
+      )}
+      <Suspects
+        index={index}
+        belief={belief}
+        outlook={view.working ? [] : nextOutlook(view.answer)}
+        entries={entries}
+        stale={stale}
+      />
+      {plan !== null && (
+        <>
+          <RunnerUp plan={plan} currency={currency} index={index} actOn={actOn} />
+          <OtherChecks plan={plan} currency={currency} index={index} actOn={actOn} />
+        </>
+      )}
       <AssumesPanel jobId={jobId} view={view.means} shop={shop} bookVersion={index.version} />
     </Screen>
+  )
+}
+
+function NoPlanYet({ failed }: { failed: boolean }) {
+  return (
+    <p role="status" className="border-2 border-ink p-4">
+      {failed
+        ? 'The next step could not be worked out. Pick a check from the code book or a way out.'
+        : 'Working out the next best check.'}
+    </p>
+  )
+}
+
+/** The clean proof run of the last fix; null while there is none. */
+function cleanRun(entries: readonly LogEntry[]) {
+  const kept = living(entries)
+  const fix = kept.findLastIndex(({ body }) => body.kind === 'fix')
+  const run = kept.findLast(({ body }, i) => i > fix && body.kind === 'proofRun')
+  return fix >= 0 && run?.body.kind === 'proofRun' && run.body.faults === 0 ? run.body : null
+}
+type CleanRun = ReturnType<typeof cleanRun>
+
+type TopProps = { plan: Plan; answer: Answer | null; index: BookIndex; run: CleanRun }
+
+/** The plate of the next step; once the fix has its clean proof run, what that proves. */
+function Top({ plan, answer, index, run }: TopProps) {
+  if (plan.stage === 'prove' && run !== null)
+    return (
+      <Plate>
+        <p className="text-second text-scribe2">Fixed, and run without the fault</p>
+        <p className="mt-1 text-row font-bold">{proofSentence(run)}</p>
+      </Plate>
+    )
+  const decides = answer === null ? plan.decides : decidesWords(answer, plan)
+  return <NextPlate plan={plan} decides={decides} index={index} />
+}
+
+type StartProps = {
+  jobId: Id
+  plan: Plan | null
+  view: PlanView
+  run: CleanRun
+  onPress: (next: Plan['next']) => void
+}
+
+/** The main key; locked while a newer entry is being worked in, so that no old advice is followed. */
+function StartKey({ jobId, plan, view, run, onPress }: StartProps) {
+  if (plan === null) return null
+  if (plan.stage === 'prove' && run !== null)
+    return (
+      <KeyLink kind="main" href={`/field/jobs/${jobId}/wayout`}>
+        To the way out
+      </KeyLink>
+    )
+  const words = plan.stage === 'prove' ? 'Start the proof run' : START[plan.next.type]
+  return (
+    <Key kind="main" disabled={view.working} onClick={() => onPress(plan.next)}>
+      {view.working ? 'Working it out' : words}
+    </Key>
   )
 }
 
@@ -143,6 +210,35 @@ const START = {
   repair: 'Do this repair',
   stop: 'Choose a way out',
 } as const
+
+type SuspectsProps = {
+  index: BookIndex
+  belief: Answer['belief']
+  outlook: readonly OutlookRow[]
+  entries: readonly LogEntry[]
+  stale: boolean
+}
+
+function Suspects({ index, belief, outlook, entries, stale }: SuspectsProps) {
+  const [open, setOpen] = useState<string | null>(null)
+  return (
+    <section aria-labelledby="suspects" className="grid gap-2">
+      <RuleEdge id="suspects">Suspects, of 100</RuleEdge>
+      <p className="text-second text-ink2">
+        more than one can be true{stale ? ' · working in the newest entry' : ''}
+      </p>
+      <Notices notices={belief.notices} />
+      <SuspectRows
+        suspects={belief.suspects}
+        outlook={outlook}
+        open={open}
+        onOpen={setOpen}
+        entryWords={(id) => wordsOf(id, entries, index)}
+        why={(suspect) => <WhyView suspect={suspect} entries={entries} index={index} />}
+      />
+    </section>
+  )
+}
 
 function Notices({ notices }: { notices: Answer['belief']['notices'] }) {
   if (notices.length === 0) return null

@@ -12,13 +12,17 @@ const HEADINGS: Record<PlannedAction['type'], string> = {
   stop: 'Next best step: a way out',
 }
 
+type Props = { plan: Plan; decides: string; index: BookIndex }
+
 /** The plate: what to do next, what it takes, what it decides. No score. */
-export function NextPlate({ plan, index }: { plan: Plan; index: BookIndex }) {
+export function NextPlate({ plan, decides, index }: Props) {
   const { next } = plan
   return (
     <Plate>
-      <p className="text-second text-scribe2">{HEADINGS[next.type]}</p>
-      <h2 className="caps mt-1 text-[2.25rem]/none">{next.name}</h2>
+      <p className="text-second text-scribe2">
+        {plan.stage === 'prove' ? 'Next: the proof run' : HEADINGS[next.type]}
+      </p>
+      <h2 className="caps mt-1 text-plate">{next.name}</h2>
       <p className="mt-2 flex flex-wrap items-baseline gap-x-4 gap-y-1">
         <span className="figures text-key">{minutesWords(next.minutes)}</span>
         <span className="text-second text-scribe2">
@@ -26,7 +30,7 @@ export function NextPlate({ plan, index }: { plan: Plan; index: BookIndex }) {
           {next.people > 1 ? ', two people' : ''}
         </span>
       </p>
-      {plan.decides !== '' && <p className="mt-2 text-body">{plan.decides}</p>}
+      <p className="mt-2 text-body">{decides}</p>
       {next.caution !== null && (
         <Caution signal={next.caution.signal} onPlate className="mt-3">
           {firstSentence(next.caution.text)}

@@ -1,7 +1,9 @@
 'use client'
 import { useState } from 'react'
 import type { BookIndex } from '@/lib/diag/book-index'
-import type { Plan } from '@/lib/diag/plan'
+import type { Plan, PlannedAction } from '@/lib/diag/plan'
+import { WAYS_OUT, type WayOut } from '@/lib/model/job'
+import { WAY_OUT_WORDS } from '../field/words'
 import { Key } from '../ui/key'
 import { RuleEdge } from '../ui/rule-edge'
 import { toolWords } from './next-plate'
@@ -29,7 +31,7 @@ export function OtherChecks({ plan, currency, index, actOn }: Props) {
           Other steps
         </RuleEdge>
         <p className="text-second text-ink2">
-          In the order of what the whole rest of the job is expected to cost.
+          The figure is what the rest of the job is expected to cost more, in {currency}.
         </p>
         <ul>
           {rest.map((one) => (
@@ -39,7 +41,7 @@ export function OtherChecks({ plan, currency, index, actOn }: Props) {
                 insteadOf={plan.next}
                 actOn={actOn}
                 second={`${minutesWords(one.minutes)}, ${toolWords(one.tools, index)}`}
-                end={`+${moneyWords(Math.max(0, Math.round(one.expectedCostMinor - plan.next.expectedCostMinor)), currency)}`}
+                end={dearer(one, plan, currency)}
               />
             </li>
           ))}
@@ -76,6 +78,12 @@ function LeftOut({ plan, index, actOn }: Omit<Props, 'currency'>) {
   )
 }
 
+/** `+52.91`, by the plan's own figures. */
+function dearer(one: PlannedAction, plan: Plan, currency: string): string {
+  const minor = Math.max(0, Math.round(one.expectedCostMinor - plan.next.expectedCostMinor))
+  return `+${moneyWords(minor, currency).replace(` ${currency}`, '')}`
+}
+
 type Left = Plan['leftOut'][number]
 
 const kindOf = (kind: Left['kind']): 'check' | 'swap' | 'repair' | 'stop' =>
@@ -85,4 +93,7 @@ const nameOf = (one: Left, index: BookIndex): string =>
   index.checks.get(one.id)?.name ??
   index.swaps.get(one.id)?.name ??
   index.faults.get(one.id)?.repair?.words ??
-  one.id
+  stopName(one.id)
+
+const stopName = (id: string): string =>
+  WAYS_OUT.includes(id as WayOut) ? WAY_OUT_WORDS[id as WayOut] : id

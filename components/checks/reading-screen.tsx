@@ -9,6 +9,7 @@ import { BookGate } from './book-gate'
 import { ReadingPad } from './reading-pad'
 import { SavedReading } from './saved-reading'
 import { useJustSaved } from './use-just-saved'
+import { NotYours, useMayLog } from './use-may'
 
 /** One reading: typed on the large keypad, judged as it is typed, kept, and what it did (F4). */
 export function ReadingScreen({ jobId, checkId }: { jobId: Id; checkId: string }) {
@@ -36,7 +37,14 @@ type Props = { jobId: Id; check: CheckItem; index: BookIndex; found: JobCase }
 
 function One({ jobId, check, index, found }: Props) {
   const { savedId, keepSaved, forget } = useJustSaved(found.entries)
+  const mine = useMayLog('reading', check.guideSafe)
   const saved = found.entries.find((entry) => entry.id === savedId)
+  if (!mine)
+    return (
+      <Screen title={check.name}>
+        <NotYours what="This reading" />
+      </Screen>
+    )
   return saved !== undefined && saved.body.kind === 'reading' ? (
     <SavedReading
       key={saved.id}

@@ -12,6 +12,7 @@ import { RuleEdge } from '../ui/rule-edge'
 import { aboutInstant } from './about-time'
 import { useTimesDone } from './check-steps'
 import { FRESH, type HowDone, HowDoneForm } from './how-done'
+import { NotYours, useMayLog } from './use-may'
 import { NotSaved, useSave } from './use-save'
 import { entryWords } from './words'
 
@@ -25,12 +26,16 @@ type Props = {
 }
 
 /** What was found: one big key per named outcome, "could not", and how and when it was done. */
-export function RecordOutcome({ jobId, check, index, before, onSaved }: Props) {
+export function RecordOutcome(props: Props) {
+  const mine = useMayLog('check', props.check.guideSafe)
+  return mine ? <Recording {...props} /> : <NotYours what="This check" />
+}
+
+function Recording({ jobId, check, index, before, onSaved }: Props) {
   const { value: how, set, how: outcome } = useOutcome(jobId, check, onSaved)
-  const timeProblem =
-    how.earlier && outcome.happenedAt() === null ? 'Type the time as 14:05.' : null
-  const blocked =
-    outcome.saving || timeProblem !== null || (!how.asWritten && how.differed.trim() === '')
+  const timeUnread = how.earlier && outcome.happenedAt() === null
+  const timeProblem = timeUnread && how.about !== '' ? 'Type the time as 14:05.' : null
+  const blocked = outcome.saving || timeUnread || (!how.asWritten && how.differed.trim() === '')
   return (
     <section aria-labelledby="found" className="grid gap-4">
       <RuleEdge id="found">What did you find</RuleEdge>

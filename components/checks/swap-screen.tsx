@@ -18,6 +18,7 @@ import { type SwapProgress, swapProgress } from './swap-progress'
 import { SwapStepForm } from './swap-step-form'
 import { UndoBar } from './undo-bar'
 import { useJustSaved } from './use-just-saved'
+import { NotYours, useMayLog } from './use-may'
 import { minutesWords } from './words'
 
 /** A swap done properly: good part in, old part back, new part in, each step its own line of the log (F5). */
@@ -50,6 +51,7 @@ function OneSwap({ jobId, swap, index, found }: Props) {
   const progress = swapProgress(swap.id, living(found.entries))
   const { savedId, keepSaved, forget } = useJustSaved(found.entries)
   const part = wordName(index, 'part', swap.part)
+  const mine = useMayLog('swap', swap.guideSafe)
   return (
     <Screen
       title={swap.name}
@@ -80,13 +82,17 @@ function OneSwap({ jobId, swap, index, found }: Props) {
             </Caution>
           ))}
           <How swap={swap} begun={progress.done.length > 0} />
-          <SwapStepForm
-            jobId={jobId}
-            swap={swap}
-            part={part}
-            step={progress.next}
-            onSaved={keepSaved}
-          />
+          {mine ? (
+            <SwapStepForm
+              jobId={jobId}
+              swap={swap}
+              part={part}
+              step={progress.next}
+              onSaved={keepSaved}
+            />
+          ) : (
+            <NotYours what="This swap" />
+          )}
         </>
       )}
     </Screen>

@@ -1,6 +1,6 @@
 'use client'
 import { useCallback } from 'react'
-import type { PlannedAction } from '@/lib/diag/plan'
+import type { Plan, PlannedAction } from '@/lib/diag/plan'
 import type { Id } from '@/lib/model/id'
 import { adviceOf } from '../engine/advice'
 import type { PlanView } from '../engine/use-plan'
@@ -26,6 +26,10 @@ export function hrefOf(jobId: Id, action: Act): string {
   }
 }
 
+/** With a fix in, the step that is left is its proof run. */
+const proving = (plan: Plan | null | undefined, action: Act): boolean =>
+  plan?.stage === 'prove' && action.type === 'repair' && action.id === plan.next.id
+
 /** Starts a step, and keeps the advice that was on the screen as followed or overridden (rule R23). */
 export function useActOn(jobId: Id, view: PlanView): ActOn {
   const { go } = useRoute()
@@ -35,7 +39,8 @@ export function useActOn(jobId: Id, view: PlanView): ActOn {
   return useCallback(
     (action, reason) => {
       const { answer, input, asked } = view
-      const leave = () => go(hrefOf(jobId, action))
+      const leave = () =>
+        go(proving(answer?.plan, action) ? `/field/jobs/${jobId}/proof` : hrefOf(jobId, action))
       if (answer?.plan == null || input === null || version === null) {
         leave()
         return

@@ -9,7 +9,7 @@ import type { Machine } from '@/lib/model/machine'
 import type { MeterProfile } from '@/lib/model/meter-profile'
 import { useLog } from '../store/use-log'
 import { useBag, useJob, useMachines, useMeters, useModels } from '../store/use-rows'
-import { specForEngine } from './advice'
+import { specForEngine } from './spec-kept'
 import type { CaseInput } from './work'
 
 export type JobCase = {

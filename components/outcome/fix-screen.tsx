@@ -5,6 +5,7 @@ import type { Id } from '@/lib/model/id'
 import type { LogEntry } from '@/lib/model/log-entry'
 import { UndoBar } from '../checks/undo-bar'
 import { useJustSaved } from '../checks/use-just-saved'
+import { NotYours, useMayLog } from '../checks/use-may'
 import { useCase } from '../engine/use-case'
 import { clockTime } from '../field/times'
 import { useBook } from '../store/use-book'
@@ -19,6 +20,7 @@ export function FixScreen({ jobId }: { jobId: Id }) {
   const found = useCase(jobId)
   const { savedId, keepSaved, forget } = useJustSaved(found?.entries ?? [])
   const [another, setAnother] = useState(false)
+  const mine = useMayLog('fix')
   if (found === null)
     return (
       <Screen title="Fix">
@@ -30,6 +32,13 @@ export function FixScreen({ jobId }: { jobId: Id }) {
     keepSaved(id)
     setAnother(false)
   }
+  if (!mine)
+    return (
+      <Screen title="Fix">
+        <Fixes fixes={fixes} />
+        <NotYours what="Recording a fix" />
+      </Screen>
+    )
   if (fixes.length === 0 || another)
     return (
       <FixForm jobId={jobId} onSaved={saved}>

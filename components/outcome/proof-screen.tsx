@@ -6,6 +6,7 @@ import type { LogEntry } from '@/lib/model/log-entry'
 import { useFocusTitle } from '../checks/saved-outcome'
 import { UndoBar } from '../checks/undo-bar'
 import { useJustSaved } from '../checks/use-just-saved'
+import { NotYours, useMayLog } from '../checks/use-may'
 import { NotSaved, useSave } from '../checks/use-save'
 import { type JobCase, useCase } from '../engine/use-case'
 import { useStamp } from '../store/use-stamp'
@@ -31,6 +32,7 @@ export function ProofScreen({ jobId }: { jobId: Id }) {
   const found = useCase(jobId)
   const { savedId, keepSaved, forget } = useJustSaved(found?.entries ?? [])
   const saved = found?.entries.find((entry) => entry.id === savedId)
+  const mine = useMayLog('proofRun')
   if (found === null)
     return (
       <Screen title="Proof run">
@@ -39,6 +41,12 @@ export function ProofScreen({ jobId }: { jobId: Id }) {
     )
   if (saved !== undefined)
     return <SavedProof jobId={jobId} entry={saved} found={found} onUndone={forget} />
+  if (!mine)
+    return (
+      <Screen title="Proof run">
+        <NotYours what="The proof run" />
+      </Screen>
+    )
   return <Counting jobId={jobId} found={found} onSaved={keepSaved} />
 }
 

@@ -4,6 +4,7 @@ import { living } from '@/lib/diag/case'
 import type { Id } from '@/lib/model/id'
 import type { PartLine, PartRequest } from '@/lib/model/part-request'
 import type { Shop } from '@/lib/model/shop'
+import { NotYours, useMay } from '../checks/use-may'
 import { NotSaved, useSave } from '../checks/use-save'
 import { entryWords, moneyWords } from '../checks/words'
 import { useBelief } from '../engine/use-belief'
@@ -45,6 +46,13 @@ export function AskPartScreen({ jobId }: { jobId: Id }) {
   const found = useCase(jobId)
   const { index } = useBook()
   const shop = useShop()
+  const mine = useMay('part.ask')
+  if (!mine)
+    return (
+      <Screen title="Ask for a part">
+        <NotYours what="Asking for parts" />
+      </Screen>
+    )
   if (part === null || part === '')
     return (
       <Screen title="Ask for a part">
