@@ -8,7 +8,7 @@ describe('[R11] codes as seen', () => {
   test('takes the three numbers of the dash down as they stand', () => {
     const typed = draft({ module: '0', spn: '1268', fmi: '3', status: 'active' })
     expect(seenOf(typed)).toEqual({ ok: true, value: { format: 'spn', spn: 1268, fmi: 3 } })
-    expect(contextOf(typed, 1, null)).toEqual({
+    expect(contextOf(typed, 1)).toEqual({
       ok: true,
       value: { module: 0, status: 'active', count: null, order: 1, photo: null },
     })
@@ -55,7 +55,7 @@ describe('[R11] codes as seen', () => {
     [{ status: 'stored', module: '255', count: '126' }, null],
     [{ status: 'unknown' }, null],
   ] as const)('context %j', (typed, wrong) => {
-    const context = contextOf(draft(typed), 2, null)
+    const context = contextOf(draft(typed), 2)
     expect(context.ok ? null : context.problem.field).toBe(wrong)
     if (context.ok) {
       expect(codeContext.safeParse(context.value).success).toBe(true)

@@ -17,6 +17,8 @@ export type CodeDraft = {
   reason: string
   status: CodeContext['status'] | null
   count: string
+  /** Hash of the photo of the dash, recorded already. */
+  photo: string | null
 }
 
 export const EMPTY_CODE: CodeDraft = {
@@ -31,6 +33,7 @@ export const EMPTY_CODE: CodeDraft = {
   reason: '',
   status: null,
   count: '',
+  photo: null,
 }
 
 /** Under which the half-typed code of a job is kept. */
@@ -101,11 +104,7 @@ function flashOf(draft: CodeDraft): Result<CodeSeen, CodeProblem> {
 }
 
 /** Where and how the code stood; `order` is its place on the screen, from 1. */
-export function contextOf(
-  draft: CodeDraft,
-  order: number,
-  photo: string | null,
-): Result<CodeContext, CodeProblem> {
+export function contextOf(draft: CodeDraft, order: number): Result<CodeContext, CodeProblem> {
   const module = whole(draft.module, 255)
   if (draft.module.trim() !== '' && module === null) {
     return fail({ field: 'module', words: 'A whole number from 0 to 255, or nothing.' })
@@ -116,5 +115,5 @@ export function contextOf(
   }
   return draft.status === null
     ? fail({ field: 'status', words: 'Say whether it was shown as active or stored.' })
-    : ok({ module, status: draft.status, count, order, photo })
+    : ok({ module, status: draft.status, count, order, photo: draft.photo })
 }

@@ -11,6 +11,7 @@ import { Key } from '@/components/ui/key'
 import { useFocusInvalid } from '@/components/ui/use-focus-invalid'
 import type { LogBody } from '@/lib/model/log-entry'
 import { fail, ok, type Result } from '@/lib/model/result'
+import { usePatch } from '../use-patch'
 import {
   CODE_FORMATS,
   type CodeDraft,
@@ -21,6 +22,7 @@ import {
   EMPTY_CODE,
   seenOf,
 } from './code-draft'
+import { DashPhoto } from './dash-photo'
 
 const FORMAT_WORDS: Record<CodeFormat, string> = {
   spn: 'Numbers: SPN and FMI',
@@ -40,9 +42,10 @@ export function CodeForm({ jobId, order, onSaved }: Props) {
   useFocusInvalid(problem)
   const record = useRecord()
   const stamp = useStamp()
+  const patch = usePatch(draft, set)
   const change = (next: Partial<CodeDraft>) => {
     setProblem(null)
-    set({ ...draft, ...next })
+    patch(next)
   }
   const save = async () => {
     const body = bodyOf(draft, order)
@@ -101,6 +104,7 @@ export function CodeForm({ jobId, order, onSaved }: Props) {
           />
         </>
       )}
+      <DashPhoto jobId={jobId} hash={draft.photo} onTaken={(photo) => change({ photo })} />
       <Key kind="main" type="submit">
         {draft.format === 'unreadable' ? 'Record: cannot be read' : 'Take it down'}
       </Key>
@@ -119,7 +123,7 @@ function bodyOf(draft: CodeDraft, order: number): Result<LogBody, CodeProblem> {
   if (!seen.ok) {
     return seen
   }
-  const context = contextOf(draft, order, null)
+  const context = contextOf(draft, order)
   return context.ok ? ok({ kind: 'code', seen: seen.value, context: context.value }) : context
 }
 

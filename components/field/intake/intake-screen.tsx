@@ -12,6 +12,7 @@ import { Key } from '@/components/ui/key'
 import { Screen } from '@/components/ui/screen'
 import { jobHref } from '../route'
 import { useRoute } from '../router'
+import { usePatch } from '../use-patch'
 import { ComplaintStep } from './complaint-step'
 import {
   EMPTY_INTAKE,
@@ -41,7 +42,7 @@ export function IntakeScreen() {
   const [told, setTold] = useState(false)
   const at = STEPS.indexOf(draft.step)
   const missing = missingFrom(draft, draft.step)
-  const change = (next: Partial<IntakeDraft>) => set({ ...draft, ...next })
+  const change = usePatch(draft, set)
   const move = (by: number) => {
     const step = STEPS[at + by]
     if (step !== undefined) {

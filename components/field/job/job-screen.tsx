@@ -17,6 +17,7 @@ import { jobHref } from '../route'
 import { clockTime, dayOf } from '../times'
 import type { JobFacts } from '../use-job-facts'
 import { BEFORE_WORDS, counted } from '../words'
+import { DaylightLine } from './daylight-line'
 import { NextRows } from './next-rows'
 import { StatesPart } from './states-part'
 
@@ -58,6 +59,7 @@ function Open({ facts }: { facts: JobFacts }) {
           <>
             <PlaceShown place={job.place} />
             {job.place.words ? <p>{job.place.words}</p> : null}
+            <DaylightLine place={job.place} zone={job.zone} />
           </>
         )}
         {job.airTempC === null && job.weather === null ? null : (

@@ -6,7 +6,7 @@ import type { LogEntry, LogKind } from '@/lib/model/log-entry'
 import type { Role } from '@/lib/model/role'
 import { mayLog } from '@/lib/shop/permissions'
 import { jobHref } from '../route'
-import { counted, WAY_OUT_WORDS } from '../words'
+import { counted, sentence, WAY_OUT_WORDS } from '../words'
 
 type Props = {
   jobId: string
@@ -92,11 +92,11 @@ function codesDone(entries: readonly LogEntry[]): string {
       ? {
           noneBack: 'cleared, none back',
           back: 'cleared, back again',
-          notYet: 'cleared, read again',
+          notYet: 'cleared, to be read again',
         }[cleared.readAgain]
       : '',
   ].filter(Boolean)
-  return words.length === 0 ? 'Not read yet' : words.join(', ')
+  return words.length === 0 ? 'Not read yet' : sentence(words.join(', '))
 }
 
 function proofDone(entries: readonly LogEntry[]): string {

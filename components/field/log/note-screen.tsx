@@ -12,6 +12,7 @@ import { useFocusInvalid } from '@/components/ui/use-focus-invalid'
 import { OfJob } from '../of-job'
 import { jobHref } from '../route'
 import { useRoute } from '../router'
+import { usePatch } from '../use-patch'
 import { happenedAbout } from './happened-about'
 
 type NoteDraft = { words: string; about: string }
@@ -30,9 +31,10 @@ function Note({ jobId, zone }: { jobId: string; zone: string }) {
   const record = useRecord()
   const stamp = useStamp()
   const { go, here } = useRoute()
+  const patch = usePatch(draft, set)
   const change = (next: Partial<NoteDraft>) => {
     setProblem(null)
-    set({ ...draft, ...next })
+    patch(next)
   }
   const save = () => {
     const words = draft.words.trim()

@@ -1,27 +1,21 @@
 'use client'
 
-import { Camera as CameraIcon } from 'lucide-react'
 import { useEffect, useState } from 'react'
 import { usePorts } from '@/components/store/store-provider'
 import { useDraft } from '@/components/store/use-draft'
 import { useRecord } from '@/components/store/use-record'
 import { useStamp } from '@/components/store/use-stamp'
 import { announce } from '@/components/ui/announce'
-import { classes } from '@/components/ui/class-names'
 import { Field } from '@/components/ui/field'
 import { Key } from '@/components/ui/key'
 import { Photo } from '@/components/ui/photo'
 import { Screen } from '@/components/ui/screen'
-import type { CameraProblem, TakenPhoto } from '@/lib/ports/camera'
+import type { TakenPhoto } from '@/lib/ports/camera'
 import { OfJob } from '../of-job'
 import { jobHref } from '../route'
 import { useRoute } from '../router'
 import { size } from '../times'
-
-const CAMERA_WORDS: Record<CameraProblem['kind'], string> = {
-  notReadable: 'This phone cannot open that picture. Take it again.',
-  tooBig: 'That picture cannot be made small enough to keep. Take it again.',
-}
+import { CAMERA_WORDS, PhotoKey, photoBody } from './photo-key'
 
 type Shown = { photo: TakenPhoto; url: string }
 
@@ -39,14 +33,9 @@ function TakePhoto({ jobId }: { jobId: string }) {
   const stamp = useStamp()
   const { go, here } = useRoute()
   const save = ({ photo }: Shown) => {
-    const { bytes, ...about } = photo
-    const body = {
-      kind: 'photo' as const,
-      photo: { ...about, bytes: bytes.byteLength },
-      caption: caption.trim() === '' ? null : caption.trim(),
-    }
-    record([stamp.entry(jobId, body)], {
-      photos: [{ hash: photo.hash, jobId, bytes, mime: photo.mime }],
+    const { hash, bytes, mime } = photo
+    record([stamp.entry(jobId, photoBody(photo, caption))], {
+      photos: [{ hash, jobId, bytes, mime }],
       clearDrafts: [key],
     })
       .then(() => {
@@ -75,24 +64,12 @@ function TakePhoto({ jobId }: { jobId: string }) {
           </figcaption>
         </figure>
       )}
-      <label className={classes('key relative w-full', shown === null && 'key-plate')}>
-        <CameraIcon aria-hidden="true" strokeWidth={2.5} />
-        {busy ? 'Making it small' : shown === null ? 'Take a photo' : 'Take it again'}
-        <input
-          type="file"
-          accept="image/*"
-          capture="environment"
-          disabled={busy}
-          className="absolute inset-0 cursor-pointer opacity-0"
-          onChange={(e) => {
-            const file = e.target.files?.[0]
-            if (file) {
-              take(file)
-            }
-            e.target.value = ''
-          }}
-        />
-      </label>
+      <PhotoKey
+        words={shown === null ? 'Take a photo' : 'Take it again'}
+        plate={shown === null}
+        busy={busy}
+        onFile={take}
+      />
       <p role="status" className="font-bold text-nogo empty:hidden">
         {problem ?? failed}
       </p>
