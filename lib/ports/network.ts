@@ -2,7 +2,7 @@ import { fail, ok, type Result } from '@/lib/model/result'
 import type { Timer } from './clock'
 
 /** One request of the phone. `path` is of our own origin, `body` the bytes exactly as signed. */
-export type Request = {
+type NetworkRequest = {
   method: 'GET' | 'POST' | 'PUT'
   path: string
   headers?: Record<string, string>
@@ -23,7 +23,7 @@ export type NetworkProblem = { kind: 'noConnection' | 'tooSlow' }
 export type Network = {
   /** A hint only (P17): true may be wrong. */
   online(): boolean
-  send(request: Request): Promise<Result<Answer, NetworkProblem>>
+  send(request: NetworkRequest): Promise<Result<Answer, NetworkProblem>>
 }
 
 /** Slowest line we still wait for, in bytes per second: about 8 kbit/s (a choice of ours). */
@@ -31,7 +31,7 @@ const SLOWEST_BYTES_PER_SECOND = 1_000
 const LEAST_WAIT_MS = 45_000
 
 /** Milliseconds to wait for a request of this size before it counts as cut (P15). */
-export function patienceMs(bytes: number): number {
+function patienceMs(bytes: number): number {
   return LEAST_WAIT_MS + (bytes / SLOWEST_BYTES_PER_SECOND) * 1000
 }
 

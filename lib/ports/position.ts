@@ -2,7 +2,7 @@ import type { Place } from '@/lib/model/place'
 import { fail, ok, type Result } from '@/lib/model/result'
 
 /** A position fix: WGS84 degrees, accuracy in metres (the receiver's own 95 % figure), and when it was taken. */
-export type Fix = Pick<Place, 'latitude' | 'longitude' | 'at'> & { accuracyMetres: number }
+type Fix = Pick<Place, 'latitude' | 'longitude' | 'at'> & { accuracyMetres: number }
 
 /** Why there is no fix: the person or the phone refused, no satellite was heard, it took too long, no receiver. */
 export type PositionProblem = { kind: 'refused' | 'notHeard' | 'tooSlow' | 'noReceiver' }

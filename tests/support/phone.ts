@@ -95,7 +95,7 @@ export async function createPhone(of: {
     ports,
     indexed,
     failed: (cause) => {
-      throw cause
+      if (step === undefined) throw cause
     },
     ...(step === undefined ? {} : { step }),
   })

@@ -47,7 +47,7 @@ export async function applyAnswer(core: Core, of: Answered): Promise<Applied> {
 }
 
 /** What became of the sent ops, by their numbers; ops nothing was said of stay as they are. */
-export async function outcomesOf(
+async function outcomesOf(
   db: PhoneDb,
   of: Pick<Answered, 'dseqs' | 'response' | 'nowMs'>,
 ): Promise<OutboxRecord[]> {

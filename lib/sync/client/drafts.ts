@@ -12,7 +12,7 @@ type Home = Pick<Core, 'db' | 'keys' | 'step'> & {
 }
 
 /** The place a draft is sealed for. */
-export const draftPlace = (key: string) => `draft/${key}`
+const draftPlace = (key: string) => `draft/${key}`
 
 /**
  * One draft, written sealed at every change (R8: to the keystroke). Writes go one after the other; what

@@ -1,7 +1,6 @@
 import type * as z from 'zod/mini'
 import { bag } from '@/lib/model/bag'
 import { machineModel } from '@/lib/model/code-book'
-import type { Id } from '@/lib/model/id'
 import { job } from '@/lib/model/job'
 import { type LogEntry, type LogRow, logRow } from '@/lib/model/log-entry'
 import { machine } from '@/lib/model/machine'
@@ -30,9 +29,6 @@ export type StoredEntity = keyof typeof SHAPES
 export type RowOf<E extends StoredEntity> = E extends 'logEntry'
   ? LogRow | LogEntry
   : z.infer<(typeof SHAPES)[E]>
-
-/** A row of any entity with its place. */
-export type PlacedRow = { entity: StoredEntity; id: string; jobId: Id | null; row: unknown }
 
 /** True for what this version of the app keeps; the rest of a pull is passed over. */
 export const isStored = (entity: string): entity is StoredEntity => Object.hasOwn(SHAPES, entity)

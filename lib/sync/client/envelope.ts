@@ -73,7 +73,7 @@ async function gzip(bytes: Bytes): Promise<Bytes> {
 }
 
 /** Bytes in base64url without padding (RFC 4648, section 5). */
-export function base64url(bytes: Uint8Array): string {
+function base64url(bytes: Uint8Array): string {
   return base64(bytes).replaceAll('+', '-').replaceAll('/', '_').replaceAll('=', '')
 }
 

@@ -6,7 +6,7 @@ import { photoPlace } from './record'
 import { openBytes } from './seal'
 
 /** What an exported file says it is. */
-export const EXPORT_FORMAT = 'farbench-unsent-1'
+const EXPORT_FORMAT = 'farbench-unsent-1'
 
 /**
  * All unsent work as one JSON file (P23): every op as it was made, and the photos in base64. It works

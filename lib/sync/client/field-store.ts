@@ -78,7 +78,10 @@ export class FieldStore {
       return
     }
     this.#opening ??= this.#findWho()
-      .catch(() => this.session.set({ kind: 'signedOut' }))
+      .catch((cause: unknown) => {
+        report(cause)
+        this.session.set({ kind: 'signedOut' })
+      })
       .finally(() => {
         this.#opening = null
       })
@@ -118,6 +121,7 @@ export class FieldStore {
       ports: this.ports,
       indexed: this.#indexed,
       onBook: () => this.#askForBook(true),
+      failed: report,
       onRecord: () => {
         this.worker.askToSendLater().catch(() => undefined)
       },
@@ -154,7 +158,7 @@ export class FieldStore {
       leave = () => undefined
       const phone = this.phone.get()
       if (phone === null) return
-      const book = watchBook(this.#books, phone.actor.shopId, () => undefined)
+      const book = watchBook(this.#books, phone.actor.shopId, report)
       leave = book.subscribe(() => emit(book.get()))
     }
     const end = this.phone.subscribe(follow)
@@ -197,3 +201,8 @@ export class FieldStore {
 }
 
 const isSame = (a: Actor, b: Actor) => a.shopId === b.shopId && a.personId === b.personId
+
+/** Hands a failure to the browser's own error reporting. */
+const report = (cause: unknown): void => {
+  globalThis.reportError?.(cause)
+}

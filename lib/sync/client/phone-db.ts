@@ -28,7 +28,7 @@ export type RowRecord = {
  * kept. `taken`: the shop has it, its row has not come back. `done`: kept a while, to be offered again
  * should the shop be restored from a backup (P12).
  */
-export type OutboxState = 'waiting' | 'blocked' | 'stuck' | 'taken' | 'done'
+type OutboxState = 'waiting' | 'blocked' | 'stuck' | 'taken' | 'done'
 
 export type OutboxRecord = {
   dseq: number
@@ -97,7 +97,7 @@ export type Indexed = Pick<DexieOptions, 'indexedDB' | 'IDBKeyRange'>
 const OPTIONS: DexieOptions = { chromeTransactionDurability: 'strict', cache: 'disabled' }
 
 /** Name of the store of a person in a shop. */
-export const phoneDbName = (shopId: Id, personId: Id) => `farbench-${shopId}-${personId}`
+const phoneDbName = (shopId: Id, personId: Id) => `farbench-${shopId}-${personId}`
 
 /** One person's store in one shop. The outbox is never rewritten by a migration (P25). */
 export class PhoneDb extends Dexie {

@@ -42,6 +42,7 @@ export class PhoneSender {
   readonly #lockName: string
   readonly #size: BatchSize = { limit: 500 }
   readonly #onBook: () => void
+  readonly #failed: (cause: unknown) => void
   #running: Promise<void> | null = null
   #again: boolean = false
   #failures = 0
@@ -56,6 +57,7 @@ export class PhoneSender {
     ports: SyncPorts
     shopId: string
     onBook?: () => void
+    failed?: (cause: unknown) => void
   }) {
     this.#store = of.store
     this.#db = of.db
@@ -63,6 +65,7 @@ export class PhoneSender {
     this.#ports = of.ports
     this.#lockName = `sync:${of.shopId}`
     this.#onBook = of.onBook ?? (() => undefined)
+    this.#failed = of.failed ?? (() => undefined)
   }
 
   /** Calls for a run and does not wait for it. */
@@ -98,20 +101,29 @@ export class PhoneSender {
 
   async #rounds(): Promise<void> {
     let end = { kind: 'done' } as RunEnd
-    while (this.#again && !this.#stopped) {
-      this.#again = false
-      await this.#ports.lock.run(
-        this.#lockName,
-        async () => {
-          end = await this.#underLock()
-        },
-        () => this.#isStale(),
-      )
-      const reached = end.kind !== 'unreachable'
-      this.#tell({ reached, need: end.kind === 'need' ? end.need : null })
-      if (end.kind !== 'done') break
+    try {
+      while (this.#again && !this.#stopped) {
+        this.#again = false
+        end = await this.#round()
+        const reached = end.kind !== 'unreachable'
+        this.#tell({ reached, need: end.kind === 'need' ? end.need : null })
+        if (end.kind !== 'done') break
+      }
+    } catch (cause) {
+      // Another tab has taken over from this one, or the store fails: what is unsent stays, and is tried again.
+      end = { kind: 'wait', afterMs: null }
+      this.#failed(cause)
     }
     this.#schedule(end)
+  }
+
+  async #round(): Promise<RunEnd> {
+    let end = { kind: 'done' } as RunEnd
+    const work = async () => {
+      end = await this.#underLock()
+    }
+    await this.#ports.lock.run(this.#lockName, work, () => this.#isStale())
+    return end
   }
 
   async #isStale(): Promise<boolean> {

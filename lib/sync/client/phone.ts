@@ -33,7 +33,7 @@ export type PhoneOptions = {
   onBook?: () => void
   /** Called when something was kept that is to be sent. */
   onRecord?: () => void
-  /** Called when reading for a screen fails. */
+  /** Called when the store fails under a screen or the sender. */
   failed?: (cause: unknown) => void
   /** Tests let it throw at a step. */
   step?: (name: string) => void
@@ -91,6 +91,7 @@ export class Phone {
       keys: core.keys,
       ports: options.ports,
       shopId: options.actor.shopId,
+      failed,
       ...(options.onBook === undefined ? {} : { onBook: options.onBook }),
     })
     const { sender, room } = this

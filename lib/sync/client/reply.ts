@@ -32,6 +32,8 @@ export function readReply(sent: Result<Answer, NetworkProblem>, nowMs: number): 
   if (!sent.ok) return { kind: 'unreachable' }
   const answer = sent.value
   if (answer.status === 413) return { kind: 'smaller' }
+  // Network Authentication Required (RFC 6585): the portal itself speaks.
+  if (answer.status === 511) return { kind: 'unreachable' }
   if (answer.status === 408 || answer.status === 429 || answer.status >= 500) {
     return { kind: 'later', afterMs: retryAfterMs(answer.header('retry-after'), nowMs) }
   }

@@ -57,7 +57,7 @@ const LOG_TITLES: Readonly<Record<LogKind, string>> = {
 }
 
 /** What a record is, in a few plain words. */
-export function titleOf(op: Op): string {
+function titleOf(op: Op): string {
   switch (op.kind) {
     case 'machine.add':
       return 'Machine'

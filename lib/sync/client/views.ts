@@ -28,7 +28,7 @@ export type BookView = {
 /** The bytes of a photo to keep with an entry. */
 export type NewPhoto = { hash: string; jobId: Id; bytes: ArrayBuffer; mime: PhotoRef['mime'] }
 
-export type UnsentState = 'waiting' | 'sending' | 'stuck' | 'blocked'
+type UnsentState = 'waiting' | 'sending' | 'stuck' | 'blocked'
 
 /** One thing this phone has not handed over. `opId` of a record, `hash` of a photo. */
 export type UnsentItem = {
