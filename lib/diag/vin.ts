@@ -1,0 +1,39 @@
+/**
+ * The check digit of a 17-character vehicle number (49 CFR 565.15): letters by value, weights, modulo 11, 10 is
+ * X; I, O and Q are not used. Off-road machines need not follow it, and one random string in eleven does: a
+ * mismatch warns and never blocks.
+ */
+import { fail, ok, type Result } from '@/lib/model/result'
+
+const WEIGHTS = [8, 7, 6, 5, 4, 3, 2, 10, 0, 9, 8, 7, 6, 5, 4, 3, 2]
+const VALUES: Record<string, number> = {
+  ...Object.fromEntries([...'0123456789'].map((d) => [d, Number(d)])),
+  ...Object.fromEntries([...'ABCDEFGH'].map((c, i) => [c, i + 1])),
+  ...Object.fromEntries([...'JKLMN'].map((c, i) => [c, i + 1])),
+  P: 7,
+  R: 9,
+  ...Object.fromEntries([...'STUVWXYZ'].map((c, i) => [c, i + 2])),
+}
+
+export type VinProblem =
+  | { kind: 'notSeventeen'; length: number }
+  | { kind: 'badCharacter'; character: string; at: number }
+
+/** The weighted sum, the digit it asks for and whether position 9 holds it; position 9 itself counts nothing. */
+export function checkVin(
+  text: string,
+): Result<{ sum: number; expected: string; matches: boolean }, VinProblem> {
+  const vin = text.trim().toUpperCase()
+  if (vin.length !== 17) return fail({ kind: 'notSeventeen', length: vin.length })
+  let sum = 0
+  for (const [i, character] of [...vin].entries()) {
+    const value = VALUES[character]
+    const isCheckPlace = i === 8
+    if (value === undefined && !isCheckPlace)
+      return fail({ kind: 'badCharacter', character, at: i + 1 })
+    sum += (value ?? 0) * (WEIGHTS[i] ?? 0)
+  }
+  const digit = sum % 11
+  const expected = digit === 10 ? 'X' : String(digit)
+  return ok({ sum, expected, matches: vin[8] === expected })
+}

@@ -1,0 +1,41 @@
+/**
+ * `npm run diag -- FILE.json`: the engine's answer to one model file (engine models: `single` or `noisyor`),
+ * as JSON on standard output. A bad file gets one sentence that names the field, and exit code 1.
+ */
+import { readFileSync } from 'node:fs'
+import { readModel } from '@/lib/diag/read-model'
+import { marginals, nextAction, posterior } from '@/lib/diag/troubleshoot'
+import { START } from '@/lib/diag/troubleshoot-model'
+
+/** The answer to a file's text, or the sentence that says what is wrong with it. */
+export function answerTo(text: string): { ok: boolean; text: string; notices: string[] } {
+  let json: unknown
+  try {
+    json = JSON.parse(text)
+  } catch (cause) {
+    return { ok: false, text: `The file is not JSON: ${String(cause)}`, notices: [] }
+  }
+  const read = readModel(json)
+  if (!read.ok) return { ok: false, text: read.problem.sentence, notices: [] }
+  const { model, state, notices } = read.value
+  const at = state ?? START
+  const answer =
+    model.kind === 'single'
+      ? { next: nextAction(model, at), posterior: posterior(model, at) }
+      : { marginals: marginals(model) }
+  return { ok: true, text: JSON.stringify(answer, null, 2), notices }
+}
+
+function main(file: string | undefined): number {
+  if (file === undefined) {
+    console.error('Name a file: npm run diag -- FILE.json')
+    return 1
+  }
+  const answer = answerTo(readFileSync(file, 'utf8'))
+  for (const notice of answer.notices) console.error(notice)
+  if (answer.ok) console.log(answer.text)
+  else console.error(answer.text)
+  return answer.ok ? 0 : 1
+}
+
+if (process.argv[1]?.endsWith('diag.ts') === true) process.exitCode = main(process.argv[2])
