@@ -1,7 +1,7 @@
 import { useQuery } from '@tanstack/react-query'
 import { useMemo } from 'react'
-import { specForEngine } from '@/components/engine/advice'
 import { engine } from '@/components/engine/engine-client'
+import { specForEngine } from '@/components/engine/spec-kept'
 import { keyOf } from '@/components/engine/use-engine'
 import type { Answer, Question } from '@/components/engine/work'
 import { type BookIndex, indexBook } from '@/lib/diag/book-index'
