@@ -5,7 +5,7 @@
  */
 import { fail, ok, type Result } from '@/lib/model/result'
 
-export type PlaceForm = 'degrees' | 'minutes' | 'seconds'
+type PlaceForm = 'degrees' | 'minutes' | 'seconds'
 export type TypedPlace = {
   latitude: number
   longitude: number

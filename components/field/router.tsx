@@ -1,14 +1,6 @@
 'use client'
 
-import {
-  type ComponentProps,
-  createContext,
-  type ReactNode,
-  use,
-  useEffect,
-  useMemo,
-  useSyncExternalStore,
-} from 'react'
+import { createContext, type ReactNode, use, useEffect, useMemo, useSyncExternalStore } from 'react'
 import { AppError } from '@/lib/model/result'
 
 /**
@@ -106,9 +98,4 @@ export function useRoute(): Router {
     throw new AppError('noFieldRouter')
   }
   return router
-}
-
-/** A link inside the field. */
-export function To(props: ComponentProps<'a'> & { href: string }) {
-  return <a {...props} />
 }

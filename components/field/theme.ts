@@ -4,7 +4,7 @@ import { sunTimes } from '@/lib/diag/daylight'
  * Which of the three themes is on. The choice and the next nights are kept beside each other in local
  * storage, because public/theme.js must know both before the first paint and before the store is open.
  */
-export const THEMES = ['day', 'shade', 'night'] as const
+const THEMES = ['day', 'shade', 'night'] as const
 export type Theme = (typeof THEMES)[number]
 export type ThemeChoice = Theme | 'auto'
 

@@ -1,7 +1,7 @@
 import { type ReactNode, useId } from 'react'
 import { classes } from './class-names'
 
-export type Option<T extends string> = {
+type Option<T extends string> = {
   value: T
   label: string
   hint?: ReactNode

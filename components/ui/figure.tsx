@@ -36,4 +36,4 @@ export function Figure({ value, unit, pm, size = 'row', className }: Props) {
 }
 
 /** The number with U+2212 as its minus sign, as every screen shows it. */
-export const shownNumber = (value: string | number): string => String(value).replace(/^-/, '−')
+const shownNumber = (value: string | number): string => String(value).replace(/^-/, '−')

@@ -1,7 +1,7 @@
 import type { ComponentProps, ReactNode } from 'react'
 import { classes } from './class-names'
 
-export type KeyKind = 'main' | 'plain' | 'plate'
+type KeyKind = 'main' | 'plain' | 'plate'
 
 const LOOK: Record<KeyKind, string> = { main: 'key-main', plain: '', plate: 'key-plate' }
 

@@ -26,7 +26,7 @@ export function RuleEdge({ children, level = 2, end, id, className }: Props) {
 }
 
 /** The tick strip alone: 8 px pitch, a long one each 40. */
-export function Ticks({ className }: { className?: string }) {
+function Ticks({ className }: { className?: string }) {
   const id = useId()
   return (
     <svg

@@ -37,7 +37,7 @@ export function WitnessMark(props: Props) {
 }
 
 /** What the mark says, in words. */
-export function witnessWords(state: WitnessState, count: number): string {
+function witnessWords(state: WitnessState, count: number): string {
   switch (state) {
     case 'whole':
       return 'All sent'

@@ -6,10 +6,10 @@ import type { Place } from '@/lib/model/place'
 export const STEPS = ['people', 'machine', 'complaint', 'place'] as const
 export type IntakeStep = (typeof STEPS)[number]
 
-export const DANGERS = ['hurt', 'missing', 'exposed'] as const
-export type Danger = (typeof DANGERS)[number]
+const DANGERS = ['hurt', 'missing', 'exposed'] as const
+type Danger = (typeof DANGERS)[number]
 
-export const HELP_ANSWERS = ['called', 'cannotCall', 'notNeeded'] as const
+const HELP_ANSWERS = ['called', 'cannotCall', 'notNeeded'] as const
 export type HelpAnswer = (typeof HELP_ANSWERS)[number]
 
 export type Stranger = { maker: string; model: string; year: string; features: Features }
@@ -54,7 +54,7 @@ export const EMPTY_INTAKE: IntakeDraft = {
   weather: '',
 }
 
-export type Change = (next: Partial<IntakeDraft>) => void
+type Change = (next: Partial<IntakeDraft>) => void
 export type StepProps = { draft: IntakeDraft; change: Change }
 
 /** True when somebody is hurt or missing: emergency services come before everything else. */
