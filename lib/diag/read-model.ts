@@ -111,19 +111,24 @@ export function readModel(json: unknown): Result<ModelFile, ModelProblem> {
   const parsed = kind === 'single' ? z.safeParse(single, json) : z.safeParse(noisyOr, json)
   if (!parsed.success) return issueOf(parsed.error.issues)
   const model = parsed.data as SingleModel | NoisyOrModel
-  const names_ = model.kind === 'single' ? badName(model) : badLink(model)
-  if (names_ !== null) return names_
   const parsedState = given === undefined ? null : z.safeParse(state, given)
   if (parsedState !== null && !parsedState.success)
     return issueOf(parsedState.error.issues, 'state')
-  const strange =
-    parsedState === null || model.kind !== 'single' ? null : badState(model, parsedState.data)
-  if (strange !== null) return strange
+  const at = parsedState?.data ?? null
+  const strange = strangeName(model, at)
+  return strange ?? ok({ model, state: at, notices: noticesOf(json, model.kind) })
+}
+
+function strangeName(model: SingleModel | NoisyOrModel, at: SearchState | null): Bad | null {
+  if (model.kind === 'noisyor') return badLink(model)
+  return badName(model) ?? (at === null ? null : badState(model, at))
+}
+
+function noticesOf(json: object, kind: 'single' | 'noisyor'): string[] {
   const known = kind === 'single' ? single.shape : noisyOr.shape
-  const notices = Object.keys(json)
+  return Object.keys(json)
     .filter((key) => !(key in known) && !BESIDE.includes(key))
     .map((key) => `The field "${key}" is not known and was left alone.`)
-  return ok({ model, state: parsedState === null ? null : parsedState.data, notices })
 }
 
 type Bad = { ok: false; problem: ModelProblem }
