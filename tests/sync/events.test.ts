@@ -4,8 +4,8 @@ import { GET, POST } from '@/app/api/events/route'
 import { asShop } from '@/db/client'
 import { lastChange } from '@/db/queries/changes'
 import { revokeSession } from '@/db/queries/sign-in'
-import type { Role } from '@/lib/model/role'
-import { EventHub, eventHub } from '@/lib/sync/server/event-hub'
+import type { Actor } from '@/lib/model/person'
+import { EventHub, eventHub, type Heard } from '@/lib/sync/server/event-hub'
 import { streamEvents } from '@/lib/sync/server/event-stream'
 import { type Change, EventListener } from '../support/event-listener'
 import { jobOpen, logAdd, machineAdd, note } from '../support/field-ops'
@@ -41,6 +41,13 @@ async function openJob(from = device): Promise<string> {
   await sync(from, [from.op(opening)])
   return opening.fields.id
 }
+const ownerOf = (shop: SyncWorld['a']): Actor => ({
+  shopId: shop.id,
+  personId: shop.people.owner?.id ?? '',
+  roles: ['owner'],
+  name: null,
+})
+const isStillGood = () => Promise.resolve(true)
 const ascending = (changes: Change[]) =>
   changes.every((change, i) => i === 0 || change.seq > (changes[i - 1]?.seq ?? 0))
 
@@ -99,6 +106,28 @@ describe('GET /api/events', () => {
     expect(later.map((change) => change.seq)).toEqual(
       Array.from({ length: now - from }, (_, i) => from + 1 + i),
     )
+  })
+
+  it('[EV1] loses and repeats nothing that is heard while it still catches up', async () => {
+    await writeNotes(await openJob(), 2)
+    const now = await asShop(world.a.id, lastChange)
+    const change = (seq: number) => ({ seq, entity: 'machine', id: `m${seq}`, jobId: null })
+    // Told at the worst moment: after listening began, before the log was read.
+    const hub = {
+      keep: () => () => undefined,
+      subscribe: (_: string, heard: Heard) => {
+        queueMicrotask(() => heard([change(now), change(now + 1)]))
+        return Promise.resolve(() => undefined)
+      },
+    } as unknown as EventHub
+    const listener = new EventListener()
+    const actor = ownerOf(world.a)
+    const signal = new AbortController().signal
+    const lastEventId = String(now - 2)
+    listener.read(streamEvents({ hub, actor, lastEventId, signal, isStillGood }))
+    await listener.until(() => listener.changes.some((one) => one.seq === now + 1))
+    expect(listener.changes.map((one) => one.seq)).toEqual([now - 1, now, now + 1])
+    expect(listener.changes.at(-2)?.entity).toBe('logEntry')
   })
 
   it('[EV1] reads on after the line to the database broke', async () => {
@@ -185,19 +214,14 @@ describe('GET /api/events', () => {
   it('[EV2] lets a reader go who does not read, and forgets those who left', async () => {
     const hub = eventHub()
     const before = hub.size
-    const actor = {
-      shopId: world.a.id,
-      personId: world.a.people.owner?.id ?? '',
-      roles: ['owner'] as Role[],
-      name: null,
-    }
+    const actor = ownerOf(world.a)
     const signal = new AbortController().signal
     const stalled = streamEvents({
       hub,
       actor,
       lastEventId: null,
       signal,
-      isStillGood: () => Promise.resolve(true),
+      isStillGood,
     })
     expect(hub.size).toBe(before + 1)
     const { listener } = await openAs('owner')
@@ -214,12 +238,7 @@ describe('GET /api/events', () => {
 
   it('[EV2] ends every stream when the process is told to stop', async () => {
     const hub = new EventHub()
-    const actor = {
-      shopId: world.a.id,
-      personId: world.a.people.owner?.id ?? '',
-      roles: ['owner'] as Role[],
-      name: null,
-    }
+    const actor = ownerOf(world.a)
     const listeners = Array.from({ length: 5 }, () => {
       const listener = new EventListener()
       const signal = new AbortController().signal
@@ -229,7 +248,7 @@ describe('GET /api/events', () => {
           actor,
           lastEventId: null,
           signal,
-          isStillGood: () => Promise.resolve(true),
+          isStillGood,
         }),
       )
       return listener
