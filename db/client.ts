@@ -21,7 +21,7 @@ const OPENED = Symbol.for('farbench.db')
 const holder = globalThis as { [key: symbol]: Opened | undefined }
 
 /** The pool of this process, opened at the first use from DATABASE_URL. */
-export function appDb(): Db {
+function appDb(): Db {
   return opened().db
 }
 

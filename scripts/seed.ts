@@ -106,9 +106,10 @@ async function seedModels(tx: ShopTx): Promise<Change[]> {
 
 async function seedFleet(tx: ShopTx): Promise<Change[]> {
   const models = new Map(DEMO_MODELS.map((model) => [model.id, model]))
-  const fleet = UNITS.flatMap((unit) => {
+  const fleet = UNITS.map((unit) => {
     const model = models.get(unit.modelId)
-    return model ? [toMachine(unit, model)] : []
+    if (!model) throw new Error(`No demo model ${unit.modelId} for unit ${unit.unitNumber}`)
+    return toMachine(unit, model)
   })
   return await addMachines(tx, fleet)
 }

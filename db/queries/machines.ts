@@ -34,15 +34,6 @@ export async function machinesById(tx: ShopTx, ids: readonly Id[]): Promise<Mach
   return rows.map(toMachine)
 }
 
-/** Answers every machine of the shop by unit number, strangers' last. */
-export async function listMachines(tx: ShopTx): Promise<Machine[]> {
-  const rows = await machines(tx)
-    .orderBy('unitNumber', (order) => order.asc().nullsLast())
-    .orderBy('id')
-    .execute()
-  return rows.map(toMachine)
-}
-
 const machines = (tx: ShopTx) =>
   tx
     .selectFrom('machine')
