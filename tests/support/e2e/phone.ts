@@ -19,6 +19,8 @@ export type Phone = {
   context(): BrowserContext
   open(path: string): Promise<Page>
   close(): Promise<void>
+  /** Flight mode on or off; it stays so when the phone is closed and started again. */
+  flight(on: boolean): Promise<void>
   /** Ends every process of the browser with SIGKILL, as a phone that dies. */
   kill(): Promise<void>
 }
@@ -42,6 +44,7 @@ type Look = { width: number; height: number; colorScheme?: 'light' | 'dark' }
 export function makePhone(profile: string, base: string, look: Look): Phone {
   let live: BrowserContext | null = null
   let tab: Page | null = null
+  let flying = false
   const page = () => {
     if (!tab) throw new Error('the phone is off')
     return tab
@@ -67,6 +70,8 @@ export function makePhone(profile: string, base: string, look: Look): Phone {
         timezoneId: 'Etc/GMT+6',
         locale: 'en-GB',
       })
+      live.setDefaultTimeout(20_000)
+      await live.setOffline(flying)
       tab = live.pages()[0] ?? (await live.newPage())
     }
     await page().goto(path)
@@ -77,6 +82,11 @@ export function makePhone(profile: string, base: string, look: Look): Phone {
     await live?.close()
     live = null
     tab = null
+  }
+
+  async function flight(on: boolean): Promise<void> {
+    flying = on
+    await live?.setOffline(on)
   }
 
   async function kill(): Promise<void> {
@@ -93,5 +103,5 @@ export function makePhone(profile: string, base: string, look: Look): Phone {
     await old?.close().catch(() => undefined)
   }
 
-  return { page, context, open, close, kill }
+  return { page, context, open, close, flight, kill }
 }

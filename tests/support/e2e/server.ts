@@ -84,7 +84,10 @@ export async function makeServer(): Promise<TestServer> {
     if (!mine || mine.exitCode !== null || mine.signalCode !== null) return
     const gone = once(mine, 'exit')
     mine.kill(signal)
+    // A browser's spare connections may hold the server open; npm start does not wait longer either.
+    const late = setTimeout(() => mine.kill('SIGKILL'), 8000)
     await gone
+    clearTimeout(late)
   }
 
   return { base, start, stop: () => end('SIGTERM'), kill: () => end('SIGKILL'), log: () => text }

@@ -1,0 +1,238 @@
+import type { Page } from '@playwright/test'
+import { expect, signIn, test } from '../support/e2e/test'
+
+/**
+ * The main job, on the input of the specification: from flight mode with the server stopped to the
+ * desk. Figures: shared worked case of the readings (JCGM 100 and 106), 12 clean starts by
+ * Clopper-Pearson, break-even by expected cost.
+ */
+const press = (page: Page, name: string | RegExp) => page.getByRole('button', { name, exact: true }).click()
+const follow = (page: Page, name: string | RegExp) => page.getByRole('link', { name }).click()
+
+/** Chance of 100 of a suspect on the CHECKS tab, as shown. */
+async function chanceOf(page: Page, name: string): Promise<number> {
+  const row = page.getByRole('listitem').filter({ hasText: name }).first()
+  await expect(row).toBeVisible()
+  return Number(await row.locator('.figures').first().textContent())
+}
+
+test('the main job, from flight mode to the desk', async ({
+  server,
+  phone,
+  desk,
+  partsDesk,
+  shot,
+}) => {
+  test.setTimeout(420_000)
+
+  await test.step('signed in once with signal, the phone holds all it needs', async () => {
+    const page = await phone.open('/login')
+    await signIn(page, 'mechanic@demo.invalid', /\/field$/)
+    await expect(page.getByText(/Code book version \d/)).toBeVisible({ timeout: 60_000 })
+    await expect(page.getByText('Not ready for no signal')).toBeHidden({ timeout: 60_000 })
+    await shot(page, 'field-jobs')
+    await phone.close()
+  })
+
+  const board = await desk.open('/login')
+  await signIn(board, 'dispatcher@demo.invalid', /\/desk$/)
+  const counter = await partsDesk.open('/login')
+  await signIn(counter, 'parts@demo.invalid', /\/desk/)
+  await counter.goto('/desk/parts')
+  await expect(counter.getByRole('heading', { name: /parts/i }).first()).toBeVisible()
+  const complaint = `Dies after two seconds ${Date.now() % 100_000}`
+
+  await server.stop()
+  await phone.flight(true)
+
+  await test.step('1 new job from a cold start in flight mode', async () => {
+    const page = await phone.open('/field')
+    await follow(page, 'New job')
+    await shot(page, 'intake-people')
+    await press(page, 'All well, go on')
+    await page.getByRole('radio', { name: /14/ }).check({ force: true })
+    await shot(page, 'intake-machine')
+    await press(page, 'Go on')
+    await page.getByLabel('In the rider’s own words').fill(complaint)
+    await page.getByRole('radio', { name: /Starts, then dies/i }).check({ force: true })
+    await page.getByRole('radio', { name: 'On', exact: true }).check({ force: true })
+    await page.getByRole('checkbox', { name: /Recent work/ }).check({ force: true })
+    await shot(page, 'intake-complaint')
+    await press(page, 'Go on')
+    await press(page, 'Take my position')
+    await expect(page.getByText(/Position fix, good to/)).toBeVisible()
+    await shot(page, 'intake-place')
+    await press(page, 'Open the job')
+    await expect(page).toHaveURL(/\/field\/jobs\/[0-9a-f-]{36}$/)
+    await shot(page, 'job')
+  })
+  const jobPath = new URL(phone.page().url()).pathname
+
+  await test.step('2 the code as the dash shows it', async () => {
+    const page = await phone.open(`${jobPath}/codes`)
+    await expect(page.getByText('How to show them on this model')).toBeVisible()
+    await shot(page, 'codes-empty')
+    await page.getByRole('radio', { name: /Numbers: SPN and FMI/ }).check({ force: true })
+    await page.getByLabel('Module').fill('0')
+    await page.getByLabel('SPN', { exact: true }).fill('1268')
+    await page.getByLabel('FMI', { exact: true }).fill('3')
+    await page.getByRole('radio', { name: 'Active' }).check({ force: true })
+    await press(page, 'Take it down')
+    await expect(page.getByText(/ignition coil 1/i).first()).toBeVisible()
+    await expect(page.getByText(/voltage above normal/i).first()).toBeVisible()
+    await expect(page.getByText('The third number is the failure kind')).toBeVisible()
+    await expect(page.getByText(/names a circuit, not a part/)).toBeVisible()
+    await expect(page.getByText('It supports')).toBeVisible()
+    await expect(page.getByText('It argues against')).toBeVisible()
+    await shot(page, 'codes-meaning')
+  })
+
+  await test.step('3 suspects rank by inference and say why', async () => {
+    const page = await phone.open(`${jobPath}/checks`)
+    await expect(page.getByText('Suspects, of 100')).toBeVisible()
+    for (const name of [
+      'Ignition coil',
+      'Coil connector and wiring',
+      'Coil driver',
+      'Something else',
+    ])
+      await expect(page.getByText(name, { exact: false }).first()).toBeVisible()
+    expect(await chanceOf(page, 'Ignition coil')).toBeGreaterThan(30)
+    await shot(page, 'checks')
+  })
+
+  await test.step('4 before the check: this meter cannot decide this spec', async () => {
+    const page = await phone.open(`${jobPath}/checks/coilPrimaryResistance`)
+    await expect(page.getByText('This meter cannot decide it')).toBeVisible()
+    await shot(page, 'check')
+    await phone.open(`${jobPath}/checks/coilPrimaryResistance/reading`)
+    await press(page, /^Meter set-up/)
+    await press(page, /both at about 20/)
+    await press(page, /^Meter set-up/)
+    await press(page, '1')
+    await press(page, '.')
+  })
+
+  await test.step('the phone dies in the middle of typing: "1." is still in the keypad', async () => {
+    await phone.kill()
+    const page = await phone.open(`${jobPath}/checks/coilPrimaryResistance/reading`)
+    await expect(page.getByRole('status', { name: 'Figure' })).toContainText('1.')
+    await press(page, '0')
+    await expect(page.getByText('Too close to call').first()).toBeVisible()
+    await shot(page, 'reading')
+    await press(page, 'Save')
+    await expect(page.getByText(/Best estimate 0\.55/)).toBeVisible()
+    await expect(
+      page.getByText(/Chance of being within the spec: 19 of 100 \(16 by the exact sum\)/),
+    ).toBeVisible()
+    await expect(page.getByText('The suspects barely move.')).toBeVisible()
+    await press(page, 'Show the sums')
+    await expect(page.getByText('0.198')).toBeVisible()
+    await shot(page, 'reading-saved')
+    await press(page, 'Measure a known-good part too')
+    for (const key of ['1', '.', '0', 'Save']) await press(page, key)
+    await expect(page.getByText(/this check says nothing about the part/)).toBeVisible()
+  })
+
+  await test.step('5 swap with the spare, back, and new', async () => {
+    const page = await phone.open(`${jobPath}/swap/coilSwap`)
+    await shot(page, 'swap')
+    await press(page, 'Gone')
+    await expect(page.getByText('2. Refit the old ignition coil')).toBeVisible()
+    await page.getByRole('button', { name: 'Back', exact: true }).last().click()
+    await expect(page.getByText('3. Fit the new ignition coil')).toBeVisible()
+    await press(page, 'Gone')
+    await expect(page.getByRole('link', { name: 'Record the fix' })).toBeVisible()
+    await shot(page, 'swap-done')
+    await phone.open(`${jobPath}/checks`)
+    expect(await chanceOf(page, 'Ignition coil')).toBeGreaterThan(90)
+  })
+
+  await test.step('6 fix, codes cleared, proof run', async () => {
+    const page = await phone.open(`${jobPath}/fix?fault=ignitionCoilPart`)
+    await page.getByLabel('What you did').fill('New coil fitted, connector seated.')
+    await press(page, 'Record the fix')
+    await page.getByRole('radio', { name: 'None came back' }).check({ force: true })
+    await shot(page, 'fix')
+    await page.getByRole('button', { name: 'Codes cleared' }).press('Enter')
+    await press(page, 'Cleared')
+    await expect(page.getByText(/Codes cleared\. None came back/)).toBeVisible()
+    await phone.open(`${jobPath}/proof`)
+    for (let starts = 0; starts < 5; starts++) await press(page, 'Clean start')
+    await phone.kill()
+    const again = await phone.open(`${jobPath}/proof`)
+    for (let starts = 0; starts < 7; starts++) await press(again, 'Clean start')
+    await press(again, 'Type the minutes instead')
+    await again.getByLabel('Minutes, typed').fill('10')
+    await again.getByRole('radio', { name: /Hot/ }).check({ force: true })
+    await expect(
+      again.getByText(
+        /12 clean restarts: up to 22 of 100 starts could still fail \(one-sided 95 %\)\. The 3\/n rule says 25\./,
+      ),
+    ).toBeVisible()
+    await shot(again, 'proof')
+    await press(again, 'Save the proof run')
+    await expect(again.getByText('Proof run saved')).toBeVisible()
+  })
+
+  await test.step('7 the part and the advice', async () => {
+    const page = await phone.open(`${jobPath}/parts`)
+    await page
+      .getByRole('link', { name: /Ignition coil/ })
+      .first()
+      .click()
+    await expect(page.getByText('135.00').first()).toBeVisible()
+    await expect(page.getByText('25.00').first()).toBeVisible()
+    await expect(page.getByText('300.00').first()).toBeVisible()
+    await expect(page.getByText(/38\.7 of 100/)).toBeVisible()
+    await shot(page, 'part-ask')
+    await press(page, 'Ask for it')
+    await expect(page.getByText(/Ignition coil, 1/)).toBeVisible()
+  })
+
+  await test.step('8 way out, note, one photo', async () => {
+    const page = await phone.open(`${jobPath}/wayout`)
+    await page.getByRole('radio', { name: /Repair here/ }).check({ force: true })
+    await page.getByLabel('Reasons').fill('Swapped back and confirmed; 12 clean restarts.')
+    await shot(page, 'way-out')
+    await press(page, 'Record the way out')
+    await expect(page.getByText('Decided')).toBeVisible()
+    await phone.open(`${jobPath}/note`)
+    await page.getByLabel('What is it?').fill('Old coil goes back to the shop.')
+    await press(page, 'Save note')
+    await phone.open(`${jobPath}/photo`)
+    await page.locator('input[type=file]').setInputFiles({
+      name: 'coil.png',
+      mimeType: 'image/png',
+      buffer: await page.screenshot(),
+    })
+    await expect(page.getByRole('button', { name: 'Save photo' })).toBeVisible()
+    await page.getByLabel('Caption').fill('Old coil')
+    await press(page, 'Save photo')
+    await expect(page).toHaveURL(/\/log$/)
+    await expect(page.getByText('Below: this phone only', { exact: false })).toBeVisible()
+    await shot(page, 'log')
+    await phone.open('/field/unsent')
+    await shot(page, 'unsent')
+  })
+
+  await test.step('9 signal returns: all goes up once, the desk shows it without a reload', async () => {
+    await server.start()
+    await phone.flight(false)
+    const page = await phone.open(jobPath)
+    await expect(page.getByRole('link', { name: 'All sent' })).toBeVisible({ timeout: 60_000 })
+    await shot(page, 'job-sent')
+    await expect(board.getByText(complaint).first()).toBeVisible({ timeout: 40_000 })
+    await board.getByText(complaint).first().click()
+    await expect(board.getByText('Old coil goes back to the shop.')).toBeVisible()
+    await expect(board.getByText(/12 clean|12 starts/).first()).toBeVisible()
+    const onPhone = await (async () => {
+      await phone.open(`${jobPath}/checks`)
+      return chanceOf(phone.page(), 'Ignition coil')
+    })()
+    expect(await chanceOf(board, 'Ignition coil')).toBe(onPhone)
+    await shot(board, 'desk-board')
+    await expect(counter.getByText('Ignition coil').first()).toBeVisible({ timeout: 40_000 })
+    await shot(counter, 'desk-parts')
+  })
+})
