@@ -1,0 +1,110 @@
+import { describe, expect, it } from 'vitest'
+import {
+  clopperPearson,
+  expectedBackOrders,
+  poissonCdf,
+  poissonInterval,
+  spareStock,
+} from '@/lib/diag/exact-intervals'
+import {
+  boundAfterClean,
+  chanceLeft,
+  chanceOfAtMost,
+  cleanStartsFor,
+  minutesFor,
+  ruleOfThree,
+  upperBound,
+} from '@/lib/diag/proof-run'
+
+describe('exact Poisson intervals (Garwood 1936)', () => {
+  it.each([
+    [0, 0, 3.6889, 0, 2.9957],
+    [1, 0.0253, 5.5716, 0.0513, 4.7439],
+    [2, 0.2422, 7.2247, 0.3554, 6.2958],
+    [3, 0.6187, 8.7673, 0.8177, 7.7537],
+    [5, 1.6235, 11.6683, 1.9701, 10.513],
+    [6, 2.2019, 13.0595, 2.613, 11.8424],
+    [7, 2.8144, 14.4227, 3.2853, 13.1481],
+    [8, 3.4538, 15.7632, 3.9808, 14.4346],
+    [9, 4.1154, 17.0848, 4.6952, 15.7052],
+    [10, 4.7954, 18.3904, 5.4254, 16.9622],
+    [20, 12.2165, 30.8884, 13.2547, 29.062],
+    [100, 81.364, 121.6268, 84.1393, 118.0793],
+  ])('[STD] %i events: 95 %% %f to %f, 90 %% %f to %f', (n, low95, high95, low90, high90) => {
+    const at95 = poissonInterval(n, 0.95)
+    const at90 = poissonInterval(n, 0.9)
+    expect([at95.low, at95.high, at90.low, at90.high]).toEqual(
+      [low95, high95, low90, high90].map((x) => expect.closeTo(x, 3)),
+    )
+  })
+})
+
+describe('exact binomial intervals (Clopper and Pearson 1934)', () => {
+  it.each([
+    [682, 925, 0.7076683, 0.7654066],
+    [0, 10, 0, 0.3085],
+    [1, 10, 0.00253, 0.44502],
+    [5, 10, 0.18709, 0.81291],
+    [10, 10, 0.6915, 1],
+    [0, 30, 0, 0.1157],
+  ])('[STD] %i of %i: %f to %f (Conover; recomputed)', (k, n, low, high) => {
+    const got = clopperPearson(k, n)
+    expect([got.low, got.high]).toEqual([expect.closeTo(low, 4), expect.closeTo(high, 4)])
+  })
+})
+
+describe('proof runs', () => {
+  it('[F7] 12 clean restarts leave up to 22 of 100; the 3/n rule says 25', () => {
+    expect(boundAfterClean(12)).toBeCloseTo(0.2209, 4)
+    expect(ruleOfThree(12)).toBe(0.25)
+  })
+  it('[F7] five clean restarts leave up to 45 of 100; under 10 of 100 asks 29', () => {
+    expect(boundAfterClean(5)).toBeCloseTo(0.45, 2)
+    expect(cleanStartsFor(0.1)).toBe(29)
+    expect(boundAfterClean(29)).toBeLessThan(0.1)
+    expect(boundAfterClean(28)).toBeGreaterThan(0.1)
+  })
+  it('[F7] the bound is the exact one: at it, this few faults have chance 1 - confidence', () => {
+    for (const [k, n] of [
+      [0, 12],
+      [1, 12],
+      [3, 20],
+    ] as const)
+      expect(chanceOfAtMost(k, n, upperBound(k, n))).toBeCloseTo(0.05, 9)
+    expect(upperBound(3, 3)).toBe(1)
+    expect(boundAfterClean(0)).toBe(1)
+    expect(ruleOfThree(2)).toBe(1)
+  })
+  it('[S7] chance 0.30 at 0.05 per hot minute: 30 clean minutes leave 0.087, 0.05 asks 42', () => {
+    expect(chanceLeft(0.3, 0.05, 30)).toBeCloseTo(0.087, 3)
+    expect(minutesFor(0.3, 0.05, 0.05)).toBe(42)
+    expect(chanceLeft(0.3, 0.05, 42)).toBeLessThanOrEqual(0.05)
+    expect(chanceLeft(0.3, 0.05, 41)).toBeGreaterThan(0.05)
+    expect(minutesFor(0.04, 0.05, 0.05)).toBe(0)
+  })
+})
+
+describe('spares (Poisson, Palm)', () => {
+  it.each([
+    [0.5, 1, 2, 3],
+    [1, 2, 3, 4],
+    [2, 4, 5, 6],
+    [5, 8, 9, 11],
+    [10, 14, 15, 18],
+  ])('[STD] mean %f: 90, 95 and 99 %% need %i, %i and %i', (mean, at90, at95, at99) => {
+    expect([0.9, 0.95, 0.99].map((s) => spareStock(mean, s))).toEqual([at90, at95, at99])
+  })
+  it.each([
+    [1, [1, 0.36788, 0.10364, 0.02334, 0.00435]],
+    [2, [2, 1.13534, 0.54134, 0.21802, 0.07514]],
+  ])('[STD] expected back-orders at mean %i, stock 0 to 4', (mean, ebo) => {
+    expect([0, 1, 2, 3, 4].map((s) => expectedBackOrders(s, mean))).toEqual(
+      ebo.map((x) => expect.closeTo(x, 4)),
+    )
+  })
+  it('[STD] fill rate at mean 1: 0, 0.36788, 0.73576, 0.91970, 0.98101', () => {
+    expect([-1, 0, 1, 2, 3].map((s) => poissonCdf(s, 1))).toEqual(
+      [0, 0.36788, 0.73576, 0.9197, 0.98101].map((x) => expect.closeTo(x, 5)),
+    )
+  })
+})

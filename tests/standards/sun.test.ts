@@ -1,0 +1,91 @@
+import { describe, expect, it } from 'vitest'
+import { minutesToLeaveBy, sunTimes } from '@/lib/diag/daylight'
+
+const MINUTE = 60_000
+const HOUR = 60 * MINUTE
+const at = (iso: string) => Date.parse(iso)
+/** Within a minute of a published minute (which may be rounded), within the test's tolerance of 1 min. */
+const near = (got: number | null, iso: string, ms = 1.5 * MINUTE) => {
+  expect(got).not.toBeNull()
+  expect(Math.abs((got ?? 0) - at(iso))).toBeLessThan(ms)
+}
+
+describe('sunrise and sunset, USNO (seen in a solar-energy library)', () => {
+  it.each([
+    [39.0, -105.0, -7, '2015-01-02', '07:19', '16:49'],
+    [39.0, -105.0, -7, '2015-04-02', '05:43', '18:24'],
+    [39.0, -105.0, -7, '2015-08-02', '05:01', '19:10'],
+    [39.0, -105.0, -7, '2015-12-02', '07:01', '16:38'],
+    [39.917, 116.383, 8, '2015-01-02', '07:36', '17:00'],
+    [39.917, 116.383, 8, '2015-04-02', '05:58', '18:39'],
+  ])('[STD] %f N %f E, UTC%i, %s: %s and %s', (lat, lon, zone, day, rise, set) => {
+    const sun = sunTimes(lat, lon, at(`${day}T12:00:00Z`) - zone * HOUR)
+    near(sun.sunrise === null ? null : sun.sunrise + zone * HOUR, `${day}T${rise}:00Z`)
+    near(sun.sunset === null ? null : sun.sunset + zone * HOUR, `${day}T${set}:00Z`)
+    expect(sun.never).toBeNull()
+  })
+  it.each([
+    [-35, 0, '1996-07-05', '07:08:15', '17:01:04'],
+    [35, 0, '1994-01-02', '07:08:12', '16:59:55'],
+  ])('[STD] %i N %i E on %s to the second: %s and %s', (lat, lon, day, rise, set) => {
+    const sun = sunTimes(lat, lon, at(`${day}T12:00:00Z`))
+    near(sun.sunrise, `${day}T${rise}Z`, 10_000)
+    near(sun.sunset, `${day}T${set}Z`, 10_000)
+  })
+  it.each([
+    ['2020-01-15', '2020-01-15T18:57:00Z', '2020-01-15T18:01:00Z'],
+    ['2020-03-25', '2020-03-25T15:43:00Z', '2020-03-25T14:59:00Z'],
+    ['2020-09-25', '2020-09-25T15:53:00Z', '2020-09-25T15:10:00Z'],
+    ['2020-12-15', '2020-12-15T19:10:00Z', '2020-12-15T18:08:00Z'],
+  ])('[STD] 61.217 N 149.867 W on %s: rise %s, civil dawn %s', (day, rise, dawn) => {
+    const sun = sunTimes(61.216667, -149.866667, at(`${day}T22:00:00Z`))
+    near(sun.sunrise, rise)
+    near(sun.civilDawn, dawn)
+  })
+  it('[STD] the sunset that follows the sunrise: 01:21 the next UTC day, not the 01:19 of the evening before', () => {
+    near(
+      sunTimes(61.216667, -149.866667, at('2020-01-15T22:00:00Z')).sunset,
+      '2020-01-16T01:21:00Z',
+    )
+    near(
+      sunTimes(61.216667, -149.866667, at('2020-01-14T22:00:00Z')).sunset,
+      '2020-01-15T01:19:00Z',
+    )
+  })
+  it('[STD] midsummer at 61 N: rise 12:22, set 07:42, civil twilight all night', () => {
+    const sun = sunTimes(61.216667, -149.866667, at('2020-06-25T22:00:00Z'))
+    near(sun.sunrise, '2020-06-25T12:22:00Z')
+    near(sun.sunset, '2020-06-26T07:42:00Z')
+    expect(sun).toMatchObject({ civilDusk: null, civilDawn: null, never: 'darkens' })
+  })
+  it.each(['2020-01-05', '2020-01-20', '2020-02-05'])(
+    '[STD] 78.2 N on %s: below the horizon all day',
+    (day) => {
+      const sun = sunTimes(78.2167, 15.6333, at(`${day}T12:00:00Z`))
+      expect(sun).toMatchObject({ sunrise: null, sunset: null, never: 'rises' })
+    },
+  )
+  it('[STD] 78.2 N at midsummer: the sun does not set', () => {
+    expect(sunTimes(78.2167, 15.6333, at('2020-06-25T12:00:00Z'))).toMatchObject({
+      sunset: null,
+      never: 'sets',
+    })
+  })
+  it('[STD] SPA example 2003-10-17: rise 06:12:43, set of the local day 17:18:50 (memory, recomputed)', () => {
+    const sun = sunTimes(39.742476, -105.1786, at('2003-10-17T19:00:00Z'))
+    near(sun.sunrise, '2003-10-17T13:12:43Z', 10_000)
+    near(sun.sunset, '2003-10-18T00:18:50Z', 10_000)
+  })
+  it('[R6] the acceptance day, 47.1 N 93.2 W: sunset 16:29, civil dusk 17:03, leave by 16:13 with 20 min to ride out', () => {
+    const sun = sunTimes(47.1, -93.2, at('2026-11-24T18:00:00Z'))
+    near(sun.sunset, '2026-11-24T22:29:00Z')
+    near(sun.civilDusk, '2026-11-24T23:03:00Z')
+    const left = minutesToLeaveBy({
+      nowMs: at('2026-11-24T21:13:00Z'),
+      civilDuskMs: at('2026-11-24T23:03:00Z'),
+      rideOutMinutes: 20,
+    })
+    expect(left).toBe(60)
+    expect(minutesToLeaveBy({ nowMs: 0, civilDuskMs: null, rideOutMinutes: 20 })).toBeNull()
+  })
+})
