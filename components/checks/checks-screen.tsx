@@ -2,6 +2,7 @@
 import { useState } from 'react'
 import type { BookIndex } from '@/lib/diag/book-index'
 import { living } from '@/lib/diag/case'
+import type { Outcome } from '@/lib/diag/outlook'
 import type { Plan } from '@/lib/diag/plan'
 import type { Id } from '@/lib/model/id'
 import type { LogEntry } from '@/lib/model/log-entry'
@@ -9,7 +10,7 @@ import { decidesWords, nextOutlook } from '../engine/decides'
 import { useBelief } from '../engine/use-belief'
 import { useCase } from '../engine/use-case'
 import { type PlanView, usePlan } from '../engine/use-plan'
-import type { Answer, OutlookRow } from '../engine/work'
+import type { Answer } from '../engine/work'
 import { proofSentence } from '../outcome/proof-words'
 import { useBook } from '../store/use-book'
 import { useShop } from '../store/use-rows'
@@ -214,7 +215,7 @@ const START = {
 type SuspectsProps = {
   index: BookIndex
   belief: Answer['belief']
-  outlook: readonly OutlookRow[]
+  outlook: readonly Outcome[]
   entries: readonly LogEntry[]
   stale: boolean
 }

@@ -11,7 +11,7 @@ const PAD = 'min-h-[68px] px-1 [@media(max-height:37.5rem)]:min-h-target'
 /** The pad's lower edge eats into its height when pressed, as every key's does. */
 const FIGURE = 'figures text-key'
 
-export type PadValue = { typed: string; unit: string | null; overRange: boolean }
+type PadValue = { typed: string; unit: string | null; overRange: boolean }
 type Props = {
   quantity: Quantity
   value: PadValue
@@ -33,7 +33,7 @@ export function Keypad({ quantity, value, unit, onChange, onSave, saveBlocked }:
           {digit}
         </Key>
       ))}
-      <Key className={PAD} aria-label="Delete the last figure" onClick={() => press('back')}>
+      <Key className={PAD} aria-label="Delete one" onClick={() => press('back')}>
         <Delete size={30} strokeWidth={2.5} aria-hidden="true" />
       </Key>
       {neverNegative(quantity) ? (

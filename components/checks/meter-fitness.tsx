@@ -75,7 +75,7 @@ export function WouldDecide({ jobId, check, index, ways }: WaysProps) {
 }
 
 /** Swaps for the faults a check separates. */
-export function swapsFor(check: CheckItem, index: BookIndex): { id: string; name: string }[] {
+function swapsFor(check: CheckItem, index: BookIndex): { id: string; name: string }[] {
   const faults = new Set([
     ...Object.keys(check.table),
     ...Object.keys(check.reading?.byFault ?? {}),

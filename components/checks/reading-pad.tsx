@@ -1,5 +1,5 @@
 'use client'
-import { useState } from 'react'
+import { useId, useState } from 'react'
 import type { CheckItem } from '@/lib/model/code-book'
 import type { Id } from '@/lib/model/id'
 import type { JobCase } from '../engine/use-case'
@@ -10,7 +10,7 @@ import { VerdictLine } from '../reading-strip/verdict-line'
 import { useStamp } from '../store/use-stamp'
 import { Key } from '../ui/key'
 import { Keypad } from './keypad'
-import { setupShort, setupWords, useMeterSetup } from './meter-setup'
+import { setupShort, useMeterSetup } from './meter-setup'
 import { MeterSetupForm } from './meter-setup-form'
 import {
   type Live,
@@ -38,6 +38,7 @@ export function ReadingPad({ jobId, check, found, onSaved }: Props) {
   const { value: draft, set, ready } = useReadingDraft(jobId, check.id)
   const view = useMeterSetup(jobId)
   const [open, setOpen] = useState(false)
+  const summary = useId()
   const judged = specOf(check, found.spec)
   const quantity = check.reading?.quantity ?? 'resistance'
   const live = useLive(draft, view, { quantity, judged })
@@ -53,12 +54,16 @@ export function ReadingPad({ jobId, check, found, onSaved }: Props) {
           <Key
             small
             quiet
-            className="text-second! leading-tight"
-            aria-label={`Meter set-up: ${setupWords(view, quantity)}`}
             aria-expanded={open}
+            aria-describedby={summary}
             onClick={() => setOpen(!open)}
           >
-            {open ? 'Close set-up' : setupShort(view, quantity)}
+            <span className="leading-tight">
+              {open ? 'Close set-up' : 'Meter set-up'}
+              <span id={summary} aria-hidden="true" className="block text-second font-normal">
+                {setupShort(view, quantity)}
+              </span>
+            </span>
           </Key>
         </div>
         {open && (
@@ -83,7 +88,9 @@ export function ReadingPad({ jobId, check, found, onSaved }: Props) {
           quantity={quantity}
           value={draft}
           unit={live.unit}
-          onChange={(next) => set({ ...draft, ...next })}
+          onChange={(next) => {
+            if (ready) set({ ...draft, ...next })
+          }}
           onSave={keep}
           saveBlocked={!ready || saving || live.result === null}
         />

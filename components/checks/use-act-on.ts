@@ -13,7 +13,7 @@ export type Act = Pick<PlannedAction, 'type' | 'id'>
 export type ActOn = (action: Act, reason: string | null) => void
 
 /** Where each kind of step is done. */
-export function hrefOf(jobId: Id, action: Act): string {
+function hrefOf(jobId: Id, action: Act): string {
   switch (action.type) {
     case 'check':
       return `/field/jobs/${jobId}/checks/${action.id}`

@@ -27,11 +27,7 @@ export function WhereItIs({ check, spec, index }: Props) {
 }
 
 /** The component the reading names, else those whose circuit the check's faults sit in. */
-export function componentsOf(
-  check: CheckItem,
-  spec: SpecSheet | null,
-  index: BookIndex,
-): SpecComponent[] {
+function componentsOf(check: CheckItem, spec: SpecSheet | null, index: BookIndex): SpecComponent[] {
   if (spec === null) return []
   const { reading } = check
   if (reading !== null) return spec.components.filter((one) => one.id === reading.component)

@@ -81,7 +81,7 @@ const readingWords = (body: Extract<LogEntry['body'], { kind: 'reading' }>, inde
 const faultWords = (present: boolean | null): string =>
   present === null ? 'not tried' : present ? 'fault there' : 'fault gone'
 
-export const SWAP_WORDS = {
+const SWAP_WORDS = {
   spareFitted: 'spare fitted',
   oldRefitted: 'old part refitted',
   newFitted: 'new part fitted',

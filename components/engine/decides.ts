@@ -1,7 +1,8 @@
 import type { Suspect } from '@/lib/diag/belief'
 import { SOMETHING_ELSE } from '@/lib/diag/book-index'
+import type { Outcome } from '@/lib/diag/outlook'
 import type { Plan } from '@/lib/diag/plan'
-import type { Answer, OutlookRow } from './work'
+import type { Answer } from './work'
 import { outlookKey } from './work'
 
 /** Outcomes rarer than this are left out of the sentence; they stand in the marks of each suspect. */
@@ -11,7 +12,7 @@ const CLEARED = 0.1
 const MOST_SAID = 3
 
 /** Where the outcomes of the plan's own next step would put each suspect; empty for repairs and ways out. */
-export function nextOutlook(answer: Answer | null): readonly OutlookRow[] {
+export function nextOutlook(answer: Answer | null): readonly Outcome[] {
   const next = answer?.plan?.next
   if (answer === null || (next?.type !== 'check' && next?.type !== 'swap')) return []
   return answer.outlooks[outlookKey({ kind: next.type, id: next.id })] ?? []
@@ -38,11 +39,11 @@ const SWAP_NAMES: Record<string, string> = {
   goneAndBack: 'Gone and back',
 }
 
-const shortName = (row: OutlookRow, count: number): string =>
+const shortName = (row: Outcome, count: number): string =>
   SWAP_NAMES[row.outcome] ?? (count === 2 ? (row.good ? 'Good' : 'Bad') : row.name)
 
 /** The plainest true thing about one outcome: who it is, who is out, or who is first and how surely. */
-function effectOf(row: OutlookRow, suspects: readonly Suspect[]): string {
+function effectOf(row: Outcome, suspects: readonly Suspect[]): string {
   const after = (suspect: Suspect) => row.chances[suspect.fault] ?? suspect.chance
   const ranked = [...suspects].sort((a, b) => after(b) - after(a))
   const first = ranked[0]

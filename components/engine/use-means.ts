@@ -10,7 +10,7 @@ import { useBag, useJob, useShop } from '../store/use-rows'
 import { useSession } from '../store/use-session'
 
 /** What the person says about the plan of one job; kept on the phone, changed at any time. */
-export type MeansChoice = {
+type MeansChoice = {
   /** Minute of the day to leave by, in the job's zone; null: no limit (rule R6 leaves it to the person). */
   leaveBy: string | null
   dark: 'bySun' | 'yes' | 'no'
@@ -56,7 +56,7 @@ export function useMeans(jobId: Id): MeansView {
 }
 
 /** The present minute by the phone's clock, in ms; changes once a minute. */
-export function useMinute(): number {
+function useMinute(): number {
   const { clock } = usePorts()
   const [minute, setMinute] = useState(() => Math.floor(clock.now() / MINUTE_MS))
   useEffect(() => {

@@ -1,7 +1,7 @@
 import { type Belief, belief } from '@/lib/diag/belief'
 import type { BookIndex } from '@/lib/diag/book-index'
 import { buildCase } from '@/lib/diag/case'
-import { outlook } from '@/lib/diag/outlook'
+import { type Outcome, outlook } from '@/lib/diag/outlook'
 import { type Means, nextStep, type Plan } from '@/lib/diag/plan'
 import type { SpecSheet } from '@/lib/model/code-book'
 import type { Features } from '@/lib/model/features'
@@ -18,7 +18,6 @@ export type CaseInput = {
   meter: MeterProfile | null
 }
 export type Action = { kind: 'check' | 'swap'; id: string }
-export type OutlookRow = ReturnType<typeof outlook>[number]
 
 export type Question = {
   case: CaseInput
@@ -31,7 +30,7 @@ export type Answer = {
   belief: Belief
   plan: Plan | null
   /** By `check:id` or `swap:id`. */
-  outlooks: Record<string, OutlookRow[]>
+  outlooks: Record<string, Outcome[]>
 }
 
 export const outlookKey = (action: Action): string => `${action.kind}:${action.id}`
@@ -44,7 +43,7 @@ export function workOut(index: BookIndex, question: Question): Answer {
   const next = plan?.next
   if (next !== undefined && (next.type === 'check' || next.type === 'swap'))
     wanted.push({ kind: next.type, id: next.id })
-  const outlooks: Record<string, OutlookRow[]> = {}
+  const outlooks: Record<string, Outcome[]> = {}
   for (const action of wanted) outlooks[outlookKey(action)] = outlook(built, action)
   return { belief: belief(built), plan, outlooks }
 }

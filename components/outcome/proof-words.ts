@@ -4,7 +4,7 @@ import { of100 } from '../reading-strip/figures'
 export type ProofCount = { starts: number; faults: number }
 
 /** The share the mechanic is asked to get under before a machine goes back out: 10 of 100 (shop practice). */
-export const WANTED_SHARE = 0.1
+const WANTED_SHARE = 0.1
 
 export type ProofBound = {
   /** Shares of starts, 0 to 1; null without a start. The rule of three only speaks with no fault seen. */

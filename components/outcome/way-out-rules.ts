@@ -32,7 +32,7 @@ export const SAID_WORDS: Record<SaidByHand, string> = {
 }
 
 /** At or below this a battery counts as empty, in volts (rule R10; table of facts/CHECKS.md 2.6). */
-export const EMPTY_VOLTS = 11.9
+const EMPTY_VOLTS = 11.9
 /** A suspect at this chance or more is likely enough for its own refusal to count. */
 const LIKELY = 0.25
 /** The cause counts as known from here on, or with a fix on record. */

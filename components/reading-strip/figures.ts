@@ -1,7 +1,7 @@
 import type { Quantity } from '@/lib/model/meter-profile'
 
 /** The minus of the screen is U+2212; data keeps the hyphen. */
-export const MINUS = '−'
+const MINUS = '−'
 export const THIN = ' '
 
 const UNIT_WORDS: Record<Quantity, { short: string; spoken: string }> = {

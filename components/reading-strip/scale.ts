@@ -13,7 +13,7 @@ export type AxisInput = {
   /** The quantity cannot be under zero (a resistance): the axis then does not go there. */
   neverNegative: boolean
 }
-export type Tick = { at: number; kind: 'long' | 'mid' | 'short'; label: string | null }
+type Tick = { at: number; kind: 'long' | 'mid' | 'short'; label: string | null }
 export type Axis = { from: number; to: number; step: number; ticks: Tick[] }
 
 const BAND_SHARE = 0.55

@@ -2,7 +2,7 @@ import { JawGlyph } from './jaw-glyph'
 import { type Across, type Verdict, verdictWords } from './verdict'
 
 /** Colour of the verdict word: ink in the day theme, where coloured words are the first to go. */
-export const VERDICT_INK: Record<Verdict, string> = {
+const VERDICT_INK: Record<Verdict, string> = {
   in: 'text-(--verdict-go)',
   outLow: 'text-(--verdict-nogo)',
   outHigh: 'text-(--verdict-nogo)',

@@ -1,4 +1,4 @@
-import type { Outlook } from './suspect-rows'
+import type { Outcome } from '@/lib/diag/outlook'
 
 /** Two suspects' marks nearer than this (of 100) are no difference a person can use. */
 const SAYS_NOTHING_UNDER = 3
@@ -13,7 +13,7 @@ export type Mark = {
 }
 
 /** Where each outcome of the check that is up would put a suspect; empty without a check. */
-export function marksOf(fault: string, outlook: readonly Outlook[]): Mark[] {
+export function marksOf(fault: string, outlook: readonly Outcome[]): Mark[] {
   const two = outlook.length === 2
   return outlook.flatMap((row, i) => {
     const chance = row.chances[fault]
@@ -29,9 +29,9 @@ export function marksOf(fault: string, outlook: readonly Outlook[]): Mark[] {
   })
 }
 
-const twoWords = (row: Outlook): string => (row.good ? 'if good' : 'if bad')
+const twoWords = (row: Outcome): string => (row.good ? 'if good' : 'if bad')
 
-function shapeOf(row: Outlook, i: number, count: number): Mark['shape'] {
+function shapeOf(row: Outcome, i: number, count: number): Mark['shape'] {
   if (row.good) return 'ring'
   if (i === count - 1 || count === 2) return 'cross'
   return i % 2 === 1 ? 'diamond' : 'square'

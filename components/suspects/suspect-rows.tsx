@@ -2,7 +2,7 @@
 import { type ReactNode, useState } from 'react'
 import type { Suspect } from '@/lib/diag/belief'
 import { SOMETHING_ELSE } from '@/lib/diag/book-index'
-import type { outlook } from '@/lib/diag/outlook'
+import type { Outcome } from '@/lib/diag/outlook'
 import { of100 } from '../reading-strip/figures'
 import { Key } from '../ui/key'
 import { ChanceRail } from './chance-rail'
@@ -10,13 +10,11 @@ import { MarkPicture } from './mark-sign'
 import { type Mark, marksOf, saysNothing } from './outlook-words'
 import { useSlide } from './use-slide'
 
-export type Outlook = ReturnType<typeof outlook>[number]
-
 type Props = {
   /** Sorted, ruled out last, "something else" always in: as the engine gives them. */
   suspects: readonly Suspect[]
   /** Outcomes of the check that is up; empty when none is. */
-  outlook?: readonly Outlook[]
+  outlook?: readonly Outcome[]
   /** What ruled a suspect out, in words, by the entry's id. */
   entryWords?: (entryId: string) => string
   /** The suspect whose "why" is open, and what to show there. */
@@ -82,7 +80,7 @@ function foldWords(ranked: readonly Ranked[], shown: readonly Ranked[]): string 
 
 type One = Props & { suspect: Suspect }
 
-function Standing(props: One & { rank: number; outlook: readonly Outlook[] }) {
+function Standing(props: One & { rank: number; outlook: readonly Outcome[] }) {
   const { suspect, rank } = props
   const marks = marksOf(suspect.fault, props.outlook)
   const silent = saysNothing(marks)
