@@ -2,7 +2,7 @@ import { may } from '@/lib/shop/permissions'
 import type { Op } from '@/lib/sync/protocol/op'
 import { ACCEPTED, type Draft, type Outcome, reject, waitFor } from '../draft'
 
-/** advice.keep: a recommendation followed or overridden, kept whole (R23). Overriding needs a reason. */
+/** advice.keep: a recommendation followed or overridden, kept whole (R23). */
 export function planAdviceKeep(op: Extract<Op, { kind: 'advice.keep' }>, draft: Draft): Outcome {
   const advice = op.fields
   if (op.entityId !== advice.id) return reject('invalid', 'entityId')
