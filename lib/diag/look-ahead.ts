@@ -20,17 +20,16 @@ export type Spot = {
 /** A first action with the cost of the plan found behind it (weighted by the spot's mass). */
 export type Candidate = { type: ActionType; index: number; cost: number }
 
-/** How many of the best checks by one step are looked at two steps deep. */
-const DEEP = 8
+/** How many of the best first actions by one step are looked at two steps deep. */
+const DEEP = 10
 
 /** All first actions, cheapest first; those not worth a second step carry their one-step cost. */
 export function lookAhead(problem: Problem, spot: Spot, steps: 1 | 2 = 2): Candidate[] {
   const first = actions(problem, spot).map((a) => ({ ...a, cost: oneStep(problem, spot, a) }))
   first.sort((a, b) => a.cost - b.cost)
   if (steps === 1) return first
-  let checks = 0
-  const deeper = first.map((a) => {
-    if (a.type === 'stop' || (a.type === 'check' && ++checks > DEEP)) return a
+  const deeper = first.map((a, rank) => {
+    if (a.type === 'stop' || rank >= DEEP) return a
     return { ...a, cost: Math.min(a.cost, twoSteps(problem, spot, a)) }
   })
   return deeper.sort((a, b) => a.cost - b.cost)
