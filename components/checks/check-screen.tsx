@@ -6,6 +6,7 @@ import type { Id } from '@/lib/model/id'
 import { type JobCase, useCase } from '../engine/use-case'
 import { useBook } from '../store/use-book'
 import { Caution } from '../ui/caution'
+import { KeyLink } from '../ui/key'
 import { RuleEdge } from '../ui/rule-edge'
 import { Screen } from '../ui/screen'
 import { BookGate } from './book-gate'
@@ -58,7 +59,17 @@ function OneCheck({ jobId, check, index, found }: Props) {
     (entry) => 'checkId' in entry.body && entry.body.checkId === check.id,
   )
   return (
-    <Screen title={check.name} second={check.purpose}>
+    <Screen
+      title={check.name}
+      second={check.purpose}
+      foot={
+        check.reading !== null && (
+          <KeyLink kind="main" href={`/field/jobs/${jobId}/checks/${check.id}/reading`}>
+            Take the reading
+          </KeyLink>
+        )
+      }
+    >
       <Separates jobId={jobId} check={check} index={index} />
       <CheckFacts check={check} index={index} />
       {check.reading !== null && (

@@ -52,7 +52,7 @@ function OneAtATime({ steps }: { steps: CheckItem['steps'] }) {
       </p>
       <div className="grid grid-cols-2 gap-2">
         <Key disabled={at === 0} onClick={() => setAt(at - 1)}>
-          Before
+          Previous
         </Key>
         <Key kind="plate" disabled={at === steps.length - 1} onClick={() => setAt(at + 1)}>
           Next
@@ -62,20 +62,20 @@ function OneAtATime({ steps }: { steps: CheckItem['steps'] }) {
   )
 }
 
+/** Short, but each caution still stands before its step. */
 function OneLine({ check }: { check: CheckItem }) {
   return (
     <p>
       {check.steps.map((step, i) => (
         <span key={step.text}>
+          {step.caution !== null && (
+            <b>
+              {step.caution.signal}: {step.caution.text}{' '}
+            </b>
+          )}
           <span className="figures">{i + 1}</span> {step.text}{' '}
         </span>
       ))}
-      Cautions of the steps:{' '}
-      {check.steps
-        .map((step) => step.caution)
-        .filter((caution) => caution !== null)
-        .map((caution) => `${caution.signal}: ${caution.text}`)
-        .join(' ') || 'none.'}
     </p>
   )
 }

@@ -7,7 +7,7 @@ import { clockTime } from '../field/times'
 import { useDraft } from '../store/use-draft'
 import { useStamp } from '../store/use-stamp'
 import { Field } from '../ui/field'
-import { Key, KeyLink } from '../ui/key'
+import { Key } from '../ui/key'
 import { RuleEdge } from '../ui/rule-edge'
 import { aboutInstant } from './about-time'
 import { useTimesDone } from './check-steps'
@@ -43,11 +43,6 @@ function Recording({ jobId, check, index, before, onSaved }: Props) {
       <p>
         <b>Write down:</b> {check.record}
       </p>
-      {check.reading !== null && (
-        <KeyLink kind="main" href={`/field/jobs/${jobId}/checks/${check.id}/reading`}>
-          Take the reading
-        </KeyLink>
-      )}
       <HowDoneForm value={how} onChange={set} timeProblem={timeProblem} />
       {check.reading !== null && <p className="font-bold">Without a figure:</p>}
       <div className="grid gap-2">

@@ -44,7 +44,8 @@ export function Separates({ jobId, check, index }: Props) {
                 {marks.map((mark) => (
                   <span key={mark.outcome} className="inline-flex items-center gap-1.5">
                     <MarkPicture shape={mark.shape} />
-                    {mark.words} <span className="figures text-ink">{of100(mark.chance)}</span>
+                    {mark.words}{' '}
+                    <span className="figures whitespace-nowrap text-ink">{of100(mark.chance)}</span>
                   </span>
                 ))}
               </span>

@@ -2,6 +2,7 @@ import type { Suspect } from '@/lib/diag/belief'
 import { SOMETHING_ELSE } from '@/lib/diag/book-index'
 import type { Outcome } from '@/lib/diag/outlook'
 import type { Plan } from '@/lib/diag/plan'
+import { shortName } from '../suspects/outlook-words'
 import type { Answer } from './work'
 import { outlookKey } from './work'
 
@@ -29,18 +30,12 @@ export function decidesWords(answer: Answer, plan: Plan): string {
   const suspects = answer.belief.suspects
   return outlook
     .filter((row) => said.includes(row))
-    .map((row) => `${shortName(row, outlook.length)}: ${effectOf(row, suspects)}.`)
+    .map((row) => `${outcomeName(row, outlook.length)}: ${effectOf(row, suspects)}.`)
     .join(' ')
 }
 
-const SWAP_NAMES: Record<string, string> = {
-  noChange: 'No change',
-  goneOnce: 'Gone but not back',
-  goneAndBack: 'Gone and back',
-}
-
-const shortName = (row: Outcome, count: number): string =>
-  SWAP_NAMES[row.outcome] ?? (count === 2 ? (row.good ? 'Good' : 'Bad') : row.name)
+const outcomeName = (row: Outcome, count: number): string =>
+  count === 2 ? (row.good ? 'Good' : 'Bad') : shortName(row)
 
 /** The plainest true thing about one outcome: who it is, who is out, or who is first and how surely. */
 function effectOf(row: Outcome, suspects: readonly Suspect[]): string {

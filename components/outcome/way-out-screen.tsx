@@ -120,7 +120,6 @@ function Deciding({ jobId, found, onSaved, children }: DecidingProps) {
         value={draft.said}
         onChange={(said) => set({ ...draft, said })}
         options={SAID_BY_HAND.map((value) => ({ value, label: SAID_WORDS[value] }))}
-        columns={2}
       />
       {refused.length > 0 && (
         <section aria-labelledby="refused" className="grid gap-1 border-2 border-nogo p-3">

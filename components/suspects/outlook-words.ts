@@ -21,13 +21,23 @@ export function marksOf(fault: string, outlook: readonly Outcome[]): Mark[] {
     return [
       {
         outcome: row.outcome,
-        words: two ? twoWords(row) : row.name,
+        words: two ? twoWords(row) : shortName(row),
         shape: shapeOf(row, i, outlook.length),
         chance,
       },
     ]
   })
 }
+
+/** A swap's outcomes are the same three everywhere; their long names stand on the swap itself. */
+const SWAP_NAMES: Record<string, string> = {
+  noChange: 'No change',
+  goneOnce: 'Gone but not back',
+  goneAndBack: 'Gone and back',
+}
+
+export const shortName = (row: Pick<Outcome, 'outcome' | 'name'>): string =>
+  SWAP_NAMES[row.outcome] ?? row.name
 
 const twoWords = (row: Outcome): string => (row.good ? 'if good' : 'if bad')
 

@@ -105,7 +105,8 @@ function MarkWords({ marks, silent }: { marks: readonly Mark[]; silent: boolean 
       {marks.map((mark) => (
         <span key={mark.outcome} className="inline-flex items-center gap-1.5">
           <MarkPicture shape={mark.shape} />
-          {mark.words} <span className="figures text-ink">{of100(mark.chance)}</span>
+          {mark.words}{' '}
+          <span className="figures whitespace-nowrap text-ink">{of100(mark.chance)}</span>
         </span>
       ))}
     </p>
