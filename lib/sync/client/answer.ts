@@ -169,11 +169,12 @@ class AnswerPlan {
     const aside = new Map(
       ((await readMeta(db, 'setAside')) ?? []).map((one) => [rowKey(one.entity, one.id), one]),
     )
-    for (const row of rows) {
+    const bases = await Promise.all(rows.map((row) => this.#baseOf(row)))
+    for (const [index, row] of rows.entries()) {
       if (row.entity === 'book') this.applied.bookChanged = true
       if (!isStored(row.entity)) continue
       const key = rowKey(row.entity, row.id)
-      const base = await this.#baseOf(key, row)
+      const base = bases[index]
       aside.delete(key)
       if (base === undefined) {
         aside.set(key, { entity: row.entity, id: row.id, seq: row.seq })
@@ -190,10 +191,11 @@ class AnswerPlan {
   }
 
   /** The shop's row sealed; null when it is gone, undefined when this version cannot read it. */
-  async #baseOf(key: string, row: PullRow): Promise<Sealed | null | undefined> {
+  async #baseOf(row: PullRow): Promise<Sealed | null | undefined> {
     if (row.state !== 'present' || !isStored(row.entity)) return null
     const read = readRow(row.entity, row.row)
-    return read === undefined ? undefined : await sealJson(this.#core.keys.store, key, read)
+    if (read === undefined) return undefined
+    return await sealJson(this.#core.keys.store, rowKey(row.entity, row.id), read)
   }
 
   /** Rows whose ops on top have changed, though the shop's row has not. */
