@@ -8,6 +8,6 @@ export default defineConfig({
   retries: 0,
   forbidOnly: true,
   timeout: 120_000,
-  expect: { timeout: 10_000 },
+  expect: { timeout: 20_000 },
   reporter: [['list'], ['json', { outputFile: '.data/results/e2e.json' }]],
 })

@@ -23,7 +23,7 @@ test('the main job, from flight mode to the desk', async ({
   partsDesk,
   shot,
 }) => {
-  test.setTimeout(420_000)
+  test.setTimeout(600_000)
 
   await test.step('signed in once with signal, the phone holds all it needs', async () => {
     const page = await phone.open('/login')
