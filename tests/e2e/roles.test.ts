@@ -1,0 +1,68 @@
+import { expect, signIn, test } from '../support/e2e/test'
+
+/** Sign-in of each role, where it begins, and what the server refuses each (F13, P11). */
+const BEGINS = [
+  { email: 'mechanic@demo.invalid', home: /\/field$/ },
+  { email: 'guide@demo.invalid', home: /\/field$/ },
+  { email: 'dispatcher@demo.invalid', home: /\/desk$/ },
+  { email: 'parts@demo.invalid', home: /\/desk/ },
+  { email: 'owner@demo.invalid', home: /\/desk$/ },
+]
+
+for (const { email, home } of BEGINS)
+  test(`${email} signs in, is known to the server, and signs out for good`, async ({
+    desk,
+    server,
+  }) => {
+    const page = await desk.open('/login')
+    await signIn(page, email, home)
+    const me = await desk.context().request.get('/api/me')
+    expect(me.status()).toBe(200)
+    const cookies = await desk.context().cookies()
+    const copied = cookies.map((one) => `${one.name}=${one.value}`).join('; ')
+    const csrf = (await (await desk.context().request.get('/api/auth/csrf')).json()) as {
+      csrfToken: string
+    }
+    await desk.context().request.post('/api/auth/signout', {
+      form: { csrfToken: csrf.csrfToken, json: 'true', callbackUrl: '/' },
+    })
+    const after = await fetch(`${server.base}/api/me`, { headers: { cookie: copied } })
+    expect(after.status).toBe(401)
+  })
+
+test('a wrong password gets one sentence and no session', async ({ desk }) => {
+  const page = await desk.open('/login')
+  await page.getByLabel('E-mail').fill('owner@demo.invalid')
+  await page.getByLabel('Password').fill('not this one')
+  await page.getByRole('button', { name: 'Sign in' }).click()
+  await expect(page.getByRole('alert').filter({ hasText: /\S/ }).first()).toBeVisible()
+  expect((await desk.context().request.get('/api/me')).status()).toBe(401)
+})
+
+test('nobody, a mechanic and a stranger are refused what is not theirs', async ({
+  desk,
+  server,
+}) => {
+  for (const path of [
+    '/api/desk/jobs',
+    '/api/desk/parts',
+    '/api/codebook',
+    '/api/events',
+    '/api/me',
+  ])
+    expect((await fetch(`${server.base}${path}`)).status, path).toBe(401)
+  const page = await desk.open('/login')
+  await signIn(page, 'parts@demo.invalid', /\/desk/)
+  const unknown = '01980000-0000-7000-8000-00000000ffff'
+  const foreign = '01980000-0000-7000-8000-000000000651'
+  const ask = desk.context().request
+  const random = await ask.get(`/api/desk/jobs/${unknown}`)
+  const theirs = await ask.get(`/api/desk/jobs/${foreign}`)
+  expect(theirs.status()).toBe(random.status())
+  expect(await theirs.text()).toBe(await random.text())
+  await page.goto('/login')
+  await desk.context().clearCookies()
+  await signIn(page, 'guide@demo.invalid', /\/field$/)
+  expect((await ask.get('/api/desk/jobs')).status()).toBe(403)
+  expect((await ask.get('/api/desk/parts')).status()).toBe(403)
+})
