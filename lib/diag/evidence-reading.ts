@@ -40,13 +40,12 @@ export function readingEvidence(sight: Sight, entry: LogEntry, body: ReadingBody
   }
 }
 
-/** The value the pieces are factors of: the sheet's nominal, the middle of its limits, else the book's fallback. */
+/** The value the pieces are factors of: the sheet's nominal, the middle of its limits, else the book's fallback; never 0. */
 export function nominalOf(spec: SpecValue | null, model: Model): number | null {
-  const own = middleOf(spec)
-  if (own !== null) return own
   const { low = null, high = null } = model.fallback ?? {}
-  if (low !== null && high !== null) return (low + high) / 2
-  return low ?? high
+  const both = low !== null && high !== null ? (low + high) / 2 : null
+  const value = middleOf(spec) ?? both ?? low ?? high
+  return value === 0 ? null : value
 }
 
 /** The living twin reading of the same check, the latest; null without one. */
@@ -85,7 +84,7 @@ export function likelihood(pieces: readonly Piece[], shown: Shown, nominal: numb
   const x = shown.at / nominal
   const u = Math.max(shown.standardU / size, 1e-9)
   const far = Math.abs(x) <= 5 ? 1 : (5 / Math.abs(x)) ** 2
-  return (1 - OUTLIERS) * density(pieces, x, u) + (OUTLIERS * far) / 10
+  return (1 - OUTLIERS) * density(pieces, x, u) + (OUTLIERS * far) / 20
 }
 
 function densityFactor(
