@@ -26,7 +26,7 @@ for (const { who, home, sections, reads } of ROLES) {
       const links = page.getByRole('navigation', { name: 'Desk' }).getByRole('link')
       await expect(links).toHaveText([...sections])
     }
-    const statuses = await page.evaluate(async () => {
+    const statuses = await page.evaluate(() => {
       const paths = ['/api/desk/jobs', '/api/desk/jobs?whose=own', '/api/desk/parts']
       return Promise.all(paths.map(async (path) => (await fetch(path)).status))
     })

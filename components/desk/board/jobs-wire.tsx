@@ -3,6 +3,7 @@
 import { JobTag } from '@/components/ui/job-tag'
 import { WitnessMark } from '@/components/ui/witness-mark'
 import type { BoardJob } from '@/lib/model/desk'
+import type { Job } from '@/lib/model/job'
 import { EXPOSURES, type Exposure, exposureOf } from '@/lib/shop/exposure'
 import { counted, JOB_STATE_WORDS, WAY_OUT_WORDS } from '../../field/words'
 import { useDesk } from '../desk-context'
@@ -45,11 +46,21 @@ export function JobsWire({ rows, picked, fresh, dark }: Props) {
   )
 }
 
-const EXPOSURE_WORDS: Partial<Record<Exposure, string>> = {
-  hurtOrMissing: 'Hurt or missing',
-  exposedAndStill: 'Exposed',
-  noPosition: 'No position',
-  aloneInTheDark: 'Alone, dark',
+/** What makes the people of a job exposed, in words; null when nothing is known to. */
+function exposureWords(exposure: Exposure, { hurt, missing }: Job['people']): string | null {
+  switch (exposure) {
+    case 'hurtOrMissing':
+      return [hurt && 'hurt', missing && 'missing'].filter(Boolean).join(', ')
+    case 'exposedAndStill':
+      return 'exposed'
+    case 'noPosition':
+      return 'no position'
+    case 'aloneInTheDark':
+      return 'alone, dark'
+    case 'inTheField':
+    case 'safe':
+      return null
+  }
 }
 
 function BelowTag({ row, fresh, dark }: { row: BoardJob; fresh: number; dark: boolean }) {
@@ -57,16 +68,17 @@ function BelowTag({ row, fresh, dark }: { row: BoardJob; fresh: number; dark: bo
   const now = useNow()
   const { job } = row
   const exposure = exposureOf(job, dark)
-  const heard = row.heardAt ?? null
+  const words = exposureWords(exposure, job.people)
+  const heard = row.heardAt
   const inWords =
     row.photosMissing > 0 ? `${counted(row.photosMissing, 'photo')} on the phone` : 'all in'
   return (
     <p className="mt-1 flex flex-wrap items-baseline gap-x-2 pl-12 text-second text-ink2">
-      {EXPOSURE_WORDS[exposure] ? (
+      {words ? (
         <strong
           className={EXPOSURES[exposure] < 4 ? 'caps text-row text-nogo' : 'caps text-row text-ink'}
         >
-          {EXPOSURE_WORDS[exposure]}
+          {words}
         </strong>
       ) : null}
       <strong className="caps text-row text-ink">

@@ -118,7 +118,7 @@ function Night({ span, x, words }: { span: Span; x: (at: number) => number; word
         className="fill-dark stroke-ink"
         strokeWidth="2"
       />
-      {width > 64 ? (
+      {width > 50 ? (
         <g className="fill-darkInk" textAnchor="middle">
           <text x={middle} y="26" className="caps" fontSize="22">
             Dark

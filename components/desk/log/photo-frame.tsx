@@ -2,6 +2,7 @@
 
 import { useState } from 'react'
 import { size } from '@/components/field/times'
+import { Key } from '@/components/ui/key'
 import { LogIcon } from '@/components/ui/log-icon'
 import type { PhotoRef } from '@/lib/model/photo'
 
@@ -13,6 +14,18 @@ type Props = { photo: PhotoRef; caption: string | null; here: boolean }
  */
 export function PhotoFrame({ photo, caption, here }: Props) {
   const [bright, setBright] = useState(false)
+  const [failed, setFailed] = useState(false)
+  if (here && failed) {
+    return (
+      <p className="desk-photo-missing">
+        <LogIcon shape="frame" className="size-8 shrink-0" />
+        <span className="min-w-0 flex-1">The photo is at the shop but could not be loaded.</span>
+        <Key small={true} quiet={true} onClick={() => setFailed(false)}>
+          Try again
+        </Key>
+      </p>
+    )
+  }
   if (!here) {
     return (
       <p className="desk-photo-missing">
@@ -37,6 +50,7 @@ export function PhotoFrame({ photo, caption, here }: Props) {
         height={photo.height}
         alt={caption ?? 'Photo without a caption'}
         loading="lazy"
+        onError={() => setFailed(true)}
       />
     </button>
   )
