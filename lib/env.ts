@@ -25,7 +25,9 @@ export function env(): Env {
   const answer = settings.safeParse(process.env)
   if (!answer.success) {
     const names = [...new Set(answer.error.issues.map((issue) => issue.path.join('.')))]
-    throw new Error(`Settings missing or wrong: ${names.join(', ')}. npm start writes them to .env.local.`)
+    throw new Error(
+      `Settings missing or wrong: ${names.join(', ')}. npm start writes them to .env.local.`,
+    )
   }
   parsed = answer.data
   return parsed

@@ -3,8 +3,9 @@
  * supports a fault when at least as many of 100 faults in its role set it as the circuit's faults do on
  * average (no fault of the circuit weighed above another), and argues against it below half of that.
  */
-import type { CircuitRole, FailureItem } from '@/lib/model/code-book'
+import type { FailureItem } from '@/lib/model/code-book'
 import type { CodeSeen } from '@/lib/model/code-seen'
+import type { CircuitRole } from '@/lib/model/code-table'
 import type { Features } from '@/lib/model/features'
 import { assertNever } from '@/lib/model/result'
 import { type BookIndex, failureOf, wordName } from './book-index'

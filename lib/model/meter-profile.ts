@@ -22,7 +22,6 @@ export const meterFunction = z.strictObject({
   digits: z.int().check(z.minimum(0), z.maximum(200)),
   resolution: z.number().check(z.positive()),
 })
-export type MeterFunction = z.infer<typeof meterFunction>
 
 /** A meter with its leads. `leadsOhm` is the range two leads and their contacts add to a resistance. */
 export const meterProfile = z.strictObject({

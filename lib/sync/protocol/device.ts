@@ -1,6 +1,5 @@
 import * as z from 'zod/mini'
 import { id } from '@/lib/model/id'
-import { actor } from '@/lib/model/person'
 
 /**
  * POST /api/devices: tells the shop the public half of a phone's key. Needs a session; sent as often as
@@ -22,9 +21,6 @@ export type EnrolRequest = z.infer<typeof enrolRequest>
 
 export const enrolAnswer = z.object({ deviceId: id, serverTime: z.string() })
 export type EnrolAnswer = z.infer<typeof enrolAnswer>
-
-/** GET /api/me: who the session says is at work; 401 without a session. */
-export const meAnswer = actor
 
 /** Names of the headers that carry and sign a push or a photo (message.ts). */
 export const HEADERS = {

@@ -78,7 +78,6 @@ export const PULL_ENTITIES = [
   'photo',
   'book',
 ] as const
-export type PullEntity = (typeof PULL_ENTITIES)[number]
 
 /** One row of a pull, in change order. `evict`: it left this person's scope; `deleted`: a tombstone. */
 export const pullRow = z.object({
