@@ -64,22 +64,10 @@ export const opResult = z.discriminatedUnion('result', [
 ])
 export type OpResult = z.infer<typeof opResult>
 
-/** Entities that travel down. `book` only says that a new code book version is published. */
-export const PULL_ENTITIES = [
-  'shop',
-  'person',
-  'machineModel',
-  'machine',
-  'meterProfile',
-  'bag',
-  'job',
-  'logEntry',
-  'partRequest',
-  'photo',
-  'book',
-] as const
-
-/** One row of a pull, in change order. `evict`: it left this person's scope; `deleted`: a tombstone. */
+/**
+ * One row of a pull, in change order. `entity` is shop, person, machineModel, machine, meterProfile, bag, job,
+ * logEntry, partRequest, photo or book (only that a new version is published); others are ignored.
+ * `evict`: it left this person's scope; `deleted`: a tombstone. */
 export const pullRow = z.object({
   seq: z.int(),
   entity: z.string(),
