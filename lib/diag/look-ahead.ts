@@ -6,7 +6,7 @@
 
 import type { ActionType } from './search'
 import type { Problem, Repair } from './search-problem'
-import { bestStop, dot, massOf, priceOf, survive } from './search-steps'
+import { dot, massOf, priceOf, survive } from './search-steps'
 
 /** A state by lists, for any number of checks and repairs. */
 export type Spot = {
@@ -97,8 +97,7 @@ export function leastCost(problem: Problem, w: Float64Array): number {
 type Action = { type: ActionType; index: number }
 
 function actions(problem: Problem, spot: Spot): Action[] {
-  const { stop } = bestStop(problem, spot.w)
-  const list: Action[] = stop < 0 ? [] : [{ type: 'stop', index: stop }]
+  const list: Action[] = problem.stops.map((_, index) => ({ type: 'stop', index }))
   for (const index of spot.repairs) list.push({ type: 'repair', index })
   for (const index of spot.checks) list.push({ type: 'check', index })
   return list
@@ -123,7 +122,8 @@ function stepCost(
   action: Action,
   then: (problem: Problem, next: Spot) => number,
 ): number {
-  if (action.type === 'stop') return bestStop(problem, spot.w).cost
+  const stop = action.type === 'stop' ? problem.stops[action.index] : undefined
+  if (stop !== undefined) return dot(spot.w, stop.byFault)
   const step =
     action.type === 'check'
       ? checked(problem, spot, action.index)

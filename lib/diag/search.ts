@@ -157,19 +157,19 @@ function refresh(option: Option): void {
 function optionsAt(search: Search, point: Point): Option[] {
   const { problem } = search
   const common = commonOf(search, point)
-  const { stop, cost } = bestStop(problem, point.w)
-  const options: Option[] = []
-  if (stop >= 0)
-    options.push({
-      fixed: cost,
-      exact: true,
-      children: [],
+  const options: Option[] = problem.stops.map(({ byFault }, index) => {
+    const cost = dot(point.w, byFault)
+    return {
       type: 'stop',
-      index: stop,
+      index,
       price: 0,
       minutes: 0,
       bound: cost,
-    })
+      fixed: cost,
+      exact: true,
+      children: [],
+    }
+  })
   eachLeft(search, point, (type, priced) => {
     const { index, price, minutes } = priced
     const bound = boundOf(search, point, { type, priced, common })
