@@ -7,12 +7,12 @@ import { UndoBar } from '../checks/undo-bar'
 import { useJustSaved } from '../checks/use-just-saved'
 import { NotYours, useMayLog } from '../checks/use-may'
 import { useCase } from '../engine/use-case'
+import { ClearedPart } from '../field/codes/cleared-part'
 import { clockTime } from '../field/times'
 import { useBook } from '../store/use-book'
 import { Key, KeyLink } from '../ui/key'
 import { RuleEdge } from '../ui/rule-edge'
 import { Screen } from '../ui/screen'
-import { CodesCleared } from './codes-cleared'
 import { FixForm } from './fix-form'
 
 /** What was mended, temporary or for good; then the codes, then the proof run. */
@@ -65,7 +65,7 @@ export function FixScreen({ jobId }: { jobId: Id }) {
         />
       )}
       <Fixes fixes={fixes} />
-      <CodesCleared jobId={jobId} found={found} />
+      <ClearedPart jobId={jobId} entries={found.entries} sheet={found.spec} />
       <Key small onClick={() => setAnother(true)}>
         Record another fix
       </Key>

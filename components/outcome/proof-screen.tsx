@@ -9,6 +9,7 @@ import { useJustSaved } from '../checks/use-just-saved'
 import { NotYours, useMayLog } from '../checks/use-may'
 import { NotSaved, useSave } from '../checks/use-save'
 import { type JobCase, useCase } from '../engine/use-case'
+import { ReadCodesAgain } from '../field/codes/read-codes-again'
 import { useStamp } from '../store/use-stamp'
 import { Caution } from '../ui/caution'
 import { Choice } from '../ui/choice'
@@ -17,7 +18,6 @@ import { Key, KeyLink } from '../ui/key'
 import { RuleEdge } from '../ui/rule-edge'
 import { Screen } from '../ui/screen'
 import { moreSentence, proofBound, proofSentence, stopwatch } from './proof-words'
-import { ReadCodesAgain } from './read-codes-again'
 import {
   minutesOf,
   type ProofDraft,
@@ -263,7 +263,7 @@ function SavedProof({ jobId, entry, found, onUndone }: SavedProps) {
         <span className="figures">{body.minutes}</span> minutes, engine {body.hot ? 'hot' : 'cold'}.
         {!body.hot && ' A fault that only comes when hot is not touched by this run.'}
       </p>
-      <ReadCodesAgain jobId={jobId} found={found} />
+      <ReadCodesAgain jobId={jobId} entries={found.entries} />
     </Screen>
   )
 }

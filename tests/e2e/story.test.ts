@@ -6,7 +6,8 @@ import { expect, signIn, test } from '../support/e2e/test'
  * desk. Figures: shared worked case of the readings (JCGM 100 and 106), 12 clean starts by
  * Clopper-Pearson, break-even by expected cost.
  */
-const press = (page: Page, name: string | RegExp) => page.getByRole('button', { name, exact: true }).click()
+const press = (page: Page, name: string | RegExp) =>
+  page.getByRole('button', { name, exact: true }).click()
 const follow = (page: Page, name: string | RegExp) => page.getByRole('link', { name }).click()
 
 /** Chance of 100 of a suspect on the CHECKS tab, as shown. */
@@ -152,11 +153,11 @@ test('the main job, from flight mode to the desk', async ({
     const page = await phone.open(`${jobPath}/fix?fault=ignitionCoilPart`)
     await page.getByLabel('What you did').fill('New coil fitted, connector seated.')
     await press(page, 'Record the fix')
-    await page.getByRole('radio', { name: 'None came back' }).check({ force: true })
     await shot(page, 'fix')
-    await page.getByRole('button', { name: 'Codes cleared' }).press('Enter')
-    await press(page, 'Cleared')
-    await expect(page.getByText(/Codes cleared\. None came back/)).toBeVisible()
+    await page.getByRole('button', { name: 'Codes are cleared' }).press('Enter')
+    await press(page, 'Yes, cleared')
+    await press(page, 'None back')
+    await expect(page.getByText(/none came back/)).toBeVisible()
     await phone.open(`${jobPath}/proof`)
     for (let starts = 0; starts < 5; starts++) await press(page, 'Clean start')
     await phone.kill()
@@ -213,6 +214,7 @@ test('the main job, from flight mode to the desk', async ({
     await expect(page.getByText('Below: this phone only', { exact: false })).toBeVisible()
     await shot(page, 'log')
     await phone.open('/field/unsent')
+    await expect(page.getByRole('button', { name: 'Try sending now' })).toBeVisible()
     await shot(page, 'unsent')
   })
 

@@ -2,7 +2,7 @@ import { describe, expect, it } from 'vitest'
 import { swapProgress } from '@/components/checks/swap-progress'
 import { swapSays } from '@/components/checks/swap-words'
 import { saysNothingOf, twinOf } from '@/components/checks/twin-words'
-import { codesOnRecord } from '@/components/outcome/codes-cleared'
+import { codesOnRecord } from '@/components/field/codes/codes-on-record'
 import {
   moreSentence,
   proofBound,

@@ -1,18 +1,20 @@
 'use client'
 
-import { useState } from 'react'
 import { useRecord } from '@/components/store/use-record'
 import { useSession } from '@/components/store/use-session'
 import { useStamp } from '@/components/store/use-stamp'
 import { announce } from '@/components/ui/announce'
-import { Choice } from '@/components/ui/choice'
 import { Hold } from '@/components/ui/hold'
-import { Key } from '@/components/ui/key'
+import { KeyLink } from '@/components/ui/key'
 import { RuleEdge } from '@/components/ui/rule-edge'
 import { Steps } from '@/components/ui/steps'
+import { living } from '@/lib/diag/case'
 import type { SpecSheet } from '@/lib/model/code-book'
 import type { LogEntry } from '@/lib/model/log-entry'
 import { mayLog } from '@/lib/shop/permissions'
+import { jobHref } from '../route'
+import { codesOnRecord } from './codes-on-record'
+import { ReadCodesAgain } from './read-codes-again'
 
 type Props = { jobId: string; entries: readonly LogEntry[]; sheet: SpecSheet | null }
 
@@ -20,27 +22,41 @@ type Props = { jobId: string; entries: readonly LogEntry[]; sheet: SpecSheet | n
 export function ClearedPart({ jobId, entries, sheet }: Props) {
   const session = useSession()
   const roles = session.kind === 'ready' ? session.actor.roles : []
-  const recorded = entries.some((e) => e.body.kind === 'code' || e.body.kind === 'codesUnreadable')
-  const last = entries.findLast((e) => e.body.kind === 'codesCleared')
+  const again = living(entries).some((entry) => entry.body.kind === 'codesCleared')
   if (!mayLog(roles, 'codesCleared', false)) {
     return null
   }
   return (
     <section className="grid gap-3">
-      <RuleEdge>Clearing codes</RuleEdge>
-      {recorded && sheet !== null ? (
-        <Steps steps={sheet.showCodes.clearSteps.map((text) => ({ text }))} />
-      ) : null}
-      {recorded ? (
-        <ClearKey jobId={jobId} again={last !== undefined} />
+      <RuleEdge>Clear the codes</RuleEdge>
+      {codesOnRecord(entries) ? (
+        <>
+          <ClearSteps sheet={sheet} />
+          <ClearKey jobId={jobId} again={again} />
+        </>
       ) : (
-        <p className="border-2 border-ink p-3 font-bold">
-          Refused until the codes are taken down, or marked as not readable with a reason. What is
-          cleared is gone for everybody after you.
-        </p>
+        <div className="grid gap-2 border-2 border-ink p-3">
+          <p className="font-bold">
+            Refused until the codes are taken down, or marked as not readable with a reason. What is
+            cleared is gone for everybody after you.
+          </p>
+          <KeyLink href={jobHref(jobId, 'codes')}>Take the codes down</KeyLink>
+        </div>
       )}
-      {last === undefined ? null : <ReadAgain jobId={jobId} last={last} />}
+      <ReadCodesAgain jobId={jobId} entries={entries} />
     </section>
+  )
+}
+
+function ClearSteps({ sheet }: { sheet: SpecSheet | null }) {
+  if (sheet === null) {
+    return <p>This model has no spec sheet with steps for clearing. Follow the maker’s manual.</p>
+  }
+  return (
+    <>
+      <Steps steps={sheet.showCodes.clearSteps.map((text) => ({ text }))} />
+      <p className="text-second text-ink2">From: {sheet.showCodes.source}</p>
+    </>
   )
 }
 
@@ -59,53 +75,5 @@ function ClearKey({ jobId, again }: { jobId: string; again: boolean }) {
       confirmLabel="Yes, cleared"
       onConfirm={clear}
     />
-  )
-}
-
-/** After a start the codes are read again; the answer stands in place of "not yet". */
-function ReadAgain({ jobId, last }: { jobId: string; last: LogEntry }) {
-  const record = useRecord()
-  const stamp = useStamp()
-  const [answer, setAnswer] = useState<'noneBack' | 'back' | null>(null)
-  const [problem, setProblem] = useState<string | null>(null)
-  if (last.body.kind !== 'codesCleared') {
-    return null
-  }
-  if (last.body.readAgain !== 'notYet') {
-    return (
-      <p className="font-bold">
-        {last.body.readAgain === 'noneBack'
-          ? 'Read again after clearing: none came back.'
-          : 'Read again after clearing: they came back. Take them down above.'}
-      </p>
-    )
-  }
-  const save = () => {
-    if (answer === null) {
-      setProblem('Pick what the dash showed.')
-      return
-    }
-    record([
-      stamp.entry(jobId, { kind: 'codesCleared', readAgain: answer }, { supersedes: last.id }),
-    ])
-      .then(() => announce('Saved on this phone.'))
-      .catch(() => setProblem('Could not be saved. Try again.'))
-  }
-  return (
-    <div className="grid gap-3">
-      <Choice
-        legend="Codes were cleared. Start it, run it, read them again."
-        value={answer}
-        onChange={setAnswer}
-        options={[
-          { value: 'noneBack', label: 'None came back' },
-          { value: 'back', label: 'Codes are back' },
-        ]}
-        error={problem}
-      />
-      <Key kind="plate" onClick={save}>
-        Save
-      </Key>
-    </div>
   )
 }

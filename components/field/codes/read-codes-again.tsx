@@ -1,0 +1,64 @@
+'use client'
+
+import { useState } from 'react'
+import { useRecord } from '@/components/store/use-record'
+import { useStamp } from '@/components/store/use-stamp'
+import { announce } from '@/components/ui/announce'
+import { Key, KeyLink } from '@/components/ui/key'
+import { RuleEdge } from '@/components/ui/rule-edge'
+import { living } from '@/lib/diag/case'
+import type { LogEntry } from '@/lib/model/log-entry'
+import { jobHref } from '../route'
+
+type Props = { jobId: string; entries: readonly LogEntry[] }
+
+/** After clearing and a start the codes are read again; the answer stands in place of "not yet" (rule R11). */
+export function ReadCodesAgain({ jobId, entries }: Props) {
+  const cleared = living(entries).findLast((entry) => entry.body.kind === 'codesCleared')
+  const record = useRecord()
+  const stamp = useStamp()
+  const [busy, setBusy] = useState<boolean>(false)
+  if (cleared === undefined || cleared.body.kind !== 'codesCleared') {
+    return null
+  }
+  const { readAgain } = cleared.body
+  const say = (next: 'noneBack' | 'back') => {
+    setBusy(true)
+    const body = { kind: 'codesCleared', readAgain: next } as const
+    record([stamp.entry(jobId, body, { supersedes: cleared.id })])
+      .then(() => announce('Saved on this phone.'))
+      .catch(() => announce('Could not be saved. Try again.', 'assertive'))
+      .finally(() => setBusy(false))
+  }
+  return (
+    <section aria-labelledby="again" className="grid gap-2">
+      <RuleEdge id="again" level={3}>
+        Read the codes again
+      </RuleEdge>
+      {readAgain === 'notYet' ? (
+        <>
+          <p>
+            Codes are recorded as cleared. Start it, run it, look at the dash: did one come back?
+          </p>
+          <div className="grid grid-cols-2 gap-2">
+            <Key disabled={busy} onClick={() => say('noneBack')}>
+              None back
+            </Key>
+            <Key disabled={busy} onClick={() => say('back')}>
+              Codes back
+            </Key>
+          </div>
+        </>
+      ) : (
+        <p className="font-bold">
+          {readAgain === 'noneBack'
+            ? 'Read again after clearing: none came back.'
+            : 'Read again after clearing: they came back.'}
+        </p>
+      )}
+      {readAgain === 'back' ? (
+        <KeyLink href={jobHref(jobId, 'codes')}>Take down what came back</KeyLink>
+      ) : null}
+    </section>
+  )
+}
