@@ -5,7 +5,7 @@
  */
 
 import type { ActionType } from './search'
-import type { Problem, Repair } from './search-problem'
+import { opening, type Problem, type Repair } from './search-problem'
 import { dot, massOf, priceOf, survive } from './search-steps'
 
 /** A state by lists, for any number of checks and repairs. */
@@ -28,9 +28,10 @@ export function lookAhead(problem: Problem, spot: Spot, steps: 1 | 2 = 2): Candi
   const first = actions(problem, spot).map((a) => ({ ...a, cost: oneStep(problem, spot, a) }))
   first.sort((a, b) => a.cost - b.cost)
   if (steps === 1) return first
+  const least = leastCosts(problem)
   const deeper = first.map((a, rank) => {
     if (a.type === 'stop' || rank >= DEEP) return a
-    return { ...a, cost: Math.min(a.cost, twoSteps(problem, spot, a)) }
+    return { ...a, cost: Math.min(a.cost, twoSteps(problem, spot, { action: a, least })) }
   })
   return deeper.sort((a, b) => a.cost - b.cost)
 }
@@ -83,15 +84,14 @@ function mend(problem: Problem, repair: Repair, running: Running): number {
   return wrong * problem.comeback
 }
 
-/** A lower bound at any size: each fault at its stop or its cheapest cure alone. */
-export function leastCost(problem: Problem, w: Float64Array): number {
-  const least = Float64Array.from(problem.faults, (_, f) => {
+/** A lower bound at any size: each fault at its stop or its cheapest cure alone, per unit of mass. */
+export function leastCosts(problem: Problem): Float64Array {
+  return Float64Array.from(problem.faults, (_, f) => {
     const stop = Math.min(Number.POSITIVE_INFINITY, ...problem.stops.map((s) => s.byFault[f] ?? 0))
     const cures = problem.repairs.flatMap((r) => ((r.fails[f] ?? 1) < 1 ? [r.price] : []))
     const slip = (problem.falsePass[f] ?? 0) > 0 ? [problem.comeback] : []
     return Math.min(stop, ...cures, ...slip)
   })
-  return dot(w, least)
 }
 
 type Action = { type: ActionType; index: number }
@@ -107,11 +107,19 @@ function oneStep(problem: Problem, spot: Spot, action: Action): number {
   return stepCost(problem, spot, action, repairsOnly)
 }
 
-function twoSteps(problem: Problem, spot: Spot, action: Action): number {
+function twoSteps(
+  problem: Problem,
+  spot: Spot,
+  { action, least }: { action: Action; least: Float64Array },
+): number {
   return stepCost(problem, spot, action, (p, next) => {
     let best = repairsOnly(p, next)
-    for (const index of next.checks)
+    const mass = massOf(next.w)
+    const floor = dot(next.w, least)
+    for (const index of next.checks) {
+      if (floor + (p.checks[index]?.price ?? 0) * mass >= best) continue
       best = Math.min(best, oneStep(p, next, { type: 'check', index }))
+    }
     return best
   })
 }
@@ -140,7 +148,7 @@ function checked(
   const check = problem.checks[index]
   const priced = check === undefined ? null : priceOf(problem, { ...spot, index }, check)
   if (check === undefined || priced === null) return null
-  const mass = spot.w.reduce((sum, x) => sum + x, 0)
+  const mass = massOf(spot.w)
   const next = check.p.map((row) => ({
     w: spot.w.map((x, f) => x * (row[f] ?? 0)),
     checks: spot.checks.filter((c) => c !== index),
@@ -176,16 +184,18 @@ const openAfter = (problem: Problem, spot: Spot, repair: Repair): number =>
 
 /** Repairs by what they cure per unit of price, best first; the first of equals in the model's order. */
 function inOrder(problem: Problem, spot: Spot): number[] {
-  const worth = spot.repairs.map((index) => {
+  const ratios = new Float64Array(problem.repairs.length)
+  const order: number[] = []
+  for (const index of spot.repairs) {
     const repair = problem.repairs[index]
-    const priced = repair === undefined ? null : priceOf(problem, { ...spot, index }, repair)
-    if (repair === undefined || priced === null) return { index, ratio: 0 }
+    if (repair === undefined) continue
     let cured = 0
     for (const f of repair.cures) cured += (spot.w[f] ?? 0) * (1 - (repair.fails[f] ?? 1))
-    return { index, ratio: cured / Math.max(priced.price, 1e-12) }
-  })
-  return worth
-    .filter((r) => r.ratio > 0)
-    .sort((a, b) => b.ratio - a.ratio || a.index - b.index)
-    .map((r) => r.index)
+    if (cured <= 0) continue
+    const shut = (repair.setups & ~spot.open) !== 0
+    const setups = shut ? opening(problem, repair.setups, spot.open).price : 0
+    ratios[index] = cured / Math.max(repair.price + setups, 1e-12)
+    order.push(index)
+  }
+  return order.sort((a, b) => (ratios[b] ?? 0) - (ratios[a] ?? 0) || a - b)
 }

@@ -4,7 +4,7 @@
  * limit is a count, never a time, so that the same input gives the same answer on every machine and later.
  */
 import { AppError } from '@/lib/model/result'
-import { leastCost, lookAhead } from './look-ahead'
+import { leastCosts, lookAhead } from './look-ahead'
 import { noisyOrMarginals } from './noisy-or'
 import {
   type ActionType,
@@ -16,7 +16,7 @@ import {
   topTwo,
 } from './search'
 import { leftOf, MOST_IN_MASK, openOf, type Problem, problemOf, weightsOf } from './search-problem'
-import { massOf } from './search-steps'
+import { dot, massOf } from './search-steps'
 import type { NoisyOrModel, SearchState, SingleModel } from './troubleshoot-model'
 
 /** Expansions allowed when the caller names none, at 8 faults and 17 actions; wider models get fewer, by the square. */
@@ -108,7 +108,7 @@ function looked(problem: Problem, spot: Spot, search: Search | null): NextAction
   const [best, second] = lookAhead(problem, spot)
   if (best === undefined) throw new AppError('noAction')
   const mass = massOf(spot.w)
-  const least = Math.max(leastCost(problem, spot.w), rootBound(search))
+  const least = Math.max(dot(spot.w, leastCosts(problem)), rootBound(search))
   return {
     type: best.type,
     id: idOf(problem, best),
