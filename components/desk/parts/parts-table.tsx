@@ -51,10 +51,10 @@ export function PartsTable({ rows, move }: Props) {
                       quiet={true}
                       className="desk-key whitespace-nowrap"
                       aria-expanded={isOpen}
-                      aria-label={isOpen ? `Close ${line.words}` : `Work on ${line.words}`}
                       onClick={() => setOpen(isOpen ? null : line.id)}
                     >
                       {isOpen ? 'Close' : 'Work on it'}
+                      <span className="visually-hidden"> {line.words}</span>
                     </Key>
                   </td>
                 ) : null}
