@@ -73,7 +73,10 @@ export function judge(input: ReadingInput): ReadingResult {
   }
 }
 
-/** What this meter can say about a figure before it is read, judged where a part in the middle would read. */
+/**
+ * What this meter can say about a figure before it is read, judged where a part in the middle would read. A meter
+ * outside 18 to 28 C is told to be warmed even where it decides (rule R7).
+ */
 export function canDecide(input: Omit<ReadingInput, 'value' | 'overRange'>): MeterFitness {
   const limits = limitsOf(input.spec)
   const middle = middleOf(input.spec)
@@ -88,7 +91,7 @@ export function canDecide(input: Omit<ReadingInput, 'value' | 'overRange'>): Met
     standardUNeeded: needed,
     standardUHas: standardU,
     because: decides ? [] : reasons(asRead, needed),
-    wouldDecide: decides ? [] : adviceFor(asRead),
+    wouldDecide: adviceFor(asRead).filter((a) => !decides || a.way === 'warmMeter'),
   }
 }
 
