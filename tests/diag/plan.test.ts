@@ -1,4 +1,5 @@
 import { describe, expect, it } from 'vitest'
+import { belief } from '@/lib/diag/belief'
 import { indexBook } from '@/lib/diag/book-index'
 import { type Means, nextStep } from '@/lib/diag/plan'
 import { LUMP, planModel } from '@/lib/diag/plan-model'
@@ -186,19 +187,16 @@ describe('[E2] what is left out, and why', () => {
     expect(reason(plan([code(1268, 3)]), 'limpOut')).toMatch(/cause is not known/)
     const proved = [code(1268, 3), swapped('spareFitted', false), swapped('oldRefitted', true)]
     expect(reason(plan(proved), 'limpOut')).toBe('Not a fault to ride out on.')
-    const filter = plan(
-      [
-        checked('flow', 'bad'),
-        checked('spark', 'fine'),
-        checked('plug', 'good'),
-        checked('module', 'good'),
-      ],
-      { bag: { ...bag, tools: [] } },
-    )
-    const offered = [filter.next, filter.runnerUp, ...filter.others].some(
-      (a) => a?.id === 'limpOut',
-    )
-    expect(offered || reason(filter, 'limpOut') !== undefined).toBe(true)
+  })
+  it('[R10] it is offered once the cause is as good as proved and the book lists it as one to ride on', () => {
+    const weak: LogBody = { kind: 'symptom', symptom: 'weak', conditions: [], words: null }
+    const bodies = [checked('flow', 'bad'), checked('spark', 'fine'), checked('plug', 'good'), weak]
+    const at90 = belief(at(...bodies)).suspects[0]!
+    expect(at90).toMatchObject({ fault: 'filter' })
+    expect(at90.chance).toBeGreaterThan(0.9)
+    const got = plan(bodies)
+    expect([got.next, got.runnerUp, ...got.others].map((a) => a?.id)).toContain('limpOut')
+    expect(reason(got, 'limpOut')).toBeUndefined()
   })
   it('[R4] a check for other machines is not even listed', () => {
     const two = check('reeds', { coil: [10, 90] }, { gate: { fuelling: ['carburettor'] } })
