@@ -3,8 +3,8 @@ import { SOMETHING_ELSE } from '@/lib/diag/book-index'
 import type { Outcome } from '@/lib/diag/outlook'
 import type { Plan } from '@/lib/diag/plan'
 import { shortName } from '../suspects/outlook-words'
+import { outlookKey } from './outlook-key'
 import type { Answer } from './work'
-import { outlookKey } from './work'
 
 /** Outcomes rarer than this are left out of the sentence; they stand in the marks of each suspect. */
 const RARE = 0.08

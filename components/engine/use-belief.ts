@@ -1,9 +1,10 @@
 'use client'
 import { useMemo } from 'react'
 import type { Id } from '@/lib/model/id'
+import type { Action } from './outlook-key'
 import { useCase } from './use-case'
 import { type EngineView, useEngine } from './use-engine'
-import type { Action, Question } from './work'
+import type { Question } from './work'
 
 /** The suspects of a job, and where the outcomes of the given checks or swaps would put them. */
 export function useBelief(jobId: Id, outlookOf: readonly Action[] = NONE): EngineView {

@@ -2,10 +2,11 @@
 import { useMemo } from 'react'
 import type { Means } from '@/lib/diag/plan'
 import type { Id } from '@/lib/model/id'
+import type { Action } from './outlook-key'
 import { useCase } from './use-case'
 import { type EngineView, useEngine } from './use-engine'
 import { type MeansView, useMeans } from './use-means'
-import type { Action, CaseInput, Question } from './work'
+import type { CaseInput, Question } from './work'
 
 export type PlanView = EngineView & {
   means: MeansView

@@ -8,6 +8,7 @@ import type { Features } from '@/lib/model/features'
 import type { Job } from '@/lib/model/job'
 import type { LogEntry } from '@/lib/model/log-entry'
 import type { MeterProfile } from '@/lib/model/meter-profile'
+import { type Action, outlookKey } from './outlook-key'
 
 /** What the engine is asked about, without the code book: plain data, fit to be sent to the worker. */
 export type CaseInput = {
@@ -17,7 +18,6 @@ export type CaseInput = {
   entries: readonly LogEntry[]
   meter: MeterProfile | null
 }
-export type Action = { kind: 'check' | 'swap'; id: string }
 
 export type Question = {
   case: CaseInput
@@ -32,8 +32,6 @@ export type Answer = {
   /** By `check:id` or `swap:id`. */
   outlooks: Record<string, Outcome[]>
 }
-
-export const outlookKey = (action: Action): string => `${action.kind}:${action.id}`
 
 /** The engine's whole answer to one question. The same function runs in the worker and on the page. */
 export function workOut(index: BookIndex, question: Question): Answer {

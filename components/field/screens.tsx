@@ -1,32 +1,71 @@
 'use client'
 
-import { CheckScreen } from '@/components/checks/check-screen'
-import { ChecksScreen } from '@/components/checks/checks-screen'
-import { ReadingScreen } from '@/components/checks/reading-screen'
-import { SwapScreen } from '@/components/checks/swap-screen'
-import { FixScreen } from '@/components/outcome/fix-screen'
-import { ProofScreen } from '@/components/outcome/proof-screen'
-import { WayOutScreen } from '@/components/outcome/way-out-screen'
-import { AskPartScreen } from '@/components/parts/ask-part-screen'
-import { PartsScreen } from '@/components/parts/parts-screen'
+import { type ComponentType, lazy, Suspense } from 'react'
 import { KeyLink } from '@/components/ui/key'
 import { Screen } from '@/components/ui/screen'
-import { CodesScreen } from './codes/codes-screen'
-import { IntakeScreen } from './intake/intake-screen'
 import { JobScreen } from './job/job-screen'
-import { SheetScreen } from './job/sheet-screen'
 import { JobsScreen } from './jobs-screen'
-import { CorrectScreen } from './log/correct-screen'
-import { EntryScreen } from './log/entry-screen'
 import { LogScreen } from './log/log-screen'
-import { NoteScreen } from './log/note-screen'
-import { PhotoScreen } from './log/photo-screen'
-import { AboutScreen } from './phone/about-screen'
-import { UnsentScreen } from './phone/unsent-screen'
 import type { Route } from './route'
 
-/** The screen of a route. */
+/** A screen that is fetched when it is first wanted, from what the phone holds. */
+function later<P extends object>(fetch: () => Promise<ComponentType<P>>) {
+  return lazy(async () => ({ default: await fetch() }))
+}
+
+const CheckScreen = later(() =>
+  import('@/components/checks/check-screen').then((file) => file.CheckScreen),
+)
+const ChecksScreen = later(() =>
+  import('@/components/checks/checks-screen').then((file) => file.ChecksScreen),
+)
+const ReadingScreen = later(() =>
+  import('@/components/checks/reading-screen').then((file) => file.ReadingScreen),
+)
+const SwapScreen = later(() =>
+  import('@/components/checks/swap-screen').then((file) => file.SwapScreen),
+)
+const FixScreen = later(() =>
+  import('@/components/outcome/fix-screen').then((file) => file.FixScreen),
+)
+const ProofScreen = later(() =>
+  import('@/components/outcome/proof-screen').then((file) => file.ProofScreen),
+)
+const WayOutScreen = later(() =>
+  import('@/components/outcome/way-out-screen').then((file) => file.WayOutScreen),
+)
+const AskPartScreen = later(() =>
+  import('@/components/parts/ask-part-screen').then((file) => file.AskPartScreen),
+)
+const PartsScreen = later(() =>
+  import('@/components/parts/parts-screen').then((file) => file.PartsScreen),
+)
+const CodesScreen = later(() => import('./codes/codes-screen').then((file) => file.CodesScreen))
+const IntakeScreen = later(() => import('./intake/intake-screen').then((file) => file.IntakeScreen))
+const SheetScreen = later(() => import('./job/sheet-screen').then((file) => file.SheetScreen))
+const CorrectScreen = later(() => import('./log/correct-screen').then((file) => file.CorrectScreen))
+const EntryScreen = later(() => import('./log/entry-screen').then((file) => file.EntryScreen))
+const NoteScreen = later(() => import('./log/note-screen').then((file) => file.NoteScreen))
+const PhotoScreen = later(() => import('./log/photo-screen').then((file) => file.PhotoScreen))
+const AboutScreen = later(() => import('./phone/about-screen').then((file) => file.AboutScreen))
+const UnsentScreen = later(() => import('./phone/unsent-screen').then((file) => file.UnsentScreen))
+
+/** The screen of a route. Jobs, job and log come with the app; the others are fetched when first wanted. */
 export function Screens({ route }: { route: Route }) {
+  return (
+    <Suspense
+      fallback={
+        <Screen title="Opening" titleHidden>
+          {null}
+        </Screen>
+      }
+    >
+      <OneScreen route={route} />
+    </Suspense>
+  )
+}
+
+function OneScreen({ route }: { route: Route }) {
   switch (route.name) {
     case 'jobs':
       return <JobsScreen />

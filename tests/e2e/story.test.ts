@@ -109,7 +109,7 @@ test('the main job, from flight mode to the desk', async ({
     await phone.open(`${jobPath}/checks/coilPrimaryResistance/reading`)
     await press(page, /^Meter set-up/)
     await press(page, /both at about 20/)
-    await press(page, /^Meter set-up/)
+    await press(page, /^(Close|Meter) set-up/)
     await press(page, '1')
     await press(page, '.')
   })
