@@ -45,6 +45,15 @@ function runner(name, command, args, count, env = {}) {
   say(`${name}: ${counted.passed} passed, ${counted.failed} failed`)
 }
 
+/** Browser tests begin with the demo shops alone, whatever an earlier run left. */
+async function dropDatabase(name) {
+  const { default: pg } = await import('pg')
+  const admin = new pg.Client(db.adminUrl)
+  await admin.connect()
+  await admin.query(`drop database if exists ${name} with (force)`)
+  await admin.end()
+}
+
 const readJson = (file) => JSON.parse(readFileSync(join(results, file), 'utf8'))
 
 if (wants('check'))
@@ -74,6 +83,7 @@ if (wants('unit'))
 if (wants('e2e')) {
   if (!existsSync('/usr/bin/chromium')) installPackages('chromium')
   build()
+  await dropDatabase('farbench_e2e')
   await database('farbench_e2e')
   fillDatabase()
   runner(
