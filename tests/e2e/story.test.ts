@@ -10,6 +10,24 @@ const press = (page: Page, name: string | RegExp) =>
   page.getByRole('button', { name, exact: true }).click()
 const follow = (page: Page, name: string | RegExp) => page.getByRole('link', { name }).click()
 
+/** The job log when all is done, in order. */
+const DONE = [
+  'symptom',
+  'code',
+  'reading',
+  'reading',
+  'spareFitted',
+  'oldRefitted',
+  'newFitted',
+  'fix',
+  'codesCleared',
+  'codesCleared',
+  'proofRun',
+  'wayOut',
+  'note',
+  'photo',
+]
+
 /** Chance of 100 of a suspect on the CHECKS tab, as shown. */
 async function chanceOf(page: Page, name: string): Promise<number> {
   const row = page.getByRole('listitem').filter({ hasText: name }).first()
@@ -112,6 +130,8 @@ test('the main job, from flight mode to the desk', async ({
     await press(page, /^(Close|Meter) set-up/)
     await press(page, '1')
     await press(page, '.')
+    // A key is on disk within milliseconds, not at once: the phone dies half a second later.
+    await page.waitForTimeout(500)
   })
 
   await test.step('the phone dies in the middle of typing: "1." is still in the keypad', async () => {
@@ -201,6 +221,7 @@ test('the main job, from flight mode to the desk', async ({
     await phone.open(`${jobPath}/note`)
     await page.getByLabel('What is it?').fill('Old coil goes back to the shop.')
     await press(page, 'Save note')
+    await expect(page).toHaveURL(/\/log$/)
     await phone.open(`${jobPath}/photo`)
     await page.locator('input[type=file]').setInputFiles({
       name: 'coil.png',
@@ -228,10 +249,21 @@ test('the main job, from flight mode to the desk', async ({
     await board.getByText(complaint).first().click()
     await expect(board.getByText('Old coil goes back to the shop.')).toBeVisible()
     await expect(board.getByText(/12 clean|12 starts/).first()).toBeVisible()
-    const onPhone = await (async () => {
-      await phone.open(`${jobPath}/checks`)
-      return chanceOf(phone.page(), 'Ignition coil')
-    })()
+    const jobId = jobPath.slice(jobPath.lastIndexOf('/') + 1)
+    const answer = await desk.context().request.get(`/api/desk/jobs/${jobId}`)
+    const { entries, photos } = (await answer.json()) as {
+      entries: { id: string; order: number; body: { kind: string; step?: string } }[]
+      photos: { hash: string }[]
+    }
+    // Everything once, in the order of doing, the photo's bytes after all records.
+    expect(entries.map(({ body }) => body.step ?? body.kind)).toEqual(DONE)
+    expect(new Set(entries.map(({ id }) => id)).size).toBe(DONE.length)
+    expect(photos).toHaveLength(1)
+    const photo = await desk.context().request.get(`/api/photos/${photos[0]?.hash}`)
+    expect(photo.headers()['content-type']).toBe('image/jpeg')
+    await phone.open(`${jobPath}/checks`)
+    const onPhone = await chanceOf(phone.page(), 'Ignition coil')
+    expect(onPhone).toBeGreaterThan(90)
     expect(await chanceOf(board, 'Ignition coil')).toBe(onPhone)
     await shot(board, 'desk-board')
     await expect(counter.getByText('Ignition coil').first()).toBeVisible({ timeout: 40_000 })
