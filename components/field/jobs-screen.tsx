@@ -106,6 +106,13 @@ function NoJobs({ opens }: { opens: boolean }) {
   )
 }
 
+function unsentWords({ counted, count }: { counted: boolean; count: number }): string {
+  if (!counted) {
+    return 'Counting what is not sent.'
+  }
+  return count === 0 ? 'Nothing unsent.' : `${count} not sent.`
+}
+
 function BookLine() {
   const book = useBook()
   const unsent = useUnsent()
@@ -114,7 +121,7 @@ function BookLine() {
       <RuleEdge>This phone</RuleEdge>
       <p className="text-second text-ink2">
         {book.version === null ? 'No code book yet.' : `Code book version ${book.version}.`}{' '}
-        {unsent.count === 0 ? 'Nothing unsent.' : `${unsent.count} not sent.`}
+        {unsentWords(unsent)}
       </p>
       <KeyLink small quiet href="/field/about">
         What this phone holds

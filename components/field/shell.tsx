@@ -125,12 +125,16 @@ function Witness() {
 
 /** Stuck work outshouts sending, sending outshouts waiting. */
 export function witnessState(of: {
+  counted: boolean
   count: number
   stuckCount: number
   sending: unknown
 }): WitnessState {
   if (of.stuckCount > 0) {
     return 'stuck'
+  }
+  if (!of.counted) {
+    return 'opening'
   }
   if (of.count === 0) {
     return 'whole'

@@ -1,6 +1,7 @@
 import { classes } from './class-names'
 
-export type WitnessState = 'whole' | 'broken' | 'sending' | 'stuck'
+/** `opening`: the store is not counted yet, so the bolt is shown without its paint. */
+export type WitnessState = 'opening' | 'whole' | 'broken' | 'sending' | 'stuck'
 
 type Props = {
   state: WitnessState
@@ -39,6 +40,8 @@ export function WitnessMark(props: Props) {
 /** What the mark says, in words. */
 function witnessWords(state: WitnessState, count: number): string {
   switch (state) {
+    case 'opening':
+      return 'Counting what is not sent'
     case 'whole':
       return 'All sent'
     case 'sending':
@@ -81,18 +84,24 @@ function Drawing({ state, count, progress = 0, large }: Props) {
           stroke="var(--ink)"
           strokeWidth="2.8"
         />
-        <rect
-          x="27"
-          y="24.6"
-          width="10"
-          height="30.8"
-          fill="var(--paint)"
-          stroke="var(--paint-ink)"
-          strokeWidth="2.4"
-        />
+        {state === 'opening' ? null : (
+          <rect
+            x="27"
+            y="24.6"
+            width="10"
+            height="30.8"
+            fill="var(--paint)"
+            stroke="var(--paint-ink)"
+            strokeWidth="2.4"
+          />
+        )}
       </g>
-      <Stub y={12.2} />
-      <Stub y={57.2} />
+      {state === 'opening' ? null : (
+        <>
+          <Stub y={12.2} />
+          <Stub y={57.2} />
+        </>
+      )}
       {state === 'stuck' ? <Stuck /> : null}
       {count > 0 ? (
         <>

@@ -18,6 +18,9 @@ import { clockTime, size, span } from '../times'
 import { useNow } from '../use-now'
 import { counted } from '../words'
 
+const titleOf = ({ counted: known, count }: { counted: boolean; count: number }): string =>
+  !known ? 'Counting' : count === 0 ? 'All sent' : `${count} not sent`
+
 /** What this phone has not handed over yet, why, and the two ways to move it. */
 export function UnsentScreen() {
   const unsent = useUnsent()
@@ -26,15 +29,11 @@ export function UnsentScreen() {
   const stuck = unsent.items.filter((item) => item.state === 'stuck' || item.state === 'blocked')
   const waiting = unsent.items.filter((item) => !stuck.includes(item))
   return (
-    <Screen
-      title={unsent.count === 0 ? 'All sent' : `${unsent.count} not sent`}
-      titleHidden
-      foot={<Ways />}
-    >
+    <Screen title={titleOf(unsent)} titleHidden foot={<Ways />}>
       <div className="flex flex-wrap items-center gap-5">
         <WitnessMark state={state} count={0} large progress={share(unsent.sending)} />
         <p aria-hidden="true" className="caps text-hero">
-          {unsent.count === 0 ? 'All sent' : `${unsent.count} not sent`}
+          {titleOf(unsent)}
         </p>
       </div>
       <p className="text-row font-bold">{standing(unsent)}</p>
@@ -66,6 +65,9 @@ const share = (sending: { done: number; total: number } | null): number =>
   sending === null || sending.total === 0 ? 0 : sending.done / sending.total
 
 function standing(unsent: ReturnType<typeof useUnsent>): string {
+  if (!unsent.counted) {
+    return 'Counting what this phone holds.'
+  }
   if (unsent.count === 0) {
     return 'Everything recorded on this phone is at the shop.'
   }

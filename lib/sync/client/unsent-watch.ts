@@ -35,6 +35,7 @@ export function watchUnsent(of: {
     const state = of.state.get()
     const base = {
       ...NOTHING_UNSENT,
+      counted: true,
       ...of.room.get(),
       sending: state.running,
       online: state.reached ?? of.online(),

@@ -6,6 +6,7 @@ import type { UnsentItem, UnsentView } from './views'
 
 /** Before anything is known. */
 export const NOTHING_UNSENT: UnsentView = {
+  counted: false,
   count: 0,
   bytes: 0,
   oldestAt: null,

@@ -49,6 +49,8 @@ export type Need = 'signIn' | 'updateApp' | 'refused' | null
 
 /** Everything about unsent work, for the mark at the top and the screen behind it. */
 export type UnsentView = {
+  /** False while the store is being opened: then nothing may be said about what is sent. */
+  counted: boolean
   count: number
   bytes: number
   oldestAt: Instant | null
