@@ -1,4 +1,5 @@
 import { limitsOf } from '@/lib/diag/reading-budget'
+import { specFor } from '@/lib/diag/verdict-table'
 import type { CheckItem, SpecSheet, SpecValue } from '@/lib/model/code-book'
 import { bandWords } from '../reading-strip/verdict'
 
@@ -15,25 +16,9 @@ export function specOf(check: CheckItem, sheet: SpecSheet | null): Judged {
   const { reading } = check
   if (reading === null) return { value: null, from: 'none', component: null }
   const component = sheet?.components.find((one) => one.id === reading.component) ?? null
-  const value = component?.values.find((one) => one.id === reading.value) ?? null
-  if (value !== null) return { value, from: 'sheet', component }
-  if (reading.fallback === null) return { value: null, from: 'none', component }
-  const { low, high, unit, source } = reading.fallback
-  const fallback: SpecValue = {
-    id: reading.value,
-    name: check.name,
-    quantity: reading.quantity,
-    unit,
-    nominal: null,
-    tolerancePercent: null,
-    low,
-    high,
-    partTempC: null,
-    material: null,
-    conditions: null,
-    source,
-  }
-  return { value: fallback, from: 'practice', component }
+  const value = specFor({ spec: sheet }, check)
+  const own = component?.values.some((one) => one.id === reading.value) ?? false
+  return { value, from: value === null ? 'none' : own ? 'sheet' : 'practice', component }
 }
 
 /** One short line for under the rule: where the band comes from. */

@@ -19,7 +19,7 @@ const VERDICTS = ['in', 'tooClose', 'outLow', 'outHigh'] as const
 const SAMPLES = 24
 
 /** The spec of a check on this machine: the sheet's figure, else the book's fallback limits, else null. */
-export function specFor({ spec }: Case, check: CheckItem): SpecValue | null {
+export function specFor({ spec }: Pick<Case, 'spec'>, check: CheckItem): SpecValue | null {
   const model = check.reading
   if (model === null) return null
   const component = spec?.components.find((part) => part.id === model.component)
