@@ -36,7 +36,6 @@ export const SYMPTOMS: SymptomItem[] = [
       { id: 'whenLeaning', name: 'When leaning or on a slope' },
       { id: 'always', name: 'Every time' },
       { id: 'nowAndThen', name: 'Now and then' },
-      { id: 'lampOn', name: 'Engine lamp on' },
     ],
     twoWrongOf100: 5,
     source: `${OWN_WORDS}; two things wrong in 5 of 100 where nobody knows (common practice, no source)`,
