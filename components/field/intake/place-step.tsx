@@ -9,10 +9,11 @@ import { Field } from '@/components/ui/field'
 import { Figure } from '@/components/ui/figure'
 import { Key } from '@/components/ui/key'
 import { RuleEdge } from '@/components/ui/rule-edge'
+import type { Point } from '@/lib/diag/distance'
+import { doubtsOf, type PlaceDoubt } from '@/lib/diag/place-doubt'
+import { type PlaceProblem, parsePlace, printDegrees, printMinutes } from '@/lib/diag/place-text'
 import type { Place } from '@/lib/model/place'
 import type { PositionProblem } from '@/lib/ports/position'
-import { type Doubt, doubtsOf, inDegrees, inMinutes, type Point } from '../place-doubt'
-import { type PlaceProblem, parsePlace } from '../place-text'
 import { span } from '../times'
 import { useNow } from '../use-now'
 import type { StepProps } from './intake-draft'
@@ -151,7 +152,7 @@ function TypedPart(props: {
           key={doubt.kind}
           doubt={doubt}
           onTake={(point) =>
-            props.onText(inDegrees(point), typedPlace(point, inDegrees(point), stamp.now()))
+            props.onText(printDegrees(point), typedPlace(point, printDegrees(point), stamp.now()))
           }
         />
       ))}
@@ -169,7 +170,7 @@ const typedPlace = (point: Point, text: string, at: string): Place => ({
   words: null,
 })
 
-const DOUBT_WORDS: Record<Doubt['kind'], string> = {
+const DOUBT_WORDS: Record<PlaceDoubt['kind'], string> = {
   otherHalf: 'With the other N/S or E/W it lies by the last job.',
   swapped: 'With the two numbers swapped it lies by the last job.',
   readAsMinutes: 'Read as degrees and minutes it lies by the last job.',
@@ -177,17 +178,19 @@ const DOUBT_WORDS: Record<Doubt['kind'], string> = {
   noLetters: 'No N, S, E or W: read as north and east.',
 }
 
-function DoubtShown({ doubt, onTake }: { doubt: Doubt; onTake: (point: Point) => void }) {
-  const { meant, km } = doubt
+function DoubtShown({ doubt, onTake }: { doubt: PlaceDoubt; onTake: (point: Point) => void }) {
+  const { meant, distanceMetres } = doubt
   return (
     <div className="grid gap-2">
       <Caution signal="NOTICE">
         {DOUBT_WORDS[doubt.kind]}
-        {km !== null && meant === null ? ` ${Math.round(km)} km.` : ''}
+        {distanceMetres !== null && meant === null
+          ? ` ${Math.round(distanceMetres / 1000)} km.`
+          : ''}
       </Caution>
       {meant === null ? null : (
         <Key small quiet onClick={() => onTake(meant)}>
-          Take {inDegrees(meant)}
+          Take {printDegrees(meant)}
         </Key>
       )}
     </div>
@@ -199,8 +202,8 @@ export function PlaceShown({ place }: { place: Place }) {
   const now = useNow()
   return (
     <div className="grid gap-1">
-      <p className="figures text-row">{inDegrees(place)}</p>
-      <p className="figures text-second text-ink2">{inMinutes(place)}</p>
+      <p className="figures text-row">{printDegrees(place)}</p>
+      <p className="figures text-second text-ink2">{printMinutes(place)}</p>
       <p className="text-second text-ink2">
         {place.source === 'fix' ? (
           <>

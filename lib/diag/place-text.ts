@@ -1,11 +1,13 @@
 /**
- * Reads a typed position: decimal degrees, degrees and decimal minutes, or degrees, minutes and seconds,
- * with or without N/S and E/W, in either order when the letters say so. Never guesses: what can be read
- * in two ways is refused or comes with a doubt.
+ * Reads and prints positions: decimal degrees, degrees and decimal minutes, or degrees, minutes and seconds,
+ * with or without N/S and E/W, in either order when the letters say so (F1). Never guesses: what can be read
+ * in two ways is refused or comes with a doubt. What is printed here is read back as the same place.
  */
+import type { Place } from '@/lib/model/place'
 import { fail, ok, type Result } from '@/lib/model/result'
 
 type PlaceForm = 'degrees' | 'minutes' | 'seconds'
+/** A position as it was typed: WGS 84 degrees, north and east positive, and the form it was typed in. */
 export type TypedPlace = {
   latitude: number
   longitude: number
@@ -13,6 +15,7 @@ export type TypedPlace = {
   /** True when N/S and E/W stood there; without them a minus sign is the only word on the half of the globe. */
   lettered: boolean
 }
+/** Why a text is no position: nothing there, not two numbers, or one that cannot be. */
 export type PlaceProblem = {
   kind: 'empty' | 'notTwo' | 'twoOfOneKind' | 'latitudeRange' | 'longitudeRange' | 'minutesRange'
 }
@@ -22,7 +25,10 @@ type Half = { numbers: number[]; minus: boolean; letter: Letter | null }
 
 const NUMBER = /-?\d+(?:\.\d+)?/g
 
-/** The position in the text, or why it is none. */
+/**
+ * The position in the text, in WGS 84 degrees, or why it is none. Latitude -90 to 90, longitude -180 to 180,
+ * minutes and seconds under 60; both halves in the same form, and letters on both or on neither.
+ */
 export function parsePlace(text: string): Result<TypedPlace, PlaceProblem> {
   const clean = tidy(text)
   if (clean === '') {
@@ -55,6 +61,27 @@ export function parsePlace(text: string): Result<TypedPlace, PlaceProblem> {
   const form = (['degrees', 'minutes', 'seconds'] as const)[lat.numbers.length - 1] ?? 'degrees'
   return ok({ latitude, longitude, form, lettered: lat.letter !== null && lon.letter !== null })
 }
+
+type Printed = Pick<Place, 'latitude' | 'longitude'>
+
+/** "47.10000 N  93.20000 W": five decimals of a degree, about a metre. */
+export function printDegrees({ latitude, longitude }: Printed): string {
+  return `${Math.abs(latitude).toFixed(5)} ${northSouth(latitude)}  ${Math.abs(longitude).toFixed(5)} ${eastWest(longitude)}`
+}
+
+/** "47 06.000 N  093 12.000 W": degrees and thousandths of a minute, as radios and the rescue service read them. */
+export function printMinutes({ latitude, longitude }: Printed): string {
+  const one = (value: number, width: number) => {
+    const thousandths = Math.round(Math.abs(value) * 60_000)
+    const degrees = Math.floor(thousandths / 60_000)
+    const minutes = ((thousandths % 60_000) / 1000).toFixed(3).padStart(6, '0')
+    return `${String(degrees).padStart(width, '0')} ${minutes}`
+  }
+  return `${one(latitude, 2)} ${northSouth(latitude)}  ${one(longitude, 3)} ${eastWest(longitude)}`
+}
+
+const northSouth = (latitude: number) => (latitude < 0 ? 'S' : 'N')
+const eastWest = (longitude: number) => (longitude < 0 ? 'W' : 'E')
 
 const isNorthSouth = (letter: Letter | null) => letter === 'N' || letter === 'S'
 const isEastWest = (letter: Letter | null) => letter === 'E' || letter === 'W'
