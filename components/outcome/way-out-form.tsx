@@ -1,9 +1,17 @@
 'use client'
 import type { ReactNode } from 'react'
 import { living } from '@/lib/diag/case'
+import type { SaidByHand } from '@/lib/diag/way-out'
 import type { Id } from '@/lib/model/id'
-import type { Job, JobMachineState, JobState, PeopleState, WayOut } from '@/lib/model/job'
+import type { Job, JobMachineState, PeopleState, WayOut } from '@/lib/model/job'
 import { mayMove, movesFrom } from '@/lib/shop/job-states'
+import {
+  jobStateAfter,
+  LEFT_BEHIND_LINES,
+  type LeftBehindLine,
+  leftBehindLacks,
+  statesAfter,
+} from '@/lib/shop/way-out-states'
 import type { OpInput } from '@/lib/sync/protocol/op'
 import { NotSaved, useSave } from '../checks/use-save'
 import type { JobCase } from '../engine/use-case'
@@ -12,8 +20,7 @@ import { useStamp } from '../store/use-stamp'
 import { Choice } from '../ui/choice'
 import { Field } from '../ui/field'
 import { Key, KeyLink } from '../ui/key'
-import type { SaidByHand } from './way-out-rules'
-import { MACHINE_AFTER, PEOPLE_AFTER } from './way-out-words'
+import { LACKS_WORDS, LEFT_WORDS, SAID_SHORT } from './way-out-words'
 
 export type WayOutDraft = {
   way: WayOut | null
@@ -22,7 +29,7 @@ export type WayOutDraft = {
   people: PeopleState | null
   reasons: string
   /** What a machine left behind demands (rule R2). */
-  left: { key: string; tap: string; secured: string; land: string; fetch: string }
+  left: Record<LeftBehindLine, string>
 }
 export const FRESH_WAY_OUT: WayOutDraft = {
   way: null,
@@ -52,8 +59,9 @@ export function useWayOutForm({ jobId, found, way, draft, set, onSaved }: Props)
   const stamp = useStamp()
   const { save, saving, problem } = useSave()
   if (way === null) return { fields: null, foot: null }
-  const machine = draft.machine ?? firstOf('machine', job.machineState, MACHINE_AFTER[way])
-  const people = draft.people ?? firstOf('people', job.peopleState, PEOPLE_AFTER[way])
+  const after = statesAfter(way, job)
+  const machine = draft.machine ?? after.machine
+  const people = draft.people ?? after.people
   const missing = whatIsMissing(draft, machine, found)
   const keep = async () => {
     const entry = stamp.entry(jobId, {
@@ -134,14 +142,6 @@ function After({ job, machine, people, draft, set }: AfterProps) {
   )
 }
 
-function firstOf<K extends 'machine' | 'people'>(
-  kind: K,
-  from: K extends 'machine' ? JobMachineState : PeopleState,
-  wanted: K extends 'machine' ? JobMachineState : PeopleState,
-) {
-  return from === wanted || mayMove(kind, from as never, wanted as never) ? wanted : from
-}
-
 /** The moves of machine, people and job that follow from a way out, those that change something. */
 export function movesOf(
   job: Pick<Job, 'id' | 'machineState' | 'peopleState' | 'state'>,
@@ -159,13 +159,6 @@ export function movesOf(
   return ops
 }
 
-/** A machine left behind waits to be fetched; otherwise a job not yet begun is under way now. */
-function jobStateAfter(state: JobState, machine: JobMachineState): JobState {
-  if (state === 'closed') return state
-  if (machine === 'leftBehind') return 'waitingRetrieval'
-  return state === 'called' || state === 'open' || state === 'assigned' ? 'underWay' : state
-}
-
 function whatIsMissing(
   draft: WayOutDraft,
   machine: JobMachineState,
@@ -173,12 +166,12 @@ function whatIsMissing(
 ): string | null {
   if (draft.reasons.trim() === '') return 'Say in a few words why.'
   if (machine !== 'leftBehind') return null
-  if (found.job.place === null) return 'A machine left behind needs a position on the job.'
-  if (!living(found.entries).some(({ body }) => body.kind === 'photo'))
-    return 'A machine left behind needs a photo in the log.'
-  return Object.values(draft.left).some((words) => words.trim() === '')
-    ? 'A machine left behind needs every line above.'
-    : null
+  const lacks = leftBehindLacks({
+    hasPlace: found.job.place !== null,
+    hasPhoto: living(found.entries).some(({ body }) => body.kind === 'photo'),
+    lines: draft.left,
+  })
+  return lacks === null ? null : LACKS_WORDS[lacks]
 }
 
 const saidLines = ({ said }: WayOutDraft): string[] =>
@@ -186,29 +179,9 @@ const saidLines = ({ said }: WayOutDraft): string[] =>
     ? []
     : [`Against riding it out: ${said.map((one) => SAID_SHORT[one]).join(', ')}.`]
 
-const SAID_SHORT: Record<SaidByHand, string> = {
-  noBrake: 'no working brake',
-  loose: 'steering or suspension loose',
-  fuelLeak: 'fuel leak',
-  burntWiring: 'burnt wiring',
-  fluidLost: 'coolant or oil lost',
-  knock: 'knock',
-  unfit: 'rider not fit',
-}
-
-const LEFT_WORDS = {
-  key: 'Where the key is',
-  tap: 'Fuel tap and leaks',
-  secured: 'How it is secured and marked',
-  land: 'Whose land or gate',
-  fetch: 'Fetch by, and weather until then',
-} as const
-
 const leftLines = ({ left }: WayOutDraft, machine: JobMachineState): string[] =>
   machine === 'leftBehind'
-    ? (Object.keys(LEFT_WORDS) as (keyof typeof LEFT_WORDS)[]).map(
-        (key) => `${LEFT_WORDS[key]}: ${left[key].trim()}`,
-      )
+    ? LEFT_BEHIND_LINES.map((key) => `${LEFT_WORDS[key]}: ${left[key].trim()}`)
     : []
 
 function LeftBehind({
@@ -226,7 +199,7 @@ function LeftBehind({
         {photo ? 'in the log' : 'missing'}.
       </p>
       {!photo && <KeyLink href={`/field/jobs/${jobId}/photo`}>Take a photo</KeyLink>}
-      {(Object.keys(LEFT_WORDS) as (keyof typeof LEFT_WORDS)[]).map((key) => (
+      {LEFT_BEHIND_LINES.map((key) => (
         <Field
           key={key}
           label={LEFT_WORDS[key]}

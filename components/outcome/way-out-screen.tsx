@@ -1,6 +1,7 @@
 'use client'
 import { type ReactNode, useState } from 'react'
 import { living } from '@/lib/diag/case'
+import { limpRefusals, SAID_BY_HAND, type WayOutFacts, wayOutNotices } from '@/lib/diag/way-out'
 import type { Id } from '@/lib/model/id'
 import { WAYS_OUT, type WayOut } from '@/lib/model/job'
 import type { LogEntry } from '@/lib/model/log-entry'
@@ -18,8 +19,7 @@ import { Key, KeyLink } from '../ui/key'
 import { RuleEdge } from '../ui/rule-edge'
 import { Screen } from '../ui/screen'
 import { FRESH_WAY_OUT, useWayOutForm, type WayOutDraft, wayOutDraftKey } from './way-out-form'
-import { limpRefusals, notices, SAID_BY_HAND, SAID_WORDS, type WayOutFacts } from './way-out-rules'
-import { WAY_CAUTIONS } from './way-out-words'
+import { NOTICE_WORDS, refusalWords, SAID_WORDS, WAY_CAUTIONS } from './way-out-words'
 
 /** Repair here, limp out, tow, return later: refusals first, then the person decides (F6, rules R2, R10). */
 export function WayOutScreen({ jobId }: { jobId: Id }) {
@@ -108,7 +108,7 @@ function Deciding({ jobId, found, onSaved, children }: DecidingProps) {
     index,
     said: draft.said,
   }
-  const refused = limpRefusals(facts)
+  const refused = limpRefusals(facts).map(refusalWords)
   const way = draft.way === 'limpOut' && refused.length > 0 ? null : draft.way
   const form = useWayOutForm({ jobId, found, way, draft, set, onSaved })
   return (
@@ -156,7 +156,7 @@ function Deciding({ jobId, found, onSaved, children }: DecidingProps) {
 }
 
 function Remarks({ way, facts, found }: { way: WayOut; facts: WayOutFacts; found: JobCase }) {
-  const list = notices(way, facts)
+  const list = wayOutNotices(way, facts).map((one) => NOTICE_WORDS[one])
   return (
     <div className="grid gap-3">
       {WAY_CAUTIONS[way].map((one) => (
