@@ -1,12 +1,12 @@
 'use client'
 import { type BookIndex, wordName } from '@/lib/diag/book-index'
+import type { DoneStep, SwapProgress } from '@/lib/diag/swap-progress'
 import type { SwapItem } from '@/lib/model/code-book'
 import type { Id } from '@/lib/model/id'
 import { useBeliefUpTo } from '../engine/use-belief'
 import { clockTime } from '../field/times'
 import { of100 } from '../reading-strip/figures'
 import { RuleEdge } from '../ui/rule-edge'
-import type { DoneStep, SwapProgress } from './swap-progress'
 import { doneWords, STEP_WORDS, swapSays } from './swap-words'
 
 type Props = { jobId: Id; swap: SwapItem; progress: SwapProgress; index: BookIndex }

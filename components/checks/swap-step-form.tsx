@@ -1,4 +1,5 @@
 'use client'
+import type { SwapBody, SwapStep } from '@/lib/diag/swap-progress'
 import type { SwapItem } from '@/lib/model/code-book'
 import type { Id } from '@/lib/model/id'
 import { useDraft } from '../store/use-draft'
@@ -9,7 +10,6 @@ import { Choice } from '../ui/choice'
 import { Field } from '../ui/field'
 import { Key } from '../ui/key'
 import { RuleEdge } from '../ui/rule-edge'
-import type { SwapBody, SwapStep } from './swap-progress'
 import { STEP_WORDS } from './swap-words'
 import { NotSaved, useSave } from './use-save'
 

@@ -1,4 +1,4 @@
-import type { SwapBody, SwapProgress, SwapStep } from './swap-progress'
+import type { SwapBody, SwapProgress, SwapStep } from '@/lib/diag/swap-progress'
 
 /** Headings and answers of the three steps; answers in the order of their keys. */
 export const STEP_WORDS: Record<

@@ -1,12 +1,12 @@
 'use client'
+import { saysNothingOf, twinOf } from '@/lib/diag/good-twin'
 import type { CheckItem } from '@/lib/model/code-book'
 import type { Id } from '@/lib/model/id'
-import type { LogEntry, ReadingBody } from '@/lib/model/log-entry'
+import type { LogEntry } from '@/lib/model/log-entry'
 import { useBelief } from '../engine/use-belief'
 import { asTypedOnScreen } from '../reading-strip/figures'
 
 type Props = { jobId: Id; check: CheckItem; entries: readonly LogEntry[] }
-type Read = { id: Id; body: ReadingBody }
 
 /** The suspect part beside a known-good one, and plainly when the pair says nothing about the part (R17). */
 export function TwinWords({ jobId, check, entries }: Props) {
@@ -32,25 +32,4 @@ export function TwinWords({ jobId, check, entries }: Props) {
       )}
     </section>
   )
-}
-
-/** The last reading of each, when both were taken. */
-export function twinOf(checkId: string, entries: readonly LogEntry[]) {
-  const last = (subject: ReadingBody['subject']): Read | null => {
-    const found = entries.findLast(
-      ({ body }) => body.kind === 'reading' && body.checkId === checkId && body.subject === subject,
-    )
-    return found?.body.kind === 'reading' ? { id: found.id, body: found.body } : null
-  }
-  const suspect = last('suspect')
-  const good = last('knownGood')
-  return suspect === null || good === null ? null : { suspect, good }
-}
-
-type Suspects = { why: { entryId: Id | null; saysNothing: boolean; logRatio: number }[] }[]
-
-/** True when the engine takes nothing from this reading for any suspect. */
-export function saysNothingOf(suspects: Suspects, entryId: Id): boolean {
-  const pieces = suspects.flatMap((one) => one.why.filter((why) => why.entryId === entryId))
-  return pieces.every((why) => why.saysNothing || Math.abs(why.logRatio) < 0.005)
 }

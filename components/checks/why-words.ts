@@ -1,4 +1,5 @@
 import type { Suspect } from '@/lib/diag/belief'
+import { tellsNothing, weighsNothing } from '@/lib/diag/news'
 
 type Why = Suspect['why'][number]
 
@@ -19,9 +20,9 @@ const STRENGTHS: readonly [number, string][] = [
 
 /** How strongly one piece of evidence speaks, in words and as a factor on the odds. */
 export function whyLine(why: Pick<Why, 'logRatio' | 'saysNothing'>): WhyLine {
-  const size = Math.abs(why.logRatio)
-  if (why.saysNothing || size < 0.005)
+  if (weighsNothing(why))
     return { direction: 'nothing', factor: '', strength: 'says nothing about it' }
+  const size = Math.abs(why.logRatio)
   const word = STRENGTHS.find(([below]) => size < below)?.[1] ?? 'very strongly'
   const direction = why.logRatio > 0 ? 'towards' : 'against'
   return {
@@ -57,5 +58,5 @@ export function movedBetween(
       (a, b) => Math.abs(b.after - b.before) - Math.abs(a.after - a.before) || b.after - a.after,
     )
   const most = rows[0]
-  return { rows, barely: most === undefined || Math.abs(most.after - most.before) * 100 < 3 }
+  return { rows, barely: most === undefined || tellsNothing([most.before, most.after]) }
 }

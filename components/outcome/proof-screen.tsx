@@ -1,6 +1,7 @@
 'use client'
 import { useState } from 'react'
 import { living } from '@/lib/diag/case'
+import { proofBound } from '@/lib/diag/proof-run'
 import type { Id } from '@/lib/model/id'
 import type { LogEntry } from '@/lib/model/log-entry'
 import { useFocusTitle } from '../checks/saved-outcome'
@@ -17,7 +18,7 @@ import { Field } from '../ui/field'
 import { Key, KeyLink } from '../ui/key'
 import { RuleEdge } from '../ui/rule-edge'
 import { Screen } from '../ui/screen'
-import { moreSentence, proofBound, proofSentence, stopwatch } from './proof-words'
+import { moreSentence, proofSentence, stopwatch } from './proof-words'
 import {
   minutesOf,
   type ProofDraft,

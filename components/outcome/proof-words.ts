@@ -1,29 +1,7 @@
-import { boundAfterClean, cleanStartsFor, ruleOfThree, upperBound } from '@/lib/diag/proof-run'
+import { proofBound } from '@/lib/diag/proof-run'
 import { of100 } from '../reading-strip/figures'
 
-export type ProofCount = { starts: number; faults: number }
-
-/** The share the mechanic is asked to get under before a machine goes back out: 10 of 100 (shop practice). */
-const WANTED_SHARE = 0.1
-
-export type ProofBound = {
-  /** Shares of starts, 0 to 1; null without a start. The rule of three only speaks with no fault seen. */
-  exact: number | null
-  ruleOfThree: number | null
-  /** Clean starts still wanted to get under 10 of 100; 0 when it is under; null when a fault came. */
-  more: number | null
-}
-
-/** One-sided 95 % bound on what could still fail after these starts. */
-export function proofBound({ starts, faults }: ProofCount): ProofBound {
-  if (starts <= 0) return { exact: null, ruleOfThree: null, more: cleanStartsFor(WANTED_SHARE) }
-  if (faults > 0) return { exact: upperBound(faults, starts), ruleOfThree: null, more: null }
-  return {
-    exact: boundAfterClean(starts),
-    ruleOfThree: ruleOfThree(starts),
-    more: Math.max(0, cleanStartsFor(WANTED_SHARE) - starts),
-  }
-}
+type ProofCount = { starts: number; faults: number }
 
 /** What the count proves, in one or two plain sentences. */
 export function proofSentence(count: ProofCount): string {

@@ -1,6 +1,8 @@
 'use client'
 import { wordName } from '@/lib/diag/book-index'
 import { living } from '@/lib/diag/case'
+import { condemnedBy } from '@/lib/diag/condemned-by'
+import { type AdvisedPart, adviceFor, adviceRecord, type SheetPart } from '@/lib/diag/part-choice'
 import type { Id } from '@/lib/model/id'
 import type { PartLine, PartRequest } from '@/lib/model/part-request'
 import type { Shop } from '@/lib/model/shop'
@@ -20,14 +22,7 @@ import { Field } from '../ui/field'
 import { Key } from '../ui/key'
 import { RuleEdge } from '../ui/rule-edge'
 import { Screen } from '../ui/screen'
-import { condemnedBy } from './condemned-by'
-import {
-  type Advised,
-  adviceFor,
-  adviceRecord,
-  adviceSentences,
-  type SheetPart,
-} from './part-advice'
+import { adviceSentences } from './part-advice'
 import { CHOICE_WORDS, URGENCY_WORDS } from './part-words'
 
 type AskDraft = {
@@ -160,7 +155,7 @@ function useAsk(of: {
   sheet: SheetPart | null
   shop: Shop | null
   key: string
-  advised: Advised | null
+  advised: AdvisedPart | null
 }) {
   const { go } = useRoute()
   const stamp = useStamp()
@@ -209,7 +204,7 @@ const choicesOf = (sheet: SheetPart | null): readonly PartLine['choice'][] =>
     ? ['genuine', 'either']
     : ['genuine', 'aftermarket', 'either']
 
-function firstChoice(sheet: SheetPart | null, advised: Advised | null): PartLine['choice'] {
+function firstChoice(sheet: SheetPart | null, advised: AdvisedPart | null): PartLine['choice'] {
   const by = advised?.advice.advised
   if (by === 'genuine' || by === 'aftermarket') return by
   return sheet === null ? 'either' : 'genuine'
@@ -232,7 +227,7 @@ function priceOf(sheet: SheetPart | null, choice: PartLine['choice'], shop: Shop
   return minor == null || shop === null ? null : { minor, currency: shop.currency }
 }
 
-type PricesProps = { sheet: SheetPart | null; shop: Shop | null; advised: Advised | null }
+type PricesProps = { sheet: SheetPart | null; shop: Shop | null; advised: AdvisedPart | null }
 
 /** Prices, failure figures, the second recovery, the break-even and what follows. */
 function Prices({ sheet, shop, advised }: PricesProps) {

@@ -1,7 +1,5 @@
+import { tellsNothing } from '@/lib/diag/news'
 import type { Outcome } from '@/lib/diag/outlook'
-
-/** Two suspects' marks nearer than this (of 100) are no difference a person can use. */
-const SAYS_NOTHING_UNDER = 3
 
 export type Mark = {
   outcome: string
@@ -47,9 +45,6 @@ function shapeOf(row: Outcome, i: number, count: number): Mark['shape'] {
   return i % 2 === 1 ? 'diamond' : 'square'
 }
 
-/** True when no outcome moves the suspect by 3 of 100 from another. */
-export function saysNothing(marks: readonly Mark[]): boolean {
-  if (marks.length === 0) return false
-  const chances = marks.map((mark) => mark.chance)
-  return (Math.max(...chances) - Math.min(...chances)) * 100 < SAYS_NOTHING_UNDER
-}
+/** True when no outcome moves the suspect by 3 of 100 from another; without marks nothing is claimed. */
+export const saysNothing = (marks: readonly Mark[]): boolean =>
+  marks.length > 0 && tellsNothing(marks.map((mark) => mark.chance))

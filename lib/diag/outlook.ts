@@ -4,6 +4,7 @@ import type { Case } from './case'
 import { type Sight, sightOf } from './evidence-table'
 import type { Factor } from './factor'
 import { absorb, type Summary, startJoint, summarise } from './joint'
+import { SAYS_NOTHING_BELOW } from './news'
 
 /** What one outcome would lead to: how likely it is now, and every suspect's chance after it (0 to 1). */
 export type Outcome = {
@@ -13,9 +14,6 @@ export type Outcome = {
   probability: number
   chances: Record<string, number>
 }
-
-/** A change of less than this much in every suspect is no news. */
-export const SAYS_NOTHING_BELOW = 0.03
 
 /**
  * The outlook of a check or swap: every outcome with its chance and the belief it would lead to. A reading is

@@ -1,3 +1,6 @@
+import type { SpecSheet } from '@/lib/model/code-book'
+import type { PartRequest } from '@/lib/model/part-request'
+
 /** Figures of the choice between a genuine and an aftermarket part: money in minor units, chances 0 to 1. */
 export type PartFigures = {
   genuineMinor: number
@@ -38,4 +41,40 @@ export function advisePart(figures: PartFigures & { aftermarketFails: number | n
   const difference = expectedGenuineMinor - expectedAftermarketMinor
   const advised = Math.abs(difference) < 0.5 ? 'equal' : difference > 0 ? 'aftermarket' : 'genuine'
   return { ...shared, advised, expectedAftermarketMinor }
+}
+
+/** A part as the spec sheet prices it: money in minor units, failures of 100. */
+export type SheetPart = SpecSheet['parts'][number]
+
+/** An advice with the figures it follows from. */
+export type AdvisedPart = {
+  figures: PartFigures & { aftermarketFails: number | null }
+  advice: PartAdvice
+}
+
+/**
+ * Genuine against aftermarket for a part of the spec sheet (F8). `recoveryMinor`: what a second recovery costs
+ * the shop. Null when there is no choice to advise on: no such part, no aftermarket one, no recovery cost.
+ */
+export function adviceFor(
+  part: SheetPart | null,
+  recoveryMinor: number | null,
+): AdvisedPart | null {
+  if (part === null || part.aftermarketMinor === null || recoveryMinor === null) return null
+  const { genuineMinor, aftermarketMinor, genuineFailsOf100, aftermarketFailsOf100 } = part
+  const figures = {
+    genuineMinor,
+    aftermarketMinor,
+    recoveryMinor,
+    genuineFails: genuineFailsOf100 / 100,
+    aftermarketFails: aftermarketFailsOf100 === null ? null : aftermarketFailsOf100 / 100,
+  }
+  return { figures, advice: advisePart(figures) }
+}
+
+/** The sum as it goes with the part request, so that the desk sees what was shown in the field (F8). */
+export function adviceRecord(advised: AdvisedPart | null): PartRequest['advice'] {
+  if (advised === null) return null
+  const { figures, advice } = advised
+  return { ...figures, breakEven: advice.breakEven, advised: advice.advised }
 }

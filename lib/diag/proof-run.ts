@@ -28,6 +28,31 @@ export function cleanStartsFor(share: number, confidence = 0.95): number {
   return n
 }
 
+/** The share of starts (0 to 1) to get under before a machine goes back out: 10 of 100 (common practice, no source). */
+const WANTED_SHARE = 0.1
+
+/** What a count of starts bounds, in shares of starts from 0 to 1. */
+export type ProofBound = {
+  /** The exact bound; null without a start. */
+  exact: number | null
+  /** The rule of three; null without a start and once a fault came, for it speaks of clean runs only. */
+  ruleOfThree: number | null
+  /** Clean starts still wanted to get under 10 of 100; 0 when it is under; null once a fault came. */
+  more: number | null
+}
+
+/** One-sided 95 % bound on what could still fail after these starts, of which `faults` showed the fault. */
+export function proofBound({ starts, faults }: { starts: number; faults: number }): ProofBound {
+  const wanted = cleanStartsFor(WANTED_SHARE)
+  if (starts <= 0) return { exact: null, ruleOfThree: null, more: wanted }
+  if (faults > 0) return { exact: upperBound(faults, starts), ruleOfThree: null, more: null }
+  return {
+    exact: boundAfterClean(starts),
+    ruleOfThree: ruleOfThree(starts),
+    more: Math.max(0, wanted - starts),
+  }
+}
+
 /**
  * Chance that an intermittent fault is still there after `minutes` without it: p e^(-rt) / (p e^(-rt) + 1 - p),
  * p the chance before, r its rate per minute under the condition (engine.md 1).

@@ -1,17 +1,10 @@
 import { describe, expect, it } from 'vitest'
-import { swapProgress } from '@/components/checks/swap-progress'
 import { swapSays } from '@/components/checks/swap-words'
-import { saysNothingOf, twinOf } from '@/components/checks/twin-words'
-import { codesOnRecord } from '@/components/field/codes/codes-on-record'
-import {
-  moreSentence,
-  proofBound,
-  proofSentence,
-  stopwatch,
-} from '@/components/outcome/proof-words'
+import { moreSentence, proofSentence, stopwatch } from '@/components/outcome/proof-words'
 import { minutesOf, ranUntil } from '@/components/outcome/use-proof-draft'
-import { condemnedBy } from '@/components/parts/condemned-by'
-import { adviceFor, adviceRecord, adviceSentences } from '@/components/parts/part-advice'
+import { adviceSentences } from '@/components/parts/part-advice'
+import { adviceFor } from '@/lib/diag/part-choice'
+import { swapProgress } from '@/lib/diag/swap-progress'
 import type { LogEntry } from '@/lib/model/log-entry'
 import { entry } from './checks-log'
 
@@ -29,16 +22,6 @@ const step = (
   })
 
 describe('a swap in its order', () => {
-  it('[F5] opens one step at a time: good part, old part, new part', () => {
-    const a = step('spareFitted', false)
-    const b = step('oldRefitted', true)
-    const c = step('newFitted', false)
-    expect(swapProgress('coilSwap', []).next).toBe('spareFitted')
-    expect(swapProgress('coilSwap', [a]).next).toBe('oldRefitted')
-    expect(swapProgress('coilSwap', [a, b]).next).toBe('newFitted')
-    expect(swapProgress('coilSwap', [a, b, c]).next).toBeNull()
-  })
-
   it('[F5] says plainly when the old part was not refitted', () => {
     const progress = swapProgress('coilSwap', [
       step('spareFitted', false),
@@ -54,56 +37,6 @@ describe('a swap in its order', () => {
     expect(swapSays(back, 'ignition coil')).toMatch(/confirmed/)
     expect(swapSays(away, 'ignition coil')).toMatch(/moving the plug may have cured it/)
   })
-
-  it('[F5] ends when the good part cures nothing, and begins anew when it is fitted again', () => {
-    const first = step('spareFitted', true)
-    expect(swapProgress('coilSwap', [first])).toMatchObject({ next: null, noChange: true })
-    const again = swapProgress('coilSwap', [first, step('spareFitted', false)])
-    expect(again).toMatchObject({ next: 'oldRefitted', noChange: false })
-    expect(again.done).toHaveLength(1)
-  })
-
-  it('[F5] steps of another swap do not count', () => {
-    expect(swapProgress('plugSwap', [step('spareFitted', false)]).next).toBe('spareFitted')
-  })
-})
-
-describe('a good twin', () => {
-  const reading = (subject: 'suspect' | 'knownGood', asTyped: string): LogEntry =>
-    entry({
-      kind: 'reading',
-      checkId: 'coilPrimaryResistance',
-      quantity: 'resistance',
-      value: Number(asTyped),
-      unit: 'ohm',
-      asTyped,
-      overRange: false,
-      subject,
-      meterId: '01980000-0000-7000-8000-000000000401',
-      meterName: 'Pocket meter (demo)',
-      meterFunction: { percent: 0.8, digits: 3, resolution: 0.1 },
-      leadsOhm: { low: 0.3, high: 0.6 },
-      nulled: false,
-      partTempC: 20,
-      meterTempC: 20,
-      perKelvin: 0.1,
-      spec: null,
-      result: null,
-    })
-
-  it('[R17] is only there when both were read, and takes the last of each', () => {
-    const a = reading('suspect', '1.0')
-    const b = reading('suspect', '1.1')
-    const good = reading('knownGood', '1.0')
-    expect(twinOf('coilPrimaryResistance', [a, b])).toBeNull()
-    expect(twinOf('coilPrimaryResistance', [a, b, good])?.suspect.id).toBe(b.id)
-  })
-
-  it('[F4] says nothing only when no suspect was moved by the reading', () => {
-    const why = (logRatio: number) => [{ why: [{ entryId: 'x', saysNothing: false, logRatio }] }]
-    expect(saysNothingOf(why(0), 'x')).toBe(true)
-    expect(saysNothingOf(why(-0.4), 'x')).toBe(false)
-  })
 })
 
 describe('the proof run', () => {
@@ -115,12 +48,10 @@ describe('the proof run', () => {
     expect(moreSentence({ starts: 12, faults: 0 })).toBe(
       '17 more clean starts would bring it under 10 of 100.',
     )
-    expect(proofBound({ starts: 12, faults: 0 }).exact).toBeCloseTo(0.2209, 4)
   })
 
   it('[F7] five leave up to 45 of 100; 29 are enough for 10', () => {
     expect(proofSentence({ starts: 5, faults: 0 })).toMatch(/up to 45 of 100/)
-    expect(proofBound({ starts: 28, faults: 0 }).more).toBe(1)
     expect(moreSentence({ starts: 29, faults: 0 })).toBe('That is under 10 of 100.')
   })
 
@@ -133,7 +64,6 @@ describe('the proof run', () => {
   })
 
   it('[F7] nothing is proved by no start', () => {
-    expect(proofBound({ starts: 0, faults: 0 })).toMatchObject({ exact: null, ruleOfThree: null })
     expect(proofSentence({ starts: 0, faults: 0 })).toMatch(/nothing is proved/)
   })
 
@@ -159,22 +89,6 @@ describe('the proof run', () => {
   })
 })
 
-describe('codes before they vanish', () => {
-  it('[R11] may be cleared only once they are on record or said to be unreadable', () => {
-    const code = entry({
-      kind: 'code',
-      seen: { format: 'spn', spn: 1268, fmi: 3 },
-      context: { module: 0, status: 'active', count: null, order: 1, photo: null },
-    })
-    const dark = entry({ kind: 'codesUnreadable', reason: 'Dash dark' })
-    expect(codesOnRecord([])).toBe(false)
-    expect(codesOnRecord([code])).toBe(true)
-    expect(codesOnRecord([dark])).toBe(true)
-    const taken = entry({ kind: 'correction', reason: 'Wrong machine' }, code.id)
-    expect(codesOnRecord([code, taken])).toBe(false)
-  })
-})
-
 describe('genuine or aftermarket part', () => {
   const coil = {
     part: 'ignitionCoil',
@@ -194,32 +108,10 @@ describe('genuine or aftermarket part', () => {
       'Expected cost with one recovery in it: genuine 141.00 USD, aftermarket 61.00 USD.',
       'By expected cost: fit the aftermarket part.',
     ])
-    expect(adviceRecord(advised)).toMatchObject({ advised: 'aftermarket', aftermarketFails: 0.12 })
-  })
-
-  it('[F8] the advice turns at the break-even', () => {
-    const at = (aftermarketFailsOf100: number) =>
-      adviceFor({ ...coil, aftermarketFailsOf100 }, 30_000)?.advice.advised
-    expect([at(38), at(39)]).toEqual(['aftermarket', 'genuine'])
   })
 
   it('[F8] without a figure there is a break-even and no advice', () => {
     const advised = adviceFor({ ...coil, aftermarketFailsOf100: null }, 30_000)
-    expect(advised?.advice.advised).toBe('noFigure')
     expect(advised === null ? '' : adviceSentences(advised, 'USD')[1]).toMatch(/no advice/)
-    expect(adviceFor({ ...coil, aftermarketMinor: null }, 30_000)).toBeNull()
-  })
-
-  it('[R14] a line names the entry that spoke most for the fault', () => {
-    const why = (entryId: string, about: string, logRatio: number) => ({
-      entryId,
-      about,
-      logRatio,
-      label: '',
-      saysNothing: false,
-    })
-    const of = (...list: ReturnType<typeof why>[]) => condemnedBy({ why: list } as never)
-    expect(of(why('a', 'swap', 2), why('b', 'reading', 0.3), why('c', 'code', 5))).toBe('a')
-    expect(of(why('a', 'check', -2))).toBeNull()
   })
 })

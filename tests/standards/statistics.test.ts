@@ -12,6 +12,7 @@ import {
   chanceOfAtMost,
   cleanStartsFor,
   minutesFor,
+  proofBound,
   ruleOfThree,
   upperBound,
 } from '@/lib/diag/proof-run'
@@ -81,6 +82,19 @@ describe('proof runs', () => {
     expect(chanceLeft(0.3, 0.05, 42)).toBeLessThanOrEqual(0.05)
     expect(chanceLeft(0.3, 0.05, 41)).toBeGreaterThan(0.05)
     expect(minutesFor(0.04, 0.05, 0.05)).toBe(0)
+  })
+  // 1 - 0.05^(1/n) of Clopper and Pearson: 28 starts 0.1015, 29 starts 0.0981.
+  it('[F7] counts down to the clean starts that bring it under 10 of 100', () => {
+    const more = (starts: number, faults = 0) => proofBound({ starts, faults }).more
+    expect([more(0), more(12), more(28), more(29), more(40)]).toEqual([29, 17, 1, 0, 0])
+    expect(more(12, 1)).toBeNull()
+  })
+  it('[F7] bounds nothing without a start, and has no rule of three once the fault came', () => {
+    expect(proofBound({ starts: 0, faults: 0 })).toMatchObject({ exact: null, ruleOfThree: null })
+    expect(proofBound({ starts: 12, faults: 0 }).exact).toBeCloseTo(0.2209, 4)
+    expect(proofBound({ starts: 12, faults: 0 }).ruleOfThree).toBe(0.25)
+    const seen = proofBound({ starts: 12, faults: 1 })
+    expect(seen).toMatchObject({ exact: upperBound(1, 12), ruleOfThree: null })
   })
 })
 

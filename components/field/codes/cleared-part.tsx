@@ -9,11 +9,11 @@ import { KeyLink } from '@/components/ui/key'
 import { RuleEdge } from '@/components/ui/rule-edge'
 import { Steps } from '@/components/ui/steps'
 import { living } from '@/lib/diag/case'
+import { codesOnRecord } from '@/lib/diag/codes-on-record'
 import type { SpecSheet } from '@/lib/model/code-book'
 import type { LogEntry } from '@/lib/model/log-entry'
 import { mayLog } from '@/lib/shop/permissions'
 import { jobHref } from '../route'
-import { codesOnRecord } from './codes-on-record'
 import { ReadCodesAgain } from './read-codes-again'
 
 type Props = { jobId: string; entries: readonly LogEntry[]; sheet: SpecSheet | null }

@@ -1,9 +1,13 @@
 import type { LogEntry, SWAP_STEPS } from '@/lib/model/log-entry'
 
+/** A step of a swap: spare fitted, old part refitted, new part fitted. */
 export type SwapStep = (typeof SWAP_STEPS)[number]
+/** What the log keeps of one step. */
 export type SwapBody = Extract<LogEntry['body'], { kind: 'swap' }>
+/** A step that was done, with its entry. */
 export type DoneStep = { entry: LogEntry; body: SwapBody }
 
+/** Where one swap stands in its present round. */
 export type SwapProgress = {
   /** Steps of the present round, in the order they were done. */
   done: DoneStep[]
@@ -16,8 +20,9 @@ export type SwapProgress = {
 }
 
 /**
- * How far a swap has come, from the living entries of the log. Steps are locked in order: good part in,
- * old part back (or plainly not done), new part in. A new "good part in" begins a new round.
+ * How far a swap has come (F5), from the living entries of the log in their order. Steps are locked in order:
+ * good part in, old part back (or plainly not done), new part in. A new "good part in" begins a new round.
+ * Entries of other swaps do not count.
  */
 export function swapProgress(swapId: string, entries: readonly LogEntry[]): SwapProgress {
   const all = entries.flatMap((entry) =>
