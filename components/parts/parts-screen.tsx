@@ -87,11 +87,6 @@ function FromSuspects({ jobId }: { jobId: Id }) {
           Parts of all suspects
         </Key>
       )}
-      {shown.length < rows.length && (
-        <Key small className="mt-2" onClick={() => setAll(true)}>
-          Parts of all suspects
-        </Key>
-      )}
     </section>
   )
 }
