@@ -1,7 +1,7 @@
 import { AppError } from '@/lib/model/result'
 import type { AssignProblem, LineProblem } from '@/lib/shop/desk-moves'
+import { LINE_STATE_WORDS } from '../parts/part-words'
 import type { DeskProblem } from './desk-actions'
-import { LINE_WORDS } from './desk-words'
 
 /** Sentences for what can go wrong at the desk, keyed by kind. */
 const READ: Record<string, string> = {
@@ -36,9 +36,9 @@ export function actedSentence(problem: ActedProblem): string {
     case 'cannotTakeJobs':
       return 'Only mechanics and guides take jobs. Nothing was changed.'
     case 'movedMeanwhile':
-      return `Somebody moved it meanwhile: it is ${LINE_WORDS[problem.now].toLowerCase()} now. Look again, then choose.`
+      return `Somebody moved it meanwhile: it is ${LINE_STATE_WORDS[problem.now].toLowerCase()} now. Look again, then choose.`
     case 'illegalMove':
-      return `From ${LINE_WORDS[problem.now].toLowerCase()} it cannot go there. Nothing was changed.`
+      return `From ${LINE_STATE_WORDS[problem.now].toLowerCase()} it cannot go there. Nothing was changed.`
     case 'trouble':
       return 'No answer from the shop, so it is not sure whether it was done. Look again in a moment.'
   }

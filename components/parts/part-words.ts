@@ -1,14 +1,15 @@
 import type { PartLine, PartLineState, PartRequest } from '@/lib/model/part-request'
 
+/** Words of parts asked for, on the phone and at the desk (rule R14). */
 export const LINE_STATE_WORDS: Record<PartLineState, string> = {
   asked: 'Asked',
-  identified: 'Found out',
+  identified: 'Identified',
   quoted: 'Quoted',
   ordered: 'Ordered',
   promised: 'Promised',
   received: 'Received',
-  allocated: 'Set aside',
-  dispatched: 'On its way',
+  allocated: 'Allocated',
+  dispatched: 'Dispatched',
   fitted: 'Fitted',
   returned: 'Returned',
   credited: 'Credited',

@@ -1,5 +1,5 @@
 import type { PartRequest } from '@/lib/model/part-request'
-import { moneyWords } from './money-words'
+import { moneyWords } from '../../checks/words'
 
 type Advice = NonNullable<PartRequest['advice']>
 
@@ -14,7 +14,7 @@ const of100 = (share: number) => (share * 100).toFixed(1).replace(/\.0$/, '')
 
 /** The advice as it was shown in the field when the part was asked for: first what, then from what. */
 export function adviceWords(advice: Advice, currency: string): { first: string; from: string } {
-  const money = (minor: number) => moneyWords({ minor, currency })
+  const money = (minor: number) => moneyWords(minor, currency)
   const fails =
     advice.aftermarketFails === null
       ? ''

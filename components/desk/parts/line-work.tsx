@@ -7,9 +7,9 @@ import { Hold } from '@/components/ui/hold'
 import { Key } from '@/components/ui/key'
 import type { PartLine, PartLineState } from '@/lib/model/part-request'
 import { mayMove } from '@/lib/shop/job-states'
+import { LINE_STATE_WORDS } from '../../parts/part-words'
 import type { MoveLineAction } from '../desk-actions'
 import { useDesk } from '../desk-context'
-import { LINE_WORDS } from '../desk-words'
 import { useActing } from '../use-acting'
 import { type LineBoxes, type LineMoveForm, lineBoxes, minorOf } from './line-move.schema'
 
@@ -30,7 +30,7 @@ export function LineWork({ requestId, line, move }: Props) {
   const head = { requestId, lineId: line.id, from: line.state }
   const can = (to: PartLineState) => mayMove('partLine', line.state, to)
   const send = (wanted: LineMoveForm) =>
-    void act(() => move(wanted), `${line.words}: ${LINE_WORDS[wanted.to].toLowerCase()}.`)
+    void act(() => move(wanted), `${line.words}: ${LINE_STATE_WORDS[wanted.to].toLowerCase()}.`)
 
   const identify = handleSubmit(({ number }) => {
     if (number === '') return setError('number', { message: 'Type the part number.' })

@@ -7,11 +7,11 @@ import { RuleEdge } from '@/components/ui/rule-edge'
 import type { DeskJob } from '@/lib/model/desk'
 import type { PartLine, PartLineState } from '@/lib/model/part-request'
 import { may } from '@/lib/shop/permissions'
+import { moneyWords } from '../../checks/words'
+import { CHOICE_WORDS, LINE_STATE_WORDS, URGENCY_WORDS } from '../../parts/part-words'
 import type { MoveLineAction } from '../desk-actions'
 import { useDesk } from '../desk-context'
-import { CHOICE_WORDS, LINE_WORDS, URGENCY_WORDS } from '../desk-words'
 import { LineWork } from './line-work'
-import { moneyWords } from './money-words'
 
 type Line = PartLine & { state: PartLineState }
 
@@ -61,11 +61,13 @@ function PartRow({ line, urgency, requestId, move }: RowProps) {
             {line.position ? `, ${line.position}` : ''}
             {line.number ? <span className="figures block text-ink">{line.number}</span> : null}
             {line.price ? (
-              <span className="figures block text-ink">{moneyWords(line.price)}</span>
+              <span className="figures block text-ink">
+                {moneyWords(line.price.minor, line.price.currency)}
+              </span>
             ) : null}
           </p>
         </div>
-        <span className="caps text-section">{LINE_WORDS[line.state]}</span>
+        <span className="caps text-section">{LINE_STATE_WORDS[line.state]}</span>
       </div>
       {mayWork ? (
         <div className="mt-2 grid gap-2">

@@ -4,15 +4,15 @@ import { Fragment, useState } from 'react'
 import { Key } from '@/components/ui/key'
 import type { DeskPartLine } from '@/lib/model/desk'
 import { may } from '@/lib/shop/permissions'
+import { moneyWords } from '../../checks/words'
 import { span } from '../../field/times'
+import { CHOICE_WORDS, LINE_STATE_WORDS, URGENCY_WORDS } from '../../parts/part-words'
 import type { MoveLineAction } from '../desk-actions'
 import { useDesk } from '../desk-context'
 import { deskPaths } from '../desk-path'
-import { CHOICE_WORDS, LINE_WORDS, URGENCY_WORDS } from '../desk-words'
 import { useNow } from '../use-now'
 import { adviceWords } from './advice-words'
 import { LineWork } from './line-work'
-import { moneyWords } from './money-words'
 
 type Props = { rows: readonly DeskPartLine[]; move: MoveLineAction }
 
@@ -110,7 +110,7 @@ function Cells({ row }: { row: DeskPartLine }) {
         <span className="block text-second text-ink2">by {row.askedBy ?? 'name erased'}</span>
       </td>
       <td data-name="State" className="caps text-section">
-        {LINE_WORDS[line.state]}
+        {LINE_STATE_WORDS[line.state]}
       </td>
     </>
   )
@@ -122,7 +122,9 @@ function ChoiceCell({ row: { line, request } }: { row: DeskPartLine }) {
   return (
     <>
       <strong>{CHOICE_WORDS[line.choice]}</strong>
-      {line.price ? <span className="figures block">{moneyWords(line.price)}</span> : null}
+      {line.price ? (
+        <span className="figures block">{moneyWords(line.price.minor, line.price.currency)}</span>
+      ) : null}
       {advice ? (
         <span className="block text-second text-ink2">
           <span className="block text-ink">{advice.first}</span>
