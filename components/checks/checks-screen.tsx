@@ -11,9 +11,11 @@ import { useBelief } from '../engine/use-belief'
 import { useCase } from '../engine/use-case'
 import { type PlanView, usePlan } from '../engine/use-plan'
 import type { Answer } from '../engine/work'
+import { entryMention } from '../log/entry-words'
 import { proofSentence } from '../outcome/proof-words'
 import { useBook } from '../store/use-book'
 import { useShop } from '../store/use-rows'
+import { NOTICE_WORDS } from '../suspects/notice-words'
 import { SuspectRows } from '../suspects/suspect-rows'
 import { Key, KeyLink } from '../ui/key'
 import { Plate } from '../ui/plate'
@@ -27,7 +29,6 @@ import { RunnerUp } from './runner-up'
 import { useActOn } from './use-act-on'
 import { useFirstSaid } from './use-first-said'
 import { WhyView } from './why-view'
-import { entryWords } from './words'
 
 /** CHECKS: what to do next and why, and every suspect with its chance (rules R5, R23). */
 export function ChecksScreen({ jobId }: { jobId: Id }) {
@@ -245,17 +246,14 @@ function Notices({ notices }: { notices: Answer['belief']['notices'] }) {
   if (notices.length === 0) return null
   return (
     <ul className="grid gap-1 border-l-4 border-ink pl-3 font-bold">
-      {notices.includes('moreThanOneLikely') && (
-        <li>More than one fault is likely. The plan looks one step ahead only.</li>
-      )}
-      {notices.includes('maybeNotInList') && (
-        <li>The fault may not be in this list. The plan looks one step ahead only.</li>
-      )}
+      {notices.map((notice) => (
+        <li key={notice}>{NOTICE_WORDS[notice]} The plan looks one step ahead only.</li>
+      ))}
     </ul>
   )
 }
 
 function wordsOf(id: Id, entries: readonly LogEntry[], index: BookIndex): string {
   const entry = entries.find((one) => one.id === id)
-  return entry === undefined ? 'an earlier entry' : entryWords(entry, index)
+  return entry === undefined ? 'an earlier entry' : entryMention(entry.body, index)
 }

@@ -4,6 +4,7 @@ import type { CheckItem } from '@/lib/model/code-book'
 import type { Id } from '@/lib/model/id'
 import type { LogBody, LogEntry } from '@/lib/model/log-entry'
 import { clockTime } from '../field/times'
+import { entryMention } from '../log/entry-words'
 import { useDraft } from '../store/use-draft'
 import { useStamp } from '../store/use-stamp'
 import { Field } from '../ui/field'
@@ -14,7 +15,6 @@ import { useTimesDone } from './check-steps'
 import { FRESH, type HowDone, HowDoneForm } from './how-done'
 import { NotYours, useMayLog } from './use-may'
 import { NotSaved, useSave } from './use-save'
-import { entryWords } from './words'
 
 type Props = {
   jobId: Id
@@ -99,7 +99,7 @@ function Earlier({ before, index }: { before: readonly LogEntry[]; index: BookIn
       {before.map((entry) => (
         <li key={entry.id}>
           <span className="figures mr-2 text-ink2">{clockTime(entry.happenedAt, entry.zone)}</span>
-          {entryWords(entry, index)}
+          {entryMention(entry.body, index)}
         </li>
       ))}
       <li className="text-second text-ink2">

@@ -4,11 +4,11 @@ import type { BookIndex } from '@/lib/diag/book-index'
 import type { CheckItem } from '@/lib/model/code-book'
 import type { Id } from '@/lib/model/id'
 import type { LogEntry } from '@/lib/model/log-entry'
+import { entryMention } from '../log/entry-words'
 import { KeyLink } from '../ui/key'
 import { Screen } from '../ui/screen'
 import { BeliefShift } from './belief-shift'
 import { UndoBar } from './undo-bar'
-import { entryWords } from './words'
 
 type Props = {
   jobId: Id
@@ -21,7 +21,8 @@ type Props = {
 /** After recording: what was kept, ten seconds to take it back, and what it did to the suspects. */
 export function SavedOutcome({ jobId, entry, index, check, onUndone }: Props) {
   const { body } = entry
-  const words = body.kind === 'couldNot' ? `Could not: ${body.reason}` : entryWords(entry, index)
+  const words =
+    body.kind === 'couldNot' ? `Could not: ${body.reason}` : entryMention(entry.body, index)
   useFocusTitle()
   return (
     <Screen

@@ -2,9 +2,9 @@ import type { Suspect } from '@/lib/diag/belief'
 import type { BookIndex } from '@/lib/diag/book-index'
 import type { LogEntry } from '@/lib/model/log-entry'
 import { clockTime } from '../field/times'
+import { entryMention } from '../log/entry-words'
 import { of100 } from '../reading-strip/figures'
 import { whyLine } from './why-words'
-import { entryWords } from './words'
 
 type Props = { suspect: Suspect; entries: readonly LogEntry[]; index: BookIndex }
 
@@ -45,7 +45,7 @@ function Silent({ suspect, entries, index }: Props) {
     .filter((why) => !speaks(why))
     .map((why) => entries.find((entry) => entry.id === why.entryId))
     .filter((entry) => entry !== undefined)
-    .map((entry) => entryWords(entry, index))
+    .map((entry) => entryMention(entry.body, index))
   if (words.length === 0) return null
   return <p className="text-second text-ink2">Says nothing about it: {words.join('; ')}.</p>
 }
@@ -59,7 +59,7 @@ function WhyRow({ why, entry, index }: RowProps) {
       {entry !== null && (
         <span className="figures mr-2 text-ink2">{clockTime(entry.happenedAt, entry.zone)}</span>
       )}
-      <b>{entry === null ? why.label : capital(entryWords(entry, index))}</b>
+      <b>{entry === null ? why.label : capital(entryMention(entry.body, index))}</b>
       {why.about !== 'share' && (
         <>
           {' '}

@@ -8,10 +8,11 @@ import type { PartLine, PartRequest } from '@/lib/model/part-request'
 import type { Shop } from '@/lib/model/shop'
 import { NotYours, useMay } from '../checks/use-may'
 import { NotSaved, useSave } from '../checks/use-save'
-import { entryWords, moneyWords } from '../checks/words'
+import { moneyWords } from '../checks/words'
 import { useBelief } from '../engine/use-belief'
 import { useCase } from '../engine/use-case'
 import { useRoute } from '../field/router'
+import { entryMention } from '../log/entry-words'
 import { fixed } from '../reading-strip/figures'
 import { useBook } from '../store/use-book'
 import { useDraft } from '../store/use-draft'
@@ -196,7 +197,7 @@ function useCondemned(jobId: Id, fault: string | null): { id: Id; words: string 
   if (suspect === undefined || found === null || index === null) return null
   const id = condemnedBy(suspect)
   const entry = living(found.entries).find((one) => one.id === id)
-  return entry === undefined ? null : { id: entry.id, words: entryWords(entry, index) }
+  return entry === undefined ? null : { id: entry.id, words: entryMention(entry.body, index) }
 }
 
 const choicesOf = (sheet: SheetPart | null): readonly PartLine['choice'][] =>

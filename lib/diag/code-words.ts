@@ -41,6 +41,22 @@ export type CodeMeaning = {
   sources: string[]
 }
 
+/** The code as a heading, just as the dash showed it: `SPN 1268 FMI 3`, `P0351`, `Flash code 2-4`. */
+export function codeAsShown(seen: CodeSeen): string {
+  switch (seen.format) {
+    case 'spn':
+      return `SPN ${seen.spn} FMI ${seen.fmi}`
+    case 'pcode':
+      return seen.code
+    case 'flash':
+      return `Flash code ${seen.pattern}`
+    case 'asShown':
+      return seen.text
+    default:
+      return assertNever(seen)
+  }
+}
+
 /** The subject, circuit and failure kind of a code as seen. Nothing is guessed: an unknown number stays unknown. */
 export function codeMeaning(index: BookIndex, seen: CodeSeen): CodeMeaning {
   switch (seen.format) {
@@ -48,7 +64,7 @@ export function codeMeaning(index: BookIndex, seen: CodeSeen): CodeMeaning {
       const item = index.spns.get(seen.spn)
       const failure = index.failuresByFmi.get(seen.fmi) ?? null
       return {
-        title: `SPN ${seen.spn} FMI ${seen.fmi}`,
+        title: codeAsShown(seen),
         subject: item?.name ?? null,
         circuit: item?.circuit ?? null,
         failure,
@@ -60,7 +76,7 @@ export function codeMeaning(index: BookIndex, seen: CodeSeen): CodeMeaning {
       const item = index.pcodes.get(seen.code)
       const failure = item === undefined ? null : failureOf(index, item.failure)
       return {
-        title: seen.code,
+        title: codeAsShown(seen),
         subject: item?.name ?? null,
         circuit: item?.circuit ?? null,
         failure,
@@ -69,9 +85,8 @@ export function codeMeaning(index: BookIndex, seen: CodeSeen): CodeMeaning {
       }
     }
     case 'flash':
-      return unread(`Flash code ${seen.pattern}`)
     case 'asShown':
-      return unread(seen.text)
+      return unread(codeAsShown(seen))
     default:
       return assertNever(seen)
   }

@@ -1,8 +1,6 @@
 import { describe, expect, it } from 'vitest'
 import { latestReading } from '@/components/desk/job/latest-reading'
 import { bookVersionOf, questionOf } from '@/components/desk/job/use-job-case'
-import { bookNames } from '@/components/desk/log/book-names'
-import { tellEntry } from '@/components/desk/log/tell-entry'
 import { specForEngine } from '@/components/engine/spec-kept'
 import { workOut } from '@/components/engine/work'
 import { BOOK_ITEMS } from '@/db/codebook/book'
@@ -186,67 +184,5 @@ describe('the desk reckons as the phone does', () => {
     expect(latest?.read.body.subject).toBe('suspect')
     expect(latest?.twin?.body.subject).toBe('knownGood')
     expect(latestReading([wrong])).toBeNull()
-  })
-})
-
-describe('a line of the job log', () => {
-  const names = bookNames(index)
-  const tell = (body: LogBody, known = names) => tellEntry(entry(1, body), known)
-
-  it('[R11] says what the dash showed, what it names, and how it stood', () => {
-    expect(tellEntry(entries[0]!, names)).toMatchObject({
-      shape: 'diamond',
-      title: 'SPN 1268 / FMI 3',
-    })
-    expect(tellEntry(entries[0]!, names).lines.join(' ')).toMatch(
-      /Ignition coil 1.*Module 0, active\./,
-    )
-    const unknown = tell({
-      kind: 'code',
-      seen: { format: 'asShown', text: 'E-77' },
-      context: { module: null, status: 'unknown', count: null, order: 1, photo: null },
-    })
-    expect(unknown.lines[0]).toBe('Not in the code book: kept as shown.')
-  })
-
-  it('[F5] says each step of a swap with what became of the fault', () => {
-    const titles = entries.slice(5).map((one) => tellEntry(one, names).title)
-    expect(titles).toEqual([
-      'Spare fitted: fault gone',
-      'Old part refitted: fault there',
-      'New part fitted: fault gone',
-    ])
-  })
-
-  it('[F7] says the proof run with its bound: 12 clean starts leave up to 22 of 100', () => {
-    // Exact one-sided 95 % bound 1 - 0.05^(1/12) = 0.2209 (Clopper-Pearson).
-    const line = tell({
-      kind: 'proofRun',
-      starts: 12,
-      minutes: 10,
-      faults: 0,
-      hot: true,
-      words: null,
-      boundExact: 1 - 0.05 ** (1 / 12),
-      boundRuleOfThree: 0.25,
-    })
-    expect(line.title).toBe('12 starts, 10 min, no fault')
-    expect(line.lines).toContain('Up to 22 of 100 starts could still fail (one-sided 95 %).')
-  })
-
-  it('[R2] a way out keeps people and machine beside each other', () => {
-    const line = tell({
-      kind: 'wayOut',
-      wayOut: 'limpOut',
-      reasons: 'Light enough',
-      machineState: 'limping',
-      peopleState: 'onTheWay',
-    })
-    expect(line).toMatchObject({ shape: 'flag', title: 'Limp out' })
-    expect(line.lines).toEqual(['Light enough', 'Machine limping, people on the way.'])
-  })
-
-  it('names ids by themselves where the code book is not there yet', () => {
-    expect(tell(reading('suspect'), bookNames(null)).title).toBe('coilPrimaryResistance')
   })
 })

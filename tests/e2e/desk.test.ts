@@ -76,7 +76,7 @@ test('[R19] the board, a job and the parts table follow the field without a relo
     context: { module: 0, status: 'active', count: null, order: 1, photo: null },
   })
   await expect(board.getByText('Belt smells burnt')).toBeVisible()
-  await expect(board.getByText('SPN 1268 / FMI 3')).toBeVisible()
+  await expect(board.getByText('SPN 1268 FMI 3')).toBeVisible()
   await expect(board.getByText('Suspects after 2 entries')).toBeVisible()
   await expect(
     board.getByRole('listitem').filter({ hasText: 'Ignition coil' }).first(),

@@ -1,15 +1,16 @@
 'use client'
 
 import { useMemo, useState } from 'react'
+import { WhyView } from '@/components/checks/why-view'
+import { entryMention } from '@/components/log/entry-words'
+import { NOTICE_WORDS } from '@/components/suspects/notice-words'
 import { SuspectRows } from '@/components/suspects/suspect-rows'
 import { Key } from '@/components/ui/key'
 import { RuleEdge } from '@/components/ui/rule-edge'
-import type { Suspect } from '@/lib/diag/belief'
+import type { Belief, Suspect } from '@/lib/diag/belief'
 import { SOMETHING_ELSE } from '@/lib/diag/book-index'
 import type { DeskJob } from '@/lib/model/desk'
 import { counted } from '../../field/words'
-import { bookNames } from '../log/book-names'
-import { tellEntry } from '../log/tell-entry'
 import type { JobCase } from './use-job-case'
 
 /** Rows shown before the rest is asked for. */
@@ -19,10 +20,11 @@ const FIRST_ROWS = 6
 export function DeskSuspects({ found, reckoned }: { found: DeskJob; reckoned: JobCase }) {
   const [open, setOpen] = useState<string | null>(null)
   const [all, setAll] = useState(false)
-  const words = useMemo(() => {
-    const names = bookNames(reckoned.index)
-    return new Map(found.entries.map((entry) => [entry.id, tellEntry(entry, names).title]))
-  }, [found.entries, reckoned.index])
+  const { index } = reckoned
+  const words = useMemo(
+    () => new Map(found.entries.map(({ id, body }) => [id, entryMention(body, index)])),
+    [found.entries, index],
+  )
   const belief = reckoned.answer?.belief
   return (
     <section className="mt-7" aria-busy={reckoned.working}>
@@ -46,7 +48,9 @@ export function DeskSuspects({ found, reckoned }: { found: DeskJob; reckoned: Jo
               entryWords={(id) => words.get(id) ?? 'an entry of the log'}
               open={open}
               onOpen={setOpen}
-              why={(suspect) => <WhyList suspect={suspect} />}
+              why={(suspect) =>
+                index && <WhyView suspect={suspect} entries={found.entries} index={index} />
+              }
             />
           </div>
           {belief.suspects.length > FIRST_ROWS ? (
@@ -72,42 +76,10 @@ function firstRows(suspects: readonly Suspect[]): readonly Suspect[] {
   return !other || first.includes(other) ? first : [...first, other]
 }
 
-const NOTICE_WORDS = {
-  moreThanOneLikely: 'More than one fault is likely.',
-  maybeNotInList: 'The fault may not be in this list.',
-}
-
-function Notices({ notices }: { notices: readonly (keyof typeof NOTICE_WORDS)[] }) {
+function Notices({ notices }: { notices: Belief['notices'] }) {
   return notices.map((notice) => (
     <p key={notice} className="mt-1 font-bold">
       {NOTICE_WORDS[notice]}
     </p>
   ))
-}
-
-/** Each piece of evidence and how much it moved this suspect, as factors of the odds. */
-function WhyList({ suspect }: { suspect: Suspect }) {
-  return (
-    <ul className="mt-1 border-l-4 border-ink pl-3 text-second">
-      {suspect.why.map((why) => (
-        <li
-          key={`${why.about} ${why.entryId ?? ''} ${why.label}`}
-          className="flex justify-between gap-3"
-        >
-          <span className="min-w-0">{why.label}</span>
-          <span className="figures shrink-0 text-ink2">
-            {factorWords(why.logRatio, why.saysNothing)}
-          </span>
-        </li>
-      ))}
-    </ul>
-  )
-}
-
-/** `odds x 3.2` or `odds / 3.2`; evidence that moves nothing says so. */
-function factorWords(logRatio: number, saysNothing: boolean): string {
-  if (saysNothing || Math.abs(logRatio) < 0.005) return 'says nothing'
-  const factor = Math.exp(Math.abs(logRatio))
-  const shown = factor >= 100 ? Math.round(factor).toString() : factor.toPrecision(2)
-  return logRatio > 0 ? `odds × ${shown}` : `odds ÷ ${shown}`
 }

@@ -1,9 +1,8 @@
 'use client'
 
 import { useMemo } from 'react'
-import { shortUnit } from '@/components/reading-strip/figures'
-import { VerdictLine } from '@/components/reading-strip/verdict-line'
-import { Figure } from '@/components/ui/figure'
+import { type EntryWords, entryWords } from '@/components/log/entry-words'
+import { ReadingLine } from '@/components/log/reading-line'
 import { LogIcon } from '@/components/ui/log-icon'
 import type { BookIndex } from '@/lib/diag/book-index'
 import type { DeskJob } from '@/lib/model/desk'
@@ -11,9 +10,7 @@ import type { LogRow } from '@/lib/model/log-entry'
 import { clockTime, span } from '../../field/times'
 import { useDesk } from '../desk-context'
 import { dayName } from '../desk-time'
-import { bookNames } from './book-names'
 import { PhotoFrame } from './photo-frame'
-import { type TellingLine, tellEntry } from './tell-entry'
 
 /** Gaps over 20 min show as a broken wire with the time (design 5c). */
 const GAP_MS = 20 * 60_000
@@ -22,7 +19,6 @@ type Props = { found: DeskJob; index: BookIndex | null }
 
 /** The job log, oldest first, in the shop's order: an ordered list strung on a wire. */
 export function JobLog({ found, index }: Props) {
-  const names = useMemo(() => bookNames(index), [index])
   const struck = useMemo(() => struckBy(found.entries), [found.entries])
   const who = useMemo(
     () => new Map(found.people.map(({ id, name }) => [id, name ?? 'name erased'])),
@@ -37,7 +33,7 @@ export function JobLog({ found, index }: Props) {
         <LogItem
           key={entry.id}
           entry={entry}
-          line={lineOf(entry, found.entries, names)}
+          line={lineOf(entry, found.entries, index)}
           before={found.entries[at - 1] ?? null}
           struck={struck.has(entry.id)}
           author={who.get(entry.authorId) ?? 'somebody who left'}
@@ -52,13 +48,13 @@ export function JobLog({ found, index }: Props) {
 function lineOf(
   entry: LogRow,
   all: readonly LogRow[],
-  names: ReturnType<typeof bookNames>,
-): TellingLine & { bar: boolean } {
-  const line = tellEntry(entry, names)
+  index: BookIndex | null,
+): EntryWords & { bar: boolean } {
+  const line = entryWords(entry.body, index)
   if (entry.supersedes === null) return { ...line, bar: false }
   const earlier = all.find(({ id }) => id === entry.supersedes)
   const shape =
-    entry.body.kind === 'correction' && earlier ? tellEntry(earlier, names).shape : line.shape
+    entry.body.kind === 'correction' && earlier ? entryWords(earlier.body, index).shape : line.shape
   return { ...line, shape, bar: true }
 }
 
@@ -68,7 +64,7 @@ const struckBy = (entries: readonly LogRow[]) =>
 
 type ItemProps = {
   entry: LogRow
-  line: TellingLine & { bar: boolean }
+  line: EntryWords & { bar: boolean }
   before: LogRow | null
   struck: boolean
   author: string
@@ -100,9 +96,9 @@ function LogItem({ entry, line, before, struck, author, photoHere }: ItemProps) 
             </span>
             {line.title}
           </h3>
-          <ReadingLine entry={entry} />
+          {entry.body.kind === 'reading' ? <ReadingLine body={entry.body} struck={struck} /> : null}
           {line.lines.map((text) => (
-            <p key={text} className="text-second text-ink2">
+            <p key={text} className="whitespace-pre-line text-second text-ink2">
               {text}
             </p>
           ))}
@@ -114,20 +110,6 @@ function LogItem({ entry, line, before, struck, author, photoHere }: ItemProps) 
         </div>
       </div>
     </li>
-  )
-}
-
-function ReadingLine({ entry: { body } }: { entry: LogRow }) {
-  if (body.kind !== 'reading') return null
-  return (
-    <p className="flex flex-wrap items-center gap-x-3">
-      <Figure
-        value={body.overRange ? 'OL' : body.asTyped}
-        unit={shortUnit(body.quantity)}
-        size="row"
-      />
-      <VerdictLine verdict={body.result?.verdict ?? null} />
-    </p>
   )
 }
 

@@ -1,13 +1,12 @@
 'use client'
 
+import { codeMeans, contextWords } from '@/components/log/code-sentences'
 import { useBook } from '@/components/store/use-book'
 import { LogIcon } from '@/components/ui/log-icon'
 import { Row } from '@/components/ui/row'
-import { explainCode } from '@/lib/diag/code-words'
+import { codeAsShown, explainCode } from '@/lib/diag/code-words'
 import type { Features } from '@/lib/model/features'
 import type { LogEntry } from '@/lib/model/log-entry'
-import { sentence } from '../words'
-import { contextWords } from './context-words'
 
 type Props = { entries: readonly LogEntry[]; features: Features; empty: string }
 
@@ -26,11 +25,11 @@ export function CodeLines({ entries, features, empty }: Props) {
           <li key={id}>
             <Row
               icon={<LogIcon shape="diamond" />}
-              title={words?.title ?? 'Code'}
+              title={codeAsShown(body.seen)}
               second={
                 words === null
                   ? contextWords(body.context)
-                  : `${sentence(words.circuitName)}${words.failure === null ? '' : `: ${words.failure.name}`}. ${contextWords(body.context)}`
+                  : `${codeMeans(words)} ${contextWords(body.context)}`
               }
             />
           </li>

@@ -1,5 +1,6 @@
 'use client'
 
+import { contextWords } from '@/components/log/code-sentences'
 import { useBook } from '@/components/store/use-book'
 import { Plate } from '@/components/ui/plate'
 import { RuleEdge } from '@/components/ui/rule-edge'
@@ -7,7 +8,6 @@ import { explainCode, type FaultRef } from '@/lib/diag/code-words'
 import type { CodeContext, CodeSeen } from '@/lib/model/code-seen'
 import type { Features } from '@/lib/model/features'
 import { sentence } from '../words'
-import { contextWords } from './context-words'
 
 type Props = { seen: CodeSeen; context: CodeContext; features: Features }
 

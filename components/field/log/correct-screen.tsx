@@ -1,6 +1,7 @@
 'use client'
 
 import { useState } from 'react'
+import { entryWords } from '@/components/log/entry-words'
 import { useBook } from '@/components/store/use-book'
 import { useDraft } from '@/components/store/use-draft'
 import { useLog } from '@/components/store/use-log'
@@ -13,7 +14,6 @@ import { Screen } from '@/components/ui/screen'
 import { useFocusInvalid } from '@/components/ui/use-focus-invalid'
 import { jobHref } from '../route'
 import { useRoute } from '../router'
-import { entryWords, kindWord } from './log-words'
 
 /** A correction: the earlier entry stays, struck through, and counts no more. */
 export function CorrectScreen({ jobId, entryId }: { jobId: string; entryId: string }) {
@@ -27,6 +27,7 @@ export function CorrectScreen({ jobId, entryId }: { jobId: string; entryId: stri
   const stamp = useStamp()
   const { go, here } = useRoute()
   const entry = log?.find((line) => line.entry.id === entryId)?.entry
+  const words = entry && entryWords(entry.body, index)
   const save = () => {
     if (reason.trim() === '') {
       setProblem('Say what was wrong with it.')
@@ -52,11 +53,11 @@ export function CorrectScreen({ jobId, entryId }: { jobId: string; entryId: stri
         </Key>
       }
     >
-      {entry === undefined ? (
+      {words === undefined ? (
         <p>This entry is not on this phone.</p>
       ) : (
         <p className="border-2 border-ink p-3 font-bold">
-          {kindWord(entry.body.kind)}: {entryWords(entry.body, index).title}
+          {words.kind}: {words.title}
         </p>
       )}
       <Field

@@ -1,8 +1,8 @@
 'use client'
 
 import { useState } from 'react'
-import { asTypedOnScreen, shortUnit } from '@/components/reading-strip/figures'
-import { VerdictLine } from '@/components/reading-strip/verdict-line'
+import { entryWords } from '@/components/log/entry-words'
+import { ReadingLine } from '@/components/log/reading-line'
 import { useBook } from '@/components/store/use-book'
 import { useLog } from '@/components/store/use-log'
 import { usePhoto } from '@/components/store/use-photo'
@@ -13,11 +13,10 @@ import { KeyLink } from '@/components/ui/key'
 import { LogIcon } from '@/components/ui/log-icon'
 import { Photo } from '@/components/ui/photo'
 import { Screen } from '@/components/ui/screen'
-import type { LogEntry, ReadingBody } from '@/lib/model/log-entry'
+import type { LogEntry } from '@/lib/model/log-entry'
 import { mayLog } from '@/lib/shop/permissions'
 import { jobHref } from '../route'
 import { clockTime, dayOf } from '../times'
-import { entryWords, kindWord, shapeOf } from './log-words'
 
 /** One entry of the log, whole, with who wrote it and when; and the way to correct it. */
 export function EntryScreen({ jobId, entryId }: { jobId: string; entryId: string }) {
@@ -42,8 +41,8 @@ export function EntryScreen({ jobId, entryId }: { jobId: string; entryId: string
     <Screen
       title={
         <span className="flex items-center gap-3">
-          <LogIcon shape={shapeOf(entry.body.kind)} className="size-8 shrink-0" />
-          {kindWord(entry.body.kind)}
+          <LogIcon shape={words.shape} className="size-8 shrink-0" />
+          {words.kind}
         </span>
       }
       foot={
@@ -55,8 +54,12 @@ export function EntryScreen({ jobId, entryId }: { jobId: string; entryId: string
       <p className={classes('text-row font-bold whitespace-pre-line', later && 'line-through')}>
         {words.title}
       </p>
-      {words.second ? <p className="whitespace-pre-line">{words.second}</p> : null}
-      {entry.body.kind === 'reading' ? <Reading body={entry.body} /> : null}
+      {words.lines.map((text) => (
+        <p key={text} className="whitespace-pre-line">
+          {text}
+        </p>
+      ))}
+      {entry.body.kind === 'reading' ? <ReadingLine body={entry.body} large /> : null}
       {entry.body.kind === 'photo' ? (
         <Picture hash={entry.body.photo.hash} words={words.title} />
       ) : null}
@@ -69,20 +72,6 @@ export function EntryScreen({ jobId, entryId }: { jobId: string; entryId: string
       )}
       <Written entry={entry} sent={line.sent} order={line.order} />
     </Screen>
-  )
-}
-
-function Reading({ body }: { body: ReadingBody }) {
-  return (
-    <>
-      <p>
-        <span className="figures text-figure">
-          {body.overRange ? 'OL' : asTypedOnScreen(body.asTyped)}
-        </span>{' '}
-        <b>{shortUnit(body.quantity)}</b>
-      </p>
-      {body.result === null ? null : <VerdictLine verdict={body.result.verdict} large />}
-    </>
   )
 }
 

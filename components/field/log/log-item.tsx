@@ -1,17 +1,16 @@
 'use client'
 
-import { asTypedOnScreen, shortUnit } from '@/components/reading-strip/figures'
-import { VerdictLine } from '@/components/reading-strip/verdict-line'
+import { entryWords, kindWord } from '@/components/log/entry-words'
+import { ReadingLine } from '@/components/log/reading-line'
 import type { StoredEntry } from '@/components/store/use-log'
 import { usePhoto } from '@/components/store/use-photo'
 import { classes } from '@/components/ui/class-names'
 import { LogIcon } from '@/components/ui/log-icon'
 import { Photo } from '@/components/ui/photo'
 import type { BookIndex } from '@/lib/diag/book-index'
-import type { LogEntry, ReadingBody } from '@/lib/model/log-entry'
+import type { LogEntry } from '@/lib/model/log-entry'
 import { jobHref } from '../route'
 import { clockTime, span } from '../times'
-import { entryWords, kindWord, shapeOf } from './log-words'
 
 type Props = {
   line: StoredEntry
@@ -36,7 +35,7 @@ export function LogItem({ line, log, index, gapMs, day }: Props) {
       <p className="log-time figures text-second">{time}</p>
       <div className="log-node">
         <span className={classes('log-wire', gapMs !== null && 'log-gap')} aria-hidden="true" />
-        <LogIcon shape={shapeOf(bar && target ? target.body.kind : entry.body.kind)} bar={bar} />
+        <LogIcon shape={entryWords((bar && target ? target : entry).body, index).shape} bar={bar} />
       </div>
       <div className="log-text">
         {day === null ? null : <p className="caps text-section">{day}</p>}
@@ -45,18 +44,20 @@ export function LogItem({ line, log, index, gapMs, day }: Props) {
           href={jobHref(entry.jobId, `log/${entry.id}`)}
           className="block min-h-14 text-ink no-underline"
         >
-          <span className="visually-hidden">{kindWord(entry.body.kind)}: </span>
+          <span className="visually-hidden">{words.kind}: </span>
           <Title entry={entry} title={words.title} struck={later !== null} />
           {entry.body.kind === 'reading' ? (
             <ReadingLine body={entry.body} struck={later !== null} />
           ) : null}
-          {words.second ? (
-            <span className="line-clamp-3 block text-second text-ink2">{words.second}</span>
-          ) : null}
+          {words.lines.map((text) => (
+            <span key={text} className="line-clamp-3 block text-second text-ink2">
+              {text}
+            </span>
+          ))}
           {target === null ? null : (
             <span className="block text-second text-ink2">
               Points back to {clockTime(target.happenedAt, target.zone)},{' '}
-              {kindWord(target.body.kind).toLowerCase()}.
+              {kindWord(target.body).toLowerCase()}.
             </span>
           )}
           {later === null ? null : (
@@ -86,20 +87,6 @@ function Title({ entry, title, struck }: { entry: LogEntry; title: string; struc
       )}
     >
       {title}
-    </span>
-  )
-}
-
-function ReadingLine({ body, struck }: { body: ReadingBody; struck: boolean }) {
-  return (
-    <span className={classes('flex flex-wrap items-center gap-x-3', struck && 'line-through')}>
-      <span className="whitespace-nowrap">
-        <span className="figures text-row">
-          {body.overRange ? 'OL' : asTypedOnScreen(body.asTyped)}
-        </span>{' '}
-        <b>{shortUnit(body.quantity)}</b>
-      </span>
-      {body.result === null ? null : <VerdictLine verdict={body.result.verdict} />}
     </span>
   )
 }

@@ -2,6 +2,7 @@
 
 import { FileDown, ShieldAlert, ShieldCheck } from 'lucide-react'
 import { type ReactNode, useState } from 'react'
+import { entryWords } from '@/components/log/entry-words'
 import { of100 } from '@/components/reading-strip/figures'
 import { useSession } from '@/components/store/use-session'
 import { useStamp } from '@/components/store/use-stamp'
@@ -105,24 +106,12 @@ function Needs() {
   )
 }
 
-/** Lines of the job log by their titles; what is not among them is somebody's word. */
-const LOG_SHAPES: Readonly<Record<string, LogShape>> = {
-  Symptom: 'triangle',
-  Code: 'diamond',
-  'Codes not readable': 'diamond',
-  'Codes cleared': 'diamond',
-  Check: 'gauge',
-  'Check not possible': 'gauge',
-  Reading: 'gauge',
-  'Swap step': 'hexagon',
-  Fix: 'flag',
-  'Proof run': 'flag',
-  'Photo entry': 'frame',
-  'Way out': 'flag',
+/** Shape and words of an item: a line of the log by its kind, as the log shows it. */
+const shown = ({ kind, what }: UnsentItem): { shape: LogShape; words: string } => {
+  if (typeof what === 'string') return { shape: SHAPES[kind], words: what }
+  const { shape, kind: words } = entryWords(what, null)
+  return { shape, words }
 }
-
-const shapeOf = (item: UnsentItem): LogShape =>
-  item.kind === 'log.add' ? (LOG_SHAPES[item.title] ?? 'ring') : SHAPES[item.kind]
 
 const SHAPES: Record<UnsentItem['kind'], LogShape> = {
   'machine.add': 'ring',
@@ -148,8 +137,8 @@ function Items({ title, items }: { title: string; items: readonly UnsentItem[] }
         {items.map((item) => (
           <li key={item.key}>
             <Row
-              icon={<LogIcon shape={shapeOf(item)} />}
-              title={item.title}
+              icon={<LogIcon shape={shown(item).shape} />}
+              title={shown(item).words}
               second={itemWords(item)}
               end={clockTime(item.since, zone)}
               endSecond={size(item.bytes)}

@@ -1,5 +1,4 @@
 import type { Id } from '@/lib/model/id'
-import type { LogKind } from '@/lib/model/log-entry'
 import type { Op } from '@/lib/sync/protocol/op'
 import type { OutboxRecord, PhotoRecord } from './phone-db'
 import type { UnsentItem, UnsentView } from './views'
@@ -39,26 +38,8 @@ const REFUSALS: Readonly<Record<string, string>> = {
 const REFUSED = 'The shop refused this record.'
 const BLOCKED = 'Waits for a record before it that the shop does not have.'
 
-const LOG_TITLES: Readonly<Record<LogKind, string>> = {
-  symptom: 'Symptom',
-  code: 'Code',
-  codesUnreadable: 'Codes not readable',
-  codesCleared: 'Codes cleared',
-  check: 'Check',
-  couldNot: 'Check not possible',
-  reading: 'Reading',
-  swap: 'Swap step',
-  fix: 'Fix',
-  proofRun: 'Proof run',
-  photo: 'Photo entry',
-  note: 'Note',
-  people: 'Where the people are',
-  wayOut: 'Way out',
-  correction: 'Correction',
-}
-
-/** What a record is, in a few plain words. */
-function titleOf(op: Op): string {
+/** What a record is: a line of the log itself, else a few plain words. */
+function whatOf(op: Op): UnsentItem['what'] {
   switch (op.kind) {
     case 'machine.add':
       return 'Machine'
@@ -71,7 +52,7 @@ function titleOf(op: Op): string {
     case 'job.machine':
       return 'How the machine stands'
     case 'log.add':
-      return LOG_TITLES[op.fields.body.kind]
+      return op.fields.body
     case 'partRequest.ask':
       return 'Part request'
     case 'advice.keep':
@@ -90,7 +71,7 @@ export function opItem(record: OutboxRecord, op: Op, sending: boolean): UnsentIt
     hash: null,
     kind: record.kind,
     jobId: record.jobId,
-    title: titleOf(op),
+    what: whatOf(op),
     bytes: record.bytes,
     since: instantOf(record.since),
     state: moving ? 'sending' : stateOf(record.state),
@@ -122,7 +103,7 @@ export function photoItem(photo: PhotoRecord, sending: boolean): UnsentItem {
     hash: photo.hash,
     kind: 'photoBytes',
     jobId: photo.jobId,
-    title: 'Photo',
+    what: 'Photo',
     bytes: photo.size,
     since: instantOf(photo.since),
     state: stuck ? 'stuck' : sending ? 'sending' : 'waiting',

@@ -1,6 +1,6 @@
 import type { BookIndex } from '@/lib/diag/book-index'
 import type { Id } from '@/lib/model/id'
-import type { LogEntry } from '@/lib/model/log-entry'
+import type { LogBody, LogEntry } from '@/lib/model/log-entry'
 import type { Actor } from '@/lib/model/person'
 import type { PhotoRef } from '@/lib/model/photo'
 import type { Instant } from '@/lib/model/time'
@@ -37,7 +37,8 @@ export type UnsentItem = {
   hash: string | null
   kind: OpKind | 'photoBytes'
   jobId: Id | null
-  title: string
+  /** A line of the job log as it was written; of anything else a few plain words. */
+  what: LogBody | string
   bytes: number
   since: Instant
   state: UnsentState

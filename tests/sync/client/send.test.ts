@@ -57,7 +57,7 @@ describe('the phone keeps and sends', () => {
     expect(view).toMatchObject({ count: 1, stuckCount: 1 })
     expect(view.items[0]).toMatchObject({
       state: 'stuck',
-      title: 'Note',
+      what: { kind: 'note', words: 'Bad' },
       reason: 'Your roles in this shop do not allow this.',
     })
     expect(shop.rowsOf('logEntry')).toHaveLength(2)
