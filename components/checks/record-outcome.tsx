@@ -7,6 +7,7 @@ import { clockTime } from '../field/times'
 import { entryMention } from '../log/entry-words'
 import { useDraft } from '../store/use-draft'
 import { useStamp } from '../store/use-stamp'
+import { DraftSign } from '../ui/draft-sign'
 import { Field } from '../ui/field'
 import { Key } from '../ui/key'
 import { RuleEdge } from '../ui/rule-edge'
@@ -32,7 +33,7 @@ export function RecordOutcome(props: Props) {
 }
 
 function Recording({ jobId, check, index, before, onSaved }: Props) {
-  const { value: how, set, how: outcome } = useOutcome(jobId, check, onSaved)
+  const { value: how, set, kept, how: outcome } = useOutcome(jobId, check, onSaved)
   const timeUnread = how.earlier && outcome.happenedAt() === null
   const timeProblem = timeUnread && how.about !== '' ? 'Type the time as 14:05.' : null
   const blocked = outcome.saving || timeUnread || (!how.asWritten && how.differed.trim() === '')
@@ -59,6 +60,7 @@ function Recording({ jobId, check, index, before, onSaved }: Props) {
         ))}
       </div>
       <CouldNot how={how} set={set} disabled={outcome.saving} onSave={outcome.couldNot} />
+      <DraftSign kept={kept} />
       <NotSaved problem={outcome.problem} />
     </section>
   )
@@ -66,7 +68,7 @@ function Recording({ jobId, check, index, before, onSaved }: Props) {
 
 function useOutcome(jobId: Id, check: CheckItem, onSaved: (id: Id) => void) {
   const key = `check:${jobId}:${check.id}`
-  const { value, set } = useDraft<HowDone>(key, FRESH)
+  const { value, set, kept } = useDraft<HowDone>(key, FRESH)
   const times = useTimesDone(check.id)
   const stamp = useStamp()
   const { save, saving, problem } = useSave()
@@ -89,7 +91,7 @@ function useOutcome(jobId: Id, check: CheckItem, onSaved: (id: Id) => void) {
       differed: value.asWritten ? null : value.differed.trim(),
     })
   const couldNot = () => keep({ kind: 'couldNot', checkId: check.id, reason: value.reason.trim() })
-  return { value, set, how: { found, couldNot, saving, problem, happenedAt } }
+  return { value, set, kept, how: { found, couldNot, saving, problem, happenedAt } }
 }
 
 function Earlier({ before, index }: { before: readonly LogEntry[]; index: BookIndex }) {

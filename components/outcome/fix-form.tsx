@@ -36,7 +36,7 @@ type FormProps = {
 export function FixForm({ jobId, onSaved, children }: FormProps) {
   const { search } = useRoute()
   const key = `fix:${jobId}`
-  const { value, set } = useDraft<FixDraft>(key, FIRST)
+  const { value, set, kept } = useDraft<FixDraft>(key, FIRST)
   const stamp = useStamp()
   const { save, saving, problem } = useSave()
   const fault = value.fault ?? search.get('fault')
@@ -52,6 +52,7 @@ export function FixForm({ jobId, onSaved, children }: FormProps) {
     <Screen
       title="Fix"
       second="What you did, in words the next mechanic can use."
+      kept={kept}
       foot={
         <>
           {missing !== null && <p className="text-second text-ink2">{missing}</p>}

@@ -54,7 +54,7 @@ export function ProofScreen({ jobId }: { jobId: Id }) {
 type CountingProps = { jobId: Id; found: JobCase; onSaved: (entryId: Id) => void }
 
 function Counting({ jobId, found, onSaved }: CountingProps) {
-  const { value: draft, set, ready } = useProofDraft(jobId)
+  const { value: draft, set, ready, kept } = useProofDraft(jobId)
   const ranMs = useRanMs(draft)
   const stamp = useStamp()
   const { save, saving, problem } = useSave()
@@ -77,6 +77,7 @@ function Counting({ jobId, found, onSaved }: CountingProps) {
     <Screen
       title="Proof run"
       second="Restart it the way it failed before. Count every start."
+      kept={kept}
       foot={
         <Key kind="main" disabled={!ready || saving || missing !== null} onClick={keep}>
           Save the proof run

@@ -97,7 +97,7 @@ type DecidingProps = {
 }
 
 function Deciding({ jobId, found, onSaved, children }: DecidingProps) {
-  const { value: draft, set } = useDraft<WayOutDraft>(wayOutDraftKey(jobId), FRESH_WAY_OUT)
+  const { value: draft, set, kept } = useDraft<WayOutDraft>(wayOutDraftKey(jobId), FRESH_WAY_OUT)
   const { index } = useBook()
   const { answer } = useBelief(jobId)
   const facts: WayOutFacts = {
@@ -112,7 +112,12 @@ function Deciding({ jobId, found, onSaved, children }: DecidingProps) {
   const way = draft.way === 'limpOut' && refused.length > 0 ? null : draft.way
   const form = useWayOutForm({ jobId, found, way, draft, set, onSaved })
   return (
-    <Screen title="Way out" second="You decide. The reasons go into the log." foot={form.foot}>
+    <Screen
+      title="Way out"
+      second="You decide. The reasons go into the log."
+      kept={kept}
+      foot={form.foot}
+    >
       {children}
       <ChoiceMany
         legend="Is any of these so?"

@@ -85,7 +85,7 @@ type AskProps = {
 
 function Ask({ jobId, part, name, fault, sheet, shop }: AskProps) {
   const key = `ask:${jobId}:${part}`
-  const { value: draft, set } = useDraft<AskDraft>(key, FIRST)
+  const { value: draft, set, kept } = useDraft<AskDraft>(key, FIRST)
   const advised = adviceFor(sheet, shop?.recoveryMinor ?? null)
   const choice = draft.choice ?? firstChoice(sheet, advised)
   const condemned = useCondemned(jobId, fault)
@@ -93,6 +93,7 @@ function Ask({ jobId, part, name, fault, sheet, shop }: AskProps) {
   return (
     <Screen
       title={`Ask for: ${name}`}
+      kept={kept}
       foot={
         <Key
           kind="main"

@@ -1,10 +1,14 @@
 import type { ReactNode } from 'react'
+import type { DraftKept } from '@/lib/sync/client/drafts'
 import { classes } from './class-names'
+import { DraftSign } from './draft-sign'
 
 type Props = {
   title: ReactNode
   /** One sentence under the title. */
   second?: ReactNode
+  /** Whether what is half written here is kept. */
+  kept?: DraftKept
   children: ReactNode
   /** The keys of the screen: they stay at the thumb, above the tabs. */
   foot?: ReactNode
@@ -13,7 +17,7 @@ type Props = {
 }
 
 /** One field screen: title, content, and its keys at the bottom. The title takes the focus when it opens. */
-export function Screen({ title, second, children, foot, titleHidden = false }: Props) {
+export function Screen({ title, second, kept, children, foot, titleHidden = false }: Props) {
   return (
     <div className="flex flex-1 flex-col">
       <div className="safe-sides grid flex-1 grid-cols-[minmax(0,1fr)] content-start gap-5 pt-1 pb-6">
@@ -22,6 +26,7 @@ export function Screen({ title, second, children, foot, titleHidden = false }: P
             {title}
           </h1>
           {second ? <p className="mt-1 text-second text-ink2">{second}</p> : null}
+          {kept === undefined ? null : <DraftSign kept={kept} />}
         </div>
         {children}
       </div>

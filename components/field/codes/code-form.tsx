@@ -6,6 +6,7 @@ import { useRecord } from '@/components/store/use-record'
 import { useStamp } from '@/components/store/use-stamp'
 import { announce } from '@/components/ui/announce'
 import { Choice } from '@/components/ui/choice'
+import { DraftSign } from '@/components/ui/draft-sign'
 import { Field } from '@/components/ui/field'
 import { Key } from '@/components/ui/key'
 import { useFocusInvalid } from '@/components/ui/use-focus-invalid'
@@ -37,7 +38,7 @@ type Props = { jobId: string; order: number; onSaved: (entryId: string) => void 
 /** Takes one code down as the dash shows it. */
 export function CodeForm({ jobId, order, onSaved }: Props) {
   const key = codeKey(jobId)
-  const { value: draft, set } = useDraft<CodeDraft>(key, EMPTY_CODE)
+  const { value: draft, set, kept } = useDraft<CodeDraft>(key, EMPTY_CODE)
   const [problem, setProblem] = useState<CodeProblem | null>(null)
   useFocusInvalid(problem)
   const record = useRecord()
@@ -105,6 +106,7 @@ export function CodeForm({ jobId, order, onSaved }: Props) {
         </>
       )}
       <DashPhoto jobId={jobId} hash={draft.photo} onTaken={(photo) => change({ photo })} />
+      <DraftSign kept={kept} />
       <Key kind="main" type="submit">
         {draft.format === 'unreadable' ? 'Record: cannot be read' : 'Take it down'}
       </Key>

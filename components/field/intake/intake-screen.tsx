@@ -36,7 +36,7 @@ const TITLES: Record<IntakeStep, string> = {
 
 /** A new job in four steps, kept to the keystroke. */
 export function IntakeScreen() {
-  const { value: draft, set, clear, ready } = useDraft<IntakeDraft>(INTAKE_KEY, EMPTY_INTAKE)
+  const { value: draft, set, clear, ready, kept } = useDraft<IntakeDraft>(INTAKE_KEY, EMPTY_INTAKE)
   const { go, here } = useRoute()
   const save = useOpenJob(draft)
   const [told, setTold] = useState(false)
@@ -72,7 +72,8 @@ export function IntakeScreen() {
   return (
     <Screen
       title={TITLES[draft.step]}
-      second={`New job, step ${at + 1} of ${STEPS.length}. Saved on this phone as you type.`}
+      second={`New job, step ${at + 1} of ${STEPS.length}.`}
+      kept={kept}
       foot={
         <>
           <p role="status" className="font-bold text-nogo empty:hidden">

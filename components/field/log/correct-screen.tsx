@@ -18,7 +18,7 @@ import { useRoute } from '../router'
 /** A correction: the earlier entry stays, struck through, and counts no more. */
 export function CorrectScreen({ jobId, entryId }: { jobId: string; entryId: string }) {
   const key = `job.${jobId}.correct.${entryId}`
-  const { value: reason, set, ready } = useDraft<string>(key, '')
+  const { value: reason, set, ready, kept } = useDraft<string>(key, '')
   const [problem, setProblem] = useState<string | null>(null)
   const log = useLog(jobId)
   const { index } = useBook()
@@ -47,6 +47,7 @@ export function CorrectScreen({ jobId, entryId }: { jobId: string; entryId: stri
     <Screen
       title="Correct an entry"
       second="The entry stays in the log, struck through. It no longer counts as evidence."
+      kept={kept}
       foot={
         <Key kind="main" disabled={!ready || entry === undefined} onClick={save}>
           Save correction

@@ -25,7 +25,7 @@ export function NoteScreen({ jobId }: { jobId: string }) {
 
 function Note({ jobId, zone }: { jobId: string; zone: string }) {
   const key = `job.${jobId}.note`
-  const { value: draft, set, ready } = useDraft<NoteDraft>(key, EMPTY)
+  const { value: draft, set, ready, kept } = useDraft<NoteDraft>(key, EMPTY)
   const [problem, setProblem] = useState<{ field: keyof NoteDraft; words: string } | null>(null)
   useFocusInvalid(problem)
   const record = useRecord()
@@ -62,7 +62,7 @@ function Note({ jobId, zone }: { jobId: string; zone: string }) {
   return (
     <Screen
       title="Note"
-      second="Saved on this phone as you type."
+      kept={kept}
       foot={
         <Key kind="main" disabled={!ready} onClick={save}>
           Save note

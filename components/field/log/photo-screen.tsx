@@ -6,6 +6,7 @@ import { useDraft } from '@/components/store/use-draft'
 import { useRecord } from '@/components/store/use-record'
 import { useStamp } from '@/components/store/use-stamp'
 import { announce } from '@/components/ui/announce'
+import { DraftSign } from '@/components/ui/draft-sign'
 import { Field } from '@/components/ui/field'
 import { Key } from '@/components/ui/key'
 import { Photo } from '@/components/ui/photo'
@@ -26,7 +27,7 @@ export function PhotoScreen({ jobId }: { jobId: string }) {
 
 function TakePhoto({ jobId }: { jobId: string }) {
   const key = `job.${jobId}.photo`
-  const { value: caption, set } = useDraft<string>(key, '')
+  const { value: caption, set, kept } = useDraft<string>(key, '')
   const { shown, busy, problem, take } = useTakenPhoto()
   const [failed, setFailed] = useState<string | null>(null)
   const record = useRecord()
@@ -80,6 +81,7 @@ function TakePhoto({ jobId }: { jobId: string }) {
         maxLength={300}
         autoCapitalize="sentences"
       />
+      <DraftSign kept={kept} />
     </Screen>
   )
 }

@@ -2,8 +2,14 @@ import type { Core } from './core'
 import { openJson, sealJson } from './seal'
 import { Cell, type Watch } from './watch'
 
+/**
+ * Whether what stands on the screen stands in the store: `writing` until the store has said so, `lost`
+ * when it could not take it (no room), `nothing` when nothing is half written.
+ */
+export type DraftKept = 'nothing' | 'writing' | 'kept' | 'lost'
+
 /** What is half written under a key; `value` undefined: nothing. `ready` once the store was looked at. */
-export type DraftView = { ready: boolean; value: unknown }
+export type DraftView = { ready: boolean; value: unknown; kept: DraftKept }
 
 type Home = Pick<Core, 'db' | 'keys' | 'step'> & {
   now(): number
@@ -19,7 +25,7 @@ const draftPlace = (key: string) => `draft/${key}`
  * is typed while one runs is written next, and only the last of it.
  */
 export class Draft {
-  readonly #cell = new Cell<DraftView>({ ready: false, value: undefined })
+  readonly #cell = new Cell<DraftView>({ ready: false, value: undefined, kept: 'nothing' })
   readonly #home: Home
   readonly #key: string
   #tail: Promise<void> = Promise.resolve()
@@ -40,14 +46,14 @@ export class Draft {
   /** Shows the value at once and writes it. */
   set(value: unknown): void {
     this.#touched = true
-    this.#cell.set({ ready: true, value })
+    this.#cell.set({ ready: true, value, kept: 'writing' })
     if (this.#slot !== null) {
       this.#slot.value = value
       return
     }
     const slot = { value, off: false }
     this.#slot = slot
-    this.#queue(() => this.#write(slot)).catch(() => undefined)
+    this.#queue(() => this.#write(slot), slot).catch(() => undefined)
   }
 
   /** Forgets it, also what was still to be written. */
@@ -55,7 +61,7 @@ export class Draft {
     this.#touched = true
     if (this.#slot !== null) this.#slot.off = true
     this.#slot = null
-    this.#cell.set({ ready: true, value: undefined })
+    this.#cell.set({ ready: true, value: undefined, kept: 'nothing' })
     return this.#queue(() => this.#home.db.draft.delete(this.#key))
   }
 
@@ -64,10 +70,20 @@ export class Draft {
     return this.#tail
   }
 
-  #queue(work: () => Promise<void>): Promise<void> {
+  #queue(
+    work: () => Promise<void>,
+    slot: { value: unknown; off: boolean } | null = null,
+  ): Promise<void> {
+    const told = (isKept: boolean) => {
+      this.#home.kept(isKept)
+      const now = this.#cell.get()
+      // What was typed meanwhile is not written yet, and speaks for itself when it is.
+      if (slot !== null && !slot.off && now.kept === 'writing' && Object.is(now.value, slot.value))
+        this.#cell.set({ ...now, kept: isKept ? 'kept' : 'lost' })
+    }
     this.#tail = this.#tail.then(work).then(
-      () => this.#home.kept(true),
-      () => this.#home.kept(false),
+      () => told(true),
+      () => told(false),
     )
     return this.#tail
   }
@@ -82,7 +98,8 @@ export class Draft {
       // One that does not open is shown as nothing; it is not deleted until something new is written.
       value = undefined
     }
-    if (!this.#touched) this.#cell.set({ ready: true, value })
+    const kept = value === undefined ? 'nothing' : 'kept'
+    if (!this.#touched) this.#cell.set({ ready: true, value, kept })
   }
 
   async #write(slot: { value: unknown; off: boolean }): Promise<void> {

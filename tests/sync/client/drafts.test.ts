@@ -21,7 +21,7 @@ describe('[R8] drafts', () => {
     const again = await createPhone({ fetch: noLine, ports: { indexed } })
     const held = again.phone.drafts.of('note')
     await held.written()
-    expect(held.watch.get()).toEqual({ ready: true, value: text })
+    expect(held.watch.get()).toEqual({ ready: true, value: text, kept: 'kept' })
   })
 
   test('every key pressed while a write runs is in the next write', async () => {
@@ -38,6 +38,50 @@ describe('[R8] drafts', () => {
     expect(draft.watch.get().value).toBe('x'.repeat(50))
     await draft.written()
     expect(writes).toHaveLength(1)
+  })
+
+  test('says kept only when the store holds what stands there', async () => {
+    const phone = await createPhone({ fetch: noLine, ports: { indexed: newIndexed() } })
+    const { drafts, core } = phone.phone
+    const draft = drafts.of('note')
+    const held = async () => (await core.db.draft.toCollection().primaryKeys()).length
+    const seen: Promise<number>[] = []
+    await draft.written()
+    expect(draft.watch.get().kept).toBe('nothing')
+    draft.watch.subscribe(() => {
+      if (draft.watch.get().kept === 'kept') seen.push(held())
+    })
+    draft.set('W')
+    expect(draft.watch.get().kept).toBe('writing')
+    const first = draft.written()
+    await Promise.resolve()
+    await Promise.resolve()
+    draft.set('Wa')
+    await first
+    // The store now holds 'W' and the screen shows 'Wa': that is not kept yet.
+    expect(draft.watch.get()).toEqual({ ready: true, value: 'Wa', kept: 'writing' })
+    await draft.written()
+    expect(draft.watch.get().kept).toBe('kept')
+    expect(await Promise.all(seen)).toEqual([1])
+    await draft.clear()
+    expect(draft.watch.get().kept).toBe('nothing')
+  })
+
+  test('says lost when the phone has no room, and kept again when it has', async () => {
+    const phone = await createPhone({ fetch: noLine, ports: { indexed: newIndexed() } })
+    const { drafts, core } = phone.phone
+    const put = core.db.draft.put.bind(core.db.draft)
+    core.db.draft.put = () => Promise.reject(new Error('QuotaExceededError')) as never
+    const draft = drafts.of('note')
+    draft.set('Coil')
+    await draft.written()
+    expect(draft.watch.get()).toEqual({ ready: true, value: 'Coil', kept: 'lost' })
+    expect((await phone.see(phone.phone.unsent)).draftsKept).toBe(false)
+    core.db.draft.put = put
+    draft.set('Coil w')
+    await draft.written()
+    expect(draft.watch.get().kept).toBe('kept')
+    expect((await phone.see(phone.phone.unsent)).draftsKept).toBe(true)
   })
 
   test('what is typed before the store was read is not overwritten by it', async () => {
@@ -82,7 +126,7 @@ describe('[R8] drafts', () => {
     await phone.record([machine, job, note(phone, job.fields.id, 'Coil was wet')], {
       clearDrafts: ['note'],
     })
-    expect(draft.watch.get()).toEqual({ ready: true, value: undefined })
+    expect(draft.watch.get()).toEqual({ ready: true, value: undefined, kept: 'nothing' })
     expect(await phone.phone.core.db.draft.count()).toBe(0)
   })
 })
