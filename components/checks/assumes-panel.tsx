@@ -1,5 +1,6 @@
 'use client'
 import { useState } from 'react'
+import { LEAVE_BY_MARGIN_MINUTES } from '@/lib/diag/daylight'
 import type { Id } from '@/lib/model/id'
 import type { Shop } from '@/lib/model/shop'
 import type { MeansView } from '../engine/use-means'
@@ -92,7 +93,8 @@ function LeaveBy({ jobId, view }: { jobId: Id; view: MeansView }) {
   const [reason, setReason] = useState('')
   const { save, problem } = useSave()
   const stamp = useStamp()
-  const bySun = duskMs === null ? null : clockTime(isoOf(duskMs - 30 * 60_000), zone)
+  const bySun =
+    duskMs === null ? null : clockTime(isoOf(duskMs - LEAVE_BY_MARGIN_MINUTES * 60_000), zone)
   const keep = async (leaveBy: string | null) => {
     const why = reason.trim() === '' ? '' : ` ${reason.trim()}`
     const words = leaveBy === null ? `No time to leave by.${why}` : `Leave by ${leaveBy}.${why}`
@@ -114,8 +116,8 @@ function LeaveBy({ jobId, view }: { jobId: Id; view: MeansView }) {
       </p>
       {duskMs !== null && bySun !== null && (
         <p className="text-second text-ink2">
-          Civil dusk here is {clockTime(isoOf(duskMs), zone)}; 30 minutes before is {bySun} (common
-          practice). Take the ride out off as well.
+          Civil dusk here is {clockTime(isoOf(duskMs), zone)}; {LEAVE_BY_MARGIN_MINUTES} minutes
+          before is {bySun} (common practice). Take the ride out off as well.
         </p>
       )}
       <Field label="Leave by" type="time" figures value={time} onChange={setTime} />

@@ -1,6 +1,7 @@
+import type { Judged } from '@/lib/diag/spec-of'
 import type { CheckItem } from '@/lib/model/code-book'
 import { RuleEdge } from '../ui/rule-edge'
-import { type Judged, provenanceOf } from './spec-of'
+import { provenanceOf } from './spec-words'
 import { onScreen } from './words'
 
 /** What to expect, each with where it comes from, and what a pass leaves open. */

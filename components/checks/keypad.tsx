@@ -1,10 +1,11 @@
 'use client'
 import { Delete } from 'lucide-react'
 import { useEffect } from 'react'
+import { neverNegative, type TypedUnit, unitsOf } from '@/lib/diag/typed-units'
 import type { Quantity } from '@/lib/model/meter-profile'
 import { Key } from '../ui/key'
 import { type PadKey, pressed } from './keypad-text'
-import { neverNegative, type TypedUnit, unitsOf } from './units'
+import { unitLabel } from './unit-words'
 
 const DIGITS = ['1', '2', '3', '4', '5', '6', '7', '8', '9', '.', '0'] as const
 const PAD = 'min-h-[68px] px-1 [@media(max-height:37.5rem)]:min-h-target'
@@ -67,7 +68,7 @@ function UnitKey(props: { quantity: Quantity; unit: TypedUnit; onPick: (id: stri
   return (
     <span className={`key ${PAD} relative`}>
       <span aria-hidden="true" className="font-text text-section font-bold normal-case">
-        {props.unit.label} ▾
+        {unitLabel(props.quantity, props.unit.id)} ▾
       </span>
       <select
         aria-label="Unit"
@@ -77,7 +78,7 @@ function UnitKey(props: { quantity: Quantity; unit: TypedUnit; onPick: (id: stri
       >
         {unitsOf(props.quantity).map((one) => (
           <option key={one.id} value={one.id}>
-            {one.label}
+            {unitLabel(props.quantity, one.id)}
           </option>
         ))}
       </select>

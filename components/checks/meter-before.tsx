@@ -1,14 +1,15 @@
 'use client'
 import { useState } from 'react'
 import type { BookIndex } from '@/lib/diag/book-index'
+import { meterInput } from '@/lib/diag/meter'
+import type { Judged } from '@/lib/diag/spec-of'
 import type { CheckItem } from '@/lib/model/code-book'
 import type { Id } from '@/lib/model/id'
 import type { JobCase } from '../engine/use-case'
 import { Key } from '../ui/key'
 import { MeterFitnessView } from './meter-fitness'
-import { meterInput, setupWords, useMeterSetup } from './meter-setup'
+import { setupWords, useMeterSetup } from './meter-setup'
 import { MeterSetupForm } from './meter-setup-form'
-import type { Judged } from './spec-of'
 
 type Props = { jobId: Id; check: CheckItem; index: BookIndex; found: JobCase; judged: Judged }
 
@@ -18,7 +19,7 @@ export function MeterBefore({ jobId, check, index, found, judged }: Props) {
   const [open, setOpen] = useState(false)
   const quantity = check.reading?.quantity
   if (quantity === undefined) return null
-  const input = meterInput(view.meter, view.setup, { quantity, judged })
+  const input = meterInput(view.meter, view.setup, { quantity, spec: judged.value })
   return (
     <div className="grid gap-3">
       {input === null ? (

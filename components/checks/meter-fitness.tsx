@@ -1,11 +1,11 @@
 'use client'
-import type { BookIndex } from '@/lib/diag/book-index'
+import { type BookIndex, swapsFor } from '@/lib/diag/book-index'
+import type { MeterInput } from '@/lib/diag/meter'
 import { canDecide, type MeterFitness } from '@/lib/diag/reading'
 import type { CheckItem } from '@/lib/model/code-book'
 import type { Id } from '@/lib/model/id'
 import { JawGlyph } from '../reading-strip/jaw-glyph'
 import { RuleEdge } from '../ui/rule-edge'
-import type { MeterInput } from './meter-setup'
 import { onScreen } from './words'
 
 type Props = { jobId: Id; check: CheckItem; index: BookIndex; input: MeterInput }
@@ -44,7 +44,7 @@ type WaysProps = {
 /** What would make it tell: what reaches 95 of 100 first, the swap as a link. */
 export function WouldDecide({ jobId, check, index, ways }: WaysProps) {
   if (ways.length === 0) return null
-  const swaps = swapsFor(check, index)
+  const swaps = swapsFor(index, check)
   return (
     <div>
       <RuleEdge level={3}>What would decide</RuleEdge>
@@ -72,13 +72,4 @@ export function WouldDecide({ jobId, check, index, ways }: WaysProps) {
       </ul>
     </div>
   )
-}
-
-/** Swaps for the faults a check separates. */
-function swapsFor(check: CheckItem, index: BookIndex): { id: string; name: string }[] {
-  const faults = new Set([
-    ...Object.keys(check.table),
-    ...Object.keys(check.reading?.byFault ?? {}),
-  ])
-  return [...index.swaps.values()].filter((swap) => faults.has(swap.fault))
 }

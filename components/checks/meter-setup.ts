@@ -1,20 +1,14 @@
 'use client'
 import { useMemo } from 'react'
-import type { ReadingInput } from '@/lib/diag/reading'
+import { type MeterStands, meterAtHand } from '@/lib/diag/meter'
 import type { Id } from '@/lib/model/id'
-import type { MeterProfile } from '@/lib/model/meter-profile'
-import { meterAtHand } from '../engine/use-case'
+import type { MeterProfile, Quantity } from '@/lib/model/meter-profile'
+import type { DraftKept } from '@/lib/sync/client/drafts'
 import { useDraft } from '../store/use-draft'
 import { useBag, useMeters } from '../store/use-rows'
-import type { Judged } from './spec-of'
 
 /** How the meter stands for this job: kept on the phone between checks. */
-export type MeterSetup = {
-  meterId: Id | null
-  nulled: boolean
-  partTempC: number | null
-  meterTempC: number | null
-}
+export type MeterSetup = MeterStands & { meterId: Id | null }
 const FIRST: MeterSetup = { meterId: null, nulled: false, partTempC: null, meterTempC: null }
 
 export type MeterView = {
@@ -23,13 +17,15 @@ export type MeterView = {
   meter: MeterProfile | null
   meters: readonly MeterProfile[]
   ready: boolean
+  /** Whether the phone holds the set-up as it stands here. */
+  kept: DraftKept
 }
 
 /** The meter in hand and how it is set up for this job; the one in the bag until another is picked. */
 export function useMeterSetup(jobId: Id): MeterView {
   const meters = useMeters()
   const bag = useBag()
-  const { value: setup, set, ready } = useDraft<MeterSetup>(`meter:${jobId}`, FIRST)
+  const { value: setup, set, ready, kept } = useDraft<MeterSetup>(`meter:${jobId}`, FIRST)
   return useMemo(() => {
     const all = meters ?? []
     const picked = all.find((one) => one.id === setup.meterId) ?? meterAtHand(all, bag)
@@ -39,37 +35,13 @@ export function useMeterSetup(jobId: Id): MeterView {
       meter: picked,
       meters: all,
       ready: ready && meters !== undefined && bag !== undefined,
+      kept,
     }
-  }, [meters, bag, setup, set, ready])
-}
-
-export type MeterInput = Omit<ReadingInput, 'value' | 'overRange'>
-
-/** The engine's input of a reading before there is a value; null when this meter cannot read the quantity. */
-export function meterInput(
-  meter: MeterProfile | null,
-  setup: MeterSetup,
-  of: { quantity: ReadingInput['quantity']; judged: Judged },
-): MeterInput | null {
-  const meterFunction = meter?.functions[of.quantity]
-  if (meter === null || meterFunction === undefined) return null
-  return {
-    quantity: of.quantity,
-    meterFunction,
-    leadsOhm: meter.leadsOhm,
-    nulled: setup.nulled,
-    partTempC: setup.partTempC,
-    meterTempC: setup.meterTempC,
-    perKelvin: meter.perKelvin,
-    spec: of.judged.value,
-  }
+  }, [meters, bag, setup, set, ready, kept])
 }
 
 /** `Leads not nulled, part 20 °C, meter 20 °C`. */
-export function setupWords(
-  { meter, setup }: MeterView,
-  quantity: ReadingInput['quantity'],
-): string {
+export function setupWords({ meter, setup }: MeterView, quantity: Quantity): string {
   if (meter === null) return 'No meter picked'
   const leads =
     quantity === 'resistance' ? [setup.nulled ? 'leads nulled' : 'leads not nulled'] : []
@@ -78,10 +50,7 @@ export function setupWords(
 }
 
 /** The same in the fewest words, for a key: `Not nulled, 20 °C`. */
-export function setupShort(
-  { meter, setup }: MeterView,
-  quantity: ReadingInput['quantity'],
-): string {
+export function setupShort({ meter, setup }: MeterView, quantity: Quantity): string {
   if (meter === null) return 'Pick a meter'
   const leads = quantity !== 'resistance' ? [] : [setup.nulled ? 'nulled' : 'not nulled']
   const { partTempC, meterTempC } = setup

@@ -1,15 +1,17 @@
 'use client'
 import { useMemo } from 'react'
+import { meterInput } from '@/lib/diag/meter'
 import { judge, type ReadingInput, type ReadingResult } from '@/lib/diag/reading'
+import type { Judged } from '@/lib/diag/spec-of'
+import { inKeptUnit, type TypedUnit, unitOf } from '@/lib/diag/typed-units'
 import type { Id } from '@/lib/model/id'
 import type { ReadingBody } from '@/lib/model/log-entry'
 import type { Quantity } from '@/lib/model/meter-profile'
 import type { StripReading } from '../reading-strip/verdict'
 import { useDraft } from '../store/use-draft'
 import { figureOf } from './keypad-text'
-import { type MeterView, meterInput } from './meter-setup'
-import type { Judged } from './spec-of'
-import { inKeptUnit, type TypedUnit, unitOf } from './units'
+import type { MeterView } from './meter-setup'
+import { unitLabel } from './unit-words'
 
 /** A reading half typed, kept to the keystroke (rule R8). */
 export type ReadingDraft = {
@@ -27,6 +29,8 @@ export const useReadingDraft = (jobId: Id, checkId: string) =>
 
 export type Live = {
   unit: TypedUnit
+  /** The unit as it stands on the screen. */
+  label: string
   input: ReadingInput | null
   result: ReadingResult | null
   strip: StripReading | null
@@ -41,9 +45,11 @@ export function useLive(
   const { quantity, judged } = of
   return useMemo(() => {
     const unit = unitOf(quantity, draft.unit)
+    const label = unitLabel(quantity, unit.id)
     const typed = figureOf(draft.typed)
-    const base = meterInput(view.meter, view.setup, { quantity, judged })
-    if (base === null || typed === null) return { unit, input: null, result: null, strip: null }
+    const base = meterInput(view.meter, view.setup, { quantity, spec: judged.value })
+    if (base === null || typed === null)
+      return { unit, label, input: null, result: null, strip: null }
     const input: ReadingInput = {
       ...base,
       value: inKeptUnit(typed, unit),
@@ -52,7 +58,7 @@ export function useLive(
     const result = judge(input)
     const strip: StripReading = {
       shown: draft.overRange ? `> ${draft.typed}` : draft.typed,
-      unit: unit.label,
+      unit: label,
       overRange: draft.overRange,
       quantity,
       estimate: result.estimate,
@@ -61,7 +67,7 @@ export function useLive(
       verdict: result.verdict,
       resolution: input.meterFunction.resolution,
     }
-    return { unit, input, result, strip }
+    return { unit, label, input, result, strip }
   }, [draft, view.meter, view.setup, quantity, judged])
 }
 

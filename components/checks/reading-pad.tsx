@@ -1,5 +1,7 @@
 'use client'
 import { useId, useState } from 'react'
+import { type Judged, specOf } from '@/lib/diag/spec-of'
+import { neverNegative } from '@/lib/diag/typed-units'
 import type { CheckItem } from '@/lib/model/code-book'
 import type { Id } from '@/lib/model/id'
 import type { JobCase } from '../engine/use-case'
@@ -8,6 +10,7 @@ import { Rule } from '../reading-strip/reading-strip'
 import { acrossOf, distanceWords, placesOf, type StripReading } from '../reading-strip/verdict'
 import { VerdictLine } from '../reading-strip/verdict-line'
 import { useStamp } from '../store/use-stamp'
+import { DraftSign, keptWith } from '../ui/draft-sign'
 import { Key } from '../ui/key'
 import { Keypad } from './keypad'
 import { setupShort, useMeterSetup } from './meter-setup'
@@ -20,8 +23,7 @@ import {
   useLive,
   useReadingDraft,
 } from './reading-draft'
-import { type Judged, sourceOf, specOf } from './spec-of'
-import { neverNegative } from './units'
+import { sourceOf } from './spec-words'
 import { NotSaved, useSave } from './use-save'
 import { onScreen } from './words'
 
@@ -35,7 +37,7 @@ const LYING_DOWN = {
 
 /** The keypad with the figure, the verdict and the rule above it; side by side on a phone lying down. */
 export function ReadingPad({ jobId, check, found, onSaved }: Props) {
-  const { value: draft, set, ready } = useReadingDraft(jobId, check.id)
+  const { value: draft, set, ready, kept } = useReadingDraft(jobId, check.id)
   const view = useMeterSetup(jobId)
   const [open, setOpen] = useState(false)
   const summary = useId()
@@ -81,6 +83,7 @@ export function ReadingPad({ jobId, check, found, onSaved }: Props) {
           </div>
         )}
         <Shown draft={draft} live={live} judged={judged} />
+        <DraftSign kept={keptWith(kept, view.kept)} />
         <NotSaved problem={problem} />
       </div>
       <div className={`screen-foot no-print safe-sides bg-ground py-2 ${LYING_DOWN.pad}`}>
@@ -121,7 +124,7 @@ function useKeep(of: {
 
 /** The figure, +-U, verdict word with distance, the rule and where the band comes from. */
 function Shown({ draft, live, judged }: { draft: ReadingDraft; live: Live; judged: Judged }) {
-  const { strip, unit } = live
+  const { strip } = live
   return (
     <div>
       <p className="mt-1 flex items-end justify-between gap-3">
@@ -132,7 +135,7 @@ function Shown({ draft, live, judged }: { draft: ReadingDraft; live: Live; judge
           </span>
           <span className="text-section font-bold">
             {THIN}
-            {unit.label}
+            {live.label}
           </span>
         </output>
         {strip !== null && !draft.overRange && (

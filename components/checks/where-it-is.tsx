@@ -1,8 +1,8 @@
 import type { BookIndex } from '@/lib/diag/book-index'
+import type { SpecComponent } from '@/lib/diag/spec-of'
 import type { CheckItem, SpecSheet } from '@/lib/model/code-book'
 import { Figure } from '../ui/figure'
 import { RuleEdge } from '../ui/rule-edge'
-import type { SpecComponent } from './spec-of'
 import { minutesWords } from './words'
 
 type Props = { check: CheckItem; spec: SpecSheet | null; index: BookIndex }

@@ -1,12 +1,11 @@
 'use client'
 import { useMemo } from 'react'
-import type { Bag } from '@/lib/model/bag'
+import { meterAtHand } from '@/lib/diag/meter'
 import type { MachineModel, SpecSheet } from '@/lib/model/code-book'
 import type { Id } from '@/lib/model/id'
 import type { Job } from '@/lib/model/job'
 import type { LogEntry } from '@/lib/model/log-entry'
 import type { Machine } from '@/lib/model/machine'
-import type { MeterProfile } from '@/lib/model/meter-profile'
 import { useLog } from '../store/use-log'
 import { useBag, useJob, useMachines, useMeters, useModels } from '../store/use-rows'
 import { specForEngine } from './spec-kept'
@@ -44,17 +43,4 @@ export function useCase(jobId: Id): JobCase | null {
     }
     return { job, machine, model, spec: model?.specSheet ?? null, entries, input }
   }, [job, machines, models, log, meters, bag])
-}
-
-/** The first meter in the bag, else the only one the shop has. */
-export function meterAtHand(
-  meters: readonly MeterProfile[] | undefined,
-  bag: Bag | null | undefined,
-): MeterProfile | null {
-  if (meters === undefined) return null
-  const carried = bag?.meterIds.map((id) => meters.find((meter) => meter.id === id))
-  return (
-    carried?.find((meter) => meter !== undefined) ??
-    (meters.length === 1 ? (meters[0] ?? null) : null)
-  )
 }

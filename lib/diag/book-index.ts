@@ -52,6 +52,15 @@ export function failureOf(index: BookIndex, failure: string): FailureItem | null
   return null
 }
 
+/** The swaps of the faults a check tells apart, by its own table or by its reading, in the book's order. */
+export function swapsFor(index: BookIndex, check: CheckItem): SwapItem[] {
+  const faults = new Set([
+    ...Object.keys(check.table),
+    ...Object.keys(check.reading?.byFault ?? {}),
+  ])
+  return [...index.swaps.values()].filter((swap) => faults.has(swap.fault))
+}
+
 const emptyMaps = (version: number) => ({
   version,
   symptoms: new Map<string, SymptomItem>(),

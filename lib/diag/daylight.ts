@@ -35,6 +35,9 @@ export function sunTimes(lat: number, lon: number, dayMs: number): SunTimes {
 export const sunHeight = (lat: number, lon: number, atMs: number): number =>
   getPosition(new Date(atMs), lat, lon).altitude
 
+/** Kept between leaving and civil dusk when nothing else is said (rule R6; common practice, no source). */
+export const LEAVE_BY_MARGIN_MINUTES = 30
+
 /** Minutes left to work: leave-by minus now, leave-by = civil dusk - ride-out - margin (rule R6). Null without dusk. */
 export function minutesToLeaveBy(at: {
   nowMs: number
@@ -43,7 +46,7 @@ export function minutesToLeaveBy(at: {
   marginMinutes?: number
 }): number | null {
   if (at.civilDuskMs === null) return null
-  const margin = at.marginMinutes ?? 30
+  const margin = at.marginMinutes ?? LEAVE_BY_MARGIN_MINUTES
   return (at.civilDuskMs - at.nowMs) / 60_000 - at.rideOutMinutes - margin
 }
 

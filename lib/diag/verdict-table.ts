@@ -4,70 +4,37 @@
  * is that of the meter in the bag, not of meters in general.
  */
 import type { CheckItem, Piece, SpecValue } from '@/lib/model/code-book'
-import type { MeterProfile } from '@/lib/model/meter-profile'
+import type { MeterProfile, Quantity } from '@/lib/model/meter-profile'
 import type { Case } from './case'
 import { nominalOf } from './evidence-reading'
 import type { Sight } from './evidence-table'
 import { type OutcomeTable, TABLE_FLOOR } from './factor'
+import { type MeterInput, meterInput } from './meter'
 import { phi } from './normal'
 import { canDecide, type MeterFitness } from './reading'
 import { budgetOf, limitsOf, type ReadingInput, rectangles } from './reading-budget'
+import { specFor } from './spec-of'
 
 const VERDICTS = ['in', 'tooClose', 'outLow', 'outHigh'] as const
 
 /** True values looked at in each piece. */
 const SAMPLES = 24
 
-/** The spec of a check on this machine: the sheet's figure, else the book's fallback limits, else null. */
-export function specFor({ spec }: Pick<Case, 'spec'>, check: CheckItem): SpecValue | null {
-  const model = check.reading
-  if (model === null) return null
-  const component = spec?.components.find((part) => part.id === model.component)
-  const own = component?.values.find((value) => value.id === model.value)
-  if (own !== undefined) return own
-  if (model.fallback === null) return null
-  const { low, high, unit, source } = model.fallback
-  return {
-    id: model.value,
-    name: check.name,
-    quantity: model.quantity,
-    unit,
-    nominal: null,
-    tolerancePercent: null,
-    low,
-    high,
-    partTempC: null,
-    material: null,
-    conditions: null,
-    source,
-  }
-}
-
 /** The reading as it would be taken with this meter now: leads as they are, everything at its reference. */
-export function readingWith(
-  meter: MeterProfile,
-  check: CheckItem,
-  spec: SpecValue | null,
-): Omit<ReadingInput, 'value' | 'overRange'> | null {
-  const meterFunction = check.reading === null ? undefined : meter.functions[check.reading.quantity]
-  if (check.reading === null || meterFunction === undefined) return null
-  return {
-    quantity: check.reading.quantity,
-    meterFunction,
-    leadsOhm: meter.leadsOhm,
-    nulled: false,
-    partTempC: spec?.partTempC ?? null,
-    meterTempC: null,
-    perKelvin: meter.perKelvin,
-    spec,
-  }
-}
+const readingWith = (meter: MeterProfile, quantity: Quantity, spec: SpecValue): MeterInput | null =>
+  meterInput(
+    meter,
+    { nulled: false, partTempC: spec.partTempC, meterTempC: null },
+    { quantity, spec },
+  )
 
 /** Whether the meter in the bag can decide a check's figure; null without a figure, a meter or its function. */
 export function fitnessFor(c: Case, check: CheckItem): MeterFitness | null {
   const spec = specFor(c, check)
-  if (c.meter === null || spec === null || limitsOf(spec) === null) return null
-  const input = readingWith(c.meter, check, spec)
+  const quantity = check.reading?.quantity
+  if (c.meter === null || spec === null || quantity === undefined || limitsOf(spec) === null)
+    return null
+  const input = readingWith(c.meter, quantity, spec)
   return input === null ? null : canDecide(input)
 }
 
@@ -77,7 +44,7 @@ export function verdictTable({ c, place }: Sight, check: CheckItem): OutcomeTabl
   const limits = limitsOf(spec)
   const model = check.reading
   if (c.meter === null || model === null || spec === null || limits === null) return null
-  const input = readingWith(c.meter, check, spec)
+  const input = readingWith(c.meter, model.quantity, spec)
   const nominal = nominalOf(spec, model)
   if (input === null || nominal === null) return null
   const seats = VERDICTS.map((v) => check.outcomes.findIndex((o) => o.id === v))

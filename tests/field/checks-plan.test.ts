@@ -1,8 +1,7 @@
 import { describe, expect, it } from 'vitest'
-import { meterInput } from '@/components/checks/meter-setup'
 import { whyItLoses } from '@/components/checks/runner-up'
 import { meaning } from '@/components/checks/saved-reading'
-import { provenanceOf, sourceOf, specOf } from '@/components/checks/spec-of'
+import { provenanceOf, sourceOf } from '@/components/checks/spec-words'
 import { decidesWords } from '@/components/engine/decides'
 import type { Answer } from '@/components/engine/work'
 import { stripOfBody } from '@/components/reading-strip/verdict'
@@ -10,8 +9,10 @@ import { spread } from '@/components/suspects/chance-rail'
 import { BOOK_ITEMS } from '@/db/codebook/book'
 import { DEMO_MODELS } from '@/db/codebook/demo-models'
 import { indexBook } from '@/lib/diag/book-index'
+import { meterInput } from '@/lib/diag/meter'
 import type { Plan } from '@/lib/diag/plan'
 import { canDecide, judge } from '@/lib/diag/reading'
+import { specOf } from '@/lib/diag/spec-of'
 import type { ReadingBody } from '@/lib/model/log-entry'
 import { METER } from '@/scripts/demo-shop'
 
@@ -23,7 +24,7 @@ describe('the worked case of the shared facts, through the screens', () => {
   const check = index.checks.get('coilPrimaryResistance')
   if (check === undefined) throw new Error('the code book has no coilPrimaryResistance')
   const judged = specOf(check, sheet)
-  const input = meterInput(METER, setup, { quantity: 'resistance', judged })
+  const input = meterInput(METER, setup, { quantity: 'resistance', spec: judged.value })
   if (input === null) throw new Error('the demo meter reads no resistance')
 
   it('[F4] says before the check that this meter cannot decide this spec', () => {

@@ -2,7 +2,7 @@ import { describe, expect, it } from 'vitest'
 import { aboutInstant } from '@/components/checks/about-time'
 import { figureOf, pressed } from '@/components/checks/keypad-text'
 import { readDegrees } from '@/components/checks/meter-setup-form'
-import { inKeptUnit, unitOf } from '@/components/checks/units'
+import { unitLabel } from '@/components/checks/unit-words'
 import { movedBetween, whyLine } from '@/components/checks/why-words'
 import { minutesWords, moneyWords, onScreen } from '@/components/checks/words'
 import { minutesUntil } from '@/components/engine/use-means'
@@ -34,21 +34,14 @@ describe('the keypad', () => {
   })
 })
 
-describe('units as typed', () => {
-  it.each([
-    ['resistance', 'kohm', 1.2, 1200],
-    ['dcVoltage', 'mV', 450, 0.45],
-    // NIST SP 811, appendix B: 1 psi = 6.894757 kPa; 1 in = 25.4 mm exactly.
-    ['pressure', 'psi', 43.5, 299.9219422528],
-    ['length', 'in', 0.028, 0.7112],
-    ['temperature', 'degF', -40, -40],
-    ['temperature', 'degF', 212, 100],
-  ] as const)('%s in %s: %s is kept as %s', (quantity, id, value, kept) => {
-    expect(inKeptUnit(value, unitOf(quantity, id))).toBeCloseTo(kept, 6)
-  })
-
-  it('falls back to the kept unit', () => {
-    expect(unitOf('resistance', 'bananas').factor).toBe(1)
+describe('units on the keypad', () => {
+  it('[F4] tells direct and alternating volts apart, and shows degrees with their sign', () => {
+    expect(unitLabel('dcVoltage', 'mV')).toBe('mV DC')
+    expect(unitLabel('acVoltage', 'mV')).toBe('mV AC')
+    expect([unitLabel('temperature', 'degF'), unitLabel('resistance', 'kohm')]).toEqual([
+      '°F',
+      'kohm',
+    ])
   })
 })
 

@@ -1,25 +1,6 @@
 import { limitsOf } from '@/lib/diag/reading-budget'
-import { specFor } from '@/lib/diag/verdict-table'
-import type { CheckItem, SpecSheet, SpecValue } from '@/lib/model/code-book'
+import type { Judged } from '@/lib/diag/spec-of'
 import { bandWords } from '../reading-strip/verdict'
-
-export type SpecComponent = SpecSheet['components'][number]
-export type Judged = {
-  value: SpecValue | null
-  /** `sheet`: the model's own figure. `practice`: the code book's, for want of one. */
-  from: 'sheet' | 'practice' | 'none'
-  component: SpecComponent | null
-}
-
-/** Which figure judges a numeric check: the spec sheet first, else common practice, always told apart. */
-export function specOf(check: CheckItem, sheet: SpecSheet | null): Judged {
-  const { reading } = check
-  if (reading === null) return { value: null, from: 'none', component: null }
-  const component = sheet?.components.find((one) => one.id === reading.component) ?? null
-  const value = specFor({ spec: sheet }, check)
-  const own = component?.values.some((one) => one.id === reading.value) ?? false
-  return { value, from: value === null ? 'none' : own ? 'sheet' : 'practice', component }
-}
 
 /** One short line for under the rule: where the band comes from. */
 export function sourceOf({ value, from }: Judged): string {
