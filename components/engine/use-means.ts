@@ -1,6 +1,7 @@
 'use client'
 import { useEffect, useMemo, useState } from 'react'
 import { sunTimes } from '@/lib/diag/daylight'
+import { isDark } from '@/lib/diag/light'
 import type { Means } from '@/lib/diag/plan'
 import type { Id } from '@/lib/model/id'
 import type { Place } from '@/lib/model/place'
@@ -68,10 +69,8 @@ function useMinute(): number {
 
 function sunAt(place: Place | null, nowMs: number): { dark: boolean; duskMs: number | null } {
   if (place === null) return { dark: false, duskMs: null }
-  const sun = sunTimes(place.latitude, place.longitude, nowMs)
-  if (sun.civilDusk === null || sun.civilDawn === null)
-    return { dark: sun.never === 'rises', duskMs: null }
-  return { dark: nowMs > sun.civilDusk || nowMs < sun.civilDawn, duskMs: sun.civilDusk }
+  const { civilDusk } = sunTimes(place.latitude, place.longitude, nowMs)
+  return { dark: isDark(place, nowMs), duskMs: civilDusk }
 }
 
 /** Whole minutes from now until a `HH:MM` of today in a zone; negative once it is past. */

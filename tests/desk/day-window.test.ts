@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest'
-import { dayWindow, isDark, lightAt } from '@/components/desk/daylight/day-window'
+import { dayWindow } from '@/components/desk/daylight/day-window'
 
 /**
  * Gate 4 of the acceptance world: 47.10000 N 93.20000 W, 24 November 2026, UTC-6: sunset 16:29, civil
@@ -10,37 +10,7 @@ const MINUTE = 60_000
 const at = (hour: number, minute = 0, day = 24) => Date.UTC(2026, 10, day, hour + 6, minute)
 const near = (ms: number, wanted: number) => expect(Math.abs(ms - wanted)).toBeLessThan(2 * MINUTE)
 
-describe('daylight at the job', () => {
-  it('[R6] counts to civil dusk by day and names the sunset before it', () => {
-    const light = lightAt(GATE, at(12))
-    if (light.kind !== 'light') throw new Error(light.kind)
-    near(light.dusk, at(17, 3))
-    near(light.sunset ?? 0, at(16, 29))
-    near(at(12) + light.untilMs, at(17, 3))
-    expect(isDark(GATE, at(12))).toBe(false)
-  })
-
-  it('[R6] is light in the twilight after sunset, dark after civil dusk until civil dawn', () => {
-    expect(lightAt(GATE, at(16, 45)).kind).toBe('light')
-    for (const time of [at(17, 30), at(23, 59), at(3, 0, 25)]) {
-      const light = lightAt(GATE, time)
-      if (light.kind !== 'dark') throw new Error(light.kind)
-      expect(light.dawn).toBeGreaterThan(time)
-      expect(light.dawn - time).toBeLessThan(15 * 60 * MINUTE)
-      expect(isDark(GATE, time)).toBe(true)
-    }
-  })
-
-  it('[R6] says so where the sun does not rise, does not set, or it never gets dark', () => {
-    const high = { latitude: 78.2, longitude: 15.6 }
-    const middle = { latitude: 62.2, longitude: 25.7 }
-    expect(lightAt(high, Date.UTC(2026, 11, 21, 11))).toEqual({ kind: 'never', which: 'rises' })
-    expect(isDark(high, Date.UTC(2026, 11, 21, 11))).toBe(true)
-    expect(lightAt(high, Date.UTC(2026, 5, 21, 11))).toEqual({ kind: 'never', which: 'sets' })
-    expect(lightAt(middle, Date.UTC(2026, 5, 21, 11))).toEqual({ kind: 'never', which: 'darkens' })
-    expect(isDark(middle, Date.UTC(2026, 5, 21, 11))).toBe(false)
-  })
-
+describe('the rule of daylight at the job', () => {
   it('[R6] draws from two hours back past the next dusk, with the sun crossing the horizon at sunset', () => {
     const day = dayWindow(GATE, at(12))
     expect(day.from).toBe(at(10))

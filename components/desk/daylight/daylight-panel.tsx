@@ -1,11 +1,12 @@
 'use client'
 
+import { type Light, lightAt } from '@/lib/diag/light'
 import type { Place } from '@/lib/model/place'
 import { clockTime } from '../../field/times'
 import { useDesk } from '../desk-context'
 import { hoursAndMinutes } from '../desk-time'
 import { useNow } from '../use-now'
-import { dayWindow, type Light, lightAt } from './day-window'
+import { dayWindow } from './day-window'
 import { DaylightRule } from './daylight-rule'
 
 const NEVER_WORDS = {

@@ -2,9 +2,10 @@
 
 import { useId } from 'react'
 import { useWidth } from '@/components/reading-strip/use-width'
+import type { Light, Span } from '@/lib/diag/light'
 import { clockTime } from '../../field/times'
 import { useDesk } from '../desk-context'
-import type { DayWindow, Light, Span } from './day-window'
+import type { DayWindow } from './day-window'
 
 const SKY = 128
 const HEIGHT = SKY + 42
