@@ -1,5 +1,5 @@
 import type { MachineModel } from '@/lib/model/code-book'
-import type { BEFORE, JobMachineState, JobState, PeopleState, WayOut } from '@/lib/model/job'
+import type { BEFORE, Job, JobMachineState, JobState, PeopleState, WayOut } from '@/lib/model/job'
 import type { Machine } from '@/lib/model/machine'
 
 /** Words of the field's screens, one table per fixed choice. */
@@ -45,6 +45,13 @@ export const BEFORE_WORDS: Record<(typeof BEFORE)[number], string> = {
   longStorage: 'Stood for long',
   recentWork: 'Recent work',
   nothing: 'Nothing known',
+}
+
+/** "Engine lamp on. Just before: water, refuelled." */
+export function askedWords({ complaint, before }: Pick<Job, 'complaint' | 'before'>): string {
+  const lamp = complaint.lampOn === null ? 'not seen' : complaint.lampOn ? 'on' : 'off'
+  const what = before.map((one) => BEFORE_WORDS[one].toLowerCase()).join(', ')
+  return `Engine lamp ${lamp}. Just before: ${what === '' ? 'not asked' : what}.`
 }
 
 /** Maker and model as typed, with the unit number of the fleet first: "Unit 14, Tarnholt Moor 450". */

@@ -4,13 +4,7 @@ import type { ReactNode } from 'react'
 import type { DeskJob } from '@/lib/model/desk'
 import type { Job } from '@/lib/model/job'
 import type { Place } from '@/lib/model/place'
-import {
-  BEFORE_WORDS,
-  counted,
-  MACHINE_WORDS,
-  PEOPLE_WORDS,
-  WAY_OUT_WORDS,
-} from '../../field/words'
+import { askedWords, counted, MACHINE_WORDS, PEOPLE_WORDS, WAY_OUT_WORDS } from '../../field/words'
 import { useDesk } from '../desk-context'
 import { whenWords } from '../desk-time'
 import { useNow } from '../use-now'
@@ -113,14 +107,7 @@ function Position({ place }: { place: Place | null }) {
 
 /** What happened before, weather and air temperature in one sentence each, as far as taken down. */
 function conditions(job: Job): string {
-  const before = job.before.map((word) => BEFORE_WORDS[word].toLowerCase()).join(', ')
   const air = job.airTempC === null ? '' : `${String(job.airTempC).replace('-', '−')} °C`
   const weather = [job.weather, air].filter(Boolean).join(', ')
-  return [
-    before && `Before it: ${before}.`,
-    job.complaint.lampOn === null ? '' : `Engine lamp ${job.complaint.lampOn ? 'on' : 'off'}.`,
-    weather && `Weather: ${weather}.`,
-  ]
-    .filter(Boolean)
-    .join(' ')
+  return `${askedWords(job)}${weather && ` Weather: ${weather}.`}`
 }

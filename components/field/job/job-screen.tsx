@@ -16,7 +16,7 @@ import { OfJob } from '../of-job'
 import { jobHref } from '../route'
 import { clockTime, dayOf } from '../times'
 import type { JobFacts } from '../use-job-facts'
-import { BEFORE_WORDS, counted } from '../words'
+import { askedWords, counted } from '../words'
 import { DaylightLine } from './daylight-line'
 import { NextRows } from './next-rows'
 import { StatesPart } from './states-part'
@@ -98,15 +98,11 @@ function Complaint({ job }: { job: Job }) {
     job.complaint.symptom === null
       ? null
       : (index?.symptoms.get(job.complaint.symptom)?.name ?? null)
-  const lamp = { true: 'on', false: 'off', null: 'not seen' }[String(job.complaint.lampOn)]
-  const before = job.before.map((b) => BEFORE_WORDS[b].toLowerCase()).join(', ')
   return (
     <section className="grid gap-1">
       <p className="text-row font-bold">“{job.complaint.words}”</p>
       {symptom !== null && symptom !== job.complaint.words ? <p>{symptom}.</p> : null}
-      <p className="text-second text-ink2">
-        Engine lamp {lamp}. Just before: {before === '' ? 'not asked' : before}.
-      </p>
+      <p className="text-second text-ink2">{askedWords(job)}</p>
     </section>
   )
 }
