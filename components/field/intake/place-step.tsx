@@ -6,16 +6,14 @@ import { useJobs } from '@/components/store/use-rows'
 import { useStamp } from '@/components/store/use-stamp'
 import { Caution } from '@/components/ui/caution'
 import { Field } from '@/components/ui/field'
-import { Figure } from '@/components/ui/figure'
 import { Key } from '@/components/ui/key'
 import { RuleEdge } from '@/components/ui/rule-edge'
 import type { Point } from '@/lib/diag/distance'
 import { doubtsOf, type PlaceDoubt } from '@/lib/diag/place-doubt'
-import { type PlaceProblem, parsePlace, printDegrees, printMinutes } from '@/lib/diag/place-text'
+import { type PlaceProblem, parsePlace, printDegrees } from '@/lib/diag/place-text'
 import type { Place } from '@/lib/model/place'
 import type { PositionProblem } from '@/lib/ports/position'
-import { span } from '../times'
-import { useNow } from '../use-now'
+import { PlaceShown } from '../place-shown'
 import type { StepProps } from './intake-draft'
 
 const FIX_WORDS: Record<PositionProblem['kind'], string> = {
@@ -193,28 +191,6 @@ function DoubtShown({ doubt, onTake }: { doubt: PlaceDoubt; onTake: (point: Poin
           Take {printDegrees(meant)}
         </Key>
       )}
-    </div>
-  )
-}
-
-/** A position in the two ways people read it out, with how good and how old it is. */
-export function PlaceShown({ place }: { place: Place }) {
-  const now = useNow()
-  return (
-    <div className="grid gap-1">
-      <p className="figures text-row">{printDegrees(place)}</p>
-      <p className="figures text-second text-ink2">{printMinutes(place)}</p>
-      <p className="text-second text-ink2">
-        {place.source === 'fix' ? (
-          <>
-            Position fix, good to{' '}
-            <Figure value={Math.round(place.accuracyMetres ?? 0)} unit="m" size="body" />,{' '}
-            {span(now - Date.parse(place.at))} old.
-          </>
-        ) : (
-          `Typed as ${place.asTyped ?? 'given'}, ${span(now - Date.parse(place.at))} ago.`
-        )}
-      </p>
     </div>
   )
 }
