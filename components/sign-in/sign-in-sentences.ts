@@ -2,7 +2,7 @@ import type { SignInProblem } from '@/lib/ports/shop-line'
 
 const SENTENCES: Record<SignInProblem['kind'], string> = {
   wrong: 'E-mail or password is not right. Check both and try again.',
-  locked: 'Too many wrong tries for this e-mail. Wait 15 minutes, then try again.',
+  locked: 'Too many wrong tries. Wait 15 minutes, then try again.',
   noConnection:
     'No connection to the shop. Signing in needs it. A phone that was signed in before opens the field without.',
   serverTrouble: 'The shop’s server did not answer as it should. Try again in a moment.',

@@ -1,43 +1,15 @@
 import type { NextAuthOptions } from 'next-auth'
 import Credentials from 'next-auth/providers/credentials'
-import * as z from 'zod/mini'
-import { asShop, withNoShop } from '@/db/client'
-import { findSignIn, insertSession, revokeSession } from '@/db/queries/sign-in'
+import { asShop } from '@/db/client'
+import { insertSession, revokeSession } from '@/db/queries/sign-in'
 import { env } from '@/lib/env'
 import { systemClock } from '@/lib/ports/clock'
 import { uuidv7 } from '@/lib/ports/ids'
-import { spendCheck, verifyPassword } from './password'
-import { countFailure, forgetFailures, mayTry } from './tries'
+import { checkSignIn, type SignedIn } from './check-sign-in'
+import { clientAddress } from './client-address'
 
 /** A session ends 14 days after signing in (common practice, no source); unsent work does not need one. */
 const SESSION_SECONDS = 14 * 24 * 3600
-
-const typed = z.object({
-  email: z.string().check(z.trim(), z.toLowerCase(), z.minLength(3), z.maxLength(200)),
-  password: z.string().check(z.minLength(1), z.maxLength(200)),
-})
-
-/** What a good sign-in hands to the token: whose session it is. */
-type SignedIn = { id: string; shopId: string }
-
-/** Checks e-mail and password against every shop that knows the address; null when none fits. */
-async function checkSignIn(credentials: unknown): Promise<SignedIn | null> {
-  const parsed = typed.safeParse(credentials)
-  if (!parsed.success) return null
-  const { email, password } = parsed.data
-  const now = systemClock.now()
-  if (!mayTry(email, now)) throw new Error('locked')
-  const found = await withNoShop((tx) => findSignIn(tx, email))
-  if (found.length === 0) await spendCheck(password)
-  for (const row of found) {
-    if (await verifyPassword(password, row.passwordHash)) {
-      forgetFailures(email)
-      return { id: row.personId, shopId: row.shopId }
-    }
-  }
-  countFailure(email, now)
-  return null
-}
 
 /**
  * next-auth's options: the cookie holds a signed token with the id of a row in `session`; the row is
@@ -52,7 +24,11 @@ export function authOptions(): NextAuthOptions {
       Credentials({
         name: 'password',
         credentials: { email: { type: 'email' }, password: { type: 'password' } },
-        authorize: checkSignIn,
+        authorize: (credentials, request) =>
+          checkSignIn(credentials, {
+            address: clientAddress(request.headers?.['x-forwarded-for']),
+            now: systemClock.now(),
+          }),
       }),
     ],
     callbacks: {

@@ -1,4 +1,5 @@
 import { randomBytes, type ScryptOptions, scrypt, timingSafeEqual } from 'node:crypto'
+import { hashInTurn } from './hash-slots'
 
 /**
  * Password hashes by scrypt (RFC 7914), N = 2^17, r = 8, p = 1: the figure of the OWASP Password
@@ -9,15 +10,19 @@ const COST = { N: 2 ** 17, r: 8, p: 1 }
 const LENGTH = 32
 const MAX_MEMORY = 256 * 1024 * 1024
 
+/** Waits for one of the slots; throws BusyError when too many wait. */
 const derive = (password: string, salt: Buffer, cost: ScryptOptions) =>
-  new Promise<Buffer>((resolve, reject) =>
-    scrypt(
-      password.normalize('NFKC'),
-      salt,
-      LENGTH,
-      { ...cost, maxmem: MAX_MEMORY },
-      (error, key) => (error ? reject(error) : resolve(key)),
-    ),
+  hashInTurn(
+    () =>
+      new Promise<Buffer>((resolve, reject) =>
+        scrypt(
+          password.normalize('NFKC'),
+          salt,
+          LENGTH,
+          { ...cost, maxmem: MAX_MEMORY },
+          (error, key) => (error ? reject(error) : resolve(key)),
+        ),
+      ),
   )
 
 /** Answers the text form of a new hash with its own random salt. */
@@ -51,7 +56,10 @@ let decoy: Promise<string> | null = null
 
 /** Spends the time of one check, so that an unknown e-mail address answers as slowly as a known one. */
 export async function spendCheck(password: string): Promise<false> {
-  decoy ??= hashPassword(randomBytes(16).toString('hex'))
+  decoy ??= hashPassword(randomBytes(16).toString('hex')).catch((problem: unknown) => {
+    decoy = null
+    throw problem
+  })
   await verifyPassword(password, await decoy)
   return false
 }

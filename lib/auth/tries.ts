@@ -1,23 +1,55 @@
 /**
- * Slows guessing: after 5 failed tries within 15 minutes for one key (an e-mail address) further ones
- * are refused until the window is over (common practice, no source). Kept in this process: a restart
- * forgets it, several processes count apart. Docs: decision 003.
+ * Slows guessing. A try is counted before the password is looked at and given back when it was right,
+ * so that many tries at once pass no more than many in a row. Three brakes, each over 15 minutes
+ * (common practice, no source): 5 tries for one e-mail from one address, 30 from one address whatever
+ * the e-mail, 100 for one e-mail from everywhere. So wrong tries from elsewhere do not lock a person out
+ * before the hundredth. Kept in this process: a restart forgets it, several count apart (decision 003).
  */
 const WINDOW_MS = 15 * 60_000
-const LIMIT = 5
 const MAX_KEYS = 10_000
 
+type Brake = { key: string; limit: number }
 type Tries = { count: number; since: number }
+/** Whose try it is: the e-mail in small letters, and the client's address (lib/auth/client-address.ts). */
+export type Trier = { email: string; address: string }
+
 const tries = new Map<string, Tries>()
 
-/** Answers whether the key may try again at `now` (ms since 1970). */
-export function mayTry(key: string, now: number): boolean {
-  const seen = tries.get(key)
-  return !seen || now - seen.since > WINDOW_MS || seen.count < LIMIT
+const brakesOf = ({ email, address }: Trier): readonly [Brake, Brake, Brake] => [
+  { key: `both ${email} ${address}`, limit: 5 },
+  { key: `address ${address}`, limit: 30 },
+  { key: `email ${email}`, limit: 100 },
+]
+
+/** Takes a try at `now` (ms since 1970); false, and nothing is counted, when one of the brakes is used up. */
+export function takeTry(by: Trier, now: number): boolean {
+  const brakes = brakesOf(by)
+  if (brakes.some(({ key, limit }) => countOf(key, now) >= limit)) return false
+  for (const { key } of brakes) count(key, now)
+  return true
 }
 
-/** Counts a failed try; the oldest key makes room when 10,000 are kept. */
-export function countFailure(key: string, now: number): void {
+/** Gives a try back that decided nothing, as when the server was too busy to look at the password. */
+export function giveBackTry(by: Trier): void {
+  for (const { key } of brakesOf(by)) {
+    const seen = tries.get(key)
+    if (seen && seen.count > 0) seen.count -= 1
+  }
+}
+
+/** After a right password: gives its try back, and forgets the wrong ones of this e-mail from this address. */
+export function forgetTries(by: Trier): void {
+  giveBackTry(by)
+  tries.delete(brakesOf(by)[0].key)
+}
+
+function countOf(key: string, now: number): number {
+  const seen = tries.get(key)
+  return seen && now - seen.since <= WINDOW_MS ? seen.count : 0
+}
+
+/** One more; the oldest key makes room when 10,000 are kept. */
+function count(key: string, now: number): void {
   const seen = tries.get(key)
   if (seen && now - seen.since <= WINDOW_MS) {
     seen.count += 1
@@ -29,9 +61,4 @@ export function countFailure(key: string, now: number): void {
     if (oldest !== undefined) tries.delete(oldest)
   }
   tries.set(key, { count: 1, since: now })
-}
-
-/** Forgets the key's failures after a good sign-in. */
-export function forgetFailures(key: string): void {
-  tries.delete(key)
 }
