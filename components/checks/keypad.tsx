@@ -3,9 +3,9 @@ import { Delete } from 'lucide-react'
 import { useEffect } from 'react'
 import { neverNegative, type TypedUnit, unitsOf } from '@/lib/diag/typed-units'
 import type { Quantity } from '@/lib/model/meter-profile'
+import { unitLabel } from '../reading-strip/unit-words'
 import { Key } from '../ui/key'
 import { type PadKey, pressed } from './keypad-text'
-import { unitLabel } from './unit-words'
 
 const DIGITS = ['1', '2', '3', '4', '5', '6', '7', '8', '9', '.', '0'] as const
 const PAD = 'min-h-[68px] px-1 [@media(max-height:37.5rem)]:min-h-target'

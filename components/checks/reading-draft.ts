@@ -7,11 +7,11 @@ import { inKeptUnit, type TypedUnit, unitOf } from '@/lib/diag/typed-units'
 import type { Id } from '@/lib/model/id'
 import type { ReadingBody } from '@/lib/model/log-entry'
 import type { Quantity } from '@/lib/model/meter-profile'
+import { unitLabel } from '../reading-strip/unit-words'
 import type { StripReading } from '../reading-strip/verdict'
 import { useDraft } from '../store/use-draft'
 import { figureOf } from './keypad-text'
 import type { MeterView } from './meter-setup'
-import { unitLabel } from './unit-words'
 
 /** A reading half typed, kept to the keystroke (rule R8). */
 export type ReadingDraft = {
@@ -57,7 +57,7 @@ export function useLive(
     }
     const result = judge(input)
     const strip: StripReading = {
-      shown: draft.overRange ? `> ${draft.typed}` : draft.typed,
+      shown: draft.typed,
       unit: label,
       overRange: draft.overRange,
       quantity,

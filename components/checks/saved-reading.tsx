@@ -6,7 +6,7 @@ import { judge, type ReadingResult } from '@/lib/diag/reading'
 import type { CheckItem } from '@/lib/model/code-book'
 import type { Id } from '@/lib/model/id'
 import type { LogEntry, ReadingBody } from '@/lib/model/log-entry'
-import { fixed, shortUnit, twoDigits } from '../reading-strip/figures'
+import { asTypedOnScreen, fixed, shortUnit, twoDigits } from '../reading-strip/figures'
 import { ReadingFigure, Rule } from '../reading-strip/reading-strip'
 import {
   acrossOf,
@@ -99,7 +99,8 @@ function Drawn({ strip, result, body }: DrawnProps) {
 export function meaning(strip: StripReading, result: ReadingResult, unit: string): string {
   const places = placesOf(strip)
   const best = `Best estimate ${fixed(strip.estimate, places)} ${unit}, ±${twoDigits(strip.expandedU).text}.`
-  if (strip.overRange) return `Over the range of the meter: more than ${strip.shown} ${unit}.`
+  if (strip.overRange)
+    return `Over the range of the meter: more than ${asTypedOnScreen(strip.shown)} ${strip.unit}.`
   if (result.conformance === null) return best
   const exact =
     result.conformanceExact === null ? '' : ` (${share(result.conformanceExact)} by the exact sum)`

@@ -2,9 +2,17 @@
 import { saysNothingOf, twinOf } from '@/lib/diag/good-twin'
 import type { CheckItem } from '@/lib/model/code-book'
 import type { Id } from '@/lib/model/id'
-import type { LogEntry } from '@/lib/model/log-entry'
+import type { LogEntry, ReadingBody } from '@/lib/model/log-entry'
 import { useBelief } from '../engine/use-belief'
-import { asTypedOnScreen } from '../reading-strip/figures'
+import { unitLabel } from '../reading-strip/unit-words'
+import { shownFigure } from '../reading-strip/verdict'
+
+const Typed = ({ body }: { body: ReadingBody }) => (
+  <>
+    <b className="figures">{shownFigure({ ...body, shown: body.asTyped })}</b>{' '}
+    {unitLabel(body.quantity, body.unit)}
+  </>
+)
 
 type Props = { jobId: Id; check: CheckItem; entries: readonly LogEntry[] }
 
@@ -21,9 +29,7 @@ export function TwinWords({ jobId, check, entries }: Props) {
       className="grid gap-1 border-l-4 border-ink pl-3"
     >
       <p>
-        Suspect part <b className="figures">{asTypedOnScreen(suspect.body.asTyped)}</b>{' '}
-        {suspect.body.unit}, known-good part{' '}
-        <b className="figures">{asTypedOnScreen(good.body.asTyped)}</b> {good.body.unit}.
+        Suspect part <Typed body={suspect.body} />, known-good part <Typed body={good.body} />.
       </p>
       {silent && (
         <p className="text-row font-bold">

@@ -8,6 +8,7 @@ import type { LogBody, LogKind } from '@/lib/model/log-entry'
 import { assertNever } from '@/lib/model/result'
 import { counted, MACHINE_WORDS, PEOPLE_WORDS, sentence, WAY_OUT_WORDS } from '../field/words'
 import { asTypedOnScreen } from '../reading-strip/figures'
+import { unitLabel } from '../reading-strip/unit-words'
 import { verdictWords } from '../reading-strip/verdict'
 import type { LogShape } from '../ui/log-icon'
 import { codeMeans, contextWords } from './code-sentences'
@@ -68,7 +69,7 @@ export function entryMention(body: LogBody, book: Book): string {
   switch (body.kind) {
     case 'reading': {
       const whose = body.subject === 'knownGood' ? ' on a known-good part' : ''
-      const figure = `${asTypedOnScreen(body.asTyped)} ${body.unit}`
+      const figure = `${body.overRange ? 'over ' : ''}${asTypedOnScreen(body.asTyped)} ${unitLabel(body.quantity, body.unit)}`
       const verdict = verdictWords(body.result?.verdict ?? null)
       return `${checkName(body.checkId, book)}${whose}: ${figure}, ${verdict}`
     }

@@ -1,5 +1,5 @@
 import type { ReadingBody } from '@/lib/model/log-entry'
-import { shortUnit } from '../reading-strip/figures'
+import { unitLabel } from '../reading-strip/unit-words'
 import { VerdictLine } from '../reading-strip/verdict-line'
 import { classes } from '../ui/class-names'
 import { Figure } from '../ui/figure'
@@ -11,8 +11,8 @@ export function ReadingLine({ body, struck = false, large = false }: Props) {
   return (
     <span className={classes('flex flex-wrap items-center gap-x-3', struck && 'line-through')}>
       <Figure
-        value={body.overRange ? 'OL' : body.asTyped}
-        unit={shortUnit(body.quantity)}
+        value={body.overRange ? `OL > ${body.asTyped}` : body.asTyped}
+        unit={unitLabel(body.quantity, body.unit)}
         size={large ? 'figure' : 'row'}
       />
       <VerdictLine verdict={body.result?.verdict ?? null} large={large} />

@@ -1,6 +1,6 @@
 'use client'
 import { useId } from 'react'
-import { asTypedOnScreen, fixed, shortUnit, THIN, twoDigits } from './figures'
+import { fixed, shortUnit, THIN, twoDigits } from './figures'
 import { RULE_HEIGHT, RuleDrawing } from './rule-drawing'
 import { stripAxis } from './scale'
 import { useWidth } from './use-width'
@@ -10,6 +10,7 @@ import {
   distanceWords,
   placesOf,
   type StripReading,
+  shownFigure,
   stripSentence,
 } from './verdict'
 import { VerdictLine } from './verdict-line'
@@ -44,7 +45,7 @@ export function ReadingFigure({ reading }: { reading: StripReading }) {
   return (
     <p className="flex flex-wrap items-baseline justify-between gap-x-3">
       <span>
-        <span className="figures text-hero">{asTypedOnScreen(reading.shown)}</span>
+        <span className="figures text-hero">{shownFigure(reading)}</span>
         <span className="text-section font-bold">
           {THIN}
           {reading.unit}
@@ -101,7 +102,9 @@ function HiddenTable({ reading }: { reading: StripReading }) {
         </thead>
         <tbody>
           <tr>
-            <td>{asTypedOnScreen(reading.shown)}</td>
+            <td>
+              {shownFigure(reading)} {reading.unit}
+            </td>
             <td>{reading.overRange ? 'over range' : fixed(reading.estimate, placesOf(reading))}</td>
             <td>{twoDigits(reading.expandedU).text}</td>
             <td>{reading.limits === null ? 'none' : bandWords(reading.limits)}</td>

@@ -1,14 +1,15 @@
 import { limitsOf } from '@/lib/diag/reading-budget'
 import type { ReadingBody } from '@/lib/model/log-entry'
-import { QUANTITIES, type Quantity } from '@/lib/model/meter-profile'
+import type { Quantity } from '@/lib/model/meter-profile'
 import { asTypedOnScreen, decimalsOf, fixed, shortUnit, spokenUnit, twoDigits } from './figures'
 import type { Limits } from './scale'
+import { unitLabel } from './unit-words'
 
 export type Verdict = NonNullable<ReadingBody['result']>['verdict']
 
 /** Everything a strip draws and says about one reading; made from a live reading or from a log entry. */
 export type StripReading = {
-  /** The figure as typed, as the meter showed it. */
+  /** The figure as typed, as the meter showed it; over range the top of the range. */
   shown: string
   /** The unit as typed; the rest is in the quantity's kept unit. */
   unit: string
@@ -34,12 +35,19 @@ const WORDS: Record<Verdict, string> = {
 export const verdictWords = (verdict: Verdict | null): string =>
   verdict === null ? 'NO LIMIT TO JUDGE BY' : WORDS[verdict]
 
+/** The figure as it stands on the screen: `2.2`, over range `> 20`; the unit beside it is the typed one. */
+export const shownFigure = ({
+  shown,
+  overRange,
+}: Pick<StripReading, 'shown' | 'overRange'>): string =>
+  `${overRange ? '> ' : ''}${asTypedOnScreen(shown)}`
+
 /** A reading of the job log with the verdict it was saved with; null when none was worked out. */
 export function stripOfBody(body: ReadingBody): StripReading | null {
   if (body.result === null) return null
   return {
-    shown: body.overRange ? `> ${body.asTyped}` : body.asTyped,
-    unit: unitAsTyped(body),
+    shown: body.asTyped,
+    unit: unitLabel(body.quantity, body.unit),
     overRange: body.overRange,
     quantity: body.quantity,
     estimate: body.result.estimate,
@@ -49,10 +57,6 @@ export function stripOfBody(body: ReadingBody): StripReading | null {
     resolution: body.meterFunction.resolution,
   }
 }
-
-/** `V` is kept for both kinds of volts; the screen says which. */
-const unitAsTyped = (body: ReadingBody): string =>
-  body.unit === QUANTITIES[body.quantity] ? shortUnit(body.quantity) : body.unit
 
 /** How the estimate stands to the nearest limit: `17.6 V under`, `6.2 V clear`, `on the limit`. */
 export function distanceWords(reading: StripReading, withUnit = true): string {
@@ -101,7 +105,7 @@ export function stripSentence(reading: StripReading): string {
   const unit = spokenUnit(reading.quantity)
   const u = twoDigits(reading.expandedU)
   const first = reading.overRange
-    ? `Over range on the meter, above ${asTypedOnScreen(reading.shown)} ${unit}.`
+    ? `Over range on the meter, above ${asTypedOnScreen(reading.shown)} ${reading.unit}.`
     : `${fixed(reading.estimate, placesOf(reading))} ${unit}, plus or minus ${u.text}.`
   const band = reading.limits === null ? '' : ` Good band ${bandWords(reading.limits)}.`
   const distance = distanceWords(reading, false)

@@ -1,7 +1,8 @@
 'use client'
 
 import { ReadingStrip } from '@/components/reading-strip/reading-strip'
-import { stripOfBody } from '@/components/reading-strip/verdict'
+import { unitLabel } from '@/components/reading-strip/unit-words'
+import { shownFigure, stripOfBody } from '@/components/reading-strip/verdict'
 import { RuleEdge } from '@/components/ui/rule-edge'
 import type { BookIndex } from '@/lib/diag/book-index'
 import { living } from '@/lib/diag/case'
@@ -31,7 +32,8 @@ export function latestReading(
   return { read, twin: twin ?? null }
 }
 
-const shown = (body: ReadingBody) => `${body.overRange ? 'over range' : body.asTyped} ${body.unit}`
+const shown = (body: ReadingBody) =>
+  `${shownFigure({ ...body, shown: body.asTyped })} ${unitLabel(body.quantity, body.unit)}`
 
 /** Where the band comes from, which meter, and what a known-good part read. */
 function provenance({ read: { body }, twin }: { read: Read; twin: Read | null }): string {
