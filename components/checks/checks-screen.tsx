@@ -1,5 +1,6 @@
 'use client'
 import { useState } from 'react'
+import { bookForJob } from '@/lib/diag/book-for-job'
 import type { BookIndex } from '@/lib/diag/book-index'
 import { living } from '@/lib/diag/case'
 import type { Outcome } from '@/lib/diag/outlook'
@@ -15,6 +16,7 @@ import { entryMention } from '../log/entry-words'
 import { proofSentence } from '../outcome/proof-words'
 import { useBook } from '../store/use-book'
 import { useShop } from '../store/use-rows'
+import { behindWords } from '../suspects/book-words'
 import { NOTICE_WORDS } from '../suspects/notice-words'
 import { SuspectRows } from '../suspects/suspect-rows'
 import { Key, KeyLink } from '../ui/key'
@@ -229,6 +231,7 @@ function Suspects({ index, belief, outlook, entries, stale }: SuspectsProps) {
       <p className="text-second text-ink2">
         more than one can be true{stale ? ' · working in the newest entry' : ''}
       </p>
+      <Behind index={index} entries={entries} />
       <Notices notices={belief.notices} />
       <SuspectRows
         suspects={belief.suspects}
@@ -239,6 +242,13 @@ function Suspects({ index, belief, outlook, entries, stale }: SuspectsProps) {
         why={(suspect) => <WhyView suspect={suspect} entries={entries} index={index} />}
       />
     </section>
+  )
+}
+
+function Behind({ index, entries }: Pick<SuspectsProps, 'index' | 'entries'>) {
+  const { newerSeen } = bookForJob([index.version], entries)
+  return newerSeen === null ? null : (
+    <p className="font-bold">{behindWords(index.version, newerSeen)}</p>
   )
 }
 

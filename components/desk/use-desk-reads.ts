@@ -40,15 +40,14 @@ export function useDeskParts() {
   })
 }
 
-/** A published code book version; it never changes, so it is read once. `null` version: the newest. */
-export function useDeskBook(version: number | null, wanted: boolean) {
+/** The shop's newest code book: what a job is worked out with (lib/diag/book-for-job.ts). */
+export function useDeskBook(wanted: boolean) {
   const { ports } = useDesk()
   return useQuery<CodeBook>({
-    queryKey: reads.book(version),
-    queryFn: () =>
-      read(ports.line, `/api/codebook${version === null ? '' : `?version=${version}`}`, codeBook),
+    queryKey: reads.book,
+    queryFn: () => read(ports.line, '/api/codebook', codeBook),
     enabled: wanted,
-    staleTime: version === null ? 60_000 : Number.POSITIVE_INFINITY,
+    staleTime: 60_000,
     gcTime: Number.POSITIVE_INFINITY,
   })
 }

@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest'
 import { latestReading } from '@/components/desk/job/latest-reading'
-import { bookVersionOf, questionOf } from '@/components/desk/job/use-job-case'
+import { questionOf } from '@/components/desk/job/use-job-case'
 import { specForEngine } from '@/components/engine/spec-kept'
 import { workOut } from '@/components/engine/work'
 import { BOOK_ITEMS } from '@/db/codebook/book'
@@ -172,11 +172,6 @@ describe('the desk reckons as the phone does', () => {
     ]
     const desk = workOut(index, questionOf(atTheDesk(mixed))).belief
     expect(desk).toEqual(workOut(index, onThePhone).belief)
-  })
-
-  it('[R23] takes the newest code book version the entries were written with', () => {
-    expect(bookVersionOf(atTheDesk(entries))).toBe(1)
-    expect(bookVersionOf({ entries: [] })).toBeNull()
   })
 
   it('[F4] shows the reading of the suspect part, and what the known-good one read', () => {

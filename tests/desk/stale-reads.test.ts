@@ -16,7 +16,7 @@ describe('what a change makes stale', () => {
     ['partRequest', 'j1', [reads.board, reads.parts, reads.job('j1')]],
     ['machine', null, [reads.board, reads.jobs, reads.parts]],
     ['bag', null, []],
-    ['book', null, []],
+    ['book', null, [reads.book]],
     ['person', null, [reads.all]],
     ['somethingNew', null, [reads.all]],
   ])(

@@ -4,17 +4,10 @@ import { engine } from '@/components/engine/engine-client'
 import { specForEngine } from '@/components/engine/spec-kept'
 import { keyOf } from '@/components/engine/use-engine'
 import type { Answer, Question } from '@/components/engine/work'
+import { bookForJob } from '@/lib/diag/book-for-job'
 import { type BookIndex, indexBook } from '@/lib/diag/book-index'
 import type { DeskJob } from '@/lib/model/desk'
 import { useDeskBook } from '../use-desk-reads'
-
-/** The code book version the job's newest entry was written with; null: none says, take the newest. */
-export function bookVersionOf(found: Pick<DeskJob, 'entries'>): number | null {
-  const versions = found.entries.flatMap(({ bookVersion }) =>
-    bookVersion === null ? [] : [bookVersion],
-  )
-  return versions.length === 0 ? null : Math.max(...versions)
-}
 
 /** What the engine is asked: the very input the phone gives it, from the same entries and spec sheet. */
 export function questionOf(found: DeskJob): Question {
@@ -33,6 +26,8 @@ export function questionOf(found: DeskJob): Question {
 
 export type JobCase = {
   index: BookIndex | null
+  /** A newer code book than this one, which an entry was written with. */
+  newerSeen: number | null
   answer: Answer | null
   /** A newer answer is being worked out; the one shown is of fewer entries. */
   working: boolean
@@ -41,8 +36,7 @@ export type JobCase = {
 
 /** Suspects of a job, worked out here by the engine of the phone. The last answer stands meanwhile. */
 export function useJobCase(found: DeskJob | undefined): JobCase {
-  const version = found ? bookVersionOf(found) : null
-  const book = useDeskBook(version, found !== undefined)
+  const book = useDeskBook(found !== undefined)
   const index = useMemo(() => (book.data ? indexBook(book.data) : null), [book.data])
   const question = useMemo(() => (found ? questionOf(found) : null), [found])
   const reckoned = useQuery<Answer>({
@@ -57,6 +51,7 @@ export function useJobCase(found: DeskJob | undefined): JobCase {
   })
   return {
     index,
+    newerSeen: bookForJob(index ? [index.version] : [], found?.entries ?? []).newerSeen,
     answer: reckoned.data ?? null,
     working: reckoned.isPlaceholderData || reckoned.isPending,
     failed: reckoned.isError || book.isError,

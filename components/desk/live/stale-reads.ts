@@ -8,7 +8,7 @@ export const reads = {
   jobs: ['desk', 'job'] as const,
   job: (jobId: string) => ['desk', 'job', jobId] as const,
   parts: ['desk', 'parts'] as const,
-  book: (version: number | null) => ['book', version] as const,
+  book: ['book'] as const,
 }
 
 /** What one change makes stale: no more than that is read again. A word not known here: everything. */
@@ -27,8 +27,9 @@ export function staleReads(change: Change): QueryKey[] {
       return [reads.board, reads.jobs, reads.parts]
     case 'meterProfile':
     case 'bag':
-    case 'book':
       return []
+    case 'book':
+      return [reads.book]
     default:
       return [reads.all]
   }
