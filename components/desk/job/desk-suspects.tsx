@@ -3,23 +3,18 @@
 import { useMemo, useState } from 'react'
 import { WhyView } from '@/components/checks/why-view'
 import { entryMention } from '@/components/log/entry-words'
+import { behindWords } from '@/components/suspects/book-words'
 import { NOTICE_WORDS } from '@/components/suspects/notice-words'
 import { SuspectRows } from '@/components/suspects/suspect-rows'
-import { Key } from '@/components/ui/key'
 import { RuleEdge } from '@/components/ui/rule-edge'
-import type { Belief, Suspect } from '@/lib/diag/belief'
-import { SOMETHING_ELSE } from '@/lib/diag/book-index'
+import type { Belief } from '@/lib/diag/belief'
 import type { DeskJob } from '@/lib/model/desk'
 import { counted } from '../../field/words'
 import type { JobCase } from './use-job-case'
 
-/** Rows shown before the rest is asked for. */
-const FIRST_ROWS = 6
-
 /** The suspects as the log leaves them, with the reasons of each on asking. */
 export function DeskSuspects({ found, reckoned }: { found: DeskJob; reckoned: JobCase }) {
   const [open, setOpen] = useState<string | null>(null)
-  const [all, setAll] = useState(false)
   const { index } = reckoned
   const words = useMemo(
     () => new Map(found.entries.map(({ id, body }) => [id, entryMention(body, index)])),
@@ -44,7 +39,7 @@ export function DeskSuspects({ found, reckoned }: { found: DeskJob; reckoned: Jo
           <Notices notices={belief.notices} />
           <div className="mt-2">
             <SuspectRows
-              suspects={all ? belief.suspects : firstRows(belief.suspects)}
+              suspects={belief.suspects}
               entryWords={(id) => words.get(id) ?? 'an entry of the log'}
               open={open}
               onOpen={setOpen}
@@ -53,27 +48,19 @@ export function DeskSuspects({ found, reckoned }: { found: DeskJob; reckoned: Jo
               }
             />
           </div>
-          {belief.suspects.length > FIRST_ROWS ? (
-            <Key small={true} quiet={true} className="mt-3" onClick={() => setAll(!all)}>
-              {all ? 'Show the first ones' : `Show all ${belief.suspects.length}`}
-            </Key>
-          ) : null}
         </>
       ) : null}
     </section>
   )
 }
 
-function asOf({ index, working }: JobCase): string {
+function asOf({ index, newerSeen, working }: JobCase): string {
   if (!index) return 'Reading the code book.'
-  return `Worked out here with code book version ${index.version}.${working ? ' Working.' : ''}`
-}
-
-/** The first rows, and something else always among them (rule R5). */
-function firstRows(suspects: readonly Suspect[]): readonly Suspect[] {
-  const first = suspects.slice(0, FIRST_ROWS)
-  const other = suspects.find(({ fault }) => fault === SOMETHING_ELSE)
-  return !other || first.includes(other) ? first : [...first, other]
+  const book =
+    newerSeen === null
+      ? `Worked out here with code book version ${index.version}.`
+      : behindWords(index.version, newerSeen)
+  return `${book}${working ? ' Working.' : ''}`
 }
 
 function Notices({ notices }: { notices: Belief['notices'] }) {
