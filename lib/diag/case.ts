@@ -19,8 +19,8 @@ export type Case = {
 }
 
 /**
- * A job as the engine sees it. Entries that a later one supersedes or corrects are left out; a correction
- * that was itself corrected no longer counts. The order is by `happenedAt`, then `writtenAt`, then id, so
+ * A job as the engine sees it. Entries that a later one supersedes or corrects are left out; what was itself
+ * corrected no longer strikes anything. The order is by `happenedAt`, then `writtenAt`, then id, so
  * that two devices holding the same entries reckon the same figures.
  */
 export function buildCase(input: {
@@ -46,16 +46,36 @@ export function buildCase(input: {
 
 /** The entries still in evidence, in the order they happened; corrections themselves are left out. */
 export function living(entries: readonly LogEntry[]): LogEntry[] {
-  const undone = new Set<string>()
-  for (const e of entries)
-    if (e.body.kind === 'correction' && e.supersedes !== null) undone.add(e.supersedes)
-  const out = new Set<string>()
+  const struck = strikes(entries)
+  return entries.filter((e) => !struck.has(e.id) && e.body.kind !== 'correction').sort(byTime)
+}
+
+/**
+ * The entries that are out of evidence, each with the one that took it out: a correction, or the entry that
+ * stands in its place. An entry that a standing correction points to strikes nothing; one that was only
+ * replaced still does, so that what it replaced does not come back beside the newest.
+ */
+export function strikes<E extends LogEntry>(entries: readonly E[]): Map<string, E> {
+  const correctedBy = new Map<string, E[]>()
   for (const e of entries) {
-    if (e.supersedes === null) continue
-    if (e.body.kind === 'correction' && undone.has(e.id)) continue
-    out.add(e.supersedes)
+    if (e.body.kind !== 'correction' || e.supersedes === null) continue
+    correctedBy.set(e.supersedes, [...(correctedBy.get(e.supersedes) ?? []), e])
   }
-  return entries.filter((e) => !out.has(e.id) && e.body.kind !== 'correction').sort(byTime)
+  const stands = new Map<string, boolean>()
+  const standing = (e: E): boolean => {
+    const known = stands.get(e.id)
+    if (known !== undefined) return known
+    // Two that point at each other cannot be written; should they be, both stand.
+    stands.set(e.id, true)
+    const answer = !(correctedBy.get(e.id) ?? []).some(standing)
+    stands.set(e.id, answer)
+    return answer
+  }
+  const struck = new Map<string, E>()
+  for (const e of entries)
+    if (e.supersedes !== null && !struck.has(e.supersedes) && standing(e))
+      struck.set(e.supersedes, e)
+  return struck
 }
 
 function byTime(a: LogEntry, b: LogEntry): number {

@@ -1,7 +1,7 @@
 import fc from 'fast-check'
 import { describe, expect, it } from 'vitest'
 import { failureOf, wordName } from '@/lib/diag/book-index'
-import { living } from '@/lib/diag/case'
+import { living, strikes } from '@/lib/diag/case'
 import { explainCode } from '@/lib/diag/code-words'
 import {
   bytesFromHex,
@@ -131,6 +131,32 @@ describe('[R13] the log as evidence', () => {
     const [first, , last] = entries
     const earlier = { ...last!, happenedAt: '2026-11-24T17:00:00.000Z' }
     expect(living([first!, earlier]).map((e) => e.id)).toEqual([earlier.id, first!.id])
+  })
+
+  /** `wanted`: what is left of a log whose letters point at each other; x to z correct, the others replace. */
+  it.each([
+    ['a correction strikes', { a: null, x: 'a' }, []],
+    ['a correction taken back strikes nothing', { a: null, x: 'a', y: 'x' }, ['a']],
+    ['taken back once more it strikes again', { a: null, x: 'a', y: 'x', z: 'y' }, []],
+    ['a replacement strikes', { a: null, b: 'a' }, ['b']],
+    ['a corrected replacement strikes nothing', { a: null, b: 'a', x: 'b' }, ['a']],
+    ['so does one whose correction was taken back', { a: null, b: 'a', x: 'b', y: 'x' }, ['b']],
+    ['replaced twice leaves the newest', { a: null, b: 'a', c: 'b' }, ['c']],
+    ['the newest corrected leaves the one before', { a: null, b: 'a', c: 'b', x: 'c' }, ['b']],
+  ] as const)('[R8] %s', (_words, points: Record<string, string | null>, wanted) => {
+    const entries = Object.entries(points).map(([id, supersedes]) => ({
+      ...log(checked('a', 'good'))[0]!,
+      id,
+      supersedes,
+      ...(id >= 'x' ? { body: { kind: 'correction', reason: 'Wrong' } as const } : {}),
+    }))
+    for (const order of [entries, [...entries].reverse()]) {
+      expect(living(order).map(({ id }) => id)).toEqual(wanted)
+      const struck = strikes(order)
+      expect(entries.filter(({ id }) => id < 'x' && !struck.has(id)).map(({ id }) => id)).toEqual(
+        wanted,
+      )
+    }
   })
 })
 

@@ -5,6 +5,7 @@ import { type EntryWords, entryWords } from '@/components/log/entry-words'
 import { ReadingLine } from '@/components/log/reading-line'
 import { LogIcon } from '@/components/ui/log-icon'
 import type { BookIndex } from '@/lib/diag/book-index'
+import { strikes } from '@/lib/diag/case'
 import type { DeskJob } from '@/lib/model/desk'
 import type { LogRow } from '@/lib/model/log-entry'
 import { clockTime, span } from '../../field/times'
@@ -19,7 +20,7 @@ type Props = { found: DeskJob; index: BookIndex | null }
 
 /** The job log, oldest first, in the shop's order: an ordered list strung on a wire. */
 export function JobLog({ found, index }: Props) {
-  const struck = useMemo(() => struckBy(found.entries), [found.entries])
+  const struck = useMemo(() => strikes(found.entries), [found.entries])
   const who = useMemo(
     () => new Map(found.people.map(({ id, name }) => [id, name ?? 'name erased'])),
     [found.people],
@@ -57,10 +58,6 @@ function lineOf(
     entry.body.kind === 'correction' && earlier ? entryWords(earlier.body, index).shape : line.shape
   return { ...line, shape, bar: true }
 }
-
-/** Entries that a later one took out of evidence. */
-const struckBy = (entries: readonly LogRow[]) =>
-  new Set(entries.flatMap(({ supersedes }) => (supersedes === null ? [] : [supersedes])))
 
 type ItemProps = {
   entry: LogRow

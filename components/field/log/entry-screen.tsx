@@ -13,6 +13,7 @@ import { KeyLink } from '@/components/ui/key'
 import { LogIcon } from '@/components/ui/log-icon'
 import { Photo } from '@/components/ui/photo'
 import { Screen } from '@/components/ui/screen'
+import { strikes } from '@/lib/diag/case'
 import type { LogEntry } from '@/lib/model/log-entry'
 import { mayLog } from '@/lib/shop/permissions'
 import { jobHref } from '../route'
@@ -34,7 +35,7 @@ export function EntryScreen({ jobId, entryId }: { jobId: string; entryId: string
   }
   const { entry } = line
   const words = entryWords(entry.body, index)
-  const later = log?.find((l) => l.entry.supersedes === entry.id)?.entry
+  const later = strikes((log ?? []).map((l) => l.entry)).get(entry.id)
   const corrects =
     later === undefined && entry.body.kind !== 'correction' && mayLog(roles, 'correction', false)
   return (

@@ -15,6 +15,8 @@ import { clockTime, span } from '../times'
 type Props = {
   line: StoredEntry
   log: readonly StoredEntry[]
+  /** Entries out of evidence, each with the one that took it out. */
+  struck: ReadonlyMap<string, LogEntry>
   index: BookIndex | null
   /** Time since the entry before, when it was long. */
   gapMs: number | null
@@ -23,10 +25,10 @@ type Props = {
 }
 
 /** One entry on the wire: time, node, what it says. It opens the whole entry. */
-export function LogItem({ line, log, index, gapMs, day }: Props) {
+export function LogItem({ line, log, struck, index, gapMs, day }: Props) {
   const { entry, sent } = line
   const target = log.find((other) => other.entry.id === entry.supersedes)?.entry ?? null
-  const later = log.find((other) => other.entry.supersedes === entry.id)?.entry ?? null
+  const later = struck.get(entry.id) ?? null
   const words = entryWords(entry.body, index)
   const time = clockTime(entry.happenedAt, entry.zone)
   const bar = entry.body.kind === 'correction'

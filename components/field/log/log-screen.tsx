@@ -1,12 +1,13 @@
 'use client'
 
-import { useEffect, useRef } from 'react'
+import { useEffect, useMemo, useRef } from 'react'
 import { useBook } from '@/components/store/use-book'
 import { type StoredEntry, useLog } from '@/components/store/use-log'
 import { useSession } from '@/components/store/use-session'
 import { KeyLink } from '@/components/ui/key'
 import { RuleEdge } from '@/components/ui/rule-edge'
 import { Screen } from '@/components/ui/screen'
+import { strikes } from '@/lib/diag/case'
 import { mayLog } from '@/lib/shop/permissions'
 import { OfJob } from '../of-job'
 import { jobHref } from '../route'
@@ -52,6 +53,7 @@ function Lines({ jobId, openedAt, zone }: { jobId: string; openedAt: string; zon
   const { index } = useBook()
   const end = useRef<HTMLDivElement>(null)
   const shown = useRef<boolean>(false)
+  const struck = useMemo(() => strikes((log ?? []).map((line) => line.entry)), [log])
   // Newest at the thumb: the first look at a log is at its end.
   useEffect(() => {
     if (log !== undefined && !shown.current) {
@@ -83,6 +85,7 @@ function Lines({ jobId, openedAt, zone }: { jobId: string; openedAt: string; zon
             line={line}
             before={log[i - 1] ?? null}
             log={log}
+            struck={struck}
             index={index}
           />
         ))}
@@ -97,6 +100,7 @@ function LineWithCut(props: {
   line: StoredEntry
   before: StoredEntry | null
   log: readonly StoredEntry[]
+  struck: Parameters<typeof LogItem>[0]['struck']
   index: Parameters<typeof LogItem>[0]['index']
 }) {
   const { entry } = props.line
@@ -110,6 +114,7 @@ function LineWithCut(props: {
       <LogItem
         line={props.line}
         log={props.log}
+        struck={props.struck}
         index={props.index}
         gapMs={gapMs > GAP_MS ? gapMs : null}
         day={newDay ? dayOf(entry.happenedAt, entry.zone) : null}
