@@ -2,10 +2,10 @@ import { describe, expect, it } from 'vitest'
 import { aboutInstant } from '@/components/checks/about-time'
 import { figureOf, pressed } from '@/components/checks/keypad-text'
 import { readDegrees } from '@/components/checks/meter-setup-form'
-import { unitLabel } from '@/components/checks/unit-words'
 import { movedBetween, whyLine } from '@/components/checks/why-words'
 import { minutesWords, moneyWords, onScreen } from '@/components/checks/words'
-import { minutesUntil } from '@/components/engine/use-means'
+import { leaveByWords, minutesTo, minutesUntil, nextTime } from '@/components/engine/leave-by'
+import { unitLabel } from '@/components/reading-strip/unit-words'
 import { marksOf, saysNothing } from '@/components/suspects/outlook-words'
 
 describe('the keypad', () => {
