@@ -1,5 +1,5 @@
 import type { Instant } from '@/lib/model/time'
-import { minutesUntil } from '../engine/use-means'
+import { minutesUntil } from '../engine/leave-by'
 
 const DAY_MINUTES = 24 * 60
 

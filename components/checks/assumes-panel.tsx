@@ -1,18 +1,13 @@
 'use client'
 import { useState } from 'react'
-import { LEAVE_BY_MARGIN_MINUTES } from '@/lib/diag/daylight'
+import { DARK_FACTOR } from '@/lib/diag/plan-means'
 import type { Id } from '@/lib/model/id'
 import type { Shop } from '@/lib/model/shop'
 import type { MeansView } from '../engine/use-means'
-import { clockTime } from '../field/times'
-import { useJob } from '../store/use-rows'
-import { useStamp } from '../store/use-stamp'
 import { Choice } from '../ui/choice'
-import { Field } from '../ui/field'
-import { Figure } from '../ui/figure'
 import { Key } from '../ui/key'
 import { RuleEdge } from '../ui/rule-edge'
-import { NotSaved, useSave } from './use-save'
+import { LeaveBy } from './leave-by-part'
 import { moneyWords } from './words'
 
 type Props = { jobId: Id; view: MeansView; shop: Shop | undefined; bookVersion: number }
@@ -45,7 +40,7 @@ export function AssumesPanel({ jobId, view, shop, bookVersion }: Props) {
         legend="Light"
         value={choice.dark}
         onChange={(next) => choose({ ...choice, dark: next })}
-        hint="In the dark every minute counts 1.3 (shop setting, common practice)."
+        hint={`In the dark every minute counts ${DARK_FACTOR} (common practice, no source).`}
         options={[
           { value: 'bySun', label: `By the sun: ${view.darkBySun ? 'dark' : 'light'} now` },
           { value: 'no', label: 'Light enough' },
@@ -83,62 +78,3 @@ function Prices({ shop, bookVersion }: { shop: Shop; bookVersion: number }) {
     </div>
   )
 }
-
-/** Leave-by is the person's: suggested from civil dusk less 30 minutes (practice), changed with a reason. */
-function LeaveBy({ jobId, view }: { jobId: Id; view: MeansView }) {
-  const { choice, choose, duskMs } = view
-  const job = useJob(jobId)
-  const zone = job?.zone ?? 'UTC'
-  const [time, setTime] = useState(choice.leaveBy ?? '')
-  const [reason, setReason] = useState('')
-  const { save, problem } = useSave()
-  const stamp = useStamp()
-  const bySun =
-    duskMs === null ? null : clockTime(isoOf(duskMs - LEAVE_BY_MARGIN_MINUTES * 60_000), zone)
-  const keep = async (leaveBy: string | null) => {
-    const why = reason.trim() === '' ? '' : ` ${reason.trim()}`
-    const words = leaveBy === null ? `No time to leave by.${why}` : `Leave by ${leaveBy}.${why}`
-    if (!(await save([stamp.entry(jobId, { kind: 'note', words })]))) return
-    choose({ ...choice, leaveBy })
-    setReason('')
-  }
-  return (
-    <div className="grid gap-2">
-      <p>
-        {choice.leaveBy === null ? (
-          'No time to leave by is set, so nothing is left out for time.'
-        ) : (
-          <>
-            Leave by <Figure value={choice.leaveBy} />. What does not fit is listed with the minutes
-            it is over.
-          </>
-        )}
-      </p>
-      {duskMs !== null && bySun !== null && (
-        <p className="text-second text-ink2">
-          Civil dusk here is {clockTime(isoOf(duskMs), zone)}; {LEAVE_BY_MARGIN_MINUTES} minutes
-          before is {bySun} (common practice). Take the ride out off as well.
-        </p>
-      )}
-      <Field label="Leave by" type="time" figures value={time} onChange={setTime} />
-      <Field
-        label="Reason, kept in the log"
-        hint="For example: lights and a second machine"
-        value={reason}
-        onChange={setReason}
-        maxLength={300}
-      />
-      <NotSaved problem={problem} />
-      <div className="grid grid-cols-2 gap-2">
-        <Key small disabled={!/^\d\d:\d\d$/.test(time)} onClick={() => keep(time)}>
-          Set the time
-        </Key>
-        <Key small disabled={choice.leaveBy === null} onClick={() => keep(null)}>
-          No limit
-        </Key>
-      </div>
-    </div>
-  )
-}
-
-const isoOf = (ms: number): string => new Date(ms).toISOString()

@@ -5,15 +5,17 @@ import { isDark } from '@/lib/diag/light'
 import type { Means } from '@/lib/diag/plan'
 import type { Id } from '@/lib/model/id'
 import type { Place } from '@/lib/model/place'
+import type { Instant } from '@/lib/model/time'
 import { usePorts } from '../store/store-provider'
 import { useDraft } from '../store/use-draft'
 import { useBag, useJob, useShop } from '../store/use-rows'
 import { useSession } from '../store/use-session'
+import { minutesTo } from './leave-by'
 
 /** What the person says about the plan of one job; kept on the phone, changed at any time. */
 type MeansChoice = {
-  /** Minute of the day to leave by, in the job's zone; null: no limit (rule R6 leaves it to the person). */
-  leaveBy: string | null
+  /** When to leave by; null: no limit (rule R6 leaves it to the person). */
+  leaveBy: Instant | null
   dark: 'bySun' | 'yes' | 'no'
   people: 1 | 2
 }
@@ -27,6 +29,8 @@ export type MeansView = {
   /** Civil dusk at the job's place today, as an instant in ms; null without a place or where it never gets dark. */
   duskMs: number | null
   darkBySun: boolean
+  /** The present minute, ms. */
+  nowMs: number
 }
 
 /** What the plan may count on: bag, roles, time, light, people, and the shop's prices. */
@@ -35,11 +39,10 @@ export function useMeans(jobId: Id): MeansView {
   const bag = useBag()
   const shop = useShop()
   const session = useSession()
-  const { value: choice, set } = useDraft<MeansChoice>(`means:${jobId}`, FIRST)
+  const { value: choice, set } = useDraft<MeansChoice>(`plan:${jobId}`, FIRST)
   const now = useMinute()
   const sun = useMemo(() => sunAt(job?.place ?? null, now), [job?.place, now])
-  const zone = job?.zone ?? 'UTC'
-  const minutesLeft = choice.leaveBy === null ? null : minutesUntil(choice.leaveBy, zone, now)
+  const minutesLeft = choice.leaveBy === null ? null : minutesTo(choice.leaveBy, now)
   const dark = choice.dark === 'bySun' ? sun.dark : choice.dark === 'yes'
   const means = useMemo<Means | null>(() => {
     if (shop === undefined || bag === undefined || session.kind !== 'ready') return null
@@ -53,7 +56,7 @@ export function useMeans(jobId: Id): MeansView {
       people: choice.people,
     }
   }, [shop, bag, session, minutesLeft, dark, choice.people])
-  return { means, choice, choose: set, duskMs: sun.duskMs, darkBySun: sun.dark }
+  return { means, choice, choose: set, duskMs: sun.duskMs, darkBySun: sun.dark, nowMs: now }
 }
 
 /** The present minute by the phone's clock, in ms; changes once a minute. */
@@ -71,18 +74,4 @@ function sunAt(place: Place | null, nowMs: number): { dark: boolean; duskMs: num
   if (place === null) return { dark: false, duskMs: null }
   const { civilDusk } = sunTimes(place.latitude, place.longitude, nowMs)
   return { dark: isDark(place, nowMs), duskMs: civilDusk }
-}
-
-/** Whole minutes from now until a `HH:MM` of today in a zone; negative once it is past. */
-export function minutesUntil(clockTime: string, zone: string, nowMs: number): number {
-  const [hour = 0, minute = 0] = clockTime.split(':').map(Number)
-  const parts = new Intl.DateTimeFormat('en-GB', {
-    timeZone: zone,
-    hour: '2-digit',
-    minute: '2-digit',
-    hourCycle: 'h23',
-  }).formatToParts(nowMs)
-  const of = (type: 'hour' | 'minute') =>
-    Number(parts.find((part) => part.type === type)?.value ?? 0)
-  return hour * 60 + minute - (of('hour') * 60 + of('minute'))
 }

@@ -4,7 +4,7 @@ import { figureOf, pressed } from '@/components/checks/keypad-text'
 import { readDegrees } from '@/components/checks/meter-setup-form'
 import { movedBetween, whyLine } from '@/components/checks/why-words'
 import { minutesWords, moneyWords, onScreen } from '@/components/checks/words'
-import { leaveByWords, minutesTo, minutesUntil, nextTime } from '@/components/engine/leave-by'
+import { minutesUntil } from '@/components/engine/leave-by'
 import { unitLabel } from '@/components/reading-strip/unit-words'
 import { marksOf, saysNothing } from '@/components/suspects/outlook-words'
 
