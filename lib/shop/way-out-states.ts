@@ -13,14 +13,15 @@ const MACHINE_AFTER: Record<WayOut, JobMachineState> = {
 
 /**
  * Where machine and people are after a way out, when nothing else is said: the people on their way with any
- * of them (R2). A state that may not be reached from the present one stays as it is.
+ * of them, unless they are safe already (R2). A state that may not be reached from the present one stays as
+ * it is.
  */
 export function statesAfter(
   way: WayOut,
   now: Pick<Job, 'machineState' | 'peopleState'>,
 ): StatesAfter {
   const machine = MACHINE_AFTER[way]
-  const people = 'onTheWay'
+  const people = now.peopleState === 'safe' ? 'safe' : 'onTheWay'
   return {
     machine: mayMove('machine', now.machineState, machine) ? machine : now.machineState,
     people: mayMove('people', now.peopleState, people) ? people : now.peopleState,
@@ -29,13 +30,16 @@ export function statesAfter(
 
 /**
  * The job's own state once the machine's is decided: left behind it waits to be fetched, otherwise a job not
- * yet begun is under way now. A closed job, and one that waits for something else, stays as it is.
+ * yet begun, or one that waited for a machine no longer left behind, is under way now. A closed job, and one
+ * that waits for something else, stays as it is.
  */
 export function jobStateAfter(state: JobState, machine: JobMachineState): JobState {
   if (state === 'closed') return state
   if (machine === 'leftBehind') return 'waitingRetrieval'
-  return state === 'called' || state === 'open' || state === 'assigned' ? 'underWay' : state
+  return BEGUN_BY_IT.includes(state) ? 'underWay' : state
 }
+
+const BEGUN_BY_IT: readonly JobState[] = ['called', 'open', 'assigned', 'waitingRetrieval']
 
 /** What is told of a machine that is left behind: key, tap and leaks, how secured, whose land, fetch by (R2). */
 export const LEFT_BEHIND_LINES = ['key', 'tap', 'secured', 'land', 'fetch'] as const

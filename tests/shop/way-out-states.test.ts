@@ -23,6 +23,17 @@ describe('states after a way out', () => {
       expect(statesAfter(way, { ...now, peopleState: 'onTheWay' }).people).toBe('onTheWay')
   })
 
+  it.each(WAYS_OUT)('[R2] safe people stay safe with %s', (way) => {
+    const now = { machineState: 'stranded', peopleState: 'safe' } as const
+    expect(statesAfter(way, now).people).toBe('safe')
+  })
+
+  it('[R2] a job no longer waits to be fetched once its machine is not left behind any more', () => {
+    for (const machine of ['stranded', 'runs', 'limping', 'onTow', 'atShop'] as const)
+      expect(jobStateAfter('waitingRetrieval', machine)).toBe('underWay')
+    expect(jobStateAfter('waitingRetrieval', 'leftBehind')).toBe('waitingRetrieval')
+  })
+
   it('[R13] a job waits for a machine left behind, is under way when begun by it, and stays closed', () => {
     expect(jobStateAfter('waitingParts', 'leftBehind')).toBe('waitingRetrieval')
     expect(['called', 'open', 'assigned'].map((s) => jobStateAfter(s as 'open', 'runs'))).toEqual([
