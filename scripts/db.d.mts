@@ -9,5 +9,6 @@ export type DatabaseAddresses = {
 }
 export function startDatabase(options?: { databaseName?: string }): Promise<DatabaseAddresses>
 export function stopDatabase(): Promise<void>
+export function leaveDatabase(): Promise<void>
 export function databaseStatus(): { running: boolean; port: number | null; dataDir: string }
 export function resetDatabase(): Promise<void>

@@ -1,26 +1,42 @@
 // npm run dev: the database, the mail server and Next.js with reloading; no service worker.
 import { join } from 'node:path'
-import { database, fillDatabase, freePort, modules, root, service, settings } from './setup.mjs'
+import { ending } from './ending.mjs'
+import {
+  database,
+  fillDatabase,
+  freePort,
+  leaveDatabase,
+  modules,
+  root,
+  service,
+  settings,
+  stopCall,
+  stopServices,
+} from './setup.mjs'
 
 settings()
-modules()
-await database('farbench')
-fillDatabase()
-const mailPort = await freePort(Number(process.env.MAIL_PORT ?? 2525))
-process.env.MAIL_PORT = String(mailPort)
-process.env.MAIL_URL ??= `smtp://127.0.0.1:${mailPort}`
-process.env.FILES_DIR ??= join(root, '.data', 'files')
-const end = (code) => process.exit(code ?? 0)
-const children = [
-  service(process.execPath, ['scripts/fakes/mail.mjs'], end),
-  service('node_modules/.bin/tsx', ['scripts/work.ts'], end),
-  service(
-    process.execPath,
-    ['node_modules/next/dist/bin/next', 'dev', '-H', '127.0.0.1', '-p', process.env.PORT],
-    end,
-  ),
-]
-for (const signal of ['SIGINT', 'SIGTERM'])
-  process.on(signal, () => {
-    for (const child of children) child.kill(signal)
-  })
+const ends = ending({ onSignal: 0 })
+await ends.around(async () => {
+  ends.later(stopCall)
+  await modules()
+  ends.later(leaveDatabase)
+  await database('farbench')
+  ends.later(stopCall)
+  await fillDatabase()
+  const mailPort = await freePort(Number(process.env.MAIL_PORT ?? 2525))
+  process.env.MAIL_PORT = String(mailPort)
+  process.env.MAIL_URL ??= `smtp://127.0.0.1:${mailPort}`
+  process.env.FILES_DIR ??= join(root, '.data', 'files')
+  if (ends.begun) return
+  const end = (code) => void ends.end(code ?? 0)
+  const children = [
+    service(process.execPath, ['scripts/fakes/mail.mjs'], end),
+    service('node_modules/.bin/tsx', ['scripts/work.ts'], end),
+    service(
+      process.execPath,
+      ['node_modules/next/dist/bin/next', 'dev', '-H', '127.0.0.1', '-p', process.env.PORT],
+      end,
+    ),
+  ]
+  ends.later(() => stopServices(children))
+})

@@ -1,6 +1,6 @@
 // Brings a bare clone to a state that can run. Node built-ins only, as it runs before node_modules
 // exists. Every step is skipped when it is already done.
-import { spawn, spawnSync } from 'node:child_process'
+import { spawn } from 'node:child_process'
 import { createHash, randomBytes } from 'node:crypto'
 import { existsSync, mkdirSync, readdirSync, readFileSync, statSync, writeFileSync } from 'node:fs'
 import { createServer } from 'node:net'
@@ -15,11 +15,45 @@ const began = Date.now()
 export const say = (words) =>
   console.log(`[${((Date.now() - began) / 1000).toFixed(1).padStart(6)} s] ${words}`)
 
+let current = null
+let stopping = false
+
+/**
+ * Runs a command to its end and answers how it ended; Ctrl-C is heard meanwhile. It has a group of its
+ * own, so that what it started itself can be ended with it.
+ */
+export async function call(command, args, options = {}) {
+  if (stopping) throw new Error('told to stop')
+  const child = spawn(command, args, { stdio: 'inherit', cwd: root, detached: true, ...options })
+  current = child
+  try {
+    return await new Promise((done, lost) => {
+      child.once('error', lost).once('exit', (status, signal) => done({ status, signal }))
+    })
+  } finally {
+    current = null
+  }
+}
+
 /** Runs a command to its end; throws when it fails. */
-export function run(command, args, options = {}) {
-  const done = spawnSync(command, args, { stdio: 'inherit', cwd: root, ...options })
-  if (done.status !== 0)
-    throw new Error(`${command} ${args.join(' ')} ended with ${done.status ?? done.signal}`)
+export async function run(command, args, options = {}) {
+  const { status, signal } = await call(command, args, options)
+  if (status !== 0) throw new Error(`${command} ${args.join(' ')} ended with ${status ?? signal}`)
+}
+
+/** Ends the command that runs now, waits for it, and lets no other begin. */
+export async function stopCall() {
+  stopping = true
+  const child = current
+  if (!child?.pid || child.exitCode !== null || child.signalCode !== null) return
+  await new Promise((gone) => {
+    const late = setTimeout(() => process.kill(-child.pid, 'SIGKILL'), 8000)
+    child.once('exit', () => {
+      clearTimeout(late)
+      gone()
+    })
+    process.kill(-child.pid, 'SIGTERM')
+  })
 }
 
 const markOf = (name) => join(root, '.data', 'marks', name)
@@ -30,23 +64,23 @@ function setDone(name, key) {
 }
 
 /** Installs Debian packages; without root it says which are missing. */
-export function installPackages(...names) {
+export async function installPackages(...names) {
   if (process.getuid?.() !== 0) throw new Error(`Please install: ${names.join(' ')}`)
   say(`installing ${names.join(', ')}`)
   const options = {
     env: { ...process.env, DEBIAN_FRONTEND: 'noninteractive' },
     stdio: ['ignore', 'ignore', 'inherit'],
   }
-  run('apt-get', ['update', '-qq'], options)
-  run('apt-get', ['install', '-y', '-qq', '--no-install-recommends', ...names], options)
+  await run('apt-get', ['update', '-qq'], options)
+  await run('apt-get', ['install', '-y', '-qq', '--no-install-recommends', ...names], options)
 }
 
 /** The npm packages of package-lock.json, build tools included. */
-export function modules() {
+export async function modules() {
   const key = createHash('sha256').update(readFileSync('package-lock.json')).digest('hex')
   if (existsSync('node_modules/next/package.json') && isDone('modules', key)) return
   say('npm ci')
-  run('npm', ['ci', '--include=dev', '--no-audit', '--no-fund'], {
+  await run('npm', ['ci', '--include=dev', '--no-audit', '--no-fund'], {
     env: { ...process.env, NODE_ENV: 'development' },
   })
   setDone('modules', key)
@@ -81,7 +115,7 @@ export function settings() {
   process.env.NEXT_TELEMETRY_DISABLED = '1'
 }
 
-/** Starts the project's own PostgreSQL and sets the addresses; answers whether this call started it. */
+/** Starts the project's own PostgreSQL and sets the addresses; answers them. */
 export async function database(databaseName) {
   const { startDatabase } = await import('./db.mjs')
   const db = await startDatabase({ databaseName })
@@ -94,9 +128,9 @@ export async function database(databaseName) {
 }
 
 /** Tables to the newest migration and the demo shops, both idempotent. */
-export function fillDatabase() {
-  run('node_modules/.bin/tsx', ['scripts/migrate.ts'])
-  run('node_modules/.bin/tsx', ['scripts/seed.ts'])
+export async function fillDatabase() {
+  await run('node_modules/.bin/tsx', ['scripts/migrate.ts'])
+  await run('node_modules/.bin/tsx', ['scripts/seed.ts'])
 }
 
 const SOURCES = [
@@ -132,14 +166,14 @@ function sourceKey() {
 }
 
 /** The production build, made again only when a source file differs. */
-export function build() {
+export async function build() {
   const key = sourceKey()
   if (existsSync('.next/BUILD_ID') && existsSync('public/sw.js') && isDone('build', key)) {
     say('build is current')
     return
   }
   say('building')
-  run(process.execPath, ['scripts/build.mjs'])
+  await run(process.execPath, ['scripts/build.mjs'])
   setDone('build', key)
 }
 
@@ -166,4 +200,26 @@ export function service(command, args, onExit, env = {}) {
   })
   child.on('exit', (code, signal) => onExit(code, signal))
   return child
+}
+
+/** Ends long-running children and waits for them; those that stay are killed after 8 seconds. */
+export async function stopServices(children) {
+  const gone = children.map(
+    (child) =>
+      new Promise((done) => {
+        if (child.exitCode !== null || child.signalCode !== null) done()
+        else child.once('exit', done).kill('SIGTERM')
+      }),
+  )
+  const late = setTimeout(() => {
+    for (const child of children) child.kill('SIGKILL')
+  }, 8000)
+  await Promise.all(gone)
+  clearTimeout(late)
+}
+
+/** This process needs the database no more; the last one that does stops the server. */
+export async function leaveDatabase() {
+  const { leaveDatabase: leave } = await import('./db.mjs')
+  await leave()
 }

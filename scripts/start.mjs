@@ -2,17 +2,21 @@
 // migrates, seeds the demo shops, builds and serves. Ctrl-C stops all it started; data stays.
 import { mkdirSync } from 'node:fs'
 import { join } from 'node:path'
+import { ending } from './ending.mjs'
 import {
   build,
   database,
   fillDatabase,
   freePort,
   isFree,
+  leaveDatabase,
   modules,
   root,
   say,
   service,
   settings,
+  stopCall,
+  stopServices,
 } from './setup.mjs'
 
 settings()
@@ -23,69 +27,63 @@ if (!(await isFree(port))) {
   )
   process.exit(1)
 }
-modules()
-const db = await database('farbench')
-fillDatabase()
-build()
 
-const mailPort = await freePort(Number(process.env.MAIL_PORT ?? 2525))
-process.env.MAIL_PORT = String(mailPort)
-process.env.MAIL_URL ??= `smtp://127.0.0.1:${mailPort}`
-process.env.FILES_DIR ??= join(root, '.data', 'files')
-mkdirSync(process.env.FILES_DIR, { recursive: true })
-
+const ends = ending({ onSignal: 0 })
 const children = []
-let stopping = false
-async function stop(code) {
-  if (stopping) return
-  stopping = true
-  const gone = children.map(
-    (child) =>
-      new Promise((done) => {
-        if (child.exitCode !== null || child.signalCode !== null) done()
-        else child.once('exit', done).kill('SIGTERM')
-      }),
-  )
-  const late = setTimeout(() => {
-    for (const child of children) child.kill('SIGKILL')
-  }, 8000)
-  await Promise.all(gone)
-  clearTimeout(late)
-  if (db.started) {
-    const { stopDatabase } = await import('./db.mjs')
-    await stopDatabase()
-  }
-  process.exit(code)
-}
 const ended = (name) => (code) => {
-  if (stopping) return
+  if (ends.begun) return
   console.error(`${name} ended with ${code}; stopping the rest`)
-  void stop(1)
+  void ends.end(1)
 }
-for (const signal of ['SIGINT', 'SIGTERM']) process.on(signal, () => void stop(0))
 
-children.push(service(process.execPath, ['scripts/fakes/mail.mjs'], ended('mail')))
-children.push(service('node_modules/.bin/tsx', ['scripts/work.ts'], ended('work')))
-children.push(
-  service(
-    process.execPath,
-    ['node_modules/next/dist/bin/next', 'start', '-H', '127.0.0.1', '-p', String(port)],
-    ended('server'),
-    { NODE_ENV: 'production' },
-  ),
-)
+async function prepare() {
+  ends.later(stopCall)
+  await modules()
+  ends.later(leaveDatabase)
+  await database('farbench')
+  ends.later(stopCall)
+  await fillDatabase()
+  await build()
+  const mailPort = await freePort(Number(process.env.MAIL_PORT ?? 2525))
+  process.env.MAIL_PORT = String(mailPort)
+  process.env.MAIL_URL ??= `smtp://127.0.0.1:${mailPort}`
+  process.env.FILES_DIR ??= join(root, '.data', 'files')
+  mkdirSync(process.env.FILES_DIR, { recursive: true })
+}
 
-const address = `http://127.0.0.1:${port}`
-for (let tries = 0; !stopping; tries++) {
-  const up = await fetch(`${address}/api/health`).then(
-    (answer) => answer.ok,
-    () => false,
+function serve() {
+  if (ends.begun) return
+  ends.later(() => stopServices(children))
+  children.push(service(process.execPath, ['scripts/fakes/mail.mjs'], ended('mail')))
+  children.push(service('node_modules/.bin/tsx', ['scripts/work.ts'], ended('work')))
+  children.push(
+    service(
+      process.execPath,
+      ['node_modules/next/dist/bin/next', 'start', '-H', '127.0.0.1', '-p', String(port)],
+      ended('server'),
+      { NODE_ENV: 'production' },
+    ),
   )
-  if (up) break
-  if (tries > 300) await stop(1)
-  await new Promise((wait) => setTimeout(wait, 100))
 }
-if (!stopping) {
+
+async function waitUntilUp(address) {
+  for (let tries = 0; !ends.begun; tries++) {
+    const up = await fetch(`${address}/api/health`).then(
+      (answer) => answer.ok,
+      () => false,
+    )
+    if (up) return
+    if (tries > 300) throw new Error(`No answer from ${address}/api/health`)
+    await new Promise((wait) => setTimeout(wait, 100))
+  }
+}
+
+await ends.around(async () => {
+  await prepare()
+  serve()
+  const address = `http://127.0.0.1:${port}`
+  await waitUntilUp(address)
+  if (ends.begun) return
   say('ready')
   console.log(`
   Farbench is at ${address}
@@ -99,4 +97,4 @@ if (!stopping) {
   Mail sent by the demo shop is kept in .data/mail. Everything in the demo is invented.
   Ctrl-C stops all of it; the data stays.
 `)
-}
+})

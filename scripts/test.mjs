@@ -1,17 +1,20 @@
 // npm test: does its own set-up and runs every check and test; `npm test -- check|unit|e2e` runs one part.
 // The last line is the sum over all runners: `N passed, N failed`.
-import { spawnSync } from 'node:child_process'
 import { existsSync, mkdirSync, readFileSync, rmSync } from 'node:fs'
 import { join } from 'node:path'
+import { ending } from './ending.mjs'
 import {
   build,
+  call,
   database,
   fillDatabase,
   installPackages,
+  leaveDatabase,
   modules,
   root,
   say,
   settings,
+  stopCall,
 } from './setup.mjs'
 
 const only = process.argv[2]
@@ -21,21 +24,39 @@ const results = join(root, '.data', 'results')
 rmSync(results, { recursive: true, force: true })
 mkdirSync(results, { recursive: true })
 
-settings()
-modules()
-const db = await database('farbench_test')
+const ends = ending({
+  onSignal: 1,
+  last: (code) => {
+    if (code !== 0 && sum.failed === 0) sum.failed = 1
+    console.log(`${sum.passed} passed, ${sum.failed} failed`)
+    return code || (sum.failed === 0 && sum.passed > 0 ? 0 : 1)
+  },
+})
+
+/** Makes ready what tests need; one that fails counts as one failure, and its tests do not run. */
+async function ready(name, prepare) {
+  try {
+    await prepare()
+    return !ends.begun
+  } catch (problem) {
+    if (!ends.begun) {
+      console.error(`${name}: ${problem.stack}`)
+      sum.failed += 1
+    }
+    return false
+  }
+}
 
 /** Runs one runner; a runner that dies without a result counts as one failure. */
-function runner(name, command, args, count, env = {}) {
+async function runner(name, command, args, count, env = {}) {
+  if (ends.begun) return
   say(name)
-  const done = spawnSync(command, args, {
-    stdio: 'inherit',
-    cwd: root,
-    env: { ...process.env, ...env },
-  })
+  let done = { status: null }
   let counted = { passed: 0, failed: 0 }
   try {
-    counted = count(done)
+    done = await call(command, args, { env: { ...process.env, ...env } })
+    if (ends.begun) return
+    counted = count()
   } catch (problem) {
     console.error(`${name}: no result (${problem.message})`)
   }
@@ -46,9 +67,9 @@ function runner(name, command, args, count, env = {}) {
 }
 
 /** Browser tests begin with the demo shops alone, whatever an earlier run left. */
-async function dropDatabase(name) {
+async function dropDatabase(adminUrl, name) {
   const { default: pg } = await import('pg')
-  const admin = new pg.Client(db.adminUrl)
+  const admin = new pg.Client(adminUrl)
   await admin.connect()
   await admin.query(`drop database if exists ${name} with (force)`)
   await admin.end()
@@ -56,51 +77,50 @@ async function dropDatabase(name) {
 
 const readJson = (file) => JSON.parse(readFileSync(join(results, file), 'utf8'))
 
-if (wants('check'))
-  runner('check', process.execPath, ['scripts/check.mjs'], () => readJson('check.json'))
-
-if (wants('unit'))
-  runner(
-    'unit, standards, database, sync',
-    join('node_modules', '.bin', 'vitest'),
-    [
-      'run',
-      '--reporter=default',
-      '--reporter=json',
-      `--outputFile.json=${join(results, 'vitest.json')}`,
-    ],
-    () => {
-      const report = readJson('vitest.json')
-      return {
-        passed: report.numPassedTests,
-        failed:
-          report.numFailedTests +
-          (report.numFailedTestSuites > 0 && report.numFailedTests === 0 ? 1 : 0),
-      }
-    },
-  )
-
-if (wants('e2e')) {
-  if (!existsSync('/usr/bin/chromium')) installPackages('chromium')
-  build()
-  await dropDatabase('farbench_e2e')
-  await database('farbench_e2e')
-  fillDatabase()
-  runner(
-    'end to end',
-    join('node_modules', '.bin', 'playwright'),
-    ['test'],
-    () => {
-      const { stats } = readJson('e2e.json')
-      return { passed: stats.expected, failed: stats.unexpected + stats.flaky }
-    },
-    { NODE_ENV: 'test' },
-  )
+async function checks() {
+  await runner('check', process.execPath, ['scripts/check.mjs'], () => readJson('check.json'))
 }
 
-if (db.started) {
-  const { stopDatabase } = await import('./db.mjs')
-  await stopDatabase()
+async function units() {
+  const out = join(results, 'vitest.json')
+  const reporters = ['--reporter=default', '--reporter=json', `--outputFile.json=${out}`]
+  const vitest = join('node_modules', '.bin', 'vitest')
+  await runner('unit, standards, database, sync', vitest, ['run', ...reporters], () => {
+    const { numPassedTests, numFailedTests, numFailedTestSuites } = readJson('vitest.json')
+    const lost = numFailedTestSuites > 0 && numFailedTests === 0 ? 1 : 0
+    return { passed: numPassedTests, failed: numFailedTests + lost }
+  })
 }
-console.log(`${sum.passed} passed, ${sum.failed} failed`)
-process.exit(sum.failed === 0 && sum.passed > 0 ? 0 : 1)
+
+async function endToEnd(adminUrl) {
+  const isReady = await ready('set-up of the browser tests', async () => {
+    if (!existsSync('/usr/bin/chromium')) await installPackages('chromium')
+    await build()
+    await dropDatabase(adminUrl, 'farbench_e2e')
+    await database('farbench_e2e')
+    await fillDatabase()
+  })
+  if (!isReady) return
+  const count = () => {
+    const { stats } = readJson('e2e.json')
+    return { passed: stats.expected, failed: stats.unexpected + stats.flaky }
+  }
+  const playwright = join('node_modules', '.bin', 'playwright')
+  await runner('end to end', playwright, ['test'], count, { NODE_ENV: 'test' })
+}
+
+await ends.around(async () => {
+  let adminUrl = ''
+  const isReady = await ready('set-up', async () => {
+    settings()
+    ends.later(stopCall)
+    await modules()
+    ends.later(leaveDatabase)
+    ;({ adminUrl } = await database('farbench_test'))
+    ends.later(stopCall)
+  })
+  if (isReady && wants('check')) await checks()
+  if (isReady && wants('unit')) await units()
+  if (isReady && wants('e2e')) await endToEnd(adminUrl)
+  await ends.end(0)
+})

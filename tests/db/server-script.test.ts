@@ -52,7 +52,7 @@ const postmaster = () =>
 beforeAll(async () => {
   clone = mkdtempSync(join(tmpdir(), 'farbench clone '))
   mkdirSync(join(clone, 'scripts'))
-  for (const file of ['db.mjs', 'db-lock.mjs', 'db-roles.mjs']) {
+  for (const file of ['db.mjs', 'db-lock.mjs', 'db-roles.mjs', 'db-users.mjs']) {
     copyFileSync(resolve('scripts', file), join(clone, 'scripts', file))
   }
   const { adminUrl } = start()
