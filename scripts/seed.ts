@@ -1,10 +1,9 @@
-// Fills the demo shops: idempotent, and what people changed since is left alone. Runs as
-// farbench_owner with the shop set, as row-level security binds the owner, too. Only rows that are new
-// or differ are written, so a second run takes no change numbers.
+// Fills the demo shops with what is missing: what is there is left alone, whoever changed it, and a
+// second run takes no change numbers. `npm run seed -- --passwords` sets the demo people's passwords
+// anew. Runs as farbench_owner with the shop set, as row-level security binds the owner, too.
 import { existsSync, readFileSync } from 'node:fs'
 import { resolve } from 'node:path'
 import { fileURLToPath } from 'node:url'
-import canonicalize from 'canonicalize'
 import { asShopOn, type Db, openDb, type ShopTx } from '@/db/client'
 import { BOOK_ITEMS } from '@/db/codebook/book'
 import { DEMO_MODELS } from '@/db/codebook/demo-models'
@@ -44,11 +43,20 @@ import {
   UNITS,
 } from './demo-shop'
 
-/** Seeds both demo shops. Every demo person gets `password`. */
-export async function seedDatabase(ownerUrl: string, password: string): Promise<void> {
+type Seeding = { password: string; anew: boolean }
+
+/**
+ * Seeds both demo shops. A demo person without a password gets `password`; with `anew` every one does.
+ * Answers false when it is not the password of the first person of a shop, who has one of their own.
+ */
+export async function seedDatabase(
+  ownerUrl: string,
+  password: string,
+  { anew = false } = {},
+): Promise<boolean> {
   const db = openDb(ownerUrl, 2)
   try {
-    await seedShop(db, SHOP, PEOPLE, password)
+    const fits = await seedShop(db, SHOP, PEOPLE, { password, anew })
     await asShopOn(db, SHOP.id, async (tx) => {
       const changes = [
         ...(await seedModels(tx)),
@@ -60,24 +68,25 @@ export async function seedDatabase(ownerUrl: string, password: string): Promise<
       await takeChanges(tx, changes)
       await seedBooking(tx)
     })
-    await seedShop(db, OTHER_SHOP, OTHER_PEOPLE, password)
+    const fitsOther = await seedShop(db, OTHER_SHOP, OTHER_PEOPLE, { password, anew })
     await asShopOn(db, OTHER_SHOP.id, async (tx) => {
       await takeChanges(tx, [...(await seedBook(tx)), ...(await seedStranger(tx))])
     })
+    return fits && fitsOther
   } finally {
     await db.destroy()
   }
 }
 
 /** The shop with its people. Hashes are made outside any transaction, as each takes a third of a second. */
-async function seedShop(db: Db, shop: Shop, people: DemoPerson[], password: string): Promise<void> {
-  const first = people[0]
+async function seedShop(db: Db, shop: Shop, people: DemoPerson[], seeding: Seeding) {
+  const { password, anew } = seeding
   const known = await asShopOn(db, shop.id, (tx) =>
-    first ? passwordHashOf(tx, first.id) : Promise.resolve(undefined),
+    Promise.all(people.map(({ id }) => passwordHashOf(tx, id))),
   )
-  const isCurrent = known !== undefined && (await verifyPassword(password, known))
   const hashes = new Map<string, string>()
-  if (!isCurrent) for (const { id } of people) hashes.set(id, await hashPassword(password))
+  for (const [i, { id }] of people.entries())
+    if (anew || known[i] === undefined) hashes.set(id, await hashPassword(password))
   await asShopOn(db, shop.id, async (tx) => {
     const changes: Change[] = []
     if (!(await findShop(tx))) {
@@ -94,14 +103,16 @@ async function seedShop(db: Db, shop: Shop, people: DemoPerson[], password: stri
     for (const [personId, passwordHash] of hashes) await setPassword(tx, { personId, passwordHash })
     await takeChanges(tx, changes)
   })
+  const [first] = known
+  return anew || first === undefined || (await verifyPassword(password, first))
 }
 
-/** New demo models, and those whose shipped record changed. */
+/** Demo models that are not there; one that is may hold figures a person has put right. */
 async function seedModels(tx: ShopTx): Promise<Change[]> {
-  const present = new Map((await listModels(tx)).map((model) => [model.id, canonicalize(model)]))
-  const wanted = DEMO_MODELS.filter((model) => present.get(model.id) !== canonicalize(model))
-  for (const model of wanted) await saveModel(tx, model)
-  return wanted.map(({ id }) => ({ entity: 'machineModel', id, jobId: null }))
+  const present = new Set((await listModels(tx)).map(({ id }) => id))
+  const missing = DEMO_MODELS.filter(({ id }) => !present.has(id))
+  for (const model of missing) await saveModel(tx, model)
+  return missing.map(({ id }) => ({ entity: 'machineModel', id, jobId: null }))
 }
 
 async function seedFleet(tx: ShopTx): Promise<Change[]> {
@@ -214,6 +225,11 @@ if (process.argv[1] && resolve(process.argv[1]) === fileURLToPath(import.meta.ur
   const { startDatabase } = await import('./db.mjs')
   const url = process.env.DATABASE_OWNER_URL ?? (await startDatabase()).ownerUrl
   const began = performance.now()
-  await seedDatabase(url, demoPassword())
+  const anew = process.argv.includes('--passwords')
+  const fits = await seedDatabase(url, demoPassword(), { anew })
+  if (!fits)
+    console.log(
+      'DEMO_PASSWORD is not the password of every demo person: somebody changed theirs, or .env.local was lost. `npm run seed -- --passwords` sets all of them anew.',
+    )
   console.log(`Demo shops are in place (${((performance.now() - began) / 1000).toFixed(1)} s)`)
 }

@@ -93,7 +93,7 @@ await ends.around(async () => {
   parts desk      ${address}/desk/parts  parts@demo.invalid
   another shop    ${address}/desk        stranger@demo.invalid
 
-  Password of every demo person: ${process.env.DEMO_PASSWORD}
+  Password of every demo person who has not changed it: ${process.env.DEMO_PASSWORD}
   Mail sent by the demo shop is kept in .data/mail. Everything in the demo is invented.
   Ctrl-C stops all of it; the data stays.
 `)

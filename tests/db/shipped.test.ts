@@ -3,6 +3,7 @@ import { sql } from 'kysely'
 import { afterAll, beforeAll, describe, expect, it } from 'vitest'
 import { asShop, withNoShop } from '@/db/client'
 import { BOOK_ITEMS } from '@/db/codebook/book'
+import { DEMO_MODELS } from '@/db/codebook/demo-models'
 import { changesAfter } from '@/db/queries/change-log'
 import { takeChanges } from '@/db/queries/changes'
 import {
@@ -12,9 +13,11 @@ import {
   publishedBook,
   publishedVersion,
 } from '@/db/queries/code-book'
+import { listModels, saveModel } from '@/db/queries/machines'
+import { setPassword } from '@/db/queries/people'
 import { findSignIn } from '@/db/queries/sign-in'
 import { enqueueWork } from '@/db/queries/work'
-import { verifyPassword } from '@/lib/auth/password'
+import { hashPassword, verifyPassword } from '@/lib/auth/password'
 import { demoId } from '../../scripts/demo-shop'
 import { seedDatabase } from '../../scripts/seed'
 import { openTestDatabase, TEST_PASSWORD, type TestDatabase } from '../support/database'
@@ -146,4 +149,38 @@ describe('[D10] the demo shops', () => {
       'shop',
     ])
   })
+
+  it('[D10] leaves passwords and models that people changed, and gives what is missing', async () => {
+    const [mechanic, guide] = await people('mechanic', 'guide')
+    const own = await hashPassword('my own password')
+    const model = { ...DEMO_MODELS[0]!, model: 'Renamed by a person' }
+    await asShop(demoId('1'), async (tx) => {
+      await setPassword(tx, { personId: mechanic!.personId, passwordHash: own })
+      await saveModel(tx, model)
+      await takeChanges(tx, [{ entity: 'machineModel', id: model.id, jobId: null }])
+    })
+    await test.admin.deleteFrom('credential').where('personId', '=', guide!.personId).execute()
+    await seedDatabase(test.ownerUrl, 'another password')
+    const [after, given, dispatcher] = await people('mechanic', 'guide', 'dispatcher')
+    expect(after?.passwordHash).toBe(own)
+    expect(await verifyPassword('another password', given?.passwordHash ?? '')).toBe(true)
+    expect(await verifyPassword(TEST_PASSWORD, dispatcher?.passwordHash ?? '')).toBe(true)
+    const models = await asShop(demoId('1'), (tx) => listModels(tx))
+    expect(models.find(({ id }) => id === model.id)).toEqual(model)
+  }, 60_000)
+
+  it('[D10] says when the password given is not that of a shop, and sets it anew on asking', async () => {
+    expect(await seedDatabase(test.ownerUrl, 'another password')).toBe(false)
+    expect(await seedDatabase(test.ownerUrl, 'third password', { anew: true })).toBe(true)
+    for (const found of await people('mechanic', 'dispatcher', 'stranger'))
+      expect(await verifyPassword('third password', found?.passwordHash ?? '')).toBe(true)
+  }, 60_000)
 })
+
+const people = async (...mailboxes: string[]) =>
+  await Promise.all(
+    mailboxes.map(async (mailbox) => {
+      const [found] = await withNoShop((tx) => findSignIn(tx, `${mailbox}@demo.invalid`))
+      return found
+    }),
+  )
