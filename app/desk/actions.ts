@@ -1,14 +1,19 @@
 'use server'
 
-import type { AssignAction } from '@/components/desk/desk-actions'
+import type { AssignAction, CloseAction, ReopenAction } from '@/components/desk/desk-actions'
 import { assignForm } from '@/components/desk/hands/assign.schema'
+import { closeForm, reopenForm } from '@/components/desk/job/closing.schema'
+import { moveJobAtDesk } from '@/db/queries/desk-closing'
 import { changeAssignment } from '@/db/queries/desk-writes'
 import { actorAction } from '@/lib/auth/actor-action'
+import { ENGINE_VERSION } from '@/lib/diag/version'
 import { fail } from '@/lib/model/result'
 import { systemClock } from '@/lib/ports/clock'
 import { uuidv7 } from '@/lib/ports/ids'
+import { closingMove, reopeningMove } from '@/lib/shop/closing'
 import { stateAfterAssigning } from '@/lib/shop/desk-moves'
 import { may } from '@/lib/shop/permissions'
+import { leavesFieldAt } from '@/lib/shop/scope'
 
 type Answer = ReturnType<AssignAction>
 
@@ -18,5 +23,33 @@ export const assignPerson = actorAction(assignForm, (actor, input): Answer => {
   const stamp = { auditId: uuidv7.next(), at: new Date(systemClock.now()).toISOString() }
   return changeAssignment(actor, { ...input, stamp }, (job, person) =>
     stateAfterAssigning(job, person, input.assigned),
+  )
+})
+
+const stampNow = () => {
+  const at = new Date(systemClock.now()).toISOString()
+  const stamp = {
+    auditId: uuidv7.next(),
+    entryId: uuidv7.next(),
+    at,
+    engineVersion: ENGINE_VERSION,
+  }
+  return { stamp, leaveFieldAt: leavesFieldAt(at) }
+}
+
+/** Closes a job with its cause and how sure that is (rules R13, R25). */
+export const closeJobAtDesk = actorAction(closeForm, (actor, input): ReturnType<CloseAction> => {
+  const { jobId, from, closing } = input
+  const fault = closing.cause?.kind === 'fault' ? closing.cause.fault : null
+  return moveJobAtDesk(actor, { jobId, fault, ...stampNow() }, (job, faultName) =>
+    closingMove({ actor, job, from }, closing, faultName),
+  )
+})
+
+/** Opens a closed job again (rule R13); the closing stays in the log and the trail. */
+export const reopenJobAtDesk = actorAction(reopenForm, (actor, input): ReturnType<ReopenAction> => {
+  const { jobId, from, reason } = input
+  return moveJobAtDesk(actor, { jobId, fault: null, ...stampNow() }, (job) =>
+    reopeningMove({ actor, job, from }, reason),
   )
 })

@@ -1,6 +1,8 @@
 import type { Result } from '@/lib/model/result'
+import type { ClosingProblem } from '@/lib/shop/closing'
 import type { AssignProblem, LineProblem } from '@/lib/shop/desk-moves'
 import type { AssignForm } from './hands/assign.schema'
+import type { CloseForm, ReopenForm } from './job/closing.schema'
 import type { LineMoveForm } from './parts/line-move.schema'
 
 /** What every desk action may answer besides its own refusals. */
@@ -11,3 +13,13 @@ export type AssignAction = (form: AssignForm) => Promise<Result<null, DeskProble
 export type MoveLineAction = (
   form: LineMoveForm,
 ) => Promise<Result<null, DeskProblem | LineProblem>>
+export type CloseAction = (form: CloseForm) => Promise<Result<null, DeskProblem | ClosingProblem>>
+export type ReopenAction = (form: ReopenForm) => Promise<Result<null, DeskProblem | ClosingProblem>>
+
+/** All that can be done on the board; its page hands them in as one. */
+export type BoardActions = {
+  assign: AssignAction
+  move: MoveLineAction
+  close: CloseAction
+  reopen: ReopenAction
+}

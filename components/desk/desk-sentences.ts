@@ -1,5 +1,7 @@
 import { AppError } from '@/lib/model/result'
+import type { ClosingProblem } from '@/lib/shop/closing'
 import type { AssignProblem, LineProblem } from '@/lib/shop/desk-moves'
+import { JOB_STATE_WORDS } from '../field/words'
 import { LINE_STATE_WORDS } from '../parts/part-words'
 import type { DeskProblem } from './desk-actions'
 
@@ -18,7 +20,12 @@ export function readSentence(error: Error): string {
   return READ[kind] ?? 'The answer of the shop’s server could not be read. Load the page again.'
 }
 
-export type ActedProblem = DeskProblem | AssignProblem | LineProblem | { kind: 'trouble' }
+export type ActedProblem =
+  | DeskProblem
+  | AssignProblem
+  | LineProblem
+  | ClosingProblem
+  | { kind: 'trouble' }
 
 /** The sentence for a refused or failed action. */
 export function actedSentence(problem: ActedProblem): string {
@@ -39,6 +46,12 @@ export function actedSentence(problem: ActedProblem): string {
       return `Somebody moved it meanwhile: it is ${LINE_STATE_WORDS[problem.now].toLowerCase()} now. Look again, then choose.`
     case 'illegalMove':
       return `From ${LINE_STATE_WORDS[problem.now].toLowerCase()} it cannot go there. Nothing was changed.`
+    case 'jobMovedMeanwhile':
+      return `Somebody moved the job meanwhile: it is ${JOB_STATE_WORDS[problem.now].toLowerCase()} now. Look again, then choose.`
+    case 'causeMissing':
+      return 'Name the cause, or choose unknown or no fault found.'
+    case 'causeTooMuch':
+      return 'With this grade no cause is named. Nothing was changed.'
     case 'trouble':
       return 'No answer from the shop, so it is not sure whether it was done. Look again in a moment.'
   }

@@ -52,6 +52,24 @@ export async function publishedBook(tx: ShopTx, version?: number): Promise<CodeB
   return { version: found.version, hash, publishedAt, items: rows.map((row) => row.body) }
 }
 
+/** Answers an item of the newest version, and that version's number; undefined when it is not in it. */
+export async function bookItem(
+  tx: ShopTx,
+  { kind, id }: { kind: CodeBookItem['kind']; id: string },
+): Promise<{ version: number; item: CodeBookItem } | undefined> {
+  const newest = await publishedVersion(tx)
+  if (!newest) return undefined
+  const row = await tx
+    .selectFrom('codeBookItem')
+    .select('body')
+    .where('shopId', '=', tx.shopId)
+    .where('version', '=', newest.version)
+    .where('kind', '=', kind)
+    .where('itemId', '=', id)
+    .executeTakeFirst()
+  return row && { version: newest.version, item: row.body }
+}
+
 /** Answers the ids of checks and swaps that the newest version marks safe for guides. */
 export async function guideSafeIds(tx: ShopTx): Promise<Set<string>> {
   const { rows } = await sql<{ itemId: string }>`

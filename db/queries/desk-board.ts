@@ -57,8 +57,7 @@ export function boardRows(tx: ShopTx, whose: Whose) {
       'machineModel.model',
       assigned().as('assigned'),
       entryCount().as('entries'),
-      sql<string | null>`(select max(e.received_at) from log_entry e
-        where e.shop_id = job.shop_id and e.job_id = job.id)`.as('heardAt'),
+      heardAt().as('heardAt'),
       photosMissing().as('photosMissing'),
       partsOpen().as('partsOpen'),
     ])
@@ -88,6 +87,11 @@ const assigned = () =>
 const entryCount = () =>
   sql<number>`(select count(*)::int from log_entry e
     where e.shop_id = job.shop_id and e.job_id = job.id)`
+
+/** When the last entry from the field came in; lines written at the desk (desk-closing.ts) are none. */
+const heardAt = () =>
+  sql<string | null>`(select max(e.received_at) from log_entry e
+    where e.shop_id = job.shop_id and e.job_id = job.id and e.device_id <> e.author_id)`
 
 /** Photos that living or struck entries name and whose bytes have not come. */
 const photosMissing = () =>
@@ -127,6 +131,7 @@ export function toBoardJob(row: BoardRow): BoardJob {
       assignedTo: row.assigned,
     },
     machineWords: machineWords(row),
+    closedAt: row.closedAt,
     entries: row.entries,
     heardAt: row.heardAt,
     photosMissing: row.photosMissing,

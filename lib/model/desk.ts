@@ -19,8 +19,10 @@ export const boardJob = z.object({
   job,
   /** The machine in words: maker, model and unit number, as far as known. */
   machineWords: z.string(),
+  /** Server time of closing; null while it is not closed. */
+  closedAt: z.nullable(z.string()),
   entries: z.int(),
-  /** Server time at which the last entry came in. */
+  /** Server time at which the last entry from the field came in. */
   heardAt: z.nullable(z.string()),
   /** Photos that entries name and whose bytes are not here. */
   photosMissing: z.int(),

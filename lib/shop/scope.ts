@@ -1,10 +1,17 @@
 import type { Id } from '@/lib/model/id'
 import type { JobState } from '@/lib/model/job'
 import type { Actor } from '@/lib/model/person'
+import type { Instant } from '@/lib/model/time'
 import { may } from './permissions'
 
 /** Days after which a closed job leaves the phones (R22). */
 export const FIELD_DAYS = 60
+
+const DAY_MS = 24 * 3_600_000
+
+/** When to look whether a job closed at `at` leaves the phones: a day after it is due. */
+export const leavesFieldAt = (at: Instant): Instant =>
+  new Date(Date.parse(at) + (FIELD_DAYS + 1) * DAY_MS).toISOString()
 
 /** What decides whose job it is. */
 export type JobHands = { state: JobState; openedBy: Id; assignedTo: readonly Id[] }

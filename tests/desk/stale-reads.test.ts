@@ -32,6 +32,7 @@ const row = (id: string, more: Partial<BoardJob> = {}): BoardJob =>
     job: { id, number: `J-${id}`, state: 'open', complaint: { words: 'Dies' } },
     machineWords: 'Unit 14',
     entries: 2,
+    closedAt: null,
     heardAt: null,
     photosMissing: 0,
     partsOpen: 0,

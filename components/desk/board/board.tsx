@@ -8,11 +8,12 @@ import type { BoardJob, DeskBoard, DeskJob } from '@/lib/model/desk'
 import { byExposure } from '@/lib/shop/exposure'
 import { may } from '@/lib/shop/permissions'
 import { DaylightPanel } from '../daylight/daylight-panel'
-import type { AssignAction, MoveLineAction } from '../desk-actions'
+import type { BoardActions } from '../desk-actions'
 import { useDesk } from '../desk-context'
 import { deskPaths, usePickedJob, useSoftJobLinks } from '../desk-path'
 import { readSentence } from '../desk-sentences'
 import { HandsPanel } from '../hands/hands-panel'
+import { ClosingPanel } from '../job/closing-panel'
 import { PickedJob } from '../job/picked-job'
 import { useJobCase } from '../job/use-job-case'
 import { PartsAsked } from '../parts/parts-asked'
@@ -23,10 +24,10 @@ import { ClosedJobs } from './closed-jobs'
 import { JobsWire } from './jobs-wire'
 import { useFresh } from './use-fresh'
 
-type Props = { assign: AssignAction; move: MoveLineAction }
+type Props = { actions: BoardActions }
 
 /** The board: jobs on the wire, the picked job, and what is to be done about it. */
-export function Board(actions: Props) {
+export function Board({ actions }: Props) {
   const { actor } = useDesk()
   const whose = may(actor.roles, 'job.seeAll') ? 'all' : 'own'
   const board = useBoard(whose)
@@ -81,7 +82,7 @@ type PickedProps = {
   found: DeskJob | undefined
   error: Error | null
   picked: string | null
-  actions: Props
+  actions: BoardActions
 }
 
 function Picked({ found, error, picked, actions }: PickedProps) {
@@ -97,12 +98,19 @@ function Picked({ found, error, picked, actions }: PickedProps) {
         {picked !== null && !found && !error ? <p>Reading the job.</p> : null}
         {found ? <PickedJob found={found} reckoned={reckoned} /> : null}
       </section>
-      <section className="desk-aside" aria-label="Daylight, hands and parts">
+      <section className="desk-aside" aria-label="Daylight, hands, parts and closing">
         {found ? (
           <>
             <DaylightPanel place={found.job.place} />
             <HandsPanel key={found.job.id} found={found} assign={actions.assign} />
             <PartsAsked found={found} move={actions.move} />
+            <ClosingPanel
+              key={`${found.job.id} ${found.job.state === 'closed'}`}
+              job={found.job}
+              suspects={reckoned.answer?.belief.suspects ?? []}
+              close={actions.close}
+              reopen={actions.reopen}
+            />
           </>
         ) : null}
       </section>

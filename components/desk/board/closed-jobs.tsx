@@ -12,7 +12,7 @@ export function ClosedJobs({ rows }: { rows: readonly BoardJob[] }) {
   if (rows.length === 0) return null
   return (
     <section className="mt-8">
-      <RuleEdge>Closed today</RuleEdge>
+      <RuleEdge>Closed in the last 24 hours</RuleEdge>
       <ul>
         {rows.map((row) => (
           <li key={row.job.id} className="border-b-[1.5px] border-rule">
@@ -25,7 +25,7 @@ export function ClosedJobs({ rows }: { rows: readonly BoardJob[] }) {
                 {row.job.complaint.words}
               </span>
               <span className="figures text-second text-ink2">
-                {row.heardAt ? clockTime(row.heardAt, shop.zone) : ''}
+                {row.closedAt ? clockTime(row.closedAt, shop.zone) : ''}
               </span>
             </a>
           </li>

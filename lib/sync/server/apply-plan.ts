@@ -11,12 +11,10 @@ import { enqueueWork } from '@/db/queries/work'
 import type { Id } from '@/lib/model/id'
 import type { Actor } from '@/lib/model/person'
 import type { Instant } from '@/lib/model/time'
-import { FIELD_DAYS } from '@/lib/shop/scope'
+import { leavesFieldAt } from '@/lib/shop/scope'
 import type { Effects, JobStand, Known, Outcome } from './draft'
 import type { Plan } from './plan'
 import type { ReadOp } from './read-ops'
-
-const DAY_MS = 24 * 3_600_000
 
 /** Who sends, and when it came by the server's clock. */
 export type Sender = { actor: Actor; deviceId: Id; at: Instant; newId: () => Id }
@@ -111,7 +109,7 @@ async function enqueueTasks(tx: ShopTx, effects: Effects, at: Instant): Promise<
     await enqueueWork(tx, { task: 'partRequestMail', payload: { requestId: id }, key })
   }
   const closed = effects.steps.filter((step) => step.what === 'job' && step.to === 'closed')
-  const runAt = new Date(Date.parse(at) + (FIELD_DAYS + 1) * DAY_MS).toISOString()
+  const runAt = leavesFieldAt(at)
   for (const { jobId } of closed) {
     await enqueueWork(tx, { task: 'leaveField', payload: {}, key: `leaveField:${jobId}`, runAt })
   }

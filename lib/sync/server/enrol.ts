@@ -2,6 +2,7 @@ import { asShop } from '@/db/client'
 import { appendAudit } from '@/db/queries/audit'
 import { lockShop } from '@/db/queries/changes'
 import { enrolDevice, findDevice, listDevices } from '@/db/queries/devices'
+import { peopleById } from '@/db/queries/people'
 import type { Id } from '@/lib/model/id'
 import type { Actor } from '@/lib/model/person'
 import { fail, ok, type Result } from '@/lib/model/result'
@@ -41,7 +42,10 @@ export function enrol(
     )
     if (known?.revokedAt) return fail<HttpProblem>({ kind: 'deviceRevoked' })
     if (known) return ok({ deviceId: known.id, serverTime: at })
-    const isTaken = (await findDevice(tx, request.deviceId)) !== undefined
+    // A person's own id is kept for their desk (db/queries/desk-closing.ts).
+    const isTaken =
+      (await findDevice(tx, request.deviceId)) !== undefined ||
+      (await peopleById(tx, [request.deviceId])).length > 0
     const id = isTaken ? newId() : request.deviceId
     const publicKey = { kty, crv, x, y }
     await enrolDevice(tx, {

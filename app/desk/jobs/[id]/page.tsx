@@ -1,11 +1,10 @@
 import type { Metadata } from 'next'
 import { Board } from '@/components/desk/board/board'
-import { assignPerson } from '../../actions'
-import { movePartLine } from '../../parts/actions'
+import { boardActions } from '../../board-actions'
 
 export const metadata: Metadata = { title: 'Job' }
 
 /** The same board with the job of the address picked. */
 export default function DeskJobPage() {
-  return <Board assign={assignPerson} move={movePartLine} />
+  return <Board actions={boardActions} />
 }

@@ -1,0 +1,11 @@
+import type { BoardActions } from '@/components/desk/desk-actions'
+import { assignPerson, closeJobAtDesk, reopenJobAtDesk } from './actions'
+import { movePartLine } from './parts/actions'
+
+/** Every server action of the board, for both of its pages. */
+export const boardActions: BoardActions = {
+  assign: assignPerson,
+  move: movePartLine,
+  close: closeJobAtDesk,
+  reopen: reopenJobAtDesk,
+}
