@@ -9,7 +9,7 @@ import { useDesk } from '../desk-context'
 import { whenWords } from '../desk-time'
 import { useNow } from '../use-now'
 
-/** Number, machine, last heard; people and machine beside each other (rule R2); the position. */
+/** Number, machine, last entry; people and machine beside each other (rule R2); the position. */
 export function JobFacts({ found }: { found: DeskJob }) {
   const { job } = found
   return (
@@ -43,7 +43,7 @@ function Heard({ found }: { found: DeskJob }) {
     .at(-1)
   return (
     <>
-      {last ? `Last heard ${whenWords(last, shop.zone, now)}` : 'Nothing written yet'}
+      {last ? `Last entry in at ${whenWords(last, shop.zone, now)}` : 'Nothing written yet'}
       {found.reachedAt ? `, phone reached us ${whenWords(found.reachedAt, shop.zone, now)}.` : '.'}
     </>
   )
