@@ -11,6 +11,7 @@ import { DraftSign } from '../ui/draft-sign'
 import { Field } from '../ui/field'
 import { Figure } from '../ui/figure'
 import { Key } from '../ui/key'
+import { useMayLog } from './use-may'
 import { NotSaved, useSave } from './use-save'
 
 /** What is typed for another time to leave by, kept to the keystroke (rule R8). */
@@ -33,6 +34,7 @@ export function LeaveBy({ jobId, view }: { jobId: Id; view: MeansView }) {
     const note = stamp.entry(jobId, { kind: 'note', words: `${words} ${draft.reason.trim()}` })
     if (await save([note], { clearDrafts: [key] })) choose({ ...choice, leaveBy })
   }
+  const mine = useMayLog('note')
   const locked = !ready || saving || draft.reason.trim() === ''
   return (
     <div className="grid gap-2">
@@ -47,35 +49,39 @@ export function LeaveBy({ jobId, view }: { jobId: Id; view: MeansView }) {
         )}
       </p>
       <Dusk duskMs={view.duskMs} zone={zone} />
-      <Field
-        label="Leave by"
-        hint="A time that is past today is tomorrow’s."
-        type="time"
-        figures
-        value={draft.time}
-        onChange={(time) => set({ ...draft, time })}
-      />
-      <Field
-        label="Reason, kept in the log"
-        hint="For example: lights and a second machine. Without one it stays as it is."
-        value={draft.reason}
-        onChange={(reason) => set({ ...draft, reason })}
-        maxLength={300}
-      />
-      <DraftSign kept={kept} />
-      <NotSaved problem={problem} />
-      <div className="grid grid-cols-2 gap-2">
-        <Key
-          small
-          disabled={locked || !/^\d\d:\d\d$/.test(draft.time)}
-          onClick={() => keep(nextTime(draft.time, zone, Date.parse(stamp.now())))}
-        >
-          Set the time
-        </Key>
-        <Key small disabled={locked || choice.leaveBy === null} onClick={() => keep(null)}>
-          No limit
-        </Key>
-      </div>
+      {mine && (
+        <>
+          <Field
+            label="Leave by"
+            hint="A time that is past today is tomorrow’s."
+            type="time"
+            figures
+            value={draft.time}
+            onChange={(time) => set({ ...draft, time })}
+          />
+          <Field
+            label="Reason, kept in the log"
+            hint="For example: lights and a second machine. Without one it stays as it is."
+            value={draft.reason}
+            onChange={(reason) => set({ ...draft, reason })}
+            maxLength={300}
+          />
+          <DraftSign kept={kept} />
+          <NotSaved problem={problem} />
+          <div className="grid grid-cols-2 gap-2">
+            <Key
+              small
+              disabled={locked || !/^\d\d:\d\d$/.test(draft.time)}
+              onClick={() => keep(nextTime(draft.time, zone, Date.parse(stamp.now())))}
+            >
+              Set the time
+            </Key>
+            <Key small disabled={locked || choice.leaveBy === null} onClick={() => keep(null)}>
+              No limit
+            </Key>
+          </div>
+        </>
+      )}
     </div>
   )
 }

@@ -7,6 +7,7 @@ import type { PlanView } from '../engine/use-plan'
 import { useRoute } from '../field/router'
 import { useBook } from '../store/use-book'
 import { useStamp } from '../store/use-stamp'
+import { useMay } from './use-may'
 import { useSave } from './use-save'
 
 export type Act = Pick<PlannedAction, 'type' | 'id'>
@@ -36,12 +37,13 @@ export function useActOn(jobId: Id, view: PlanView): ActOn {
   const { version } = useBook()
   const { save } = useSave()
   const stamp = useStamp()
+  const keeps = useMay('advice.keep')
   return useCallback(
     (action, reason) => {
       const { answer, input, asked } = view
       const leave = () =>
         go(proving(answer?.plan, action) ? `/field/jobs/${jobId}/proof` : hrefOf(jobId, action))
-      if (answer?.plan == null || input === null || version === null) {
+      if (!keeps || answer?.plan == null || input === null || version === null) {
         leave()
         return
       }
@@ -59,6 +61,6 @@ export function useActOn(jobId: Id, view: PlanView): ActOn {
       })
       save([{ kind: 'advice.keep', fields }]).then(leave, leave)
     },
-    [jobId, view, version, go, save, stamp],
+    [jobId, view, version, go, save, stamp, keeps],
   )
 }

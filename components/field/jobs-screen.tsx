@@ -1,6 +1,7 @@
 'use client'
 
 import { useMemo } from 'react'
+import { useMay } from '@/components/checks/use-may'
 import { useBook } from '@/components/store/use-book'
 import { useDraft } from '@/components/store/use-draft'
 import { useJobs, useMachines, useModels, useShop } from '@/components/store/use-rows'
@@ -11,7 +12,6 @@ import { KeyLink } from '@/components/ui/key'
 import { RuleEdge } from '@/components/ui/rule-edge'
 import { Screen } from '@/components/ui/screen'
 import type { Job } from '@/lib/model/job'
-import { may } from '@/lib/shop/permissions'
 import { FirstOpen } from './first-open'
 import { EMPTY_INTAKE, INTAKE_KEY } from './intake/intake-draft'
 import { jobHref } from './route'
@@ -25,7 +25,7 @@ export function JobsScreen() {
   const me = session.kind === 'ready' ? session.actor : null
   const lists = useMemo(() => split(jobs ?? [], me?.personId ?? null), [jobs, me?.personId])
   const draft = useDraft(INTAKE_KEY, EMPTY_INTAKE)
-  const opens = me !== null && may(me.roles, 'job.open')
+  const opens = useMay('job.open')
   return (
     <Screen
       title="Jobs"

@@ -84,6 +84,31 @@ export async function logEntriesById(tx: ShopTx, ids: readonly Id[]): Promise<Lo
   return (await entries(tx).where('id', 'in', ids).execute()).map(toLogRow)
 }
 
+/**
+ * Answers the entries that decide on others, in no order: those with these ids, and of these jobs every way
+ * out, every photo and whatever points back.
+ */
+export async function decidingEntries(
+  tx: ShopTx,
+  { ids, jobIds }: { ids: readonly Id[]; jobIds: readonly Id[] },
+): Promise<LogRow[]> {
+  if (ids.length === 0 && jobIds.length === 0) return []
+  const rows = await entries(tx)
+    .where(({ and, eb, or }) =>
+      or([
+        eb('id', 'in', [...ids, NO_ID]),
+        and([
+          eb('jobId', 'in', [...jobIds, NO_ID]),
+          or([eb('kind', 'in', ['wayOut', 'photo']), eb('supersedes', 'is not', null)]),
+        ]),
+      ]),
+    )
+    .execute()
+  return rows.map(toLogRow)
+}
+/** Of nobody: keeps an empty list of ids a list. */
+const NO_ID = '00000000-0000-0000-0000-000000000000'
+
 /** Answers which of these ids are entries, with the job each is of. */
 export async function jobsOfEntries(tx: ShopTx, ids: readonly Id[]): Promise<Map<Id, Id>> {
   if (ids.length === 0) return new Map()

@@ -8,6 +8,7 @@ import type { Features } from '@/lib/model/features'
 import type { Id } from '@/lib/model/id'
 import type { Job, WayOut } from '@/lib/model/job'
 import type { LogEntry } from '@/lib/model/log-entry'
+import type { Place } from '@/lib/model/place'
 import { EMPTY_AT_VOLTS } from './battery'
 import type { Suspect } from './belief'
 import { type BookIndex, SOMETHING_ELSE } from './book-index'
@@ -30,14 +31,14 @@ const LIKELY = 0.25
 /** The cause counts as known from this chance (0 to 1) on, or with a fix on record (guess). */
 const KNOWN = 0.9
 
-/** What a way out is judged from. `index` null: no code book yet, so faults and readings refuse nothing. */
+/** What a way out is judged from. What is null is not known yet, and what it would refuse is not judged. */
 export type WayOutFacts = {
   job: Pick<Job, 'people' | 'before'>
   features: Features
   /** The whole job log; superseded and corrected entries are left out here. */
   entries: readonly LogEntry[]
-  /** Most likely first, as the belief gives them. */
-  suspects: readonly Suspect[]
+  /** Most likely first, as the belief gives them; null while they are not worked out. */
+  suspects: readonly Suspect[] | null
   index: BookIndex | null
   said: readonly SaidByHand[]
 }
@@ -66,6 +67,24 @@ export function limpRefusals(facts: WayOutFacts): LimpRefusal[] {
   ]
 }
 
+/** A reason against a limp out that could not be looked into. */
+export type LimpUnjudged = 'battery' | 'cause' | 'faults'
+
+/**
+ * What the refusals could not judge, in their order: without the code book no battery reading and no fault's
+ * own record, without the belief neither the cause nor what is likely. A limp out is offered only when this
+ * and the refusals are empty, for what is not known refuses nothing (rule R10). With a fix on record cause
+ * and faults are not asked.
+ */
+export function limpUnjudged({ entries, index, suspects }: WayOutFacts): LimpUnjudged[] {
+  const fixed = living(entries).some(({ body }) => body.kind === 'fix')
+  return [
+    ...(index === null ? (['battery'] as const) : []),
+    ...(!fixed && suspects === null ? (['cause'] as const) : []),
+    ...(!fixed && (suspects === null || index === null) ? (['faults'] as const) : []),
+  ]
+}
+
 function emptyBattery(entries: readonly LogEntry[], index: BookIndex | null): LimpRefusal[] {
   const last = entries.findLast(
     ({ body }) =>
@@ -79,9 +98,11 @@ function emptyBattery(entries: readonly LogEntry[], index: BookIndex | null): Li
   return [{ kind: 'emptyBattery', ...battery }]
 }
 
-const open = (suspects: readonly Suspect[]) => suspects.filter((one) => one.ruledOutBy === null)
+const open = (suspects: readonly Suspect[] | null) =>
+  (suspects ?? []).filter((one) => one.ruledOutBy === null)
 
 function unknownCause({ features, suspects }: WayOutFacts): LimpRefusal[] {
+  if (suspects === null) return []
   const top = open(suspects)[0]
   const known = top !== undefined && top.fault !== SOMETHING_ELSE && top.chance >= KNOWN
   if (known || features.strokes === 'four') return []
@@ -125,4 +146,25 @@ function repairNotices(entries: readonly LogEntry[]): WayOutNotice[] {
     ...(run === undefined ? (['noProofRun'] as const) : []),
     ...(seen ? (['faultInProofRun'] as const) : []),
   ]
+}
+
+type Decided = LogEntry & { body: Extract<LogEntry['body'], { kind: 'wayOut' }> }
+const isDecided = (entry: LogEntry): entry is Decided => entry.body.kind === 'wayOut'
+
+/** The way out that stands: the last living decision of a log, undefined when none does (rules R2, R8). */
+export const decidedWayOut = (entries: readonly LogEntry[]): Decided | undefined =>
+  living(entries).filter(isDecided).at(-1)
+
+/**
+ * What a log lacks before its machine may stand as left behind (rule R2), the first of: a position on the
+ * job, a living photo, a living way out that leaves the machine, whose reasons tell key, tap, how secured,
+ * whose land and the day to fetch it. Null when all is there.
+ */
+export function leavingLacks(of: {
+  place: Place | null
+  entries: readonly LogEntry[]
+}): 'place' | 'photo' | 'wayOut' | null {
+  if (of.place === null) return 'place'
+  if (!living(of.entries).some(({ body }) => body.kind === 'photo')) return 'photo'
+  return decidedWayOut(of.entries)?.body.machineState === 'leftBehind' ? null : 'wayOut'
 }

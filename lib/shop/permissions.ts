@@ -1,3 +1,4 @@
+import type { Id } from '@/lib/model/id'
 import type { LogKind } from '@/lib/model/log-entry'
 import type { Role } from '@/lib/model/role'
 
@@ -8,6 +9,7 @@ import type { Role } from '@/lib/model/role'
  */
 export const ACTIONS = [
   'field.see',
+  'field.write',
   'desk.see',
   'job.open',
   'job.work',
@@ -36,6 +38,7 @@ export type Action = (typeof ACTIONS)[number]
 
 const MECHANIC: readonly Action[] = [
   'field.see',
+  'field.write',
   'desk.see',
   'job.open',
   'job.work',
@@ -51,6 +54,7 @@ const MECHANIC: readonly Action[] = [
 ]
 const GUIDE: readonly Action[] = [
   'field.see',
+  'field.write',
   'job.open',
   'job.work',
   'log.add',
@@ -121,4 +125,19 @@ export function mayLog(roles: readonly Role[], kind: LogKind, guideSafe: boolean
     if (GUIDE_SAFE_KINDS.has(kind)) return guideSafe
   }
   return DESK_KINDS.has(kind)
+}
+
+/**
+ * True when the person may take an entry out of evidence, or put another in its place: their own, or one of
+ * a kind they may write themselves. Only who does every check undoes another's correction, for that brings
+ * back what it had struck. `guideSafe` as for `mayLog`, of the entry that is struck.
+ */
+export function mayStrike(
+  { personId, roles }: { personId: Id; roles: readonly Role[] },
+  target: { authorId: Id; kind: LogKind; guideSafe: boolean },
+): boolean {
+  if (!may(roles, 'log.add')) return false
+  if (target.authorId === personId) return true
+  if (target.kind === 'correction') return may(roles, 'check.do')
+  return mayLog(roles, target.kind, target.guideSafe)
 }

@@ -2,7 +2,17 @@ import { describe, expect, it } from 'vitest'
 import { BOOK_ITEMS } from '@/db/codebook/book'
 import type { Suspect } from '@/lib/diag/belief'
 import { indexBook, SOMETHING_ELSE } from '@/lib/diag/book-index'
-import { limpRefusals, SAID_BY_HAND, type WayOutFacts, wayOutNotices } from '@/lib/diag/way-out'
+import {
+  decidedWayOut,
+  leavingLacks,
+  limpRefusals,
+  limpUnjudged,
+  SAID_BY_HAND,
+  type WayOutFacts,
+  wayOutNotices,
+} from '@/lib/diag/way-out'
+import type { JobMachineState } from '@/lib/model/job'
+import type { Place } from '@/lib/model/place'
 import { entry } from '../field/checks-log'
 
 const index = indexBook({ version: 1, hash: '', publishedAt: '', items: BOOK_ITEMS })
@@ -142,5 +152,75 @@ describe('what is not there yet', () => {
     const job = { people, before: [went] }
     expect(wayOutNotices('limpOut', facts({ job }))).toEqual(['examineFirst'])
     expect(wayOutNotices('repairHere', facts({ job }))).toContain('examineFirst')
+  })
+})
+
+describe('what could not be judged', () => {
+  const fix = () => entry({ kind: 'fix', fault: harmless, words: 'Cleaned', temporary: null })
+
+  it('[R10] without belief or book nothing is judged by leaving it out', () => {
+    expect(limpUnjudged(facts())).toEqual([])
+    expect(limpUnjudged(facts({ suspects: null }))).toEqual(['cause', 'faults'])
+    expect(limpUnjudged(facts({ index: null }))).toEqual(['battery', 'faults'])
+    expect(limpUnjudged(facts({ index: null, suspects: null }))).toEqual([
+      'battery',
+      'cause',
+      'faults',
+    ])
+  })
+
+  it('[R10] a four-stroke before its suspects are known is refused nothing, so it must say so', () => {
+    const early = facts({ suspects: null })
+    expect(limpRefusals(early)).toEqual([])
+    expect(limpUnjudged(early)).not.toEqual([])
+  })
+
+  it('[R10] with a fix on record cause and faults are not asked', () => {
+    expect(limpUnjudged(facts({ suspects: null, entries: [fix()] }))).toEqual([])
+    expect(limpUnjudged(facts({ index: null, suspects: null, entries: [fix()] }))).toEqual([
+      'battery',
+    ])
+  })
+})
+
+describe('the way out that stands', () => {
+  const decided = (wayOut: 'tow' | 'returnLater', machineState: JobMachineState = 'onTow') =>
+    entry({ kind: 'wayOut', wayOut, reasons: 'Dark', machineState, peopleState: 'onTheWay' })
+  const correct = (id: string) => entry({ kind: 'correction', reason: 'Wrong' }, id)
+
+  it('[R8] is the last one nobody took back', () => {
+    const first = decided('tow')
+    const second = decided('returnLater', 'leftBehind')
+    expect(decidedWayOut([])).toBeUndefined()
+    expect(decidedWayOut([first, second])?.id).toBe(second.id)
+    expect(decidedWayOut([first, second, correct(second.id)])?.id).toBe(first.id)
+    expect(decidedWayOut([first, correct(first.id)])).toBeUndefined()
+  })
+
+  const place: Place = {
+    latitude: 47.1,
+    longitude: -93.2,
+    source: 'typed',
+    accuracyMetres: null,
+    at: '2026-11-24T18:40:00.000Z',
+    asTyped: '47.1 N 93.2 W',
+    words: null,
+  }
+  const photo = () =>
+    entry({
+      kind: 'photo',
+      photo: { hash: 'a'.repeat(64), mime: 'image/jpeg', bytes: 9, width: 1, height: 1 },
+      caption: null,
+    })
+
+  it('[R2] leaves a machine behind only with position, living photo and the words that go with it', () => {
+    const [seen, left] = [photo(), decided('returnLater', 'leftBehind')]
+    expect(leavingLacks({ place, entries: [seen, left] })).toBeNull()
+    expect(leavingLacks({ place: null, entries: [seen, left] })).toBe('place')
+    expect(leavingLacks({ place, entries: [left] })).toBe('photo')
+    expect(leavingLacks({ place, entries: [seen, correct(seen.id), left] })).toBe('photo')
+    expect(leavingLacks({ place, entries: [seen] })).toBe('wayOut')
+    expect(leavingLacks({ place, entries: [seen, decided('tow')] })).toBe('wayOut')
+    expect(leavingLacks({ place, entries: [seen, left, correct(left.id)] })).toBe('wayOut')
   })
 })

@@ -15,6 +15,8 @@ const TABLE: Partial<Record<Action, Role[]>> = {
   'book.publish': ['owner'],
   'member.manage': ['owner'],
   'desk.see': ['mechanic', 'dispatcher', 'parts', 'owner'],
+  'field.write': ['mechanic', 'guide', 'owner'],
+  'machine.add': ['mechanic', 'dispatcher', 'owner'],
   'field.see': ['mechanic', 'guide', 'dispatcher', 'owner'],
 }
 

@@ -20,6 +20,7 @@ export function world(roles: Role[] = ['mechanic']) {
     machines: new Set([machineId]),
     models: new Set(),
     entries: new Map(),
+    deciding: new Map(),
     partRequests: new Set(),
     advice: new Set(),
     guideSafe: new Set(['tetherLook']),
@@ -30,6 +31,7 @@ export function world(roles: Role[] = ['mechanic']) {
     peopleState: 'withMachine',
     machineState: 'stranded',
     wayOut: null,
+    place: null,
     openedBy: device.owner.personId,
     assignedTo: [],
   } as const

@@ -2,7 +2,7 @@ import { v7 } from 'uuid'
 import { describe, expect, it } from 'vitest'
 import type { Role } from '@/lib/model/role'
 import type { Known } from '@/lib/sync/server/draft'
-import { adviceKeep, jobOpen, logAdd, note, partRequestAsk } from '../support/field-ops'
+import { adviceKeep, jobOpen, logAdd, machineAdd, note, partRequestAsk } from '../support/field-ops'
 import { plan, world } from '../support/plan-world'
 
 describe('what a role may send', () => {
@@ -52,6 +52,21 @@ describe('what a role may send', () => {
         ),
     ],
     'a dispatcher keeping advice': [['dispatcher'], (w) => w.device.op(adviceKeep(w.jobId))],
+    'a guide adding a machine': [['guide'], (w) => w.device.op(machineAdd())],
+    'a dispatcher writing in the field at all': [
+      ['dispatcher'],
+      (w) => w.device.op(logAdd(w.device, w.jobId, note('read along'))),
+    ],
+    'a dispatcher moving people': [
+      ['dispatcher'],
+      (w) =>
+        w.device.op({
+          kind: 'job.people',
+          entityId: w.jobId,
+          jobId: w.jobId,
+          fields: { from: 'withMachine', to: 'safe' },
+        }),
+    ],
     'a mechanic assigning': [
       ['mechanic'],
       (w) =>
@@ -85,6 +100,28 @@ describe('what a role may send', () => {
       }),
     )
     expect(plan([op], known).results).toEqual([])
+  })
+
+  it('[R8] lets a guide strike their own line and not a mechanic’s evidence', () => {
+    const { device, known, jobId } = world(['guide'])
+    const theirs = logAdd(
+      device,
+      jobId,
+      { kind: 'check', checkId: 'fuelPressure', outcome: 'good', asWritten: true, differed: null },
+      { authorId: v7() },
+    ).fields
+    const own = device.op(logAdd(device, jobId, note('wrong line')))
+    const correct = (id: string) =>
+      device.op(logAdd(device, jobId, { kind: 'correction', reason: 'Wrong' }, { supersedes: id }))
+    const bad = correct(theirs.id)
+    const held: Known = {
+      ...known,
+      entries: new Map([[theirs.id, jobId]]),
+      deciding: new Map([[theirs.id, theirs]]),
+    }
+    const done = plan([own, correct(own.entityId), bad], held)
+    expect(done.results).toMatchObject([{ opId: bad.id, code: 'forbidden' }])
+    expect(done.effects.entries).toHaveLength(2)
   })
 
   it('[P11] refuses to move a job in other hands but keeps the evidence', () => {

@@ -1,5 +1,6 @@
 import { v7 } from 'uuid'
 import { describe, expect, it } from 'vitest'
+import type { JobMachineState, WayOut } from '@/lib/model/job'
 import { MAX_OP_BYTES } from '@/lib/sync/protocol/message'
 import type { Known, Outcome } from '@/lib/sync/server/draft'
 import { takesProtocol, upgradeOp } from '@/lib/sync/server/upgrade'
@@ -188,6 +189,80 @@ describe('planning a push', () => {
       fields: { from: 'open', to: 'closed', reason: null },
     })
     expect(plan([own, entry()], known).effects.steps).toHaveLength(1)
+  })
+})
+
+describe('the way out of a job', () => {
+  const decided = (of: ReturnType<typeof world>, wayOut: WayOut, machineState: JobMachineState) =>
+    logAdd(of.device, of.jobId, {
+      kind: 'wayOut',
+      wayOut,
+      reasons: 'Dark',
+      machineState,
+      peopleState: 'onTheWay',
+    })
+  const correct = (of: ReturnType<typeof world>, id: string) =>
+    of.device.op(
+      logAdd(of.device, of.jobId, { kind: 'correction', reason: 'Wrong' }, { supersedes: id }),
+    )
+
+  it('[R8] is the last one that stands, in this batch and before it', () => {
+    const w = world()
+    const tow = decided(w, 'tow', 'onTow')
+    const later = decided(w, 'returnLater', 'leftBehind')
+    const standing = (ops: unknown[], known = w.known) =>
+      plan(ops, known).effects.changedJobs.get(w.jobId)?.wayOut
+    expect(standing([w.device.op(tow), w.device.op(later)])).toBe('returnLater')
+    const taken = correct(w, later.fields.id)
+    expect(standing([w.device.op(tow), w.device.op(later), taken])).toBe('tow')
+    const known: Known = {
+      ...w.known,
+      jobs: new Map([[w.jobId, { ...w.stand, wayOut: 'tow' }]]),
+      entries: new Map([[tow.fields.id, w.jobId]]),
+      deciding: new Map([[tow.fields.id, tow.fields]]),
+    }
+    expect(standing([correct(w, tow.fields.id)], known)).toBeNull()
+    expect(standing([w.device.op(logAdd(w.device, w.jobId, note('x')))], known)).toBeUndefined()
+  })
+
+  it('[R2] leaves a machine behind only with what that demands', () => {
+    const w = world()
+    const leave = () =>
+      w.device.op({
+        kind: 'job.machine',
+        entityId: w.jobId,
+        jobId: w.jobId,
+        fields: { from: 'stranded', to: 'leftBehind' },
+      })
+    const photo = w.device.op(
+      logAdd(w.device, w.jobId, {
+        kind: 'photo',
+        photo: { hash: 'a'.repeat(64), bytes: 9, mime: 'image/jpeg', width: 1, height: 1 },
+        caption: null,
+      }),
+    )
+    const way = w.device.op(decided(w, 'returnLater', 'leftBehind'))
+    const place = {
+      latitude: 47.1,
+      longitude: -93.2,
+      source: 'typed',
+      accuracyMetres: null,
+      at: '2026-11-24T18:40:00.000Z',
+      asTyped: null,
+      words: null,
+    } as const
+    const placed: Known = { ...w.known, jobs: new Map([[w.jobId, { ...w.stand, place }]]) }
+    expect(plan([photo, way, leave()], placed).results).toEqual([])
+    for (const [ops, known] of [
+      [[leave()], placed],
+      [[photo, leave()], placed],
+      [[way, leave()], placed],
+      [[photo, way, leave()], w.known],
+    ] as const) {
+      const refused = plan([...ops], known)
+      expect(refused.results).toMatchObject([{ code: 'invalid', field: 'fields.to' }])
+      expect(refused.effects.steps).toEqual([])
+    }
   })
 })
 

@@ -52,6 +52,47 @@ describe('POST /api/sync, rules of the shop', () => {
     expect(audit.map((entry) => entry.detail)).toEqual([{ from: 'open', to: 'underWay' }])
   })
 
+  it('[R8] the way out on the job follows the log, whichever push takes it back', async () => {
+    const job = await openJob()
+    const decided = (wayOut: 'tow' | 'limpOut') =>
+      logAdd(device, job, {
+        kind: 'wayOut',
+        wayOut,
+        reasons: 'Dark soon',
+        machineState: wayOut === 'tow' ? 'onTow' : 'limping',
+        peopleState: 'onTheWay',
+      })
+    const [tow, limp] = [decided('tow'), decided('limpOut')]
+    const correct = (id: string) =>
+      device.op(logAdd(device, job, { kind: 'correction', reason: 'Wrong' }, { supersedes: id }))
+    const wayOutAfter = async (op: unknown) => {
+      expect(codesOf(await sync(device, [op]))).toEqual([])
+      return (await inA((tx) => findJob(tx, job)))?.wayOut
+    }
+    expect(await wayOutAfter(device.op(tow))).toBe('tow')
+    expect(await wayOutAfter(device.op(limp))).toBe('limpOut')
+    expect(await wayOutAfter(correct(limp.fields.id))).toBe('tow')
+    expect(await wayOutAfter(correct(tow.fields.id))).toBeNull()
+  })
+
+  it('[R8] a guide’s correction of a mechanic’s fix is refused, its author’s is not', async () => {
+    const guide = (await phoneOf(world.a, 'guide')).device
+    const job = await openJob()
+    const fix = logAdd(device, job, {
+      kind: 'fix',
+      fault: 'ignitionCoilPart',
+      words: 'Coil swapped',
+      temporary: null,
+    })
+    await sync(device, [device.op(fix)])
+    const correct = (from: RawDevice) =>
+      from.op(
+        logAdd(from, job, { kind: 'correction', reason: 'Wrong' }, { supersedes: fix.fields.id }),
+      )
+    expect(codesOf(await sync(guide, [correct(guide)]))).toEqual(['forbidden'])
+    expect(codesOf(await sync(device, [correct(device)]))).toEqual([])
+  })
+
   it('[R13] reopens a job closed by another phone when the field writes on, whole in the log', async () => {
     const other = (await phoneOf(world.a, 'owner')).device
     const job = await openJob()

@@ -1,6 +1,7 @@
 'use client'
 
 import { useEffect, useState } from 'react'
+import { NotYours, useMayLog } from '@/components/checks/use-may'
 import { useDraft } from '@/components/store/use-draft'
 import { useLog } from '@/components/store/use-log'
 import { Key } from '@/components/ui/key'
@@ -37,7 +38,8 @@ function Codes({ facts }: { facts: JobFacts }) {
   const [fresh, setFresh] = useState<string | null>(null)
   const unreadable = entries.findLast((e) => e.body.kind === 'codesUnreadable')?.body
   const draft = useDraft<CodeDraft>(codeKey(job.id), EMPTY_CODE)
-  const writing = adding || codes.length === 0 || draft.value !== EMPTY_CODE
+  const mine = useMayLog('code')
+  const writing = mine && (adding || codes.length === 0 || draft.value !== EMPTY_CODE)
   // After a save the focus goes to the meaning of what was just taken down.
   useEffect(() => {
     if (fresh !== null && codes.some((c) => c.id === fresh)) {
@@ -55,7 +57,7 @@ function Codes({ facts }: { facts: JobFacts }) {
       foot={
         writing ? null : (
           <div className="grid grid-cols-1 gap-2 slim:grid-cols-2">
-            <Key onClick={() => setAdding(true)}>One more</Key>
+            {mine ? <Key onClick={() => setAdding(true)}>One more</Key> : null}
             <Key kind="plate" onClick={() => go(jobHref(job.id, 'checks'))}>
               To checks
             </Key>
@@ -72,6 +74,7 @@ function Codes({ facts }: { facts: JobFacts }) {
           <CodeMeaning seen={code.body.seen} context={code.body.context} features={features} />
         </div>
       ))}
+      {mine ? null : <NotYours what="Taking codes down" />}
       {writing && log !== undefined ? (
         <section className="grid gap-4">
           <RuleEdge>{codes.length === 0 ? 'Take it down' : `Code ${codes.length + 1}`}</RuleEdge>

@@ -73,9 +73,7 @@ const MISSING: Record<IntakeStep, (draft: IntakeDraft) => string | null> = {
       ? 'Answer the line about emergency services first.'
       : null,
   machine: (draft) =>
-    draft.machineId === null && draft.stranger === null
-      ? 'Pick a machine, or say it is a stranger’s.'
-      : null,
+    draft.machineId === null && draft.stranger === null ? 'Pick a machine first.' : null,
   complaint: (draft) =>
     draft.symptom === null && draft.words.trim() === ''
       ? 'Pick what it does, or write it down.'

@@ -1,6 +1,7 @@
 'use client'
 
 import { useMemo, useState } from 'react'
+import { useMay } from '@/components/checks/use-may'
 import { useMachines, useModels } from '@/components/store/use-rows'
 import { Field } from '@/components/ui/field'
 import { Key } from '@/components/ui/key'
@@ -19,6 +20,7 @@ export function MachineStep({ draft, change }: StepProps) {
   const [wanted, setWanted] = useState('')
   const machines = useMachines()
   const models = useModels()
+  const strangers = useMay('machine.add')
   const found = useMemo(() => search(machines ?? [], models, wanted), [machines, models, wanted])
   if (draft.stranger !== null) {
     return (
@@ -33,14 +35,16 @@ export function MachineStep({ draft, change }: StepProps) {
   const picked = machines?.find((machine) => machine.id === draft.machineId)
   return (
     <>
-      <Key
-        quiet
-        onClick={() =>
-          change({ machineId: null, stranger: { maker: '', model: '', year: '', features: {} } })
-        }
-      >
-        A stranger’s machine
-      </Key>
+      {strangers ? (
+        <Key
+          quiet
+          onClick={() =>
+            change({ machineId: null, stranger: { maker: '', model: '', year: '', features: {} } })
+          }
+        >
+          A stranger’s machine
+        </Key>
+      ) : null}
       <RuleEdge end={String(found.length)}>The fleet</RuleEdge>
       <Field
         label="Unit number, maker or model"
@@ -74,8 +78,11 @@ export function MachineStep({ draft, change }: StepProps) {
       {found.length === 0 ? (
         <p>
           {machines?.length
-            ? 'No unit of the fleet fits. Try fewer letters, or take it as a stranger’s machine.'
-            : 'The fleet is not on this phone. Take it down as a stranger’s machine.'}
+            ? 'No unit of the fleet fits. Try fewer letters'
+            : 'The fleet is not on this phone'}
+          {strangers
+            ? ', or take it down as a stranger’s machine.'
+            : '. For any other machine call a mechanic or the shop: they open the job.'}
         </p>
       ) : null}
     </>

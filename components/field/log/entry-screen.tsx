@@ -1,13 +1,13 @@
 'use client'
 
 import { useState } from 'react'
+import { useMayCorrect } from '@/components/checks/use-may'
 import { entryWords } from '@/components/log/entry-words'
 import { ReadingLine } from '@/components/log/reading-line'
 import { useBook } from '@/components/store/use-book'
 import { useLog } from '@/components/store/use-log'
 import { usePhoto } from '@/components/store/use-photo'
 import { usePeople } from '@/components/store/use-rows'
-import { useSession } from '@/components/store/use-session'
 import { classes } from '@/components/ui/class-names'
 import { KeyLink } from '@/components/ui/key'
 import { LogIcon } from '@/components/ui/log-icon'
@@ -15,17 +15,15 @@ import { Photo } from '@/components/ui/photo'
 import { Screen } from '@/components/ui/screen'
 import { strikes } from '@/lib/diag/case'
 import type { LogEntry } from '@/lib/model/log-entry'
-import { mayLog } from '@/lib/shop/permissions'
 import { jobHref } from '../route'
 import { clockTime, dayOf } from '../times'
 
 /** One entry of the log, whole, with who wrote it and when; and the way to correct it. */
 export function EntryScreen({ jobId, entryId }: { jobId: string; entryId: string }) {
   const log = useLog(jobId)
-  const session = useSession()
   const { index } = useBook()
   const line = log?.find((l) => l.entry.id === entryId)
-  const roles = session.kind === 'ready' ? session.actor.roles : []
+  const mine = useMayCorrect(line?.entry)
   if (line === undefined) {
     return (
       <Screen title="Entry">
@@ -36,8 +34,7 @@ export function EntryScreen({ jobId, entryId }: { jobId: string; entryId: string
   const { entry } = line
   const words = entryWords(entry.body, index)
   const later = strikes((log ?? []).map((l) => l.entry)).get(entry.id)
-  const corrects =
-    later === undefined && entry.body.kind !== 'correction' && mayLog(roles, 'correction', false)
+  const corrects = later === undefined && entry.body.kind !== 'correction' && mine
   return (
     <Screen
       title={

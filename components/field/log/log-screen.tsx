@@ -8,7 +8,7 @@ import { KeyLink } from '@/components/ui/key'
 import { RuleEdge } from '@/components/ui/rule-edge'
 import { Screen } from '@/components/ui/screen'
 import { strikes } from '@/lib/diag/case'
-import { mayLog } from '@/lib/shop/permissions'
+import { mayLogInField } from '@/lib/shop/may-record'
 import { OfJob } from '../of-job'
 import { jobHref } from '../route'
 import { dayOf } from '../times'
@@ -29,10 +29,10 @@ export function LogScreen({ jobId }: { jobId: string }) {
           titleHidden
           foot={
             <div className="grid grid-cols-1 gap-2 slim:grid-cols-3">
-              {mayLog(roles, 'note', false) ? (
+              {mayLogInField(roles, 'note') ? (
                 <KeyLink href={jobHref(job.id, 'note')}>Note</KeyLink>
               ) : null}
-              {mayLog(roles, 'photo', false) ? (
+              {mayLogInField(roles, 'photo') ? (
                 <KeyLink href={jobHref(job.id, 'photo')}>Photo</KeyLink>
               ) : null}
               <KeyLink kind="plate" href={jobHref(job.id, 'checks')}>

@@ -1,3 +1,4 @@
+import { guideSafeOf } from '@/lib/diag/book-index'
 import type { Id } from '@/lib/model/id'
 import type { Actor } from '@/lib/model/person'
 import { fail } from '@/lib/model/result'
@@ -121,6 +122,7 @@ export class FieldStore {
       ports: this.ports,
       indexed: this.#indexed,
       onBook: () => this.#askForBook(true),
+      guideSafe: () => guideSafeOf(this.book.get().index),
       failed: report,
       onRecord: () => {
         this.worker.askToSendLater().catch(() => undefined)
@@ -141,6 +143,8 @@ export class FieldStore {
   async #renew(actor: Actor): Promise<void> {
     await setCurrent(this.#device, actor, this.ports.clock.now())
     const now = this.session.get()
+    const phone = this.phone.get()
+    if (phone !== null) phone.actor = actor
     if (now.kind !== 'ready' || JSON.stringify(now.actor) === JSON.stringify(actor)) return
     this.session.set({ ...now, actor })
   }

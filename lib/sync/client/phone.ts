@@ -16,6 +16,7 @@ import { openKeys } from './keys'
 import { type Indexed, PhoneDb, type PhotoRecord, readMeta, writeMeta } from './phone-db'
 import { PhoneSender } from './phone-sender'
 import { photoPlace, record } from './record'
+import { refuseByRole } from './refuse-by-role'
 import { RoomWatch } from './room'
 import { Screens } from './screens'
 import { openBytes } from './seal'
@@ -33,6 +34,8 @@ export type PhoneOptions = {
   onBook?: () => void
   /** Called when something was kept that is to be sent. */
   onRecord?: () => void
+  /** Checks and swaps of the code book that are safe for guides; none while there is no book. */
+  guideSafe?: () => ReadonlySet<string>
   /** Called when the store fails under a screen or the sender. */
   failed?: (cause: unknown) => void
   /** Tests let it throw at a step. */
@@ -41,7 +44,7 @@ export type PhoneOptions = {
 
 /** One person's store in one shop, open: everything the field app reads, keeps and sends. */
 export class Phone {
-  readonly actor: Actor
+  readonly #guideSafe: () => ReadonlySet<string>
   readonly drafts: Drafts
   readonly sender: PhoneSender
   readonly stamp: CorrectedClock
@@ -51,6 +54,7 @@ export class Phone {
   readonly #ports: SyncPorts
   readonly #screens: Screens
   readonly #onRecord: () => void
+  #actor: Actor
   #deviceId: Id
 
   /** Opens the store, makes it on first use, and works out rows a worker has left. */
@@ -73,7 +77,8 @@ export class Phone {
   private constructor(core: Core, options: PhoneOptions, deviceId: Id) {
     const failed = options.failed ?? (() => undefined)
     this.core = core
-    this.actor = options.actor
+    this.#actor = options.actor
+    this.#guideSafe = options.guideSafe ?? (() => new Set())
     this.#ports = options.ports
     this.#deviceId = deviceId
     this.#onRecord = options.onRecord ?? (() => undefined)
@@ -104,6 +109,16 @@ export class Phone {
       online,
       failed,
     })
+  }
+
+  /** The person whose store it is, with the roles the shop last told of. */
+  get actor(): Actor {
+    return this.#actor
+  }
+
+  /** The shop's newest word on that person. */
+  set actor(actor: Actor) {
+    this.#actor = actor
   }
 
   /** This phone's id at the shop. */
@@ -160,12 +175,17 @@ export class Phone {
     }
   }
 
-  /** Keeps ops, rows, photos and finished drafts in one transaction (P1), then calls the sender. */
+  /**
+   * Keeps ops, rows, photos and finished drafts in one transaction (P1), then calls the sender. Throws
+   * AppError `notAllowed`, before anything is kept, for what the shop would refuse by role (R22).
+   */
   async record(
     ops: readonly OpInput[],
     more: { photos?: readonly NewPhoto[]; clearDrafts?: readonly string[] } = {},
   ): Promise<void> {
     const clearDrafts = more.clearDrafts ?? []
+    const { roles, personId } = this.#actor
+    await refuseByRole(this.core, ops, { roles, personId, guideSafe: this.#guideSafe() })
     await this.drafts.settled(clearDrafts)
     await record(this.core, {
       ops,

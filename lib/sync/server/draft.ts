@@ -5,6 +5,8 @@ import type { LogEntry } from '@/lib/model/log-entry'
 import type { Machine } from '@/lib/model/machine'
 import type { PartRequest } from '@/lib/model/part-request'
 import type { Actor } from '@/lib/model/person'
+import type { Place } from '@/lib/model/place'
+import type { Writer } from '@/lib/shop/may-record'
 import type { Rejected } from './read-ops'
 
 /** How a job stands: what an op of a state machine is judged by. */
@@ -13,6 +15,7 @@ export type JobStand = {
   peopleState: PeopleState
   machineState: JobMachineState
   wayOut: WayOut | null
+  place: Place | null
   openedBy: Id
   assignedTo: readonly Id[]
 }
@@ -39,6 +42,8 @@ export type Known = {
   models: ReadonlySet<Id>
   /** Entries by id with the job they are of. */
   entries: ReadonlyMap<Id, Id>
+  /** Entries that decide on others: those this batch points back to, and of its jobs every way out, photo and strike. */
+  deciding: ReadonlyMap<Id, LogEntry>
   partRequests: ReadonlySet<Id>
   advice: ReadonlySet<Id>
   /** Checks and swaps that the published code books mark safe for guides. */
@@ -106,6 +111,24 @@ export class Draft {
   /** The job an entry is of. */
   jobOfEntry(id: Id): Id | undefined {
     return this.#entries.get(id) ?? this.known.entries.get(id)
+  }
+
+  /** An entry that ops of this batch may point back to; undefined when it is not known. */
+  entry(id: Id): LogEntry | undefined {
+    return this.known.deciding.get(id) ?? this.effects.entries.find((entry) => entry.id === id)
+  }
+
+  /** Of a job what is known of its deciding entries, with what this batch adds to its log. */
+  decidingOf(jobId: Id): LogEntry[] {
+    return [...this.known.deciding.values(), ...this.effects.entries].filter(
+      (entry) => entry.jobId === jobId,
+    )
+  }
+
+  /** Who writes, for the question what they may. */
+  get writer(): Writer {
+    const { actor, guideSafe } = this.known
+    return { personId: actor.personId, roles: actor.roles, guideSafe }
   }
 
   hasPartRequest(id: Id): boolean {

@@ -2,7 +2,7 @@ import type { ShopTx } from '@/db/client'
 import { knownAdvice } from '@/db/queries/advice'
 import { guideSafeIds } from '@/db/queries/code-book'
 import { jobsById, jobsClosedOn } from '@/db/queries/jobs'
-import { jobsOfEntries } from '@/db/queries/log-entries'
+import { decidingEntries, jobsOfEntries } from '@/db/queries/log-entries'
 import { listModels, machinesById } from '@/db/queries/machines'
 import { listPartRequests } from '@/db/queries/part-requests'
 import { findOps, type StoredOp } from '@/db/queries/sync-ops'
@@ -54,6 +54,22 @@ function addNames(named: Named, op: Op): void {
   }
 }
 
+/** Entries that decide on what the batch asks: what it points back to, and what else was said of a way out. */
+function decidingOn(ops: readonly ReadOp[]): { ids: Id[]; jobIds: Id[] } {
+  const ids = new Set<Id>()
+  const jobIds = new Set<Id>()
+  for (const { read } of ops) {
+    if (read.kind !== 'op') continue
+    const { op } = read
+    if (op.kind === 'job.machine' && op.fields.to === 'leftBehind') jobIds.add(op.entityId)
+    if (op.kind !== 'log.add') continue
+    const { supersedes, body, jobId } = op.fields
+    if (supersedes !== null) ids.add(supersedes)
+    if (supersedes !== null || body.kind === 'wayOut') jobIds.add(jobId)
+  }
+  return { ids: [...ids], jobIds: [...jobIds] }
+}
+
 const isCode = (code: string | null) => REJECT_CODES.find((known) => known === code)
 
 /** What a stored op tells. A merge counts as accepted; one in quarantine waits like a blocked one. */
@@ -102,6 +118,7 @@ export async function loadKnown(
     machines: new Set((await machinesById(tx, [...named.machines])).map((machine) => machine.id)),
     models: new Set((await listModels(tx, [...named.models])).map((model) => model.id)),
     entries: await jobsOfEntries(tx, [...named.entries]),
+    deciding: new Map((await decidingEntries(tx, decidingOn(ops))).map((row) => [row.id, row])),
     partRequests: new Set(requests.map((request) => request.id)),
     advice: await knownAdvice(tx, [...named.advice]),
     guideSafe: asksSafe ? await guideSafeIds(tx) : new Set(),

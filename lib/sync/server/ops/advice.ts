@@ -1,4 +1,4 @@
-import { may } from '@/lib/shop/permissions'
+import { mayRecord } from '@/lib/shop/may-record'
 import type { Op } from '@/lib/sync/protocol/op'
 import { ACCEPTED, type Draft, type Outcome, reject, waitFor } from '../draft'
 
@@ -7,7 +7,7 @@ export function planAdviceKeep(op: Extract<Op, { kind: 'advice.keep' }>, draft: 
   const advice = op.fields
   if (op.entityId !== advice.id) return reject('invalid', 'entityId')
   if (op.jobId !== null && op.jobId !== advice.jobId) return reject('invalid', 'jobId')
-  if (!may(draft.known.actor.roles, 'advice.keep')) return reject('forbidden')
+  if (!mayRecord(op, draft.writer)) return reject('forbidden')
   if (draft.hasAdvice(advice.id)) return reject('id_reuse', 'fields.id')
   if (!draft.job(advice.jobId)) return waitFor(advice.jobId)
   draft.addAdvice(advice)

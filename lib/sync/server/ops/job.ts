@@ -1,5 +1,6 @@
-import { actionToMoveJob, mayMove, type StateKind } from '@/lib/shop/job-states'
-import { type Action, may } from '@/lib/shop/permissions'
+import { leavingLacks } from '@/lib/diag/way-out'
+import { mayMove, type StateKind } from '@/lib/shop/job-states'
+import { mayRecord } from '@/lib/shop/may-record'
 import { seesJob } from '@/lib/shop/scope'
 import type { Op } from '@/lib/sync/protocol/op'
 import {
@@ -19,7 +20,7 @@ export function planJobOpen(op: OpOf<'job.open'>, draft: Draft): Outcome {
   const opening = op.fields
   if (op.entityId !== opening.id) return reject('invalid', 'entityId')
   if (op.jobId !== null && op.jobId !== opening.id) return reject('invalid', 'jobId')
-  if (!may(draft.known.actor.roles, 'job.open')) return reject('forbidden')
+  if (!mayRecord(op, draft.writer)) return reject('forbidden')
   if (draft.job(opening.id)) return reject('id_reuse', 'fields.id')
   if (!draft.hasMachine(opening.machineId)) return waitFor(opening.machineId)
   draft.openJob(opening, {
@@ -27,6 +28,7 @@ export function planJobOpen(op: OpOf<'job.open'>, draft: Draft): Outcome {
     peopleState: 'withMachine',
     machineState: 'stranded',
     wayOut: null,
+    place: opening.place,
     openedBy: draft.known.actor.personId,
     assignedTo: [],
   })
@@ -41,6 +43,14 @@ function jobToMove(op: Move, draft: Draft) {
   return seesJob(draft.known.actor, job) ? { job } : { refusal: reject('forbidden') }
 }
 
+/** What a machine left behind still lacks, as a refusal: position, photo, and the way out that tells the rest (R2). */
+function judgeLeaving(op: Move, job: JobStand, draft: Draft): Outcome {
+  if (op.kind !== 'job.machine' || op.fields.to !== 'leftBehind') return ACCEPTED
+  const entries = draft.decidingOf(op.entityId)
+  const lacks = leavingLacks({ place: job.place, entries })
+  return lacks === null ? ACCEPTED : reject('invalid', 'fields.to', `left behind without ${lacks}`)
+}
+
 /** A move is judged by the state the server holds, never by a clock (sync.md 3.4). */
 function judgeMove(kind: StateKind, now: string, from: string, to: string): Outcome {
   if (now !== from) return reject('stale_status', 'fields.from', now)
@@ -53,33 +63,30 @@ type Ways = {
   [K in Move['kind']]: {
     what: JobStep['what']
     field: 'state' | 'peopleState' | 'machineState'
-    action(to: string): Action
   }
 }
 
 const WAYS: Ways = {
   // Along the job's states (R13).
-  'job.move': {
-    what: 'job',
-    field: 'state',
-    action: (to) => actionToMoveJob(to as JobStand['state']),
-  },
+  'job.move': { what: 'job', field: 'state' },
   // Where the people are (R2).
-  'job.people': { what: 'people', field: 'peopleState', action: () => 'job.work' },
+  'job.people': { what: 'people', field: 'peopleState' },
   // Where the machine is and how (R2).
-  'job.machine': { what: 'machine', field: 'machineState', action: () => 'job.work' },
+  'job.machine': { what: 'machine', field: 'machineState' },
 }
 
 /** job.move, job.people, job.machine: one step along one of the job's three states. */
 export function planJobStep(op: Move, draft: Draft): Outcome {
   const { job, refusal } = jobToMove(op, draft)
   if (!job) return refusal
-  const { what, field, action } = WAYS[op.kind]
+  const { what, field } = WAYS[op.kind]
   const { from, to } = op.fields
-  if (!may(draft.known.actor.roles, action(to))) return reject('forbidden')
+  if (!mayRecord(op, draft.writer)) return reject('forbidden')
   const verdict = judgeMove(what, job[field], from, to)
-  if (verdict.kind === 'accepted') {
+  if (verdict.kind !== 'accepted') return verdict
+  const leaving = judgeLeaving(op, job, draft)
+  if (leaving.kind === 'accepted') {
     draft.stepJob({ jobId: op.entityId, what, from, to }, { ...job, [field]: to })
   }
-  return verdict
+  return leaving
 }

@@ -1,25 +1,20 @@
-import type { LogBody, LogEntry } from '@/lib/model/log-entry'
-import { may, mayLog } from '@/lib/shop/permissions'
+import { decidedWayOut } from '@/lib/diag/way-out'
+import type { LogEntry } from '@/lib/model/log-entry'
+import { mayRecord } from '@/lib/shop/may-record'
+import { may } from '@/lib/shop/permissions'
 import type { Op } from '@/lib/sync/protocol/op'
 import { ACCEPTED, type Draft, type Outcome, reject, waitFor } from '../draft'
 
-/** The check or swap an entry is about, for the guide's question. */
-function subjectOf(body: LogBody): string | null {
-  if (body.kind === 'check' || body.kind === 'reading') return body.checkId
-  return body.kind === 'swap' ? body.swapId : null
-}
-
-/** Who wrote it must be who sends it, from the device that says so (P18). */
+/** Who wrote it must be who sends it, from the device that says so (P18), and may write and strike that. */
 function judgeHand(op: Extract<Op, { kind: 'log.add' }>, draft: Draft): Outcome {
   const entry = op.fields
-  const { actor, deviceId, guideSafe } = draft.known
+  const { actor, deviceId } = draft.known
   if (op.entityId !== entry.id) return reject('invalid', 'entityId')
   if (op.jobId !== null && op.jobId !== entry.jobId) return reject('invalid', 'jobId')
   if (entry.authorId !== actor.personId) return reject('not_yours', 'fields.authorId')
   if (entry.deviceId !== deviceId) return reject('not_yours', 'fields.deviceId')
-  const subject = subjectOf(entry.body)
-  const safe = subject !== null && guideSafe.has(subject)
-  return mayLog(actor.roles, entry.body.kind, safe) ? ACCEPTED : reject('forbidden')
+  const target = entry.supersedes === null ? undefined : draft.entry(entry.supersedes)
+  return mayRecord(op, draft.writer, target) ? ACCEPTED : reject('forbidden')
 }
 
 /** An entry points back only within its own job. */
@@ -45,8 +40,9 @@ export function planLogAdd(op: Extract<Op, { kind: 'log.add' }>, draft: Draft): 
   const backlink = judgeBacklink(entry, draft)
   if (backlink.kind !== 'accepted') return backlink
   draft.addEntry(entry)
-  if (entry.body.kind === 'wayOut') {
-    draft.changeJob(entry.jobId, { ...job, wayOut: entry.body.wayOut })
+  if (entry.body.kind === 'wayOut' || entry.supersedes !== null) {
+    const wayOut = decidedWayOut(draft.decidingOf(entry.jobId))?.body.wayOut ?? null
+    if (wayOut !== job.wayOut) draft.changeJob(entry.jobId, { ...job, wayOut })
   }
   reopen(entry, draft)
   return ACCEPTED

@@ -1,4 +1,4 @@
-import { may } from '@/lib/shop/permissions'
+import { mayRecord } from '@/lib/shop/may-record'
 import type { Op } from '@/lib/sync/protocol/op'
 import { ACCEPTED, type Draft, type Outcome, reject } from '../draft'
 
@@ -6,7 +6,7 @@ import { ACCEPTED, type Draft, type Outcome, reject } from '../draft'
 export function planMachineAdd(op: Extract<Op, { kind: 'machine.add' }>, draft: Draft): Outcome {
   const machine = op.fields
   if (op.entityId !== machine.id) return reject('invalid', 'entityId')
-  if (!may(draft.known.actor.roles, 'machine.add')) return reject('forbidden')
+  if (!mayRecord(op, draft.writer)) return reject('forbidden')
   if (draft.hasMachine(machine.id)) return reject('id_reuse', 'fields.id')
   if (machine.modelId !== null && !draft.known.models.has(machine.modelId)) {
     return reject('no_parent', 'fields.modelId')

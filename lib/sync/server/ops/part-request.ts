@@ -1,5 +1,5 @@
 import type { PartRequest } from '@/lib/model/part-request'
-import { may } from '@/lib/shop/permissions'
+import { mayRecord } from '@/lib/shop/may-record'
 import { seesJob } from '@/lib/shop/scope'
 import type { Op } from '@/lib/sync/protocol/op'
 import { ACCEPTED, type Draft, type Outcome, reject, waitFor } from '../draft'
@@ -23,7 +23,7 @@ export function planPartRequestAsk(
   const request = op.fields
   if (op.entityId !== request.id) return reject('invalid', 'entityId')
   if (op.jobId !== null && op.jobId !== request.jobId) return reject('invalid', 'jobId')
-  if (!may(draft.known.actor.roles, 'part.ask')) return reject('forbidden')
+  if (!mayRecord(op, draft.writer)) return reject('forbidden')
   if (draft.hasPartRequest(request.id)) return reject('id_reuse', 'fields.id')
   if (new Set(request.lines.map((line) => line.id)).size !== request.lines.length) {
     return reject('id_reuse', 'fields.lines')
