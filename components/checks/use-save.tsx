@@ -2,50 +2,54 @@
 import { useCallback, useState } from 'react'
 import { AppError } from '@/lib/model/result'
 import type { OpInput } from '@/lib/sync/protocol/op'
-import { useRecord } from '../store/use-record'
+import { type NewPhoto, useRecord } from '../store/use-record'
 import { announce } from '../ui/announce'
+import { oneAtATime } from './one-at-a-time'
 
-type More = { clearDrafts?: string[] }
+type More = { photos?: NewPhoto[]; clearDrafts?: string[] }
 export type Save = {
-  /** True when it is on the phone; false when it is not, and then `problem` says why. */
+  /** True when it is on the phone; false when it is not, and then `problem` says why; a second tap is none. */
   save: (ops: OpInput[], more?: More) => Promise<boolean>
   saving: boolean
   problem: string | null
 }
 
-/** Records what a person did, and says plainly when the phone could not keep it. */
+/** Records what a person did, once however often it is tapped, and says plainly what the phone did not keep. */
 export function useSave(): Save {
   const record = useRecord()
   const [saving, setSaving] = useState(false)
+  const [once] = useState(() => oneAtATime(false))
   const [problem, setProblem] = useState<string | null>(null)
   const save = useCallback(
-    async (ops: OpInput[], more: More = {}) => {
-      setSaving(true)
-      try {
-        await record(ops, more)
-        setProblem(null)
-        return true
-      } catch (error) {
-        const words = whyNotSaved(error)
-        setProblem(words)
-        announce(words, 'assertive')
-        return false
-      } finally {
-        setSaving(false)
-      }
-    },
-    [record],
+    (ops: OpInput[], more: More = {}) =>
+      once(async () => {
+        setSaving(true)
+        try {
+          await record(ops, more)
+          setProblem(null)
+          return true
+        } catch (error) {
+          const words = whyNotSaved(error)
+          setProblem(words)
+          announce(words, 'assertive')
+          return false
+        } finally {
+          setSaving(false)
+        }
+      }),
+    [record, once],
   )
   return { save, saving, problem }
 }
 
 /** Sentences by what went wrong; what was typed is still there in every case. */
-function whyNotSaved(error: unknown): string {
+export function whyNotSaved(error: unknown): string {
   const kind = error instanceof AppError ? error.kind : 'unknown'
   const words: Record<string, string> = {
     storeFull: 'Not saved: this phone has no room left. What you typed is still here.',
     recordTooBig: 'Not saved: this is too long for one entry. Make the words shorter.',
     badRecord: 'Not saved: the entry is not in order. What you typed is still here.',
+    notAllowed: 'Not saved: your roles in this shop do not allow this.',
     nobodyAtWork: 'Not saved: nobody is signed in on this phone.',
   }
   return words[kind] ?? 'Not saved. Try once more; what you typed is still here.'

@@ -1,7 +1,7 @@
 'use client'
 
-import { useRecord } from '@/components/store/use-record'
-import { useSession } from '@/components/store/use-session'
+import { useMayLog } from '@/components/checks/use-may'
+import { NotSaved, useSave } from '@/components/checks/use-save'
 import { useStamp } from '@/components/store/use-stamp'
 import { announce } from '@/components/ui/announce'
 import { Hold } from '@/components/ui/hold'
@@ -12,7 +12,6 @@ import { living } from '@/lib/diag/case'
 import { codesOnRecord } from '@/lib/diag/codes-on-record'
 import type { SpecSheet } from '@/lib/model/code-book'
 import type { LogEntry } from '@/lib/model/log-entry'
-import { mayLog } from '@/lib/shop/permissions'
 import { jobHref } from '../route'
 import { ReadCodesAgain } from './read-codes-again'
 
@@ -20,10 +19,9 @@ type Props = { jobId: string; entries: readonly LogEntry[]; sheet: SpecSheet | n
 
 /** Clearing is refused until the codes are recorded or marked unreadable (rule R11); then read again. */
 export function ClearedPart({ jobId, entries, sheet }: Props) {
-  const session = useSession()
-  const roles = session.kind === 'ready' ? session.actor.roles : []
+  const mine = useMayLog('codesCleared')
   const again = living(entries).some((entry) => entry.body.kind === 'codesCleared')
-  if (!mayLog(roles, 'codesCleared', false)) {
+  if (!mine) {
     return null
   }
   return (
@@ -61,19 +59,22 @@ function ClearSteps({ sheet }: { sheet: SpecSheet | null }) {
 }
 
 function ClearKey({ jobId, again }: { jobId: string; again: boolean }) {
-  const record = useRecord()
+  const { save, saving, problem } = useSave()
   const stamp = useStamp()
-  const clear = () => {
-    record([stamp.entry(jobId, { kind: 'codesCleared', readAgain: 'notYet' })])
-      .then(() => announce('Recorded: codes cleared. Read them again after a start.'))
-      .catch(() => announce('Could not be saved. Try again.', 'assertive'))
+  const clear = async () => {
+    if (await save([stamp.entry(jobId, { kind: 'codesCleared', readAgain: 'notYet' })]))
+      announce('Recorded: codes cleared. Read them again after a start.')
   }
   return (
-    <Hold
-      label={again ? 'Codes cleared once more' : 'Codes are cleared'}
-      question="Record that the codes were cleared?"
-      confirmLabel="Yes, cleared"
-      onConfirm={clear}
-    />
+    <>
+      <Hold
+        label={again ? 'Codes cleared once more' : 'Codes are cleared'}
+        question="Record that the codes were cleared?"
+        confirmLabel="Yes, cleared"
+        disabled={saving}
+        onConfirm={clear}
+      />
+      <NotSaved problem={problem} />
+    </>
   )
 }

@@ -1,8 +1,8 @@
 'use client'
 
 import { useState } from 'react'
+import { NotSaved, useSave } from '@/components/checks/use-save'
 import { useDraft } from '@/components/store/use-draft'
-import { useRecord } from '@/components/store/use-record'
 import { useStamp } from '@/components/store/use-stamp'
 import { announce } from '@/components/ui/announce'
 import { Choice } from '@/components/ui/choice'
@@ -41,21 +41,21 @@ export function CodeForm({ jobId, order, onSaved }: Props) {
   const { value: draft, set, kept } = useDraft<CodeDraft>(key, EMPTY_CODE)
   const [problem, setProblem] = useState<CodeProblem | null>(null)
   useFocusInvalid(problem)
-  const record = useRecord()
+  const { save, saving, problem: notSaved } = useSave()
   const stamp = useStamp()
   const patch = usePatch(draft, set)
   const change = (next: Partial<CodeDraft>) => {
     setProblem(null)
     patch(next)
   }
-  const save = async () => {
+  const keep = async () => {
     const body = bodyOf(draft, order)
     if (!body.ok) {
       setProblem(body.problem)
       return
     }
     const entry = stamp.entry(jobId, body.value)
-    await record([entry], { clearDrafts: [key] })
+    if (!(await save([entry], { clearDrafts: [key] }))) return
     announce('Saved on this phone.')
     onSaved(entry.fields.id)
   }
@@ -65,12 +65,7 @@ export function CodeForm({ jobId, order, onSaved }: Props) {
       className="grid gap-4"
       onSubmit={(e) => {
         e.preventDefault()
-        save().catch(() =>
-          setProblem({
-            field: 'format',
-            words: 'Could not be saved. Nothing typed is lost: try again.',
-          }),
-        )
+        void keep()
       }}
     >
       <Choice
@@ -107,7 +102,8 @@ export function CodeForm({ jobId, order, onSaved }: Props) {
       )}
       <DashPhoto jobId={jobId} hash={draft.photo} onTaken={(photo) => change({ photo })} />
       <DraftSign kept={kept} />
-      <Key kind="main" type="submit">
+      <NotSaved problem={notSaved} />
+      <Key kind="main" type="submit" disabled={saving}>
         {draft.format === 'unreadable' ? 'Record: cannot be read' : 'Take it down'}
       </Key>
     </form>

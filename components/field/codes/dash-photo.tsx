@@ -1,9 +1,9 @@
 'use client'
 
 import { useState } from 'react'
+import { NotSaved, useSave } from '@/components/checks/use-save'
 import { usePorts } from '@/components/store/store-provider'
 import { usePhoto } from '@/components/store/use-photo'
-import { useRecord } from '@/components/store/use-record'
 import { useStamp } from '@/components/store/use-stamp'
 import { announce } from '@/components/ui/announce'
 import { Photo } from '@/components/ui/photo'
@@ -14,7 +14,7 @@ type Props = { jobId: string; hash: string | null; onTaken: (hash: string) => vo
 /** A photo of what the dash shows (rule R11). It is recorded at once, so that nothing can take it back. */
 export function DashPhoto({ jobId, hash, onTaken }: Props) {
   const { camera } = usePorts()
-  const record = useRecord()
+  const { save, problem: notSaved } = useSave()
   const stamp = useStamp()
   const [busy, setBusy] = useState<boolean>(false)
   const [problem, setProblem] = useState<string | null>(null)
@@ -25,9 +25,8 @@ export function DashPhoto({ jobId, hash, onTaken }: Props) {
       return
     }
     const { hash: taken, bytes, mime } = photo.value
-    await record([stamp.entry(jobId, photoBody(photo.value, 'The dash, showing codes'))], {
-      photos: [{ hash: taken, jobId, bytes, mime }],
-    })
+    const entry = stamp.entry(jobId, photoBody(photo.value, 'The dash, showing codes'))
+    if (!(await save([entry], { photos: [{ hash: taken, jobId, bytes, mime }] }))) return
     announce('Photo saved on this phone.')
     onTaken(taken)
   }
@@ -41,13 +40,14 @@ export function DashPhoto({ jobId, hash, onTaken }: Props) {
           setBusy(true)
           setProblem(null)
           take(file)
-            .catch(() => setProblem('The photo could not be saved. Try again.'))
+            .catch(() => setProblem(CAMERA_WORDS.notReadable))
             .finally(() => setBusy(false))
         }}
       />
       <p role="status" className="font-bold text-nogo empty:hidden">
         {problem}
       </p>
+      <NotSaved problem={notSaved} />
       {hash === null ? null : <Taken hash={hash} />}
     </div>
   )

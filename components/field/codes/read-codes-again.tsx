@@ -1,7 +1,6 @@
 'use client'
 
-import { useState } from 'react'
-import { useRecord } from '@/components/store/use-record'
+import { NotSaved, useSave } from '@/components/checks/use-save'
 import { useStamp } from '@/components/store/use-stamp'
 import { announce } from '@/components/ui/announce'
 import { Key, KeyLink } from '@/components/ui/key'
@@ -15,20 +14,16 @@ type Props = { jobId: string; entries: readonly LogEntry[] }
 /** After clearing and a start the codes are read again; the answer stands in place of "not yet" (rule R11). */
 export function ReadCodesAgain({ jobId, entries }: Props) {
   const cleared = living(entries).findLast((entry) => entry.body.kind === 'codesCleared')
-  const record = useRecord()
+  const { save, saving, problem } = useSave()
   const stamp = useStamp()
-  const [busy, setBusy] = useState<boolean>(false)
   if (cleared === undefined || cleared.body.kind !== 'codesCleared') {
     return null
   }
   const { readAgain } = cleared.body
-  const say = (next: 'noneBack' | 'back') => {
-    setBusy(true)
+  const say = async (next: 'noneBack' | 'back') => {
     const body = { kind: 'codesCleared', readAgain: next } as const
-    record([stamp.entry(jobId, body, { supersedes: cleared.id })])
-      .then(() => announce('Saved on this phone.'))
-      .catch(() => announce('Could not be saved. Try again.', 'assertive'))
-      .finally(() => setBusy(false))
+    if (await save([stamp.entry(jobId, body, { supersedes: cleared.id })]))
+      announce('Saved on this phone.')
   }
   return (
     <section aria-labelledby="again" className="grid gap-2">
@@ -41,13 +36,14 @@ export function ReadCodesAgain({ jobId, entries }: Props) {
             Codes are recorded as cleared. Start it, run it, look at the dash: did one come back?
           </p>
           <div className="grid grid-cols-2 gap-2">
-            <Key disabled={busy} onClick={() => say('noneBack')}>
+            <Key disabled={saving} onClick={() => say('noneBack')}>
               None back
             </Key>
-            <Key disabled={busy} onClick={() => say('back')}>
+            <Key disabled={saving} onClick={() => say('back')}>
               Codes back
             </Key>
           </div>
+          <NotSaved problem={problem} />
         </>
       ) : (
         <p className="font-bold">

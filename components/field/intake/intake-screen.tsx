@@ -1,9 +1,10 @@
 'use client'
 
 import { useState } from 'react'
+import { NotYours, useMay } from '@/components/checks/use-may'
+import { useSave } from '@/components/checks/use-save'
 import { useBook } from '@/components/store/use-book'
 import { useDraft } from '@/components/store/use-draft'
-import { useRecord } from '@/components/store/use-record'
 import { useShop } from '@/components/store/use-rows'
 import { useStamp } from '@/components/store/use-stamp'
 import { announce } from '@/components/ui/announce'
@@ -34,8 +35,17 @@ const TITLES: Record<IntakeStep, string> = {
   place: 'Where is it?',
 }
 
-/** A new job in four steps, kept to the keystroke. */
+/** A new job in four steps, kept to the keystroke; for those who may open one. */
 export function IntakeScreen() {
+  if (useMay('job.open')) return <Intake />
+  return (
+    <Screen title="New job">
+      <NotYours what="Opening a job" />
+    </Screen>
+  )
+}
+
+function Intake() {
   const { value: draft, set, clear, ready, kept } = useDraft<IntakeDraft>(INTAKE_KEY, EMPTY_INTAKE)
   const { go, here } = useRoute()
   const save = useOpenJob(draft)
@@ -60,7 +70,7 @@ export function IntakeScreen() {
     if (at < STEPS.length - 1) {
       move(1)
     } else {
-      save.run()
+      void save.run()
     }
   }
   const Step = {
@@ -77,7 +87,7 @@ export function IntakeScreen() {
       foot={
         <>
           <p role="status" className="font-bold text-nogo empty:hidden">
-            {told ? missing : save.problem}
+            {told && missing !== null ? missing : save.problem}
           </p>
           <div className="flex gap-2">
             {at > 0 ? (
@@ -85,7 +95,7 @@ export function IntakeScreen() {
                 Step back
               </Key>
             ) : null}
-            <Key kind="main" disabled={!ready || save.busy} onClick={onward}>
+            <Key kind="main" disabled={!ready || save.saving} onClick={onward}>
               {onwardWords(draft)}
             </Key>
           </div>
@@ -121,14 +131,12 @@ function onwardWords(draft: IntakeDraft): string {
 
 /** Records the machine, the job and its first lines in one piece, then goes to the job. */
 function useOpenJob(draft: IntakeDraft) {
-  const record = useRecord()
+  const { save, saving, problem } = useSave()
   const stamp = useStamp()
   const shop = useShop()
   const { index } = useBook()
   const { go, here } = useRoute()
-  const [busy, setBusy] = useState<boolean>(false)
-  const [problem, setProblem] = useState<string | null>(null)
-  const open = async () => {
+  const run = async () => {
     const symptomName =
       draft.symptom === null ? null : (index?.symptoms.get(draft.symptom)?.name ?? null)
     const { jobId, ops } = opsOf(draft, {
@@ -136,17 +144,9 @@ function useOpenJob(draft: IntakeDraft) {
       symptomName,
       emergencyNumber: shop?.emergencyNumber ?? null,
     })
-    await record(ops, { clearDrafts: [INTAKE_KEY] })
+    if (!(await save(ops, { clearDrafts: [INTAKE_KEY] }))) return
     announce('Job opened and saved on this phone.')
     go(jobHref(jobId), { replace: true, from: here })
   }
-  const run = () => {
-    setBusy(true)
-    setProblem(null)
-    open().catch(() => {
-      setBusy(false)
-      setProblem('Could not be saved. Nothing typed is lost: try again.')
-    })
-  }
-  return { run, busy, problem }
+  return { run, saving, problem }
 }

@@ -1,11 +1,11 @@
 'use client'
 
 import { useState } from 'react'
+import { NotSaved, useSave } from '@/components/checks/use-save'
 import { entryWords } from '@/components/log/entry-words'
 import { useBook } from '@/components/store/use-book'
 import { useDraft } from '@/components/store/use-draft'
 import { useLog } from '@/components/store/use-log'
-import { useRecord } from '@/components/store/use-record'
 import { useStamp } from '@/components/store/use-stamp'
 import { announce } from '@/components/ui/announce'
 import { Field } from '@/components/ui/field'
@@ -23,25 +23,21 @@ export function CorrectScreen({ jobId, entryId }: { jobId: string; entryId: stri
   const log = useLog(jobId)
   const { index } = useBook()
   useFocusInvalid(problem)
-  const record = useRecord()
+  const { save, saving, problem: notSaved } = useSave()
   const stamp = useStamp()
   const { go, here } = useRoute()
   const entry = log?.find((line) => line.entry.id === entryId)?.entry
   const words = entry && entryWords(entry.body, index)
-  const save = () => {
+  const keep = async () => {
     if (reason.trim() === '') {
       setProblem('Say what was wrong with it.')
       return
     }
-    record(
-      [stamp.entry(jobId, { kind: 'correction', reason: reason.trim() }, { supersedes: entryId })],
-      { clearDrafts: [key] },
-    )
-      .then(() => {
-        announce('Correction saved on this phone.')
-        go(jobHref(jobId, 'log'), { replace: true, from: here })
-      })
-      .catch(() => setProblem('Could not be saved. Nothing typed is lost: try again.'))
+    const body = { kind: 'correction', reason: reason.trim() } as const
+    const correction = stamp.entry(jobId, body, { supersedes: entryId })
+    if (!(await save([correction], { clearDrafts: [key] }))) return
+    announce('Correction saved on this phone.')
+    go(jobHref(jobId, 'log'), { replace: true, from: here })
   }
   return (
     <Screen
@@ -49,7 +45,7 @@ export function CorrectScreen({ jobId, entryId }: { jobId: string; entryId: stri
       second="The entry stays in the log, struck through. It no longer counts as evidence."
       kept={kept}
       foot={
-        <Key kind="main" disabled={!ready || entry === undefined} onClick={save}>
+        <Key kind="main" disabled={!ready || saving || entry === undefined} onClick={keep}>
           Save correction
         </Key>
       }
@@ -61,6 +57,12 @@ export function CorrectScreen({ jobId, entryId }: { jobId: string; entryId: stri
           {words.kind}: {words.title}
         </p>
       )}
+      {entry?.body.kind === 'wayOut' ? (
+        <p>
+          The machine, the people and the job stay as they stand on the job. Change them there if
+          that was wrong too.
+        </p>
+      ) : null}
       <Field
         label="What was wrong with it?"
         value={reason}
@@ -73,6 +75,7 @@ export function CorrectScreen({ jobId, entryId }: { jobId: string; entryId: stri
         autoCapitalize="sentences"
         error={problem}
       />
+      <NotSaved problem={notSaved} />
     </Screen>
   )
 }

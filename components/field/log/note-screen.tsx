@@ -1,8 +1,8 @@
 'use client'
 
 import { useState } from 'react'
+import { NotSaved, useSave } from '@/components/checks/use-save'
 import { useDraft } from '@/components/store/use-draft'
-import { useRecord } from '@/components/store/use-record'
 import { useStamp } from '@/components/store/use-stamp'
 import { announce } from '@/components/ui/announce'
 import { Field } from '@/components/ui/field'
@@ -28,7 +28,7 @@ function Note({ jobId, zone }: { jobId: string; zone: string }) {
   const { value: draft, set, ready, kept } = useDraft<NoteDraft>(key, EMPTY)
   const [problem, setProblem] = useState<{ field: keyof NoteDraft; words: string } | null>(null)
   useFocusInvalid(problem)
-  const record = useRecord()
+  const { save, saving, problem: notSaved } = useSave()
   const stamp = useStamp()
   const { go, here } = useRoute()
   const patch = usePatch(draft, set)
@@ -36,7 +36,7 @@ function Note({ jobId, zone }: { jobId: string; zone: string }) {
     setProblem(null)
     patch(next)
   }
-  const save = () => {
+  const keep = async () => {
     const words = draft.words.trim()
     const about = happenedAbout(draft.about, stamp.now(), zone)
     if (words === '') {
@@ -44,19 +44,10 @@ function Note({ jobId, zone }: { jobId: string; zone: string }) {
     } else if (about === null) {
       setProblem({ field: 'about', words: 'A time of the last 24 hours, like 11:30, or nothing.' })
     } else {
-      record([stamp.entry(jobId, { kind: 'note', words }, { happenedAt: about })], {
-        clearDrafts: [key],
-      })
-        .then(() => {
-          announce('Note saved on this phone.')
-          go(jobHref(jobId, 'log'), { replace: true, from: here })
-        })
-        .catch(() =>
-          setProblem({
-            field: 'words',
-            words: 'Could not be saved. Nothing typed is lost: try again.',
-          }),
-        )
+      const note = stamp.entry(jobId, { kind: 'note', words }, { happenedAt: about })
+      if (!(await save([note], { clearDrafts: [key] }))) return
+      announce('Note saved on this phone.')
+      go(jobHref(jobId, 'log'), { replace: true, from: here })
     }
   }
   return (
@@ -64,7 +55,7 @@ function Note({ jobId, zone }: { jobId: string; zone: string }) {
       title="Note"
       kept={kept}
       foot={
-        <Key kind="main" disabled={!ready} onClick={save}>
+        <Key kind="main" disabled={!ready || saving} onClick={keep}>
           Save note
         </Key>
       }
@@ -88,6 +79,7 @@ function Note({ jobId, zone }: { jobId: string; zone: string }) {
         figures
         error={problem?.field === 'about' ? problem.words : null}
       />
+      <NotSaved problem={notSaved} />
     </Screen>
   )
 }

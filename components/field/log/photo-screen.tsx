@@ -1,9 +1,9 @@
 'use client'
 
 import { useEffect, useState } from 'react'
+import { NotSaved, useSave } from '@/components/checks/use-save'
 import { usePorts } from '@/components/store/store-provider'
 import { useDraft } from '@/components/store/use-draft'
-import { useRecord } from '@/components/store/use-record'
 import { useStamp } from '@/components/store/use-stamp'
 import { announce } from '@/components/ui/announce'
 import { DraftSign } from '@/components/ui/draft-sign'
@@ -29,21 +29,16 @@ function TakePhoto({ jobId }: { jobId: string }) {
   const key = `job.${jobId}.photo`
   const { value: caption, set, kept } = useDraft<string>(key, '')
   const { shown, busy, problem, take } = useTakenPhoto()
-  const [failed, setFailed] = useState<string | null>(null)
-  const record = useRecord()
+  const { save, saving, problem: notSaved } = useSave()
   const stamp = useStamp()
   const { go, here } = useRoute()
-  const save = ({ photo }: Shown) => {
+  const keep = async ({ photo }: Shown) => {
     const { hash, bytes, mime } = photo
-    record([stamp.entry(jobId, photoBody(photo, caption))], {
-      photos: [{ hash, jobId, bytes, mime }],
-      clearDrafts: [key],
-    })
-      .then(() => {
-        announce('Photo saved on this phone.')
-        go(jobHref(jobId, 'log'), { replace: true, from: here })
-      })
-      .catch(() => setFailed('Could not be saved. Is the phone’s store full? Try again.'))
+    const photos = [{ hash, jobId, bytes, mime }]
+    const entry = stamp.entry(jobId, photoBody(photo, caption))
+    if (!(await save([entry], { photos, clearDrafts: [key] }))) return
+    announce('Photo saved on this phone.')
+    go(jobHref(jobId, 'log'), { replace: true, from: here })
   }
   return (
     <Screen
@@ -51,7 +46,7 @@ function TakePhoto({ jobId }: { jobId: string }) {
       second="Position data in the picture is taken out."
       foot={
         shown === null ? null : (
-          <Key kind="main" onClick={() => save(shown)}>
+          <Key kind="main" disabled={saving} onClick={() => keep(shown)}>
             Save photo
           </Key>
         )
@@ -72,8 +67,9 @@ function TakePhoto({ jobId }: { jobId: string }) {
         onFile={take}
       />
       <p role="status" className="font-bold text-nogo empty:hidden">
-        {problem ?? failed}
+        {problem}
       </p>
+      <NotSaved problem={notSaved} />
       <Field
         label="Caption"
         value={caption}
