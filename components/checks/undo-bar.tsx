@@ -1,6 +1,7 @@
 'use client'
 import { useEffect, useState } from 'react'
 import type { Id } from '@/lib/model/id'
+import type { OpInput } from '@/lib/sync/protocol/op'
 import { usePorts } from '../store/store-provider'
 import { useStamp } from '../store/use-stamp'
 import { announce } from '../ui/announce'
@@ -14,6 +15,8 @@ type Props = {
   /** The entry just recorded. */
   entryId: Id
   what: string
+  /** What goes back with it, asked at the moment it is taken back. */
+  alsoBack?: () => OpInput[]
   onUndone: () => void
 }
 
@@ -21,13 +24,14 @@ type Props = {
  * Ten seconds to take an outcome back (rule R8). Choice: the outcome is kept at once, so that a dead
  * phone loses nothing; taking it back adds a correction that points to it, as later corrections do.
  */
-export function UndoBar({ jobId, entryId, what, onUndone }: Props) {
+export function UndoBar({ jobId, entryId, what, alsoBack, onUndone }: Props) {
   const left = useSecondsLeft()
   const stamp = useStamp()
   const { save, saving, problem } = useSave()
   const undo = async () => {
     const body = { kind: 'correction', reason: 'Taken back within 10 seconds' } as const
-    if (!(await save([stamp.entry(jobId, body, { supersedes: entryId })]))) return
+    const back = stamp.entry(jobId, body, { supersedes: entryId })
+    if (!(await save([back, ...(alsoBack?.() ?? [])]))) return
     announce(`${what} taken back.`)
     onUndone()
   }

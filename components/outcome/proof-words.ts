@@ -1,4 +1,4 @@
-import { proofBound } from '@/lib/diag/proof-run'
+import { proofBound, WANTED_SHARE } from '@/lib/diag/proof-run'
 import { of100 } from '../reading-strip/figures'
 
 type ProofCount = { starts: number; faults: number }
@@ -14,13 +14,15 @@ export function proofSentence(count: ProofCount): string {
   return `${starts} clean ${plural(starts, 'restart')}: up to ${of100(bound.exact)} of 100 starts could still fail (one-sided 95 %).${three}`
 }
 
-/** How many more clean starts are wanted; null when a fault came. */
+/** How many more clean starts are wanted, with where the goal comes from; null when a fault came. */
 export function moreSentence(count: ProofCount): string | null {
   const { more } = proofBound(count)
   if (more === null) return null
-  if (more === 0) return 'That is under 10 of 100.'
-  return `${more} more clean ${plural(more, 'start')} would bring it under 10 of 100.`
+  if (more === 0) return `That is under ${GOAL}.`
+  return `${more} more clean ${plural(more, 'start')} would bring it under ${GOAL}.`
 }
+
+const GOAL = `${of100(WANTED_SHARE)} of 100 (the goal is common practice, no source)`
 
 const plural = (n: number, word: string): string => (n === 1 ? word : `${word}s`)
 

@@ -1,18 +1,10 @@
 'use client'
 import type { ReactNode } from 'react'
 import { living } from '@/lib/diag/case'
-import type { SaidByHand } from '@/lib/diag/way-out'
 import type { Id } from '@/lib/model/id'
 import type { Job, JobMachineState, PeopleState, WayOut } from '@/lib/model/job'
-import { mayMove, movesFrom } from '@/lib/shop/job-states'
-import {
-  jobStateAfter,
-  LEFT_BEHIND_LINES,
-  type LeftBehindLine,
-  leftBehindLacks,
-  statesAfter,
-} from '@/lib/shop/way-out-states'
-import type { OpInput } from '@/lib/sync/protocol/op'
+import { movesFrom } from '@/lib/shop/job-states'
+import { LEFT_BEHIND_LINES, leftBehindLacks, statesAfter } from '@/lib/shop/way-out-states'
 import { NotSaved, useSave } from '../checks/use-save'
 import type { JobCase } from '../engine/use-case'
 import { MACHINE_WORDS, PEOPLE_WORDS } from '../field/words'
@@ -20,26 +12,9 @@ import { useStamp } from '../store/use-stamp'
 import { Choice } from '../ui/choice'
 import { Field } from '../ui/field'
 import { Key, KeyLink } from '../ui/key'
+import { type WayOutDraft, wayOutDraftKey } from './way-out-draft'
+import { movesOf } from './way-out-moves'
 import { LACKS_WORDS, LEFT_WORDS, SAID_SHORT } from './way-out-words'
-
-export type WayOutDraft = {
-  way: WayOut | null
-  said: SaidByHand[]
-  machine: JobMachineState | null
-  people: PeopleState | null
-  reasons: string
-  /** What a machine left behind demands (rule R2). */
-  left: Record<LeftBehindLine, string>
-}
-export const FRESH_WAY_OUT: WayOutDraft = {
-  way: null,
-  said: [],
-  machine: null,
-  people: null,
-  reasons: '',
-  left: { key: '', tap: '', secured: '', land: '', fetch: '' },
-}
-export const wayOutDraftKey = (jobId: Id): string => `wayout:${jobId}`
 
 type Props = {
   jobId: Id
@@ -140,23 +115,6 @@ function After({ job, machine, people, draft, set }: AfterProps) {
       />
     </>
   )
-}
-
-/** The moves of machine, people and job that follow from a way out, those that change something. */
-export function movesOf(
-  job: Pick<Job, 'id' | 'machineState' | 'peopleState' | 'state'>,
-  to: { machine: JobMachineState; people: PeopleState },
-): OpInput[] {
-  const ops: OpInput[] = []
-  const jobId = job.id
-  if (to.machine !== job.machineState)
-    ops.push({ kind: 'job.machine', jobId, fields: { from: job.machineState, to: to.machine } })
-  if (to.people !== job.peopleState)
-    ops.push({ kind: 'job.people', jobId, fields: { from: job.peopleState, to: to.people } })
-  const state = jobStateAfter(job.state, to.machine)
-  if (state !== job.state && mayMove('job', job.state, state))
-    ops.push({ kind: 'job.move', jobId, fields: { from: job.state, to: state, reason: null } })
-  return ops
 }
 
 function whatIsMissing(

@@ -1,48 +1,97 @@
 'use client'
 import { type ReactNode, useState } from 'react'
-import { living } from '@/lib/diag/case'
-import { limpRefusals, SAID_BY_HAND, type WayOutFacts, wayOutNotices } from '@/lib/diag/way-out'
+import {
+  decidedWayOut,
+  limpRefusals,
+  limpUnjudged,
+  SAID_BY_HAND,
+  type WayOutFacts,
+  wayOutNotices,
+} from '@/lib/diag/way-out'
 import type { Id } from '@/lib/model/id'
-import { WAYS_OUT, type WayOut } from '@/lib/model/job'
+import { type Job, WAYS_OUT, type WayOut } from '@/lib/model/job'
 import type { LogEntry } from '@/lib/model/log-entry'
 import { UndoBar } from '../checks/undo-bar'
 import { useJustSaved } from '../checks/use-just-saved'
+import { NotYours, useMayLog } from '../checks/use-may'
 import { useBelief } from '../engine/use-belief'
 import { type JobCase, useCase } from '../engine/use-case'
 import { clockTime } from '../field/times'
 import { MACHINE_WORDS, PEOPLE_WORDS, WAY_OUT_WORDS } from '../field/words'
 import { useBook } from '../store/use-book'
 import { useDraft } from '../store/use-draft'
+import { useSession } from '../store/use-session'
+import { announce } from '../ui/announce'
 import { Caution } from '../ui/caution'
 import { Choice, ChoiceMany } from '../ui/choice'
 import { Key, KeyLink } from '../ui/key'
 import { RuleEdge } from '../ui/rule-edge'
 import { Screen } from '../ui/screen'
-import { FRESH_WAY_OUT, useWayOutForm, type WayOutDraft, wayOutDraftKey } from './way-out-form'
-import { NOTICE_WORDS, refusalWords, SAID_WORDS, WAY_CAUTIONS } from './way-out-words'
+import { FRESH_WAY_OUT, type WayOutDraft, wayOutDraftKey } from './way-out-draft'
+import { useWayOutForm } from './way-out-form'
+import { movesBack } from './way-out-moves'
+import {
+  NOTICE_WORDS,
+  refusalWords,
+  SAID_WORDS,
+  UNJUDGED_WORDS,
+  WAY_CAUTIONS,
+} from './way-out-words'
 
 /** Repair here, limp out, tow, return later: refusals first, then the person decides (F6, rules R2, R10). */
 export function WayOutScreen({ jobId }: { jobId: Id }) {
   const found = useCase(jobId)
   const { savedId, keepSaved, forget } = useJustSaved(found?.entries ?? [])
   const [again, setAgain] = useState(false)
+  const [before, setBefore] = useState<Job | null>(null)
+  const draft = useDraft<WayOutDraft>(wayOutDraftKey(jobId), FRESH_WAY_OUT)
+  const mine = useMayLog('wayOut')
+  const session = useSession()
   if (found === null)
     return (
       <Screen title="Way out">
         <p role="status">Opening the job.</p>
       </Screen>
     )
-  const last = living(found.entries).findLast(({ body }) => body.kind === 'wayOut')
+  const last = decidedWayOut(found.entries)
   const saved = (id: Id) => {
     keepSaved(id)
+    setBefore(found.job)
     setAgain(false)
   }
-  if (last === undefined || again)
+  const leaveIt = () => {
+    setAgain(false)
+    draft.clear().catch(() => announce('Could not be thrown away.', 'assertive'))
+  }
+  if (last === undefined && !mine)
+    return (
+      <Screen title="Way out">
+        <NotYours what="Deciding the way out" />
+      </Screen>
+    )
+  if (mine && (last === undefined || again || draft.value.way !== null))
     return (
       <Deciding jobId={jobId} found={found} onSaved={saved}>
-        {last !== undefined && <Decided entry={last} />}
+        {last !== undefined && (
+          <>
+            <Decided entry={last} />
+            <Key small onClick={leaveIt}>
+              Leave it as decided
+            </Key>
+          </>
+        )}
       </Deciding>
     )
+  const movesTakenBack = () =>
+    before === null || last === undefined
+      ? []
+      : movesBack({
+          jobId,
+          before,
+          now: found.job,
+          put: { machine: last.body.machineState, people: last.body.peopleState },
+          roles: session.kind === 'ready' ? session.actor.roles : [],
+        })
   return (
     <Screen
       title="Way out"
@@ -58,13 +107,16 @@ export function WayOutScreen({ jobId }: { jobId: Id }) {
           jobId={jobId}
           entryId={savedId}
           what="Way out recorded"
+          alsoBack={movesTakenBack}
           onUndone={forget}
         />
       )}
-      <Decided entry={last} />
-      <Key small onClick={() => setAgain(true)}>
-        Decide again
-      </Key>
+      {last !== undefined && <Decided entry={last} />}
+      {mine && (
+        <Key small onClick={() => setAgain(true)}>
+          Decide again
+        </Key>
+      )}
     </Screen>
   )
 }
@@ -99,17 +151,19 @@ type DecidingProps = {
 function Deciding({ jobId, found, onSaved, children }: DecidingProps) {
   const { value: draft, set, kept } = useDraft<WayOutDraft>(wayOutDraftKey(jobId), FRESH_WAY_OUT)
   const { index } = useBook()
-  const { answer } = useBelief(jobId)
+  const { answer, failed } = useBelief(jobId)
   const facts: WayOutFacts = {
     job: found.job,
     features: found.input.features,
     entries: found.entries,
-    suspects: answer?.belief.suspects ?? [],
+    suspects: answer?.belief.suspects ?? null,
     index,
     said: draft.said,
   }
   const refused = limpRefusals(facts).map(refusalWords)
-  const way = draft.way === 'limpOut' && refused.length > 0 ? null : draft.way
+  const unjudged = limpUnjudged(facts).map((one) => UNJUDGED_WORDS[one])
+  const limpHint = refused.length > 0 ? 'refused' : unjudged.length > 0 ? 'not judged yet' : null
+  const way = draft.way === 'limpOut' && limpHint !== null ? null : draft.way
   const form = useWayOutForm({ jobId, found, way, draft, set, onSaved })
   return (
     <Screen
@@ -139,6 +193,13 @@ function Deciding({ jobId, found, onSaved, children }: DecidingProps) {
           <p className="text-second text-ink2">Whatever a tow costs.</p>
         </section>
       )}
+      {unjudged.length > 0 && (
+        <p role="status" className="border-l-4 border-ink pl-3">
+          <b>Limp out not judged:</b> {unjudged.join('; ')}.{' '}
+          {index === null ? 'The code book is not on this phone.' : ''}
+          {index !== null && failed ? 'The sums could not be done for this job.' : ''}
+        </p>
+      )}
       <Choice
         legend="Way out"
         value={way}
@@ -146,8 +207,8 @@ function Deciding({ jobId, found, onSaved, children }: DecidingProps) {
         options={WAYS_OUT.map((value) => ({
           value,
           label: WAY_OUT_WORDS[value],
-          disabled: value === 'limpOut' && refused.length > 0,
-          ...(value === 'limpOut' && refused.length > 0 ? { hint: 'refused' } : {}),
+          disabled: value === 'limpOut' && limpHint !== null,
+          ...(value === 'limpOut' && limpHint !== null ? { hint: limpHint } : {}),
         }))}
       />
       {way !== null && (

@@ -1,7 +1,8 @@
-import type { LimpRefusal, SaidByHand, WayOutNotice } from '@/lib/diag/way-out'
+import type { LimpRefusal, LimpUnjudged, SaidByHand, WayOutNotice } from '@/lib/diag/way-out'
 import type { Caution } from '@/lib/model/code-book'
 import type { WayOut } from '@/lib/model/job'
 import type { LeftBehindLine } from '@/lib/shop/way-out-states'
+import { unitLabel } from '../reading-strip/unit-words'
 
 /** Cautions of each way out; common practice, no source. The maker's manual and local rules come first. */
 export const WAY_CAUTIONS: Record<WayOut, readonly Caution[]> = {
@@ -69,12 +70,19 @@ export function refusalWords(refusal: LimpRefusal): string {
     case 'hurt':
       return 'Somebody is hurt.'
     case 'emptyBattery':
-      return `Battery empty: ${refusal.asTyped} ${refusal.unit} at rest, ${refusal.emptyAtVolts} or less counts as empty.`
+      return `Battery empty: ${refusal.asTyped} ${unitLabel('dcVoltage', refusal.unit)} at rest, ${refusal.emptyAtVolts} V or less counts as empty (flooded lead-acid, table credited to the battery makers’ trade body).`
     case 'causeUnknown':
       return CAUSE_UNKNOWN[refusal.strokes]
     case 'faultForbids':
       return `${refusal.name}: ${refusal.bookWords}`
   }
+}
+
+/** What could not be judged yet, after "Not judged:". */
+export const UNJUDGED_WORDS: Record<LimpUnjudged, string> = {
+  battery: 'whether a reading says that the battery is empty',
+  cause: 'whether the cause is known',
+  faults: 'whether a likely fault forbids the ride',
 }
 
 export const NOTICE_WORDS: Record<WayOutNotice, string> = {

@@ -29,7 +29,7 @@ export function cleanStartsFor(share: number, confidence = 0.95): number {
 }
 
 /** The share of starts (0 to 1) to get under before a machine goes back out: 10 of 100 (common practice, no source). */
-const WANTED_SHARE = 0.1
+export const WANTED_SHARE = 0.1
 
 /** What a count of starts bounds, in shares of starts from 0 to 1. */
 export type ProofBound = {

@@ -81,6 +81,26 @@ export function mayMove<K extends StateKind>(kind: K, from: States[K], to: State
   return movesFrom(kind, from).includes(to)
 }
 
+/** The shortest way from one state to another, the states after `from` in order; null when there is none. */
+export function wayBetween<K extends StateKind>(
+  kind: K,
+  from: States[K],
+  to: States[K],
+): States[K][] | null {
+  const ways: States[K][][] = [[]]
+  const seen = new Set<States[K]>([from])
+  for (const way of ways) {
+    const at = way.at(-1) ?? from
+    if (at === to) return way
+    for (const next of movesFrom(kind, at)) {
+      if (seen.has(next)) continue
+      seen.add(next)
+      ways.push([...way, next])
+    }
+  }
+  return null
+}
+
 /** What a person must be allowed to do to put a job into `to`. */
 export function actionToMoveJob(to: JobState): Action {
   if (to === 'closed') return 'job.close'

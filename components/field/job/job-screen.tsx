@@ -43,7 +43,6 @@ function Open({ facts }: { facts: JobFacts }) {
         <NextRows
           jobId={job.id}
           entries={entries}
-          wayOut={job.wayOut}
           roles={session.kind === 'ready' ? session.actor.roles : []}
         />
       </section>

@@ -1,24 +1,24 @@
 import { BookOpen, ListChecks, Route, Timer, Wrench } from 'lucide-react'
 import type { ReactNode } from 'react'
 import { Row } from '@/components/ui/row'
-import type { WayOut } from '@/lib/model/job'
+import { decidedWayOut } from '@/lib/diag/way-out'
 import type { LogEntry, LogKind } from '@/lib/model/log-entry'
 import type { Role } from '@/lib/model/role'
-import { mayLog } from '@/lib/shop/permissions'
+import { mayLogInField } from '@/lib/shop/may-record'
 import { jobHref } from '../route'
 import { counted, sentence, WAY_OUT_WORDS } from '../words'
 
 type Props = {
   jobId: string
   entries: readonly LogEntry[]
-  wayOut: WayOut | null
   roles: readonly Role[]
 }
 
 type NextRow = { name: string; screen: string; icon: ReactNode; done: string; kind?: LogKind }
 
 /** The things to do on a job, each with what is recorded of it; only what the person may record. */
-export function NextRows({ jobId, entries, wayOut, roles }: Props) {
+export function NextRows({ jobId, entries, roles }: Props) {
+  const wayOut = decidedWayOut(entries)?.body.wayOut ?? null
   const count = (...kinds: LogKind[]) => entries.filter((e) => kinds.includes(e.body.kind)).length
   const rows: NextRow[] = [
     {
@@ -64,7 +64,7 @@ export function NextRows({ jobId, entries, wayOut, roles }: Props) {
   return (
     <ul>
       {rows
-        .filter((row) => row.kind === undefined || mayLog(roles, row.kind, false))
+        .filter((row) => row.kind === undefined || mayLogInField(roles, row.kind))
         .map((row) => (
           <li key={row.screen}>
             <Row

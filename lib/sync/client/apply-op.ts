@@ -1,6 +1,5 @@
 import type { Id } from '@/lib/model/id'
 import type { Job } from '@/lib/model/job'
-import type { LogBody } from '@/lib/model/log-entry'
 import { assertNever } from '@/lib/model/result'
 import { mayMove } from '@/lib/shop/job-states'
 import type { Op } from '@/lib/sync/protocol/op'
@@ -24,10 +23,9 @@ export function rowsTouched(op: Op): Touched[] {
     case 'job.machine':
       return [jobAt(op.entityId)]
     case 'log.add':
-      return [
-        { entity: 'logEntry', id: op.entityId, jobId: op.fields.jobId },
-        jobAt(op.fields.jobId),
-      ]
+      // The way out is worked out from the log where it is shown; that a closed job comes back as open
+      // (R13) the shop alone decides.
+      return [{ entity: 'logEntry', id: op.entityId, jobId: op.fields.jobId }]
     case 'partRequest.ask':
       return [{ entity: 'partRequest', id: op.entityId, jobId: op.fields.jobId }]
     case 'advice.keep':
@@ -68,8 +66,6 @@ function applyToJob(job: Job | undefined, op: Op, who: Who): Job | undefined {
       const moves = job.machineState === from && mayMove('machine', from, to)
       return moves ? { ...job, machineState: to } : job
     }
-    case 'log.add':
-      return withWayOut(job, op.fields.body)
     default:
       return job
   }
@@ -85,7 +81,3 @@ const openedJob = (fields: Extract<Op, { kind: 'job.open' }>['fields'], who: Who
   openedBy: who.personId,
   assignedTo: [],
 })
-
-/** The way out stands on the job; that a closed job comes back as open (R13) the shop alone decides. */
-const withWayOut = (job: Job, body: LogBody): Job =>
-  body.kind === 'wayOut' ? { ...job, wayOut: body.wayOut } : job
