@@ -2,6 +2,7 @@ import type { BookIndex } from '@/lib/diag/book-index'
 import type { SpecComponent } from '@/lib/diag/spec-of'
 import type { CheckItem, SpecSheet } from '@/lib/model/code-book'
 import { Figure } from '../ui/figure'
+import { Pins } from '../ui/pins'
 import { RuleEdge } from '../ui/rule-edge'
 import { minutesWords } from './words'
 
@@ -61,38 +62,8 @@ function Place({ part, index }: { part: SpecComponent; index: BookIndex }) {
         </p>
       )}
       {part.connector !== null && <p>{part.connector}</p>}
-      {part.pins.length > 0 && <Pins part={part} />}
+      {part.pins.length > 0 && <Pins pins={part.pins} />}
       <p className="text-second text-ink2">Spec sheet: {part.source}.</p>
     </div>
-  )
-}
-
-function Pins({ part }: { part: SpecComponent }) {
-  return (
-    <table className="w-full border-collapse text-left">
-      <caption className="visually-hidden">Pins of the connector</caption>
-      <thead className="text-second text-ink2">
-        <tr className="border-b-2 border-ink">
-          <th scope="col" className="py-1 pr-3 font-normal">
-            Pin
-          </th>
-          <th scope="col" className="py-1 pr-3 font-normal">
-            Colour
-          </th>
-          <th scope="col" className="py-1 font-normal">
-            Carries
-          </th>
-        </tr>
-      </thead>
-      <tbody>
-        {part.pins.map((pin) => (
-          <tr key={pin.pin} className="border-b-[1.5px] border-rule align-top">
-            <td className="figures py-1 pr-3">{pin.pin}</td>
-            <td className="py-1 pr-3 font-bold">{pin.colour}</td>
-            <td className="py-1">{pin.carries}</td>
-          </tr>
-        ))}
-      </tbody>
-    </table>
   )
 }

@@ -3,6 +3,7 @@
 import { useBook } from '@/components/store/use-book'
 import { Caution } from '@/components/ui/caution'
 import { Figure } from '@/components/ui/figure'
+import { Pins } from '@/components/ui/pins'
 import { RuleEdge } from '@/components/ui/rule-edge'
 import { Screen } from '@/components/ui/screen'
 import type { SpecSheet, SpecValue } from '@/lib/model/code-book'
@@ -84,30 +85,6 @@ function ComponentPart({ component }: { component: Component }) {
         <p className="text-second text-ink2">From: {component.source}</p>
       </div>
     </details>
-  )
-}
-
-function Pins({ pins }: { pins: Component['pins'] }) {
-  return (
-    <table className="w-full border-collapse text-left">
-      <caption className="visually-hidden">Pins of the connector</caption>
-      <thead>
-        <tr className="border-b-2 border-ink text-second">
-          <th className="py-1 pr-3">Pin</th>
-          <th className="py-1 pr-3">Wire</th>
-          <th className="py-1">Carries</th>
-        </tr>
-      </thead>
-      <tbody>
-        {pins.map((pin) => (
-          <tr key={pin.pin} className="border-b-[1.5px] border-rule align-top">
-            <td className="figures py-2 pr-3">{pin.pin}</td>
-            <td className="py-2 pr-3">{pin.colour}</td>
-            <td className="py-2">{pin.carries}</td>
-          </tr>
-        ))}
-      </tbody>
-    </table>
   )
 }
 
