@@ -3,12 +3,12 @@ import { useState } from 'react'
 import { DARK_FACTOR } from '@/lib/diag/plan-means'
 import type { Id } from '@/lib/model/id'
 import type { Shop } from '@/lib/model/shop'
+import { moneyWords } from '@/lib/shop/currency'
 import type { MeansView } from '../engine/use-means'
 import { Choice } from '../ui/choice'
 import { Key } from '../ui/key'
 import { RuleEdge } from '../ui/rule-edge'
 import { LeaveBy } from './leave-by-part'
-import { moneyWords } from './words'
 
 type Props = { jobId: Id; view: MeansView; shop: Shop | undefined; bookVersion: number }
 

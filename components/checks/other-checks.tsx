@@ -3,13 +3,14 @@ import { useState } from 'react'
 import type { BookIndex } from '@/lib/diag/book-index'
 import type { Plan, PlannedAction } from '@/lib/diag/plan'
 import { WAYS_OUT, type WayOut } from '@/lib/model/job'
+import { moneyWords } from '@/lib/shop/currency'
 import { WAY_OUT_WORDS } from '../field/words'
 import { Key } from '../ui/key'
 import { RuleEdge } from '../ui/rule-edge'
 import { toolWords } from './next-plate'
 import { PickInstead } from './pick-instead'
 import type { ActOn } from './use-act-on'
-import { minutesWords, moneyWords } from './words'
+import { minutesWords } from './words'
 
 type Props = { plan: Plan; currency: string; index: BookIndex; actOn: ActOn }
 

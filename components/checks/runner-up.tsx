@@ -1,11 +1,12 @@
 'use client'
 import type { BookIndex } from '@/lib/diag/book-index'
 import type { Plan } from '@/lib/diag/plan'
+import { moneyWords } from '@/lib/shop/currency'
 import { RuleEdge } from '../ui/rule-edge'
 import { toolWords } from './next-plate'
 import { PickInstead } from './pick-instead'
 import type { ActOn } from './use-act-on'
-import { minutesWords, moneyWords } from './words'
+import { minutesWords } from './words'
 
 type Props = { plan: Plan; currency: string; index: BookIndex; actOn: ActOn }
 

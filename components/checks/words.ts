@@ -1,17 +1,5 @@
 import type { CheckItem } from '@/lib/model/code-book'
 
-/** Minor units in words of the currency: `135.00 USD`; yen and the like without decimals. */
-export function moneyWords(minor: number, currency: string): string {
-  const options = { style: 'currency', currency } as const
-  const places =
-    new Intl.NumberFormat('en-GB', options).resolvedOptions().maximumFractionDigits ?? 2
-  const whole = (minor / 10 ** places).toLocaleString('en-GB', {
-    minimumFractionDigits: places,
-    maximumFractionDigits: places,
-  })
-  return `${whole.replace('-', '−')} ${currency}`
-}
-
 /** `4 min`; halves are kept, anything under a minute is `under 1 min`. */
 export function minutesWords(minutes: number): string {
   if (minutes < 0.75) return 'under 1 min'

@@ -1,8 +1,8 @@
 import { AppError } from '@/lib/model/result'
 import type { ClosingProblem } from '@/lib/shop/closing'
 import type { AssignProblem, LineProblem } from '@/lib/shop/desk-moves'
+import { LINE_STATE_WORDS } from '@/lib/shop/part-words'
 import { JOB_STATE_WORDS } from '../field/words'
-import { LINE_STATE_WORDS } from '../parts/part-words'
 import type { DeskProblem } from './desk-actions'
 
 /** Sentences for what can go wrong at the desk, keyed by kind. */

@@ -1,6 +1,6 @@
 import type { MachineModel } from '@/lib/model/code-book'
 import type { BEFORE, Job, JobMachineState, JobState, PeopleState, WayOut } from '@/lib/model/job'
-import type { Machine } from '@/lib/model/machine'
+import { type Machine, machineWords } from '@/lib/model/machine'
 
 /** Words of the field's screens, one table per fixed choice. */
 export const JOB_STATE_WORDS: Record<JobState, string> = {
@@ -63,11 +63,7 @@ export function machineName(
     return 'Machine not on this phone'
   }
   const model = models?.find((m) => m.id === machine.modelId)
-  const made = model
-    ? `${model.maker} ${model.model}`
-    : [machine.makerTyped, machine.modelTyped].filter(Boolean).join(' ')
-  const unit = machine.unitNumber === null ? '' : `Unit ${machine.unitNumber}`
-  return [unit, made].filter(Boolean).join(', ') || 'Machine without a name'
+  return machineWords({ ...machine, ...model })
 }
 
 /** "1 code", "2 codes": a count with its noun. */

@@ -6,9 +6,10 @@ import { type AdvisedPart, adviceFor, adviceRecord, type SheetPart } from '@/lib
 import type { Id } from '@/lib/model/id'
 import type { PartLine, PartRequest } from '@/lib/model/part-request'
 import type { Shop } from '@/lib/model/shop'
+import { moneyWords } from '@/lib/shop/currency'
+import { CHOICE_WORDS, URGENCY_WORDS } from '@/lib/shop/part-words'
 import { NotYours, useMay } from '../checks/use-may'
 import { NotSaved, useSave } from '../checks/use-save'
-import { moneyWords } from '../checks/words'
 import { useBelief } from '../engine/use-belief'
 import { useCase } from '../engine/use-case'
 import { useRoute } from '../field/router'
@@ -24,7 +25,6 @@ import { Key } from '../ui/key'
 import { RuleEdge } from '../ui/rule-edge'
 import { Screen } from '../ui/screen'
 import { adviceSentences } from './part-advice'
-import { CHOICE_WORDS, URGENCY_WORDS } from './part-words'
 
 type AskDraft = {
   quantity: number

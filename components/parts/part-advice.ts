@@ -1,12 +1,12 @@
 import type { AdvisedPart, PartAdvice } from '@/lib/diag/part-choice'
-import { moneyWords } from '../checks/words'
-import { fixed } from '../reading-strip/figures'
+import { moneyWords } from '@/lib/shop/currency'
+import { aftermarketWords, breakEvenWords } from '@/lib/shop/part-words'
 
 /** The advice in plain sentences: what to fit and the two expected costs it follows from. */
 export function adviceSentences({ figures, advice }: AdvisedPart, currency: string): string[] {
-  const even = `Break-even: the aftermarket part pays until ${fixed(advice.breakEven * 100, 1)} of 100 fail.`
+  const even = breakEvenWords(advice.breakEven)
   if (figures.aftermarketFails === null)
-    return [even, 'The shop has no failure figure for the aftermarket part, so there is no advice.']
+    return [even, `${aftermarketWords(null)} ${VERDICTS.noFigure}`]
   const of = (minor: number | null) =>
     minor === null ? '' : moneyWords(Math.round(minor), currency)
   const costs = `Expected cost with one recovery in it: genuine ${of(advice.expectedGenuineMinor)}, aftermarket ${of(advice.expectedAftermarketMinor)}.`
@@ -17,5 +17,5 @@ const VERDICTS: Record<PartAdvice['advised'], string> = {
   genuine: 'By expected cost: fit the genuine part.',
   aftermarket: 'By expected cost: fit the aftermarket part.',
   equal: 'By expected cost they come out equal.',
-  noFigure: 'No failure figure, no advice.',
+  noFigure: 'So there is no advice.',
 }

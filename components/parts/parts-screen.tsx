@@ -3,6 +3,7 @@ import { useState } from 'react'
 import { wordName } from '@/lib/diag/book-index'
 import type { Id } from '@/lib/model/id'
 import type { PartRequestRow } from '@/lib/model/part-request'
+import { CHOICE_WORDS, LINE_STATE_WORDS, URGENCY_WORDS } from '@/lib/shop/part-words'
 import { useBelief } from '../engine/use-belief'
 import { useCase } from '../engine/use-case'
 import { clockTime } from '../field/times'
@@ -13,7 +14,6 @@ import { Key } from '../ui/key'
 import { Row } from '../ui/row'
 import { RuleEdge } from '../ui/rule-edge'
 import { Screen } from '../ui/screen'
-import { CHOICE_WORDS, LINE_STATE_WORDS, URGENCY_WORDS } from './part-words'
 
 /** PARTS: what was asked for and where it stands, and what may be asked for, from the suspects. */
 export function PartsScreen({ jobId }: { jobId: Id }) {

@@ -1,8 +1,10 @@
 import { sql } from 'kysely'
 import type { BoardJob, DeskBoard } from '@/lib/model/desk'
 import type { Id } from '@/lib/model/id'
+import { machineWords } from '@/lib/model/machine'
 import { asShop, type ShopTx } from '../client'
 import { lastChange } from './changes'
+import { toJob } from './jobs'
 
 /** Whose jobs: every job of the shop, or those a person opened or is assigned to. */
 export type Whose = { kind: 'all' } | { kind: 'own'; personId: Id }
@@ -111,25 +113,7 @@ type BoardRow = Awaited<ReturnType<ReturnType<typeof boardRows>['execute']>>[num
 /** A row of boardRows in the words of the model. */
 export function toBoardJob(row: BoardRow): BoardJob {
   return {
-    job: {
-      id: row.id,
-      number: row.number,
-      machineId: row.machineId,
-      people: row.people,
-      place: row.place,
-      complaint: row.complaint,
-      before: row.before,
-      airTempC: row.airTempC,
-      weather: row.weather,
-      openedAt: row.openedAt,
-      zone: row.zone,
-      state: row.state,
-      peopleState: row.peopleState,
-      machineState: row.machineState,
-      wayOut: row.wayOut,
-      openedBy: row.openedBy,
-      assignedTo: row.assigned,
-    },
+    job: toJob({ ...row, assignedTo: row.assigned }),
     machineWords: machineWords(row),
     closedAt: row.closedAt,
     entries: row.entries,
@@ -137,15 +121,4 @@ export function toBoardJob(row: BoardRow): BoardJob {
     photosMissing: row.photosMissing,
     partsOpen: row.partsOpen,
   }
-}
-
-type Named = Pick<BoardRow, 'unitNumber' | 'makerTyped' | 'modelTyped' | 'maker' | 'model'>
-
-/** Unit, maker and model in words, as typed where there is no model of the shop's. */
-export function machineWords(row: Named): string {
-  const maker = row.maker ?? row.makerTyped
-  const model = row.model ?? row.modelTyped
-  const made = [maker, model].filter(Boolean).join(' ')
-  const unit = row.unitNumber ? `Unit ${row.unitNumber}` : ''
-  return [unit, made].filter(Boolean).join(', ') || 'Machine without a name'
 }

@@ -1,10 +1,10 @@
 import type { DeskParts } from '@/lib/model/desk'
 import type { Id } from '@/lib/model/id'
-import type { PartLine, PartLineState } from '@/lib/model/part-request'
+import { machineWords } from '@/lib/model/machine'
+import type { PartLineState } from '@/lib/model/part-request'
 import { asShop, type ShopTx } from '../client'
-import type { PartLineTable } from '../tables/job'
 import { lastChange } from './changes'
-import { machineWords } from './desk-board'
+import { toPartLine } from './part-requests'
 import { getShop } from './shop'
 
 /** How long a line that needs nothing more stays in the table, in ms: 14 days (choice). */
@@ -95,29 +95,5 @@ function toDeskLine(row: LineRow): DeskParts['lines'][number] {
     jobNumber: row.jobNumber,
     complaint: row.complaint.words,
     machineWords: machineWords(row),
-  }
-}
-
-type StoredLine = Omit<PartLineTable, 'shopId' | 'requestId' | 'lineNo' | 'state'> & {
-  state: PartLineState
-}
-
-/** A stored line in the words of the model: price with its currency, or none. */
-export function toPartLine(row: StoredLine): PartLine & { state: PartLineState } {
-  const { priceMinor, priceCurrency } = row
-  return {
-    id: row.id,
-    part: row.part,
-    words: row.words,
-    position: row.position,
-    quantity: row.quantity,
-    choice: row.choice,
-    number: row.number,
-    price:
-      priceMinor === null || priceCurrency === null
-        ? null
-        : { minor: priceMinor, currency: priceCurrency },
-    condemnedBy: row.condemnedBy,
-    state: row.state,
   }
 }

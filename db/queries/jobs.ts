@@ -202,7 +202,8 @@ const jobs = (tx: ShopTx) =>
     .where('shopId', '=', tx.shopId)
     .where('deletedAt', 'is', null)
 
-const toJob = (row: Selectable<JobTable> & { assignedTo: Id[] }): Job => ({
+/** A stored job in the words of the model. */
+export const toJob = (row: Selectable<JobTable> & { assignedTo: Id[] }): Job => ({
   id: row.id,
   machineId: row.machineId,
   people: row.people,

@@ -1,6 +1,6 @@
 import type { Selectable } from 'kysely'
 import type { Id } from '@/lib/model/id'
-import type { PartLineState, PartRequest, PartRequestRow } from '@/lib/model/part-request'
+import type { PartLine, PartLineState, PartRequest, PartRequestRow } from '@/lib/model/part-request'
 import type { Instant } from '@/lib/model/time'
 import type { ShopTx } from '../client'
 import type { PartLineTable, PartRequestTable } from '../tables/job'
@@ -132,19 +132,29 @@ const toRow = (
   urgency: row.urgency,
   note: row.note,
   advice: row.advice,
-  lines: lines.map((line) => ({
-    id: line.id,
-    part: line.part,
-    words: line.words,
-    position: line.position,
-    quantity: line.quantity,
-    choice: line.choice,
-    number: line.number,
-    price:
-      line.priceMinor === null || line.priceCurrency === null
-        ? null
-        : { minor: line.priceMinor, currency: line.priceCurrency },
-    condemnedBy: line.condemnedBy,
-    state: line.state,
-  })),
+  lines: lines.map(toPartLine),
 })
+
+type StoredLine = Omit<PartLineTable, 'shopId' | 'requestId' | 'lineNo' | 'state'> & {
+  state: PartLineState
+}
+
+/** A stored line in the words of the model: price with its currency, or none. */
+export function toPartLine(row: StoredLine): PartLine & { state: PartLineState } {
+  const { priceMinor, priceCurrency } = row
+  return {
+    id: row.id,
+    part: row.part,
+    words: row.words,
+    position: row.position,
+    quantity: row.quantity,
+    choice: row.choice,
+    number: row.number,
+    price:
+      priceMinor === null || priceCurrency === null
+        ? null
+        : { minor: priceMinor, currency: priceCurrency },
+    condemnedBy: row.condemnedBy,
+    state: row.state,
+  }
+}

@@ -16,3 +16,17 @@ export const machine = z.strictObject({
   fleet: z.boolean(),
 })
 export type Machine = z.infer<typeof machine>
+
+/** What a machine is called by; of a model of the shop's its maker and model, else as typed. */
+type Called = Partial<
+  Record<'unitNumber' | 'makerTyped' | 'modelTyped' | 'maker' | 'model', string | null>
+>
+
+/** Unit, maker and model in words: `Unit 14, Tarnholt Moor 450`. */
+export function machineWords(called: Called): string {
+  const made = [called.maker ?? called.makerTyped, called.model ?? called.modelTyped]
+  const unit = called.unitNumber ? `Unit ${called.unitNumber}` : ''
+  return (
+    [unit, made.filter(Boolean).join(' ')].filter(Boolean).join(', ') || 'Machine without a name'
+  )
+}

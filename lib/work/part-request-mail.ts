@@ -8,8 +8,15 @@ import { peopleById } from '@/db/queries/people'
 import { getShop } from '@/db/queries/shop'
 import { id } from '@/lib/model/id'
 import type { Job } from '@/lib/model/job'
-import type { PartLine, PartRequest, PartRequestRow } from '@/lib/model/part-request'
+import { machineWords } from '@/lib/model/machine'
+import type { PartLine, PartRequestRow } from '@/lib/model/part-request'
 import type { Letter, Mail } from '@/lib/ports/mail'
+import {
+  aftermarketWords,
+  breakEvenWords,
+  CHOICE_WORDS,
+  URGENCY_WORDS,
+} from '@/lib/shop/part-words'
 
 /**
  * partRequestMail: a request from the field has arrived, so the shop's parts people are told by one
@@ -17,16 +24,6 @@ import type { Letter, Mail } from '@/lib/ports/mail'
  * request by its key; the letter's id is the request's, so a second copy is known as such.
  */
 const payload = z.object({ shopId: id, requestId: id })
-
-const URGENCY = { now: 'now', today: 'today', thisWeek: 'this week' } as const satisfies Record<
-  PartRequest['urgency'],
-  string
->
-const CHOICE = {
-  genuine: 'genuine part',
-  aftermarket: 'aftermarket part',
-  either: 'genuine or aftermarket',
-} as const satisfies Record<PartLine['choice'], string>
 
 /** Writes and sends the letter; does nothing for a request that is gone or when nobody has an address. */
 export async function partRequestMail(
@@ -46,12 +43,13 @@ async function letterFor(tx: ShopTx, requestId: string, address: string): Promis
   if (!request || !job || to.length === 0) return null
   const [askedBy] = await peopleById(tx, [request.askedBy])
   const { name } = await getShop(tx)
+  const needed = URGENCY_WORDS[request.urgency].toLowerCase()
   const first = request.lines[0]?.words ?? ''
   const more = request.lines.length > 1 ? ` and ${request.lines.length - 1} more` : ''
   const text = [
-    `${askedBy?.name ?? 'Somebody in the field'} asks for parts on job ${job.number ?? ''}, needed ${URGENCY[request.urgency]}.`,
+    `${askedBy?.name ?? 'Somebody in the field'} asks for parts on job ${job.number ?? ''}, needed ${needed}.`,
     '',
-    `Machine: ${await machineWords(tx, job)}`,
+    `Machine: ${await nameOfMachine(tx, job)}`,
     `Complaint: ${job.complaint.words}`,
     '',
     ...request.lines.map(lineWords),
@@ -62,40 +60,30 @@ async function letterFor(tx: ShopTx, requestId: string, address: string): Promis
     '',
     name,
   ].join('\n')
-  const subject = oneLine(
-    `${job.number ?? 'Job'}: ${first}${more}, needed ${URGENCY[request.urgency]}`,
-  )
+  const subject = oneLine(`${job.number ?? 'Job'}: ${first}${more}, needed ${needed}`)
   return { id: request.id, to, subject, text }
 }
 
 /** A head field has one line. */
 const oneLine = (text: string): string => text.replace(/\s+/g, ' ').trim()
 
-async function machineWords(tx: ShopTx, job: Job): Promise<string> {
-  const [machine] = await machinesById(tx, [job.machineId])
-  if (!machine) return 'unknown'
-  const [model] = machine.modelId === null ? [] : await listModels(tx, [machine.modelId])
-  const unit = machine.unitNumber === null ? null : `unit ${machine.unitNumber}`
-  const words = [model?.maker ?? machine.makerTyped, model?.model ?? machine.modelTyped, unit]
-  return words.filter((word) => word !== null).join(' ') || 'unknown'
+async function nameOfMachine(tx: ShopTx, { machineId }: Job): Promise<string> {
+  const [machine] = await machinesById(tx, [machineId])
+  const [model] = machine?.modelId ? await listModels(tx, [machine.modelId]) : []
+  return machineWords({ ...machine, ...model })
 }
 
 function lineWords(line: PartLine): string {
   const number = line.number === null ? '' : `, number ${line.number}`
   const position = line.position === null ? '' : `, ${line.position}`
-  return `  ${line.quantity} x ${line.words} (${CHOICE[line.choice]}${number}${position})`
+  return `  ${line.quantity} x ${line.words} (${CHOICE_WORDS[line.choice].toLowerCase()}${number}${position})`
 }
 
 /** The sum that was shown in the field: from which failure chance on the cheaper part is not worth it. */
 function adviceWords({ advice }: PartRequestRow): string[] {
   if (advice === null) return []
-  const breakEven = (advice.breakEven * 100).toFixed(1)
-  const figure =
-    advice.aftermarketFails === null
-      ? 'the shop has no figure for it'
-      : `the shop’s own figure is ${(advice.aftermarketFails * 100).toFixed(1)} of 100`
   return [
     '',
-    `Worked out in the field: the aftermarket part pays while fewer than ${breakEven} of 100 fail; ${figure}.`,
+    `Worked out in the field. ${breakEvenWords(advice.breakEven)} ${aftermarketWords(advice.aftermarketFails)}`,
   ]
 }

@@ -2,9 +2,15 @@ import { describe, expect, it } from 'vitest'
 import { boardNews } from '@/components/desk/board/board-news'
 import { reads, staleReads } from '@/components/desk/live/stale-reads'
 import { adviceWords } from '@/components/desk/parts/advice-words'
-import { lineBoxes, lineMoveForm, minorOf } from '@/components/desk/parts/line-move.schema'
+import {
+  lineBoxes,
+  lineMoveForm,
+  minorOf,
+  priceText,
+} from '@/components/desk/parts/line-move.schema'
 import { homeOf, pathAskedFor } from '@/components/sign-in/home-of'
 import type { BoardJob, DeskBoard } from '@/lib/model/desk'
+import { currencyPlaces } from '@/lib/shop/currency'
 
 const change = (entity: string, jobId: string | null = 'j1') => ({ seq: 4, entity, id: 'x', jobId })
 
@@ -72,14 +78,26 @@ describe('the boxes of a part line', () => {
     ['0.05', 5],
     ['', null],
   ])('[R14] reads the price %s', (typed, minor) => {
-    expect(lineBoxes.safeParse({ number: '', price: typed }).success).toBe(true)
-    expect(minorOf(typed)).toBe(minor)
+    expect(lineBoxes(2).safeParse({ number: '', price: typed }).success).toBe(true)
+    expect(minorOf(typed, 2)).toBe(minor)
+  })
+
+  it.each([
+    ['JPY', '13500', 13_500, '135.00'],
+    ['KWD', '1.250', 1_250, '1.25'],
+    ['USD', '1.25', 125, '1.250'],
+  ])('[R14] a price in %s has the decimals of the currency', (currency, typed, minor, wrong) => {
+    const places = currencyPlaces(currency)
+    const fits = (price: string) => lineBoxes(places).safeParse({ number: '', price }).success
+    expect([fits(typed), fits(wrong)]).toEqual([true, false])
+    expect(minorOf(typed, places)).toBe(minor)
+    expect(priceText(minor, places)).toBe(typed)
   })
 
   it.each(['-1', '1.5', '1.234', '12 345', 'abc', '99999999'])(
     '[R14] refuses the price %s',
     (typed) => {
-      expect(lineBoxes.safeParse({ number: '', price: typed }).success).toBe(false)
+      expect(lineBoxes(2).safeParse({ number: '', price: typed }).success).toBe(false)
     },
   )
 
@@ -114,7 +132,9 @@ describe('the boxes of a part line', () => {
       },
       'USD',
     )
-    expect(words.first).toBe('Aftermarket advised. Break-even 38.7 of 100.')
+    expect(words.first).toBe(
+      'Aftermarket advised. Break-even: the aftermarket part pays until 38.7 of 100 fail.',
+    )
     expect(words.from).toBe(
       'Genuine 135.00 USD, fails 2 of 100. Aftermarket 25.00 USD. Aftermarket fails 12 of 100. Second recovery 300.00 USD.',
     )

@@ -3,10 +3,11 @@ import { aboutInstant } from '@/components/checks/about-time'
 import { figureOf, pressed } from '@/components/checks/keypad-text'
 import { readDegrees } from '@/components/checks/meter-setup-form'
 import { movedBetween, whyLine } from '@/components/checks/why-words'
-import { minutesWords, moneyWords, onScreen } from '@/components/checks/words'
+import { minutesWords, onScreen } from '@/components/checks/words'
 import { minutesUntil } from '@/components/engine/leave-by'
 import { unitLabel } from '@/components/reading-strip/unit-words'
 import { marksOf, saysNothing } from '@/components/suspects/outlook-words'
+import { moneyWords } from '@/lib/shop/currency'
 
 describe('the keypad', () => {
   const typed = (...keys: string[]) => keys.reduce((text, key) => pressed(text, key as never), '')

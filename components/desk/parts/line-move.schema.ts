@@ -10,7 +10,7 @@ const partNumber = z
     z.minLength(1, 'Type the part number.'),
     z.maxLength(40, 'At most 40 characters.'),
   )
-/** Price of one piece in minor units; up to 1,000,000.00 of the shop's currency. */
+/** Price of one piece in minor units; up to 100,000,000 of them. */
 const priceMinor = z.int().check(z.minimum(0), z.maximum(100_000_000))
 
 /** A move of one part line by the parts desk. `from` is the state the screen showed. */
@@ -26,21 +26,32 @@ export const lineMoveForm = z.discriminatedUnion('to', [
 ])
 export type LineMoveForm = z.infer<typeof lineMoveForm>
 
-/** What the parts desk types into the line's two boxes; the price is of one piece. */
-export const lineBoxes = z.strictObject({
-  number: z.string().check(z.trim(), z.maxLength(40, 'At most 40 characters.')),
-  price: z
-    .string()
-    .check(
-      z.trim(),
-      z.regex(/^$|^\d{1,7}([.,]\d{2})?$/, 'A price in figures, like 135.00, or nothing.'),
-    ),
-})
-export type LineBoxes = z.infer<typeof lineBoxes>
+/**
+ * What the parts desk types into the line's two boxes; the price is of one piece, with as many decimals
+ * as the shop's currency has (`places`) or none.
+ */
+export const lineBoxes = (places: number) =>
+  z.strictObject({
+    number: z.string().check(z.trim(), z.maxLength(40, 'At most 40 characters.')),
+    price: z
+      .string()
+      .check(
+        z.trim(),
+        z.regex(pricePattern(places), `A price in figures, like ${priceText(13_500, places)}.`),
+      ),
+  })
+export type LineBoxes = z.infer<ReturnType<typeof lineBoxes>>
+
+const pricePattern = (places: number) =>
+  new RegExp(places === 0 ? '^\\d{0,7}$' : `^$|^\\d{1,7}([.,]\\d{${places}})?$`)
+
+/** Minor units as they are typed: `135.00`. */
+export const priceText = (minor: number, places: number): string =>
+  (minor / 10 ** places).toFixed(places)
 
 /** `135.00` or `135,00` or `135` in minor units; null for nothing typed. Only what `lineBoxes` takes. */
-export function minorOf(price: string): number | null {
+export function minorOf(price: string, places: number): number | null {
   if (price === '') return null
-  const [whole = '0', cents = '00'] = price.replace(',', '.').split('.')
-  return Number(whole) * 100 + Number(cents)
+  const [whole = '0', part = ''] = price.replace(',', '.').split('.')
+  return Number(whole) * 10 ** places + Number(part.padEnd(places, '0') || 0)
 }

@@ -6,26 +6,37 @@ import { Field } from '@/components/ui/field'
 import { Hold } from '@/components/ui/hold'
 import { Key } from '@/components/ui/key'
 import type { PartLine, PartLineState } from '@/lib/model/part-request'
+import { currencyPlaces } from '@/lib/shop/currency'
 import { mayMove } from '@/lib/shop/job-states'
-import { LINE_STATE_WORDS } from '../../parts/part-words'
+import { LINE_STATE_WORDS } from '@/lib/shop/part-words'
 import type { MoveLineAction } from '../desk-actions'
 import { useDesk } from '../desk-context'
 import { useActing } from '../use-acting'
-import { type LineBoxes, type LineMoveForm, lineBoxes, minorOf } from './line-move.schema'
+import {
+  type LineBoxes,
+  type LineMoveForm,
+  lineBoxes,
+  minorOf,
+  priceText,
+} from './line-move.schema'
 
 type Line = PartLine & { state: PartLineState }
 type Props = { requestId: string; line: Line; move: MoveLineAction }
 
 const boxesOf = ({ number, price }: Line): LineBoxes => ({
   number: number ?? '',
-  price: price ? (price.minor / 100).toFixed(2) : '',
+  price: price ? priceText(price.minor, currencyPlaces(price.currency)) : '',
 })
 
 /** Number and price of a line, and the keys that move it on: only moves its state allows are shown. */
 export function LineWork({ requestId, line, move }: Props) {
   const { shop } = useDesk()
+  const places = currencyPlaces(shop.currency)
   const { busy, refusal, act } = useActing()
-  const form = useForm<LineBoxes>({ resolver: zodResolver(lineBoxes), values: boxesOf(line) })
+  const form = useForm<LineBoxes>({
+    resolver: zodResolver(lineBoxes(places)),
+    values: boxesOf(line),
+  })
   const { control, handleSubmit, setError, getValues } = form
   const head = { requestId, lineId: line.id, from: line.state }
   const can = (to: PartLineState) => mayMove('partLine', line.state, to)
@@ -37,7 +48,7 @@ export function LineWork({ requestId, line, move }: Props) {
     send({ ...head, to: 'identified', number })
   })
   const quote = handleSubmit(({ number, price }) => {
-    const priceMinor = minorOf(price)
+    const priceMinor = minorOf(price, places)
     if (priceMinor === null) return setError('price', { message: 'Type the price of one piece.' })
     send({ ...head, to: 'quoted', number: number === '' ? null : number, priceMinor })
   })
