@@ -28,6 +28,8 @@ export type IntakeDraft = {
   before: (typeof BEFORE)[number][]
   place: Place | null
   placeText: string
+  /** The last fix, given back when what was typed over it is cleared. Not in drafts begun before it was kept. */
+  lastFix?: Place | null
   placeWords: string
   air: string
   weather: string
@@ -49,6 +51,7 @@ export const EMPTY_INTAKE: IntakeDraft = {
   before: [],
   place: null,
   placeText: '',
+  lastFix: null,
   placeWords: '',
   air: '',
   weather: '',

@@ -15,6 +15,7 @@ import type { Place } from '@/lib/model/place'
 import type { PositionProblem } from '@/lib/ports/position'
 import { PlaceShown } from '../place-shown'
 import type { StepProps } from './intake-draft'
+import { afterFix, afterTyping, NO_PLACE } from './place-draft'
 
 const FIX_WORDS: Record<PositionProblem['kind'], string> = {
   refused:
@@ -36,17 +37,23 @@ const TYPED_WORDS: Record<PlaceProblem['kind'], string> = {
 /** Where it stands: a fix with accuracy and age, or typed; and the air. */
 export function PlaceStep({ draft, change }: StepProps) {
   const near = useLastPoint()
+  const stamp = useStamp()
   return (
     <>
-      <FixPart place={draft.place} onPlace={(place) => change({ place, placeText: '' })} />
+      <FixPart place={draft.place} onPlace={(place) => change(afterFix(place))} />
       <TypedPart
         text={draft.placeText}
         near={near}
-        onText={(placeText, place) =>
-          change({ placeText, ...(place === undefined ? {} : { place }) })
-        }
+        onText={(text) => change(afterTyping(draft, text, stamp.now()))}
       />
-      {draft.place === null ? null : <PlaceShown place={draft.place} />}
+      {draft.place === null ? null : (
+        <>
+          <PlaceShown place={draft.place} />
+          <Key small quiet onClick={() => change(NO_PLACE)}>
+            Remove this position
+          </Key>
+        </>
+      )}
       <Field
         label="The place in words"
         hint="Trail, marker, what stands there."
@@ -116,22 +123,8 @@ function FixPart({ place, onPlace }: { place: Place | null; onPlace: (place: Pla
   )
 }
 
-function TypedPart(props: {
-  text: string
-  near: Point | null
-  onText: (text: string, place?: Place | null) => void
-}) {
-  const stamp = useStamp()
+function TypedPart(props: { text: string; near: Point | null; onText: (text: string) => void }) {
   const read = parsePlace(props.text)
-  const type = (text: string) => {
-    const next = parsePlace(text)
-    if (!next.ok) {
-      // What the fix gave stays until a typed position can be read.
-      props.onText(text)
-      return
-    }
-    props.onText(text, typedPlace(next.value, text, stamp.now()))
-  }
   const doubts = read.ok ? doubtsOf(read.value, props.near) : []
   return (
     <>
@@ -139,7 +132,7 @@ function TypedPart(props: {
         label="Or type it"
         hint="47.1 N 93.2 W, or 47 06.0 N 93 12.0 W, or 47 06 00 N 93 12 00 W."
         value={props.text}
-        onChange={type}
+        onChange={props.onText}
         maxLength={120}
         autoCapitalize="characters"
         figures
@@ -149,24 +142,12 @@ function TypedPart(props: {
         <DoubtShown
           key={doubt.kind}
           doubt={doubt}
-          onTake={(point) =>
-            props.onText(printDegrees(point), typedPlace(point, printDegrees(point), stamp.now()))
-          }
+          onTake={(point) => props.onText(printDegrees(point))}
         />
       ))}
     </>
   )
 }
-
-const typedPlace = (point: Point, text: string, at: string): Place => ({
-  latitude: point.latitude,
-  longitude: point.longitude,
-  source: 'typed',
-  accuracyMetres: null,
-  at,
-  asTyped: text.trim(),
-  words: null,
-})
 
 const DOUBT_WORDS: Record<PlaceDoubt['kind'], string> = {
   otherHalf: 'With the other N/S or E/W it lies by the last job.',
