@@ -6,8 +6,8 @@ import { type Control, Controller, type FieldErrors, useForm } from 'react-hook-
 import { Field } from '@/components/ui/field'
 import { Key } from '@/components/ui/key'
 import { browserShopLine, type ShopLine, type SignInProblem } from '@/lib/ports/shop-line'
+import { arrive } from './arrive'
 import { homeOf, pathAskedFor } from './home-of'
-import { readActor } from './read-actor'
 import { type SignInForm as Fields, signInForm } from './sign-in.schema'
 import { signInSentence } from './sign-in-sentences'
 
@@ -36,7 +36,7 @@ export function SignInForm({ line = browserShopLine, goTo = leaveTo }: Props) {
     const answer = await line.signIn(email, password)
     resetField('password')
     if (!answer.ok) return setProblem(answer.problem)
-    const actor = await readActor(line)
+    const actor = await arrive(line)
     if (!actor) return setProblem({ kind: 'serverTrouble' })
     goTo(pathAskedFor(window.location.search) ?? homeOf(actor.roles))
   }

@@ -53,6 +53,11 @@ export async function setNobody(db: DeviceDb, leaving: Id | null): Promise<void>
   await db.current.put({ id: 'current', key: null, leaving })
 }
 
+/** No session is still to be ended: who signed out without signal has signed in again. */
+export async function stayHere(db: DeviceDb): Promise<void> {
+  await db.current.update('current', { leaving: null })
+}
+
 /** The person whose session is still to be ended. */
 export async function leavingPerson(db: DeviceDb): Promise<Id | null> {
   return (await db.current.toArray())[0]?.leaving ?? null

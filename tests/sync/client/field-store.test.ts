@@ -1,8 +1,11 @@
 import { v7 } from 'uuid'
 import { describe, expect, test } from 'vitest'
+import { arrive } from '@/components/sign-in/arrive'
 import type { Actor } from '@/lib/model/person'
+import { fail, ok } from '@/lib/model/result'
 import { inProcessLock } from '@/lib/ports/lock'
 import { networkOf } from '@/lib/ports/network'
+import { browserShopLine, type ShopLine } from '@/lib/ports/shop-line'
 import { FieldStore } from '@/lib/sync/client/field-store'
 import type { Indexed } from '@/lib/sync/client/phone-db'
 import type { Session } from '@/lib/sync/client/views'
@@ -127,6 +130,46 @@ describe('who is at work on the phone', () => {
     const again = start(shop, indexed)
     expect(personOf(await again.opened())).toBe(MECHANIC.personId)
     await again.end()
+  })
+
+  test('signing out without a line and in again with one keeps the new session', async () => {
+    const shop = new ShopDouble()
+    const indexed = newIndexed()
+    const first = start(shop, indexed)
+    await first.opened()
+    shop.fault = () => ({ noLine: true })
+    await first.store.signOut()
+    await first.end()
+    shop.fault = () => null
+    const line: ShopLine = {
+      ...browserShopLine,
+      getJson: async (path) => ok(await (await shop.fetch(path, {})).json()),
+    }
+    expect((await arrive(line, indexed))?.personId).toBe(MECHANIC.personId)
+    const app = start(shop, indexed)
+    expect(personOf(await app.opened())).toBe(MECHANIC.personId)
+    expect(shop.session).toBe(true)
+    await app.end()
+  })
+
+  test('a sign-in that finds nobody leaves the sign-out to be told to the shop', async () => {
+    const shop = new ShopDouble()
+    const indexed = newIndexed()
+    const first = start(shop, indexed)
+    await first.opened()
+    shop.fault = () => ({ noLine: true })
+    await first.store.signOut()
+    await first.end()
+    const line: ShopLine = {
+      ...browserShopLine,
+      getJson: () => Promise.resolve(fail({ kind: 'signedOut' })),
+    }
+    expect(await arrive(line, indexed)).toBeNull()
+    shop.fault = () => null
+    const app = start(shop, indexed)
+    expect(await app.opened()).toEqual({ kind: 'signedOut' })
+    expect(shop.session).toBe(false)
+    await app.end()
   })
 
   test('a change of roles at the shop reaches the screens', async () => {
