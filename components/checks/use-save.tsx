@@ -43,7 +43,7 @@ export function useSave(): Save {
 }
 
 /** Sentences by what went wrong; what was typed is still there in every case. */
-export function whyNotSaved(error: unknown): string {
+function whyNotSaved(error: unknown): string {
   const kind = error instanceof AppError ? error.kind : 'unknown'
   const words: Record<string, string> = {
     storeFull: 'Not saved: this phone has no room left. What you typed is still here.',

@@ -77,6 +77,7 @@ export function ThemeMenu() {
   return (
     <Choice
       legend="Light"
+      legendHidden
       columns={2}
       value={choice}
       onChange={pick}

@@ -3,7 +3,7 @@
 import { useBook } from '@/components/store/use-book'
 import { useJobs, useMachines, useModels, useShop } from '@/components/store/use-rows'
 import { useSession, useSignOut } from '@/components/store/use-session'
-import { useUnsent } from '@/components/store/use-unsent'
+import { type UnsentView, useUnsent } from '@/components/store/use-unsent'
 import { announce } from '@/components/ui/announce'
 import { Caution } from '@/components/ui/caution'
 import { Hold } from '@/components/ui/hold'
@@ -75,7 +75,7 @@ function Holds() {
     ['Code book', book.version === null ? 'None' : `Version ${book.version}`],
     ['Checks in it', String(book.index?.checks.size ?? 0)],
     ['Engine', `Version ${ENGINE_VERSION}`],
-    ['Unsent', unsent.count === 0 ? 'Nothing' : counted(unsent.count, 'thing')],
+    ['Unsent', unsentWords(unsent)],
   ] as const
   return (
     <section className="grid gap-2">
@@ -94,6 +94,10 @@ function Holds() {
     </section>
   )
 }
+
+/** Nothing is said of what is sent before it is counted. */
+export const unsentWords = ({ counted: known, count }: Pick<UnsentView, 'counted' | 'count'>) =>
+  known ? (count === 0 ? 'Nothing' : counted(count, 'thing')) : 'Counting'
 
 function Person() {
   const session = useSession()
