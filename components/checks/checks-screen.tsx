@@ -15,6 +15,7 @@ import type { Answer } from '../engine/work'
 import { entryMention } from '../log/entry-words'
 import { proofSentence } from '../outcome/proof-words'
 import { useBook } from '../store/use-book'
+import { useJobZone } from '../store/use-job-zone'
 import { useShop } from '../store/use-rows'
 import { behindWords } from '../suspects/book-words'
 import { NOTICE_WORDS } from '../suspects/notice-words'
@@ -132,6 +133,7 @@ function Ready({ jobId, index, view, belief, stale, entries }: ReadyProps) {
         <Top plan={plan} answer={view.answer} index={index} run={run} />
       )}
       <Suspects
+        jobId={jobId}
         index={index}
         belief={belief}
         outlook={view.working ? [] : nextOutlook(view.answer)}
@@ -140,8 +142,8 @@ function Ready({ jobId, index, view, belief, stale, entries }: ReadyProps) {
       />
       {plan !== null && (
         <>
-          <RunnerUp plan={plan} currency={currency} index={index} actOn={actOn} />
-          <OtherChecks plan={plan} currency={currency} index={index} actOn={actOn} />
+          <RunnerUp jobId={jobId} plan={plan} currency={currency} index={index} actOn={actOn} />
+          <OtherChecks jobId={jobId} plan={plan} currency={currency} index={index} actOn={actOn} />
         </>
       )}
       <AssumesPanel jobId={jobId} view={view.means} shop={shop} bookVersion={index.version} />
@@ -216,6 +218,7 @@ const START = {
 } as const
 
 type SuspectsProps = {
+  jobId: Id
   index: BookIndex
   belief: Answer['belief']
   outlook: readonly Outcome[]
@@ -223,7 +226,8 @@ type SuspectsProps = {
   stale: boolean
 }
 
-function Suspects({ index, belief, outlook, entries, stale }: SuspectsProps) {
+function Suspects({ jobId, index, belief, outlook, entries, stale }: SuspectsProps) {
+  const zone = useJobZone(jobId)
   const [open, setOpen] = useState<string | null>(null)
   return (
     <section aria-labelledby="suspects" className="grid gap-2">
@@ -239,7 +243,7 @@ function Suspects({ index, belief, outlook, entries, stale }: SuspectsProps) {
         open={open}
         onOpen={setOpen}
         entryWords={(id) => wordsOf(id, entries, index)}
-        why={(suspect) => <WhyView suspect={suspect} entries={entries} index={index} />}
+        why={(suspect) => <WhyView suspect={suspect} entries={entries} index={index} zone={zone} />}
       />
     </section>
   )

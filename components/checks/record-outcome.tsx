@@ -3,15 +3,16 @@ import type { BookIndex } from '@/lib/diag/book-index'
 import type { CheckItem } from '@/lib/model/code-book'
 import type { Id } from '@/lib/model/id'
 import type { LogBody, LogEntry } from '@/lib/model/log-entry'
+import { happenedAbout } from '../field/log/happened-about'
 import { clockTime } from '../field/times'
 import { entryMention } from '../log/entry-words'
 import { useDraft } from '../store/use-draft'
+import { useJobZone } from '../store/use-job-zone'
 import { useStamp } from '../store/use-stamp'
 import { DraftSign } from '../ui/draft-sign'
 import { Field } from '../ui/field'
 import { Key } from '../ui/key'
 import { RuleEdge } from '../ui/rule-edge'
-import { aboutInstant } from './about-time'
 import { useTimesDone } from './check-steps'
 import { FRESH, type HowDone, HowDoneForm } from './how-done'
 import { NotYours, useMayLog } from './use-may'
@@ -40,7 +41,7 @@ function Recording({ jobId, check, index, before, onSaved }: Props) {
   return (
     <section aria-labelledby="found" className="grid gap-4">
       <RuleEdge id="found">What did you find</RuleEdge>
-      <Earlier before={before} index={index} />
+      <Earlier jobId={jobId} before={before} index={index} />
       <p>
         <b>Write down:</b> {check.record}
       </p>
@@ -72,8 +73,11 @@ function useOutcome(jobId: Id, check: CheckItem, onSaved: (id: Id) => void) {
   const times = useTimesDone(check.id)
   const stamp = useStamp()
   const { save, saving, problem } = useSave()
-  const happenedAt = () =>
-    value.earlier ? aboutInstant(value.about, stamp.zone, stamp.now()) : stamp.now()
+  const zone = useJobZone(jobId)
+  const happenedAt = () => {
+    if (!value.earlier) return stamp.now()
+    return value.about === '' ? null : happenedAbout(value.about, stamp.now(), zone)
+  }
   const keep = async (body: LogBody) => {
     const at = happenedAt()
     if (at === null) return
@@ -94,13 +98,14 @@ function useOutcome(jobId: Id, check: CheckItem, onSaved: (id: Id) => void) {
   return { value, set, kept, how: { found, couldNot, saving, problem, happenedAt } }
 }
 
-function Earlier({ before, index }: { before: readonly LogEntry[]; index: BookIndex }) {
+function Earlier({ jobId, before, index }: Pick<Props, 'jobId' | 'before' | 'index'>) {
+  const zone = useJobZone(jobId)
   if (before.length === 0) return null
   return (
     <ul className="grid gap-1 border-l-4 border-ink pl-3">
       {before.map((entry) => (
         <li key={entry.id}>
-          <span className="figures mr-2 text-ink2">{clockTime(entry.happenedAt, entry.zone)}</span>
+          <span className="figures mr-2 text-ink2">{clockTime(entry.happenedAt, zone)}</span>
           {entryMention(entry.body, index)}
         </li>
       ))}

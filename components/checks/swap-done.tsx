@@ -6,6 +6,7 @@ import type { Id } from '@/lib/model/id'
 import { useBeliefUpTo } from '../engine/use-belief'
 import { clockTime } from '../field/times'
 import { of100 } from '../reading-strip/figures'
+import { useJobZone } from '../store/use-job-zone'
 import { RuleEdge } from '../ui/rule-edge'
 import { doneWords, STEP_WORDS, swapSays } from './swap-words'
 
@@ -43,10 +44,11 @@ function Done({
   part: string
 }) {
   const { answer } = useBeliefUpTo(jobId, one.entry.id)
+  const zone = useJobZone(jobId)
   const suspect = answer?.belief.suspects.find((row) => row.fault === swap.fault)
   return (
     <li className="flex min-h-row items-center gap-3 border-b-[1.5px] border-rule py-2">
-      <span className="figures text-ink2">{clockTime(one.entry.happenedAt, one.entry.zone)}</span>
+      <span className="figures text-ink2">{clockTime(one.entry.happenedAt, zone)}</span>
       <span className="min-w-0 flex-1">
         <b className="block">{STEP_WORDS[one.body.step].title(part)}</b>
         <span className="block">{doneWords(one.body)}</span>

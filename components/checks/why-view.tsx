@@ -6,10 +6,16 @@ import { entryMention } from '../log/entry-words'
 import { of100 } from '../reading-strip/figures'
 import { whyLine } from './why-words'
 
-type Props = { suspect: Suspect; entries: readonly LogEntry[]; index: BookIndex }
+type Props = {
+  suspect: Suspect
+  entries: readonly LogEntry[]
+  index: BookIndex
+  /** In which times are shown. */
+  zone: string
+}
 
 /** Why a suspect stands where it stands: each piece of evidence, its direction, how strongly, and when. */
-export function WhyView({ suspect, entries, index }: Props) {
+export function WhyView({ suspect, entries, index, zone }: Props) {
   const repair = index.faults.get(suspect.fault)
   return (
     <div className="mt-2 grid gap-2 border-l-4 border-ink pl-3">
@@ -24,6 +30,7 @@ export function WhyView({ suspect, entries, index }: Props) {
             why={why}
             entry={entries.find((entry) => entry.id === why.entryId) ?? null}
             index={index}
+            zone={zone}
           />
         ))}
       </ul>
@@ -40,7 +47,7 @@ const speaks = (why: Suspect['why'][number]): boolean =>
   why.about === 'share' || whyLine(why).direction !== 'nothing'
 
 /** What was looked at and says nothing about this suspect, in one line. */
-function Silent({ suspect, entries, index }: Props) {
+function Silent({ suspect, entries, index }: Omit<Props, 'zone'>) {
   const words = suspect.why
     .filter((why) => !speaks(why))
     .map((why) => entries.find((entry) => entry.id === why.entryId))
@@ -50,14 +57,17 @@ function Silent({ suspect, entries, index }: Props) {
   return <p className="text-second text-ink2">Says nothing about it: {words.join('; ')}.</p>
 }
 
-type RowProps = { why: Suspect['why'][number]; entry: LogEntry | null; index: BookIndex }
+type RowProps = Pick<Props, 'index' | 'zone'> & {
+  why: Suspect['why'][number]
+  entry: LogEntry | null
+}
 
-function WhyRow({ why, entry, index }: RowProps) {
+function WhyRow({ why, entry, index, zone }: RowProps) {
   const line = whyLine(why)
   return (
     <li className="text-second">
       {entry !== null && (
-        <span className="figures mr-2 text-ink2">{clockTime(entry.happenedAt, entry.zone)}</span>
+        <span className="figures mr-2 text-ink2">{clockTime(entry.happenedAt, zone)}</span>
       )}
       <b>{entry === null ? why.label : capital(entryMention(entry.body, index))}</b>
       {why.about !== 'share' && (

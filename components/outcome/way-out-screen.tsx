@@ -20,6 +20,7 @@ import { clockTime } from '../field/times'
 import { MACHINE_WORDS, PEOPLE_WORDS, WAY_OUT_WORDS } from '../field/words'
 import { useBook } from '../store/use-book'
 import { useDraft } from '../store/use-draft'
+import { useJobZone } from '../store/use-job-zone'
 import { useSession } from '../store/use-session'
 import { announce } from '../ui/announce'
 import { Caution } from '../ui/caution'
@@ -123,12 +124,13 @@ export function WayOutScreen({ jobId }: { jobId: Id }) {
 
 function Decided({ entry }: { entry: LogEntry }) {
   const { body } = entry
+  const zone = useJobZone(entry.jobId)
   if (body.kind !== 'wayOut') return null
   return (
     <section aria-labelledby="decided" className="grid gap-1">
       <RuleEdge id="decided">Decided</RuleEdge>
       <p className="text-row font-bold">
-        <span className="figures mr-2 text-ink2">{clockTime(entry.happenedAt, entry.zone)}</span>
+        <span className="figures mr-2 text-ink2">{clockTime(entry.happenedAt, zone)}</span>
         {WAY_OUT_WORDS[body.wayOut]}
       </p>
       <p>

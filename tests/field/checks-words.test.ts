@@ -1,5 +1,4 @@
 import { describe, expect, it } from 'vitest'
-import { aboutInstant } from '@/components/checks/about-time'
 import { figureOf, pressed } from '@/components/checks/keypad-text'
 import { readDegrees } from '@/components/checks/meter-setup-form'
 import { movedBetween, whyLine } from '@/components/checks/why-words'
@@ -47,14 +46,6 @@ describe('units on the keypad', () => {
 })
 
 describe('times and money in words', () => {
-  it('[R8] "about" is the last time that clock time was, in the zone of the phone', () => {
-    const now = '2026-11-24T18:20:30.000Z'
-    expect(aboutInstant('11:30', 'Etc/GMT+6', now)).toBe('2026-11-24T17:30:00.000Z')
-    expect(aboutInstant('13:00', 'Etc/GMT+6', now)).toBe('2026-11-23T19:00:00.000Z')
-    expect(aboutInstant('12:20', 'Etc/GMT+6', now)).toBe(now)
-    expect(aboutInstant('25:00', 'Etc/GMT+6', now)).toBeNull()
-  })
-
   it('[R6] leave-by counts in minutes of the job, negative once it is past', () => {
     const now = Date.parse('2026-11-24T18:20:30.000Z')
     expect(minutesUntil('16:33', 'Etc/GMT+6', now)).toBe(253)

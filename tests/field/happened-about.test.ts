@@ -26,5 +26,17 @@ describe('[R8] happened about', () => {
     const now = '2026-10-25T06:00:00.000Z'
     expect(happenedAbout('01:30', now, 'Europe/Berlin')).toBe('2026-10-24T23:30:00.000Z')
     expect(happenedAbout('03:30', now, 'Europe/Berlin')).toBe('2026-10-25T02:30:00.000Z')
+    // 02:30 came twice: the second time once that is past, the first time before.
+    expect(happenedAbout('02:30', now, 'Europe/Berlin')).toBe('2026-10-25T01:30:00.000Z')
+    const between = '2026-10-25T01:10:00.000Z'
+    expect(happenedAbout('02:30', between, 'Europe/Berlin')).toBe('2026-10-25T00:30:00.000Z')
+  })
+
+  test('holds across the start of summer time (Europe/Berlin, 29 March 2026, 02:00 to 03:00)', () => {
+    const now = '2026-03-29T01:30:00.000Z'
+    expect(happenedAbout('01:30', now, 'Europe/Berlin')).toBe('2026-03-29T00:30:00.000Z')
+    // There was no 02:30 this night: the one of the night before.
+    expect(happenedAbout('02:30', now, 'Europe/Berlin')).toBe('2026-03-28T01:30:00.000Z')
+    expect(happenedAbout('04:00', now, 'Europe/Berlin')).toBe('2026-03-28T03:00:00.000Z')
   })
 })

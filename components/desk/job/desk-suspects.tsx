@@ -44,7 +44,14 @@ export function DeskSuspects({ found, reckoned }: { found: DeskJob; reckoned: Jo
               open={open}
               onOpen={setOpen}
               why={(suspect) =>
-                index && <WhyView suspect={suspect} entries={found.entries} index={index} />
+                index && (
+                  <WhyView
+                    suspect={suspect}
+                    entries={found.entries}
+                    index={index}
+                    zone={found.shop.zone}
+                  />
+                )
               }
             />
           </div>

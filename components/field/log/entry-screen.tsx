@@ -5,6 +5,7 @@ import { useMayCorrect } from '@/components/checks/use-may'
 import { entryWords } from '@/components/log/entry-words'
 import { ReadingLine } from '@/components/log/reading-line'
 import { useBook } from '@/components/store/use-book'
+import { useJobZone } from '@/components/store/use-job-zone'
 import { useLog } from '@/components/store/use-log'
 import { usePhoto } from '@/components/store/use-photo'
 import { usePeople } from '@/components/store/use-rows'
@@ -24,6 +25,7 @@ export function EntryScreen({ jobId, entryId }: { jobId: string; entryId: string
   const { index } = useBook()
   const line = log?.find((l) => l.entry.id === entryId)
   const mine = useMayCorrect(line?.entry)
+  const zone = useJobZone(jobId)
   if (line === undefined) {
     return (
       <Screen title="Entry">
@@ -64,11 +66,11 @@ export function EntryScreen({ jobId, entryId }: { jobId: string; entryId: string
       {later === undefined ? null : (
         <p className="font-bold">
           {later.body.kind === 'correction'
-            ? `Corrected at ${clockTime(later.happenedAt, later.zone)}: ${later.body.reason}`
-            : `Replaced at ${clockTime(later.happenedAt, later.zone)}.`}
+            ? `Corrected at ${clockTime(later.happenedAt, zone)}: ${later.body.reason}`
+            : `Replaced at ${clockTime(later.happenedAt, zone)}.`}
         </p>
       )}
-      <Written entry={entry} sent={line.sent} order={line.order} />
+      <Written entry={entry} sent={line.sent} order={line.order} zone={zone} />
     </Screen>
   )
 }
@@ -92,9 +94,11 @@ function Picture({ hash, words }: { hash: string; words: string }) {
   )
 }
 
-function Written({ entry, sent, order }: { entry: LogEntry; sent: boolean; order: number | null }) {
+type WrittenProps = { entry: LogEntry; sent: boolean; order: number | null; zone: string }
+
+function Written({ entry, sent, order, zone }: WrittenProps) {
   const author = usePeople()?.find((person) => person.id === entry.authorId)
-  const at = (instant: string) => `${dayOf(instant, entry.zone)}, ${clockTime(instant, entry.zone)}`
+  const at = (instant: string) => `${dayOf(instant, zone)}, ${clockTime(instant, zone)}`
   const lines = [
     ['Happened', at(entry.happenedAt)],
     ['Written', at(entry.writtenAt)],

@@ -18,23 +18,31 @@ export function happenedAbout(text: string, now: Instant, zone: string): Instant
   }
   const wanted = Number(hours) * 60 + Number(minutes)
   const nowMs = Date.parse(now)
-  const shown = wallMinutes(nowMs, zone)
-  const backMinutes = (shown - wanted + DAY_MINUTES) % DAY_MINUTES
-  const wholeMinute = nowMs - (nowMs % MINUTE_MS)
-  const at = wholeMinute - backMinutes * MINUTE_MS
-  // Across a change of the clocks the difference is put right once.
-  const off = wanted - wallMinutes(at, zone)
-  const mended = Math.abs(off) <= 120 ? at + off * MINUTE_MS : at
-  return new Date(mended).toISOString()
+  const clock = wallClock(zone)
+  const backMinutes = (clock(nowMs) - wanted + DAY_MINUTES) % DAY_MINUTES
+  const at = nowMs - (nowMs % MINUTE_MS) - backMinutes * MINUTE_MS
+  const fits = candidates(at).find((ms) => ms <= nowMs && clock(ms) === wanted)
+  return new Date(fits ?? at).toISOString()
 }
 
-function wallMinutes(ms: number, zone: string): number {
-  const parts = new Intl.DateTimeFormat('en-GB', {
+/** Around an instant, the latest first: a day and two hours to either side, by which a clock may change. */
+function candidates(at: number): number[] {
+  const shifts = [-120, -90, -60, -30, 0, 30, 60, 90, 120]
+  const minutes = [-DAY_MINUTES, 0, DAY_MINUTES].flatMap((day) => shifts.map((by) => day + by))
+  return minutes.map((by) => at + by * MINUTE_MS).sort((a, b) => b - a)
+}
+
+/** Minutes since midnight on the wall clock of a zone, at ms since 1970. */
+function wallClock(zone: string): (ms: number) => number {
+  const format = new Intl.DateTimeFormat('en-GB', {
     hour: '2-digit',
     minute: '2-digit',
     hourCycle: 'h23',
     timeZone: zone,
-  }).formatToParts(new Date(ms))
-  const of = (type: string) => Number(parts.find((p) => p.type === type)?.value ?? 0)
-  return of('hour') * 60 + of('minute')
+  })
+  return (ms) => {
+    const parts = format.formatToParts(new Date(ms))
+    const of = (type: string) => Number(parts.find((p) => p.type === type)?.value ?? 0)
+    return of('hour') * 60 + of('minute')
+  }
 }

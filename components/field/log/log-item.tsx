@@ -22,15 +22,17 @@ type Props = {
   gapMs: number | null
   /** The day, when it is not the day of the entry before. */
   day: string | null
+  /** In which times are shown: the job's. */
+  zone: string
 }
 
 /** One entry on the wire: time, node, what it says. It opens the whole entry. */
-export function LogItem({ line, log, struck, index, gapMs, day }: Props) {
+export function LogItem({ line, log, struck, index, gapMs, day, zone }: Props) {
   const { entry, sent } = line
   const target = log.find((other) => other.entry.id === entry.supersedes)?.entry ?? null
   const later = struck.get(entry.id) ?? null
   const words = entryWords(entry.body, index)
-  const time = clockTime(entry.happenedAt, entry.zone)
+  const time = clockTime(entry.happenedAt, zone)
   const bar = entry.body.kind === 'correction'
   return (
     <li className={classes('log-item', !sent && 'log-item-here')}>
@@ -58,14 +60,14 @@ export function LogItem({ line, log, struck, index, gapMs, day }: Props) {
           ))}
           {target === null ? null : (
             <span className="block text-second text-ink2">
-              Points back to {clockTime(target.happenedAt, target.zone)},{' '}
+              Points back to {clockTime(target.happenedAt, zone)},{' '}
               {kindWord(target.body).toLowerCase()}.
             </span>
           )}
           {later === null ? null : (
             <span className="block text-second font-bold">
               {later.body.kind === 'correction' ? 'Corrected' : 'Replaced'} at{' '}
-              {clockTime(later.happenedAt, later.zone)}.
+              {clockTime(later.happenedAt, zone)}.
             </span>
           )}
           {entry.body.kind === 'photo' ? (

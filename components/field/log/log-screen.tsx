@@ -87,6 +87,7 @@ function Lines({ jobId, openedAt, zone }: { jobId: string; openedAt: string; zon
             log={log}
             struck={struck}
             index={index}
+            zone={zone}
           />
         ))}
       </ol>
@@ -102,12 +103,13 @@ function LineWithCut(props: {
   log: readonly StoredEntry[]
   struck: Parameters<typeof LogItem>[0]['struck']
   index: Parameters<typeof LogItem>[0]['index']
+  zone: string
 }) {
   const { entry } = props.line
+  const { zone } = props
   const before = props.before?.entry ?? null
   const gapMs = before === null ? 0 : Date.parse(entry.happenedAt) - Date.parse(before.happenedAt)
-  const newDay =
-    before !== null && dayOf(before.happenedAt, before.zone) !== dayOf(entry.happenedAt, entry.zone)
+  const newDay = before !== null && dayOf(before.happenedAt, zone) !== dayOf(entry.happenedAt, zone)
   return (
     <>
       {props.cut ? <CutWire /> : null}
@@ -117,7 +119,8 @@ function LineWithCut(props: {
         struck={props.struck}
         index={props.index}
         gapMs={gapMs > GAP_MS ? gapMs : null}
-        day={newDay ? dayOf(entry.happenedAt, entry.zone) : null}
+        day={newDay ? dayOf(entry.happenedAt, zone) : null}
+        zone={zone}
       />
     </>
   )
