@@ -2,6 +2,7 @@
 import { useState } from 'react'
 import type { BookIndex } from '@/lib/diag/book-index'
 import type { Plan, PlannedAction } from '@/lib/diag/plan'
+import type { Id } from '@/lib/model/id'
 import { WAYS_OUT, type WayOut } from '@/lib/model/job'
 import { moneyWords } from '@/lib/shop/currency'
 import { WAY_OUT_WORDS } from '../field/words'
@@ -12,10 +13,10 @@ import { PickInstead } from './pick-instead'
 import type { ActOn } from './use-act-on'
 import { minutesWords } from './words'
 
-type Props = { plan: Plan; currency: string; index: BookIndex; actOn: ActOn }
+type Props = { jobId: Id; plan: Plan; currency: string; index: BookIndex; actOn: ActOn }
 
 /** Everything else that can be done, and what was left out with the reason; all of it can be picked. */
-export function OtherChecks({ plan, currency, index, actOn }: Props) {
+export function OtherChecks({ jobId, plan, currency, index, actOn }: Props) {
   const [open, setOpen] = useState(false)
   const rest = plan.others.filter((one) => one.id !== plan.next.id && one.id !== plan.runnerUp?.id)
   if (rest.length + plan.leftOut.length === 0) return null
@@ -38,6 +39,7 @@ export function OtherChecks({ plan, currency, index, actOn }: Props) {
           {rest.map((one) => (
             <li key={`${one.type} ${one.id}`}>
               <PickInstead
+                jobId={jobId}
                 action={one}
                 insteadOf={plan.next}
                 actOn={actOn}
@@ -48,7 +50,7 @@ export function OtherChecks({ plan, currency, index, actOn }: Props) {
           ))}
         </ul>
       </div>
-      <LeftOut plan={plan} index={index} actOn={actOn} />
+      <LeftOut jobId={jobId} plan={plan} index={index} actOn={actOn} />
       <Key small aria-expanded onClick={() => setOpen(false)}>
         Close the list
       </Key>
@@ -56,7 +58,7 @@ export function OtherChecks({ plan, currency, index, actOn }: Props) {
   )
 }
 
-function LeftOut({ plan, index, actOn }: Omit<Props, 'currency'>) {
+function LeftOut({ jobId, plan, index, actOn }: Omit<Props, 'currency'>) {
   if (plan.leftOut.length === 0) return null
   return (
     <div>
@@ -67,6 +69,7 @@ function LeftOut({ plan, index, actOn }: Omit<Props, 'currency'>) {
         {plan.leftOut.map((one) => (
           <li key={`${one.kind} ${one.id}`}>
             <PickInstead
+              jobId={jobId}
               action={{ type: kindOf(one.kind), id: one.id, name: nameOf(one, index) }}
               insteadOf={plan.next}
               actOn={actOn}

@@ -1,6 +1,7 @@
 'use client'
 import type { BookIndex } from '@/lib/diag/book-index'
 import type { Plan } from '@/lib/diag/plan'
+import type { Id } from '@/lib/model/id'
 import { moneyWords } from '@/lib/shop/currency'
 import { RuleEdge } from '../ui/rule-edge'
 import { toolWords } from './next-plate'
@@ -8,16 +9,18 @@ import { PickInstead } from './pick-instead'
 import type { ActOn } from './use-act-on'
 import { minutesWords } from './words'
 
-type Props = { plan: Plan; currency: string; index: BookIndex; actOn: ActOn }
+type Props = { jobId: Id; plan: Plan; currency: string; index: BookIndex; actOn: ActOn }
 
 /** The second-best step and why it loses. */
-export function RunnerUp({ plan, currency, index, actOn }: Props) {
+export function RunnerUp({ jobId, plan, currency, index, actOn }: Props) {
   const { runnerUp, next } = plan
   if (runnerUp === null) return null
   return (
     <section aria-labelledby="runner-up" className="grid gap-1">
       <RuleEdge id="runner-up">Runner-up</RuleEdge>
       <PickInstead
+        key={`${runnerUp.type} ${runnerUp.id}`}
+        jobId={jobId}
         action={runnerUp}
         insteadOf={next}
         actOn={actOn}

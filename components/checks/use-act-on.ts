@@ -1,5 +1,5 @@
 'use client'
-import { useCallback } from 'react'
+import { useCallback, useState } from 'react'
 import type { Plan, PlannedAction } from '@/lib/diag/plan'
 import type { Id } from '@/lib/model/id'
 import { adviceOf } from '../engine/advice'
@@ -7,11 +7,13 @@ import type { PlanView } from '../engine/use-plan'
 import { useRoute } from '../field/router'
 import { useBook } from '../store/use-book'
 import { useStamp } from '../store/use-stamp'
+import { oneAtATime } from './one-at-a-time'
 import { useMay } from './use-may'
 import { useSave } from './use-save'
 
 export type Act = Pick<PlannedAction, 'type' | 'id'>
-export type ActOn = (action: Act, reason: string | null) => void
+/** `drafts`: what was half written for it and is done with once the advice is kept. */
+export type ActOn = (action: Act, reason: string | null, drafts?: string[]) => void
 
 /** Where each kind of step is done. */
 function hrefOf(jobId: Id, action: Act): string {
@@ -38,8 +40,9 @@ export function useActOn(jobId: Id, view: PlanView): ActOn {
   const { save } = useSave()
   const stamp = useStamp()
   const keeps = useMay('advice.keep')
+  const [once] = useState(() => oneAtATime<void>(undefined))
   return useCallback(
-    (action, reason) => {
+    (action, reason, drafts = []) => {
       const { answer, input, asked } = view
       const leave = () =>
         go(proving(answer?.plan, action) ? `/field/jobs/${jobId}/proof` : hrefOf(jobId, action))
@@ -59,8 +62,10 @@ export function useActOn(jobId: Id, view: PlanView): ActOn {
         chose: action.id,
         reason,
       })
-      save([{ kind: 'advice.keep', fields }]).then(leave, leave)
+      once(() =>
+        save([{ kind: 'advice.keep', fields }], { clearDrafts: drafts }).then(leave, leave),
+      ).catch(leave)
     },
-    [jobId, view, version, go, save, stamp, keeps],
+    [jobId, view, version, go, save, stamp, keeps, once],
   )
 }
