@@ -54,6 +54,11 @@ const commands = [
     ],
   ],
   ['unused code (knip)', bin('knip'), []],
+  [
+    'code that only tests use (knip)',
+    bin('knip'),
+    ['-c', 'knip.shipped.jsonc', '--include', 'files,exports,types'],
+  ],
   ['code book', bin('tsx'), ['scripts/codebook-check.ts']],
 ]
 

@@ -26,19 +26,6 @@ export async function insertParty(tx: ShopTx, { id, kind, ...contact }: Party): 
     .execute()
 }
 
-/** Answers a party; after eraseParty without name, phone and e-mail. */
-export async function findParty(tx: ShopTx, id: Id): Promise<Party | undefined> {
-  return await tx
-    .selectFrom('party as p')
-    .leftJoin('partyContact as c', (join) =>
-      join.onRef('c.shopId', '=', 'p.shopId').onRef('c.partyId', '=', 'p.id'),
-    )
-    .select(['p.id', 'p.kind', 'c.name', 'c.phone', 'c.email'])
-    .where('p.shopId', '=', tx.shopId)
-    .where('p.id', '=', id)
-    .executeTakeFirst()
-}
-
 /** Erases how a party was called and reached; consents and bookings keep its id (R23). */
 export async function eraseParty(tx: ShopTx, { id, now }: { id: Id; now: Instant }): Promise<void> {
   await tx

@@ -40,15 +40,3 @@ export async function photosByHash(tx: ShopTx, hashes: readonly string[]): Promi
     .where('hash', 'in', hashes)
     .execute()
 }
-
-/** Answers the photos of a job that came, the first one first. */
-export async function listPhotos(tx: ShopTx, jobId: Id): Promise<PhotoRow[]> {
-  return await tx
-    .selectFrom('photo')
-    .select(COLUMNS)
-    .where('shopId', '=', tx.shopId)
-    .where('jobId', '=', jobId)
-    .orderBy('receivedAt')
-    .orderBy('hash')
-    .execute()
-}

@@ -73,16 +73,6 @@ export async function saveOps(tx: ShopTx, stored: readonly StoredOp[]): Promise<
   `.execute(tx)
 }
 
-/** Answers the ops of a phone that are set aside or wait, in the order they were made. */
-export async function listOpenOps(tx: ShopTx, deviceId: Id): Promise<StoredOp[]> {
-  const rows = await ops(tx)
-    .where('deviceId', '=', deviceId)
-    .where('outcome', 'in', ['rejected', 'blocked', 'quarantined'])
-    .orderBy('dseq')
-    .execute()
-  return rows.map(toOp)
-}
-
 const ops = (tx: ShopTx) => tx.selectFrom('syncOp').selectAll().where('shopId', '=', tx.shopId)
 
 const toOp = ({ shopId: _, ...op }: Selectable<SyncOpTable>): StoredOp => op

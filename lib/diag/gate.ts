@@ -1,4 +1,4 @@
-import { FEATURE_NAMES, type FeatureName, type Features, type Gate } from '@/lib/model/features'
+import { FEATURE_NAMES, type Features, type Gate } from '@/lib/model/features'
 
 /**
  * Whether a gate lets a machine through (rule R4): `shut` when a known feature is not among the values
@@ -20,7 +20,3 @@ export function opens(gate: Gate, features: Features): 'open' | 'shut' | 'unknow
 /** Whether a gate keeps its record in the list: open, or not known to be shut (rule R4). */
 export const letsThrough = (gate: Gate, features: Features): boolean =>
   opens(gate, features) !== 'shut'
-
-/** The features a gate names that are not known of this machine, in the order of the vocabulary. */
-export const unknownIn = (gate: Gate, features: Features): FeatureName[] =>
-  FEATURE_NAMES.filter((name) => gate[name] !== undefined && features[name] === undefined)

@@ -14,7 +14,6 @@ export const cause = z.discriminatedUnion('kind', [
     words: z.string().check(z.trim(), z.minLength(1), z.maxLength(300)),
   }),
 ])
-export type Cause = z.infer<typeof cause>
 
 /** What closing a job says; `cause` is null when it is unknown or no fault was found. */
 export const closing = z.strictObject({

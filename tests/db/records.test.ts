@@ -12,9 +12,9 @@ import {
   movePartLine,
   setPartLine,
 } from '@/db/queries/part-requests'
-import { eraseParty, findParty, insertParty } from '@/db/queries/parties'
-import { findPhoto, insertPhoto, listPhotos } from '@/db/queries/photos'
-import { findOps, knownOps, listOpenOps, type StoredOp, saveOps } from '@/db/queries/sync-ops'
+import { eraseParty, insertParty } from '@/db/queries/parties'
+import { findPhoto, insertPhoto } from '@/db/queries/photos'
+import { findOps, knownOps, type StoredOp, saveOps } from '@/db/queries/sync-ops'
 import { advice as adviceShape } from '@/lib/model/advice'
 import { job as jobShape } from '@/lib/model/job'
 import { partRequestRow } from '@/lib/model/part-request'
@@ -94,8 +94,6 @@ describe('[P6] ops', () => {
       settledAt: AT,
     })
     expect(found.get(merged.opId)).toEqual(merged)
-    const open = await asShop(shop.id, (tx) => listOpenOps(tx, by.deviceId))
-    expect(open.map((op) => op.opId)).toEqual([done.opId])
   })
 })
 
@@ -246,7 +244,6 @@ it('[PH2] a photo is stored once', async () => {
   expect([await store(), await store()]).toEqual([true, false])
   const row = { hash: photo.hash, jobId, bytes: 12, mime: 'image/jpeg', receivedAt: AT }
   expect(await asShop(shop.id, (tx) => findPhoto(tx, photo.hash))).toEqual(row)
-  expect(await asShop(shop.id, (tx) => listPhotos(tx, jobId))).toEqual([row])
 })
 
 it('[R23] advice comes back as the engine gave it, order of keys and last digits included', async () => {
@@ -281,11 +278,12 @@ it('[R23] erasing a party takes name, phone and e-mail and leaves its id', async
     insertParty(tx, { id, kind: 'rider', name: 'N', phone: '1', email: 'n@test.invalid' }),
   )
   await asShop(shop.id, (tx) => eraseParty(tx, { id, now: AT }))
-  expect(await asShop(shop.id, (tx) => findParty(tx, id))).toEqual({
-    id,
-    kind: 'rider',
-    name: null,
-    phone: null,
-    email: null,
-  })
+  const left = (table: 'party' | 'partyContact', column: 'id' | 'partyId') =>
+    test.admin
+      .selectFrom(table)
+      .selectAll()
+      .where(column as never, '=', id as never)
+      .execute()
+  expect(await left('party', 'id')).toMatchObject([{ id, kind: 'rider', erasedAt: AT }])
+  expect(await left('partyContact', 'partyId')).toEqual([])
 })

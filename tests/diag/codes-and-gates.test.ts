@@ -13,7 +13,7 @@ import {
   pcodeToBytes,
   printPcode,
 } from '@/lib/diag/codes'
-import { letsThrough, opens, unknownIn } from '@/lib/diag/gate'
+import { letsThrough, opens } from '@/lib/diag/gate'
 import { advisePart, breakEven } from '@/lib/diag/part-choice'
 import { checked, log } from './fixtures/entries'
 import { smallIndex } from './fixtures/small-book'
@@ -116,11 +116,6 @@ describe('[R4] gates', () => {
     const asGate = Object.fromEntries(Object.entries(gate).map(([k, v]) => [k, [...v]]))
     expect(opens(asGate, features)).toBe(want)
     expect(letsThrough(asGate, features)).toBe(want !== 'shut')
-  })
-  it('[R4] what is not known is asked for in the order of the vocabulary', () => {
-    expect(
-      unknownIn({ neutral: ['yes'], kind: ['atv'], strokes: ['two'] }, { strokes: 'two' }),
-    ).toEqual(['kind', 'neutral'])
   })
 })
 

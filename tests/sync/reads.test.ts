@@ -6,8 +6,6 @@ import { asShop, switchDatabase } from '@/db/client'
 import { takeChanges } from '@/db/queries/changes'
 import { publishBook } from '@/db/queries/code-book'
 import type { CodeBook, CodeBookItem } from '@/lib/model/code-book'
-import { noPayment } from '@/lib/ports/payment'
-import { problemAnswer } from '@/lib/sync/server/problems'
 import { openSyncWorld, problemOf, type SyncWorld, signIn } from '../support/sync-world'
 
 let world: SyncWorld
@@ -81,19 +79,6 @@ describe('who and whether', () => {
     expect(answer.headers.get('cache-control')).toBe('no-store')
     expect((await getMe(new Request('http://shop.invalid/api/me'))).status).toBe(401)
     expect(postMe().status).toBe(405)
-  })
-
-  it('[F9] refuses a payment plainly as long as no provider is set up', async () => {
-    const amount = { minor: 100, currency: 'USD' }
-    const order = { id: 'x', amount, words: 'x', returnUrl: 'http://127.0.0.1/' }
-    const answer = await noPayment.start(order)
-    expect(answer).toEqual({ ok: false, problem: { kind: 'notSetUp' } })
-    if (!answer.ok) {
-      expect(await problemOf(problemAnswer(answer.problem))).toMatchObject({
-        status: 501,
-        title: 'No payment provider is set up.',
-      })
-    }
   })
 
   it('[P16] is healthy with its database and asks to come back without it', async () => {

@@ -31,7 +31,6 @@ const TABLE = {
   tooLarge: [413, 'Too much at once. Send it in smaller parts.'],
   tooOld: [426, 'The work is kept. Update the app, then it can be sent.'],
   tooMany: [429, 'Too many requests. Wait a little and go on.'],
-  notSetUp: [501, 'No payment provider is set up.'],
   busy: [503, 'The shop’s server is busy. Try again shortly.'],
   tooNew: [503, 'The shop’s server is older than the app. The work is kept; try again later.'],
 } as const satisfies Record<string, readonly [number, string]>
