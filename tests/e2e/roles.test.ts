@@ -39,7 +39,11 @@ test('a wrong password gets one sentence and no session', async ({ desk }) => {
   expect((await desk.context().request.get('/api/me')).status()).toBe(401)
 })
 
-test('nobody, a mechanic and a stranger are refused what is not theirs', async ({
+/** The job of the other shop (scripts/demo-shop.ts), and one that is nowhere. */
+const FOREIGN_JOB = '01980000-0000-7000-8000-000000000651'
+const NO_JOB = '01980000-0000-7000-8000-00000000ffff'
+
+test('nobody, a guide, a mechanic and a stranger are refused what is not theirs', async ({
   desk,
   server,
 }) => {
@@ -52,17 +56,28 @@ test('nobody, a mechanic and a stranger are refused what is not theirs', async (
   ])
     expect((await fetch(`${server.base}${path}`)).status, path).toBe(401)
   const page = await desk.open('/login')
-  await signIn(page, 'parts@demo.invalid', /\/desk/)
-  const unknown = '01980000-0000-7000-8000-00000000ffff'
-  const foreign = '01980000-0000-7000-8000-000000000651'
   const ask = desk.context().request
-  const random = await ask.get(`/api/desk/jobs/${unknown}`)
-  const theirs = await ask.get(`/api/desk/jobs/${foreign}`)
-  expect(theirs.status()).toBe(random.status())
-  expect(await theirs.text()).toBe(await random.text())
-  await page.goto('/login')
-  await desk.context().clearCookies()
+  const enter = async (email: string, home: RegExp) => {
+    await desk.context().clearCookies()
+    await page.goto('/login')
+    await signIn(page, email, home)
+  }
+  const status = async (path: string) => (await ask.get(path)).status()
+
   await signIn(page, 'guide@demo.invalid', /\/field$/)
-  expect((await ask.get('/api/desk/jobs')).status()).toBe(403)
-  expect((await ask.get('/api/desk/parts')).status()).toBe(403)
+  expect(await status('/api/desk/jobs')).toBe(403)
+  expect(await status('/api/desk/parts')).toBe(403)
+
+  await enter('mechanic@demo.invalid', /\/field$/)
+  expect(await status('/api/desk/jobs?whose=all')).toBe(403)
+  expect(await status(`/api/desk/jobs/${FOREIGN_JOB}`)).toBe(404)
+
+  // The other shop's own job: there for its people, nowhere for anybody else, told alike.
+  await enter('stranger@demo.invalid', /\/desk$/)
+  expect(await status(`/api/desk/jobs/${FOREIGN_JOB}`)).toBe(200)
+  await enter('dispatcher@demo.invalid', /\/desk$/)
+  const foreign = await ask.get(`/api/desk/jobs/${FOREIGN_JOB}`)
+  const nowhere = await ask.get(`/api/desk/jobs/${NO_JOB}`)
+  expect([foreign.status(), nowhere.status()]).toEqual([404, 404])
+  expect(await foreign.text()).toBe(await nowhere.text())
 })
