@@ -1,6 +1,14 @@
-import type { Page } from '@playwright/test'
 import type { LogBody } from '@/lib/model/log-entry'
-import { reckoned } from '../support/e2e/reckoned'
+import {
+  ABOVE_90,
+  chanceIn,
+  DONE,
+  draftKept,
+  FITNESS,
+  follow,
+  press,
+} from '../support/e2e/main-job'
+import { reckoned, titleOf } from '../support/e2e/reckoned'
 import { expect, signIn, test } from '../support/e2e/test'
 
 /**
@@ -8,39 +16,6 @@ import { expect, signIn, test } from '../support/e2e/test'
  * desk. Figures: shared worked case of the readings (JCGM 100 and 106), 12 clean starts by
  * Clopper-Pearson, break-even by expected cost.
  */
-const press = (page: Page, name: string | RegExp) =>
-  page.getByRole('button', { name, exact: true }).click()
-const follow = (page: Page, name: string | RegExp) => page.getByRole('link', { name }).click()
-
-/** Above 90 of 100: what the specification of the main job asks after the swap back. */
-const ABOVE_90 = /^(9[1-9]|over 99)$/
-
-/** The job log when all is done, in order. */
-const DONE = [
-  'symptom',
-  'code',
-  'reading',
-  'reading',
-  'spareFitted',
-  'oldRefitted',
-  'newFitted',
-  'fix',
-  'codesCleared',
-  'codesCleared',
-  'proofRun',
-  'wayOut',
-  'note',
-  'photo',
-]
-
-/** The chance of 100 in the row of a suspect. */
-const chanceIn = (page: Page, fault: string) =>
-  page.locator(`[data-row="${fault}"] .figures`).first()
-
-/** Waits until the phone's store holds what was just typed. */
-const draftKept = (page: Page) =>
-  expect(page.locator('[data-draft]')).toHaveAttribute('data-draft', 'kept')
-
 test('the main job, from flight mode to the desk', async ({
   server,
   phone,
@@ -110,6 +85,9 @@ test('the main job, from flight mode to the desk', async ({
     const page = await phone.open(`${jobPath}/codes`)
     await expect(page.getByText('How to show them on this model')).toBeVisible()
     await shot(page, 'codes-empty')
+    // Nothing is on record yet, so clearing is refused (R11).
+    await expect(page.getByText(/^Refused until the codes are taken down/)).toBeVisible()
+    await expect(page.getByRole('button', { name: 'Codes are cleared' })).toHaveCount(0)
     await page.getByRole('radio', { name: /Numbers: SPN and FMI/ }).check({ force: true })
     await page.getByLabel('Module').fill('0')
     await page.getByLabel('SPN', { exact: true }).fill('1268')
@@ -120,6 +98,7 @@ test('the main job, from flight mode to the desk', async ({
     await expect(page.getByText(/voltage above normal/i).first()).toBeVisible()
     await expect(page.getByText('The third number is the failure kind')).toBeVisible()
     await expect(page.getByText(/names a circuit, not a part/)).toBeVisible()
+    await expect(page.getByText(/^Refused until/)).toHaveCount(0)
     await expect(page.getByText('It supports')).toBeVisible()
     await expect(page.getByText('It argues against')).toBeVisible()
     await shot(page, 'codes-meaning')
@@ -147,7 +126,9 @@ test('the main job, from flight mode to the desk', async ({
 
   await test.step('4 before the check: this meter cannot decide this spec', async () => {
     const page = await phone.open(`${jobPath}/checks/coilPrimaryResistance`)
-    await expect(page.getByText('This meter cannot decide it')).toBeVisible()
+    const fitness = page.getByRole('region', { name: 'This meter cannot decide it' })
+    for (const words of FITNESS) await expect(fitness.getByText(words)).toBeVisible()
+    await expect(fitness.getByRole('link', { name: 'Swap the ignition coil' })).toBeVisible()
     await shot(page, 'check')
     await phone.open(`${jobPath}/checks/coilPrimaryResistance/reading`)
     await press(page, /^Meter set-up/)
@@ -231,7 +212,15 @@ test('the main job, from flight mode to the desk', async ({
     await expect(page.getByText('135.00').first()).toBeVisible()
     await expect(page.getByText('25.00').first()).toBeVisible()
     await expect(page.getByText('300.00').first()).toBeVisible()
-    await expect(page.getByText(/38\.7 of 100/)).toBeVisible()
+    await expect(
+      page.getByText('Break-even: the aftermarket part pays until 38.7 of 100 fail.'),
+    ).toBeVisible()
+    await expect(
+      page.getByText(
+        'Expected cost with one recovery in it: genuine 141.00 USD, aftermarket 61.00 USD.',
+      ),
+    ).toBeVisible()
+    await expect(page.getByText('By expected cost: fit the aftermarket part.')).toBeVisible()
     await shot(page, 'part-ask')
     await press(page, 'Ask for it')
     await expect(page.getByText(/Ignition coil, 1/)).toBeVisible()
@@ -278,13 +267,20 @@ test('the main job, from flight mode to the desk', async ({
     const jobId = jobPath.slice(jobPath.lastIndexOf('/') + 1)
     const answer = await desk.context().request.get(`/api/desk/jobs/${jobId}`)
     const { entries, photos } = (await answer.json()) as {
-      entries: { id: string; order: number; body: LogBody }[]
-      photos: { hash: string }[]
+      entries: { id: string; order: number; receivedAt: string; body: LogBody }[]
+      photos: { hash: string; receivedAt: string }[]
     }
-    // Everything once, in the order of doing, the photo's bytes after all records.
+    // Everything once, in the order of doing, and every line on the board.
     expect(entries.map(({ body }) => (body.kind === 'swap' ? body.step : body.kind))).toEqual(DONE)
     expect(new Set(entries.map(({ id }) => id)).size).toBe(DONE.length)
+    const lines = board.locator('.desk-log > li')
+    await expect(lines).toHaveCount(DONE.length)
+    for (const [at, { body }] of entries.entries())
+      await expect(lines.nth(at)).toContainText(titleOf(body))
+    // The photo's bytes came after all records.
     expect(photos).toHaveLength(1)
+    const records = entries.map(({ receivedAt }) => Date.parse(receivedAt))
+    expect(Date.parse(photos[0]?.receivedAt ?? '')).toBeGreaterThan(Math.max(...records))
     const photo = await desk.context().request.get(`/api/photos/${photos[0]?.hash}`)
     expect(photo.headers()['content-type']).toBe('image/jpeg')
     await phone.open(`${jobPath}/checks`)

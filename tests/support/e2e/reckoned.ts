@@ -1,5 +1,6 @@
 import { specForEngine } from '@/components/engine/spec-kept'
 import { workOut } from '@/components/engine/work'
+import { entryWords } from '@/components/log/entry-words'
 import { of100 } from '@/components/reading-strip/figures'
 import { BOOK_ITEMS } from '@/db/codebook/book'
 import { DEMO_MODELS } from '@/db/codebook/demo-models'
@@ -22,6 +23,9 @@ const entryOf = (body: LogBody, at: number): LogEntry => ({
   bookVersion: 1,
   body,
 })
+
+/** What a line of the log says first, in the words of the repository's book. */
+export const titleOf = (body: LogBody): string => entryWords(body, index).title
 
 /**
  * The suspects of a job on a machine of the demo fleet, reckoned here by the engine from the book as it
