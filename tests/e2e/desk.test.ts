@@ -228,7 +228,7 @@ test('[R13] [R25] a job is closed with its cause at the desk, reopened, and the 
   await press('Close')
   await press('Close the job')
   await expect(aside.getByText('Choose how sure the cause is.')).toBeVisible()
-  await aside.getByRole('radio', { name: /^Likely/ }).check()
+  await aside.getByRole('radio', { name: /^Likely/ }).check({ force: true })
   const cause = aside.getByLabel('The cause', { exact: true })
   await expect(cause.getByRole('option', { name: /of 100$/ }).first()).toBeAttached()
   const first = (await cause.getByRole('option').nth(1).textContent()) ?? ''
