@@ -275,6 +275,10 @@ describe('POST /api/devices', () => {
     other.id = deviceId
     expect((await syncRoute.POST(other.push([]))).status).toBe(200)
     expect((await syncRoute.POST(device.push([]))).status).toBe(200)
+    // A person's own id is kept for their desk (R22).
+    const { personId } = device.owner
+    const asked = await enrolAt(new RawDevice(device.owner), cookie, { deviceId: personId })
+    expect(await asked.json()).not.toMatchObject({ deviceId: personId })
   })
 
   it('[P18] enrols nobody without a session, without the field, or with a point off the curve', async () => {
