@@ -28,7 +28,15 @@ const config: NextConfig = {
   ],
   /** Types are checked once, by npm run check; a build on a bare machine need not do it again. */
   typescript: { ignoreBuildErrors: true },
-  serverExternalPackages: ['pg', 'graphile-worker', 'nodemailer'],
+  serverExternalPackages: [
+    'pg',
+    'graphile-worker',
+    'nodemailer',
+    '@aws-sdk/client-s3',
+    '@tus/server',
+    '@tus/file-store',
+    'sharp',
+  ],
 }
 
 export default config

@@ -31,6 +31,7 @@ function policy(scripts: string, styles: string): string {
     `script-src 'self' ${scripts}${development ? " 'unsafe-eval' 'unsafe-inline'" : ''}`,
     `style-src 'self' ${development ? "'unsafe-inline'" : styles}`,
     "img-src 'self' blob: data:",
+    "media-src 'self' blob:",
     "font-src 'self'",
     `connect-src 'self'${development ? ' ws:' : ''}`,
     "worker-src 'self'",

@@ -1,10 +1,12 @@
 // One pool per process, as role farbench_app. Every statement about a shop runs inside asShop, which
 // sets app.shop_id for that transaction alone: a forgotten asShop sees nothing, because row-level
-// security compares with it. It costs two round trips (bones.md 5), and queries still name the shop.
-import { CamelCasePlugin, Kysely, PostgresDialect, sql, type Transaction } from 'kysely'
+// security compares with it. It costs two round trips, one to begin and one to end, and queries still
+// name the shop.
+import { CamelCasePlugin, CompiledQuery, Kysely, PostgresDialect, type Transaction } from 'kysely'
 import pg from 'pg'
 import { env } from '@/lib/env'
 import type { Id } from '@/lib/model/id'
+import { AppError } from '@/lib/model/result'
 import type { Database } from './tables/database'
 
 export type Db = Kysely<Database>
@@ -72,10 +74,51 @@ export function asShop<T>(shopId: Id, run: (tx: ShopTx) => Promise<T>): Promise<
 
 /** As asShop, on a pool of one's own (the seed runs as farbench_owner). */
 export function asShopOn<T>(db: Db, shopId: Id, run: (tx: ShopTx) => Promise<T>): Promise<T> {
-  return db.transaction().execute(async (tx) => {
-    await sql`select set_config('app.shop_id', ${shopId}, true)`.execute(tx)
-    return run(Object.assign(tx, { shopId }) as ShopTx)
+  return inTransaction(db, { shopId, lightly: false }, run)
+}
+
+/**
+ * As asShop, for what may be lost with the last second before a crash of the database, like when a phone
+ * was last heard: its commit does not wait for the disk. Nothing that was promised to anybody belongs here.
+ */
+export function asShopLightly<T>(shopId: Id, run: (tx: ShopTx) => Promise<T>): Promise<T> {
+  return inTransaction(appDb(), { shopId, lightly: true }, run)
+}
+
+const UUID = /^[0-9a-f]{8}(-[0-9a-f]{4}){3}-[0-9a-f]{12}$/i
+
+function inTransaction<T>(
+  db: Db,
+  { shopId, lightly }: { shopId: Id; lightly: boolean },
+  run: (tx: ShopTx) => Promise<T>,
+): Promise<T> {
+  return db.connection().execute(async (connection) => {
+    const say = (text: string) =>
+      connection.executeQuery<{ command?: string }>(CompiledQuery.raw(text))
+    // Begin and shop in one round trip. Statements sent as one take no parameters: hence the check.
+    if (!UUID.test(shopId)) throw new AppError('badShopId')
+    const light = lightly ? `, set_config('synchronous_commit', 'off', true)` : ''
+    await say(`begin; select set_config('app.shop_id', '${shopId}', true)${light}`)
+    try {
+      const done = await run(Object.assign(connection, { shopId }) as unknown as ShopTx)
+      const { rows } = await say('commit')
+      // What PostgreSQL says to a commit after a statement that failed and was not told to anybody.
+      if (rows[0]?.command === 'ROLLBACK') throw new AppError('transactionAborted')
+      return done
+    } catch (error) {
+      // A connection that cannot roll back is dead, and the pool lets go of it.
+      await say('rollback').catch(() => undefined)
+      throw error
+    }
   })
+}
+
+/** Runs one look-up that comes before a shop is known; tables answer nothing in here. */
+export function lookUp<T>(run: (db: NoShopTx) => Promise<T>): Promise<T> {
+  // A single statement is a transaction of its own.
+  return appDb()
+    .connection()
+    .execute((connection) => run(connection as unknown as NoShopTx))
 }
 
 /** Runs the look-ups that come before a shop is known; tables answer nothing in here. */

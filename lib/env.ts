@@ -12,8 +12,14 @@ const settings = z.object({
   /** SMTP address of the mail server, e.g. smtp://127.0.0.1:2525. */
   MAIL_URL: z.string().check(z.minLength(1)),
   MAIL_FROM: z._default(z.string(), 'Farbench <farbench@demo.invalid>'),
-  /** Folder in which verified photos are kept. */
-  FILES_DIR: z.string().check(z.minLength(1)),
+  /** S3-compatible store in which verified photos and voice notes are kept, path style. */
+  FILES_URL: z.url(),
+  FILES_BUCKET: z._default(z.string().check(z.minLength(1)), 'farbench'),
+  FILES_REGION: z._default(z.string().check(z.minLength(1)), 'us-east-1'),
+  FILES_KEY: z.string().check(z.minLength(1)),
+  FILES_SECRET: z.string().check(z.minLength(1)),
+  /** Durable folder for what is still coming in; with several servers, one that they share. */
+  FILES_STAGE: z.string().check(z.minLength(1)),
 })
 export type Env = z.infer<typeof settings>
 

@@ -1,13 +1,12 @@
-// npm run dev: the database, the mail server and Next.js with reloading; no service worker.
-import { join } from 'node:path'
+// npm run dev: the database, the mail server, the file store and Next.js with reloading; no service worker.
 import { ending } from './ending.mjs'
 import {
   database,
+  fileStore,
   fillDatabase,
   freePort,
   leaveDatabase,
   modules,
-  root,
   service,
   settings,
   stopCall,
@@ -26,11 +25,12 @@ await ends.around(async () => {
   const mailPort = await freePort(Number(process.env.MAIL_PORT ?? 2525))
   process.env.MAIL_PORT = String(mailPort)
   process.env.MAIL_URL ??= `smtp://127.0.0.1:${mailPort}`
-  process.env.FILES_DIR ??= join(root, '.data', 'files')
+  const ownFiles = await fileStore()
   if (ends.begun) return
   const end = (code) => void ends.end(code ?? 0)
   const children = [
     service(process.execPath, ['scripts/fakes/mail.mjs'], end),
+    ...(ownFiles ? [service(process.execPath, ['scripts/fakes/files.mjs'], end)] : []),
     service('node_modules/.bin/tsx', ['scripts/work.ts'], end),
     service(
       process.execPath,

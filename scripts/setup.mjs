@@ -98,6 +98,8 @@ export function settings() {
   const wanted = {
     NEXTAUTH_SECRET: randomBytes(32).toString('base64url'),
     DEMO_PASSWORD: `trail-${randomBytes(5).toString('hex')}`,
+    FILES_KEY: `demo-${randomBytes(6).toString('hex')}`,
+    FILES_SECRET: randomBytes(24).toString('base64url'),
   }
   let added = ''
   for (const [name, value] of Object.entries(wanted)) {
@@ -189,6 +191,20 @@ export const isFree = (port) =>
 export async function freePort(port) {
   for (let tried = port; tried < port + 100; tried++) if (await isFree(tried)) return tried
   throw new Error(`No free port between ${port} and ${port + 100}`)
+}
+
+/**
+ * Where photos and voice notes are kept. With FILES_URL set that store is used, else the local one
+ * (scripts/fakes/files.mjs) on a free port, which the caller starts: then the answer is true.
+ */
+export async function fileStore() {
+  process.env.FILES_STAGE ??= join(root, '.data', 'stage')
+  mkdirSync(process.env.FILES_STAGE, { recursive: true, mode: 0o700 })
+  if (process.env.FILES_URL) return false
+  const port = await freePort(Number(process.env.FILES_PORT ?? 9009))
+  process.env.FILES_PORT = String(port)
+  process.env.FILES_URL = `http://127.0.0.1:${port}`
+  return true
 }
 
 /** Starts a long-running child; its exit is reported through `onExit`. */

@@ -1,17 +1,15 @@
-// npm start: installs what is missing, starts PostgreSQL and the local mail server on loopback,
-// migrates, seeds the demo shops, builds and serves. Ctrl-C stops all it started; data stays.
-import { mkdirSync } from 'node:fs'
-import { join } from 'node:path'
+// npm start: installs what is missing, starts PostgreSQL, the local mail server and the
+// local file store on loopback, migrates, seeds the demo shops, builds and serves. Ctrl-C stops all it started; data stays.
 import { ending } from './ending.mjs'
 import {
   build,
   database,
+  fileStore,
   fillDatabase,
   freePort,
   isFree,
   leaveDatabase,
   modules,
-  root,
   say,
   service,
   settings,
@@ -47,14 +45,16 @@ async function prepare() {
   const mailPort = await freePort(Number(process.env.MAIL_PORT ?? 2525))
   process.env.MAIL_PORT = String(mailPort)
   process.env.MAIL_URL ??= `smtp://127.0.0.1:${mailPort}`
-  process.env.FILES_DIR ??= join(root, '.data', 'files')
-  mkdirSync(process.env.FILES_DIR, { recursive: true })
+  return await fileStore()
 }
 
-function serve() {
+/** `ownFiles`: the file store is ours to start. */
+function serve(ownFiles) {
   if (ends.begun) return
   ends.later(() => stopServices(children))
   children.push(service(process.execPath, ['scripts/fakes/mail.mjs'], ended('mail')))
+  if (ownFiles)
+    children.push(service(process.execPath, ['scripts/fakes/files.mjs'], ended('files')))
   children.push(service('node_modules/.bin/tsx', ['scripts/work.ts'], ended('work')))
   children.push(
     service(
@@ -79,8 +79,7 @@ async function waitUntilUp(address) {
 }
 
 await ends.around(async () => {
-  await prepare()
-  serve()
+  serve(await prepare())
   const address = `http://127.0.0.1:${port}`
   await waitUntilUp(address)
   if (ends.begun) return

@@ -1,10 +1,20 @@
 'use server'
 
-import type { AssignAction, CloseAction, ReopenAction } from '@/components/desk/desk-actions'
+import type {
+  AssignAction,
+  CloseAction,
+  MergeAction,
+  ReopenAction,
+  SettleAction,
+  UnmergeAction,
+} from '@/components/desk/desk-actions'
 import { assignForm } from '@/components/desk/hands/assign.schema'
 import { closeForm, reopenForm } from '@/components/desk/job/closing.schema'
+import { mergeForm, unmergeForm } from '@/components/desk/merge/merge.schema'
+import { settleForm } from '@/components/desk/values/settle.schema'
 import { moveJobAtDesk } from '@/db/queries/desk-closing'
 import { changeAssignment } from '@/db/queries/desk-writes'
+import { mergeRows, unmergeRow } from '@/db/queries/merges'
 import { actorAction } from '@/lib/auth/actor-action'
 import { ENGINE_VERSION } from '@/lib/diag/version'
 import { fail } from '@/lib/model/result'
@@ -12,8 +22,10 @@ import { systemClock } from '@/lib/ports/clock'
 import { uuidv7 } from '@/lib/ports/ids'
 import { closingMove, reopeningMove } from '@/lib/shop/closing'
 import { stateAfterAssigning } from '@/lib/shop/desk-moves'
+import { mayMerge } from '@/lib/shop/merge-rules'
 import { may } from '@/lib/shop/permissions'
 import { leavesFieldAt } from '@/lib/shop/scope'
+import { settleAtDesk } from '@/lib/sync/server/settle-at-desk'
 
 type Answer = ReturnType<AssignAction>
 
@@ -25,6 +37,28 @@ export const assignPerson = actorAction(assignForm, (actor, input): Answer => {
     stateAfterAssigning(job, person, input.assigned),
   )
 })
+
+const manyStamps = () => ({ newId: uuidv7.next, at: new Date(systemClock.now()).toISOString() })
+
+/** Merges a job into another that goes on (rule R13). */
+export const mergeJob = actorAction(
+  mergeForm,
+  (actor, { jobId, intoId }): ReturnType<MergeAction> => {
+    if (!may(actor.roles, 'job.merge')) return Promise.resolve(fail({ kind: 'forbidden' }))
+    const input = { entity: 'job', id: jobId, intoId, stamp: manyStamps() } as const
+    return mergeRows(actor, input, mayMerge)
+  },
+)
+
+/** Lets a merged job stand for itself again (rule R13). */
+export const unmergeJob = actorAction(
+  unmergeForm,
+  (actor, { jobId }): ReturnType<UnmergeAction> => {
+    if (!may(actor.roles, 'job.merge')) return Promise.resolve(fail({ kind: 'forbidden' }))
+    const input = { entity: 'job', id: jobId, stamp: manyStamps() } as const
+    return unmergeRow(actor, input, { kind: 'notMerged' as const })
+  },
+)
 
 const stampNow = () => {
   const at = new Date(systemClock.now()).toISOString()
@@ -52,4 +86,10 @@ export const reopenJobAtDesk = actorAction(reopenForm, (actor, input): ReturnTyp
   return moveJobAtDesk(actor, { jobId, fault: null, ...stampNow() }, (job) =>
     reopeningMove({ actor, job, from }, reason),
   )
+})
+
+/** Uses a value that did not stand, or leaves things as they are (docs/spec/sync.md, M4). */
+export const settleValue = actorAction(settleForm, (actor, input): ReturnType<SettleAction> => {
+  if (!may(actor.roles, 'job.work')) return Promise.resolve(fail({ kind: 'forbidden' }))
+  return settleAtDesk(actor, { ...input, stamp: manyStamps() })
 })

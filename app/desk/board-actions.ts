@@ -1,5 +1,12 @@
 import type { BoardActions } from '@/components/desk/desk-actions'
-import { assignPerson, closeJobAtDesk, reopenJobAtDesk } from './actions'
+import {
+  assignPerson,
+  closeJobAtDesk,
+  mergeJob,
+  reopenJobAtDesk,
+  settleValue,
+  unmergeJob,
+} from './actions'
 import { movePartLine } from './parts/actions'
 
 /** Every server action of the board, for both of its pages. */
@@ -8,4 +15,7 @@ export const boardActions: BoardActions = {
   move: movePartLine,
   close: closeJobAtDesk,
   reopen: reopenJobAtDesk,
+  settle: settleValue,
+  merge: mergeJob,
+  unmerge: unmergeJob,
 }

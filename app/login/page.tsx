@@ -1,4 +1,5 @@
 import type { Metadata } from 'next'
+import { EmptiedNotice } from '@/components/sign-in/emptied-notice'
 import { SignInForm } from '@/components/sign-in/sign-in-form'
 import { SignedInAlready } from '@/components/sign-in/signed-in-already'
 import { RuleEdge } from '@/components/ui/rule-edge'
@@ -17,6 +18,7 @@ export default function SignInPage() {
       </a>
       <h1 className="visually-hidden">Sign in to Farbench</h1>
       <RuleEdge>Sign in</RuleEdge>
+      <EmptiedNotice />
       <SignedInAlready />
       <SignInForm />
       <p className="text-second text-ink2">

@@ -1,5 +1,4 @@
 'use client'
-import { useState } from 'react'
 import type { Quantity } from '@/lib/model/meter-profile'
 import { Choice } from '../ui/choice'
 import { Field } from '../ui/field'
@@ -75,7 +74,9 @@ function Temperatures({
         quiet
         aria-pressed={both}
         className={both ? 'key-down' : ''}
-        onClick={() => change({ ...setup, partTempC: 20, meterTempC: 20 })}
+        onClick={() =>
+          change({ ...setup, partTempC: 20, meterTempC: 20, partTyped: null, meterTyped: null })
+        }
       >
         Part and meter are both at about 20 °C
       </Key>
@@ -83,12 +84,14 @@ function Temperatures({
         <Degrees
           label="Part, °C"
           value={setup.partTempC}
-          onChange={(partTempC) => change({ ...setup, partTempC })}
+          typed={setup.partTyped ?? null}
+          onChange={(partTempC, partTyped) => change({ ...setup, partTempC, partTyped })}
         />
         <Degrees
           label="Meter, °C"
           value={setup.meterTempC}
-          onChange={(meterTempC) => change({ ...setup, meterTempC })}
+          typed={setup.meterTyped ?? null}
+          onChange={(meterTempC, meterTyped) => change({ ...setup, meterTempC, meterTyped })}
         />
       </div>
       <p className="text-second text-ink2">
@@ -104,10 +107,11 @@ function Temperatures({
 function Degrees(props: {
   label: string
   value: number | null
-  onChange: (next: number | null) => void
+  /** What stands in the field while it is no figure yet; kept with the draft to the keystroke (R8). */
+  typed: string | null
+  onChange: (next: number | null, typed: string | null) => void
 }) {
-  const [typed, setTyped] = useState<string | null>(null)
-  const shown = typed ?? (props.value === null ? '' : String(props.value))
+  const shown = props.typed ?? (props.value === null ? '' : String(props.value))
   const error = shown.trim() === '' || readDegrees(shown) !== null ? null : 'From −60 to 200.'
   return (
     <Field
@@ -119,8 +123,8 @@ function Degrees(props: {
       onChange={(next) => {
         const read = readDegrees(next)
         const settled = next.trim() === '' || read !== null
-        setTyped(settled && String(read ?? '') === next ? null : next)
-        if (settled) props.onChange(read)
+        const typed = settled && String(read ?? '') === next ? null : next
+        props.onChange(settled ? read : props.value, typed)
       }}
     />
   )

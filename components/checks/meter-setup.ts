@@ -8,7 +8,12 @@ import { useDraft } from '../store/use-draft'
 import { useBag, useMeters } from '../store/use-rows'
 
 /** How the meter stands for this job: kept on the phone between checks. */
-export type MeterSetup = MeterStands & { meterId: Id | null }
+export type MeterSetup = MeterStands & {
+  meterId: Id | null
+  /** The two temperatures as they stand in the field while they are no figure yet. */
+  partTyped?: string | null
+  meterTyped?: string | null
+}
 const FIRST: MeterSetup = { meterId: null, nulled: false, partTempC: null, meterTempC: null }
 
 export type MeterView = {

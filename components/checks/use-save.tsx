@@ -2,11 +2,17 @@
 import { useCallback, useState } from 'react'
 import { AppError } from '@/lib/model/result'
 import type { OpInput } from '@/lib/sync/protocol/op'
+import { isNoRoom, NO_ROOM } from '../field/log/no-room'
 import { type NewPhoto, useRecord } from '../store/use-record'
 import { announce } from '../ui/announce'
 import { oneAtATime } from './one-at-a-time'
 
-type More = { photos?: NewPhoto[]; clearDrafts?: string[] }
+type More = {
+  photos?: NewPhoto[]
+  clearDrafts?: string[]
+  /** Kept instead when the phone has no room for the photos (P21). */
+  wordsAlone?: OpInput[]
+}
 export type Save = {
   /** True when it is on the phone; false when it is not, and then `problem` says why; a second tap is none. */
   save: (ops: OpInput[], more?: More) => Promise<boolean>
@@ -20,8 +26,19 @@ export function useSave(): Save {
   const [saving, setSaving] = useState(false)
   const [once] = useState(() => oneAtATime(false))
   const [problem, setProblem] = useState<string | null>(null)
+  const keepWords = useCallback(
+    async (error: unknown, ops: OpInput[], { clearDrafts = [] }: More) => {
+      if (!isNoRoom(error) || ops.length === 0) return null
+      const isKept = await record(ops, { clearDrafts }).then(
+        () => true,
+        () => false,
+      )
+      return isKept ? `${NO_ROOM} The words are kept as a note.` : null
+    },
+    [record],
+  )
   const save = useCallback(
-    (ops: OpInput[], more: More = {}) =>
+    (ops: OpInput[], { wordsAlone = [], ...more }: More = {}) =>
       once(async () => {
         setSaving(true)
         try {
@@ -29,7 +46,7 @@ export function useSave(): Save {
           setProblem(null)
           return true
         } catch (error) {
-          const words = whyNotSaved(error)
+          const words = (await keepWords(error, wordsAlone, more)) ?? whyNotSaved(error)
           setProblem(words)
           announce(words, 'assertive')
           return false
@@ -37,7 +54,7 @@ export function useSave(): Save {
           setSaving(false)
         }
       }),
-    [record, once],
+    [keepWords, record, once],
   )
   return { save, saving, problem }
 }
@@ -46,6 +63,7 @@ export function useSave(): Save {
 function whyNotSaved(error: unknown): string {
   const kind = error instanceof AppError ? error.kind : 'unknown'
   const words: Record<string, string> = {
+    noRoomForPhoto: NO_ROOM,
     storeFull: 'Not saved: this phone has no room left. What you typed is still here.',
     recordTooBig: 'Not saved: this is too long for one entry. Make the words shorter.',
     badRecord: 'Not saved: the entry is not in order. What you typed is still here.',

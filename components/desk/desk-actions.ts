@@ -1,9 +1,12 @@
 import type { Result } from '@/lib/model/result'
 import type { ClosingProblem } from '@/lib/shop/closing'
 import type { AssignProblem, LineProblem } from '@/lib/shop/desk-moves'
+import type { MergeProblem } from '@/lib/shop/merge-rules'
 import type { AssignForm } from './hands/assign.schema'
 import type { CloseForm, ReopenForm } from './job/closing.schema'
+import type { MergeForm, UnmergeForm } from './merge/merge.schema'
 import type { LineMoveForm } from './parts/line-move.schema'
+import type { SettleForm } from './values/settle.schema'
 
 /** What every desk action may answer besides its own refusals. */
 export type DeskProblem = { kind: 'signIn' | 'invalid' | 'forbidden' | 'notFound' }
@@ -13,6 +16,13 @@ export type AssignAction = (form: AssignForm) => Promise<Result<null, DeskProble
 export type MoveLineAction = (
   form: LineMoveForm,
 ) => Promise<Result<null, DeskProblem | LineProblem>>
+export type MergeAction = (form: MergeForm) => Promise<Result<null, DeskProblem | MergeProblem>>
+export type UnmergeAction = (form: UnmergeForm) => Promise<Result<null, DeskProblem | MergeProblem>>
+
+export type SettleAction = (form: SettleForm) => Promise<Result<null, DeskProblem>>
+
+/** Merging a job into another, and undoing it. */
+export type MergeActions = { merge: MergeAction; unmerge: UnmergeAction }
 export type CloseAction = (form: CloseForm) => Promise<Result<null, DeskProblem | ClosingProblem>>
 export type ReopenAction = (form: ReopenForm) => Promise<Result<null, DeskProblem | ClosingProblem>>
 
@@ -22,4 +32,5 @@ export type BoardActions = {
   move: MoveLineAction
   close: CloseAction
   reopen: ReopenAction
-}
+  settle: SettleAction
+} & MergeActions

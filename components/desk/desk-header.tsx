@@ -33,6 +33,19 @@ export function DeskHeader() {
             Parts
           </a>
         ) : null}
+        {may(actor.roles, 'unsent.import') ? (
+          <a
+            href={deskPaths.handOver}
+            aria-current={path === deskPaths.handOver ? 'page' : undefined}
+          >
+            Take in
+          </a>
+        ) : null}
+        {may(actor.roles, 'device.revoke') ? (
+          <a href={deskPaths.phones} aria-current={path === deskPaths.phones ? 'page' : undefined}>
+            Phones
+          </a>
+        ) : null}
         {may(actor.roles, 'field.see') ? <a href="/field">Field</a> : null}
       </nav>
       <LineState />

@@ -6,6 +6,8 @@ export const deskPaths = {
   board: '/desk',
   job: (jobId: string) => `/desk/jobs/${jobId}`,
   parts: '/desk/parts',
+  handOver: '/desk/import',
+  phones: '/desk/phones',
 }
 
 /** The id of the job the address names, or null. */

@@ -1,6 +1,7 @@
 import { AppError } from '@/lib/model/result'
 import type { ClosingProblem } from '@/lib/shop/closing'
 import type { AssignProblem, LineProblem } from '@/lib/shop/desk-moves'
+import type { MergeProblem } from '@/lib/shop/merge-rules'
 import { LINE_STATE_WORDS } from '@/lib/shop/part-words'
 import { JOB_STATE_WORDS } from '../field/words'
 import type { DeskProblem } from './desk-actions'
@@ -24,6 +25,7 @@ export type ActedProblem =
   | DeskProblem
   | AssignProblem
   | LineProblem
+  | MergeProblem
   | ClosingProblem
   | { kind: 'trouble' }
 
@@ -52,6 +54,12 @@ export function actedSentence(problem: ActedProblem): string {
       return 'Name the cause, or choose unknown or no fault found.'
     case 'causeTooMuch':
       return 'With this grade no cause is named. Nothing was changed.'
+    case 'sameRow':
+      return 'A job cannot be merged into itself.'
+    case 'alreadyMerged':
+      return 'One of the two was merged meanwhile. Look again, then choose.'
+    case 'notMerged':
+      return 'It stands for itself already. Nothing was changed.'
     case 'trouble':
       return 'No answer from the shop, so it is not sure whether it was done. Look again in a moment.'
   }

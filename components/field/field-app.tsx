@@ -42,7 +42,7 @@ function Inside() {
   return (
     <Shell route={route}>
       {session.kind === 'signedOut' && route.name !== 'about' ? (
-        <SignedOut />
+        <SignedOut emptied={session.emptied === true} />
       ) : (
         <Screens route={route} />
       )}

@@ -12,6 +12,7 @@ import { KeyLink } from '@/components/ui/key'
 import { RuleEdge } from '@/components/ui/rule-edge'
 import { Screen } from '@/components/ui/screen'
 import type { Job } from '@/lib/model/job'
+import { isOwn } from '@/lib/shop/scope'
 import { FirstOpen } from './first-open'
 import { EMPTY_INTAKE, INTAKE_KEY } from './intake/intake-draft'
 import { jobHref } from './route'
@@ -48,10 +49,9 @@ export function JobsScreen() {
   )
 }
 
-/** Own means opened by or assigned to the person; closed ones last, newest first in each. */
+/** Own means opened by or assigned to the person, also through a merged job; closed ones last, newest first in each. */
 function split(jobs: readonly Job[], personId: string | null) {
-  const own = (job: Job) =>
-    personId !== null && (job.openedBy === personId || job.assignedTo.includes(personId))
+  const own = (job: Job) => personId !== null && isOwn(personId, job)
   const live = jobs.filter((job) => job.state !== 'closed')
   return {
     own: live.filter(own),

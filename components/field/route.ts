@@ -4,11 +4,24 @@
  */
 export type JobTab = 'job' | 'checks' | 'log' | 'parts'
 
+/** Screens that change one thing of a job. */
+export type SettingName = 'setPlace' | 'setAir' | 'setComplaint' | 'setMachine'
+
 export type Route =
   | { name: 'jobs' | 'new' | 'unsent' | 'about' | 'unknown' }
   | { name: JobTab; jobId: string }
   | {
-      name: 'codes' | 'sheet' | 'fix' | 'proof' | 'wayOut' | 'note' | 'photo' | 'askPart'
+      name:
+        | 'codes'
+        | 'sheet'
+        | 'fix'
+        | 'proof'
+        | 'wayOut'
+        | 'note'
+        | 'photo'
+        | 'voice'
+        | 'askPart'
+        | SettingName
       jobId: string
     }
   | { name: 'check' | 'reading'; jobId: string; checkId: string }
@@ -28,7 +41,12 @@ const OF_JOB = {
   wayout: 'wayOut',
   note: 'note',
   photo: 'photo',
+  voice: 'voice',
   'parts/ask': 'askPart',
+  place: 'setPlace',
+  air: 'setAir',
+  complaint: 'setComplaint',
+  machine: 'setMachine',
 } as const
 
 const own = <T extends object>(table: T, key: string): T[keyof T] | null =>
@@ -95,6 +113,7 @@ export function backOf(route: Route): { href: string; label: string } | null {
       return { href: jobHref(route.jobId, `checks/${route.checkId}`), label: 'the check' }
     case 'note':
     case 'photo':
+    case 'voice':
     case 'entry':
       return { href: jobHref(route.jobId, 'log'), label: 'log' }
     case 'correct':
@@ -106,6 +125,10 @@ export function backOf(route: Route): { href: string; label: string } | null {
     case 'fix':
     case 'proof':
     case 'wayOut':
+    case 'setPlace':
+    case 'setAir':
+    case 'setComplaint':
+    case 'setMachine':
       return { href: jobHref(route.jobId), label: 'job' }
   }
 }
@@ -119,7 +142,12 @@ const FORMS: ReadonlySet<Route['name']> = new Set([
   'wayOut',
   'note',
   'photo',
+  'voice',
   'askPart',
+  'setPlace',
+  'setAir',
+  'setComplaint',
+  'setMachine',
   'reading',
   'swap',
   'check',

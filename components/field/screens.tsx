@@ -1,12 +1,12 @@
 'use client'
 
-import { type ComponentType, lazy, Suspense } from 'react'
+import { type ComponentType, lazy, type ReactNode, Suspense, useEffect } from 'react'
+import { useJob } from '@/components/store/use-rows'
 import { KeyLink } from '@/components/ui/key'
 import { Screen } from '@/components/ui/screen'
-import { JobScreen } from './job/job-screen'
 import { JobsScreen } from './jobs-screen'
-import { LogScreen } from './log/log-screen'
 import type { Route } from './route'
+import { useRoute } from './router'
 
 /** A screen that is fetched when it is first wanted, from what the phone holds. */
 function later<P extends object>(fetch: () => Promise<ComponentType<P>>) {
@@ -40,6 +40,8 @@ const AskPartScreen = later(() =>
 const PartsScreen = later(() =>
   import('@/components/parts/parts-screen').then((file) => file.PartsScreen),
 )
+const JobScreen = later(() => import('./job/job-screen').then((file) => file.JobScreen))
+const LogScreen = later(() => import('./log/log-screen').then((file) => file.LogScreen))
 const CodesScreen = later(() => import('./codes/codes-screen').then((file) => file.CodesScreen))
 const IntakeScreen = later(() => import('./intake/intake-screen').then((file) => file.IntakeScreen))
 const SheetScreen = later(() => import('./job/sheet-screen').then((file) => file.SheetScreen))
@@ -47,10 +49,19 @@ const CorrectScreen = later(() => import('./log/correct-screen').then((file) => 
 const EntryScreen = later(() => import('./log/entry-screen').then((file) => file.EntryScreen))
 const NoteScreen = later(() => import('./log/note-screen').then((file) => file.NoteScreen))
 const PhotoScreen = later(() => import('./log/photo-screen').then((file) => file.PhotoScreen))
+const VoiceScreen = later(() => import('./log/voice-screen').then((file) => file.VoiceScreen))
+const AirScreen = later(() => import('./settings/air-screen').then((file) => file.AirScreen))
+const ComplaintScreen = later(() =>
+  import('./settings/complaint-screen').then((file) => file.ComplaintScreen),
+)
+const MachineScreen = later(() =>
+  import('./settings/machine-screen').then((file) => file.MachineScreen),
+)
+const PlaceScreen = later(() => import('./settings/place-screen').then((file) => file.PlaceScreen))
 const AboutScreen = later(() => import('./phone/about-screen').then((file) => file.AboutScreen))
 const UnsentScreen = later(() => import('./phone/unsent-screen').then((file) => file.UnsentScreen))
 
-/** The screen of a route. Jobs, job and log come with the app; the others are fetched when first wanted. */
+/** The screen of a route. The jobs come with the app; the others are fetched when first wanted. */
 export function Screens({ route }: { route: Route }) {
   return (
     <Suspense
@@ -60,9 +71,24 @@ export function Screens({ route }: { route: Route }) {
         </Screen>
       }
     >
-      <OneScreen route={route} />
+      <LandOnLead route={route}>
+        <OneScreen route={route} />
+      </LandOnLead>
     </Suspense>
   )
+}
+
+/** The address of a merged job becomes that of the one that goes on (R13), once this phone holds it. */
+function LandOnLead({ route, children }: { route: Route; children: ReactNode }) {
+  const { here, go } = useRoute()
+  const jobId = 'jobId' in route ? route.jobId : ''
+  const leadId = useJob(jobId)?.mergedInto
+  const isHeld = useJob(leadId ?? '')
+  const moves = leadId !== undefined && isHeld !== null && isHeld !== undefined
+  useEffect(() => {
+    if (moves) go(here.replace(jobId, leadId), { replace: true, from: here })
+  }, [moves, go, here, jobId, leadId])
+  return moves ? null : children
 }
 
 function OneScreen({ route }: { route: Route }) {
@@ -91,6 +117,8 @@ function OneScreen({ route }: { route: Route }) {
       return <NoteScreen jobId={route.jobId} />
     case 'photo':
       return <PhotoScreen jobId={route.jobId} />
+    case 'voice':
+      return <VoiceScreen jobId={route.jobId} />
     case 'checks':
       return <ChecksScreen jobId={route.jobId} />
     case 'check':
@@ -109,6 +137,14 @@ function OneScreen({ route }: { route: Route }) {
       return <PartsScreen jobId={route.jobId} />
     case 'askPart':
       return <AskPartScreen jobId={route.jobId} />
+    case 'setPlace':
+      return <PlaceScreen jobId={route.jobId} />
+    case 'setAir':
+      return <AirScreen jobId={route.jobId} />
+    case 'setComplaint':
+      return <ComplaintScreen jobId={route.jobId} />
+    case 'setMachine':
+      return <MachineScreen jobId={route.jobId} />
     case 'unknown':
       return <Unknown />
   }

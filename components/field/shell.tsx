@@ -12,6 +12,9 @@ import { LiveRegion } from '@/components/ui/live-region'
 import { Tabs } from '@/components/ui/tabs'
 import { TaskHeader } from '@/components/ui/task-header'
 import { WitnessMark, type WitnessState } from '@/components/ui/witness-mark'
+import { WARN_SHARE } from '@/lib/sync/client/room'
+import { LostNotice } from './phone/lost-notice'
+import { StoreTrouble } from './phone/store-trouble'
 import { backOf, isForm, type JobTab, jobHref, type Route } from './route'
 import { useRoute } from './router'
 import { ThemeKey, useThemeByTheSun } from './theme-menu'
@@ -50,6 +53,8 @@ export function Shell({ route, children }: { route: Route; children: ReactNode }
         <Header route={route} onTab={tab !== undefined} />
       </header>
       {isForm(route) ? null : <UpdateBar />}
+      <StoreTrouble />
+      <LostNotice />
       <main id="main" className="flex flex-1 flex-col">
         {children}
       </main>
@@ -123,12 +128,13 @@ function Witness() {
   )
 }
 
-/** Stuck work outshouts sending, sending outshouts waiting. */
+/** Stuck work outshouts what does not move, that outshouts sending, sending outshouts waiting. */
 export function witnessState(of: {
   counted: boolean
   count: number
   stuckCount: number
   sending: unknown
+  stalled: unknown
 }): WitnessState {
   if (of.stuckCount > 0) {
     return 'stuck'
@@ -139,12 +145,17 @@ export function witnessState(of: {
   if (of.count === 0) {
     return 'whole'
   }
+  if (of.stalled !== null) {
+    return 'late'
+  }
   return of.sending === null ? 'broken' : 'sending'
 }
 
 /** Says when the last thing was accepted (with one short buzz) and, at once, when something is stuck. */
 function useSendingNews(): void {
-  const { count, stuckCount, storageKept } = useUnsent()
+  const { count, stuckCount, storageKept, stalled, quotaShare } = useUnsent()
+  const isHalted = stalled !== null
+  const isFull = (quotaShare ?? 0) >= WARN_SHARE
   const before = useRef<{ count: number; stuck: number }>({ count: 0, stuck: 0 })
   useEffect(() => {
     const was = before.current
@@ -166,6 +177,16 @@ function useSendingNews(): void {
       announce('The phone may clear this store when it runs short of room.', 'assertive')
     }
   }, [storageKept, count])
+  useEffect(() => {
+    if (isHalted) {
+      announce('Nothing is being sent. Open the list of unsent work.', 'assertive')
+    }
+  }, [isHalted])
+  useEffect(() => {
+    if (isFull) {
+      announce('The phone’s room for this app is nearly full.', 'assertive')
+    }
+  }, [isFull])
 }
 
 /** A new screen is read from its title; leaving the list of unsent work leads back to the mark. */

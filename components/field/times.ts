@@ -45,3 +45,6 @@ export function size(bytes: number): string {
     ? `${Math.max(1, Math.round(bytes / 1000))} kB`
     : `${(bytes / 1_000_000).toFixed(1)} MB`
 }
+
+/** How long a voice note is: "22 s", never less than 1 s. */
+export const seconds = (of: number): string => `${Math.max(1, Math.round(of))} s`

@@ -5,13 +5,13 @@ import { useJob, useMachines, useModels } from '@/components/store/use-rows'
 import type { MachineModel } from '@/lib/model/code-book'
 import type { Features } from '@/lib/model/features'
 import type { Job } from '@/lib/model/job'
-import type { Machine } from '@/lib/model/machine'
+import type { MachineRow } from '@/lib/model/machine'
 import { machineName } from './words'
 
 /** A job with its machine and model; `gone` when this phone does not hold it, undefined while opening. */
 export type JobFacts = {
   job: Job
-  machine: Machine | null
+  machine: MachineRow | null
   model: MachineModel | null
   /** Known features: the model's, overruled by what is known of this very machine. */
   features: Features

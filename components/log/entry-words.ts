@@ -6,6 +6,7 @@ import { type BookIndex, wordName } from '@/lib/diag/book-index'
 import { codeAsShown, explainCode } from '@/lib/diag/code-words'
 import type { LogBody, LogKind } from '@/lib/model/log-entry'
 import { assertNever } from '@/lib/model/result'
+import { seconds } from '../field/times'
 import { counted, MACHINE_WORDS, PEOPLE_WORDS, sentence, WAY_OUT_WORDS } from '../field/words'
 import { asTypedOnScreen } from '../reading-strip/figures'
 import { unitLabel } from '../reading-strip/unit-words'
@@ -33,6 +34,7 @@ const KINDS: Record<LogKind, { shape: LogShape; word: string }> = {
   fix: { shape: 'flag', word: 'Fix' },
   proofRun: { shape: 'flag', word: 'Proof run' },
   photo: { shape: 'frame', word: 'Photo' },
+  voice: { shape: 'frame', word: 'Voice note' },
   note: { shape: 'ring', word: 'Note' },
   people: { shape: 'ring', word: 'People' },
   wayOut: { shape: 'flag', word: 'Way out' },
@@ -59,6 +61,10 @@ const PART_FROM = {
 export function entryWords(body: LogBody, book: Book): EntryWords {
   return { shape: KINDS[body.kind].shape, kind: kindWord(body), ...said(body, book) }
 }
+
+/** The word of a kind by its name; undefined for one this version does not know. */
+export const kindName = (kind: string): string | undefined =>
+  Object.hasOwn(KINDS, kind) ? KINDS[kind as LogKind].word : undefined
 
 /** The word of its kind; a fix that holds only for a while is a temporary measure. */
 export const kindWord = (body: LogBody): string =>
@@ -111,6 +117,8 @@ function said(body: LogBody, book: Book): Said {
       return proofRun(body)
     case 'photo':
       return say(body.caption ?? 'Photo')
+    case 'voice':
+      return say(body.caption ?? 'Voice note', `${seconds(body.voice.seconds)}.`)
     case 'note':
       return say(body.words)
     case 'people':

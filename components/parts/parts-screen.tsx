@@ -2,11 +2,8 @@
 import { useState } from 'react'
 import { wordName } from '@/lib/diag/book-index'
 import type { Id } from '@/lib/model/id'
-import type { PartRequestRow } from '@/lib/model/part-request'
-import { CHOICE_WORDS, LINE_STATE_WORDS, URGENCY_WORDS } from '@/lib/shop/part-words'
 import { useBelief } from '../engine/use-belief'
 import { useCase } from '../engine/use-case'
-import { clockTime } from '../field/times'
 import { of100 } from '../reading-strip/figures'
 import { useBook } from '../store/use-book'
 import { usePartRequests } from '../store/use-rows'
@@ -14,6 +11,7 @@ import { Key } from '../ui/key'
 import { Row } from '../ui/row'
 import { RuleEdge } from '../ui/rule-edge'
 import { Screen } from '../ui/screen'
+import { AskedRequest } from './asked-request'
 
 /** PARTS: what was asked for and where it stands, and what may be asked for, from the suspects. */
 export function PartsScreen({ jobId }: { jobId: Id }) {
@@ -28,29 +26,12 @@ export function PartsScreen({ jobId }: { jobId: Id }) {
         {requests?.length === 0 && <p>Nothing yet.</p>}
         <ul>
           {requests?.map((request) => (
-            <Asked key={request.id} request={request} zone={found?.job.zone ?? 'UTC'} />
+            <AskedRequest key={request.id} request={request} zone={found?.job.zone ?? 'UTC'} />
           ))}
         </ul>
       </section>
       <FromSuspects jobId={jobId} />
     </Screen>
-  )
-}
-
-function Asked({ request, zone }: { request: PartRequestRow; zone: string }) {
-  return (
-    <>
-      {request.lines.map((line) => (
-        <li key={line.id}>
-          <Row
-            title={`${line.words}, ${line.quantity}`}
-            second={`${CHOICE_WORDS[line.choice]}${line.number === null ? '' : `, ${line.number}`}. ${URGENCY_WORDS[request.urgency]}, asked ${clockTime(request.askedAt, zone)}.`}
-            end={<span className="caps text-section">{LINE_STATE_WORDS[line.state]}</span>}
-          />
-        </li>
-      ))}
-      {request.note !== null && <li className="py-1 text-second text-ink2">{request.note}</li>}
-    </>
   )
 }
 

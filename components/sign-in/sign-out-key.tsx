@@ -18,6 +18,9 @@ export function SignOutKey({ small = false, after = toSignIn }: Props) {
     setState('busy')
     const answer = await browserShopLine.signOut()
     if (!answer.ok) return setState('failed')
+    // Whoever opens the field on this browser next has to sign in; what is unsent there stays.
+    const file = await import('@/lib/sync/client/emptied').catch(() => null)
+    await file?.lockField().catch(() => undefined)
     setState('ready')
     after()
   }

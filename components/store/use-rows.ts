@@ -4,7 +4,7 @@ import type { Bag } from '@/lib/model/bag'
 import type { MachineModel } from '@/lib/model/code-book'
 import type { Id } from '@/lib/model/id'
 import type { Job } from '@/lib/model/job'
-import type { Machine } from '@/lib/model/machine'
+import type { MachineRow } from '@/lib/model/machine'
 import type { MeterProfile } from '@/lib/model/meter-profile'
 import type { PartRequestRow } from '@/lib/model/part-request'
 import type { Person } from '@/lib/model/person'
@@ -24,10 +24,16 @@ function useRows<E extends StoredEntity>(entity: E, jobId?: Id): RowOf<E>[] | un
 /** The shop; undefined while opening and before it was fetched once. */
 export const useShop = (): Shop | undefined => useRows('shop')?.[0]
 
-/** Every job this phone holds, newest first. */
+/** Every job this phone holds that stands for itself, newest first. */
 export function useJobs(): Job[] | undefined {
   const rows = useRows('job')
-  return useMemo(() => rows?.toSorted((a, b) => b.openedAt.localeCompare(a.openedAt)), [rows])
+  return useMemo(
+    () =>
+      rows
+        ?.filter((row) => row.mergedInto === undefined)
+        .sort((a, b) => b.openedAt.localeCompare(a.openedAt)),
+    [rows],
+  )
 }
 
 /** One job; null when this phone does not hold it. */
@@ -36,7 +42,17 @@ export function useJob(id: Id): Job | null | undefined {
   return useMemo(() => rows && (rows.find((row) => row.id === id) ?? null), [rows, id])
 }
 
-export const useMachines = (): Machine[] | undefined => useRows('machine')
+/** Machines; one that was merged shows, under its own id, what stands for it (R13). */
+export function useMachines(): MachineRow[] | undefined {
+  const rows = useRows('machine')
+  return useMemo(() => {
+    const byId = new Map(rows?.map((row) => [row.id, row]))
+    return rows?.map((row) => {
+      const lead = row.mergedInto === undefined ? undefined : byId.get(row.mergedInto)
+      return lead === undefined ? row : { ...lead, id: row.id, mergedInto: lead.id }
+    })
+  }, [rows])
+}
 
 export const useModels = (): MachineModel[] | undefined => useRows('machineModel')
 
@@ -51,8 +67,14 @@ export function useBag(): Bag | null | undefined {
   return rows && (rows.find((row) => row.personId === phone?.actor.personId) ?? null)
 }
 
-/** Part requests of a job, oldest first. */
+/** Part requests of a job and of those merged into it, oldest first. */
 export function usePartRequests(jobId: Id): PartRequestRow[] | undefined {
   const rows = useRows('partRequest', jobId)
-  return useMemo(() => rows?.toSorted((a, b) => a.askedAt.localeCompare(b.askedAt)), [rows])
+  return useMemo(
+    () =>
+      rows
+        ?.filter((row) => row.takenBack !== true)
+        .sort((a, b) => a.askedAt.localeCompare(b.askedAt)),
+    [rows],
+  )
 }

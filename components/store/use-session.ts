@@ -5,9 +5,3 @@ import { useWatch } from './use-watch'
 
 /** Who is at work on this phone. */
 export const useSession = (): Session => useWatch(useStore().session)
-
-/** Signs the person out: the session ends, the store stays locked on this phone with all unsent work. */
-export function useSignOut(): () => Promise<void> {
-  const store = useStore()
-  return () => store.signOut()
-}

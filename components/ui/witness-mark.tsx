@@ -1,7 +1,10 @@
 import { classes } from './class-names'
 
-/** `opening`: the store is not counted yet, so the bolt is shown without its paint. */
-export type WitnessState = 'opening' | 'whole' | 'broken' | 'sending' | 'stuck'
+/**
+ * `opening`: the store is not counted yet, so the bolt is shown without its paint. `late`: there seems to
+ * be a line, and nothing moves.
+ */
+export type WitnessState = 'opening' | 'whole' | 'broken' | 'sending' | 'late' | 'stuck'
 
 type Props = {
   state: WitnessState
@@ -46,6 +49,8 @@ function witnessWords(state: WitnessState, count: number): string {
       return 'All sent'
     case 'sending':
       return `Sending, ${count} not sent yet`
+    case 'late':
+      return `${count} not sent, and nothing moves`
     case 'stuck':
       return `${count} not sent, some of it is stuck`
     case 'broken':
@@ -102,7 +107,7 @@ function Drawing({ state, count, progress = 0, large }: Props) {
           <Stub y={57.2} />
         </>
       )}
-      {state === 'stuck' ? <Stuck /> : null}
+      {state === 'stuck' || state === 'late' ? <Alarm word={state} /> : null}
       {count > 0 ? (
         <>
           <rect x={64 - width} y="0" width={width} height="24" fill="var(--ink)" />
@@ -136,7 +141,7 @@ function Stub({ y }: { y: number }) {
   )
 }
 
-function Stuck() {
+function Alarm({ word }: { word: 'stuck' | 'late' }) {
   return (
     <g>
       <path
@@ -157,7 +162,7 @@ function Stuck() {
         fontFamily="var(--font-display)"
         fill="var(--nogo)"
       >
-        STUCK
+        {word.toUpperCase()}
       </text>
     </g>
   )

@@ -45,7 +45,8 @@ const PAGE_BYTES = 256 * 1024
  * Answers what changed for this person after the cursor, in change order, each row once at its last
  * change (P7). The roles are read from the membership, never from the caller (P11). Null for a cursor:
  * from the start. `deviceId`: the phone that asks, so that it is also told of rows made on it that are
- * out of scope by now. `reset`: the cursor is of another epoch, shop or scope, or of the future.
+ * out of scope by now. `reset`: the cursor is of another epoch, shop or scope, of the future, or from
+ * before the tombstones that are purged (P10); a pull begun since then goes on, whatever its number.
  * `signIn`: there is no live membership. The cursor of an empty page moves on all the same.
  */
 export async function pullPage(
@@ -55,8 +56,13 @@ export async function pullPage(
   const membership = await findMembership(tx, actor.personId)
   if (!membership) return { kind: 'signIn' }
   const counter = await readCounter(tx)
-  const { epoch, seq: upTo } = counter
-  const start = { epoch, shop: tx.shopId, scopeVersion: membership.scopeVersion, seq: 0 }
+  const { seq: upTo } = counter
+  const start = {
+    epoch: epochText(counter),
+    shop: tx.shopId,
+    scopeVersion: membership.scopeVersion,
+    seq: 0,
+  }
   if (cursor !== null && !fits(cursor, start, counter)) return { kind: 'reset', cursor: start }
   const after = cursor?.seq ?? 0
   const { personId } = actor
@@ -68,43 +74,58 @@ export async function pullPage(
   return { kind: 'page', rows, cursor: { ...start, seq }, more }
 }
 
-/** Answers up to `limit` changes after `seq` as they were numbered, for the desk's stream of events. */
+/**
+ * Answers up to `limit` changes after `seq` as they were numbered, for the desk's stream of events. What
+ * is of a merged job is told as of the one that goes on.
+ */
 export async function changesAfter(
   tx: ShopTx,
   { seq, limit }: { seq: number; limit: number },
 ): Promise<{ seq: number; entity: string; id: string; jobId: Id | null; state: string }[]> {
   return await tx
-    .selectFrom('changeLog')
-    .select(['seq', 'entity', 'entityId as id', 'jobId', 'state'])
-    .where('shopId', '=', tx.shopId)
-    .where('seq', '>', seq)
-    .orderBy('seq')
+    .selectFrom('changeLog as c')
+    .leftJoin('job as j', (join) =>
+      join.onRef('j.shopId', '=', 'c.shopId').onRef('j.id', '=', 'c.jobId'),
+    )
+    .select(['c.seq', 'c.entity', 'c.entityId as id', 'c.state'])
+    .select(sql<Id | null>`coalesce(j.merged_root, c.job_id)`.as('jobId'))
+    .where('c.shopId', '=', tx.shopId)
+    .where('c.seq', '>', seq)
+    .orderBy('c.seq')
     .limit(limit)
     .execute()
 }
 
-type Counter = { epoch: string; seq: number }
+type Counter = { epoch: string; seq: number; horizon: number }
 type Scope = { shopId: Id; personId: Id; roles: readonly Role[]; deviceId: Id | null }
 type Head = Omit<LogPageRow, 'row'>
 
 async function readCounter(tx: ShopTx): Promise<Counter> {
   return await tx
     .selectFrom('shopCounter')
-    .select(['epoch', 'seq'])
+    .select(['epoch', 'seq', 'horizon'])
     .where('shopId', '=', tx.shopId)
     .executeTakeFirstOrThrow()
 }
 
+/** The epoch as cursors carry it: with the horizon it was made under, once there is one. */
+const epochText = ({ epoch, horizon }: Counter): string =>
+  horizon === 0 ? epoch : `${epoch}.${horizon}`
+
 function fits(cursor: LogCursor, start: LogCursor, counter: Counter): boolean {
+  const [epoch, madeUnder = '0'] = cursor.epoch.split('.')
   const isOurs =
-    cursor.epoch === start.epoch &&
+    epoch === counter.epoch &&
     cursor.shop === start.shop &&
     cursor.scopeVersion === start.scopeVersion
-  return isOurs && cursor.seq <= counter.seq
+  const { horizon } = counter
+  const isWhole = cursor.seq === 0 || cursor.seq >= horizon || Number(madeUnder) >= horizon
+  return isOurs && isWhole && cursor.seq <= counter.seq
 }
 
 /**
- * The last change of each entity within (after, upTo]. The counter was read by an earlier statement, so
+ * The last change of each entity within (after, upTo]; rows of a merged job travel as of the one that goes
+ * on. The counter was read by an earlier statement, so
  * every number up to it is visible in this one. A row that is gone or out of scope is told only to
  * those who could hold it: it had a number at or before their cursor, or it was made on their phone.
  */
@@ -115,9 +136,11 @@ async function readHeads(
 ): Promise<Head[]> {
   if (after >= upTo) return []
   const { rows } = await sql<Head>`
-    select c.seq, c.entity, c.entity_id as id, c.job_id,
+    select c.seq, c.entity, c.entity_id as id, coalesce(r.merged_root, c.job_id) as job_id,
       case when v.visible then c.state else 'evict' end as state
-    from change_log c cross join lateral (select ${isVisible(scope)} as visible) v
+    from change_log c
+      left join job r on r.shop_id = c.shop_id and r.id = c.job_id and c.entity <> 'job'
+      cross join lateral (select ${isVisible(scope)} as visible) v
     where c.shop_id = ${scope.shopId} and c.seq > ${after} and c.seq <= ${upTo}
       and not exists (select 1 from change_log l
         where l.shop_id = c.shop_id and l.entity = c.entity and l.entity_id = c.entity_id

@@ -48,6 +48,30 @@ export async function lastChange(tx: ShopTx): Promise<number> {
   return row?.seq ?? 0
 }
 
+/** Answers the shop's last change number, and the one under which the log is not whole any more (P10). */
+export async function logBounds(tx: ShopTx): Promise<{ last: number; horizon: number }> {
+  const row = await tx
+    .selectFrom('shopCounter')
+    .select(['seq', 'horizon'])
+    .where('shopId', '=', tx.shopId)
+    .executeTakeFirst()
+  return { last: row?.seq ?? 0, horizon: row?.horizon ?? 0 }
+}
+
+/**
+ * Purges tombstones from before `before` that an earlier run put under the horizon, and raises the horizon
+ * over those that the next run will purge. `isWaiting`: there are such, so run again after a while.
+ */
+export async function pruneChanges(
+  tx: ShopTx,
+  { before }: { before: string },
+): Promise<{ purged: number; isWaiting: boolean }> {
+  const { rows } = await sql<{ purged: number; waiting: boolean }>`
+    select purged, waiting from prune_changes(${tx.shopId}, ${before}::timestamptz)
+  `.execute(tx)
+  return { purged: Number(rows[0]?.purged ?? 0), isWaiting: rows[0]?.waiting ?? false }
+}
+
 /**
  * Gives the rows their change numbers in the order given and tells the listeners once, at commit.
  * Answers the last number (the shop's present one for an empty list). Every insert, update or delete

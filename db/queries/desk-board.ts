@@ -4,7 +4,9 @@ import type { Id } from '@/lib/model/id'
 import { machineWords } from '@/lib/model/machine'
 import { asShop, type ShopTx } from '../client'
 import { lastChange } from './changes'
-import { toJob } from './jobs'
+import { alsoEnteredOf } from './field-history'
+import { membersOf, toJob } from './jobs'
+import { machineOfJob } from './machines'
 
 /** Whose jobs: every job of the shop, or those a person opened or is assigned to. */
 export type Whose = { kind: 'all' } | { kind: 'own'; personId: Id }
@@ -43,7 +45,7 @@ export function boardRows(tx: ShopTx, whose: Whose) {
   const query = tx
     .selectFrom('job')
     .innerJoin('machine', (join) =>
-      join.onRef('machine.shopId', '=', 'job.shopId').onRef('machine.id', '=', 'job.machineId'),
+      join.onRef('machine.shopId', '=', 'job.shopId').on('machine.id', '=', machineOfJob()),
     )
     .leftJoin('machineModel', (join) =>
       join
@@ -64,12 +66,19 @@ export function boardRows(tx: ShopTx, whose: Whose) {
       partsOpen().as('partsOpen'),
     ])
     .where('job.shopId', '=', tx.shopId)
+    .select(() => [
+      alsoEnteredOf(tx, sql.ref('job.id')).as('alsoEntered'),
+      membersOf(tx).as('members'),
+    ])
     .where('job.deletedAt', 'is', null)
+    .where('job.mergedInto', 'is', null)
   if (whose.kind === 'all') return query
   const { personId } = whose
   return query.where((eb) =>
     eb.or([
       eb('job.openedBy', '=', personId),
+      sql<boolean>`exists (select 1 from job m where m.shop_id = job.shop_id
+        and m.merged_root = job.id and m.opened_by = ${personId})`,
       eb.exists(
         eb
           .selectFrom('jobAssignment')
@@ -82,30 +91,35 @@ export function boardRows(tx: ShopTx, whose: Whose) {
   )
 }
 
+/** The job and those merged into it: what hangs on any of them hangs on the one that goes on (R13). */
+const OF_IT = sql<string[]>`(array[job.id] || array(select m.id from job m
+    where m.shop_id = job.shop_id and m.merged_root = job.id))`
+
 const assigned = () =>
   sql<string[]>`array(select a.person_id::text from job_assignment a
     where a.shop_id = job.shop_id and a.job_id = job.id order by a.assigned_at, a.person_id)`
 
 const entryCount = () =>
   sql<number>`(select count(*)::int from log_entry e
-    where e.shop_id = job.shop_id and e.job_id = job.id)`
+    where e.shop_id = job.shop_id and e.job_id = any(${OF_IT}))`
 
 /** When the last entry from the field came in; lines written at the desk (desk-closing.ts) are none. */
 const heardAt = () =>
   sql<string | null>`(select max(e.received_at) from log_entry e
-    where e.shop_id = job.shop_id and e.job_id = job.id and e.device_id <> e.author_id)`
+    where e.shop_id = job.shop_id and e.job_id = any(${OF_IT})
+      and e.device_id <> e.author_id)`
 
-/** Photos that living or struck entries name and whose bytes have not come. */
+/** Photos and voice notes that living or struck entries name and whose bytes have not come. */
 const photosMissing = () =>
-  sql<number>`(select count(distinct e.body -> 'photo' ->> 'hash')::int from log_entry e
-    where e.shop_id = job.shop_id and e.job_id = job.id and e.kind = 'photo'
+  sql<number>`(select count(distinct e.body -> e.kind ->> 'hash')::int from log_entry e
+    where e.shop_id = job.shop_id and e.job_id = any(${OF_IT}) and e.kind in ('photo', 'voice')
       and not exists (select 1 from photo p
-        where p.shop_id = e.shop_id and p.hash = e.body -> 'photo' ->> 'hash'))`
+        where p.shop_id = e.shop_id and p.hash = e.body -> e.kind ->> 'hash'))`
 
 const partsOpen = () =>
   sql<number>`(select count(*)::int from part_line l join part_request r
       on r.shop_id = l.shop_id and r.id = l.request_id
-    where r.shop_id = job.shop_id and r.job_id = job.id and r.deleted_at is null
+    where r.shop_id = job.shop_id and r.job_id = any(${OF_IT}) and r.deleted_at is null
       and l.state not in ('fitted', 'returned', 'credited', 'cancelled'))`
 
 type BoardRow = Awaited<ReturnType<ReturnType<typeof boardRows>['execute']>>[number]

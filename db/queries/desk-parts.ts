@@ -1,9 +1,11 @@
+import { sql } from 'kysely'
 import type { DeskParts } from '@/lib/model/desk'
 import type { Id } from '@/lib/model/id'
 import { machineWords } from '@/lib/model/machine'
 import type { PartLineState } from '@/lib/model/part-request'
 import { asShop, type ShopTx } from '../client'
 import { lastChange } from './changes'
+import { machineOfJob } from './machines'
 import { toPartLine } from './part-requests'
 import { getShop } from './shop'
 
@@ -40,10 +42,10 @@ function lineRows(tx: ShopTx) {
         .onRef('partRequest.id', '=', 'partLine.requestId'),
     )
     .innerJoin('job', (join) =>
-      join.onRef('job.shopId', '=', 'partRequest.shopId').onRef('job.id', '=', 'partRequest.jobId'),
+      join.onRef('job.shopId', '=', 'partRequest.shopId').on('job.id', '=', leadOfRequest()),
     )
     .innerJoin('machine', (join) =>
-      join.onRef('machine.shopId', '=', 'job.shopId').onRef('machine.id', '=', 'job.machineId'),
+      join.onRef('machine.shopId', '=', 'job.shopId').on('machine.id', '=', machineOfJob()),
     )
     .leftJoin('machineModel', (join) =>
       join
@@ -77,6 +79,11 @@ function lineRows(tx: ShopTx) {
     .orderBy('partRequest.id')
     .orderBy('partLine.lineNo')
 }
+
+/** The job of a request, or the one that goes on for it (R13). */
+const leadOfRequest = () =>
+  sql<Id>`(select coalesce(o.merged_root, o.id) from job o
+    where o.shop_id = part_request.shop_id and o.id = part_request.job_id)`
 
 type LineRow = Awaited<ReturnType<ReturnType<typeof lineRows>['execute']>>[number]
 

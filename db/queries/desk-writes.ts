@@ -31,7 +31,7 @@ export function changeAssignment<P>(
     await lockShop(tx)
     const job = await findJob(tx, jobId)
     const [person] = await peopleById(tx, [personId])
-    if (!job || !person) return fail({ kind: 'notFound' as const })
+    if (!job || job.mergedInto !== undefined || !person) return fail({ kind: 'notFound' as const })
     const decided = decide(job, person)
     if (!decided.ok) return decided
     if (job.assignedTo.includes(personId) === assigned) return ok(null)

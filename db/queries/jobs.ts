@@ -11,6 +11,7 @@ import type {
 import type { Instant } from '@/lib/model/time'
 import type { ShopTx } from '../client'
 import type { JobTable } from '../tables/job'
+import { type AlsoEnteredRow, alsoEnteredOf } from './field-history'
 
 /** How a job stands: its three states beside each other, and the way out. */
 export type JobStand = {
@@ -57,6 +58,12 @@ export async function findJob(tx: ShopTx, id: Id): Promise<Job | undefined> {
   return (await jobsById(tx, [id]))[0]
 }
 
+/** Answers the job that goes on for this one: itself, unless it was merged (R13). */
+export async function findLeadJob(tx: ShopTx, id: Id): Promise<Job | undefined> {
+  const job = await findJob(tx, id)
+  return job?.mergedInto === undefined ? job : await findJob(tx, job.mergedInto)
+}
+
 /** Answers the jobs with these ids that are there, in no order. */
 export async function jobsById(tx: ShopTx, ids: readonly Id[]): Promise<Job[]> {
   if (ids.length === 0) return []
@@ -70,6 +77,7 @@ export async function listJobs(
 ): Promise<Job[]> {
   const rows = await jobs(tx)
     .where('state', closed ? '=' : '!=', 'closed')
+    .where('mergedInto', 'is', null)
     .orderBy('openedAt', 'desc')
     .orderBy('id', 'desc')
     .limit(limit)
@@ -167,8 +175,9 @@ export async function leaveField(
 
 /**
  * The SQL of "this job belongs on this person's phone" (R22), for the pull: own (opened by or assigned
- * to them), until it left the field; or not closed and in nobody's hands. lib/shop/scope.ts says the
- * same of an op. `jobId` is a column.
+ * to them), until it left the field; or not closed and in nobody's hands. A merged job goes with the one
+ * that goes on, and is theirs who opened any of them. lib/shop/scope.ts says the same of an op. `jobId` is
+ * a column.
  */
 export function onPhoneOf(
   { shopId, personId }: { shopId: Id; personId: Id },
@@ -176,12 +185,15 @@ export function onPhoneOf(
 ) {
   return sql<SqlBool>`exists (
     select 1 from job j
-    where j.shop_id = ${shopId} and j.id = ${jobId} and j.left_field_at is null and (
-      j.opened_by = ${personId}
+    join job s on s.shop_id = j.shop_id and s.id = coalesce(j.merged_root, j.id)
+    where j.shop_id = ${shopId} and j.id = ${jobId} and s.left_field_at is null and (
+      s.opened_by = ${personId}
       or exists (select 1 from job_assignment a
-        where a.shop_id = j.shop_id and a.job_id = j.id and a.person_id = ${personId})
-      or (j.state <> 'closed' and not exists (select 1 from job_assignment a
-        where a.shop_id = j.shop_id and a.job_id = j.id))
+        where a.shop_id = s.shop_id and a.job_id = s.id and a.person_id = ${personId})
+      or (s.state <> 'closed' and not exists (select 1 from job_assignment a
+        where a.shop_id = s.shop_id and a.job_id = s.id))
+      or exists (select 1 from job m
+        where m.shop_id = s.shop_id and m.merged_root = s.id and m.opened_by = ${personId})
     )
   )`
 }
@@ -199,11 +211,39 @@ const jobs = (tx: ShopTx) =>
         .orderBy('a.assignedAt')
         .orderBy('a.personId')})`.as('assignedTo'),
     )
+    .select(() => [
+      alsoEnteredOf(tx, sql.ref('job.id')).as('alsoEntered'),
+      membersOf(tx).as('members'),
+    ])
     .where('shopId', '=', tx.shopId)
     .where('deletedAt', 'is', null)
 
+/** Ids and openers of the jobs that were merged into this one; null for none. */
+export const membersOf = (tx: ShopTx) =>
+  sql<{ id: Id; openedBy: Id }[] | null>`(select jsonb_agg(
+      jsonb_build_object('id', m.id, 'openedBy', m.opened_by) order by m.opened_at, m.id)
+    from job m where m.shop_id = ${tx.shopId} and m.merged_root = job.id)`
+
+type JobRow = Selectable<JobTable> & { assignedTo: Id[] } & Merges
+type Merges = Pick<Selectable<JobTable>, 'mergedRoot'> & {
+  alsoEntered: AlsoEnteredRow[] | null
+  members: { id: Id; openedBy: Id }[] | null
+}
+
+/** What a job's row says of merges and of values that did not stand; nothing where there are none. */
+export const mergesOf = ({ mergedRoot, members, alsoEntered }: Merges) => ({
+  ...(mergedRoot === null ? {} : { mergedInto: mergedRoot }),
+  ...(members === null
+    ? {}
+    : {
+        mergedFrom: members.map((member) => member.id),
+        alsoOpenedBy: [...new Set(members.map((member) => member.openedBy))],
+      }),
+  ...(alsoEntered === null ? {} : { alsoEntered }),
+})
+
 /** A stored job in the words of the model. */
-export const toJob = (row: Selectable<JobTable> & { assignedTo: Id[] }): Job => ({
+export const toJob = (row: JobRow): Job => ({
   id: row.id,
   machineId: row.machineId,
   people: row.people,
@@ -221,4 +261,5 @@ export const toJob = (row: Selectable<JobTable> & { assignedTo: Id[] }): Job => 
   wayOut: row.wayOut,
   openedBy: row.openedBy,
   assignedTo: row.assignedTo,
+  ...mergesOf(row),
 })

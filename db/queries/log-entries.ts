@@ -78,6 +78,23 @@ export async function listLog(tx: ShopTx, jobId: Id): Promise<LogRow[]> {
   return rows.map(toLogRow)
 }
 
+/**
+ * Answers the log of a job and of those merged into it, as it came in: each chain in its own order, the
+ * chains laid into each other by the time at which they reached the shop.
+ */
+export async function listWholeLog(tx: ShopTx, jobId: Id): Promise<LogRow[]> {
+  const rows = await entries(tx)
+    .where(
+      sql<boolean>`job_id in (select g.id from job g where g.shop_id = log_entry.shop_id
+        and (g.id = ${jobId} or g.merged_root = ${jobId}))`,
+    )
+    .orderBy(sql`max(received_at) over (partition by job_id order by order_no)`)
+    .orderBy('jobId')
+    .orderBy('orderNo')
+    .execute()
+  return rows.map(toLogRow)
+}
+
 /** Answers the entries with these ids that are there, in no order. */
 export async function logEntriesById(tx: ShopTx, ids: readonly Id[]): Promise<LogRow[]> {
   if (ids.length === 0) return []

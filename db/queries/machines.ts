@@ -1,8 +1,8 @@
-import type { Selectable } from 'kysely'
+import { type Selectable, sql } from 'kysely'
 import type { Bag } from '@/lib/model/bag'
 import type { MachineModel } from '@/lib/model/code-book'
 import type { Id } from '@/lib/model/id'
-import type { Machine } from '@/lib/model/machine'
+import type { Machine, MachineRow } from '@/lib/model/machine'
 import type { MeterProfile } from '@/lib/model/meter-profile'
 import type { ShopTx } from '../client'
 import type {
@@ -11,6 +11,7 @@ import type {
   MachineTable,
   MeterProfileTable,
 } from '../tables/machine'
+import { type AlsoEnteredRow, alsoEnteredOf } from './field-history'
 
 /** Stores machines under their own ids; an id that is there is an error of the caller. Take change numbers. */
 export async function insertMachines(tx: ShopTx, machines: readonly Machine[]): Promise<void> {
@@ -27,8 +28,20 @@ export async function insertMachines(tx: ShopTx, machines: readonly Machine[]): 
     .execute()
 }
 
+/** The SQL of a job's machine: the one that stands for it, should it have been merged (R13). */
+export const machineOfJob = () =>
+  sql<Id>`(select coalesce(o.merged_root, o.id) from machine o
+    where o.shop_id = job.shop_id and o.id = job.machine_id)`
+
+/** Answers a machine, or the one that stands for it; undefined when it is not there. */
+export async function findMachine(tx: ShopTx, id: Id): Promise<MachineRow | undefined> {
+  const [machine] = await machinesById(tx, [id])
+  if (machine?.mergedInto === undefined) return machine
+  return (await machinesById(tx, [machine.mergedInto]))[0]
+}
+
 /** Answers the machines with these ids that are there, in no order. */
-export async function machinesById(tx: ShopTx, ids: readonly Id[]): Promise<Machine[]> {
+export async function machinesById(tx: ShopTx, ids: readonly Id[]): Promise<MachineRow[]> {
   if (ids.length === 0) return []
   const rows = await machines(tx).where('id', 'in', ids).execute()
   return rows.map(toMachine)
@@ -38,10 +51,13 @@ const machines = (tx: ShopTx) =>
   tx
     .selectFrom('machine')
     .selectAll()
+    .select(() => alsoEnteredOf(tx, sql.ref('machine.id')).as('alsoEntered'))
     .where('shopId', '=', tx.shopId)
     .where('deletedAt', 'is', null)
 
-const toMachine = (row: Selectable<MachineTable>): Machine => ({
+type StoredMachine = Selectable<MachineTable> & { alsoEntered: AlsoEnteredRow[] | null }
+
+const toMachine = (row: StoredMachine): MachineRow => ({
   id: row.id,
   modelId: row.modelId,
   unitNumber: row.unitNumber,
@@ -52,6 +68,9 @@ const toMachine = (row: Selectable<MachineTable>): Machine => ({
   hours: row.hours,
   features: row.features,
   fleet: row.fleet,
+  ...(row.mergedRoot === null ? {} : { mergedInto: row.mergedRoot }),
+  ...(row.revived ? { revived: true } : {}),
+  ...(row.alsoEntered === null ? {} : { alsoEntered: row.alsoEntered }),
 })
 
 /** Answers the models with these ids, or all of the shop; in no order. */

@@ -1,9 +1,10 @@
-import type { Selectable } from 'kysely'
+import { type Selectable, sql } from 'kysely'
 import type { Id } from '@/lib/model/id'
 import type { PartLine, PartLineState, PartRequest, PartRequestRow } from '@/lib/model/part-request'
 import type { Instant } from '@/lib/model/time'
 import type { ShopTx } from '../client'
 import type { PartLineTable, PartRequestTable } from '../tables/job'
+import { lineColumns } from './part-lines'
 
 /** A request as it came in: who asked, and on which phone (null: at the desk). */
 export type NewPartRequest = {
@@ -34,21 +35,17 @@ export async function insertPartRequests(
   await tx
     .insertInto('partLine')
     .values(
-      requests.flatMap(({ request }) =>
-        request.lines.map(({ price, ...line }, index) => ({
-          shopId,
-          requestId: request.id,
-          lineNo: index + 1,
-          ...line,
-          priceMinor: price?.minor ?? null,
-          priceCurrency: price?.currency ?? null,
-        })),
+      requests.flatMap(({ request: { id, lines } }) =>
+        lines.map((line, index) => lineColumns(shopId, { requestId: id, lineNo: index + 1, line })),
       ),
     )
     .execute()
 }
 
-/** Answers requests with their lines, the oldest first: of one job, of these ids, or all of the shop. */
+/**
+ * Answers requests with their lines, the oldest first: of one job and those merged into it, of these ids,
+ * or all of the shop.
+ */
 export async function listPartRequests(
   tx: ShopTx,
   only: { jobId?: Id; ids?: readonly Id[] } = {},
@@ -61,7 +58,13 @@ export async function listPartRequests(
     .where('deletedAt', 'is', null)
     .orderBy('askedAt')
     .orderBy('id')
-  if (only.jobId !== undefined) query = query.where('jobId', '=', only.jobId)
+  const { jobId } = only
+  if (jobId !== undefined) {
+    query = query.where(
+      sql<boolean>`job_id in (select g.id from job g where g.shop_id = part_request.shop_id
+        and (g.id = ${jobId} or g.merged_root = ${jobId}))`,
+    )
+  }
   if (only.ids) query = query.where('id', 'in', only.ids)
   const requests = await query.execute()
   if (requests.length === 0) return []
@@ -132,10 +135,14 @@ const toRow = (
   urgency: row.urgency,
   note: row.note,
   advice: row.advice,
+  ...(row.revived ? { revived: true } : {}),
   lines: lines.map(toPartLine),
 })
 
-type StoredLine = Omit<PartLineTable, 'shopId' | 'requestId' | 'lineNo' | 'state'> & {
+type StoredLine = Omit<
+  PartLineTable,
+  'shopId' | 'requestId' | 'lineNo' | 'state' | 'wanted' | 'countedOut'
+> & {
   state: PartLineState
 }
 

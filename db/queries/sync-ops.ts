@@ -73,6 +73,23 @@ export async function saveOps(tx: ShopTx, stored: readonly StoredOp[]): Promise<
   `.execute(tx)
 }
 
+/** True when an op of this phone that was refused for good speaks of a file by its hash. */
+export async function refusedOpNames(
+  tx: ShopTx,
+  { deviceId, hash }: { deviceId: Id; hash: string },
+): Promise<boolean> {
+  const row = await tx
+    .selectFrom('syncOp')
+    .select('opId')
+    .where('shopId', '=', tx.shopId)
+    .where('deviceId', '=', deviceId)
+    .where('outcome', '=', 'rejected')
+    .where(sql<boolean>`position(${hash} in raw) > 0`)
+    .limit(1)
+    .executeTakeFirst()
+  return row !== undefined
+}
+
 const ops = (tx: ShopTx) => tx.selectFrom('syncOp').selectAll().where('shopId', '=', tx.shopId)
 
 const toOp = ({ shopId: _, ...op }: Selectable<SyncOpTable>): StoredOp => op

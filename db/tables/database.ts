@@ -17,6 +17,7 @@ import type {
   MachineTable,
   MeterProfileTable,
 } from './machine'
+import type { FieldHistoryTable, MergingTable } from './merge'
 import type {
   CredentialTable,
   DeviceTable,
@@ -27,6 +28,7 @@ import type {
   PersonTable,
   SessionTable,
 } from './person'
+import type { QuarantineDecisionTable, QuarantineOpTable } from './quarantine'
 import type { ChangeLogTable, ShopCounterTable, ShopTable } from './shop'
 import type { AdviceTable, SyncOpTable } from './sync-op'
 
@@ -63,5 +65,9 @@ export type Database = {
   logEntry: LogEntryTable
   auditEntry: AuditEntryTable
   syncOp: SyncOpTable
+  quarantineOp: QuarantineOpTable
+  quarantineDecision: QuarantineDecisionTable
+  fieldHistory: FieldHistoryTable
+  merging: MergingTable
   advice: AdviceTable
 }

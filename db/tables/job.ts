@@ -29,6 +29,9 @@ export type JobTable = {
   /** Set 60 days after closing: from then on no phone holds the job (R22). */
   leftFieldAt: string | null
   deletedAt: string | null
+  /** What this job was merged into, and the end of that chain; null while it stands for itself. */
+  mergedInto: string | null
+  mergedRoot: string | null
 }
 
 /** Who works on a job; a set, so rows are added and taken away. */
@@ -51,6 +54,8 @@ export type PartRequestTable = {
   advice: JSONColumnType<NonNullable<PartRequest['advice']>> | null
   receivedAt: Generated<string>
   deletedAt: string | null
+  /** It was taken back and written into meanwhile: it stands again. */
+  revived: Generated<boolean>
 }
 
 export type PartLineTable = {
@@ -68,6 +73,9 @@ export type PartLineTable = {
   priceCurrency: string | null
   condemnedBy: string | null
   state: Generated<PartLineState>
+  /** The sum asked for, which may pass through nothing; null: the quantity. */
+  wanted: number | null
+  countedOut: Generated<boolean>
 }
 
 export type PhotoTable = {

@@ -30,6 +30,9 @@ export type MachineTable = {
   fleet: boolean
   updatedAt: Generated<string>
   deletedAt: string | null
+  revived: Generated<boolean>
+  mergedInto: string | null
+  mergedRoot: string | null
 }
 
 export type MeterProfileTable = {

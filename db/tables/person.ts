@@ -58,6 +58,20 @@ export type DeviceTable = {
   clockOffsetMs: number | null
   revokedAt: string | null
   revokedBy: string | null
+  revokedReason: string | null
+  revokedRoles: Role[] | null
+  heldOps: number | null
+  heldPhotos: number | null
+  heldOldestAt: string | null
+  heldToldAt: string | null
+  canary: string | null
+  gapsToldAt: string | null
+  replacedBy: string | null
+  replacedAt: string | null
+  lostOps: number | null
+  lostLastOn: string | null
+  deletedOps: number | null
+  wipeToldAt: string | null
 }
 
 export type PartyTable = {

@@ -21,6 +21,8 @@ export type ShopCounterTable = {
   epoch: Generated<string>
   seq: Generated<number>
   lastJobNumber: Generated<number>
+  /** Highest change number of purged tombstones: an older cursor pulls anew (P10). */
+  horizon: Generated<number>
 }
 
 /** One numbered change (docs/spec/data.md). Written by take_changes only. */

@@ -1,6 +1,6 @@
 import { cookies } from 'next/headers'
 import { decode } from 'next-auth/jwt'
-import { withNoShop } from '@/db/client'
+import { lookUp } from '@/db/client'
 import { liveSession } from '@/db/queries/sign-in'
 import { env } from '@/lib/env'
 import { id } from '@/lib/model/id'
@@ -9,6 +9,13 @@ import { systemClock } from '@/lib/ports/clock'
 
 /** Names next-auth gives its cookie on plain http and on https. */
 const COOKIE_NAMES = ['__Secure-next-auth.session-token', 'next-auth.session-token']
+
+/** Headers that drop the session's cookie in the browser, whichever name it has. */
+export const dropSession = (): [string, string][] =>
+  COOKIE_NAMES.map((name) => {
+    const secure = name.startsWith('__Secure-') ? '; Secure' : ''
+    return ['set-cookie', `${name}=; Path=/; Max-Age=0; HttpOnly; SameSite=Lax${secure}`]
+  })
 
 /** Answers the Actor of a page's or action's own request; null: nobody, expired or revoked. */
 export async function actorOf(): Promise<Actor | null> {
@@ -46,5 +53,5 @@ async function actorOfToken(token: string): Promise<Actor | null> {
   const sid = id.safeParse(claims?.sid)
   if (!sid.success) return null
   const now = new Date(systemClock.now()).toISOString()
-  return (await withNoShop((tx) => liveSession(tx, { id: sid.data, now }))) ?? null
+  return (await lookUp((db) => liveSession(db, { id: sid.data, now }))) ?? null
 }

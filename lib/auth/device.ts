@@ -1,7 +1,7 @@
 import { createPublicKey, type KeyObject, verify } from 'node:crypto'
 import { asShop } from '@/db/client'
-import { findDevice } from '@/db/queries/devices'
-import { findActor } from '@/db/queries/people'
+import { type Device, findSender } from '@/db/queries/devices'
+import type { Quarantine } from '@/db/queries/quarantine'
 import type { Id } from '@/lib/model/id'
 import type { Actor } from '@/lib/model/person'
 import { fail, ok, type Result } from '@/lib/model/result'
@@ -15,11 +15,19 @@ export type SignedClaim = {
   signature: Uint8Array
 }
 
-/** A phone whose signature was checked, with the person it belongs to and today's roles. */
-export type SignedDevice = { actor: Actor; deviceId: Id }
+/**
+ * A phone whose signature was checked, with the person it belongs to. `quarantine`: why what it sends is kept apart from every job (R22);
+ * its actor then has the roles as they were when the phone was revoked or the membership ended.
+ */
+export type SignedSender = {
+  actor: Actor
+  deviceId: Id
+  device: Device
+  quarantine: Quarantine | null
+}
 
 export type DeviceProblem = {
-  kind: 'unknownDevice' | 'badSignature' | 'deviceRevoked' | 'noMembership'
+  kind: 'unknownDevice' | 'badSignature' | 'noMembership'
 }
 
 type PublicJwk = { kty: 'EC'; crv: 'P-256'; x: string; y: string }
@@ -50,18 +58,24 @@ export function isDeviceKey(jwk: PublicJwk): boolean {
 
 /**
  * Turns a signed claim into the phone and the person behind it, without any session (P18): ECDSA P-256
- * with SHA-256 over the claim's text. A phone of another person or shop is as unknown as any.
+ * with SHA-256 over the claim's text. A phone of another person or shop is as unknown as any. A revoked
+ * phone, and that of somebody who left, answers with `quarantine`: it may hand over and do nothing else.
  */
-export async function deviceOf(claim: SignedClaim): Promise<Result<SignedDevice, DeviceProblem>> {
-  const { device, actor } = await asShop(claim.shopId, async (tx) => ({
-    device: await findDevice(tx, claim.deviceId),
-    actor: await findActor(tx, claim.personId),
-  }))
-  if (!device || device.personId !== claim.personId) return fail({ kind: 'unknownDevice' })
+export async function senderOf(claim: SignedClaim): Promise<Result<SignedSender, DeviceProblem>> {
+  const found = await asShop(claim.shopId, (tx) => findSender(tx, claim.deviceId))
+  if (found?.device.personId !== claim.personId) return fail({ kind: 'unknownDevice' })
+  const { device, person } = found
   const signed = { key: keyOf(device.publicKey), dsaEncoding: 'ieee-p1363' } as const
   if (!verify('sha256', Buffer.from(claim.text), signed, claim.signature)) {
     return fail({ kind: 'badSignature' })
   }
-  if (device.revokedAt !== null) return fail({ kind: 'deviceRevoked' })
-  return actor ? ok({ actor, deviceId: device.id }) : fail({ kind: 'noMembership' })
+  if (!person) return fail({ kind: 'noMembership' })
+  const { actor, isMember } = person
+  if (device.revokedAt !== null) {
+    const roles = device.revokedRoles ?? actor.roles
+    const quarantine = 'deviceRevoked'
+    return ok({ actor: { ...actor, roles }, deviceId: device.id, device, quarantine })
+  }
+  const quarantine = isMember ? null : 'membershipEnded'
+  return ok({ actor, deviceId: device.id, device, quarantine })
 }

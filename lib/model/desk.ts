@@ -1,8 +1,9 @@
 import * as z from 'zod/mini'
 import { machineModel } from './code-book'
+import { id } from './id'
 import { job } from './job'
 import { logRow } from './log-entry'
-import { machine } from './machine'
+import { machineRow } from './machine'
 import { partLine, partLineState, partRequest, partRequestRow } from './part-request'
 import { person } from './person'
 import { photoRow } from './photo'
@@ -24,7 +25,7 @@ export const boardJob = z.object({
   entries: z.int(),
   /** Server time at which the last entry from the field came in. */
   heardAt: z.nullable(z.string()),
-  /** Photos that entries name and whose bytes are not here. */
+  /** Photos and voice notes that entries name and whose bytes are not here. */
   photosMissing: z.int(),
   partsOpen: z.int(),
 })
@@ -47,11 +48,18 @@ export const deskJob = z.object({
   machineWords: z.string(),
   /** Server time at which a phone that wrote into this job last reached us. */
   reachedAt: z.nullable(z.string()),
-  machine: z.nullable(machine),
+  machine: z.nullable(machineRow),
   model: z.nullable(machineModel),
   entries: z.array(logRow),
   photos: z.array(photoRow),
+  /** The phones that wrote into this job, and when each last reached us: what is missing is on them. */
+  phones: z.array(z.object({ id, name: z.string(), reachedAt: z.nullable(z.string()) })),
   parts: z.array(partRequestRow),
+  /** Jobs that were merged into this one (R13), the earliest merge first. */
+  merged: z._default(
+    z.array(z.object({ id, number: z.string(), words: z.string(), mergedAt: z.string() })),
+    [],
+  ),
   /** Everyone of the shop, for names and for assigning. */
   people: z.array(person),
 })

@@ -1,6 +1,7 @@
 import * as z from 'zod/mini'
 import { id, slug } from './id'
 import { place } from './place'
+import { alsoEntered } from './setting'
 import { instant, zone } from './time'
 
 /** Job states after rule R13. `waiting` says for what; reopened is `open` with the closing kept in the log. */
@@ -84,5 +85,12 @@ export const job = z.object({
   wayOut: z.nullable(wayOut),
   openedBy: id,
   assignedTo: z.array(id),
+  /** The job that goes on instead of this one, after a merge (R13). */
+  mergedInto: z.optional(id),
+  /** Jobs that were merged into this one, and who opened them: theirs it is as well. */
+  mergedFrom: z.optional(z.array(id)),
+  alsoOpenedBy: z.optional(z.array(id)),
+  /** Values that did not stand and that nobody has looked at, the latest first. */
+  alsoEntered: z.optional(z.array(alsoEntered)),
 })
 export type Job = z.infer<typeof job>

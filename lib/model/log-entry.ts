@@ -4,7 +4,7 @@ import { codeContext, codeSeen } from './code-seen'
 import { id, slug } from './id'
 import { jobMachineState, peopleState, wayOut } from './job'
 import { meterFunction, quantity } from './meter-profile'
-import { photoRef } from './photo'
+import { photoRef, voiceRef } from './photo'
 import { instant, zone } from './time'
 
 const words = z.string().check(z.minLength(1), z.maxLength(2000))
@@ -97,6 +97,7 @@ export const logBody = z.discriminatedUnion('kind', [
     boundRuleOfThree: z.nullable(finite),
   }),
   z.strictObject({ kind: z.literal('photo'), photo: photoRef, caption: z.nullable(words) }),
+  z.strictObject({ kind: z.literal('voice'), voice: voiceRef, caption: z.nullable(words) }),
   z.strictObject({ kind: z.literal('note'), words }),
   z.strictObject({ kind: z.literal('people'), to: peopleState, words: z.nullable(words) }),
   z.strictObject({

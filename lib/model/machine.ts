@@ -1,6 +1,7 @@
 import * as z from 'zod/mini'
 import { features } from './features'
 import { id } from './id'
+import { alsoEntered } from './setting'
 
 /** A machine: one of the fleet (with a model) or a stranger's (features only). */
 export const machine = z.strictObject({
@@ -17,6 +18,19 @@ export const machine = z.strictObject({
 })
 export type Machine = z.infer<typeof machine>
 
+/** As it comes back from the shop. */
+export const machineRow = z.object({
+  ...machine.shape,
+  /** The machine that stands for this one, after a merge (R13). */
+  mergedInto: z.optional(id),
+  /** It was taken back and written into meanwhile, so it stands again. */
+  revived: z.optional(z.boolean()),
+  /** On the phone alone: taken back there, and the shop has not said so yet. */
+  takenBack: z.optional(z.boolean()),
+  /** Values that did not stand and that nobody has looked at, the latest first. */
+  alsoEntered: z.optional(z.array(alsoEntered)),
+})
+export type MachineRow = z.infer<typeof machineRow>
 /** What a machine is called by; of a model of the shop's its maker and model, else as typed. */
 type Called = Partial<
   Record<'unitNumber' | 'makerTyped' | 'modelTyped' | 'maker' | 'model', string | null>

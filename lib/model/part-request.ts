@@ -62,6 +62,10 @@ export type PartLine = z.infer<typeof partLine>
 export const partRequestRow = z.object({
   ...partRequest.shape,
   askedBy: id,
+  /** It was taken back and written into meanwhile, so it stands again. */
+  revived: z.optional(z.boolean()),
+  /** On the phone alone: taken back there, and the shop has not said so yet. */
+  takenBack: z.optional(z.boolean()),
   lines: z.array(z.object({ ...partLine.shape, state: partLineState })),
 })
 export type PartRequestRow = z.infer<typeof partRequestRow>

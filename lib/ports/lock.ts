@@ -1,16 +1,18 @@
+import { AppError } from '@/lib/model/result'
 import type { Timer } from './clock'
 
 /** Lets one holder of a name run at a time, over all tabs and the worker of an origin (P19). */
 export type Lock = {
   /**
    * Runs `work` once the name is free. `stale` is asked now and again while waiting; when it says yes
-   * the name is taken from a holder that no longer moves.
+   * the name is taken from a holder that no longer moves. Throws AppError `turnTaken` when that happened
+   * to this holder; its work goes on all the same.
    */
   run(name: string, work: () => Promise<void>, stale: () => Promise<boolean>): Promise<void>
 }
 
 /** How often a waiting tab asks whether the holder still moves. */
-const ASK_EVERY_MS = 15_000
+const ASK_EVERY_MS = 5_000
 
 /** A lock within this process, in order of asking: for tests, and for browsers without Web Locks. */
 export function inProcessLock(): Lock {
@@ -64,9 +66,14 @@ async function runWithWebLocks(run: Run): Promise<void> {
   try {
     await run.locks.request(run.name, { signal: waiting.signal }, work)
   } catch (cause) {
+    // Work that fails brings its own error; a turn that was taken is told by the lock.
+    if (granted && isAbort(cause)) throw new AppError('turnTaken', { retry: true, cause })
     if (granted || !waiting.signal.aborted) throw cause
     await run.locks.request(run.name, { steal: true }, work)
   } finally {
     callOff()
   }
 }
+
+const isAbort = (cause: unknown): boolean =>
+  cause instanceof DOMException && cause.name === 'AbortError'

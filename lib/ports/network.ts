@@ -3,7 +3,7 @@ import type { Timer } from './clock'
 
 /** One request of the phone. `path` is of our own origin, `body` the bytes exactly as signed. */
 type NetworkRequest = {
-  method: 'GET' | 'POST' | 'PUT'
+  method: 'GET' | 'HEAD' | 'POST' | 'PUT' | 'PATCH'
   path: string
   headers?: Record<string, string>
   body?: Uint8Array<ArrayBuffer>

@@ -1,7 +1,9 @@
 import { type Clock, systemClock, systemTimer, systemZone, type Timer } from './clock'
 import { type Ids, uuidv7 } from './ids'
+import { browserKeeper, type Keeper } from './keeper'
 import { type Lock, webLock } from './lock'
 import { type Network, networkOf } from './network'
+import { browserPageCache, type PageCache } from './page-cache'
 
 /** What the phone's store and its sender need of the outside; the service worker has these alone. */
 export type SyncPorts = {
@@ -11,6 +13,9 @@ export type SyncPorts = {
   lock: Lock
   network: Network
   zone(): string
+  /** Left out where nothing outlives the stores. */
+  keeper?: Keeper
+  pages?: PageCache
 }
 
 /** The browser's own, in a page or in the service worker. */
@@ -25,4 +30,6 @@ export const browserSyncPorts: SyncPorts = {
     timer: systemTimer,
   }),
   zone: systemZone,
+  keeper: browserKeeper,
+  pages: browserPageCache,
 }

@@ -1,7 +1,6 @@
 import type { Id } from '@/lib/model/id'
 import type { JobState } from '@/lib/model/job'
 import type { LogBody, LogEntry, LogKind } from '@/lib/model/log-entry'
-import { assertNever } from '@/lib/model/result'
 import type { Role } from '@/lib/model/role'
 import { actionToMoveJob } from './job-states'
 import { type Action, may, mayLog, mayStrike } from './permissions'
@@ -21,6 +20,8 @@ export type Writer = {
 export type Deed =
   | { kind: 'machine.add' | 'job.open' | 'job.people' | 'job.machine' }
   | { kind: 'partRequest.ask' | 'advice.keep' }
+  | { kind: 'job.set' | 'job.settle' | 'machine.set' | 'machine.settle' | 'machine.drop' }
+  | { kind: 'partLine.add' | 'partLine.cancel' | 'partLine.quantity' | 'partRequest.drop' }
   | { kind: 'job.move'; fields: { to: JobState } }
   | { kind: 'log.add'; fields: Pick<LogEntry, 'body' | 'supersedes'> }
 
@@ -53,16 +54,8 @@ const isGuideSafe = (body: LogBody, { guideSafe }: Writer): boolean => {
 export function mayRecord(deed: Deed, writer: Writer, target?: LogEntry): boolean {
   const { roles, personId } = writer
   switch (deed.kind) {
-    case 'machine.add':
-    case 'job.open':
-    case 'partRequest.ask':
-    case 'advice.keep':
-      return mayInField(roles, ACTION_OF[deed.kind])
     case 'job.move':
       return mayInField(roles, actionToMoveJob(deed.fields.to))
-    case 'job.people':
-    case 'job.machine':
-      return mayInField(roles, 'job.work')
     case 'log.add': {
       const { body } = deed.fields
       if (!mayLogInField(roles, body.kind, isGuideSafe(body, writer))) return false
@@ -71,13 +64,24 @@ export function mayRecord(deed: Deed, writer: Writer, target?: LogEntry): boolea
       return mayStrike({ personId, roles }, { ...of, guideSafe: isGuideSafe(target.body, writer) })
     }
     default:
-      return assertNever(deed)
+      return mayInField(roles, ACTION_OF[deed.kind])
   }
 }
 
 const ACTION_OF = {
   'machine.add': 'machine.add',
+  'machine.set': 'machine.add',
+  'machine.settle': 'machine.add',
+  'machine.drop': 'machine.add',
   'job.open': 'job.open',
+  'job.people': 'job.work',
+  'job.machine': 'job.work',
+  'job.set': 'job.work',
+  'job.settle': 'job.work',
   'partRequest.ask': 'part.ask',
+  'partRequest.drop': 'part.ask',
+  'partLine.add': 'part.ask',
+  'partLine.cancel': 'part.ask',
+  'partLine.quantity': 'part.ask',
   'advice.keep': 'advice.keep',
-} as const satisfies Record<string, Action>
+} as const satisfies Record<Exclude<Deed['kind'], 'job.move' | 'log.add'>, Action>

@@ -14,6 +14,7 @@ export const ACTIONS = [
   'job.open',
   'job.work',
   'job.assign',
+  'job.merge',
   'job.close',
   'job.seeAll',
   'machine.add',
@@ -30,6 +31,7 @@ export const ACTIONS = [
   'price.set',
   'member.manage',
   'device.revoke',
+  'unsent.import',
   'audit.see',
   'export.make',
   'insight.see',
@@ -67,11 +69,13 @@ const DISPATCHER: readonly Action[] = [
   'job.open',
   'job.work',
   'job.assign',
+  'job.merge',
   'job.close',
   'job.seeAll',
   'machine.add',
   'log.add',
   'part.see',
+  'unsent.import',
 ]
 const PARTS: readonly Action[] = [
   'desk.see',
@@ -96,7 +100,7 @@ export function may(roles: readonly Role[], action: Action): boolean {
 }
 
 /** What people at the desk write into a job log: words, pictures, where people are, and corrections. */
-const DESK_KINDS: ReadonlySet<LogKind> = new Set(['note', 'photo', 'people', 'correction'])
+const DESK_KINDS: ReadonlySet<LogKind> = new Set(['note', 'photo', 'voice', 'people', 'correction'])
 
 /** A guide's entries: first look and the guide's ways out. Checks and swaps are judged by `guideSafe`. */
 const GUIDE_KINDS: ReadonlySet<LogKind> = new Set([
@@ -105,6 +109,7 @@ const GUIDE_KINDS: ReadonlySet<LogKind> = new Set([
   'codesUnreadable',
   'couldNot',
   'photo',
+  'voice',
   'note',
   'people',
   'wayOut',

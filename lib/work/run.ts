@@ -2,8 +2,10 @@ import { Logger, type LogLevel, run, runOnce, type TaskList } from 'graphile-wor
 import { env } from '@/lib/env'
 import { systemClock } from '@/lib/ports/clock'
 import { type Mail, shopMail } from '@/lib/ports/mail'
+import { dropStaged } from './drop-staged'
 import { leaveField } from './leave-field'
 import { partRequestMail } from './part-request-mail'
+import { pruneChanges } from './prune-changes'
 
 /**
  * Runs the tasks that were put into the queue with their cause (db/queries/work.ts). A process of its
@@ -19,7 +21,9 @@ const TOLD: ReadonlySet<string> = new Set<`${LogLevel}`>(['error', 'warning'])
 function tasks({ mail = shopMail(), address = env().NEXTAUTH_URL }: WorkParts): TaskList {
   return {
     partRequestMail: (payload) => partRequestMail(payload, { mail, address }),
+    dropStaged: () => dropStaged(),
     leaveField: (payload) => leaveField(payload, { now: systemClock.now() }),
+    pruneChanges: (payload) => pruneChanges(payload, { now: systemClock.now() }),
   }
 }
 

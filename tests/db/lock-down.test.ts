@@ -105,6 +105,20 @@ async function fillEveryTable(shop: TestShop): Promise<void> {
       values (${ids.shop}, ${newId()}, ${ids.job}, ${party}, 'given', 'I agree', 'signature', ${AT}, 'Etc/UTC', ${AT})`.execute(
       tx,
     )
+    await sql`insert into field_history (shop_id, id, entity, entity_id, field, value, ordered_hlc, clock_odd, written_at, received_at, after_seq, state)
+      values (${ids.shop}, ${newId()}, 'job', ${ids.job}, 'weather', '{"is":"fog"}', '000000000000-0000', false, ${AT}, ${AT}, 1, 'current')`.execute(
+      tx,
+    )
+    await sql`insert into merging (shop_id, id, entity, entity_id, into_id, merged_at, merged_by, people)
+      values (${ids.shop}, ${newId()}, 'job', ${newId()}, ${ids.job}, ${AT}, ${ids.person}, '{}')`.execute(
+      tx,
+    )
+    await sql`insert into quarantine_op (shop_id, op_id, device_id, person_id, roles, dseq, kind, raw, why, received_at)
+      values (${ids.shop}, 'q', ${ids.device}, ${ids.person}, '{owner}', 2, 'log.add', '{}', 'deviceRevoked', ${AT})`.execute(
+      tx,
+    )
+    await sql`insert into quarantine_decision (shop_id, op_id, decision, decided_by, decided_at)
+      values (${ids.shop}, 'q', 'accepted', ${ids.person}, ${AT})`.execute(tx)
     await takeChanges(tx, [
       { entity: 'partRequest', id: request.id, jobId },
       { entity: 'job', id: jobId, jobId, whole: true },
@@ -264,6 +278,8 @@ describe('[D3] evidence is insert only (R23)', () => {
     'contact_plan',
     'code_book_item',
     'photo',
+    'quarantine_op',
+    'quarantine_decision',
   ]
 
   it.each(table)(

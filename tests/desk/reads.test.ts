@@ -172,6 +172,9 @@ describe('what the desk reads', () => {
     const found = deskJob.parse(await (await jobAnswer('dispatcher', job)).json())
     expect(found.entries.map(({ order }) => order)).toEqual([1, 2, 3])
     expect(found.photos.map(({ hash }) => hash)).toEqual(['a'.repeat(64)])
+    expect(found.phones).toEqual([
+      { id: by.deviceId, name: expect.any(String), reachedAt: expect.any(String) },
+    ])
     expect(found.parts[0]?.lines).toHaveLength(request.lines.length)
     expect(found.reachedAt).not.toBeNull()
     expect(found.people.map(({ name }) => name)).toContain('Test mechanic')

@@ -129,6 +129,7 @@ function atTheDesk(order: readonly LogEntry[]): DeskJob {
         model,
         entries: rows,
         photos: [],
+        phones: [],
         parts: [],
         people: [],
       }),

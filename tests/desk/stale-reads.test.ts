@@ -63,7 +63,7 @@ describe('the news of the board', () => {
     expect(boardNews(before, after)).toEqual([
       '3 new entries on J-1.',
       'Parts asked for on J-1.',
-      'A photo of J-2 arrived.',
+      'A photo or voice note of J-2 arrived.',
       'New job J-4: Dies, Unit 14.',
       'J-3 closed.',
     ])

@@ -6,11 +6,16 @@ const ROLES = [
   {
     who: 'dispatcher',
     home: /\/desk$/,
-    sections: ['Jobs', 'Parts', 'Field'],
+    sections: ['Jobs', 'Parts', 'Take in', 'Field'],
     reads: [200, 200, 200],
   },
   { who: 'parts', home: /\/desk\/parts$/, sections: ['Jobs', 'Parts'], reads: [200, 200, 200] },
-  { who: 'owner', home: /\/desk$/, sections: ['Jobs', 'Parts', 'Field'], reads: [200, 200, 200] },
+  {
+    who: 'owner',
+    home: /\/desk$/,
+    sections: ['Jobs', 'Parts', 'Take in', 'Phones', 'Field'],
+    reads: [200, 200, 200],
+  },
 ] as const
 
 for (const { who, home, sections, reads } of ROLES) {

@@ -93,11 +93,17 @@ test('[R19] the board, a job and the parts table follow the field without a relo
   const picture = board.getByRole('img', { name: 'The coil seat' })
   const missing = board.getByText('Photo still on the phone')
   await expect(missing).toBeVisible()
+  await expect(
+    board.getByText(/on the phone of .* \(Test phone\), .*last reached us/),
+  ).toBeVisible()
   await expect(picture).toHaveCount(0)
   await phone.sendPhoto(bytes, 'image/png')
   await picture.scrollIntoViewIfNeeded()
   await expect(picture).toBeVisible()
   await expect(missing).toHaveCount(0)
+  await expect(board.getByText(/on the phone of .* \(Test phone\), .*last reached us/)).toHaveCount(
+    0,
+  )
   await expect.poll(() => picture.evaluate((img: HTMLImageElement) => img.naturalWidth)).toBe(180)
 
   await phone.send(partRequestAsk(jobId, { askedAt: phone.device.now() }))

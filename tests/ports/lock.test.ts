@@ -83,7 +83,7 @@ describe('[P19] the lock of the sender', () => {
     const lock = webLock(timer)
     let isStale = false
     const frozen = lock.run('sync', () => new Promise(() => undefined), never)
-    const lost = expect(frozen).rejects.toMatchObject({ name: 'AbortError' })
+    const lost = expect(frozen).rejects.toMatchObject({ kind: 'turnTaken' })
     let ran = 0
     const waiting = lock.run(
       'sync',

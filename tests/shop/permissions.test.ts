@@ -7,6 +7,7 @@ import { ACTIONS, type Action, may, mayLog } from '@/lib/shop/permissions'
 const TABLE: Partial<Record<Action, Role[]>> = {
   'job.open': ['mechanic', 'guide', 'dispatcher', 'owner'],
   'job.assign': ['dispatcher', 'owner'],
+  'job.merge': ['dispatcher', 'owner'],
   'job.close': ['mechanic', 'dispatcher', 'owner'],
   'check.do': ['mechanic', 'owner'],
   'part.ask': ['mechanic', 'parts', 'owner'],

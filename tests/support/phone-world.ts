@@ -27,7 +27,8 @@ export const states = async (of: TestPhone) => (await outbox(of)).map((record) =
 export const photoOf = (jobId: string) => {
   const bytes = new Uint8Array(jpegOf())
   const hash = createHash('sha256').update(bytes).digest('hex')
-  return { hash, jobId, bytes: bytes.buffer, mime: 'image/jpeg' as const }
+  const thumb = new Uint8Array([1, 2, 3]).buffer
+  return { hash, jobId, bytes: bytes.buffer, mime: 'image/jpeg' as const, thumb }
 }
 
 /** Throws at the n-th step of the store, as if the process had been killed there. */

@@ -1,6 +1,6 @@
 import { v7 } from 'uuid'
 import type { Role } from '@/lib/model/role'
-import type { Known } from '@/lib/sync/server/draft'
+import type { Known } from '@/lib/sync/server/known'
 import { planPush } from '@/lib/sync/server/plan'
 import { readOp } from '@/lib/sync/server/read-ops'
 import { RawDevice } from './raw-device'
@@ -17,11 +17,18 @@ export function world(roles: Role[] = ['mechanic']) {
     seen: new Map(),
     jobs: new Map(),
     closedHere: new Set(),
-    machines: new Set([machineId]),
+    at: { nowMs: Date.now(), seq: 100 },
+    machines: new Map([
+      [machineId, { isFleet: true, isDropped: false, isPurged: false, mergedInto: null }],
+    ]),
+    openersOn: new Map(),
     models: new Set(),
     entries: new Map(),
     deciding: new Map(),
-    partRequests: new Set(),
+    partRequests: new Map(),
+    lines: new Set(),
+    writes: new Map(),
+    firsts: new Map(),
     advice: new Set(),
     guideSafe: new Set(['tetherLook']),
   }

@@ -4,6 +4,13 @@ import { v7 } from 'uuid'
 import { HEADERS, signedText } from '@/lib/sync/protocol/device'
 import { type Cursor, PROTOCOL, type SyncRequest } from '@/lib/sync/protocol/message'
 import { OP_SCHEMA, type Op, type OpInput } from '@/lib/sync/protocol/op'
+import {
+  TUS_VERSION,
+  UPLOAD_HEADERS,
+  UPLOAD_PATH,
+  type UploadAct,
+  uploadText,
+} from '@/lib/sync/protocol/upload'
 
 export type RawOwner = { shopId: string; personId: string }
 export type PublicKey = { kty: 'EC'; crv: 'P-256'; x: string; y: string }
@@ -110,5 +117,65 @@ export class RawDevice {
       body: Uint8Array.from(bytes),
       headers: { 'content-type': mime, ...this.signature(bytes, '-') },
     })
+  }
+
+  /** The headers that sign one request of an upload. */
+  uploadSignature(
+    act: UploadAct,
+    of: { hash: string; at: number; chunk: string },
+    owner = this.owner,
+  ) {
+    const { shopId: shop, personId: person } = owner
+    const text = uploadText({ shop, person, device: this.id, act, ...of })
+    const key = { key: this.#key, dsaEncoding: 'ieee-p1363' } as const
+    return {
+      [UPLOAD_HEADERS.version]: TUS_VERSION,
+      [HEADERS.shop]: shop,
+      [HEADERS.person]: person,
+      [HEADERS.device]: this.id,
+      [HEADERS.signature]: sign('sha256', Buffer.from(text), key).toString('base64url'),
+    }
+  }
+
+  /** POST /api/photos/tus: begins an upload of this hash and size. */
+  beginUpload(hash: string, size: number, headers: Record<string, string> = {}): Request {
+    return new Request(`http://shop.invalid${UPLOAD_PATH}`, {
+      method: 'POST',
+      headers: {
+        ...this.uploadSignature('create', { hash, at: size, chunk: '-' }),
+        [UPLOAD_HEADERS.length]: String(size),
+        [UPLOAD_HEADERS.metadata]: `sha256 ${Buffer.from(hash).toString('base64')}`,
+        ...headers,
+      },
+    })
+  }
+
+  /** HEAD /api/photos/tus/[hash]: asks where an upload stands. */
+  askUpload(hash: string): Request {
+    return new Request(`http://shop.invalid${UPLOAD_PATH}/${hash}`, {
+      method: 'HEAD',
+      headers: this.uploadSignature('ask', { hash, at: 0, chunk: '-' }),
+    })
+  }
+
+  /** PATCH /api/photos/tus/[hash]: one chunk; `sent` twists what goes over the line. */
+  chunk(
+    hash: string,
+    at: { offset: number; chunk: Uint8Array; sent?: BodyInit },
+    headers: Record<string, string> = {},
+  ): Request {
+    const sum = createHash('sha256').update(at.chunk).digest('base64')
+    return new Request(`http://shop.invalid${UPLOAD_PATH}/${hash}`, {
+      method: 'PATCH',
+      body: at.sent ?? Uint8Array.from(at.chunk),
+      duplex: 'half',
+      headers: {
+        ...this.uploadSignature('chunk', { hash, at: at.offset, chunk: sum }),
+        'content-type': 'application/offset+octet-stream',
+        [UPLOAD_HEADERS.offset]: String(at.offset),
+        [UPLOAD_HEADERS.checksum]: `sha256 ${sum}`,
+        ...headers,
+      },
+    } as RequestInit)
   }
 }

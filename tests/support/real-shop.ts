@@ -1,6 +1,8 @@
 import { POST as postDevice } from '@/app/api/devices/route'
 import { GET as getMe } from '@/app/api/me/route'
 import { PUT as putPhoto } from '@/app/api/photos/[hash]/route'
+import { PATCH as addPhoto, HEAD as askPhoto } from '@/app/api/photos/tus/[hash]/route'
+import { POST as beginPhoto } from '@/app/api/photos/tus/route'
 import { POST as postSync } from '@/app/api/sync/route'
 import type { TestFetch } from './phone'
 
@@ -15,6 +17,10 @@ export class RealShop {
   readonly asked: string[] = []
   fault: LineFault = 'none'
   cookie: string | null
+  /** Answers in place of the shop while it is set. */
+  instead: Response | null = null
+  /** Runs after the shop has answered, before the phone hears it. */
+  after: (path: string) => Promise<void> = () => Promise.resolve()
 
   constructor(cookie: string | null) {
     this.cookie = cookie
@@ -31,21 +37,35 @@ export class RealShop {
       headers,
       ...body,
     })
+    if (this.instead !== null) return this.instead.clone()
     const answer = await this.#answer(path, request)
+    await this.after(path)
     if (this.fault === 'loseReply') throw new TypeError('reply lost')
     return answer
   }
 
+  #photo(request: Request, context: { params: Promise<{ hash: string }> }): Promise<Response> {
+    if (request.method === 'HEAD') return askPhoto(request, context)
+    return request.method === 'PATCH' ? addPhoto(request, context) : putPhoto(request, context)
+  }
+
   #answer(path: string, request: Request): Response | Promise<Response> {
-    const hash = /^\/api\/photos\/([0-9a-f]{64})$/.exec(path)?.[1]
-    if (hash !== undefined) return putPhoto(request, { params: Promise.resolve({ hash }) })
+    const hash = /^\/api\/photos\/(?:tus\/)?([0-9a-f]{64})$/.exec(path)?.[1]
+    if (hash !== undefined) return this.#photo(request, { params: Promise.resolve({ hash }) })
     switch (path) {
       case '/api/sync':
         return postSync(request)
       case '/api/devices':
         return postDevice(request)
+      case '/api/photos/tus':
+        return beginPhoto(request)
       case '/api/me':
         return getMe(request)
+      case '/api/auth/csrf':
+        return Response.json({ csrfToken: 'token' })
+      case '/api/auth/signout':
+        this.cookie = null
+        return Response.json({ url: '/' })
       default:
         return new Response('not found', { status: 404 })
     }

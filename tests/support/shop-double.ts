@@ -13,13 +13,17 @@ import {
   syncRequest,
 } from '@/lib/sync/protocol/message'
 import { type Op, op as opShape } from '@/lib/sync/protocol/op'
+import { uploadText } from '@/lib/sync/protocol/upload'
 import { MECHANIC, type TestFetch } from './phone'
+import { readUploadRequest, UploadDouble, type UploadRequest } from './upload-double'
 
+type Who = { shop: string; person: string; device: string }
 type Row = { entity: string; id: string; jobId: string | null; row: unknown }
 
 /** What a test does to one request: answer instead of the shop, or lose the shop's answer. */
 export type Fault = (request: {
   path: string
+  method: string
   body: Uint8Array
 }) => { instead: Response } | { noLine: true } | { loseReply: true } | null
 
@@ -49,7 +53,8 @@ export class ShopDouble {
   refuse: (op: Op) => OpResult | null = () => null
   readonly requests: { path: string; ops: number; bytes: number }[] = []
   readonly ops = new Map<string, Op>()
-  readonly photos = new Map<string, Uint8Array>()
+  readonly uploads = new UploadDouble()
+  readonly photos = this.uploads.photos
   readonly seenDseqs: number[] = []
   /** Person of every signed request that was let in. */
   readonly senders: string[] = []
@@ -98,21 +103,24 @@ export class ShopDouble {
 
   #serve(path: string, init: RequestInit): Response {
     const body = init.body instanceof Uint8Array ? init.body : new Uint8Array()
-    const fault = this.fault({ path, body })
+    const fault = this.fault({ path, method: init.method ?? 'GET', body })
     if (fault !== null && 'noLine' in fault) throw new TypeError('Failed to fetch')
     if (fault !== null && 'instead' in fault) return fault.instead
-    const answer = this.#answer(path, new Headers(init.headers), body)
+    const method = init.method ?? 'GET'
+    const answer = this.#answer(path, method, new Headers(init.headers), body)
     if (fault !== null) throw new TypeError('Failed to fetch')
     return answer
   }
 
-  #answer(path: string, headers: Headers, body: Uint8Array): Response {
+  #answer(path: string, method: string, headers: Headers, body: Uint8Array): Response {
     if (path === '/api/devices') return this.#enrol(body)
     if (path === '/api/me') return this.session ? json(this.actor) : problem(401, 'signIn')
     if (path === '/api/auth/csrf') return json({ csrfToken: 'token' })
     if (path === '/api/auth/signout') return this.#signOut()
     if (path === '/api/sync') return this.#sync(headers, body)
-    if (path.startsWith('/api/photos/')) return this.#photo(path, headers, body)
+    if (path.startsWith('/api/photos/tus')) {
+      return this.#upload(readUploadRequest(path, method, headers), headers, body)
+    }
     return problem(404, 'notFound')
   }
 
@@ -129,16 +137,18 @@ export class ShopDouble {
   }
 
   #signed(headers: Headers, body: Uint8Array): Response | null {
+    const dseq = headers.get(HEADERS.dseq) ?? ''
+    const bodyHash = createHash('sha256').update(body).digest('base64url')
+    const refused = this.#refusalOf(headers, (who) => signedText({ ...who, dseq, bodyHash }))
+    return refused === null ? null : problem(401, refused)
+  }
+
+  /** Why a signed request is not let in; null when it is. */
+  #refusalOf(headers: Headers, textOf: (who: Who) => string): string | null {
     const of = (name: keyof typeof HEADERS) => headers.get(HEADERS[name]) ?? ''
     const key = this.#devices.get(of('device'))
-    if (key === undefined) return problem(401, 'unknownDevice')
-    const text = signedText({
-      shop: of('shop'),
-      person: of('person'),
-      device: of('device'),
-      dseq: of('dseq'),
-      bodyHash: createHash('sha256').update(body).digest('base64url'),
-    })
+    if (key === undefined) return 'unknownDevice'
+    const text = textOf({ shop: of('shop'), person: of('person'), device: of('device') })
     const publicKey = createPublicKey({
       key: { kty: 'EC', crv: 'P-256', x: key.x, y: key.y },
       format: 'jwk',
@@ -149,7 +159,7 @@ export class ShopDouble {
       { key: publicKey, dsaEncoding: 'ieee-p1363' },
       Buffer.from(of('signature'), 'base64url'),
     )
-    if (!fits) return problem(401, 'badSignature')
+    if (!fits) return 'badSignature'
     this.senders.push(of('person'))
     return null
   }
@@ -168,11 +178,14 @@ export class ShopDouble {
       else results.push(result)
     }
     const answer: SyncResponse = {
-      protocol: 1,
+      protocol: request.protocol,
       serverTime: new Date(this.nowMs).toISOString(),
       taken,
       results,
       pull: this.#pull(request),
+      order: 'none',
+      missing: [],
+      lost: null,
     }
     return json(answer)
   }
@@ -244,13 +257,15 @@ export class ShopDouble {
     return { kind: 'page', rows, cursor: { ...start, seq }, more }
   }
 
-  #photo(path: string, headers: Headers, body: Uint8Array): Response {
-    const refusal = this.#signed(headers, body)
-    if (refusal !== null) return refusal
-    const hash = path.slice('/api/photos/'.length)
+  #upload(of: UploadRequest, headers: Headers, body: Uint8Array): Response {
+    const refused = this.#refusalOf(headers, (who) => uploadText({ ...who, ...of }))
+    if (refused !== null) {
+      return new Response(null, {
+        status: 401,
+        headers: { 'x-farbench-problem': refused, 'tus-resumable': '1.0.0' },
+      })
+    }
     this.requests.push({ path: '/api/photos', ops: 0, bytes: body.byteLength })
-    if (createHash('sha256').update(body).digest('hex') !== hash) return problem(422, 'wrongHash')
-    this.photos.set(hash, body)
-    return json({ hash }, 201)
+    return this.uploads.take(of, body)
   }
 }

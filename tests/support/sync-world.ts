@@ -10,6 +10,7 @@ import { asShop } from '@/db/client'
 import { insertSession } from '@/db/queries/sign-in'
 import type { Role } from '@/lib/model/role'
 import { type SyncResponse, syncResponse } from '@/lib/sync/protocol/message'
+import { startFiles } from '../../scripts/fakes/files.mjs'
 import { openTestDatabase, type TestDatabase } from './database'
 import { type PushOptions, RawDevice } from './raw-device'
 import { makeShop, type TestShop } from './shop-fixture'
@@ -29,7 +30,10 @@ export type SyncWorld = {
   db: TestDatabase
   a: TestShop
   b: TestShop
+  /** Where the local file store keeps its objects, and where uploads are staged. */
   filesDir: string
+  stageDir: string
+  files: { url: string; stop(): Promise<void> }
   close(): Promise<void>
 }
 
@@ -37,20 +41,34 @@ export type SyncWorld = {
 export async function openSyncWorld(): Promise<SyncWorld> {
   const db = await openTestDatabase()
   const filesDir = mkdtempSync(join(tmpdir(), 'farbench-files-'))
+  const stageDir = mkdtempSync(join(tmpdir(), 'farbench-stage-'))
+  const files = await startFiles({
+    port: 0,
+    folder: filesDir,
+    bucket: 'test',
+    key: 'test-key',
+    secret: 'test-secret',
+  })
   Object.assign(process.env, {
     DATABASE_URL: db.appUrl,
     NEXTAUTH_SECRET: SECRET,
     NEXTAUTH_URL: 'http://127.0.0.1:3111',
     MAIL_URL: 'smtp://127.0.0.1:1',
-    FILES_DIR: filesDir,
+    FILES_URL: files.url,
+    FILES_BUCKET: 'test',
+    FILES_KEY: 'test-key',
+    FILES_SECRET: 'test-secret',
+    FILES_STAGE: stageDir,
   })
   const a = await makeShop(ROLE_PEOPLE)
   const b = await makeShop(ROLE_PEOPLE)
   const close = async () => {
     await db.close()
+    await files.stop()
     rmSync(filesDir, { recursive: true, force: true })
+    rmSync(stageDir, { recursive: true, force: true })
   }
-  return { db, a, b, filesDir, close }
+  return { db, a, b, filesDir, stageDir, files, close }
 }
 
 export type SignedIn = { cookie: string; sessionId: string }

@@ -3,13 +3,10 @@ import { gzipSync } from 'node:zlib'
 import { v7 } from 'uuid'
 import { afterAll, beforeAll, describe, expect, it } from 'vitest'
 import * as devicesRoute from '@/app/api/devices/route'
-import { GET as getMe } from '@/app/api/me/route'
 import * as syncRoute from '@/app/api/sync/route'
 import { asShop } from '@/db/client'
-import { takeChanges } from '@/db/queries/changes'
-import { listDevices, revokeDevice } from '@/db/queries/devices'
+import { listDevices } from '@/db/queries/devices'
 import { listLog } from '@/db/queries/log-entries'
-import { revokeMembership } from '@/db/queries/people'
 import { revokeSession } from '@/db/queries/sign-in'
 import { HEADERS } from '@/lib/sync/protocol/device'
 import { PROTOCOL } from '@/lib/sync/protocol/message'
@@ -142,34 +139,6 @@ describe('POST /api/sync, who may', () => {
       })
     }
     expect((await sync(device, [], { cookie })).pull.kind).toBe('page')
-  })
-
-  it('[P18] keeps the work of a revoked phone on the phone: nothing is taken, nothing answered away', async () => {
-    const { device: lost, cookie: its } = await phoneOf(world.a, 'mechanic')
-    const by = world.a.people.owner?.id ?? ''
-    await inA((tx) => revokeDevice(tx, { id: lost.id, by, now: new Date().toISOString() }))
-    const before = await entries()
-    expect(await refusal(lost.push([entry(lost)], { cookie: its }))).toMatchObject({
-      status: 403,
-      kind: 'deviceRevoked',
-    })
-    expect(await entries()).toBe(before)
-    expect((await enrolAt(lost, its)).status).toBe(403)
-  })
-
-  it('[P18] refuses the phone of a person who left the shop', async () => {
-    const { device: left, cookie: its } = await phoneOf(world.b, 'second')
-    await asShop(world.b.id, async (tx) => {
-      await revokeMembership(tx, { personId: left.owner.personId, now: new Date().toISOString() })
-      await takeChanges(tx, [{ entity: 'person', id: left.owner.personId, jobId: null }])
-    })
-    expect(await refusal(left.push([], { cookie: its }))).toMatchObject({
-      status: 403,
-      kind: 'noMembership',
-    })
-    expect(
-      (await getMe(new Request('http://shop.invalid/api/me', { headers: { cookie: its } }))).status,
-    ).toBe(401)
   })
 })
 

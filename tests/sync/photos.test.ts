@@ -74,7 +74,11 @@ describe('PUT /api/photos/[hash]', () => {
       mime: 'image/jpeg',
     })
     expect(readFileSync(join(world.filesDir, world.a.id, hash)).equals(bytes)).toBe(true)
-    expect(files().filter((file) => file.startsWith(hash))).toEqual([hash])
+    expect(files().filter((file) => file.startsWith(hash))).toEqual([
+      hash,
+      `${hash}.show`,
+      `${hash}.thumb`,
+    ])
     const rows = await pullAll(device, cookie)
     expect(rows).toMatchObject([
       { entity: 'photo', id: hash, jobId: job, state: 'present', row: { bytes: bytes.length } },

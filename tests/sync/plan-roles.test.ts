@@ -1,7 +1,7 @@
 import { v7 } from 'uuid'
 import { describe, expect, it } from 'vitest'
 import type { Role } from '@/lib/model/role'
-import type { Known } from '@/lib/sync/server/draft'
+import type { Known } from '@/lib/sync/server/known'
 import { adviceKeep, jobOpen, logAdd, machineAdd, note, partRequestAsk } from '../support/field-ops'
 import { plan, world } from '../support/plan-world'
 

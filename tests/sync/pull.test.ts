@@ -190,31 +190,35 @@ describe('POST /api/sync, pulling', () => {
     ).toHaveLength(600)
   })
 
-  it('[P10] tells a phone that was away for long what is gone, sends its work, resurrects nothing', async () => {
+  it('[P10] tells a phone that was away what is gone; only what it wrote into meanwhile stands again (M8)', async () => {
     const { device: old, cookie: its } = await phoneOf(world.a, 'mechanic')
-    const gone = machineAdd()
-    await sync(device, [device.op(gone)])
+    const [gone, used] = [machineAdd(), machineAdd()]
+    await sync(device, [device.op(gone), device.op(used)])
     await pullAll(old, its)
-    const held = [old.op(machineAdd()), old.op(jobOpen(gone.fields.id))]
+    const held = [old.op(machineAdd()), old.op(jobOpen(used.fields.id))]
     for (let i = 0; i < 3; i++) await sync(device, [device.op(machineAdd())])
     await inA(async (tx) => {
       await tx
         .updateTable('machine')
         .set({ deletedAt: new Date().toISOString() })
-        .where('id', '=', gone.fields.id)
+        .where('id', 'in', [gone.fields.id, used.fields.id])
         .execute()
-      const change = { entity: 'machine', id: gone.fields.id, jobId: null } as const
-      await takeChanges(tx, [{ ...change, state: 'deleted' }])
+      const change = { entity: 'machine', jobId: null, state: 'deleted' } as const
+      await takeChanges(tx, [
+        { ...change, id: gone.fields.id },
+        { ...change, id: used.fields.id },
+      ])
     })
     const { taken, results, pull } = await sync(old, held, { cookie: its })
-    expect(taken).toEqual([held[0]?.id])
-    expect(results).toEqual([{ opId: held[1]?.id, result: 'blocked', on: gone.fields.id }])
+    expect(taken).toEqual(held.map((op) => op.id))
+    expect(results).toEqual([])
     expect(rowsOf(pull)).toContainEqual(
       expect.objectContaining({ id: gone.fields.id, state: 'deleted', row: null }),
     )
     const fresh = await phoneOf(world.a, 'mechanic')
     const ids = (await pullAll(fresh.device, fresh.cookie)).map((row) => row.id)
     expect(ids).not.toContain(gone.fields.id)
+    expect(ids).toContain(used.fields.id)
     expect(ids).toContain(held[0]?.entityId)
   })
 

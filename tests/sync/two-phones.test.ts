@@ -64,7 +64,11 @@ describe('the phone’s own program against the shop’s', () => {
     await phone.sync()
     expect(await unsent(phone)).toBe(0)
     // One exchange for the records, then the picture; an exchange may follow to fetch its row.
-    expect(shop.asked.slice(0, 2)).toEqual(['POST /api/sync', 'PUT /api/photos'])
+    expect(shop.asked.slice(0, 3)).toEqual([
+      'POST /api/sync',
+      'POST /api/photos',
+      'PATCH /api/photos',
+    ])
     expect(existsSync(join(world.filesDir, world.a.id, hash))).toBe(true)
     expect((await inJob(phone, jobId)).map((row) => [row.order, row.body.kind])).toEqual([
       [1, 'note'],

@@ -13,7 +13,8 @@ export function boardNews(before: DeskBoard, after: DeskBoard): string[] {
     const entries = row.entries - old.entries
     if (entries > 0) news.push(`${counted(entries, 'new entry', 'new entries')} on ${nameOf(row)}.`)
     if (row.partsOpen > old.partsOpen) news.push(`Parts asked for on ${nameOf(row)}.`)
-    if (row.photosMissing < old.photosMissing) news.push(`A photo of ${nameOf(row)} arrived.`)
+    if (row.photosMissing < old.photosMissing)
+      news.push(`A photo or voice note of ${nameOf(row)} arrived.`)
     if (row.job.state === 'closed' && old.job.state !== 'closed')
       news.push(`${nameOf(row)} closed.`)
     return news

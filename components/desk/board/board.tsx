@@ -16,6 +16,7 @@ import { HandsPanel } from '../hands/hands-panel'
 import { ClosingPanel } from '../job/closing-panel'
 import { PickedJob } from '../job/picked-job'
 import { useJobCase } from '../job/use-job-case'
+import { MergePanel } from '../merge/merge-panel'
 import { PartsAsked } from '../parts/parts-asked'
 import { useBoard, useDeskJob } from '../use-desk-reads'
 import { useNow } from '../use-now'
@@ -45,7 +46,13 @@ export function Board({ actions }: Props) {
       data-picked={picked !== null}
     >
       <Jobs board={board.data} error={board.error} picked={picked} />
-      <Picked found={found.data} error={found.error} picked={picked} actions={actions} />
+      <Picked
+        found={found.data}
+        error={found.error}
+        picked={picked}
+        actions={actions}
+        open={board.data?.open ?? []}
+      />
     </main>
   )
 }
@@ -82,11 +89,13 @@ type PickedProps = {
   found: DeskJob | undefined
   error: Error | null
   picked: string | null
+  open: readonly BoardJob[]
   actions: BoardActions
 }
 
-function Picked({ found, error, picked, actions }: PickedProps) {
+function Picked({ found, error, picked, actions, open }: PickedProps) {
   const reckoned = useJobCase(found)
+  useLandOnLead(picked, found?.job.id ?? null)
   return (
     <>
       <section className="desk-picked" aria-label="The picked job">
@@ -96,7 +105,7 @@ function Picked({ found, error, picked, actions }: PickedProps) {
         {picked === null ? <p className="text-body text-ink2">Pick a job to see it here.</p> : null}
         {error ? <p className="font-bold text-nogo">{readSentence(error)}</p> : null}
         {picked !== null && !found && !error ? <p>Reading the job.</p> : null}
-        {found ? <PickedJob found={found} reckoned={reckoned} /> : null}
+        {found ? <PickedJob found={found} reckoned={reckoned} settle={actions.settle} /> : null}
       </section>
       <section className="desk-aside" aria-label="Daylight, hands, parts and closing">
         {found ? (
@@ -104,6 +113,7 @@ function Picked({ found, error, picked, actions }: PickedProps) {
             <DaylightPanel place={found.job.place} />
             <HandsPanel key={found.job.id} found={found} assign={actions.assign} />
             <PartsAsked found={found} move={actions.move} />
+            <MergePanel key={`merge ${found.job.id}`} found={found} open={open} actions={actions} />
             <ClosingPanel
               key={`${found.job.id} ${found.job.state === 'closed'}`}
               job={found.job}
@@ -116,6 +126,14 @@ function Picked({ found, error, picked, actions }: PickedProps) {
       </section>
     </>
   )
+}
+
+/** The address of a merged job becomes that of the one that goes on (R13). */
+function useLandOnLead(picked: string | null, leadId: string | null) {
+  useEffect(() => {
+    if (picked === null || leadId === null || picked === leadId) return
+    window.history.replaceState(null, '', deskPaths.job(leadId))
+  }, [picked, leadId])
 }
 
 /** Says what changed on the board to people who do not see it move. */

@@ -71,7 +71,9 @@ function BelowTag({ row, fresh, dark }: { row: BoardJob; fresh: number; dark: bo
   const words = exposureWords(exposure, job.people)
   const heard = row.heardAt
   const inWords =
-    row.photosMissing > 0 ? `${counted(row.photosMissing, 'photo')} on the phone` : 'all in'
+    row.photosMissing > 0
+      ? `${counted(row.photosMissing, 'photo or voice note', 'photos or voice notes')} on the phone`
+      : 'all in'
   return (
     <p className="mt-1 flex flex-wrap items-baseline gap-x-2 pl-12 text-second text-ink2">
       {words ? (

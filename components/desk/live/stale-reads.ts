@@ -9,6 +9,7 @@ export const reads = {
   job: (jobId: string) => ['desk', 'job', jobId] as const,
   parts: ['desk', 'parts'] as const,
   book: ['book'] as const,
+  phones: ['desk', 'phones'] as const,
 }
 
 /** What one change makes stale: no more than that is read again. A word not known here: everything. */

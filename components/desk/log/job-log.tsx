@@ -11,7 +11,7 @@ import type { LogRow } from '@/lib/model/log-entry'
 import { clockTime, span } from '../../field/times'
 import { useDesk } from '../desk-context'
 import { dayName } from '../desk-time'
-import { PhotoFrame } from './photo-frame'
+import { FileOf } from './file-of'
 
 /** Gaps over 20 min show as a broken wire with the time (design 5c). */
 const GAP_MS = 20 * 60_000
@@ -26,6 +26,7 @@ export function JobLog({ found, index }: Props) {
     [found.people],
   )
   const here = new Set(found.photos.map(({ hash }) => hash))
+  const phones = new Map(found.phones.map((phone) => [phone.id, phone]))
   if (found.entries.length === 0)
     return <p className="text-second text-ink2">Nothing written yet.</p>
   return (
@@ -38,7 +39,8 @@ export function JobLog({ found, index }: Props) {
           before={found.entries[at - 1] ?? null}
           struck={struck.has(entry.id)}
           author={who.get(entry.authorId) ?? 'somebody who left'}
-          photoHere={entry.body.kind === 'photo' && here.has(entry.body.photo.hash)}
+          isHere={(hash) => here.has(hash)}
+          phone={phones.get(entry.deviceId) ?? null}
         />
       ))}
     </ol>
@@ -65,10 +67,11 @@ type ItemProps = {
   before: LogRow | null
   struck: boolean
   author: string
-  photoHere: boolean
+  isHere: (hash: string) => boolean
+  phone: DeskJob['phones'][number] | null
 }
 
-function LogItem({ entry, line, before, struck, author, photoHere }: ItemProps) {
+function LogItem({ entry, line, before, struck, author, isHere, phone }: ItemProps) {
   const { shop } = useDesk()
   const gap = before ? Date.parse(entry.happenedAt) - Date.parse(before.happenedAt) : 0
   const newDay =
@@ -99,9 +102,7 @@ function LogItem({ entry, line, before, struck, author, photoHere }: ItemProps) 
               {text}
             </p>
           ))}
-          {entry.body.kind === 'photo' ? (
-            <PhotoFrame photo={entry.body.photo} caption={entry.body.caption} here={photoHere} />
-          ) : null}
+          <FileOf body={entry.body} isHere={isHere} on={{ phone, author, at: entry.writtenAt }} />
           <Provenance entry={entry} before={before} author={author} kind={line.kind} />
           {struck ? <p className="text-second">Taken out of evidence below.</p> : null}
         </div>

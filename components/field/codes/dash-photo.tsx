@@ -7,7 +7,7 @@ import { usePhoto } from '@/components/store/use-photo'
 import { useStamp } from '@/components/store/use-stamp'
 import { announce } from '@/components/ui/announce'
 import { Photo } from '@/components/ui/photo'
-import { CAMERA_WORDS, PhotoKey, photoBody } from '../log/photo-key'
+import { CAMERA_WORDS, PhotoKey, photoBody, photoToKeep } from '../log/photo-key'
 
 type Props = { jobId: string; hash: string | null; onTaken: (hash: string) => void }
 
@@ -24,11 +24,10 @@ export function DashPhoto({ jobId, hash, onTaken }: Props) {
       setProblem(CAMERA_WORDS[photo.problem.kind])
       return
     }
-    const { hash: taken, bytes, mime } = photo.value
     const entry = stamp.entry(jobId, photoBody(photo.value, 'The dash, showing codes'))
-    if (!(await save([entry], { photos: [{ hash: taken, jobId, bytes, mime }] }))) return
+    if (!(await save([entry], { photos: [photoToKeep(jobId, photo.value)] }))) return
     announce('Photo saved on this phone.')
-    onTaken(taken)
+    onTaken(photo.value.hash)
   }
   return (
     <div className="grid gap-2">
@@ -54,7 +53,7 @@ export function DashPhoto({ jobId, hash, onTaken }: Props) {
 }
 
 function Taken({ hash }: { hash: string }) {
-  const { url } = usePhoto(hash)
+  const { thumb: url } = usePhoto(hash)
   return url === null ? null : (
     <Photo url={url} alt="The dash, as photographed for this code" className="max-h-40" />
   )

@@ -88,7 +88,8 @@ const MISSING: Record<IntakeStep, (draft: IntakeDraft) => string | null> = {
 export const missingFrom = (draft: IntakeDraft, step: IntakeStep): string | null =>
   MISSING[step](draft)
 
-function airProblem(text: string): string | null {
+/** What is wrong with an air temperature as typed; null when nothing is. */
+export function airProblem(text: string): string | null {
   const air = text.trim() === '' ? 0 : typedNumber(text)
   return air === null || Math.abs(air) > 60
     ? 'Air temperature: a number from −60 to 60, or nothing.'

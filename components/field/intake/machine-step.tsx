@@ -7,7 +7,7 @@ import { Field } from '@/components/ui/field'
 import { Key } from '@/components/ui/key'
 import { RuleEdge } from '@/components/ui/rule-edge'
 import type { MachineModel } from '@/lib/model/code-book'
-import type { Machine } from '@/lib/model/machine'
+import type { Machine, MachineRow } from '@/lib/model/machine'
 import { machineName } from '../words'
 import type { StepProps } from './intake-draft'
 import { StrangerForm } from './stranger-form'
@@ -112,13 +112,13 @@ function MachineChoice(props: {
 }
 
 function search(
-  machines: readonly Machine[],
+  machines: readonly MachineRow[],
   models: readonly MachineModel[] | undefined,
   wanted: string,
-): Machine[] {
+): MachineRow[] {
   const words = wanted.toLowerCase().split(/\s+/).filter(Boolean)
   return machines
-    .filter((machine) => machine.fleet)
+    .filter((machine) => machine.fleet && machine.mergedInto === undefined)
     .map((machine) => ({ machine, text: machineName(machine, models).toLowerCase() }))
     .filter(({ text }) => words.every((word) => text.includes(word)))
     .sort((a, b) => a.text.localeCompare(b.text, 'en', { numeric: true }))

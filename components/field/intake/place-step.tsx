@@ -86,7 +86,14 @@ function useLastPoint(): Point | null {
   return useJobs()?.find((job) => job.place !== null)?.place ?? null
 }
 
-function FixPart({ place, onPlace }: { place: Place | null; onPlace: (place: Place) => void }) {
+/** Takes the position of the phone, or says why it cannot. */
+export function FixPart({
+  place,
+  onPlace,
+}: {
+  place: Place | null
+  onPlace: (place: Place) => void
+}) {
   const { position } = usePorts()
   const [looking, setLooking] = useState<boolean>(false)
   const [problem, setProblem] = useState<string | null>(null)
@@ -123,7 +130,12 @@ function FixPart({ place, onPlace }: { place: Place | null; onPlace: (place: Pla
   )
 }
 
-function TypedPart(props: { text: string; near: Point | null; onText: (text: string) => void }) {
+/** A position as typed, with what looks odd about it. */
+export function TypedPart(props: {
+  text: string
+  near: Point | null
+  onText: (text: string) => void
+}) {
   const read = parsePlace(props.text)
   const doubts = read.ok ? doubtsOf(read.value, props.near) : []
   return (

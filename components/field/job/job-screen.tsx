@@ -1,5 +1,6 @@
 'use client'
 
+import { useMay } from '@/components/checks/use-may'
 import { useBook } from '@/components/store/use-book'
 import { useLog } from '@/components/store/use-log'
 import { useSession } from '@/components/store/use-session'
@@ -14,11 +15,13 @@ import { CodeLines } from '../codes/code-lines'
 import { OfJob } from '../of-job'
 import { PlaceShown } from '../place-shown'
 import { jobHref } from '../route'
+import { AlsoEnteredOfJob, AlsoEnteredOfMachine } from '../settings/also-entered'
 import { clockTime, dayOf } from '../times'
 import type { JobFacts } from '../use-job-facts'
 import { askedWords, counted } from '../words'
 import { DaylightLine } from './daylight-line'
 import { NextRows } from './next-rows'
+import { ReopenedNotice } from './reopened-notice'
 import { StatesPart } from './states-part'
 
 /** The JOB tab: what is wrong, who and what is where, and what comes next. */
@@ -27,7 +30,9 @@ export function JobScreen({ jobId }: { jobId: string }) {
 }
 
 function Open({ facts }: { facts: JobFacts }) {
-  const { job, model } = facts
+  const { job, model, machine } = facts
+  const mayWork = useMay('job.work')
+  const mayChange = useMay('machine.add')
   const session = useSession()
   const log = useLog(job.id)
   const entries = living((log ?? []).map((line) => line.entry))
@@ -36,7 +41,9 @@ function Open({ facts }: { facts: JobFacts }) {
       title="Job"
       second={`Opened ${dayOf(job.openedAt, job.zone)} at ${clockTime(job.openedAt, job.zone)}.`}
     >
+      <ReopenedNotice jobId={job.id} />
       <Complaint job={job} />
+      <AlsoEnteredOfJob job={job} fields={['complaintWords']} mayUse={mayWork} />
       <StatesPart job={job} />
       <section className="grid gap-1">
         <RuleEdge>Next</RuleEdge>
@@ -53,7 +60,7 @@ function Open({ facts }: { facts: JobFacts }) {
       <section className="grid gap-2">
         <RuleEdge>Place</RuleEdge>
         {job.place === null ? (
-          <p className="font-bold">No position. Write it into a note as soon as you have one.</p>
+          <p className="font-bold">No position yet.</p>
         ) : (
           <>
             <PlaceShown place={job.place} />
@@ -61,12 +68,14 @@ function Open({ facts }: { facts: JobFacts }) {
             <DaylightLine place={job.place} zone={job.zone} />
           </>
         )}
-        {job.airTempC === null && job.weather === null ? null : (
-          <p className="text-second text-ink2">
-            {job.airTempC === null ? '' : `Air ${String(job.airTempC).replace('-', '−')} °C. `}
-            {job.weather ?? ''}
-          </p>
-        )}
+        <AlsoEnteredOfJob job={job} fields={['place']} mayUse={mayWork} />
+        {mayWork ? (
+          <KeyLink small quiet href={jobHref(job.id, 'place')}>
+            {job.place === null ? 'Take or type the position' : 'Better position'}
+          </KeyLink>
+        ) : null}
+        <Air job={job} />
+        <AlsoEnteredOfJob job={job} fields={['airTempC', 'weather']} mayUse={mayWork} />
       </section>
       <section className="grid gap-1">
         <RuleEdge>Machine</RuleEdge>
@@ -79,7 +88,11 @@ function Open({ facts }: { facts: JobFacts }) {
           }
           href={jobHref(job.id, 'sheet')}
         />
+        {machine === null ? null : (
+          <AlsoEnteredOfMachine machine={machine} zone={job.zone} mayUse={mayChange} />
+        )}
       </section>
+      <PutRight facts={facts} mayWork={mayWork} mayChange={mayChange} />
       <Caution signal="NOTICE">
         The maker’s manual, local rules and licensed practice come before anything shown here.
         Chances are the model’s own. You decide.
@@ -88,6 +101,42 @@ function Open({ facts }: { facts: JobFacts }) {
         All jobs on this phone
       </KeyLink>
     </Screen>
+  )
+}
+
+type PutRightProps = { facts: JobFacts; mayWork: boolean; mayChange: boolean }
+
+/** What was taken down once and may be said better later. */
+function PutRight({ facts: { job, machine }, mayWork, mayChange }: PutRightProps) {
+  if (!mayWork) return null
+  const hours = machine?.hours === null ? 'Hours not known' : `${machine?.hours} h`
+  return (
+    <section className="grid gap-1">
+      <RuleEdge>Put right</RuleEdge>
+      <ul>
+        <li>
+          <Row title="The rider’s words" href={jobHref(job.id, 'complaint')} />
+        </li>
+        <li>
+          <Row title="Air and weather" href={jobHref(job.id, 'air')} />
+        </li>
+        {machine !== null && mayChange ? (
+          <li>
+            <Row title="Hours, numbers and year" second={hours} href={jobHref(job.id, 'machine')} />
+          </li>
+        ) : null}
+      </ul>
+    </section>
+  )
+}
+
+function Air({ job }: { job: Job }) {
+  if (job.airTempC === null && job.weather === null) return null
+  return (
+    <p className="text-second text-ink2">
+      {job.airTempC === null ? '' : `Air ${String(job.airTempC).replace('-', '−')} °C. `}
+      {job.weather ?? ''}
+    </p>
   )
 }
 

@@ -14,8 +14,10 @@ import { KeyLink } from '@/components/ui/key'
 import { LogIcon } from '@/components/ui/log-icon'
 import { Photo } from '@/components/ui/photo'
 import { Screen } from '@/components/ui/screen'
+import { VoicePlayer } from '@/components/ui/voice-player'
 import { strikes } from '@/lib/diag/case'
 import type { LogEntry } from '@/lib/model/log-entry'
+import type { VoiceRef } from '@/lib/model/photo'
 import { jobHref } from '../route'
 import { clockTime, dayOf } from '../times'
 
@@ -63,6 +65,7 @@ export function EntryScreen({ jobId, entryId }: { jobId: string; entryId: string
       {entry.body.kind === 'photo' ? (
         <Picture hash={entry.body.photo.hash} words={words.title} />
       ) : null}
+      {entry.body.kind === 'voice' ? <Voice voice={entry.body.voice} /> : null}
       {later === undefined ? null : (
         <p className="font-bold">
           {later.body.kind === 'correction'
@@ -75,10 +78,21 @@ export function EntryScreen({ jobId, entryId }: { jobId: string; entryId: string
   )
 }
 
-/** At night a photo is dimmed until it is pressed. */
+/** A voice note, from the bytes held here or the shop's. */
+function Voice({ voice }: { voice: VoiceRef }) {
+  const { url } = usePhoto(voice.hash)
+  return url === null ? (
+    <p>The voice note is on the phone that recorded it and not at the shop yet.</p>
+  ) : (
+    <VoicePlayer url={url} seconds={voice.seconds} />
+  )
+}
+
+/** At night a photo is dimmed until it is pressed. Without signal its small copy stands in for the shop's. */
 function Picture({ hash, words }: { hash: string; words: string }) {
-  const { url } = usePhoto(hash)
+  const { url, thumb } = usePhoto(hash)
   const [bright, setBright] = useState<boolean>(false)
+  const [broken, setBroken] = useState<string | null>(null)
   if (url === null) {
     return <p>The picture is on the phone that took it and not at the shop yet.</p>
   }
@@ -89,7 +103,13 @@ function Picture({ hash, words }: { hash: string; words: string }) {
       aria-label={`${words}. Press for full brightness.`}
       onClick={() => setBright(!bright)}
     >
-      <Photo url={url} alt="" bright={bright} className="w-full" />
+      <Photo
+        url={url === broken && thumb !== null ? thumb : url}
+        alt=""
+        bright={bright}
+        className="w-full"
+        onError={() => setBroken(url)}
+      />
     </button>
   )
 }

@@ -96,7 +96,7 @@ function Title({ entry, title, struck }: { entry: LogEntry; title: string; struc
 }
 
 function Thumb({ hash, words }: { hash: string; words: string }) {
-  const { url } = usePhoto(hash)
+  const { thumb: url } = usePhoto(hash)
   return url === null ? (
     <span className="block text-second text-ink2">The picture is on the phone that took it.</span>
   ) : (

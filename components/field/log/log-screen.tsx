@@ -28,12 +28,15 @@ export function LogScreen({ jobId }: { jobId: string }) {
           title="Log"
           titleHidden
           foot={
-            <div className="grid grid-cols-1 gap-2 slim:grid-cols-3">
+            <div className="grid grid-cols-1 gap-2 slim:grid-cols-2">
               {mayLogInField(roles, 'note') ? (
                 <KeyLink href={jobHref(job.id, 'note')}>Note</KeyLink>
               ) : null}
               {mayLogInField(roles, 'photo') ? (
                 <KeyLink href={jobHref(job.id, 'photo')}>Photo</KeyLink>
+              ) : null}
+              {mayLogInField(roles, 'voice') ? (
+                <KeyLink href={jobHref(job.id, 'voice')}>Voice note</KeyLink>
               ) : null}
               <KeyLink kind="plate" href={jobHref(job.id, 'checks')}>
                 Reading

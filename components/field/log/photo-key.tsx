@@ -1,6 +1,7 @@
 'use client'
 
 import { Camera as CameraIcon } from 'lucide-react'
+import type { NewPhoto } from '@/components/store/use-record'
 import { classes } from '@/components/ui/class-names'
 import type { LogBody } from '@/lib/model/log-entry'
 import type { CameraProblem, TakenPhoto } from '@/lib/ports/camera'
@@ -11,9 +12,18 @@ export const CAMERA_WORDS: Record<CameraProblem['kind'], string> = {
   tooBig: 'That picture cannot be made small enough to keep. Take it again.',
 }
 
+/** What the phone keeps of a taken photo beside its entry. */
+export const photoToKeep = (jobId: string, { hash, bytes, mime, thumb }: TakenPhoto): NewPhoto => ({
+  hash,
+  jobId,
+  bytes,
+  mime,
+  thumb,
+})
+
 /** What the log keeps of a taken photo; the bytes travel apart. */
 export function photoBody(photo: TakenPhoto, caption: string): LogBody {
-  const { bytes, ...about } = photo
+  const { bytes, thumb: _thumb, ...about } = photo
   return {
     kind: 'photo',
     photo: { ...about, bytes: bytes.byteLength },

@@ -16,7 +16,7 @@ import { OfJob } from '../of-job'
 import { jobHref } from '../route'
 import { useRoute } from '../router'
 import { size } from '../times'
-import { CAMERA_WORDS, PhotoKey, photoBody } from './photo-key'
+import { CAMERA_WORDS, PhotoKey, photoBody, photoToKeep } from './photo-key'
 
 type Shown = { photo: TakenPhoto; url: string }
 
@@ -33,10 +33,14 @@ function TakePhoto({ jobId }: { jobId: string }) {
   const stamp = useStamp()
   const { go, here } = useRoute()
   const keep = async ({ photo }: Shown) => {
-    const { hash, bytes, mime } = photo
-    const photos = [{ hash, jobId, bytes, mime }]
-    const entry = stamp.entry(jobId, photoBody(photo, caption))
-    if (!(await save([entry], { photos, clearDrafts: [key] }))) return
+    const words = caption.trim()
+    const kept = await save([stamp.entry(jobId, photoBody(photo, caption))], {
+      photos: [photoToKeep(jobId, photo)],
+      clearDrafts: [key],
+      // The words are kept, though the picture has no room (P21).
+      wordsAlone: words === '' ? [] : [stamp.entry(jobId, { kind: 'note', words })],
+    })
+    if (!kept) return
     announce('Photo saved on this phone.')
     go(jobHref(jobId, 'log'), { replace: true, from: here })
   }

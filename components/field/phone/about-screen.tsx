@@ -2,11 +2,9 @@
 
 import { useBook } from '@/components/store/use-book'
 import { useJobs, useMachines, useModels, useShop } from '@/components/store/use-rows'
-import { useSession, useSignOut } from '@/components/store/use-session'
+import { useSession } from '@/components/store/use-session'
 import { type UnsentView, useUnsent } from '@/components/store/use-unsent'
-import { announce } from '@/components/ui/announce'
 import { Caution } from '@/components/ui/caution'
-import { Hold } from '@/components/ui/hold'
 import { KeyLink } from '@/components/ui/key'
 import { RuleEdge } from '@/components/ui/rule-edge'
 import { Screen } from '@/components/ui/screen'
@@ -16,6 +14,7 @@ import { ThemeMenu } from '../theme-menu'
 import { span } from '../times'
 import { useNow } from '../use-now'
 import { counted } from '../words'
+import { SignOutPart } from './sign-out-part'
 
 /** What this phone holds, which versions, the light, the cautions, and signing out. */
 export function AboutScreen() {
@@ -101,8 +100,6 @@ export const unsentWords = ({ counted: known, count }: Pick<UnsentView, 'counted
 
 function Person() {
   const session = useSession()
-  const signOut = useSignOut()
-  const unsent = useUnsent()
   if (session.kind !== 'ready') {
     return (
       <KeyLink kind="main" href="/login">
@@ -117,20 +114,7 @@ function Person() {
       <p>
         <b>{actor.name ?? 'Name not on this phone'}</b>, {actor.roles.join(', ')}.
       </p>
-      {unsent.count > 0 ? (
-        <p>
-          {counted(unsent.count, 'thing')} not sent. Signing out keeps it, locked, on this phone; it
-          goes out after you sign in again here.
-        </p>
-      ) : null}
-      <Hold
-        label="Sign out"
-        question="Sign out on this phone?"
-        confirmLabel="Sign out"
-        onConfirm={() => {
-          signOut().catch(() => announce('Could not sign out. Try again.', 'assertive'))
-        }}
-      />
+      <SignOutPart />
     </section>
   )
 }

@@ -1,43 +1,56 @@
 'use client'
 
 import { FileDown, ShieldAlert, ShieldCheck } from 'lucide-react'
-import { type ReactNode, useState } from 'react'
-import { entryWords } from '@/components/log/entry-words'
+import { useState } from 'react'
 import { of100 } from '@/components/reading-strip/figures'
 import { useSession } from '@/components/store/use-session'
 import { useStamp } from '@/components/store/use-stamp'
-import { type UnsentItem, type UnsentView, useUnsent } from '@/components/store/use-unsent'
+import { useSendsClosed, useUnsent } from '@/components/store/use-unsent'
 import { announce } from '@/components/ui/announce'
 import { Key, KeyLink } from '@/components/ui/key'
-import { LogIcon, type LogShape } from '@/components/ui/log-icon'
-import { Row } from '@/components/ui/row'
-import { RuleEdge } from '@/components/ui/rule-edge'
 import { Screen } from '@/components/ui/screen'
 import { WitnessMark } from '@/components/ui/witness-mark'
+import { browserDisplay } from '@/lib/ports/display'
 import { witnessState } from '../shell'
-import { clockTime, size, span } from '../times'
+import { size, span } from '../times'
 import { useNow } from '../use-now'
 import { counted } from '../words'
+import { saveFiles } from './save-files'
+import { Items, splitItems } from './unsent-item'
+import {
+  isNearlyFull,
+  NEED_WORDS,
+  stalledWords,
+  standing,
+  storageWords,
+  titleOf,
+} from './unsent-words'
 
-const titleOf = ({ counted: known, count }: { counted: boolean; count: number }): string =>
-  !known ? 'Counting' : count === 0 ? 'All sent' : `${count} not sent`
-
-/** What this phone has not handed over yet, why, and the two ways to move it. */
+/** What this phone has not handed over yet, why, and the ways to move it. */
 export function UnsentScreen() {
   const unsent = useUnsent()
+  const sendsClosed = useSendsClosed()
   const now = useNow()
-  const state = witnessState(unsent)
-  const stuck = unsent.items.filter((item) => item.state === 'stuck' || item.state === 'blocked')
-  const waiting = unsent.items.filter((item) => !stuck.includes(item))
+  const { stuck, waiting } = splitItems(unsent.items)
   return (
     <Screen title={titleOf(unsent)} titleHidden foot={<Ways />}>
       <div className="flex flex-wrap items-center gap-5">
-        <WitnessMark state={state} count={0} large progress={share(unsent.sending)} />
+        <WitnessMark
+          state={witnessState(unsent)}
+          count={0}
+          large
+          progress={share(unsent.sending)}
+        />
         <p aria-hidden="true" className="caps text-hero">
           {titleOf(unsent)}
         </p>
       </div>
-      <p className="text-row font-bold">{standing(unsent)}</p>
+      {unsent.stalled === null ? null : (
+        <p role="alert" className="text-row font-bold text-nogo">
+          {stalledWords(unsent.stalled, now)}
+        </p>
+      )}
+      <p className="text-row font-bold">{standing(unsent, sendsClosed)}</p>
       {unsent.count > 0 ? (
         <p>
           <b className="figures">{size(unsent.bytes)}</b> in all
@@ -52,12 +65,7 @@ export function UnsentScreen() {
       <Items title="Stuck" items={stuck} />
       <Items title="Waiting" items={waiting} />
       <Storage />
-      {unsent.setAside > 0 ? (
-        <p>
-          {counted(unsent.setAside, 'row')} of the shop cannot be read by this version. Kept aside
-          until the app is updated.
-        </p>
-      ) : null}
+      <Aside />
     </Screen>
   )
 }
@@ -65,29 +73,9 @@ export function UnsentScreen() {
 const share = (sending: { done: number; total: number } | null): number =>
   sending === null || sending.total === 0 ? 0 : sending.done / sending.total
 
-function standing(unsent: ReturnType<typeof useUnsent>): string {
-  if (!unsent.counted) {
-    return 'Counting what this phone holds.'
-  }
-  if (unsent.count === 0) {
-    return 'Everything recorded on this phone is at the shop.'
-  }
-  if (unsent.sending !== null) {
-    return `Sending: ${unsent.sending.done} of ${unsent.sending.total} taken by the shop. All of it stays saved on this phone until then.`
-  }
-  return 'All of it is saved on this phone. With signal and this open, it goes by itself.'
-}
-
-const NEED_WORDS: Record<NonNullable<UnsentView['needs']>, string> = {
-  signIn: 'The shop asks you to sign in again. Unsent work is kept and still goes out.',
-  updateApp:
-    'The shop needs a newer version of this app. Load it with signal; unsent work is kept.',
-  refused:
-    'The shop does not take work from this phone at the moment. Everything is kept here. Call the shop.',
-}
-
+/** What the person must see to, most pressing first. */
 function Needs() {
-  const { needs, draftsKept } = useUnsent()
+  const { needs, draftsKept, count } = useUnsent()
   return (
     <>
       {draftsKept ? null : (
@@ -102,90 +90,57 @@ function Needs() {
           Sign in
         </KeyLink>
       ) : null}
+      {count > 0 && browserDisplay.mayBeCleared() ? (
+        <p className="font-bold">
+          Put this app on the home screen (the browser’s Share menu). In a tab the phone may clear
+          unsent work after seven days.
+        </p>
+      ) : null}
     </>
   )
 }
 
-/** Shape and words of an item: a line of the log by its kind, as the log shows it. */
-const shown = ({ kind, what }: UnsentItem): { shape: LogShape; words: string } => {
-  if (typeof what === 'string') return { shape: SHAPES[kind], words: what }
-  const { shape, kind: words } = entryWords(what, null)
-  return { shape, words }
-}
-
-const SHAPES: Record<UnsentItem['kind'], LogShape> = {
-  'machine.add': 'ring',
-  'job.open': 'triangle',
-  'job.move': 'flag',
-  'job.people': 'ring',
-  'job.machine': 'flag',
-  'log.add': 'ring',
-  'partRequest.ask': 'hexagon',
-  'advice.keep': 'flag',
-  photoBytes: 'frame',
-}
-
-function Items({ title, items }: { title: string; items: readonly UnsentItem[] }) {
-  const { zone } = useStamp()
-  if (items.length === 0) {
-    return null
-  }
-  return (
-    <section>
-      <RuleEdge end={String(items.length)}>{title}</RuleEdge>
-      <ul>
-        {items.map((item) => (
-          <li key={item.key}>
-            <Row
-              icon={<LogIcon shape={shown(item).shape} />}
-              title={shown(item).words}
-              second={itemWords(item)}
-              end={clockTime(item.since, zone)}
-              endSecond={size(item.bytes)}
-            />
-          </li>
-        ))}
-      </ul>
-    </section>
-  )
-}
-
-function itemWords(item: UnsentItem): ReactNode {
-  const state = {
-    waiting: item.kind === 'photoBytes' ? 'The picture goes after the words' : 'Waits for signal',
-    sending: 'Going out now',
-    stuck: 'Stuck',
-    blocked: 'Waits for another entry',
-  }[item.state]
-  return item.reason === null ? state : `${state}: ${item.reason}`
-}
-
 function Storage() {
-  const { storageKept, quotaShare } = useUnsent()
-  const room =
-    quotaShare === null ? '' : ` Of its room, ${of100(quotaShare)} of 100 parts are used.`
-  if (storageKept === true) {
-    return (
-      <p className="flex items-start gap-3">
-        <ShieldCheck aria-hidden="true" strokeWidth={2.5} className="shrink-0" />
-        <span>Storage is kept: the phone will not clear it.{room}</span>
-      </p>
-    )
-  }
+  const unsent = useUnsent()
+  const full = isNearlyFull(unsent)
+  const Shield = unsent.storageKept === true && !full ? ShieldCheck : ShieldAlert
   return (
-    <p className="flex items-start gap-3">
-      <ShieldAlert aria-hidden="true" strokeWidth={2.5} className="shrink-0" />
-      <span>
-        {storageKept === null
-          ? 'Storage: the phone was not asked yet.'
-          : 'Storage is not promised: a phone short of room may clear it. Put the app on the home screen, and send soon.'}
-        {room}
-      </span>
-    </p>
+    <div className="flex items-start gap-3">
+      <Shield aria-hidden="true" strokeWidth={2.5} className="shrink-0" />
+      <div className="grid gap-1">
+        <p>{storageWords(unsent)}</p>
+        {full && unsent.quotaShare !== null ? (
+          <p className="font-bold text-nogo">
+            Nearly full: {of100(unsent.quotaShare)} of 100 parts are used. Photos and voice notes
+            stop first; words are kept to the last.
+          </p>
+        ) : null}
+      </div>
+    </div>
   )
 }
 
-/** Try sending now, or hand the work over as a file that somebody carries out. */
+function Aside() {
+  const { setAside, letGoCount } = useUnsent()
+  return (
+    <>
+      {setAside > 0 ? (
+        <p>
+          {counted(setAside, 'row')} of the shop cannot be read by this version. Kept aside until
+          the app is updated.
+        </p>
+      ) : null}
+      {letGoCount > 0 ? (
+        <p className="text-second">
+          {counted(letGoCount, 'thing')} let go on this phone. The file still holds{' '}
+          {letGoCount === 1 ? 'it' : 'them'}.
+        </p>
+      ) : null}
+    </>
+  )
+}
+
+/** Try sending now, or hand the work over as a file that somebody carries to the desk. */
 function Ways() {
   const unsent = useUnsent()
   const session = useSession()
@@ -197,11 +152,11 @@ function Ways() {
     setNews(null)
   }
   const handOver = async () => {
-    const file = await unsent.exportFile()
-    const name = `farbench-unsent-${stamp.now().slice(0, 16).replace(/[:T]/g, '-')}.json`
-    download(file, name)
-    setNews(`Saved as ${name}. It stays unsent here until the shop has it.`)
-    announce('File saved.')
+    const names = await saveFiles(unsent, stamp.now())
+    setNews(
+      `Saved as ${names.join(' and ')}. Whoever holds it can read it. The desk takes it in; here it stays unsent until the shop has it.`,
+    )
+    announce(names.length === 1 ? 'File saved.' : `${names.length} files saved.`)
   }
   const failed = () => setNews('That did not work. Everything is still saved on this phone.')
   return (
@@ -209,7 +164,7 @@ function Ways() {
       <p role="status" className="text-second font-bold empty:hidden">
         {news}
       </p>
-      {unsent.count > 0 ? (
+      {unsent.count > 0 || unsent.letGoCount > 0 ? (
         <Key
           onClick={() => {
             handOver().catch(failed)
@@ -221,7 +176,7 @@ function Ways() {
       ) : null}
       <Key
         kind="main"
-        disabled={session.kind !== 'ready' || unsent.sending !== null}
+        disabled={session.kind !== 'ready'}
         onClick={() => {
           trySending().catch(failed)
         }}
@@ -230,13 +185,4 @@ function Ways() {
       </Key>
     </>
   )
-}
-
-function download(file: Blob, name: string): void {
-  const url = URL.createObjectURL(file)
-  const link = document.createElement('a')
-  link.href = url
-  link.download = name
-  link.click()
-  setTimeout(() => URL.revokeObjectURL(url), 60_000)
 }

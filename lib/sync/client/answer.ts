@@ -1,11 +1,13 @@
-import type { Cursor, OpResult, PullRow, SyncResponse } from '@/lib/sync/protocol/message'
+import type { Cursor, OpResult, PullRow } from '@/lib/sync/protocol/message'
 import { rowsTouched } from './apply-op'
 import { commit, noWrites, type Writes } from './commit'
 import type { Core } from './core'
 import { isStored, readRow } from './entities'
 import { receiveHlc } from './hlc'
-import { type OutboxRecord, type PhoneDb, type RowRecord, readMeta, rowKey } from './phone-db'
-import { isOnTop, type Overlay, readOverlay, rebasedRow } from './rebase'
+import { type Answered, type Applied, outcomesOf } from './outcomes'
+import { type OutboxRecord, type RowRecord, readMeta, rowKey } from './phone-db'
+import { photosToOffer } from './photo-store'
+import { isCounted, isOnTop, type Overlay, readOverlay, rebasedRow } from './rebase'
 import { type Sealed, sealJson } from './seal'
 import { readCounter } from './stamp'
 
@@ -13,23 +15,6 @@ import { readCounter } from './stamp'
  * What the shop answered, applied in one transaction: what became of each op, the pulled rows, and the
  * cursor (P8). A kill before it leaves everything as it was; the same answer again changes nothing.
  */
-export type Answered = {
-  /** Numbers of the ops that were sent. */
-  dseqs: readonly number[]
-  /** The cursor that was sent. */
-  cursor: Cursor | null
-  response: SyncResponse
-  offsetMs: number
-  nowMs: number
-}
-
-export type Applied = {
-  /** More rows wait at the shop. */
-  more: boolean
-  /** A newer code book is published. */
-  bookChanged: boolean
-  wasReset: boolean
-}
 
 /** How long a taken op is kept, to be offered again after a restored backup (P12; a choice). */
 const KEEP_TAKEN_MS = 7 * 24 * 3600 * 1000
@@ -46,42 +31,14 @@ export async function applyAnswer(core: Core, of: Answered): Promise<Applied> {
   return applied
 }
 
-/** What became of the sent ops, by their numbers; ops nothing was said of stay as they are. */
-async function outcomesOf(
-  db: PhoneDb,
-  of: Pick<Answered, 'dseqs' | 'response' | 'nowMs'>,
-): Promise<OutboxRecord[]> {
-  const results = new Map(of.response.results.map((result) => [result.opId, result]))
-  const taken = new Set(of.response.taken)
-  const held = await db.outbox.bulkGet([...of.dseqs])
-  return held.flatMap((record) => {
-    if (record === undefined || record.state === 'taken' || record.state === 'done') return []
-    const result = results.get(record.opId)
-    if (result !== undefined) return [withResult(record, result, of.nowMs)]
-    return taken.has(record.opId) ? [asTaken(record, of.nowMs)] : []
-  })
-}
+/** Which log a cursor is of; what follows the point says how far back that log is whole (P10). */
+const logOf = (cursor: Cursor) => cursor.epoch.split('.')[0]
 
-const asTaken = (record: OutboxRecord, nowMs: number): OutboxRecord => ({
-  ...record,
-  state: 'taken',
-  reason: null,
-  detail: null,
-  takenAt: nowMs,
-})
-
-function withResult(record: OutboxRecord, result: OpResult, nowMs: number): OutboxRecord {
-  switch (result.result) {
-    case 'duplicate':
-    case 'merged':
-      return asTaken(record, nowMs)
-    case 'rejected':
-      return { ...record, state: 'stuck', reason: result.code, detail: result.detail }
-    case 'blocked':
-      return { ...record, state: 'blocked', reason: result.on, detail: null }
-    case 'retry':
-      return { ...record, state: 'waiting', reason: null, detail: null }
-  }
+/** A job's closing that did not stand against an entry of the field. */
+function isReopening(result: OpResult): boolean {
+  if (result.result !== 'merged') return false
+  const loser = result.loser as { field?: unknown; value?: unknown } | null
+  return loser?.field === 'state' && loser.value === 'closed'
 }
 
 class AnswerPlan {
@@ -101,10 +58,14 @@ class AnswerPlan {
     const { db } = this.#core
     for (const record of await outcomesOf(db, this.#of)) this.#changed.set(record.dseq, record)
     const before = [...this.#changed.values()]
+    await this.#notices(before)
+    await this.#missing()
+    await this.#lost()
     await this.#clocks()
     const { pull } = this.#of.response
     if (pull.kind === 'reset') await this.#reset(pull.cursor)
     const fits = pull.kind === 'page' && (await this.#cursorStands())
+    if (fits) await this.#settleCounted(pull.rows)
     const settled = fits && !pull.more ? await this.#settleTaken() : []
     const overlay = await readOverlay(this.#core, [...this.#changed.values()])
     if (pull.kind === 'page') this.applied.more = pull.more || !fits
@@ -117,6 +78,43 @@ class AnswerPlan {
       else this.#writes.rows.push(row)
     }
     return this.#writes
+  }
+
+  /** Numbers the shop never saw are offered again, if they are still here (P22). */
+  async #missing(): Promise<void> {
+    const { outbox } = this.#core.db
+    for (const [first, last] of this.#of.response.missing) {
+      for (const record of await outbox.where('dseq').between(first, last, true, true).toArray()) {
+        if (record.state !== 'taken' && record.state !== 'done') continue
+        if (this.#changed.has(record.dseq)) continue
+        this.#changed.set(record.dseq, { ...record, state: 'waiting', takenAt: null })
+      }
+    }
+  }
+
+  /** What went with the store before this one is kept until its person has read it (P22). */
+  async #lost(): Promise<void> {
+    const { lost } = this.#of.response
+    if (lost === null || (await readMeta(this.#core.db, 'lost')) !== undefined) return
+    this.#writes.meta.lost = { ops: lost.ops, lastOn: lost.lastAt, told: false }
+  }
+
+  /** Entries that opened a job again which the shop had closed: the person is told (R13). */
+  async #notices(settled: readonly OutboxRecord[]): Promise<void> {
+    const opened = new Set(
+      this.#of.response.results.filter(isReopening).map((result) => result.opId),
+    )
+    const jobIds = settled.flatMap(({ opId, jobId }) =>
+      opened.has(opId) && jobId !== null ? [jobId] : [],
+    )
+    if (jobIds.length === 0) return
+    const held = (await readMeta(this.#core.db, 'notices')) ?? []
+    const fresh = new Set(jobIds)
+    const at = this.#of.nowMs
+    this.#writes.meta.notices = [
+      ...held.filter((notice) => !fresh.has(notice.jobId)),
+      ...[...fresh].map((jobId) => ({ jobId, what: 'reopened' as const, at })),
+    ]
   }
 
   async #clocks(): Promise<void> {
@@ -140,12 +138,14 @@ class AnswerPlan {
     this.#writes.meta.cursor = { ...cursor, seq: 0 }
     this.#writes.meta.gen = ((await readMeta(db, 'gen')) ?? 0) + 1
     this.#writes.meta.setAside = []
-    const restored = this.#of.cursor !== null && this.#of.cursor.epoch !== cursor.epoch
+    const held = this.#of.cursor
+    const restored = held !== null && logOf(held) !== logOf(cursor)
     if (!restored) return
     // The shop was restored from a backup: what it took lately is offered again (P12).
     for (const record of await db.outbox.where('state').anyOf('taken', 'done').toArray()) {
       this.#changed.set(record.dseq, { ...record, state: 'waiting', takenAt: null })
     }
+    this.#writes.photos = await photosToOffer(db, this.#of.nowMs - KEEP_TAKEN_MS)
   }
 
   /** A whole pull shows every op taken before it; those are on top no longer. */
@@ -161,6 +161,18 @@ class AnswerPlan {
     const old = await done.filter((record) => (record.takenAt ?? 0) < oldest).toArray()
     this.#writes.dropOutbox = old.map((record) => record.dseq)
     return [...this.#changed.values()].filter((record) => record.state === 'done')
+  }
+
+  /** A row was read after the shop took these ops, so it has what they counted. */
+  async #settleCounted(rows: readonly PullRow[]): Promise<void> {
+    const { db } = this.#core
+    const came = new Set(rows.map((row) => row.id))
+    const taken = await db.outbox.where('state').equals('taken').toArray()
+    for (const record of [...taken, ...this.#changed.values()]) {
+      const now = this.#changed.get(record.dseq) ?? record
+      if (now.state !== 'taken' || !isCounted(now) || !came.has(now.entityId)) continue
+      this.#changed.set(now.dseq, { ...now, state: 'done' })
+    }
   }
 
   async #page(rows: readonly PullRow[], overlay: Overlay, cursor: Cursor): Promise<void> {
@@ -180,7 +192,14 @@ class AnswerPlan {
         aside.set(key, { entity: row.entity, id: row.id, seq: row.seq })
         continue
       }
-      const shop = { base, seq: base === null ? null : row.seq, gen, jobId: row.jobId }
+      const merged = mergedInto(row)
+      const shop = {
+        base,
+        seq: base === null ? null : row.seq,
+        gen,
+        jobId: row.jobId,
+        ...(merged === undefined ? {} : { mergedInto: merged }),
+      }
       const place = { entity: row.entity, id: row.id }
       this.#rows.set(key, await rebasedRow(this.#core, key, { ...shop, ...place }, overlay))
     }
@@ -219,11 +238,19 @@ class AnswerPlan {
     const { db } = this.#core
     const gen = (await readMeta(db, 'gen')) ?? 0
     for (const held of await db.row.where('gen').below(gen).toArray()) {
-      if (this.#rows.has(held.key)) continue
+      // One worked out again in this very answer is no row of this pull.
+      const now = this.#rows.get(held.key)
+      if (now === null || now?.gen === gen) continue
       const nothing = { ...held, base: null, seq: null, gen }
       this.#rows.set(held.key, await rebasedRow(this.#core, held.key, nothing, overlay))
     }
   }
+}
+
+/** The job that goes on for a merged one, as its row says; kept open beside the sealed row. */
+function mergedInto({ entity, row }: PullRow): string | undefined {
+  if (entity !== 'job') return undefined
+  return (row as { mergedInto?: string } | null)?.mergedInto
 }
 
 /** Works out the rows of ops that a sender without the store key has marked. */
@@ -242,32 +269,5 @@ export async function settleRows(core: Core): Promise<void> {
       }
     }
     return writes
-  })
-}
-
-/** Keeps only what became of the ops, for a sender that cannot open rows. */
-export async function applyOutcomes(
-  core: Pick<Core, 'db' | 'step'>,
-  of: Pick<Answered, 'dseqs' | 'response' | 'nowMs'>,
-): Promise<void> {
-  await commit(core, async () => {
-    const outbox = await outcomesOf(core.db, of)
-    return { ...noWrites(), outbox: outbox.map((record) => ({ ...record, unsettled: 1 as const })) }
-  })
-}
-
-/** Sets ops aside that the shop will never take as they are; kept, never deleted (P16). */
-export async function setAside(
-  core: Pick<Core, 'db' | 'step'>,
-  of: { dseqs: readonly number[]; reason: string; detail: string | null },
-): Promise<void> {
-  await commit(core, async () => {
-    const held = await core.db.outbox.bulkGet([...of.dseqs])
-    const outbox = held.flatMap((record): OutboxRecord[] =>
-      record === undefined
-        ? []
-        : [{ ...record, state: 'stuck', reason: of.reason, detail: of.detail, unsettled: 1 }],
-    )
-    return { ...noWrites(), outbox }
   })
 }

@@ -15,6 +15,8 @@ const ASK_EVERY_MS = 3600 * 1000
 export class AppWorker {
   /** A newer version waits for the person. */
   readonly waiting = new Cell(false)
+  /** The browser can wake the worker to send with the app closed (P20); not every one can. */
+  readonly sendsClosed = new Cell(false)
   #registration: ServiceWorkerRegistration | null = null
   #asked: boolean = false
   #replaced: boolean = false
@@ -35,6 +37,7 @@ export class AppWorker {
     })
     const registration = await container.register('/sw.js', { updateViaCache: 'none' })
     this.#registration = registration
+    this.sendsClosed.set('sync' in registration)
     this.#watch(registration, container)
     await container.ready
   }

@@ -1,8 +1,11 @@
 import type { Id } from '@/lib/model/id'
 import type { Job } from '@/lib/model/job'
+import type { MachineRow } from '@/lib/model/machine'
+import type { PartRequestRow } from '@/lib/model/part-request'
 import { assertNever } from '@/lib/model/result'
 import { mayMove } from '@/lib/shop/job-states'
 import type { Op } from '@/lib/sync/protocol/op'
+import { applyToMachine, applyToRequest, jobWith, withoutLooked } from './apply-value'
 import type { StoredEntity } from './entities'
 
 /**
@@ -28,6 +31,18 @@ export function rowsTouched(op: Op): Touched[] {
       return [{ entity: 'logEntry', id: op.entityId, jobId: op.fields.jobId }]
     case 'partRequest.ask':
       return [{ entity: 'partRequest', id: op.entityId, jobId: op.fields.jobId }]
+    case 'job.set':
+    case 'job.settle':
+      return [jobAt(op.entityId)]
+    case 'machine.set':
+    case 'machine.settle':
+    case 'machine.drop':
+      return [{ entity: 'machine', id: op.entityId, jobId: null }]
+    case 'partLine.add':
+    case 'partLine.cancel':
+    case 'partLine.quantity':
+    case 'partRequest.drop':
+      return [{ entity: 'partRequest', id: op.entityId, jobId: op.jobId }]
     case 'advice.keep':
       return []
     default:
@@ -40,12 +55,13 @@ const jobAt = (id: Id): Touched => ({ entity: 'job', id, jobId: id })
 /** The row after the op: `row` itself when the op does not change it, undefined when there is none. */
 export function applyOpLocally(row: unknown, at: Touched, op: Op, who: Who): unknown {
   if (at.entity === 'job') return applyToJob(row as Job | undefined, op, who)
-  // Evidence, machines and requests are only ever added: what is there stays.
-  if (row !== undefined || op.entityId !== at.id) return row
-  if (op.kind === 'machine.add' || op.kind === 'log.add') return op.fields
-  if (op.kind !== 'partRequest.ask') return row
-  const lines = op.fields.lines.map((line) => ({ ...line, state: 'asked' as const }))
-  return { ...op.fields, askedBy: who.personId, lines }
+  if (op.entityId !== at.id) return row
+  if (at.entity === 'machine') return applyToMachine(row as MachineRow | undefined, op)
+  if (at.entity === 'partRequest') {
+    return applyToRequest(row as PartRequestRow | undefined, op, who.personId)
+  }
+  // Evidence is only ever added: what is there stays.
+  return row === undefined && op.kind === 'log.add' ? op.fields : row
 }
 
 function applyToJob(job: Job | undefined, op: Op, who: Who): Job | undefined {
@@ -66,6 +82,10 @@ function applyToJob(job: Job | undefined, op: Op, who: Who): Job | undefined {
       const moves = job.machineState === from && mayMove('machine', from, to)
       return moves ? { ...job, machineState: to } : job
     }
+    case 'job.set':
+      return jobWith(job, op.fields)
+    case 'job.settle':
+      return withoutLooked(job, op.fields.history)
     default:
       return job
   }

@@ -1,15 +1,16 @@
 import type { Actor } from '@/lib/model/person'
 import { AppError } from '@/lib/model/result'
 import type { SyncPorts } from '@/lib/ports/sync-ports'
-import { type Answered, type Applied, applyOutcomes } from './answer'
 import { DeviceDb, knownPersons } from './device-db'
 import { deviceOf } from './enrol'
 import { findSendKeys, findStoreKey, type SendKeys } from './keys'
+import { type Answered, type Applied, applyOutcomes } from './outcomes'
 import { type Indexed, PhoneDb } from './phone-db'
 import { PhoneSender } from './phone-sender'
 import { photoPlace } from './record'
 import { openBytes } from './seal'
 import type { RunStore } from './sync-run'
+import { beginWipe, resumeWipes, type WipeTools } from './wipe'
 
 /** The tag under which the browser wakes the worker to send (P20). */
 export const SEND_TAG = 'farbench-send'
@@ -21,15 +22,20 @@ export const SEND_TAG = 'farbench-send'
  */
 export async function sendInBackground(ports: SyncPorts, indexed: Indexed = {}): Promise<void> {
   const device = new DeviceDb(indexed)
-  const persons = await knownPersons(device)
-  device.close()
+  const tools: WipeTools = { device, ports, indexed, step: () => undefined }
   let left = 0
-  for (const person of persons) left += await sendFor(person, ports, indexed)
+  try {
+    await resumeWipes(tools)
+    for (const person of await knownPersons(device)) left += await sendFor(person, ports, tools)
+  } finally {
+    device.close()
+  }
   if (left > 0) throw new AppError('stillUnsent', { retry: true, context: { left } })
 }
 
-async function sendFor(person: Actor, ports: SyncPorts, indexed: Indexed): Promise<number> {
-  const db = new PhoneDb(person.shopId, person.personId, indexed)
+async function sendFor(person: Actor, ports: SyncPorts, tools: WipeTools): Promise<number> {
+  const db = new PhoneDb(person.shopId, person.personId, tools.indexed)
+  let begun: boolean = false
   try {
     const keys = await findSendKeys(db)
     if (keys === null || (await leftToSend(db)) === 0) return 0
@@ -39,12 +45,18 @@ async function sendFor(person: Actor, ports: SyncPorts, indexed: Indexed): Promi
       keys,
       ports,
       shopId: person.shopId,
+      onWipe: async () => {
+        const of = { core: { db }, actor: person, why: 'handedOver', unsent: 0 } as const
+        begun = await beginWipe(tools, of)
+        return begun
+      },
     })
     await sender.sendNow('background')
     sender.stop()
     return await leftToSend(db)
   } finally {
     db.close()
+    if (begun) await resumeWipes(tools)
   }
 }
 
@@ -74,9 +86,7 @@ async function workerStore(of: {
       return { more: false, bookChanged: false, wasReset: false }
     },
     openPhoto:
-      storeKey === null
-        ? null
-        : (photo) => openBytes(storeKey, photoPlace(photo.hash), photo.bytes),
+      storeKey === null ? null : (hash, sealed) => openBytes(storeKey, photoPlace(hash), sealed),
     step,
   }
 }

@@ -2,10 +2,12 @@ import { AppError } from '@/lib/model/result'
 import type { Core } from './core'
 import {
   type DraftRecord,
+  type LetGoRecord,
   type MetaName,
   type MetaValues,
   type OutboxRecord,
   type PhoneDb,
+  type PhotoBytesRecord,
   type PhotoRecord,
   type RowRecord,
   readMeta,
@@ -18,7 +20,11 @@ export type Writes = {
   dropRows: string[]
   outbox: OutboxRecord[]
   dropOutbox: number[]
+  letGo: LetGoRecord[]
+  /** Op ids of records that are to be sent after all. */
+  takeBack: string[]
   photos: PhotoRecord[]
+  photoBytes: PhotoBytesRecord[]
   dropDrafts: string[]
   drafts: DraftRecord[]
   meta: Partial<MetaValues>
@@ -30,7 +36,10 @@ export const noWrites = (): Writes => ({
   dropRows: [],
   outbox: [],
   dropOutbox: [],
+  letGo: [],
+  takeBack: [],
   photos: [],
+  photoBytes: [],
   dropDrafts: [],
   drafts: [],
   meta: {},
@@ -49,30 +58,38 @@ export async function commit(
   prepare: () => Promise<Writes | null>,
 ): Promise<boolean> {
   for (let tries = 0; tries < MOST_TRIES; tries += 1) {
-    const turn = (await readMeta(core.db, 'turn')) ?? 0
-    core.step('prepare')
-    const writes = await prepare()
-    if (writes === null) return false
-    core.step('write')
-    if (await writeAll(core, turn, writes)) return true
+    const outcome = await core.db.life.run(() => tryOnce(core, prepare))
+    if (outcome !== 'overtaken') return outcome === 'written'
   }
   throw new AppError('storeTooBusy', { retry: true })
 }
 
+async function tryOnce(
+  core: Pick<Core, 'db' | 'step'>,
+  prepare: () => Promise<Writes | null>,
+): Promise<'written' | 'nothing' | 'overtaken'> {
+  const turn = (await readMeta(core.db, 'turn')) ?? 0
+  core.step('prepare')
+  const writes = await prepare()
+  if (writes === null) return 'nothing'
+  core.step('write')
+  return (await writeAll(core, turn, writes)) ? 'written' : 'overtaken'
+}
+
 function writeAll(core: Pick<Core, 'db' | 'step'>, turn: number, writes: Writes): Promise<boolean> {
   const { db } = core
-  return db.transaction('rw', [db.row, db.outbox, db.photo, db.draft, db.meta], async () => {
+  const tables = [db.row, db.outbox, db.letGo, db.photo, db.photoBytes, db.draft, db.meta]
+  return db.transaction('rw', tables, async () => {
     const now = (await readMeta(db, 'turn')) ?? 0
     if (now !== turn) return false
     core.step('turn')
     await db.meta.put({ name: 'turn', value: turn + 1 })
     core.step('outbox')
-    if (writes.outbox.length > 0) await db.outbox.bulkPut(writes.outbox)
-    if (writes.dropOutbox.length > 0) await db.outbox.bulkDelete(writes.dropOutbox)
+    await putOps(db, writes)
     core.step('rows')
     await putRows(db, turn + 1, writes)
     core.step('photos')
-    if (writes.photos.length > 0) await db.photo.bulkPut(writes.photos)
+    await putPhotos(db, writes)
     core.step('drafts')
     if (writes.drafts.length > 0) await db.draft.bulkPut(writes.drafts)
     if (writes.dropDrafts.length > 0) await db.draft.bulkDelete(writes.dropDrafts)
@@ -84,6 +101,18 @@ function writeAll(core: Pick<Core, 'db' | 'step'>, turn: number, writes: Writes)
     core.step('written')
     return true
   })
+}
+
+async function putOps(db: PhoneDb, writes: Writes): Promise<void> {
+  if (writes.outbox.length > 0) await db.outbox.bulkPut(writes.outbox)
+  if (writes.letGo.length > 0) await db.letGo.bulkPut(writes.letGo)
+  if (writes.takeBack.length > 0) await db.letGo.bulkDelete(writes.takeBack)
+  if (writes.dropOutbox.length > 0) await db.outbox.bulkDelete(writes.dropOutbox)
+}
+
+async function putPhotos(db: PhoneDb, writes: Writes): Promise<void> {
+  if (writes.photoBytes.length > 0) await db.photoBytes.bulkPut(writes.photoBytes)
+  if (writes.photos.length > 0) await db.photo.bulkPut(writes.photos)
 }
 
 async function putRows(db: PhoneDb, turn: number, writes: Writes): Promise<void> {

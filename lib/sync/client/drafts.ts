@@ -92,7 +92,7 @@ export class Draft {
     const { db, keys } = this.#home
     let value: unknown
     try {
-      const [held] = await db.draft.where('key').equals(this.#key).toArray()
+      const [held] = await db.life.run(() => db.draft.where('key').equals(this.#key).toArray())
       if (held !== undefined) value = await openJson(keys.store, draftPlace(this.#key), held.body)
     } catch {
       // One that does not open is shown as nothing; it is not deleted until something new is written.
@@ -108,7 +108,7 @@ export class Draft {
     const { db, keys, now, step } = this.#home
     const body = await sealJson(keys.store, draftPlace(this.#key), slot.value)
     step('draftSealed')
-    await db.draft.put({ key: this.#key, at: now(), body })
+    await db.life.run(() => db.draft.put({ key: this.#key, at: now(), body }))
   }
 }
 

@@ -4,6 +4,7 @@ import { type Actor, actor } from '@/lib/model/person'
 import { fail, ok, type Result } from '@/lib/model/result'
 import type { SyncPorts } from '@/lib/ports/sync-ports'
 import { type EnrolRequest, enrolAnswer } from '@/lib/sync/protocol/device'
+import { keep, readKeepsakes } from './keepsake'
 import { publicKeyOf, type SendKeys } from './keys'
 import { type PhoneDb, readMeta, writeMeta } from './phone-db'
 import { readReply } from './reply'
@@ -38,6 +39,7 @@ export async function enrol(
   const request: EnrolRequest = {
     deviceId: device.deviceId,
     publicKey: await publicKeyOf(keys),
+    ...keptOf(ports, device.deviceId),
     words: (globalThis.navigator?.userAgent ?? '').slice(0, 120),
   }
   const sent = await ports.network.send({
@@ -53,7 +55,14 @@ export async function enrol(
   if (answer?.success !== true) return fail({ kind: 'unreachable' })
   const { deviceId } = answer.data
   await writeMeta(db, 'device', { deviceId, enrolled: true })
+  if (deviceId !== device.deviceId) keep(ports.keeper, device.deviceId, null)
   return ok(deviceId)
+}
+
+/** What is remembered of other stores than this one: those that are gone the shop sorts out (P22). */
+function keptOf(ports: SyncPorts, own: Id): Pick<EnrolRequest, 'kept'> {
+  const kept = readKeepsakes(ports.keeper).filter((one) => one.deviceId !== own)
+  return kept.length === 0 ? {} : { kept }
 }
 
 /** Who the session says is at work. */

@@ -3,7 +3,7 @@ import { bag } from '@/lib/model/bag'
 import { machineModel } from '@/lib/model/code-book'
 import { job } from '@/lib/model/job'
 import { type LogEntry, type LogRow, logRow } from '@/lib/model/log-entry'
-import { machine } from '@/lib/model/machine'
+import { machineRow } from '@/lib/model/machine'
 import { meterProfile } from '@/lib/model/meter-profile'
 import { partRequestRow } from '@/lib/model/part-request'
 import { person } from '@/lib/model/person'
@@ -15,7 +15,7 @@ const SHAPES = {
   shop,
   person,
   machineModel,
-  machine,
+  machine: machineRow,
   meterProfile,
   bag,
   job,

@@ -19,20 +19,34 @@ export async function signedHeaders(
   dseq: string,
   body: Bytes,
 ): Promise<Record<string, string>> {
-  const bodyHash = base64url(new Uint8Array(await crypto.subtle.digest('SHA-256', body)))
+  const bodyHash = await hashOf(body)
   const { shopId: shop, personId: person, deviceId: device } = sender
-  const signed = await crypto.subtle.sign(
-    { name: 'ECDSA', hash: 'SHA-256' },
-    sender.pair.privateKey,
-    text.encode(signedText({ shop, person, device, dseq, bodyHash })),
-  )
   return {
     [HEADERS.shop]: shop,
     [HEADERS.person]: person,
     [HEADERS.device]: device,
     [HEADERS.dseq]: dseq,
-    [HEADERS.signature]: base64url(new Uint8Array(signed)),
+    [HEADERS.signature]: await signText(
+      sender,
+      signedText({ shop, person, device, dseq, bodyHash }),
+    ),
   }
+}
+
+/** SHA-256 in base64url, of bytes or of a text in UTF-8. */
+export async function hashOf(of: Bytes | string): Promise<string> {
+  const bytes = typeof of === 'string' ? text.encode(of) : of
+  return base64url(new Uint8Array(await crypto.subtle.digest('SHA-256', bytes)))
+}
+
+/** The sender's signature over a text: ECDSA P-256, raw r||s, base64url. */
+export async function signText(sender: Sender, words: string): Promise<string> {
+  const signed = await crypto.subtle.sign(
+    { name: 'ECDSA', hash: 'SHA-256' },
+    sender.pair.privateKey,
+    text.encode(words),
+  )
+  return base64url(new Uint8Array(signed))
 }
 
 /** A batch as it goes out: how many of the ops it holds, and the body. */
@@ -45,6 +59,9 @@ export async function packRequest(of: {
   cursor: Cursor | null
   pull: boolean
   clientTime: string
+  /** What the phone still holds besides the first so many ops; and the id of its store (P22). */
+  held?: (sent: number) => NonNullable<SyncRequest['held']>
+  canary?: Id | null
 }): Promise<Packed> {
   let count = Math.min(of.ops.length, of.limit, MAX_OPS)
   for (;;) {
@@ -56,6 +73,8 @@ export async function packRequest(of: {
       ops,
       cursor: of.cursor,
       pull: of.pull,
+      ...(of.held === undefined ? {} : { held: of.held(count) }),
+      canary: of.canary ?? null,
     }
     const body = await gzip(text.encode(JSON.stringify(request)))
     if (body.byteLength <= MAX_BATCH_BYTES || count <= 1) {

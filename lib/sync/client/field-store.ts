@@ -1,18 +1,28 @@
 import { guideSafeOf } from '@/lib/diag/book-index'
 import type { Id } from '@/lib/model/id'
 import type { Actor } from '@/lib/model/person'
-import { fail } from '@/lib/model/result'
+import { AppError, fail } from '@/lib/model/result'
 import type { SyncPorts } from '@/lib/ports/sync-ports'
 import { AppWorker } from './app-worker'
 import { BookDb, fetchBook, watchBook } from './book-store'
-import { currentPerson, DeviceDb, leavingPerson, setCurrent, setNobody } from './device-db'
+import { listenToBrowser } from './browser-events'
+import {
+  currentPerson,
+  DeviceDb,
+  leavingPerson,
+  setCurrent,
+  setNobody,
+  wasEmptied,
+} from './device-db'
 import { askWho, type EnrolProblem } from './enrol'
+import { countUnsent } from './keepsake'
 import { Phone } from './phone'
-import type { Indexed } from './phone-db'
+import { type Indexed, readMeta } from './phone-db'
 import type { Cause } from './phone-sender'
 import { endSession } from './sign-out'
 import type { BookView, Session } from './views'
 import { Cell, LiveCell } from './watch'
+import { beginWipe, resumeWipes, type WipeTools } from './wipe'
 
 /** How long an app that could open from what it holds waits for the shop's word on who is at work. */
 const PATIENCE_MS = 400
@@ -27,18 +37,23 @@ export class FieldStore {
   readonly session = new Cell<Session>({ kind: 'opening' })
   readonly phone = new Cell<Phone | null>(null)
   readonly worker = new AppWorker()
+  /** `blocked`: another window keeps the store from opening. `lost`: load the page again (P25). */
+  readonly trouble = new Cell<'none' | 'blocked' | 'lost'>('none')
   readonly book: LiveCell<BookView>
   readonly #indexed: Indexed
   readonly #device: DeviceDb
   readonly #books: BookDb
+  readonly #wiping: WipeTools
   #opening: Promise<void> | null = null
   #bookAskedMs = Number.NEGATIVE_INFINITY
 
-  constructor(ports: SyncPorts, indexed: Indexed = {}) {
+  /** `step` is called with the name of each step of emptying a store; tests let it throw. */
+  constructor(ports: SyncPorts, indexed: Indexed = {}, step: (name: string) => void = none) {
     this.ports = ports
     this.#indexed = indexed
     this.#device = new DeviceDb(indexed)
     this.#books = new BookDb(indexed)
+    this.#wiping = { device: this.#device, ports, indexed, step }
     this.book = new LiveCell(NO_BOOK_YET, (emit) => this.#followBook(emit))
   }
 
@@ -60,16 +75,70 @@ export class FieldStore {
     await this.#opening
   }
 
-  /** Ends the session; the person's store stays on this phone, with everything unsent. */
+  /** Before signing out: calls the shop once more, then says how much is still unsent (SO1). */
+  async tryToSend(): Promise<number> {
+    const phone = this.phone.get()
+    if (phone === null) return 0
+    await phone.sender.sendNow('tap')
+    return this.phone.get() === phone ? await countUnsent(phone.core.db) : 0
+  }
+
+  /** Ends the session; the person's store stays on this phone, locked, with everything unsent. */
   async signOut(): Promise<void> {
+    await this.tryToSend()
     const phone = this.phone.get()
     if (phone === null) return
-    await phone.sender.sendNow('tap')
+    await this.#leave(phone)
+  }
+
+  /**
+   * Ends the session and deletes the person's store with so much unsent work, which they have named (SO3).
+   * False, and nothing done, when it is another count by now.
+   */
+  async signOutAndDelete(unsent: number): Promise<boolean> {
+    const phone = this.phone.get()
+    if (phone === null) return false
+    const { core, actor } = phone
+    if (!(await beginWipe(this.#wiping, { core, actor, why: 'deleted', unsent }))) return false
+    await this.#leave(phone)
+    await resumeWipes(this.#wiping)
+    return true
+  }
+
+  async #leave(phone: Phone): Promise<void> {
     await setNobody(this.#device, phone.actor.personId)
     this.session.set({ kind: 'signedOut' })
     this.phone.set(null)
     phone.close()
     if (await endSession(this.ports)) await setNobody(this.#device, null)
+  }
+
+  /** The shop has taken this phone out and has all that was on it (Q4). */
+  async #empty(phone: Phone): Promise<boolean> {
+    const of = { core: phone.core, actor: phone.actor, why: 'handedOver', unsent: 0 } as const
+    if (!(await beginWipe(this.#wiping, of))) return false
+    await this.#leaveEmptied(phone)
+    return true
+  }
+
+  async #leaveEmptied(phone: Phone): Promise<void> {
+    this.phone.set(null)
+    phone.close()
+    this.session.set({ kind: 'signedOut' })
+    await resumeWipes(this.#wiping)
+    await this.#nobody()
+  }
+
+  async #nobody(): Promise<void> {
+    const emptied = await wasEmptied(this.#device)
+    this.session.set({ kind: 'signedOut', ...(emptied ? { emptied } : {}) })
+  }
+
+  /** A store that another window has emptied is left; what else fails is reported. */
+  #failed(phone: Phone | null, cause: unknown): void {
+    if (phone !== null && cause instanceof AppError && cause.kind === 'storeWiped') {
+      this.#leaveEmptied(phone).catch(report)
+    } else report(cause)
   }
 
   #open(cause: Cause): void {
@@ -89,6 +158,8 @@ export class FieldStore {
   }
 
   async #findWho(): Promise<void> {
+    // What was begun is gone on with before anybody opens a store that is half empty.
+    await resumeWipes(this.#wiping)
     const held = await currentPerson(this.#device)
     const asked = this.ports.network.online()
       ? askWho(this.ports)
@@ -96,7 +167,7 @@ export class FieldStore {
     if (held === null) {
       const who = await asked
       if (who.ok && !(await this.#isLeaving(who.value))) await this.#use(who.value)
-      else this.session.set({ kind: 'signedOut' })
+      else await this.#nobody()
       return
     }
     const soon = await Promise.race([asked, this.#after(PATIENCE_MS)])
@@ -123,11 +194,23 @@ export class FieldStore {
       indexed: this.#indexed,
       onBook: () => this.#askForBook(true),
       guideSafe: () => guideSafeOf(this.book.get().index),
-      failed: report,
+      failed: (cause) => this.#failed(this.phone.get(), cause),
+      onWipe: (wiped) => this.#empty(wiped),
+      onBlocked: () => this.trouble.set('blocked'),
       onRecord: () => {
         this.worker.askToSendLater().catch(() => undefined)
       },
     })
+    this.trouble.set('none')
+    const why = await readMeta(phone.core.db, 'wiping')
+    if (why !== undefined) {
+      // Closed for emptying, and killed before that was put down: nothing new can have come since.
+      const unsent = await countUnsent(phone.core.db)
+      await beginWipe(this.#wiping, { core: phone.core, actor, why, unsent })
+      await this.#leaveEmptied(phone)
+      return
+    }
+    phone.core.db.life.lost.subscribe(() => this.trouble.set('lost'))
     await setCurrent(this.#device, actor, this.ports.clock.now())
     if (!(await phone.isEnrolled())) await phone.enrol()
     this.phone.get()?.close()
@@ -135,7 +218,7 @@ export class FieldStore {
     const { deviceId } = phone
     this.session.set({ kind: 'ready', actor, shopId: actor.shopId, deviceId })
     phone.sender.poke('open')
-    phone.room.look().catch(() => undefined)
+    phone.room.watch(this.ports.timer, report)
     this.#askForBook(true)
   }
 
@@ -186,23 +269,18 @@ export class FieldStore {
   }
 
   #listen(): () => void {
-    if (typeof document === 'undefined') return () => undefined
-    const online = () => this.#open('online')
-    const visible = () => {
-      if (document.visibilityState !== 'visible') return
-      this.#open('visible')
-      this.worker.askForUpdate(this.ports.clock.now()).catch(() => undefined)
-    }
-    globalThis.addEventListener('online', online)
-    globalThis.addEventListener('pageshow', visible)
-    document.addEventListener('visibilitychange', visible)
-    return () => {
-      globalThis.removeEventListener('online', online)
-      globalThis.removeEventListener('pageshow', visible)
-      document.removeEventListener('visibilitychange', visible)
-    }
+    return listenToBrowser({
+      online: () => this.#open('online'),
+      visible: () => {
+        this.#open('visible')
+        this.worker.askForUpdate(this.ports.clock.now()).catch(() => undefined)
+      },
+      asleep: () => this.phone.get()?.sender.yieldTurn(),
+    })
   }
 }
+
+const none = (): void => undefined
 
 const isSame = (a: Actor, b: Actor) => a.shopId === b.shopId && a.personId === b.personId
 

@@ -2,6 +2,7 @@ import Dexie, { type DexieOptions, type Table } from 'dexie'
 import type { Id } from '@/lib/model/id'
 import type { Cursor } from '@/lib/sync/protocol/message'
 import type { OpKind } from '@/lib/sync/protocol/op'
+import { Lifeline } from './lifeline'
 import type { Sealed } from './seal'
 
 /** The shop's row and what the screens see of it: ids, times and sync fields plain, contents sealed (R22). */
@@ -11,6 +12,8 @@ export type RowRecord = {
   entity: string
   id: string
   jobId: Id | null
+  /** Of a job that was merged: the one that goes on (R13). */
+  mergedInto?: Id
   /** Change number of the shop's row held in `base`; null while the shop has none. */
   seq: number | null
   /** The turn it was written in: a cheap mark of "changed". */
@@ -49,16 +52,30 @@ export type OutboxRecord = {
   op: Sealed
 }
 
+/** A refused record that its person has given up sending: it is in every exported file from then on. */
+export type LetGoRecord = Omit<OutboxRecord, 'state'> & { state: 'letGo'; letGoAt: number }
+
+/** A photo or a voice note. Its bytes lie apart, so that what is told of it is read without them. */
 export type PhotoRecord = {
   hash: string
   jobId: Id
   mime: string
   size: number
   since: number
+  /** `sent`: the shop has confirmed the hash; the bytes are gone, the small copy stays. */
   state: 'waiting' | 'stuck' | 'sent'
   reason: string | null
-  bytes: Sealed
+  /** Bytes the shop has of it; null while its upload was not begun. Left out by version 1. */
+  uploaded?: number | null
+  /** When the shop confirmed it, ms. */
+  sentAt?: number | null
+  /** The small copy of a picture, sealed. */
+  thumb?: Sealed | null
+  /** Where version 1 kept the bytes. */
+  bytes?: Sealed | null
 }
+
+export type PhotoBytesRecord = { hash: string; bytes: Sealed }
 
 export type DraftRecord = { key: string; at: number; body: Sealed }
 
@@ -79,8 +96,16 @@ export type MetaValues = {
   /** When the tab that sends last moved (P19). */
   heartbeat: number
   setAside: { entity: string; id: string; seq: number }[]
+  /** What the person has not seen yet of what the shop did with their work, by job. */
+  notices: Notice[]
   storageAsked: boolean
+  /** Set when the store is being emptied: nothing is written into it any more. */
+  wiping: 'handedOver' | 'deleted'
+  /** What went with the store before this one (P22); `told` once its person has read it. */
+  lost: { ops: number; lastOn: string | null; told: boolean }
 }
+/** `reopened`: closed at the shop, and opened again by what this phone still had to say (R13). */
+export type Notice = { jobId: Id; what: 'reopened'; at: number }
 export type MetaName = keyof MetaValues
 type MetaRecord = { name: MetaName; value: unknown }
 
@@ -103,10 +128,13 @@ const phoneDbName = (shopId: Id, personId: Id) => `farbench-${shopId}-${personId
 export class PhoneDb extends Dexie {
   declare row: Table<RowRecord, string>
   declare outbox: Table<OutboxRecord, number>
+  declare letGo: Table<LetGoRecord, string>
   declare photo: Table<PhotoRecord, string>
+  declare photoBytes: Table<PhotoBytesRecord, string>
   declare draft: Table<DraftRecord, string>
   declare meta: Table<MetaRecord, MetaName>
   declare key: Table<KeyRecord, KeyRecord['name']>
+  readonly life: Lifeline = new Lifeline(this)
 
   constructor(shopId: Id, personId: Id, indexed: Indexed = {}) {
     super(phoneDbName(shopId, personId), { ...OPTIONS, ...indexed })
@@ -118,6 +146,8 @@ export class PhoneDb extends Dexie {
       meta: 'name',
       key: 'name',
     })
+    this.version(2).stores({ photoBytes: 'hash' })
+    this.version(3).stores({ letGo: 'opId' })
     // Another tab brings a newer version: let go, so that neither hangs (P25).
     this.on('versionchange', () => this.close({ disableAutoOpen: false }))
   }
@@ -146,6 +176,12 @@ export function findKey<N extends KeyRecord['name']>(
   name: N,
 ): Promise<Extract<KeyRecord, { name: N }> | undefined> {
   return db.key.get(name) as Promise<Extract<KeyRecord, { name: N }> | undefined>
+}
+
+/** The sealed bytes of a photo, wherever they lie; null when they went after the shop confirmed them. */
+export async function sealedPhoto(db: PhoneDb, photo: PhotoRecord): Promise<Sealed | null> {
+  const [held] = await db.photoBytes.bulkGet([photo.hash])
+  return held?.bytes ?? photo.bytes ?? null
 }
 
 /** Key of a row in the row store; also the place it is sealed for. */

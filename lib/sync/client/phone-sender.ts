@@ -1,8 +1,12 @@
+import { AppError } from '@/lib/model/result'
 import type { SyncPorts } from '@/lib/ports/sync-ports'
+import { BatchSize } from './batch-size'
 import { enrol } from './enrol'
 import type { SendKeys } from './keys'
 import { type PhoneDb, readMeta, writeMeta } from './phone-db'
-import { type BatchSize, type Progress, type RunEnd, type RunStore, SyncRun } from './sync-run'
+import { newPace } from './photo-turn'
+import type { RunEnd } from './run-end'
+import { type Progress, type RunStore, SyncRun } from './sync-run'
 import type { Need } from './views'
 import { Cell } from './watch'
 
@@ -16,20 +20,31 @@ export type SendState = {
   need: Need
 }
 
-/** P16: full jitter under a ceiling that doubles from 1 s to 5 min. */
+/**
+ * P16: full jitter under a ceiling that doubles from 1 s to 5 min. A shop that answers that it is busy has
+ * others to hear too: then it begins at 8 s, so that 50 phones do not come back as one.
+ */
 const FIRST_CEILING_MS = 1_000
+const BUSY_CEILING_MS = 8_000
 const LAST_CEILING_MS = 300_000
 /** How often an idle, visible phone asks what is new (a choice: one small request a minute). */
 const IDLE_MS = 60_000
 /** After a failure a new record waits for the timer unless the last try is this old. */
 const CALM_MS = 5_000
-/** A sender that has not moved for this long has lost its turn (P19). */
-const STALE_MS = 60_000
-const BEAT_MS = 15_000
+/**
+ * A sender that has not moved for this long has lost its turn (P19). With a beat and a look of the others
+ * every so often, another takes over within 60 s of the last sign of life.
+ */
+const STALE_MS = 50_000
+const BEAT_MS = 10_000
 
-/** Milliseconds to wait after so many failures in a row; `share` is an even random figure in [0, 1). */
-export function backoffMs(failures: number, share: number): number {
-  return share * Math.min(LAST_CEILING_MS, FIRST_CEILING_MS * 2 ** failures)
+/**
+ * Milliseconds to wait after so many failures in a row; `share` is an even random figure in [0, 1).
+ * `busy`: the shop itself asked to wait.
+ */
+export function backoffMs(failures: number, share: number, busy = false): number {
+  const first = busy ? BUSY_CEILING_MS : FIRST_CEILING_MS
+  return share * Math.min(LAST_CEILING_MS, first * 2 ** failures)
 }
 
 /** The one way anything leaves this phone, in the page and in the worker, under one lock (P19, P20). */
@@ -40,11 +55,16 @@ export class PhoneSender {
   readonly #keys: SendKeys
   readonly #ports: SyncPorts
   readonly #lockName: string
-  readonly #size: BatchSize = { limit: 500 }
+  readonly #size = new BatchSize()
+  readonly #pace = newPace()
   readonly #onBook: () => void
   readonly #failed: (cause: unknown) => void
+  readonly #onWipe: () => Promise<boolean>
+  readonly #onRun: () => Promise<void>
   #running: Promise<void> | null = null
   #again: boolean = false
+  /** Somebody asked for a new start while a run went on. */
+  #hurried: boolean = false
   #failures = 0
   #lastTryMs = Number.NEGATIVE_INFINITY
   #callOff: (() => void) | null = null
@@ -58,6 +78,10 @@ export class PhoneSender {
     shopId: string
     onBook?: () => void
     failed?: (cause: unknown) => void
+    /** The shop has all that was on this phone: empties it; false when something new came meanwhile. */
+    onWipe?: () => Promise<boolean>
+    /** Called after each run. */
+    onRun?: () => Promise<void>
   }) {
     this.#store = of.store
     this.#db = of.db
@@ -66,6 +90,8 @@ export class PhoneSender {
     this.#lockName = `sync:${of.shopId}`
     this.#onBook = of.onBook ?? (() => undefined)
     this.#failed = of.failed ?? (() => undefined)
+    this.#onWipe = of.onWipe ?? (() => Promise.resolve(false))
+    this.#onRun = of.onRun ?? (() => Promise.resolve())
   }
 
   /** Calls for a run and does not wait for it. */
@@ -77,7 +103,10 @@ export class PhoneSender {
   /** Runs, or has the present run go round once more; resolves when nothing is left to try. */
   sendNow(cause: Cause): Promise<void> {
     if (this.#stopped) return Promise.resolve()
-    if (cause !== 'record' && cause !== 'timer') this.#failures = 0
+    if (cause !== 'record' && cause !== 'timer') {
+      this.#failures = 0
+      this.#hurried = this.#running !== null
+    }
     this.#again = true
     this.#running ??= this.#rounds().finally(() => {
       this.#running = null
@@ -95,6 +124,11 @@ export class PhoneSender {
     this.#callOff?.()
   }
 
+  /** The browser is about to freeze this page: whoever else waits may go on at once (P19). */
+  yieldTurn(): void {
+    if (this.#running !== null) writeMeta(this.#db, 'heartbeat', 0).catch(() => undefined)
+  }
+
   #sinceLastTry(): number {
     return this.#ports.clock.now() - this.#lastTryMs
   }
@@ -105,14 +139,20 @@ export class PhoneSender {
       while (this.#again && !this.#stopped) {
         this.#again = false
         end = await this.#round()
+        if (end.kind === 'wipe' && (await this.#onWipe())) {
+          this.stop()
+          return
+        }
         const reached = end.kind !== 'unreachable'
         this.#tell({ reached, need: end.kind === 'need' ? end.need : null })
-        if (end.kind !== 'done') break
+        // A line that came back while the old try was still dying gets its own try.
+        if (end.kind !== 'done' && !this.#hurried) break
+        this.#hurried = false
       }
     } catch (cause) {
       // Another tab has taken over from this one, or the store fails: what is unsent stays, and is tried again.
       end = { kind: 'wait', afterMs: null }
-      this.#failed(cause)
+      if (!(cause instanceof AppError && cause.kind === 'turnTaken')) this.#failed(cause)
     }
     this.#schedule(end)
   }
@@ -134,7 +174,8 @@ export class PhoneSender {
   async #underLock(): Promise<RunEnd> {
     const stopBeating = this.#beat()
     try {
-      const end = await this.#oneRun()
+      // A run that is begun anew finds what the first part of it has done.
+      const end = await this.#db.life.run(() => this.#oneRun())
       return end.kind === 'enrol' ? await this.#enrolAndRun() : end
     } finally {
       stopBeating()
@@ -156,10 +197,12 @@ export class PhoneSender {
       store: await this.#store(),
       ports: this.#ports,
       size: this.#size,
+      pace: this.#pace,
       tell: (running) => this.#tell({ running }),
     })
     const end = await run.run()
     if (run.bookChanged) this.#onBook()
+    await this.#onRun()
     return end
   }
 
@@ -183,8 +226,9 @@ export class PhoneSender {
     const failed = end.kind === 'unreachable' || end.kind === 'wait'
     this.#failures = failed ? this.#failures + 1 : 0
     const asked = end.kind === 'wait' ? (end.afterMs ?? 0) : 0
+    const isBusy = end.kind === 'wait' && end.busy === true
     const delay = failed
-      ? asked + backoffMs(this.#failures, this.#ports.ids.share())
+      ? asked + backoffMs(this.#failures, this.#ports.ids.share(), isBusy)
       : IDLE_MS * (0.75 + this.#ports.ids.share() / 2)
     this.#callOff?.()
     this.#callOff = null

@@ -2,18 +2,21 @@ import { ENGINE_VERSION } from '@/lib/diag/version'
 import type { Id } from '@/lib/model/id'
 import type { LogBody } from '@/lib/model/log-entry'
 import type { Actor } from '@/lib/model/person'
-import type { Result } from '@/lib/model/result'
+import { AppError, ok, type Result } from '@/lib/model/result'
 import type { Instant } from '@/lib/model/time'
 import type { SyncPorts } from '@/lib/ports/sync-ports'
 import type { OpInput } from '@/lib/sync/protocol/op'
-import { type Answered, applyAnswer, settleRows } from './answer'
+import { settleRows } from './answer'
 import { type Core, OpenedCache } from './core'
 import { Drafts } from './drafts'
 import { deviceOf, type EnrolProblem, enrol } from './enrol'
 import type { RowOf, StoredEntity } from './entities'
-import { exportUnsent } from './export-file'
+import type { Sender } from './envelope'
+import { keepAnswer } from './keep-answer'
+import { remember } from './keepsake'
 import { openKeys } from './keys'
-import { type Indexed, PhoneDb, type PhotoRecord, readMeta, writeMeta } from './phone-db'
+import type { Answered } from './outcomes'
+import { type Indexed, type Notice, PhoneDb, readMeta, writeMeta } from './phone-db'
 import { PhoneSender } from './phone-sender'
 import { photoPlace, record } from './record'
 import { refuseByRole } from './refuse-by-role'
@@ -25,6 +28,7 @@ import type { RunStore } from './sync-run'
 import { watchUnsent } from './unsent-watch'
 import type { NewPhoto, PhotoView, StoredEntry, UnsentView } from './views'
 import { Cell, type Watch } from './watch'
+import { isWiped } from './wipe'
 
 export type PhoneOptions = {
   actor: Actor
@@ -34,8 +38,12 @@ export type PhoneOptions = {
   onBook?: () => void
   /** Called when something was kept that is to be sent. */
   onRecord?: () => void
+  /** Called when another window holds the store open in an older version, so that it cannot be opened yet. */
+  onBlocked?: () => void
   /** Checks and swaps of the code book that are safe for guides; none while there is no book. */
   guideSafe?: () => ReadonlySet<string>
+  /** Called when the shop has all that was on this phone and it is to be emptied (Q4). */
+  onWipe?: (phone: Phone) => Promise<boolean>
   /** Called when the store fails under a screen or the sender. */
   failed?: (cause: unknown) => void
   /** Tests let it throw at a step. */
@@ -61,7 +69,8 @@ export class Phone {
   static async open(options: PhoneOptions): Promise<Phone> {
     const { actor, ports } = options
     const db = new PhoneDb(actor.shopId, actor.personId, options.indexed)
-    const keys = await openKeys(db)
+    db.on('blocked', () => options.onBlocked?.())
+    const keys = await db.life.run(() => openKeys(db))
     const { deviceId } = await deviceOf(db, ports)
     const step = options.step ?? (() => undefined)
     const core: Core = { db, keys, personId: actor.personId, cache: new OpenedCache(), step }
@@ -71,6 +80,7 @@ export class Phone {
       await writeMeta(db, 'canary', { id: ports.ids.next(), madeAt: ports.clock.now() })
     }
     await settleRows(core)
+    await remember(db, ports, null)
     return phone
   }
 
@@ -97,16 +107,18 @@ export class Phone {
       ports: options.ports,
       shopId: options.actor.shopId,
       failed,
+      onWipe: async () => (await options.onWipe?.(this)) ?? false,
+      onRun: () => remember(core.db, options.ports, null),
       ...(options.onBook === undefined ? {} : { onBook: options.onBook }),
     })
     const { sender, room } = this
-    const online = () => options.ports.network.online()
     this.unsent = watchUnsent({
       core,
       state: sender.state,
       room: room.state,
       draftsKept,
-      online,
+      ports: options.ports,
+      now: () => this.stamp.now(),
       failed,
     })
   }
@@ -140,6 +152,20 @@ export class Phone {
 
   rows<E extends StoredEntity>(entity: E, jobId?: Id): Watch<RowOf<E>[] | undefined> {
     return this.#screens.rows(entity, jobId)
+  }
+
+  notices(jobId: Id): Watch<Notice[]> {
+    return this.#screens.notices(jobId)
+  }
+
+  /** The person has seen what there was to say of a job. */
+  async noticed(jobId: Id): Promise<void> {
+    const { db } = this.core
+    await db.transaction('rw', db.meta, async () => {
+      const held = (await readMeta(db, 'notices')) ?? []
+      const left = held.filter((notice) => notice.jobId !== jobId)
+      await writeMeta(db, 'notices', left)
+    })
   }
 
   log(jobId: Id): Watch<StoredEntry[] | undefined> {
@@ -177,13 +203,18 @@ export class Phone {
 
   /**
    * Keeps ops, rows, photos and finished drafts in one transaction (P1), then calls the sender. Throws
-   * AppError `notAllowed`, before anything is kept, for what the shop would refuse by role (R22).
+   * AppError `notAllowed`, before anything is kept, for what the shop would refuse by role (R22),
+   * `noRoomForPhoto` while records would still fit, `storeFull` when nothing does.
    */
   async record(
     ops: readonly OpInput[],
     more: { photos?: readonly NewPhoto[]; clearDrafts?: readonly string[] } = {},
   ): Promise<void> {
     const clearDrafts = more.clearDrafts ?? []
+    const photoBytes = (more.photos ?? []).reduce((sum, photo) => sum + photo.bytes.byteLength, 0)
+    if (photoBytes > 0 && !(await this.room.hasRoomFor(photoBytes))) {
+      throw new AppError('noRoomForPhoto')
+    }
     const { roles, personId } = this.#actor
     await refuseByRole(this.core, ops, { roles, personId, guideSafe: this.#guideSafe() })
     await this.drafts.settled(clearDrafts)
@@ -196,49 +227,76 @@ export class Phone {
       clearDrafts,
     })
     await this.drafts.finished(clearDrafts)
+    await remember(this.core.db, this.#ports, this.stamp.now())
     this.room.askToKeep().catch(() => undefined)
     this.#onRecord()
     this.sender.poke('record')
   }
 
-  /** All unsent work as one file (P23). */
-  exportFile(): Promise<Blob> {
-    return exportUnsent(this.core, {
-      shopId: this.actor.shopId,
-      personId: this.actor.personId,
+  /** Does a refused step again from where things stand now; or says in one sentence why it cannot. */
+  async redo(opId: Id): Promise<Result<null, { words: string }>> {
+    const { redoOf } = await import('./redo')
+    const again = await redoOf(this.core, opId)
+    if (!again.ok) return again
+    const { record: refused, input } = again.value
+    await record(this.core, {
+      ops: [input],
+      ids: [this.#ports.ids.next()],
       deviceId: this.#deviceId,
-      at: this.stamp.instant(),
+      nowMs: this.stamp.now(),
+      photos: [],
+      clearDrafts: [],
+      insteadOf: refused,
     })
+    this.#onRecord()
+    this.sender.poke('tap')
+    return ok(null)
+  }
+
+  /** Gives up sending something that is stuck: a record by its op id, or a photo by its hash. */
+  async letGo(of: { opId: Id } | { hash: string }): Promise<void> {
+    const { letPhotoGo, letRecordGo } = await import('./let-go')
+    if ('opId' in of) await letRecordGo(this.core, of.opId, this.stamp.now())
+    else await letPhotoGo(this.core, of.hash)
+  }
+
+  /** All unsent work as signed files, mostly one (P23). */
+  async exportFiles(): Promise<Blob[]> {
+    const { exportUnsent } = await import('./export-file')
+    return await exportUnsent(this.core, await this.#asSender(), this.stamp.instant())
   }
 
   /** Stops sending and lets go of the store; everything stays on the phone. */
   close(): void {
     this.sender.stop()
+    this.room.end()
+    this.core.db.life.end()
     this.core.db.close()
   }
 
   async #runStore(): Promise<RunStore> {
+    if (await isWiped(this.core.db)) throw new AppError('storeWiped')
     await settleRows(this.core)
     const { db, keys, step } = this.core
-    const device = await deviceOf(db, this.#ports)
     return {
       db,
       outboxKey: keys.outbox,
-      sender: {
-        shopId: this.actor.shopId,
-        personId: this.actor.personId,
-        deviceId: device.deviceId,
-        pair: keys.device,
-      },
+      sender: await this.#asSender(),
       pull: true,
       apply: (answered) => this.#apply(answered),
-      openPhoto: (photo: PhotoRecord) => openBytes(keys.store, photoPlace(photo.hash), photo.bytes),
+      openPhoto: (hash, sealed) => openBytes(keys.store, photoPlace(hash), sealed),
       step,
     }
   }
 
+  async #asSender(): Promise<Sender> {
+    const { shopId, personId } = this.actor
+    const { deviceId } = await deviceOf(this.core.db, this.#ports)
+    return { shopId, personId, deviceId, pair: this.core.keys.device }
+  }
+
   #apply(answered: Answered) {
     this.stamp.offsetMs = answered.offsetMs
-    return applyAnswer(this.core, answered)
+    return keepAnswer(this.core, answered)
   }
 }

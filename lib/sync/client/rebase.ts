@@ -7,13 +7,24 @@ import { openJson, type Sealed, sealJson } from './seal'
 /**
  * Works out rows again: the shop's row with this phone's ops on top, in the order they were made (P9).
  * An op stays on top until a whole pull has been applied after the shop took it. A refused op that only
- * adds something stays too (the work is kept and shown); a refused move does not.
+ * adds something stays too (the work is kept and shown); a refused change does not.
  */
-const MOVES: readonly Op['kind'][] = ['job.move', 'job.people', 'job.machine']
+const ADDS: ReadonlySet<Op['kind']> = new Set([
+  'machine.add',
+  'job.open',
+  'log.add',
+  'partRequest.ask',
+  'partLine.add',
+  'advice.keep',
+])
 
 /** True while an op of the outbox lies on top of the shop's rows. */
 export const isOnTop = (record: Pick<OutboxRecord, 'state' | 'kind'>): boolean =>
-  record.state === 'stuck' ? !MOVES.includes(record.kind) : record.state !== 'done'
+  record.state === 'stuck' ? ADDS.has(record.kind) : record.state !== 'done'
+
+/** What counts would count twice on a row that has it already: it goes as soon as that row comes. */
+export const isCounted = (record: Pick<OutboxRecord, 'kind'>): boolean =>
+  record.kind === 'partLine.quantity'
 
 /** Ops that lie on top, oldest first, by the key of each row they touch. */
 export type Overlay = Map<string, { at: Touched; ops: Op[] }>
@@ -40,7 +51,13 @@ export async function readOverlay(
   return overlay
 }
 
-type Shop = { base: Sealed | null; seq: number | null; gen: number; jobId: string | null }
+type Shop = {
+  base: Sealed | null
+  seq: number | null
+  gen: number
+  jobId: string | null
+  mergedInto?: string
+}
 
 /** The record of a row with its ops on top of `shop`; null when nothing is left of it. */
 export async function rebasedRow(
@@ -57,5 +74,7 @@ export async function rebasedRow(
   const top = entry.ops.reduce((row, op) => applyOpLocally(row, entry.at, op, who), base)
   if (top === undefined) return null
   if (top === base) return record
-  return { ...record, jobId: entry.at.jobId, body: await sealJson(core.keys.store, key, top) }
+  // The shop knows under which job a row is shown, should that have been merged (R13).
+  const jobId = shop.base === null ? entry.at.jobId : shop.jobId
+  return { ...record, jobId, body: await sealJson(core.keys.store, key, top) }
 }

@@ -5,10 +5,13 @@ import { type Op, type OpInput, op as opShape } from '@/lib/sync/protocol/op'
 import { applyOpLocally, rowsTouched, type Touched } from './apply-op'
 import { commit, noWrites, type Writes } from './commit'
 import { type Core, opPlace } from './core'
+import { isFull, withRoom } from './free-room'
+import { letGoWrites } from './let-go-writes'
 import { type OutboxRecord, type PhotoRecord, type RowRecord, readMeta, rowKey } from './phone-db'
-import { sealBytes, sealJson } from './seal'
+import { type Sealed, sealBytes, sealJson } from './seal'
 import { stampOps } from './stamp'
 import type { NewPhoto } from './views'
+import { isWiped } from './wipe'
 
 /** What one call keeps together. */
 export type Recorded = {
@@ -19,26 +22,34 @@ export type Recorded = {
   nowMs: number
   photos: readonly NewPhoto[]
   clearDrafts: readonly string[]
+  /** A refused record that these take the place of: it is let go in the same transaction. */
+  insteadOf?: OutboxRecord
 }
 
 /**
  * Keeps ops with the rows they change, their photos and the drafts they finish, all in one transaction
  * (P1): after a kill at any moment either all of it is there or none. Throws AppError `badRecord` when
- * an op has not the shape the shop takes, `recordTooBig`, or `storeFull` when the phone has no room;
- * drafts then stay.
+ * an op has not the shape the shop takes, `recordTooBig`, and when the phone has no room `noRoomForPhoto`
+ * (the same record without a photo may fit) or `storeFull`; drafts then stay.
  */
 export async function record(core: Core, of: Recorded): Promise<void> {
   const photos = await Promise.all(of.photos.map((photo) => sealPhoto(core, photo, of.nowMs)))
   core.step('photosSealed')
   try {
-    await commit(core, () => prepare(core, of, photos))
+    await withRoom(core, () => commit(core, () => prepare(core, of, photos)))
   } catch (cause) {
-    if (isFull(cause)) throw new AppError('storeFull', { cause })
-    throw cause
+    if (!isFull(cause)) throw cause
+    throw new AppError(photos.length > 0 ? 'noRoomForPhoto' : 'storeFull', { cause })
   }
 }
 
-async function prepare(core: Core, of: Recorded, photos: PhotoRecord[]): Promise<Writes> {
+async function prepare(core: Core, of: Recorded, photos: SealedPhoto[]): Promise<Writes | null> {
+  // Written already, though the word of it was lost with the connection.
+  const [firstId] = of.ids
+  if (firstId !== undefined && (await core.db.outbox.where('opId').equals(firstId).count()) > 0) {
+    return null
+  }
+  if (await isWiped(core.db)) throw new AppError('storeWiped')
   const { ops, counter } = await stampOps({
     db: core.db,
     inputs: of.ops,
@@ -49,9 +60,11 @@ async function prepare(core: Core, of: Recorded, photos: PhotoRecord[]): Promise
   const checked = ops.map(checkedOp)
   return {
     ...noWrites(),
+    ...(of.insteadOf === undefined ? {} : letGoWrites([of.insteadOf], of.nowMs)),
     outbox: await Promise.all(checked.map((op) => sealOp(core, op, of.nowMs))),
     rows: await changedRows(core, checked),
-    photos,
+    photos: photos.map(({ about }) => about),
+    photoBytes: photos.map(({ about, bytes }) => ({ hash: about.hash, bytes })),
     dropDrafts: [...of.clearDrafts],
     meta: { stamp: counter },
   }
@@ -87,21 +100,30 @@ async function sealOp(core: Core, op: Op, nowMs: number): Promise<OutboxRecord> 
   }
 }
 
-async function sealPhoto(core: Core, photo: NewPhoto, nowMs: number): Promise<PhotoRecord> {
-  return {
-    hash: photo.hash,
-    jobId: photo.jobId,
-    mime: photo.mime,
-    size: photo.bytes.byteLength,
+type SealedPhoto = { about: PhotoRecord; bytes: Sealed }
+
+async function sealPhoto(core: Core, photo: NewPhoto, nowMs: number): Promise<SealedPhoto> {
+  const { hash, jobId, mime, bytes, thumb } = photo
+  const { store } = core.keys
+  const about: PhotoRecord = {
+    hash,
+    jobId,
+    mime,
+    size: bytes.byteLength,
     since: nowMs,
     state: 'waiting',
     reason: null,
-    bytes: await sealBytes(core.keys.store, photoPlace(photo.hash), photo.bytes),
+    uploaded: null,
+    sentAt: null,
+    thumb: thumb === undefined ? null : await sealBytes(store, thumbPlace(hash), thumb),
   }
+  return { about, bytes: await sealBytes(store, photoPlace(hash), bytes) }
 }
 
 /** The place a photo is sealed for. */
 export const photoPlace = (hash: string) => `photo/${hash}`
+/** The place the small copy of a photo is sealed for. */
+export const thumbPlace = (hash: string) => `thumb/${hash}`
 
 /** Every row the ops change, as it is after all of them. */
 async function changedRows(core: Core, ops: Op[]): Promise<Omit<RowRecord, 'turn'>[]> {
@@ -139,17 +161,11 @@ async function changedRow(
     key,
     entity: at.entity,
     id: at.id,
-    jobId: at.jobId,
+    jobId: held?.jobId ?? at.jobId,
+    ...(held?.mergedInto === undefined ? {} : { mergedInto: held.mergedInto }),
     seq: held?.seq ?? null,
     gen: held?.gen ?? of.gen,
     base: held?.base ?? null,
     body,
   }
-}
-
-/** IndexedDB's word for "no room", also as the cause of an aborted transaction. */
-function isFull(cause: unknown): boolean {
-  if (typeof cause !== 'object' || cause === null) return false
-  const { name, inner } = cause as { name?: unknown; inner?: unknown }
-  return name === 'QuotaExceededError' || isFull(inner)
 }

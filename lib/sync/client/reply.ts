@@ -43,7 +43,8 @@ export function readReply(sent: Result<Answer, NetworkProblem>, nowMs: number): 
   return refusal(answer.status, kindOf(json))
 }
 
-function refusal(status: number, kind: string): Reply {
+/** What a refusal of ours means, by its status and kind. */
+export function refusal(status: number, kind: string): Exclude<Reply, { kind: 'ours' }> {
   if (HURT_ON_THE_WAY.includes(kind)) return { kind: 'later', afterMs: null }
   if (kind === 'unknownDevice') return { kind: 'enrol' }
   switch (status) {

@@ -1,8 +1,8 @@
 import type { Id } from '@/lib/model/id'
 import type { Instant } from '@/lib/model/time'
 import type { SyncPorts } from '@/lib/ports/sync-ports'
+import { FIRST_HLC, nextHlc } from '@/lib/sync/protocol/hlc'
 import { OP_SCHEMA, type Op, type OpInput } from '@/lib/sync/protocol/op'
-import { FIRST_HLC, nextHlc } from './hlc'
 import { type PhoneDb, readMeta, rowKey } from './phone-db'
 
 /** The phone's clock put right by the last offset the shop measured (sync.md 3.4). */
@@ -72,6 +72,8 @@ function placeOf(input: OpInput): { entity: string; entityId: Id; jobId: Id | nu
     case 'job.move':
     case 'job.people':
     case 'job.machine':
+    case 'job.set':
+    case 'job.settle':
       return { entity: 'job', entityId: input.jobId, jobId: input.jobId }
     case 'log.add':
       return { entity: 'logEntry', entityId: input.fields.id, jobId: input.fields.jobId }
@@ -79,5 +81,15 @@ function placeOf(input: OpInput): { entity: string; entityId: Id; jobId: Id | nu
       return { entity: 'partRequest', entityId: input.fields.id, jobId: input.fields.jobId }
     case 'advice.keep':
       return { entity: 'advice', entityId: input.fields.id, jobId: input.fields.jobId }
+    case 'machine.set':
+    case 'machine.settle':
+    case 'machine.drop':
+      return { entity: 'machine', entityId: input.machineId, jobId: null }
+    case 'partLine.add':
+    case 'partLine.cancel':
+    case 'partLine.quantity':
+      return { entity: 'partRequest', entityId: input.fields.requestId, jobId: input.jobId }
+    case 'partRequest.drop':
+      return { entity: 'partRequest', entityId: input.requestId, jobId: input.jobId }
   }
 }

@@ -1,13 +1,19 @@
 import type { SyncPorts } from '@/lib/ports/sync-ports'
 import { type SyncResponse, syncResponse } from '@/lib/sync/protocol/message'
 import type { Op } from '@/lib/sync/protocol/op'
-import { type Answered, type Applied, setAside } from './answer'
+import type { BatchSize } from './batch-size'
 import { openOp } from './core'
 import { packRequest, type Sender, signedHeaders } from './envelope'
+import { heldBeyond } from './held'
 import { measureOffset } from './hlc'
-import { type OutboxRecord, type PhoneDb, type PhotoRecord, readMeta, writeMeta } from './phone-db'
-import { markPhoto, nextPhoto, sendPhoto } from './photo-upload'
+import { offerAll } from './offer-all'
+import { type Answered, type Applied, setAside } from './outcomes'
+import { type OutboxRecord, type PhoneDb, readMeta, writeMeta } from './phone-db'
+import type { Pace } from './photo-pace'
+import type { PhotoStore } from './photo-run'
+import { PhotoTurn } from './photo-turn'
 import { type Reply, readReply } from './reply'
+import { endOf, type RunEnd } from './run-end'
 import type { Need } from './views'
 
 /** What a run needs of a store; the worker's has no rows and perhaps no photos. */
@@ -17,33 +23,19 @@ export type RunStore = {
   sender: Sender
   pull: boolean
   apply(answered: Answered): Promise<Applied>
-  /** Null when this sender cannot open photos. */
-  openPhoto: ((photo: PhotoRecord) => Promise<ArrayBuffer>) | null
+  openPhoto: PhotoStore['openPhoto']
   step(name: string): void
 }
 
 export type Progress = { done: number; total: number }
 
-/** How a run ended. `wait`: not everything went; try again after a while. */
-export type RunEnd =
-  | { kind: 'done' }
-  | { kind: 'unreachable' }
-  | { kind: 'wait'; afterMs: number | null }
-  | { kind: 'enrol' }
-  | { kind: 'need'; need: Exclude<Need, null> }
-
-/** Most ops of one request, between runs: halved when one fails, doubled when one goes (P15). */
-export type BatchSize = { limit: number }
-
-const FULL = 500
-const LEAST = 25
-/** A try that failed sooner met no line at all (a choice). */
-const UNDER_WAY_MS = 2_000
 const MOST_RESETS = 2
+/** While photos go, the shop is asked what is new as often as by an idle phone. */
+const PULL_EVERY_MS = 60_000
 
 /**
- * One run: records first, oldest first, with the pull in the same request (P3); then photos, one at a
- * time, each time looking for new records before the next. It ends when nothing is left to do.
+ * One run: records first, oldest first, with the pull in the same request (P3); then photos, one chunk at
+ * a time, each time looking for new records before the next (PH3). It ends when nothing is left to do.
  */
 export class SyncRun {
   bookChanged: boolean = false
@@ -51,9 +43,15 @@ export class SyncRun {
   #waits: boolean = false
   #upToDate: boolean
   #resets = 0
+  /** The shop's last word: this phone was taken out, and nothing is left on it. */
+  #wipe: boolean = false
+  #offered: boolean = false
+  /** Photos it was told of that had not gone. */
+  #toldPhotos = 0
   /** Sent in this run without being taken: not sent again in it. */
   readonly #heldOps = new Set<number>()
-  readonly #heldPhotos = new Set<string>()
+  readonly #photos: PhotoTurn
+  #pulledMs: number
   readonly #store: RunStore
   readonly #ports: SyncPorts
   readonly #size: BatchSize
@@ -64,6 +62,7 @@ export class SyncRun {
     store: RunStore
     ports: SyncPorts
     size: BatchSize
+    pace: Pace
     tell: (progress: Progress) => void
   }) {
     this.#store = of.store
@@ -71,6 +70,8 @@ export class SyncRun {
     this.#size = of.size
     this.#tell = of.tell
     this.#upToDate = !of.store.pull
+    this.#photos = new PhotoTurn(of.store, of.ports, of.pace)
+    this.#pulledMs = of.ports.clock.now()
   }
 
   async run(): Promise<RunEnd> {
@@ -79,16 +80,33 @@ export class SyncRun {
       const end = (await this.#records()) ?? (await this.#photo())
       if (end === 'sent') continue
       if (end !== null) return end
+      if (await this.#tellsAgain()) continue
+      if (this.#wipe) return { kind: 'wipe' }
       if (this.#need !== null) return { kind: 'need', need: this.#need }
-      return this.#waits ? { kind: 'wait', afterMs: null } : { kind: 'done' }
+      return this.#waits || this.#photos.waits ? { kind: 'wait', afterMs: null } : { kind: 'done' }
     }
   }
 
+  /**
+   * True when the shop is to hear once more: photos it was told of have gone since; or it takes this phone
+   * out, and what it once refused is offered before anything is emptied (Q4).
+   */
+  async #tellsAgain(): Promise<boolean> {
+    const { db } = this.#store
+    const left = await db.photo.where('state').equals('waiting').count()
+    const hasNews = this.#toldPhotos > left
+    const offers = this.#wipe && !this.#offered && (await offerAll(this.#store))
+    this.#offered ||= this.#wipe
+    if (!hasNews && !offers) return false
+    this.#toldPhotos = left
+    this.#wipe = false
+    this.#upToDate = false
+    return true
+  }
+
   async #count(): Promise<void> {
-    const { db, openPhoto } = this.#store
     const ops = await this.#toSend()
-    const photos = openPhoto === null ? 0 : await db.photo.where('state').equals('waiting').count()
-    this.#progress = { done: 0, total: ops.length + photos }
+    this.#progress = { done: 0, total: ops.length + (await this.#photos.count()) }
   }
 
   async #toSend(): Promise<OutboxRecord[]> {
@@ -109,9 +127,10 @@ export class SyncRun {
 
   async #exchange(records: OutboxRecord[]): Promise<RunEnd | null> {
     const { db, sender, step, outboxKey } = this.#store
-    const front = records.slice(0, Math.min(this.#size.limit, FULL))
+    const front = records.slice(0, this.#size.limit)
     const ops: Op[] = await Promise.all(front.map((record) => openOp(outboxKey, record)))
     const cursor = (await readMeta(db, 'cursor')) ?? null
+    const held = await heldBeyond(db, records)
     const sentMs = this.#ports.clock.now()
     const packed = await packRequest({
       ops,
@@ -119,7 +138,10 @@ export class SyncRun {
       cursor: this.#store.pull ? cursor : null,
       pull: this.#store.pull,
       clientTime: new Date(sentMs).toISOString(),
+      held,
+      canary: (await readMeta(db, 'canary'))?.id ?? null,
     })
+    this.#toldPhotos = held(0).photos
     const signed = await signedHeaders(sender, packed.dseq, packed.body)
     step('beforeSend')
     const answer = await this.#ports.network.send({
@@ -131,7 +153,9 @@ export class SyncRun {
     step('afterSend')
     const reply = readReply(answer, this.#ports.clock.now())
     const batch = front.slice(0, packed.count)
-    if (reply.kind === 'unreachable') this.#halveAfter(this.#ports.clock.now() - sentMs)
+    if (reply.kind === 'unreachable') {
+      this.#size.cut(batch.length, this.#ports.clock.now() - sentMs)
+    }
     if (reply.kind !== 'ours') return this.#notTaken(reply, batch)
     const response = syncResponse.safeParse(reply.json)
     if (!response.success) return this.#notTaken({ kind: 'unreachable' }, batch)
@@ -147,7 +171,7 @@ export class SyncRun {
   }): Promise<void> {
     const { db, apply } = this.#store
     const { response } = of
-    this.#size.limit = Math.min(FULL, this.#size.limit * 2)
+    this.#size.arrived()
     const receivedMs = this.#ports.clock.now()
     const held = await readMeta(db, 'clockOffset')
     const serverMs = Date.parse(response.serverTime)
@@ -163,8 +187,11 @@ export class SyncRun {
     })
     this.bookChanged ||= applied.bookChanged
     if (applied.wasReset) this.#resets += 1
+    if (applied.noRoom === true) this.#need = 'room'
+    this.#wipe = response.order === 'wipe'
     if (response.pull.kind === 'signIn') this.#need = 'signIn'
     this.#upToDate = !applied.more
+    this.#pulledMs = receivedMs
     await this.#holdWhatStays(of.batch)
   }
 
@@ -186,44 +213,25 @@ export class SyncRun {
     this.#tell(this.#progress)
   }
 
-  /** A request that was under way when it was cut goes in smaller parts; one that never left does not. */
-  #halveAfter(tookMs: number): void {
-    if (tookMs < UNDER_WAY_MS || this.#size.limit <= LEAST) return
-    this.#size.limit = Math.max(LEAST, this.#size.limit >> 1)
-  }
-
   #notTaken(
     reply: Exclude<Reply, { kind: 'ours' }>,
     batch: OutboxRecord[],
   ): Promise<RunEnd | null> | RunEnd {
     if (reply.kind === 'smaller') return this.#smaller(batch, 'too_big')
     if (reply.kind === 'never') return this.#smaller(batch, 'invalid')
-    return this.#endOf(reply)
-  }
-
-  #endOf(reply: Exclude<Reply, { kind: 'ours' | 'smaller' | 'never' }>): RunEnd {
-    switch (reply.kind) {
-      case 'unreachable':
-        return { kind: 'unreachable' }
-      case 'later':
-        return { kind: 'wait', afterMs: reply.afterMs }
-      case 'enrol':
-        return { kind: 'enrol' }
-      default:
-        return { kind: 'need', need: reply.kind }
-    }
+    return endOf(reply)
   }
 
   /** Halves what is sent until the one op is found that the shop will not have; that one is set aside. */
   async #smaller(batch: OutboxRecord[], reason: string): Promise<RunEnd | null> {
     const [only] = batch
     if (batch.length > 1) {
-      this.#size.limit = Math.max(1, batch.length >> 1)
+      this.#size.tooMuch(batch.length)
       return null
     }
     if (only === undefined) return this.#dropCursor()
     await setAside(this.#store, { dseqs: [only.dseq], reason, detail: null })
-    this.#size.limit = FULL
+    this.#size.reset()
     this.#advance(1)
     return null
   }
@@ -238,21 +246,13 @@ export class SyncRun {
   }
 
   async #photo(): Promise<RunEnd | 'sent' | null> {
-    const { db, openPhoto, sender } = this.#store
-    const photo = openPhoto === null ? undefined : await nextPhoto(db, this.#heldPhotos)
-    if (photo === undefined || openPhoto === null) return null
-    const reply = await sendPhoto(this.#ports, sender, photo, await openPhoto(photo))
-    this.#heldPhotos.add(photo.hash)
-    if (reply.kind === 'ours') {
-      await markPhoto(db, photo.hash, { state: 'sent', reason: null })
-    } else if (reply.kind === 'never' || reply.kind === 'smaller') {
-      const reason = reply.kind === 'never' ? reply.code : 'too_big'
-      await markPhoto(db, photo.hash, { state: 'stuck', reason })
-    } else if (reply.kind === 'later') {
-      // One photo that has to wait does not hold up the others.
-      this.#waits = true
-    } else return this.#endOf(reply)
-    this.#advance(1)
+    const went = await this.#photos.next()
+    if (went === 'over') this.#advance(1)
+    if (went !== 'over' && went !== 'moved') return went
+    // Photos may take long: what the shop has to say is not left waiting for them.
+    if (this.#store.pull && this.#ports.clock.now() - this.#pulledMs > PULL_EVERY_MS) {
+      this.#upToDate = false
+    }
     return 'sent'
   }
 }

@@ -1,5 +1,7 @@
 import type { Id } from '@/lib/model/id'
-import type { Op } from '@/lib/sync/protocol/op'
+import type { JobSetting, MachineSetting } from '@/lib/model/setting'
+import type { Op, OpKind } from '@/lib/sync/protocol/op'
+import { wordsOf } from './op-words'
 import type { OutboxRecord, PhotoRecord } from './phone-db'
 import type { UnsentItem, UnsentView } from './views'
 
@@ -13,8 +15,11 @@ export const NOTHING_UNSENT: UnsentView = {
   stuckCount: 0,
   sending: null,
   online: false,
+  stalled: null,
+  letGoCount: 0,
   storageKept: null,
   quotaShare: null,
+  freeBytes: null,
   needs: null,
   fetchedAt: null,
   setAside: 0,
@@ -33,30 +38,70 @@ const REFUSALS: Readonly<Record<string, string>> = {
   stale_status: 'The shop has moved this on in the meantime.',
   not_yours: 'The shop has this under another person or phone.',
   wrongPicture: 'The shop cannot read this picture.',
-  hasPosition: 'The picture still says where it was taken, so the shop refuses it.',
+  tooManyPixels: 'The picture has more pixels than the shop opens.',
+  wrongVoice: 'The shop cannot read this voice note.',
+  hasPosition: 'The file still says where it was made, so the shop refuses it.',
+  entryLetGo: 'Its entry in the log was let go, so the shop does not ask for it.',
+  bytesGone: 'The shop has lost this file, and the phone no longer holds the whole of it.',
 }
 const REFUSED = 'The shop refused this record.'
+
+/** The sentence for a refusal's code. */
+export const refusalWords = (code: string | null): string => REFUSALS[code ?? ''] ?? REFUSED
+
 const BLOCKED = 'Waits for a record before it that the shop does not have.'
+
+const JOB_FIELD_TITLES: Readonly<Record<JobSetting['field'], string>> = {
+  complaintWords: 'Complaint',
+  place: 'Place',
+  airTempC: 'Air temperature',
+  weather: 'Weather',
+}
+const MACHINE_FIELD_TITLES: Readonly<Record<MachineSetting['field'], string>> = {
+  hours: 'Engine hours',
+  unitNumber: 'Unit number',
+  serial: 'Serial number',
+  year: 'Year of the machine',
+}
+
+/** Kinds that are called by what they are about have no name of their own here. */
+const OP_TITLES: Readonly<Record<Exclude<OpKind, 'log.add' | 'job.set' | 'machine.set'>, string>> =
+  {
+    'machine.add': 'Machine',
+    'job.open': 'New job',
+    'job.move': 'Job state',
+    'job.people': 'Where the people are',
+    'job.machine': 'How the machine stands',
+    'partRequest.ask': 'Part request',
+    'advice.keep': 'Advice followed or not',
+    'job.settle': 'Looked at what else was entered',
+    'machine.settle': 'Looked at what else was entered',
+    'partLine.add': 'One more part line',
+    'partLine.cancel': 'Part line cancelled',
+    'partLine.quantity': 'Quantity of a part line',
+    'partRequest.drop': 'Part request taken back',
+    'machine.drop': 'Machine taken back',
+  }
+
+/** What a kind of record is called; undefined for one this version does not know. */
+export function opTitle(kind: string): string | undefined {
+  if (kind === 'log.add') return 'Line of the job log'
+  if (kind === 'job.set') return 'Value of a job'
+  if (kind === 'machine.set') return 'Value of a machine'
+  return Object.hasOwn(OP_TITLES, kind) ? OP_TITLES[kind as keyof typeof OP_TITLES] : undefined
+}
 
 /** What a record is: a line of the log itself, else a few plain words. */
 function whatOf(op: Op): UnsentItem['what'] {
   switch (op.kind) {
-    case 'machine.add':
-      return 'Machine'
-    case 'job.open':
-      return 'New job'
-    case 'job.move':
-      return 'Job state'
-    case 'job.people':
-      return 'Where the people are'
-    case 'job.machine':
-      return 'How the machine stands'
     case 'log.add':
       return op.fields.body
-    case 'partRequest.ask':
-      return 'Part request'
-    case 'advice.keep':
-      return 'Advice followed or not'
+    case 'job.set':
+      return JOB_FIELD_TITLES[op.fields.field]
+    case 'machine.set':
+      return MACHINE_FIELD_TITLES[op.fields.field]
+    default:
+      return OP_TITLES[op.kind]
   }
 }
 
@@ -73,9 +118,13 @@ export function opItem(record: OutboxRecord, op: Op, sending: boolean): UnsentIt
     jobId: record.jobId,
     what: whatOf(op),
     bytes: record.bytes,
+    bytesDone: 0,
     since: instantOf(record.since),
     state: moving ? 'sending' : stateOf(record.state),
     reason: reasonOf(record),
+    waitsFor: null,
+    code: record.state === 'stuck' ? record.reason : null,
+    words: wordsOf(op),
   }
 }
 
@@ -92,9 +141,10 @@ function reasonOf(record: Pick<OutboxRecord, 'state' | 'reason' | 'detail'>): st
 }
 
 /** `waitingParts` as words. */
-const stateWords = (state: string) => state.replace(/[A-Z]/g, (big) => ` ${big.toLowerCase()}`)
+export const stateWords = (state: string) =>
+  state.replace(/[A-Z]/g, (big) => ` ${big.toLowerCase()}`)
 
-/** An unsent photo as the screen lists it. */
+/** An unsent photo or voice note as the screen lists it. */
 export function photoItem(photo: PhotoRecord, sending: boolean): UnsentItem {
   const stuck = photo.state === 'stuck'
   return {
@@ -103,11 +153,15 @@ export function photoItem(photo: PhotoRecord, sending: boolean): UnsentItem {
     hash: photo.hash,
     kind: 'photoBytes',
     jobId: photo.jobId,
-    what: 'Photo',
+    what: photo.mime.startsWith('audio/') ? 'Voice note' : 'Photo',
     bytes: photo.size,
+    bytesDone: photo.uploaded ?? 0,
     since: instantOf(photo.since),
     state: stuck ? 'stuck' : sending ? 'sending' : 'waiting',
+    waitsFor: null,
     reason: stuck ? (REFUSALS[photo.reason ?? ''] ?? REFUSED) : null,
+    code: stuck ? photo.reason : null,
+    words: null,
   }
 }
 
@@ -118,11 +172,32 @@ export function summed(
   const since = items.map((item) => item.since).sort()
   return {
     count: items.length,
-    bytes: items.reduce((sum, item) => sum + item.bytes, 0),
+    bytes: items.reduce((sum, item) => sum + item.bytes - item.bytesDone, 0),
     oldestAt: since[0] ?? null,
     items,
     stuckCount: items.filter((item) => item.state === 'stuck').length,
   }
+}
+
+/** Blocked items say on what they wait: the record that is to land first, and that it is stuck when it is. */
+export function withWaits(
+  items: readonly UnsentItem[],
+  records: readonly { record: OutboxRecord; op: Op }[],
+): UnsentItem[] {
+  return items.map((item, at) => {
+    const mine = records[at]?.record
+    if (item.state !== 'blocked' || mine === undefined) return item
+    const first = records.find(
+      ({ record }) =>
+        record.dseq !== mine.dseq &&
+        (record.opId === mine.reason || record.entityId === mine.reason),
+    )
+    if (first === undefined) return item
+    return {
+      ...item,
+      waitsFor: { what: whatOf(first.op), isStuck: first.record.state === 'stuck' },
+    }
+  })
 }
 
 /** Ids of entities with a record the shop does not have yet. */

@@ -2,11 +2,13 @@ import * as z from 'zod/mini'
 import { id } from '@/lib/model/id'
 
 /** Version of the messages; the server takes this one and the one before (P13). */
-export const PROTOCOL = 1
+export const PROTOCOL = 2
 export const MAX_OPS = 500
 export const MAX_OP_BYTES = 16_384
 export const MAX_INFLATED_BYTES = 8 * 1024 * 1024
 export const PAGE_ROWS = 500
+
+const count = z.int().check(z.minimum(0))
 
 /** Where a device stands in its shop's change log (P12). `seq` is the shop's dense change number. */
 export const cursor = z.strictObject({
@@ -32,6 +34,18 @@ export const syncRequest = z.object({
   cursor: z.nullable(cursor),
   /** False when the device only pushes (a worker without a session). */
   pull: z.boolean(),
+  /** Since protocol 2: what the phone still holds beyond this batch, so that the desk can say so. */
+  held: z.optional(
+    z.nullable(
+      z.object({
+        ops: count,
+        photos: count,
+        oldestAt: z.nullable(z.string().check(z.maxLength(40))),
+      }),
+    ),
+  ),
+  /** Since protocol 2: the id written when this phone's store was made (P22). */
+  canary: z.optional(z.nullable(id)),
 })
 export type SyncRequest = z.infer<typeof syncRequest>
 
@@ -47,7 +61,7 @@ export const REJECT_CODES = [
   'not_yours',
 ] as const
 
-/** Only what is not simply accepted is itemised (P5). */
+/** Only what is not simply accepted is itemised (P5). `merged`: taken, and `loser` is what did not stand (M2). */
 export const opResult = z.discriminatedUnion('result', [
   z.object({ opId: z.string(), result: z.literal('duplicate') }),
   z.object({ opId: z.string(), result: z.literal('merged'), loser: z.unknown() }),
@@ -80,7 +94,7 @@ export type PullRow = z.infer<typeof pullRow>
 
 export const pullAnswer = z.discriminatedUnion('kind', [
   z.object({ kind: z.literal('page'), rows: z.array(pullRow), cursor, more: z.boolean() }),
-  /** The cursor is of another epoch, shop or scope, or too old: drop pulled rows, keep the outbox, start at seq 0. */
+  /** The cursor is of another epoch, shop or scope, or older than the tombstones kept: drop pulled rows, keep the outbox, start at seq 0. */
   z.object({ kind: z.literal('reset'), cursor }),
   z.object({ kind: z.literal('signIn') }),
   z.object({ kind: z.literal('notAsked') }),
@@ -94,5 +108,11 @@ export const syncResponse = z.object({
   taken: z.array(z.string()),
   results: z.array(opResult),
   pull: pullAnswer,
+  /** Since protocol 2. `wipe`: this phone was revoked and all it sent is in quarantine; it empties itself. */
+  order: z._default(z.enum(['none', 'wipe']), 'none'),
+  /** Since protocol 2: holes in this device's numbers that the shop never saw, `[first, last]` each (P22). */
+  missing: z._default(z.array(z.tuple([z.int(), z.int()])), []),
+  /** Since protocol 2: what an emptied store lost, as far as the shop can tell (P22). */
+  lost: z._default(z.nullable(z.object({ ops: z.int(), lastAt: z.nullable(z.string()) })), null),
 })
 export type SyncResponse = z.infer<typeof syncResponse>

@@ -9,6 +9,8 @@ export const ALLOWANCES = {
   sync: { name: 'sync', limit: 240, windowMs: 60_000 },
   /** Pictures of one phone. */
   photo: { name: 'photo', limit: 240, windowMs: 60_000 },
+  /** Chunks of one phone, and questions where an upload stands: 32 kB each are still 5 Mbit/s. */
+  chunk: { name: 'chunk', limit: 1_200, windowMs: 60_000 },
   /** Keys enrolled by one person. */
   enrol: { name: 'enrol', limit: 60, windowMs: 3_600_000 },
   /** Event streams opened by one person. */

@@ -1,3 +1,4 @@
+import { AppError } from '@/lib/model/result'
 import { troubleOf } from './database-trouble'
 import { problemAnswer } from './problems'
 
@@ -10,13 +11,17 @@ export const jsonAnswer = (body: unknown, headers: Record<string, string> = {}):
     headers: { 'content-type': 'application/json', 'cache-control': 'no-store', ...headers },
   })
 
-/** Runs a handler; a database that is away or busy is `busy`, to be tried again, and no broken server. */
+/**
+ * Runs a handler; a database or a file store that is away or busy is `busy`, to be tried again, and no
+ * broken server.
+ */
 export async function answered(handler: () => Promise<Response>): Promise<Response> {
   try {
     return await handler()
   } catch (error) {
+    const isAway = error instanceof AppError && error.retry
     const trouble = troubleOf(error)
-    if (trouble === 'bug' || trouble === 'badData') throw error
+    if (!isAway && (trouble === 'bug' || trouble === 'badData')) throw error
     return problemAnswer({ kind: 'busy', retryAfterSeconds: RETRY_SECONDS })
   }
 }

@@ -9,15 +9,15 @@ import { insertPartRequests } from '@/db/queries/part-requests'
 import { type StoredOp, saveOps } from '@/db/queries/sync-ops'
 import { enqueueWork } from '@/db/queries/work'
 import type { Id } from '@/lib/model/id'
-import type { Actor } from '@/lib/model/person'
 import type { Instant } from '@/lib/model/time'
-import { leavesFieldAt } from '@/lib/shop/scope'
-import type { Effects, JobStand, Known, Outcome } from './draft'
+import { forgottenAt, leavesFieldAt } from '@/lib/shop/scope'
+import type { Effects, JobStand, Known, Outcome } from './known'
 import type { Plan } from './plan'
 import type { ReadOp } from './read-ops'
+import { auditOfValues, changesOfValues, type Hand, writeValues } from './write-values'
 
 /** Who sends, and when it came by the server's clock. */
-export type Sender = { actor: Actor; deviceId: Id; at: Instant; newId: () => Id }
+export type Sender = Hand
 
 /**
  * Writes a plan. The caller holds the shop's counter, so nothing of the shop moves meanwhile: only bulk
@@ -50,7 +50,8 @@ export async function applyPlan(
       receivedAt: at,
     })),
   )
-  await appendAudit(tx, auditOf(effects, sender))
+  await writeValues(tx, effects, sender)
+  await appendAudit(tx, [...auditOf(effects, sender), ...auditOfValues(effects, sender)])
   await saveOps(
     tx,
     plan.outcomes.map(({ op, outcome }) => storedOp(op, outcome, sender)),
@@ -113,6 +114,11 @@ async function enqueueTasks(tx: ShopTx, effects: Effects, at: Instant): Promise<
   for (const { jobId } of closed) {
     await enqueueWork(tx, { task: 'leaveField', payload: {}, key: `leaveField:${jobId}`, runAt })
   }
+  if ([...effects.drops.values()].some((drop) => drop.isDropped)) {
+    const due = forgottenAt(at)
+    const key = `pruneChanges:${due.slice(0, 10)}`
+    await enqueueWork(tx, { task: 'pruneChanges', payload: {}, key, runAt: due })
+  }
 }
 
 /** Where an op of any shape points, as far as it says so in a form that can be kept. */
@@ -136,7 +142,7 @@ function storedOp(op: ReadOp, outcome: Outcome, { actor, deviceId, at }: Sender)
     field: refusal?.field ?? null,
     detail: refusal?.detail ?? null,
     blockedOn: outcome.kind === 'blocked' ? outcome.on : null,
-    loser: null,
+    loser: outcome.kind === 'merged' ? outcome.loser : null,
     receivedAt: at,
     settledAt: outcome.kind === 'blocked' ? null : at,
   }
@@ -165,5 +171,15 @@ function changesOf(effects: Effects, known: Known): Change[] {
   for (const { id, jobId } of effects.partRequests) {
     if (!whole.has(jobId)) changes.push({ entity: 'partRequest', id, jobId })
   }
-  return changes
+  return withOnce(changes, changesOfValues(effects))
+}
+
+/** Both lists, a row of both once: taken back in the end counts, else what came first, which may be whole. */
+function withOnce(changes: readonly Change[], more: readonly Change[]): Change[] {
+  const once = new Map(changes.map((change) => [`${change.entity} ${change.id}`, change]))
+  for (const change of more) {
+    const key = `${change.entity} ${change.id}`
+    if (!once.has(key) || change.state === 'deleted') once.set(key, change)
+  }
+  return [...once.values()]
 }

@@ -27,7 +27,9 @@ export function troubleOf(error: unknown): DatabaseTrouble {
   if (UNREACHABLE.has(code) || code.startsWith('08')) return 'unreachable'
   if (code.startsWith('22') || code.startsWith('23')) return 'badData'
   const words = error instanceof Error ? error.message : ''
-  return /connection (terminated|timeout)|timeout exceeded when trying to connect/i.test(words)
+  return /connection (terminated|timeout)|timeout exceeded when trying to connect|not queryable/i.test(
+    words,
+  )
     ? 'unreachable'
     : 'bug'
 }

@@ -1,12 +1,23 @@
-import { asShop } from '@/db/client'
+import { asShop, type ShopTx } from '@/db/client'
 import { appendAudit } from '@/db/queries/audit'
 import { lockShop } from '@/db/queries/changes'
-import { enrolDevice, findDevice, listDevices } from '@/db/queries/devices'
+import {
+  countMissing,
+  enrolDevice,
+  findDevice,
+  listDevices,
+  replaceDevice,
+} from '@/db/queries/devices'
 import { peopleById } from '@/db/queries/people'
 import type { Id } from '@/lib/model/id'
 import type { Actor } from '@/lib/model/person'
 import { fail, ok, type Result } from '@/lib/model/result'
-import { type EnrolAnswer, type EnrolRequest, enrolRequest } from '@/lib/sync/protocol/device'
+import {
+  type EnrolAnswer,
+  type EnrolRequest,
+  enrolRequest,
+  type Keepsake,
+} from '@/lib/sync/protocol/device'
 import { readCapped, readJson } from './body'
 import type { HttpProblem } from './problems'
 
@@ -58,6 +69,43 @@ export function enrol(
     const entry = { id: newId(), jobId: null, at, actorId: actor.personId, deviceId: id }
     const what = { action: 'device.enrolled', entity: 'device', entityId: id, detail: {} }
     await appendAudit(tx, [{ ...entry, ...what }])
+    const after = { actor, id, at, newId }
+    for (const kept of request.kept ?? []) await noteGone(tx, kept, after)
     return ok({ deviceId: id, serverTime: at })
   })
+}
+
+/**
+ * A store of this person is gone from the phone that asks (P22): the shop counts which of its numbers never
+ * came, on both records. Stores of other people are none of this person's business, and what a revoked
+ * phone or one that was told to empty itself no longer holds is no loss.
+ */
+async function noteGone(
+  tx: ShopTx,
+  kept: Keepsake,
+  after: { actor: Actor; id: Id; at: string; newId: () => Id },
+): Promise<void> {
+  const { actor, id, at, newId } = after
+  const gone = await findDevice(tx, kept.deviceId)
+  if (!gone || gone.id === id || gone.personId !== actor.personId) return
+  if (gone.replacedBy !== null || gone.wipeToldAt !== null || gone.revokedAt !== null) return
+  const missing = await countMissing(tx, { id: gone.id, dseq: kept.dseq })
+  const deletedOps = kept.deleted === null ? 0 : Math.min(kept.deleted, missing)
+  const lostOps = kept.deleted === null ? missing : 0
+  await replaceDevice(tx, { id: gone.id, by: id, at, lostOps, lastOn: kept.day, deletedOps })
+  const action =
+    kept.deleted !== null ? 'device.emptied' : lostOps > 0 ? 'device.lost' : 'device.replaced'
+  await appendAudit(tx, [
+    {
+      id: newId(),
+      jobId: null,
+      at,
+      actorId: actor.personId,
+      deviceId: id,
+      action,
+      entity: 'device',
+      entityId: gone.id,
+      detail: { lostOps, deletedOps, lastOn: kept.day, unsent: kept.unsent, replacedBy: id },
+    },
+  ])
 }

@@ -1,6 +1,6 @@
 import { asShop } from '@/db/client'
 import { changesAfter } from '@/db/queries/change-log'
-import { lastChange } from '@/db/queries/changes'
+import { logBounds } from '@/db/queries/changes'
 import { jobsById } from '@/db/queries/jobs'
 import type { Actor } from '@/lib/model/person'
 import { systemTimer, type Timer } from '@/lib/ports/clock'
@@ -98,8 +98,9 @@ class DeskStream {
     const { actor, lastEventId } = this.#parts
     const from = readLastId(lastEventId)
     const { now, missed } = await asShop(actor.shopId, async (tx) => {
-      const now = await lastChange(tx)
-      const isKnown = from !== null && from <= now && now - from <= MAX_REPLAY
+      const { last: now, horizon } = await logBounds(tx)
+      const isWhole = from !== null && from >= horizon && from <= now
+      const isKnown = isWhole && now - from <= MAX_REPLAY
       return {
         now,
         missed: isKnown ? await changesAfter(tx, { seq: from, limit: MAX_REPLAY * 2 }) : null,

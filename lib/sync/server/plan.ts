@@ -1,12 +1,15 @@
 import { assertNever } from '@/lib/model/result'
 import type { OpResult } from '@/lib/sync/protocol/message'
 import type { Op } from '@/lib/sync/protocol/op'
-import { Draft, type Effects, type Known, type Outcome } from './draft'
+import { Draft } from './draft'
+import type { Effects, Known, Outcome } from './known'
 import { planAdviceKeep } from './ops/advice'
 import { planJobOpen, planJobStep } from './ops/job'
 import { planLogAdd } from './ops/log-entry'
-import { planMachineAdd } from './ops/machine'
+import { planMachineAdd, planMachineDrop } from './ops/machine'
+import { planLineAdd, planLineChange, planRequestDrop } from './ops/part-line'
 import { planPartRequestAsk } from './ops/part-request'
+import { planJobSet, planMachineSet, planSettle } from './ops/setting'
 import { isSameOp, type ReadOp } from './read-ops'
 
 /**
@@ -42,6 +45,22 @@ function step(op: Op, draft: Draft): Outcome {
       return planPartRequestAsk(op, draft)
     case 'advice.keep':
       return planAdviceKeep(op, draft)
+    case 'job.set':
+      return planJobSet(op, draft)
+    case 'machine.set':
+      return planMachineSet(op, draft)
+    case 'job.settle':
+    case 'machine.settle':
+      return planSettle(op, draft)
+    case 'partLine.add':
+      return planLineAdd(op, draft)
+    case 'partLine.cancel':
+    case 'partLine.quantity':
+      return planLineChange(op, draft)
+    case 'partRequest.drop':
+      return planRequestDrop(op, draft)
+    case 'machine.drop':
+      return planMachineDrop(op, draft)
     default:
       return assertNever(op)
   }
@@ -71,6 +90,8 @@ function told(opId: string, outcome: Outcome): OpResult | null {
   switch (outcome.kind) {
     case 'accepted':
       return null
+    case 'merged':
+      return { opId, result: 'merged', loser: outcome.loser }
     case 'blocked':
       return { opId, result: 'blocked', on: outcome.on }
     case 'rejected': {

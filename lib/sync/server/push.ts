@@ -5,7 +5,7 @@ import type { Id } from '@/lib/model/id'
 import type { OpResult } from '@/lib/sync/protocol/message'
 import { applyPlan, type Sender } from './apply-plan'
 import { troubleOf } from './database-trouble'
-import type { Known } from './draft'
+import type { Known } from './known'
 import { loadKnown } from './load-known'
 import { type Plan, planPush } from './plan'
 import { type ReadOp, readOp } from './read-ops'
@@ -80,16 +80,23 @@ async function takeHalves(
   }
 }
 
-async function settle(tx: ShopTx, ops: readonly ReadOp[], sender: Sender): Promise<Plan> {
-  const ask = { actor: sender.actor, deviceId: sender.deviceId, ops }
+/**
+ * Judges ops and writes what becomes of them, all in the caller's transaction: who rolls it back has
+ * settled nothing. Locks the shop's counter once something is to be written.
+ */
+export async function settle(tx: ShopTx, ops: readonly ReadOp[], sender: Sender): Promise<Plan> {
+  const { actor, deviceId } = sender
+  const nowMs = Date.parse(sender.at)
+  const read = (seq: number): Promise<Known> =>
+    loadKnown(tx, { actor, deviceId, at: { nowMs, seq }, ops })
   // The counter is read first: as long as it stands there, what is read after it is still so.
   const readAt = await lastChange(tx)
-  let known = await loadKnown(tx, ask)
+  let known = await read(readAt)
   let plan = planPush(ops, known)
   if (plan.outcomes.length === 0) return plan
   const lockedAt = await lockShop(tx)
   if (lockedAt !== readAt || (await hasTwin(tx, ops, known))) {
-    known = await loadKnown(tx, ask)
+    known = await read(lockedAt)
     plan = planPush(ops, known)
   }
   await applyPlan(tx, { plan, known, sender })

@@ -1,6 +1,7 @@
 import { createHash } from 'node:crypto'
 import { type Id, id } from '@/lib/model/id'
 import { HEADERS, signedText } from '@/lib/sync/protocol/device'
+import { uploadText } from '@/lib/sync/protocol/upload'
 
 /** What a signed request says of itself, before anybody looked whether it is true (P18). */
 export type Claim = {
@@ -34,20 +35,37 @@ export const bodyHashOf = (body: Uint8Array): string =>
  * the hash beforehand (a picture's address) need not have the bytes yet, but must compare them later.
  */
 export function readClaim(headers: Headers, bodyHash: string): Claim | null {
+  const dseqText = headers.get(HEADERS.dseq) ?? ''
+  const dseq = dseqOf(dseqText)
+  if (dseq === undefined) return null
+  return claimOf(headers, dseq, (who) => signedText({ ...who, dseq: dseqText, bodyHash }))
+}
+
+/** The claim of one request of an upload; null when a header is missing or malformed (PH2). */
+export function readUploadClaim(headers: Headers, of: UploadOf): Claim | null {
+  return claimOf(headers, null, (who) => uploadText({ ...who, ...of }))
+}
+
+type UploadOf = Omit<Parameters<typeof uploadText>[0], 'shop' | 'person' | 'device'>
+type Who = { shop: string; person: string; device: string }
+
+function claimOf(
+  headers: Headers,
+  dseq: Claim['dseq'],
+  textOf: (who: Who) => string,
+): Claim | null {
   const shop = headers.get(HEADERS.shop) ?? ''
   const person = headers.get(HEADERS.person) ?? ''
   const device = headers.get(HEADERS.device) ?? ''
-  const dseqText = headers.get(HEADERS.dseq) ?? ''
   const signature = headers.get(HEADERS.signature) ?? ''
   if (![shop, person, device].every((value) => id.safeParse(value).success)) return null
-  const dseq = dseqOf(dseqText)
-  if (dseq === undefined || !SIGNATURE.test(signature)) return null
+  if (!SIGNATURE.test(signature)) return null
   return {
     shopId: shop.toLowerCase(),
     personId: person.toLowerCase(),
     deviceId: device.toLowerCase(),
     dseq,
-    text: signedText({ shop, person, device, dseq: dseqText, bodyHash }),
+    text: textOf({ shop, person, device }),
     signature: Buffer.from(signature, 'base64url'),
   }
 }

@@ -1,6 +1,7 @@
-import { asShop, type ShopTx } from '@/db/client'
+import { asShop, asShopLightly, type ShopTx } from '@/db/client'
 import { pullPage } from '@/db/queries/change-log'
-import { noteDevice } from '@/db/queries/devices'
+import { type Device, lossBefore, noteDevice } from '@/db/queries/devices'
+import type { Quarantine } from '@/db/queries/quarantine'
 import type { Id } from '@/lib/model/id'
 import type { Actor } from '@/lib/model/person'
 import { fail, ok, type Result } from '@/lib/model/result'
@@ -13,13 +14,19 @@ import {
   syncRequest,
 } from '@/lib/sync/protocol/message'
 import { MAX_RAW_BYTES, readCapped, readJson } from './body'
+import { missingNumbers } from './gaps'
 import type { HttpProblem } from './problems'
 import { takePush } from './push'
+import { takeIntoQuarantine, wipeOrder } from './quarantine'
 import { bodyHashOf, type Claim, readClaim } from './signed-request'
 import { takesProtocol } from './upgrade'
 
 /** A push as it came, still packed, with what it claims about its sender. */
 export type PackedPush = { raw: Buffer; encoding: string | null; claim: Claim }
+
+/** Bounds of what is believed of a phone's own count and date. */
+const MOST_HELD = 1_000_000
+const LAST_DATE_MS = Date.UTC(9999, 0)
 
 /** Reads body and claim of a POST /api/sync; nothing is unpacked before the signature was checked. */
 export async function openPush(request: Request): Promise<Result<PackedPush, HttpProblem>> {
@@ -48,7 +55,7 @@ export async function readPush(packed: PackedPush): Promise<Result<SyncRequest, 
 
 /** Everything one exchange with a phone needs. `session`: who is signed in there, if anybody. */
 export type Exchange = {
-  device: { actor: Actor; deviceId: Id }
+  device: { actor: Actor; deviceId: Id; device: Device; quarantine: Quarantine | null }
   session: Actor | null
   message: SyncRequest
   dseq: Claim['dseq']
@@ -56,16 +63,47 @@ export type Exchange = {
   newId: () => Id
 }
 
+/** An answer in the words of the phone's own protocol: the one before knows nothing of the newer fields. */
+export type Answer = Omit<SyncResponse, 'order' | 'missing' | 'lost'> &
+  Partial<Pick<SyncResponse, 'order' | 'missing' | 'lost'>>
+
 /** Takes the push, then answers the pull, so that a phone gets its own rows back in the same answer. */
-export async function exchange(with_: Exchange): Promise<SyncResponse> {
+export async function exchange(with_: Exchange): Promise<Answer> {
+  const { device, message, dseq, now, newId } = with_
+  if (device.quarantine !== null) return await handOver(with_, device.quarantine)
+  const at = new Date(now).toISOString()
+  const { actor, deviceId } = device
+  const pushed = await takePush(message.ops, { actor, deviceId, at, newId })
+  // Nothing in here was promised to anybody: a note that a crash loses is made again by the next exchange.
+  const told = await asShopLightly(actor.shopId, async (tx) => {
+    await noteDevice(tx, contactOf(with_, at))
+    const pull = await pullFor(tx, with_)
+    if (message.protocol < 2) return { pull }
+    const { ops, cursor } = message
+    const missing = await missingNumbers(tx, { device: device.device, dseq, ops: ops.length, now })
+    const loss = cursor === null ? await lossBefore(tx, deviceId) : null
+    const lost = loss && { ops: loss.ops, lastAt: loss.lastOn }
+    return { pull, order: 'none' as const, missing, lost }
+  })
+  return { protocol: message.protocol, serverTime: at, ...pushed, ...told }
+}
+
+/** The same with a phone that may not write any more: it is heard, shown nothing, and in the end emptied. */
+async function handOver(with_: Exchange, why: Quarantine): Promise<Answer> {
   const { device, message, now, newId } = with_
   const at = new Date(now).toISOString()
-  const pushed = await takePush(message.ops, { ...device, at, newId })
-  const pull = await asShop(device.actor.shopId, async (tx) => {
+  const { actor, deviceId } = device
+  const sender = { actor, deviceId, why, at, newId }
+  const pushed = await takeIntoQuarantine(message.ops, sender)
+  const order = await asShop(actor.shopId, async (tx) => {
     await noteDevice(tx, contactOf(with_, at))
-    return await pullFor(tx, with_)
+    if (message.protocol < 2) return 'none'
+    const { wipeToldAt } = device.device
+    return await wipeOrder(tx, { ...sender, wipeToldAt }, message.held)
   })
-  return { protocol: PROTOCOL, serverTime: at, ...pushed, pull }
+  const pull: PullAnswer = message.pull ? { kind: 'signIn' } : { kind: 'notAsked' }
+  const basis = { protocol: message.protocol, serverTime: at, ...pushed, pull }
+  return message.protocol < 2 ? basis : { ...basis, order, missing: [], lost: null }
 }
 
 /** What the shop notes of a phone that reached it: its clock, and how far its numbers have come (P22). */
@@ -76,6 +114,21 @@ function contactOf({ device, message, dseq, now }: Exchange, at: string) {
     at,
     clockOffsetMs: Number.isFinite(said) ? said - now : null,
     highestDseq: dseq?.last ?? null,
+    held: heldOf(message),
+    canary: message.canary ?? null,
+  }
+}
+
+/** What the phone says it still holds, within what can be kept; a date that cannot be read is none. */
+function heldOf({ held }: SyncRequest) {
+  if (!held) return null
+  const oldest = Date.parse(held.oldestAt ?? '')
+  const isDate = oldest >= 0 && oldest < LAST_DATE_MS
+  const oldestAt = isDate ? new Date(oldest).toISOString() : null
+  return {
+    ops: Math.min(held.ops, MOST_HELD),
+    photos: Math.min(held.photos, MOST_HELD),
+    oldestAt,
   }
 }
 

@@ -11,6 +11,7 @@ export const FLAGS = [
   '--disable-background-networking',
   '--disable-component-update',
   '--disable-sync',
+  '--use-fake-device-for-media-stream',
 ]
 
 /** A browser with its own profile on disk: it can be closed, killed and started cold like an app. */

@@ -3,6 +3,7 @@ import { once } from 'node:events'
 import { mkdirSync } from 'node:fs'
 import { createServer } from 'node:net'
 import { join } from 'node:path'
+import { startFiles } from '../../../scripts/fakes/files.mjs'
 
 /** The product as `npm start` serves it, on its own port, that a test can stop, kill and start again. */
 export type TestServer = {
@@ -11,6 +12,8 @@ export type TestServer = {
   stop(): Promise<void>
   kill(): Promise<void>
   log(): string
+  /** Stops it and the file store beside it. */
+  close(): Promise<void>
 }
 
 const root = process.cwd()
@@ -36,8 +39,15 @@ export async function makeServer(): Promise<TestServer> {
   const port = await freePort()
   const mailPort = await freePort()
   const base = `http://127.0.0.1:${port}`
-  const filesDir = join(root, '.data', 'e2e-files')
-  mkdirSync(filesDir, { recursive: true })
+  const stage = join(root, '.data', 'e2e-stage')
+  mkdirSync(stage, { recursive: true })
+  const files = await startFiles({
+    port: 0,
+    folder: join(root, '.data', 'e2e-files'),
+    bucket: 'e2e',
+    key: 'e2e-key',
+    secret: 'e2e-secret',
+  })
   let child: ChildProcess | null = null
   let text = ''
 
@@ -55,7 +65,11 @@ export async function makeServer(): Promise<TestServer> {
           NEXTAUTH_SECRET: need('NEXTAUTH_SECRET'),
           NEXTAUTH_URL: base,
           MAIL_URL: `smtp://127.0.0.1:${mailPort}`,
-          FILES_DIR: filesDir,
+          FILES_URL: files.url,
+          FILES_BUCKET: 'e2e',
+          FILES_KEY: 'e2e-key',
+          FILES_SECRET: 'e2e-secret',
+          FILES_STAGE: stage,
         },
       },
     )
@@ -90,5 +104,10 @@ export async function makeServer(): Promise<TestServer> {
     clearTimeout(late)
   }
 
-  return { base, start, stop: () => end('SIGTERM'), kill: () => end('SIGKILL'), log: () => text }
+  const close = async () => {
+    await end('SIGTERM')
+    await files.stop()
+  }
+  const stop = () => end('SIGTERM')
+  return { base, start, stop, kill: () => end('SIGKILL'), log: () => text, close }
 }

@@ -33,7 +33,7 @@ export const test = base.extend<Fixtures, { server: TestServer }>({
       const server = await makeServer()
       await server.start()
       await use(server)
-      await server.stop()
+      await server.close()
     },
     { scope: 'worker' },
   ],

@@ -1,6 +1,7 @@
 import fc from 'fast-check'
 import { describe, expect, test } from 'vitest'
-import { FIRST_HLC, measureOffset, nextHlc, receiveHlc } from '@/lib/sync/client/hlc'
+import { measureOffset, receiveHlc } from '@/lib/sync/client/hlc'
+import { FIRST_HLC, nextHlc } from '@/lib/sync/protocol/hlc'
 import { hlc } from '@/lib/sync/protocol/op'
 
 describe('the hybrid clock (sync.md 3.4)', () => {

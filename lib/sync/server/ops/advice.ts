@@ -1,6 +1,7 @@
 import { mayRecord } from '@/lib/shop/may-record'
 import type { Op } from '@/lib/sync/protocol/op'
-import { ACCEPTED, type Draft, type Outcome, reject, waitFor } from '../draft'
+import { ACCEPTED, type Draft, reject, waitFor } from '../draft'
+import type { Outcome } from '../known'
 
 /** advice.keep: a recommendation followed or overridden, kept whole (R23). */
 export function planAdviceKeep(op: Extract<Op, { kind: 'advice.keep' }>, draft: Draft): Outcome {

@@ -3,15 +3,9 @@ import { mayMove, type StateKind } from '@/lib/shop/job-states'
 import { mayRecord } from '@/lib/shop/may-record'
 import { seesJob } from '@/lib/shop/scope'
 import type { Op } from '@/lib/sync/protocol/op'
-import {
-  ACCEPTED,
-  type Draft,
-  type JobStand,
-  type JobStep,
-  type Outcome,
-  reject,
-  waitFor,
-} from '../draft'
+import { ACCEPTED, type Draft, reject, waitFor } from '../draft'
+import type { JobStand, JobStep, Outcome } from '../known'
+import { reviveMachine } from './setting'
 
 type OpOf<K extends Op['kind']> = Extract<Op, { kind: K }>
 
@@ -22,7 +16,10 @@ export function planJobOpen(op: OpOf<'job.open'>, draft: Draft): Outcome {
   if (op.jobId !== null && op.jobId !== opening.id) return reject('invalid', 'jobId')
   if (!mayRecord(op, draft.writer)) return reject('forbidden')
   if (draft.job(opening.id)) return reject('id_reuse', 'fields.id')
-  if (!draft.hasMachine(opening.machineId)) return waitFor(opening.machineId)
+  const machine = draft.machine(opening.machineId)
+  if (!machine) return waitFor(opening.machineId)
+  // Work in the field is always taken: a machine that was taken back stands again for it (M8).
+  if (machine.isDropped) reviveMachine(opening.machineId, draft)
   draft.openJob(opening, {
     state: 'open',
     peopleState: 'withMachine',
@@ -35,10 +32,10 @@ export function planJobOpen(op: OpOf<'job.open'>, draft: Draft): Outcome {
   return ACCEPTED
 }
 
-/** The job an op moves: known, named alike twice, and in this person's hands. */
+/** The job an op moves: known, named alike twice, and in this person's hands; of merged ones that which goes on. */
 function jobToMove(op: Move, draft: Draft) {
   if (op.jobId !== null && op.jobId !== op.entityId) return { refusal: reject('invalid', 'jobId') }
-  const job = draft.job(op.entityId)
+  const job = draft.lead(op.entityId)
   if (!job) return { refusal: waitFor(op.entityId) }
   return seesJob(draft.known.actor, job) ? { job } : { refusal: reject('forbidden') }
 }
@@ -46,7 +43,7 @@ function jobToMove(op: Move, draft: Draft) {
 /** What a machine left behind still lacks, as a refusal: position, photo, and the way out that tells the rest (R2). */
 function judgeLeaving(op: Move, job: JobStand, draft: Draft): Outcome {
   if (op.kind !== 'job.machine' || op.fields.to !== 'leftBehind') return ACCEPTED
-  const entries = draft.decidingOf(op.entityId)
+  const entries = draft.decidingOf(draft.leadOf(op.entityId))
   const lacks = leavingLacks({ place: job.place, entries })
   return lacks === null ? ACCEPTED : reject('invalid', 'fields.to', `left behind without ${lacks}`)
 }
@@ -85,8 +82,13 @@ export function planJobStep(op: Move, draft: Draft): Outcome {
   const verdict = judgeMove(what, job[field], from, to)
   if (verdict.kind !== 'accepted') return verdict
   const leaving = judgeLeaving(op, job, draft)
-  if (leaving.kind === 'accepted') {
-    draft.stepJob({ jobId: op.entityId, what, from, to }, { ...job, [field]: to })
+  if (leaving.kind !== 'accepted') return leaving
+  const lead = draft.leadOf(op.entityId)
+  draft.stepJob({ jobId: lead, what, from, to }, { ...job, [field]: to })
+  // What was written for the merged job is that job's as well, should it stand for itself again (M10).
+  const own = lead === op.entityId ? undefined : draft.job(op.entityId)
+  if (own?.[field] === from) {
+    draft.stepJob({ jobId: op.entityId, what, from, to }, { ...own, [field]: to })
   }
-  return leaving
+  return ACCEPTED
 }

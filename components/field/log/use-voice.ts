@@ -1,0 +1,88 @@
+'use client'
+
+import { useEffect, useRef, useState } from 'react'
+import { usePorts } from '@/components/store/store-provider'
+import type { MicrophoneProblem, TakenVoice, VoiceTake } from '@/lib/ports/voice'
+
+/** Where a voice note stands: nothing yet, the microphone asked for, recording, or taken. */
+export type VoiceState =
+  | { kind: 'idle' | 'asking' }
+  | { kind: 'recording'; sinceMs: number }
+  | { kind: 'taken'; voice: TakenVoice; url: string }
+
+/** Why there is none, in one sentence. */
+export const MICROPHONE_WORDS: Record<MicrophoneProblem['kind'], string> = {
+  refused:
+    'The microphone is not allowed for this app: allow it in the phone’s settings for this page, or write a note.',
+  noMicrophone: 'No microphone can be used now: another app may hold it. Write a note instead.',
+  notSupported: 'This browser cannot record. Write a note instead.',
+  nothingHeard: 'Nothing was recorded. Try again.',
+  ranOn:
+    'The recording ran on past 60 s while the phone slept and cannot be kept. Record it again.',
+}
+
+const IDLE: VoiceState = { kind: 'idle' }
+const TICK_MS = 200
+
+/** Records one voice note; what is recorded is let go of with the screen. */
+export function useVoice() {
+  const { microphone, clock } = usePorts()
+  const [state, setState] = useState<VoiceState>(IDLE)
+  const [problem, setProblem] = useState<string | null>(null)
+  const take = useRef<VoiceTake | null>(null)
+  const url = state.kind === 'taken' ? state.url : null
+  useEffect(() => () => (url === null ? undefined : URL.revokeObjectURL(url)), [url])
+  const here = useRef<boolean>(false)
+  useEffect(() => {
+    here.current = true
+    return () => {
+      here.current = false
+      take.current?.drop()
+    }
+  }, [])
+  const fail = (kind: MicrophoneProblem['kind']) => {
+    setProblem(MICROPHONE_WORDS[kind])
+    setState(IDLE)
+  }
+  const run = async () => {
+    setProblem(null)
+    setState({ kind: 'asking' })
+    const begun = await microphone.record()
+    if (!begun.ok) return fail(begun.problem.kind)
+    // The person left while the browser was asking.
+    if (!here.current) return begun.value.drop()
+    take.current = begun.value
+    setState({ kind: 'recording', sinceMs: clock.now() })
+    const ended = await begun.value.ended
+    take.current = null
+    if (!ended.ok) return fail(ended.problem.kind)
+    const { bytes, mime } = ended.value
+    const made = URL.createObjectURL(new Blob([bytes], { type: mime }))
+    setState({ kind: 'taken', voice: ended.value, url: made })
+  }
+  return {
+    state,
+    problem,
+    start: () => {
+      run().catch(() => fail('noMicrophone'))
+    },
+    stop: () => take.current?.stop(),
+    throwAway: () => setState(IDLE),
+  }
+}
+
+/** Seconds since the recording began, as they pass. */
+export function useElapsed(sinceMs: number): number {
+  const { clock, timer } = usePorts()
+  const [nowMs, setNowMs] = useState<number>(sinceMs)
+  useEffect(() => {
+    let callOff: () => void = () => undefined
+    const tick = () => {
+      setNowMs(clock.now())
+      callOff = timer.after(TICK_MS, tick)
+    }
+    tick()
+    return () => callOff()
+  }, [clock, timer])
+  return Math.max(0, (nowMs - sinceMs) / 1000)
+}

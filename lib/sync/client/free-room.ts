@@ -1,0 +1,55 @@
+import type { Job } from '@/lib/model/job'
+import { commit, noWrites } from './commit'
+import type { Core } from './core'
+import type { RowRecord } from './phone-db'
+import { dropSentThumbs } from './photo-store'
+
+/**
+ * Makes room for a record (P21) by letting go of what the shop has and can show again: first the small
+ * copies of photos that were sent, then the rows of closed jobs with nothing unsent in them. Work that
+ * the shop does not have is never touched. False when there was nothing to let go of.
+ */
+export async function freeRoom(core: Core): Promise<boolean> {
+  if (await dropSentThumbs(core.db)) return true
+  return await dropClosedJobs(core)
+}
+
+/** Rows that hang on a job; machines and people stay, others may need them. */
+async function dropClosedJobs(core: Core): Promise<boolean> {
+  return await commit(core, async () => {
+    const { db } = core
+    const closed = await closedJobs(core)
+    const unsent = new Set(
+      (await db.outbox.where('state').notEqual('done').toArray()).map((record) => record.jobId),
+    )
+    const jobIds = new Set(closed.map((row) => row.id).filter((jobId) => !unsent.has(jobId)))
+    if (jobIds.size === 0) return null
+    const rows = await db.row.filter((row) => row.jobId !== null && jobIds.has(row.jobId)).toArray()
+    return { ...noWrites(), dropRows: rows.map((row) => row.key) }
+  })
+}
+
+async function closedJobs(core: Core): Promise<RowRecord[]> {
+  const rows = await core.db.row.where('entity').equals('job').toArray()
+  const opened = await Promise.all(
+    rows.map(async (row) => ({ row, job: (await core.cache.row(core.keys, row)) as Job })),
+  )
+  return opened.filter(({ job }) => job.state === 'closed').map(({ row }) => row)
+}
+
+/** IndexedDB's word for "no room", also as the cause of an aborted transaction. */
+export function isFull(cause: unknown): boolean {
+  if (typeof cause !== 'object' || cause === null) return false
+  const { name, inner } = cause as { name?: unknown; inner?: unknown }
+  return name === 'QuotaExceededError' || isFull(inner)
+}
+
+/** Runs a write; when the phone has no room, makes some and runs it once more. The second failure is thrown. */
+export async function withRoom<T>(core: Core, write: () => Promise<T>): Promise<T> {
+  try {
+    return await write()
+  } catch (cause) {
+    if (!isFull(cause) || !(await freeRoom(core))) throw cause
+    return await write()
+  }
+}

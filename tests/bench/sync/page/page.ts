@@ -1,0 +1,2 @@
+import './floor'
+import './product'
