@@ -22,7 +22,7 @@ export async function lookAtPhone(world: World, handset: Handset): Promise<void>
   const tab = await handset.tab()
   const key = world.storeKey(handset)
   const records = await tab.phone.core.db.outbox.orderBy('dseq').toArray()
-  const fresh = await takeDown(world, { key, handset, tab, records })
+  const fresh = await takeDown(world, { key, tab, records })
   settlePending(world, key, fresh)
   await holdNumbers(world, tab, key)
   holdKept(world, key, records)
@@ -30,9 +30,9 @@ export async function lookAtPhone(world: World, handset: Handset): Promise<void>
   await holdCursor(world, key, tab)
 }
 
-type Look = { key: string; handset: Handset; tab: Tab; records: OutboxRecord[] }
+type Look = { key: string; tab: Tab; records: OutboxRecord[] }
 
-async function takeDown(world: World, { key, handset, tab, records }: Look): Promise<Recorded[]> {
+async function takeDown(world: World, { key, tab, records }: Look): Promise<Recorded[]> {
   const { core } = tab.phone
   const fresh: Recorded[] = []
   for (const record of records) {
@@ -49,8 +49,6 @@ async function takeDown(world: World, { key, handset, tab, records }: Look): Pro
     world.ledger.ops.set(record.opId, made)
     fresh.push(made)
   }
-  const isOld = world.ledger.pending.some((one) => one.store === key && one.isOld)
-  if (isOld) for (const { op } of fresh) handset.oldOps.add(op.id)
   return fresh
 }
 
@@ -121,10 +119,7 @@ function holdKept(world: World, key: string, records: readonly OutboxRecord[]): 
 type Stored = { op_id: string; outcome: string; code: string | null }
 
 /** P4, P6: what the phone was told is what the shop has written down. */
-async function holdAcknowledged(
-  world: World,
-  { key, tab, records }: Omit<Look, 'handset'>,
-): Promise<void> {
+async function holdAcknowledged(world: World, { key, tab, records }: Look): Promise<void> {
   const settled = records.filter(({ state }) => state !== 'waiting' && state !== 'blocked')
   const cursor = await readMeta(tab.phone.core.db, 'cursor')
   const { rows } = await world.admin.query<Stored>(
@@ -138,7 +133,7 @@ async function holdAcknowledged(
   const { epoch } = await readStand(world.admin, tab.user.shop.id, tab.user.person.id)
   for (const record of settled) {
     const row = stored.get(record.opId)
-    const what = `${key}: ${record.kind} ${record.opId} is ${record.state}, the shop says ${row?.outcome ?? 'nothing'}`
+    const what = `${key}: ${record.kind} ${record.opId} is ${record.state} (${record.reason}), the shop says ${row?.outcome ?? 'nothing'}`
     if (record.state === 'stuck') holdRefused(world, record, row, what)
     else if (epochOf(cursor) === epoch && !isTaken(row)) breaks('acknowledgedIsThere', what)
   }

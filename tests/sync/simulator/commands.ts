@@ -118,6 +118,12 @@ async function deliverLate(world: World): Promise<string> {
 }
 
 function changeVersion(world: World, handset: Handset): string {
+  // What today's app has written stays as it wrote it.
+  for (const { op, store } of world.ledger.ops.values()) {
+    const isHere = store.startsWith(`${handset.name}/`)
+    if (isHere && !handset.schemaOf.has(op.id)) handset.schemaOf.set(op.id, op.schema)
+  }
+  handset.hasBeenOld = true
   handset.protocol = world.draw.oneOf(['now', 'before', 'ancient'] as const)
   if (handset.protocol !== 'now') world.fault(`version ${handset.protocol}`)
   return handset.protocol

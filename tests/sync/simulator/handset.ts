@@ -36,7 +36,9 @@ export class Handset {
   readonly maker: number
   readonly users: User[]
   readonly indexed = newIndexed()
-  readonly oldOps = new Set<string>()
+  /** Schema of each op as it was written or first sent, once the phone has run an older app. */
+  readonly schemaOf = new Map<string, number>()
+  hasBeenOld: boolean = false
   /** Tables that have no room left. */
   readonly full = new Set<string>()
   user: User

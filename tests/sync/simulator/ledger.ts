@@ -35,8 +35,6 @@ export type Pending = {
   store: string
   made: Made
   isKept: boolean
-  /** Written by an app of the schema before. */
-  isOld: boolean
 }
 
 export class Ledger {
@@ -44,8 +42,8 @@ export class Ledger {
   readonly stores = new Map<string, StoreFacts>()
   pending: Pending[] = []
 
-  begin(store: string, made: Made, isOld: boolean): Pending {
-    const pending = { store, made, isKept: false, isOld }
+  begin(store: string, made: Made): Pending {
+    const pending = { store, made, isKept: false }
     this.pending.push(pending)
     return pending
   }

@@ -6,6 +6,7 @@ import type { Op } from '@/lib/sync/protocol/op'
 import { RealShop } from '../../support/real-shop'
 import type { Draw } from './draw'
 import type { Handset, Tab } from './handset'
+import { MAKERS } from './op-makers'
 import { type DatabaseFault, through } from './statements'
 import type { World } from './world'
 
@@ -166,6 +167,16 @@ function flipped(sent: Sent, draw: Draw): Sent {
   return { ...sent, body }
 }
 
+/** The schema an op was first sent under; it never changes, whatever app sends it again. */
+function schemaOf(handset: Handset, op: Op): number {
+  const first = handset.schemaOf.get(op.id)
+  if (first !== undefined) return first
+  const isNew = MAKERS.some((maker) => maker.kind === op.kind && maker.since === 2)
+  const schema = handset.protocol === 'before' && !isNew ? 1 : op.schema
+  handset.schemaOf.set(op.id, schema)
+  return schema
+}
+
 /**
  * An older app: the same request in the words of the protocol and schema before, signed anew with the
  * phone's own key. Ops it made keep their old schema also after its update.
@@ -173,11 +184,9 @@ function flipped(sent: Sent, draw: Draw): Sent {
 async function inOldWords(handset: Handset, tab: Tab, sent: Sent): Promise<Sent> {
   const speaks = handset.protocol
   if (sent.path !== '/api/sync' || sent.body === null) return sent
-  if (speaks === 'now' && handset.oldOps.size === 0) return sent
+  if (!handset.hasBeenOld) return sent
   const message = JSON.parse(gunzipSync(sent.body).toString()) as Record<string, unknown>
-  const ops = (message.ops as Op[]).map((op) =>
-    handset.oldOps.has(op.id) ? { ...op, schema: 1 } : op,
-  )
+  const ops = (message.ops as Op[]).map((op) => ({ ...op, schema: schemaOf(handset, op) }))
   const { held, canary, ...old } = message
   const versions = { before: { ...old, protocol: 1, schema: 1 }, ancient: { ...old, protocol: 0 } }
   const said = speaks === 'now' ? message : versions[speaks]

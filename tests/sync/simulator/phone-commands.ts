@@ -39,7 +39,7 @@ async function writeSomething(
   if (made === undefined) return 'nothing to write about'
   const names = made.ops.map((op) => op.kind).join('+')
   world.touched.add(handset)
-  const pending = world.ledger.begin(world.storeKey(handset), made, handset.protocol !== 'now')
+  const pending = world.ledger.begin(world.storeKey(handset), made)
   try {
     await tab.phone.record(made.ops, { photos: made.photos ?? [] })
   } catch (cause) {

@@ -116,8 +116,11 @@ function throwFound(world: World): void {
 }
 
 /** What a person needs to look into a failure: the promise, the last steps, and how to have it again. */
-export function failureText({ seed, broken, trace }: SeedRun, steps = STEPS): string {
-  const more = steps === STEPS ? '' : ` --steps ${steps}`
+export function failureText(
+  { seed, broken, trace }: SeedRun,
+  { steps = STEPS, isRacy = false } = {},
+): string {
+  const more = `${steps === STEPS ? '' : ` --steps ${steps}`}${isRacy ? ' --racy' : ''}`
   const stack = broken?.cause instanceof Error ? `\n${broken.cause.stack}` : ''
   return [
     `seed ${seed}: ${broken?.rule}: ${broken?.what}${stack}`,

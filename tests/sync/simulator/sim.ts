@@ -1,4 +1,4 @@
-// npm run sim -- [--seeds 1000] [--from 1] [--seed 7] [--steps 40] [--workers 2] [--trace] [--mutations]
+// npm run sim -- [--seeds 1000] [--from 1] [--seed 7] [--steps 40] [--workers 2] [--racy] [--trace] [--mutations]
 import { fork } from 'node:child_process'
 import { fileURLToPath } from 'node:url'
 import { parseArgs } from 'node:util'
@@ -15,6 +15,7 @@ const { values } = parseArgs({
     workers: { type: 'string', default: '2' },
     trace: { type: 'boolean', default: false },
     child: { type: 'string' },
+    racy: { type: 'boolean', default: false },
     mutations: { type: 'boolean', default: false },
   },
 })
@@ -30,7 +31,7 @@ type Told = {
 
 const toldOf = (run: SeedRun): Told => ({
   seed: run.seed,
-  text: run.broken === null ? null : failureText(run, steps),
+  text: run.broken === null ? null : failureText(run, { steps, isRacy: values.racy }),
   figures: [...run.figures],
   faults: [...run.faults],
 })
@@ -39,7 +40,7 @@ const toldOf = (run: SeedRun): Told => ({
 async function runSeeds(seeds: readonly number[], tell: (told: Told) => void): Promise<void> {
   const base = await openSimBase()
   for (const seed of seeds) {
-    const run = await runSeed(base, { seed, steps })
+    const run = await runSeed(base, { seed, steps, isRacy: values.racy })
     if (values.trace) console.log(run.trace.join('\n'))
     tell(toldOf(run))
   }
@@ -48,7 +49,13 @@ async function runSeeds(seeds: readonly number[], tell: (told: Told) => void): P
 
 function child(seeds: readonly number[], tell: (told: Told) => void): Promise<void> {
   const file = fileURLToPath(import.meta.url)
-  const process_ = fork(file, ['--child', seeds.join(','), '--steps', String(steps)])
+  const process_ = fork(file, [
+    '--child',
+    seeds.join(','),
+    '--steps',
+    String(steps),
+    ...(values.racy ? ['--racy'] : []),
+  ])
   process_.on('message', (told) => tell(told as Told))
   return new Promise((resolve, reject) => {
     process_.on('exit', (code) =>
