@@ -1,12 +1,13 @@
 import { type RawBuilder, type SqlBool, sql } from 'kysely'
 import type { Id } from '@/lib/model/id'
+import type { LogRow } from '@/lib/model/log-entry'
 import type { Actor } from '@/lib/model/person'
 import type { Role } from '@/lib/model/role'
 import type { ShopTx } from '../client'
 import type { ChangeEntity } from './changes'
 import { versionsByNumber } from './code-book'
 import { jobsById, onPhoneOf } from './jobs'
-import { logEntriesById } from './log-entries'
+import { logEntriesById, placesOfEntries } from './log-entries'
 import { listBags, listMeters, listModels, machinesById } from './machines'
 import { listPartRequests } from './part-requests'
 import { findMembership, peopleById } from './people'
@@ -24,6 +25,8 @@ export type LogPageRow = {
   jobId: Id | null
   state: 'present' | 'deleted' | 'evict'
   row: unknown
+  /** Only its place in the chain is told: the phone has the entry's words. */
+  own?: true
 }
 
 export type LogPage =
@@ -36,6 +39,8 @@ export type PullArgs = {
   cursor: LogCursor | null
   limit: number
   deviceId?: Id | null
+  /** For a phone that wants no word twice: entries whose words it has, by id, and no hashes of the others. */
+  brief?: { own: ReadonlyMap<Id, { jobId: Id }> } | null
 }
 
 /** A page ends at 256 KB of rows (P7). */
@@ -51,7 +56,7 @@ const PAGE_BYTES = 256 * 1024
  */
 export async function pullPage(
   tx: ShopTx,
-  { actor, cursor, limit, deviceId = null }: PullArgs,
+  { actor, cursor, limit, deviceId = null, brief = null }: PullArgs,
 ): Promise<LogPage> {
   const membership = await findMembership(tx, actor.personId)
   if (!membership) return { kind: 'signIn' }
@@ -68,7 +73,7 @@ export async function pullPage(
   const { personId } = actor
   const scope = { shopId: tx.shopId, personId, roles: membership.roles, deviceId }
   const heads = await readHeads(tx, scope, { after, upTo, limit: limit + 1 })
-  const { rows, isCut } = cutPage(await withRows(tx, heads.slice(0, limit)))
+  const { rows, isCut } = cutPage(await withRows(tx, heads.slice(0, limit), brief))
   const more = isCut || heads.length > limit
   const seq = more ? (rows.at(-1)?.seq ?? after) : upTo
   return { kind: 'page', rows, cursor: { ...start, seq }, more }
@@ -220,21 +225,43 @@ const READ: Record<ChangeEntity, (tx: ShopTx, ids: string[]) => Promise<Keyed[]>
 }
 
 /** Puts the rows to the heads. One deleted since then is told as such: its own number follows. */
-async function withRows(tx: ShopTx, heads: readonly Head[]): Promise<LogPageRow[]> {
+async function withRows(
+  tx: ShopTx,
+  heads: readonly Head[],
+  brief: PullArgs['brief'],
+): Promise<LogPageRow[]> {
   const wanted = new Map<ChangeEntity, string[]>()
+  const own: Id[] = []
   for (const head of heads) {
     if (head.state !== 'present') continue
+    if (isOwn(head, brief)) {
+      own.push(head.id)
+      continue
+    }
     const ids = wanted.get(head.entity) ?? []
     wanted.set(head.entity, ids)
     ids.push(head.id)
   }
   const found = new Map<ChangeEntity, Map<string, unknown>>()
   for (const [entity, ids] of wanted) found.set(entity, new Map(await READ[entity](tx, ids)))
+  const places = new Map(keyed(await placesOfEntries(tx, own), (row) => row.id))
   return heads.map((head) => {
     if (head.state !== 'present') return { ...head, row: null }
+    const place = places.get(head.id)
+    if (place !== undefined) return { ...head, row: place, own: true }
     const row = found.get(head.entity)?.get(head.id)
-    return row === undefined ? { ...head, state: 'deleted', row: null } : { ...head, row }
+    if (row === undefined) return { ...head, state: 'deleted', row: null }
+    return { ...head, row: brief && head.entity === 'logEntry' ? withoutLink(row) : row }
   })
+}
+
+/** One that travels under another job, after a merge, is told in full. */
+const isOwn = ({ entity, id, jobId }: Head, brief: PullArgs['brief']): boolean =>
+  entity === 'logEntry' && jobId !== null && brief?.own.get(id)?.jobId === jobId
+
+function withoutLink(row: unknown): unknown {
+  const { hash: _, ...rest } = row as LogRow
+  return rest
 }
 
 /** At least one row, and no more than fit the page. */

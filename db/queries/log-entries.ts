@@ -126,6 +126,20 @@ export async function decidingEntries(
 /** Of nobody: keeps an empty list of ids a list. */
 const NO_ID = '00000000-0000-0000-0000-000000000000'
 
+/** Answers where these entries stand in their jobs' chains, by id: for whoever has their words. */
+export async function placesOfEntries(
+  tx: ShopTx,
+  ids: readonly Id[],
+): Promise<Pick<LogRow, 'id' | 'jobId' | 'order' | 'receivedAt'>[]> {
+  if (ids.length === 0) return []
+  return await tx
+    .selectFrom('logEntry')
+    .select(['id', 'jobId', 'orderNo as order', 'receivedAt'])
+    .where('shopId', '=', tx.shopId)
+    .where('id', '=', sql<Id>`any(${ids}::uuid[])`)
+    .execute()
+}
+
 /** Answers which of these ids are entries, with the job each is of. */
 export async function jobsOfEntries(tx: ShopTx, ids: readonly Id[]): Promise<Map<Id, Id>> {
   if (ids.length === 0) return new Map()

@@ -1,14 +1,18 @@
-import type * as z from 'zod/mini'
+import * as z from 'zod/mini'
 import { bag } from '@/lib/model/bag'
 import { machineModel } from '@/lib/model/code-book'
 import { job } from '@/lib/model/job'
-import { type LogEntry, type LogRow, logRow } from '@/lib/model/log-entry'
+import { type LogEntry, logRow } from '@/lib/model/log-entry'
 import { machineRow } from '@/lib/model/machine'
 import { meterProfile } from '@/lib/model/meter-profile'
 import { partRequestRow } from '@/lib/model/part-request'
 import { person } from '@/lib/model/person'
 import { photoRow } from '@/lib/model/photo'
 import { shop } from '@/lib/model/shop'
+
+/** An entry's link in the shop's chain is the shop's business: a brief answer leaves it out. */
+const phoneLogRow = z.object({ ...logRow.shape, hash: z.optional(z.string()) })
+type PhoneLogRow = z.infer<typeof phoneLogRow>
 
 /** What the phone keeps of what travels down, each with the shape it must have to be shown. */
 const SHAPES = {
@@ -19,7 +23,7 @@ const SHAPES = {
   meterProfile,
   bag,
   job,
-  logEntry: logRow,
+  logEntry: phoneLogRow,
   partRequest: partRequestRow,
   photo: photoRow,
 } as const
@@ -27,7 +31,7 @@ const SHAPES = {
 export type StoredEntity = keyof typeof SHAPES
 /** A row as a screen reads it. A log entry made here has no place in the shop's chain yet. */
 export type RowOf<E extends StoredEntity> = E extends 'logEntry'
-  ? LogRow | LogEntry
+  ? PhoneLogRow | LogEntry
   : z.infer<(typeof SHAPES)[E]>
 
 /** True for what this version of the app keeps; the rest of a pull is passed over. */

@@ -75,6 +75,7 @@ export async function packRequest(of: {
       pull: of.pull,
       ...(of.held === undefined ? {} : { held: of.held(count) }),
       canary: of.canary ?? null,
+      brief: true,
     }
     const body = await gzip(text.encode(JSON.stringify(request)))
     if (body.byteLength <= MAX_BATCH_BYTES || count <= 1) {

@@ -23,7 +23,7 @@ import { refuseByRole } from './refuse-by-role'
 import { RoomWatch } from './room'
 import { Screens } from './screens'
 import { openBytes } from './seal'
-import { CorrectedClock } from './stamp'
+import { CorrectedClock, opIdOf } from './stamp'
 import type { RunStore } from './sync-run'
 import { watchUnsent } from './unsent-watch'
 import type { NewPhoto, PhotoView, StoredEntry, UnsentView } from './views'
@@ -220,7 +220,7 @@ export class Phone {
     await this.drafts.settled(clearDrafts)
     await record(this.core, {
       ops,
-      ids: ops.map(() => this.#ports.ids.next()),
+      ids: ops.map((input) => opIdOf(input) ?? this.#ports.ids.next()),
       deviceId: this.#deviceId,
       nowMs: this.stamp.now(),
       photos: more.photos ?? [],

@@ -63,6 +63,20 @@ export async function stampOps(of: {
   return { ops, counter }
 }
 
+/** An op that adds something goes by the id of what it adds (P2); undefined for every other. */
+export function opIdOf(input: OpInput): Id | undefined {
+  switch (input.kind) {
+    case 'machine.add':
+    case 'job.open':
+    case 'log.add':
+    case 'partRequest.ask':
+    case 'advice.keep':
+      return input.fields.id
+    default:
+      return undefined
+  }
+}
+
 function placeOf(input: OpInput): { entity: string; entityId: Id; jobId: Id | null } {
   switch (input.kind) {
     case 'machine.add':

@@ -1,4 +1,5 @@
 import type { SyncPorts } from '@/lib/ports/sync-ports'
+import { unfolded } from '@/lib/sync/protocol/brief'
 import { type SyncResponse, syncResponse } from '@/lib/sync/protocol/message'
 import type { Op } from '@/lib/sync/protocol/op'
 import type { BatchSize } from './batch-size'
@@ -157,9 +158,10 @@ export class SyncRun {
       this.#size.cut(batch.length, this.#ports.clock.now() - sentMs)
     }
     if (reply.kind !== 'ours') return this.#notTaken(reply, batch)
-    const response = syncResponse.safeParse(reply.json)
-    if (!response.success) return this.#notTaken({ kind: 'unreachable' }, batch)
-    await this.#taken({ batch, cursor, response: response.data, sentMs })
+    const read = syncResponse.safeParse(reply.json)
+    const response = read.success ? unfolded(read.data, ops.slice(0, packed.count)) : undefined
+    if (response === undefined) return this.#notTaken({ kind: 'unreachable' }, batch)
+    await this.#taken({ batch, cursor, response, sentMs })
     return this.#resets > MOST_RESETS ? { kind: 'wait', afterMs: null } : null
   }
 

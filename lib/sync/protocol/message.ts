@@ -46,6 +46,8 @@ export const syncRequest = z.object({
   ),
   /** Since protocol 2: the id written when this phone's store was made (P22). */
   canary: z.optional(z.nullable(id)),
+  /** Since protocol 2: the answer may leave out what the phone has just said (brief.ts) and never reads. */
+  brief: z.optional(z.boolean()),
 })
 export type SyncRequest = z.infer<typeof syncRequest>
 
@@ -92,8 +94,27 @@ export const pullRow = z.object({
 })
 export type PullRow = z.infer<typeof pullRow>
 
+/**
+ * Rows of entries that this request's own ops added, in short (brief.ts): of `count` ops from number `dseq`
+ * on, the first has change number `seq` and place `order` in its job's chain, each further one the next.
+ */
+const ownRun = z.object({
+  dseq: z.int(),
+  seq: z.int(),
+  order: z.int(),
+  count: z.int(),
+  receivedAt: z.string(),
+})
+export type OwnRun = z.infer<typeof ownRun>
+
 export const pullAnswer = z.discriminatedUnion('kind', [
-  z.object({ kind: z.literal('page'), rows: z.array(pullRow), cursor, more: z.boolean() }),
+  z.object({
+    kind: z.literal('page'),
+    rows: z.array(pullRow),
+    own: z.optional(z.array(ownRun)),
+    cursor,
+    more: z.boolean(),
+  }),
   /** The cursor is of another epoch, shop or scope, or older than the tombstones kept: drop pulled rows, keep the outbox, start at seq 0. */
   z.object({ kind: z.literal('reset'), cursor }),
   z.object({ kind: z.literal('signIn') }),
@@ -106,6 +127,8 @@ export const syncResponse = z.object({
   serverTime: z.string(),
   /** Highest op accepted or refused in this request by device sequence; results list the exceptions. */
   taken: z.array(z.string()),
+  /** The same by their numbers, `[first, last]` each, to a phone that asked for a brief answer. */
+  takenNumbers: z.optional(z.array(z.tuple([z.int(), z.int()]))),
   results: z.array(opResult),
   pull: pullAnswer,
   /** Since protocol 2. `wipe`: this phone was revoked and all it sent is in quarantine; it empties itself. */

@@ -14,6 +14,7 @@ import {
   syncRequest,
 } from '@/lib/sync/protocol/message'
 import { MAX_RAW_BYTES, readCapped, readJson } from './body'
+import { foldedPage, foldedPush, type OwnEntries, ownEntries } from './brief'
 import { missingNumbers } from './gaps'
 import type { HttpProblem } from './problems'
 import { takePush } from './push'
@@ -74,10 +75,11 @@ export async function exchange(with_: Exchange): Promise<Answer> {
   const at = new Date(now).toISOString()
   const { actor, deviceId } = device
   const pushed = await takePush(message.ops, { actor, deviceId, at, newId })
+  const own = message.brief === true ? ownEntries(message.ops, pushed) : null
   // Nothing in here was promised to anybody: a note that a crash loses is made again by the next exchange.
   const told = await asShopLightly(actor.shopId, async (tx) => {
     await noteDevice(tx, contactOf(with_, at))
-    const pull = await pullFor(tx, with_)
+    const pull = await pullFor(tx, with_, own)
     if (message.protocol < 2) return { pull }
     const { ops, cursor } = message
     const missing = await missingNumbers(tx, { device: device.device, dseq, ops: ops.length, now })
@@ -85,7 +87,8 @@ export async function exchange(with_: Exchange): Promise<Answer> {
     const lost = loss && { ops: loss.ops, lastAt: loss.lastOn }
     return { pull, order: 'none' as const, missing, lost }
   })
-  return { protocol: message.protocol, serverTime: at, ...pushed, ...told }
+  const settled = own === null ? pushed : foldedPush(message.ops, pushed)
+  return { protocol: message.protocol, serverTime: at, ...settled, ...told }
 }
 
 /** The same with a phone that may not write any more: it is heard, shown nothing, and in the end emptied. */
@@ -133,15 +136,17 @@ function heldOf({ held }: SyncRequest) {
 }
 
 /** A pull needs the session of the very person whose phone asks; anybody else's is no session (P18). */
-async function pullFor(tx: ShopTx, { device, session, message }: Exchange): Promise<PullAnswer> {
+async function pullFor(
+  tx: ShopTx,
+  { device, session, message }: Exchange,
+  own: OwnEntries | null,
+): Promise<PullAnswer> {
   if (!message.pull) return { kind: 'notAsked' }
   const { shopId, personId } = device.actor
   if (session?.shopId !== shopId || session.personId !== personId) return { kind: 'signIn' }
   const { cursor } = message
-  return await pullPage(tx, {
-    actor: device.actor,
-    cursor,
-    limit: PAGE_ROWS,
-    deviceId: device.deviceId,
-  })
+  const { actor, deviceId } = device
+  const asked = { actor, cursor, limit: PAGE_ROWS, deviceId }
+  if (own === null) return await pullPage(tx, asked)
+  return foldedPage(await pullPage(tx, { ...asked, brief: { own } }), own)
 }
