@@ -76,11 +76,11 @@ test('[M1] [M4] [M6] [M9] one stranding, two phones, one desk', async ({
 
   await test.step('with signal both are shown, and the one that did not stand can be used', async () => {
     await phone.flight(false)
-    await expect(page.getByText(/Also entered: .*47\.2/)).toBeVisible({ timeout: 60_000 })
+    await expect(page.getByText(/Place also entered: .*47\.2/)).toBeVisible({ timeout: 60_000 })
     await expect(page.getByText('By the ford')).toBeVisible()
     await shot(page, 'also-entered')
     await key(page, /^Use it: Place/).click()
-    await expect(page.getByText(/Also entered/)).toBeHidden()
+    await expect(page.getByText(/also entered/)).toBeHidden()
     await expect(page.getByText('By the ford')).toBeHidden()
     await expect(page.getByText('stuck', { exact: false })).toBeHidden()
   })

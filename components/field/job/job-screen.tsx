@@ -43,7 +43,7 @@ function Open({ facts }: { facts: JobFacts }) {
     >
       <ReopenedNotice jobId={job.id} />
       <Complaint job={job} />
-      <AlsoEnteredOfJob job={job} fields={['complaintWords']} mayUse={mayWork} />
+      <AlsoEnteredOfJob job={job} mayUse={mayWork} />
       <StatesPart job={job} />
       <section className="grid gap-1">
         <RuleEdge>Next</RuleEdge>
@@ -68,14 +68,12 @@ function Open({ facts }: { facts: JobFacts }) {
             <DaylightLine place={job.place} zone={job.zone} />
           </>
         )}
-        <AlsoEnteredOfJob job={job} fields={['place']} mayUse={mayWork} />
         {mayWork ? (
           <KeyLink small quiet href={jobHref(job.id, 'place')}>
             {job.place === null ? 'Take or type the position' : 'Better position'}
           </KeyLink>
         ) : null}
         <Air job={job} />
-        <AlsoEnteredOfJob job={job} fields={['airTempC', 'weather']} mayUse={mayWork} />
       </section>
       <section className="grid gap-1">
         <RuleEdge>Machine</RuleEdge>

@@ -19,13 +19,13 @@ import { settingName, settingWords } from './setting-words'
 
 type Shown = { one: AlsoEntered; setting: JobSetting | MachineSetting; ops: [OpInput, OpInput] }
 
-type JobProps = { job: Job; fields: readonly JobSetting['field'][]; mayUse: boolean }
+type JobProps = { job: Job; mayUse: boolean }
 
 /** Values of a job that somebody else entered without knowing of the one that stands (M4). */
-export function AlsoEnteredOfJob({ job, fields, mayUse }: JobProps) {
+export function AlsoEnteredOfJob({ job, mayUse }: JobProps) {
   const shown = (job.alsoEntered ?? []).flatMap((one): Shown[] => {
     const read = jobSetting.safeParse({ field: one.field, value: one.value })
-    if (!read.success || !fields.includes(read.data.field)) return []
+    if (!read.success) return []
     const jobId = job.id
     return [
       {
@@ -79,7 +79,10 @@ function AlsoEnteredList({ shown, zone, mayUse }: ListProps) {
         return (
           <li key={one.id} className="grid gap-2 border-l-4 border-ink pl-3">
             <p>
-              <b>Also entered: {words}</b> <Entered one={one} zone={zone} />
+              <b>
+                {settingName(setting)} also entered: {words}
+              </b>{' '}
+              <Entered one={one} zone={zone} />
             </p>
             {mayUse ? (
               <div className="flex flex-wrap gap-2">
