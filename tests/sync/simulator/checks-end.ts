@@ -1,16 +1,9 @@
 // The quiet at the end of a run, and what must hold after it: everything has arrived, everybody holds the
 // same, and what was refused is kept with its reason.
 import canonicalize from 'canonicalize'
-import { asShop, type ShopTx } from '@/db/client'
-import { jobsById } from '@/db/queries/jobs'
-import { logEntriesById } from '@/db/queries/log-entries'
-import { listBags, listMeters, listModels, machinesById } from '@/db/queries/machines'
-import { listPartRequests } from '@/db/queries/part-requests'
-import { peopleById } from '@/db/queries/people'
-import { photosByHash } from '@/db/queries/photos'
-import { getShop } from '@/db/queries/shop'
-import { readRow, type StoredEntity } from '@/lib/sync/client/entities'
-import type { RowRecord } from '@/lib/sync/client/phone-db'
+import { asShop } from '@/db/client'
+import { type LogCursor, pullPage } from '@/db/queries/change-log'
+import { isStored, readRow } from '@/lib/sync/client/entities'
 import { openJson } from '@/lib/sync/client/seal'
 import { breaks } from './broken-rule'
 import { holdEffects } from './checks-effects'
@@ -147,46 +140,33 @@ async function holdPhotos(world: World, key: string, { phone, user }: Tab): Prom
   }
 }
 
-/** How the shop tells a row of each kind. */
-const TELL: Record<StoredEntity, (tx: ShopTx, ids: string[]) => Promise<readonly unknown[]>> = {
-  shop: async (tx) => [await getShop(tx)],
-  person: peopleById,
-  machineModel: listModels,
-  machine: machinesById,
-  meterProfile: listMeters,
-  bag: listBags,
-  job: jobsById,
-  logEntry: logEntriesById,
-  partRequest: (tx, ids) => listPartRequests(tx, { ids }),
-  photo: photosByHash,
+/** Every row as the shop tells it to one who has nothing yet. */
+async function freshPull(user: User): Promise<Map<string, string | undefined>> {
+  const told = new Map<string, string | undefined>()
+  const pull = (cursor: LogCursor | null) =>
+    asShop(user.shop.id, (tx) =>
+      pullPage(tx, { actor: { personId: user.person.id }, cursor, limit: 500 }),
+    )
+  let page = await pull(null)
+  for (;;) {
+    if (page.kind !== 'page') return told
+    for (const { entity, id, row } of page.rows) {
+      if (isStored(entity)) told.set(`${entity}/${id}`, canonicalize(readRow(entity, row)))
+    }
+    if (!page.more) return told
+    page = await pull(page.cursor)
+  }
 }
 
-/** Everybody converges: each row on the phone is the shop's row, to the letter. */
+/** Everybody converges: each row on the phone is the row a new phone would get, to the letter. */
 async function holdSame(key: string, { phone, user }: Tab): Promise<void> {
   const { db, keys } = phone.core
-  const rows = (await db.row.toArray()).filter((row) => row.base !== null)
-  const byEntity = new Map<StoredEntity, RowRecord[]>()
-  for (const row of rows) {
-    const entity = row.entity as StoredEntity
-    byEntity.set(entity, [...(byEntity.get(entity) ?? []), row])
+  const truth = await freshPull(user)
+  for (const record of await db.row.toArray()) {
+    if (record.base === null) continue
+    const held = canonicalize(await openJson(keys.store, record.key, record.base))
+    if (held === truth.get(record.key)) continue
+    const shop = truth.get(record.key)
+    breaks('everybodyConverges', `${key}: ${record.key}\n  held ${held}\n  shop ${shop}`)
   }
-  for (const [entity, records] of byEntity) {
-    const ids = records.map((record) => record.id)
-    const told = await asShop(user.shop.id, (tx) => TELL[entity](tx, ids))
-    const truth = new Map(told.map((row) => [idOf(row), canonicalize(readRow(entity, row))]))
-    for (const record of records) {
-      if (record.base === null) continue
-      const held = canonicalize(await openJson(keys.store, record.key, record.base))
-      if (held === truth.get(record.id)) continue
-      breaks(
-        'everybodyConverges',
-        `${key}: ${record.key}\n  held ${held}\n  shop ${truth.get(record.id)}`,
-      )
-    }
-  }
-}
-
-const idOf = (row: unknown) => {
-  const { id, hash } = row as { id?: string; hash?: string }
-  return id ?? hash ?? ''
 }
