@@ -48,6 +48,23 @@ export async function lastChange(tx: ShopTx): Promise<number> {
   return row?.seq ?? 0
 }
 
+/**
+ * Answers whether one of these jobs, something that travels with one, one of these rows, or the code book
+ * changed after a number. Call it with the counter locked, when nothing can change any more.
+ */
+export async function isTouchedSince(
+  tx: ShopTx,
+  of: { seq: number; jobIds: readonly Id[]; entityIds: readonly string[] },
+): Promise<boolean> {
+  const { rows } = await sql<{ touched: boolean }>`
+    select exists (select 1 from change_log c
+      where c.shop_id = ${tx.shopId} and c.seq > ${of.seq}
+        and (c.job_id = any(${of.jobIds}::uuid[]) or c.entity_id = any(${of.entityIds}::text[])
+          or c.entity = 'book')) as touched
+  `.execute(tx)
+  return rows[0]?.touched === true
+}
+
 /** Answers the shop's last change number, and the one under which the log is not whole any more (P10). */
 export async function logBounds(tx: ShopTx): Promise<{ last: number; horizon: number }> {
   const row = await tx

@@ -10,8 +10,8 @@ import { person } from '@/lib/model/person'
 import { photoRow } from '@/lib/model/photo'
 import { shop } from '@/lib/model/shop'
 
-/** An entry's link in the shop's chain is the shop's business: a brief answer leaves it out. */
-const phoneLogRow = z.object({ ...logRow.shape, hash: z.optional(z.string()) })
+/** The hash of an entry's link in its chain is the shop's business; a brief answer leaves it out. */
+const phoneLogRow = z.omit(logRow, { hash: true })
 type PhoneLogRow = z.infer<typeof phoneLogRow>
 
 /** What the phone keeps of what travels down, each with the shape it must have to be shown. */

@@ -3,7 +3,7 @@ import { insertAdvice } from '@/db/queries/advice'
 import { appendAudit } from '@/db/queries/audit'
 import { type Change, takeChanges, takeJobNumbers } from '@/db/queries/changes'
 import { insertJobs, setJobStand } from '@/db/queries/jobs'
-import { appendLogEntries } from '@/db/queries/log-entries'
+import { insertLinks, linkEntries, type NewLinks } from '@/db/queries/log-entries'
 import { insertMachines } from '@/db/queries/machines'
 import { insertPartRequests } from '@/db/queries/part-requests'
 import { type StoredOp, saveOps } from '@/db/queries/sync-ops'
@@ -21,17 +21,20 @@ export type Sender = Hand
 
 /**
  * Writes a plan. The caller holds the shop's counter, so nothing of the shop moves meanwhile: only bulk
- * statements here, and the numbers last (sync.md section 1).
+ * statements here, and the numbers last (sync.md section 1). `links`: the plan's entries as they were
+ * linked before the lock, if they still follow on their jobs' chains; null: to be linked now.
  */
 export async function applyPlan(
   tx: ShopTx,
-  { plan, known, sender }: { plan: Plan; known: Known; sender: Sender },
+  of: { plan: Plan; known: Known; sender: Sender; links: NewLinks | null },
 ): Promise<void> {
+  const { plan, known, sender } = of
   const { effects } = plan
   const { actor, deviceId, at } = sender
   await insertMachines(tx, effects.machines)
   await writeJobs(tx, effects, sender)
-  await appendLogEntries(tx, { entries: effects.entries, receivedAt: at })
+  const { entries } = effects
+  await insertLinks(tx, of.links ?? (await linkEntries(tx, { entries, receivedAt: at })))
   await insertPartRequests(
     tx,
     effects.partRequests.map((request) => ({

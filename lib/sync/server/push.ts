@@ -1,18 +1,18 @@
 import { asShop, type ShopTx } from '@/db/client'
 import { lastChange, lockShop } from '@/db/queries/changes'
-import { knownOps } from '@/db/queries/sync-ops'
-import type { Id } from '@/lib/model/id'
+import { linkEntries } from '@/db/queries/log-entries'
 import type { OpResult } from '@/lib/sync/protocol/message'
 import { applyPlan, type Sender } from './apply-plan'
 import { troubleOf } from './database-trouble'
 import type { Known } from './known'
 import { loadKnown } from './load-known'
+import { addsOnly, isOvertaken } from './overtaken'
 import { type Plan, planPush } from './plan'
 import { type ReadOp, readOp } from './read-ops'
 
 /**
  * Takes a push. All checking is done on what was read without a lock; then the shop's counter is locked,
- * and only if the shop changed since is the batch planned again on fresh data. So the lock is held for
+ * and only if something of what it rests on changed since is the batch planned again on fresh data. So the lock is held for
  * the bulk writes alone, and never across a network wait.
  */
 export type PushAnswer = { taken: string[]; results: OpResult[] }
@@ -94,17 +94,15 @@ export async function settle(tx: ShopTx, ops: readonly ReadOp[], sender: Sender)
   let known = await read(readAt)
   let plan = planPush(ops, known)
   if (plan.outcomes.length === 0) return plan
+  // Hashes take longest of all, so the links of mere evidence are made before the lock.
+  const { entries } = plan.effects
+  let links = addsOnly(ops, plan) ? await linkEntries(tx, { entries, receivedAt: sender.at }) : null
   const lockedAt = await lockShop(tx)
-  if (lockedAt !== readAt || (await hasTwin(tx, ops, known))) {
+  if (await isOvertaken(tx, { ops, plan, known, lockedAt })) {
     known = await read(lockedAt)
     plan = planPush(ops, known)
+    links = null
   }
-  await applyPlan(tx, { plan, known, sender })
+  await applyPlan(tx, { plan, known, sender, links })
   return plan
-}
-
-/** True when another request settled one of these ops since they were looked up. */
-async function hasTwin(tx: ShopTx, ops: readonly ReadOp[], known: Known): Promise<boolean> {
-  const ids: Id[] = ops.map((op) => op.opId).filter((opId) => !known.seen.has(opId))
-  return (await knownOps(tx, ids)).size > 0
 }

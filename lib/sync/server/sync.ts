@@ -75,7 +75,8 @@ export async function exchange(with_: Exchange): Promise<Answer> {
   const at = new Date(now).toISOString()
   const { actor, deviceId } = device
   const pushed = await takePush(message.ops, { actor, deviceId, at, newId })
-  const own = message.brief === true ? ownEntries(message.ops, pushed) : null
+  const own =
+    message.protocol >= 2 && message.brief === true ? ownEntries(message.ops, pushed) : null
   // Nothing in here was promised to anybody: a note that a crash loses is made again by the next exchange.
   const told = await asShopLightly(actor.shopId, async (tx) => {
     await noteDevice(tx, contactOf(with_, at))
