@@ -44,6 +44,9 @@ const FAULTS: readonly { fault: LineFault; weight: number }[] = [
   { fault: 'answerOfCommitLost', weight: 3 },
 ]
 
+/** Most requests of one step: a sender that does not come to an end is a bug. */
+const MOST_REQUESTS = 400
+
 /** One request as it left a phone. */
 export type Sent = {
   path: string
@@ -75,6 +78,12 @@ export async function send(
     cookie: handset.cookie,
   })
   world.count('requests')
+  world.requests += 1
+  if (world.requests > MOST_REQUESTS) {
+    world.broken('runsEnd', `${handset.name} goes on asking for ${path}`)
+    handset.signal = false
+    throw new TypeError('no signal')
+  }
   const answer = await underFault(world, tab, sent, drawFault(world, sent))
   if (init.signal?.aborted) throw new TypeError('took too long')
   await world.stage.gate(tab.actor, 'answer')

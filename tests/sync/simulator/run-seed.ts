@@ -73,6 +73,7 @@ type Step = {
 async function takeStep(world: World, of: Step): Promise<void> {
   const { step, trace, without, commands } = of
   world.draw = new Draw(world.seed, step)
+  world.requests = 0
   const { draw } = world
   const handset = draw.oneOf(world.handsets)
   const command = draw.weighted(commands)

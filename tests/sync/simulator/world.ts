@@ -36,6 +36,8 @@ export class World {
     revoked: Set<string>
   } | null = null
   restores = 0
+  /** Requests of this step. */
+  requests = 0
   hasMerged: boolean = false
   hasPruned: boolean = false
   /** Stores whose phone or person the shop has shut out. */
