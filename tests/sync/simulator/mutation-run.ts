@@ -29,7 +29,13 @@ export async function hunt(mutant: Mutant, seeds: readonly number[]): Promise<Ve
   }
 }
 
-/** Every mutant in turn. */
-export async function huntAll(seeds: readonly number[], tell: (verdict: Verdict) => void) {
-  for (const mutant of MUTANTS) tell(await hunt(mutant, seeds))
+/** Every mutant in turn, or the one of that name. */
+export async function huntAll(
+  seeds: readonly number[],
+  only: string | undefined,
+  tell: (verdict: Verdict) => void,
+): Promise<void> {
+  for (const mutant of MUTANTS) {
+    if (only === undefined || mutant.name === only) tell(await hunt(mutant, seeds))
+  }
 }

@@ -1,4 +1,4 @@
-// npm run sim -- [--seeds 1000] [--from 1] [--seed 7] [--steps 40] [--workers 2] [--racy] [--trace] [--mutations]
+// npm run sim -- [--seeds 1000] [--from 1] [--seed 7] [--steps 40] [--workers 2] [--racy] [--trace] [--mutations [--mutant NAME]]
 import { fork } from 'node:child_process'
 import { fileURLToPath } from 'node:url'
 import { parseArgs } from 'node:util'
@@ -15,6 +15,7 @@ const { values } = parseArgs({
     workers: { type: 'string', default: '2' },
     trace: { type: 'boolean', default: false },
     child: { type: 'string' },
+    mutant: { type: 'string' },
     racy: { type: 'boolean', default: false },
     mutations: { type: 'boolean', default: false },
   },
@@ -112,7 +113,7 @@ async function main(): Promise<void> {
 async function mutations(): Promise<void> {
   const seeds = Array.from({ length: Number(values.seeds) }, (_, n) => Number(values.from) + n)
   let missed = 0
-  await huntAll(seeds, ({ mutant, foundBy, seeds: tried }) => {
+  await huntAll(seeds, values.mutant, ({ mutant, foundBy, seeds: tried }) => {
     if (foundBy === null) missed += 1
     const how = foundBy === null ? 'NOT FOUND' : `found: ${foundBy.broken?.rule}`
     console.log(`${mutant.name} (${mutant.what}): ${how} after ${tried} seeds`)

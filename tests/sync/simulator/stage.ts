@@ -32,6 +32,8 @@ const standsBack = (at: string) => STAND_BACK.find(([gate]) => gate.test(at))?.[
 
 /** Before asking the database whether an actor waits for a lock, ms. */
 const PATIENCE_MS = 3
+/** Waits in a row in which nobody says anything, before the race counts as stuck: a minute and more. */
+const MOST_WAITS = 20_000
 
 export class Stage {
   readonly #isBlocked: (pid: number) => Promise<boolean>
@@ -103,7 +105,7 @@ export class Stage {
 
   /** Until nobody moves: each stands at a gate, waits for a lock or another actor, or is done. */
   async #settled(actors: readonly Actor[]): Promise<void> {
-    for (;;) {
+    for (let waits = 0; waits < MOST_WAITS; waits++) {
       const blocked = actors.filter((actor) => actor.state === 'blocked')
       for (const actor of blocked) await this.#look(actor)
       const moving = actors.filter((actor) => actor.state === 'moving')
@@ -111,8 +113,11 @@ export class Stage {
       const over = actors.every((actor) => actor.state === 'done')
       if (moving.length === 0 && (canGoOn || over)) return
       const told = await change(moving.length === 0 ? actors : moving)
-      if (!told) for (const actor of moving) await this.#look(actor)
+      if (told) waits = 0
+      else for (const actor of moving) await this.#look(actor)
     }
+    const stands = actors.map(({ name, state, at }) => `${name} is ${state} at ${at}`)
+    throw new Error(`the race stands still: ${stands.join(', ')}; ${this.trail.slice(-40).join('; ')}`)
   }
 
   /** Whether an actor that waits for an answer waits for a lock. */
