@@ -117,7 +117,9 @@ export class Stage {
       else for (const actor of moving) await this.#look(actor)
     }
     const stands = actors.map(({ name, state, at }) => `${name} is ${state} at ${at}`)
-    throw new Error(`the race stands still: ${stands.join(', ')}; ${this.trail.slice(-40).join('; ')}`)
+    throw new Error(
+      `the race stands still: ${stands.join(', ')}; ${this.trail.slice(-40).join('; ')}`,
+    )
   }
 
   /** Whether an actor that waits for an answer waits for a lock. */
