@@ -1,4 +1,5 @@
-// npm test: does its own set-up and runs every check and test; `npm test -- check|unit|e2e` runs one part.
+// npm test: does its own set-up and runs every check and test; `npm test -- check|unit|e2e` runs one part,
+// `npm test -- unit|e2e NAME..` the files of that part whose path holds a name.
 // The last line is the sum over all runners: `N passed, N failed`.
 import { existsSync, mkdirSync, readFileSync, rmSync } from 'node:fs'
 import { join } from 'node:path'
@@ -17,7 +18,7 @@ import {
   stopCall,
 } from './setup.mjs'
 
-const only = process.argv[2]
+const [only, ...names] = process.argv.slice(2)
 const wants = (part) => only === undefined || only === part
 const sum = { passed: 0, failed: 0 }
 const results = join(root, '.data', 'results')
@@ -85,7 +86,7 @@ async function units() {
   const out = join(results, 'vitest.json')
   const reporters = ['--reporter=default', '--reporter=json', `--outputFile.json=${out}`]
   const vitest = join('node_modules', '.bin', 'vitest')
-  await runner('unit, standards, database, sync', vitest, ['run', ...reporters], () => {
+  await runner('unit, standards, database, sync', vitest, ['run', ...names, ...reporters], () => {
     const { numPassedTests, numFailedTests, numFailedTestSuites } = readJson('vitest.json')
     const lost = numFailedTestSuites > 0 && numFailedTests === 0 ? 1 : 0
     return { passed: numPassedTests, failed: numFailedTests + lost }
@@ -106,7 +107,7 @@ async function endToEnd(adminUrl) {
     return { passed: stats.expected, failed: stats.unexpected + stats.flaky }
   }
   const playwright = join('node_modules', '.bin', 'playwright')
-  await runner('end to end', playwright, ['test'], count, { NODE_ENV: 'test' })
+  await runner('end to end', playwright, ['test', ...names], count, { NODE_ENV: 'test' })
 }
 
 await ends.around(async () => {

@@ -186,7 +186,13 @@ function moveMachine(view: View): Made | undefined {
   const job = jobOf(view)
   const to = job && view.draw.pick(movesFrom('machine', job.machineState))
   if (!job || !to) return undefined
-  return { ops: [{ kind: 'job.machine', jobId: job.id, fields: { from: job.machineState, to } }] }
+  // Leaving a machine behind needs a position, a photo and five lines: most people see to that first (R2).
+  const isOdd = to === 'leftBehind'
+  if (isOdd && !view.draw.chance(0.1)) return undefined
+  return {
+    isOdd,
+    ops: [{ kind: 'job.machine', jobId: job.id, fields: { from: job.machineState, to } }],
+  }
 }
 
 function askForParts(view: View): Made | undefined {
