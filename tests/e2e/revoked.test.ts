@@ -29,9 +29,9 @@ async function findings(page: Page): Promise<string[]> {
 const overflows = (page: Page) =>
   page.evaluate(() => document.documentElement.scrollWidth > window.innerWidth)
 
-/** A new job, opened by the dispatcher and seen by every mechanic; answers its address on a phone. */
+/** A new job, opened by the owner and seen by every mechanic; answers its address on a phone. */
 async function openJob(server: TestServer, page: Page): Promise<string> {
-  const opener = await makeFieldDevice(server.base, 'dispatcher@demo.invalid')
+  const opener = await makeFieldDevice(server.base, 'owner@demo.invalid')
   const opening = jobOpen('01980000-0000-7000-8000-000000000301', {
     openedAt: opener.device.now(),
     complaint: { words: `Went missing ${Date.now()}`, symptom: 'startsThenDies', lampOn: null },

@@ -54,7 +54,7 @@ export async function makeFieldDevice(base: string, email: string): Promise<Fiel
         taken: string[]
         results: unknown[]
       }
-      if (answer.taken.length !== ops.length)
+      if (answer.taken.length !== ops.length || answer.results.length > 0)
         throw new Error(`refused: ${JSON.stringify(answer.results)}`)
     },
     async sendPhoto(bytes, mime) {
