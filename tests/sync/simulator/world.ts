@@ -156,13 +156,13 @@ export class World {
   /** Somebody else holds the counters; when an actor of the race holds one already, that is enough. */
   async #holdCounters(): Promise<() => Promise<void>> {
     const ids = this.shops.map((shop) => shop.id)
-    const end = async () => {
-      await this.admin.query('rollback')
-    }
-    await this.admin.query('begin')
+    const holder = new pg.Client({ connectionString: this.base.db.adminUrl })
+    await holder.connect()
+    const end = () => holder.end()
     try {
+      await holder.query('begin')
       const held = 'select from shop_counter where shop_id = any($1) for update nowait'
-      await this.admin.query(held, [ids])
+      await holder.query(held, [ids])
       return end
     } catch {
       await end()
