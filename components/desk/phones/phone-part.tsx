@@ -11,19 +11,18 @@ import { clockWords, goneWords, heldWords, reachedWords } from './phone-words'
 import { QuarantineList } from './quarantine-list'
 import { TakeOut } from './take-out'
 
-type Props = { phone: DeskPhone; takeOut: RevokeAction; decideOn: DecideAction }
+type Props = { phone: DeskPhone; title: string; takeOut: RevokeAction; decideOn: DecideAction }
 
 /** One phone: whose it is, how it stands, what of it waits, and the way to take it out. */
-export function PhonePart({ phone, takeOut, decideOn }: Props) {
+export function PhonePart({ phone, title, takeOut, decideOn }: Props) {
   const waiting = phone.items.filter((item) => item.decision === null).length
-  const name = phone.person.name ?? 'Name erased'
   return (
-    <section aria-label={`Phone of ${name}`} className="grid gap-3 pb-4">
-      <RuleEdge end={waiting > 0 ? `${waiting} waiting` : standOf(phone)}>{name}</RuleEdge>
+    <section aria-label={`Phone of ${title}`} className="grid gap-3 pb-4">
+      <RuleEdge end={waiting > 0 ? `${waiting} waiting` : standOf(phone)}>{title}</RuleEdge>
       <Facts phone={phone} />
       {phone.items.length > 0 ? <QuarantineList phone={phone} decideOn={decideOn} /> : null}
       {phone.revoked === null && phone.gone === null ? (
-        <TakeOut phone={phone} name={name} takeOut={takeOut} />
+        <TakeOut phone={phone} takeOut={takeOut} />
       ) : null}
     </section>
   )

@@ -21,6 +21,26 @@ export function phoneSentence(problem: PhoneProblem | { kind: 'trouble' }): stri
   }
 }
 
+/** Whose phone it is, as the shop may still say it. */
+export const ownerOf = ({ person }: DeskPhone): string => person.name ?? 'Name erased'
+
+/**
+ * What each phone is called at the desk, by id: its person's name, and with a number in the order they came
+ * into use where the person has several, so that no two read alike.
+ */
+export function phoneTitles(phones: readonly DeskPhone[]): Map<string, string> {
+  const inOrder = [...phones].sort((a, b) =>
+    `${a.enrolledAt} ${a.id}` < `${b.enrolledAt} ${b.id}` ? -1 : 1,
+  )
+  return new Map(
+    phones.map((phone) => {
+      const name = ownerOf(phone)
+      const own = inOrder.filter((one) => one.person.id === phone.person.id)
+      return [phone.id, own.length === 1 ? name : `${name}, phone ${own.indexOf(phone) + 1}`]
+    }),
+  )
+}
+
 /** A clock less than this off is right enough to say so (a choice; stamps are judged from 60 s on). */
 const CLOCK_RIGHT_MS = 30_000
 

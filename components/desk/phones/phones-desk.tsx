@@ -7,6 +7,7 @@ import { readSentence } from '../desk-sentences'
 import { useNow } from '../use-now'
 import type { DecideAction, RevokeAction } from './phone-actions'
 import { PhonePart } from './phone-part'
+import { phoneTitles } from './phone-words'
 import { usePhones } from './use-phones'
 
 type Props = { takeOut: RevokeAction; decideOn: DecideAction }
@@ -16,6 +17,7 @@ export function PhonesDesk({ takeOut, decideOn }: Props) {
   const read = usePhones()
   const [showOld, setShowOld] = useState(false)
   const all = read.data?.phones ?? []
+  const titles = phoneTitles(all)
   const now = useNow()
   const live = all.filter((phone) => isOfUse(phone, now))
   const phones = showOld ? all : live
@@ -45,7 +47,13 @@ export function PhonesDesk({ takeOut, decideOn }: Props) {
       ) : null}
       {read.data && phones.length === 0 ? <p>No phone of this shop is in use.</p> : null}
       {phones.map((phone) => (
-        <PhonePart key={phone.id} phone={phone} takeOut={takeOut} decideOn={decideOn} />
+        <PhonePart
+          key={phone.id}
+          phone={phone}
+          title={titles.get(phone.id) ?? ''}
+          takeOut={takeOut}
+          decideOn={decideOn}
+        />
       ))}
     </main>
   )

@@ -7,12 +7,14 @@ import { Hold } from '@/components/ui/hold'
 import { Key } from '@/components/ui/key'
 import type { DeskPhone } from '@/lib/model/phones'
 import type { RevokeAction } from './phone-actions'
+import { ownerOf } from './phone-words'
 import { usePhoneActing } from './use-phones'
 
-type Props = { phone: DeskPhone; name: string; takeOut: RevokeAction }
+type Props = { phone: DeskPhone; takeOut: RevokeAction }
 
 /** Takes a phone out, for a reason, by holding the key or by two presses. */
-export function TakeOut({ phone, name, takeOut }: Props) {
+export function TakeOut({ phone, takeOut }: Props) {
+  const name = ownerOf(phone)
   const [open, setOpen] = useState(false)
   const [reason, setReason] = useState('')
   const [error, setError] = useState<string | null>(null)
@@ -62,7 +64,7 @@ export function TakeOut({ phone, name, takeOut }: Props) {
       </Key>
       <Hold
         label="Take it out"
-        question={`Take the phone of ${name} out for good?`}
+        question={`Take this phone of ${name} out for good?`}
         confirmLabel="Take it out"
         disabled={busy}
         onConfirm={confirm}
