@@ -6,12 +6,14 @@ import {
   type MetaName,
   type MetaValues,
   type OutboxRecord,
-  type PhoneDb,
   type PhotoBytesRecord,
   type PhotoRecord,
   type RowRecord,
   readMeta,
 } from './phone-db'
+
+/** The store, and who is told of each step. */
+type Home = Pick<Core, 'db' | 'step'>
 
 /** Everything one transaction writes, prepared before it starts: crypto inside would end it. */
 export type Writes = {
@@ -53,10 +55,7 @@ const MOST_TRIES = 60
  * began; else prepares again. So two tabs never give out one number twice (P2), and what was worked
  * out from rows that have changed is worked out anew. `prepare` answers null to write nothing.
  */
-export async function commit(
-  core: Pick<Core, 'db' | 'step'>,
-  prepare: () => Promise<Writes | null>,
-): Promise<boolean> {
+export async function commit(core: Home, prepare: () => Promise<Writes | null>): Promise<boolean> {
   for (let tries = 0; tries < MOST_TRIES; tries += 1) {
     const outcome = await core.db.life.run(() => tryOnce(core, prepare))
     if (outcome !== 'overtaken') return outcome === 'written'
@@ -65,7 +64,7 @@ export async function commit(
 }
 
 async function tryOnce(
-  core: Pick<Core, 'db' | 'step'>,
+  core: Home,
   prepare: () => Promise<Writes | null>,
 ): Promise<'written' | 'nothing' | 'overtaken'> {
   const turn = (await readMeta(core.db, 'turn')) ?? 0
@@ -73,10 +72,12 @@ async function tryOnce(
   const writes = await prepare()
   if (writes === null) return 'nothing'
   core.step('write')
-  return (await writeAll(core, turn, writes)) ? 'written' : 'overtaken'
+  const isWritten = await writeAll(core, turn, writes)
+  core.step('committed')
+  return isWritten ? 'written' : 'overtaken'
 }
 
-function writeAll(core: Pick<Core, 'db' | 'step'>, turn: number, writes: Writes): Promise<boolean> {
+function writeAll(core: Home, turn: number, writes: Writes): Promise<boolean> {
   const { db } = core
   const tables = [db.row, db.outbox, db.letGo, db.photo, db.photoBytes, db.draft, db.meta]
   return db.transaction('rw', tables, async () => {
@@ -85,13 +86,14 @@ function writeAll(core: Pick<Core, 'db' | 'step'>, turn: number, writes: Writes)
     core.step('turn')
     await db.meta.put({ name: 'turn', value: turn + 1 })
     core.step('outbox')
-    await putOps(db, writes)
+    await putOps(core, writes)
     core.step('rows')
-    await putRows(db, turn + 1, writes)
+    await putRows(core, turn + 1, writes)
     core.step('photos')
-    await putPhotos(db, writes)
+    await putPhotos(core, writes)
     core.step('drafts')
     if (writes.drafts.length > 0) await db.draft.bulkPut(writes.drafts)
+    core.step('dropDrafts')
     if (writes.dropDrafts.length > 0) await db.draft.bulkDelete(writes.dropDrafts)
     core.step('meta')
     const facts = Object.entries(writes.meta) as [MetaName, unknown][]
@@ -103,19 +105,23 @@ function writeAll(core: Pick<Core, 'db' | 'step'>, turn: number, writes: Writes)
   })
 }
 
-async function putOps(db: PhoneDb, writes: Writes): Promise<void> {
+async function putOps({ db, step }: Home, writes: Writes): Promise<void> {
   if (writes.outbox.length > 0) await db.outbox.bulkPut(writes.outbox)
+  step('letGo')
   if (writes.letGo.length > 0) await db.letGo.bulkPut(writes.letGo)
   if (writes.takeBack.length > 0) await db.letGo.bulkDelete(writes.takeBack)
+  step('dropOutbox')
   if (writes.dropOutbox.length > 0) await db.outbox.bulkDelete(writes.dropOutbox)
 }
 
-async function putPhotos(db: PhoneDb, writes: Writes): Promise<void> {
+async function putPhotos({ db, step }: Home, writes: Writes): Promise<void> {
   if (writes.photoBytes.length > 0) await db.photoBytes.bulkPut(writes.photoBytes)
+  step('photoBytes')
   if (writes.photos.length > 0) await db.photo.bulkPut(writes.photos)
 }
 
-async function putRows(db: PhoneDb, turn: number, writes: Writes): Promise<void> {
+async function putRows({ db, step }: Home, turn: number, writes: Writes): Promise<void> {
   if (writes.rows.length > 0) await db.row.bulkPut(writes.rows.map((row) => ({ ...row, turn })))
+  step('dropRows')
   if (writes.dropRows.length > 0) await db.row.bulkDelete(writes.dropRows)
 }

@@ -12,6 +12,7 @@ import { Drafts } from './drafts'
 import { deviceOf, type EnrolProblem, enrol } from './enrol'
 import type { RowOf, StoredEntity } from './entities'
 import type { Sender } from './envelope'
+import { ifThereIsRoom } from './free-room'
 import { keepAnswer } from './keep-answer'
 import { remember } from './keepsake'
 import { openKeys } from './keys'
@@ -77,9 +78,10 @@ export class Phone {
     const phone = new Phone(core, options, deviceId)
     phone.stamp.offsetMs = (await readMeta(db, 'clockOffset')) ?? 0
     if ((await readMeta(db, 'canary')) === undefined) {
-      await writeMeta(db, 'canary', { id: ports.ids.next(), madeAt: ports.clock.now() })
+      const canary = { id: ports.ids.next(), madeAt: ports.clock.now() }
+      await ifThereIsRoom(() => writeMeta(db, 'canary', canary))
     }
-    await settleRows(core)
+    await ifThereIsRoom(() => settleRows(core))
     await remember(db, ports, null)
     return phone
   }
@@ -215,9 +217,13 @@ export class Phone {
     if (photoBytes > 0 && !(await this.room.hasRoomFor(photoBytes))) {
       throw new AppError('noRoomForPhoto')
     }
+    const { step } = this.core
+    step('roomLooked')
     const { roles, personId } = this.#actor
     await refuseByRole(this.core, ops, { roles, personId, guideSafe: this.#guideSafe() })
+    step('allowed')
     await this.drafts.settled(clearDrafts)
+    step('draftsSettled')
     await record(this.core, {
       ops,
       ids: ops.map((input) => opIdOf(input) ?? this.#ports.ids.next()),
@@ -226,8 +232,11 @@ export class Phone {
       photos: more.photos ?? [],
       clearDrafts,
     })
+    step('kept')
     await this.drafts.finished(clearDrafts)
+    step('draftsFinished')
     await remember(this.core.db, this.#ports, this.stamp.now())
+    step('remembered')
     this.room.askToKeep().catch(() => undefined)
     this.#onRecord()
     this.sender.poke('record')

@@ -1,6 +1,6 @@
 import type { SyncPorts } from '@/lib/ports/sync-ports'
 import type { Sender } from './envelope'
-import { type PhoneDb, type PhotoRecord, sealedPhoto } from './phone-db'
+import { type PhoneDb, type PhotoRecord, readMeta, sealedPhoto } from './phone-db'
 import { afterChunk, afterCut, chunkOf, type Pace } from './photo-pace'
 import { markStored } from './photo-store'
 import { askUpload, beginUpload, sendChunk, type UploadReply } from './photo-upload'
@@ -91,6 +91,11 @@ export class PhotoRun {
     return reply
   }
 
+  /** The time by the shop's clock, ms: the phone's own may be off by days. */
+  async #shopNow(): Promise<number> {
+    return this.#ports.clock.now() + ((await readMeta(this.#store.db, 'clockOffset')) ?? 0)
+  }
+
   async #heard(
     photo: PhotoRecord,
     open: Open,
@@ -100,7 +105,8 @@ export class PhotoRun {
     const { hash, size } = photo
     switch (reply.kind) {
       case 'stored':
-        await markStored(db, photo, this.#ports.clock.now())
+        await markStored(this.#store, photo, await this.#shopNow())
+        this.#store.step('photoOver')
         return this.#over(hash)
       case 'at':
         return await this.#stands(photo, open, Math.min(reply.offset, size))

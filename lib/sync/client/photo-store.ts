@@ -1,7 +1,11 @@
 import type { PhoneDb, PhotoRecord } from './phone-db'
 
 /** The shop has confirmed the hash: the bytes go, what is told of the photo and its small copy stay (PH4). */
-export function markStored(db: PhoneDb, photo: PhotoRecord, nowMs: number): Promise<void> {
+export function markStored(
+  { db, step }: { db: PhoneDb; step(name: string): void },
+  photo: PhotoRecord,
+  nowMs: number,
+): Promise<void> {
   return db.transaction('rw', [db.photo, db.photoBytes], async () => {
     await db.photo.update(photo.hash, {
       state: 'sent',
@@ -10,12 +14,14 @@ export function markStored(db: PhoneDb, photo: PhotoRecord, nowMs: number): Prom
       sentAt: nowMs,
       bytes: null,
     })
+    step('photoMarked')
     await db.photoBytes.delete(photo.hash)
+    step('photoPutAway')
   })
 }
 
 /**
- * Photos confirmed after `sinceMs`, to be offered again to a shop restored from a backup (P12): it finds
+ * Photos confirmed after `sinceMs` by the shop's clock, to be offered again to a shop restored from a backup (P12): it finds
  * them in its store by their hash and needs no byte.
  */
 export async function photosToOffer(db: PhoneDb, sinceMs: number): Promise<PhotoRecord[]> {

@@ -49,7 +49,9 @@ async function prepare(core: Core, of: Recorded, photos: SealedPhoto[]): Promise
   if (firstId !== undefined && (await core.db.outbox.where('opId').equals(firstId).count()) > 0) {
     return null
   }
+  core.step('isNew')
   if (await isWiped(core.db)) throw new AppError('storeWiped')
+  core.step('isOpen')
   const { ops, counter } = await stampOps({
     db: core.db,
     inputs: of.ops,
@@ -57,6 +59,7 @@ async function prepare(core: Core, of: Recorded, photos: SealedPhoto[]): Promise
     deviceId: of.deviceId,
     nowMs: of.nowMs,
   })
+  core.step('stamped')
   const checked = ops.map(checkedOp)
   return {
     ...noWrites(),
@@ -105,6 +108,8 @@ type SealedPhoto = { about: PhotoRecord; bytes: Sealed }
 async function sealPhoto(core: Core, photo: NewPhoto, nowMs: number): Promise<SealedPhoto> {
   const { hash, jobId, mime, bytes, thumb } = photo
   const { store } = core.keys
+  const small = thumb === undefined ? null : await sealBytes(store, thumbPlace(hash), thumb)
+  core.step('thumbSealed')
   const about: PhotoRecord = {
     hash,
     jobId,
@@ -115,7 +120,7 @@ async function sealPhoto(core: Core, photo: NewPhoto, nowMs: number): Promise<Se
     reason: null,
     uploaded: null,
     sentAt: null,
-    thumb: thumb === undefined ? null : await sealBytes(store, thumbPlace(hash), thumb),
+    thumb: small,
   }
   return { about, bytes: await sealBytes(store, photoPlace(hash), bytes) }
 }
@@ -137,7 +142,9 @@ async function changedRows(core: Core, ops: Op[]): Promise<Omit<RowRecord, 'turn
     }
   }
   const gen = (await readMeta(core.db, 'gen')) ?? 0
+  core.step('generation')
   const held = await core.db.row.bulkGet([...touched.keys()])
+  core.step('rowsHeld')
   const rows = await Promise.all(
     [...touched].map(([key, entry], index) =>
       changedRow(core, { key, ...entry, held: held[index], gen }),
@@ -152,6 +159,7 @@ async function changedRow(
 ): Promise<Omit<RowRecord, 'turn'> | null> {
   const { key, at, held } = of
   const before = held && (await core.cache.row(core.keys, held))
+  core.step('rowOpened')
   const who = { personId: core.personId }
   const after = of.ops.reduce((row, op) => applyOpLocally(row, at, op, who), before)
   if (after === undefined || after === before) return null
