@@ -14,6 +14,7 @@ import { TaskHeader } from '@/components/ui/task-header'
 import { WitnessMark, type WitnessState } from '@/components/ui/witness-mark'
 import { WARN_SHARE } from '@/lib/sync/client/room'
 import { LostNotice } from './phone/lost-notice'
+import { SilentNotice } from './phone/silent-notice'
 import { StoreTrouble } from './phone/store-trouble'
 import { backOf, isForm, type JobTab, jobHref, type Route } from './route'
 import { useRoute } from './router'
@@ -55,6 +56,7 @@ export function Shell({ route, children }: { route: Route; children: ReactNode }
       {isForm(route) ? null : <UpdateBar />}
       <StoreTrouble />
       <LostNotice />
+      <SilentNotice />
       <main id="main" className="flex flex-1 flex-col">
         {children}
       </main>

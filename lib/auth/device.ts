@@ -1,5 +1,6 @@
 import { createPublicKey, type KeyObject, verify } from 'node:crypto'
 import { asShop } from '@/db/client'
+import { standOf } from '@/db/queries/device-stand'
 import { type Device, findSender } from '@/db/queries/devices'
 import type { Quarantine } from '@/db/queries/quarantine'
 import type { Id } from '@/lib/model/id'
@@ -64,18 +65,12 @@ export function isDeviceKey(jwk: PublicJwk): boolean {
 export async function senderOf(claim: SignedClaim): Promise<Result<SignedSender, DeviceProblem>> {
   const found = await asShop(claim.shopId, (tx) => findSender(tx, claim.deviceId))
   if (found?.device.personId !== claim.personId) return fail({ kind: 'unknownDevice' })
-  const { device, person } = found
+  const { device } = found
   const signed = { key: keyOf(device.publicKey), dsaEncoding: 'ieee-p1363' } as const
   if (!verify('sha256', Buffer.from(claim.text), signed, claim.signature)) {
     return fail({ kind: 'badSignature' })
   }
-  if (!person) return fail({ kind: 'noMembership' })
-  const { actor, isMember } = person
-  if (device.revokedAt !== null) {
-    const roles = device.revokedRoles ?? actor.roles
-    const quarantine = 'deviceRevoked'
-    return ok({ actor: { ...actor, roles }, deviceId: device.id, device, quarantine })
-  }
-  const quarantine = isMember ? null : 'membershipEnded'
-  return ok({ actor, deviceId: device.id, device, quarantine })
+  const stand = standOf(found)
+  if (!stand) return fail({ kind: 'noMembership' })
+  return ok({ ...stand, deviceId: device.id, device })
 }

@@ -1,14 +1,19 @@
+import { createHash } from 'node:crypto'
 import { v7 } from 'uuid'
 import { afterAll, beforeAll, describe, expect, it } from 'vitest'
 import { POST } from '@/app/api/desk/import/route'
 import { asShop } from '@/db/client'
 import { listAudit } from '@/db/queries/audit'
-import { revokeDevice } from '@/db/queries/devices'
+import { takeChanges } from '@/db/queries/changes'
 import { listLog } from '@/db/queries/log-entries'
+import { revokeMembership } from '@/db/queries/people'
+import { findPhoto } from '@/db/queries/photos'
 import { type ImportAnswer, importAnswer } from '@/lib/sync/protocol/unsent-file'
 import { jobOpen, machineAdd } from '../support/field-ops'
 import { createPhone } from '../support/phone'
-import { note, photoOf } from '../support/phone-world'
+import { note } from '../support/phone-world'
+import { jpegOf } from '../support/pictures'
+import { deskOf } from '../support/quarantine-world'
 import { RealShop } from '../support/real-shop'
 import type { TestShop } from '../support/shop-fixture'
 import { openSyncWorld, problemOf, type SyncWorld, signIn } from '../support/sync-world'
@@ -18,6 +23,15 @@ beforeAll(async () => {
   world = await openSyncWorld()
 })
 afterAll(() => world.close())
+
+let shade = 0
+/** A photo unlike any other: what stands behind its end changes the hash alone. */
+function anotherPhoto(jobId: string) {
+  shade += 1
+  const bytes = Buffer.concat([jpegOf(), Buffer.from(`shade ${shade}`)])
+  const hash = createHash('sha256').update(bytes).digest('hex')
+  return { hash, jobId, bytes: new Uint8Array(bytes).buffer, mime: 'image/jpeg' as const }
+}
 
 /** A phone that holds a job, a note and a photo which it cannot send, and the file it makes of them. */
 async function stranded(shop: TestShop, who = 'mechanic') {
@@ -32,7 +46,7 @@ async function stranded(shop: TestShop, who = 'mechanic') {
   const machine = machineAdd()
   const job = jobOpen(machine.fields.id)
   const jobId = job.fields.id
-  const photo = photoOf(jobId)
+  const photo = anotherPhoto(jobId)
   const { hash } = photo
   const picture = {
     hash,
@@ -142,7 +156,7 @@ describe('a file of unsent work at the desk', () => {
     expect(await asShop(world.a.id, (tx) => listLog(tx, jobId))).toEqual([])
   })
 
-  it('[IM1] refuses what is no such file, of another shop, of an unknown or revoked phone', async () => {
+  it('[IM1] refuses what is no such file, of another shop, of an unknown phone', async () => {
     const { fileOf, phone } = await stranded(world.a)
     const text = await fileOf()
     const kindOf = async (shop: TestShop, file: string) =>
@@ -156,10 +170,6 @@ describe('a file of unsent work at the desk', () => {
     expect(await kindOf(world.a, text.replace(phone.phone.actor.personId, other))).toBe(
       'unknownPhone',
     )
-    const now = new Date().toISOString()
-    const by = world.a.people.owner?.id ?? ''
-    await asShop(world.a.id, (tx) => revokeDevice(tx, { id: phone.phone.deviceId, by, now }))
-    expect(await kindOf(world.a, text)).toBe('revokedPhone')
   })
 
   it('[IM1] is for the dispatcher and the owner, and has a largest size', async () => {
@@ -194,5 +204,94 @@ describe('a file of unsent work at the desk', () => {
       entityId: phone.phone.deviceId,
       detail: { records: 4, taken: 4, refused: 0, photos: 1, photosTaken: 1 },
     })
+  })
+})
+
+describe('a file of a phone that may not write any more', () => {
+  /** The file of a phone that the owner has taken out since, with what its person let go as well. */
+  async function ofRevoked() {
+    const made = await stranded(world.a)
+    const { db } = made.phone.phone.core
+    const last = await db.outbox.orderBy('dseq').last()
+    const letGo = note(made.phone, made.jobId, 'let go')
+    await made.phone.record([letGo])
+    const given = await db.outbox.orderBy('dseq').last()
+    if (last === undefined || given === undefined) throw new Error('nothing is unsent')
+    await db.letGo.put({ ...given, state: 'letGo', letGoAt: 1 })
+    await db.outbox.delete(given.dseq)
+    const desk = deskOf((await signIn(world.a, 'owner')).cookie)
+    const { deviceId } = made.phone.phone
+    expect((await desk.revoke(deviceId)).status).toBe(200)
+    return { ...made, desk, deviceId, text: await made.fileOf() }
+  }
+
+  it('[IM4] [Q2] [Q3] goes into the quarantine of that phone, files too, and touches no job', async () => {
+    const { text, desk, deviceId, jobId, hash } = await ofRevoked()
+    const looked = await listOf(await bring(world.a, text, 'dispatcher', ''))
+    expect(looked).toMatchObject({ quarantine: 'deviceRevoked', applied: false })
+    expect(outcomes(looked)).toEqual(['new', 'new', 'new', 'new', 'new'])
+    expect((await desk.phone(deviceId)).items).toEqual([])
+    const answer = await listOf(await bring(world.a, text))
+    expect(answer).toMatchObject({ quarantine: 'deviceRevoked', applied: true })
+    expect(outcomes(answer)).toEqual(Array(5).fill('quarantined'))
+    expect(answer.photos).toMatchObject([{ hash, outcome: 'quarantined' }])
+    expect(await asShop(world.a.id, (tx) => listLog(tx, jobId))).toEqual([])
+    expect(await asShop(world.a.id, (tx) => findPhoto(tx, hash))).toBeUndefined()
+    const { items } = await desk.phone(deviceId)
+    expect(items.map((item) => [item.kind, item.decision, item.file?.here])).toEqual([
+      ['machine.add', null, undefined],
+      ['job.open', null, undefined],
+      ['log.add', null, undefined],
+      ['log.add', null, true],
+      ['log.add', null, undefined],
+    ])
+    const again = await listOf(await bring(world.a, text))
+    expect([...outcomes(again), again.photos[0]?.outcome]).toEqual(Array(6).fill('already'))
+    const trail = await asShop(world.a.id, (tx) => listAudit(tx, null))
+    const [brought] = trail.filter(
+      (one) => one.action === 'unsent.imported' && one.entityId === deviceId,
+    )
+    expect(brought?.detail).toMatchObject({ records: 5, quarantined: 5, taken: 0, refused: 0 })
+  })
+
+  it('[IM4] [Q5] [Q6] waits for the owner: accepted it lands once, also when the phone sends it later', async () => {
+    const { text, desk, deviceId, jobId, hash, phone, line } = await ofRevoked()
+    await bring(world.a, text)
+    const { items } = await desk.phone(deviceId)
+    const refuse = {
+      decision: 'refuse',
+      opId: items.at(-1)?.opId,
+      reason: 'Given up by its writer',
+    }
+    expect(await desk.decided(deviceId, refuse)).toMatchObject([{ is: 'refused' }])
+    const all = await desk.decided(deviceId, { decision: 'accept', opId: null })
+    expect(all.map((one) => one.is)).toEqual(Array(4).fill('accepted'))
+    line.fault = 'none'
+    await phone.sync()
+    const log = await asShop(world.a.id, (tx) => listLog(tx, jobId))
+    expect(log.map((row) => [row.order, row.body.kind, row.deviceId])).toEqual([
+      [1, 'note', deviceId],
+      [2, 'photo', deviceId],
+    ])
+    expect(await asShop(world.a.id, (tx) => findPhoto(tx, hash))).toMatchObject({ jobId })
+    const late = await listOf(await bring(world.a, text))
+    expect(outcomes(late)).toEqual(['already', 'already', 'already', 'already', 'already'])
+  })
+
+  it('[IM4] of somebody who left goes the same way; a forged one is refused whole', async () => {
+    const { fileOf, phone } = await stranded(world.b, 'second')
+    const text = await fileOf()
+    const personId = phone.phone.actor.personId
+    await asShop(world.b.id, async (tx) => {
+      await revokeMembership(tx, { personId, now: new Date().toISOString() })
+      await takeChanges(tx, [{ entity: 'person', id: personId, jobId: null }])
+    })
+    const forged = text.replace('Plug was wet', 'Plug was dry')
+    expect(await problemOf(await bring(world.b, forged))).toMatchObject({ kind: 'changedFile' })
+    const desk = deskOf((await signIn(world.b, 'owner')).cookie)
+    expect((await desk.phone(phone.phone.deviceId)).items).toEqual([])
+    const answer = await listOf(await bring(world.b, text))
+    expect(answer.quarantine).toBe('membershipEnded')
+    expect((await desk.phone(phone.phone.deviceId)).items).toHaveLength(4)
   })
 })

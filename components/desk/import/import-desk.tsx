@@ -17,6 +17,13 @@ const TROUBLE: Record<string, string> = {
   serverTrouble: 'The shop’s server did not answer as it should. Look again in a moment.',
   signIn: 'You are signed out. Sign in again, then choose the file once more.',
 }
+/** What may not write any more goes to the owner instead of into a job (IM4). */
+const ASIDE = {
+  deviceRevoked:
+    'The phone that made it was taken out. Nothing in it touches a job before the owner accepts it, under Phones.',
+  membershipEnded:
+    'The person whose work it is left the shop. Nothing in it touches a job before the owner accepts it, under Phones.',
+} as const
 
 /** Takes in the file of a phone that could not send: choose it, look at what is in it, take it in. */
 export function ImportDesk({ line = browserFileLine }: { line?: FileLine }) {
@@ -58,13 +65,14 @@ function Found({ list, busy, take }: { list: ImportAnswer; busy: boolean; take: 
         <b className="figures">{clockTime(list.madeAt, shop.zone)}</b>
         {bytes > 0 ? `, with ${size(bytes)} of photos and voice notes` : ''}.
       </p>
+      {list.quarantine === null ? null : <p>{ASIDE[list.quarantine]}</p>}
       <p role="status" className="text-row font-bold">
         {summaryOf(list)}
       </p>
       <ImportList list={list} zone={shop.zone} />
       {list.applied ? null : (
         <Key kind="main" disabled={busy} onClick={take}>
-          Take it in
+          {list.quarantine === null ? 'Take it in' : 'Set it aside'}
         </Key>
       )}
     </section>

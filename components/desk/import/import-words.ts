@@ -13,6 +13,7 @@ export function listedTitle(op: Pick<Listed, 'kind' | 'entry'>): string {
 const OUTCOMES: Record<ImportOutcome, string> = {
   new: 'New to the shop',
   taken: 'Taken in',
+  quarantined: 'Set aside for the owner’s word',
   already: 'The shop has it already',
   refused: 'Refused',
   blocked: 'Waits for a record the shop does not have',
@@ -33,6 +34,7 @@ export function summaryOf(answer: ImportAnswer): string {
   const parts = [
     [count('new'), 'new to the shop'],
     [count('taken'), 'taken in'],
+    [count('quarantined'), 'set aside for the owner’s word'],
     [count('already'), 'here already'],
     [count('refused'), 'refused'],
     [count('blocked') + count('later'), 'waiting'],

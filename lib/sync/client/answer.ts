@@ -92,11 +92,16 @@ class AnswerPlan {
     }
   }
 
-  /** What went with the store before this one is kept until its person has read it (P22). */
+  /** What went with the store before this one, or may have, is kept until its person has read it (P22). */
   async #lost(): Promise<void> {
-    const { lost } = this.#of.response
-    if (lost === null || (await readMeta(this.#core.db, 'lost')) !== undefined) return
-    this.#writes.meta.lost = { ops: lost.ops, lastOn: lost.lastAt, told: false }
+    const { lost, silent } = this.#of.response
+    const { db } = this.#core
+    if (lost !== null && (await readMeta(db, 'lost')) === undefined) {
+      this.#writes.meta.lost = { ops: lost.ops, lastOn: lost.lastAt, told: false }
+    }
+    if (silent !== undefined && (await readMeta(db, 'silent')) === undefined) {
+      this.#writes.meta.silent = { ...silent, told: false }
+    }
   }
 
   /** Entries that opened a job again which the shop had closed: the person is told (R13). */

@@ -26,3 +26,33 @@ export const watchLost = (db: PhoneDb, failed: (cause: unknown) => void): Watch<
     failed,
     life: db.life,
   })
+
+/** Other phones of this person that told of unsent work when they were last heard (P22). */
+export type SilentPhones = { phones: number; ops: number; photos: number; lastAt: string }
+
+/** Phones that fell silent, until their person has read it; null when none did. */
+export async function silentOf(db: PhoneDb): Promise<SilentPhones | null> {
+  const held = await readMeta(db, 'silent')
+  if (held === undefined || held.told) return null
+  const { told: _, ...silent } = held
+  return silent
+}
+
+/** Their person has read it: it is not told again. */
+export async function silentIsRead(db: PhoneDb): Promise<void> {
+  const held = await readMeta(db, 'silent')
+  if (held !== undefined) await writeMeta(db, 'silent', { ...held, told: true })
+}
+
+/** As silentOf, for a screen. */
+export const watchSilent = (
+  db: PhoneDb,
+  failed: (cause: unknown) => void,
+): Watch<SilentPhones | null> =>
+  liveCell<SilentPhones | null, SilentPhones | null>({
+    initial: null,
+    read: () => silentOf(db),
+    open: (silent) => silent,
+    failed,
+    life: db.life,
+  })

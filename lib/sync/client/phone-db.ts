@@ -103,6 +103,8 @@ export type MetaValues = {
   wiping: 'handedOver' | 'deleted'
   /** What went with the store before this one (P22); `told` once its person has read it. */
   lost: { ops: number; lastOn: string | null; told: boolean }
+  /** Other phones of this person that fell silent with unsent work (P22); `told` once it was read. */
+  silent: { phones: number; ops: number; photos: number; lastAt: string; told: boolean }
 }
 /** `reopened`: closed at the shop, and opened again by what this phone still had to say (R13). */
 export type Notice = { jobId: Id; what: 'reopened'; at: number }

@@ -137,5 +137,9 @@ export const syncResponse = z.object({
   missing: z._default(z.array(z.tuple([z.int(), z.int()])), []),
   /** Since protocol 2: what an emptied store lost, as far as the shop can tell (P22). */
   lost: z._default(z.nullable(z.object({ ops: z.int(), lastAt: z.nullable(z.string()) })), null),
+  /** To a store that begins anew: other phones of its person that fell silent with unsent work (P22). */
+  silent: z.optional(
+    z.object({ phones: z.int(), ops: z.int(), photos: z.int(), lastAt: z.string() }),
+  ),
 })
 export type SyncResponse = z.infer<typeof syncResponse>

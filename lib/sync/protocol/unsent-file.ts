@@ -71,12 +71,14 @@ export function fileText(of: {
   return ['farbench-unsent-file-2', of.shop, of.person, of.device, of.at, of.bodyHash].join('\n')
 }
 
-const outcome = z.enum(['new', 'taken', 'already', 'refused', 'blocked', 'later'])
+const outcome = z.enum(['new', 'taken', 'quarantined', 'already', 'refused', 'blocked', 'later'])
 /** What the desk hears of a file: of each record what it is, and what became of it. */
 export const importAnswer = z.object({
   person: z.object({ id, name: z.nullable(z.string()) }),
   device: z.object({ id, name: z.string() }),
   madeAt: z.string(),
+  /** Why what is in it waits for the owner's word (IM4); null when it is taken as a push would be. */
+  quarantine: z.nullable(z.enum(['deviceRevoked', 'membershipEnded'])),
   /** False while it was only looked at. */
   applied: z.boolean(),
   ops: z.array(

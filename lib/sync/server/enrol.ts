@@ -20,6 +20,7 @@ import {
 } from '@/lib/sync/protocol/device'
 import { readCapped, readJson } from './body'
 import type { HttpProblem } from './problems'
+import { noteSilent } from './store-change'
 
 /** Most bytes of an enrolment: a key and a few words. */
 const MAX_BYTES = 8 * 1024
@@ -71,6 +72,7 @@ export function enrol(
     await appendAudit(tx, [{ ...entry, ...what }])
     const after = { actor, id, at, newId }
     for (const kept of request.kept ?? []) await noteGone(tx, kept, after)
+    await noteSilent(tx, { personId: actor.personId, deviceId: id, at, newId })
     return ok({ deviceId: id, serverTime: at })
   })
 }

@@ -1,31 +1,23 @@
 import { asShop } from '@/db/client'
 import { appendAudit } from '@/db/queries/audit'
 import { findPhoto } from '@/db/queries/photos'
-import { findOps, type StoredOp } from '@/db/queries/sync-ops'
-import type { Id } from '@/lib/model/id'
-import type { Actor } from '@/lib/model/person'
-import type { Result } from '@/lib/model/result'
-import { fail, ok } from '@/lib/model/result'
-import type { Files } from '@/lib/ports/files'
+import { fail, ok, type Result } from '@/lib/model/result'
 import { MAX_OPS, type OpResult } from '@/lib/sync/protocol/message'
 import type { ImportAnswer, ImportOutcome, UnsentBody } from '@/lib/sync/protocol/unsent-file'
+import {
+  type Became,
+  type Bringing,
+  headOf,
+  type Listed,
+  type ListedOp,
+  type ListedPhoto,
+  lookAtOps,
+  settled,
+} from './import-list'
+import { putAside } from './import-quarantine'
 import { takePhoto } from './photos'
 import { takePush } from './push'
 import { type CheckedFile, checkFile, type FileProblem } from './unsent-file'
-
-/** Who brings a file of unsent work to the desk, and whether it is only to be looked at. */
-export type Bringing = {
-  desk: Actor
-  text: string
-  apply: boolean
-  files: Files
-  now: number
-  newId: () => Id
-}
-
-type ListedOp = ImportAnswer['ops'][number]
-type ListedPhoto = ImportAnswer['photos'][number]
-type Became = Pick<ListedOp, 'outcome' | 'code' | 'detail'>
 
 /**
  * Takes what a phone could not send, from the file it made (IM2): the same way as a push of that phone,
@@ -36,36 +28,29 @@ export async function importFile(with_: Bringing): Promise<Result<ImportAnswer, 
   const checked = await checkFile(with_.desk, with_.text)
   if (!checked.ok) return fail(checked.problem)
   const file = checked.value
+  const { quarantine } = file
+  const answer: ImportAnswer = {
+    person: { id: file.actor.personId, name: file.actor.name },
+    device: { id: file.device.id, name: file.device.name },
+    madeAt: file.madeAt,
+    quarantine,
+    applied: with_.apply,
+    ...(quarantine === null
+      ? await takeIn(file, with_)
+      : await putAside({ ...file, quarantine }, with_)),
+  }
+  if (with_.apply) await keepTrail(answer, with_)
+  return ok(answer)
+}
+
+async function takeIn(file: CheckedFile, with_: Bringing): Promise<Listed> {
   const became = with_.apply ? await takeOps(file, with_) : await lookAtOps(file)
   const ops = file.body.ops.map((held, index): ListedOp => {
     const head = headOf(held.op, index)
     const now = held.state === 'letGo' ? LET_GO : (became.get(head.opId) ?? settled('later'))
     return { ...head, since: held.since, heldAs: held.state, ...now }
   })
-  const photos = await takePhotos(file, with_)
-  const answer: ImportAnswer = {
-    person: { id: file.actor.personId, name: file.actor.name },
-    device: { id: file.device.id, name: file.device.name },
-    madeAt: file.madeAt,
-    applied: with_.apply,
-    ops,
-    photos,
-  }
-  if (with_.apply) await keepTrail(answer, with_)
-  return ok(answer)
-}
-
-/** What an op says of itself, for the list; nothing of it is believed before it was judged. */
-function headOf(op: unknown, index: number): Pick<ListedOp, 'opId' | 'kind' | 'entry' | 'jobId'> {
-  const said = (typeof op === 'object' && op !== null ? op : {}) as Record<string, unknown>
-  const body = (said.fields as { body?: { kind?: unknown } } | undefined)?.body
-  const text = (value: unknown) => (typeof value === 'string' ? value.slice(0, 64) : null)
-  return {
-    opId: text(said.id) ?? `#${index}`,
-    kind: text(said.kind) ?? 'unknown',
-    entry: text(body?.kind),
-    jobId: text(said.jobId),
-  }
+  return { ops, photos: await takePhotos(file, with_) }
 }
 
 /** Pushes the ops in the phone's order; blocked ones once more, as their parents may have come after them. */
@@ -92,8 +77,6 @@ async function takeOps(
 /** Given up by its own person: it is shown, and not taken behind their back. */
 const LET_GO: Became = { outcome: 'refused', code: 'letGo', detail: null }
 
-const settled = (outcome: ImportOutcome): Became => ({ outcome, code: null, detail: null })
-
 function outcomeOf(result: OpResult): Became {
   switch (result.result) {
     case 'duplicate':
@@ -107,20 +90,6 @@ function outcomeOf(result: OpResult): Became {
     case 'retry':
       return settled('later')
   }
-}
-
-/** What the shop knows of each op without taking any. */
-async function lookAtOps({ actor, body }: CheckedFile): Promise<Map<string, Became>> {
-  const ids = body.ops.map((held, index) => headOf(held.op, index).opId)
-  const known = await asShop(actor.shopId, (tx) => findOps(tx, ids))
-  return new Map(ids.map((opId) => [opId, knownAs(known.get(opId))]))
-}
-
-function knownAs(op: StoredOp | undefined): Became {
-  if (op === undefined || op.outcome === 'quarantined') return settled('new')
-  if (op.outcome === 'rejected') return { outcome: 'refused', code: op.code, detail: op.detail }
-  if (op.outcome === 'blocked') return { outcome: 'blocked', code: op.blockedOn, detail: null }
-  return settled('already')
 }
 
 async function takePhotos(file: CheckedFile, with_: Bringing): Promise<ListedPhoto[]> {
@@ -164,6 +133,7 @@ async function keepTrail(answer: ImportAnswer, { desk, now, newId }: Bringing): 
       fileMadeAt: answer.madeAt,
       records: answer.ops.length,
       taken: count(answer.ops, 'taken'),
+      quarantined: count(answer.ops, 'quarantined'),
       already: count(answer.ops, 'already'),
       refused: count(answer.ops, 'refused'),
       photos: answer.photos.length,

@@ -41,7 +41,6 @@ const TABLE = {
   changedFile: [422, 'The file was changed after the phone made it. Nothing was taken.'],
   otherShop: [422, 'The file is of another shop. Nothing was taken.'],
   unknownPhone: [422, 'The shop does not know the phone that made this file. Nothing was taken.'],
-  revokedPhone: [422, 'The phone that made this file was taken out. Nothing was taken.'],
   personLeft: [422, 'The person whose work this is left the shop. Nothing was taken.'],
   decidedBefore: [409, 'That was decided before, and the word stands. Read the list again.'],
   tooLarge: [413, 'Too much at once. Send it in smaller parts.'],

@@ -1,6 +1,6 @@
 import { asShop, asShopLightly, type ShopTx } from '@/db/client'
 import { pullPage } from '@/db/queries/change-log'
-import { type Device, lossBefore, noteDevice } from '@/db/queries/devices'
+import { type Device, noteDevice } from '@/db/queries/devices'
 import type { Quarantine } from '@/db/queries/quarantine'
 import type { Id } from '@/lib/model/id'
 import type { Actor } from '@/lib/model/person'
@@ -20,6 +20,7 @@ import type { HttpProblem } from './problems'
 import { takePush } from './push'
 import { takeIntoQuarantine, wipeOrder } from './quarantine'
 import { bodyHashOf, type Claim, readClaim } from './signed-request'
+import { noteStoreChange, toldToNewStore } from './store-change'
 import { takesProtocol } from './upgrade'
 
 /** A push as it came, still packed, with what it claims about its sender. */
@@ -65,8 +66,8 @@ export type Exchange = {
 }
 
 /** An answer in the words of the phone's own protocol: the one before knows nothing of the newer fields. */
-export type Answer = Omit<SyncResponse, 'order' | 'missing' | 'lost'> &
-  Partial<Pick<SyncResponse, 'order' | 'missing' | 'lost'>>
+export type Answer = Omit<SyncResponse, 'order' | 'missing' | 'lost' | 'silent'> &
+  Partial<Pick<SyncResponse, 'order' | 'missing' | 'lost' | 'silent'>>
 
 /** Takes the push, then answers the pull, so that a phone gets its own rows back in the same answer. */
 export async function exchange(with_: Exchange): Promise<Answer> {
@@ -79,14 +80,14 @@ export async function exchange(with_: Exchange): Promise<Answer> {
     message.protocol >= 2 && message.brief === true ? ownEntries(message.ops, pushed) : null
   // Nothing in here was promised to anybody: a note that a crash loses is made again by the next exchange.
   const told = await asShopLightly(actor.shopId, async (tx) => {
+    await noteStoreChange(tx, { device: device.device, canary: message.canary, at, newId })
     await noteDevice(tx, contactOf(with_, at))
     const pull = await pullFor(tx, with_, own)
     if (message.protocol < 2) return { pull }
     const { ops, cursor } = message
     const missing = await missingNumbers(tx, { device: device.device, dseq, ops: ops.length, now })
-    const loss = cursor === null ? await lossBefore(tx, deviceId) : null
-    const lost = loss && { ops: loss.ops, lastAt: loss.lastOn }
-    return { pull, order: 'none' as const, missing, lost }
+    const before = cursor === null ? await toldToNewStore(tx, deviceId) : { lost: null }
+    return { pull, order: 'none' as const, missing, ...before }
   })
   const settled = own === null ? pushed : foldedPush(message.ops, pushed)
   return { protocol: message.protocol, serverTime: at, ...settled, ...told }
@@ -100,6 +101,7 @@ async function handOver(with_: Exchange, why: Quarantine): Promise<Answer> {
   const sender = { actor, deviceId, why, at, newId }
   const pushed = await takeIntoQuarantine(message.ops, sender)
   const order = await asShop(actor.shopId, async (tx) => {
+    await noteStoreChange(tx, { device: device.device, canary: message.canary, at, newId })
     await noteDevice(tx, contactOf(with_, at))
     if (message.protocol < 2) return 'none'
     const { wipeToldAt } = device.device

@@ -1,7 +1,8 @@
 import { verify } from 'node:crypto'
 import { asShop } from '@/db/client'
-import { type Device, findDevice } from '@/db/queries/devices'
-import { findActor } from '@/db/queries/people'
+import { standOf } from '@/db/queries/device-stand'
+import { type Device, findSender } from '@/db/queries/devices'
+import type { Quarantine } from '@/db/queries/quarantine'
 import type { Actor } from '@/lib/model/person'
 import { fail, ok, type Result } from '@/lib/model/result'
 import {
@@ -16,18 +17,20 @@ import { bodyHashOf } from './signed-request'
 
 /** Why a whole file is refused; each has its one sentence at the desk. */
 export type FileProblem = {
-  kind:
-    | 'notOurFile'
-    | 'olderFile'
-    | 'changedFile'
-    | 'otherShop'
-    | 'unknownPhone'
-    | 'revokedPhone'
-    | 'personLeft'
+  kind: 'notOurFile' | 'olderFile' | 'changedFile' | 'otherShop' | 'unknownPhone' | 'personLeft'
 }
 
-/** A file that is what it says: from that phone, of that person, unchanged. */
-export type CheckedFile = { actor: Actor; device: Device; madeAt: string; body: UnsentBody }
+/**
+ * A file that is what it says: from that phone, of that person, unchanged. `quarantine`: why what is in it
+ * waits for the owner's word, as what that phone sends does (IM4).
+ */
+export type CheckedFile = {
+  actor: Actor
+  device: Device
+  quarantine: Quarantine | null
+  madeAt: string
+  body: UnsentBody
+}
 
 /**
  * Checks a file of unsent work for the shop of whoever brings it (IM1): shape, shop, phone, person and
@@ -41,17 +44,15 @@ export async function checkFile(
   if (!file.ok) return file
   const { shop, person, device: deviceId, at } = file.value
   if (shop !== desk.shopId) return fail({ kind: 'otherShop' })
-  const { device, actor } = await asShop(desk.shopId, async (tx) => ({
-    device: await findDevice(tx, deviceId),
-    actor: await findActor(tx, person),
-  }))
-  if (!device || device.personId !== person) return fail({ kind: 'unknownPhone' })
+  const found = await asShop(desk.shopId, (tx) => findSender(tx, deviceId))
+  if (found?.device.personId !== person) return fail({ kind: 'unknownPhone' })
+  const { device } = found
   if (!isSigned(file.value, device)) return fail({ kind: 'changedFile' })
-  if (device.revokedAt !== null) return fail({ kind: 'revokedPhone' })
-  if (!actor) return fail({ kind: 'personLeft' })
+  const stand = standOf(found)
+  if (!stand) return fail({ kind: 'personLeft' })
   const body = unsentBody.safeParse(jsonOf(file.value.body))
   if (!body.success) return fail({ kind: 'notOurFile' })
-  return ok({ actor, device, madeAt: at, body: body.data })
+  return ok({ ...stand, device, madeAt: at, body: body.data })
 }
 
 function readFrame(text: string): Result<UnsentFile, FileProblem> {
