@@ -1,4 +1,5 @@
 // S11, the lost phone: taken out, it hands over, is emptied, and the owner decides. Real routes and stores.
+import pg from 'pg'
 import { afterAll, beforeAll, describe, expect, it } from 'vitest'
 import { GET as getPhoto } from '@/app/api/photos/[hash]/route'
 import { listAudit } from '@/db/queries/audit'
@@ -11,6 +12,7 @@ import { recordPastGate } from '../support/past-gate'
 import { RawDevice } from '../support/raw-device'
 import { enrolAt, type SyncWorld, signIn } from '../support/sync-world'
 import { expectWholeShop } from '../support/whole-shop'
+import { restore, takeBackup } from './simulator/backup'
 
 let at: FieldWorld
 let world: SyncWorld
@@ -123,6 +125,27 @@ describe('[S11] a lost phone', () => {
     expect(app.store.session.get()).toMatchObject({ emptied: true })
     const { items } = await at.desk.phone(deviceId)
     expect(items.map((item) => item.opId).sort()).toEqual([aside?.opId, letGo?.opId].sort())
+    await app.end()
+  })
+
+  it('[Q4] [P12] offers anew what a shop restored from a backup has lost, before it empties itself', async () => {
+    const { app, jobId } = await at.atWork('second')
+    const { deviceId } = app.phone()
+    const admin = new pg.Client({ connectionString: world.db.adminUrl })
+    await admin.connect()
+    const backup = await takeBackup(admin, [world.a.id])
+    const lost = note(app, jobId, 'Taken, and gone with the restore')
+    await app.phone().record([lost])
+    await app.sync()
+    expect(await at.entriesOf(jobId)).toHaveLength(1)
+    await restore(admin, [world.a.id], backup)
+    await admin.end()
+    expect(await at.entriesOf(jobId)).toEqual([])
+    await at.desk.revoke(deviceId)
+    await app.sync()
+    expect(app.store.session.get()).toMatchObject({ emptied: true })
+    const { items } = await at.desk.phone(deviceId)
+    expect(items.map((item) => item.kind)).toEqual(['log.add'])
     await app.end()
   })
 

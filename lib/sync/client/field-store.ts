@@ -15,6 +15,7 @@ import {
   wasEmptied,
 } from './device-db'
 import { askWho, type EnrolProblem } from './enrol'
+import { ifThereIsRoom } from './free-room'
 import { countUnsent } from './keepsake'
 import { Phone } from './phone'
 import { type Indexed, readMeta } from './phone-db'
@@ -211,7 +212,7 @@ export class FieldStore {
       return
     }
     phone.core.db.life.lost.subscribe(() => this.trouble.set('lost'))
-    await setCurrent(this.#device, actor, this.ports.clock.now())
+    await this.#holds(actor)
     if (!(await phone.isEnrolled())) await phone.enrol()
     this.phone.get()?.close()
     this.phone.set(phone)
@@ -222,9 +223,14 @@ export class FieldStore {
     this.#askForBook(true)
   }
 
+  /** Takes down who is at work; without room for it a phone that knows them already opens all the same. */
+  #holds(actor: Actor): Promise<void> {
+    return ifThereIsRoom(() => setCurrent(this.#device, actor, this.ports.clock.now()))
+  }
+
   /** The shop's word on the same person: name and roles may have changed. */
   async #renew(actor: Actor): Promise<void> {
-    await setCurrent(this.#device, actor, this.ports.clock.now())
+    await this.#holds(actor)
     const now = this.session.get()
     const phone = this.phone.get()
     if (phone !== null) phone.actor = actor

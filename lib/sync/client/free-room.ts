@@ -53,3 +53,12 @@ export async function withRoom<T>(core: Core, write: () => Promise<T>): Promise<
     return await write()
   }
 }
+
+/** Runs a write that can as well be done later: without room it is left undone. */
+export async function ifThereIsRoom(write: () => Promise<unknown>): Promise<void> {
+  try {
+    await write()
+  } catch (cause) {
+    if (!isFull(cause)) throw cause
+  }
+}

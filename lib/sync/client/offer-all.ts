@@ -1,22 +1,25 @@
 import { commit, noWrites } from './commit'
 import type { Core } from './core'
 import { type OutboxRecord, type PhotoRecord, sealedPhoto } from './phone-db'
+import { photosToOffer } from './photo-store'
 
 /**
- * Before a phone empties itself (Q4), what the shop once refused is offered as well: what is stuck, what its
- * person gave up sending, and files that were refused and are still here. True when there was any of it.
+ * Before a phone empties itself (Q4), all that is still on it is offered: what is stuck, what its person gave
+ * up sending, files that were refused and are still here; and what the shop took lately, as a shop that was
+ * restored from a backup meanwhile may have it no more (P12). True when there was any of it.
  */
 export async function offerAll(core: Pick<Core, 'db' | 'step'>): Promise<boolean> {
   return await commit(core, async () => {
     const { db } = core
-    const stuck = await db.outbox.where('state').equals('stuck').toArray()
+    const held = await db.outbox.where('state').anyOf('stuck', 'taken', 'done').toArray()
     const letGo = await db.letGo.toArray()
-    const photos = await refusedPhotos(core)
-    if (stuck.length + letGo.length + photos.length === 0) return null
+    const refused = await refusedPhotos(core)
+    const photos = [...refused, ...(await photosToOffer(db, 0))]
+    if (held.length + letGo.length + photos.length === 0) return null
     const given = letGo.map(({ letGoAt: _, ...record }) => record)
     return {
       ...noWrites(),
-      outbox: [...stuck, ...given].map((record) => ({ ...record, ...AGAIN })),
+      outbox: [...held, ...given].map((record) => ({ ...record, ...AGAIN })),
       takeBack: letGo.map((record) => record.opId),
       photos: photos.map((photo) => ({ ...photo, state: 'waiting', reason: null, uploaded: null })),
     }
@@ -27,6 +30,7 @@ const AGAIN = {
   state: 'waiting',
   reason: null,
   detail: null,
+  takenAt: null,
   unsettled: 1,
 } as const satisfies Partial<OutboxRecord>
 

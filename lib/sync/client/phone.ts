@@ -7,6 +7,7 @@ import type { Instant } from '@/lib/model/time'
 import type { SyncPorts } from '@/lib/ports/sync-ports'
 import type { OpInput } from '@/lib/sync/protocol/op'
 import { settleRows } from './answer'
+import { plantCanary } from './canary'
 import { type Core, OpenedCache } from './core'
 import { Drafts } from './drafts'
 import { deviceOf, type EnrolProblem, enrol } from './enrol'
@@ -77,10 +78,7 @@ export class Phone {
     const core: Core = { db, keys, personId: actor.personId, cache: new OpenedCache(), step }
     const phone = new Phone(core, options, deviceId)
     phone.stamp.offsetMs = (await readMeta(db, 'clockOffset')) ?? 0
-    if ((await readMeta(db, 'canary')) === undefined) {
-      const canary = { id: ports.ids.next(), madeAt: ports.clock.now() }
-      await ifThereIsRoom(() => writeMeta(db, 'canary', canary))
-    }
+    await plantCanary(db, ports)
     await ifThereIsRoom(() => settleRows(core))
     await remember(db, ports, null)
     return phone
@@ -217,13 +215,9 @@ export class Phone {
     if (photoBytes > 0 && !(await this.room.hasRoomFor(photoBytes))) {
       throw new AppError('noRoomForPhoto')
     }
-    const { step } = this.core
-    step('roomLooked')
     const { roles, personId } = this.#actor
     await refuseByRole(this.core, ops, { roles, personId, guideSafe: this.#guideSafe() })
-    step('allowed')
     await this.drafts.settled(clearDrafts)
-    step('draftsSettled')
     await record(this.core, {
       ops,
       ids: ops.map((input) => opIdOf(input) ?? this.#ports.ids.next()),
@@ -232,11 +226,9 @@ export class Phone {
       photos: more.photos ?? [],
       clearDrafts,
     })
-    step('kept')
     await this.drafts.finished(clearDrafts)
-    step('draftsFinished')
     await remember(this.core.db, this.#ports, this.stamp.now())
-    step('remembered')
+    this.core.step('remembered')
     this.room.askToKeep().catch(() => undefined)
     this.#onRecord()
     this.sender.poke('record')

@@ -38,6 +38,11 @@ export class PhotoTurn {
     return run === null ? null : await run.next()
   }
 
+  /** What this run has done with is tried once more, as it was offered anew. */
+  again(): void {
+    this.#run = null
+  }
+
   async #fetched(): Promise<PhotoRun | null> {
     if (this.#run !== null) return this.#run
     try {

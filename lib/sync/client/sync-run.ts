@@ -98,6 +98,7 @@ export class SyncRun {
     const hasNews = this.#toldPhotos > left
     const offers = this.#wipe && !this.#offered && (await offerAll(this.#store))
     this.#offered ||= this.#wipe
+    if (offers) this.#photos.again()
     if (!hasNews && !offers) return false
     this.#toldPhotos = left
     this.#wipe = false

@@ -1,4 +1,5 @@
 import { describe, expect, test, vi } from 'vitest'
+import { testClock } from '../../support/phone'
 import { note, outbox } from '../../support/phone-world'
 import { bigPhotoOf, bytesOf, isWhole, KB, photoRecord, withPhoto } from '../../support/photo-phone'
 
@@ -97,6 +98,17 @@ describe('a photo that meets trouble', () => {
       state: 'stuck',
       reason: 'bytesGone',
     })
+  })
+
+  test('[P12] a phone whose clock is a year back offers it again as well', async () => {
+    const yearBack = testClock(Date.UTC(2025, 10, 24, 18, 40))
+    const { shop, phone, photo } = await withPhoto(20 * KB, { clock: yearBack })
+    await phone.sync()
+    expect((await photoRecord(phone, photo.hash)).state).toBe('sent')
+    shop.photos.delete(photo.hash)
+    shop.restoreWithout([])
+    await phone.sync()
+    expect(await photoRecord(phone, photo.hash)).toMatchObject({ reason: 'bytesGone' })
   })
 
   test('[P25] a photo kept by the version before, bytes beside its facts, is sent all the same', async () => {

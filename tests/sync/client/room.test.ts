@@ -2,8 +2,11 @@ import { IDBObjectStore as FDBObjectStore } from 'fake-indexeddb'
 import { afterEach, describe, expect, test, vi } from 'vitest'
 import { readMeta } from '@/lib/sync/client/phone-db'
 import { RoomWatch } from '@/lib/sync/client/room'
-import { createPhone } from '../../support/phone'
+import { newBrowser, startApp } from '../../support/field-app'
+import { jobOpen, machineAdd } from '../../support/field-ops'
+import { createPhone, testClock } from '../../support/phone'
 import { atWork, note, outbox, photoOf, states } from '../../support/phone-world'
+import { ShopDouble } from '../../support/shop-double'
 
 afterEach(() => {
   vi.restoreAllMocks()
@@ -95,6 +98,25 @@ describe('[P21] room on the phone', () => {
     expect(left.map((row) => row.id).sort()).toEqual([unsentIn, jobId].sort())
     expect((await phone.see(phone.phone.log(jobId))).length).toBe(2)
     expect((await phone.see(phone.phone.unsent)).count).toBe(2)
+  })
+
+  test('[P21] a phone without any room opens all the same, and shows what it holds', async () => {
+    const shop = new ShopDouble()
+    const browser = newBrowser(testClock().now())
+    const first = startApp(shop.fetch, browser)
+    await first.opened()
+    const machine = machineAdd()
+    const job = jobOpen(machine.fields.id)
+    await first.phone().record([machine, job])
+    // As a sender leaves them that may not look into the rows: still to be worked out.
+    await first.phone().core.db.outbox.toCollection().modify({ unsettled: 1 })
+    await first.end()
+    noRoomFor(() => true)
+    const again = startApp(shop.fetch, browser)
+    expect(await again.opened()).toMatchObject({ kind: 'ready' })
+    const rows = await again.phone().core.db.row.where('entity').equals('job').toArray()
+    expect(rows.map((row) => row.id)).toEqual([job.fields.id])
+    await again.end()
   })
 
   test('[P1] with nothing left to free it says so, and nothing of the record is there', async () => {
