@@ -132,10 +132,12 @@ export class Drafts {
   /** Waits for what is still being written of these drafts. */
   async settled(keys: readonly string[]): Promise<void> {
     await Promise.all(keys.map((key) => this.#held.get(key)?.written()))
+    this.#home.step('draftsSettled')
   }
 
   /** After a record finished them: nothing of them is left, also not what was written meanwhile. */
   async finished(keys: readonly string[]): Promise<void> {
     await Promise.all(keys.map((key) => this.#held.get(key)?.clear()))
+    this.#home.step('draftsFinished')
   }
 }

@@ -41,6 +41,7 @@ export async function record(core: Core, of: Recorded): Promise<void> {
     if (!isFull(cause)) throw cause
     throw new AppError(photos.length > 0 ? 'noRoomForPhoto' : 'storeFull', { cause })
   }
+  core.step('kept')
 }
 
 async function prepare(core: Core, of: Recorded, photos: SealedPhoto[]): Promise<Writes | null> {

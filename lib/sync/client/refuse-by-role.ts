@@ -11,10 +11,12 @@ export async function refuseByRole(
   ops: readonly OpInput[],
   writer: Writer,
 ): Promise<void> {
+  core.step('roomLooked')
   for (const op of ops) {
     if (!mayRecord(op, writer, await targetOf(core, op, ops)))
       throw new AppError('notAllowed', { context: { kind: op.kind } })
   }
+  core.step('allowed')
 }
 
 /** The entry an op points back to, kept here or recorded in the same piece. */
