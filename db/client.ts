@@ -53,9 +53,9 @@ export function openDb(url: string, max = 10): Db {
   const pool = new pg.Pool({
     connectionString: url,
     max,
-    // Who finds every connection taken for so long is answered `busy` and comes back (a choice: twice
-    // the time after which a hanging writer is ended).
-    connectionTimeoutMillis: 10_000,
+    // Who finds every connection taken for so long is answered `busy` and comes back (a choice: longer
+    // than the 5 s after which a hanging writer is ended).
+    connectionTimeoutMillis: 8_000,
     types: { getTypeParser },
     // lock_timeout and the idle limit bind writers that hold the counter (sync.md section 1).
     options: '-c timezone=UTC -c lock_timeout=2000 -c idle_in_transaction_session_timeout=5000',
