@@ -18,7 +18,8 @@ import { SilentNotice } from './phone/silent-notice'
 import { StoreTrouble } from './phone/store-trouble'
 import { backOf, isForm, type JobTab, jobHref, type Route } from './route'
 import { useRoute } from './router'
-import { ThemeKey, useThemeByTheSun } from './theme-menu'
+import { ThemeKey } from './theme-key'
+import { useThemeByTheSun } from './use-theme'
 import { machineName } from './words'
 
 const TABS: readonly JobTab[] = ['job', 'checks', 'log', 'parts']

@@ -1,4 +1,4 @@
-import { sunTimes } from '@/lib/diag/daylight'
+import type { Night } from './nights'
 
 /**
  * Which of the three themes is on. The choice and the next nights are kept beside each other in local
@@ -8,12 +8,9 @@ const THEMES = ['day', 'shade', 'night'] as const
 export type Theme = (typeof THEMES)[number]
 export type ThemeChoice = Theme | 'auto'
 
-/** From civil dusk to civil dawn, in milliseconds since 1970. */
-type Night = [from: number, to: number]
 type Kept = { choice: ThemeChoice | null; nights: Night[] }
 
 const KEY = 'farbench-theme'
-const DAY_MS = 86_400_000
 const GROUND: Record<Theme, string> = { day: '#fcfcf6', shade: '#ebdcb9', night: '#0b0806' }
 
 /** What this phone keeps; nothing kept or nothing readable answers no choice and no nights. */
@@ -52,26 +49,12 @@ export function themeChoice(): ThemeChoice {
 export const chooseTheme = (choice: ThemeChoice): void => keep({ ...readKept(), choice })
 
 /** Keeps the nights around `nowMs` at a place: yesterday's, today's and tomorrow's. */
-export function keepNights(at: { latitude: number; longitude: number }, nowMs: number): void {
+export async function keepNights(
+  at: { latitude: number; longitude: number },
+  nowMs: number,
+): Promise<void> {
+  const { nightsAt } = await import('./nights')
   keep({ choice: readKept().choice, nights: nightsAt(at.latitude, at.longitude, nowMs) })
-}
-
-/** Nights at a place around an instant. A day whose sun never reaches civil dawn is one whole night. */
-export function nightsAt(latitude: number, longitude: number, nowMs: number): Night[] {
-  const days = [-1, 0, 1, 2].map((n) => {
-    const dayMs = nowMs + n * DAY_MS
-    return { dayMs, sun: sunTimes(latitude, longitude, dayMs) }
-  })
-  const nights: Night[] = []
-  for (const [i, { dayMs, sun }] of days.entries()) {
-    const next = days[i + 1]
-    if (sun.never === 'rises' && sun.civilDawn === null) {
-      nights.push([dayMs - DAY_MS / 2, dayMs + DAY_MS / 2])
-    } else if (sun.civilDusk !== null && next) {
-      nights.push([sun.civilDusk, next.sun.civilDawn ?? next.dayMs])
-    }
-  }
-  return nights
 }
 
 /** The theme a choice means at an instant: auto is night between civil dusk and civil dawn. */

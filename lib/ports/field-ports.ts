@@ -1,4 +1,4 @@
-import { browserCamera, type Camera } from './camera'
+import type { Camera } from './camera'
 import { browserMicrophone } from './microphone'
 import { browserPosition, type Position } from './position'
 import { browserSyncPorts, type SyncPorts } from './sync-ports'
@@ -15,6 +15,7 @@ export type FieldPorts = SyncPorts & {
 export const browserPorts: FieldPorts = {
   ...browserSyncPorts,
   position: browserPosition,
-  camera: browserCamera,
+  // Fetched from what the phone holds when the first photo is taken.
+  camera: { ready: async (file) => (await import('./camera')).browserCamera.ready(file) },
   microphone: browserMicrophone,
 }

@@ -1,10 +1,6 @@
 import { describe, expect, test } from 'vitest'
-import {
-  EMPTY_INTAKE,
-  type IntakeDraft,
-  missingFrom,
-  typedNumber,
-} from '@/components/field/intake/intake-draft'
+import { EMPTY_INTAKE, type IntakeDraft } from '@/components/field/intake/intake-draft'
+import { missingFrom, typedNumber } from '@/components/field/intake/intake-rules'
 import { opsOf } from '@/components/field/intake/open-job'
 import type { Stamp } from '@/components/store/use-stamp'
 import { jobOpening } from '@/lib/model/job'

@@ -1,5 +1,6 @@
 import { describe, expect, it } from 'vitest'
-import { EMPTY_INTAKE, type IntakeDraft, missingFrom } from '@/components/field/intake/intake-draft'
+import { EMPTY_INTAKE, type IntakeDraft } from '@/components/field/intake/intake-draft'
+import { missingFrom } from '@/components/field/intake/intake-rules'
 import { afterFix, afterTyping, NO_PLACE } from '@/components/field/intake/place-draft'
 import type { Place } from '@/lib/model/place'
 

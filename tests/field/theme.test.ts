@@ -1,5 +1,5 @@
 import { describe, expect, test } from 'vitest'
-import { nightsAt } from '@/components/field/theme'
+import { nightsAt } from '@/components/field/nights'
 
 const at = (iso: string) => Date.parse(iso)
 const isNight = (lat: number, lon: number, iso: string) =>

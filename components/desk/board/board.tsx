@@ -151,6 +151,6 @@ function useNights(rows: readonly BoardJob[]) {
   const now = useNow()
   const place = rows.find(({ job }) => job.place !== null)?.job.place
   useEffect(() => {
-    if (place && now !== null) keepNights(place, now)
+    if (place && now !== null) keepNights(place, now).catch(() => undefined)
   }, [place, now])
 }

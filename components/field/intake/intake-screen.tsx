@@ -15,14 +15,8 @@ import { jobHref } from '../route'
 import { useRoute } from '../router'
 import { usePatch } from '../use-patch'
 import { ComplaintStep } from './complaint-step'
-import {
-  EMPTY_INTAKE,
-  INTAKE_KEY,
-  type IntakeDraft,
-  type IntakeStep,
-  missingFrom,
-  STEPS,
-} from './intake-draft'
+import { EMPTY_INTAKE, INTAKE_KEY, type IntakeDraft, type IntakeStep, STEPS } from './intake-draft'
+import { missingFrom } from './intake-rules'
 import { MachineStep } from './machine-step'
 import { opsOf } from './open-job'
 import { PeopleStep } from './people-step'

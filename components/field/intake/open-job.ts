@@ -1,12 +1,7 @@
 import type { Stamp } from '@/components/store/use-stamp'
 import type { OpInput } from '@/lib/sync/protocol/op'
-import {
-  type HelpAnswer,
-  type IntakeDraft,
-  needsHelp,
-  openingOf,
-  type Stranger,
-} from './intake-draft'
+import type { HelpAnswer, IntakeDraft, Stranger } from './intake-draft'
+import { needsHelp, openingOf } from './intake-rules'
 
 const HELP_WORDS: Record<HelpAnswer, string> = {
   called: 'emergency services were called',

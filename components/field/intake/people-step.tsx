@@ -6,7 +6,8 @@ import { Caution } from '@/components/ui/caution'
 import { Choice, ChoiceMany } from '@/components/ui/choice'
 import { Figure } from '@/components/ui/figure'
 import { Key, KeyLink } from '@/components/ui/key'
-import { type HelpAnswer, needsHelp, type StepProps } from './intake-draft'
+import type { HelpAnswer, StepProps } from './intake-draft'
+import { needsHelp } from './intake-rules'
 
 /** First of all: how many people, and is anybody hurt, missing or exposed. */
 export function PeopleStep({ draft, change }: StepProps) {
