@@ -12,3 +12,5 @@ export function stopDatabase(): Promise<void>
 export function leaveDatabase(): Promise<void>
 export function databaseStatus(): { running: boolean; port: number | null; dataDir: string }
 export function resetDatabase(): Promise<void>
+/** Folder of the newest PostgreSQL server's programs. */
+export function findServer(): string

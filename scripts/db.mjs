@@ -106,7 +106,8 @@ function chooseDataDir() {
   return `/var/tmp/farbench-pg-${createHash('sha256').update(root).digest('hex').slice(0, 12)}`
 }
 
-function findServer() {
+/** Folder of the newest server programs, which are installed when there are none and this is root. */
+export function findServer() {
   const base = '/usr/lib/postgresql'
   const versions = existsSync(base)
     ? readdirSync(base).filter((name) => existsSync(join(base, name, 'bin', 'initdb')))

@@ -82,7 +82,13 @@ async function checks() {
   await runner('check', process.execPath, ['scripts/check.mjs'], () => readJson('check.json'))
 }
 
+/** What browsers are tested in; the phone is killed in one in the unit part, too. */
+const chromium = async () => {
+  if (!existsSync('/usr/bin/chromium')) await installPackages('chromium')
+}
+
 async function units() {
+  if (!(await ready('Chromium', chromium))) return
   const out = join(results, 'vitest.json')
   const reporters = ['--reporter=default', '--reporter=json', `--outputFile.json=${out}`]
   const vitest = join('node_modules', '.bin', 'vitest')
@@ -95,7 +101,7 @@ async function units() {
 
 async function endToEnd(adminUrl) {
   const isReady = await ready('set-up of the browser tests', async () => {
-    if (!existsSync('/usr/bin/chromium')) await installPackages('chromium')
+    await chromium()
     await build()
     await dropDatabase(adminUrl, 'farbench_e2e')
     await database('farbench_e2e')

@@ -37,9 +37,14 @@ export type SyncWorld = {
   close(): Promise<void>
 }
 
-/** Opens the world; close it in afterAll. Settings of the process are set for the handlers. */
-export async function openSyncWorld(): Promise<SyncWorld> {
-  const db = await openTestDatabase()
+/**
+ * Opens the world; close it in afterAll. Settings of the process are set for the handlers. `openDatabase`:
+ * another one than a copy on the project's own PostgreSQL.
+ */
+export async function openSyncWorld(
+  openDatabase: () => Promise<TestDatabase> = openTestDatabase,
+): Promise<SyncWorld> {
+  const db = await openDatabase()
   const filesDir = mkdtempSync(join(tmpdir(), 'farbench-files-'))
   const stageDir = mkdtempSync(join(tmpdir(), 'farbench-stage-'))
   const files = await startFiles({

@@ -50,6 +50,9 @@ export async function makeServer(): Promise<TestServer> {
   })
   let child: ChildProcess | null = null
   let text = ''
+  // A runner that is stopped leaves no server behind.
+  const atExit = () => child?.kill('SIGKILL')
+  process.on('exit', atExit)
 
   async function start(): Promise<void> {
     const mine = spawn(
@@ -106,6 +109,7 @@ export async function makeServer(): Promise<TestServer> {
 
   const close = async () => {
     await end('SIGTERM')
+    process.off('exit', atExit)
     await files.stop()
   }
   const stop = () => end('SIGTERM')
