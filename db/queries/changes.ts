@@ -40,12 +40,17 @@ export async function lockShop(tx: ShopTx): Promise<number> {
 
 /** Answers the shop's last change number without locking it. */
 export async function lastChange(tx: ShopTx): Promise<number> {
+  return (await logStand(tx)).seq
+}
+
+/** Answers which log the shop goes on with (another one after a restored backup), and its last number. */
+export async function logStand(tx: ShopTx): Promise<{ epoch: string | null; seq: number }> {
   const row = await tx
     .selectFrom('shopCounter')
-    .select('seq')
+    .select(['epoch', 'seq'])
     .where('shopId', '=', tx.shopId)
     .executeTakeFirst()
-  return row?.seq ?? 0
+  return row ?? { epoch: null, seq: 0 }
 }
 
 /**

@@ -42,7 +42,7 @@ describe('[P7] change numbers', () => {
     expect(await asShop(shop.id, (tx) => takeChanges(tx, []))).toBe(last)
   })
 
-  it('[P7] miss nothing for a concurrent puller while eight writers commit after random delays', async () => {
+  it('[fault 4] [P7] miss nothing for a concurrent puller while eight writers commit after random delays', async () => {
     const shop = await owned()
     const puller = shop.people.owner!
     const written = new Set<string>()
@@ -121,7 +121,7 @@ describe('[P7] change numbers', () => {
     expect(200 - pulled.size).toBeGreaterThan(0)
   })
 
-  it('[P7] leave no hole when a writer rolls back or is killed after taking numbers', async () => {
+  it('[fault 5] [P7] leave no hole when a writer rolls back or is killed after taking numbers', async () => {
     const shop = await owned()
     await write(shop, newId())
     const fails = asShop(shop.id, async (tx) => {

@@ -14,7 +14,7 @@ beforeAll(async () => {
 afterAll(() => test.close())
 
 describe('[D5] the counter as a lock', () => {
-  it('[D5] gives up after two seconds, and the waiting transaction leaves no trace', async () => {
+  it('[fault 7] [D5] gives up after two seconds, and the waiting transaction leaves no trace', async () => {
     const shop = await owned()
     let release: () => void = () => undefined
     const held = new Promise<void>((done) => {
@@ -41,7 +41,7 @@ describe('[D5] the counter as a lock', () => {
     expect(numbers).toEqual(oneTo(numbers.length))
   })
 
-  it('[D5] a writer that hangs while it holds the lock is ended after five seconds', async () => {
+  it('[fault 7] [D5] a writer that hangs while it holds the lock is ended after five seconds', async () => {
     const shop = await owned()
     const hanging = asShop(shop.id, async (tx) => {
       await lockShop(tx)

@@ -34,13 +34,17 @@ export async function openDatabaseLine(url: string): Promise<DatabaseLine> {
       if (isCommit && armed?.how === 'before') {
         armed.done()
         armed = null
-        return end()
+        end()
+        return
       }
       cutting = isCommit
       database.write(piece)
     })
     database.on('data', (piece) => {
-      if (!cutting) return program.write(piece)
+      if (!cutting) {
+        program.write(piece)
+        return
+      }
       armed?.done()
       armed = null
       end()

@@ -101,7 +101,10 @@ export class RawDevice {
 
   /** A POST /api/sync of any bytes, rightly signed. */
   send(body: Uint8Array, headers: Record<string, string> = {}, ops: unknown[] = []): Request {
-    const numbers = ops.flatMap((op) => (op as { dseq?: unknown }).dseq ?? []) as number[]
+    const numbers = ops.flatMap((op) => {
+      const dseq = (op as { dseq?: unknown } | null)?.dseq
+      return typeof dseq === 'number' && dseq > 0 ? [dseq] : []
+    })
     const dseq = numbers.length > 0 ? `${Math.min(...numbers)}-${Math.max(...numbers)}` : '-'
     return new Request('http://shop.invalid/api/sync', {
       method: 'POST',

@@ -149,7 +149,7 @@ it('[fault 14] [M3] [M5] clocks 3 days ahead, a year back and in another zone: o
   const write = (words: string) =>
     phone.record([
       note(phone, jobId, words),
-      { kind: 'job.set', jobId, entityId: jobId, fields: { field: 'weather', value: words } },
+      { kind: 'job.set', jobId, fields: { field: 'weather', value: words } },
     ])
   const right = clock.now()
   clock.set(right + 3 * DAY_MS)

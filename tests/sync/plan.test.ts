@@ -275,7 +275,7 @@ describe('old versions', () => {
     expect(takesProtocol(0, 1)).toEqual({ ok: false, problem: { kind: 'tooOld' } })
   })
 
-  it('[P13] brings an op of every earlier shape up to date, one step at a time', () => {
+  it('[fault 18] [P13] brings an op of every earlier shape up to date, one step at a time', () => {
     const steps = {
       1: (op: Readonly<Record<string, unknown>>) => ({ ...op, one: true }),
       2: (op: Readonly<Record<string, unknown>>) => ({ ...op, two: op.one }),

@@ -77,7 +77,7 @@ function dice(seed: number): () => number {
 }
 
 describe('POST /api/sync, pulling', () => {
-  it('[P7] misses nothing and repeats nothing while 10 writers write and 3 readers read', async () => {
+  it('[fault 4] [P7] misses nothing and repeats nothing while 10 writers write and 3 readers read', async () => {
     const readers = await Promise.all(
       ['owner', 'mechanic', 'dispatcher'].map((who) => phoneOf(world.a, who)),
     )
@@ -127,7 +127,7 @@ describe('POST /api/sync, pulling', () => {
     await expectWholeShop(world.a.id)
   })
 
-  it('[P7] leaves no ghost of a write that was rolled back, and no hole', async () => {
+  it('[fault 5] [P7] leaves no ghost of a write that was rolled back, and no hole', async () => {
     await pullAll(device, cookie)
     const machine = machineAdd()
     const failed = inA(async (tx) => {
@@ -155,7 +155,7 @@ describe('POST /api/sync, pulling', () => {
     await letGo()
   })
 
-  it('[P7] asks the phone to retry while somebody holds its shop’s counter, and takes it afterwards', async () => {
+  it('[fault 7] [P7] asks the phone to retry while somebody holds its shop’s counter, and takes it afterwards', async () => {
     const letGo = await holdCounter(world.a.id)
     const op = device.op(machineAdd())
     const began = Date.now()
@@ -222,7 +222,7 @@ describe('POST /api/sync, pulling', () => {
     expect(ids).toContain(held[0]?.entityId)
   })
 
-  it('[P12] starts over after a restore, and after a forged, foreign or future cursor', async () => {
+  it('[fault 28] [P12] starts over after a restore, and after a forged, foreign or future cursor', async () => {
     await pullAll(device, cookie)
     const stand = device.cursor as Cursor
     const odd: Cursor[] = [
@@ -242,7 +242,7 @@ describe('POST /api/sync, pulling', () => {
     expect(pull).toEqual({ kind: 'reset', cursor: { ...stand, epoch: 'restored', seq: 0 } })
   })
 
-  it('[P12] takes ops again that a restored backup had lost, and others only once', async () => {
+  it('[fault 27] [P12] takes ops again that a restored backup had lost, and others only once', async () => {
     const opening = jobOpen(world.a.machineId)
     const ops = [
       device.op(opening),

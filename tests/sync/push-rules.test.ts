@@ -31,7 +31,7 @@ const codesOf = (answer: Awaited<ReturnType<typeof sync>>) =>
   answer.results.map((result) => ('code' in result ? result.code : result.result))
 
 describe('POST /api/sync, rules of the shop', () => {
-  it('[P2] accepts one of two devices that move one state, and tells the other where it stands', async () => {
+  it('[fault 16] [P2] accepts one of two devices that move one state, and tells the other where it stands', async () => {
     const other = (await phoneOf(world.a, 'second')).device
     const job = await openJob()
     const move = (from: RawDevice) =>

@@ -83,7 +83,7 @@ describe('POST /api/sync, pushing', () => {
     expect(again.pull).toMatchObject({ kind: 'page', rows: [], more: false })
   })
 
-  it('[P4] stores every op once when the answer is lost and the phone sends again', async () => {
+  it('[fault 1] [P4] stores every op once when the answer is lost and the phone sends again', async () => {
     const job = await openJob()
     const ops = Array.from({ length: 20 }, (_, i) => device.op(logAdd(device, job, note(`n${i}`))))
     await exchangeOf(device.push(ops))
@@ -95,7 +95,7 @@ describe('POST /api/sync, pushing', () => {
     )
   })
 
-  it('[P4] [P6] gives twins sent at once one effect and the same answer, refusals too', async () => {
+  it('[fault 3] [P4] [P6] gives twins sent at once one effect and the same answer, refusals too', async () => {
     const job = await openJob()
     const good = Array.from({ length: 40 }, (_, i) => device.op(logAdd(device, job, note(`t${i}`))))
     const bad = device.op({
@@ -127,7 +127,7 @@ describe('POST /api/sync, pushing', () => {
     expect(await inA(lastChange)).toBe(before + 40)
   })
 
-  it('[P4] survives 200 requests, many of them cut, in any order', async () => {
+  it('[fault 1] [P4] survives 200 requests, many of them cut, in any order', async () => {
     const { device: phone } = await phoneOf(world.a, 'second')
     const job = await openJob(phone)
     const ops = Array.from({ length: 30 }, (_, i) => phone.op(logAdd(phone, job, note(`c${i}`))))
@@ -144,7 +144,7 @@ describe('POST /api/sync, pushing', () => {
     expect(await inA((tx) => verifyLog(tx, job))).toEqual({ ok: true, value: 30 })
   })
 
-  it('[P5] lets a poison op in 500 cost only itself, whoever finds it', async () => {
+  it('[fault 8] [P5] lets a poison op in 500 cost only itself, whoever finds it', async () => {
     const job = await openJob()
     const ops: Op[] = Array.from({ length: 500 }, (_, i) =>
       device.op(logAdd(device, job, note(`p${i}`))),
@@ -181,7 +181,7 @@ describe('POST /api/sync, pushing', () => {
     expect(log.map((entry) => entry.order)).toEqual(ops.map((_, i) => i + 1))
   })
 
-  it('[P5] blocks a child before its parent and releases it when the parent lands', async () => {
+  it('[fault 9] [P5] blocks a child before its parent and releases it when the parent lands', async () => {
     const machine = machineAdd()
     const opening = jobOpen(machine.fields.id)
     const [first, second, third] = [

@@ -252,7 +252,7 @@ describe('scope that changes', () => {
     expect((await sync(first.device, [late])).taken).toEqual([late.id])
   })
 
-  it('[P11] starts a phone over when the roles change, and refuses by the new ones at once', async () => {
+  it('[fault 13] [P11] starts a phone over when the roles change, and refuses by the new ones at once', async () => {
     const { device, cookie } = await phoneOf(world.a, 'dispatcher')
     await pullAll(device, cookie)
     const before = device.cursor

@@ -46,7 +46,7 @@ describe('[S11] an old session', () => {
 })
 
 describe('[S11] a shared tablet', () => {
-  it('[SO1] [SO2] G1 signs out with 3 unsent; G2 finds nothing of G1, and sends nothing of theirs', async () => {
+  it('[fault 12] [P18] [SO1] [SO2] G1 signs out with 3 unsent; G2 finds nothing of G1, and sends nothing of theirs', async () => {
     const browser = newBrowser()
     const g1 = await at.atWork('mechanic', browser)
     const first = g1.app.phone()

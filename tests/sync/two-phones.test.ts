@@ -129,7 +129,7 @@ describe('the phone’s own program against the shop’s', () => {
     expect(one.map((row) => row.order)).toEqual([1, 2, 3, 4, 5, 6, 7, 8])
   })
 
-  it('[R13] the second of two that move a job on sees where it stands, and its entries stay', async () => {
+  it('[fault 16] [R13] the second of two that move a job on sees where it stands, and its entries stay', async () => {
     const left = await phoneFor('mechanic')
     const right = await phoneFor('second')
     const machine = machineAdd()

@@ -47,7 +47,7 @@ describe('an upload', () => {
     expect(await pullAll(up.device, up.cookie)).toMatchObject([{ entity: 'photo', id: hash }])
   })
 
-  it('[PH2] of a file the shop has needs no byte, whoever of its writers asks', async () => {
+  it('[fault 25] [PH2] of a file the shop has needs no byte, whoever of its writers asks', async () => {
     const bytes = up.another()
     await up.name(photoBody(bytes))
     await up.sendAll(bytes, 65_536)
@@ -242,7 +242,7 @@ describe('an upload', () => {
     )
   })
 
-  it('[P12] finds a file again whose row a restored backup has lost', async () => {
+  it('[fault 27] [P12] finds a file again whose row a restored backup has lost', async () => {
     const bytes = up.another()
     await up.name(photoBody(bytes))
     await up.sendAll(bytes, 300_000)

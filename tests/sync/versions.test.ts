@@ -4,11 +4,11 @@ import { afterAll, beforeAll, describe, expect, it } from 'vitest'
 import { POST } from '@/app/api/sync/route'
 import { asShop } from '@/db/client'
 import { listLog } from '@/db/queries/log-entries'
-import { PROTOCOL } from '@/lib/sync/protocol/message'
+import { PROTOCOL, type PullAnswer, type PullRow } from '@/lib/sync/protocol/message'
 import { OP_SCHEMA } from '@/lib/sync/protocol/op'
 import { upgradeOp } from '@/lib/sync/server/upgrade'
 import { jobOpen, logAdd, note } from '../support/field-ops'
-import { openSyncWorld, phoneOf, type SyncWorld, sync } from '../support/sync-world'
+import { openSyncWorld, phoneOf, pullAll, type SyncWorld, sync } from '../support/sync-world'
 
 let world: SyncWorld
 beforeAll(async () => {
@@ -32,6 +32,19 @@ const fromOlder = (phone: Awaited<ReturnType<typeof phoneOf>>, ops: unknown[], c
     { cookie: phone.cookie },
     ops,
   )
+
+/** Every row that the app of protocol 1 is told, from the start. */
+async function pulledBy(phone: Awaited<ReturnType<typeof phoneOf>>): Promise<PullRow[]> {
+  const rows: PullRow[] = []
+  for (let cursor: unknown = null; ; ) {
+    const answer = await POST(fromOlder(phone, [], cursor))
+    const { pull } = (await answer.json()) as { pull: PullAnswer }
+    if (pull.kind !== 'page') throw new Error(pull.kind)
+    rows.push(...pull.rows)
+    cursor = pull.cursor
+    if (!pull.more) return rows
+  }
+}
 
 describe('an app of the version before', () => {
   it('[P13] is answered in its own protocol and hears of nothing newer', async () => {
@@ -77,6 +90,10 @@ describe('an app of the version before', () => {
       'from the newer',
       'from the older',
     ])
+    const [held, heldByOlder] = [await pullAll(newer.device, newer.cookie), await pulledBy(older)]
+    const ofJob = (rows: readonly PullRow[]) => rows.filter((row) => row.jobId === jobId)
+    expect(ofJob(held)).toHaveLength(3)
+    expect(ofJob(heldByOlder)).toEqual(ofJob(held))
   })
 })
 

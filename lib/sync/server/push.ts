@@ -1,5 +1,5 @@
 import { asShop, type ShopTx } from '@/db/client'
-import { lastChange, lockShop } from '@/db/queries/changes'
+import { lockShop, logStand } from '@/db/queries/changes'
 import { linkEntries } from '@/db/queries/log-entries'
 import type { OpResult } from '@/lib/sync/protocol/message'
 import { applyPlan, type Sender } from './apply-plan'
@@ -17,26 +17,43 @@ import { type ReadOp, readOp } from './read-ops'
  */
 export type PushAnswer = { taken: string[]; results: OpResult[] }
 
+/** Transactions so far, and the log that the phone knows. */
+type Spent = { tries: number; log: string | null }
+
 /** How many transactions one push may cost when the database itself refuses ops in it. */
 const MAX_TRIES = 64
 
-/** Takes the ops of one signed push in their order; each is settled once, however often it comes (P4). */
-export function takePush(ops: readonly unknown[], sender: Sender): Promise<PushAnswer> {
-  return takeBatch(ops.map(readOp), sender, { tries: 0 })
+/**
+ * Takes the ops of one signed push in their order; each is settled once, however often it comes (P4).
+ * `log`: the epoch of the log that the phone's cursor is of. Where the shop was restored from a backup since,
+ * the ops are asked for again: the phone first offers what went with the restoring, and theirs rest on that.
+ */
+export function takePush(
+  ops: readonly unknown[],
+  sender: Sender,
+  log: string | null = null,
+): Promise<PushAnswer> {
+  return takeBatch(ops.map(readOp), sender, { tries: 0, log })
 }
+
+/** The phone's cursor is of a log from before a restore; never leaves this file. */
+class RestoredSince extends Error {}
 
 async function takeBatch(
   ops: readonly ReadOp[],
   sender: Sender,
-  spent: { tries: number },
+  spent: Spent,
 ): Promise<PushAnswer> {
   if (ops.length === 0) return { taken: [], results: [] }
   spent.tries += 1
   if (spent.tries > MAX_TRIES) return laterAnswer(ops)
   try {
-    const { taken, results } = await asShop(sender.actor.shopId, (tx) => settle(tx, ops, sender))
+    const { taken, results } = await asShop(sender.actor.shopId, (tx) =>
+      settle(tx, ops, sender, spent.log),
+    )
     return { taken, results }
   } catch (error) {
+    if (error instanceof RestoredSince) return laterAnswer(ops)
     const trouble = troubleOf(error)
     if (trouble === 'retry') return laterAnswer(ops)
     if (trouble === 'badData') return takeHalves(ops, sender, spent)
@@ -53,7 +70,7 @@ const laterAnswer = (ops: readonly ReadOp[]): PushAnswer => ({
 async function takeHalves(
   ops: readonly ReadOp[],
   sender: Sender,
-  spent: { tries: number },
+  spent: Spent,
 ): Promise<PushAnswer> {
   const [only] = ops
   if (ops.length === 1 && only) {
@@ -84,13 +101,19 @@ async function takeHalves(
  * Judges ops and writes what becomes of them, all in the caller's transaction: who rolls it back has
  * settled nothing. Locks the shop's counter once something is to be written.
  */
-export async function settle(tx: ShopTx, ops: readonly ReadOp[], sender: Sender): Promise<Plan> {
+export async function settle(
+  tx: ShopTx,
+  ops: readonly ReadOp[],
+  sender: Sender,
+  log: string | null = null,
+): Promise<Plan> {
   const { actor, deviceId } = sender
   const nowMs = Date.parse(sender.at)
   const read = (seq: number): Promise<Known> =>
     loadKnown(tx, { actor, deviceId, at: { nowMs, seq }, ops })
   // The counter is read first: as long as it stands there, what is read after it is still so.
-  const readAt = await lastChange(tx)
+  const { epoch, seq: readAt } = await logStand(tx)
+  if (log !== null && epoch !== null && log !== epoch) throw new RestoredSince()
   let known = await read(readAt)
   let plan = planPush(ops, known)
   if (plan.outcomes.length === 0) return plan

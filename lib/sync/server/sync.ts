@@ -75,7 +75,7 @@ export async function exchange(with_: Exchange): Promise<Answer> {
   if (device.quarantine !== null) return await handOver(with_, device.quarantine)
   const at = new Date(now).toISOString()
   const { actor, deviceId } = device
-  const pushed = await takePush(message.ops, { actor, deviceId, at, newId })
+  const pushed = await takePush(message.ops, { actor, deviceId, at, newId }, logKnown(with_))
   const own =
     message.protocol >= 2 && message.brief === true ? ownEntries(message.ops, pushed) : null
   // Nothing in here was promised to anybody: a note that a crash loses is made again by the next exchange.
@@ -139,14 +139,22 @@ function heldOf({ held }: SyncRequest) {
 }
 
 /** A pull needs the session of the very person whose phone asks; anybody else's is no session (P18). */
-async function pullFor(
-  tx: ShopTx,
-  { device, session, message }: Exchange,
-  own: OwnEntries | null,
-): Promise<PullAnswer> {
+const isTheirs = ({ device: { actor }, session }: Exchange): boolean =>
+  session?.shopId === actor.shopId && session.personId === actor.personId
+
+/**
+ * The epoch of the log a phone pulls from, when this very answer will tell it of another one (P12). Who
+ * cannot pull would not hear of it: their push is taken as it is.
+ */
+function logKnown(with_: Exchange): string | null {
+  const { cursor, pull } = with_.message
+  return cursor !== null && pull && isTheirs(with_) ? (cursor.epoch.split('.')[0] ?? null) : null
+}
+
+async function pullFor(tx: ShopTx, with_: Exchange, own: OwnEntries | null): Promise<PullAnswer> {
+  const { device, message } = with_
   if (!message.pull) return { kind: 'notAsked' }
-  const { shopId, personId } = device.actor
-  if (session?.shopId !== shopId || session.personId !== personId) return { kind: 'signIn' }
+  if (!isTheirs(with_)) return { kind: 'signIn' }
   const { cursor } = message
   const { actor, deviceId } = device
   const asked = { actor, cursor, limit: PAGE_ROWS, deviceId }

@@ -93,7 +93,7 @@ describe('who is at work on the phone', () => {
     await app.end()
   })
 
-  test('[P18] another person signs in: the first one’s store stays, closed and unsent', async () => {
+  test('[fault 12] [P18] another person signs in: the first one’s store stays, closed and unsent', async () => {
     const shop = new ShopDouble()
     const indexed = newIndexed()
     const first = start(shop, indexed)

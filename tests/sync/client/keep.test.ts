@@ -60,7 +60,7 @@ async function killedWhileKeeping(at: number): Promise<boolean> {
 }
 
 describe('the phone keeps all of a record or nothing', () => {
-  test('[P1] killed at any step, row and op and photo and draft stand or fall together', async () => {
+  test('[P1] [PH1] killed at any step, row and op and photo and draft stand or fall together', async () => {
     let at = 1
     while (await killedWhileKeeping(at)) at += 1
     expect(at).toBeGreaterThan(12)

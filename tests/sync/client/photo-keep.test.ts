@@ -85,7 +85,7 @@ describe('a photo that meets trouble', () => {
     expect(view.bytes).toBe(108 * KB)
   })
 
-  test('[P12] after a restored backup it is offered again without its bytes', async () => {
+  test('[fault 27] [P12] after a restored backup it is offered again without its bytes', async () => {
     const { shop, phone, photo } = await withPhoto(100 * KB)
     await phone.sync()
     shop.restoreWithout([...shop.ops.keys()].slice(-1))

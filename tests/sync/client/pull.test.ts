@@ -79,7 +79,7 @@ describe('the phone takes what the shop has', () => {
     expect(shop.requests.at(-1)?.ops).toBe(0)
   })
 
-  test('[P12] offers its work again after the shop was restored from a backup', async () => {
+  test('[fault 27] [P12] offers its work again after the shop was restored from a backup', async () => {
     const { shop, phone, machine, job, jobId } = await atWork()
     await phone.record([machine, job, note(phone, jobId, 'Before'), note(phone, jobId, 'After')])
     await phone.sync()

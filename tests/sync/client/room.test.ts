@@ -73,7 +73,7 @@ describe('[P21] room on the phone', () => {
     expect(await db.photo.toArray()).toMatchObject([{ state: 'sent', thumb: null }])
   })
 
-  test('when that is not enough, closed jobs go; a closed job with unsent work and open ones stay', async () => {
+  test('[fault 20] when that is not enough, closed jobs go; a closed job with unsent work and open ones stay', async () => {
     const { shop, phone, machine, job, jobId } = await atWork()
     await phone.record([machine, job, note(phone, jobId, 'Open')])
     const opening = shop.row('job', jobId) as object
@@ -132,7 +132,7 @@ describe('[P21] room on the phone', () => {
     expect((await outbox(phone)).at(-1)?.dseq).toBe(3)
   })
 
-  test('a photo is refused where the words still fit: photos stop before records', async () => {
+  test('[fault 20] a photo is refused where the words still fit: photos stop before records', async () => {
     const { phone, machine, job, jobId } = await atWork()
     await phone.record([machine, job])
     noRoomFor((store) => store === 'photoBytes')
@@ -195,7 +195,7 @@ describe('[P21] room on the phone', () => {
     expect(rings).toHaveLength(2)
   })
 
-  test('a page that finds no room moves no cursor, is told, and holds up no sending', async () => {
+  test('[fault 20] [P8] a page that finds no room moves no cursor, is told, and holds up no sending', async () => {
     const { shop, phone, machine, job, jobId } = await atWork()
     await phone.record([machine, job])
     const cursor = await readMeta(phone.phone.core.db, 'cursor')

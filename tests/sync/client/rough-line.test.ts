@@ -129,7 +129,7 @@ describe('[P15] a rough line', () => {
 })
 
 describe('[P16] many phones at once', () => {
-  test('50 phones whose shop comes back do not come back as one: no second peak above half', async () => {
+  test('[fault 26] 50 phones whose shop comes back do not come back as one: no second peak above half', async () => {
     const time = new AlarmClock()
     const shop = new ShopDouble()
     const phones: TestPhone[] = []
@@ -271,21 +271,24 @@ describe('[P17] strangers on the line', () => {
     ],
     ['the portal’s own 511', () => ({ status: 511, headers: json, body: '{}' })],
   ]
-  test.each(odd)('%s counts as no line: nothing is marked as sent', async (_name, answer) => {
-    const network = await stranger(answer)
-    const { shop, phone, machine, job, jobId } = await atWork()
-    shop.fault = () => ({ noLine: true })
-    await phone.record([machine, job, note(phone, jobId, 'Kept')], { photos: [photoOf(jobId)] })
-    phone.kill()
-    const again = await createPhone({
-      fetch: shop.fetch,
-      ports: { indexed: phone.indexed, network },
-    })
-    await again.sync()
-    expect(await states(again)).toEqual(['waiting', 'waiting', 'waiting'])
-    const view = await again.see(again.phone.unsent)
-    expect(view).toMatchObject({ online: false, stuckCount: 0, count: 4 })
-    expect((await outbox(again)).every((record) => record.takenAt === null)).toBe(true)
-    again.kill()
-  })
+  test.each(odd)(
+    '[fault 24] %s counts as no line: nothing is marked as sent',
+    async (_name, answer) => {
+      const network = await stranger(answer)
+      const { shop, phone, machine, job, jobId } = await atWork()
+      shop.fault = () => ({ noLine: true })
+      await phone.record([machine, job, note(phone, jobId, 'Kept')], { photos: [photoOf(jobId)] })
+      phone.kill()
+      const again = await createPhone({
+        fetch: shop.fetch,
+        ports: { indexed: phone.indexed, network },
+      })
+      await again.sync()
+      expect(await states(again)).toEqual(['waiting', 'waiting', 'waiting'])
+      const view = await again.see(again.phone.unsent)
+      expect(view).toMatchObject({ online: false, stuckCount: 0, count: 4 })
+      expect((await outbox(again)).every((record) => record.takenAt === null)).toBe(true)
+      again.kill()
+    },
+  )
 })

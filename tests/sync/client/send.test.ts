@@ -80,7 +80,7 @@ describe('the phone keeps and sends', () => {
     expect(shop.rowsOf('logEntry')).toHaveLength(1)
   })
 
-  test('[P17] a captive portal marks nothing as sent', async () => {
+  test('[fault 24] [P17] a captive portal marks nothing as sent', async () => {
     const { shop, phone, machine, job } = await atWork()
     shop.fault = () => ({ noLine: true })
     await phone.record([machine, job])
@@ -101,7 +101,7 @@ describe('the phone keeps and sends', () => {
     }
   })
 
-  test('[P16] waits as long as the shop asks and sets nothing aside on its trouble', async () => {
+  test('[fault 10] [P16] waits as long as the shop asks and sets nothing aside on its trouble', async () => {
     const delays: number[] = []
     const timer = {
       after: (ms: number) => {
@@ -123,7 +123,7 @@ describe('the phone keeps and sends', () => {
     expect(await states(phone)).toEqual(['waiting', 'waiting'])
   })
 
-  test('[P15] halves until the one record is found that is too much, and keeps it', async () => {
+  test('[fault 10] [P15] halves until the one record is found that is too much, and keeps it', async () => {
     const { shop, phone, machine, job, jobId } = await atWork()
     const words = Array.from({ length: 9 }, (_, index) => note(phone, jobId, `Note ${index}`))
     shop.fault = () => ({ noLine: true })

@@ -78,7 +78,7 @@ describe('the sender', () => {
     expect(shop.requests.at(-1)).toMatchObject({ ops: 0 })
   })
 
-  test('[P19] of two tabs one sends at a time, and each op goes once', async () => {
+  test('[fault 3] [P19] of two tabs one sends at a time, and each op goes once', async () => {
     const shop = new ShopDouble()
     const shared = inProcessLock()
     let inside = 0
@@ -110,7 +110,7 @@ describe('the sender', () => {
     expect(await states(one)).toEqual(Array.from({ length: 6 }, () => 'done'))
   })
 
-  test('[P4] [P19] without a lock two tabs send twice and the shop has each op once', async () => {
+  test('[fault 3] [P4] [P19] without a lock two tabs send twice and the shop has each op once', async () => {
     const shop = new ShopDouble()
     const indexed = newIndexed()
     const { phone: one, machine, job } = await atWork(shop, { indexed })
@@ -155,7 +155,7 @@ describe('the sender', () => {
     expect(shop.requests.map((request) => request.ops)).toEqual([25, 50, 25])
   })
 
-  test('[P20] [P18] the worker sends what is unsent, for each person under their own name', async () => {
+  test('[fault 12] [P20] [P18] the worker sends what is unsent, for each person under their own name', async () => {
     const shop = new ShopDouble()
     const indexed = newIndexed()
     const device = new DeviceDb(indexed)

@@ -82,7 +82,7 @@ function killUpgrade(at: number) {
 }
 
 describe('[P25] a newer version of the store', () => {
-  test('killed at every step of the upgrade: the old one goes on with all 12 ops, and the new one sends them', async () => {
+  test('[fault 19] [S11] killed at every step of the upgrade: the old one goes on with all 12 ops, and the new one sends them', async () => {
     let at = 1
     for (;;) {
       const { shop, indexed, old } = await firstStore()
@@ -129,7 +129,7 @@ describe('[P25] a newer version of the store', () => {
     renewed.close()
   })
 
-  test('with the old tab open neither hangs, and each sees what the other keeps', async () => {
+  test('[fault 19] with the old tab open neither hangs, and each sees what the other keeps', async () => {
     const { shop, indexed, old } = await firstStore()
     old.on('versionchange', () => old.close({ disableAutoOpen: false }))
     const phone = await createPhone({ fetch: noLine, ports: { indexed } })
@@ -142,7 +142,7 @@ describe('[P25] a newer version of the store', () => {
     expect(shop.ops.size).toBe(0)
   })
 
-  test('a tab that does not let go is told of, and the store opens once it is closed', async () => {
+  test('[fault 19] a tab that does not let go is told of, and the store opens once it is closed', async () => {
     const { indexed, old } = await firstStore()
     await old.open()
     old.on('versionchange', () => false)
@@ -192,7 +192,7 @@ describe('[P25] a connection that dies', () => {
   }
 
   test.each(['InvalidStateError', 'UnknownError'] as const)(
-    '%s: a record is kept after one opening anew, once',
+    '[fault 22] %s: a record is kept after one opening anew, once',
     async (name) => {
       const { phone, jobId } = await working()
       const dead = deadConnection(1, name)
@@ -203,7 +203,7 @@ describe('[P25] a connection that dies', () => {
     },
   )
 
-  test('a connection the browser has closed by force is opened anew', async () => {
+  test('[fault 22] a connection the browser has closed by force is opened anew', async () => {
     const { phone, jobId } = await working()
     forceCloseDatabase(phone.phone.core.db.backendDB() as never)
     await phone.record([note(phone, jobId, 'Kept')])
@@ -239,7 +239,7 @@ describe('[P25] a connection that dies', () => {
     leave()
   })
 
-  test('dead twice in a row asks for the page to be loaded again, and loses nothing', async () => {
+  test('[fault 22] dead twice in a row asks for the page to be loaded again, and loses nothing', async () => {
     const { shop, phone, jobId } = await working()
     await phone.record([note(phone, jobId, 'Before')])
     deadConnection(1_000, 'UnknownError')
@@ -255,7 +255,7 @@ describe('[P25] a connection that dies', () => {
     expect(shop.rowsOf('logEntry')).toHaveLength(1)
   })
 
-  test('the sender opens the store anew in the middle of its work and sends everything once', async () => {
+  test('[fault 22] the sender opens the store anew in the middle of its work and sends everything once', async () => {
     const { shop, phone, jobId } = await working()
     await phone.record([note(phone, jobId, 'To send')])
     shop.fault = () => null

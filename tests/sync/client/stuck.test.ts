@@ -33,7 +33,7 @@ const stuckOf = async (of: TestPhone) =>
   (await outbox(of)).find((record) => record.state === 'stuck')
 
 describe('[P16] what is stuck has a way out', () => {
-  test('a refused step is done again from where things stand, by one key', async () => {
+  test('[fault 16] a refused step is done again from where things stand, by one key', async () => {
     const { shop, phone, jobId } = await overtaken('assigned')
     expect((await phone.see(phone.phone.unsent)).items[0]).toMatchObject({
       state: 'stuck',

@@ -46,7 +46,7 @@ async function twoTabs() {
 }
 
 describe('[P19] whose turn it is', () => {
-  test('a leader frozen in the middle of a request loses its turn within 60 s', async () => {
+  test('[fault 23] a leader frozen in the middle of a request loses its turn within 60 s', async () => {
     const { time, shop, first, one, two, machine, job, jobId } = await twoTabs()
     await time.pass(20_000, quiet)
     first.page.frozen = true
@@ -73,7 +73,7 @@ describe('[P19] whose turn it is', () => {
     two.kill()
   })
 
-  test('a page that says it is being frozen hands its turn on at once', async () => {
+  test('[fault 23] a page that says it is being frozen hands its turn on at once', async () => {
     const { time, shop, first, one, two, machine, job } = await twoTabs()
     first.page.frozen = true
     const frozen = one.phone.record([machine, job])
@@ -88,7 +88,7 @@ describe('[P19] whose turn it is', () => {
     two.kill()
   })
 
-  test('a killed leader leaves its turn free: the other sends at once', async () => {
+  test('[fault 23] a killed leader leaves its turn free: the other sends at once', async () => {
     const time = new AlarmClock()
     const shop = new ShopDouble()
     const indexed = newIndexed()
