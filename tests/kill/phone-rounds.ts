@@ -20,7 +20,7 @@ const KEEP = 'stays'
 
 /**
  * `every`: once at each moment a round passes through, and then `rounds` times a few ms after one; else
- * `rounds` of the moments, spread over all of them.
+ * `rounds` times at one of the steps that stand for the others.
  */
 export async function phoneRounds(of: Loop & { every: boolean }): Promise<Tally> {
   const tally = new Tally()
@@ -43,7 +43,7 @@ export async function phoneRounds(of: Loop & { every: boolean }): Promise<Tally>
     await loop.round(NEVER)
     const steps = await loop.round(NEVER)
     tally.add('moments', steps.length)
-    for (const moment of momentsOf(steps.length, of)) {
+    for (const moment of momentsOf(steps, of)) {
       await loop.round(moment)
       of.say(
         `killed ${moment.afterMs} ms after step ${moment.at} of ${steps.length}: ${handset.killedAt}`,
@@ -59,24 +59,36 @@ export async function phoneRounds(of: Loop & { every: boolean }): Promise<Tally>
   return tally
 }
 
-function momentsOf(count: number, of: Loop & { every: boolean }): Moment[] {
+/** Steps that stand for the stages of a save, a pull and a photo's way. */
+const TELLING = [
+  'outbox',
+  'rows',
+  'written',
+  'photoMarked',
+  'photoBytes',
+  'committed',
+  'meta',
+  'afterSend',
+  'draftSealed',
+  'stamped',
+]
+
+function momentsOf(steps: readonly string[], of: Loop & { every: boolean }): Moment[] {
   const draw = new Draw(of.seed, 1)
-  const each = count / of.rounds
-  if (!of.every) {
-    return Array.from({ length: of.rounds }, (_, n) => {
-      const first = Math.floor(n * each)
-      return {
-        at: first + draw.between(1, Math.max(1, Math.floor((n + 1) * each) - first)),
-        afterMs: 0,
-      }
-    })
+  if (of.every) {
+    const exact = steps.map((_, n) => ({ at: n + 1, afterMs: 0 }))
+    const soon = Array.from({ length: of.rounds }, () => ({
+      at: draw.between(1, steps.length),
+      afterMs: draw.between(1, 12),
+    }))
+    return [...exact, ...soon]
   }
-  const exact = Array.from({ length: count }, (_, n) => ({ at: n + 1, afterMs: 0 }))
-  const soon = Array.from({ length: of.rounds }, () => ({
-    at: draw.between(1, count),
-    afterMs: draw.between(1, 12),
-  }))
-  return [...exact, ...soon]
+  return Array.from({ length: of.rounds }, (_, n) => {
+    const name = TELLING[n % TELLING.length]
+    const places = steps.flatMap((step, place) => (step === name ? [place + 1] : []))
+    if (places.length === 0) broken('P1', `no round passes through the step ${name}`)
+    return { at: draw.oneOf(places), afterMs: 0 }
+  })
 }
 
 type Outfit = { actor: Actor; tally: Tally; picture: Buffer; other: RawDevice }
