@@ -189,7 +189,7 @@ describe('[D2] row-level security', () => {
     expect(rows).toEqual([])
   })
 
-  it('[D2] shows no row of any table while no shop is set, not to the app and not to the owner', async () => {
+  it('[D2] [S11] shows no row of any table while no shop is set, not to the app and not to the owner', async () => {
     for (const name of await tableNames(test.admin)) {
       const count = sql<{ n: number }>`select count(*)::int as n from ${sql.table(name)}`
       expect((await count.execute(test.admin)).rows[0]?.n, `${name} is filled`).toBeGreaterThan(1)
