@@ -2,7 +2,7 @@
 import { useState } from 'react'
 import { bookForJob } from '@/lib/diag/book-for-job'
 import type { BookIndex } from '@/lib/diag/book-index'
-import { living } from '@/lib/diag/case'
+import { hasSymptom, living } from '@/lib/diag/case'
 import type { Outcome } from '@/lib/diag/outlook'
 import type { Plan } from '@/lib/diag/plan'
 import type { Id } from '@/lib/model/id'
@@ -40,12 +40,9 @@ export function ChecksScreen({ jobId }: { jobId: Id }) {
   // Asked before the plan: the suspects are there at once, the plan may take its time.
   const suspects = useBelief(jobId)
   const plan = usePlan(jobId)
-  const symptom =
-    found !== null &&
-    (found.job.complaint.symptom !== null || found.entries.some((e) => e.body.kind === 'symptom'))
   return (
     <BookGate>
-      {found !== null && !symptom ? (
+      {found !== null && !hasSymptom(found) ? (
         <NoSymptom jobId={jobId} />
       ) : index === null || found === null || suspects.answer === null ? (
         <Waiting failed={suspects.failed} />
@@ -68,15 +65,12 @@ function NoSymptom({ jobId }: { jobId: Id }) {
     <Screen
       title="No symptom yet"
       foot={
-        <KeyLink kind="main" href={`/field/jobs/${jobId}`}>
-          To the job
+        <KeyLink kind="main" href={`/field/jobs/${jobId}/symptom`}>
+          What does it do?
         </KeyLink>
       }
     >
-      <p>
-        The suspects start from what the machine does. Choose the symptom on the job, then come back
-        here.
-      </p>
+      <p>The suspects start from what the machine does. Pick that, and they are here.</p>
     </Screen>
   )
 }

@@ -18,6 +18,7 @@ export type Route =
         | 'proof'
         | 'wayOut'
         | 'note'
+        | 'symptom'
         | 'photo'
         | 'voice'
         | 'askPart'
@@ -40,6 +41,7 @@ const OF_JOB = {
   proof: 'proof',
   wayout: 'wayOut',
   note: 'note',
+  symptom: 'symptom',
   photo: 'photo',
   voice: 'voice',
   'parts/ask': 'askPart',
@@ -121,6 +123,7 @@ export function backOf(route: Route): { href: string; label: string } | null {
     case 'askPart':
       return { href: jobHref(route.jobId, 'parts'), label: 'parts' }
     case 'codes':
+    case 'symptom':
     case 'sheet':
     case 'fix':
     case 'proof':
@@ -141,6 +144,7 @@ const FORMS: ReadonlySet<Route['name']> = new Set([
   'proof',
   'wayOut',
   'note',
+  'symptom',
   'photo',
   'voice',
   'askPart',

@@ -49,6 +49,7 @@ const CorrectScreen = later(() => import('./log/correct-screen').then((file) => 
 const EntryScreen = later(() => import('./log/entry-screen').then((file) => file.EntryScreen))
 const NoteScreen = later(() => import('./log/note-screen').then((file) => file.NoteScreen))
 const PhotoScreen = later(() => import('./log/photo-screen').then((file) => file.PhotoScreen))
+const SymptomScreen = later(() => import('./log/symptom-screen').then((file) => file.SymptomScreen))
 const VoiceScreen = later(() => import('./log/voice-screen').then((file) => file.VoiceScreen))
 const AirScreen = later(() => import('./settings/air-screen').then((file) => file.AirScreen))
 const ComplaintScreen = later(() =>
@@ -115,6 +116,8 @@ function OneScreen({ route }: { route: Route }) {
       return <CorrectScreen jobId={route.jobId} entryId={route.entryId} />
     case 'note':
       return <NoteScreen jobId={route.jobId} />
+    case 'symptom':
+      return <SymptomScreen jobId={route.jobId} />
     case 'photo':
       return <PhotoScreen jobId={route.jobId} />
     case 'voice':

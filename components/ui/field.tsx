@@ -43,7 +43,7 @@ export function Field(props: Props) {
     className: classes('field-box', figures && 'figures'),
   }
   return (
-    <div className={classes('grid gap-1', props.className)}>
+    <div className={classes('grid gap-1.5', props.className)}>
       <label htmlFor={id} className="text-body font-bold">
         {label}
       </label>

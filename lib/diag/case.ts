@@ -44,6 +44,14 @@ export function buildCase(input: {
   }
 }
 
+/** True once it is known what the machine does: before that the model has nothing to rank suspects by. */
+export const hasSymptom = (of: {
+  job: Pick<Job, 'complaint'>
+  entries: readonly LogEntry[]
+}): boolean =>
+  of.job.complaint.symptom !== null ||
+  living(of.entries).some(({ body }) => body.kind === 'symptom')
+
 /** The entries still in evidence, in the order they happened; corrections themselves are left out. */
 export function living(entries: readonly LogEntry[]): LogEntry[] {
   const struck = strikes(entries)

@@ -38,10 +38,10 @@ const reckoned = {
   failed: false,
 } as unknown as JobCase
 
-const shown = (more: Partial<JobCase> = {}) =>
+const shown = (more: Partial<JobCase> = {}, symptom: string | null = 'startsThenDies') =>
   renderToStaticMarkup(
     createElement(DeskSuspects, {
-      found: { entries: [] } as unknown as DeskJob,
+      found: { job: { complaint: { symptom } }, entries: [] } as unknown as DeskJob,
       reckoned: { ...reckoned, ...more },
     }),
   )
@@ -53,6 +53,12 @@ describe('[F5] the suspects at the desk', () => {
     const page = shown()
     expect(rowOf(page, 'fault9')).toMatch(/\|9\|+Fault 9/)
     expect(rowOf(page, SOMETHING_ELSE)).toMatch(/\|12\|+Something else/)
+  })
+
+  it('[R5] ranks nothing before anybody has said what the machine does', () => {
+    const page = shown({}, null)
+    expect(page).toContain('Nobody has said yet what it does')
+    expect(page).not.toContain('data-row')
   })
 
   it('[F5] there is one fold, which counts all that it hides', () => {

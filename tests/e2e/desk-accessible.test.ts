@@ -60,7 +60,7 @@ test('the desk holds at 320 px and at double text size: nothing runs off the sid
 }) => {
   const page = await desk.open('/login')
   await signIn(page, 'owner@demo.invalid', /\/desk$/)
-  for (const path of ['/desk', '/desk/parts', '/login']) {
+  for (const path of ['/desk', '/desk/parts', '/desk/import', '/desk/phones', '/login']) {
     for (const [width, text] of [
       [320, '100%'],
       [640, '200%'],

@@ -29,6 +29,7 @@ describe('[F14] addresses of the field', () => {
     ['/field/jobs/j/log/e', { name: 'entry', jobId: 'j', entryId: 'e' }],
     ['/field/jobs/j/log/e/correct', { name: 'correct', jobId: 'j', entryId: 'e' }],
     ['/field/jobs/j/note', { name: 'note', jobId: 'j' }],
+    ['/field/jobs/j/symptom', { name: 'symptom', jobId: 'j' }],
     ['/field/jobs/j/photo', { name: 'photo', jobId: 'j' }],
     ['/field/jobs/j/voice', { name: 'voice', jobId: 'j' }],
     ['/field/jobs/j/parts', { name: 'parts', jobId: 'j' }],

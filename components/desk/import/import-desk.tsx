@@ -29,7 +29,11 @@ const ASIDE = {
 export function ImportDesk({ line = browserFileLine }: { line?: FileLine }) {
   const file = useFile(line)
   return (
-    <main id="desk-main" tabIndex={-1} className="desk-page grid max-w-180 gap-4">
+    <main
+      id="desk-main"
+      tabIndex={-1}
+      className="desk-page grid max-w-180 grid-cols-[minmax(0,1fr)] gap-4"
+    >
       <h1 className="caps text-figure">Take in a phone’s file</h1>
       <p>
         A phone that cannot send makes a file of its unsent work: on the phone, open the list of
@@ -41,7 +45,7 @@ export function ImportDesk({ line = browserFileLine }: { line?: FileLine }) {
           type="file"
           accept="application/json,.json"
           disabled={file.busy}
-          className="min-h-14 border-2 border-ink bg-well p-3"
+          className="min-h-14 w-full min-w-0 border-2 border-ink bg-well p-3"
           onChange={(event) => file.choose(event.target.files?.[0] ?? null)}
         />
       </label>

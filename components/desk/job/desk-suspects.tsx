@@ -8,6 +8,7 @@ import { NOTICE_WORDS } from '@/components/suspects/notice-words'
 import { SuspectRows } from '@/components/suspects/suspect-rows'
 import { RuleEdge } from '@/components/ui/rule-edge'
 import type { Belief } from '@/lib/diag/belief'
+import { hasSymptom } from '@/lib/diag/case'
 import type { DeskJob } from '@/lib/model/desk'
 import { counted } from '../../field/words'
 import type { JobCase } from './use-job-case'
@@ -34,7 +35,12 @@ export function DeskSuspects({ found, reckoned }: { found: DeskJob; reckoned: Jo
           The suspects could not be worked out here. The job log below is whole.
         </p>
       ) : null}
-      {belief ? (
+      {hasSymptom(found) ? null : (
+        <p className="mt-1 font-bold">
+          Nobody has said yet what it does, so there is nothing to rank suspects by.
+        </p>
+      )}
+      {belief && hasSymptom(found) ? (
         <>
           <Notices notices={belief.notices} />
           <div className="mt-2">

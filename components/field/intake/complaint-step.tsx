@@ -1,28 +1,18 @@
 'use client'
 
-import { useMemo, useState } from 'react'
-import { useBook } from '@/components/store/use-book'
+import { useMemo } from 'react'
 import { useMachines, useModels } from '@/components/store/use-rows'
 import { Choice, ChoiceMany } from '@/components/ui/choice'
 import { Field } from '@/components/ui/field'
-import { RuleEdge } from '@/components/ui/rule-edge'
-import { letsThrough } from '@/lib/diag/gate'
-import type { SymptomItem } from '@/lib/model/code-book'
 import type { Features } from '@/lib/model/features'
 import { BEFORE } from '@/lib/model/job'
+import { SymptomPick } from '../symptom-pick'
 import { BEFORE_WORDS } from '../words'
 import type { IntakeDraft, StepProps } from './intake-draft'
 
 /** What it does: from the list, searched as riders say it, and in the rider's own words. */
 export function ComplaintStep({ draft, change }: StepProps) {
-  const [wanted, setWanted] = useState('')
-  const { index } = useBook()
   const features = useDraftFeatures(draft)
-  const found = useMemo(
-    () => search([...(index?.symptoms.values() ?? [])], features, wanted),
-    [index, features, wanted],
-  )
-  const picked = draft.symptom === null ? undefined : index?.symptoms.get(draft.symptom)
   return (
     <>
       <Field
@@ -33,44 +23,12 @@ export function ComplaintStep({ draft, change }: StepProps) {
         maxLength={500}
         autoCapitalize="sentences"
       />
-      <RuleEdge>What does it do?</RuleEdge>
-      {index === null ? (
-        <p className="text-ink2">
-          The list comes with the code book, which is not on this phone yet. The rider’s words are
-          enough to open the job.
-        </p>
-      ) : (
-        <>
-          <Field
-            label="Search as the rider says it"
-            value={wanted}
-            onChange={setWanted}
-            type="search"
-            inputMode="search"
-            autoCapitalize="off"
-          />
-          <Choice
-            legend="What does it do?"
-            legendHidden
-            value={draft.symptom}
-            onChange={(symptom) => change({ symptom, conditions: [] })}
-            options={(picked && !found.includes(picked) ? [picked, ...found] : found).map((s) => ({
-              value: s.id,
-              label: s.name,
-            }))}
-          />
-          {found.length === 0 ? <p>Nothing fits. The rider’s own words are enough.</p> : null}
-        </>
-      )}
-      {picked && picked.conditions.length > 0 ? (
-        <ChoiceMany
-          legend="When does it do it?"
-          columns={2}
-          value={draft.conditions}
-          onChange={(conditions) => change({ conditions })}
-          options={picked.conditions.map((c) => ({ value: c.id, label: c.name }))}
-        />
-      ) : null}
+      <SymptomPick
+        features={features}
+        symptom={draft.symptom}
+        conditions={draft.conditions}
+        change={change}
+      />
       <Choice
         legend="Is the engine lamp on?"
         columns={3}
@@ -113,18 +71,4 @@ function useDraftFeatures(draft: IntakeDraft): Features {
     () => stranger ?? { ...model?.features, ...machine?.features },
     [stranger, machine, model],
   )
-}
-
-function search(
-  symptoms: readonly SymptomItem[],
-  features: Features,
-  wanted: string,
-): SymptomItem[] {
-  const words = wanted.toLowerCase().split(/\s+/).filter(Boolean)
-  return symptoms
-    .filter((symptom) => letsThrough(symptom.gate, features))
-    .filter((symptom) => {
-      const text = [symptom.name, ...symptom.riderWords].join(' ').toLowerCase()
-      return words.every((word) => text.includes(word))
-    })
 }

@@ -9,8 +9,9 @@ import { KeyLink } from '@/components/ui/key'
 import { Row } from '@/components/ui/row'
 import { RuleEdge } from '@/components/ui/rule-edge'
 import { Screen } from '@/components/ui/screen'
-import { living } from '@/lib/diag/case'
+import { hasSymptom, living } from '@/lib/diag/case'
 import type { Job } from '@/lib/model/job'
+import type { LogEntry } from '@/lib/model/log-entry'
 import { CodeLines } from '../codes/code-lines'
 import { OfJob } from '../of-job'
 import { PlaceShown } from '../place-shown'
@@ -42,7 +43,7 @@ function Open({ facts }: { facts: JobFacts }) {
       second={`Opened ${dayOf(job.openedAt, job.zone)} at ${clockTime(job.openedAt, job.zone)}.`}
     >
       <ReopenedNotice jobId={job.id} />
-      <Complaint job={job} />
+      <Complaint job={job} entries={entries} />
       <AlsoEnteredOfJob job={job} mayUse={mayWork} />
       <StatesPart job={job} />
       <section className="grid gap-1">
@@ -90,7 +91,7 @@ function Open({ facts }: { facts: JobFacts }) {
           <AlsoEnteredOfMachine machine={machine} zone={job.zone} mayUse={mayChange} />
         )}
       </section>
-      <PutRight facts={facts} mayWork={mayWork} mayChange={mayChange} />
+      <PutRight facts={facts} entries={entries} mayWork={mayWork} mayChange={mayChange} />
       <Caution signal="NOTICE">
         The maker’s manual, local rules and licensed practice come before anything shown here.
         Chances are the model’s own. You decide.
@@ -102,11 +103,12 @@ function Open({ facts }: { facts: JobFacts }) {
   )
 }
 
-type PutRightProps = { facts: JobFacts; mayWork: boolean; mayChange: boolean }
+type PutRightProps = { facts: JobFacts; entries: LogEntry[]; mayWork: boolean; mayChange: boolean }
 
 /** What was taken down once and may be said better later. */
-function PutRight({ facts: { job, machine }, mayWork, mayChange }: PutRightProps) {
+function PutRight({ facts: { job, machine }, entries, mayWork, mayChange }: PutRightProps) {
   if (!mayWork) return null
+  const known = hasSymptom({ job, entries })
   const hours = machine?.hours === null ? 'Hours not known' : `${machine?.hours} h`
   return (
     <section className="grid gap-1">
@@ -114,6 +116,12 @@ function PutRight({ facts: { job, machine }, mayWork, mayChange }: PutRightProps
       <ul>
         <li>
           <Row title="The rider’s words" href={jobHref(job.id, 'complaint')} />
+        </li>
+        <li>
+          <Row
+            title={known ? 'One more symptom' : 'What it does'}
+            href={jobHref(job.id, 'symptom')}
+          />
         </li>
         <li>
           <Row title="Air and weather" href={jobHref(job.id, 'air')} />
@@ -138,16 +146,17 @@ function Air({ job }: { job: Job }) {
   )
 }
 
-function Complaint({ job }: { job: Job }) {
+function Complaint({ job, entries }: { job: Job; entries: readonly LogEntry[] }) {
   const { index } = useBook()
-  const symptom =
-    job.complaint.symptom === null
-      ? null
-      : (index?.symptoms.get(job.complaint.symptom)?.name ?? null)
+  const later = entries.flatMap(({ body }) => (body.kind === 'symptom' ? [body.symptom] : []))
+  const known = job.complaint.symptom === null ? later : [job.complaint.symptom, ...later]
+  const symptoms = [...new Set(known)].map((id) => index?.symptoms.get(id)?.name ?? null)
   return (
     <section className="grid gap-1">
       <p className="text-row font-bold">“{job.complaint.words}”</p>
-      {symptom !== null && symptom !== job.complaint.words ? <p>{symptom}.</p> : null}
+      {symptoms.map((name) =>
+        name === null || name === job.complaint.words ? null : <p key={name}>{name}.</p>,
+      )}
       <p className="text-second text-ink2">{askedWords(job)}</p>
     </section>
   )
