@@ -30,6 +30,10 @@ function OneSymptom({ facts }: { facts: JobFacts }) {
   const stamp = useStamp()
   const { go, here } = useRoute()
   const patch = usePatch(draft, set)
+  const change = (next: Partial<Symptom>) => {
+    setMissing(false)
+    patch(next)
+  }
   const keep = async () => {
     const { symptom, conditions } = draft
     setMissing(symptom === null)
@@ -56,7 +60,7 @@ function OneSymptom({ facts }: { facts: JobFacts }) {
         </>
       }
     >
-      <SymptomPick features={facts.features} {...draft} change={patch} />
+      <SymptomPick features={facts.features} {...draft} change={change} />
       <NotSaved problem={problem} />
     </Screen>
   )
