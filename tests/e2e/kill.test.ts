@@ -14,7 +14,7 @@ async function killLoop(args: string[]): Promise<{ status: number; text: string 
     })
   const stop = () => child.kill('SIGTERM')
   process.once('exit', stop)
-  const late = setTimeout(stop, 170_000)
+  const late = setTimeout(stop, 340_000)
   const [status] = (await once(child, 'exit')) as [number | null]
   clearTimeout(late)
   process.off('exit', stop)
@@ -22,7 +22,7 @@ async function killLoop(args: string[]): Promise<{ status: number; text: string 
 }
 
 test('[fault 1] [P4] loses and doubles nothing when the server is killed ten times while phones push', async () => {
-  test.setTimeout(180_000)
+  test.setTimeout(360_000)
   const { status, text } = await killLoop(['--only', 'server', '--rounds', '10', '--seed', '1'])
   console.log(text)
   expect(status, text).toBe(0)

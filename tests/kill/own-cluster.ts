@@ -42,7 +42,12 @@ export class OwnCluster {
   #port = 0
   #child: ChildProcess | null = null
   #log = ''
-  readonly #atExit = () => this.#child?.kill('SIGQUIT')
+  readonly #atExit = () => {
+    this.#child?.kill('SIGQUIT')
+    // Nothing else can be waited for while a process exits; the server writes to the end.
+    Atomics.wait(new Int32Array(new SharedArrayBuffer(4)), 0, 0, 500)
+    rmSync(this.#home, { recursive: true, force: true, maxRetries: 5 })
+  }
 
   /** Makes and starts it. */
   static async open(): Promise<OwnCluster> {
