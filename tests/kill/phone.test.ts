@@ -7,4 +7,4 @@ it('[P1] [P8] [PH4] [fault 2] keeps all of a save or nothing when the browser is
   console.log(tally.line())
   expect(tally.of('moments')).toBeGreaterThan(60)
   expect(tally.of('kills')).toBeGreaterThanOrEqual(9)
-}, 240_000)
+}, 400_000)

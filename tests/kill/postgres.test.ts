@@ -7,4 +7,4 @@ it('[fault 5] [P4] loses and doubles nothing when PostgreSQL goes down under loa
   expect(tally.of('rounds')).toBe(10)
   expect(tally.of('hit pushes in the air')).toBeGreaterThanOrEqual(5)
   expect(tally.of('ops')).toBeGreaterThan(200)
-}, 180_000)
+}, 300_000)

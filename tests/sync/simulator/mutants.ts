@@ -113,7 +113,7 @@ function lateHorizon(db: TestDatabase): Rewrite {
       return await run(text, values)
     }
     const snapshot = snapshots.get(client)
-    if (snapshot === undefined || !/from change_log c\b[^]*cross join lateral/.test(text)) {
+    if (snapshot === undefined || !/from change_log c\b[\s\S]*cross join lateral/.test(text)) {
       return await run(text, values)
     }
     snapshots.delete(client)
