@@ -103,7 +103,7 @@ const SLOW_MS = 4
 function lateHorizon(db: TestDatabase): Rewrite {
   const snapshots = new WeakMap<pg.Client, pg.Client>()
   return async ({ client, text, values, run, gate }) => {
-    if (/from "shop_counter"/.test(text) && /"epoch"/.test(text)) {
+    if (/from "shop_counter"/.test(text) && /"horizon"/.test(text)) {
       const shop = values[0]
       const snapshot = await openSnapshot(db.appUrl, client, shop)
       await snapshots.get(client)?.end()
