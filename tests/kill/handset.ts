@@ -4,6 +4,7 @@ import type { Actor } from '@/lib/model/person'
 import { makePhone, type Phone } from '../support/e2e/phone'
 import type { Kept, KillPage } from './page/kill-page'
 import type { ShopLine } from './shop-line'
+import { mendTornLog } from './torn-log'
 
 const SMALL = { width: 390, height: 844 }
 
@@ -14,16 +15,20 @@ export class Handset {
   deviceId = ''
   /** The step at which it was killed last; null when it outlived what it did. */
   killedAt: string | null = null
+  /** How often the browser left half a record that would have cost it the store. */
+  torn = 0
   readonly #line: ShopLine
   readonly #actor: Actor
   readonly #cookie: string
   readonly #phone: Phone
+  readonly #profile: string
   #dying: Promise<void> | null = null
 
   constructor(of: { line: ShopLine; actor: Actor; cookie: string; profile: string }) {
     this.#line = of.line
     this.#actor = of.actor
     this.#cookie = of.cookie
+    this.#profile = of.profile
     this.#phone = makePhone(of.profile, of.line.base, SMALL)
   }
 
@@ -49,6 +54,7 @@ export class Handset {
       return []
     } finally {
       await this.#dying
+      if (this.killedAt !== null && mendTornLog(this.#profile)) this.torn += 1
     }
   }
 

@@ -44,11 +44,13 @@ export async function phoneRounds(of: Loop & { every: boolean }): Promise<Tally>
     const steps = await loop.round(NEVER)
     tally.add('moments', steps.length)
     for (const moment of momentsOf(steps, of)) {
-      await loop.round(moment)
-      of.say(
-        `killed ${moment.afterMs} ms after step ${moment.at} of ${steps.length}: ${handset.killedAt}`,
-      )
+      const words = `${moment.afterMs} ms after step ${moment.at} of ${steps.length}`
+      await loop.round(moment).catch((cause: unknown) => {
+        throw new Error(`killed ${words}: ${handset.killedAt}`, { cause })
+      })
+      of.say(`killed ${words}: ${handset.killedAt}`)
     }
+    tally.add('records torn by the browser', handset.torn)
     await loop.end()
   } finally {
     await handset.kill()
