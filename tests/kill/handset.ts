@@ -4,6 +4,7 @@ import type { Actor } from '@/lib/model/person'
 import { makePhone, type Phone } from '../support/e2e/phone'
 import type { Kept, KillPage } from './page/kill-page'
 import type { ShopLine } from './shop-line'
+import { broken } from './tally'
 import { mendTornLog } from './torn-log'
 
 const SMALL = { width: 390, height: 844 }
@@ -37,7 +38,9 @@ export class Handset {
     const page = await this.#phone.open('/kill/')
     const [name = '', value = ''] = this.#cookie.split(/=(.*)/s)
     await this.#phone.context().addCookies([{ name, value, url: this.#line.base }])
-    this.deviceId = await page.evaluate((actor) => killPage!.open(actor), this.#actor)
+    const deviceId = await page.evaluate((actor) => killPage!.open(actor), this.#actor)
+    if (this.deviceId !== '' && this.deviceId !== deviceId) broken('P1', 'the whole store is gone')
+    this.deviceId = deviceId
   }
 
   /** Runs the work, killed at the moment; answers the steps it went through when it outlived it. */
