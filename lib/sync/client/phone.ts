@@ -20,7 +20,7 @@ import { openKeys } from './keys'
 import type { Answered } from './outcomes'
 import { type Indexed, type Notice, PhoneDb, readMeta, writeMeta } from './phone-db'
 import { PhoneSender } from './phone-sender'
-import { photoPlace, record } from './record'
+import { photoPlace, type Recorded, record } from './record'
 import { refuseByRole } from './refuse-by-role'
 import { RoomWatch } from './room'
 import { Screens } from './screens'
@@ -218,14 +218,7 @@ export class Phone {
     const { roles, personId } = this.#actor
     await refuseByRole(this.core, ops, { roles, personId, guideSafe: this.#guideSafe() })
     await this.drafts.settled(clearDrafts)
-    await record(this.core, {
-      ops,
-      ids: ops.map((input) => opIdOf(input) ?? this.#ports.ids.next()),
-      deviceId: this.#deviceId,
-      nowMs: this.stamp.now(),
-      photos: more.photos ?? [],
-      clearDrafts,
-    })
+    await this.#keep({ ops, photos: more.photos ?? [], clearDrafts })
     await this.drafts.finished(clearDrafts)
     await remember(this.core.db, this.#ports, this.stamp.now())
     this.core.step('remembered')
@@ -239,16 +232,8 @@ export class Phone {
     const { redoOf } = await import('./redo')
     const again = await redoOf(this.core, opId)
     if (!again.ok) return again
-    const { record: refused, input } = again.value
-    await record(this.core, {
-      ops: [input],
-      ids: [this.#ports.ids.next()],
-      deviceId: this.#deviceId,
-      nowMs: this.stamp.now(),
-      photos: [],
-      clearDrafts: [],
-      insteadOf: refused,
-    })
+    const { record: insteadOf, input } = again.value
+    await this.#keep({ ops: [input], photos: [], clearDrafts: [], insteadOf })
     this.#onRecord()
     this.sender.poke('tap')
     return ok(null)
@@ -267,6 +252,16 @@ export class Phone {
     return await exportUnsent(this.core, await this.#asSender(), this.stamp.instant())
   }
 
+  #keep(of: Omit<Recorded, 'ids' | 'deviceId' | 'nowMs'>): Promise<void> {
+    const ids = of.ops.map((input) => opIdOf(input) ?? this.#ports.ids.next())
+    return record(this.core, {
+      ...of,
+      ids,
+      deviceId: this.#deviceId,
+      nowMs: this.stamp.now(),
+    })
+  }
+
   /** Stops sending and lets go of the store; everything stays on the phone. */
   close(): void {
     this.sender.stop()
@@ -277,7 +272,7 @@ export class Phone {
 
   async #runStore(): Promise<RunStore> {
     if (await isWiped(this.core.db)) throw new AppError('storeWiped')
-    await settleRows(this.core)
+    await ifThereIsRoom(() => settleRows(this.core))
     const { db, keys, step } = this.core
     return {
       db,
