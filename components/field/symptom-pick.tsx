@@ -27,8 +27,8 @@ export function SymptomPick({ features, symptom, conditions, change }: Props) {
       <RuleEdge>What does it do?</RuleEdge>
       {index === null ? (
         <p className="text-ink2">
-          The list comes with the code book, which is not on this phone yet. The rider’s words are
-          enough to open the job.
+          The list comes with the code book, which is not on this phone yet. Until then the rider’s
+          words are kept.
         </p>
       ) : (
         <>
@@ -50,7 +50,7 @@ export function SymptomPick({ features, symptom, conditions, change }: Props) {
               label: s.name,
             }))}
           />
-          {found.length === 0 ? <p>Nothing fits. The rider’s own words are enough.</p> : null}
+          {found.length === 0 ? <p>Nothing in the list fits. The rider’s words are kept.</p> : null}
         </>
       )}
       {picked && picked.conditions.length > 0 ? (
