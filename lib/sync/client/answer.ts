@@ -3,6 +3,7 @@ import { rowsTouched } from './apply-op'
 import { commit, noWrites, type Writes } from './commit'
 import type { Core } from './core'
 import { isStored, readRow } from './entities'
+import { bringsBack } from './free-room'
 import { receiveHlc } from './hlc'
 import { type Answered, type Applied, outcomesOf } from './outcomes'
 import { type OutboxRecord, type RowRecord, readMeta, rowKey } from './phone-db'
@@ -64,7 +65,7 @@ class AnswerPlan {
     await this.#clocks()
     const { pull } = this.#of.response
     if (pull.kind === 'reset') await this.#reset(pull.cursor)
-    const fits = pull.kind === 'page' && (await this.#cursorStands())
+    const fits = pull.kind === 'page' && (await this.#follows(pull))
     if (fits) await this.#settleCounted(pull.rows)
     const settled = fits && !pull.more ? await this.#settleTaken() : []
     const overlay = await readOverlay(this.#core, [...this.#changed.values()])
@@ -129,20 +130,23 @@ class AnswerPlan {
     this.#writes.meta.clockOffset = this.#of.offsetMs
   }
 
-  /** The page continues from where this store still is: no other tab has applied one meanwhile. */
-  async #cursorStands(): Promise<boolean> {
-    const held = await readMeta(this.#core.db, 'cursor')
-    return JSON.stringify(held ?? null) === JSON.stringify(this.#of.cursor)
+  /**
+   * The page continues from where this store still is: no other tab has applied one meanwhile. One that
+   * brings back a job that was let go of for room does not, and everything is pulled anew (P21).
+   */
+  async #follows({ rows, cursor }: { rows: readonly PullRow[]; cursor: Cursor }): Promise<boolean> {
+    const { db } = this.#core
+    const held = await readMeta(db, 'cursor')
+    if (JSON.stringify(held ?? null) !== JSON.stringify(this.#of.cursor)) return false
+    if (!(await bringsBack(db, rows))) return true
+    await this.#pullAnew(cursor)
+    return false
   }
 
   /** Everything is pulled anew; old rows stay shown until the new ones are whole. Unsent work is untouched. */
   async #reset(cursor: Cursor): Promise<void> {
     const { db } = this.#core
-    this.applied.wasReset = true
-    this.applied.more = true
-    this.#writes.meta.cursor = { ...cursor, seq: 0 }
-    this.#writes.meta.gen = ((await readMeta(db, 'gen')) ?? 0) + 1
-    this.#writes.meta.setAside = []
+    await this.#pullAnew(cursor)
     const held = this.#of.cursor
     const restored = held !== null && logOf(held) !== logOf(cursor)
     if (!restored) return
@@ -151,6 +155,14 @@ class AnswerPlan {
       this.#changed.set(record.dseq, { ...record, state: 'waiting', takenAt: null })
     }
     this.#writes.photos = await photosToOffer(db, this.#of.nowMs - KEEP_TAKEN_MS)
+  }
+
+  async #pullAnew(cursor: Cursor): Promise<void> {
+    this.applied.wasReset = true
+    this.applied.more = true
+    this.#writes.meta.cursor = { ...cursor, seq: 0 }
+    this.#writes.meta.gen = ((await readMeta(this.#core.db, 'gen')) ?? 0) + 1
+    this.#writes.meta.setAside = []
   }
 
   /** A whole pull shows every op taken before it; those are on top no longer. */

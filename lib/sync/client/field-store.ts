@@ -16,7 +16,7 @@ import {
 } from './device-db'
 import { askWho, type EnrolProblem } from './enrol'
 import { ifThereIsRoom } from './free-room'
-import { countUnsent } from './keepsake'
+import { countToLose } from './keepsake'
 import { Phone } from './phone'
 import { type Indexed, readMeta } from './phone-db'
 import type { Cause } from './phone-sender'
@@ -81,7 +81,7 @@ export class FieldStore {
     const phone = this.phone.get()
     if (phone === null) return 0
     await phone.sender.sendNow('tap')
-    return this.phone.get() === phone ? await countUnsent(phone.core.db) : 0
+    return this.phone.get() === phone ? await countToLose(phone.core.db) : 0
   }
 
   /** Ends the session; the person's store stays on this phone, locked, with everything unsent. */
@@ -206,7 +206,7 @@ export class FieldStore {
     const why = await readMeta(phone.core.db, 'wiping')
     if (why !== undefined) {
       // Closed for emptying, and killed before that was put down: nothing new can have come since.
-      const unsent = await countUnsent(phone.core.db)
+      const unsent = await countToLose(phone.core.db)
       await beginWipe(this.#wiping, { core: phone.core, actor, why, unsent })
       await this.#leaveEmptied(phone)
       return

@@ -1,7 +1,9 @@
+import type { Id } from '@/lib/model/id'
 import type { Job } from '@/lib/model/job'
+import type { PullRow } from '@/lib/sync/protocol/message'
 import { commit, noWrites } from './commit'
 import type { Core } from './core'
-import type { RowRecord } from './phone-db'
+import { type PhoneDb, type RowRecord, readMeta } from './phone-db'
 import { dropSentThumbs } from './photo-store'
 
 /**
@@ -25,7 +27,29 @@ async function dropClosedJobs(core: Core): Promise<boolean> {
     const jobIds = new Set(closed.map((row) => row.id).filter((jobId) => !unsent.has(jobId)))
     if (jobIds.size === 0) return null
     const rows = await db.row.filter((row) => row.jobId !== null && jobIds.has(row.jobId)).toArray()
-    return { ...noWrites(), dropRows: rows.map((row) => row.key) }
+    const gen = (await readMeta(db, 'gen')) ?? 0
+    const dropped = { gen, jobIds: [...new Set([...(await droppedJobs(db)), ...jobIds])] }
+    return { ...noWrites(), dropRows: rows.map((row) => row.key), meta: { dropped } }
+  })
+}
+
+/** Jobs this store let go of for room, and has not pulled anew since. */
+export async function droppedJobs(db: PhoneDb): Promise<Id[]> {
+  const dropped = await readMeta(db, 'dropped')
+  const gen = (await readMeta(db, 'gen')) ?? 0
+  return dropped?.gen === gen ? dropped.jobIds : []
+}
+
+/**
+ * True when a page brings a job back to work that was let go of for room: its entries are older than the
+ * cursor and would not come with it, so that only a whole pull shows the job whole.
+ */
+export async function bringsBack(db: PhoneDb, rows: readonly PullRow[]): Promise<boolean> {
+  const dropped = new Set(await droppedJobs(db))
+  if (dropped.size === 0) return false
+  return rows.some((row) => {
+    if (row.entity !== 'job' || row.state !== 'present' || !dropped.has(row.id)) return false
+    return (row.row as { state?: unknown } | null)?.state !== 'closed'
   })
 }
 

@@ -49,6 +49,16 @@ export async function countUnsent(db: PhoneDb): Promise<number> {
   return ops + (await db.photo.where('state').anyOf('waiting', 'stuck').count())
 }
 
+/** A file whose bytes nobody has any more: the phone confirmed it was sent, the shop was restored since. */
+const isGone = (photo: { state: string; reason: string | null }): boolean =>
+  photo.state === 'stuck' && photo.reason === 'bytesGone'
+
+/** The same as far as it would be lost with the store: of a file whose bytes are gone nothing is left to lose. */
+export async function countToLose(db: PhoneDb): Promise<number> {
+  const gone = await db.photo.where('state').equals('stuck').filter(isGone).count()
+  return (await countUnsent(db)) - gone
+}
+
 /**
  * Takes down how far this store has come. `recordedMs`: something was recorded just now. A store without a
  * record is not remembered: nothing can be lost with it.

@@ -11,7 +11,7 @@ import {
   planWipe,
   type WipeRecord,
 } from './device-db'
-import { countUnsent, keep, readKeepsakes } from './keepsake'
+import { countToLose, keep, readKeepsakes } from './keepsake'
 import { findKey, type Indexed, PhoneDb, readMeta } from './phone-db'
 
 /**
@@ -40,7 +40,7 @@ export async function beginWipe(
   const device = await readMeta(db, 'device')
   tools.step('wipe:look')
   const closed = await db.transaction('rw', [db.outbox, db.photo, db.meta], async () => {
-    if ((await countUnsent(db)) !== of.unsent) return false
+    if ((await countToLose(db)) !== of.unsent) return false
     const turn = ((await readMeta(db, 'turn')) ?? 0) + 1
     await db.meta.bulkPut([
       { name: 'turn', value: turn },

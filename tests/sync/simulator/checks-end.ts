@@ -91,10 +91,10 @@ export async function holdAll(world: World): Promise<void> {
 async function holdStore(world: World, handset: Handset): Promise<void> {
   const tab = await handset.tab()
   if (world.revoked.has(world.storeKey(handset))) {
-    const { outbox, photo, row } = tab.phone.core.db
+    // One that the shop never knew, or knows no more since a restore, nobody can tell anything: it keeps all.
+    if (!(await isKnown(world, tab))) return
+    const { outbox, photo } = tab.phone.core.db
     const left = [await outbox.toArray(), await photo.toArray()].flat().map((one) => one.state)
-    // One that the shop never knew holds nothing, and nobody can tell it anything.
-    if (left.length + (await row.count()) === 0) return
     breaks('revokedIsEmptied', `${world.storeKey(handset)} still holds ${left.join()}`)
   }
   const isEven = await holdVisible(world, handset)
@@ -106,6 +106,14 @@ async function holdStore(world: World, handset: Handset): Promise<void> {
   await holdOutbox(world, world.storeKey(handset), tab)
   await holdPhotos(world, world.storeKey(handset), tab)
   await holdSame(world.storeKey(handset), tab)
+}
+
+async function isKnown(world: World, { phone, user }: Tab): Promise<boolean> {
+  const { rowCount } = await world.admin.query(
+    'select from device where shop_id = $1 and id = $2',
+    [user.shop.id, phone.deviceId],
+  )
+  return rowCount === 1
 }
 
 /** Nothing waits but what waits for something the shop never had. */

@@ -1,11 +1,12 @@
 // What must hold on a phone after every step.
 import canonicalize from 'canonicalize'
+import { droppedJobs } from '@/lib/sync/client/free-room'
 import { type OutboxRecord, readMeta } from '@/lib/sync/client/phone-db'
 import type { Op } from '@/lib/sync/protocol/op'
 import { breaks } from './broken-rule'
 import type { Handset, Tab } from './handset'
 import type { Recorded } from './ledger'
-import { readFacts, readStand, visibleTo } from './oracle'
+import { keysOf, readFacts, readStand, visibleTo } from './oracle'
 import type { World } from './world'
 
 /** How long a taken op is kept for a restore (docs/spec/sync.md, P12), ms. */
@@ -196,7 +197,8 @@ export async function holdVisible(world: World, handset: Handset): Promise<boole
   const rows = await tab.phone.core.db.row.toArray()
   const held = new Set(rows.filter((row) => row.base !== null).map((row) => row.key))
   const visible = visibleTo(facts, tab.user.person.id)
-  const missing = [...visible].filter((key) => !held.has(key)).sort()
+  const letGo = keysOf(facts, await droppedJobs(tab.phone.core.db))
+  const missing = [...visible].filter((key) => !held.has(key) && !letGo.has(key)).sort()
   const extra = [...held].filter((key) => !visible.has(key)).sort()
   if (missing.length + extra.length > 0) {
     const said = `misses ${missing.slice(0, 5).join(' ') || 'nothing'}, has too much: ${extra.slice(0, 5).join(' ') || 'nothing'}`

@@ -1,8 +1,9 @@
 // A phone that the shop has taken out empties itself once everything it held is in quarantine. The field
 // app does this in lib/sync/client/field-store.ts; here it is done for one phone of a run.
 import canonicalize from 'canonicalize'
+import { FILE_KIND } from '@/db/queries/quarantine'
 import { DeviceDb } from '@/lib/sync/client/device-db'
-import { countUnsent } from '@/lib/sync/client/keepsake'
+import { countToLose } from '@/lib/sync/client/keepsake'
 import type { Phone } from '@/lib/sync/client/phone'
 import { PhoneDb, readMeta } from '@/lib/sync/client/phone-db'
 import { beginWipe, resumeWipes, type WipeTools } from '@/lib/sync/client/wipe'
@@ -47,7 +48,7 @@ export async function emptyIfClosed(world: World, handset: Handset): Promise<boo
   await handset.close()
   const tools = toolsOf(world, handset, () => undefined)
   const actor = { shopId: user.shop.id, personId: user.person.id, roles: [], name: null }
-  await beginWipe(tools, { core: { db }, actor, why, unsent: await countUnsent(db) })
+  await beginWipe(tools, { core: { db }, actor, why, unsent: await countToLose(db) })
   db.close()
   await resumeWipes(tools)
   tools.device.close()
@@ -63,7 +64,7 @@ type Emptied = { handset: Handset; user: User; deviceId: string | null }
 async function settleEmptied(world: World, { handset, user, deviceId }: Emptied): Promise<void> {
   const key = world.storeKey(handset, user)
   const { rows } = await world.admin.query<{ raw: string }>(
-    `select raw from quarantine_op where shop_id = $1 and device_id = $2
+    `select raw from quarantine_op where shop_id = $1 and device_id = $2 and kind <> '${FILE_KIND}'
      union all select raw from sync_op where shop_id = $1 and device_id = $2`,
     [user.shop.id, deviceId],
   )

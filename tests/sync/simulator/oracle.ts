@@ -101,6 +101,20 @@ export function visibleTo(facts: ShopFacts, personId: string): Set<string> {
   return held
 }
 
+/** Keys of what hangs on those of these jobs that are closed: a phone may let go of it for room (P21). */
+export function keysOf(facts: ShopFacts, jobIds: readonly string[]): Set<string> {
+  const closed = facts.jobs.filter((job) => job.state === 'closed' && jobIds.includes(job.id))
+  const ids = new Set(closed.map((job) => job.id))
+  const of = (entity: string, rows: readonly OfJob[]) =>
+    rows.filter((row) => ids.has(row.job_id)).map((row) => `${entity}/${row.id}`)
+  return new Set([
+    ...closed.map((job) => `job/${job.id}`),
+    ...of('logEntry', facts.entries),
+    ...of('photo', facts.photos),
+    ...of('partRequest', facts.requests),
+  ])
+}
+
 /**
  * Own jobs until they leave the field; jobs of nobody while they are not closed. Of merged jobs the one
  * that goes on decides, and it is everybody's who opened one of them.

@@ -20,8 +20,8 @@ export async function recordOn(world: World, handset: Handset, tab?: Tab): Promi
   return await writeSomething(world, handset, at)
 }
 
-const isNotAllowed = (cause: unknown): boolean =>
-  cause instanceof AppError && cause.kind === 'notAllowed'
+const isError = (cause: unknown, kind: AppError['kind']): boolean =>
+  cause instanceof AppError && cause.kind === kind
 
 async function writeSomething(
   world: World,
@@ -44,7 +44,9 @@ async function writeSomething(
     await tab.phone.record(made.ops, { photos: made.photos ?? [] })
   } catch (cause) {
     // The phone's own gate keeps nothing that the shop must refuse by role (R22).
-    if (isNotAllowed(cause)) return `${names} not allowed`
+    if (isError(cause, 'notAllowed')) return `${names} not allowed`
+    // Taken out and closed for its emptying, which follows at the step's end (Q4).
+    if (isError(cause, 'storeWiped')) return `${names} not kept, the store is closed`
     if (!isKilled(cause) && !isFull(cause)) throw cause
     world.fault(isFull(cause) ? 'noRoomToRecord' : 'killedRecording')
     return `${names} not kept`
