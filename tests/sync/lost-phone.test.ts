@@ -149,6 +149,21 @@ describe('[S11] a lost phone', () => {
     await app.end()
   })
 
+  it('[Q4] [P12] is emptied though the bytes of a photo are gone at both ends: nothing is left to lose', async () => {
+    const { app, jobId } = await at.atWork('second')
+    const { deviceId } = app.phone()
+    const { core } = app.phone()
+    await app.phone().record([note(app, jobId, 'Taken')])
+    await app.sync()
+    const gone = { jobId, mime: 'image/jpeg', size: 9, since: 1, state: 'stuck' as const }
+    await core.db.photo.put({ ...gone, hash: 'a'.repeat(64), reason: 'bytesGone' })
+    expect(await countUnsent(core.db)).toBe(1)
+    await at.desk.revoke(deviceId)
+    await app.sync()
+    expect(app.store.session.get()).toMatchObject({ emptied: true })
+    await app.end()
+  })
+
   it('a 403 without the order keeps everything', async () => {
     const { app, jobId, line } = await at.atWork('mechanic')
     line.fault = 'noLine'

@@ -2,7 +2,7 @@
 import { afterAll, beforeAll, describe, expect, it } from 'vitest'
 import { asShop } from '@/db/client'
 import { listAudit } from '@/db/queries/audit'
-import { findJob } from '@/db/queries/jobs'
+import { assignJob, findJob } from '@/db/queries/jobs'
 import type { Actor } from '@/lib/model/person'
 import { hlcAt } from '@/lib/sync/protocol/hlc'
 import { settleAtDesk } from '@/lib/sync/server/settle-at-desk'
@@ -90,5 +90,29 @@ describe('at the desk', () => {
     const stranger = { ...actor, shopId: world.b.id, personId: world.b.people.owner?.id ?? '' }
     const answer = await settleAtDesk(stranger, { jobId, historyId, use: true, stamp: stamp() })
     expect(answer).toMatchObject({ ok: false })
+  })
+
+  it('[R22] a mechanic settles no value of a job in somebody else’s hands', async () => {
+    const { one, two, jobId, historyId } = await apart()
+    const mechanic = (personId: string): Actor => ({
+      ...actor,
+      personId,
+      roles: ['mechanic'],
+    })
+    await asShop(world.a.id, (tx) =>
+      assignJob(tx, { jobId, personId: one.person.id, at: new Date().toISOString() }),
+    )
+    const input = { jobId, historyId, use: true }
+    expect(
+      await settleAtDesk(mechanic(two.person.id), { ...input, stamp: stamp() }),
+    ).toEqual({ ok: false, problem: { kind: 'notFound' } })
+    expect(await jobNow(jobId)).toMatchObject({
+      place: { latitude: 47.2 },
+      alsoEntered: [{ id: historyId }],
+    })
+    expect(
+      await settleAtDesk(mechanic(one.person.id), { ...input, stamp: stamp() }),
+    ).toMatchObject({ ok: true })
+    expect((await jobNow(jobId))?.place?.latitude).toBe(47.1)
   })
 })

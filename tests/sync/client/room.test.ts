@@ -1,5 +1,6 @@
 import { IDBObjectStore as FDBObjectStore } from 'fake-indexeddb'
 import { afterEach, describe, expect, test, vi } from 'vitest'
+import { freeRoom } from '@/lib/sync/client/free-room'
 import { readMeta } from '@/lib/sync/client/phone-db'
 import { RoomWatch } from '@/lib/sync/client/room'
 import { newBrowser, startApp } from '../../support/field-app'
@@ -98,6 +99,33 @@ describe('[P21] room on the phone', () => {
     expect(left.map((row) => row.id).sort()).toEqual([unsentIn, jobId].sort())
     expect((await phone.see(phone.phone.log(jobId))).length).toBe(2)
     expect((await phone.see(phone.phone.unsent)).count).toBe(2)
+  })
+
+  test('[P21] a job that was let go of comes back whole when it is opened again', async () => {
+    const { shop, phone, machine, job, jobId } = await atWork()
+    await phone.record([
+      machine,
+      job,
+      note(phone, jobId, 'Open'),
+      note(phone, jobId, 'Older entry'),
+    ])
+    const opening = shop.row('job', jobId) as object
+    const entries = phone.phone.log(jobId)
+    expect(await phone.see(entries)).toHaveLength(2)
+    shop.put('job', jobId, { ...opening, state: 'closed' }, jobId)
+    await phone.sync()
+    const { db } = phone.phone.core
+    expect(await freeRoom(phone.phone.core)).toBe(true)
+    expect(await db.row.where('entity').equals('logEntry').count()).toBe(0)
+    // Closed jobs may change without coming back to work: nothing is pulled anew for that.
+    const gen = await readMeta(db, 'gen')
+    shop.put('job', jobId, { ...opening, state: 'closed', weather: 'Sleet' }, jobId)
+    await phone.sync()
+    expect(await readMeta(db, 'gen')).toBe(gen)
+    shop.put('job', jobId, { ...opening, state: 'open' }, jobId)
+    await phone.sync()
+    expect(await phone.rows('job')).toMatchObject([{ id: jobId, state: 'open' }])
+    expect(await db.row.where('entity').equals('logEntry').count()).toBe(2)
   })
 
   test('[P21] a phone without any room opens all the same, and shows what it holds', async () => {
