@@ -2,12 +2,14 @@ import { asShop } from '@/db/client'
 import { appendAudit } from '@/db/queries/audit'
 import { lockShop, takeChanges } from '@/db/queries/changes'
 import { listFieldWrites, lookAtWrites, saveFieldWrites } from '@/db/queries/field-history'
+import { findLeadJob } from '@/db/queries/jobs'
 import { setJobValue } from '@/db/queries/values'
 import type { Id } from '@/lib/model/id'
 import type { Actor } from '@/lib/model/person'
 import { fail, ok, type Result } from '@/lib/model/result'
 import { jobSetting } from '@/lib/model/setting'
 import type { Instant } from '@/lib/model/time'
+import { seesJob } from '@/lib/shop/scope'
 import { hlcAt } from '@/lib/sync/protocol/hlc'
 import { mergeWrite } from './field-merge'
 
@@ -22,7 +24,10 @@ export type DeskSettling = {
   stamp: { newId: () => Id; at: Instant }
 }
 
-/** Settles one value of a job; `notFound` when it does not wait there any more. */
+/**
+ * Settles one value of a job. `notFound` when it does not wait there any more, and when the job, or the one
+ * that goes on for it, is not one this person sees (R22): the same answer, so that nothing is told of it.
+ */
 export function settleAtDesk(
   actor: Actor,
   { jobId, historyId, use, stamp }: DeskSettling,
@@ -30,6 +35,8 @@ export function settleAtDesk(
   const { at, newId } = stamp
   return asShop(actor.shopId, async (tx) => {
     const seq = await lockShop(tx)
+    const job = await findLeadJob(tx, jobId)
+    if (!job || !seesJob(actor, job)) return fail({ kind: 'notFound' as const })
     const placed = (await listFieldWrites(tx, [jobId])).filter(({ entity }) => entity === 'job')
     const found = placed.find(({ write }) => write.id === historyId)
     const isWaiting = found?.write.state === 'lost' && !found.write.isLookedAt
