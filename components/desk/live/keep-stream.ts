@@ -1,5 +1,6 @@
 import type { ShopLine } from '@/lib/ports/shop-line'
 import { backoffMs } from './live-words'
+import type { Session } from './session-again'
 
 /** What a kept stream tells its owner. */
 export type KeptStreamOwner = {
@@ -9,6 +10,8 @@ export type KeptStreamOwner = {
   fresh(): void
   event(name: string, data: string): void
   lost(): void
+  /** Whether the session is still this person's; `unknown` when the shop cannot be asked. */
+  session(): Promise<Session>
   signedOut(): void
 }
 
@@ -19,7 +22,7 @@ const NAMES = ['change', 'resync', 'beat'] as const
  * One event stream that comes back: by the browser itself with Last-Event-ID where it can, else anew
  * after a growing pause, unless the session is gone.
  */
-export function keepStream(line: ShopLine, owner: KeptStreamOwner) {
+export function keepStream(line: Pick<ShopLine, 'openStream'>, owner: KeptStreamOwner) {
   let close: (() => void) | null = null
   let timer: ReturnType<typeof setTimeout> | undefined
   let tries = 0
@@ -60,10 +63,10 @@ export function keepStream(line: ShopLine, owner: KeptStreamOwner) {
   }
 
   async function reopen() {
-    const me = await line.getJson('/api/me')
+    const session = await owner.session()
     if (stopped) return
-    if (!me.ok && me.problem.kind === 'signedOut') owner.signedOut()
-    else if (me.ok) open()
+    if (session === 'gone') owner.signedOut()
+    else if (session === 'mine') open()
     else later()
   }
 

@@ -2,14 +2,16 @@ import type { ShopLine } from '@/lib/ports/shop-line'
 import type { Tabs } from '@/lib/ports/tabs'
 import { keepStream } from './keep-stream'
 import { type Change, type LineState, type LiveWord, readChange, readWord } from './live-words'
+import { type Asked, sessionAgain } from './session-again'
 
 /**
  * Keeps the desk told of changes. One tab of the browser leads (Web Locks), holds the only event stream
  * and passes on what it hears (BroadcastChannel). A tab that hears nothing for a minute opens a stream of
- * its own until the leader speaks again; where a browser has no locks, each tab has one.
+ * its own until the leader speaks again; where a browser has no locks, each tab has one. A tab that finds
+ * the session gone leads no longer and says so to nobody: each finds out for itself, and comes back by itself.
  * Cost of the choice: a change reaches the other tabs one message later.
  */
-export type LiveOptions = {
+export type LiveOptions = Asked & {
   line: ShopLine
   tabs: Tabs
   now(): number
@@ -31,28 +33,18 @@ export function startLive(options: LiveOptions): () => void {
   let state: LineState = { kind: 'opening' }
   let heardAt: number | null = null
   let lastWordAt = now()
-  let leading = false
 
   const channel = tabs.channel(options.name, (said) => hear(readWord(said)))
   const say = (word: LiveWord) => {
-    if (leading) channel.say(word)
+    if (lead.isMine()) channel.say(word)
   }
   function show(next: LineState) {
     state = next
     say({ kind: 'state', state: next })
     options.onState(next)
   }
-  function gap() {
-    say({ kind: 'gap' })
-    options.onGap()
-  }
-  function event(name: string, data: string) {
-    if (name === 'beat') return
-    const change = name === 'change' ? readChange(data) : null
-    if (!change) return gap() // "resync", or a word this build does not know
-    say({ kind: 'change', change })
-    options.onChange(change)
-  }
+  const lead = leadOf(options, () => stream.open())
+  const { gap, event } = passOn(options, say)
 
   const stream = keepStream(line, {
     heard() {
@@ -63,7 +55,22 @@ export function startLive(options: LiveOptions): () => void {
     fresh: gap,
     event,
     lost: () => show({ kind: 'lost', heardAt }),
-    signedOut: () => show({ kind: 'signedOut' }),
+    session: () => session.ask(),
+    signedOut() {
+      lead.giveUp()
+      show({ kind: 'signedOut' })
+    },
+  })
+
+  const session = sessionAgain(options, {
+    isOut: () => state.kind === 'signedOut',
+    back() {
+      lastWordAt = now()
+      show({ kind: 'opening' })
+      options.onGap()
+      lead.queueUp()
+      channel.say({ kind: 'hello' })
+    },
   })
 
   /** Follows the leading tab; an own stream opened in its silence is given up. */
@@ -78,7 +85,10 @@ export function startLive(options: LiveOptions): () => void {
   }
   function hear(word: LiveWord | null) {
     if (word?.kind === 'hello') say({ kind: 'state', state })
-    else if (word && !leading) follow(word)
+    else if (!word || lead.isMine()) return
+    else if (state.kind === 'signedOut') session.askAgain()
+    // Only an older build says this of the whole browser.
+    else if (word.kind !== 'state' || word.state.kind !== 'signedOut') follow(word)
   }
 
   const watch = setInterval(() => {
@@ -87,16 +97,51 @@ export function startLive(options: LiveOptions): () => void {
     show({ kind: 'lost', heardAt })
     stream.later()
   }, WATCH_MS)
-  const stopLeading = tabs.lead(options.name, () => {
-    leading = true
-    stream.open()
-  })
+  lead.queueUp()
   channel.say({ kind: 'hello' })
 
   return () => {
     clearInterval(watch)
+    session.stop()
     stream.stop()
-    stopLeading()
+    lead.giveUp()
     channel.close()
+  }
+}
+
+/** This tab's turn to lead: waited for from `queueUp` on, until it is given up. */
+function leadOf({ tabs, name }: LiveOptions, begin: () => void) {
+  let isMine = false
+  let stop: () => void = () => undefined
+  return {
+    isMine: () => isMine,
+    queueUp() {
+      stop = tabs.lead(name, () => {
+        isMine = true
+        begin()
+      })
+    },
+    giveUp() {
+      isMine = false
+      stop()
+    },
+  }
+}
+
+/** What the stream told, to this tab and to the others. */
+function passOn(to: LiveOptions, say: (word: LiveWord) => void) {
+  function gap() {
+    say({ kind: 'gap' })
+    to.onGap()
+  }
+  return {
+    gap,
+    event(name: string, data: string) {
+      if (name === 'beat') return
+      const change = name === 'change' ? readChange(data) : null
+      if (!change) return gap() // "resync", or a word this build does not know
+      say({ kind: 'change', change })
+      to.onChange(change)
+    },
   }
 }

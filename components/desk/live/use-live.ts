@@ -1,6 +1,7 @@
 import { type QueryClient, useQueryClient } from '@tanstack/react-query'
 import { useEffect, useState } from 'react'
 import type { Actor } from '@/lib/model/person'
+import { actorIn } from '../../sign-in/read-actor'
 import type { DeskPorts } from '../desk-ports'
 import { startLive } from './live-stream'
 import type { Change, LineState } from './live-words'
@@ -42,6 +43,22 @@ function gatherer(client: QueryClient) {
   }
 }
 
+/** Whenever this tab is looked at again. */
+function onLook(look: () => void): () => void {
+  window.addEventListener('focus', look)
+  document.addEventListener('visibilitychange', look)
+  return () => {
+    window.removeEventListener('focus', look)
+    document.removeEventListener('visibilitychange', look)
+  }
+}
+
+/** True when the shop's answer to "who is this?" names this very person. */
+function isPerson(answer: unknown, { shopId, personId }: Pick<Actor, 'shopId' | 'personId'>) {
+  const who = actorIn(answer)
+  return who?.shopId === shopId && who.personId === personId
+}
+
 /** Listens for changes of the shop for as long as the desk is open; answers how the line is. */
 export function useLive(actor: Actor, ports: DeskPorts): LineState {
   const client = useQueryClient()
@@ -53,6 +70,8 @@ export function useLive(actor: Actor, ports: DeskPorts): LineState {
       line: ports.line,
       tabs: ports.tabs(),
       now: ports.now,
+      isMe: (answer) => isPerson(answer, { shopId, personId }),
+      onLook,
       name: `farbench-desk:${shopId}:${personId}`,
       onState: setState,
       onChange: gather.change,

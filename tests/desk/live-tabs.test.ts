@@ -1,0 +1,146 @@
+import { afterEach, beforeEach, describe, expect, it, vi } from 'vitest'
+import { SILENCE_MS } from '@/components/desk/live/live-stream'
+import { fakeBrowser, fakeLine, tab } from '../support/desk-tabs'
+
+beforeEach(() => {
+  vi.useFakeTimers({ now: 1_000_000 })
+})
+afterEach(() => {
+  vi.useRealTimers()
+})
+
+describe('several tabs of one browser', () => {
+  it('[R19] hold one stream between them and all hear every change', () => {
+    const fake = fakeLine()
+    const browser = fakeBrowser()
+    const one = tab(fake.line, browser.tabs)
+    fake.last().opened()
+    const two = tab(fake.line, browser.tabs)
+    expect(fake.streams).toHaveLength(1)
+    expect(two.state()).toBe('live') // told at once on its hello
+    fake.change(7)
+    expect([one.changes, two.changes]).toEqual([[7], [7]])
+    fake.last().broken(true)
+    expect(two.state()).toBe('lost')
+    one.stop()
+    two.stop()
+  })
+
+  it('[R19] hand the stream on when the leading tab closes, and read anew what was missed between', () => {
+    const fake = fakeLine()
+    const browser = fakeBrowser()
+    const one = tab(fake.line, browser.tabs)
+    fake.last().opened()
+    const two = tab(fake.line, browser.tabs)
+    const before = two.gaps()
+    one.stop()
+    expect(fake.streams).toHaveLength(2)
+    expect(fake.open()).toBe(1)
+    fake.last().opened()
+    expect(two.gaps()).toBe(before + 1)
+    fake.change(8)
+    expect(two.changes).toEqual([8])
+    two.stop()
+  })
+
+  it('[R19] open a stream of their own while the leader is frozen, and give it up when it speaks again', async () => {
+    const fake = fakeLine()
+    const browser = fakeBrowser()
+    const one = tab(fake.line, browser.tabs)
+    fake.last().opened()
+    const leader = fake.last()
+    const two = tab(fake.line, browser.tabs)
+    vi.advanceTimersByTime(SILENCE_MS + 5_000)
+    // Both fell silent; the first tab is frozen, so only the second comes back.
+    one.states.length = 0
+    await vi.advanceTimersByTimeAsync(20_000)
+    expect(fake.streams.length).toBeGreaterThan(1)
+    fake.last().opened()
+    expect(two.state()).toBe('live')
+    leader.event('beat', '1', '1')
+    expect(two.state()).toBe('live')
+    one.stop()
+    two.stop()
+    expect(fake.open()).toBe(0)
+  })
+
+  it('[R22] one that is signed out silences no other: the next signs in, leads and stays live', async () => {
+    const fake = fakeLine()
+    const browser = fakeBrowser()
+    const one = tab(fake.line, browser.tabs)
+    fake.last().opened()
+    fake.meIs({ kind: 'signedOut' })
+    fake.last().broken(false)
+    await vi.advanceTimersByTimeAsync(1_500)
+    expect([one.state(), fake.open()]).toEqual(['signedOut', 0])
+
+    fake.meIs(null) // signed in anew, in another tab
+    const two = tab(fake.line, browser.tabs)
+    fake.last().opened()
+    expect(two.state()).toBe('live')
+    fake.change(7)
+    expect(two.changes).toEqual([7])
+    await vi.advanceTimersByTimeAsync(SILENCE_MS * 3)
+    expect(two.states.filter(({ kind }) => kind === 'signedOut')).toEqual([])
+    one.stop()
+    two.stop()
+  })
+
+  it('[R22] the signed-out one comes back when it hears the other, and when it is looked at', async () => {
+    const fake = fakeLine()
+    const browser = fakeBrowser()
+    const one = tab(fake.line, browser.tabs)
+    fake.last().opened()
+    fake.meIs({ kind: 'signedOut' })
+    fake.last().broken(false)
+    await vi.advanceTimersByTimeAsync(1_500)
+    one.look()
+    await vi.advanceTimersByTimeAsync(0)
+    expect(one.state()).toBe('signedOut')
+    fake.meIs(null)
+    const two = tab(fake.line, browser.tabs)
+    const before = one.gaps()
+    fake.last().opened()
+    await vi.advanceTimersByTimeAsync(0)
+    expect(one.state()).toBe('live')
+    expect(one.gaps()).toBeGreaterThan(before) // what it missed is read anew
+    expect(fake.open()).toBe(1)
+    two.stop() // and it is in the queue again
+    fake.last().opened()
+    expect([one.state(), fake.open()]).toEqual(['live', 1])
+    one.stop()
+  })
+
+  it('[R22] comes back alone, by a look, but never for another person’s session', async () => {
+    const fake = fakeLine()
+    const one = tab(fake.line, fakeBrowser().tabs)
+    fake.last().opened()
+    fake.meIs({ kind: 'signedOut' })
+    fake.last().broken(false)
+    await vi.advanceTimersByTimeAsync(1_500)
+    fake.meIs(null)
+    fake.whoIs('another')
+    one.look()
+    await vi.advanceTimersByTimeAsync(0)
+    expect([one.state(), fake.streams.length]).toEqual(['signedOut', 1])
+    fake.whoIs('me')
+    one.look()
+    await vi.advanceTimersByTimeAsync(0)
+    fake.last().opened()
+    expect([one.state(), fake.streams.length]).toEqual(['live', 2])
+    one.stop()
+  })
+
+  it('[R22] one that hears of an older build that it is signed out does not take it over', () => {
+    const fake = fakeLine()
+    const browser = fakeBrowser()
+    const one = tab(fake.line, browser.tabs)
+    fake.last().opened()
+    const two = tab(fake.line, browser.tabs)
+    const old = browser.tabs.channel('one', () => undefined)
+    old.say({ kind: 'state', state: { kind: 'signedOut' } })
+    expect(two.state()).toBe('live')
+    one.stop()
+    two.stop()
+  })
+})
