@@ -126,6 +126,7 @@ function Witness() {
       href="/field/unsent"
       state={witnessState(unsent)}
       count={unsent.count}
+      letGo={unsent.letGoCount + unsent.filesLetGo}
       progress={sending === null || sending.total === 0 ? 0 : sending.done / sending.total}
     />
   )
@@ -154,27 +155,46 @@ export function witnessState(of: {
   return of.sending === null ? 'broken' : 'sending'
 }
 
+type Counts = { count: number; letGo: number }
+
+/** What is said when the count of unsent things changes; a buzz only when the shop took the last one. */
+export function countNews(was: Counts, is: Counts): { words: string; buzz: boolean } | null {
+  if (is.count > was.count) {
+    return { words: `${is.count} not sent. All of it is saved on this phone.`, buzz: false }
+  }
+  if (is.count > 0 || was.count === 0) {
+    return null
+  }
+  if (is.letGo > was.letGo) {
+    return { words: 'Nothing waits any more.', buzz: false }
+  }
+  const words =
+    is.letGo === 0 ? 'Everything you recorded is at the shop.' : 'The rest is at the shop.'
+  return { words, buzz: true }
+}
+
 /** Says when the last thing was accepted (with one short buzz) and, at once, when something is stuck. */
 function useSendingNews(): void {
-  const { count, stuckCount, storageKept, stalled, quotaShare } = useUnsent()
+  const { count, stuckCount, storageKept, stalled, quotaShare, letGoCount, filesLetGo } =
+    useUnsent()
+  const letGo = letGoCount + filesLetGo
   const isHalted = stalled !== null
   const isFull = (quotaShare ?? 0) >= WARN_SHARE
-  const before = useRef<{ count: number; stuck: number }>({ count: 0, stuck: 0 })
+  const before = useRef({ count: 0, stuck: 0, letGo: 0 })
   useEffect(() => {
     const was = before.current
-    before.current = { count, stuck: stuckCount }
-    if (was.count > 0 && count === 0) {
-      announce('Everything is at the shop.')
-      if ('vibrate' in navigator) {
-        navigator.vibrate(30)
-      }
-    } else if (count > was.count) {
-      announce(`${count} not sent. All of it is saved on this phone.`)
+    before.current = { count, stuck: stuckCount, letGo }
+    const news = countNews(was, { count, letGo })
+    if (news !== null) {
+      announce(news.words)
+    }
+    if (news?.buzz && 'vibrate' in navigator) {
+      navigator.vibrate(30)
     }
     if (stuckCount > was.stuck) {
       announce(`${stuckCount} stuck. Open the list of unsent work.`, 'assertive')
     }
-  }, [count, stuckCount])
+  }, [count, stuckCount, letGo])
   useEffect(() => {
     if (storageKept === false && count > 0) {
       announce('The phone may clear this store when it runs short of room.', 'assertive')

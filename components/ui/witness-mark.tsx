@@ -10,6 +10,8 @@ type Props = {
   state: WitnessState
   /** Things not yet at the shop. */
   count: number
+  /** Things given up on: with nothing left to send, the shop still does not have all. */
+  letGo?: number
   /** Share of this sending that the shop has taken, 0 to 1. */
   progress?: number
   /** Opens the list of waiting work; without it the mark is a picture. */
@@ -18,9 +20,9 @@ type Props = {
   large?: boolean
 }
 
-/** The stripe of paint across a bolt and its seat: whole = all at the shop, broken = look again. */
+/** The stripe of paint across a bolt and its seat: whole = nothing waits here, broken = look again. */
 export function WitnessMark(props: Props) {
-  const words = witnessWords(props.state, props.count)
+  const words = witnessWords(props.state, props.count, props.letGo ?? 0)
   if (props.href === undefined) {
     return (
       <span role="img" aria-label={words} className="inline-block shrink-0">
@@ -41,12 +43,12 @@ export function WitnessMark(props: Props) {
 }
 
 /** What the mark says, in words. */
-function witnessWords(state: WitnessState, count: number): string {
+function witnessWords(state: WitnessState, count: number, letGo: number): string {
   switch (state) {
     case 'opening':
       return 'Counting what is not sent'
     case 'whole':
-      return 'All sent'
+      return letGo === 0 ? 'All sent' : `Nothing waits, ${letGo} let go`
     case 'sending':
       return `Sending, ${count} not sent yet`
     case 'late':

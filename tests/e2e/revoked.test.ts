@@ -145,7 +145,7 @@ test('[P22] a phone whose store was cleared says at the next sign-in what was lo
     await writeNotes(page, job, ['Went out'])
     await page.goto('/field/unsent')
     await page.getByRole('button', { name: /^(Call the shop now|Try sending now)$/ }).click()
-    await expect(page.getByText('Everything recorded on this phone is at the shop.')).toBeVisible()
+    await expect(page.getByText('Everything you recorded here is at the shop.')).toBeVisible()
     await page.waitForFunction(() => navigator.serviceWorker.controller !== null)
     await phone.flight(true)
     await writeNotes(page, job, ['Never sent 1', 'Never sent 2', 'Never sent 3'])

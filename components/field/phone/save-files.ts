@@ -1,8 +1,11 @@
 import type { UnsentActs } from '@/components/store/use-unsent'
 import type { Instant } from '@/lib/model/time'
 
-/** Saves all unsent work as files where the browser puts downloads; answers their names. */
-export async function saveFiles(
+/**
+ * Hands all unsent work to the browser as files, one after the other; answers their names. Whether the
+ * browser kept them it does not say: nothing may be deleted on the strength of this alone.
+ */
+export async function handFilesOver(
   unsent: Pick<UnsentActs, 'exportFiles'>,
   now: Instant,
 ): Promise<string[]> {

@@ -10,7 +10,8 @@ import { Caution } from '@/components/ui/caution'
 import { Hold } from '@/components/ui/hold'
 import { Key } from '@/components/ui/key'
 import { counted } from '../words'
-import { saveFiles } from './save-files'
+import { handedWords } from './let-go-words'
+import { handFilesOver } from './save-files'
 
 type Stage =
   | { is: 'ready' }
@@ -86,8 +87,8 @@ function Asking(of: {
   const stamp = useStamp()
   const [news, setNews] = useState<string | null>(null)
   const handOver = async () => {
-    const names = await saveFiles(unsent, stamp.now())
-    setNews(`Saved as ${names.join(', ')}. It stays unsent here until the shop has it.`)
+    const names = await handFilesOver(unsent, stamp.now())
+    setNews(`${handedWords(names)} It stays unsent here until the shop has it.`)
   }
   return (
     <section aria-labelledby="sign-out-title" className="grid gap-3 border-2 border-ink p-3">

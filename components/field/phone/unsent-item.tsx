@@ -5,14 +5,13 @@ import { entryWords, kindWord } from '@/components/log/entry-words'
 import { useStamp } from '@/components/store/use-stamp'
 import { type UnsentItem, type UnsentView, useUnsent } from '@/components/store/use-unsent'
 import { announce } from '@/components/ui/announce'
-import { Hold } from '@/components/ui/hold'
 import { Key } from '@/components/ui/key'
 import { LogIcon, type LogShape } from '@/components/ui/log-icon'
 import { Row } from '@/components/ui/row'
 import { RuleEdge } from '@/components/ui/rule-edge'
 import { browserDisplay } from '@/lib/ports/display'
 import { clockTime, size } from '../times'
-import { saveFiles } from './save-files'
+import { LetGo } from './let-go'
 
 const SHAPES: Record<UnsentItem['kind'], LogShape> = {
   'machine.add': 'ring',
@@ -116,7 +115,6 @@ export const adviceOf = (item: Pick<UnsentItem, 'code'>): string =>
 /** Keys of something stuck: do it again, copy its words out, let it go. */
 function StuckWays({ item }: { item: UnsentItem }) {
   const unsent = useUnsent()
-  const stamp = useStamp()
   const [news, setNews] = useState<string | null>(null)
   const say = (words: string) => {
     setNews(words)
@@ -130,11 +128,6 @@ function StuckWays({ item }: { item: UnsentItem }) {
   const copy = async () => {
     const done = await browserDisplay.copy(item.words ?? '')
     say(done ? 'Words copied.' : 'The browser does not let words be copied. Hand over by file.')
-  }
-  const letGo = async () => {
-    await saveFiles(unsent, stamp.now())
-    await unsent.letGo(item)
-    announce(`${nameOf(item.what)} let go. It is in the file that was saved.`)
   }
   const failed = () => say('That did not work. It is still here.')
   return (
@@ -153,12 +146,7 @@ function StuckWays({ item }: { item: UnsentItem }) {
           Copy the words out
         </Key>
       )}
-      <Hold
-        label="Let go"
-        question={`Save the file, then never send “${nameOf(item.what)}”?`}
-        confirmLabel="Save and let go"
-        onConfirm={() => void letGo().catch(failed)}
-      />
+      <LetGo item={item} name={nameOf(item.what)} failed={failed} />
     </div>
   )
 }

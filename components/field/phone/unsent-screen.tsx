@@ -15,10 +15,12 @@ import { witnessState } from '../shell'
 import { size, span } from '../times'
 import { useNow } from '../use-now'
 import { counted } from '../words'
-import { saveFiles } from './save-files'
+import { handedWords } from './let-go-words'
+import { handFilesOver } from './save-files'
 import { Items, splitItems } from './unsent-item'
 import {
   isNearlyFull,
+  letGoOf,
   NEED_WORDS,
   stalledWords,
   standing,
@@ -38,6 +40,7 @@ export function UnsentScreen() {
         <WitnessMark
           state={witnessState(unsent)}
           count={0}
+          letGo={letGoOf(unsent)}
           large
           progress={share(unsent.sending)}
         />
@@ -121,7 +124,7 @@ function Storage() {
 }
 
 function Aside() {
-  const { setAside, letGoCount } = useUnsent()
+  const { setAside, letGoCount, filesLetGo } = useUnsent()
   return (
     <>
       {setAside > 0 ? (
@@ -134,6 +137,12 @@ function Aside() {
         <p className="text-second">
           {counted(letGoCount, 'thing')} let go on this phone. The file still holds{' '}
           {letGoCount === 1 ? 'it' : 'them'}.
+        </p>
+      ) : null}
+      {filesLetGo > 0 ? (
+        <p className="text-second">
+          {counted(filesLetGo, 'photo or voice note', 'photos or voice notes')} let go: no longer on
+          this phone. Only a file made before can hold {filesLetGo === 1 ? 'it' : 'them'}.
         </p>
       ) : null}
     </>
@@ -152,11 +161,11 @@ function Ways() {
     setNews(null)
   }
   const handOver = async () => {
-    const names = await saveFiles(unsent, stamp.now())
+    const names = await handFilesOver(unsent, stamp.now())
     setNews(
-      `Saved as ${names.join(' and ')}. Whoever holds it can read it. The desk takes it in; here it stays unsent until the shop has it.`,
+      `${handedWords(names)} Whoever holds it can read it. The desk takes it in; here it stays unsent until the shop has it.`,
     )
-    announce(names.length === 1 ? 'File saved.' : `${names.length} files saved.`)
+    announce(handedWords(names))
   }
   const failed = () => setNews('That did not work. Everything is still saved on this phone.')
   return (

@@ -7,12 +7,20 @@ import { counted } from '../words'
 const PHOTO_BYTES = 600_000
 const MOST_SAID = 999
 
+type LetGo = Pick<UnsentView, 'letGoCount' | 'filesLetGo'>
+
+/** How much its person gave up sending: the shop never got it. */
+export const letGoOf = ({ letGoCount, filesLetGo }: LetGo): number => letGoCount + filesLetGo
+
 /** "7 not sent". */
-export const titleOf = ({
-  counted: known,
-  count,
-}: Pick<UnsentView, 'counted' | 'count'>): string =>
-  !known ? 'Counting' : count === 0 ? 'All sent' : `${count} not sent`
+export const titleOf = (of: Pick<UnsentView, 'counted' | 'count'> & LetGo): string =>
+  !of.counted
+    ? 'Counting'
+    : of.count > 0
+      ? `${of.count} not sent`
+      : letGoOf(of) === 0
+        ? 'All sent'
+        : 'Nothing waits'
 
 /**
  * How things stand, in one or two sentences. `sendsClosed`: the browser sends also with the app closed;
@@ -23,15 +31,23 @@ export function standing(unsent: UnsentView, sendsClosed: boolean): string {
     return 'Counting what this phone holds.'
   }
   if (unsent.count === 0) {
-    return 'Everything recorded on this phone is at the shop.'
+    return letGoOf(unsent) === 0
+      ? 'Everything you recorded here is at the shop.'
+      : `Everything you recorded here is at the shop, but for ${counted(letGoOf(unsent), 'thing')} let go.`
   }
   if (unsent.sending !== null) {
     const { done, total } = unsent.sending
     return `Sending: ${done} of ${total} taken by the shop, ${size(unsent.bytes)} to go. All of it stays saved on this phone until then.`
   }
+  const held = unsent.items.filter(({ state }) => state === 'stuck' || state === 'blocked').length
+  if (held > 0 && held === unsent.items.length) {
+    return 'All of it is saved on this phone. None of it goes by itself: see below what each needs.'
+  }
+  const rest =
+    held === 0 ? '' : ' What is stuck, or waits for what is stuck, stays until you see to it.'
   return sendsClosed
-    ? 'All of it is saved on this phone. With signal it goes by itself, also with this closed.'
-    : 'All of it is saved on this phone. With signal and this open, it goes by itself. Closed, it does not: it opens to send.'
+    ? `All of it is saved on this phone. With signal it goes by itself, also with this closed.${rest}`
+    : `All of it is saved on this phone. With signal and this open, it goes by itself. Closed, it does not: it opens to send.${rest}`
 }
 
 /** "Not sending for 17 min: the phone has a network, but the shop does not answer." */

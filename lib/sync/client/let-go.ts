@@ -4,7 +4,7 @@ import { rowsTouched } from './apply-op'
 import { commit, noWrites } from './commit'
 import type { Core } from './core'
 import { letGoWrites } from './let-go-writes'
-import { rowKey } from './phone-db'
+import { readMeta, rowKey, writeMeta } from './phone-db'
 import { readOverlay, rebasedRow } from './rebase'
 
 /** Lets a stuck record go and takes it off the rows it lay on. Anything but a stuck one stays. `nowMs` in ms. */
@@ -40,12 +40,16 @@ function fileOf(op: Op): string | null {
   return body.kind === 'voice' ? body.voice.hash : null
 }
 
-/** Lets the bytes of a stuck photo or voice note go; the one way in which unsent bytes are deleted. */
+/**
+ * Lets the bytes of a stuck photo or voice note go; the one way in which unsent bytes are deleted. Nothing
+ * here can tell that they are anywhere else: the screen asks the person for it first. It stays counted.
+ */
 export async function letPhotoGo(core: Core, hash: string): Promise<void> {
   const { db } = core
-  await db.transaction('rw', [db.photo, db.photoBytes], async () => {
+  await db.transaction('rw', [db.photo, db.photoBytes, db.meta], async () => {
     if ((await db.photo.get(hash))?.state !== 'stuck') return
     await db.photo.delete(hash)
     await db.photoBytes.delete(hash)
+    await writeMeta(db, 'filesLetGo', ((await readMeta(db, 'filesLetGo')) ?? 0) + 1)
   })
 }

@@ -96,6 +96,8 @@ export type MetaValues = {
   /** When the tab that sends last moved (P19). */
   heartbeat: number
   setAside: { entity: string; id: string; seq: number }[]
+  /** Photos and voice notes let go of: their bytes are no longer here, and the shop never had them. */
+  filesLetGo: number
   /** Closed jobs that were let go of for room since the whole pull `gen` (P21). */
   dropped: { gen: number; jobIds: Id[] }
   /** What the person has not seen yet of what the shop did with their work, by job. */

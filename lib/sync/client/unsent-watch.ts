@@ -16,6 +16,7 @@ type Kept = {
   fetchedAt: string | null
   setAside: number
   letGoCount: number
+  filesLetGo: number
 }
 type Listed = { ops: { record: OutboxRecord; op: Op }[]; items: UnsentItem[]; kept: Kept } | null
 
@@ -50,7 +51,7 @@ export function watchUnsent(of: {
       state: sending && item.state === 'waiting' ? ('sending' as const) : item.state,
     }))
     const photos = now.kept.photos.map((photo) => photoItem(photo, sending && ops.length === 0))
-    const { fetchedAt, setAside, letGoCount } = now.kept
+    const { fetchedAt, setAside, letGoCount, filesLetGo } = now.kept
     const items = [...ops, ...photos]
     return {
       ...NOTHING_UNSENT,
@@ -65,6 +66,7 @@ export function watchUnsent(of: {
       fetchedAt,
       setAside,
       letGoCount,
+      filesLetGo,
     }
   }
   return new LiveCell(NOTHING_UNSENT, (emit) => {
@@ -139,7 +141,9 @@ async function readKept(core: Core): Promise<Kept> {
   const photos = await db.photo.where('state').anyOf('waiting', 'stuck').sortBy('since')
   const fetchedAt = (await readMeta(db, 'fetchedAt')) ?? null
   const setAside = ((await readMeta(db, 'setAside')) ?? []).length
-  return { records, photos, fetchedAt, setAside, letGoCount: await db.letGo.count() }
+  const filesLetGo = (await readMeta(db, 'filesLetGo')) ?? 0
+  const letGoCount = await db.letGo.count()
+  return { records, photos, fetchedAt, setAside, letGoCount, filesLetGo }
 }
 
 async function listOps(core: Core, kept: Kept): Promise<NonNullable<Listed>> {

@@ -17,6 +17,7 @@ export const NOTHING_UNSENT: UnsentView = {
   online: false,
   stalled: null,
   letGoCount: 0,
+  filesLetGo: 0,
   storageKept: null,
   quotaShare: null,
   freeBytes: null,

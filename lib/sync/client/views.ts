@@ -82,6 +82,8 @@ export type UnsentView = {
   sending: { done: number; total: number } | null
   /** Records whose person has given up sending them; they are in every exported file. */
   letGoCount: number
+  /** Photos and voice notes let go of: no longer on this phone, and never at the shop. */
+  filesLetGo: number
   /** Whether the shop answered the last time it was called; a hint before the first call. */
   online: boolean
   /** Nothing has moved for a quarter of an hour though there is signal; null while all is well. */

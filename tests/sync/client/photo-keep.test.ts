@@ -68,6 +68,9 @@ describe('a photo that meets trouble', () => {
       reason: 'The file still says where it was made, so the shop refuses it.',
     })
     expect(await phone.phone.core.db.photoBytes.count()).toBe(1)
+    await phone.phone.letGo({ hash: photo.hash })
+    expect(await phone.see(phone.phone.unsent)).toMatchObject({ count: 0, filesLetGo: 1 })
+    expect(await phone.phone.core.db.photoBytes.count()).toBe(0)
   })
 
   test('[PH4] [P23] the unsent view tells how much of it the shop has', async () => {
