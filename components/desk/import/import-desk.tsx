@@ -4,19 +4,14 @@ import { useState } from 'react'
 import { announce } from '@/components/ui/announce'
 import { Key } from '@/components/ui/key'
 import { RuleEdge } from '@/components/ui/rule-edge'
-import { browserFileLine, type FileLine, type FileRefusal } from '@/lib/ports/file-line'
-import { type ImportAnswer, importAnswer } from '@/lib/sync/protocol/unsent-file'
+import { browserFileLine, type FileLine } from '@/lib/ports/file-line'
+import type { ImportAnswer } from '@/lib/sync/protocol/unsent-file'
 import { clockTime, dayOf, size } from '../../field/times'
 import { useDesk } from '../desk-context'
+import { askAbout, type FileShown } from './ask-about'
 import { ImportList } from './import-list'
 import { summaryOf } from './import-words'
 
-const PATH = '/api/desk/import'
-const TROUBLE: Record<string, string> = {
-  noConnection: 'No connection to the shop. Nothing was taken.',
-  serverTrouble: 'The shop’s server did not answer as it should. Look again in a moment.',
-  signIn: 'You are signed out. Sign in again, then choose the file once more.',
-}
 /** What may not write any more goes to the owner instead of into a job (IM4). */
 const ASIDE = {
   deviceRevoked:
@@ -39,25 +34,40 @@ export function ImportDesk({ line = browserFileLine }: { line?: FileLine }) {
         A phone that cannot send makes a file of its unsent work: on the phone, open the list of
         unsent work and press Hand over by file. What the shop has already is not taken twice.
       </p>
-      <label className="grid gap-2 font-bold">
-        The file
+      <label className="key relative w-full">
+        {file.name === null ? 'Choose the file' : 'Choose another file'}
         <input
           type="file"
           accept="application/json,.json"
           disabled={file.busy}
-          className="min-h-14 w-full min-w-0 border-2 border-ink bg-well p-3"
-          onChange={(event) => file.choose(event.target.files?.[0] ?? null)}
+          className="absolute inset-0 cursor-pointer opacity-0"
+          onChange={(event) => {
+            const chosen = event.target.files?.[0]
+            if (chosen) file.choose(chosen)
+            // Else the same file, chosen once more, would be no change.
+            event.target.value = ''
+          }}
         />
       </label>
+      {file.name === null ? null : (
+        <p className="min-w-0 break-words">
+          Chosen: <b>{file.name}</b>
+        </p>
+      )}
       <p role="alert" className="font-bold text-nogo empty:hidden">
         {file.refusal}
       </p>
+      {file.refusal === null ? null : (
+        <Key disabled={file.busy} onClick={file.look}>
+          Look again
+        </Key>
+      )}
       {file.list === null ? null : <Found list={file.list} busy={file.busy} take={file.take} />}
     </main>
   )
 }
 
-function Found({ list, busy, take }: { list: ImportAnswer; busy: boolean; take: () => void }) {
+function Found({ list, busy, take }: { list: ImportAnswer; busy: boolean; take: () => unknown }) {
   const { shop } = useDesk()
   const bytes = list.photos.reduce((sum, photo) => sum + photo.bytes, 0)
   return (
@@ -83,41 +93,33 @@ function Found({ list, busy, take }: { list: ImportAnswer; busy: boolean; take: 
   )
 }
 
+const NOTHING: FileShown = { list: null, refusal: null }
+
 function useFile(line: FileLine) {
   const [file, setFile] = useState<File | null>(null)
-  const [list, setList] = useState<ImportAnswer | null>(null)
-  const [refusal, setRefusal] = useState<string | null>(null)
+  const [shown, setShown] = useState(NOTHING)
   const [busy, setBusy] = useState(false)
-  async function send(which: File, path: string) {
+  const { list } = shown
+  function ask(which: File, asked: { take: boolean; list: FileShown['list'] }) {
     setBusy(true)
-    const answer = await line.post(path, which)
-    setBusy(false)
-    const read = answer.ok ? importAnswer.safeParse(answer.value) : null
-    setList(read?.data ?? null)
-    const words = answer.ok
-      ? read?.success === true
-        ? null
-        : TROUBLE.serverTrouble
-      : sentence(answer.problem)
-    setRefusal(words ?? null)
-    if (read?.success === true) announce(summaryOf(read.data))
+    setShown({ list: asked.list, refusal: null })
+    askAbout(line, which, asked)
+      .then((next) => {
+        setShown(next)
+        if (next.refusal === null && next.list !== null) announce(summaryOf(next.list))
+      })
+      .catch(() => setShown({ list: asked.list, refusal: 'That did not work. Look again.' }))
+      .finally(() => setBusy(false))
   }
-  const failed = () => setRefusal('That did not work. Nothing is sure; look again in a moment.')
   return {
-    list,
-    refusal,
+    ...shown,
     busy,
-    choose: (chosen: File | null) => {
+    name: file?.name ?? null,
+    choose(chosen: File) {
       setFile(chosen)
-      setList(null)
-      setRefusal(null)
-      if (chosen !== null) send(chosen, PATH).catch(failed)
+      ask(chosen, { take: false, list: null })
     },
-    take: () => {
-      if (file !== null) send(file, `${PATH}?do=take`).catch(failed)
-    },
+    look: () => file !== null && ask(file, { take: false, list }),
+    take: () => file !== null && ask(file, { take: true, list }),
   }
 }
-
-const sentence = ({ kind, title }: FileRefusal): string =>
-  TROUBLE[kind] ?? title ?? 'The file was not taken.'
