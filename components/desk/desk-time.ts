@@ -1,4 +1,4 @@
-import { clockTime } from '../field/times'
+import { clockTime, dayOf } from '../field/times'
 
 /** Times as the desk shows them: in the zone of the shop, never in the browser's. */
 const days = new Map<string, Intl.DateTimeFormat>()
@@ -15,8 +15,8 @@ export function dayName(at: string | number, zone: string): string {
 /** `14:22` today, else `24 Nov 14:22`. `now` null (not known yet): always with the day. */
 export function whenWords(at: string, zone: string, now: number | null): string {
   const time = clockTime(at, zone)
-  const day = dayName(at, zone)
-  return now !== null && dayName(now, zone) === day ? time : `${day} ${time}`
+  const isToday = now !== null && dayOf(new Date(now).toISOString(), zone) === dayOf(at, zone)
+  return isToday ? time : `${dayName(at, zone)} ${time}`
 }
 
 /** Hours and minutes of a length of time, `2:46`; never negative. */

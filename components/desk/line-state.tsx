@@ -2,8 +2,9 @@
 
 import { useEffect, useRef } from 'react'
 import { announce } from '@/components/ui/announce'
-import { clockTime } from '../field/times'
 import { useDesk } from './desk-context'
+import { whenWords } from './desk-time'
+import { useNow } from './use-now'
 
 /**
  * How the line to the shop is: live only while the server was heard within the last minute; else when it
@@ -19,7 +20,8 @@ export function LineState() {
       announce('The line to the shop is back.')
     before.current = lineState.kind
   }, [lineState.kind])
-  const time = (ms: number) => clockTime(new Date(ms).toISOString(), shop.zone)
+  const now = useNow()
+  const time = (ms: number) => whenWords(new Date(ms).toISOString(), shop.zone, now)
   switch (lineState.kind) {
     case 'opening':
       return <p className="desk-line">Opening the line</p>

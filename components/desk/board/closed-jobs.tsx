@@ -2,13 +2,15 @@
 
 import { RuleEdge } from '@/components/ui/rule-edge'
 import type { BoardJob } from '@/lib/model/desk'
-import { clockTime } from '../../field/times'
 import { useDesk } from '../desk-context'
 import { deskPaths } from '../desk-path'
+import { whenWords } from '../desk-time'
+import { useNow } from '../use-now'
 
 /** Jobs closed in the last 24 hours, newest first. */
 export function ClosedJobs({ rows }: { rows: readonly BoardJob[] }) {
   const { shop } = useDesk()
+  const now = useNow()
   if (rows.length === 0) return null
   return (
     <section className="mt-8">
@@ -25,7 +27,7 @@ export function ClosedJobs({ rows }: { rows: readonly BoardJob[] }) {
                 {row.job.complaint.words}
               </span>
               <span className="figures text-second text-ink2">
-                {row.closedAt ? clockTime(row.closedAt, shop.zone) : ''}
+                {row.closedAt ? whenWords(row.closedAt, shop.zone, now) : ''}
               </span>
             </a>
           </li>

@@ -1,10 +1,13 @@
 import { Row } from '@/components/ui/row'
 import type { ImportAnswer } from '@/lib/sync/protocol/unsent-file'
-import { clockTime, size } from '../../field/times'
+import { size } from '../../field/times'
+import { whenWords } from '../desk-time'
+import { useNow } from '../use-now'
 import { listedTitle, outcomeWords } from './import-words'
 
 /** Every record and photo of the file with what became of it. */
 export function ImportList({ list, zone }: { list: ImportAnswer; zone: string }) {
+  const now = useNow()
   return (
     <ol>
       {list.ops.map((op) => (
@@ -12,7 +15,7 @@ export function ImportList({ list, zone }: { list: ImportAnswer; zone: string })
           <Row
             title={listedTitle(op)}
             second={outcomeWords(op)}
-            end={clockTime(op.since, zone)}
+            end={whenWords(op.since, zone, now)}
             struck={op.outcome === 'refused'}
           />
         </li>
@@ -22,7 +25,7 @@ export function ImportList({ list, zone }: { list: ImportAnswer; zone: string })
           <Row
             title="Photo or voice note"
             second={outcomeWords(photo)}
-            end={clockTime(photo.since, zone)}
+            end={whenWords(photo.since, zone, now)}
             endSecond={size(photo.bytes)}
             struck={photo.outcome === 'refused'}
           />

@@ -8,8 +8,9 @@ import type { BookIndex } from '@/lib/diag/book-index'
 import { living } from '@/lib/diag/case'
 import type { DeskJob } from '@/lib/model/desk'
 import type { LogEntry, ReadingBody } from '@/lib/model/log-entry'
-import { clockTime } from '../../field/times'
 import { useDesk } from '../desk-context'
+import { whenWords } from '../desk-time'
+import { useNow } from '../use-now'
 
 type Read = { at: string; body: ReadingBody }
 
@@ -47,13 +48,14 @@ function provenance({ read: { body }, twin }: { read: Read; twin: Read | null })
 /** The newest reading on its rule. */
 export function LatestReading({ found, index }: { found: DeskJob; index: BookIndex | null }) {
   const { shop } = useDesk()
+  const now = useNow()
   const latest = latestReading(found.entries)
   if (!latest) return null
   const { body, at } = latest.read
   const strip = stripOfBody(body)
   return (
     <section className="mt-7">
-      <RuleEdge end={clockTime(at, shop.zone)}>
+      <RuleEdge end={whenWords(at, shop.zone, now)}>
         {index?.checks.get(body.checkId)?.name ?? body.checkId}
         {body.subject === 'knownGood' ? ', known-good part' : ''}
       </RuleEdge>

@@ -10,7 +10,7 @@ import type { DeskJob } from '@/lib/model/desk'
 import type { LogRow } from '@/lib/model/log-entry'
 import { clockTime, span } from '../../field/times'
 import { useDesk } from '../desk-context'
-import { dayName } from '../desk-time'
+import { dayName, whenWords } from '../desk-time'
 import { FileOf } from './file-of'
 
 /** Gaps over 20 min show as a broken wire with the time (design 5c). */
@@ -116,9 +116,11 @@ type ProvenanceProps = { entry: LogRow; before: LogRow | null; author: string; k
 /** What kind, by whom, and when it reached the shop where that is another minute than the entry before. */
 function Provenance({ entry, before, author, kind }: ProvenanceProps) {
   const { shop } = useDesk()
-  const at = clockTime(entry.receivedAt, shop.zone)
+  // Under the day of the entry: an arrival on another one names its day.
+  const at = whenWords(entry.receivedAt, shop.zone, Date.parse(entry.happenedAt))
   const lateMs = Date.parse(entry.receivedAt) - Date.parse(entry.happenedAt)
-  const alike = before && clockTime(before.receivedAt, shop.zone) === at
+  const minuteOf = ({ receivedAt }: LogRow) => whenWords(receivedAt, shop.zone, null)
+  const alike = before !== null && minuteOf(before) === minuteOf(entry)
   return (
     <p className="text-second text-ink2">
       {kind}, {author}
