@@ -4,6 +4,7 @@ import { QueryClient, QueryClientProvider } from '@tanstack/react-query'
 import { createContext, type ReactNode, useContext, useState } from 'react'
 import type { Actor } from '@/lib/model/person'
 import type { Shop } from '@/lib/model/shop'
+import { useThemeAt } from '../field/theme-choice'
 import { browserDeskPorts, type DeskPorts } from './desk-ports'
 import type { LineState } from './live/live-words'
 import { useLive } from './live/use-live'
@@ -25,6 +26,8 @@ type Props = { actor: Actor; shop: DeskShop; ports?: DeskPorts; children: ReactN
 
 function Live({ actor, shop, ports = browserDeskPorts, children }: Props) {
   const lineState = useLive(actor, ports)
+  // On pages without jobs by the nights that the board kept.
+  useThemeAt(null, ports.now)
   return (
     <DeskContext.Provider value={{ actor, shop, ports, lineState }}>
       {children}

@@ -3,7 +3,7 @@
 import { Moon, Sun, SunDim, SunMoon } from 'lucide-react'
 import { lazy, type ReactNode, Suspense, useState } from 'react'
 import type { ThemeChoice } from './theme'
-import { useThemeChoice } from './use-theme'
+import { useThemeChoice } from './theme-choice'
 
 const ThemeMenu = lazy(() => import('./theme-menu').then((file) => ({ default: file.ThemeMenu })))
 

@@ -1,16 +1,8 @@
 'use client'
 
 import { Choice } from '@/components/ui/choice'
-import type { ThemeChoice } from './theme'
-import { useLastPlace, useThemeChoice } from './use-theme'
-
-const WORDS: Record<ThemeChoice, string> = {
-  auto: 'By the sun',
-  day: 'Day, in sun',
-  shade: 'Shade',
-  night: 'Night',
-}
-const CHOICES: readonly ThemeChoice[] = ['auto', 'day', 'shade', 'night']
+import { THEME_OPTIONS, useThemeChoice } from './theme-choice'
+import { useLastPlace } from './use-theme'
 
 /** The choice of light, kept per phone; one tap each. */
 export function ThemeMenu() {
@@ -23,7 +15,7 @@ export function ThemeMenu() {
       columns={2}
       value={choice}
       onChange={pick}
-      options={CHOICES.map((value) => ({ value, label: WORDS[value] }))}
+      options={THEME_OPTIONS}
       hint={
         place === null
           ? 'By the sun needs a place: take one with a job. Until then it stays day.'

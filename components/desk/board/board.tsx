@@ -1,7 +1,7 @@
 'use client'
 
 import { useEffect, useMemo, useRef } from 'react'
-import { keepNights } from '@/components/field/theme'
+import { useThemeAt } from '@/components/field/theme-choice'
 import { announce } from '@/components/ui/announce'
 import { isDark } from '@/lib/diag/light'
 import type { BoardJob, DeskBoard, DeskJob } from '@/lib/model/desk'
@@ -60,6 +60,7 @@ export function Board({ actions }: Props) {
 type JobsProps = { board: DeskBoard | undefined; error: Error | null; picked: string | null }
 
 function Jobs({ board, error, picked }: JobsProps) {
+  const { ports } = useDesk()
   const now = useNow()
   const fresh = useFresh(board?.open, picked)
   const dark = useMemo(
@@ -69,7 +70,8 @@ function Jobs({ board, error, picked }: JobsProps) {
     [now],
   )
   const rows = useMemo(() => byExposure(board?.open ?? [], (job) => dark({ job })), [board, dark])
-  useNights(rows)
+  const place = rows.find(({ job }) => job.place !== null)?.job.place ?? null
+  useThemeAt(place, ports.now)
   return (
     <section className="desk-jobs" aria-label="Jobs">
       <div className="flex items-end justify-between">
@@ -144,13 +146,4 @@ function useNews(board: DeskBoard | undefined) {
       for (const words of boardNews(before.current, board)) announce(words)
     before.current = board
   }, [board])
-}
-
-/** Keeps the nights at the first job's place, by which theme `auto` chooses on this browser. */
-function useNights(rows: readonly BoardJob[]) {
-  const now = useNow()
-  const place = rows.find(({ job }) => job.place !== null)?.job.place
-  useEffect(() => {
-    if (place && now !== null) keepNights(place, now).catch(() => undefined)
-  }, [place, now])
 }
