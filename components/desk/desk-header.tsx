@@ -3,10 +3,10 @@
 import { usePathname } from 'next/navigation'
 import { useEffect, useRef, useState } from 'react'
 import { may } from '@/lib/shop/permissions'
+import { rolesInWords } from '@/lib/shop/role-words'
 import { SignOutKey } from '../sign-in/sign-out-key'
 import { useDesk } from './desk-context'
 import { deskPaths } from './desk-path'
-import { ROLE_WORDS } from './desk-words'
 import { LineState } from './line-state'
 import { ThemePick } from './theme-pick'
 
@@ -80,9 +80,7 @@ function PersonMenu() {
         className="desk-person-key"
       >
         <span className="block font-bold">{actor.name ?? 'Name erased'}</span>
-        <span className="block text-second text-ink2">
-          {actor.roles.map((role) => ROLE_WORDS[role]).join(', ')}
-        </span>
+        <span className="block text-second text-ink2">{rolesInWords(actor.roles)}</span>
       </button>
       <div id="desk-menu" className="desk-menu" hidden={!open}>
         <ThemePick />

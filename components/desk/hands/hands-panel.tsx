@@ -7,10 +7,10 @@ import type { DeskJob } from '@/lib/model/desk'
 import type { Person } from '@/lib/model/person'
 import { canTakeJobs } from '@/lib/shop/desk-moves'
 import { may } from '@/lib/shop/permissions'
+import { rolesInWords } from '@/lib/shop/role-words'
 import { JOB_STATE_WORDS } from '../../field/words'
 import type { AssignAction } from '../desk-actions'
 import { useDesk } from '../desk-context'
-import { ROLE_WORDS } from '../desk-words'
 import { useActing } from '../use-acting'
 
 type Props = { found: DeskJob; assign: AssignAction }
@@ -93,7 +93,7 @@ function AssignForm({ free, busy, onAssign }: FormProps) {
       >
         {free.map((person) => (
           <option key={person.id} value={person.id}>
-            {nameOf(person)}, {person.roles.map((role) => ROLE_WORDS[role]).join(', ')}
+            {nameOf(person)}, {rolesInWords(person.roles)}
           </option>
         ))}
       </select>

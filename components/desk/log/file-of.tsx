@@ -8,6 +8,7 @@ import type { LogBody } from '@/lib/model/log-entry'
 import type { Instant } from '@/lib/model/time'
 import { useDesk } from '../desk-context'
 import { whenWords } from '../desk-time'
+import { givenName } from '../phone-name'
 import { useNow } from '../use-now'
 import { PhotoFrame } from './photo-frame'
 
@@ -43,6 +44,7 @@ function StillThere({ what, bytes, on }: { what: string; bytes: number; on: Hold
   const { shop } = useDesk()
   const now = useNow()
   const { phone, author, at } = on
+  const name = phone === null ? null : givenName(phone.name)
   const age = now === null ? '' : `, ${span(now - Date.parse(at))} old`
   const reached =
     phone?.reachedAt && now !== null
@@ -53,13 +55,9 @@ function StillThere({ what, bytes, on }: { what: string; bytes: number; on: Hold
       <LogIcon shape="frame" className="size-8 shrink-0" />
       <span>
         <strong>{what} still on the phone</strong> of {author}
-        {phoneName(phone)}, {size(bytes)}
+        {name === null ? '' : ` (${name})`}, {size(bytes)}
         {age}. It comes after the words.{reached}
       </span>
     </p>
   )
 }
-
-/** A name somebody gave the phone; what a browser calls itself is no name. */
-const phoneName = (phone: Holder['phone']): string =>
-  phone === null || phone.name === '' || phone.name.startsWith('Mozilla/') ? '' : ` (${phone.name})`

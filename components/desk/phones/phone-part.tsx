@@ -5,6 +5,7 @@ import type { DeskPhone } from '@/lib/model/phones'
 import { counted } from '../../field/words'
 import { useDesk } from '../desk-context'
 import { whenWords } from '../desk-time'
+import { givenName } from '../phone-name'
 import { useNow } from '../use-now'
 import type { DecideAction, RevokeAction } from './phone-actions'
 import { clockWords, goneWords, heldWords, reachedWords } from './phone-words'
@@ -34,16 +35,14 @@ function standOf(phone: DeskPhone): string {
   return phone.person.isMember ? 'in use' : 'person left'
 }
 
-/** A name somebody gave the phone; what a browser calls itself is no name. */
-const hasName = ({ words }: DeskPhone) => words !== '' && !words.startsWith('Mozilla/')
-
 function Facts({ phone }: { phone: DeskPhone }) {
   const { shop } = useDesk()
   const now = useNow()
   const times = { zone: shop.zone, now }
   const at = (instant: string) => whenWords(instant, shop.zone, now)
+  const name = givenName(phone.words)
   const lines: [string, string[]][] = [
-    ...(hasName(phone) ? [['Calls itself', [phone.words]] as [string, string[]]] : []),
+    ...(name === null ? [] : [['Calls itself', [name]] as [string, string[]]]),
     ['In use since', [at(phone.enrolledAt)]],
     ['Last reached', [reachedWords(phone.lastSeenAt, times)]],
     ['Its clock', [clockWords(phone.clockOffsetMs)]],

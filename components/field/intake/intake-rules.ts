@@ -37,7 +37,11 @@ export function airProblem(text: string): string | null {
     : null
 }
 
-const placeProblem = ({ place, placeText }: IntakeDraft): string | null =>
+/** What is wrong with a position as typed; null when nothing is. */
+export const placeProblem = ({
+  place,
+  placeText,
+}: Pick<IntakeDraft, 'place' | 'placeText'>): string | null =>
   placeText.trim() !== '' && place?.asTyped !== placeText.trim()
     ? 'The typed position cannot be read yet. Mend it or clear it.'
     : null

@@ -9,6 +9,7 @@ import { KeyLink } from '@/components/ui/key'
 import { RuleEdge } from '@/components/ui/rule-edge'
 import { Screen } from '@/components/ui/screen'
 import { ENGINE_VERSION } from '@/lib/diag/version'
+import { rolesInWords } from '@/lib/shop/role-words'
 import { Ticked, useReadiness } from '../first-open'
 import { ThemeMenu } from '../theme-menu'
 import { span } from '../times'
@@ -112,7 +113,7 @@ function Person() {
     <section className="grid gap-3">
       <RuleEdge>At work</RuleEdge>
       <p>
-        <b>{actor.name ?? 'Name not on this phone'}</b>, {actor.roles.join(', ')}.
+        <b>{actor.name ?? 'Name not on this phone'}</b>, {rolesInWords(actor.roles)}.
       </p>
       <SignOutPart />
     </section>

@@ -7,6 +7,7 @@ import { RuleEdge } from '@/components/ui/rule-edge'
 import type { Job } from '@/lib/model/job'
 import type { OpInput } from '@/lib/sync/protocol/op'
 import type { IntakeDraft } from '../intake/intake-draft'
+import { placeProblem } from '../intake/intake-rules'
 import { afterFix, afterTyping, NO_PLACE } from '../intake/place-draft'
 import { FixPart, TypedPart } from '../intake/place-step'
 import { OfJob } from '../of-job'
@@ -65,9 +66,8 @@ function PlaceForm({ job }: { job: Job }) {
 
 /** The new place as an op; words alone may change as well. */
 function read(job: Job, draft: PlaceDraft, text: string): OpInput[] | string {
-  if (draft.placeText.trim() !== '' && draft.place?.asTyped !== draft.placeText.trim()) {
-    return 'The typed position cannot be read yet. Mend it or clear it.'
-  }
+  const problem = placeProblem(draft)
+  if (problem !== null) return problem
   const place = draft.place ?? job.place
   if (place === null) return 'Take the position, or type it.'
   const words = text.trim() === '' ? null : text.trim()
