@@ -9,6 +9,12 @@ import { movedBetween } from './why-words'
 export function BeliefShift({ jobId, entryId }: { jobId: Id; entryId: Id }) {
   const after = useBelief(jobId)
   const before = useBeliefWithout(jobId, entryId)
+  if (after.failed || before.failed)
+    return (
+      <p role="alert">
+        What it did to the suspects could not be worked out. It is recorded, and not counted yet.
+      </p>
+    )
   if (after.answer === null || before.answer === null || after.working || before.working)
     return <p role="status">Working out what it did to the suspects.</p>
   const { rows, barely } = movedBetween(before.answer.belief.suspects, after.answer.belief.suspects)

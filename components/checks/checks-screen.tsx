@@ -28,6 +28,7 @@ import { AssumesPanel } from './assumes-panel'
 import { BookGate } from './book-gate'
 import { NextPlate } from './next-plate'
 import { OtherChecks } from './other-checks'
+import type { AdviceState } from './pick-instead'
 import { RunnerUp } from './runner-up'
 import { useActOn } from './use-act-on'
 import { useFirstSaid } from './use-first-said'
@@ -52,7 +53,7 @@ export function ChecksScreen({ jobId }: { jobId: Id }) {
           index={index}
           view={plan}
           belief={suspects.answer.belief}
-          stale={suspects.working}
+          state={stateOf(suspects)}
           entries={found.entries}
         />
       )}
@@ -95,17 +96,21 @@ type ReadyProps = {
   index: BookIndex
   view: PlanView
   belief: Answer['belief']
-  /** A newer entry is being worked into the suspects. */
-  stale: boolean
+  /** Whether the newest entry is in these suspects. */
+  state: AdviceState
   entries: readonly LogEntry[]
 }
 
-function Ready({ jobId, index, view, belief, stale, entries }: ReadyProps) {
+const stateOf = (view: Pick<PlanView, 'working' | 'failed'>): AdviceState =>
+  view.working ? 'working' : view.failed ? 'failed' : 'ready'
+
+function Ready({ jobId, index, view, belief, state, entries }: ReadyProps) {
   const shop = useShop()
   const actOn = useActOn(jobId, view)
   const plan = view.answer?.plan ?? null
   const currency = shop?.currency ?? ''
   const run = cleanRun(entries)
+  const steps = { jobId, currency, index, actOn, advice: stateOf(view) }
   useFirstSaid(jobId, belief.suspects)
   return (
     <Screen
@@ -121,8 +126,8 @@ function Ready({ jobId, index, view, belief, stale, entries }: ReadyProps) {
         />
       }
     >
-      {plan === null ? (
-        <NoPlanYet failed={view.failed} />
+      {plan === null || view.failed ? (
+        <NoPlanYet failed={view.failed} older={plan !== null} />
       ) : (
         <Top plan={plan} answer={view.answer} index={index} run={run} />
       )}
@@ -130,14 +135,14 @@ function Ready({ jobId, index, view, belief, stale, entries }: ReadyProps) {
         jobId={jobId}
         index={index}
         belief={belief}
-        outlook={view.working ? [] : nextOutlook(view.answer)}
+        outlook={view.working || view.failed ? [] : nextOutlook(view.answer)}
         entries={entries}
-        stale={stale}
+        state={state}
       />
       {plan !== null && (
         <>
-          <RunnerUp jobId={jobId} plan={plan} currency={currency} index={index} actOn={actOn} />
-          <OtherChecks jobId={jobId} plan={plan} currency={currency} index={index} actOn={actOn} />
+          <RunnerUp plan={plan} {...steps} />
+          <OtherChecks plan={plan} {...steps} />
         </>
       )}
       <AssumesPanel jobId={jobId} view={view.means} shop={shop} bookVersion={index.version} />
@@ -145,14 +150,17 @@ function Ready({ jobId, index, view, belief, stale, entries }: ReadyProps) {
   )
 }
 
-function NoPlanYet({ failed }: { failed: boolean }) {
+function NoPlanYet({ failed, older }: { failed: boolean; older: boolean }) {
   return (
     <p role="status" className="border-2 border-ink p-4">
-      {failed
-        ? 'The next step could not be worked out. Pick a check from the code book or a way out.'
-        : 'Working out the next best check.'}
+      {failed ? FAILED[older ? 'older' : 'none'] : 'Working out the next best check.'}
     </p>
   )
+}
+const FAILED = {
+  none: 'The next step could not be worked out. The way out is open all the same.',
+  older:
+    'The next step could not be worked out with the newest entry in it. The steps below are from before it.',
 }
 
 /** The clean proof run of the last fix; null while there is none. */
@@ -189,13 +197,9 @@ type StartProps = {
 
 /** The main key; locked while a newer entry is being worked in, so that no old advice is followed. */
 function StartKey({ jobId, plan, view, run, onPress }: StartProps) {
+  if (view.failed) return <ToWayOut jobId={jobId} />
   if (plan === null) return null
-  if (plan.stage === 'prove' && run !== null)
-    return (
-      <KeyLink kind="main" href={`/field/jobs/${jobId}/wayout`}>
-        To the way out
-      </KeyLink>
-    )
+  if (plan.stage === 'prove' && run !== null) return <ToWayOut jobId={jobId} />
   const words = plan.stage === 'prove' ? 'Start the proof run' : START[plan.next.type]
   return (
     <Key kind="main" disabled={view.working} onClick={() => onPress(plan.next)}>
@@ -203,6 +207,12 @@ function StartKey({ jobId, plan, view, run, onPress }: StartProps) {
     </Key>
   )
 }
+
+const ToWayOut = ({ jobId }: { jobId: Id }) => (
+  <KeyLink kind="main" href={`/field/jobs/${jobId}/wayout`}>
+    To the way out
+  </KeyLink>
+)
 
 const START = {
   check: 'Start this check',
@@ -217,18 +227,24 @@ type SuspectsProps = {
   belief: Answer['belief']
   outlook: readonly Outcome[]
   entries: readonly LogEntry[]
-  stale: boolean
+  state: AdviceState
 }
 
-function Suspects({ jobId, index, belief, outlook, entries, stale }: SuspectsProps) {
+function Suspects({ jobId, index, belief, outlook, entries, state }: SuspectsProps) {
   const zone = useJobZone(jobId)
   const [open, setOpen] = useState<string | null>(null)
   return (
     <section aria-labelledby="suspects" className="grid gap-2">
       <RuleEdge id="suspects">Suspects, of 100</RuleEdge>
       <p className="text-second text-ink2">
-        more than one can be true{stale ? ' · working in the newest entry' : ''}
+        more than one can be true{state === 'working' ? ' · working in the newest entry' : ''}
       </p>
+      {state === 'failed' && (
+        <p role="alert" className="border-2 border-nogo p-3 font-bold">
+          The newest entry is not counted: the sums could not be done with it in. It is kept in the
+          log.
+        </p>
+      )}
       <Behind index={index} entries={entries} />
       <Notices notices={belief.notices} />
       <SuspectRows

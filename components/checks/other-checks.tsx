@@ -9,14 +9,21 @@ import { WAY_OUT_WORDS } from '../field/words'
 import { Key } from '../ui/key'
 import { RuleEdge } from '../ui/rule-edge'
 import { toolWords } from './next-plate'
-import { PickInstead } from './pick-instead'
+import { type AdviceState, PickInstead } from './pick-instead'
 import type { ActOn } from './use-act-on'
 import { minutesWords } from './words'
 
-type Props = { jobId: Id; plan: Plan; currency: string; index: BookIndex; actOn: ActOn }
+type Props = {
+  jobId: Id
+  plan: Plan
+  currency: string
+  index: BookIndex
+  actOn: ActOn
+  advice: AdviceState
+}
 
 /** Everything else that can be done, and what was left out with the reason; all of it can be picked. */
-export function OtherChecks({ jobId, plan, currency, index, actOn }: Props) {
+export function OtherChecks({ jobId, plan, currency, index, actOn, advice }: Props) {
   const [open, setOpen] = useState(false)
   const rest = plan.others.filter((one) => one.id !== plan.next.id && one.id !== plan.runnerUp?.id)
   if (rest.length + plan.leftOut.length === 0) return null
@@ -43,6 +50,7 @@ export function OtherChecks({ jobId, plan, currency, index, actOn }: Props) {
                 action={one}
                 insteadOf={plan.next}
                 actOn={actOn}
+                advice={advice}
                 second={`${minutesWords(one.minutes)}, ${toolWords(one.tools, index)}`}
                 end={dearer(one, plan, currency)}
               />
@@ -50,7 +58,7 @@ export function OtherChecks({ jobId, plan, currency, index, actOn }: Props) {
           ))}
         </ul>
       </div>
-      <LeftOut jobId={jobId} plan={plan} index={index} actOn={actOn} />
+      <LeftOut jobId={jobId} plan={plan} index={index} actOn={actOn} advice={advice} />
       <Key small aria-expanded onClick={() => setOpen(false)}>
         Close the list
       </Key>
@@ -58,7 +66,7 @@ export function OtherChecks({ jobId, plan, currency, index, actOn }: Props) {
   )
 }
 
-function LeftOut({ jobId, plan, index, actOn }: Omit<Props, 'currency'>) {
+function LeftOut({ jobId, plan, index, actOn, advice }: Omit<Props, 'currency'>) {
   if (plan.leftOut.length === 0) return null
   return (
     <div>
@@ -73,6 +81,7 @@ function LeftOut({ jobId, plan, index, actOn }: Omit<Props, 'currency'>) {
               action={{ type: kindOf(one.kind), id: one.id, name: nameOf(one, index) }}
               insteadOf={plan.next}
               actOn={actOn}
+              advice={advice}
               second={one.reason}
             />
           </li>

@@ -16,10 +16,14 @@ type Props = {
   second: string
   end?: string
   actOn: ActOn
+  /** How the advice stands: nothing is started on one that is being worked out anew. */
+  advice: AdviceState
 }
 
+export type AdviceState = 'ready' | 'working' | 'failed'
+
 /** A step that is not the advised one: pick it, with a reason if there is one to give. */
-export function PickInstead({ jobId, action, insteadOf, second, end, actOn }: Props) {
+export function PickInstead({ jobId, action, insteadOf, second, end, actOn, advice }: Props) {
   const key = `job.${jobId}.instead.${action.type}.${action.id}`
   const { value: reason, set, ready, kept } = useDraft<string>(key, '')
   const [wanted, setWanted] = useState<boolean | null>(null)
@@ -32,7 +36,11 @@ export function PickInstead({ jobId, action, insteadOf, second, end, actOn }: Pr
         <div className="grid gap-2 border-b-2 border-ink py-3">
           <Field
             label="Why this one? May stay empty."
-            hint={`The advice was: ${insteadOf.name}. It is kept beside your choice.`}
+            hint={
+              advice === 'failed'
+                ? 'The advice could not be worked out anew, so none is kept beside your choice.'
+                : `The advice was: ${insteadOf.name}. It is kept beside your choice.`
+            }
             value={reason}
             onChange={set}
             maxLength={500}
@@ -40,10 +48,10 @@ export function PickInstead({ jobId, action, insteadOf, second, end, actOn }: Pr
           <DraftSign kept={kept} />
           <Key
             kind="plate"
-            disabled={!ready}
+            disabled={!ready || advice === 'working'}
             onClick={() => actOn(action, reason.trim() || null, [key])}
           >
-            Start it
+            {advice === 'working' ? 'Working it out' : 'Start it'}
           </Key>
         </div>
       )}

@@ -5,14 +5,21 @@ import type { Id } from '@/lib/model/id'
 import { moneyWords } from '@/lib/shop/currency'
 import { RuleEdge } from '../ui/rule-edge'
 import { toolWords } from './next-plate'
-import { PickInstead } from './pick-instead'
+import { type AdviceState, PickInstead } from './pick-instead'
 import type { ActOn } from './use-act-on'
 import { minutesWords } from './words'
 
-type Props = { jobId: Id; plan: Plan; currency: string; index: BookIndex; actOn: ActOn }
+type Props = {
+  jobId: Id
+  plan: Plan
+  currency: string
+  index: BookIndex
+  actOn: ActOn
+  advice: AdviceState
+}
 
 /** The second-best step and why it loses. */
-export function RunnerUp({ jobId, plan, currency, index, actOn }: Props) {
+export function RunnerUp({ jobId, plan, currency, index, actOn, advice }: Props) {
   const { runnerUp, next } = plan
   if (runnerUp === null) return null
   return (
@@ -24,6 +31,7 @@ export function RunnerUp({ jobId, plan, currency, index, actOn }: Props) {
         action={runnerUp}
         insteadOf={next}
         actOn={actOn}
+        advice={advice}
         second={`${minutesWords(runnerUp.minutes)}, ${toolWords(runnerUp.tools, index)}`}
       />
       <p className="text-second">{whyItLoses(plan, currency)}</p>

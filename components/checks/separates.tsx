@@ -15,9 +15,9 @@ type Props = { jobId: Id; check: CheckItem; index: BookIndex }
 /** Which suspects this check tells apart, as they stand now and after each outcome. */
 export function Separates({ jobId, check, index }: Props) {
   const wanted = useMemo<Action[]>(() => [{ kind: 'check', id: check.id }], [check.id])
-  const { answer } = useBelief(jobId, wanted)
+  const { answer, failed } = useBelief(jobId, wanted)
   const outlook = answer?.outlooks[outlookKey({ kind: 'check', id: check.id })]
-  if (answer === null || outlook === undefined) return null
+  if (answer === null || outlook === undefined || failed) return null
   const rows = answer.belief.suspects
     .map((suspect) => ({ suspect, marks: marksOf(suspect.fault, outlook) }))
     .filter(({ suspect, marks }) => suspect.ruledOutBy === null && !saysNothing(marks))

@@ -33,7 +33,10 @@ function hrefOf(jobId: Id, action: Act): string {
 const proving = (plan: Plan | null | undefined, action: Act): boolean =>
   plan?.stage === 'prove' && action.type === 'repair' && action.id === plan.next.id
 
-/** Starts a step, and keeps the advice that was on the screen as followed or overridden (rule R23). */
+/**
+ * Starts a step, and keeps the advice that was on the screen as followed or overridden (rule R23). When the
+ * newest entry could not be worked in there is no advice to keep: what stands on the screen is older.
+ */
 export function useActOn(jobId: Id, view: PlanView): ActOn {
   const { go } = useRoute()
   const { version } = useBook()
@@ -46,7 +49,7 @@ export function useActOn(jobId: Id, view: PlanView): ActOn {
       const { answer, input, asked } = view
       const leave = () =>
         go(proving(answer?.plan, action) ? `/field/jobs/${jobId}/proof` : hrefOf(jobId, action))
-      if (!keeps || answer?.plan == null || input === null || version === null) {
+      if (!keeps || view.failed || answer?.plan == null || input === null || version === null) {
         leave()
         return
       }

@@ -20,7 +20,7 @@ export type JobCase = {
   input: CaseInput
 }
 
-/** Everything the engine needs of one job; null while opening or when this phone does not hold it. */
+/** Everything the engine needs of one job; null while opening; that this phone does not hold it is said in front of every screen of a job. */
 export function useCase(jobId: Id): JobCase | null {
   const job = useJob(jobId)
   const machines = useMachines()

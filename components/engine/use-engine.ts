@@ -6,12 +6,15 @@ import type { Answer, Question } from './work'
 
 export type EngineView = {
   answer: Answer | null
+  /** What that answer was asked with; while a newer one is worked out, or failed, this is the older one. */
+  question: Question | null
   /** A newer answer is being worked out; the last one stands until it is there. */
   working: boolean
+  /** The newest question has no answer: the one that stands is older, and leaves the newest entry out. */
   failed: boolean
 }
 
-type Held = { name: string; key: string; answer: Answer }
+type Held = { name: string; key: string; question: Question; answer: Answer }
 
 /** Last answers by name, so that a screen opened again shows the old list first and then moves. */
 const last = new Map<string, Held>()
@@ -36,8 +39,9 @@ export function useEngine(name: string, question: Question | null): EngineView {
     let current = true
     engine.ask(index, question).then(
       (answer) => {
-        keep({ name, key, answer })
-        if (current) setHeld({ name, key, answer })
+        const next = { name, key, question, answer }
+        keep(next)
+        if (current) setHeld(next)
       },
       () => {
         if (current) setFailedKey(key)
@@ -48,10 +52,21 @@ export function useEngine(name: string, question: Question | null): EngineView {
     }
   }, [name, key, question, index])
   const mine = held?.name === name ? held : (last.get(name) ?? null)
+  return engineView(mine, key, failedKey)
+}
+
+/** What is shown of the last answer, the present question's key and the key of one that failed. */
+export function engineView(
+  held: Pick<Held, 'key' | 'question' | 'answer'> | null,
+  key: string | null,
+  failedKey: string | null,
+): EngineView {
+  const isOpen = key !== null && held?.key !== key
   return {
-    answer: mine?.answer ?? null,
-    working: key !== null && mine?.key !== key && failedKey !== key,
-    failed: failedKey !== null && failedKey === key,
+    answer: held?.answer ?? null,
+    question: held?.question ?? null,
+    working: isOpen && failedKey !== key,
+    failed: isOpen && failedKey === key,
   }
 }
 

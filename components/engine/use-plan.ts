@@ -10,7 +10,7 @@ import type { CaseInput, Question } from './work'
 
 export type PlanView = EngineView & {
   means: MeansView
-  /** What the answer on the screen was asked with. */
+  /** What the answer on the screen was asked with (rule R23): not the present state, while that is worked in. */
   input: CaseInput | null
   asked: Means | null
 }
@@ -29,5 +29,6 @@ export function usePlan(jobId: Id): PlanView {
     [found, means.means],
   )
   const view = useEngine(`plan ${jobId}`, question)
-  return { ...view, means, input: found?.input ?? null, asked: means.means }
+  const { question: asked } = view
+  return { ...view, means, input: asked?.case ?? null, asked: asked?.means ?? null }
 }

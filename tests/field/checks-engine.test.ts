@@ -2,7 +2,7 @@ import { describe, expect, it } from 'vitest'
 import { type AdviceInputs, adviceOf, caseOfAdvice } from '@/components/engine/advice'
 import { EngineClient } from '@/components/engine/engine-client'
 import { specForEngine } from '@/components/engine/spec-kept'
-import { keyOf } from '@/components/engine/use-engine'
+import { engineView, keyOf } from '@/components/engine/use-engine'
 import { type CaseInput, type Question, workOut } from '@/components/engine/work'
 import type { FromWorker, ToWorker } from '@/components/engine/worker-messages'
 import { BOOK_ITEMS } from '@/db/codebook/book'
@@ -175,5 +175,30 @@ describe('advice that can be shown again', { timeout: 60_000 }, () => {
       'somethingOther',
       'it is raining',
     ])
+  })
+})
+
+describe('an answer and what it was asked with', () => {
+  const question: Question = { case: input, means, outlookOf: [] }
+  const held = { key: 'old', question, answer: workOut(index, question) }
+
+  it('[R23] an older answer goes with its own question, while a newer one is worked out or failed', () => {
+    const working = engineView(held, 'new', null)
+    expect(working).toMatchObject({ working: true, failed: false })
+    expect(working.question).toBe(question)
+    const failed = engineView(held, 'new', 'new')
+    expect(failed).toMatchObject({ working: false, failed: true })
+    expect([failed.question, failed.answer]).toEqual([question, held.answer])
+  })
+
+  it('[R23] what failed once and has its answer now is not failed', () => {
+    expect(engineView(held, 'old', 'old')).toMatchObject({ working: false, failed: false })
+    expect(engineView(held, 'old', 'new')).toMatchObject({ working: false, failed: false })
+    expect(engineView(null, null, null)).toEqual({
+      answer: null,
+      question: null,
+      working: false,
+      failed: false,
+    })
   })
 })
