@@ -22,6 +22,16 @@ export const FRESH: HowDone = {
 
 type Props = { value: HowDone; onChange: (next: HowDone) => void; timeProblem: string | null }
 
+/** What keeps an outcome from being recorded, in one sentence; null when nothing does. `readable`: the time typed. */
+export function missingOf(
+  { asWritten, differed, earlier, about }: HowDone,
+  readable: boolean,
+): string | null {
+  if (earlier && about === '') return 'Say at about what time it happened.'
+  if (earlier && !readable) return 'The time cannot be read. Type it as 14:05.'
+  return !asWritten && differed.trim() === '' ? 'Say in a few words what differed.' : null
+}
+
 /** Work first, write after (rule R8): when it happened, and whether the steps were followed. */
 export function HowDoneForm({ value, onChange, timeProblem }: Props) {
   return (

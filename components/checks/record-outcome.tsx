@@ -14,7 +14,7 @@ import { Field } from '../ui/field'
 import { Key } from '../ui/key'
 import { RuleEdge } from '../ui/rule-edge'
 import { useTimesDone } from './check-steps'
-import { FRESH, type HowDone, HowDoneForm } from './how-done'
+import { FRESH, type HowDone, HowDoneForm, missingOf } from './how-done'
 import { NotYours, useMayLog } from './use-may'
 import { NotSaved, useSave } from './use-save'
 
@@ -37,7 +37,8 @@ function Recording({ jobId, check, index, before, onSaved }: Props) {
   const { value: how, set, kept, how: outcome } = useOutcome(jobId, check, onSaved)
   const timeUnread = how.earlier && outcome.happenedAt() === null
   const timeProblem = timeUnread && how.about !== '' ? 'Type the time as 14:05.' : null
-  const blocked = outcome.saving || timeUnread || (!how.asWritten && how.differed.trim() === '')
+  const missing = missingOf(how, !timeUnread)
+  const blocked = outcome.saving || missing !== null
   return (
     <section aria-labelledby="found" className="grid gap-4">
       <RuleEdge id="found">What did you find</RuleEdge>
@@ -46,6 +47,7 @@ function Recording({ jobId, check, index, before, onSaved }: Props) {
         <b>Write down:</b> {check.record}
       </p>
       <HowDoneForm value={how} onChange={set} timeProblem={timeProblem} />
+      {missing !== null && <p className="text-second text-ink2">{missing}</p>}
       {check.reading !== null && <p className="font-bold">Without a figure:</p>}
       <div className="grid gap-2">
         {check.outcomes.map((one) => (
@@ -60,7 +62,13 @@ function Recording({ jobId, check, index, before, onSaved }: Props) {
           </Key>
         ))}
       </div>
-      <CouldNot how={how} set={set} disabled={outcome.saving} onSave={outcome.couldNot} />
+      <CouldNot
+        how={how}
+        set={set}
+        missing={timeUnread ? missing : null}
+        saving={outcome.saving}
+        onSave={outcome.couldNot}
+      />
       <DraftSign kept={kept} />
       <NotSaved problem={outcome.problem} />
     </section>
@@ -119,11 +127,14 @@ function Earlier({ jobId, before, index }: Pick<Props, 'jobId' | 'before' | 'ind
 type CouldNotProps = {
   how: HowDone
   set: (next: HowDone) => void
-  disabled: boolean
+  /** What keeps it from being recorded, besides the reason. */
+  missing: string | null
+  saving: boolean
   onSave: () => void
 }
 
-function CouldNot({ how, set, disabled, onSave }: CouldNotProps) {
+function CouldNot({ how, set, missing, saving, onSave }: CouldNotProps) {
+  const reasonless = how.reason.trim() === ''
   if (!how.couldNot)
     return (
       <Key small onClick={() => set({ ...how, couldNot: true })}>
@@ -139,11 +150,18 @@ function CouldNot({ how, set, disabled, onSave }: CouldNotProps) {
         onChange={(reason) => set({ ...how, reason })}
         maxLength={500}
       />
+      {reasonless && <p className="text-second text-ink2">Say why, in a few words.</p>}
+      {missing !== null && <p className="text-second text-ink2">{missing}</p>}
       <div className="grid grid-cols-2 gap-2">
         <Key small onClick={() => set({ ...how, couldNot: false })}>
           Back
         </Key>
-        <Key small kind="plate" disabled={disabled || how.reason.trim() === ''} onClick={onSave}>
+        <Key
+          small
+          kind="plate"
+          disabled={saving || missing !== null || reasonless}
+          onClick={onSave}
+        >
           Record it
         </Key>
       </div>

@@ -60,12 +60,14 @@ function Counting({ jobId, found, onSaved }: CountingProps) {
   const { save, saving, problem } = useSave()
   const missing = whatIsMissing(draft, minutesOf(draft, ranMs))
   const keep = async () => {
+    const minutes = minutesOf(draft, ranUntil(draft, Date.parse(stamp.now())))
+    if (minutes === null) return
     const bound = proofBound(draft)
     const op = stamp.entry(jobId, {
       kind: 'proofRun',
       starts: draft.starts,
       faults: draft.faults,
-      minutes: minutesOf(draft, ranUntil(draft, Date.parse(stamp.now()))),
+      minutes,
       hot: draft.hot === 'hot',
       words: draft.words.trim() || null,
       boundExact: bound.exact,
@@ -114,10 +116,13 @@ function Counting({ jobId, found, onSaved }: CountingProps) {
   )
 }
 
-function whatIsMissing(draft: ProofDraft, minutes: number): string | null {
+function whatIsMissing(draft: ProofDraft, minutes: number | null): string | null {
+  if (minutes === null) return MINUTES_UNREAD
   if (draft.starts === 0 && minutes === 0) return 'Count a start or let the clock run first.'
   return draft.hot === null ? 'Say whether the engine was hot or cold.' : null
 }
+
+const MINUTES_UNREAD = 'Type the minutes as figures alone, as 12 or 12.5, up to 1440.'
 
 /** What must be there before a proof run means anything, and its caution. */
 function Before({ found }: { found: JobCase }) {
@@ -227,6 +232,7 @@ function Timer({ draft, set, ranMs, now }: CountProps & { ranMs: number; now: ()
           inputMode="decimal"
           value={draft.typedMinutes}
           onChange={(typedMinutes) => set({ ...draft, typedMinutes })}
+          error={minutesOf(draft, ranMs) === null ? MINUTES_UNREAD : null}
         />
       ) : (
         <Key small onClick={() => setByHand(true)}>

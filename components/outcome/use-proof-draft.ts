@@ -53,9 +53,14 @@ export const ranUntil = (
   draft.ranMs +
   (draft.runningSince === null ? 0 : Math.max(0, nowMs - Date.parse(draft.runningSince)))
 
-/** Minutes to record: as typed when typed, else the clock's to a tenth. */
-export function minutesOf(draft: ProofDraft, ranMs: number): number {
-  const typed = Number(draft.typedMinutes.replace(',', '.'))
-  if (draft.typedMinutes.trim() !== '' && Number.isFinite(typed) && typed >= 0) return typed
-  return Math.round(ranMs / 6000) / 10
+/** The longest run that is taken in one entry: a day (a choice). */
+const MOST_MINUTES = 1440
+
+/** Minutes to record: as typed when typed, else the clock's to a tenth. Null when what is typed is none. */
+export function minutesOf(draft: Pick<ProofDraft, 'typedMinutes'>, ranMs: number): number | null {
+  const text = draft.typedMinutes.trim()
+  if (text === '') return Math.round(ranMs / 6000) / 10
+  if (!/^\d+([.,]\d+)?$/.test(text)) return null
+  const typed = Number(text.replace(',', '.'))
+  return typed <= MOST_MINUTES ? typed : null
 }

@@ -1,4 +1,5 @@
 import { describe, expect, it } from 'vitest'
+import { FRESH, missingOf } from '@/components/checks/how-done'
 import { swapSays } from '@/components/checks/swap-words'
 import { moreSentence, proofSentence, stopwatch } from '@/components/outcome/proof-words'
 import { minutesOf, ranUntil } from '@/components/outcome/use-proof-draft'
@@ -88,6 +89,33 @@ describe('the proof run', () => {
     } as const
     expect(minutesOf({ ...draft, typedMinutes: '10' }, 5000)).toBe(10)
     expect(minutesOf({ ...draft, typedMinutes: ' ' }, 600_000)).toBe(10)
+  })
+
+  it.each(['12 min', '1:30', '12.', '-3', '1e3', '1441'])(
+    '[F7] typed minutes that are none are refused, not replaced by the clock: %s',
+    (typedMinutes) => {
+      expect(minutesOf({ typedMinutes }, 600_000)).toBeNull()
+    },
+  )
+
+  it.each([
+    ['12,5', 12.5],
+    ['0', 0],
+    ['1440', 1440],
+  ])('[F7] typed minutes %s are taken', (typedMinutes, minutes) => {
+    expect(minutesOf({ typedMinutes }, 600_000)).toBe(minutes)
+  })
+})
+
+describe('what keeps an outcome from being recorded is said', () => {
+  it('[R8] an empty or unreadable time, and a difference without words', () => {
+    expect(missingOf(FRESH, true)).toBeNull()
+    expect(missingOf({ ...FRESH, earlier: true }, false)).toBe(
+      'Say at about what time it happened.',
+    )
+    expect(missingOf({ ...FRESH, earlier: true, about: '99' }, false)).toContain('14:05')
+    expect(missingOf({ ...FRESH, earlier: true, about: '11:30' }, true)).toBeNull()
+    expect(missingOf({ ...FRESH, asWritten: false, differed: ' ' }, true)).toContain('differed')
   })
 })
 
