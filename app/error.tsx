@@ -20,7 +20,8 @@ export default function PageError({
       ) : null}
       <p>What was recorded on this device is kept. Nothing unsent is lost by this.</p>
       <div className="grid gap-3">
-        <Key kind="main" onClick={reset}>
+        {/* A part that failed to come is kept as failed until the page is loaded anew. */}
+        <Key kind="main" onClick={isMissing ? () => window.location.reload() : reset}>
           Try again
         </Key>
         <KeyLink href="/field">Open the field</KeyLink>
