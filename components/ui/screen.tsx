@@ -1,7 +1,10 @@
-import type { ReactNode } from 'react'
+'use client'
+
+import { type ReactNode, useLayoutEffect, useRef } from 'react'
 import type { DraftKept } from '@/lib/sync/client/drafts'
 import { classes } from './class-names'
 import { DraftSign } from './draft-sign'
+import { titleComes, titleLeaves } from './title-focus'
 
 type Props = {
   title: ReactNode
@@ -18,11 +21,17 @@ type Props = {
 
 /** One field screen: title, content, and its keys at the bottom. The title takes the focus when it opens. */
 export function Screen({ title, second, kept, children, foot, titleHidden = false }: Props) {
+  const heading = useRef<HTMLHeadingElement>(null)
+  useLayoutEffect(() => {
+    const { current } = heading
+    titleComes(current)
+    return () => titleLeaves(current, document.activeElement)
+  }, [])
   return (
     <div className="flex flex-1 flex-col">
       <div className="safe-sides grid flex-1 grid-cols-[minmax(0,1fr)] content-start gap-5 pt-1 pb-6">
         <div className={classes(titleHidden && 'visually-hidden')}>
-          <h1 id="screen-title" tabIndex={-1} className="caps text-screen">
+          <h1 ref={heading} id="screen-title" tabIndex={-1} className="caps text-screen">
             {title}
           </h1>
           {second ? <p className="mt-1 text-second text-ink2">{second}</p> : null}
