@@ -1,8 +1,8 @@
 'use client'
 
 import type { ReactNode } from 'react'
-import { KeyLink } from '@/components/ui/key'
 import { Screen } from '@/components/ui/screen'
+import { NotHere } from './not-here'
 import { type JobFacts, useJobFacts } from './use-job-facts'
 
 /** Draws a screen of a job once its rows are open, or says that this phone does not hold the job. */
@@ -22,21 +22,7 @@ export function OfJob({
     )
   }
   if (facts === 'gone') {
-    return (
-      <Screen
-        title="Not on this phone"
-        foot={
-          <KeyLink kind="main" href="/field">
-            Jobs on this phone
-          </KeyLink>
-        }
-      >
-        <p>
-          This job is not on this phone. If the shop has it and it is yours or open, it arrives at
-          the next contact.
-        </p>
-      </Screen>
-    )
+    return <NotHere />
   }
   return children(facts)
 }

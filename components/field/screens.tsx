@@ -5,6 +5,7 @@ import { useJob } from '@/components/store/use-rows'
 import { KeyLink } from '@/components/ui/key'
 import { Screen } from '@/components/ui/screen'
 import { JobsScreen } from './jobs-screen'
+import { NotHere } from './not-here'
 import type { Route } from './route'
 import { useRoute } from './router'
 
@@ -79,16 +80,21 @@ export function Screens({ route }: { route: Route }) {
   )
 }
 
-/** The address of a merged job becomes that of the one that goes on (R13), once this phone holds it. */
+/**
+ * A job that this phone does not hold is said to be none, on every screen of it, and not to be opening for ever.
+ * The address of a merged job becomes that of the one that goes on (R13), once this phone holds it.
+ */
 function LandOnLead({ route, children }: { route: Route; children: ReactNode }) {
   const { here, go } = useRoute()
   const jobId = 'jobId' in route ? route.jobId : ''
-  const leadId = useJob(jobId)?.mergedInto
+  const job = useJob(jobId)
+  const leadId = job?.mergedInto
   const isHeld = useJob(leadId ?? '')
   const moves = leadId !== undefined && isHeld !== null && isHeld !== undefined
   useEffect(() => {
     if (moves) go(here.replace(jobId, leadId), { replace: true, from: here })
   }, [moves, go, here, jobId, leadId])
+  if (job === null && 'jobId' in route) return <NotHere />
   return moves ? null : children
 }
 

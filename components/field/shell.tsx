@@ -11,6 +11,7 @@ import { Key } from '@/components/ui/key'
 import { LiveRegion } from '@/components/ui/live-region'
 import { Tabs } from '@/components/ui/tabs'
 import { TaskHeader } from '@/components/ui/task-header'
+import { shownTitle } from '@/components/ui/title-focus'
 import { WitnessMark, type WitnessState } from '@/components/ui/witness-mark'
 import { WARN_SHARE } from '@/lib/sync/client/room'
 import { LostNotice } from './phone/lost-notice'
@@ -220,8 +221,11 @@ function useFocusOnArrival(route: Route): void {
     const was = before.current
     before.current = { here, name: route.name }
     if (was !== null && was.here !== here) {
-      const id = was.name === 'unsent' ? 'witness' : 'screen-title'
-      document.getElementById(id)?.focus({ preventScroll: true })
+      const target =
+        was.name === 'unsent'
+          ? document.getElementById('witness')
+          : shownTitle(document.querySelectorAll<HTMLElement>('#screen-title'))
+      target?.focus({ preventScroll: true })
     }
   }, [here, route.name])
 }
