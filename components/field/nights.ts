@@ -1,24 +1,19 @@
-import { sunTimes } from '@/lib/diag/daylight'
+import { isDark, nightsAround } from '@/lib/diag/light'
 
 /** From civil dusk to civil dawn, in milliseconds since 1970. */
 export type Night = [from: number, to: number]
 
-const DAY_MS = 86_400_000
+const HALF_DAY_MS = 43_200_000
 
-/** Nights at a place around an instant. A day whose sun never reaches civil dawn is one whole night. */
+/**
+ * Nights at a place around an instant, by the same rule as the daylight of the job (lib/diag/light): theme and
+ * daylight never disagree. Where it is dark with neither dusk nor dawn, half a day to either side is one night.
+ */
 export function nightsAt(latitude: number, longitude: number, nowMs: number): Night[] {
-  const days = [-1, 0, 1, 2].map((n) => {
-    const dayMs = nowMs + n * DAY_MS
-    return { dayMs, sun: sunTimes(latitude, longitude, dayMs) }
-  })
-  const nights: Night[] = []
-  for (const [i, { dayMs, sun }] of days.entries()) {
-    const next = days[i + 1]
-    if (sun.never === 'rises' && sun.civilDawn === null) {
-      nights.push([dayMs - DAY_MS / 2, dayMs + DAY_MS / 2])
-    } else if (sun.civilDusk !== null && next) {
-      nights.push([sun.civilDusk, next.sun.civilDawn ?? next.dayMs])
-    }
-  }
-  return nights
+  const at = { latitude, longitude }
+  const nights = nightsAround(at, nowMs).nights.map(({ from, to }): Night => [from, to])
+  const isKnown = nights.some(([from, to]) => nowMs >= from && nowMs < to)
+  return isKnown || !isDark(at, nowMs)
+    ? nights
+    : [...nights, [nowMs - HALF_DAY_MS, nowMs + HALF_DAY_MS]]
 }

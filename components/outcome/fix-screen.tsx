@@ -8,8 +8,10 @@ import { useJustSaved } from '../checks/use-just-saved'
 import { NotYours, useMayLog } from '../checks/use-may'
 import { useCase } from '../engine/use-case'
 import { ClearedPart } from '../field/codes/cleared-part'
-import { clockTime } from '../field/times'
+import { useNow } from '../field/use-now'
+import { whenWords } from '../field/when-words'
 import { useBook } from '../store/use-book'
+import { useJobZone } from '../store/use-job-zone'
 import { Key, KeyLink } from '../ui/key'
 import { RuleEdge } from '../ui/rule-edge'
 import { Screen } from '../ui/screen'
@@ -35,14 +37,14 @@ export function FixScreen({ jobId }: { jobId: Id }) {
   if (!mine)
     return (
       <Screen title="Fix">
-        <Fixes fixes={fixes} />
+        <Fixes jobId={jobId} fixes={fixes} />
         <NotYours what="Recording a fix" />
       </Screen>
     )
   if (fixes.length === 0 || another)
     return (
       <FixForm jobId={jobId} onSaved={saved}>
-        <Fixes fixes={fixes} />
+        <Fixes jobId={jobId} fixes={fixes} />
       </FixForm>
     )
   return (
@@ -64,7 +66,7 @@ export function FixScreen({ jobId }: { jobId: Id }) {
           onUndone={forget}
         />
       )}
-      <Fixes fixes={fixes} />
+      <Fixes jobId={jobId} fixes={fixes} />
       <ClearedPart jobId={jobId} entries={found.entries} sheet={found.spec} />
       <Key small onClick={() => setAnother(true)}>
         Record another fix
@@ -74,17 +76,19 @@ export function FixScreen({ jobId }: { jobId: Id }) {
 }
 
 /** The fixes on record, temporary ones with their limit and how to undo them. */
-function Fixes({ fixes }: { fixes: readonly LogEntry[] }) {
+function Fixes({ jobId, fixes }: { jobId: Id; fixes: readonly LogEntry[] }) {
   const { index } = useBook()
+  const zone = useJobZone(jobId)
+  const now = useNow()
   if (fixes.length === 0) return null
   return (
     <section aria-labelledby="fixes" className="grid gap-2">
       <RuleEdge id="fixes">Recorded</RuleEdge>
       <ul>
-        {fixes.map(({ id, body, happenedAt, zone }) =>
+        {fixes.map(({ id, body, happenedAt }) =>
           body.kind === 'fix' ? (
             <li key={id} className="flex gap-3 border-b-[1.5px] border-rule py-2">
-              <span className="figures text-ink2">{clockTime(happenedAt, zone)}</span>
+              <span className="figures text-ink2">{whenWords(happenedAt, zone, now)}</span>
               <span className="min-w-0">
                 <b className="block">{index?.faults.get(body.fault)?.name ?? body.fault}</b>
                 {body.words}

@@ -16,7 +16,8 @@ import { useJustSaved } from '../checks/use-just-saved'
 import { NotYours, useMayLog } from '../checks/use-may'
 import { useBelief } from '../engine/use-belief'
 import { type JobCase, useCase } from '../engine/use-case'
-import { clockTime } from '../field/times'
+import { useNow } from '../field/use-now'
+import { whenWords } from '../field/when-words'
 import { MACHINE_WORDS, PEOPLE_WORDS, WAY_OUT_WORDS } from '../field/words'
 import { useBook } from '../store/use-book'
 import { useDraft } from '../store/use-draft'
@@ -125,12 +126,13 @@ export function WayOutScreen({ jobId }: { jobId: Id }) {
 function Decided({ entry }: { entry: LogEntry }) {
   const { body } = entry
   const zone = useJobZone(entry.jobId)
+  const now = useNow()
   if (body.kind !== 'wayOut') return null
   return (
     <section aria-labelledby="decided" className="grid gap-1">
       <RuleEdge id="decided">Decided</RuleEdge>
       <p className="text-row font-bold">
-        <span className="figures mr-2 text-ink2">{clockTime(entry.happenedAt, zone)}</span>
+        <span className="figures mr-2 text-ink2">{whenWords(entry.happenedAt, zone, now)}</span>
         {WAY_OUT_WORDS[body.wayOut]}
       </p>
       <p>

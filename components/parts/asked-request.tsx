@@ -5,7 +5,8 @@ import { CHOICE_WORDS, LINE_STATE_WORDS, URGENCY_WORDS } from '@/lib/shop/part-w
 import type { OpInput } from '@/lib/sync/protocol/op'
 import { useMay } from '../checks/use-may'
 import { NotSaved, useSave } from '../checks/use-save'
-import { clockTime } from '../field/times'
+import { useNow } from '../field/use-now'
+import { whenWords } from '../field/when-words'
 import { announce } from '../ui/announce'
 import { Key } from '../ui/key'
 import { Row } from '../ui/row'
@@ -17,6 +18,7 @@ type Act = (ops: OpInput[], words: string) => Promise<void>
 export function AskedRequest({ request, zone }: { request: PartRequestRow; zone: string }) {
   const { save, saving, problem } = useSave()
   const mine = useMay('part.ask')
+  const now = useNow()
   const act: Act = async (ops, words) => {
     if (await save(ops)) announce(words)
   }
@@ -26,7 +28,7 @@ export function AskedRequest({ request, zone }: { request: PartRequestRow; zone:
         <li key={line.id}>
           <Row
             title={`${line.words}, ${line.quantity}`}
-            second={`${CHOICE_WORDS[line.choice]}${line.number === null ? '' : `, ${line.number}`}. ${URGENCY_WORDS[request.urgency]}, asked ${clockTime(request.askedAt, zone)}.`}
+            second={`${CHOICE_WORDS[line.choice]}${line.number === null ? '' : `, ${line.number}`}. ${URGENCY_WORDS[request.urgency]}, asked ${whenWords(request.askedAt, zone, now)}.`}
             end={<span className="caps text-section">{LINE_STATE_WORDS[line.state]}</span>}
           />
           {mine && line.state === 'asked' ? (

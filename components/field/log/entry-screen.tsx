@@ -20,6 +20,7 @@ import type { LogEntry } from '@/lib/model/log-entry'
 import type { VoiceRef } from '@/lib/model/photo'
 import { jobHref } from '../route'
 import { clockTime, dayOf } from '../times'
+import { whenWords } from '../when-words'
 
 /** One entry of the log, whole, with who wrote it and when; and the way to correct it. */
 export function EntryScreen({ jobId, entryId }: { jobId: string; entryId: string }) {
@@ -38,6 +39,7 @@ export function EntryScreen({ jobId, entryId }: { jobId: string; entryId: string
   const { entry } = line
   const words = entryWords(entry.body, index)
   const later = strikes((log ?? []).map((l) => l.entry)).get(entry.id)
+  const madeMs = Date.parse(entry.happenedAt)
   const corrects = later === undefined && entry.body.kind !== 'correction' && mine
   return (
     <Screen
@@ -69,8 +71,8 @@ export function EntryScreen({ jobId, entryId }: { jobId: string; entryId: string
       {later === undefined ? null : (
         <p className="font-bold">
           {later.body.kind === 'correction'
-            ? `Corrected at ${clockTime(later.happenedAt, zone)}: ${later.body.reason}`
-            : `Replaced at ${clockTime(later.happenedAt, zone)}.`}
+            ? `Corrected at ${whenWords(later.happenedAt, zone, madeMs)}: ${later.body.reason}`
+            : `Replaced at ${whenWords(later.happenedAt, zone, madeMs)}.`}
         </p>
       )}
       <Written entry={entry} sent={line.sent} order={line.order} zone={zone} />

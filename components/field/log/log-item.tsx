@@ -11,6 +11,7 @@ import type { BookIndex } from '@/lib/diag/book-index'
 import type { LogEntry } from '@/lib/model/log-entry'
 import { jobHref } from '../route'
 import { clockTime, span } from '../times'
+import { whenWords } from '../when-words'
 
 type Props = {
   line: StoredEntry
@@ -60,14 +61,14 @@ export function LogItem({ line, log, struck, index, gapMs, day, zone }: Props) {
           ))}
           {target === null ? null : (
             <span className="block text-second text-ink2">
-              Points back to {clockTime(target.happenedAt, zone)},{' '}
+              Points back to {whenWords(target.happenedAt, zone, Date.parse(entry.happenedAt))},{' '}
               {kindWord(target.body).toLowerCase()}.
             </span>
           )}
           {later === null ? null : (
             <span className="block text-second font-bold">
               {later.body.kind === 'correction' ? 'Corrected' : 'Replaced'} at{' '}
-              {clockTime(later.happenedAt, zone)}.
+              {whenWords(later.happenedAt, zone, Date.parse(entry.happenedAt))}.
             </span>
           )}
           {entry.body.kind === 'photo' ? (

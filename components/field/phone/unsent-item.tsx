@@ -10,7 +10,9 @@ import { LogIcon, type LogShape } from '@/components/ui/log-icon'
 import { Row } from '@/components/ui/row'
 import { RuleEdge } from '@/components/ui/rule-edge'
 import { browserDisplay } from '@/lib/ports/display'
-import { clockTime, size } from '../times'
+import { size, span } from '../times'
+import { useNow } from '../use-now'
+import { whenWords } from '../when-words'
 import { LetGo } from './let-go'
 
 const SHAPES: Record<UnsentItem['kind'], LogShape> = {
@@ -65,18 +67,25 @@ export function Items({ title, items }: { title: string; items: readonly UnsentI
 
 function Item({ item }: { item: UnsentItem }) {
   const { zone } = useStamp()
+  const now = useNow()
   return (
     <li>
       <Row
         icon={<LogIcon shape={shown(item).shape} />}
         title={shown(item).words}
-        second={itemWords(item)}
-        end={clockTime(item.since, zone)}
+        second={`${itemWords(item)}${ageWords(item, now)}`}
+        end={whenWords(item.since, zone, now)}
         endSecond={size(item.bytes)}
       />
       {item.state === 'stuck' ? <StuckWays item={item} /> : null}
     </li>
   )
+}
+
+/** How long it has lain here: unsent work is never shown without its age (F14). */
+export function ageWords({ reason, waitsFor, since }: UnsentItem, now: number): string {
+  const isClosed = waitsFor === null && reason !== null
+  return `${isClosed ? ' ' : ', '}${isClosed ? 'Recorded' : 'recorded'} ${span(now - Date.parse(since))} ago`
 }
 
 /** What its state is and, when it is stuck or waits, why. */
