@@ -100,13 +100,18 @@ type WhichProps = { jobId: Id; fault: string | null; onPick: (fault: string) => 
 
 /** The likely ones as keys, the rest behind one more. */
 function WhichFault({ jobId, fault, onPick }: WhichProps) {
-  const { answer } = useBelief(jobId)
+  const { answer, working, failed } = useBelief(jobId)
+  const { status } = useBook()
   const [all, setAll] = useState(false)
   const suspects = answer?.belief.suspects ?? []
   const shown = all ? suspects : likely(suspects, fault)
-  if (suspects.length === 0) return <p role="status">Working out the suspects.</p>
+  if (answer === null && (status === 'missing' || failed))
+    return <OnlyElse why={WHY_ELSE[failed ? 'failed' : 'noBook']} fault={fault} onPick={onPick} />
+  if (answer === null)
+    return <p role="status">{working ? 'Working out the suspects.' : 'Opening.'}</p>
   return (
     <div className="grid gap-2">
+      {failed && <p>The newest entry is not counted in these chances.</p>}
       <Choice
         legend="Fault"
         value={fault}
@@ -122,6 +127,26 @@ function WhichFault({ jobId, fault, onPick }: WhichProps) {
           All suspects
         </Key>
       )}
+    </div>
+  )
+}
+
+const WHY_ELSE = {
+  noBook: 'This phone has no code book yet, so it cannot name the suspects.',
+  failed: 'The suspects could not be worked out for this job.',
+}
+
+/** Without suspects to pick from the fix is put down as something else, in the person's own words. */
+function OnlyElse(props: { why: string } & Omit<WhichProps, 'jobId'>) {
+  return (
+    <div className="grid gap-2">
+      <p>{props.why} Pick “Something else”, and name the fault in what you did.</p>
+      <Choice
+        legend="Fault"
+        value={props.fault}
+        onChange={props.onPick}
+        options={[{ value: SOMETHING_ELSE, label: 'Something else' }]}
+      />
     </div>
   )
 }

@@ -40,7 +40,7 @@ export function AskPartScreen({ jobId }: { jobId: Id }) {
   const { search } = useRoute()
   const part = search.get('part')
   const found = useCase(jobId)
-  const { index } = useBook()
+  const { index, status } = useBook()
   const shop = useShop()
   const mine = useMay('part.ask')
   if (!mine)
@@ -58,7 +58,14 @@ export function AskPartScreen({ jobId }: { jobId: Id }) {
   if (found === null || index === null)
     return (
       <Screen title="Ask for a part">
-        <p role="status">Opening the job.</p>
+        {status === 'missing' ? (
+          <p>
+            Parts are named by the shop’s code book, and this phone has not fetched one yet. Open
+            this once with signal, or write what is needed in a note.
+          </p>
+        ) : (
+          <p role="status">Opening the job.</p>
+        )}
       </Screen>
     )
   const sheet = found.spec?.parts.find((one) => one.part === part) ?? null
