@@ -5,20 +5,26 @@ import { NotSaved, useSave } from '@/components/checks/use-save'
 import { useStamp } from '@/components/store/use-stamp'
 import { announce } from '@/components/ui/announce'
 import { Hold } from '@/components/ui/hold'
-import { KeyLink } from '@/components/ui/key'
 import { RuleEdge } from '@/components/ui/rule-edge'
 import { Steps } from '@/components/ui/steps'
 import { living } from '@/lib/diag/case'
 import { codesOnRecord } from '@/lib/diag/codes-on-record'
 import type { SpecSheet } from '@/lib/model/code-book'
 import type { LogEntry } from '@/lib/model/log-entry'
-import { jobHref } from '../route'
 import { ReadCodesAgain } from './read-codes-again'
+import { TakeDownKey } from './take-down-key'
 
-type Props = { jobId: string; entries: readonly LogEntry[]; sheet: SpecSheet | null }
+type Props = {
+  jobId: string
+  entries: readonly LogEntry[]
+  sheet: SpecSheet | null
+  /** Opens the form where codes are taken down on this very screen. */
+  onTakeDown?: () => void
+}
 
 /** Clearing is refused until the codes are recorded or marked unreadable (rule R11); then read again. */
-export function ClearedPart({ jobId, entries, sheet }: Props) {
+export function ClearedPart({ jobId, entries, sheet, onTakeDown }: Props) {
+  const takes = onTakeDown ? { onTakeDown } : {}
   const mine = useMayLog('codesCleared')
   const again = living(entries).some((entry) => entry.body.kind === 'codesCleared')
   if (!mine) {
@@ -38,10 +44,10 @@ export function ClearedPart({ jobId, entries, sheet }: Props) {
             Refused until the codes are taken down, or marked as not readable with a reason. What is
             cleared is gone for everybody after you.
           </p>
-          <KeyLink href={jobHref(jobId, 'codes')}>Take the codes down</KeyLink>
+          <TakeDownKey jobId={jobId} words="Take the codes down" {...takes} />
         </div>
       )}
-      <ReadCodesAgain jobId={jobId} entries={entries} />
+      <ReadCodesAgain jobId={jobId} entries={entries} {...takes} />
     </section>
   )
 }

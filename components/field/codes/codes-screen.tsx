@@ -1,9 +1,10 @@
 'use client'
 
-import { useEffect, useState } from 'react'
+import { useEffect, useRef, useState } from 'react'
 import { NotYours, useMayLog } from '@/components/checks/use-may'
 import { useDraft } from '@/components/store/use-draft'
 import { useLog } from '@/components/store/use-log'
+import { announce } from '@/components/ui/announce'
 import { Key } from '@/components/ui/key'
 import { RuleEdge } from '@/components/ui/rule-edge'
 import { Screen } from '@/components/ui/screen'
@@ -34,12 +35,14 @@ function Codes({ facts }: { facts: JobFacts }) {
   const { go } = useRoute()
   const entries = living((log ?? []).map((line) => line.entry))
   const codes = entries.filter(isCode)
-  const [adding, setAdding] = useState<boolean>(false)
+  // How often the form was asked for; 0 when it is not wanted.
+  const [adding, setAdding] = useState<number>(0)
   const [fresh, setFresh] = useState<string | null>(null)
   const unreadable = entries.findLast((e) => e.body.kind === 'codesUnreadable')?.body
   const draft = useDraft<CodeDraft>(codeKey(job.id), EMPTY_CODE)
   const mine = useMayLog('code')
-  const writing = mine && (adding || codes.length === 0 || draft.value !== EMPTY_CODE)
+  const writing = mine && (adding > 0 || codes.length === 0 || draft.value !== EMPTY_CODE)
+  const takeDown = () => setAdding((times) => times + 1)
   // After a save the focus goes to the meaning of what was just taken down.
   useEffect(() => {
     if (fresh !== null && codes.some((c) => c.id === fresh)) {
@@ -57,7 +60,7 @@ function Codes({ facts }: { facts: JobFacts }) {
       foot={
         writing ? null : (
           <div className="grid grid-cols-1 gap-2 slim:grid-cols-2">
-            {mine ? <Key onClick={() => setAdding(true)}>One more</Key> : null}
+            {mine ? <Key onClick={takeDown}>One more</Key> : null}
             <Key kind="plate" onClick={() => go(jobHref(job.id, 'checks'))}>
               To checks
             </Key>
@@ -76,20 +79,55 @@ function Codes({ facts }: { facts: JobFacts }) {
       ))}
       {mine ? null : <NotYours what="Taking codes down" />}
       {writing && log !== undefined ? (
-        <section className="grid gap-4">
-          <RuleEdge>{codes.length === 0 ? 'Take it down' : `Code ${codes.length + 1}`}</RuleEdge>
-          <CodeForm
-            jobId={job.id}
-            order={codes.length + 1}
-            onSaved={(id) => {
-              setAdding(false)
-              setFresh(id)
-            }}
-          />
-        </section>
+        <OneCode
+          jobId={job.id}
+          order={codes.length + 1}
+          asked={adding}
+          onSaved={(id) => {
+            setAdding(0)
+            setFresh(id)
+          }}
+          onLeave={() => {
+            setAdding(0)
+            draft.clear().catch(() => announce('Could not be thrown away.', 'assertive'))
+          }}
+        />
       ) : null}
-      <ClearedPart jobId={job.id} entries={entries} sheet={model?.specSheet ?? null} />
+      <ClearedPart
+        jobId={job.id}
+        entries={entries}
+        sheet={model?.specSheet ?? null}
+        {...(mine ? { onTakeDown: takeDown } : {})}
+      />
     </Screen>
+  )
+}
+
+type OneProps = {
+  jobId: string
+  order: number
+  /** How often it was asked for: each time the form takes the focus. */
+  asked: number
+  onSaved: (entryId: string) => void
+  onLeave: () => void
+}
+
+/** The form for one code; after the first it can be left again. */
+function OneCode({ jobId, order, asked, onSaved, onLeave }: OneProps) {
+  const form = useRef<HTMLElement>(null)
+  useEffect(() => {
+    if (asked > 0) form.current?.querySelector('input')?.focus()
+  }, [asked])
+  return (
+    <section ref={form} className="grid gap-4">
+      <RuleEdge>{order === 1 ? 'Take it down' : `Code ${order}`}</RuleEdge>
+      <CodeForm jobId={jobId} order={order} onSaved={onSaved} />
+      {order > 1 ? (
+        <Key small quiet onClick={onLeave}>
+          No more codes
+        </Key>
+      ) : null}
+    </section>
   )
 }
 

@@ -3,16 +3,21 @@
 import { NotSaved, useSave } from '@/components/checks/use-save'
 import { useStamp } from '@/components/store/use-stamp'
 import { announce } from '@/components/ui/announce'
-import { Key, KeyLink } from '@/components/ui/key'
+import { Key } from '@/components/ui/key'
 import { RuleEdge } from '@/components/ui/rule-edge'
 import { living } from '@/lib/diag/case'
 import type { LogEntry } from '@/lib/model/log-entry'
-import { jobHref } from '../route'
+import { TakeDownKey } from './take-down-key'
 
-type Props = { jobId: string; entries: readonly LogEntry[] }
+type Props = {
+  jobId: string
+  entries: readonly LogEntry[]
+  /** Opens the form where codes are taken down on this very screen; elsewhere a link leads there. */
+  onTakeDown?: () => void
+}
 
 /** After clearing and a start the codes are read again; the answer stands in place of "not yet" (rule R11). */
-export function ReadCodesAgain({ jobId, entries }: Props) {
+export function ReadCodesAgain({ jobId, entries, onTakeDown }: Props) {
   const cleared = living(entries).findLast((entry) => entry.body.kind === 'codesCleared')
   const { save, saving, problem } = useSave()
   const stamp = useStamp()
@@ -53,7 +58,11 @@ export function ReadCodesAgain({ jobId, entries }: Props) {
         </p>
       )}
       {readAgain === 'back' ? (
-        <KeyLink href={jobHref(jobId, 'codes')}>Take down what came back</KeyLink>
+        <TakeDownKey
+          jobId={jobId}
+          words="Take down what came back"
+          {...(onTakeDown ? { onTakeDown } : {})}
+        />
       ) : null}
     </section>
   )
