@@ -52,7 +52,7 @@ const board = (open: BoardJob[], closed: BoardJob[] = []): DeskBoard => ({
 })
 
 describe('the news of the board', () => {
-  it('[R19] tells a new job, entries, parts, a photo and a closing; nothing when nothing changed', () => {
+  it('[R19] tells a job that came, entries, parts, a photo and a closing; nothing when nothing changed', () => {
     const before = board([row('1'), row('2', { photosMissing: 1 }), row('3')])
     expect(boardNews(before, before)).toEqual([])
     const closed = row('3')
@@ -64,7 +64,7 @@ describe('the news of the board', () => {
       '3 new entries on J-1.',
       'Parts asked for on J-1.',
       'A photo or voice note of J-2 arrived.',
-      'New job J-4: Dies, Unit 14.',
+      'J-4 came onto the board: Dies, Unit 14.',
       'J-3 closed.',
     ])
   })

@@ -60,7 +60,9 @@ test('[R19] the board, a job and the parts table follow the field without a relo
   const phone = await makeFieldDevice(server.base, 'mechanic@demo.invalid')
   const { jobId, words } = await openJob(phone)
   await expect(tag(board, words)).toBeVisible()
-  await expect(board.getByRole('status').filter({ hasText: words })).toHaveText(/New job J-\d{4}/)
+  await expect(board.getByRole('status').filter({ hasText: words })).toHaveText(
+    /J-\d{4} came onto the board/,
+  )
   await tag(board, words).click()
   await expect(board).toHaveURL(new RegExp(`/desk/jobs/${jobId}$`))
   await expect(board.getByText('47.10000 −93.20000')).toBeVisible()

@@ -8,7 +8,11 @@ export function boardNews(before: DeskBoard, after: DeskBoard): string[] {
   const known = new Map([...before.open, ...before.closed].map((row) => [row.job.id, row]))
   return [...after.open, ...after.closed].flatMap((row) => {
     const old = known.get(row.job.id)
-    if (!old) return [`New job ${nameOf(row)}: ${row.job.complaint.words}, ${row.machineWords}.`]
+    // New, reopened, unmerged or assigned: the board does not tell which.
+    if (!old)
+      return [
+        `${nameOf(row)} came onto the board: ${row.job.complaint.words}, ${row.machineWords}.`,
+      ]
     const news: string[] = []
     const entries = row.entries - old.entries
     if (entries > 0) news.push(`${counted(entries, 'new entry', 'new entries')} on ${nameOf(row)}.`)

@@ -5,11 +5,11 @@ import { WitnessMark } from '@/components/ui/witness-mark'
 import type { BoardJob } from '@/lib/model/desk'
 import type { Job } from '@/lib/model/job'
 import { EXPOSURES, type Exposure, exposureOf } from '@/lib/shop/exposure'
-import { counted, JOB_STATE_WORDS, WAY_OUT_WORDS } from '../../field/words'
+import { JOB_STATE_WORDS, WAY_OUT_WORDS } from '../../field/words'
 import { useDesk } from '../desk-context'
 import { deskPaths } from '../desk-path'
-import { whenWords } from '../desk-time'
 import { useNow } from '../use-now'
+import { inWords } from './in-words'
 
 type Props = {
   rows: readonly BoardJob[]
@@ -34,10 +34,9 @@ export function JobsWire({ rows, picked, fresh, dark }: Props) {
               href={deskPaths.job(row.job.id)}
               current={row.job.id === picked}
             />
-            <WitnessMark
-              state={row.photosMissing > 0 ? 'broken' : 'whole'}
-              count={row.photosMissing}
-            />
+            {row.photosMissing > 0 ? (
+              <WitnessMark state="broken" count={row.photosMissing} />
+            ) : null}
           </div>
           <BelowTag row={row} fresh={fresh.get(row.job.id) ?? 0} dark={dark(row)} />
         </li>
@@ -69,11 +68,6 @@ function BelowTag({ row, fresh, dark }: { row: BoardJob; fresh: number; dark: bo
   const { job } = row
   const exposure = exposureOf(job, dark)
   const words = exposureWords(exposure, job.people)
-  const heard = row.heardAt
-  const inWords =
-    row.photosMissing > 0
-      ? `${counted(row.photosMissing, 'photo or voice note', 'photos or voice notes')} on the phone`
-      : 'all in'
   return (
     <p className="mt-1 flex flex-wrap items-baseline gap-x-2 pl-12 text-second text-ink2">
       {words ? (
@@ -86,10 +80,7 @@ function BelowTag({ row, fresh, dark }: { row: BoardJob; fresh: number; dark: bo
       <strong className="caps text-row text-ink">
         {job.wayOut ? WAY_OUT_WORDS[job.wayOut] : JOB_STATE_WORDS[job.state]}
       </strong>
-      <span>
-        {inWords}
-        {heard ? `, ${whenWords(heard, shop.zone, now)}` : ', nothing written yet'}
-      </span>
+      <span>{inWords(row, { zone: shop.zone, now })}</span>
       {fresh > 0 ? <span className="desk-count">{fresh} new</span> : null}
     </p>
   )
