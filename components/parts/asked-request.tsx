@@ -8,6 +8,7 @@ import { NotSaved, useSave } from '../checks/use-save'
 import { useNow } from '../field/use-now'
 import { whenWords } from '../field/when-words'
 import { announce } from '../ui/announce'
+import { Hold } from '../ui/hold'
 import { Key } from '../ui/key'
 import { Row } from '../ui/row'
 
@@ -92,17 +93,17 @@ function LineKeys({ request, line, busy, act }: KeysProps) {
       >
         One more
       </Key>
-      <Key
-        small
-        quiet
-        disabled={busy}
-        aria-label={`Cancel: ${line.words}`}
-        onClick={() =>
-          void act([{ kind: 'partLine.cancel', jobId, fields }], `${line.words} is cancelled.`)
-        }
-      >
-        Cancel line
-      </Key>
+      <div className="w-full">
+        <Hold
+          label={`Cancel: ${line.words}`}
+          question={`Cancel “${line.words}”? There is no way back.`}
+          confirmLabel="Yes, cancel it"
+          disabled={busy}
+          onConfirm={() =>
+            void act([{ kind: 'partLine.cancel', jobId, fields }], `${line.words} is cancelled.`)
+          }
+        />
+      </div>
     </div>
   )
 }

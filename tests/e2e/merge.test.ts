@@ -91,6 +91,7 @@ test('[M1] [M4] [M6] [M9] one stranding, two phones, one desk', async ({
     await expect(page.getByText('Tow strap, 2')).toBeVisible()
     await shot(page, 'parts-asked')
     await key(page, 'Cancel: Tow strap').click()
+    await key(page, 'Yes, cancel it').click()
     await expect(page.getByText('Cancelled', { exact: true })).toBeVisible()
   })
 

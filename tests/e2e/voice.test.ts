@@ -53,6 +53,7 @@ test('[R8] [PH5] a voice note, from flight mode to the desk', async ({
     await shot(page, 'voice-recording')
     await key(page, 'Stop').click()
     await key(page, 'Throw away').click()
+    await key(page, 'Yes, throw away').click()
     await key(page, 'Record').click()
     await expect(page.getByRole('timer')).toContainText(/0:0[2-9]/)
     await key(page, 'Stop').click()

@@ -2,7 +2,7 @@
 
 import { useEffect, useState } from 'react'
 import { NotSaved, useSave } from '@/components/checks/use-save'
-import { usePorts } from '@/components/store/store-provider'
+import { usePhone, usePorts } from '@/components/store/store-provider'
 import { useDraft } from '@/components/store/use-draft'
 import { useStamp } from '@/components/store/use-stamp'
 import { announce } from '@/components/ui/announce'
@@ -17,6 +17,7 @@ import { jobHref } from '../route'
 import { useRoute } from '../router'
 import { size } from '../times'
 import { CAMERA_WORDS, PhotoKey, photoBody, photoToKeep } from './photo-key'
+import { heldPhotos } from './taken-held'
 
 type Shown = { photo: TakenPhoto; url: string }
 
@@ -28,7 +29,7 @@ export function PhotoScreen({ jobId }: { jobId: string }) {
 function TakePhoto({ jobId }: { jobId: string }) {
   const key = `job.${jobId}.photo`
   const { value: caption, set, kept } = useDraft<string>(key, '')
-  const { shown, busy, problem, take } = useTakenPhoto()
+  const { shown, busy, problem, take, letGo } = useTakenPhoto(jobId)
   const { save, saving, problem: notSaved } = useSave()
   const stamp = useStamp()
   const { go, here } = useRoute()
@@ -41,6 +42,7 @@ function TakePhoto({ jobId }: { jobId: string }) {
       wordsAlone: words === '' ? [] : [stamp.entry(jobId, { kind: 'note', words })],
     })
     if (!kept) return
+    letGo()
     announce('Photo saved on this phone.')
     go(jobHref(jobId, 'log'), { replace: true, from: here })
   }
@@ -60,7 +62,8 @@ function TakePhoto({ jobId }: { jobId: string }) {
         <figure>
           <Photo url={shown.url} alt="What was just taken" className="w-full" />
           <figcaption className="pt-1 text-second text-ink2">
-            {shown.photo.width} × {shown.photo.height}, {size(shown.photo.bytes.byteLength)}
+            {shown.photo.width} × {shown.photo.height}, {size(shown.photo.bytes.byteLength)}. Not
+            saved yet: it is held while the app stays open.
           </figcaption>
         </figure>
       )}
@@ -86,10 +89,11 @@ function TakePhoto({ jobId }: { jobId: string }) {
   )
 }
 
-/** A picked file made into a photo that can be kept, with an address to look at it. */
-function useTakenPhoto() {
+/** A picked file made into a photo that can be kept, with an address to look at it; held until it is saved. */
+function useTakenPhoto(jobId: string) {
   const { camera } = usePorts()
-  const [shown, setShown] = useState<Shown | null>(null)
+  const key = `${usePhone()?.actor.personId} ${jobId}`
+  const [shown, setShown] = useState<Shown | null>(() => shownOf(heldPhotos.get(key)))
   const [busy, setBusy] = useState<boolean>(false)
   const [problem, setProblem] = useState<string | null>(null)
   const url = shown?.url ?? null
@@ -100,8 +104,8 @@ function useTakenPhoto() {
       setProblem(CAMERA_WORDS[photo.problem.kind])
       return
     }
-    const { bytes, mime } = photo.value
-    setShown({ photo: photo.value, url: URL.createObjectURL(new Blob([bytes], { type: mime })) })
+    heldPhotos.set(key, photo.value)
+    setShown(shownOf(photo.value))
   }
   const take = (file: File) => {
     setBusy(true)
@@ -110,5 +114,11 @@ function useTakenPhoto() {
       .catch(() => setProblem(CAMERA_WORDS.notReadable))
       .finally(() => setBusy(false))
   }
-  return { shown, busy, problem, take }
+  return { shown, busy, problem, take, letGo: () => heldPhotos.set(key, null) }
 }
+
+const shownOf = (photo: TakenPhoto | null): Shown | null =>
+  photo && {
+    photo,
+    url: URL.createObjectURL(new Blob([photo.bytes], { type: photo.mime })),
+  }

@@ -1,8 +1,10 @@
 'use client'
 
 import { useEffect, useRef, useState } from 'react'
-import { usePorts } from '@/components/store/store-provider'
+import { usePhone, usePorts } from '@/components/store/store-provider'
+import type { Id } from '@/lib/model/id'
 import type { MicrophoneProblem, TakenVoice, VoiceTake } from '@/lib/ports/voice'
+import { heldVoices } from './taken-held'
 
 /** Where a voice note stands: nothing yet, the microphone asked for, recording, or taken. */
 export type VoiceState =
@@ -24,10 +26,11 @@ export const MICROPHONE_WORDS: Record<MicrophoneProblem['kind'], string> = {
 const IDLE: VoiceState = { kind: 'idle' }
 const TICK_MS = 200
 
-/** Records one voice note; what is recorded is let go of with the screen. */
-export function useVoice() {
+/** Records one voice note of a job; what is recorded is held until it is saved or thrown away. */
+export function useVoice(jobId: Id) {
   const { microphone, clock } = usePorts()
-  const [state, setState] = useState<VoiceState>(IDLE)
+  const key = `${usePhone()?.actor.personId} ${jobId}`
+  const [state, setState] = useState<VoiceState>(() => takenState(heldVoices.get(key)))
   const [problem, setProblem] = useState<string | null>(null)
   const take = useRef<VoiceTake | null>(null)
   const url = state.kind === 'taken' ? state.url : null
@@ -56,9 +59,8 @@ export function useVoice() {
     const ended = await begun.value.ended
     take.current = null
     if (!ended.ok) return fail(ended.problem.kind)
-    const { bytes, mime } = ended.value
-    const made = URL.createObjectURL(new Blob([bytes], { type: mime }))
-    setState({ kind: 'taken', voice: ended.value, url: made })
+    heldVoices.set(key, ended.value)
+    setState(takenState(ended.value))
   }
   return {
     state,
@@ -67,8 +69,17 @@ export function useVoice() {
       run().catch(() => fail('noMicrophone'))
     },
     stop: () => take.current?.stop(),
-    throwAway: () => setState(IDLE),
+    throwAway: () => {
+      heldVoices.set(key, null)
+      setState(IDLE)
+    },
   }
+}
+
+function takenState(voice: TakenVoice | null): VoiceState {
+  if (voice === null) return IDLE
+  const url = URL.createObjectURL(new Blob([voice.bytes], { type: voice.mime }))
+  return { kind: 'taken', voice, url }
 }
 
 /** Seconds since the recording began, as they pass. */

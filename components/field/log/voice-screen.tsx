@@ -1,12 +1,13 @@
 'use client'
 
-import { Mic, Square, Trash2 } from 'lucide-react'
+import { Mic, Square } from 'lucide-react'
 import { NotSaved, useSave } from '@/components/checks/use-save'
 import { useDraft } from '@/components/store/use-draft'
 import { useStamp } from '@/components/store/use-stamp'
 import { announce } from '@/components/ui/announce'
 import { DraftSign } from '@/components/ui/draft-sign'
 import { Field } from '@/components/ui/field'
+import { Hold } from '@/components/ui/hold'
 import { Key } from '@/components/ui/key'
 import { Screen } from '@/components/ui/screen'
 import { minutes, VoicePlayer } from '@/components/ui/voice-player'
@@ -26,7 +27,7 @@ export function VoiceScreen({ jobId }: { jobId: string }) {
 function TakeVoice({ jobId }: { jobId: string }) {
   const key = `job.${jobId}.voice`
   const { value: caption, set, kept: draftKept } = useDraft<string>(key, '')
-  const { state, problem, start, stop, throwAway } = useVoice()
+  const { state, problem, start, stop, throwAway } = useVoice(jobId)
   const { save, saving, problem: notSaved } = useSave()
   const stamp = useStamp()
   const { go, here } = useRoute()
@@ -40,6 +41,7 @@ function TakeVoice({ jobId }: { jobId: string }) {
       wordsAlone: words === '' ? [] : [stamp.entry(jobId, { kind: 'note', words })],
     })
     if (!kept) return
+    throwAway()
     announce('Voice note saved on this phone.')
     go(jobHref(jobId, 'log'), { replace: true, from: here })
   }
@@ -54,13 +56,17 @@ function TakeVoice({ jobId }: { jobId: string }) {
         <section className="grid gap-3">
           <p>
             Recorded: <b className="figures">{minutes(state.voice.seconds)}</b>,{' '}
-            {size(state.voice.bytes.byteLength)}. Not saved yet.
+            {size(state.voice.bytes.byteLength)}. Not saved yet: it is held while the app stays
+            open.
           </p>
           <VoicePlayer url={state.url} seconds={state.voice.seconds} />
-          <Key onClick={throwAway}>
-            <Trash2 aria-hidden="true" strokeWidth={2.5} />
-            Throw away
-          </Key>
+          <Hold
+            label="Throw away"
+            question="Throw this voice note away for good?"
+            confirmLabel="Yes, throw away"
+            disabled={saving}
+            onConfirm={throwAway}
+          />
         </section>
       ) : null}
       <p role="status" className="font-bold text-nogo empty:hidden">
