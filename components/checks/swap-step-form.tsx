@@ -1,4 +1,5 @@
 'use client'
+import { useMemo } from 'react'
 import type { SwapBody, SwapStep } from '@/lib/diag/swap-progress'
 import type { SwapItem } from '@/lib/model/code-book'
 import type { Id } from '@/lib/model/id'
@@ -13,6 +14,7 @@ import { RuleEdge } from '../ui/rule-edge'
 import { STEP_WORDS } from './swap-words'
 import { NotSaved, useSave } from './use-save'
 
+type Carried = { quantity: number; knownGood: boolean } | undefined
 type Source = { from: SwapBody['partFrom']; knownGood: 'yes' | 'no'; words: string }
 
 type Props = {
@@ -28,12 +30,8 @@ type Props = {
 export function SwapStepForm({ jobId, swap, part, step, onSaved }: Props) {
   const bag = useBag()
   const carried = bag?.parts.find((one) => one.part === swap.part && one.quantity > 0)
-  const key = `swap:${jobId}:${swap.id}`
-  const first: Source = {
-    from: carried === undefined ? 'twin' : 'bag',
-    knownGood: carried?.knownGood === true ? 'yes' : 'no',
-    words: '',
-  }
+  const { key, done } = sourceKeys(jobId, swap.id, step)
+  const first = useMemo(() => firstSource(step, carried), [step, carried])
   const { value: source, set } = useDraft<Source>(key, first)
   const stamp = useStamp()
   const { save, saving, problem } = useSave()
@@ -48,13 +46,14 @@ export function SwapStepForm({ jobId, swap, part, step, onSaved }: Props) {
       partWords: partWords(source, step, faultPresent),
     }
     const op = stamp.entry(jobId, body)
-    if (await save([op])) onSaved(op.fields.id)
+    const clearDrafts = isLast(step, faultPresent) ? done : []
+    if (await save([op], { clearDrafts })) onSaved(op.fields.id)
   }
   const words = STEP_WORDS[step]
   return (
     <section aria-labelledby="step" className="grid gap-3 border-2 border-ink p-3">
       <RuleEdge id="step">{words.title(name)}</RuleEdge>
-      {step === 'spareFitted' && (
+      {step !== 'oldRefitted' && (
         <SourceForm value={source} onChange={set} carried={carried} part={name} />
       )}
       <p>{words.ask}</p>
@@ -76,16 +75,38 @@ export function SwapStepForm({ jobId, swap, part, step, onSaved }: Props) {
   )
 }
 
+/**
+ * Where a part comes from is asked of the good part and again of the new one: they are two parts, mostly of
+ * two places. The old part is the machine's own, so its step keeps what was said of the good one.
+ */
+function sourceKeys(jobId: Id, swapId: string, step: SwapStep): { key: string; done: string[] } {
+  const good = `swap:${jobId}:${swapId}`
+  const fresh = `${good}:new`
+  return { key: step === 'newFitted' ? fresh : good, done: [good, fresh] }
+}
+
+/** What stands there before anything is picked: the bag when it has one, else a twin, or for a new part the shop. */
+export const firstSource = (step: SwapStep, carried: Carried): Source => ({
+  from: carried !== undefined ? 'bag' : step === 'newFitted' ? 'shop' : 'twin',
+  knownGood: carried?.knownGood === true ? 'yes' : 'no',
+  words: '',
+})
+
+/** True when the round ends with this answer: what was said of the parts is of no use to the next one. */
+export const isLast = (step: SwapStep, faultPresent: boolean | null): boolean =>
+  step === 'newFitted' || (step === 'spareFitted' && faultPresent === true)
+
 function partWords(source: Source, step: SwapStep, faultPresent: boolean | null): string | null {
   if (step === 'oldRefitted') return faultPresent === null ? 'not swapped back' : null
   const good = source.knownGood === 'yes' ? 'known good' : 'not known to be good'
-  return [good, source.words.trim()].filter((word) => word !== '').join('; ')
+  const which = source.from === 'twin' ? source.words.trim() : ''
+  return [good, which].filter((word) => word !== '').join('; ')
 }
 
 type SourceProps = {
   value: Source
   onChange: (next: Source) => void
-  carried: { quantity: number; knownGood: boolean } | undefined
+  carried: Carried
   part: string
 }
 
