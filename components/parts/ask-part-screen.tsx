@@ -6,7 +6,6 @@ import { type AdvisedPart, adviceFor, adviceRecord, type SheetPart } from '@/lib
 import type { Id } from '@/lib/model/id'
 import type { PartLine, PartRequest } from '@/lib/model/part-request'
 import type { Shop } from '@/lib/model/shop'
-import { moneyWords } from '@/lib/shop/currency'
 import { CHOICE_WORDS, URGENCY_WORDS } from '@/lib/shop/part-words'
 import { NotYours, useMay } from '../checks/use-may'
 import { NotSaved, useSave } from '../checks/use-save'
@@ -14,17 +13,16 @@ import { useBelief } from '../engine/use-belief'
 import { useCase } from '../engine/use-case'
 import { useRoute } from '../field/router'
 import { entryMention } from '../log/entry-words'
-import { fixed } from '../reading-strip/figures'
 import { useBook } from '../store/use-book'
 import { useDraft } from '../store/use-draft'
 import { useShop } from '../store/use-rows'
 import { useStamp } from '../store/use-stamp'
+import { announce } from '../ui/announce'
 import { Choice } from '../ui/choice'
 import { Field } from '../ui/field'
 import { Key } from '../ui/key'
-import { RuleEdge } from '../ui/rule-edge'
 import { Screen } from '../ui/screen'
-import { adviceSentences } from './part-advice'
+import { Prices } from './part-prices'
 
 type AskDraft = {
   quantity: number
@@ -104,18 +102,14 @@ function Ask({ jobId, part, name, fault, sheet, shop }: AskProps) {
       foot={
         <Key
           kind="main"
-          disabled={saving}
-          onClick={() => ask({ ...draft, choice }, condemned?.id ?? null)}
+          disabled={saving || condemned.state === 'working'}
+          onClick={() => ask({ ...draft, choice }, condemned.entry?.id ?? null)}
         >
-          Ask for it
+          {condemned.state === 'working' ? 'Working it out' : 'Ask for it'}
         </Key>
       }
     >
-      {condemned !== null && (
-        <p>
-          <b>Because of:</b> {condemned.words}
-        </p>
-      )}
+      <Because condemned={condemned} />
       <Prices sheet={sheet} shop={shop} advised={advised} />
       <Choice
         legend="Which part"
@@ -166,7 +160,7 @@ function useAsk(of: {
   key: string
   advised: AdvisedPart | null
 }) {
-  const { go } = useRoute()
+  const { go, here } = useRoute()
   const stamp = useStamp()
   const { save, saving, problem } = useSave()
   const ask = async (draft: AskDraft & { choice: PartLine['choice'] }, condemned: Id | null) => {
@@ -190,22 +184,58 @@ function useAsk(of: {
       lines: [line],
       advice: adviceRecord(of.advised),
     }
-    if (await save([{ kind: 'partRequest.ask', fields }], { clearDrafts: [of.key] }))
-      go(`/field/jobs/${of.jobId}/parts`)
+    if (!(await save([{ kind: 'partRequest.ask', fields }], { clearDrafts: [of.key] }))) return
+    announce(`${of.name}: the request is saved on this phone.`)
+    // In place of the form: Back must not lead to the same request once more.
+    go(`/field/jobs/${of.jobId}/parts`, { replace: true, from: here })
   }
   return { ask, saving, problem }
 }
 
-/** The entry that spoke most strongly for the fault, in words. */
-function useCondemned(jobId: Id, fault: string | null): { id: Id; words: string } | null {
+type Condemned = {
+  /** `none`: asked for without a suspect. `failed`: there is one, and its entry could not be worked out. */
+  state: 'none' | 'working' | 'failed' | 'known'
+  entry: { id: Id; words: string } | null
+}
+
+/** The entry that spoke most strongly for the fault, in words, once the newest one is counted. */
+function useCondemned(jobId: Id, fault: string | null): Condemned {
   const found = useCase(jobId)
   const { index } = useBook()
-  const { answer } = useBelief(jobId)
+  const { answer, working, failed } = useBelief(jobId)
+  const state = condemnedState({
+    asked: fault !== null,
+    working: working || answer === null,
+    failed,
+  })
   const suspect = answer?.belief.suspects.find((one) => one.fault === fault)
-  if (suspect === undefined || found === null || index === null) return null
+  if (state !== 'known' || suspect === undefined || found === null || index === null)
+    return { state, entry: null }
   const id = condemnedBy(suspect)
   const entry = living(found.entries).find((one) => one.id === id)
-  return entry === undefined ? null : { id: entry.id, words: entryMention(entry.body, index) }
+  if (entry === undefined) return { state, entry: null }
+  return { state, entry: { id: entry.id, words: entryMention(entry.body, index) } }
+}
+
+/** How it stands with the entry behind a request; `working` also before the first answer. */
+export function condemnedState(of: {
+  asked: boolean
+  working: boolean
+  failed: boolean
+}): Condemned['state'] {
+  if (!of.asked) return 'none'
+  if (of.failed) return 'failed'
+  return of.working ? 'working' : 'known'
+}
+
+function Because({ condemned: { state, entry } }: { condemned: Condemned }) {
+  if (state === 'failed')
+    return <p>The suspects could not be worked out, so the request names no entry of the log.</p>
+  return entry === null ? null : (
+    <p>
+      <b>Because of:</b> {entry.words}
+    </p>
+  )
 }
 
 const choicesOf = (sheet: SheetPart | null): readonly PartLine['choice'][] =>
@@ -235,57 +265,6 @@ function priceOf(sheet: SheetPart | null, choice: PartLine['choice'], shop: Shop
         : null
   return minor == null || shop === null ? null : { minor, currency: shop.currency }
 }
-
-type PricesProps = { sheet: SheetPart | null; shop: Shop | null; advised: AdvisedPart | null }
-
-/** Prices, failure figures, the second recovery, the break-even and what follows. */
-function Prices({ sheet, shop, advised }: PricesProps) {
-  if (sheet === null || shop === null)
-    return <p>The spec sheet has no price for this part. The parts desk finds it out.</p>
-  const money = (minor: number) => moneyWords(minor, shop.currency)
-  const rows: [string, string, string][] = [
-    ['Genuine', money(sheet.genuineMinor), failWords(sheet.genuineFailsOf100)],
-  ]
-  if (sheet.aftermarketMinor !== null)
-    rows.push([
-      'Aftermarket',
-      money(sheet.aftermarketMinor),
-      sheet.aftermarketFailsOf100 === null ? 'no figure' : failWords(sheet.aftermarketFailsOf100),
-    ])
-  rows.push(['Second recovery', money(shop.recoveryMinor), 'when it fails out there'])
-  return (
-    <section aria-labelledby="prices" className="grid gap-2">
-      <RuleEdge id="prices">Genuine or aftermarket</RuleEdge>
-      <table className="w-full border-collapse text-left">
-        <caption className="visually-hidden">Prices and how many of 100 fail</caption>
-        <tbody>
-          {rows.map(([label, price, fails]) => (
-            <tr key={label} className="border-b-[1.5px] border-rule align-baseline">
-              <th scope="row" className="py-2 pr-2 font-bold">
-                {label}
-                <span className="block text-second font-normal text-ink2">{fails}</span>
-              </th>
-              <td className="figures py-2 text-right">{price}</td>
-            </tr>
-          ))}
-        </tbody>
-      </table>
-      {advised !== null && (
-        <div className="grid gap-1 border-l-4 border-ink pl-3">
-          {adviceSentences(advised, shop.currency).map((words, i, all) => (
-            <p key={words} className={i === all.length - 1 ? 'text-row font-bold' : ''}>
-              {words}
-            </p>
-          ))}
-        </div>
-      )}
-      <p className="text-second text-ink2">Prices and failure figures: {sheet.source}.</p>
-    </section>
-  )
-}
-
-const failWords = (of100: number): string =>
-  `${fixed(of100, Number.isInteger(of100) ? 0 : 1)} of 100 fail`
 
 function Quantity({ value, onChange }: { value: number; onChange: (next: number) => void }) {
   return (
