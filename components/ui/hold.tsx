@@ -17,6 +17,16 @@ type Props = {
   disabled?: boolean
 }
 
+/** Whether a finger or the main button holds it: the others open menus. */
+export const isHeldDown = (press: { button: number }, disabled: boolean): boolean =>
+  !disabled && press.button === 0
+
+/**
+ * Whether a press asks: one from keyboard or switch (no `detail`) always does, that which ends a hold does not.
+ */
+export const isAsking = (press: { detail: number }, wasHeld: boolean): boolean =>
+  !wasHeld || press.detail === 0
+
 /** Hold 800 ms to confirm, or press once and answer with one of two keys. */
 export function Hold({ label, question, confirmLabel, onConfirm, disabled = false }: Props) {
   const [held, setHeld] = useState(false)
@@ -31,8 +41,13 @@ export function Hold({ label, question, confirmLabel, onConfirm, disabled = fals
     setHeld(false)
   }
   useEffect(() => () => (timer.current === null ? undefined : clearTimeout(timer.current)), [])
-  const press = () => {
-    if (disabled) {
+  const key = useRef<HTMLButtonElement>(null)
+  const answer = () => {
+    setAsking(false)
+    key.current?.focus()
+  }
+  const press = (event: { button: number }) => {
+    if (!isHeldDown(event, disabled)) {
       return
     }
     done.current = false
@@ -47,6 +62,7 @@ export function Hold({ label, question, confirmLabel, onConfirm, disabled = fals
   return (
     <div className="grid gap-2">
       <Key
+        ref={key}
         disabled={disabled}
         className={classes('relative w-full select-none', held && 'hold-on')}
         onPointerDown={press}
@@ -54,8 +70,10 @@ export function Hold({ label, question, confirmLabel, onConfirm, disabled = fals
         onPointerLeave={letGo}
         onPointerCancel={letGo}
         onContextMenu={(e) => e.preventDefault()}
-        onClick={() => {
-          if (!done.current) {
+        onClick={(event) => {
+          const asks = isAsking(event, done.current)
+          done.current = false
+          if (asks) {
             setAsking(true)
           }
         }}
@@ -67,14 +85,14 @@ export function Hold({ label, question, confirmLabel, onConfirm, disabled = fals
         <fieldset className="grid gap-2 border-2 border-ink p-3">
           <legend className="px-1 font-bold">{question}</legend>
           <div className="grid grid-cols-1 gap-2 slim:grid-cols-2">
-            <Key small onClick={() => setAsking(false)}>
+            <Key small onClick={answer}>
               No
             </Key>
             <Key
               small
               kind="plate"
               onClick={() => {
-                setAsking(false)
+                answer()
                 onConfirm()
               }}
             >
