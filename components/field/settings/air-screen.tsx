@@ -7,7 +7,7 @@ import type { OpInput } from '@/lib/sync/protocol/op'
 import { airProblem, typedNumber } from '../intake/intake-rules'
 import { OfJob } from '../of-job'
 import { usePatch } from '../use-patch'
-import { SettingScreen } from './setting-screen'
+import { type Refusal, SettingScreen } from './setting-screen'
 
 type AirDraft = { air: string | null; weather: string | null }
 const EMPTY: AirDraft = { air: null, weather: null }
@@ -33,29 +33,34 @@ function AirForm({ job }: { job: Job }) {
       draftKey={key}
       read={() => read(job, air, weather)}
     >
-      <Field
-        label="Air temperature, °C"
-        hint="A meter and a coil read differently in the cold."
-        value={air}
-        onChange={(next) => change({ air: next.slice(0, 6) })}
-        inputMode="text"
-        figures
-      />
-      <Field
-        label="Weather"
-        value={weather}
-        onChange={(next) => change({ weather: next })}
-        maxLength={120}
-        autoCapitalize="sentences"
-      />
+      {(errorOf) => (
+        <>
+          <Field
+            label="Air temperature, °C"
+            hint="A meter and a coil read differently in the cold."
+            value={air}
+            onChange={(next) => change({ air: next.slice(0, 6) })}
+            inputMode="text"
+            figures
+            error={errorOf('airTempC')}
+          />
+          <Field
+            label="Weather"
+            value={weather}
+            onChange={(next) => change({ weather: next })}
+            maxLength={120}
+            autoCapitalize="sentences"
+          />
+        </>
+      )}
     </SettingScreen>
   )
 }
 
 /** What changed, each value as an op of its own. */
-function read(job: Job, air: string, weather: string): OpInput[] | string {
+function read(job: Job, air: string, weather: string): OpInput[] | Refusal {
   const problem = airProblem(air)
-  if (problem !== null) return problem
+  if (problem !== null) return { field: 'airTempC', words: problem }
   const ops: OpInput[] = []
   const jobId = job.id
   const airTempC = typedNumber(air)

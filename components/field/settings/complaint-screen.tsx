@@ -5,7 +5,7 @@ import { Field } from '@/components/ui/field'
 import type { Job } from '@/lib/model/job'
 import type { OpInput } from '@/lib/sync/protocol/op'
 import { OfJob } from '../of-job'
-import { SettingScreen } from './setting-screen'
+import { type Refusal, SettingScreen } from './setting-screen'
 
 /** The complaint in the rider's words, should they say it better later. What it does stays as recorded. */
 export function ComplaintScreen({ jobId }: { jobId: string }) {
@@ -25,21 +25,24 @@ function ComplaintForm({ job }: { job: Job }) {
       draftKey={key}
       read={() => read(job, words)}
     >
-      <Field
-        label="In the rider’s own words"
-        value={words}
-        onChange={set}
-        lines={4}
-        maxLength={500}
-        autoCapitalize="sentences"
-      />
+      {(errorOf) => (
+        <Field
+          label="In the rider’s own words"
+          value={words}
+          onChange={set}
+          lines={4}
+          maxLength={500}
+          autoCapitalize="sentences"
+          error={errorOf('complaintWords')}
+        />
+      )}
     </SettingScreen>
   )
 }
 
-function read(job: Job, text: string): OpInput[] | string {
+function read(job: Job, text: string): OpInput[] | Refusal {
   const value = text.trim()
-  if (value === '') return 'Write what the rider says.'
+  if (value === '') return { field: 'complaintWords', words: 'Write what the rider says.' }
   if (value === job.complaint.words) return []
   return [{ kind: 'job.set', jobId: job.id, fields: { field: 'complaintWords', value } }]
 }

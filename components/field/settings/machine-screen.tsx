@@ -11,7 +11,7 @@ import { typedNumber } from '../intake/intake-rules'
 import { OfJob } from '../of-job'
 import type { JobFacts } from '../use-job-facts'
 import { usePatch } from '../use-patch'
-import { SettingScreen } from './setting-screen'
+import { type Refusal, SettingScreen } from './setting-screen'
 
 type MachineDraft = Partial<Record<MachineSetting['field'], string>>
 const EMPTY: MachineDraft = {}
@@ -59,35 +59,43 @@ function MachineForm({ facts, machine }: { facts: JobFacts; machine: Machine }) 
       draftKey={key}
       read={() => readMachine(machine, draft)}
     >
-      <Field
-        label="Engine hours"
-        value={text('hours')}
-        onChange={(hours) => change({ hours: hours.slice(0, 10) })}
-        inputMode="decimal"
-        figures
-      />
-      <Field
-        label="Unit number"
-        value={text('unitNumber')}
-        onChange={(unitNumber) => change({ unitNumber })}
-        maxLength={20}
-        figures
-      />
-      <Field
-        label="Serial number, as on the machine"
-        value={text('serial')}
-        onChange={(serial) => change({ serial })}
-        maxLength={30}
-        autoCapitalize="characters"
-        figures
-      />
-      <Field
-        label="Year"
-        value={text('year')}
-        onChange={(year) => change({ year: year.replace(/\D/g, '').slice(0, 4) })}
-        inputMode="numeric"
-        figures
-      />
+      {(errorOf) => (
+        <>
+          <Field
+            label="Engine hours"
+            value={text('hours')}
+            onChange={(hours) => change({ hours: hours.slice(0, 10) })}
+            inputMode="decimal"
+            figures
+            error={errorOf('hours')}
+          />
+          <Field
+            label="Unit number"
+            value={text('unitNumber')}
+            onChange={(unitNumber) => change({ unitNumber })}
+            maxLength={20}
+            figures
+            error={errorOf('unitNumber')}
+          />
+          <Field
+            label="Serial number, as on the machine"
+            value={text('serial')}
+            onChange={(serial) => change({ serial })}
+            maxLength={30}
+            autoCapitalize="characters"
+            figures
+            error={errorOf('serial')}
+          />
+          <Field
+            label="Year"
+            value={text('year')}
+            onChange={(year) => change({ year: year.replace(/\D/g, '').slice(0, 4) })}
+            inputMode="numeric"
+            figures
+            error={errorOf('year')}
+          />
+        </>
+      )}
     </SettingScreen>
   )
 }
@@ -100,13 +108,13 @@ const PROBLEMS: Record<MachineSetting['field'], string> = {
 }
 
 /** What changed of a machine, each value as an op of its own; the sentence for one that cannot be read. */
-export function readMachine(machine: Machine, draft: MachineDraft): OpInput[] | string {
+export function readMachine(machine: Machine, draft: MachineDraft): OpInput[] | Refusal {
   const ops: OpInput[] = []
   for (const field of ['hours', 'unitNumber', 'serial', 'year'] as const) {
     const text = draft[field]?.trim()
     if (text === undefined || text === shown(machine, field)) continue
     const read = machineSetting.safeParse({ field, value: typedValue(field, text) })
-    if (!read.success) return PROBLEMS[field]
+    if (!read.success) return { field, words: PROBLEMS[field] }
     ops.push({ kind: 'machine.set', machineId: machine.id, fields: read.data })
   }
   return ops

@@ -13,7 +13,7 @@ import { FixPart, TypedPart } from '../intake/place-step'
 import { OfJob } from '../of-job'
 import { PlaceShown } from '../place-shown'
 import { usePatch } from '../use-patch'
-import { SettingScreen } from './setting-screen'
+import { type Refusal, SettingScreen } from './setting-screen'
 
 type PlaceDraft = Pick<IntakeDraft, 'place' | 'placeText' | 'lastFix'> & { words: string | null }
 const EMPTY: PlaceDraft = { ...NO_PLACE, words: null }
@@ -39,37 +39,42 @@ function PlaceForm({ job }: { job: Job }) {
       draftKey={key}
       read={() => read(job, draft, words)}
     >
-      <FixPart place={draft.place} onPlace={(place) => change(afterFix(place))} />
-      <TypedPart
-        text={draft.placeText}
-        near={job.place}
-        onText={(text) => change(afterTyping(draft, text, stamp.now()))}
-      />
-      {draft.place === null ? null : <PlaceShown place={draft.place} />}
-      <Field
-        label="The place in words"
-        hint="Trail, marker, what stands there."
-        value={words}
-        onChange={(next) => change({ words: next })}
-        maxLength={200}
-        autoCapitalize="sentences"
-      />
-      {job.place === null ? null : (
-        <section className="grid gap-2">
-          <RuleEdge>As it stands now</RuleEdge>
-          <PlaceShown place={job.place} />
-        </section>
+      {() => (
+        <>
+          <FixPart place={draft.place} onPlace={(place) => change(afterFix(place))} />
+          <TypedPart
+            text={draft.placeText}
+            near={job.place}
+            onText={(text) => change(afterTyping(draft, text, stamp.now()))}
+          />
+          {draft.place === null ? null : <PlaceShown place={draft.place} />}
+          <Field
+            label="The place in words"
+            hint="Trail, marker, what stands there."
+            value={words}
+            onChange={(next) => change({ words: next })}
+            maxLength={200}
+            autoCapitalize="sentences"
+          />
+          {job.place === null ? null : (
+            <section className="grid gap-2">
+              <RuleEdge>As it stands now</RuleEdge>
+              <PlaceShown place={job.place} />
+            </section>
+          )}
+        </>
       )}
     </SettingScreen>
   )
 }
 
 /** The new place as an op; words alone may change as well. */
-function read(job: Job, draft: PlaceDraft, text: string): OpInput[] | string {
+function read(job: Job, draft: PlaceDraft, text: string): OpInput[] | Refusal {
   const problem = placeProblem(draft)
-  if (problem !== null) return problem
+  // The box of a typed position says itself what is wrong with it.
+  if (problem !== null) return { field: null, words: problem }
   const place = draft.place ?? job.place
-  if (place === null) return 'Take the position, or type it.'
+  if (place === null) return { field: null, words: 'Take the position, or type it.' }
   const words = text.trim() === '' ? null : text.trim()
   if (draft.place === null && words === place.words) return []
   const value = { ...place, words }
