@@ -1,6 +1,6 @@
 'use client'
 import { Delete } from 'lucide-react'
-import { useEffect } from 'react'
+import { type RefObject, useEffect, useRef } from 'react'
 import { neverNegative, type TypedUnit, unitsOf } from '@/lib/diag/typed-units'
 import type { Quantity } from '@/lib/model/meter-profile'
 import { unitLabel } from '../reading-strip/unit-words'
@@ -25,9 +25,9 @@ type Props = {
 /** The reading keypad: three columns of mitten-sized keys, sign or OL, unit, SAVE. */
 export function Keypad({ quantity, value, unit, onChange, onSave, saveBlocked }: Props) {
   const press = (key: PadKey) => onChange({ ...value, typed: pressed(value.typed, key) })
-  useTyping(press)
+  const pad = useTyping(press)
   return (
-    <fieldset className="grid grid-cols-3 gap-1.5">
+    <fieldset ref={pad} className="grid grid-cols-3 gap-1.5">
       <legend className="visually-hidden">Keypad</legend>
       {DIGITS.map((digit) => (
         <Key key={digit} className={`${PAD} ${FIGURE}`} onClick={() => press(digit)}>
@@ -86,18 +86,22 @@ function UnitKey(props: { quantity: Quantity; unit: TypedUnit; onPick: (id: stri
   )
 }
 
-/** A keyboard types on the pad as well, unless something else has the focus. */
-function useTyping(press: (key: PadKey) => void): void {
+/** A keyboard types on the pad while the focus is on it: single keys are nobody's elsewhere (WCAG 2.1.4). */
+function useTyping(press: (key: PadKey) => void): RefObject<HTMLFieldSetElement | null> {
+  const pad = useRef<HTMLFieldSetElement>(null)
   useEffect(() => {
+    const here = pad.current
+    if (here === null) return
     const hear = (event: KeyboardEvent) => {
       const target = event.target instanceof Element ? event.target : null
       if (target?.closest('input, textarea, select') || event.ctrlKey || event.metaKey) return
       const key = padKeyOf(event.key)
       if (key !== null) press(key)
     }
-    window.addEventListener('keydown', hear)
-    return () => window.removeEventListener('keydown', hear)
+    here.addEventListener('keydown', hear)
+    return () => here.removeEventListener('keydown', hear)
   }, [press])
+  return pad
 }
 
 function padKeyOf(key: string): PadKey | null {

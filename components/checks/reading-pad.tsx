@@ -12,6 +12,7 @@ import { VerdictLine } from '../reading-strip/verdict-line'
 import { useStamp } from '../store/use-stamp'
 import { DraftSign, keptWith } from '../ui/draft-sign'
 import { Key } from '../ui/key'
+import { useTitle } from '../ui/title-focus'
 import { Keypad } from './keypad'
 import { setupShort, useMeterSetup } from './meter-setup'
 import { MeterSetupForm } from './meter-setup-form'
@@ -41,6 +42,7 @@ export function ReadingPad({ jobId, check, found, onSaved }: Props) {
   const view = useMeterSetup(jobId)
   const [open, setOpen] = useState(false)
   const summary = useId()
+  const title = useTitle()
   const judged = specOf(check, found.spec)
   const quantity = check.reading?.quantity ?? 'resistance'
   const live = useLive(draft, view, { quantity, judged })
@@ -48,7 +50,7 @@ export function ReadingPad({ jobId, check, found, onSaved }: Props) {
   return (
     <div className={`flex flex-1 flex-col ${LYING_DOWN.row}`}>
       <div className="safe-sides grid min-w-0 flex-1 grid-cols-[minmax(0,1fr)] content-start gap-1 pb-3">
-        <h1 id="screen-title" tabIndex={-1} className="caps text-screen">
+        <h1 ref={title} id="screen-title" tabIndex={-1} className="caps text-screen">
           {check.name}
         </h1>
         <div className="mt-1 grid grid-cols-2 gap-1.5">

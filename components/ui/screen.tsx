@@ -1,10 +1,10 @@
 'use client'
 
-import { type ReactNode, useLayoutEffect, useRef } from 'react'
+import type { ReactNode } from 'react'
 import type { DraftKept } from '@/lib/sync/client/drafts'
 import { classes } from './class-names'
 import { DraftSign } from './draft-sign'
-import { titleComes, titleLeaves } from './title-focus'
+import { useTitle } from './title-focus'
 
 type Props = {
   title: ReactNode
@@ -21,12 +21,7 @@ type Props = {
 
 /** One field screen: title, content, and its keys at the bottom. The title takes the focus when it opens. */
 export function Screen({ title, second, kept, children, foot, titleHidden = false }: Props) {
-  const heading = useRef<HTMLHeadingElement>(null)
-  useLayoutEffect(() => {
-    const { current } = heading
-    titleComes(current)
-    return () => titleLeaves(current, document.activeElement)
-  }, [])
+  const heading = useTitle()
   return (
     <div className="flex flex-1 flex-col">
       <div className="safe-sides grid flex-1 grid-cols-[minmax(0,1fr)] content-start gap-5 pt-1 pb-6">
