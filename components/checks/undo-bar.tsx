@@ -37,13 +37,13 @@ export function UndoBar({ jobId, entryId, what, alsoBack, onUndone }: Props) {
   }
   return (
     <div className="flex items-center justify-between gap-3 border-y-2 border-ink py-2">
-      <p className="min-w-0 flex-1">
+      <div className="min-w-0 flex-1">
         <b>{what}</b>
         <span className="block text-second text-ink2">
           {left > 0 ? 'saved on this phone' : 'saved; from now on a correction in the log'}
         </span>
         <NotSaved problem={problem} />
-      </p>
+      </div>
       {left > 0 && (
         <Key small disabled={saving} onClick={undo}>
           Undo <span className="figures">{left}</span>

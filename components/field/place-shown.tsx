@@ -16,9 +16,15 @@ export function PlaceShown({ place }: { place: Place }) {
       <p className="text-second text-ink2">
         {place.source === 'fix' ? (
           <>
-            Position fix, good to{' '}
-            <Figure value={Math.round(place.accuracyMetres ?? 0)} unit="m" size="body" />,{' '}
-            {span(now - Date.parse(place.at))} old.
+            Position fix,{' '}
+            {place.accuracyMetres === null ? (
+              'accuracy not told'
+            ) : (
+              <>
+                good to <Figure value={Math.round(place.accuracyMetres)} unit="m" size="body" />
+              </>
+            )}
+            , {span(now - Date.parse(place.at))} old.
           </>
         ) : (
           `Typed as ${place.asTyped ?? 'given'}, ${span(now - Date.parse(place.at))} ago.`

@@ -156,6 +156,9 @@ function LeftBehind({
         Position: {found.job.place === null ? 'missing on the job' : 'on the job'}. Photo:{' '}
         {photo ? 'in the log' : 'missing'}.
       </p>
+      {found.job.place === null && (
+        <KeyLink href={`/field/jobs/${jobId}/place`}>Take or type the position</KeyLink>
+      )}
       {!photo && <KeyLink href={`/field/jobs/${jobId}/photo`}>Take a photo</KeyLink>}
       {LEFT_BEHIND_LINES.map((key) => (
         <Field

@@ -65,10 +65,13 @@ function Keys<T extends string>(
   },
 ) {
   const name = useId()
+  const described = [props.hint ? `${name}-hint` : '', props.error ? `${name}-error` : '']
+    .filter(Boolean)
+    .join(' ')
   return (
     <fieldset
       className={classes('min-w-0', props.className)}
-      aria-describedby={props.error ? `${name}-error` : undefined}
+      aria-describedby={described || undefined}
       data-invalid={props.error ? true : undefined}
     >
       <legend
@@ -78,7 +81,11 @@ function Keys<T extends string>(
       >
         {props.legend}
       </legend>
-      {props.hint ? <p className="mb-1.5 text-second text-ink2">{props.hint}</p> : null}
+      {props.hint ? (
+        <p id={`${name}-hint`} className="mb-1.5 text-second text-ink2">
+          {props.hint}
+        </p>
+      ) : null}
       <div className={classes('grid gap-2', COLUMNS[props.columns ?? 1])}>
         {props.options.map((option) => (
           <label

@@ -108,7 +108,11 @@ function AlsoEnteredList({ shown, zone, mayUse }: ListProps) {
           </li>
         )
       })}
-      <NotSaved problem={problem} />
+      {problem === null ? null : (
+        <li>
+          <NotSaved problem={problem} />
+        </li>
+      )}
     </ul>
   )
 }

@@ -18,6 +18,9 @@ const NAMES: Record<Setting['field'], string> = {
 /** What the value is of. */
 export const settingName = ({ field }: Setting): string => NAMES[field]
 
+const goodTo = (metres: number | null): string =>
+  metres === null ? 'of an accuracy not told' : `good to ${Math.round(metres)} m`
+
 /** The value as it is shown in a line; a field that was left empty says so. */
 export function settingWords(setting: Setting): string {
   if (setting.value === null) return 'nothing'
@@ -26,8 +29,7 @@ export function settingWords(setting: Setting): string {
       return `“${setting.value}”`
     case 'place': {
       const { words, source, accuracyMetres } = setting.value
-      const how =
-        source === 'fix' ? `position fix good to ${Math.round(accuracyMetres ?? 0)} m` : 'typed'
+      const how = source === 'fix' ? `position fix ${goodTo(accuracyMetres)}` : 'typed'
       return [printDegrees(setting.value), how, words].filter(Boolean).join(', ')
     }
     case 'airTempC':
