@@ -6,6 +6,7 @@ import {
   lineBoxes,
   lineMoveForm,
   minorOf,
+  moveOnEnter,
   priceText,
 } from '@/components/desk/parts/line-move.schema'
 import { homeOf, pathAskedFor } from '@/components/sign-in/home-of'
@@ -100,6 +101,16 @@ describe('the boxes of a part line', () => {
       expect(lineBoxes(2).safeParse({ number: '', price: typed }).success).toBe(false)
     },
   )
+
+  it.each([
+    ['', { identified: true, quoted: true }, 'identified'],
+    ['135.00', { identified: true, quoted: true }, 'quoted'],
+    ['', { identified: false, quoted: true }, 'quoted'],
+    ['135.00', { identified: true, quoted: false }, 'identified'],
+    ['135.00', { identified: false, quoted: false }, null],
+  ] as const)('[R14] Enter with the price %j where %j is open means %s', (price, can, to) => {
+    expect(moveOnEnter(price, can)).toBe(to)
+  })
 
   it('[R14] takes no move but identified, quoted and cancelled, and no field it does not know', () => {
     const head = {

@@ -45,6 +45,15 @@ export type LineBoxes = z.infer<ReturnType<typeof lineBoxes>>
 const pricePattern = (places: number) =>
   new RegExp(places === 0 ? '^\\d{0,7}$' : `^$|^\\d{1,7}([.,]\\d{${places}})?$`)
 
+/** The move that Enter in one of the boxes stands for: the price is what a quote has and a number has not. */
+export function moveOnEnter(
+  price: string,
+  can: { identified: boolean; quoted: boolean },
+): 'identified' | 'quoted' | null {
+  if (can.quoted && (price.trim() !== '' || !can.identified)) return 'quoted'
+  return can.identified ? 'identified' : null
+}
+
 /** Minor units as they are typed: `135.00`. */
 export const priceText = (minor: number, places: number): string =>
   (minor / 10 ** places).toFixed(places)

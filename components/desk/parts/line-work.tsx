@@ -1,6 +1,7 @@
 'use client'
 
 import { zodResolver } from '@hookform/resolvers/zod'
+import type { FormEvent, KeyboardEvent } from 'react'
 import { type Control, Controller, useForm } from 'react-hook-form'
 import { Field } from '@/components/ui/field'
 import { Hold } from '@/components/ui/hold'
@@ -17,6 +18,7 @@ import {
   type LineMoveForm,
   lineBoxes,
   minorOf,
+  moveOnEnter,
   priceText,
 } from './line-move.schema'
 
@@ -53,13 +55,16 @@ export function LineWork({ requestId, line, move }: Props) {
     send({ ...head, to: 'quoted', number: number === '' ? null : number, priceMinor })
   })
   const open = can('identified') || can('quoted')
+  function onEnter(event: FormEvent<HTMLFormElement>) {
+    event.preventDefault()
+    const moves = { identified: can('identified'), quoted: can('quoted') }
+    const to = busy ? null : moveOnEnter(getValues('price'), moves)
+    if (to !== null) void (to === 'quoted' ? quote : identify)(event)
+  }
   if (!open && !can('cancelled'))
     return <p className="text-second">Nothing to do on this line at the desk yet.</p>
   return (
-    <form
-      className="grid gap-3"
-      onSubmit={(event) => void (getValues('price') === '' ? identify : quote)(event)}
-    >
+    <form className="grid gap-3" onSubmit={onEnter} onKeyDown={submitOnEnter}>
       {open ? (
         <div className="desk-boxes">
           <Box control={control} name="number" label="Part number" />
@@ -92,6 +97,13 @@ export function LineWork({ requestId, line, move }: Props) {
       ) : null}
     </form>
   )
+}
+
+/** A form of several boxes whose keys do different things is submitted by no browser of itself. */
+function submitOnEnter(event: KeyboardEvent<HTMLFormElement>) {
+  if (event.key !== 'Enter' || !(event.target instanceof HTMLInputElement)) return
+  event.preventDefault()
+  event.currentTarget.requestSubmit()
 }
 
 type BoxProps = { control: Control<LineBoxes>; name: keyof LineBoxes; label: string }
