@@ -22,7 +22,7 @@ export default function SignInPage() {
       <SignedInAlready />
       <SignInForm />
       <p className="text-second text-ink2">
-        A phone that was signed in before opens <a href="/field">the field</a> without signal and
+        A phone where nobody signed out opens <a href="/field">the field</a> without signal and
         without signing in again. No password is kept on it.
       </p>
     </main>
