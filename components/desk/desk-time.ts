@@ -1,5 +1,3 @@
-import { clockTime, dayOf } from '../field/times'
-
 /** Times as the desk shows them: in the zone of the shop, never in the browser's. */
 const days = new Map<string, Intl.DateTimeFormat>()
 
@@ -10,13 +8,6 @@ export function dayName(at: string | number, zone: string): string {
     known ?? new Intl.DateTimeFormat('en-GB', { timeZone: zone, day: 'numeric', month: 'short' })
   if (!known) days.set(zone, made)
   return made.format(new Date(at))
-}
-
-/** `14:22` today, else `24 Nov 14:22`. `now` null (not known yet): always with the day. */
-export function whenWords(at: string, zone: string, now: number | null): string {
-  const time = clockTime(at, zone)
-  const isToday = now !== null && dayOf(new Date(now).toISOString(), zone) === dayOf(at, zone)
-  return isToday ? time : `${dayName(at, zone)} ${time}`
 }
 
 /** Hours and minutes of a length of time, `2:46`; never negative. */

@@ -2,8 +2,8 @@
 
 import { useEffect, useRef } from 'react'
 import { announce } from '@/components/ui/announce'
+import { whenWords } from '../field/when-words'
 import { useDesk } from './desk-context'
-import { whenWords } from './desk-time'
 import { useNow } from './use-now'
 
 /**

@@ -27,6 +27,10 @@ describe('[F14] a time goes with its day', () => {
     expect(whenWords(at, ZONE, ms(now))).toBe(words)
   })
 
+  it('[F14] while it is not known what day it is, the day is named', () => {
+    expect(whenWords('2026-11-24T20:05:00.000Z', ZONE, null)).toBe('24 Nov 14:05')
+  })
+
   it('[F14] unsent work says how old it is', () => {
     const item = { reason: null, waitsFor: null, since: '2026-11-21T20:05:00.000Z' } as UnsentItem
     const now = ms('2026-11-24T20:05:00.000Z')

@@ -2,9 +2,9 @@
 
 import { RuleEdge } from '@/components/ui/rule-edge'
 import type { BoardJob } from '@/lib/model/desk'
+import { whenWords } from '../../field/when-words'
 import { useDesk } from '../desk-context'
 import { deskPaths } from '../desk-path'
-import { whenWords } from '../desk-time'
 import { useNow } from '../use-now'
 
 /** Jobs closed in the last 24 hours, newest first. */

@@ -1,6 +1,6 @@
 import type { BoardJob } from '@/lib/model/desk'
+import { whenWords } from '../../field/when-words'
 import { counted } from '../../field/words'
-import { whenWords } from '../desk-time'
 
 /**
  * What of a job is at the shop. It knows which photos and voice notes are missing, because their entries

@@ -1,7 +1,7 @@
 import { Row } from '@/components/ui/row'
 import type { ImportAnswer } from '@/lib/sync/protocol/unsent-file'
 import { size } from '../../field/times'
-import { whenWords } from '../desk-time'
+import { whenWords } from '../../field/when-words'
 import { useNow } from '../use-now'
 import { listedTitle, outcomeWords } from './import-words'
 

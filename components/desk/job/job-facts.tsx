@@ -4,9 +4,9 @@ import type { ReactNode } from 'react'
 import type { DeskJob } from '@/lib/model/desk'
 import type { Job } from '@/lib/model/job'
 import type { Place } from '@/lib/model/place'
+import { whenWords } from '../../field/when-words'
 import { askedWords, counted, MACHINE_WORDS, PEOPLE_WORDS, WAY_OUT_WORDS } from '../../field/words'
 import { useDesk } from '../desk-context'
-import { whenWords } from '../desk-time'
 import { useNow } from '../use-now'
 
 /** Number, machine, last entry; people and machine beside each other (rule R2); the position. */

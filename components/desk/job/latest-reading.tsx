@@ -8,8 +8,8 @@ import type { BookIndex } from '@/lib/diag/book-index'
 import { living } from '@/lib/diag/case'
 import type { DeskJob } from '@/lib/model/desk'
 import type { LogEntry, ReadingBody } from '@/lib/model/log-entry'
+import { whenWords } from '../../field/when-words'
 import { useDesk } from '../desk-context'
-import { whenWords } from '../desk-time'
 import { useNow } from '../use-now'
 
 type Read = { at: string; body: ReadingBody }

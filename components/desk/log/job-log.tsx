@@ -9,8 +9,9 @@ import { strikes } from '@/lib/diag/case'
 import type { DeskJob } from '@/lib/model/desk'
 import type { LogRow } from '@/lib/model/log-entry'
 import { clockTime, span } from '../../field/times'
+import { whenWords } from '../../field/when-words'
 import { useDesk } from '../desk-context'
-import { dayName, whenWords } from '../desk-time'
+import { dayName } from '../desk-time'
 import { FileOf } from './file-of'
 
 /** Gaps over 20 min show as a broken wire with the time (design 5c). */

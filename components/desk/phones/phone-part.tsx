@@ -2,9 +2,9 @@
 
 import { RuleEdge } from '@/components/ui/rule-edge'
 import type { DeskPhone } from '@/lib/model/phones'
+import { whenWords } from '../../field/when-words'
 import { counted } from '../../field/words'
 import { useDesk } from '../desk-context'
-import { whenWords } from '../desk-time'
 import { givenName } from '../phone-name'
 import { useNow } from '../use-now'
 import type { DecideAction, RevokeAction } from './phone-actions'

@@ -4,9 +4,9 @@ import type { BookIndex } from '@/lib/diag/book-index'
 import type { DeskPhone, Quarantined } from '@/lib/model/phones'
 import { opTitle, refusalWords } from '@/lib/sync/client/unsent'
 import { span } from '../../field/times'
+import { whenWords } from '../../field/when-words'
 import { counted } from '../../field/words'
 import { actedSentence } from '../desk-sentences'
-import { whenWords } from '../desk-time'
 import type { Decided, PhoneProblem } from './phone-actions'
 
 /** The sentence for a refused or failed press. */
