@@ -1,48 +1,69 @@
 /**
- * Ways out as stops of the plan (rule R10: refusals before arithmetic). Limping out is only on the table once
- * the cause is as good as proved, the book lists it as one to limp on, and nothing refuses it.
+ * Ways out as stops of the plan (rule R10: refusals before arithmetic). Tow and return later are always there.
+ * Limping out never is: most of what forbids it nobody has been asked before the way-out screen, and a plan
+ * that counts on a ride which is then refused is worse than none. It is listed as left out, with the reason.
  */
 import type { Reckoning } from './belief'
 import type { Case } from './case'
 import type { LeftOut, Means } from './plan-means'
 import type { SingleModel } from './troubleshoot-model'
+import { CAUSE_KNOWN, type LimpRefusal, limpRefusals } from './way-out'
 
-/** The cause counts as known from this chance on. */
-export const CAUSE_KNOWN = 0.9
-/** Minutes of a ride out at walking pace (common practice, no source). */
-const LIMP_MINUTES = 30
-
-/** Tow and return later always; limp out only where nothing refuses it, else with the reason. */
+/** Tow and return later, and why limping out is not among them. */
 export function stopsOf(
   c: Case,
   { shop }: Means,
-  { suspects, last }: Reckoning,
+  reckoning: Reckoning,
 ): { stops: SingleModel['stops']; leftOut: LeftOut[] } {
-  const costByFault = laterCosts(c, { shop, faults: suspects.map((s) => s.fault) })
-  const stops = [
-    { id: 'tow', cost: shop.towMinor, costByFault },
-    { id: 'returnLater', cost: shop.recoveryMinor, costByFault },
-  ]
-  const highest = Math.max(...last.marginals)
-  const top = last.marginals.indexOf(highest)
-  const fault = c.index.faults.get(suspects[top]?.fault ?? '')
-  const refused = (reason: string) => ({
-    stops,
-    leftOut: [{ id: 'limpOut', kind: 'stop' as const, reason }],
-  })
-  if (fault === undefined || highest < CAUSE_KNOWN)
-    return refused('Limping out is refused while the cause is not known.')
-  if (fault.limpRefused !== null) return refused(fault.limpRefused)
-  if (fault.wayOut !== 'limpOut') return refused('Not a fault to ride out on.')
-  const others = suspects.filter((s) => s.fault !== fault.id).map((s) => s.fault)
-  const strandedAgain = Object.fromEntries(others.map((id) => [id, shop.towMinor]))
-  const limp = {
-    id: 'limpOut',
-    cost: 0,
-    minutes: LIMP_MINUTES,
-    costByFault: added(costByFault, strandedAgain),
+  const faults = reckoning.suspects.map((s) => s.fault)
+  const costByFault = laterCosts(c, { shop, faults })
+  return {
+    stops: [
+      { id: 'tow', cost: shop.towMinor, costByFault },
+      { id: 'returnLater', cost: shop.recoveryMinor, costByFault },
+    ],
+    leftOut: [{ id: 'limpOut', kind: 'stop', reason: whyNotLimp(c, reckoning) }],
   }
-  return { stops: [...stops, limp], leftOut: [] }
+}
+
+/** The first reason on record against a limp out; without one, that the rest has to be asked. */
+function whyNotLimp(c: Case, { suspects, last }: Reckoning): string {
+  const held = suspects
+    .map(({ fault }, i) => {
+      const name = c.index.faults.get(fault)?.name ?? fault
+      return { fault, name, chance: last.marginals[i] ?? 0, ruledOutBy: null }
+    })
+    .sort((a, b) => b.chance - a.chance)
+  const [refusal] = limpRefusals({
+    // Whether somebody is hurt, and what is said by hand, the way-out screen asks.
+    job: { people: { count: 1, hurt: false, missing: false, exposed: false }, before: [] },
+    features: c.features,
+    entries: c.entries,
+    suspects: held,
+    index: c.index,
+    said: [],
+  })
+  if (refusal !== undefined) return refusalWords(refusal)
+  const [top] = held
+  if (top === undefined || top.chance < CAUSE_KNOWN)
+    return 'Not advised while the cause is not known.'
+  return c.index.faults.get(top.fault)?.wayOut === 'limpOut'
+    ? 'The code book lists this as a fault to ride out on. Way out asks first what forbids it.'
+    : 'Not a fault to ride out on.'
+}
+
+function refusalWords(refusal: LimpRefusal): string {
+  switch (refusal.kind) {
+    case 'emptyBattery':
+      return `Refused: the battery read ${refusal.asTyped} ${refusal.unit} at rest; ${refusal.emptyAtVolts} V and less count as empty.`
+    case 'faultForbids':
+      return refusal.bookWords
+    case 'causeUnknown':
+      return 'Limping out is refused while the cause is not known.'
+    case 'hurt':
+    case 'said':
+      return 'Refused by what was said.'
+  }
 }
 
 /** What each fault still costs once the machine is out: its repair is only put off, never spared. */
@@ -59,9 +80,4 @@ function laterCosts(
     costs[fault] = repair.costMinor + (part?.genuineMinor ?? 0) + work
   }
   return costs
-}
-
-function added(a: Record<string, number>, b: Record<string, number>): Record<string, number> {
-  const keys = [...new Set([...Object.keys(a), ...Object.keys(b)])]
-  return Object.fromEntries(keys.map((k) => [k, (a[k] ?? 0) + (b[k] ?? 0)]))
 }

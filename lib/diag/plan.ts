@@ -162,7 +162,6 @@ function plannedAction(c: Case, means: Means, row: Row): PlannedAction {
 const STOP_NAMES: Record<string, string> = {
   tow: 'Tow it out',
   returnLater: 'Return later',
-  limpOut: 'Limp out',
 }
 
 const SEVERITY = ['DANGER', 'WARNING', 'CAUTION', 'NOTICE']

@@ -29,7 +29,10 @@ export type SaidByHand = (typeof SAID_BY_HAND)[number]
 /** A suspect at this chance (0 to 1) or more is likely enough for its own refusal to count (guess). */
 const LIKELY = 0.25
 /** The cause counts as known from this chance (0 to 1) on, or with a fix on record (guess). */
-const KNOWN = 0.9
+export const CAUSE_KNOWN = 0.9
+
+/** A suspect as far as a way out asks of it. */
+type Held = Pick<Suspect, 'fault' | 'name' | 'chance' | 'ruledOutBy'>
 
 /** What a way out is judged from. What is null is not known yet, and what it would refuse is not judged. */
 export type WayOutFacts = {
@@ -38,7 +41,7 @@ export type WayOutFacts = {
   /** The whole job log; superseded and corrected entries are left out here. */
   entries: readonly LogEntry[]
   /** Most likely first, as the belief gives them; null while they are not worked out. */
-  suspects: readonly Suspect[] | null
+  suspects: readonly Held[] | null
   index: BookIndex | null
   said: readonly SaidByHand[]
 }
@@ -98,13 +101,13 @@ function emptyBattery(entries: readonly LogEntry[], index: BookIndex | null): Li
   return [{ kind: 'emptyBattery', ...battery }]
 }
 
-const open = (suspects: readonly Suspect[] | null) =>
+const open = (suspects: readonly Held[] | null) =>
   (suspects ?? []).filter((one) => one.ruledOutBy === null)
 
 function unknownCause({ features, suspects }: WayOutFacts): LimpRefusal[] {
   if (suspects === null) return []
   const top = open(suspects)[0]
-  const known = top !== undefined && top.fault !== SOMETHING_ELSE && top.chance >= KNOWN
+  const known = top !== undefined && top.fault !== SOMETHING_ELSE && top.chance >= CAUSE_KNOWN
   if (known || features.strokes === 'four') return []
   return [{ kind: 'causeUnknown', strokes: features.strokes === 'two' ? 'two' : 'notKnown' }]
 }

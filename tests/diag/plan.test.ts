@@ -188,15 +188,52 @@ describe('[E2] what is left out, and why', () => {
     const proved = [code(1268, 3), swapped('spareFitted', false), swapped('oldRefitted', true)]
     expect(reason(plan(proved), 'limpOut')).toBe('Not a fault to ride out on.')
   })
-  it('[R10] it is offered once the cause is as good as proved and the book lists it as one to ride on', () => {
+  describe('[R10] with the cause as good as proved and a fault the book lists as one to ride on', () => {
     const weak: LogBody = { kind: 'symptom', symptom: 'weak', conditions: [], words: null }
     const bodies = [checked('flow', 'bad'), checked('spark', 'fine'), checked('plug', 'good'), weak]
-    const at90 = belief(at(...bodies)).suspects[0]!
-    expect(at90).toMatchObject({ fault: 'filter' })
-    expect(at90.chance).toBeGreaterThan(0.9)
-    const got = plan(bodies)
-    expect([got.next, got.runnerUp, ...got.others].map((a) => a?.id)).toContain('limpOut')
-    expect(reason(got, 'limpOut')).toBeUndefined()
+    const reading = {
+      quantity: 'dcVoltage',
+      component: 'battery',
+      value: 'restVolts',
+      fallback: null,
+      good: [],
+      byFault: {},
+    } as const
+    const batteryCheck = check('restingBattery', {}, { reading })
+    const index = indexBook({
+      version: 1,
+      hash: '',
+      publishedAt: '',
+      items: [...SMALL_ITEMS, batteryCheck],
+    })
+    const rest = (asTyped: string) =>
+      ohms(Number(asTyped), {
+        checkId: 'restingBattery',
+        quantity: 'dcVoltage',
+        unit: 'V',
+        asTyped,
+        spec: null,
+      })
+    const planOf = (...more: LogBody[]) =>
+      nextStep(caseOf(log(...bodies, ...more), { index, meter: pocketMeter }), means())
+    const actions = (p: ReturnType<typeof nextStep>) =>
+      [p.next, p.runnerUp, ...p.others].map((a) => a?.id)
+
+    it('[R10] it is never advised, as nobody was asked yet what forbids it', () => {
+      const at90 = belief(at(...bodies)).suspects[0]!
+      expect(at90).toMatchObject({ fault: 'filter' })
+      expect(at90.chance).toBeGreaterThan(0.9)
+      expect(actions(planOf())).not.toContain('limpOut')
+      expect(reason(planOf(), 'limpOut')).toMatch(/asks first what forbids it/)
+    })
+    it('[R10] a battery read at 11.8 V refuses it by name, one at 12.4 V does not', () => {
+      const flat = planOf(rest('11.80'))
+      expect(reason(flat, 'limpOut')).toBe(
+        'Refused: the battery read 11.80 V at rest; 11.9 V and less count as empty.',
+      )
+      expect(actions(flat)).not.toContain('limpOut')
+      expect(reason(planOf(rest('12.40')), 'limpOut')).toMatch(/asks first/)
+    })
   })
   it('[R4] a check for other machines is not even listed', () => {
     const two = check('reeds', { coil: [10, 90] }, { gate: { fuelling: ['carburettor'] } })
