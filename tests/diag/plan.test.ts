@@ -4,6 +4,7 @@ import { indexBook } from '@/lib/diag/book-index'
 import { type Means, nextStep } from '@/lib/diag/plan'
 import { LUMP, planModel } from '@/lib/diag/plan-model'
 import { nextAction } from '@/lib/diag/troubleshoot'
+import type { CheckItem } from '@/lib/model/code-book'
 import type { LogBody } from '@/lib/model/log-entry'
 import {
   caseOf,
@@ -191,14 +192,14 @@ describe('[E2] what is left out, and why', () => {
   describe('[R10] with the cause as good as proved and a fault the book lists as one to ride on', () => {
     const weak: LogBody = { kind: 'symptom', symptom: 'weak', conditions: [], words: null }
     const bodies = [checked('flow', 'bad'), checked('spark', 'fine'), checked('plug', 'good'), weak]
-    const reading = {
+    const reading: NonNullable<CheckItem['reading']> = {
       quantity: 'dcVoltage',
       component: 'battery',
       value: 'restVolts',
       fallback: null,
       good: [],
       byFault: {},
-    } as const
+    }
     const batteryCheck = check('restingBattery', {}, { reading })
     const index = indexBook({
       version: 1,
