@@ -1,8 +1,9 @@
 import { createElement } from 'react'
 import { renderToStaticMarkup } from 'react-dom/server'
 import { describe, expect, it } from 'vitest'
+import { isAllHanded } from '@/components/field/phone/hand-over'
 import { handedWords, letGoWords } from '@/components/field/phone/let-go-words'
-import { handFilesOver } from '@/components/field/phone/save-files'
+import { makeFiles } from '@/components/field/phone/save-files'
 import { standing, titleOf } from '@/components/field/phone/unsent-words'
 import { countNews } from '@/components/field/shell'
 import { WitnessMark } from '@/components/ui/witness-mark'
@@ -78,10 +79,11 @@ describe('[P23] what is said of unsent work is true', () => {
 
 describe('[P16] letting go asks for the file first', () => {
   it('[P16] names each file and never says that one was saved', () => {
-    expect(handedWords(['a.json'])).toBe(
+    expect(handedWords(['a.json'], 1)).toBe(
       'Handed to the browser as a.json. Look among its downloads that it is there.',
     )
-    expect(handedWords(['a.json', 'b.json'])).toContain('a.json and b.json')
+    expect(handedWords(['a.json', 'b.json'], 2)).toContain('a.json and b.json')
+    expect(handedWords(['a.json'], 3)).toContain('2 more files to hand over')
     expect(
       letGoWords({ kind: 'photoBytes', code: 'wrongPicture' }, 'Photo', ['a.json', 'b.json']),
     ).toEqual({
@@ -97,6 +99,20 @@ describe('[P16] letting go asks for the file first', () => {
 
   it('[P16] a file that cannot be made stops it', async () => {
     const exportFiles = () => Promise.reject(new Error('no room'))
-    await expect(handFilesOver({ exportFiles }, '2026-11-24T18:00:00.000Z')).rejects.toThrow()
+    await expect(makeFiles({ exportFiles }, '2026-11-24T18:00:00.000Z')).rejects.toThrow()
+  })
+
+  it('[P16] each of several files has its name, and all must have gone to the browser', async () => {
+    const exportFiles = async () => [new Blob(['a']), new Blob(['b'])]
+    const files = await makeFiles({ exportFiles }, '2026-11-24T18:05:00.000Z')
+    const names = files.map(({ name }) => name)
+    expect(names).toEqual([
+      'farbench-unsent-2026-11-24-18-05-1.json',
+      'farbench-unsent-2026-11-24-18-05-2.json',
+    ])
+    expect(isAllHanded({ files: null, handed: [] })).toBe(false)
+    expect(isAllHanded({ files: [], handed: [] })).toBe(false)
+    expect(isAllHanded({ files, handed: names.slice(0, 1) })).toBe(false)
+    expect(isAllHanded({ files, handed: names })).toBe(true)
   })
 })

@@ -1,4 +1,5 @@
 import type { UnsentItem } from '@/components/store/use-unsent'
+import { counted } from '../words'
 
 /** Names in a row: "a", "a and b", "a, b and c". */
 const listed = (names: readonly string[]): string =>
@@ -6,11 +7,13 @@ const listed = (names: readonly string[]): string =>
     ? (names[0] ?? 'the file')
     : `${names.slice(0, -1).join(', ')} and ${names[names.length - 1]}`
 
-/** Said once the files went to the browser, which does not tell whether it kept them. */
-export const handedWords = (names: readonly string[]): string =>
-  `Handed to the browser as ${listed(names)}. Look among its downloads that ${
-    names.length > 1 ? 'all of them are' : 'it is'
-  } there.`
+/** Said once files went to the browser, which does not tell whether it kept them. `all`: how many there are. */
+export function handedWords(names: readonly string[], all: number): string {
+  const there = names.length > 1 ? 'all of them are' : 'it is'
+  const left = all - names.length
+  const more = left > 0 ? ` ${counted(left, 'more file', 'more files')} to hand over.` : ''
+  return `Handed to the browser as ${listed(names)}. Look among its downloads that ${there} there.${more}`
+}
 
 /** What letting go does to this one thing, and what is asked before. */
 export function letGoWords(

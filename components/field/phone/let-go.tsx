@@ -1,14 +1,12 @@
 'use client'
 
 import { FileDown } from 'lucide-react'
-import { useState } from 'react'
-import { useStamp } from '@/components/store/use-stamp'
 import { type UnsentItem, useUnsent } from '@/components/store/use-unsent'
 import { announce } from '@/components/ui/announce'
 import { Hold } from '@/components/ui/hold'
 import { Key } from '@/components/ui/key'
-import { handedWords, letGoWords } from './let-go-words'
-import { handFilesOver } from './save-files'
+import { HandedFiles, isAllHanded, useHandingOver } from './hand-over'
+import { letGoWords } from './let-go-words'
 
 type Props = { item: UnsentItem; name: string; failed: () => void }
 
@@ -19,27 +17,21 @@ type Props = { item: UnsentItem; name: string; failed: () => void }
  */
 export function LetGo({ item, name, failed }: Props) {
   const unsent = useUnsent()
-  const stamp = useStamp()
-  const [files, setFiles] = useState<readonly string[] | null>(null)
-  const handOver = async () => {
-    const names = await handFilesOver(unsent, stamp.now())
-    setFiles(names)
-    announce(handedWords(names))
-  }
+  const handing = useHandingOver()
   const letGo = async () => {
     await unsent.letGo(item)
     announce(`${name} let go.`)
   }
-  const words = letGoWords(item, name, files ?? [])
+  const words = letGoWords(item, name, handing.handed)
   return (
     <>
-      <Key small onClick={() => void handOver().catch(failed)}>
+      <Key small onClick={() => void handing.begin().catch(failed)}>
         <FileDown aria-hidden="true" strokeWidth={2.5} />
-        {files === null ? 'Let go: the file first' : 'The file once more'}
+        {handing.files === null ? 'Let go: the file first' : 'Make the file once more'}
       </Key>
-      {files === null ? null : (
+      <HandedFiles handing={handing} />
+      {isAllHanded(handing) ? (
         <>
-          <p className="text-second font-bold">{handedWords(files)}</p>
           <p className="text-second">{words.after}</p>
           <Hold
             label={words.label}
@@ -48,7 +40,7 @@ export function LetGo({ item, name, failed }: Props) {
             onConfirm={() => void letGo().catch(failed)}
           />
         </>
-      )}
+      ) : null}
     </>
   )
 }

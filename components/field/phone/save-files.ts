@@ -1,24 +1,26 @@
 import type { UnsentActs } from '@/components/store/use-unsent'
 import type { Instant } from '@/lib/model/time'
 
-/**
- * Hands all unsent work to the browser as files, one after the other; answers their names. Whether the
- * browser kept them it does not say: nothing may be deleted on the strength of this alone.
- */
-export async function handFilesOver(
+export type NamedFile = { name: string; file: Blob }
+
+/** All unsent work as named files, mostly one: more when the photos do not fit in one. */
+export async function makeFiles(
   unsent: Pick<UnsentActs, 'exportFiles'>,
   now: Instant,
-): Promise<string[]> {
+): Promise<NamedFile[]> {
   const files = await unsent.exportFiles()
   const stem = `farbench-unsent-${now.slice(0, 16).replace(/[:T]/g, '-')}`
-  return files.map((file, index) => {
-    const name = files.length === 1 ? `${stem}.json` : `${stem}-${index + 1}.json`
-    download(file, name)
-    return name
-  })
+  return files.map((file, index) => ({
+    file,
+    name: files.length === 1 ? `${stem}.json` : `${stem}-${index + 1}.json`,
+  }))
 }
 
-function download(file: Blob, name: string): void {
+/**
+ * Hands one file to the browser. Whether it kept it, it does not say: nothing may be deleted on the strength of
+ * this alone. One file for each press, as many browsers take no second one.
+ */
+export function handToBrowser({ file, name }: NamedFile): void {
   const url = URL.createObjectURL(file)
   const link = document.createElement('a')
   link.href = url

@@ -3,15 +3,12 @@
 import { FileDown, Lock } from 'lucide-react'
 import { useEffect, useRef, useState } from 'react'
 import { useSigningOut } from '@/components/store/use-sign-out'
-import { useStamp } from '@/components/store/use-stamp'
-import { useUnsent } from '@/components/store/use-unsent'
 import { announce } from '@/components/ui/announce'
 import { Caution } from '@/components/ui/caution'
 import { Hold } from '@/components/ui/hold'
 import { Key } from '@/components/ui/key'
 import { counted } from '../words'
-import { handedWords } from './let-go-words'
-import { handFilesOver } from './save-files'
+import { HandedFiles, useHandingOver } from './hand-over'
 
 type Stage =
   | { is: 'ready' }
@@ -83,13 +80,8 @@ function Asking(of: {
   onDelete: () => void
 }) {
   const box = useFocused<HTMLHeadingElement>()
-  const unsent = useUnsent()
-  const stamp = useStamp()
   const [news, setNews] = useState<string | null>(null)
-  const handOver = async () => {
-    const names = await handFilesOver(unsent, stamp.now())
-    setNews(`${handedWords(names)} It stays unsent here until the shop has it.`)
-  }
+  const handing = useHandingOver()
   return (
     <section aria-labelledby="sign-out-title" className="grid gap-3 border-2 border-ink p-3">
       <h2 id="sign-out-title" ref={box} tabIndex={-1} className="text-row font-bold">
@@ -99,12 +91,13 @@ function Asking(of: {
       <p role="status" className="font-bold empty:hidden">
         {news}
       </p>
+      <HandedFiles handing={handing} after="It stays unsent here until the shop has it." />
       <Key kind="plate" onClick={of.onStay}>
         Stay signed in
       </Key>
       <Key
         onClick={() => {
-          handOver().catch(() => setNews('The file could not be made. Everything is kept.'))
+          handing.begin().catch(() => setNews('The file could not be made. Everything is kept.'))
         }}
       >
         <FileDown aria-hidden="true" strokeWidth={2.5} />

@@ -4,9 +4,7 @@ import { FileDown, ShieldAlert, ShieldCheck } from 'lucide-react'
 import { useState } from 'react'
 import { of100 } from '@/components/reading-strip/figures'
 import { useSession } from '@/components/store/use-session'
-import { useStamp } from '@/components/store/use-stamp'
 import { useSendsClosed, useUnsent } from '@/components/store/use-unsent'
-import { announce } from '@/components/ui/announce'
 import { Key, KeyLink } from '@/components/ui/key'
 import { Screen } from '@/components/ui/screen'
 import { WitnessMark } from '@/components/ui/witness-mark'
@@ -15,8 +13,7 @@ import { witnessState } from '../shell'
 import { size, span } from '../times'
 import { useNow } from '../use-now'
 import { counted } from '../words'
-import { handedWords } from './let-go-words'
-import { handFilesOver } from './save-files'
+import { HandedFiles, useHandingOver } from './hand-over'
 import { Items, splitItems } from './unsent-item'
 import {
   isNearlyFull,
@@ -153,30 +150,27 @@ function Aside() {
 function Ways() {
   const unsent = useUnsent()
   const session = useSession()
-  const stamp = useStamp()
   const [news, setNews] = useState<string | null>(null)
   const trySending = async () => {
     setNews('Calling the shop.')
     await unsent.trySending()
     setNews(null)
   }
-  const handOver = async () => {
-    const names = await handFilesOver(unsent, stamp.now())
-    setNews(
-      `${handedWords(names)} Whoever holds it can read it. The desk takes it in; here it stays unsent until the shop has it.`,
-    )
-    announce(handedWords(names))
-  }
+  const handing = useHandingOver()
   const failed = () => setNews('That did not work. Everything is still saved on this phone.')
   return (
     <>
       <p role="status" className="text-second font-bold empty:hidden">
         {news}
       </p>
+      <HandedFiles
+        handing={handing}
+        after="Whoever holds it can read it. The desk takes it in; here it stays unsent until the shop has it."
+      />
       {unsent.count > 0 || unsent.letGoCount > 0 ? (
         <Key
           onClick={() => {
-            handOver().catch(failed)
+            handing.begin().catch(failed)
           }}
         >
           <FileDown aria-hidden="true" strokeWidth={2.5} />
