@@ -49,3 +49,19 @@ test('the desk is clean for assistive tools', async ({ desk }) => {
     await expectClean(page)
   }
 })
+
+test('a screen that had to be fetched has the focus on its title', async ({ phone }) => {
+  const page = await phone.open('/login')
+  await signIn(page, 'mechanic@demo.invalid', /\/field$/)
+  await expect(page.getByText(/Code book version \d/)).toBeVisible({ timeout: 60_000 })
+  const titled = (name: string) => page.getByRole('heading', { level: 1, name, exact: true })
+  await page.getByRole('link', { name: 'What this phone holds' }).click()
+  await expect(titled('This phone')).toBeFocused()
+  await page.goBack()
+  await expect(titled('Jobs')).toBeFocused()
+  await page.getByRole('link', { name: 'New job' }).click()
+  await expect(page).toHaveURL(/\/field\/new$/)
+  await expect(page.getByRole('heading', { level: 1 })).toBeFocused()
+  await phone.open('/field/jobs/01980000-0000-7000-8000-00000000dead/checks')
+  await expect(titled('Not on this phone')).toBeVisible()
+})
