@@ -29,51 +29,30 @@ export const isAsking = (press: { detail: number }, wasHeld: boolean): boolean =
 
 /** Hold 800 ms to confirm, or press once and answer with one of two keys. */
 export function Hold({ label, question, confirmLabel, onConfirm, disabled = false }: Props) {
-  const [held, setHeld] = useState(false)
   const [asking, setAsking] = useState(false)
-  const timer = useRef<ReturnType<typeof setTimeout> | null>(null)
-  const done = useRef<boolean>(false)
-  const letGo = () => {
-    if (timer.current !== null) {
-      clearTimeout(timer.current)
-      timer.current = null
-    }
-    setHeld(false)
-  }
-  useEffect(() => () => (timer.current === null ? undefined : clearTimeout(timer.current)), [])
   const key = useRef<HTMLButtonElement>(null)
-  const answer = () => {
+  const holding = useHolding(disabled, () => {
+    setAsking(false)
+    onConfirm()
+  })
+  // The two keys go away under the focus: it goes back to the one that asked.
+  const close = () => {
     setAsking(false)
     key.current?.focus()
-  }
-  const press = (event: { button: number }) => {
-    if (!isHeldDown(event, disabled)) {
-      return
-    }
-    done.current = false
-    setHeld(true)
-    timer.current = setTimeout(() => {
-      done.current = true
-      letGo()
-      setAsking(false)
-      onConfirm()
-    }, HOLD_MS)
   }
   return (
     <div className="grid gap-2">
       <Key
         ref={key}
         disabled={disabled}
-        className={classes('relative w-full select-none', held && 'hold-on')}
-        onPointerDown={press}
-        onPointerUp={letGo}
-        onPointerLeave={letGo}
-        onPointerCancel={letGo}
+        className={classes('relative w-full select-none', holding.held && 'hold-on')}
+        onPointerDown={holding.press}
+        onPointerUp={holding.release}
+        onPointerLeave={holding.release}
+        onPointerCancel={holding.release}
         onContextMenu={(e) => e.preventDefault()}
         onClick={(event) => {
-          const asks = isAsking(event, done.current)
-          done.current = false
-          if (asks) {
+          if (isAsking(event, holding.endOfHold())) {
             setAsking(true)
           }
         }}
@@ -85,14 +64,14 @@ export function Hold({ label, question, confirmLabel, onConfirm, disabled = fals
         <fieldset className="grid gap-2 border-2 border-ink p-3">
           <legend className="px-1 font-bold">{question}</legend>
           <div className="grid grid-cols-1 gap-2 slim:grid-cols-2">
-            <Key small onClick={answer}>
+            <Key small onClick={close}>
               No
             </Key>
             <Key
               small
               kind="plate"
               onClick={() => {
-                answer()
+                close()
                 onConfirm()
               }}
             >
@@ -107,4 +86,38 @@ export function Hold({ label, question, confirmLabel, onConfirm, disabled = fals
       )}
     </div>
   )
+}
+
+/** The finger on the key: calls `onHeld` once it has stayed long enough. */
+function useHolding(disabled: boolean, onHeld: () => void) {
+  const [held, setHeld] = useState(false)
+  const timer = useRef<ReturnType<typeof setTimeout> | null>(null)
+  const done = useRef<boolean>(false)
+  const release = () => {
+    if (timer.current !== null) {
+      clearTimeout(timer.current)
+      timer.current = null
+    }
+    setHeld(false)
+  }
+  useEffect(() => () => (timer.current === null ? undefined : clearTimeout(timer.current)), [])
+  const press = (event: { button: number }) => {
+    if (!isHeldDown(event, disabled)) {
+      return
+    }
+    done.current = false
+    setHeld(true)
+    timer.current = setTimeout(() => {
+      done.current = true
+      release()
+      onHeld()
+    }, HOLD_MS)
+  }
+  /** Whether the press that is ending now was a hold; asked once. */
+  const endOfHold = () => {
+    const was = done.current
+    done.current = false
+    return was
+  }
+  return { held, press, release, endOfHold }
 }

@@ -43,16 +43,7 @@ function Codes({ facts }: { facts: JobFacts }) {
   const mine = useMayLog('code')
   const writing = mine && (adding > 0 || codes.length === 0 || draft.value !== EMPTY_CODE)
   const takeDown = () => setAdding((times) => times + 1)
-  // After a save the focus goes to the meaning of what was just taken down.
-  useEffect(() => {
-    if (fresh !== null && codes.some((c) => c.id === fresh)) {
-      document
-        .getElementById(`code-${fresh}`)
-        ?.querySelector<HTMLElement>('[data-meaning]')
-        ?.focus()
-      setFresh(null)
-    }
-  }, [fresh, codes])
+  useFocusOnMeaning(fresh, codes, () => setFresh(null))
   return (
     <Screen
       title="Codes"
@@ -101,6 +92,19 @@ function Codes({ facts }: { facts: JobFacts }) {
       />
     </Screen>
   )
+}
+
+/** After a save the focus goes to the meaning of what was just taken down. */
+function useFocusOnMeaning(fresh: string | null, codes: readonly CodeEntry[], done: () => void) {
+  useEffect(() => {
+    if (fresh !== null && codes.some((code) => code.id === fresh)) {
+      document
+        .getElementById(`code-${fresh}`)
+        ?.querySelector<HTMLElement>('[data-meaning]')
+        ?.focus()
+      done()
+    }
+  }, [fresh, codes, done])
 }
 
 type OneProps = {

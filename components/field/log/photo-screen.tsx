@@ -58,15 +58,7 @@ function TakePhoto({ jobId }: { jobId: string }) {
         )
       }
     >
-      {shown === null ? null : (
-        <figure>
-          <Photo url={shown.url} alt="What was just taken" className="w-full" />
-          <figcaption className="pt-1 text-second text-ink2">
-            {shown.photo.width} × {shown.photo.height}, {size(shown.photo.bytes.byteLength)}. Not
-            saved yet: it is held while the app stays open.
-          </figcaption>
-        </figure>
-      )}
+      {shown === null ? null : <NotSavedYet shown={shown} />}
       <PhotoKey
         words={shown === null ? 'Take a photo' : 'Take it again'}
         plate={shown === null}
@@ -86,6 +78,18 @@ function TakePhoto({ jobId }: { jobId: string }) {
       />
       <DraftSign kept={kept} />
     </Screen>
+  )
+}
+
+function NotSavedYet({ shown }: { shown: Shown }) {
+  return (
+    <figure>
+      <Photo url={shown.url} alt="What was just taken" className="w-full" />
+      <figcaption className="pt-1 text-second text-ink2">
+        {shown.photo.width} × {shown.photo.height}, {size(shown.photo.bytes.byteLength)}. Not saved
+        yet: it is held while the app stays open.
+      </figcaption>
+    </figure>
   )
 }
 
