@@ -12,7 +12,7 @@ import { type Evidence, nothing, type Sight, tableOf } from './evidence-table'
 import { type Factor, tableFactor } from './factor'
 import { between } from './normal'
 import { canDecide, judge, middleOf } from './reading'
-import { budgetOf } from './reading-budget'
+import { budgetOf, partTempsApart } from './reading-budget'
 
 /** Share of readings that have nothing to do with the part (slipped probe, wrong pin; guess). */
 const OUTLIERS = 0.02
@@ -29,7 +29,7 @@ export function readingEvidence(sight: Sight, entry: LogEntry, body: ReadingBody
   const twin = twinOf(sight.c, body)
   const model = check.reading
   const nominal = model === null ? null : nominalOf(body.spec, model)
-  if (twin !== null && agrees(body, twin) && !decides(body))
+  if (isShedByTwin(sight.c, body))
     return nothing(entry, 'reading', `${label}: a good one reads the same, so it says nothing`)
   if (model === null || nominal === null)
     return { ...nothing(entry, 'reading', label), factor: verdictFactor(sight, check, body) }
@@ -38,6 +38,12 @@ export function readingEvidence(sight: Sight, entry: LogEntry, body: ReadingBody
     ...nothing(entry, 'reading', label),
     factor: densityFactor(sight, model, { shown, nominal }),
   }
+}
+
+/** Whether a good twin reads the same and the meter cannot decide the figure: then the check says nothing. */
+export function isShedByTwin(c: Case, body: ReadingBody): boolean {
+  const twin = twinOf(c, body)
+  return twin !== null && agrees(body, twin) && !decides(body)
 }
 
 /** The value the pieces are factors of: the sheet's nominal, the middle of its limits, else the book's fallback; never 0. */
@@ -60,14 +66,18 @@ export function twinOf({ entries }: Case, { checkId, quantity }: ReadingBody): R
   return found?.body.kind === 'reading' ? found.body : null
 }
 
-/** u of the difference of two readings. With the same meter and leads only gain, steps and contact remain. */
+/**
+ * u of the difference of two readings. With the same meter and leads gain, steps and contact remain, and the
+ * temperature of the parts: a hot suspect and a cold twin do not share it.
+ */
 export function differenceU(a: ReadingBody, b: ReadingBody): number {
   if (!sameSetUp(a, b)) return Math.hypot(budgetOf(a).standardU, budgetOf(b).standardU)
   const { percent, resolution } = a.meterFunction
   const gain = (percent / 100) * Math.abs(a.value - b.value)
   const step = resolution / 2
   const contact = a.quantity === 'resistance' ? step : 0
-  return Math.sqrt((gain ** 2 + 2 * step ** 2 + contact ** 2) / 3)
+  const warmth = partTempsApart(a, b).reduce((sum, halfWidth) => sum + halfWidth ** 2, 0)
+  return Math.sqrt((gain ** 2 + 2 * step ** 2 + contact ** 2 + warmth) / 3)
 }
 
 /** Whether suspect and twin read alike within U = 2u of their difference. */

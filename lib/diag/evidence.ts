@@ -7,7 +7,7 @@ import type { CodeContext, CodeSeen } from '@/lib/model/code-seen'
 import type { LogBody, LogEntry } from '@/lib/model/log-entry'
 import type { Case } from './case'
 import { codeMeaning, roleOf100 } from './code-words'
-import { readingEvidence } from './evidence-reading'
+import { isShedByTwin, readingEvidence } from './evidence-reading'
 import { runEvidence } from './evidence-run'
 import { swapEvidence } from './evidence-swap'
 import { type Evidence, nothing, type Sight, sightOf, tableOf } from './evidence-table'
@@ -110,15 +110,26 @@ function checkEvidence(
   if (check === undefined) return nothing(entry, 'check', label)
   const at = outcomeAt(check.outcomes, body.outcome)
   if (at === null) return nothing(entry, 'check', `${label}: ${body.outcome}`)
-  const read = sight.c.entries.some(
-    (e) =>
-      e.body.kind === 'reading' && e.body.checkId === body.checkId && e.body.subject === 'suspect',
-  )
   const said = `${label}: ${check.outcomes[at]?.name ?? body.outcome}`
-  if (read) return nothing(entry, 'check', `${said} (counted by its reading)`)
+  const silenced = silencedBy(sight, body.checkId)
+  if (silenced !== null) return nothing(entry, 'check', `${said} (${silenced})`)
   const weights = check.outcomes.map((_, k) => (k === at ? 1 : 0))
   const factor = tableFactor(tableOf(sight.place, check), weights)
   return { ...nothing(entry, 'check', said), factor }
+}
+
+/**
+ * Why the outcome pressed by hand does not count beside the check's newest reading; null when it does, as the
+ * reading alone moves nothing (no limits and no figure to hold it against).
+ */
+function silencedBy(sight: Sight, checkId: string): string | null {
+  const entry = sight.c.entries.findLast(
+    ({ body }) => body.kind === 'reading' && body.checkId === checkId && body.subject === 'suspect',
+  )
+  if (entry?.body.kind !== 'reading') return null
+  if (isShedByTwin(sight.c, entry.body)) return 'a good one reads the same, so it says nothing'
+  const { factor } = readingEvidence(sight, entry, entry.body)
+  return factor === null ? null : 'counted by its reading'
 }
 
 /** Where an outcome stands: by its own id, else `good` is the first and `bad` the last; null for any other. */
@@ -133,8 +144,8 @@ const checkName = ({ c }: Sight, id: string): string => c.index.checks.get(id)?.
 
 function keyOf(body: LogBody): string | null {
   switch (body.kind) {
+    // A later "could not" takes nothing back: it says nothing, so it has no key.
     case 'check':
-    case 'couldNot':
       return `check ${body.checkId}`
     case 'reading':
       return `reading ${body.subject} ${body.checkId}`

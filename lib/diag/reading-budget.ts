@@ -140,6 +140,25 @@ function partTempWidths({ spec, partTempC }: ReadingInput, estimate: number): Wi
   return [{ source: SOURCES.partTemp, halfWidth: size * NTC_PER_KELVIN * kelvins }]
 }
 
+/**
+ * Half-widths by which the difference of two readings may be off for the temperatures of their parts. Both
+ * taken: copper is corrected; an NTC keeps what each is known to, and how far apart the two are. Else each
+ * keeps its own line.
+ */
+export function partTempsApart(a: ReadingInput, b: ReadingInput): number[] {
+  const widths = [a, b].map((of) => {
+    const { estimate } = budgetOf(of)
+    return { of, size: Math.abs(estimate), own: partTempWidths(of, estimate) }
+  })
+  if (a.partTempC === null || b.partTempC === null)
+    return widths.flatMap(({ own }) => own.map((w) => w.halfWidth))
+  const apart = Math.abs(a.partTempC - b.partTempC)
+  const ntc = widths.filter(({ own }) => own.length > 0)
+  const known = ntc.map(({ size }) => size * NTC_PER_KELVIN * NTC_TEMP_K)
+  const between = Math.max(0, ...ntc.map(({ size }) => size)) * NTC_PER_KELVIN * apart
+  return [...known, between]
+}
+
 function groups(widths: readonly Width[]): number[] {
   const joined = widths
     .filter((w) => w.source === SOURCES.meter || w.source === SOURCES.meterTemp)
