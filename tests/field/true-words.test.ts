@@ -96,7 +96,7 @@ describe('what stands on the screen is true', () => {
   it('[R11] on the screen of the codes the key opens the form, elsewhere it leads there', () => {
     const shown = (props: { onTakeDown?: () => void }) =>
       renderToStaticMarkup(createElement(TakeDownKey, { jobId: 'j1', words: 'Take', ...props }))
-    expect(shown({})).toContain('href="/field/jobs/j1/codes"')
+    expect(shown({})).toContain('href="/field/jobs/j1/codes?more"')
     expect(shown({ onTakeDown: () => undefined })).toMatch(/^<button/)
   })
 

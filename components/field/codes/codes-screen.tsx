@@ -32,11 +32,11 @@ const isCode = (entry: LogEntry): entry is CodeEntry => entry.body.kind === 'cod
 function Codes({ facts }: { facts: JobFacts }) {
   const { job, model, features } = facts
   const log = useLog(job.id)
-  const { go } = useRoute()
+  const { go, search } = useRoute()
   const entries = living((log ?? []).map((line) => line.entry))
   const codes = entries.filter(isCode)
   // How often the form was asked for; 0 when it is not wanted.
-  const [adding, setAdding] = useState<number>(0)
+  const [adding, setAdding] = useState<number>(search.has('more') ? 1 : 0)
   const [fresh, setFresh] = useState<string | null>(null)
   const unreadable = entries.findLast((e) => e.body.kind === 'codesUnreadable')?.body
   const draft = useDraft<CodeDraft>(codeKey(job.id), EMPTY_CODE)

@@ -10,11 +10,11 @@ type Props = {
   onTakeDown?: () => void
 }
 
-/** Leads to the form where codes are taken down, or opens it where it is. */
+/** Leads to the form where codes are taken down and opens it (`?more`), or opens it where it is. */
 export function TakeDownKey({ jobId, words, onTakeDown }: Props) {
   return onTakeDown ? (
     <Key onClick={onTakeDown}>{words}</Key>
   ) : (
-    <KeyLink href={jobHref(jobId, 'codes')}>{words}</KeyLink>
+    <KeyLink href={`${jobHref(jobId, 'codes')}?more`}>{words}</KeyLink>
   )
 }
