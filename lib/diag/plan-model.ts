@@ -21,6 +21,7 @@ import {
   whyNotSwap,
 } from './plan-means'
 import { stopsOf } from './plan-stops'
+import { opening, openOf, problemOf } from './search-problem'
 import type { SearchState, SingleModel } from './troubleshoot-model'
 import { fitnessFor } from './verdict-table'
 
@@ -72,7 +73,7 @@ export function planModel(c: Case, means: Means): PlanModel {
     ...(minutes === null ? {} : { daylight: { minutes: Math.max(0, minutes) } }),
   }
   const state = { evidence: {}, tried: [], open: openSetups(c), elapsed: 0 }
-  return { model, state, leftOut: tooLate(model, doing), reckoning, outlooks }
+  return { model, state, leftOut: tooLate(model, state, doing), reckoning, outlooks }
 }
 
 /** Faults named by a fix entry so far. */
@@ -236,22 +237,22 @@ function openSetups({ entries, index }: Case): string[] {
   return [...new Set(open)]
 }
 
-/** What no longer fits before the leave-by time, with how far it is over (rule R6). */
-function tooLate(model: SingleModel, { leftOut }: Doing): LeftOut[] {
-  const daylight = model.daylight?.minutes
-  if (daylight === undefined) return leftOut
-  const test = model.verify?.minutes ?? 0
-  const late = (id: string, kind: Kind, minutes: number): LeftOut[] =>
-    minutes > daylight
-      ? [{ id, kind, reason: `${Math.ceil(minutes - daylight)} min over the leave-by time.` }]
+/** What no longer fits before the leave-by time, set-ups and test run included, with how far it is over (rule R6). */
+function tooLate(model: SingleModel, state: SearchState, { c, leftOut }: Doing): LeftOut[] {
+  const problem = problemOf(model)
+  if (!Number.isFinite(problem.daylight)) return leftOut
+  const open = openOf(model, state)
+  type Timed = { id: string; minutes: number; setups: number }
+  const late = ({ id, minutes, setups }: Timed, kind: Kind): LeftOut[] => {
+    const over = minutes + opening(problem, setups, open).minutes - problem.daylight
+    return over > 1e-9
+      ? [{ id, kind, reason: `${Math.ceil(over)} min over the leave-by time.` }]
       : []
+  }
+  const worthNaming = new Set(model.faults.filter((f) => f.prior >= WORTH_NAMING).map((f) => f.id))
   return [
     ...leftOut,
-    ...model.checks.flatMap((check) => late(check.id, 'check', check.minutes)),
-    ...model.faults.flatMap((f) =>
-      f.repair === null || f.prior < WORTH_NAMING
-        ? []
-        : late(f.id, 'repair', f.repair.minutes + test),
-    ),
+    ...problem.checks.flatMap((one) => late(one, c.index.swaps.has(one.id) ? 'swap' : 'check')),
+    ...problem.repairs.flatMap((one) => (worthNaming.has(one.id) ? late(one, 'repair') : [])),
   ]
 }

@@ -174,6 +174,12 @@ describe('[E2] what is left out, and why', () => {
     const late = plan([code(1268, 3)], { minutesToLeaveBy: 5 })
     expect(reason(late, 'flow')).toBe('1 min over the leave-by time.')
     expect(reason(late, 'coilSwap')).toBe('7 min over the leave-by time.')
+    expect(late.leftOut.find((l) => l.id === 'coilSwap')?.kind).toBe('swap')
+    // 4 min and 3 min for the panel: it is not planned, so it is listed.
+    expect(reason(late, 'module')).toBe('2 min over the leave-by time.')
+    expect([late.next, late.runnerUp, ...late.others].map((a) => a?.id)).not.toContain('module')
+    const open = plan([checked('module', 'good'), code(1268, 3)], { minutesToLeaveBy: 14 })
+    expect(reason(open, 'coil')).toMatch(/^1 min over/) // 10 and the test run of 5: the panel is off
     const past = plan([code(1268, 3)], { minutesToLeaveBy: -20 })
     expect(past.next.type).toBe('stop')
   })
