@@ -2,9 +2,9 @@ import { isIPv4, isIPv6 } from 'node:net'
 
 /**
  * Answers the network address a request came from, as a key for the brake on tries. `forwarded` is the
- * header `x-forwarded-for`: the last address in it is the one our own proxy (or, without one, the server
- * itself) put there; those before it are the client's word. Of an IPv6 address the first 64 bits, since
- * one household holds all the rest. `unknown` when there is none: those share one brake.
+ * header `x-forwarded-for`: the last address in it is the one our own proxy put there; those before it are
+ * the client's word, and without a proxy the last one is too (decision 003). Of an IPv6 address the first
+ * 64 bits, since one household holds all the rest. `unknown` when there is none: those share one brake.
  */
 export function clientAddress(forwarded: unknown): string {
   if (typeof forwarded !== 'string') return 'unknown'

@@ -7,6 +7,11 @@
  */
 const WINDOW_MS = 15 * 60_000
 const MAX_KEYS = 10_000
+/**
+ * A key counted this often makes no room for others (a choice). Each count costs a password check, and no
+ * more than about 5,400 of those are done in the window (hash-slots.ts), so such keys never fill the table.
+ */
+const KEPT_FROM = 3
 
 type Brake = { key: string; limit: number }
 type Tries = { count: number; since: number }
@@ -33,7 +38,9 @@ export function takeTry(by: Trier, now: number): boolean {
 export function giveBackTry(by: Trier): void {
   for (const { key } of brakesOf(by)) {
     const seen = tries.get(key)
-    if (seen && seen.count > 0) seen.count -= 1
+    if (seen === undefined) continue
+    seen.count -= 1
+    if (seen.count <= 0) tries.delete(key)
   }
 }
 
@@ -48,7 +55,7 @@ function countOf(key: string, now: number): number {
   return seen && now - seen.since <= WINDOW_MS ? seen.count : 0
 }
 
-/** One more; the oldest key makes room when 10,000 are kept. */
+/** One more; when 10,000 keys are kept one makes room. */
 function count(key: string, now: number): void {
   const seen = tries.get(key)
   if (seen && now - seen.since <= WINDOW_MS) {
@@ -56,9 +63,20 @@ function count(key: string, now: number): void {
     return
   }
   tries.delete(key)
-  if (tries.size >= MAX_KEYS) {
-    const oldest = tries.keys().next().value
-    if (oldest !== undefined) tries.delete(oldest)
-  }
+  if (tries.size >= MAX_KEYS) makeRoom(now)
   tries.set(key, { count: 1, since: now })
+}
+
+/** Drops what is over, else the oldest that was hardly counted: nobody's count is flushed by many new keys. */
+function makeRoom(now: number): void {
+  for (const [key, { since }] of tries) {
+    if (now - since <= WINDOW_MS) break // in the order in which they began
+    tries.delete(key)
+  }
+  if (tries.size < MAX_KEYS) return
+  for (const [key, { count: counted }] of tries) {
+    if (counted >= KEPT_FROM) continue
+    tries.delete(key)
+    return
+  }
 }

@@ -66,6 +66,20 @@ describe('[D4] the three brakes', () => {
     expect(spend(120, (i) => ({ email, address: `198.51.100.${i}` }))).toBe(100)
   })
 
+  it('[D4] no crowd of new e-mails flushes the count of one, given back or not', () => {
+    const later = NOW + 3_600_000
+    const email = 'victim@test.invalid'
+    const guess = (i: number) => takeTry({ email, address: `198.51.100.${i}` }, later)
+    expect(Array.from({ length: 60 }, (_, i) => guess(i)).filter(Boolean)).toHaveLength(60)
+    for (let i = 0; i < 12_000; i++) {
+      const crowd = { email: `crowd${i}@test.invalid`, address: `10.${i >> 8}.${i & 255}.1` }
+      expect(takeTry(crowd, later)).toBe(true)
+      if (i % 2 === 0) giveBackTry(crowd)
+    }
+    const more = Array.from({ length: 90 }, (_, i) => guess(100 + i)).filter(Boolean)
+    expect(more).toHaveLength(40)
+  })
+
   it('[D4] a try that decided nothing is given back; a good one forgets the wrong ones', () => {
     const trier = { email: 'two@test.invalid', address: '203.0.113.30' }
     expect(spend(5, () => trier)).toBe(5)
