@@ -1,16 +1,18 @@
 // start | stop | status | reset [database]: a PostgreSQL of this checkout's own, on loopback only.
 // Node built-ins only, as it runs before node_modules exists. Data lies in .data/pg, or below
-// /var/tmp when the postgres user cannot reach the checkout; passwords lie in .env.local.
+// /var/lib/farbench when this is root and the postgres user cannot reach the checkout; passwords lie
+// in .env.local.
 // Roles: farbench_admin (superuser, made by initdb), farbench_owner (owns the database, migrates),
 // farbench_app (bound by row-level security), farbench_work (owns the task queue's schema and
 // nothing else), farbench_lookup (no login; owns the few functions that look across shops).
 import { spawnSync } from 'node:child_process'
 import { createHash } from 'node:crypto'
 import {
+  chmodSync,
   chownSync,
   existsSync,
+  lstatSync,
   mkdirSync,
-  readdirSync,
   readFileSync,
   readlinkSync,
   rmSync,
@@ -22,6 +24,7 @@ import { dirname, join, resolve } from 'node:path'
 import { fileURLToPath } from 'node:url'
 import { holdLock } from './db-lock.mjs'
 import { addresses, readPasswords, rolesScript } from './db-roles.mjs'
+import { serverFolder } from './db-server.mjs'
 import { enter, keep, leave } from './db-users.mjs'
 
 const root = resolve(dirname(fileURLToPath(import.meta.url)), '..')
@@ -29,6 +32,8 @@ const envFile = join(root, '.env.local')
 const lockFile = join(root, '.data', 'pg.lock')
 const users = join(root, '.data', 'pg-users')
 const FIRST_PORT = 54329
+/** Where the data of a checkout lies that the postgres user cannot reach. */
+const OUTSIDE = '/var/lib/farbench'
 const isRoot = process.getuid?.() === 0
 
 /**
@@ -103,31 +108,24 @@ function chooseDataDir() {
     findServer()
     return chooseDataDir()
   }
-  return `/var/tmp/farbench-pg-${createHash('sha256').update(root).digest('hex').slice(0, 12)}`
+  const name = createHash('sha256').update(root).digest('hex').slice(0, 12)
+  return join(OUTSIDE, name, 'pg')
 }
 
-/** Folder of the newest server programs, which are installed when there are none and this is root. */
+/** Root's folder, which others may only walk through: nobody else can put anything in the way there. */
+function makeOutside(folder) {
+  for (const path of [OUTSIDE, folder]) {
+    mkdirSync(path, { recursive: true })
+    const about = lstatSync(path)
+    if (!about.isDirectory() || about.uid !== 0) throw new Error(`${path} is not root's own folder`)
+    chmodSync(path, 0o711)
+  }
+}
+
+/** Folder of the server programs; data made by one major version is only read by the same one. */
 export function findServer() {
-  const base = '/usr/lib/postgresql'
-  const versions = existsSync(base)
-    ? readdirSync(base).filter((name) => existsSync(join(base, name, 'bin', 'initdb')))
-    : []
-  const newest = versions.sort((a, b) => Number(b) - Number(a))
-  // Data made by one major version is only read by the same one.
-  const made =
-    dataDirFound && existsSync(join(dataDirFound, 'PG_VERSION'))
-      ? readFileSync(join(dataDirFound, 'PG_VERSION'), 'utf8').trim()
-      : null
-  const version = made && newest.includes(made) ? made : newest[0]
-  if (version) return join(base, version, 'bin')
-  if (!isRoot) throw new Error('PostgreSQL server not found: install the package "postgresql"')
-  const env = { ...process.env, DEBIAN_FRONTEND: 'noninteractive' }
-  const options = { env, stdio: ['ignore', 'ignore', 'inherit'] }
-  spawnSync('apt-get', ['update', '-qq'], options)
-  const install = ['install', '-y', '-qq', '--no-install-recommends', 'postgresql']
-  const done = spawnSync('apt-get', install, options)
-  if (done.status !== 0) throw new Error('Could not install the package "postgresql"')
-  return findServer()
+  const version = dataDirFound ? readOr(join(dataDirFound, 'PG_VERSION')).trim() : ''
+  return serverFolder(version, { mayInstall: isRoot })
 }
 
 // --- the process ----------------------------------------------------------------------------
@@ -174,10 +172,12 @@ function control(bin, args) {
 
 function initialise(bin, passwords) {
   const dir = dataDir()
+  if (dir.startsWith(`${OUTSIDE}/`)) makeOutside(dirname(dir))
   rmSync(dir, { recursive: true, force: true })
   mkdirSync(dir, { recursive: true, mode: 0o700 })
   const passwordFile = `${dir}.password`
-  writeFileSync(passwordFile, `${passwords.PG_ADMIN_PASSWORD}\n`, { mode: 0o600 })
+  rmSync(passwordFile, { force: true })
+  writeFileSync(passwordFile, `${passwords.PG_ADMIN_PASSWORD}\n`, { mode: 0o600, flag: 'wx' })
   if (isRoot) {
     const owner = Number(spawnSync('id', ['-u', 'postgres'], { encoding: 'utf8' }).stdout)
     chownSync(dir, owner, -1)

@@ -7,6 +7,11 @@ import { createServer } from 'node:net'
 import { dirname, join, resolve } from 'node:path'
 import { fileURLToPath } from 'node:url'
 
+if (Number(process.versions.node.split('.')[0]) < 20) {
+  console.error(`Farbench needs Node 20 or later; this is ${process.version}.`)
+  process.exit(1)
+}
+
 export const root = resolve(dirname(fileURLToPath(import.meta.url)), '..')
 process.chdir(root)
 const began = Date.now()

@@ -11,7 +11,7 @@ import {
   statSync,
 } from 'node:fs'
 import { tmpdir } from 'node:os'
-import { join, resolve } from 'node:path'
+import { dirname, join, resolve } from 'node:path'
 import pg from 'pg'
 import { afterAll, beforeAll, describe, expect, it } from 'vitest'
 
@@ -52,7 +52,7 @@ const postmaster = () =>
 beforeAll(async () => {
   clone = mkdtempSync(join(tmpdir(), 'farbench clone '))
   mkdirSync(join(clone, 'scripts'))
-  for (const file of ['db.mjs', 'db-lock.mjs', 'db-roles.mjs', 'db-users.mjs']) {
+  for (const file of ['db.mjs', 'db-lock.mjs', 'db-roles.mjs', 'db-server.mjs', 'db-users.mjs']) {
     copyFileSync(resolve('scripts', file), join(clone, 'scripts', file))
   }
   const { adminUrl } = start()
@@ -61,7 +61,8 @@ beforeAll(async () => {
 }, 120_000)
 afterAll(() => {
   call('stop')
-  for (const path of [clone, dataDir, `${dataDir}.log`])
+  const own = dataDir.startsWith('/var/lib/farbench/') ? [dirname(dataDir)] : []
+  for (const path of [clone, dataDir, `${dataDir}.log`, ...own])
     rmSync(path, { recursive: true, force: true })
 })
 
@@ -92,6 +93,18 @@ describe("[D11] the project's own PostgreSQL", () => {
     expect(secrets.size).toBe(4)
     expect(Math.min(...[...secrets].map((secret) => secret.length))).toBeGreaterThanOrEqual(32)
     expect(call('start').stdout).not.toContain([...secrets][0])
+  })
+
+  it('[D11] for root its data lies out of reach where no other user can put anything in the way', () => {
+    start()
+    if (process.getuid?.() !== 0) return expect(dataDir.startsWith(clone)).toBe(true)
+    expect(dataDir).toMatch(/^\/var\/lib\/farbench\/[0-9a-f]{12}\/pg$/)
+    for (const path of ['/var/lib/farbench', dirname(dataDir)]) {
+      const { uid, mode } = statSync(path)
+      expect([uid, mode & 0o777]).toEqual([0, 0o711])
+    }
+    expect(statSync(dataDir).mode & 0o777).toBe(0o700)
+    expect(existsSync(`${dataDir}.password`)).toBe(false)
   })
 
   it('[D11] a second database is apart from the first', async () => {
