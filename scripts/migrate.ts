@@ -1,5 +1,5 @@
 // Brings the database to the newest migration: the project's own (Kysely) as farbench_owner, then
-// the task queue's as farbench_work. Idempotent; two at once wait for each other.
+// the task queue's as farbench_work. Idempotent; two at once wait for each other, by one lock around both.
 import { readdir } from 'node:fs/promises'
 import { join, resolve } from 'node:path'
 import { fileURLToPath, pathToFileURL } from 'node:url'
@@ -9,13 +9,19 @@ import pg from 'pg'
 
 const folder = resolve(fileURLToPath(new URL('../migrations', import.meta.url)))
 
+/** Key of the advisory lock (a choice); roles are brought in line under another (db-roles.mjs). */
+const MIGRATING = 7_244_302
+
 export type MigrateAddresses = { ownerUrl: string; workUrl: string }
 
 /** Runs what is missing and answers the names of the migrations that ran. */
 export async function migrateDatabase({ ownerUrl, workUrl }: MigrateAddresses): Promise<string[]> {
   const pool = new pg.Pool({ connectionString: ownerUrl, max: 2 })
   const db = new Kysely<unknown>({ dialect: new PostgresDialect({ pool }) })
+  const lock = new pg.Client({ connectionString: ownerUrl })
   try {
+    await lock.connect()
+    await lock.query('select pg_advisory_lock($1)', [MIGRATING])
     const migrator = new Migrator({
       db,
       provider: { getMigrations: readMigrations },
@@ -30,6 +36,8 @@ export async function migrateDatabase({ ownerUrl, workUrl }: MigrateAddresses): 
     await migrateQueue(pool, workUrl)
     return (results ?? []).map((result) => result.migrationName)
   } finally {
+    // The lock goes with its connection.
+    await lock.end()
     await db.destroy()
   }
 }
