@@ -1,38 +1,41 @@
 // npm run bench:sync -- [--peers] [--quick] [--only B1,B4] [--keep]: measures the bars of sync on a database
 // of its own and writes them to docs/performance.md. Builds what is not built; `--quick` runs tiny sizes and
 // writes nothing; `--peers` installs the peers apart and runs them on the same work.
-import { spawnSync } from 'node:child_process'
 import { createHash } from 'node:crypto'
 import { existsSync, mkdirSync, readdirSync, readFileSync, writeFileSync } from 'node:fs'
 import { join } from 'node:path'
-import { build, database, modules, root, run, say, settings } from './setup.mjs'
+import { ending } from './ending.mjs'
+import {
+  build,
+  call,
+  database,
+  installPackages,
+  leaveDatabase,
+  modules,
+  root,
+  run,
+  say,
+  settings,
+  stopCall,
+} from './setup.mjs'
 
 const args = process.argv.slice(2)
-settings()
-await modules()
-if (!existsSync('/usr/bin/chromium')) {
-  const { installPackages } = await import('./setup.mjs')
-  await installPackages('chromium')
-}
-const db = await database('farbench_bench')
-await build()
-await buildFloor()
-if (args.includes('--peers')) await installPeers()
-
-const bench = spawnSync(
-  join('node_modules', '.bin', 'tsx'),
-  ['tests/bench/sync/bench.ts', ...args],
-  {
-    stdio: 'inherit',
-    cwd: root,
-    env: process.env,
-  },
-)
-if (db.started) {
-  const { stopDatabase } = await import('./db.mjs')
-  await stopDatabase()
-}
-process.exit(bench.status ?? 1)
+const ends = ending({ onSignal: 1 })
+await ends.around(async () => {
+  settings()
+  ends.later(stopCall)
+  await modules()
+  if (!existsSync('/usr/bin/chromium')) await installPackages('chromium')
+  ends.later(leaveDatabase)
+  await database('farbench_bench')
+  ends.later(stopCall)
+  await build()
+  await buildFloor()
+  if (args.includes('--peers')) await installPeers()
+  const tsx = join('node_modules', '.bin', 'tsx')
+  const { status } = await call(tsx, ['tests/bench/sync/bench.ts', ...args])
+  await ends.end(status ?? 1)
+})
 
 function isNew(name, files) {
   const hash = createHash('sha256')
