@@ -6,6 +6,7 @@ import { createReadStream, mkdirSync } from 'node:fs'
 import { mkdir, open, readFile, rename, rm, stat } from 'node:fs/promises'
 import { createServer } from 'node:http'
 import { dirname, join, resolve } from 'node:path'
+import { pipeline } from 'node:stream/promises'
 import { fileURLToPath } from 'node:url'
 
 const root = resolve(fileURLToPath(new URL('../..', import.meta.url)))
@@ -148,9 +149,8 @@ async function show(request, response, place) {
   if (request.method === 'HEAD') response.end()
   else {
     const parts = range ? { start: range.first, end: range.last } : {}
-    createReadStream(place.path, parts)
-      .on('error', () => response.destroy())
-      .pipe(response)
+    // Closes the file too when the client breaks off.
+    await pipeline(createReadStream(place.path, parts), response).catch(() => response.destroy())
   }
 }
 
