@@ -31,7 +31,9 @@ await ends.around(async () => {
   const children = [
     service(process.execPath, ['scripts/fakes/mail.mjs'], end),
     ...(ownFiles ? [service(process.execPath, ['scripts/fakes/files.mjs'], end)] : []),
-    service('node_modules/.bin/tsx', ['scripts/work.ts'], end),
+    service('node_modules/.bin/tsx', ['scripts/work.ts'], end, {
+      DATABASE_WORK_URL: process.env.DATABASE_WORK_URL,
+    }),
     service(
       process.execPath,
       ['node_modules/next/dist/bin/next', 'dev', '-H', '127.0.0.1', '-p', process.env.PORT],

@@ -229,7 +229,7 @@ if (process.argv[1] && resolve(process.argv[1]) === fileURLToPath(import.meta.ur
   const fits = await seedDatabase(url, demoPassword(), { anew })
   if (!fits)
     console.log(
-      'DEMO_PASSWORD is not the password of every demo person: somebody changed theirs, or .env.local was lost. `npm run seed -- --passwords` sets all of them anew.',
+      'DEMO_PASSWORD is not the password of every demo person: it was set by hand, or .env.local was lost. `npm run seed -- --passwords` sets all of them anew.',
     )
   console.log(`Demo shops are in place (${((performance.now() - began) / 1000).toFixed(1)} s)`)
 }

@@ -212,12 +212,23 @@ export async function fileStore() {
   return true
 }
 
-/** Starts a long-running child; its exit is reported through `onExit`. */
+/** What no service inherits (decision 010): ways in that row-level security does not bind. */
+const KEPT_BACK = ['DATABASE_ADMIN_URL', 'DATABASE_OWNER_URL', 'DATABASE_WORK_URL']
+/** Empty, not missing: next reads .env.local by itself, but sets nothing that is set. */
+const BLANK = ['PG_ADMIN_PASSWORD', 'PG_OWNER_PASSWORD', 'PG_APP_PASSWORD', 'PG_WORK_PASSWORD']
+
+/** This process's settings without what only the scripts need. */
+function serviceEnv() {
+  const kept = Object.entries(process.env).filter(([name]) => !KEPT_BACK.includes(name))
+  return { ...Object.fromEntries(kept), ...Object.fromEntries(BLANK.map((name) => [name, ''])) }
+}
+
+/** Starts a long-running child; its exit is reported through `onExit`. `env`: what this one needs besides. */
 export function service(command, args, onExit, env = {}) {
   const child = spawn(command, args, {
     cwd: root,
     stdio: ['ignore', 'inherit', 'inherit'],
-    env: { ...process.env, ...env },
+    env: { ...serviceEnv(), ...env },
   })
   child.on('exit', (code, signal) => onExit(code, signal))
   return child

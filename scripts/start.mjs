@@ -55,7 +55,10 @@ function serve(ownFiles) {
   children.push(service(process.execPath, ['scripts/fakes/mail.mjs'], ended('mail')))
   if (ownFiles)
     children.push(service(process.execPath, ['scripts/fakes/files.mjs'], ended('files')))
-  children.push(service('node_modules/.bin/tsx', ['scripts/work.ts'], ended('work')))
+  const { DATABASE_WORK_URL } = process.env
+  children.push(
+    service('node_modules/.bin/tsx', ['scripts/work.ts'], ended('work'), { DATABASE_WORK_URL }),
+  )
   children.push(
     service(
       process.execPath,
@@ -92,7 +95,7 @@ await ends.around(async () => {
   parts desk      ${address}/desk/parts  parts@demo.invalid
   another shop    ${address}/desk        stranger@demo.invalid
 
-  Password of every demo person who has not changed it: ${process.env.DEMO_PASSWORD}
+  Password of every demo person: ${process.env.DEMO_PASSWORD}
   Mail sent by the demo shop is kept in .data/mail. Everything in the demo is invented.
   Ctrl-C stops all of it; the data stays.
 `)
