@@ -43,6 +43,7 @@ export function rideMinutes(battery: {
 }
 
 function between(volts: number, column: 'charge' | 'gravity'): number {
+  if (Number.isNaN(volts)) return Number.NaN // no reading is no full battery
   const above = TABLE.findIndex((row) => row.volts >= volts)
   if (above === 0) return TABLE[0][column]
   const high = TABLE[above]

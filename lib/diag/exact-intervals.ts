@@ -49,7 +49,12 @@ export function clopperPearson(k: number, n: number, confidence = 0.95): Interva
 /** Smallest stock s with P(demand <= s) at least `service`, for Poisson demand of this mean (Palm). */
 export function spareStock(mean: number, service: number): number {
   let s = 0
-  while (poissonCdf(s, mean) < service) s++
+  // The sum may stop a rounding short of 1: past the mean, a step that adds nothing is the last.
+  for (let sum = poissonCdf(s, mean); sum < service; s++) {
+    const next = poissonCdf(s + 1, mean)
+    if (s > mean && next <= sum) break
+    sum = next
+  }
   return s
 }
 

@@ -142,6 +142,11 @@ describe('battery at rest (table credited to the battery makers, seen)', () => {
   it('[STD] half way between rows is half way between charges', () => {
     expect(chargeAt((12.24 + 12.45) / 2)).toBeCloseTo(0.625, 9)
   })
+  it('[R10] no volts are no full battery', () => {
+    expect(chargeAt(Number.NaN)).toBeNaN()
+    const none = { ratedAh: 20, restVolts: Number.NaN, airTempC: 20, drawAmperes: 7 }
+    expect(rideMinutes(none).minutes).toBeNaN()
+  })
   it('[R10] cold factor 1 at 25 C, 0.65 at -15 C, never under 0.5', () => {
     expect([25, -15, -60, 40].map(coldFactor)).toEqual([1, expect.closeTo(0.65, 9), 0.5, 1])
   })

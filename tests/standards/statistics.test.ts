@@ -108,6 +108,11 @@ describe('spares (Poisson, Palm)', () => {
   ])('[STD] mean %f: 90, 95 and 99 %% need %i, %i and %i', (mean, at90, at95, at99) => {
     expect([0.9, 0.95, 0.99].map((s) => spareStock(mean, s))).toEqual([at90, at95, at99])
   })
+  it.each([0.5, 3, 40])('[R25] ends for a service of all, mean %d', (mean) => {
+    const all = spareStock(mean, 1)
+    expect(all).toBeGreaterThanOrEqual(spareStock(mean, 0.999999))
+    expect(all).toBeLessThan(mean + 20 * Math.sqrt(mean) + 30)
+  })
   it.each([
     [1, [1, 0.36788, 0.10364, 0.02334, 0.00435]],
     [2, [2, 1.13534, 0.54134, 0.21802, 0.07514]],
