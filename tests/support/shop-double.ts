@@ -13,6 +13,7 @@ import {
   syncRequest,
 } from '@/lib/sync/protocol/message'
 import { type Op, op as opShape } from '@/lib/sync/protocol/op'
+import { fullOp } from '@/lib/sync/protocol/short'
 import { uploadText } from '@/lib/sync/protocol/upload'
 import { MECHANIC, type TestFetch } from './phone'
 import { readUploadRequest, UploadDouble, type UploadRequest } from './upload-double'
@@ -171,8 +172,12 @@ export class ShopDouble {
     this.requests.push({ path: '/api/sync', ops: request.ops.length, bytes: body.byteLength })
     const taken: string[] = []
     const results: OpResult[] = []
+    const said = {
+      dev: headers.get(HEADERS.device) ?? '',
+      personId: headers.get(HEADERS.person) ?? '',
+    }
     for (const raw of request.ops) {
-      const op = opShape.parse(raw)
+      const op = opShape.parse(request.brief === true ? fullOp(raw, said) : raw)
       const result = this.#take(op)
       if (result === null) taken.push(op.id)
       else results.push(result)

@@ -2,6 +2,7 @@ import type { Id } from '@/lib/model/id'
 import { HEADERS, signedText } from '@/lib/sync/protocol/device'
 import { type Cursor, MAX_OPS, PROTOCOL, type SyncRequest } from '@/lib/sync/protocol/message'
 import { OP_SCHEMA, type Op } from '@/lib/sync/protocol/op'
+import { shortOp } from '@/lib/sync/protocol/short'
 
 /** Who sends, from which device. */
 export type Sender = { shopId: Id; personId: Id; deviceId: Id; pair: CryptoKeyPair }
@@ -54,6 +55,7 @@ export type Packed = { count: number; dseq: string; body: Bytes }
 
 /** Packs as many ops from the front as fit in one request: at most `limit`, 500, and 64 KB compressed. */
 export async function packRequest(of: {
+  sender: Pick<Sender, 'personId' | 'deviceId'>
   ops: readonly Op[]
   limit: number
   cursor: Cursor | null
@@ -63,6 +65,8 @@ export async function packRequest(of: {
   held?: (sent: number) => NonNullable<SyncRequest['held']>
   canary?: Id | null
 }): Promise<Packed> {
+  const said = { dev: of.sender.deviceId, personId: of.sender.personId }
+  const short = of.ops.map((op) => shortOp(op, said))
   let count = Math.min(of.ops.length, of.limit, MAX_OPS)
   for (;;) {
     const ops = of.ops.slice(0, count)
@@ -70,7 +74,7 @@ export async function packRequest(of: {
       protocol: PROTOCOL,
       schema: OP_SCHEMA,
       clientTime: of.clientTime,
-      ops,
+      ops: short.slice(0, count),
       cursor: of.cursor,
       pull: of.pull,
       ...(of.held === undefined ? {} : { held: of.held(count) }),

@@ -1,12 +1,14 @@
 import { assertNever } from '@/lib/model/result'
 import type { OwnRun, PullRow, SyncResponse } from './message'
 import type { Op } from './op'
+import { fullRow } from './short'
 
 /**
  * The short form of an answer, for a phone that asked for it: what the phone has just sent is not said
  * again word by word. Numbers of settled ops come as `[first, last]`, and rows of entries that this very
  * request added as runs of what the shop made of them: change number, place in the job's chain, and when
- * they came. The shop folds, the phone unfolds with its ops at hand; nothing past it knows of the short form.
+ * they came; ops of the request and other rows leave out what is said beside them (short.ts). The shop folds,
+ * the phone unfolds with its ops at hand; nothing past it knows of the short form.
  */
 
 /** Whole numbers in rising order as `[first, last]` each. */
@@ -72,7 +74,7 @@ function unfoldedPull(
         upTo(0, run.count - 1).map((index) => ownRow(run, index, ops)),
       )
       if (own.includes(undefined)) return undefined
-      const rows = [...pull.rows, ...own.flatMap((row) => row ?? [])]
+      const rows = [...pull.rows.map(fullRow), ...own.flatMap((row) => row ?? [])]
       return { ...pull, own: [], rows: rows.sort((a, b) => a.seq - b.seq) }
     }
     default:
@@ -85,5 +87,5 @@ function ownRow(run: OwnRun, index: number, ops: ReadonlyMap<number, Op>): PullR
   if (op?.kind !== 'log.add') return undefined
   const { id, jobId } = op.fields
   const row = { ...op.fields, receivedAt: run.receivedAt, order: run.order + index }
-  return { seq: run.seq + index, entity: 'logEntry', id, jobId, state: 'present', row }
+  return { seq: run.seq + index, entity: 'logEntry', id, jobId, state: 'present', row, own: true }
 }

@@ -46,7 +46,10 @@ export const syncRequest = z.object({
   ),
   /** Since protocol 2: the id written when this phone's store was made (P22). */
   canary: z.optional(z.nullable(id)),
-  /** Since protocol 2: the answer may leave out what the phone has just said (brief.ts) and never reads. */
+  /**
+   * Since protocol 2: the answer may leave out what the phone has just said (brief.ts) and never reads; the
+   * ops here, and rows there, what is said beside them (short.ts).
+   */
   brief: z.optional(z.boolean()),
 })
 export type SyncRequest = z.infer<typeof syncRequest>
@@ -92,7 +95,8 @@ export const pullRow = z.object({
   state: z.enum(['present', 'deleted', 'evict']),
   row: z.unknown(),
 })
-export type PullRow = z.infer<typeof pullRow>
+/** `own`: put together on the phone from the op it sent (brief.ts); never travels. */
+export type PullRow = z.infer<typeof pullRow> & { own?: true }
 
 /**
  * Rows of entries that this request's own ops added, in short (brief.ts): of `count` ops from number `dseq`

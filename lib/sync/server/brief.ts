@@ -4,6 +4,7 @@ import type { LogRow } from '@/lib/model/log-entry'
 import { ownRuns, runsOf } from '@/lib/sync/protocol/brief'
 import type { PullAnswer, SyncResponse } from '@/lib/sync/protocol/message'
 import { OP_SCHEMA } from '@/lib/sync/protocol/op'
+import { shortRow } from '@/lib/sync/protocol/short'
 import type { PushAnswer } from './push'
 
 /** Entries that a request's ops added, with the number of the op that has each one's words. */
@@ -46,7 +47,7 @@ export function foldedPush(
   return { taken, takenNumbers, results: pushed.results }
 }
 
-/** A page with the own entries as runs. */
+/** A page with the own entries as runs, and the others in short. */
 export function foldedPage(page: LogPage, own: OwnEntries): PullAnswer {
   if (page.kind !== 'page') return page
   const entries = page.rows.flatMap(({ seq, id, own: isOwn, row }) => {
@@ -55,5 +56,6 @@ export function foldedPage(page: LogPage, own: OwnEntries): PullAnswer {
     const { order, receivedAt } = row as LogRow
     return [{ dseq, seq, order, receivedAt }]
   })
-  return { ...page, rows: page.rows.filter((row) => row.own === undefined), own: ownRuns(entries) }
+  const rows = page.rows.filter((row) => row.own === undefined).map(shortRow)
+  return { ...page, rows, own: ownRuns(entries) }
 }

@@ -3,6 +3,7 @@ import { gunzipSync, gzipSync } from 'node:zlib'
 import { signedHeaders } from '@/lib/sync/client/envelope'
 import { HEADERS } from '@/lib/sync/protocol/device'
 import type { Op } from '@/lib/sync/protocol/op'
+import { fullOp } from '@/lib/sync/protocol/short'
 import { RealShop } from '../../support/real-shop'
 import type { Draw } from './draw'
 import type { Handset, Tab } from './handset'
@@ -195,11 +196,13 @@ async function inOldWords(handset: Handset, tab: Tab, sent: Sent): Promise<Sent>
   if (sent.path !== '/api/sync' || sent.body === null) return sent
   if (!handset.hasBeenOld) return sent
   const message = JSON.parse(gunzipSync(sent.body).toString()) as Record<string, unknown>
-  const ops = (message.ops as Op[]).map((op) => ({ ...op, schema: schemaOf(handset, op) }))
-  const { held, canary, ...old } = message
+  const said = { dev: headerOf(sent, HEADERS.device) ?? '', personId: tab.phone.actor.personId }
+  const full = (message.ops as unknown[]).map((op) => fullOp(op, said) as Op)
+  const ops = full.map((op) => ({ ...op, schema: schemaOf(handset, op) }))
+  const { held, canary, brief, ...old } = message
   const versions = { before: { ...old, protocol: 1, schema: 1 }, ancient: { ...old, protocol: 0 } }
-  const said = speaks === 'now' ? message : versions[speaks]
-  const body = Uint8Array.from(gzipSync(JSON.stringify({ ...said, ops })))
+  const words = speaks === 'now' ? message : versions[speaks]
+  const body = Uint8Array.from(gzipSync(JSON.stringify({ ...words, ops })))
   const dseq = numbersOf(sent)
   const { actor, core } = tab.phone
   const sender = {
