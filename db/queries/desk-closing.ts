@@ -98,6 +98,22 @@ async function noteAtDesk(tx: ShopTx, actor: Actor, note: Note): Promise<LogEntr
  * half is dropped here.
  */
 async function deskOf(tx: ShopTx, personId: Id, at: Instant): Promise<Id> {
+  const held = await deskDevice(tx, personId)
+  if (held === undefined) await addDesk(tx, personId, at)
+  const desk = held ?? (await deskDevice(tx, personId))
+  if (desk?.personId !== personId) throw new AppError('deskTaken', { context: { personId } })
+  return personId
+}
+
+const deskDevice = (tx: ShopTx, personId: Id) =>
+  tx
+    .selectFrom('device')
+    .select('personId')
+    .where('shopId', '=', tx.shopId)
+    .where('id', '=', personId)
+    .executeTakeFirst()
+
+async function addDesk(tx: ShopTx, personId: Id, at: Instant): Promise<void> {
   const { publicKey } = generateKeyPairSync('ec', { namedCurve: 'P-256' })
   await tx
     .insertInto('device')
@@ -112,12 +128,4 @@ async function deskOf(tx: ShopTx, personId: Id, at: Instant): Promise<Id> {
     })
     .onConflict((on) => on.columns(['shopId', 'id']).doNothing())
     .execute()
-  const desk = await tx
-    .selectFrom('device')
-    .select('personId')
-    .where('shopId', '=', tx.shopId)
-    .where('id', '=', personId)
-    .executeTakeFirst()
-  if (desk?.personId !== personId) throw new AppError('deskTaken', { context: { personId } })
-  return personId
 }

@@ -39,6 +39,8 @@ const phoneRows = (tx: ShopTx) =>
     .selectAll('d')
     .select(['c.name as personName', sql<boolean>`m.revoked_at is null`.as('isMember')])
     .where('d.shopId', '=', tx.shopId)
+    // A person's desk is a device under the person's own id, and no phone.
+    .whereRef('d.id', '!=', 'd.personId')
     .orderBy('d.lastSeenAt', (order) => order.desc().nullsLast())
     .orderBy('d.id')
     .execute()

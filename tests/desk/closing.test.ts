@@ -10,11 +10,13 @@ import { moveJobAtDesk } from '@/db/queries/desk-closing'
 import { findDevice } from '@/db/queries/devices'
 import { findJob } from '@/db/queries/jobs'
 import { listLog } from '@/db/queries/log-entries'
+import { readPhones } from '@/db/queries/phones'
 import type { Closing } from '@/lib/model/closing'
 import type { JobState } from '@/lib/model/job'
 import type { Actor } from '@/lib/model/person'
 import { closingMove, reopeningMove } from '@/lib/shop/closing'
 import { leavesFieldAt } from '@/lib/shop/scope'
+import { revokePhone } from '@/lib/sync/server/revoke'
 import { openTestDatabase, type TestDatabase } from '../support/database'
 import { AT, makeJob, makeShop, newId, type TestShop } from '../support/shop-fixture'
 import { expectWholeShop } from '../support/whole-shop'
@@ -128,6 +130,19 @@ describe('closing at the desk', () => {
     })
     const desk = await asShop(shop.id, (tx) => findDevice(tx, actor.personId))
     expect(desk).toMatchObject({ name: 'Desk', lastSeenAt: null, personId: actor.personId })
+  })
+
+  it('[Q1] the desk that a line names is no phone: it is not listed, and nobody can take it out', async () => {
+    const { personId } = actor
+    await close(await makeJob(shop, shop.people.mechanic!))
+    const { phones } = await readPhones(shop.id)
+    expect(phones.map((phone) => phone.id)).not.toContain(personId)
+    expect(phones.map((phone) => phone.person.id)).toContain(shop.people.mechanic!.id)
+    const asked = { phoneId: personId, reason: 'lost' }
+    const told = await revokePhone(actor, asked, { now: Date.parse(CLOSED_AT), newId })
+    expect(told).toEqual({ ok: false, problem: { kind: 'notFound' } })
+    const desk = await asShop(shop.id, (tx) => findDevice(tx, personId))
+    expect(desk?.revokedAt).toBeNull()
   })
 
   it('[R13] of two desks that press in the same second exactly one closes it', async () => {

@@ -21,7 +21,8 @@ export function revokePhone(
   return asShop(owner.shopId, async (tx) => {
     await lockShop(tx)
     const device = await findDevice(tx, phoneId)
-    if (!device) return fail({ kind: 'notFound' as const })
+    // The device under a person's own id is their desk, which is no phone to take out.
+    if (!device || device.id === device.personId) return fail({ kind: 'notFound' as const })
     const { personId } = device
     const isNew = await revokeDevice(tx, { id: phoneId, by: owner.personId, now: at, reason })
     if (!isNew) return ok(null)
