@@ -8,6 +8,7 @@ import { uuidv7 } from '@/lib/ports/ids'
 import { type MergeProblem, mayMerge } from '@/lib/shop/merge-rules'
 import { answered, jsonAnswer } from './answer'
 import { type HttpProblem, problemAnswer } from './problems'
+import { readForm } from './read-form'
 
 /** What the merge routes were given: who asks, and the row of the address. */
 export type MergeAsk = {
@@ -25,11 +26,11 @@ const stamp = () => ({ newId: uuidv7.next, at: new Date(systemClock.now()).toISO
 export function takeMerge(request: Request, { actor, entity, named }: MergeAsk): Promise<Response> {
   return answered(async () => {
     if (!actor.ok) return problemAnswer(actor.problem)
-    const asked = body.safeParse(await request.json().catch(() => null))
-    if (!asked.success) return problemAnswer({ kind: 'badJson' })
+    const asked = await readForm(request, {}, body)
+    if (!asked.ok) return problemAnswer(asked.problem)
     const row = id.safeParse(named)
     if (!row.success) return problemAnswer({ kind: 'notFound' })
-    const input = { entity, id: row.data, intoId: asked.data.into, stamp: stamp() }
+    const input = { entity, id: row.data, intoId: asked.value.into, stamp: stamp() }
     return told(await mergeRows(actor.value, input, mayMerge))
   })
 }
