@@ -3,7 +3,7 @@
 import { appendFileSync } from 'node:fs'
 import pg from 'pg'
 
-const LOCKS = /\b(lock_counter|take_changes|take_job_numbers)\s*\(/
+const LOCKS = /\b(lock_counter|take_changes|take_job_numbers|take_evidence)\s*\(/
 const file = process.env.BENCH_LOCK_FILE
 const held = new WeakMap()
 let lines = ''
@@ -17,13 +17,19 @@ pg.Client.prototype.query = function watched(config, ...rest) {
   const answer = query.call(this, config, ...rest)
   if (typeof answer?.then === 'function')
     answer.then(
-      () => note(this, text, began),
+      (told) => note(this, text, began, lockedAt(told)),
       () => note(this, 'rollback', began),
     )
   return answer
 }
 
-function note(client, text, began) {
+/** The statement that locks and writes at once says when it had the lock, by the clock of this machine. */
+function lockedAt(told) {
+  const ms = told?.rows?.[0]?.locked_ms
+  return typeof ms === 'number' ? ms - performance.timeOrigin : null
+}
+
+function note(client, text, began, locked = null) {
   const now = performance.now()
   const span = held.get(client)
   if (/^\s*(commit|rollback)/i.test(text)) {
@@ -36,7 +42,9 @@ function note(client, text, began) {
     span.statements += 1
     span.lastMs = now
   } else if (LOCKS.test(text)) {
-    held.set(client, { sinceMs: now, lastMs: now, waitMs: now - began, statements: 0, ownMs: 0 })
+    const sinceMs = locked ?? now
+    const statements = locked === null ? 0 : 1
+    held.set(client, { sinceMs, lastMs: now, waitMs: sinceMs - began, statements, ownMs: 0 })
   }
 }
 

@@ -26,10 +26,9 @@ const versionOf = (name: string): string => {
 
 /** What was measured on, told before it begins: the load is that of others. */
 export function machineOf(): string[] {
-  const own = cpus()
   const memory = `${Math.round(totalmem() / 2 ** 30)} GiB`
   return [
-    `Machine: ${own.length} x ${own[0]?.model ?? 'unknown'}, ${memory}, load ${loadavg()[0]?.toFixed(1)} when it began`,
+    `Machine: ${cpus().length} cores, ${memory}, load ${loadavg()[0]?.toFixed(1)} when it began`,
     `Date: ${new Date().toISOString().slice(0, 16).replace('T', ' ')} UTC, commit ${ask('git', ['rev-parse', '--short', 'HEAD'])}`,
     `Versions: Node ${process.versions.node}, Next.js ${versionOf('next')}, ${ask('/usr/bin/chromium', ['--version'])}, PostgreSQL ${ask('sh', ['-c', 'ls /usr/lib/postgresql'])}, Dexie ${versionOf('dexie')}, pg ${versionOf('pg')}`,
   ]
