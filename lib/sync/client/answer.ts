@@ -1,3 +1,4 @@
+import type { LogRow } from '@/lib/model/log-entry'
 import type { Cursor, OpResult, PullRow } from '@/lib/sync/protocol/message'
 import { rowsTouched } from './apply-op'
 import { commit, noWrites, type Writes } from './commit'
@@ -174,8 +175,9 @@ class AnswerPlan {
       if (now.state === 'taken') this.#changed.set(now.dseq, { ...now, state: 'done' })
     }
     const oldest = this.#of.nowMs - KEEP_TAKEN_MS
+    // In the order of their numbers, which is that of their time but for ops that were offered again.
     const done = db.outbox.where('state').equals('done')
-    const old = await done.filter((record) => (record.takenAt ?? 0) < oldest).toArray()
+    const old = await done.until((record) => (record.takenAt ?? 0) >= oldest).toArray()
     this.#writes.dropOutbox = old.map((record) => record.dseq)
     return [...this.#changed.values()].filter((record) => record.state === 'done')
   }
@@ -198,7 +200,8 @@ class AnswerPlan {
     const aside = new Map(
       ((await readMeta(db, 'setAside')) ?? []).map((one) => [rowKey(one.entity, one.id), one]),
     )
-    const bases = await Promise.all(rows.map((row) => this.#baseOf(row)))
+    const own = await this.#ownBases(rows)
+    const bases = await Promise.all(rows.map((row) => own.get(row.id)?.base ?? this.#baseOf(row)))
     for (const [index, row] of rows.entries()) {
       if (row.entity === 'book') this.applied.bookChanged = true
       if (!isStored(row.entity)) continue
@@ -216,6 +219,7 @@ class AnswerPlan {
         gen,
         jobId: row.jobId,
         ...(merged === undefined ? {} : { mergedInto: merged }),
+        ...own.get(row.id),
       }
       const place = { entity: row.entity, id: row.id }
       this.#rows.set(key, await rebasedRow(this.#core, key, { ...shop, ...place }, overlay))
@@ -224,6 +228,21 @@ class AnswerPlan {
     this.#writes.meta.cursor = cursor
     const whole = new Date(this.#of.nowMs).toISOString()
     if (!this.applied.more) this.#writes.meta.fetchedAt = whole
+  }
+
+  /** Entries of this phone as they were sealed when they were recorded: the shop's rows say the same. */
+  async #ownBases(
+    rows: readonly PullRow[],
+  ): Promise<Map<string, Pick<RowRecord, 'base' | 'told'>>> {
+    const own = rows.filter((row) => row.own === true)
+    const held = await this.#core.db.row.bulkGet(own.map((row) => rowKey(row.entity, row.id)))
+    const bases = new Map<string, Pick<RowRecord, 'base' | 'told'>>()
+    for (const [index, { id, row }] of own.entries()) {
+      const { base = null, body = null } = held[index] ?? {}
+      const { order, receivedAt } = row as LogRow
+      if (base === null && body !== null) bases.set(id, { base: body, told: { order, receivedAt } })
+    }
+    return bases
   }
 
   /** The shop's row sealed; null when it is gone, undefined when this version cannot read it. */
@@ -268,23 +287,4 @@ class AnswerPlan {
 function mergedInto({ entity, row }: PullRow): string | undefined {
   if (entity !== 'job') return undefined
   return (row as { mergedInto?: string } | null)?.mergedInto
-}
-
-/** Works out the rows of ops that a sender without the store key has marked. */
-export async function settleRows(core: Core): Promise<void> {
-  const marked = core.db.outbox.where('unsettled').equals(1)
-  if ((await marked.count()) === 0) return
-  await commit(core, async () => {
-    const writes = noWrites()
-    const overlay = await readOverlay(core)
-    for (const record of await marked.toArray()) {
-      writes.outbox.push({ ...record, unsettled: 0 })
-      for (const at of rowsTouched(await core.cache.op(core.keys.outbox, record))) {
-        const held = await core.db.row.get(rowKey(at.entity, at.id))
-        const row = held && held.base !== null && (await rebasedRow(core, held.key, held, overlay))
-        if (row) writes.rows.push(row)
-      }
-    }
-    return writes
-  })
 }

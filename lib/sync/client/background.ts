@@ -1,6 +1,7 @@
 import type { Actor } from '@/lib/model/person'
 import { AppError } from '@/lib/model/result'
 import type { SyncPorts } from '@/lib/ports/sync-ports'
+import { openOp } from './core'
 import { DeviceDb, knownPersons } from './device-db'
 import { deviceOf } from './enrol'
 import { findSendKeys, findStoreKey, type SendKeys } from './keys'
@@ -78,7 +79,7 @@ async function workerStore(of: {
   const storeKey = await findStoreKey(db)
   return {
     db,
-    outboxKey: keys.outbox,
+    openOp: (record) => openOp(keys.outbox, record),
     sender: { shopId: person.shopId, personId: person.personId, deviceId, pair: keys.device },
     pull: false,
     apply: async (answered: Answered): Promise<Applied> => {

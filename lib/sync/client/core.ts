@@ -3,7 +3,7 @@ import { AppError } from '@/lib/model/result'
 import type { Op } from '@/lib/sync/protocol/op'
 import type { PhoneKeys } from './keys'
 import type { OutboxRecord, PhoneDb, RowRecord } from './phone-db'
-import { openJson } from './seal'
+import { openJson, type Sealed } from './seal'
 
 /** What every part of an open store works with. */
 export type Core = {
@@ -50,14 +50,32 @@ export class OpenedCache {
     return op
   }
 
+  /** An op that was just made or sealed. */
+  keepOp(op: Op): void {
+    this.#ops.set(op.id, Promise.resolve(op))
+  }
+
   /** Lets go of ops that are no longer unsent. */
   forgetOps(opIds: readonly Id[]): void {
     for (const opId of opIds) this.#ops.delete(opId)
   }
 }
 
-function openRow(storeKey: CryptoKey, record: RowRecord): Promise<unknown> {
+/** The row as the screens see it, opened. */
+async function openRow(storeKey: CryptoKey, record: RowRecord): Promise<unknown> {
   const sealed = record.body ?? record.base
   if (sealed === null) throw new AppError('emptyRow', { context: { key: record.key } })
-  return openJson(storeKey, record.key, sealed)
+  return record.body === null
+    ? await openBase(storeKey, record.key, { base: sealed, told: record.told })
+    : await openJson(storeKey, record.key, sealed)
+}
+
+/** The shop's row, opened. */
+export async function openBase(
+  storeKey: CryptoKey,
+  key: string,
+  { base, told }: { base: Sealed; told?: RowRecord['told'] | undefined },
+): Promise<unknown> {
+  const row = await openJson(storeKey, key, base)
+  return told === undefined ? row : { ...(row as object), ...told }
 }

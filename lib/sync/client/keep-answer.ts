@@ -1,7 +1,8 @@
-import { applyAnswer, settleRows } from './answer'
+import { applyAnswer } from './answer'
 import type { Core } from './core'
 import { isFull, withRoom } from './free-room'
 import { type Answered, type Applied, applyOutcomes } from './outcomes'
+import { settleRows } from './settle-rows'
 
 /**
  * Applies what the shop answered; when the phone has no room, frees some and tries once more. Without

@@ -22,6 +22,8 @@ export type RowRecord = {
   gen: number
   /** The shop's row. */
   base: Sealed | null
+  /** Of an entry recorded here, whose `base` is its row as it was recorded: its place at the shop. */
+  told?: { order: number; receivedAt: string }
   /** The row with this phone's unsent ops on top; null when that is the base itself. */
   body: Sealed | null
 }

@@ -6,7 +6,6 @@ import { AppError, ok, type Result } from '@/lib/model/result'
 import type { Instant } from '@/lib/model/time'
 import type { SyncPorts } from '@/lib/ports/sync-ports'
 import type { OpInput } from '@/lib/sync/protocol/op'
-import { settleRows } from './answer'
 import { plantCanary } from './canary'
 import { type Core, OpenedCache } from './core'
 import { Drafts } from './drafts'
@@ -25,6 +24,7 @@ import { refuseByRole } from './refuse-by-role'
 import { RoomWatch } from './room'
 import { Screens } from './screens'
 import { openBytes } from './seal'
+import { settleRows } from './settle-rows'
 import { CorrectedClock, opIdOf } from './stamp'
 import type { RunStore } from './sync-run'
 import { watchUnsent } from './unsent-watch'
@@ -273,10 +273,10 @@ export class Phone {
   async #runStore(): Promise<RunStore> {
     if (await isWiped(this.core.db)) throw new AppError('storeWiped')
     await ifThereIsRoom(() => settleRows(this.core))
-    const { db, keys, step } = this.core
+    const { db, keys, step, cache } = this.core
     return {
       db,
-      outboxKey: keys.outbox,
+      openOp: (record) => cache.op(keys.outbox, record),
       sender: await this.#asSender(),
       pull: true,
       apply: (answered) => this.#apply(answered),

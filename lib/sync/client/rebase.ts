@@ -1,8 +1,8 @@
 import type { Op } from '@/lib/sync/protocol/op'
 import { applyOpLocally, rowsTouched, type Touched } from './apply-op'
-import type { Core } from './core'
+import { type Core, openBase } from './core'
 import { type OutboxRecord, type RowRecord, rowKey } from './phone-db'
-import { openJson, type Sealed, sealJson } from './seal'
+import { type Sealed, sealJson } from './seal'
 
 /**
  * Works out rows again: the shop's row with this phone's ops on top, in the order they were made (P9).
@@ -34,9 +34,11 @@ export async function readOverlay(
   core: Core,
   changes: readonly OutboxRecord[] = [],
 ): Promise<Overlay> {
-  const held = await core.db.outbox.where('state').notEqual('done').toArray()
+  const { outbox } = core.db
   const changed = new Map(changes.map((record) => [record.dseq, record]))
-  const records = held.map((record) => changed.get(record.dseq) ?? record)
+  const dseqs = await outbox.where('state').notEqual('done').primaryKeys()
+  const others = await outbox.bulkGet(dseqs.filter((dseq) => !changed.has(dseq)))
+  const records = [...changes, ...others.flatMap((record) => record ?? [])]
   records.sort((a, b) => a.dseq - b.dseq)
   const overlay: Overlay = new Map()
   for (const record of records.filter(isOnTop)) {
@@ -51,7 +53,7 @@ export async function readOverlay(
   return overlay
 }
 
-type Shop = {
+type Shop = Pick<RowRecord, 'told'> & {
   base: Sealed | null
   seq: number | null
   gen: number
@@ -67,14 +69,17 @@ export async function rebasedRow(
   overlay: Overlay,
 ): Promise<Omit<RowRecord, 'turn'> | null> {
   const entry = overlay.get(key)
-  const record = { key, ...shop, body: null }
-  if (entry === undefined) return shop.base === null ? null : record
-  const base = shop.base === null ? undefined : await openJson(core.keys.store, key, shop.base)
+  const { base: sealed, told, ...rest } = shop
+  const record = { key, ...rest, base: sealed, ...(sealed && told ? { told } : {}), body: null }
+  // Evidence is only ever added: nothing lies on top of what the shop has.
+  if (sealed !== null && (entry === undefined || shop.entity === 'logEntry')) return record
+  if (entry === undefined) return null
+  const base = sealed === null ? undefined : await openBase(core.keys.store, key, { base: sealed })
   const who = { personId: core.personId }
   const top = entry.ops.reduce((row, op) => applyOpLocally(row, entry.at, op, who), base)
   if (top === undefined) return null
   if (top === base) return record
   // The shop knows under which job a row is shown, should that have been merged (R13).
-  const jobId = shop.base === null ? entry.at.jobId : shop.jobId
+  const jobId = sealed === null ? entry.at.jobId : shop.jobId
   return { ...record, jobId, body: await sealJson(core.keys.store, key, top) }
 }

@@ -87,6 +87,7 @@ async function sealOp(core: Core, op: Op, nowMs: number): Promise<OutboxRecord> 
   const sealed = await sealJson(core.keys.outbox, opPlace(op.dseq, op.id), op)
   if (sealed.byteLength > MAX_OP_BYTES) throw new AppError('recordTooBig')
   core.step('opSealed')
+  core.cache.keepOp(op)
   return {
     dseq: op.dseq,
     opId: op.id,
@@ -172,6 +173,7 @@ async function changedRow(
     id: at.id,
     jobId: held?.jobId ?? at.jobId,
     ...(held?.mergedInto === undefined ? {} : { mergedInto: held.mergedInto }),
+    ...(held?.told === undefined ? {} : { told: held.told }),
     seq: held?.seq ?? null,
     gen: held?.gen ?? of.gen,
     base: held?.base ?? null,

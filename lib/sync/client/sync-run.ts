@@ -3,7 +3,6 @@ import { unfolded } from '@/lib/sync/protocol/brief'
 import { type SyncResponse, syncResponse } from '@/lib/sync/protocol/message'
 import type { Op } from '@/lib/sync/protocol/op'
 import type { BatchSize } from './batch-size'
-import { openOp } from './core'
 import { packRequest, type Sender, signedHeaders } from './envelope'
 import { heldBeyond } from './held'
 import { measureOffset } from './hlc'
@@ -20,7 +19,7 @@ import type { Need } from './views'
 /** What a run needs of a store; the worker's has no rows and perhaps no photos. */
 export type RunStore = {
   db: PhoneDb
-  outboxKey: CryptoKey
+  openOp(record: OutboxRecord): Promise<Op>
   sender: Sender
   pull: boolean
   apply(answered: Answered): Promise<Applied>
@@ -107,34 +106,34 @@ export class SyncRun {
   }
 
   async #count(): Promise<void> {
-    const ops = await this.#toSend()
-    this.#progress = { done: 0, total: ops.length + (await this.#photos.count()) }
+    const ops = await this.#waiting().count()
+    this.#progress = { done: 0, total: ops + (await this.#photos.count()) }
   }
 
-  async #toSend(): Promise<OutboxRecord[]> {
-    const { outbox } = this.#store.db
-    const found = await outbox.where('state').anyOf('waiting', 'blocked').sortBy('dseq')
-    return found.filter((record) => !this.#heldOps.has(record.dseq))
+  #waiting() {
+    return this.#store.db.outbox.where('state').anyOf('waiting', 'blocked')
   }
 
   /** Sends and pulls until both ends are even; null when they are. */
   async #records(): Promise<RunEnd | null> {
     for (;;) {
-      const records = await this.#toSend()
+      const waiting = await this.#waiting().sortBy('dseq')
+      const records = waiting.filter((record) => !this.#heldOps.has(record.dseq))
       if (records.length === 0 && this.#upToDate) return null
-      const end = await this.#exchange(records)
+      const end = await this.#exchange({ records, waiting })
       if (end !== null) return end
     }
   }
 
-  async #exchange(records: OutboxRecord[]): Promise<RunEnd | null> {
-    const { db, sender, step, outboxKey } = this.#store
-    const front = records.slice(0, this.#size.limit)
-    const ops: Op[] = await Promise.all(front.map((record) => openOp(outboxKey, record)))
+  async #exchange(left: Record<'records' | 'waiting', OutboxRecord[]>): Promise<RunEnd | null> {
+    const { db, sender, step, openOp } = this.#store
+    const front = left.records.slice(0, this.#size.limit)
+    const ops: Op[] = await Promise.all(front.map(openOp))
     const cursor = (await readMeta(db, 'cursor')) ?? null
-    const held = await heldBeyond(db, records)
+    const held = await heldBeyond(db, left)
     const sentMs = this.#ports.clock.now()
     const packed = await packRequest({
+      sender,
       ops,
       limit: this.#size.limit,
       cursor: this.#store.pull ? cursor : null,
@@ -200,12 +199,11 @@ export class SyncRun {
 
   /** Ops that are still to send after the answer wait for the next run. */
   async #holdWhatStays(batch: OutboxRecord[]): Promise<void> {
-    const now = await this.#store.db.outbox.bulkGet(batch.map((record) => record.dseq))
-    for (const record of now) {
-      if (record?.state === 'waiting') this.#waits = true
-      if (record?.state === 'waiting' || record?.state === 'blocked') {
-        this.#heldOps.add(record.dseq)
-      }
+    const sent = new Set(batch.map((record) => record.dseq))
+    for (const { dseq, state } of await this.#waiting().toArray()) {
+      if (!sent.has(dseq)) continue
+      if (state === 'waiting') this.#waits = true
+      this.#heldOps.add(dseq)
     }
     this.#advance(batch.length)
   }

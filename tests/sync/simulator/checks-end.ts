@@ -3,8 +3,8 @@
 import canonicalize from 'canonicalize'
 import { asShop } from '@/db/client'
 import { type LogCursor, pullPage } from '@/db/queries/change-log'
+import { openBase } from '@/lib/sync/client/core'
 import { isStored, readRow } from '@/lib/sync/client/entities'
-import { openJson } from '@/lib/sync/client/seal'
 import { breaks } from './broken-rule'
 import { holdEffects } from './checks-effects'
 import { holdVisible, isEven, lookAtPhone } from './checks-phone'
@@ -176,7 +176,8 @@ async function holdSame(key: string, { phone, user }: Tab): Promise<void> {
   const truth = await freshPull(user)
   for (const record of await db.row.toArray()) {
     if (record.base === null) continue
-    const held = textOf(await openJson(keys.store, record.key, record.base))
+    const base = await openBase(keys.store, record.key, { base: record.base, told: record.told })
+    const held = textOf(base)
     if (held === truth.get(record.key)) continue
     const shop = truth.get(record.key)
     breaks('everybodyConverges', `${key}: ${record.key}\n  held ${held}\n  shop ${shop}`)
