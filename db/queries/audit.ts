@@ -79,9 +79,10 @@ const chain = (tx: ShopTx, jobId: Id | null) =>
 
 async function chainHeads(tx: ShopTx, chains: Id[]) {
   const { rows } = await sql<{ chain: Id; order: number; hash: string }>`
-    select distinct on (chain) chain, order_no as order, hash from audit_entry
-    where shop_id = ${tx.shopId} and chain = any(${chains}::uuid[])
-    order by chain, order_no desc
+    select c.id as chain, e.order_no as order, e.hash
+    from unnest(${chains}::uuid[]) as c (id) cross join lateral (
+      select order_no, hash from audit_entry
+      where shop_id = ${tx.shopId} and chain = c.id order by order_no desc limit 1) e
   `.execute(tx)
   return new Map<Id, { order: number; hash: string | null }>(rows.map((row) => [row.chain, row]))
 }

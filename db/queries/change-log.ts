@@ -6,6 +6,7 @@ import type { Role } from '@/lib/model/role'
 import type { ShopTx } from '../client'
 import type { ChangeEntity } from './changes'
 import { versionsByNumber } from './code-book'
+import type { LogStand } from './exchange'
 import { jobsById, onPhoneOf } from './jobs'
 import { logEntriesById, placesOfEntries } from './log-entries'
 import { listBags, listMeters, listModels, machinesById } from './machines'
@@ -77,6 +78,14 @@ export async function pullPage(
   const more = isCut || heads.length > limit
   const seq = more ? (rows.at(-1)?.seq ?? after) : upTo
   return { kind: 'page', rows, cursor: { ...start, seq }, more }
+}
+
+/** The page of one who has everything, told without another question; null when there is something to tell. */
+export function evenPage(stand: LogStand, shop: Id, cursor: LogCursor): LogPage | null {
+  const { scopeVersion, seq } = stand
+  const start = { epoch: epochText(stand), shop, scopeVersion, seq: 0 }
+  if (cursor.seq !== seq || !fits(cursor, start, stand)) return null
+  return { kind: 'page', rows: [], cursor: { ...start, seq }, more: false }
 }
 
 /**

@@ -62,10 +62,7 @@ export async function isTouchedSince(
   of: { seq: number; jobIds: readonly Id[]; entityIds: readonly string[] },
 ): Promise<boolean> {
   const { rows } = await sql<{ touched: boolean }>`
-    select exists (select 1 from change_log c
-      where c.shop_id = ${tx.shopId} and c.seq > ${of.seq}
-        and (c.job_id = any(${of.jobIds}::uuid[]) or c.entity_id = any(${of.entityIds}::text[])
-          or c.entity = 'book')) as touched
+    select is_touched(${tx.shopId}, ${of.seq}, ${of.jobIds}::uuid[], ${of.entityIds}::text[]) as touched
   `.execute(tx)
   return rows[0]?.touched === true
 }

@@ -3,7 +3,7 @@ import type { Id } from '@/lib/model/id'
 import type { Actor } from '@/lib/model/person'
 import type { Instant } from '@/lib/model/time'
 import type { ShopTx } from '../client'
-import type { Sender } from './devices'
+import type { Sender } from './exchange'
 import type { Quarantine } from './quarantine'
 
 /**
@@ -13,7 +13,7 @@ import type { Quarantine } from './quarantine'
 export function standOf({
   device,
   person,
-}: Sender): { actor: Actor; quarantine: Quarantine | null } | null {
+}: Pick<Sender, 'device' | 'person'>): { actor: Actor; quarantine: Quarantine | null } | null {
   if (person === null) return null
   const { actor, isMember } = person
   if (device.revokedAt !== null) {

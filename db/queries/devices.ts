@@ -1,6 +1,5 @@
 import { sql } from 'kysely'
 import type { Id } from '@/lib/model/id'
-import type { Actor } from '@/lib/model/person'
 import type { Role } from '@/lib/model/role'
 import type { Instant } from '@/lib/model/time'
 import type { ShopTx } from '../client'
@@ -71,37 +70,6 @@ export async function findDevice(tx: ShopTx, id: Id): Promise<Device | undefined
     .executeTakeFirst()
 }
 
-/**
- * Answers a phone with the person it belongs to, in one statement as every exchange asks it: with the roles
- * they have, or had when their membership ended (`isMember`). No person: nobody of the shop's people any
- * more. Undefined when there is no such phone in this shop.
- */
-export async function findSender(tx: ShopTx, deviceId: Id): Promise<Sender | undefined> {
-  const row = await tx
-    .selectFrom('device as d')
-    .leftJoin('membership as m', (join) =>
-      join.onRef('m.shopId', '=', 'd.shopId').onRef('m.personId', '=', 'd.personId'),
-    )
-    .leftJoin('person as p', (join) =>
-      join.onRef('p.shopId', '=', 'd.shopId').onRef('p.id', '=', 'm.personId'),
-    )
-    .leftJoin('personContact as c', (join) =>
-      join.onRef('c.shopId', '=', 'd.shopId').onRef('c.personId', '=', 'd.personId'),
-    )
-    .select(COLUMNS.map((column) => `d.${column}` as const))
-    .select(['m.roles', 'm.revokedAt as leftAt', 'p.deletedAt', 'c.name as personName'])
-    .where('d.shopId', '=', tx.shopId)
-    .where('d.id', '=', deviceId)
-    .executeTakeFirst()
-  if (row === undefined) return undefined
-  const { roles, leftAt, deletedAt, personName, ...device } = row
-  if (roles === null) return { device, person: null }
-  const actor = { shopId: tx.shopId, personId: device.personId, roles, name: personName }
-  return { device, person: { actor, isMember: leftAt === null && deletedAt === null } }
-}
-
-export type Sender = { device: Device; person: { actor: Actor; isMember: boolean } | null }
-
 /** Answers the shop's phones, the last one seen first. */
 export async function listDevices(tx: ShopTx): Promise<Device[]> {
   return await tx
@@ -115,41 +83,18 @@ export async function listDevices(tx: ShopTx): Promise<Device[]> {
 /** What a phone says that it still holds beyond what it has just sent. */
 export type Held = { ops: number; photos: number; oldestAt: Instant | null }
 
-/**
- * Notes that the phone was here: its clock against ours, how far its ops have come, and what it told of
- * itself (P22). `held` and `canary` are left as they were when it told nothing.
- */
-export async function noteDevice(
-  tx: ShopTx,
-  seen: {
-    id: Id
-    at: Instant
-    clockOffsetMs: number | null
-    highestDseq: number | null
-    held?: Held | null
-    canary?: Id | null
-  },
-): Promise<void> {
-  const { held = null, canary = null } = seen
-  await tx
-    .updateTable('device')
-    .set({
-      lastSeenAt: seen.at,
-      clockOffsetMs: sql`coalesce(${seen.clockOffsetMs}::bigint, clock_offset_ms)`,
-      highestDseq: sql`greatest(highest_dseq, ${seen.highestDseq ?? 0}::bigint)`,
-      ...(held === null
-        ? {}
-        : {
-            heldOps: held.ops,
-            heldPhotos: held.photos,
-            heldOldestAt: held.oldestAt,
-            heldToldAt: seen.at,
-          }),
-      ...(canary === null ? {} : { canary }),
-    })
-    .where('shopId', '=', tx.shopId)
-    .where('id', '=', seen.id)
-    .execute()
+/** What a phone tells of itself when it is heard; `held` and `canary` stay as they were when it told nothing. */
+export type Contact = {
+  at: Instant
+  clockOffsetMs: number | null
+  highestDseq: number | null
+  held?: Held | null
+  canary?: Id | null
+}
+
+/** Notes that the phone was here: its clock against ours, and how far its ops have come (P22). */
+export async function noteDevice(tx: ShopTx, { id, ...seen }: Contact & { id: Id }): Promise<void> {
+  await sql`select note_contact(${tx.shopId}, ${id}, ${JSON.stringify(seen)}::jsonb)`.execute(tx)
 }
 
 /** Takes a phone out for good: its pulls end, its pushes go to quarantine. False when it was out before. */

@@ -86,9 +86,10 @@ const recordOf = (entry: LogEntry, at: { order: number; receivedAt: Instant; sho
 
 async function chainHeads(tx: ShopTx, jobIds: Id[]) {
   const { rows } = await sql<{ jobId: Id; order: number; hash: string }>`
-    select distinct on (job_id) job_id, order_no as order, hash from log_entry
-    where shop_id = ${tx.shopId} and job_id = any(${jobIds}::uuid[])
-    order by job_id, order_no desc
+    select j.id as job_id, e.order_no as order, e.hash
+    from unnest(${jobIds}::uuid[]) as j (id) cross join lateral (
+      select order_no, hash from log_entry
+      where shop_id = ${tx.shopId} and job_id = j.id order by order_no desc limit 1) e
   `.execute(tx)
   return new Map<Id, { order: number; hash: string | null }>(rows.map((row) => [row.jobId, row]))
 }

@@ -55,22 +55,7 @@ export async function knownOps(tx: ShopTx, opIds: readonly string[]): Promise<Se
  */
 export async function saveOps(tx: ShopTx, stored: readonly StoredOp[]): Promise<void> {
   if (stored.length === 0) return
-  await sql`
-    insert into sync_op (shop_id, op_id, device_id, dseq, person_id, kind, entity_id, job_id, raw,
-      outcome, code, field, detail, blocked_on, loser, received_at, settled_at)
-    select ${tx.shopId}::uuid, o."opId", o."deviceId", o.dseq, o."personId", o.kind, o."entityId",
-      o."jobId", o.raw, o.outcome, o.code, o.field, o.detail, o."blockedOn", nullif(o.loser, 'null'::jsonb),
-      o."receivedAt", o."settledAt"
-    from json_to_recordset(${JSON.stringify(stored)}::json) as o ("opId" text, "deviceId" uuid,
-      dseq bigint, "personId" uuid, kind text, "entityId" text, "jobId" uuid, raw text, outcome text,
-      code text, field text, detail text, "blockedOn" text, loser jsonb, "receivedAt" timestamptz,
-      "settledAt" timestamptz)
-    on conflict (shop_id, op_id) do update set
-      outcome = excluded.outcome, code = excluded.code, field = excluded.field,
-      detail = excluded.detail, blocked_on = excluded.blocked_on, loser = excluded.loser,
-      settled_at = excluded.settled_at
-    where sync_op.outcome in ('blocked', 'quarantined')
-  `.execute(tx)
+  await sql`select save_ops(${tx.shopId}, ${JSON.stringify(stored)}::json)`.execute(tx)
 }
 
 /** True when an op of this phone that was refused for good speaks of a file by its hash. */

@@ -29,7 +29,7 @@ export async function openDatabaseLine(url: string): Promise<DatabaseLine> {
       sockets.delete(program)
     }
     program.on('data', (piece) => {
-      stores ||= armed !== null && piece.includes('insert into sync_op')
+      stores ||= armed !== null && /save_ops|take_evidence/.test(piece.toString('latin1'))
       const isCommit = stores && armed !== null && piece.includes('commit')
       if (isCommit && armed?.how === 'before') {
         armed.done()

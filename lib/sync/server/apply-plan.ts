@@ -2,6 +2,7 @@ import type { ShopTx } from '@/db/client'
 import { insertAdvice } from '@/db/queries/advice'
 import { appendAudit } from '@/db/queries/audit'
 import { type Change, takeChanges, takeJobNumbers } from '@/db/queries/changes'
+import { type Evidence, takeEvidence } from '@/db/queries/evidence'
 import { insertJobs, setJobStand } from '@/db/queries/jobs'
 import { insertLinks, linkEntries, type NewLinks } from '@/db/queries/log-entries'
 import { insertMachines } from '@/db/queries/machines'
@@ -55,14 +56,28 @@ export async function applyPlan(
   )
   await writeValues(tx, effects, sender)
   await appendAudit(tx, [...auditOf(effects, sender), ...auditOfValues(effects, sender)])
-  await saveOps(
-    tx,
-    plan.outcomes.map(({ op, outcome }) => storedOp(op, outcome, sender)),
-  )
+  await saveOps(tx, storedOps(plan, sender))
   await enqueueTasks(tx, effects, at)
   const changes = changesOf(effects, known)
   if (changes.length > 0) await takeChanges(tx, changes)
 }
+
+/**
+ * The same for a plan that only adds entries (addsOnly), in one statement that also locks the counter. False
+ * when it was overtaken meanwhile, and then nothing is written.
+ */
+export async function applyEvidence(
+  tx: ShopTx,
+  of: { plan: Plan; known: Known; sender: Sender; links: NewLinks; rests: Evidence['rests'] },
+): Promise<boolean> {
+  const { plan, known, sender, links, rests } = of
+  const changes = changesOf(plan.effects, known)
+  const stored = storedOps(plan, sender)
+  return await takeEvidence(tx, { links, stored, changes, readAt: known.at.seq, rests })
+}
+
+const storedOps = ({ outcomes }: Plan, sender: Sender): StoredOp[] =>
+  outcomes.map(({ op, outcome }) => storedOp(op, outcome, sender))
 
 async function writeJobs(tx: ShopTx, effects: Effects, sender: Sender): Promise<void> {
   const { actor, deviceId, at } = sender

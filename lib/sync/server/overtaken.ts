@@ -1,5 +1,6 @@
 import type { ShopTx } from '@/db/client'
 import { isTouchedSince } from '@/db/queries/changes'
+import type { Evidence } from '@/db/queries/evidence'
 import { knownOps } from '@/db/queries/sync-ops'
 import type { Id } from '@/lib/model/id'
 import type { Known } from './known'
@@ -35,10 +36,17 @@ export async function isOvertaken(
 }
 
 /** True when another request settled one of these ops since they were looked up. */
-async function hasTwin(tx: ShopTx, ops: readonly ReadOp[], known: Known): Promise<boolean> {
-  const ids: Id[] = ops.map((op) => op.opId).filter((opId) => !known.seen.has(opId))
-  return (await knownOps(tx, ids)).size > 0
-}
+const hasTwin = async (tx: ShopTx, ops: readonly ReadOp[], known: Known): Promise<boolean> =>
+  (await knownOps(tx, unseen(ops, known))).size > 0
+
+const unseen = (ops: readonly ReadOp[], known: Known): string[] =>
+  ops.map((op) => op.opId).filter((opId) => !known.seen.has(opId))
+
+/** What must stand as it was read for a plan of plain evidence to hold. */
+export const restsOn = (ops: readonly ReadOp[], known: Known): Evidence['rests'] => ({
+  ...dependsOn(ops, known),
+  opIds: unseen(ops, known),
+})
 
 /** The jobs, those that go on for them, and the entries that evidence is judged by; and who writes it. */
 function dependsOn(

@@ -2,11 +2,11 @@ import { asShop, type ShopTx } from '@/db/client'
 import { lockShop, logStand } from '@/db/queries/changes'
 import { linkEntries } from '@/db/queries/log-entries'
 import type { OpResult } from '@/lib/sync/protocol/message'
-import { applyPlan, type Sender } from './apply-plan'
+import { applyEvidence, applyPlan, type Sender } from './apply-plan'
 import { troubleOf } from './database-trouble'
 import type { Known } from './known'
 import { loadKnown } from './load-known'
-import { addsOnly, isOvertaken } from './overtaken'
+import { addsOnly, isOvertaken, restsOn } from './overtaken'
 import { type Plan, planPush } from './plan'
 import { type ReadOp, readOp } from './read-ops'
 
@@ -118,8 +118,13 @@ export async function settle(
   let plan = planPush(ops, known)
   if (plan.outcomes.length === 0) return plan
   // Hashes take longest of all, so the links of mere evidence are made before the lock.
-  const { entries } = plan.effects
-  let links = addsOnly(ops, plan) ? await linkEntries(tx, { entries, receivedAt: sender.at }) : null
+  const isEvidence = addsOnly(ops, plan)
+  const { entries, advice } = plan.effects
+  let links = isEvidence ? await linkEntries(tx, { entries, receivedAt: sender.at }) : null
+  if (links !== null && advice.length === 0) {
+    if (await applyEvidence(tx, { plan, known, sender, links, rests: restsOn(ops, known) }))
+      return plan
+  }
   const lockedAt = await lockShop(tx)
   if (await isOvertaken(tx, { ops, plan, known, lockedAt })) {
     known = await read(lockedAt)

@@ -1,9 +1,9 @@
 import { asShop, asShopLightly, type ShopTx } from '@/db/client'
-import { pullPage } from '@/db/queries/change-log'
-import { type Device, noteDevice } from '@/db/queries/devices'
+import { evenPage, pullPage } from '@/db/queries/change-log'
+import { type Contact, noteDevice } from '@/db/queries/devices'
 import type { Quarantine } from '@/db/queries/quarantine'
+import type { SignedSender } from '@/lib/auth/device'
 import type { Id } from '@/lib/model/id'
-import type { Actor } from '@/lib/model/person'
 import { fail, ok, type Result } from '@/lib/model/result'
 import {
   PAGE_ROWS,
@@ -13,11 +13,12 @@ import {
   type SyncResponse,
   syncRequest,
 } from '@/lib/sync/protocol/message'
+import { fullOp } from '@/lib/sync/protocol/short'
 import { MAX_RAW_BYTES, readCapped, readJson } from './body'
 import { foldedPage, foldedPush, type OwnEntries, ownEntries } from './brief'
 import { missingNumbers } from './gaps'
 import type { HttpProblem } from './problems'
-import { takePush } from './push'
+import { type PushAnswer, takePush } from './push'
 import { takeIntoQuarantine, wipeOrder } from './quarantine'
 import { bodyHashOf, type Claim, readClaim } from './signed-request'
 import { noteStoreChange, toldToNewStore } from './store-change'
@@ -50,20 +51,31 @@ export async function readPush(packed: PackedPush): Promise<Result<SyncRequest, 
   const taken = takesProtocol(typeof version === 'number' ? version : PROTOCOL)
   if (!taken.ok) return taken
   const message = syncRequest.safeParse(json.value)
-  if (message.success) return ok(message.data)
+  if (message.success) return ok(inFull(message.data, packed.claim))
   const tooMany = message.error.issues.some((issue) => issue.code === 'too_big')
   return fail({ kind: tooMany ? 'tooLarge' : 'badJson' })
 }
 
-/** Everything one exchange with a phone needs. `session`: who is signed in there, if anybody. */
+/** With its ops in full, whatever it left out of them to be brief (lib/sync/protocol/short.ts). */
+function inFull(message: SyncRequest, { deviceId, personId }: Claim): SyncRequest {
+  if (!isBrief(message)) return message
+  return { ...message, ops: message.ops.map((op) => fullOp(op, { dev: deviceId, personId })) }
+}
+
+const isBrief = ({ protocol, brief }: SyncRequest): boolean => protocol >= 2 && brief === true
+
+/** Everything one exchange with a phone needs; who is signed in there comes with the device, if anybody. */
 export type Exchange = {
-  device: { actor: Actor; deviceId: Id; device: Device; quarantine: Quarantine | null }
-  session: Actor | null
+  device: SignedSender
   message: SyncRequest
   dseq: Claim['dseq']
   now: number
   newId: () => Id
 }
+
+/** What to note of a phone in the very question who it is: of one that sends nothing, nothing waits for it. */
+export const seenAtOnce = (of: Pick<Exchange, 'message' | 'dseq' | 'now'>): Contact | null =>
+  of.message.ops.length === 0 ? contactOf(of) : null
 
 /** An answer in the words of the phone's own protocol: the one before knows nothing of the newer fields. */
 export type Answer = Omit<SyncResponse, 'order' | 'missing' | 'lost' | 'silent'> &
@@ -71,17 +83,38 @@ export type Answer = Omit<SyncResponse, 'order' | 'missing' | 'lost' | 'silent'>
 
 /** Takes the push, then answers the pull, so that a phone gets its own rows back in the same answer. */
 export async function exchange(with_: Exchange): Promise<Answer> {
-  const { device, message, dseq, now, newId } = with_
+  const { device, message, now, newId } = with_
   if (device.quarantine !== null) return await handOver(with_, device.quarantine)
   const at = new Date(now).toISOString()
   const { actor, deviceId } = device
   const pushed = await takePush(message.ops, { actor, deviceId, at, newId }, logKnown(with_))
-  const own =
-    message.protocol >= 2 && message.brief === true ? ownEntries(message.ops, pushed) : null
+  const own = isBrief(message) ? ownEntries(message.ops, pushed) : null
+  const told = evenAnswer(with_) ?? (await restOfAnswer(with_, own))
+  const settled = own === null ? pushed : foldedPush(message.ops, pushed)
+  return { protocol: message.protocol, serverTime: at, ...settled, ...told }
+}
+
+/** The answer to a phone that sent nothing and has everything, as far as it was told with the sender; else null. */
+function evenAnswer({ device, message }: Exchange): Omit<Answer, keyof PushAnswer | Basis> | null {
+  const { stand, noted, session, actor } = device
+  const { cursor } = message
+  const isPlain = noted && device.device.gapsToldAt === null && message.protocol >= 2
+  if (!isPlain || stand === null || cursor === null) return null
+  if (!message.pull || !isTheirs({ actor, session })) return null
+  const pull = evenPage(stand, actor.shopId, cursor)
+  return pull && { pull, order: 'none', missing: [], lost: null }
+}
+type Basis = 'protocol' | 'serverTime' | 'takenNumbers'
+
+/** Notes the phone and reads what is new for it. */
+async function restOfAnswer(with_: Exchange, own: OwnEntries | null) {
+  const { device, message, dseq, now, newId } = with_
+  const { actor, deviceId, noted } = device
+  const at = new Date(now).toISOString()
   // Nothing in here was promised to anybody: a note that a crash loses is made again by the next exchange.
-  const told = await asShopLightly(actor.shopId, async (tx) => {
+  return await asShopLightly(actor.shopId, async (tx) => {
     await noteStoreChange(tx, { device: device.device, canary: message.canary, at, newId })
-    await noteDevice(tx, contactOf(with_, at))
+    if (!noted) await noteDevice(tx, { id: deviceId, ...contactOf(with_) })
     const pull = await pullFor(tx, with_, own)
     if (message.protocol < 2) return { pull }
     const { ops, cursor } = message
@@ -89,8 +122,6 @@ export async function exchange(with_: Exchange): Promise<Answer> {
     const before = cursor === null ? await toldToNewStore(tx, deviceId) : { lost: null }
     return { pull, order: 'none' as const, missing, ...before }
   })
-  const settled = own === null ? pushed : foldedPush(message.ops, pushed)
-  return { protocol: message.protocol, serverTime: at, ...settled, ...told }
 }
 
 /** The same with a phone that may not write any more: it is heard, shown nothing, and in the end emptied. */
@@ -102,7 +133,7 @@ async function handOver(with_: Exchange, why: Quarantine): Promise<Answer> {
   const pushed = await takeIntoQuarantine(message.ops, sender)
   const order = await asShop(actor.shopId, async (tx) => {
     await noteStoreChange(tx, { device: device.device, canary: message.canary, at, newId })
-    await noteDevice(tx, contactOf(with_, at))
+    await noteDevice(tx, { id: deviceId, ...contactOf(with_) })
     if (message.protocol < 2) return 'none'
     const { wipeToldAt } = device.device
     return await wipeOrder(tx, { ...sender, wipeToldAt }, message.held)
@@ -113,11 +144,10 @@ async function handOver(with_: Exchange, why: Quarantine): Promise<Answer> {
 }
 
 /** What the shop notes of a phone that reached it: its clock, and how far its numbers have come (P22). */
-function contactOf({ device, message, dseq, now }: Exchange, at: string) {
+function contactOf({ message, dseq, now }: Pick<Exchange, 'message' | 'dseq' | 'now'>): Contact {
   const said = Date.parse(message.clientTime)
   return {
-    id: device.deviceId,
-    at,
+    at: new Date(now).toISOString(),
     clockOffsetMs: Number.isFinite(said) ? said - now : null,
     highestDseq: dseq?.last ?? null,
     held: heldOf(message),
@@ -139,7 +169,7 @@ function heldOf({ held }: SyncRequest) {
 }
 
 /** A pull needs the session of the very person whose phone asks; anybody else's is no session (P18). */
-const isTheirs = ({ device: { actor }, session }: Exchange): boolean =>
+const isTheirs = ({ actor, session }: Pick<SignedSender, 'actor' | 'session'>): boolean =>
   session?.shopId === actor.shopId && session.personId === actor.personId
 
 /**
@@ -148,13 +178,15 @@ const isTheirs = ({ device: { actor }, session }: Exchange): boolean =>
  */
 function logKnown(with_: Exchange): string | null {
   const { cursor, pull } = with_.message
-  return cursor !== null && pull && isTheirs(with_) ? (cursor.epoch.split('.')[0] ?? null) : null
+  return cursor !== null && pull && isTheirs(with_.device)
+    ? (cursor.epoch.split('.')[0] ?? null)
+    : null
 }
 
 async function pullFor(tx: ShopTx, with_: Exchange, own: OwnEntries | null): Promise<PullAnswer> {
   const { device, message } = with_
   if (!message.pull) return { kind: 'notAsked' }
-  if (!isTheirs(with_)) return { kind: 'signIn' }
+  if (!isTheirs(device)) return { kind: 'signIn' }
   const { cursor } = message
   const { actor, deviceId } = device
   const asked = { actor, cursor, limit: PAGE_ROWS, deviceId }

@@ -1,7 +1,8 @@
 import { verify } from 'node:crypto'
-import { asShop } from '@/db/client'
+import { lookUp } from '@/db/client'
 import { standOf } from '@/db/queries/device-stand'
-import { type Device, findSender } from '@/db/queries/devices'
+import type { Device } from '@/db/queries/devices'
+import { openExchange } from '@/db/queries/exchange'
 import type { Quarantine } from '@/db/queries/quarantine'
 import type { Actor } from '@/lib/model/person'
 import { fail, ok, type Result } from '@/lib/model/result'
@@ -44,7 +45,8 @@ export async function checkFile(
   if (!file.ok) return file
   const { shop, person, device: deviceId, at } = file.value
   if (shop !== desk.shopId) return fail({ kind: 'otherShop' })
-  const found = await asShop(desk.shopId, (tx) => findSender(tx, deviceId))
+  const asked = { shopId: desk.shopId, deviceId, sessionId: null, now: at, seen: null }
+  const found = await lookUp((db) => openExchange(db, asked))
   if (found?.device.personId !== person) return fail({ kind: 'unknownPhone' })
   const { device } = found
   if (!isSigned(file.value, device)) return fail({ kind: 'changedFile' })

@@ -96,7 +96,7 @@ async function passed(client: Client, given: Given): Promise<pg.QueryResult> {
   const passage = passages.getStore()
   const actor = passage?.actor
   const gate = async (at: string) => hook.stage?.gate(actor, at)
-  if (/take_changes/.test(given.text)) changing.add(client)
+  if (/take_changes|take_evidence/.test(given.text)) changing.add(client)
   await gate(labelOf(client, given.text))
   if (passage !== undefined) passage.count += 1
   const fault = passage?.fault ?? null
@@ -111,7 +111,7 @@ async function passed(client: Client, given: Given): Promise<pg.QueryResult> {
       if (actor !== undefined) actor.pid = null
     }
   }
-  const isLock = /lock_counter|take_changes|take_job_numbers/.test(given.text)
+  const isLock = /lock_counter|take_changes|take_evidence|take_job_numbers/.test(given.text)
   if (fault?.kind === 'lockTimeout' && isLock) return await underHolder({ ...given, run })
   const { text, values } = given
   const answer = hook.rewrite
@@ -142,6 +142,7 @@ const changing = new WeakSet<Client>()
 /** A statement by what matters in it, or its first words. */
 function labelOf(client: Client, text: string): string {
   if (text === 'commit' && changing.delete(client)) return 'commit of changes'
-  const named = /lock_counter|take_changes|take_job_numbers|set_config|shop_counter|change_log/
+  const named =
+    /lock_counter|take_changes|take_evidence|take_job_numbers|open_exchange|set_config|shop_counter|change_log/
   return named.exec(text)?.[0] ?? text.trim().split(/\s+/).slice(0, 4).join(' ')
 }
