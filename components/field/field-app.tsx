@@ -9,7 +9,6 @@ import { routeOf } from './route'
 import { FieldRouter, useRoute } from './router'
 import { Screens } from './screens'
 import { Shell } from './shell'
-import { SignedOut } from './signed-out'
 
 const never = () => () => undefined
 
@@ -41,11 +40,14 @@ function Inside() {
   }
   return (
     <Shell route={route}>
-      {session.kind === 'signedOut' && route.name !== 'about' ? (
-        <SignedOut emptied={session.emptied === true} />
-      ) : (
-        <Screens route={route} />
-      )}
+      <Screens
+        route={route}
+        signedOut={
+          session.kind === 'signedOut' && route.name !== 'about'
+            ? { emptied: session.emptied === true }
+            : null
+        }
+      />
     </Shell>
   )
 }

@@ -5,7 +5,6 @@ import { useJob } from '@/components/store/use-rows'
 import { KeyLink } from '@/components/ui/key'
 import { Screen } from '@/components/ui/screen'
 import { JobsScreen } from './jobs-screen'
-import { NotHere } from './not-here'
 import type { Route } from './route'
 import { useRoute } from './router'
 
@@ -41,6 +40,8 @@ const AskPartScreen = later(() =>
 const PartsScreen = later(() =>
   import('@/components/parts/parts-screen').then((file) => file.PartsScreen),
 )
+const NotHere = later(() => import('./not-here').then((file) => file.NotHere))
+const SignedOut = later(() => import('./signed-out').then((file) => file.SignedOut))
 const JobScreen = later(() => import('./job/job-screen').then((file) => file.JobScreen))
 const LogScreen = later(() => import('./log/log-screen').then((file) => file.LogScreen))
 const CodesScreen = later(() => import('./codes/codes-screen').then((file) => file.CodesScreen))
@@ -63,8 +64,13 @@ const PlaceScreen = later(() => import('./settings/place-screen').then((file) =>
 const AboutScreen = later(() => import('./phone/about-screen').then((file) => file.AboutScreen))
 const UnsentScreen = later(() => import('./phone/unsent-screen').then((file) => file.UnsentScreen))
 
+type Props = {
+  route: Route /** Set when nobody is at work here. */
+  signedOut: { emptied: boolean } | null
+}
+
 /** The screen of a route. The jobs come with the app; the others are fetched when first wanted. */
-export function Screens({ route }: { route: Route }) {
+export function Screens({ route, signedOut }: Props) {
   return (
     <Suspense
       fallback={
@@ -73,9 +79,13 @@ export function Screens({ route }: { route: Route }) {
         </Screen>
       }
     >
-      <LandOnLead route={route}>
-        <OneScreen route={route} />
-      </LandOnLead>
+      {signedOut === null ? (
+        <LandOnLead route={route}>
+          <OneScreen route={route} />
+        </LandOnLead>
+      ) : (
+        <SignedOut emptied={signedOut.emptied} />
+      )}
     </Suspense>
   )
 }

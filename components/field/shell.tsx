@@ -1,7 +1,9 @@
 'use client'
 
-import { type ReactNode, useEffect, useRef } from 'react'
+import { lazy, type ReactNode, Suspense, useEffect, useRef } from 'react'
+import { useLost } from '@/components/store/use-lost'
 import { useJob, useMachines, useModels } from '@/components/store/use-rows'
+import { useSilent } from '@/components/store/use-silent'
 import { useUnsent } from '@/components/store/use-unsent'
 import { useAppUpdate } from '@/components/store/use-updates'
 import { announce } from '@/components/ui/announce'
@@ -14,8 +16,6 @@ import { TaskHeader } from '@/components/ui/task-header'
 import { shownTitle } from '@/components/ui/title-focus'
 import { WitnessMark, type WitnessState } from '@/components/ui/witness-mark'
 import { WARN_SHARE } from '@/lib/sync/client/room'
-import { LostNotice } from './phone/lost-notice'
-import { SilentNotice } from './phone/silent-notice'
 import { StoreTrouble } from './phone/store-trouble'
 import { backOf, isForm, type JobTab, jobHref, type Route } from './route'
 import { useRoute } from './router'
@@ -57,8 +57,7 @@ export function Shell({ route, children }: { route: Route; children: ReactNode }
       </header>
       {isForm(route) ? null : <UpdateBar />}
       <StoreTrouble />
-      <LostNotice />
-      <SilentNotice />
+      <Notices />
       <main id="main" className="flex flex-1 flex-col">
         {children}
       </main>
@@ -76,6 +75,25 @@ export function Shell({ route, children }: { route: Route; children: ReactNode }
       ) : null}
       <LiveRegion />
     </div>
+  )
+}
+
+const LostNotice = lazy(() =>
+  import('./phone/lost-notice').then((file) => ({ default: file.LostNotice })),
+)
+const SilentNotice = lazy(() =>
+  import('./phone/silent-notice').then((file) => ({ default: file.SilentNotice })),
+)
+
+/** What hardly ever is to be said is fetched when it is. */
+function Notices() {
+  const isLost = useLost().lost !== null
+  const isSilent = useSilent().silent !== null
+  return (
+    <Suspense fallback={null}>
+      {isLost ? <LostNotice /> : null}
+      {isSilent ? <SilentNotice /> : null}
+    </Suspense>
   )
 }
 
