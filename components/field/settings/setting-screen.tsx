@@ -54,7 +54,9 @@ export function SettingScreen(props: Props) {
       second={props.second}
       foot={
         <>
-          {refusal === null ? null : <p className="font-bold text-nogo">{refusal.words}</p>}
+          {refusal === null || refusal.field !== null ? null : (
+            <p className="font-bold text-nogo">{refusal.words}</p>
+          )}
           <NotSaved problem={problem} />
           <Key kind="main" disabled={!props.ready || saving} onClick={() => void press()}>
             {props.saveWords}
