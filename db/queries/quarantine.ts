@@ -36,6 +36,18 @@ export async function keepInQuarantine(tx: ShopTx, ops: readonly QuarantineOp[])
   `.execute(tx)
 }
 
+/** Answers how much of a phone lies in quarantine: items, and the bytes of their texts. */
+export async function quarantineLoad(
+  tx: ShopTx,
+  deviceId: Id,
+): Promise<{ items: number; bytes: number }> {
+  const { rows } = await sql<{ items: number; bytes: number }>`
+    select count(*) as items, coalesce(sum(octet_length(raw)), 0)::bigint as bytes from quarantine_op
+    where shop_id = ${tx.shopId} and device_id = ${deviceId}
+  `.execute(tx)
+  return rows[0] ?? { items: 0, bytes: 0 }
+}
+
 /** Answers the texts of those of these ops that lie in quarantine, by id. */
 export async function quarantinedTexts(
   tx: ShopTx,

@@ -1,3 +1,4 @@
+import { sql } from 'kysely'
 import { afterAll, beforeAll, describe, expect, it } from 'vitest'
 import { GET as getMe } from '@/app/api/me/route'
 import { asShop } from '@/db/client'
@@ -69,6 +70,21 @@ describe('a revoked phone', () => {
       kind: 'deviceRevoked',
     })
     expect((await sync(device, [], { cookie: again })).pull).toEqual({ kind: 'signIn' })
+  })
+
+  it('[Q2] fills no shop: past 10,000 items its work stays on the phone until the owner has decided', async () => {
+    const { device, jobId } = await revoked()
+    await inA((tx) =>
+      sql`insert into quarantine_op (shop_id, op_id, device_id, person_id, roles, dseq, kind, raw, why, received_at)
+        select ${world.a.id}, ${device.id} || n, ${device.id}, ${device.owner.personId}, '{}', 1000 + n,
+          'log.add', '{}', 'deviceRevoked', now() from generate_series(1, 9999) n`.execute(tx),
+    )
+    const [last, more] = [entry(device, jobId, 'fits'), entry(device, jobId, 'one too many')]
+    expect((await sync(device, [last])).taken).toEqual([last.id])
+    const told = await sync(device, [last, more], { held: NONE_HELD })
+    expect(told).toMatchObject({ taken: [], order: 'none' })
+    expect(told.results).toEqual([last, more].map(({ id }) => ({ opId: id, result: 'retry' })))
+    expect((await sync(device, [last])).taken).toEqual([last.id])
   })
 
   it('[Q2] hands everything over, as it was sent and whatever its time, and touches no job', async () => {

@@ -61,7 +61,8 @@ async function takeBatch(
   }
 }
 
-const laterAnswer = (ops: readonly ReadOp[]): PushAnswer => ({
+/** Nothing was taken: the phone asks again later. */
+export const laterAnswer = (ops: readonly ReadOp[]): PushAnswer => ({
   taken: [],
   results: ops.map(({ opId }) => ({ opId, result: 'retry' })),
 })

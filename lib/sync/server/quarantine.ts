@@ -8,13 +8,14 @@ import {
   type Quarantine,
   type QuarantineOp,
   quarantinedTexts,
+  quarantineLoad,
 } from '@/db/queries/quarantine'
 import { findOps } from '@/db/queries/sync-ops'
 import type { Id } from '@/lib/model/id'
 import type { LogBody } from '@/lib/model/log-entry'
 import type { Actor } from '@/lib/model/person'
 import type { Instant } from '@/lib/model/time'
-import type { PushAnswer } from './push'
+import { laterAnswer, type PushAnswer } from './push'
 import { isSameOp, type ReadOp, readOp } from './read-ops'
 
 /** A sender who may hand over and do nothing else (R22): a revoked phone, or that of somebody who left. */
@@ -27,9 +28,17 @@ export type QuarantineSender = {
 }
 
 /**
+ * How much of one phone quarantine holds (a choice: some years of a busy mechanic's records). Past it nothing
+ * is taken before the owner has decided, so that a phone in wrong hands does not fill the shop.
+ */
+const MOST_ITEMS = 10_000
+const MOST_BYTES = 32 * 1024 * 1024
+
+/**
  * Takes what a revoked phone still sends (Q2): every op is kept as sent, whatever its time, and touches no
  * job before the owner accepts it. Everything is `taken`, so that the phone may empty itself. An op that
- * the shop settled before is not kept again; other bytes under a used id are kept under their own hash.
+ * the shop settled before is not kept again; other bytes under a used id are kept under their own hash. When
+ * quarantine is full of this phone, everything is `retry`: it stays on the phone.
  */
 export async function takeIntoQuarantine(
   ops: readonly unknown[],
@@ -37,19 +46,27 @@ export async function takeIntoQuarantine(
 ): Promise<PushAnswer> {
   if (ops.length === 0) return { taken: [], results: [] }
   const read = ops.map(readOp)
-  await asShop(sender.actor.shopId, async (tx) => {
+  const isTaken = await asShop(sender.actor.shopId, async (tx) => {
     // Twins of one push come one after the other, so that the record says what was kept.
     await lockShop(tx)
     const fresh = await freshOps(tx, read)
-    if (fresh.size === 0) return
+    if (fresh.size === 0) return true
+    if (await isFull(tx, sender.deviceId)) return false
     await keepInQuarantine(
       tx,
       [...fresh].map(([id, op]) => rowOf(id, op, sender)),
     )
     await appendAudit(tx, [keptEntry(sender, { count: fresh.size })])
+    return true
   })
+  if (!isTaken) return laterAnswer(read)
   const taken = new Set(read.flatMap((op) => (op.named ? [op.opId] : [])))
   return { taken: [...taken], results: [] }
+}
+
+async function isFull(tx: ShopTx, deviceId: Id): Promise<boolean> {
+  const { items, bytes } = await quarantineLoad(tx, deviceId)
+  return items >= MOST_ITEMS || bytes >= MOST_BYTES
 }
 
 /** What is neither settled nor in quarantine yet, by the id it is kept under. */

@@ -134,7 +134,8 @@ async function handOver(with_: Exchange, why: Quarantine): Promise<Answer> {
   const order = await asShop(actor.shopId, async (tx) => {
     await noteStoreChange(tx, { device: device.device, canary: message.canary, at, newId })
     await noteDevice(tx, { id: deviceId, ...contactOf(with_) })
-    if (message.protocol < 2) return 'none'
+    const isTaken = pushed.results.length === 0
+    if (message.protocol < 2 || !isTaken) return 'none'
     const { wipeToldAt } = device.device
     return await wipeOrder(tx, { ...sender, wipeToldAt }, message.held)
   })
