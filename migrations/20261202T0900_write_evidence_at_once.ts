@@ -85,6 +85,19 @@ async function createOpen(db: Kysely<unknown>): Promise<void> {
           where d.shop_id = p_shop and d.id = p_device;
       end
     $$;
+    -- As it was, with a plan that is kept.
+    create or replace function find_session(p_id uuid, p_now timestamptz)
+      returns table (shop_id uuid, person_id uuid, name text, roles text[])
+      language plpgsql stable security definer set search_path = pg_catalog, public, pg_temp as $$
+      #variable_conflict use_column
+      begin
+        return query select s.shop_id, s.person_id, c.name, m.roles
+          from public.session s
+            join public.membership m on m.shop_id = s.shop_id and m.person_id = s.person_id
+            left join public.person_contact c on c.shop_id = s.shop_id and c.person_id = s.person_id
+          where s.id = p_id and s.revoked_at is null and s.expires_at > p_now and m.revoked_at is null;
+      end
+    $$;
     revoke all on function open_exchange(uuid, uuid, uuid, timestamptz, jsonb) from public;
     grant execute on function open_exchange(uuid, uuid, uuid, timestamptz, jsonb) to farbench_app;
   `.execute(db)
