@@ -18,7 +18,7 @@ export type NoShopTx = Transaction<Database> & { readonly [noShop]: true }
 declare const shopBound: unique symbol
 declare const noShop: unique symbol
 
-type Opened = { url: string; db: Db }
+type Opened = { url: string; db: Db; pool: pg.Pool }
 const OPENED = Symbol.for('farbench.db')
 const holder = globalThis as { [key: symbol]: Opened | undefined }
 
@@ -36,7 +36,7 @@ function opened(): Opened {
   const present = holder[OPENED]
   if (present) return present
   const url = env().DATABASE_URL
-  const made = { url, db: openDb(url) }
+  const made = openAt(url)
   holder[OPENED] = made
   return made
 }
@@ -44,12 +44,19 @@ function opened(): Opened {
 /** Makes `url` the address of this process (null: the setting again); for scripts and tests. */
 export async function switchDatabase(url: string | null): Promise<void> {
   const before = holder[OPENED]
-  holder[OPENED] = url === null ? undefined : { url, db: openDb(url) }
+  holder[OPENED] = url === null ? undefined : openAt(url)
   await before?.db.destroy()
 }
 
+function openAt(url: string): Opened {
+  const pool = openPool(url, 10)
+  return { url, pool, db: dbOf(pool) }
+}
+
 /** Opens a pool of its own; the caller destroys it. */
-export function openDb(url: string, max = 10): Db {
+export const openDb = (url: string, max = 10): Db => dbOf(openPool(url, max))
+
+function openPool(url: string, max: number): pg.Pool {
   const pool = new pg.Pool({
     connectionString: url,
     max,
@@ -64,11 +71,14 @@ export function openDb(url: string, max = 10): Db {
   // the process. The pool drops it, and whoever uses it has the trouble from its own query.
   pool.on('error', () => undefined)
   pool.on('connect', (client) => client.on('error', () => undefined))
-  return new Kysely<Database>({
+  return pool
+}
+
+const dbOf = (pool: pg.Pool): Db =>
+  new Kysely<Database>({
     dialect: new PostgresDialect({ pool }),
     plugins: [new CamelCasePlugin({ maintainNestedObjectKeys: true })],
   })
-}
 
 /** Runs `run` in one transaction that sees `shopId` and nothing else; rolls back when it throws. */
 export function asShop<T>(shopId: Id, run: (tx: ShopTx) => Promise<T>): Promise<T> {
@@ -123,6 +133,30 @@ export function lookUp<T>(run: (db: NoShopTx) => Promise<T>): Promise<T> {
     .connection()
     .execute((connection) => run(connection as unknown as NoShopTx))
 }
+
+/**
+ * Runs one statement that is a transaction of its own and is asked all the time: it is prepared once on each
+ * connection, under its name. Columns come in camel case.
+ */
+export async function askOften<R>(statement: {
+  name: string
+  text: string
+  values: unknown[]
+}): Promise<R[]> {
+  const client = await opened().pool.connect()
+  try {
+    const { rows } = await client.query<Record<string, unknown>>(statement)
+    return rows.map(
+      (row) =>
+        Object.fromEntries(Object.entries(row).map(([key, value]) => [camel(key), value])) as R,
+    )
+  } finally {
+    client.release()
+  }
+}
+
+const camel = (name: string): string =>
+  name.replaceAll(/_([a-z])/g, (_, letter: string) => letter.toUpperCase())
 
 /** Runs the look-ups that come before a shop is known; tables answer nothing in here. */
 export function withNoShop<T>(run: (tx: NoShopTx) => Promise<T>): Promise<T> {

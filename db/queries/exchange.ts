@@ -1,9 +1,8 @@
-import { sql } from 'kysely'
 import type { Id } from '@/lib/model/id'
 import type { Actor } from '@/lib/model/person'
 import type { Role } from '@/lib/model/role'
 import type { Instant } from '@/lib/model/time'
-import type { NoShopTx } from '../client'
+import { askOften } from '../client'
 import type { Contact, Device } from './devices'
 
 /** Where a shop's log stands, and the scope version of the person who asks (P12). */
@@ -42,16 +41,20 @@ type Row = Device & {
  * the shop has no such phone. `sessionId`: of the session that came with the request, live or not. `seen`:
  * what is to be noted of the phone at once, if it may write and speaks out of the store that is known.
  */
-export async function openExchange(
-  db: NoShopTx,
-  of: { shopId: Id; deviceId: Id; sessionId: Id | null; now: Instant; seen: Contact | null },
-): Promise<Sender | undefined> {
+export async function openExchange(of: {
+  shopId: Id
+  deviceId: Id
+  sessionId: Id | null
+  now: Instant
+  seen: Contact | null
+}): Promise<Sender | undefined> {
   const { shopId, deviceId, sessionId, now, seen } = of
   const told = seen === null ? null : JSON.stringify(seen)
-  const { rows } = await sql<Row>`
-    select * from open_exchange(${shopId}, ${deviceId}, ${sessionId}, ${now}, ${told}::jsonb)
-  `.execute(db)
-  const [row] = rows
+  const [row] = await askOften<Row>({
+    name: 'open_exchange',
+    text: 'select * from open_exchange($1, $2, $3, $4, $5)',
+    values: [shopId, deviceId, sessionId, now, told],
+  })
   return row && { ...partsOf(row, shopId), session: sessionOf(row) }
 }
 

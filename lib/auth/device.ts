@@ -1,5 +1,4 @@
 import { createPublicKey, type KeyObject, verify } from 'node:crypto'
-import { lookUp } from '@/db/client'
 import { standOf } from '@/db/queries/device-stand'
 import type { Contact, Device } from '@/db/queries/devices'
 import { type LogStand, openExchange, type Sender } from '@/db/queries/exchange'
@@ -103,9 +102,7 @@ export async function senderOf(
 ): Promise<Result<SignedSender, DeviceProblem>> {
   const { shopId, deviceId, personId } = claim
   const at = new Date(now).toISOString()
-  const found = await lookUp((db) =>
-    openExchange(db, { shopId, deviceId, sessionId, now: at, seen }),
-  )
+  const found = await openExchange({ shopId, deviceId, sessionId, now: at, seen })
   if (found?.device.personId !== personId) return fail({ kind: 'unknownDevice' })
   const { device, session, stand, noted } = found
   if (!isSameKey(device.publicKey, signedBy) && !isSigned(claim, device.publicKey))

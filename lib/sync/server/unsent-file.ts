@@ -1,5 +1,4 @@
 import { verify } from 'node:crypto'
-import { lookUp } from '@/db/client'
 import { standOf } from '@/db/queries/device-stand'
 import type { Device } from '@/db/queries/devices'
 import { openExchange } from '@/db/queries/exchange'
@@ -46,7 +45,7 @@ export async function checkFile(
   const { shop, person, device: deviceId, at } = file.value
   if (shop !== desk.shopId) return fail({ kind: 'otherShop' })
   const asked = { shopId: desk.shopId, deviceId, sessionId: null, now: at, seen: null }
-  const found = await lookUp((db) => openExchange(db, asked))
+  const found = await openExchange(asked)
   if (found?.device.personId !== person) return fail({ kind: 'unknownPhone' })
   const { device } = found
   if (!isSigned(file.value, device)) return fail({ kind: 'changedFile' })

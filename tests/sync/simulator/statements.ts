@@ -71,7 +71,11 @@ function install(): void {
   const { prototype } = pg.Client
   const plain = prototype.query as unknown as (...args: unknown[]) => unknown
   const query = function query(this: Client, ...args: unknown[]): unknown {
-    const [text, values] = args
+    const [first, second] = args
+    // A statement with a name is one object.
+    const named = first as { text?: unknown; values?: unknown[]; name?: string } | null
+    const isNamed = typeof named === 'object' && typeof named?.name === 'string'
+    const [text, values] = isNamed ? [named?.text, named?.values] : [first, second]
     const passes = passages.getStore() !== undefined || hook.rewrite !== null
     const isPlain = typeof text !== 'string' || args.some((arg) => typeof arg === 'function')
     if (isPlain || !passes) return plain.apply(this, args)
