@@ -1,9 +1,10 @@
 import { asShop, asShopLightly, type ShopTx } from '@/db/client'
 import { evenPage, pullPage } from '@/db/queries/change-log'
 import { type Contact, noteDevice } from '@/db/queries/devices'
+import type { Sender } from '@/db/queries/exchange'
 import type { Quarantine } from '@/db/queries/quarantine'
-import type { SignedSender } from '@/lib/auth/device'
 import type { Id } from '@/lib/model/id'
+import type { Actor } from '@/lib/model/person'
 import { fail, ok, type Result } from '@/lib/model/result'
 import {
   PAGE_ROWS,
@@ -64,9 +65,16 @@ function inFull(message: SyncRequest, { deviceId, personId }: Claim): SyncReques
 
 const isBrief = ({ protocol, brief }: SyncRequest): boolean => protocol >= 2 && brief === true
 
+/** A phone whose signature was checked, and how its shop stands with it (lib/auth/device.ts). */
+type HeardPhone = Pick<Sender, 'device' | 'session' | 'stand' | 'noted'> & {
+  actor: Actor
+  deviceId: Id
+  quarantine: Quarantine | null
+}
+
 /** Everything one exchange with a phone needs; who is signed in there comes with the device, if anybody. */
 export type Exchange = {
-  device: SignedSender
+  device: HeardPhone
   message: SyncRequest
   dseq: Claim['dseq']
   now: number
@@ -170,7 +178,7 @@ function heldOf({ held }: SyncRequest) {
 }
 
 /** A pull needs the session of the very person whose phone asks; anybody else's is no session (P18). */
-const isTheirs = ({ actor, session }: Pick<SignedSender, 'actor' | 'session'>): boolean =>
+const isTheirs = ({ actor, session }: Pick<HeardPhone, 'actor' | 'session'>): boolean =>
   session?.shopId === actor.shopId && session.personId === actor.personId
 
 /**
