@@ -1,6 +1,6 @@
 import { afterAll, beforeAll, describe, expect, it } from 'vitest'
 import { ownRuns, runsOf, unfolded } from '@/lib/sync/protocol/brief'
-import { type SyncResponse, syncResponse } from '@/lib/sync/protocol/message'
+import { type PullRow, type SyncResponse, syncResponse } from '@/lib/sync/protocol/message'
 import type { Op } from '@/lib/sync/protocol/op'
 import { jobOpen, logAdd, machineAdd, note } from '../support/field-ops'
 import type { RawDevice } from '../support/raw-device'
@@ -46,7 +46,8 @@ describe('[P5] a brief answer', () => {
     const whole = await sync(device, [], { cookie })
     expect(device.cursor).toEqual(cursor)
     // Put together from the ops that were sent, and marked as such.
-    const own = rowsOf(long).map(({ own, ...row }) => ({ own, ...row, row: withoutHash(row.row) }))
+    const rows: PullRow[] = rowsOf(long)
+    const own = rows.map(({ own, ...row }) => ({ own, ...row, row: withoutHash(row.row) }))
     expect(own.map((row) => row.own)).toEqual(ops.map(() => true))
     expect(own.map(({ own: _, ...row }) => row)).toEqual(
       rowsOf(whole).map((row) => ({ ...row, row: withoutHash(row.row) })),
