@@ -104,7 +104,7 @@ test('[S11] a phone that was taken out hands over, empties itself, and the owner
     [],
   )
   await page.goto('/login')
-  await expect(page.getByText('Everything on it was handed over to the owner')).toBeVisible()
+  await expect(page.getByText('was handed over to the owner, then deleted here')).toBeVisible()
   await shot(page, 'emptied-390')
   expect(await findings(page)).toEqual([])
 
