@@ -1,4 +1,4 @@
-// What says nothing takes nothing back, and silences nothing (docs/spec/engine.md).
+// What says nothing takes nothing back, and silences nothing (docs/spec/diag.md).
 import { describe, expect, it } from 'vitest'
 import { belief } from '@/lib/diag/belief'
 import { agrees, differenceU } from '@/lib/diag/evidence-reading'
