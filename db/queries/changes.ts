@@ -31,10 +31,13 @@ export type Change = {
 /**
  * Answers the shop's last change number and makes this transaction its only writer of numbers until
  * it ends. Call it when all checking is done: nothing slow may follow (sync.md section 1). Waits 2 s
- * at most, then fails with PostgreSQL's 55P03: tell the phone to retry.
+ * at most, then fails with PostgreSQL's 55P03: tell the phone to retry. Name the jobs whose logs will be
+ * added to: theirs are locked before the counter, as everywhere.
  */
-export async function lockShop(tx: ShopTx): Promise<number> {
-  const { rows } = await sql<{ seq: number }>`select lock_counter(${tx.shopId}) as seq`.execute(tx)
+export async function lockShop(tx: ShopTx, logs: readonly Id[] = []): Promise<number> {
+  const { rows } = await sql<{ seq: number }>`
+    select lock_counter(${tx.shopId}, ${logs}::uuid[]) as seq
+  `.execute(tx)
   return Number(rows[0]?.seq)
 }
 

@@ -37,7 +37,7 @@ export function moveJobAtDesk<P>(
   decide: (job: Job, faultName: string | null) => Result<Move, P>,
 ): Promise<Result<null, P | NotThere>> {
   return asShop(actor.shopId, async (tx) => {
-    await lockShop(tx)
+    await lockShop(tx, [jobId])
     const job = await findJob(tx, jobId)
     const named = fault === null ? null : await bookItem(tx, { kind: 'fault', id: fault })
     if (!job || named === undefined) return fail({ kind: 'notFound' as const })

@@ -17,8 +17,9 @@ export type Evidence = {
 }
 
 /**
- * Locks the shop's counter and writes evidence, in one statement; false, and nothing is written, when
- * something it rests on changed meanwhile. The counter stays locked until the transaction ends either way.
+ * Writes evidence, locks the shop's counter and takes the change numbers, in one statement; false, and nothing
+ * is written, when something it rests on changed meanwhile. The logs of its jobs and the counter stay locked
+ * until the transaction ends either way.
  */
 export async function takeEvidence(tx: ShopTx, of: Evidence): Promise<boolean> {
   const { links, stored, changes, readAt, rests } = of

@@ -10,7 +10,7 @@ import { lockShop } from './changes'
 
 /**
  * Appends entries to their jobs' chains in the order given and answers them with their places. Locks
- * the shop's counter first, as the head of an insert-only chain cannot be locked. Ids must be new and
+ * their logs and the shop's counter first, as the head of an insert-only chain cannot be locked. Ids must be new and
  * jobs present. Take a change number (logEntry) for each.
  */
 export async function appendLogEntries(
@@ -18,7 +18,10 @@ export async function appendLogEntries(
   given: { entries: readonly LogEntry[]; receivedAt: Instant },
 ): Promise<LogRow[]> {
   if (given.entries.length === 0) return []
-  await lockShop(tx)
+  await lockShop(
+    tx,
+    given.entries.map(({ jobId }) => jobId),
+  )
   const links = await linkEntries(tx, given)
   await insertLinks(tx, links)
   const { receivedAt } = given
@@ -38,7 +41,7 @@ export type NewLinks = { rows: readonly NewLink[]; text: string; receivedAt: Ins
 
 /**
  * Links entries to their jobs' chains without storing them: places, canonical texts and hashes. They hold
- * as long as nobody adds to these jobs, which the lock of the shop's counter alone can promise.
+ * as long as nobody adds to these jobs, which the locks that lockShop takes alone can promise.
  */
 export async function linkEntries(
   tx: ShopTx,

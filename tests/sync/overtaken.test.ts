@@ -1,9 +1,9 @@
 import { afterAll, beforeAll, describe, expect, it } from 'vitest'
 import { asShop } from '@/db/client'
 import { changesAfter } from '@/db/queries/change-log'
-import { isTouchedSince, lastChange, takeChanges } from '@/db/queries/changes'
+import { isTouchedSince, lastChange, lockShop, takeChanges } from '@/db/queries/changes'
 import { findJob, setJobStand } from '@/db/queries/jobs'
-import { verifyLog } from '@/db/queries/log-entries'
+import { appendLogEntries, verifyLog } from '@/db/queries/log-entries'
 import type { Op } from '@/lib/sync/protocol/op'
 import { jobOpen, logAdd, machineAdd, note } from '../support/field-ops'
 import type { RawDevice } from '../support/raw-device'
@@ -75,6 +75,24 @@ describe('[P7] evidence planned before the lock', () => {
     await pushing
     expect((await inA((tx) => findJob(tx, jobId)))?.state).toBe('open')
     expect(await inA((tx) => verifyLog(tx, jobId))).toEqual({ ok: true, value: 2 })
+  })
+
+  it('[P7] gives way to a writer who holds the counter and comes for the same job’s log', async () => {
+    const { device } = await phoneOf(world.a, 'mechanic')
+    const jobId = await openJob(device)
+    const [own, desk] = [notes(device, jobId, 3), notes(device, jobId, 1)]
+    let pushing: Promise<{ results: unknown[] }> | null = null
+    await inA(async (tx) => {
+      // Out of order: the counter without the job's lock. The push has its rows written by now, and waits.
+      await lockShop(tx)
+      pushing = sync(device, own)
+      await new Promise((done) => setTimeout(done, 300))
+      const [entry] = desk.flatMap((op) => (op.kind === 'log.add' ? [op.fields] : []))
+      await appendLogEntries(tx, { entries: [entry!], receivedAt: AT })
+      await takeChanges(tx, [{ entity: 'logEntry', id: entry!.id, jobId }])
+    })
+    expect((await pushing!).results).toEqual([])
+    expect(await inA((tx) => verifyLog(tx, jobId))).toEqual({ ok: true, value: 4 })
   })
 
   it('[P7] rests on its jobs, its entries, its writer and the code book, and on nothing else', async () => {

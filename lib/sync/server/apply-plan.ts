@@ -63,7 +63,7 @@ export async function applyPlan(
 }
 
 /**
- * The same for a plan that only adds entries (addsOnly), in one statement that also locks the counter. False
+ * The same for a plan that only adds entries (addsOnly), in one statement that locks the counter late. False
  * when it was overtaken meanwhile, and then nothing is written.
  */
 export async function applyEvidence(

@@ -126,7 +126,10 @@ export async function settle(
     if (await applyEvidence(tx, { plan, known, sender, links, rests: restsOn(ops, known) }))
       return plan
   }
-  const lockedAt = await lockShop(tx)
+  const lockedAt = await lockShop(
+    tx,
+    entries.map(({ jobId }) => jobId),
+  )
   if (await isOvertaken(tx, { ops, plan, known, lockedAt })) {
     known = await read(lockedAt)
     plan = planPush(ops, known)
