@@ -1,11 +1,5 @@
 import { describe, expect, it } from 'vitest'
-import {
-  clopperPearson,
-  expectedBackOrders,
-  poissonCdf,
-  poissonInterval,
-  spareStock,
-} from '@/lib/diag/exact-intervals'
+import { clopperPearson, poissonInterval } from '@/lib/diag/exact-intervals'
 import {
   boundAfterClean,
   chanceLeft,
@@ -95,35 +89,5 @@ describe('proof runs', () => {
     expect(proofBound({ starts: 12, faults: 0 }).ruleOfThree).toBe(0.25)
     const seen = proofBound({ starts: 12, faults: 1 })
     expect(seen).toMatchObject({ exact: upperBound(1, 12), ruleOfThree: null })
-  })
-})
-
-describe('spares (Poisson, Palm)', () => {
-  it.each([
-    [0.5, 1, 2, 3],
-    [1, 2, 3, 4],
-    [2, 4, 5, 6],
-    [5, 8, 9, 11],
-    [10, 14, 15, 18],
-  ])('[STD] mean %f: 90, 95 and 99 %% need %i, %i and %i', (mean, at90, at95, at99) => {
-    expect([0.9, 0.95, 0.99].map((s) => spareStock(mean, s))).toEqual([at90, at95, at99])
-  })
-  it.each([0.5, 3, 40])('[R25] ends for a service of all, mean %d', (mean) => {
-    const all = spareStock(mean, 1)
-    expect(all).toBeGreaterThanOrEqual(spareStock(mean, 0.999999))
-    expect(all).toBeLessThan(mean + 20 * Math.sqrt(mean) + 30)
-  })
-  it.each([
-    [1, [1, 0.36788, 0.10364, 0.02334, 0.00435]],
-    [2, [2, 1.13534, 0.54134, 0.21802, 0.07514]],
-  ])('[STD] expected back-orders at mean %i, stock 0 to 4', (mean, ebo) => {
-    expect([0, 1, 2, 3, 4].map((s) => expectedBackOrders(s, mean))).toEqual(
-      ebo.map((x) => expect.closeTo(x, 4)),
-    )
-  })
-  it('[STD] fill rate at mean 1: 0, 0.36788, 0.73576, 0.91970, 0.98101', () => {
-    expect([-1, 0, 1, 2, 3].map((s) => poissonCdf(s, 1))).toEqual(
-      [0, 0.36788, 0.73576, 0.9197, 0.98101].map((x) => expect.closeTo(x, 5)),
-    )
   })
 })
