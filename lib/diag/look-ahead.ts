@@ -4,8 +4,9 @@
  * Breese and Rommelse 1995). Its answer is the cost of a plan that can really be carried out, so an upper bound.
  */
 
+import { repairsOnly } from './repairs-only'
 import type { ActionType } from './search'
-import { opening, type Problem, type Repair } from './search-problem'
+import type { Problem, Repair } from './search-problem'
 import { dot, massOf, priceOf, survive } from './search-steps'
 
 /** A state by lists, for any number of checks and repairs. */
@@ -36,54 +37,6 @@ export function lookAhead(problem: Problem, spot: Spot, steps: 1 | 2 = 2): Candi
   return deeper.sort((a, b) => a.cost - b.cost)
 }
 
-/** Cost of repairs in p/c order with the cheapest stop at the best place in the row. */
-export function repairsOnly(problem: Problem, spot: Spot): number {
-  const running = {
-    w: Float64Array.from(spot.w),
-    mass: massOf(spot.w),
-    stops: problem.stops.map((s) => dot(spot.w, s.byFault)),
-  }
-  let best = Math.min(Number.POSITIVE_INFINITY, ...running.stops)
-  let here = { open: spot.open, elapsed: spot.elapsed }
-  let spent = 0
-  for (const index of inOrder(problem, spot)) {
-    const repair = problem.repairs[index]
-    const priced = repair === undefined ? null : priceOf(problem, { ...here, index }, repair)
-    if (repair === undefined || priced === null) continue
-    spent += priced.price * running.mass
-    if (spent >= best) break
-    spent += mend(problem, repair, running)
-    here = {
-      open: (here.open | repair.setups) & ~problem.closed,
-      elapsed: here.elapsed + priced.minutes,
-    }
-    if (running.mass <= 1e-15) return Math.min(best, spent)
-    for (const stop of running.stops) best = Math.min(best, spent + Math.max(0, stop))
-  }
-  return best
-}
-
-type Running = { w: Float64Array; mass: number; stops: number[] }
-
-/** Takes out what a repair mends (and what passes its test run wrongly); answers what the wrong passes cost. */
-function mend(problem: Problem, repair: Repair, running: Running): number {
-  let wrong = 0
-  const faults = problem.slips ? problem.faults.keys() : repair.cures
-  for (const f of faults) {
-    const x = running.w[f] ?? 0
-    const left = x * (repair.fails[f] ?? 1)
-    const slipped = left * (problem.falsePass[f] ?? 0)
-    wrong += slipped
-    const gone = x - left + slipped
-    running.w[f] = left - slipped
-    running.mass -= gone
-    problem.stops.forEach((s, i) => {
-      running.stops[i] = (running.stops[i] ?? 0) - gone * (s.byFault[f] ?? 0)
-    })
-  }
-  return wrong * problem.comeback
-}
-
 /** A lower bound at any size: each fault at its stop or its cheapest cure alone, per unit of mass. */
 export function leastCosts(problem: Problem): Float64Array {
   return Float64Array.from(problem.faults, (_, f) => {
@@ -103,8 +56,10 @@ function actions(problem: Problem, spot: Spot): Action[] {
   return list
 }
 
+const rest = (problem: Problem, spot: Spot): number => repairsOnly(problem, spot, spot.repairs)
+
 function oneStep(problem: Problem, spot: Spot, action: Action): number {
-  return stepCost(problem, spot, action, repairsOnly)
+  return stepCost(problem, spot, action, rest)
 }
 
 function twoSteps(
@@ -113,7 +68,7 @@ function twoSteps(
   { action, least }: { action: Action; least: Float64Array },
 ): number {
   return stepCost(problem, spot, action, (p, next) => {
-    let best = repairsOnly(p, next)
+    let best = rest(p, next)
     const mass = massOf(next.w)
     const floor = dot(next.w, least)
     for (const index of next.checks) {
@@ -181,21 +136,3 @@ function repaired(
 
 const openAfter = (problem: Problem, spot: Spot, repair: Repair): number =>
   (spot.open | repair.setups) & ~problem.closed
-
-/** Repairs by what they cure per unit of price, best first; the first of equals in the model's order. */
-function inOrder(problem: Problem, spot: Spot): number[] {
-  const ratios = new Float64Array(problem.repairs.length)
-  const order: number[] = []
-  for (const index of spot.repairs) {
-    const repair = problem.repairs[index]
-    if (repair === undefined) continue
-    let cured = 0
-    for (const f of repair.cures) cured += (spot.w[f] ?? 0) * (1 - (repair.fails[f] ?? 1))
-    if (cured <= 0) continue
-    const shut = (repair.setups & ~spot.open) !== 0
-    const setups = shut ? opening(problem, repair.setups, spot.open).price : 0
-    ratios[index] = cured / Math.max(repair.price + setups, 1e-12)
-    order.push(index)
-  }
-  return order.sort((a, b) => (ratios[b] ?? 0) - (ratios[a] ?? 0) || a - b)
-}

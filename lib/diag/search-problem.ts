@@ -41,7 +41,26 @@ export type Problem = {
   comeback: number
   /** Minutes in all; infinite without daylight. */
   daylight: number
+  /** Room to reckon in. */
+  room: Room
 }
+
+/** Room in which the plan without checks is reckoned (repairs-only.ts), so that it makes nothing on the way. */
+export type Room = {
+  w: Float64Array
+  stops: Float64Array
+  ratios: Float64Array
+  order: Int32Array
+  left: Int32Array
+}
+
+const roomOf = (size: { faults: number; repairs: number; stops: number }): Room => ({
+  w: new Float64Array(size.faults),
+  stops: new Float64Array(size.stops),
+  ratios: new Float64Array(size.repairs),
+  order: new Int32Array(size.repairs),
+  left: new Int32Array(size.repairs),
+})
 
 /** A point in the search: joint weights, checks and repairs left as masks, open set-ups, minutes gone. */
 export type Point = {
@@ -108,6 +127,11 @@ export function problemOf(model: SingleModel): Problem {
     slips: faults.some((f) => falsePassOf(test.falsePass, f) > 0),
     comeback: test.comebackCost ?? 0,
     daylight: model.daylight?.minutes ?? Number.POSITIVE_INFINITY,
+    room: roomOf({
+      faults: faults.length,
+      repairs: repairs.length,
+      stops: model.stops.length,
+    }),
   }
 }
 

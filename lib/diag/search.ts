@@ -1,48 +1,54 @@
 /**
- * The exact search: depth first over the and-or graph with a memo, always into the action that looks cheapest
- * and only as far as it still does (learning depth-first search, Bonet and Geffner 2006, with the threshold of
- * recursive best-first search, Korf 1993). Every value is a lower bound that only rises; a point is solved when
- * the action on top is solved. So the answer is the exact optimum, or, past `limit` expansions, a lower bound.
+ * The search: best-first trials over the and-or graph with a memo, between a lower and an upper bound of every
+ * point (bounded real-time dynamic programming, McMahan, Likhachev and Gordon 2005; heuristic search value
+ * iteration, Smith and Simmons 2004). Each trial goes into the action that could be cheapest and there to the
+ * outcome about which least is known. When the bounds of the start meet, the answer is the exact optimum; past
+ * `limit` expansions the action with the least upper bound is one that a real plan of that cost begins with.
  */
-import { type KnownCosts, knownCosts } from './known-cost'
-import type { Point, Problem } from './search-problem'
+import { knownCosts } from './known-cost'
 import {
-  afterCheck,
-  afterRepair,
-  bestStop,
-  dot,
-  massOf,
-  type Priced,
-  priceOf,
-} from './search-steps'
-
-/** A child is followed this much further than needed: fewer returns for a few expansions more. */
-const EAGER = 0.01
+  type Bounds,
+  checkBound,
+  commonOf,
+  inTime,
+  lowerBound,
+  pricesAt,
+  repairBound,
+  upperBound,
+} from './search-bounds'
+import type { Point, Problem } from './search-problem'
+import { afterCheck, afterRepair, dot } from './search-steps'
 
 export type ActionType = 'check' | 'repair' | 'stop'
 
-/** An action at a point; `bound` is at most its true cost, and equals it when `exact`. */
-export type Option = Priced & {
+/** An action at a point; its true cost lies between `low` and `high`. */
+export type Option = {
   type: ActionType
-  bound: number
-  exact: boolean
+  index: number
+  price: number
+  minutes: number
+  low: number
+  high: number
   fixed: number
   children: Node[] | null
 }
 
-export type Node = { point: Point; bound: number; solved: boolean; options: Option[] | null }
+export type Node = { point: Point; low: number; high: number; options: Option[] | null }
 
-export type Search = {
-  problem: Problem
-  known: KnownCosts
+export type Search = Bounds & {
   nodes: Map<number | string, Node>
   /** Whether a point's key fits one number; else it is a string. */
   numeric: boolean
   expanded: number
   limit: number
-  /** Cost below which differences do not count. */
+  /** Bounds this near each other have met. */
   slack: number
 }
+
+/** A trial ends where less than this share of what is unknown at the start is unknown. */
+const WORTH = 0.02
+/** Trials in a row that expand nothing, after which bounds that have not met are left so. */
+const MOST_IDLE = 200
 
 /** A search over a problem, with a budget of expansions. */
 export function startSearch(problem: Problem, limit: number): Search {
@@ -51,6 +57,7 @@ export function startSearch(problem: Problem, limit: number): Search {
   return {
     problem,
     known: knownCosts(problem),
+    prices: new Map(),
     nodes: new Map(),
     numeric: size < 2 ** 52 && problem.daylight === Number.POSITIVE_INFINITY,
     expanded: 0,
@@ -59,44 +66,41 @@ export function startSearch(problem: Problem, limit: number): Search {
   }
 }
 
-/** The node of a point: known already, or new with its lower bound. */
+/** The node of a point: known already, or new with its bounds. */
 export function nodeAt(search: Search, point: Point): Node {
   const key = keyOf(search, point)
   const known = search.nodes.get(key)
   if (known !== undefined) return known
-  const node: Node = { point, bound: lowerBound(search, point), solved: false, options: null }
+  const high = upperBound(search, point)
+  const node = { point, low: Math.min(high, lowerBound(search, point)), high, options: null }
   search.nodes.set(key, node)
   return node
 }
 
-/** Raises the node's bound until it is solved, exceeds `upTo`, or the budget is spent. */
-export function solve(search: Search, node: Node, upTo: number): void {
-  while (!node.solved && node.bound <= upTo) {
-    if (node.options === null && !expand(search, node)) return
-    const { best, second } = topTwo(node.options ?? [])
-    if (best === null) return
-    node.bound = Math.max(node.bound, best.bound)
-    if (best.exact) {
-      node.solved = true
-      node.bound = best.bound
-      return
-    }
-    if (best.bound > upTo) return
+/** Brings the bounds of a node together until they meet or the budget is spent; every action of it is looked at. */
+export function solve(search: Search, node: Node): void {
+  if (node.options === null) expand(search, node, Number.POSITIVE_INFINITY)
+  for (const option of node.options ?? []) deepen(search, node, option)
+  refreshNode(node)
+  for (let idle = 0; idle < MOST_IDLE && isOpen(search, node); ) {
     const before = search.expanded
-    deepen(search, { node, option: best, upTo: Math.min(upTo, second) })
-    if (search.expanded >= search.limit && before === search.expanded) return
+    trial(search, node, idle > 0 ? 0 : (node.high - node.low) * WORTH)
+    idle = search.expanded === before ? idle + 1 : 0
   }
 }
 
-/** The cheapest option by bound, an exact one first among equals, and the bound of the next. */
-export function topTwo(options: readonly Option[]): { best: Option | null; second: number } {
+const isOpen = ({ slack, expanded, limit }: Search, { low, high }: Node): boolean =>
+  high - low > slack && expanded < limit
+
+/** The option with the least upper bound, and the next one; the first of equals in the order of the options. */
+export function topTwo(options: readonly Option[]): { best: Option | null; second: Option | null } {
   let best: Option | null = null
-  let second = Number.POSITIVE_INFINITY
+  let second: Option | null = null
   for (const option of options) {
-    if (best === null || better(option, best)) {
-      if (best !== null) second = Math.min(second, best.bound)
+    if (best === null || option.high < best.high) {
+      second = best
       best = option
-    } else second = Math.min(second, option.bound)
+    } else if (second === null || option.high < second.high) second = option
   }
   return { best, second }
 }
@@ -109,138 +113,104 @@ function keyOf({ problem, numeric }: Search, point: Point): number | string {
   return `${point.code}|${point.repairs}|${point.open}|${point.elapsed.toFixed(6)}`
 }
 
-function expand(search: Search, node: Node): boolean {
-  if (search.expanded >= search.limit) return false
-  search.expanded++
-  node.options = optionsAt(search, node.point)
-  return true
-}
-
-function better(a: Option, b: Option): boolean {
-  return a.bound < b.bound || (a.bound === b.bound && a.exact && !b.exact)
-}
-
-function deepen(
-  search: Search,
-  { node, option, upTo }: { node: Node; option: Option; upTo: number },
-): void {
-  if (option.children === null) {
-    const { problem } = search
-    const after = option.type === 'check' ? afterCheck : afterRepair
-    const step = after(problem, node.point, option)
-    option.fixed = step.fixed
-    option.children = step.next.map((p) => nodeAt(search, p))
-    refresh(option)
-    return
+/** One way down, and the bounds on it anew on the way up. */
+function trial(search: Search, node: Node, need: number): void {
+  if (node.high - node.low <= Math.max(need, search.slack * 1e-3)) return
+  if (node.options === null) {
+    if (search.expanded >= search.limit) return
+    expand(search, node)
   }
-  refresh(option)
-  for (const child of option.children) {
-    if (child.solved) continue
-    if (option.bound > upTo) return
-    const room = Math.max(0, upTo - option.bound) + search.slack + EAGER * child.bound
-    solve(search, child, child.bound + room)
-    refresh(option)
+  let option = cheapest(node.options ?? [])
+  while (option !== null && option.children === null) {
+    deepen(search, node, option)
+    refreshNode(node)
+    option = cheapest(node.options ?? [])
   }
+  if (option === null) return
+  const child = widest(option.children ?? [])
+  if (child !== null) trial(search, child, need)
+  refreshOption(option)
+  refreshNode(node)
 }
 
-function refresh(option: Option): void {
-  let bound = option.fixed
-  let exact = true
+/** The option that could be cheapest, by upper bound among equals. */
+function cheapest(options: readonly Option[]): Option | null {
+  let best: Option | null = null
+  for (const option of options)
+    if (
+      best === null ||
+      option.low < best.low ||
+      (option.low === best.low && option.high < best.high)
+    )
+      best = option
+  return best
+}
+
+/** The child of which least is known; weights are joint, so that gaps add up as they stand. */
+function widest(children: readonly Node[]): Node | null {
+  let pick: Node | null = null
+  let gap = 0
+  for (const child of children)
+    if (child.high - child.low > gap) {
+      gap = child.high - child.low
+      pick = child
+    }
+  return pick
+}
+
+function deepen(search: Search, { point }: Node, option: Option): void {
+  if (option.children !== null) return
+  const after = option.type === 'check' ? afterCheck : afterRepair
+  const step = after(search.problem, point, option)
+  option.fixed = step.fixed
+  option.children = step.next.map((next) => nodeAt(search, next))
+  refreshOption(option)
+}
+
+function refreshOption(option: Option): void {
+  let low = option.fixed
+  let high = option.fixed
   for (const child of option.children ?? []) {
-    bound += child.bound
-    exact = exact && child.solved
+    low += child.low
+    high += child.high
   }
-  option.exact = exact
-  option.bound = exact ? bound : Math.max(option.bound, bound)
+  if (high < option.high) option.high = high
+  option.low = Math.min(option.high, Math.max(option.low, low))
 }
 
-function optionsAt(search: Search, point: Point): Option[] {
+function refreshNode(node: Node): void {
+  let low = Number.POSITIVE_INFINITY
+  for (const option of node.options ?? []) {
+    if (option.low < low) low = option.low
+    if (option.high < node.high) node.high = option.high
+  }
+  node.low = Math.min(node.high, Math.max(node.low, low))
+}
+
+/** Lists the actions of a node whose lower bound is no more than `most`. */
+function expand(search: Search, node: Node, most = node.high): void {
+  search.expanded++
   const { problem } = search
+  const { point } = node
+  const prices = pricesAt(search, point.open)
   const common = commonOf(search, point)
   const options: Option[] = problem.stops.map(({ byFault }, index) => {
     const cost = dot(point.w, byFault)
-    return {
-      type: 'stop',
-      index,
-      price: 0,
-      minutes: 0,
-      bound: cost,
-      fixed: cost,
-      exact: true,
-      children: [],
-    }
+    const free = { price: 0, minutes: 0, fixed: cost, children: [] }
+    return { type: 'stop', index, low: cost, high: cost, ...free }
   })
-  eachLeft(search, point, (type, priced) => {
-    const { index, price, minutes } = priced
-    const bound = boundOf(search, point, { type, priced, common })
-    options.push({ type, index, price, minutes, bound, fixed: 0, exact: false, children: null })
-  })
-  return options
-}
-
-/** Every check and repair that may still start at a point, repairs first. */
-function eachLeft(
-  { problem }: Search,
-  { repairs, checks, open, elapsed }: Point,
-  visit: (type: 'check' | 'repair', priced: Priced) => void,
-): void {
-  problem.repairs.forEach((repair, index) => {
-    if ((repairs & (1 << index)) === 0) return
-    const priced = priceOf(problem, { open, elapsed, index }, repair)
-    if (priced !== null) visit('repair', priced)
-  })
-  problem.checks.forEach((check, index) => {
-    if ((checks & (1 << index)) === 0) return
-    const priced = priceOf(problem, { open, elapsed, index }, check)
-    if (priced !== null) visit('check', priced)
-  })
-}
-
-function repairBound({ problem, known }: Search, point: Point, at: Priced): number {
-  const repair = problem.repairs[at.index]
-  if (repair === undefined) return Number.POSITIVE_INFINITY
-  const open = (point.open | repair.setups) & ~problem.closed
-  const costs = known(open, point.repairs & ~(1 << at.index), point.elapsed + at.minutes)
-  let total = 0
-  for (let f = 0; f < point.w.length; f++) {
-    const x = point.w[f] ?? 0
-    if (x <= 0) continue
-    const survives = x * (repair.fails[f] ?? 1)
-    const wrong = survives * (problem.falsePass[f] ?? 0)
-    total += at.price * x + wrong * problem.comeback
-    if (survives > wrong) total += (survives - wrong) * (costs[f] ?? 0)
+  const offer = (type: 'check' | 'repair', index: number, bound: typeof repairBound): void => {
+    const { price: all, minutes: times } = type === 'check' ? prices.checks : prices.repairs
+    const [price, minutes] = [all[index] ?? 0, times[index] ?? 0]
+    if (!inTime(problem, point.elapsed, minutes)) return
+    const low = bound(search, point, { index, price, minutes })
+    const high = Number.POSITIVE_INFINITY
+    if (low <= most)
+      options.push({ type, index, price, minutes, low, high, fixed: 0, children: null })
   }
-  return total
-}
-
-/** What all checks of a point share: its mass, and the known costs when nothing new is opened. */
-type Common = { mass: number; known: number | null }
-
-function commonOf({ known, problem }: Search, { w, open, repairs, elapsed }: Point): Common {
-  const timeless = problem.daylight === Number.POSITIVE_INFINITY
-  return { mass: massOf(w), known: timeless ? dot(w, known(open, repairs, elapsed)) : null }
-}
-
-function boundOf(
-  search: Search,
-  point: Point,
-  { type, priced, common }: { type: 'check' | 'repair'; priced: Priced; common: Common },
-): number {
-  if (type === 'repair') return repairBound(search, point, priced)
-  const setups = search.problem.checks[priced.index]?.setups ?? 0
-  const opens = (setups & ~point.open) !== 0
-  if (common.known !== null && !opens) return priced.price * common.mass + common.known
-  const costs = search.known(point.open | setups, point.repairs, point.elapsed + priced.minutes)
-  return priced.price * common.mass + dot(point.w, costs)
-}
-
-/** The least bound over the actions of a point: one step further than "the fault is known". */
-function lowerBound(search: Search, point: Point): number {
-  const common = commonOf(search, point)
-  let least = bestStop(search.problem, point.w).cost
-  eachLeft(search, point, (type, priced) => {
-    const bound = boundOf(search, point, { type, priced, common })
-    if (bound < least) least = bound
-  })
-  return least
+  for (let i = 0, left = point.repairs; left !== 0; i++, left >>>= 1)
+    if ((left & 1) !== 0) offer('repair', i, repairBound)
+  for (let i = 0, left = point.checks; left !== 0; i++, left >>>= 1)
+    if ((left & 1) !== 0) offer('check', i, (b, p, at) => checkBound(b, p, { ...at, common }))
+  node.options = options
 }

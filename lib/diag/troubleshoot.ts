@@ -1,27 +1,25 @@
 /**
  * The engine's three plain questions (engine.md 2.1): the next action, the belief behind it, and noisy-OR
- * marginals. `nextAction` is exact within its limit of expansions and a two-step look-ahead beyond it; the
+ * marginals. `nextAction` searches within a limit of expansions and says how far its bounds are apart; the
  * limit is a count, never a time, so that the same input gives the same answer on every machine and later.
  */
 import { AppError } from '@/lib/model/result'
 import { leastCosts, lookAhead } from './look-ahead'
 import { noisyOrMarginals } from './noisy-or'
-import {
-  type ActionType,
-  nodeAt,
-  type Option,
-  type Search,
-  solve,
-  startSearch,
-  topTwo,
-} from './search'
+import { type ActionType, nodeAt, type Option, solve, startSearch, topTwo } from './search'
 import { leftOf, MOST_IN_MASK, openOf, type Problem, problemOf, weightsOf } from './search-problem'
 import { dot, massOf } from './search-steps'
 import type { NoisyOrModel, SearchState, SingleModel } from './troubleshoot-model'
 
-/** Expansions allowed when the caller names none, at 8 faults and 17 actions; wider models get fewer, by the square. */
-export const DEFAULT_LIMIT = 20_000
+/**
+ * Expansions where the caller names none, at 8 faults and 17 actions: some 50 ms (docs/performance.md). A wider
+ * problem's expansions cost more, and it gets fewer; a narrower one gets as many as close it nearly always.
+ */
+const EXPANSIONS = 1500
 const WIDTH = 8 * 17
+const LEAST_EXPANSIONS = 100
+/** Bounds that differ by less than this share have met: what is left is rounding. */
+const SLACK = 1e-12
 
 export type NextAction = {
   type: ActionType
@@ -30,23 +28,29 @@ export type NextAction = {
   expectedCost: number
   /** How much cheaper the best plan could at most be; 0 when the answer is exact. */
   gap: number
-  /** The next best first action; `exact` false when its cost is a lower bound only. */
+  /** The next best first action; `exact` false when its cost is that of a plan that was found, and not surely the least. */
   runnerUp: { type: ActionType; id: string; expectedCost: number; exact: boolean } | null
   expansions: number
 }
 
-/** The cheapest next action from a state. Throws AppError `badModel` for unknown names, `noAction` when nothing can end the job. */
-export function nextAction(
-  model: SingleModel,
-  state: SearchState,
-  limit = DEFAULT_LIMIT,
-): NextAction {
+/**
+ * The cheapest next action from a state. `limit`: how many points may be expanded; a default by the size of what
+ * is left. Throws AppError `badModel` for unknown names, `noAction` when nothing can end the job, `impossible`
+ * when the evidence cannot come about.
+ */
+export function nextAction(model: SingleModel, state: SearchState, limit?: number): NextAction {
   const problem = problemOf(model)
   const w = weightsOf(model, problem, state)
   const spot = { w, ...leftOf(problem, state), open: openOf(model, state), elapsed: state.elapsed }
+  if (!(massOf(w) > 0)) throw new AppError('impossible')
   const small = Math.max(problem.checks.length, problem.repairs.length) <= MOST_IN_MASK
-  const found = small ? searched(problem, spot, limit) : null
-  return found?.exact === true ? found.answer : looked(problem, spot, found?.search ?? null)
+  if (!small) return looked(problem, spot)
+  const found = searched(problem, spot, limit ?? budgetOf(spot))
+  if (found.gap === 0) return found
+  const two = looked(problem, spot)
+  if (two.expectedCost >= found.expectedCost) return found
+  const least = found.expectedCost - found.gap
+  return { ...two, gap: two.expectedCost - least, expansions: found.expansions }
 }
 
 /** P(each fault | outcomes, and that the tried repairs were seen to fail), for kind `single`. */
@@ -63,69 +67,58 @@ export function marginals(model: NoisyOrModel): Record<string, number> {
 
 type Spot = Parameters<typeof lookAhead>[1]
 
-function searched(
-  problem: Problem,
-  spot: Spot,
-  limit: number,
-): { exact: true; answer: NextAction } | { exact: false; search: Search } {
-  const width = problem.faults.length * (problem.checks.length + problem.repairs.length)
-  const search = startSearch(problem, Math.ceil(limit * Math.min(1, (WIDTH / width) ** 2)))
+function budgetOf({ w, checks, repairs }: Spot): number {
+  const share = WIDTH / Math.max(1, w.length * (checks.length + repairs.length))
+  return Math.max(LEAST_EXPANSIONS, Math.ceil(EXPANSIONS * (share > 1 ? share ** 4 : share)))
+}
+
+function searched(problem: Problem, spot: Spot, limit: number): NextAction {
+  const search = startSearch(problem, limit)
   const mask = (left: readonly number[]) => left.reduce((m, i) => m | (1 << i), 0)
   const { w, open, elapsed } = spot
-  const point = {
-    w,
-    checks: mask(spot.checks),
-    repairs: mask(spot.repairs),
-    open,
-    elapsed,
-    code: 0,
-  }
-  const root = nodeAt(search, point)
-  search.slack = 1e-13 * Math.max(1, root.bound)
-  solve(search, root, Number.POSITIVE_INFINITY)
+  const checks = mask(spot.checks)
+  const root = nodeAt(search, { w, checks, repairs: mask(spot.repairs), open, elapsed, code: 0 })
+  search.slack = SLACK * Math.max(1, root.high)
+  solve(search, root)
   const { best } = topTwo(root.options ?? [])
-  if (!root.solved || best === null) return { exact: false, search }
+  if (best === null) throw new AppError('noAction')
+  const isExact = root.high - root.low <= search.slack
+  const others = (root.options ?? []).filter((option) => option !== best)
+  const rest = { point: root.point, low: root.low, high: Number.POSITIVE_INFINITY, options: others }
+  if (isExact && others.length > 0) solve(search, rest)
+  const { best: second } = topTwo(others)
   const mass = massOf(w)
-  const others = (root.options ?? []).filter((o) => o !== best)
-  const rest = { point, bound: root.bound, solved: false, options: others }
-  if (others.length > 0) solve(search, rest, Number.POSITIVE_INFINITY)
-  const second = topTwo(others).best
-  const answer: NextAction = {
-    type: best.type,
-    id: idOf(problem, best),
-    expectedCost: best.bound / mass,
-    gap: 0,
+  return {
+    ...named(problem, best),
+    expectedCost: best.high / mass,
+    gap: isExact ? 0 : (best.high - root.low) / mass,
     runnerUp:
       second === null
         ? null
-        : { ...named(problem, second), expectedCost: second.bound / mass, exact: second.exact },
+        : {
+            ...named(problem, second),
+            expectedCost: second.high / mass,
+            exact: isExact && rest.high - rest.low <= search.slack,
+          },
     expansions: search.expanded,
   }
-  return { exact: true, answer }
 }
 
-function looked(problem: Problem, spot: Spot, search: Search | null): NextAction {
+function looked(problem: Problem, spot: Spot): NextAction {
   const [best, second] = lookAhead(problem, spot)
   if (best === undefined) throw new AppError('noAction')
   const mass = massOf(spot.w)
-  const least = Math.max(dot(spot.w, leastCosts(problem)), rootBound(search))
+  const least = dot(spot.w, leastCosts(problem))
   return {
-    type: best.type,
-    id: idOf(problem, best),
+    ...named(problem, best),
     expectedCost: best.cost / mass,
     gap: Math.max(0, best.cost - least) / mass,
     runnerUp:
       second === undefined
         ? null
         : { ...named(problem, second), expectedCost: second.cost / mass, exact: false },
-    expansions: search?.expanded ?? 0,
+    expansions: 0,
   }
-}
-
-/** The bound the search had reached when its budget ran out. */
-function rootBound(search: Search | null): number {
-  const root = search?.nodes.values().next().value
-  return root?.bound ?? 0
 }
 
 const named = (problem: Problem, option: { type: ActionType; index: number }) => ({

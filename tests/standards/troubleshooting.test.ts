@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest'
-import { repairsOnly } from '@/lib/diag/look-ahead'
+import { repairsOnly } from '@/lib/diag/repairs-only'
 import { leftOf, problemOf, weightsOf } from '@/lib/diag/search-problem'
 import { nextAction } from '@/lib/diag/troubleshoot'
 import { type SingleModel, START } from '@/lib/diag/troubleshoot-model'
@@ -100,7 +100,7 @@ describe('Heckerman, Breese and Rommelse, CACM 38(3) (1995): repairs in p/c orde
       open: 0,
       elapsed: 0,
     }
-    expect(repairsOnly(problem, spot)).toBeCloseTo(ecr, 12)
+    expect(repairsOnly(problem, spot, spot.repairs)).toBeCloseTo(ecr, 12)
     expect(treeCost(model, (s) => nextAction(model, s))).toBeCloseTo(ecr, 12)
   })
   it('[STD] a service call ends the row where it is cheaper than going on', () => {

@@ -1,0 +1,129 @@
+/**
+ * The plan without checks: repairs in p/c order with the cheapest stop at the best place in the row (optimal
+ * without checks and set-ups: Heckerman, Breese and Rommelse 1995). It can always be carried out, so its cost
+ * is never below the true one. Asked for every point of a search: no object is made on the way.
+ */
+import { opening, type Problem, type Repair } from './search-problem'
+
+/** Where a plan begins: joint weights, open set-ups, minutes gone. */
+export type From = { w: Float64Array; open: number; elapsed: number }
+
+/** Its expected cost, weighted by the mass of `from.w`; `left` names the repairs that are left, in their order. */
+export function repairsOnly(problem: Problem, from: From, left: ArrayLike<number>): number {
+  return costOf(problem, from, { left, count: left.length })
+}
+
+/** The same with the repairs left as a mask. */
+export function repairsOnlyOf(problem: Problem, from: From, repairs: number): number {
+  const { left } = problem.room
+  let count = 0
+  for (let i = 0, rest = repairs; rest !== 0; i++, rest >>>= 1)
+    if ((rest & 1) !== 0) left[count++] = i
+  return costOf(problem, from, { left, count })
+}
+
+type Left = { left: ArrayLike<number>; count: number }
+
+function costOf(problem: Problem, from: From, left: Left): number {
+  const { room, repairs, daylight, closed } = problem
+  let mass = begin(problem, from)
+  let best = leastOf(room.stops)
+  let { open, elapsed } = from
+  let spent = 0
+  const count = inOrder(problem, from, left)
+  for (let k = 0; k < count; k++) {
+    const repair = repairs[room.order[k] ?? 0]
+    if (repair === undefined) continue
+    let { price, minutes } = repair
+    if ((repair.setups & ~open) !== 0) {
+      const more = opening(problem, repair.setups, open)
+      price += more.price
+      minutes += more.minutes
+    }
+    if (elapsed + minutes > daylight + 1e-9) continue
+    spent += price * mass
+    if (spent >= best) break
+    const gone = mend(problem, repair)
+    mass -= gone.mass
+    spent += gone.wrong * problem.comeback
+    open = (open | repair.setups) & ~closed
+    elapsed += minutes
+    if (mass <= 1e-15) return Math.min(best, spent)
+    best = Math.min(best, spent + Math.max(0, leastOf(room.stops)))
+  }
+  return best
+}
+
+/** Fills the room with the weights and what each stop would cost; answers the mass. */
+function begin({ room, stops }: Problem, { w }: From): number {
+  room.stops.fill(0)
+  let mass = 0
+  for (let f = 0; f < w.length; f++) {
+    const x = w[f] ?? 0
+    room.w[f] = x
+    mass += x
+    for (let s = 0; s < stops.length; s++)
+      room.stops[s] = (room.stops[s] ?? 0) + x * (stops[s]?.byFault[f] ?? 0)
+  }
+  return mass
+}
+
+function leastOf(costs: Float64Array): number {
+  let least = Number.POSITIVE_INFINITY
+  for (let i = 0; i < costs.length; i++) if ((costs[i] ?? 0) < least) least = costs[i] ?? 0
+  return least
+}
+
+const GONE = { mass: 0, wrong: 0 }
+
+/** Takes out what a repair mends and what passes its test run wrongly. */
+function mend(problem: Problem, repair: Repair): typeof GONE {
+  GONE.mass = 0
+  GONE.wrong = 0
+  if (problem.slips) for (let f = 0; f < problem.faults.length; f++) mendOne(problem, repair, f)
+  else for (const f of repair.cures) mendOne(problem, repair, f)
+  return GONE
+}
+
+function mendOne({ room, falsePass, stops }: Problem, repair: Repair, f: number): void {
+  const x = room.w[f] ?? 0
+  if (x === 0) return
+  const stays = x * (repair.fails[f] ?? 1)
+  const slipped = stays * (falsePass[f] ?? 0)
+  const gone = x - stays + slipped
+  room.w[f] = stays - slipped
+  GONE.mass += gone
+  GONE.wrong += slipped
+  for (let s = 0; s < stops.length; s++)
+    room.stops[s] = (room.stops[s] ?? 0) - gone * (stops[s]?.byFault[f] ?? 0)
+}
+
+/** Repairs by what they cure per unit of price, best first, the first of equals in the model's order; how many. */
+function inOrder(problem: Problem, { w, open }: From, { left, count }: Left): number {
+  const { ratios, order } = problem.room
+  let placed = 0
+  for (let k = 0; k < count; k++) {
+    const index = left[k] ?? 0
+    const repair = problem.repairs[index]
+    if (repair === undefined) continue
+    const cured = curedBy(repair, w)
+    if (cured <= 0) continue
+    const shut = (repair.setups & ~open) !== 0
+    const price = repair.price + (shut ? opening(problem, repair.setups, open).price : 0)
+    const ratio = cured / Math.max(price, 1e-12)
+    let at = placed++
+    while (at > 0 && (ratios[order[at - 1] ?? 0] ?? 0) < ratio) {
+      order[at] = order[at - 1] ?? 0
+      at--
+    }
+    order[at] = index
+    ratios[index] = ratio
+  }
+  return placed
+}
+
+function curedBy({ cures, fails }: Repair, w: Float64Array): number {
+  let cured = 0
+  for (const f of cures) cured += (w[f] ?? 0) * (1 - (fails[f] ?? 1))
+  return cured
+}
