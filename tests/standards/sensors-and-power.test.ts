@@ -10,7 +10,6 @@ import {
   steinhartCelsius,
 } from '@/lib/diag/temperature-sensors'
 import { checkVin } from '@/lib/diag/vin'
-import { doubledLineNewtons, pullNewtons } from '@/lib/diag/winch-pull'
 
 describe('NTC by beta: table of an RTOS device-tree file, R25 10,000, B 3974, truncated ohms (seen)', () => {
   it.each([
@@ -191,16 +190,6 @@ describe('ignition coil current (L I^2 / 2, V/R (1 - e^(-tR/L)); recomputed)', (
     expect(1000 * secondsTo({ ohm: 0.5, henry: 0.003 }, 14, 6)).toBeCloseTo(1.447, 3)
     expect(1000 * secondsTo({ ohm: 0.5, henry: 0.003 }, 9, 6)).toBeCloseTo(2.433, 3)
     expect(secondsTo({ ohm: 2, henry: 0.003 }, 9, 6)).toBe(Number.POSITIVE_INFINITY)
-  })
-})
-
-describe('winch (recovery sheet, CHECKS 2.10)', () => {
-  it('[STD] 800 kg, 20 degrees, mud 0.33: 5116.08 N, of it gravity 2683.26', () => {
-    expect(pullNewtons(800, 20, 0.33)).toBeCloseTo(5116.08, 1)
-    expect(pullNewtons(800, 20, 0)).toBeCloseTo(2683.26, 1)
-  })
-  it('[STD] one pulley with 10 % loss: line 2692.67 N', () => {
-    expect(doubledLineNewtons(5116.08)).toBeCloseTo(2692.67, 2)
   })
 })
 
