@@ -1,20 +1,48 @@
 /** Air pressure by height: US Standard Atmosphere 1976 / ISO 2533, lowest layer (to 11,000 m geopotential). */
+import { fail, ok, type Result } from '@/lib/model/result'
+import { type FigureProblem, unfit } from './figure-bounds'
+
 const SEA_LEVEL_PA = 101_325
 const EXPONENT = 5.255876
 const EARTH_RADIUS_M = 6_356_766
 
-/** Pascals at a geopotential height in metres, -1,000 to 11,000. */
-export const pressureAt = (geopotentialM: number): number =>
-  SEA_LEVEL_PA * (1 - (0.0065 * geopotentialM) / 288.15) ** EXPONENT
+const heightProblem = (geopotentialM: number): FigureProblem | null =>
+  unfit({ geopotentialM: [geopotentialM, -1000, 11_000] })
 
-/** Geopotential metres of a geometric height (what a map or a position fix shows). */
-export const geopotentialOf = (geometricM: number): number =>
-  (EARTH_RADIUS_M * geometricM) / (EARTH_RADIUS_M + geometricM)
+/** Pascals at a geopotential height in metres, -1,000 to 11,000. */
+export function pressureAt(geopotentialM: number): Result<number, FigureProblem> {
+  const problem = heightProblem(geopotentialM)
+  return problem === null ? ok(pascals(geopotentialM)) : fail(problem)
+}
+
+/** Geopotential metres of a geometric height (what a map or a position fix shows), -1,000 to 100,000 m. */
+export function geopotentialOf(geometricM: number): Result<number, FigureProblem> {
+  const problem = unfit({ geometricM: [geometricM, -1000, 100_000] })
+  return problem === null
+    ? ok((EARTH_RADIUS_M * geometricM) / (EARTH_RADIUS_M + geometricM))
+    : fail(problem)
+}
 
 /** What a compression gauge reads at this geopotential height, as a share of its reading at sea level. */
-export const compressionShare = (geopotentialM: number): number =>
-  pressureAt(geopotentialM) / SEA_LEVEL_PA
+export function compressionShare(geopotentialM: number): Result<number, FigureProblem> {
+  const problem = heightProblem(geopotentialM)
+  return problem === null ? ok(pascals(geopotentialM) / SEA_LEVEL_PA) : fail(problem)
+}
 
-/** Gauge pressure in kilopascals of a sound engine there: p (ratio^n - 1), n the polytropic exponent. */
-export const compressionKpa = (ratio: number, exponent: number, geopotentialM: number): number =>
-  (pressureAt(geopotentialM) * (ratio ** exponent - 1)) / 1000
+/**
+ * Gauge pressure in kilopascals of a sound engine there: p (ratio^n - 1). Compression ratio 1 to 30, n the
+ * polytropic exponent, 1 to 1.67.
+ */
+export function compressionKpa(
+  ratio: number,
+  exponent: number,
+  geopotentialM: number,
+): Result<number, FigureProblem> {
+  const problem =
+    unfit({ ratio: [ratio, 1, 30], exponent: [exponent, 1, 1.67] }) ?? heightProblem(geopotentialM)
+  if (problem !== null) return fail(problem)
+  return ok((pascals(geopotentialM) * (ratio ** exponent - 1)) / 1000)
+}
+
+const pascals = (geopotentialM: number): number =>
+  SEA_LEVEL_PA * (1 - (0.0065 * geopotentialM) / 288.15) ** EXPONENT
