@@ -55,9 +55,10 @@ export function proofBound({ starts, faults }: { starts: number; faults: number 
 
 /**
  * Chance that an intermittent fault is still there after `minutes` without it: p e^(-rt) / (p e^(-rt) + 1 - p),
- * p the chance before, r its rate per minute under the condition (engine.md 1).
+ * p the chance before, r its rate per minute under the condition (docs/spec/diag.md, Belief). What is certain stays certain.
  */
 export function chanceLeft(before: number, ratePerMinute: number, minutes: number): number {
+  if (before >= 1) return 1
   const unseen = before * Math.exp(-ratePerMinute * minutes)
   return unseen / (unseen + 1 - before)
 }

@@ -37,3 +37,20 @@ export function checkVin(
   const expected = digit === 10 ? 'X' : String(digit)
   return ok({ sum, expected, matches: vin[8] === expected })
 }
+
+/** Year letters of position 10 in the order of the years from 1980 on; I, O, Q, U, Z and 0 are not used. */
+const YEARS = 'ABCDEFGHJKLMNPRSTVWXY123456789'
+
+/**
+ * The years position 10 can mean, 30 apart from 1980 on, up to `thisYear` and the next (models come early); empty
+ * when it is no year letter, as on many off-road machines and outside North America. 49 CFR 565.15, table.
+ */
+export function modelYears(text: string, thisYear: number): Result<number[], VinProblem> {
+  const vin = text.trim().toUpperCase()
+  if (vin.length !== 17) return fail({ kind: 'notSeventeen', length: vin.length })
+  const at = YEARS.indexOf(vin.charAt(9))
+  if (at < 0) return ok([])
+  const years: number[] = []
+  for (let year = 1980 + at; year <= thisYear + 1; year += YEARS.length) years.push(year)
+  return ok(years)
+}

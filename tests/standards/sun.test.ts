@@ -52,6 +52,16 @@ describe('sunrise and sunset, USNO (seen in a solar-energy library)', () => {
       '2020-01-15T01:19:00Z',
     )
   })
+  it('[STD] sunset listed for 2020-12-15 at 00:40 is the evening of 12-14 there (USNO pairs by UTC date, CHECKS 3.1 trap)', () => {
+    near(
+      sunTimes(61.216667, -149.866667, at('2020-12-14T22:00:00Z')).sunset,
+      '2020-12-15T00:40:00Z',
+    )
+  })
+  it('[STD] SPA example: the set of the local day before is 17:20:18, not that of 10-17 (CHECKS 3.1 trap)', () => {
+    const before = sunTimes(39.742476, -105.1786, at('2003-10-16T19:00:00Z'))
+    near(before.sunset, '2003-10-17T00:20:18Z', 10_000)
+  })
   it('[STD] midsummer at 61 N: rise 12:22, set 07:42, civil twilight all night', () => {
     const sun = sunTimes(61.216667, -149.866667, at('2020-06-25T22:00:00Z'))
     near(sun.sunrise, '2020-06-25T12:22:00Z')
