@@ -4,6 +4,7 @@
  * our own (common practice, no source). Sensors run on the 5 V rail, the rail and the modules on the supply.
  */
 import type { CodeMeaning } from './code-words'
+import { PRACTICE_SOURCE } from './practice-limits'
 
 /** In the order in which they are looked at: each can set what comes after it. */
 export const COMMON_CAUSES = ['lowSupply', 'sensorSupply', 'network', 'ground'] as const
@@ -51,8 +52,6 @@ const railGroups = oneOf('air', 'oil', 'cooling')
 const fedBySupply = (circuit: string | null): boolean =>
   circuit !== null && /^(ignitionCoil\d|injector\d|fuelPump|idleAir|mainRelay)$/.test(circuit)
 
-const PRACTICE = 'common practice, no source'
-
 /** The causes by name. */
 export const CAUSES: Readonly<Record<CommonCause, CauseRow>> = {
   lowSupply: {
@@ -61,7 +60,7 @@ export const CAUSES: Readonly<Record<CommonCause, CauseRow>> = {
       'Battery volts at rest and while cranking, the battery posts, the main fuse and the ground straps; then the charging volts.',
     doesNotProve:
       'does not convict the battery: a poor post, a ground, a fuse or no charge lowers the same volts.',
-    source: PRACTICE,
+    source: PRACTICE_SOURCE,
     leads: ({ circuit, kind }) =>
       (circuit === 'systemVoltage' && (tooLow(kind) || unsteady(kind))) ||
       (circuit === 'mainRelay' && (tooLow(kind) || unsteady(kind) || kind === 'currentLow')),
@@ -78,7 +77,7 @@ export const CAUSES: Readonly<Record<CommonCause, CauseRow>> = {
       'Volts between the 5 V pin and sensor ground at one sensor, 4.9 to 5.1 V; when they are off, unplug the sensors on that supply one at a time until they come back.',
     doesNotProve:
       'does not convict the module: one shorted sensor or a chafed wire pulls the supply of all down.',
-    source: PRACTICE,
+    source: PRACTICE_SOURCE,
     leads: ({ circuit }) => circuit === 'sensorSupply',
     canSet: ({ circuit, group, kind }) =>
       (onTheRail(circuit) || (circuit === null && railGroups(group))) &&
@@ -90,7 +89,7 @@ export const CAUSES: Readonly<Record<CommonCause, CauseRow>> = {
       'Power and ground at each module that is silent, then the plugs, then the ohms across the pair with the key off: about 60.',
     doesNotProve:
       'does not convict a module: one that has no power or a loose plug is missed by the others in the same way.',
-    source: PRACTICE,
+    source: PRACTICE_SOURCE,
     leads: ({ group, isNetworkCode }) => group === 'network' || isNetworkCode,
     canSet: ({ kind }) => fromTheNet(kind),
   },
@@ -99,7 +98,7 @@ export const CAUSES: Readonly<Record<CommonCause, CauseRow>> = {
     lookFirst:
       'Volts from battery minus to engine, to frame and to the ground pin of one of these sensors while cranking or with loads on: 0.1 V at most, 0.05 V at a sensor.',
     doesNotProve: 'A lost ground lifts every signal that returns through it, and no code names it.',
-    source: PRACTICE,
+    source: PRACTICE_SOURCE,
     leads: () => false,
     canSet: ({ circuit, kind }) =>
       lifted(kind) && !oneOf('systemVoltage', 'mainRelay')(circuit) && !fedBySupply(circuit),

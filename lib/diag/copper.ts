@@ -22,7 +22,3 @@ export const gaugeAreaMm2 = (gauge: number): number => (Math.PI * gaugeDiameterM
 /** Resistance of solid copper in ohms at 20 C from its section and length; stranded wire is 2 to 4 % higher. */
 export const wireOhm = (areaMm2: number, lengthM: number): number =>
   (COPPER_RESISTIVITY * lengthM) / (areaMm2 * 1e-6)
-
-/** Volts lost along a solid copper wire: gauge, total length there and back in metres, current in amperes. */
-export const wireDropVolts = (gauge: number, lengthM: number, amperes: number): number =>
-  amperes * wireOhm(gaugeAreaMm2(gauge), lengthM)

@@ -2,6 +2,7 @@
  * Exact intervals for counts: Garwood (1936) for Poisson, Clopper and Pearson (1934) for the binomial.
  * Both by bisection on the distribution function itself: no special functions, right to about 1e-12.
  */
+import { AppError } from '@/lib/model/result'
 import { crossing } from './bisection'
 
 export type Interval = { low: number; high: number }
@@ -29,8 +30,10 @@ export function binomialCdf(k: number, n: number, p: number): number {
   return Math.min(1, sum)
 }
 
-/** Garwood's exact two-sided interval for the mean of a Poisson count `n` at this confidence (0 to 1). */
+/** Garwood's exact two-sided interval for the mean of a Poisson count `n` from 0 at this confidence (0 to 1). */
 export function poissonInterval(n: number, confidence = 0.95): Interval {
+  mustBe(n >= 0 && Number.isFinite(n), { n })
+  mustBe(confidence > 0 && confidence < 1, { confidence })
   const tail = (1 - confidence) / 2
   const top = n + 10 * Math.sqrt(n + 1) + 40
   return {
@@ -39,13 +42,20 @@ export function poissonInterval(n: number, confidence = 0.95): Interval {
   }
 }
 
-/** Clopper-Pearson's exact two-sided interval for `k` of `n` at this confidence (0 to 1). */
+/** Clopper-Pearson's exact two-sided interval for `k` of `n`, 0 to n of 1 or more, at this confidence (0 to 1). */
 export function clopperPearson(k: number, n: number, confidence = 0.95): Interval {
+  mustBe(k >= 0 && k <= n && n >= 1 && Number.isFinite(n), { k, n })
+  mustBe(confidence > 0 && confidence < 1, { confidence })
   const tail = (1 - confidence) / 2
   return {
     low: k === 0 ? 0 : crossing((p) => 1 - binomialCdf(k - 1, n, p) - tail, 0, 1),
     high: k === n ? 1 : crossing((p) => tail - binomialCdf(k, n, p), 0, 1),
   }
+}
+
+/** Callers parse first: rate-comparison.ts answers a typed figure with its field. */
+function mustBe(holds: boolean, context: Record<string, number>): void {
+  if (!holds) throw new AppError('figureOutOfRange', { context })
 }
 
 function logFactorial(n: number): number {

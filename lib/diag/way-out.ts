@@ -2,7 +2,7 @@
  * Way out (F6): refusals before arithmetic (rule R10). With any of them a limp out is not offered, whatever a
  * tow costs. Some are told by the log, the case or the belief; the rest the person says by hand. Answers are
  * data; the words are made where they are shown. The refusals follow the trade's list of what calls for a tow
- * (common practice, no source); the 11.9 V stand in battery.ts beside the table they come from.
+ * (common practice, no source); the 11.9 V stand in battery.ts.
  */
 import type { Features } from '@/lib/model/features'
 import type { Id } from '@/lib/model/id'

@@ -48,6 +48,20 @@ describe('exact binomial intervals (Clopper and Pearson 1934)', () => {
   })
 })
 
+describe('counts that cannot be', () => {
+  it('[A1] break an assumption and give no NaN', () => {
+    for (const bad of [
+      () => poissonInterval(Number.NaN),
+      () => poissonInterval(-1),
+      () => poissonInterval(3, 1),
+      () => clopperPearson(3, 2),
+      () => clopperPearson(0, 0),
+      () => clopperPearson(1, 2, Number.NaN),
+    ])
+      expect(bad).toThrow('figureOutOfRange')
+  })
+})
+
 describe('proof runs', () => {
   it('[F7] 12 clean restarts leave up to 22 of 100; the 3/n rule says 25', () => {
     expect(boundAfterClean(12)).toBeCloseTo(0.2209, 4)
