@@ -1,6 +1,6 @@
 import { fail, ok, type Result } from '@/lib/model/result'
-import { binomialCdf } from './exact-intervals'
 import { type FigureProblem, unfit } from './figure-bounds'
+import { logGamma } from './log-gamma'
 
 /**
  * Two-sided p of `k` of `n` against a share, exactly: the chance of every count that is no likelier than the one
@@ -11,13 +11,7 @@ export function binomialP(k: number, n: number, share: number): Result<number, F
   if (problem !== null) return fail(problem)
   if (!Number.isInteger(k)) return fail({ kind: 'notANumber', field: 'k' })
   if (!Number.isInteger(n)) return fail({ kind: 'notANumber', field: 'n' })
-  let before = 0
-  const chances = Array.from({ length: n + 1 }, (_, i) => {
-    const upTo = binomialCdf(i, n, share)
-    const chance = upTo - before
-    before = upTo
-    return chance
-  })
+  const chances = Array.from({ length: n + 1 }, (_, i) => chanceOf(i, n, share))
   const seen = chances[k] ?? 0
   // Equal chances differ by rounding: R takes one ten-millionth.
   const rarer = chances.filter((chance) => chance <= seen * (1 + 1e-7))
@@ -27,4 +21,10 @@ export function binomialP(k: number, n: number, share: number): Result<number, F
       rarer.reduce((sum, chance) => sum + chance, 0),
     ),
   )
+}
+
+function chanceOf(k: number, n: number, share: number): number {
+  if (share === 0 || share === 1) return k === (share === 0 ? 0 : n) ? 1 : 0
+  const ways = logGamma(n + 1) - logGamma(k + 1) - logGamma(n - k + 1)
+  return Math.exp(ways + k * Math.log(share) + (n - k) * Math.log1p(-share))
 }

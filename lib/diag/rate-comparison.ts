@@ -14,9 +14,10 @@ export type Counted = { events: number; exposure: number }
 /** No rate without hours: the screen then says "cannot say". */
 export type RateProblem = FigureProblem | { kind: 'noExposure' } | { kind: 'noEvents' }
 
-const MOST_EVENTS = 100_000
+/** More events than a shop sees; above it the exact sums would keep a screen waiting. */
+const MOST_EVENTS = 10_000
 
-/** Events per unit of exposure with Garwood's exact interval. Events 0 to 100,000, confidence 0.5 to 0.9999. */
+/** Events per unit of exposure with Garwood's exact interval. Events 0 to 10,000, confidence 0.5 to 0.9999. */
 export function rateOf(
   { events, exposure }: Counted,
   confidence = 0.95,

@@ -9,11 +9,11 @@ import { poissonCdf } from './exact-intervals'
 import { type FigureProblem, unfit } from './figure-bounds'
 
 /** Largest pipeline these sums are made for; above it a bag or a van is not what is planned. */
-const MOST_MEAN = 10_000
+const MOST_MEAN = 1000
 
 /**
  * Mean number of pieces under way: demand per day times mean resupply time in days (Palm).
- * Both from 0; the product at most 10,000.
+ * Both from 0; the product at most 1,000.
  */
 export function pipelineMean(
   demandPerDay: number,
@@ -28,7 +28,7 @@ export function pipelineMean(
 }
 
 /**
- * Smallest stock s with P(demand <= s) at least `service`. Mean 0 to 10,000; service 0 to 1, where 1 answers
+ * Smallest stock s with P(demand <= s) at least `service`. Mean 0 to 1,000; service 0 to 1, where 1 answers
  * the stock past which a piece adds nothing that a number can show.
  */
 export function spareStock(mean: number, service: number): Result<number, FigureProblem> {
@@ -54,7 +54,7 @@ export type StockFigures = {
   backOrders: number
 }
 
-/** Service level, fill rate and expected back-orders of a whole stock 0 to 20,000 at a mean 0 to 10,000. */
+/** Service level, fill rate and expected back-orders of a whole stock 0 to 2,000 at a mean 0 to 1,000. */
 export function stockFigures(stock: number, mean: number): Result<StockFigures, FigureProblem> {
   const problem = unfit({ stock: [stock, 0, 2 * MOST_MEAN], mean: [mean, 0, MOST_MEAN] })
   if (problem !== null) return fail(problem)
@@ -76,7 +76,7 @@ export type Purchase = { id: string; stock: number; backOrders: number; spentMin
 
 /**
  * The pieces to buy, best first, as long as the next best one is within the budget. Equal worth goes by id. Ends
- * where no piece takes away more than a billionth of a back-order. Prices from 1 minor unit, means 0 to 10,000.
+ * where no piece takes away more than a billionth of a back-order. Prices from 1 minor unit, means 0 to 1,000.
  */
 export function buyInOrder(
   parts: readonly SparePart[],

@@ -1,6 +1,8 @@
 import fc from 'fast-check'
 import { describe, expect, it } from 'vitest'
 import { compressionKpa, compressionShare, pressureAt } from '@/lib/diag/atmosphere'
+import { rideEnergy } from '@/lib/diag/battery-charge'
+import { binomialP } from '@/lib/diag/binomial-test'
 import { primaryAmperes, secondsTo } from '@/lib/diag/coil-current'
 import {
   atSeaLevel,
@@ -9,8 +11,14 @@ import {
   leakDown,
   wetTest,
 } from '@/lib/diag/compression'
+import { pointOfUtm, squareOf } from '@/lib/diag/grid-reference'
+import { kaplanMeier } from '@/lib/diag/kaplan-meier'
+import { fitPowerLaw } from '@/lib/diag/power-law'
 import { pressureHold } from '@/lib/diag/practice-limits'
+import { compareRates, rateOf } from '@/lib/diag/rate-comparison'
+import { linePull } from '@/lib/diag/rigging'
 import { sensorVolts } from '@/lib/diag/sensor-volts'
+import { spareStock, stockFigures } from '@/lib/diag/spares'
 import { judgeCharging } from '@/lib/diag/start-and-charge'
 import { legBalance } from '@/lib/diag/stator'
 import {
@@ -20,6 +28,9 @@ import {
   pt100Ohm,
   steinhartCelsius,
 } from '@/lib/diag/temperature-sensors'
+import { inspectionRisks } from '@/lib/diag/two-states'
+import { fitWeibull } from '@/lib/diag/weibull'
+import { pullOf, towOf } from '@/lib/diag/winch-pull'
 import { theValue } from './the-value'
 
 describe('compression and leak-down (common practice, CHECKS 2.8)', () => {
@@ -87,7 +98,12 @@ describe('[A1] what cannot be is named and never NaN', () => {
     expect(pt100Ohm(900)).toMatchObject({ problem: { field: 'celsius' } })
   })
   it('[A1] any figures at all: a number or a named field', () => {
-    const any = fc.oneof(fc.double(), fc.constantFrom(0, -0, -1, 1e308, Number.NaN, -Infinity))
+    const any = fc.oneof(
+      fc.double(),
+      fc.double({ min: 0, max: 90, noNaN: true }),
+      fc.integer({ min: 0, max: 40 }),
+      fc.constantFrom(0, -0, -1, 1e308, Number.NaN, -Infinity),
+    )
     const numbers = (value: unknown): number[] =>
       typeof value === 'number'
         ? [value]
@@ -110,6 +126,33 @@ describe('[A1] what cannot be is named and never NaN', () => {
           wetTest(a, b),
           leakDown(a, b),
           pressureHold(a, b, c),
+          pullOf({ massKg: a, slopeDegrees: b, ground: 'hard', locked: 'none' }, c),
+          towOf({ massKg: a, slopeDegrees: b, ground: 'hard', brakesWork: false }, c),
+          linePull(a, b, c),
+          rideEnergy({
+            ratedAh: a,
+            restVolts: b,
+            expandedU: c,
+            airTempC: -5,
+            drawAmperes: 7,
+          }),
+          rateOf({ events: a, exposure: b }, c),
+          compareRates({ events: a, exposure: b }, { events: 3, exposure: c }),
+          stockFigures(a, b),
+          spareStock(a, b),
+          inspectionRisks({ halfTolerance: a, processU: b, meterU: c, accept: 1 }),
+          binomialP(a, 9, b),
+          squareOf({ latitude: a, longitude: b }, c),
+          pointOfUtm({ zone: a, hemisphere: 'S', eastingMetres: b, northingMetres: c }),
+          kaplanMeier([
+            { time: a, failed: true },
+            { time: b, failed: false },
+          ]),
+          fitWeibull([
+            { time: a, failed: true },
+            { time: b, failed: true },
+          ]),
+          fitPowerLaw([{ failures: [a, b], endsAt: c }]),
           judgeCharging({ volts: a, expandedU: b }, { engineRpm: c, airTempC: 20 }),
         ]
         for (const answer of answers)

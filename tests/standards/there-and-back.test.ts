@@ -168,6 +168,8 @@ describe('values of CHECKS that stand alone', () => {
     expect(theValue(binomialP(682, 925, 0.75))).toBeCloseTo(0.3824916, 7)
     expect(theValue(binomialP(5, 10, 0.5))).toBeCloseTo(1, 12)
     expect(theValue(binomialP(0, 10, 0.5))).toBeCloseTo(2 / 1024, 12)
+    expect(theValue(binomialP(3, 7, 0))).toBe(0)
+    expect(theValue(binomialP(7, 7, 1))).toBe(1)
     expect(binomialP(11, 10, 0.5)).toMatchObject({ problem: { kind: 'above', field: 'k' } })
     expect(binomialP(1.5, 10, 0.5)).toMatchObject({ problem: { field: 'k' } })
   })
