@@ -75,9 +75,10 @@ export function pointOfUtm(utm: Omit<Utm, 'band'>): Result<Point, GridProblem> {
   })
   if (problem !== null) return fail(problem)
   if (!Number.isInteger(zone)) return fail({ kind: 'noSuchSquare' })
-  const point = pointAt(utm)
-  const within = point.latitude > -80 - HAIR_DEGREES && point.latitude < 84 + HAIR_DEGREES
-  return within ? ok(point) : fail({ kind: 'polar' })
+  const { latitude, longitude } = pointAt(utm)
+  // Metres cut off to a millimetre may lie that much outside.
+  if (latitude < -80 - EDGE_DEGREES || latitude > 84 + EDGE_DEGREES) return fail({ kind: 'polar' })
+  return ok({ latitude: Math.min(84, Math.max(-80, latitude)), longitude })
 }
 
 /** The square that holds a position, with 0 to 5 digits each way (5 is a metre, 0 is 100 km). */
@@ -123,8 +124,9 @@ export function placeOfSquare(square: GridSquare): Result<GridPlace, GridProblem
   return ok({ corner: at(0, 0), centre: at(0.5, 0.5), sizeMetres, cut: inside.includes(false) })
 }
 
-/** A tenth of a millimetre. */
+/** A tenth of a millimetre, and two millimetres. */
 const HAIR_DEGREES = 1e-9
+const EDGE_DEGREES = 2e-8
 
 const BANDS = 'CDEFGHJKLMNPQRSTUVWX'
 const bandOf = (latitude: number): string =>

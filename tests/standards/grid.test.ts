@@ -86,6 +86,10 @@ describe('UTM, MGRS and USNG on WGS 84', () => {
       problem: { field: 'zone' },
     })
     expect(theValue(utmOf(at(10, 180))).zone).toBe(1)
+    // The last millimetre before 80 S, cut off.
+    const edge = theValue(utmOf(at(-79.9999999925, 0)))
+    const cut = { ...edge, northingMetres: Math.floor(1000 * edge.northingMetres) / 1000 }
+    expect(theValue(pointOfUtm(cut)).latitude).toBeCloseTo(-80, 7)
     const far = {
       zone: 31,
       hemisphere: 'N',
