@@ -1,7 +1,9 @@
 import type { CheckItem, SwapItem } from '@/lib/model/code-book'
-import { swapWeights } from './evidence-swap'
+import { swapSlot } from './evidence-swap'
 import { type Sight, tableOf } from './evidence-table'
-import { type OutcomeTable, outcomeChances, turned } from './factor'
+import { type Factor, tableFactor } from './factor'
+import { type OutcomeTable, outcomeChances, turned } from './outcome-table'
+import { swapWeights } from './swap-weights'
 import { verdictTable } from './verdict-table'
 
 /** A check or swap as something that may come out: its outcomes, good first, and their chances by state. */
@@ -11,6 +13,9 @@ export type ActionTable = {
   scope: readonly number[]
   /** Chances of the outcomes with these suspects present (sum 1). */
   chances: (present: readonly number[]) => number[]
+  /** The evidence of each outcome, and what it would stand in the place of. */
+  factors: readonly Factor[]
+  slot: string
 }
 
 /** Outcomes of a swap in the order of its table. */
@@ -27,6 +32,13 @@ export function checkTable(sight: Sight, check: CheckItem): ActionTable {
     outcomes: check.outcomes,
     scope: [...table.rows.keys()],
     chances: (present) => outcomeChances(table, present),
+    factors: check.outcomes.map((_, seen) =>
+      tableFactor(
+        table,
+        check.outcomes.map((_o, k) => (k === seen ? 1 : 0)),
+      ),
+    ),
+    slot: `outlook ${check.id}`,
   }
 }
 
@@ -47,5 +59,9 @@ export function swapTable({ c, place }: Sight, swap: SwapItem): ActionTable | nu
       const sum = open.reduce((total, p) => total + p, 0)
       return open.map((p) => p / sum)
     },
+    factors: SWAP_OUTCOMES.map((_, seen) =>
+      tableFactor(table, done.map((w, k) => (k === seen ? w : 0)).reverse()),
+    ),
+    slot: swapSlot(swap.id),
   }
 }

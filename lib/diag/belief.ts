@@ -6,8 +6,9 @@
 import { SOMETHING_ELSE } from './book-index'
 import type { Case } from './case'
 import { evidenceOf } from './evidence'
-import type { About, Evidence, Multipliers } from './evidence-table'
-import { absorb, type Joint, type Summary, startJoint, summarise, type Term } from './joint'
+import type { About, Evidence } from './evidence-table'
+import type { Factor } from './factor'
+import { type Summary, summarise } from './joint'
 import { type Candidate, candidates } from './priors'
 
 /** One line of "why": `logRatio` is the change of this suspect's log-odds (natural log) by that piece. */
@@ -35,6 +36,8 @@ export type Belief = {
   chanceOfTwoOrMore: number
   chanceOnlySomethingElse: number
   notices: ('moreThanOneLikely' | 'maybeNotInList')[]
+  /** False where the evidence was too wide to be summed to the end (joint.ts). */
+  isExact: boolean
 }
 
 /** Above this chance the screen gives notice and the plan looks one action ahead (rule R5). */
@@ -49,7 +52,8 @@ export type Reckoning = {
   /** Summaries before any evidence and after each piece. */
   steps: readonly Summary[]
   last: Summary
-  terms: readonly Term[]
+  /** The factors that speak, by slot. */
+  factors: ReadonlyMap<string, Factor>
 }
 
 /** The belief of a case: every suspect with its chance, its prior and what moved it. */
@@ -66,39 +70,29 @@ export function belief(c: Case): Belief {
     chanceOfTwoOrMore: last.twoOrMore,
     chanceOnlySomethingElse: only,
     notices,
+    isExact: last.isExact,
   }
 }
 
 /** The evidence of a case taken in one piece after the other. */
 export function reckon(c: Case): Reckoning {
   const suspects = candidates(c)
+  const odds = suspects.map((s) => s.odds)
   const evidence = evidenceOf(c, suspects)
-  const joint = startJoint(evidence.flatMap((e) => (e.factor === null ? [] : [e.factor])))
-  let terms: Term[] = [{ weight: 1, odds: suspects.map((s) => s.odds) }]
-  const steps = [summarise(joint, terms)]
+  const factors = new Map<string, Factor>()
+  let last = summarise(odds, [])
+  const steps = [last]
   for (const piece of evidence) {
-    terms = takeIn(joint, terms, piece)
-    steps.push(isSilent(piece) ? (steps.at(-1) as Summary) : summarise(joint, terms))
+    if (piece.factor !== null) {
+      factors.set(piece.slot, piece.factor)
+      last = summarise(odds, [...factors.values()])
+    }
+    steps.push(last)
   }
-  return { suspects, evidence, steps, last: steps.at(-1) as Summary, terms }
+  return { suspects, evidence, steps, last, factors }
 }
 
-/** The terms after a sum-of-products piece: every old term times every new one. */
-export function multiply(terms: readonly Term[], by: Multipliers): Term[] {
-  return terms.flatMap((t) =>
-    by.map(({ weight, of }) => ({
-      weight: t.weight * weight,
-      odds: t.odds.map((o, f) => o * of(f)),
-    })),
-  )
-}
-
-function takeIn(joint: Joint, terms: Term[], piece: Evidence): Term[] {
-  if (piece.factor !== null) absorb(joint, piece.factor)
-  return piece.multipliers === null ? terms : multiply(terms, piece.multipliers)
-}
-
-const isSilent = (piece: Evidence): boolean => piece.factor === null && piece.multipliers === null
+const isSilent = (piece: Evidence): boolean => piece.factor === null
 
 function suspectOf({ evidence, steps, last }: Reckoning, s: Candidate, at: number): Suspect {
   const chanceAfter = (step: number) => steps[step]?.marginals[at] ?? 0

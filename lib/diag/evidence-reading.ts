@@ -7,9 +7,10 @@
  */
 import type { CheckItem, Piece, SpecValue } from '@/lib/model/code-book'
 import type { LogEntry, ReadingBody } from '@/lib/model/log-entry'
-import type { Case } from './case'
-import { type Evidence, nothing, type Sight, tableOf } from './evidence-table'
+import { twinKey } from './evidence-log'
+import { type Evidence, nothing, type Sight, stillThere, tableAt, tableOf } from './evidence-table'
 import { type Factor, tableFactor } from './factor'
+import { meanMachine } from './machine'
 import { between } from './normal'
 import { canDecide, judge, middleOf } from './reading'
 import { budgetOf, partTempsApart } from './reading-budget'
@@ -21,28 +22,35 @@ type Model = NonNullable<CheckItem['reading']>
 type Shown = { at: number; standardU: number; overRange: boolean }
 
 /** The evidence of a reading; a known-good one only speaks through the suspect's. */
-export function readingEvidence(sight: Sight, entry: LogEntry, body: ReadingBody): Evidence {
+export function readingEvidence(
+  sight: Sight,
+  entry: LogEntry,
+  { body, at }: { body: ReadingBody; at: number },
+): Evidence {
   const check = sight.c.index.checks.get(body.checkId)
   const label = `${check?.name ?? body.checkId}: ${body.asTyped} ${body.unit}`
   if (body.subject === 'knownGood') return nothing(entry, 'reading', `${label} on a known-good one`)
   if (check === undefined) return nothing(entry, 'reading', label)
-  const twin = twinOf(sight.c, body)
+  const twin = twinOf(sight, body)
   const model = check.reading
   const nominal = model === null ? null : nominalOf(body.spec, model)
-  if (isShedByTwin(sight.c, body))
+  if (isShedByTwin(sight, body))
     return nothing(entry, 'reading', `${label}: a good one reads the same, so it says nothing`)
   if (model === null || nominal === null)
-    return { ...nothing(entry, 'reading', label), factor: verdictFactor(sight, check, body) }
+    return {
+      ...nothing(entry, 'reading', label),
+      factor: verdictFactor(sight, check, { body, at }),
+    }
   const shown = twin === null ? shownBy(body) : againstTwin(body, twin, { model, nominal })
   return {
     ...nothing(entry, 'reading', label),
-    factor: densityFactor(sight, model, { shown, nominal }),
+    factor: densityFactor(sight, model, { shown, nominal, at }),
   }
 }
 
 /** Whether a good twin reads the same and the meter cannot decide the figure: then the check says nothing. */
-export function isShedByTwin(c: Case, body: ReadingBody): boolean {
-  const twin = twinOf(c, body)
+export function isShedByTwin(sight: Sight, body: ReadingBody): boolean {
+  const twin = twinOf(sight, body)
   return twin !== null && agrees(body, twin) && !decides(body)
 }
 
@@ -54,17 +62,9 @@ export function nominalOf(spec: SpecValue | null, model: Model): number | null {
   return value === 0 ? null : value
 }
 
-/** The living twin reading of the same check, the latest; null without one. */
-export function twinOf({ entries }: Case, { checkId, quantity }: ReadingBody): ReadingBody | null {
-  const found = entries.findLast(
-    ({ body }) =>
-      body.kind === 'reading' &&
-      body.subject === 'knownGood' &&
-      body.checkId === checkId &&
-      body.quantity === quantity,
-  )
-  return found?.body.kind === 'reading' ? found.body : null
-}
+/** The living twin reading of the same check and quantity, the latest; null without one. */
+const twinOf = ({ log }: Sight, body: ReadingBody): ReadingBody | null =>
+  log.twins.get(twinKey(body)) ?? null
 
 /**
  * u of the difference of two readings. With the same meter and leads gain, steps and contact remain, and the
@@ -98,15 +98,17 @@ export function likelihood(pieces: readonly Piece[], shown: Shown, nominal: numb
 }
 
 function densityFactor(
-  { place }: Sight,
+  sight: Sight,
   model: Model,
-  { shown, nominal }: { shown: Shown; nominal: number },
+  { shown, nominal, at }: { shown: Shown; nominal: number; at: number },
 ): Factor {
   const good = likelihood(model.good, shown, nominal)
   const bad = new Map<number, number>()
   for (const [fault, pieces] of Object.entries(model.byFault)) {
-    const at = place.get(fault)
-    if (at !== undefined) bad.set(at, likelihood(pieces, shown, nominal))
+    const place = sight.place.get(fault)
+    if (place === undefined) continue
+    const there = stillThere(sight, fault, at)
+    bad.set(place, there * likelihood(pieces, shown, nominal) + (1 - there) * good)
   }
   return {
     scope: [...bad.keys()],
@@ -114,6 +116,7 @@ function densityFactor(
       if (present.length === 0) return good
       return present.reduce((sum, f) => sum + (bad.get(f) ?? good), 0) / present.length
     },
+    machine: meanMachine(good, bad),
   }
 }
 
@@ -161,7 +164,11 @@ function againstTwin(
 }
 
 /** Without a model of the true value the three-valued verdict enters as virtual evidence on the outcome table. */
-function verdictFactor({ place }: Sight, check: CheckItem, body: ReadingBody): Factor | null {
+function verdictFactor(
+  sight: Sight,
+  check: CheckItem,
+  { body, at }: { body: ReadingBody; at: number },
+): Factor | null {
   const { verdict, conformance } = judge(body)
   if (verdict === null) return null
   const named = check.outcomes.findIndex((o) => o.id === verdict)
@@ -170,7 +177,7 @@ function verdictFactor({ place }: Sight, check: CheckItem, body: ReadingBody): F
     if (named >= 0) return k === named ? 1 : 0
     return o.good ? chance : 1 - chance
   })
-  return tableFactor(tableOf(place, check), weights)
+  return tableFactor(tableAt(sight, tableOf(sight.place, check), at), weights)
 }
 
 const sameSetUp = (a: ReadingBody, b: ReadingBody): boolean =>

@@ -6,8 +6,10 @@
  * comes when hot, and a run before any fix, say nothing.
  */
 import type { LogEntry } from '@/lib/model/log-entry'
-import type { Case } from './case'
-import { type Evidence, type Multipliers, nothing, type Sight } from './evidence-table'
+import { fixesBefore } from './evidence-log'
+import { type Evidence, nothing, type Sight, successOf } from './evidence-table'
+import type { Factor } from './factor'
+import { productMachine, seenMachine } from './machine'
 
 type RunBody = Extract<LogEntry['body'], { kind: 'proofRun' }>
 
@@ -23,7 +25,7 @@ export function chanceUnseen(starts: number, minutes: number): number {
   return Math.max(SLIPS_THROUGH, unseen)
 }
 
-/** The evidence of a proof run; it is carried by the last run after the same fixes. */
+/** The evidence of a proof run; it is carried by the last run after the same fixes that counts. */
 export function runEvidence(
   sight: Sight,
   entry: LogEntry,
@@ -31,52 +33,29 @@ export function runEvidence(
 ): Evidence {
   const label = `Proof run: ${body.starts} starts, ${body.minutes} min, fault seen ${body.faults} times`
   const quiet = nothing(entry, 'proofRun', label)
-  const fixes = fixesBefore(sight.c, at)
-  if (fixes.size === 0 || (comesWhenHot(sight.c) && !body.hot)) return quiet
-  const runs = runsOfSameFixes(sight.c, at)
-  if (runs.at(-1) !== body) return quiet
-  const starts = runs.reduce((sum, r) => sum + r.starts, 0)
-  const minutes = runs.reduce((sum, r) => sum + r.minutes, 0)
-  if (starts === 0 && minutes === 0) return quiet
-  const seen = runs.some((r) => r.faults > 0)
+  const fixAt = sight.log.lastFix[at] ?? -1
+  if (fixAt < 0) return quiet
+  const runs = sight.log.runs.get(fixAt)
+  if (runs === undefined) return quiet
+  const { last, starts, minutes, seen } = runs
+  if (last !== entry.id || (starts === 0 && minutes === 0)) return quiet
   const slips = chanceUnseen(starts, minutes)
-  const away = (suspect: number): number => {
-    const fault = sight.suspects[suspect]?.fault ?? ''
-    return fixes.has(fault) ? successOf(sight.c, fault) : slips
-  }
-  return { ...quiet, multipliers: seen ? notClean(away) : [{ weight: 1, of: away }] }
-}
-
-/** 1 - (1 - stray) prod(away): the noisy-OR of "seen", as a sum of two products. */
-const notClean = (away: (suspect: number) => number): Multipliers => [
-  { weight: 1, of: () => 1 },
-  { weight: STRAY - 1, of: away },
-]
-
-const successOf = ({ index }: Case, fault: string): number =>
-  (index.faults.get(fault)?.repair?.successOf100 ?? 90) / 100
-
-function fixesBefore({ entries }: Case, at: number): Set<string> {
-  const fixes = new Set<string>()
-  for (const { body } of entries.slice(0, at)) if (body.kind === 'fix') fixes.add(body.fault)
-  return fixes
-}
-
-function runsOfSameFixes({ entries }: Case, at: number): RunBody[] {
-  const from = entries.slice(0, at).findLastIndex((e) => e.body.kind === 'fix')
-  const runs: RunBody[] = []
-  for (const { body } of entries.slice(from + 1)) {
-    if (body.kind === 'fix') break
-    if (body.kind === 'proofRun') runs.push(body)
-  }
-  return runs
-}
-
-function comesWhenHot({ entries, symptom }: Case): boolean {
-  return entries.some(
-    ({ body }) =>
-      body.kind === 'symptom' &&
-      body.symptom === symptom &&
-      body.conditions.some((id) => /hot/i.test(id)),
+  const stays = new Map(
+    sight.suspects.map(({ fault }, f) => {
+      const isFixed = fixesBefore(sight.log, fault, at) > 0
+      return [f, isFixed ? successOf(sight.c, fault) : slips]
+    }),
   )
+  return { ...quiet, factor: runFactor(stays, seen) }
+}
+
+/** Clean: prod of stays over the present. Not clean: 1 - (1 - stray) times that, the noisy-OR of "seen". */
+function runFactor(stays: ReadonlyMap<number, number>, seen: boolean): Factor {
+  const clean = (present: readonly number[]) =>
+    present.reduce((product, f) => product * (stays.get(f) ?? 1), 1)
+  return {
+    scope: [...stays.keys()],
+    at: (present) => (seen ? 1 - (1 - STRAY) * clean(present) : clean(present)),
+    machine: seen ? seenMachine(STRAY, stays) : productMachine(stays),
+  }
 }

@@ -1,6 +1,8 @@
 import type { LogEntry } from '@/lib/model/log-entry'
 import type { Case } from './case'
-import { chancesOf, type Factor, type OutcomeTable } from './factor'
+import { type EvidenceLog, evidenceLog, fixesBefore } from './evidence-log'
+import type { Factor } from './factor'
+import { chancesOf, type OutcomeTable } from './outcome-table'
 import type { Candidate } from './priors'
 
 /** What a piece of evidence is about, in the words of the job log. */
@@ -14,16 +16,14 @@ export type About =
   | 'symptom'
   | 'repair'
 
-/** A sum of products over suspects: weights, each with a multiplier on every suspect's odds. */
-export type Multipliers = readonly { weight: number; of: (suspect: number) => number }[]
-
-/** One piece of evidence; with neither factor nor multipliers it says nothing. */
+/** One piece of evidence; without a factor it says nothing. */
 export type Evidence = {
   entryId: string
   about: About
   label: string
   factor: Factor | null
-  multipliers: Multipliers | null
+  /** The factor stands in the place of an earlier one of the same slot: the steps of one swap say one thing. */
+  slot: string
 }
 
 /** Everything a builder of evidence may look at; `place` is where each fault stands among the suspects. */
@@ -31,6 +31,7 @@ export type Sight = {
   c: Case
   suspects: readonly Candidate[]
   place: ReadonlyMap<string, number>
+  log: EvidenceLog
 }
 
 /** What a case shows a builder of evidence. */
@@ -38,6 +39,7 @@ export const sightOf = (c: Case, suspects: readonly Candidate[]): Sight => ({
   c,
   suspects,
   place: new Map(suspects.map((s, i) => [s.fault, i])),
+  log: evidenceLog(c),
 })
 
 /** A piece of evidence that moves nothing. */
@@ -46,7 +48,7 @@ export const nothing = (entry: LogEntry, about: About, label: string): Evidence 
   about,
   label,
   factor: null,
-  multipliers: null,
+  slot: entry.id,
 })
 
 /** A table over the suspects of this case from a book's rows; rows equal to `otherwise` touch nothing. */
@@ -63,4 +65,29 @@ export function tableOf(
     if (chances.some((p, k) => p !== otherwise[k])) rows.set(at, chances)
   }
   return { rows, otherwise }
+}
+
+/** The chance (0 to 1) that a fault, rightly repaired, is gone; 0.9 where the book has no repair (guess). */
+export const successOf = ({ index }: Case, fault: string): number =>
+  (index.faults.get(fault)?.repair?.successOf100 ?? 90) / 100
+
+/**
+ * The chance that a fault which was the cause is still there at a place in the log: 1 before it was fixed, then
+ * what its repair leaves. What is seen after a fix speaks of the new part, not of the old one.
+ */
+export const stillThere = (
+  { c, log }: Pick<Sight, 'c' | 'log'>,
+  fault: string,
+  at: number,
+): number => (fixesBefore(log, fault, at) > 0 ? 1 - successOf(c, fault) : 1)
+
+/** A table as it holds at a place in the log: rows of fixed faults are mixed with `otherwise`. */
+export function tableAt(sight: Sight, table: OutcomeTable, at: number): OutcomeTable {
+  const rows = new Map<number, readonly number[]>()
+  for (const [f, row] of table.rows) {
+    const there = stillThere(sight, sight.suspects[f]?.fault ?? '', at)
+    const mixed = row.map((p, k) => there * p + (1 - there) * (table.otherwise[k] ?? 0))
+    rows.set(f, there === 1 ? row : mixed)
+  }
+  return { rows, otherwise: table.otherwise }
 }

@@ -7,12 +7,16 @@ import type { CodeContext, CodeSeen } from '@/lib/model/code-seen'
 import type { LogBody, LogEntry } from '@/lib/model/log-entry'
 import type { Case } from './case'
 import { codeMeaning, roleOf100 } from './code-words'
+import { fixesBefore } from './evidence-log'
 import { isShedByTwin, readingEvidence } from './evidence-reading'
 import { runEvidence } from './evidence-run'
 import { swapEvidence } from './evidence-swap'
-import { type Evidence, nothing, type Sight, sightOf, tableOf } from './evidence-table'
+import { type Evidence, nothing, type Sight, sightOf, tableAt, tableOf } from './evidence-table'
 import { saysNothing, tableFactor } from './factor'
 import type { Candidate } from './priors'
+
+type CodeBody = { seen: CodeSeen; context: CodeContext }
+type CheckBody = Extract<LogBody, { kind: 'check' }>
 
 /** How much a code tells a fault of its circuit from others when the kind is silent, of 100 (guess). */
 const CIRCUIT_ONLY = { member: 20, otherwise: 10 }
@@ -21,33 +25,62 @@ const OLD_CODE = { active: 0, unknown: 0.25, stored: 0.5 }
 /** A further symptom, of 100: faults known to show it, and others (guess). */
 const FURTHER_SYMPTOM = { member: 60, otherwise: 20 }
 
+/** Pieces that may speak in one job: more than anybody takes down, and a bound on what is reckoned. */
+export const MOST_PIECES = 60
+
 /** The evidence of a case, oldest first. Same input, same list: nothing depends on the order entries came in. */
 export function evidenceOf(c: Case, suspects: readonly Candidate[]): Evidence[] {
   const sight = sightOf(c, suspects)
-  const latest = latestByKey(c.entries)
+  const keys = c.entries.map(({ body }, at) => keyOf(sight, body, at))
+  const latest: Latest = new Map()
+  const leftOver = new Set<number>()
+  keys.forEach((key, at) => {
+    if (key === null) return
+    if (latest.has(key) && isOldCode(sight, at)) leftOver.add(at)
+    else latest.set(key, at)
+  })
+  const speaking = new Set<string>()
   const list: Evidence[] = []
   c.entries.forEach((entry, at) => {
-    const key = keyOf(entry.body)
-    const replaced = key !== null && latest.get(key) !== entry.id
-    const piece = replaced ? replacedBy(entry) : pieceOf(sight, entry, at)
-    if (piece !== null) list.push(quiet(piece))
+    const key = keys[at] ?? null
+    const isLast = key === null || latest.get(key) === at
+    const piece = leftOver.has(at)
+      ? nothing(entry, 'code', 'Stored, and seen before the fix')
+      : isLast
+        ? pieceOf({ sight, latest }, entry, at)
+        : replacedBy(entry)
+    if (piece !== null) list.push(counted(quiet(piece), speaking))
   })
   return list
 }
 
-function pieceOf(sight: Sight, entry: LogEntry, at: number): Evidence | null {
+function counted(piece: Evidence, speaking: Set<string>): Evidence {
+  if (piece.factor === null || speaking.has(piece.slot)) return piece
+  if (speaking.size < MOST_PIECES) {
+    speaking.add(piece.slot)
+    return piece
+  }
+  const label = `${piece.label} (not counted: ${MOST_PIECES} pieces of evidence are the most)`
+  return { ...piece, factor: null, label }
+}
+
+/** The place of the newest entry by its key, see `keyOf`. */
+type Latest = Map<string, number>
+type Seen = { sight: Sight; latest: Latest }
+
+function pieceOf({ sight, latest }: Seen, entry: LogEntry, at: number): Evidence | null {
   const { body } = entry
   switch (body.kind) {
     case 'symptom':
       return symptomEvidence(sight, entry, body.symptom)
     case 'code':
-      return codeEvidence(sight, entry, body)
+      return codeEvidence(sight, entry, { body, at })
     case 'check':
-      return checkEvidence(sight, entry, body)
+      return checkEvidence({ sight, latest }, entry, { body, at })
     case 'couldNot':
       return nothing(entry, 'check', `${checkName(sight, body.checkId)}: could not be done`)
     case 'reading':
-      return readingEvidence(sight, entry, body)
+      return readingEvidence(sight, entry, { body, at })
     case 'swap':
       return swapEvidence(sight, entry, body)
     case 'fix':
@@ -78,58 +111,70 @@ function symptomEvidence(sight: Sight, entry: LogEntry, symptom: string): Eviden
 
 /** P(code | fault) by its role in the circuit; P(code | none of them) = `otherwise`; noisy-OR with that leak. */
 function codeEvidence(
-  { c, place }: Sight,
+  sight: Sight,
   entry: LogEntry,
-  body: { seen: CodeSeen; context: CodeContext },
+  { body, at }: { body: CodeBody; at: number },
 ): Evidence {
+  const { c, place } = sight
   const { title, circuit, failure, subject } = codeMeaning(c.index, body.seen)
   const label = subject === null ? title : `${title}: ${subject}`
   if (circuit === null) return nothing(entry, 'code', label)
   const rows = new Map<number, readonly number[]>()
   for (const fault of c.index.faults.values()) {
-    const at = place.get(fault.id)
+    const seatAt = place.get(fault.id)
     const seat = fault.circuits.find((s) => s.circuit === circuit)
-    if (at === undefined || seat === undefined) continue
+    if (seatAt === undefined || seat === undefined) continue
     const of100 = (failure === null ? null : roleOf100(failure, seat.role)) ?? CIRCUIT_ONLY.member
-    rows.set(at, [1 - of100 / 100, of100 / 100])
+    rows.set(seatAt, [1 - of100 / 100, of100 / 100])
   }
   const known = failure !== null && failure.byRole !== null
   const leak = Math.max(0.01, known ? failure.otherwise : CIRCUIT_ONLY.otherwise) / 100
   const old = OLD_CODE[body.context.status]
-  const factor = tableFactor({ rows, otherwise: [1 - leak, leak] }, [old, 1])
-  return { ...nothing(entry, 'code', label), factor }
+  const table = { rows, otherwise: [1 - leak, leak] }
+  const now = body.context.status === 'active' ? tableAt(sight, table, at) : table
+  return { ...nothing(entry, 'code', label), factor: tableFactor(now, [old, 1]) }
 }
 
 function checkEvidence(
-  sight: Sight,
+  { sight, latest }: Seen,
   entry: LogEntry,
-  body: Extract<LogBody, { kind: 'check' }>,
+  { body, at }: { body: CheckBody; at: number },
 ): Evidence {
   const check = sight.c.index.checks.get(body.checkId)
   const label = checkName(sight, body.checkId)
   if (check === undefined) return nothing(entry, 'check', label)
-  const at = outcomeAt(check.outcomes, body.outcome)
-  if (at === null) return nothing(entry, 'check', `${label}: ${body.outcome}`)
-  const said = `${label}: ${check.outcomes[at]?.name ?? body.outcome}`
-  const silenced = silencedBy(sight, body.checkId)
+  const seen = outcomeAt(check.outcomes, body.outcome)
+  if (seen === null) return nothing(entry, 'check', `${label}: ${body.outcome}`)
+  const said = `${label}: ${check.outcomes[seen]?.name ?? body.outcome}`
+  const silenced = silencedBy({ sight, latest }, body.checkId, at)
   if (silenced !== null) return nothing(entry, 'check', `${said} (${silenced})`)
-  const weights = check.outcomes.map((_, k) => (k === at ? 1 : 0))
-  const factor = tableFactor(tableOf(sight.place, check), weights)
-  return { ...nothing(entry, 'check', said), factor }
+  const weights = check.outcomes.map((_, k) => (k === seen ? 1 : 0))
+  const table = tableAt(sight, tableOf(sight.place, check), at)
+  return { ...nothing(entry, 'check', said), factor: tableFactor(table, weights) }
 }
 
 /**
- * Why the outcome pressed by hand does not count beside the check's newest reading; null when it does, as the
- * reading alone moves nothing (no limits and no figure to hold it against).
+ * Why the outcome pressed by hand does not count beside the check's newest reading of the same part; null when it
+ * does, as the reading alone moves nothing (no limits and no figure to hold it against).
  */
-function silencedBy(sight: Sight, checkId: string): string | null {
-  const entry = sight.c.entries.findLast(
-    ({ body }) => body.kind === 'reading' && body.checkId === checkId && body.subject === 'suspect',
-  )
-  if (entry?.body.kind !== 'reading') return null
-  if (isShedByTwin(sight.c, entry.body)) return 'a good one reads the same, so it says nothing'
-  const { factor } = readingEvidence(sight, entry, entry.body)
+function silencedBy({ sight, latest }: Seen, checkId: string, at: number): string | null {
+  const readAt = latest.get(readingKey(sight, { subject: 'suspect', checkId }, at))
+  const entry = readAt === undefined ? undefined : sight.c.entries[readAt]
+  if (readAt === undefined || entry?.body.kind !== 'reading') return null
+  if (isShedByTwin(sight, entry.body)) return 'a good one reads the same, so it says nothing'
+  const { factor } = readingEvidence(sight, entry, { body: entry.body, at: readAt })
   return factor === null ? null : 'counted by its reading'
+}
+
+/** How many fixes of faults that a check can tell about came before a place in the log. */
+function fixesTouching({ c, log }: Sight, checkId: string, at: number): number {
+  if (log.fixes.size === 0) return 0
+  const check = c.index.checks.get(checkId)
+  const faults = new Set([
+    ...Object.keys(check?.table ?? {}),
+    ...Object.keys(check?.reading?.byFault ?? {}),
+  ])
+  return [...faults].reduce((count, fault) => count + fixesBefore(log, fault, at), 0)
 }
 
 /** Where an outcome stands: by its own id, else `good` is the first and `bad` the last; null for any other. */
@@ -142,15 +187,19 @@ export function outcomeAt(outcomes: readonly { id: string }[], outcome: string):
 
 const checkName = ({ c }: Sight, id: string): string => c.index.checks.get(id)?.name ?? id
 
-function keyOf(body: LogBody): string | null {
+/**
+ * What a later entry replaces. A check or reading taken again after a fix of what it looks at is another one: the
+ * first spoke of the old part. So is an active code; one that is only stored may be left from before the fix.
+ */
+function keyOf(sight: Sight, body: LogBody, at: number): string | null {
   switch (body.kind) {
     // A later "could not" takes nothing back: it says nothing, so it has no key.
     case 'check':
-      return `check ${body.checkId}`
+      return `check ${fixesTouching(sight, body.checkId, at)} ${body.checkId}`
     case 'reading':
-      return `reading ${body.subject} ${body.checkId}`
+      return readingKey(sight, body, at)
     case 'code':
-      return `code ${body.context.module} ${JSON.stringify(body.seen)}`
+      return `code ${codeRound(sight, body, at)} ${body.context.module} ${JSON.stringify(body.seen)}`
     case 'symptom':
       return `symptom ${body.symptom}`
     default:
@@ -158,13 +207,33 @@ function keyOf(body: LogBody): string | null {
   }
 }
 
-function latestByKey(entries: readonly LogEntry[]): Map<string, string> {
-  const latest = new Map<string, string>()
-  for (const entry of entries) {
-    const key = keyOf(entry.body)
-    if (key !== null) latest.set(key, entry.id)
-  }
-  return latest
+const readingKey = (
+  sight: Sight,
+  { subject, checkId }: { subject: string; checkId: string },
+  at: number,
+): string => `reading ${subject} ${fixesTouching(sight, checkId, at)} ${checkId}`
+
+const codeRound = (sight: Sight, body: CodeBody, at: number): number =>
+  body.context.status === 'active' ? fixesInCircuit(sight, body.seen, at) : 0
+
+/** Whether an entry is a code that is not active, after a fix in its circuit. */
+function isOldCode(sight: Sight, at: number): boolean {
+  const body = sight.c.entries[at]?.body
+  return (
+    body?.kind === 'code' &&
+    body.context.status !== 'active' &&
+    fixesInCircuit(sight, body.seen, at) > 0
+  )
+}
+
+/** How many fixes in a code's circuit came before a place in the log. */
+function fixesInCircuit({ c, log }: Sight, seen: CodeSeen, at: number): number {
+  if (log.fixes.size === 0) return 0
+  const { circuit } = codeMeaning(c.index, seen)
+  let count = 0
+  for (const { id, circuits } of c.index.faults.values())
+    if (circuits.some((s) => s.circuit === circuit)) count += fixesBefore(log, id, at)
+  return count
 }
 
 function replacedBy(entry: LogEntry): Evidence | null {
@@ -174,6 +243,10 @@ function replacedBy(entry: LogEntry): Evidence | null {
   return nothing(entry, about, 'Replaced by a later one')
 }
 
+/** A piece that is the same under every set says nothing; a step of a swap still stands in the last one's place. */
 function quiet(piece: Evidence): Evidence {
-  return piece.factor !== null && saysNothing(piece.factor) ? { ...piece, factor: null } : piece
+  const isOwn = piece.slot === piece.entryId
+  return isOwn && piece.factor !== null && saysNothing(piece.factor)
+    ? { ...piece, factor: null }
+    : piece
 }

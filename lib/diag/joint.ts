@@ -1,16 +1,17 @@
 /**
- * Exact belief over independent suspects, given that at least one is present. Suspects that no table factor
- * touches factor out in closed form; the touched ones are enumerated: all subsets up to EXACT of them, above
- * that all subsets of at most FEW (what is left out has chance about c^5/120 of the prior: below 1e-6 at the
- * usual 5 of 100 calls with two things wrong; tested against the full sum).
+ * Exact belief over independent suspects, given that at least one is present, under any evidence that is a
+ * machine: pieces with one state (a good outcome) only change the odds; suspects that no other piece touches factor
+ * out in closed form; the rest is swept (sweep.ts), exponential in the surprising pieces that touch the same
+ * suspects and in nothing else. Where more than MOST_STATES combinations would stand at once (some eighteen such
+ * pieces over one another), the heaviest sets are summed instead, and `isExact` is false (heaviest-sets.ts).
  */
 import type { Factor } from './factor'
+import { heaviestSets } from './heaviest-sets'
+import { type Machine, runMachine } from './machine'
+import { orderOf, sweep } from './sweep'
 
-export const EXACT = 16
-export const FEW = 4
-
-/** A weighted set of unary multipliers on the odds: evidence that is a sum of products over suspects. */
-export type Term = { weight: number; odds: readonly number[] }
+/** Combinations of states carried at once: 2^18 numbers a suspect. */
+export const MOST_STATES = 262_144
 
 export type Summary = {
   /** P(each suspect present | evidence, at least one). */
@@ -18,105 +19,70 @@ export type Summary = {
   /** P(this suspect and no other | evidence, at least one). */
   only: number[]
   twoOrMore: number
-  /** Relative chance of the evidence; only ratios of it mean anything. */
-  evidence: number
+  /** Natural log of the relative chance of the evidence; only differences of it mean anything. */
+  logEvidence: number
+  /** False where only the heaviest sets of suspects were summed. */
+  isExact: boolean
 }
 
-/** Enumerated subsets of the touched suspects with the product of their factors' likelihoods so far. */
-export type Joint = {
-  touched: readonly number[]
-  members: readonly (readonly number[])[]
-  likelihood: Float64Array
-}
-
-/** A joint with no evidence yet over the suspects that `factors` touch; `exact` bounds the full enumeration. */
-export function startJoint(factors: readonly Factor[], exact = EXACT): Joint {
-  const touched = [...new Set(factors.flatMap((f) => f.scope))].sort((a, b) => a - b)
-  const members = subsets(touched, touched.length <= exact ? touched.length : FEW)
-  return { touched, members, likelihood: new Float64Array(members.length).fill(1) }
-}
-
-/** Multiplies a factor in, in place. Its scope must be among those the joint was started with. */
-export function absorb(joint: Joint, factor: Factor): void {
-  const bit = new Map(factor.scope.map((f, i) => [f, 2 ** i]))
-  const known = new Map<number, number>()
-  joint.members.forEach((present, state) => {
-    let key = 0
-    for (const f of present) key += bit.get(f) ?? 0
-    let value = known.get(key)
-    if (value === undefined) {
-      value = factor.at(present.filter((f) => bit.has(f)))
-      known.set(key, value)
-    }
-    joint.likelihood[state] = (joint.likelihood[state] ?? 0) * value
-  })
-}
-
-/** Marginals and single-fault chances under the joint; `terms` carry the odds with their unary evidence. */
-export function summarise(joint: Joint, terms: readonly Term[]): Summary {
-  const n = terms[0]?.odds.length ?? 0
-  const sums = { z: 0, marginals: new Array<number>(n).fill(0), only: new Array<number>(n).fill(0) }
-  for (const term of terms) addTerm(joint, term, sums)
-  const share = (x: number) => Math.min(1, Math.max(0, x / sums.z))
-  const only = sums.only.map(share)
-  return {
-    marginals: sums.marginals.map(share),
-    only,
-    twoOrMore: Math.max(0, 1 - only.reduce((sum, p) => sum + p, 0)),
-    evidence: sums.z,
-  }
-}
-
-type Sums = { z: number; marginals: number[]; only: number[] }
-
-function addTerm(joint: Joint, { weight, odds }: Term, sums: Sums): void {
-  const isTouched = new Set(joint.touched)
-  const untouched = odds.map((_, f) => f).filter((f) => !isTouched.has(f))
-  const logQ = untouched.reduce((sum, f) => sum + Math.log1p(odds[f] ?? 0), 0)
+/** Marginals and single-fault chances of suspects with these odds (0 or more) under these pieces of evidence. */
+export function summarise(
+  odds: readonly number[],
+  factors: readonly Factor[],
+  mostStates = MOST_STATES,
+): Summary {
+  const { machines, own, log } = parted(odds, factors)
+  const order = orderOf(machines)
+  const touched = order.steps.map((s) => s.suspect)
+  const isExact = order.mostStates <= mostStates
+  const sums = isExact
+    ? sweep(machines, order, own)
+    : heaviestSets(machines, { suspects: touched, odds: own })
+  const isTouched = new Set(touched)
+  const logQ = own.reduce((sum, o, f) => (isTouched.has(f) ? sum : sum + Math.log1p(o)), 0)
   const q = Math.exp(logQ)
-  const inside = insideSums(joint, odds)
-  const none = joint.likelihood[0] ?? 0
-  sums.z += weight * (q * inside.some + Math.expm1(logQ) * none)
-  for (const f of joint.touched) {
-    add(sums.marginals, f, weight * q * (inside.present[f] ?? 0))
-    add(sums.only, f, weight * (inside.alone[f] ?? 0))
-  }
-  const all = inside.some + none
-  for (const f of untouched) {
-    const o = odds[f] ?? 0
-    add(sums.marginals, f, (weight * q * all * o) / (1 + o))
-    add(sums.only, f, weight * none * o)
-  }
-}
-
-function insideSums(joint: Joint, odds: readonly number[]) {
-  const present: number[] = new Array<number>(odds.length).fill(0)
-  const alone: number[] = new Array<number>(odds.length).fill(0)
-  let some = 0
-  joint.members.forEach((members, state) => {
-    if (members.length === 0) return
-    let w = joint.likelihood[state] ?? 0
-    for (const f of members) w *= odds[f] ?? 0
-    some += w
-    for (const f of members) add(present, f, w)
-    if (members.length === 1) add(alone, members[0] ?? 0, w)
+  const z = q * sums.some + Math.expm1(logQ) * sums.none
+  const share = (x: number) => (z > 0 ? Math.min(1, Math.max(0, x / z)) : 0)
+  const inAll = q * (sums.some + sums.none)
+  const marginals = own.map((o) => share((inAll * o) / (1 + o)))
+  touched.forEach((f, i) => {
+    marginals[f] = share(q * (sums.present[i] ?? 0))
   })
-  return { present, alone, some }
+  const alone = aloneOf(machines, sums.none)
+  const only = own.map((o, f) => share(o * alone(f)))
+  const twoOrMore = Math.max(0, 1 - only.reduce((sum, p) => sum + p, 0))
+  return { marginals, only, twoOrMore, logEvidence: Math.log(z) + log, isExact }
 }
 
-function add(to: number[], at: number, value: number): void {
-  to[at] = (to[at] ?? 0) + value
-}
-
-/** All subsets of `items` of at most `most` members, the empty one first. */
-function subsets(items: readonly number[], most: number): number[][] {
-  const all: number[][] = [[]]
-  for (const item of items) {
-    const before = all.length
-    for (let i = 0; i < before; i++) {
-      const set = all[i]
-      if (set !== undefined && set.length < most) all.push([...set, item])
+/** Machines of one state taken into the odds; `log` is that of their constant part. */
+function parted(
+  odds: readonly number[],
+  factors: readonly Factor[],
+): { machines: Machine[]; own: number[]; log: number } {
+  const own = [...odds]
+  const machines: Machine[] = []
+  let log = 0
+  for (const { machine } of factors) {
+    if (machine.end.length > 1) {
+      machines.push(machine)
+      continue
     }
+    log += Math.log((machine.start[0] ?? 0) * (machine.end[0] ?? 0))
+    for (const [f, moves] of machine.moves)
+      own[f] = (own[f] ?? 0) * moves.reduce((sum, [, , weight]) => sum + weight, 0)
   }
-  return all
+  return { machines, own, log }
+}
+
+/** The weight of the evidence with just one suspect present, its odds left out. */
+function aloneOf(machines: readonly Machine[], none: number): (suspect: number) => number {
+  const nones = machines.map((m) => runMachine(m, []))
+  return (suspect) => {
+    if (machines.every((m) => !m.moves.has(suspect))) return none
+    return machines.reduce(
+      (product, m, i) =>
+        product * (m.moves.has(suspect) ? runMachine(m, [suspect]) : (nones[i] ?? 0)),
+      1,
+    )
+  }
 }

@@ -2,8 +2,7 @@ import { type ActionTable, checkTable, swapTable } from './action-table'
 import { type Reckoning, reckon } from './belief'
 import type { Case } from './case'
 import { type Sight, sightOf } from './evidence-table'
-import type { Factor } from './factor'
-import { absorb, type Summary, startJoint, summarise } from './joint'
+import { type Summary, summarise } from './joint'
 import { SAYS_NOTHING_BELOW } from './news'
 
 /** What one outcome would lead to: how likely it is now, and every suspect's chance after it (0 to 1). */
@@ -43,10 +42,12 @@ export function outlookOf(
 ): { outcomes: Outcome[]; saysNothing: boolean; summaries: Summary[] } {
   const { suspects, last } = reckoning
   const summaries = summariesAfter(reckoning, table)
-  const total = summaries.reduce((sum, s) => sum + s.evidence, 0)
+  const most = Math.max(...summaries.map((s) => s.logEvidence))
+  const weights = summaries.map((s) => Math.exp(s.logEvidence - most))
+  const total = weights.reduce((sum, w) => sum + w, 0)
   const outcomes = table.outcomes.map(({ id, name, good }, k) => {
     const summary = summaries[k]
-    const probability = (summary?.evidence ?? 0) / total
+    const probability = (weights[k] ?? 0) / total
     const chances = suspects.map((s, f) => [s.fault, summary?.marginals[f] ?? 0] as const)
     return { outcome: id, name, good, probability, chances: Object.fromEntries(chances) }
   })
@@ -56,24 +57,12 @@ export function outlookOf(
   return { outcomes, saysNothing: !moved, summaries }
 }
 
-/** Full enumeration for outlooks up to this many touched suspects, see joint.ts for what is left out above it. */
-const EXACT_OUTLOOK = 12
+/** Combinations of states an outlook may carry: it is reckoned for every check at hand, on a phone (joint.ts). */
+const MOST_OUTLOOK_STATES = 16_384
 
-function summariesAfter(reckoning: Reckoning, table: ActionTable): Summary[] {
-  const factors = reckoning.evidence.flatMap((e) => (e.factor === null ? [] : [e.factor]))
-  const known = new Map<string, number[]>()
-  const chances = (present: readonly number[]): number[] => {
-    const key = present.join()
-    const row = known.get(key) ?? table.chances(present)
-    known.set(key, row)
-    return row
-  }
-  const seen: Factor = { scope: table.scope, at: () => 1 }
-  const base = startJoint([...factors, seen], EXACT_OUTLOOK)
-  for (const factor of factors) absorb(base, factor)
-  return table.outcomes.map((_, k) => {
-    const joint = { ...base, likelihood: Float64Array.from(base.likelihood) }
-    absorb(joint, { scope: table.scope, at: (present) => chances(present)[k] ?? 0 })
-    return summarise(joint, reckoning.terms)
-  })
+function summariesAfter({ suspects, factors }: Reckoning, table: ActionTable): Summary[] {
+  const odds = suspects.map((s) => s.odds)
+  return table.factors.map((factor) =>
+    summarise(odds, [...new Map(factors).set(table.slot, factor).values()], MOST_OUTLOOK_STATES),
+  )
 }

@@ -2,8 +2,9 @@ import { describe, expect, it } from 'vitest'
 import { belief } from '@/lib/diag/belief'
 import { indexBook } from '@/lib/diag/book-index'
 import type { Case } from '@/lib/diag/case'
-import { chancesOf, type Factor } from '@/lib/diag/factor'
-import { absorb, startJoint, summarise } from '@/lib/diag/joint'
+import { type Factor, tableFactor } from '@/lib/diag/factor'
+import { summarise } from '@/lib/diag/joint'
+import { chancesOf, type OutcomeTable } from '@/lib/diag/outcome-table'
 import { candidates, solveC } from '@/lib/diag/priors'
 import { caseOf, checked, code, log, swapped } from './fixtures/entries'
 import { fault, SMALL_ITEMS } from './fixtures/small-book'
@@ -78,40 +79,106 @@ describe('[E1] against plain enumeration', () => {
   }
 })
 
-describe('[E1] many suspects', () => {
-  const n = 14
-  const factors: Factor[] = Array.from({ length: 5 }, (_, e) => ({
-    scope: Array.from({ length: n }, (_x, f) => f).filter((f) => (f + e) % 2 === 0),
-    at: (present) => 1 - 0.97 * present.reduce((p, f) => p * (1 - 0.1 - ((f * 3 + e) % 8) / 10), 1),
-  }))
+/** A table whose rows are steady: two or three outcomes, rows of `strong` faults plainly bad. */
+function steadyTable(n: number, outcomes: number, seed: number): OutcomeTable {
+  const rows = new Map<number, number[]>()
+  for (let f = 0; f < n; f++) {
+    const roll = (f * 7919 + seed * 104_729) % 97
+    if (roll < 20) continue
+    const good = (f + seed) % 5 === 0 ? 8 : 60 + (roll % 30)
+    rows.set(f, chancesOf(outcomes === 2 ? [good, 100 - good] : [good, 20, 80 - good / 2]))
+  }
+  return { rows, otherwise: chancesOf(outcomes === 2 ? [97, 3] : [94, 4, 2]) }
+}
+
+/** P(at most outcome k | set) for every set at once, by doubling: the plain definition, with no machine in it. */
+function upToOf(table: OutcomeTable, k: number, n: number): Float64Array {
+  const cumulated = (row: readonly number[]) =>
+    k >= row.length - 1 ? 1 : row.slice(0, k + 1).reduce((a, b) => a + b, 0)
+  const base = k < 0 ? 0 : cumulated(table.otherwise)
+  const all = new Float64Array(2 ** n).fill(base)
+  for (let f = 0; f < n; f++) {
+    const row = table.rows.get(f)
+    const ratio = row === undefined || k < 0 ? 1 : cumulated(row) / base
+    for (let set = 2 ** f; set < 2 ** (f + 1); set++) all[set] = all[set - 2 ** f]! * ratio
+  }
+  return all
+}
+
+function bruteForce(odds: readonly number[], seen: readonly { table: OutcomeTable; k: number }[]) {
+  const n = odds.length
+  const weight = new Float64Array(2 ** n).fill(1)
+  for (let f = 0; f < n; f++)
+    for (let set = 2 ** f; set < 2 ** (f + 1); set++) weight[set] = weight[set - 2 ** f]! * odds[f]!
+  for (const { table, k } of seen) {
+    const [upTo, below] = [upToOf(table, k, n), upToOf(table, k - 1, n)]
+    for (let set = 0; set < weight.length; set++) weight[set]! *= upTo[set]! - below[set]!
+  }
+  let total = 0
+  const sums = odds.map(() => 0)
+  for (let set = 1; set < weight.length; set++) {
+    total += weight[set]!
+    for (let f = 0; f < n; f++) if ((set >> f) & 1) sums[f]! += weight[set]!
+  }
+  return sums.map((s) => s / total)
+}
+
+const evenOdds = (n: number) => {
+  const shares = Array.from({ length: n }, (_, f) => 1 + (f % 4))
+  const sum = shares.reduce((a, b) => a + b, 0)
   const c = solveC(
-    Array.from({ length: n }, () => 1 / n),
+    shares.map((s) => s / sum),
     0.05,
   )
-  const terms = [{ weight: 1, odds: Array.from({ length: n }, () => c / n) }]
-  const reckoned = (exact: number) => {
-    const joint = startJoint(factors, exact)
-    for (const f of factors) absorb(joint, f)
-    return summarise(joint, terms)
-  }
-  it('[E1] above the limit all sets of at most four faults come within 1e-4 of the full sum, under hard evidence', () => {
-    const full = reckoned(16)
-    const few = reckoned(4)
-    for (const [f, p] of full.marginals.entries())
-      expect(Math.abs(p - few.marginals[f]!)).toBeLessThan(1e-4)
+  return shares.map((s) => (c * s) / sum)
+}
+const plain = (table: OutcomeTable, k: number): Factor =>
+  tableFactor(
+    table,
+    table.otherwise.map((_, j) => (j === k ? 1 : 0)),
+  )
+
+describe('[E1] many suspects', () => {
+  it.each([
+    [17, 4],
+    [18, 5],
+    [19, 6],
+    [20, 7],
+  ])(
+    '[E1] %i suspects, %i surprising outcomes that point apart, to 1e-9 of the full sum',
+    (n, pieces) => {
+      const seen = Array.from({ length: pieces }, (_, i) => {
+        const table = steadyTable(n, i % 3 === 2 ? 3 : 2, i + 1)
+        return { table, k: i % 3 === 2 ? 1 : i === 4 ? 0 : 1 }
+      })
+      const odds = evenOdds(n)
+      const got = summarise(
+        odds,
+        seen.map(({ table, k }) => plain(table, k)),
+      )
+      expect(got.isExact).toBe(true)
+      expect(got.twoOrMore).toBeGreaterThan(0.2)
+      for (const [f, p] of bruteForce(odds, seen).entries())
+        expect(Math.abs(got.marginals[f]! - p)).toBeLessThan(1e-9)
+    },
+  )
+  it('[E1] thirty suspects under ten surprising outcomes are summed exactly; where that is too wide it is within 1 of 100 and said', () => {
+    const factors = Array.from({ length: 10 }, (_, i) => plain(steadyTable(30, 2, i + 1), 1))
+    const exact = summarise(evenOdds(30), factors)
+    expect(exact.isExact).toBe(true)
+    const short = summarise(evenOdds(30), factors, 512)
+    expect(short.isExact).toBe(false)
+    for (const [f, p] of exact.marginals.entries())
+      expect(Math.abs(short.marginals[f]! - p)).toBeLessThan(1e-2)
   })
   it('[E1] suspects that no evidence touches factor out exactly', () => {
-    const more = [{ weight: 1, odds: [...terms[0]!.odds, 0.03, 0.2] }]
-    const joint = startJoint(factors)
-    for (const f of factors) absorb(joint, f)
-    const got = summarise(joint, more)
-    const touching = { scope: [n, n + 1], at: () => 1 }
-    const wide = startJoint([...factors, touching])
-    for (const f of [...factors, touching]) absorb(wide, f)
-    const want = summarise(wide, more)
-    for (const [f, p] of got.marginals.entries()) expect(p).toBeCloseTo(want.marginals[f]!, 13)
-    expect(got.twoOrMore).toBeCloseTo(want.twoOrMore, 12)
-    for (const [f, p] of got.only.entries()) expect(p).toBeCloseTo(want.only[f]!, 13)
+    const n = 12
+    const factors = [1, 2, 3].map((i) => plain(steadyTable(n, 2, i), 1))
+    const odds = [...evenOdds(n), 0.03, 0.2]
+    const got = summarise(odds, factors)
+    const seen = [1, 2, 3].map((i) => ({ table: steadyTable(n, 2, i), k: 1 }))
+    const want = bruteForce(odds, seen)
+    for (const [f, p] of got.marginals.entries()) expect(p).toBeCloseTo(want[f]!, 12)
   })
   it('[E1] thirty suspects, all named by one check, are reckoned and say what they are', () => {
     const faults = Array.from({ length: 30 }, (_, i) => fault(`many${i}`, 3))
