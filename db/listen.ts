@@ -42,7 +42,12 @@ export function listenForChanges(
   }
 
   const connect = async () => {
-    const next = new pg.Client({ connectionString: url, keepAlive: true, query_timeout: 10_000 })
+    const next = new pg.Client({
+      connectionString: url,
+      keepAlive: true,
+      query_timeout: 10_000,
+      connectionTimeoutMillis: 10_000,
+    })
     client = next
     next.on('error', () => lose(next))
     next.on('end', () => lose(next))
