@@ -20,7 +20,7 @@ type Found = {
   weight: number
 }
 
-/** The sums of sweep.ts over the heaviest sets found; `present` is in the order of `suspects`. */
+/** The sums of sweep.ts over the heaviest sets found; `shares` in the order of `suspects`. */
 export function heaviestSets(
   machines: readonly Machine[],
   { suspects, odds }: { suspects: readonly number[]; odds: readonly number[] },
@@ -44,7 +44,8 @@ export function heaviestSets(
     if (size > 1 && added < NOTHING * some) break
     heaviest = grown.sort((a, b) => b.weight - a.weight).slice(0, KEPT)
   }
-  return { none: empty.weight, some, present }
+  const shares = present.map((weight) => (some > 0 ? weight / some : 0))
+  return { none: empty.weight, some, log: 0, shares }
 }
 
 function emptySet(machines: readonly Machine[]): Found {

@@ -8,7 +8,7 @@
 import type { Factor } from './factor'
 import { heaviestSets } from './heaviest-sets'
 import { type Machine, runMachine } from './machine'
-import { orderOf, sweep } from './sweep'
+import { orderOf, type Sums, sweep } from './sweep'
 
 /** Combinations of states carried at once: 2^18 numbers a suspect. */
 export const MOST_STATES = 262_144
@@ -36,7 +36,11 @@ export function summarise(
   const touched = order.steps.map((s) => s.suspect)
   const isExact = order.mostStates <= mostStates
   const sums = isExact
-    ? sweep(machines, order, own)
+    ? sweep(
+        machines,
+        order,
+        own.map((present) => ({ absent: 1, present })),
+      )
     : heaviestSets(machines, { suspects: touched, odds: own })
   const isTouched = new Set(touched)
   const logQ = own.reduce((sum, o, f) => (isTouched.has(f) ? sum : sum + Math.log1p(o)), 0)
@@ -46,12 +50,12 @@ export function summarise(
   const inAll = q * (sums.some + sums.none)
   const marginals = own.map((o) => share((inAll * o) / (1 + o)))
   touched.forEach((f, i) => {
-    marginals[f] = share(q * (sums.present[i] ?? 0))
+    marginals[f] = share(q * sums.some * (sums.shares[i] ?? 0))
   })
-  const alone = aloneOf(machines, sums.none)
+  const alone = aloneOf(machines, sums)
   const only = own.map((o, f) => share(o * alone(f)))
   const twoOrMore = Math.max(0, 1 - only.reduce((sum, p) => sum + p, 0))
-  return { marginals, only, twoOrMore, logEvidence: Math.log(z) + log, isExact }
+  return { marginals, only, twoOrMore, logEvidence: Math.log(z) + sums.log + log, isExact }
 }
 
 /** Machines of one state taken into the odds; `log` is that of their constant part. */
@@ -74,15 +78,19 @@ function parted(
   return { machines, own, log }
 }
 
-/** The weight of the evidence with just one suspect present, its odds left out. */
-function aloneOf(machines: readonly Machine[], none: number): (suspect: number) => number {
+/** The weight of the evidence with just one suspect present, its odds left out, on the scale of the sums. */
+function aloneOf(
+  machines: readonly Machine[],
+  { none, log }: Pick<Sums, 'none' | 'log'>,
+): (suspect: number) => number {
   const nones = machines.map((m) => runMachine(m, []))
+  const scale = Math.exp(-log)
   return (suspect) => {
     if (machines.every((m) => !m.moves.has(suspect))) return none
     return machines.reduce(
       (product, m, i) =>
         product * (m.moves.has(suspect) ? runMachine(m, [suspect]) : (nones[i] ?? 0)),
-      1,
+      scale,
     )
   }
 }

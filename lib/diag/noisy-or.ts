@@ -1,113 +1,116 @@
 /**
- * Exact marginals of independent faults under noisy-OR findings with leaks, at any number of faults: absent
- * findings multiply the odds; each present or virtual one, and "at least one fault", is a bit that faults may
- * set. Forward and backward sums over the bits' states give every marginal in one pass each: exponential only
- * in those findings, all terms positive, so nothing cancels (compare Heckerman 1989, whose sum alternates).
+ * Exact marginals of independent faults under noisy-OR findings with leaks, at any number of faults: an absent
+ * finding is a product over the faults, a present or virtual one a machine of two states, and the sum over all sets
+ * of faults is that of sweep.ts: exponential only in the present findings that share faults, all terms positive, so
+ * nothing cancels (compare Heckerman 1989, whose sum alternates).
  */
 import { AppError } from '@/lib/model/result'
+import { type Machine, seenMachine } from './machine'
+import { orderOf, sweep } from './sweep'
 import type { NoisyOrModel } from './troubleshoot-model'
 
-/** Bits that can be carried: 2^20 states. */
+/** Present and virtual findings that may stand over one another: 2^20 combinations carried at once. */
 export const MOST_POSITIVE = 20
 
-/** A bit of the state: who sets it, how it starts, and what each value is worth in the end. */
-type Bit = { links: readonly number[]; leak: number; worth: readonly [number, number] }
+type Finding = NoisyOrModel['findings'][number]
+type Weight = { absent: number; present: number }
 
 /**
- * P(each fault | evidence). With condition `atLeastOne` no-fault is excluded. Throws AppError `tooLarge`
- * above 20 present or virtual findings, and `impossible` when the evidence cannot come about.
+ * P(each fault | evidence). With condition `atLeastOne` no-fault is excluded. Throws AppError `badModel` (with the
+ * field) for a number that is no chance, `tooLarge` where more than 2^20 combinations of present findings stand at
+ * once, and `impossible` when the evidence cannot come about.
  */
 export function noisyOrMarginals(model: NoisyOrModel): Record<string, number> {
-  const faults = model.faults.map((f) => f.id)
-  const stays = model.faults.map(() => 1)
-  const bits: Bit[] = []
+  checkChances(model)
+  const { machines, weights } = evidenceOf(model)
+  const order = orderOf(machines)
+  if (order.mostStates > 2 ** MOST_POSITIVE)
+    throw new AppError('tooLarge', { context: { states: order.mostStates } })
+  const sums = sweep(machines, order, weights)
+  const places = new Map(order.steps.map((step, i) => [step.suspect, i]))
+  const free = weights.map((w, f) => (places.has(f) ? 0 : w.present / (w.absent + w.present)))
+  const isOneThere = model.condition === 'atLeastOne' ? anyOf(free) : 1
+  const total = sums.some + sums.none * isOneThere
+  if (!(total > 0)) throw new AppError('impossible')
+  const chanceOf = (f: number): number => {
+    const place = places.get(f)
+    const weight =
+      place === undefined
+        ? (sums.some + sums.none) * (free[f] ?? 0)
+        : sums.some * (sums.shares[place] ?? 0)
+    return Math.min(1, weight / total)
+  }
+  return Object.fromEntries(model.faults.map(({ id }, f) => [id, chanceOf(f)]))
+}
+
+/** The chance that one or more of independent ones are there, without loss where all are unlikely. */
+const anyOf = (chances: readonly number[]): number =>
+  -Math.expm1(chances.reduce((log, p) => log + Math.log1p(-p), 0))
+
+/** Absent findings taken into the weights of the faults, the others as machines. */
+function evidenceOf(model: NoisyOrModel): { machines: Machine[]; weights: Weight[] } {
+  let weights = model.faults.map(({ prior }) => ({ absent: 1 - prior, present: prior }))
+  const machines: Machine[] = []
   for (const finding of model.findings) {
-    const seen = model.evidence[finding.id]
+    const seen = own(model.evidence, finding.id)
     if (seen === undefined) continue
-    const links = faults.map((f) => finding.links[f] ?? 0)
-    if (seen === 0)
-      links.forEach((w, f) => {
-        stays[f] = (stays[f] ?? 1) * (1 - w)
-      })
-    else bits.push({ links, leak: finding.leak, worth: seen === 1 ? [0, 1] : seen.virtual })
+    const stays = staysOf(model, finding)
+    if (seen === 0) weights = withAbsent(weights, finding.leak, stays)
+    else machines.push(machineOf(finding.leak, stays, seen === 1 ? [0, 1] : seen.virtual))
   }
-  if (model.condition === 'atLeastOne')
-    bits.push({ links: faults.map(() => 1), leak: 0, worth: [0, 1] })
-  if (bits.length > MOST_POSITIVE)
-    throw new AppError('tooLarge', { context: { bits: bits.length } })
-  const absent = model.faults.map((f) => 1 - f.prior)
-  const present = model.faults.map((f, i) => f.prior * (stays[i] ?? 1))
-  const shares = sweep(bits, absent, present)
-  return Object.fromEntries(faults.map((id, f) => [id, shares[f] ?? 0]))
+  if (weights.some((w) => !(w.absent + w.present > 0))) throw new AppError('impossible')
+  return { machines, weights }
 }
 
-/** The chance of each fault being present, from forward states before it and backward worths after it. */
-function sweep(
-  bits: readonly Bit[],
-  absent: readonly number[],
-  present: readonly number[],
-): number[] {
-  const size = 2 ** bits.length
-  let worth: Float64Array = Float64Array.from({ length: size }, (_, s) =>
-    bits.reduce((product, b, i) => product * (b.worth[(s >> i) & 1] ?? 0), 1),
-  )
-  const after: Float64Array[] = []
-  for (let f = absent.length - 1; f >= 0; f--) {
-    after[f] = worth
-    const set = pull(bits, f, worth)
-    const [a, p] = [absent[f] ?? 1, present[f] ?? 0]
-    worth = worth.map((x, s) => a * x + p * (set[s] ?? 0))
+function withAbsent(
+  weights: readonly Weight[],
+  leak: number,
+  stays: ReadonlyMap<number, number>,
+): Weight[] {
+  if (leak === 1) throw new AppError('impossible')
+  return weights.map(({ absent, present }, f) => ({
+    absent,
+    present: present * (stays.get(f) ?? 1),
+  }))
+}
+
+/** The chance that each linked fault leaves the finding absent. */
+function staysOf({ faults }: NoisyOrModel, { links }: Finding): Map<number, number> {
+  const stays = new Map<number, number>()
+  faults.forEach(({ id }, f) => {
+    const link = own(links, id) ?? 0
+    if (link > 0) stays.set(f, 1 - link)
+  })
+  return stays
+}
+
+/** A finding that was seen, or whose two likelihoods (absent, present) are known; only their ratio counts. */
+function machineOf(
+  leak: number,
+  stays: ReadonlyMap<number, number>,
+  [ifAbsent, ifPresent]: readonly [number, number],
+): Machine {
+  const most = Math.max(ifAbsent, ifPresent)
+  if (most === 0) throw new AppError('impossible')
+  return { ...seenMachine(leak, stays), end: [ifAbsent / most, ifPresent / most] }
+}
+
+function checkChances({ faults, findings, evidence }: NoisyOrModel): void {
+  for (const { id, prior } of faults) checkChance(prior, `faults.${id}.prior`)
+  for (const { id, leak, links } of findings) {
+    checkChance(leak, `findings.${id}.leak`)
+    for (const [fault, link] of Object.entries(links))
+      checkChance(link, `findings.${id}.links.${fault}`)
   }
-  let states: Float64Array = Float64Array.from({ length: size }, (_, s) =>
-    bits.reduce((product, b, i) => product * (((s >> i) & 1) === 1 ? b.leak : 1 - b.leak), 1),
-  )
-  return absent.map((_, f) => {
-    const set = push(bits, f, states)
-    const [a, p] = [absent[f] ?? 1, present[f] ?? 0]
-    const without = a * inner(states, after[f])
-    const withIt = p * inner(set, after[f])
-    if (!(without + withIt > 0)) throw new AppError('impossible')
-    states = states.map((x, s) => a * x + p * (set[s] ?? 0))
-    return withIt / (without + withIt)
-  })
+  for (const [id, seen] of Object.entries(evidence))
+    if (typeof seen === 'object' && !seen.virtual.every((x) => x >= 0 && Number.isFinite(x)))
+      throw new AppError('badModel', { context: { field: `evidence.${id}.virtual` } })
 }
 
-/** States after a present fault has set its bits with its chances. */
-function push(bits: readonly Bit[], fault: number, states: Float64Array): Float64Array {
-  const next = Float64Array.from(states)
-  eachPair(bits, fault, next.length, (w, off, on) => {
-    const x = next[off] ?? 0
-    next[off] = x * (1 - w)
-    next[on] = (next[on] ?? 0) + x * w
-  })
-  return next
+function checkChance(chance: number, field: string): void {
+  if (!(chance >= 0 && chance <= 1)) throw new AppError('badModel', { context: { field } })
 }
 
-/** What a state will be worth if the fault is present: the same step looked at backwards. */
-function pull(bits: readonly Bit[], fault: number, worth: Float64Array): Float64Array {
-  const next = Float64Array.from(worth)
-  eachPair(bits, fault, next.length, (w, off, on) => {
-    next[off] = (1 - w) * (next[off] ?? 0) + w * (next[on] ?? 0)
-  })
-  return next
-}
-
-function eachPair(
-  bits: readonly Bit[],
-  fault: number,
-  size: number,
-  visit: (w: number, off: number, on: number) => void,
-): void {
-  bits.forEach(({ links }, i) => {
-    const w = links[fault] ?? 0
-    if (w === 0) return
-    const bit = 1 << i
-    for (let s = 0; s < size; s++) if ((s & bit) === 0) visit(w, s, s | bit)
-  })
-}
-
-function inner(a: Float64Array, b: Float64Array | undefined): number {
-  let total = 0
-  for (let s = 0; s < a.length; s++) total += (a[s] ?? 0) * (b?.[s] ?? 0)
-  return total
-}
+/** A record's own entry: an id may be any word, also one that every object answers to. */
+const own = <T>(record: Readonly<Record<string, T>>, id: string): T | undefined =>
+  Object.hasOwn(record, id) ? record[id] : undefined

@@ -17,12 +17,16 @@ type Step = {
   closes: readonly number[]
 }
 
+/** How a suspect weighs in every sum: absent and present, both 0 or more (1 and the odds, or the two chances). */
+export type Weights = readonly { absent: number; present: number }[]
+
 export type Sums = {
-  /** The weight of no suspect being present, and of all other sets together. */
+  /** The weight of no suspect being present, and of all other sets together, both over e^log. */
   none: number
   some: number
-  /** The weight of all sets with this suspect, by its place among the order's steps. */
-  present: readonly number[]
+  log: number
+  /** The share of `some` that has each suspect, by its place among the order's steps. */
+  shares: readonly number[]
 }
 
 /** An order with few states open at once: the better of two greedy ones where the first leaves many. */
@@ -60,54 +64,108 @@ function greedyOrder(
   return { steps, mostStates }
 }
 
-/** The sums over all sets of the suspects in the order, with these odds. */
-export function sweep(machines: readonly Machine[], order: Order, odds: readonly number[]): Sums {
+/** The sums over all sets of the suspects in the order; machines that nobody moves are taken in as they stand. */
+export function sweep(machines: readonly Machine[], order: Order, weights: Weights): Sums {
   const still = machines.filter((m) => m.moves.size === 0)
   const fixed = still.reduce((product, m) => product * inner(m.start, m.end), 1)
-  let some: Grid = { open: [], values: Float64Array.of(0) }
-  let none: Grid = { open: [], values: Float64Array.of(fixed) }
-  const before: Float64Array[] = []
-  for (const { suspect, opens, closes } of order.steps) {
-    for (const m of opens) {
-      some = spread(machines, some, { m, at: some.open.length, by: 'start' })
-      none = spread(machines, none, { m, at: none.open.length, by: 'start' })
+  const { steps } = order
+  const stride = strideOf(order)
+  let at: Front = { some: grid([0]), none: grid([fixed]), log: 0 }
+  const kept: Front[] = []
+  steps.forEach((step, i) => {
+    if (i % stride === 0) kept.push(at)
+    at = passed(machines, step, { front: at, weights }).after
+  })
+  const shares = steps.map(() => 0)
+  const total = Math.log(at.some.values[0] ?? 0) + at.log
+  let worth: Worth = { grid: grid([1]), log: 0 }
+  for (let block = kept.length - 1; block >= 0; block--) {
+    const from = block * stride
+    const opened: Front[] = []
+    let front = kept[block] as Front
+    for (const step of steps.slice(from, from + stride)) {
+      const pass = passed(machines, step, { front, weights })
+      opened.push(pass.opened)
+      front = pass.after
     }
-    const weights = some.values.map((x, s) => x + (none.values[s] ?? 0))
-    before.push(weights)
-    const set = moveAll(machines, { open: some.open, values: weights }, { suspect, back: false })
-    some = plus(some, set, odds[suspect] ?? 0)
-    for (const m of closes) {
-      some = fold(machines, some, { m, by: 'end' })
-      none = fold(machines, none, { m, by: 'end' })
+    for (let i = opened.length - 1; i >= 0; i--) {
+      const step = steps[from + i] as Step
+      const back = backward(machines, step, { front: opened[i] as Front, worth, weights })
+      shares[from + i] = back.having > 0 ? Math.exp(Math.log(back.having) + back.log - total) : 0
+      worth = back.worth
     }
   }
-  return {
-    some: some.values[0] ?? 0,
-    none: none.values[0] ?? 0,
-    present: backward(machines, order, { odds, before }),
-  }
+  return { some: at.some.values[0] ?? 0, none: at.none.values[0] ?? 0, log: at.log, shares }
 }
+
+/** Numbers kept of the way forward: above that only every so many steps are kept, and the rest reckoned again. */
+const MOST_KEPT = 2 ** 22
+
+function strideOf({ steps, mostStates }: Order): number {
+  const all = 3 * mostStates * steps.length
+  return all <= MOST_KEPT ? 1 : Math.max(1, Math.ceil(Math.sqrt(steps.length)))
+}
+
+/** The weights so far, of no suspect present and of all other sets, both over e^log. */
+type Front = { some: Grid; none: Grid; log: number }
+
+function passed(
+  machines: readonly Machine[],
+  { suspect, opens, closes }: Step,
+  { front, weights }: { front: Front; weights: Weights },
+): { opened: Front; after: Front } {
+  const { absent, present } = weights[suspect] ?? ABSENT
+  let { some, none, log } = front
+  for (const m of opens) {
+    some = spread(machines, some, { m, at: some.open.length, by: 'start' })
+    none = spread(machines, none, { m, at: none.open.length, by: 'start' })
+  }
+  const opened = { some, none, log }
+  const set = moveAll(machines, sum(some, none), { suspect, back: false })
+  some = mix(some, absent, { more: set, times: present })
+  none = mix(none, absent, null)
+  for (const m of closes) {
+    some = fold(machines, some, { m, by: 'end' })
+    none = fold(machines, none, { m, by: 'end' })
+  }
+  const most = Math.max(largest(some), largest(none))
+  if (most > 0 && most < SMALL) {
+    some = mix(some, 1 / most, null)
+    none = mix(none, 1 / most, null)
+    log += Math.log(most)
+  }
+  return { opened, after: { some, none, log } }
+}
+
+const ABSENT = { absent: 1, present: 0 }
+/** Sums below this are scaled up, so that long rows of unlikely evidence do not run out of digits. */
+const SMALL = 1e-120
+
+/** What each combination of states is still worth, over e^log. */
+type Worth = { grid: Grid; log: number }
 
 function backward(
   machines: readonly Machine[],
-  order: Order,
-  { odds, before }: { odds: readonly number[]; before: readonly Float64Array[] },
-): number[] {
-  const present = order.steps.map(() => 0)
-  let worth: Grid = { open: [], values: Float64Array.of(1) }
-  for (let i = order.steps.length - 1; i >= 0; i--) {
-    const step = order.steps[i]
-    const was = before[i]
-    if (step === undefined || was === undefined) continue
-    for (const m of [...step.closes].reverse())
-      worth = spread(machines, worth, { m, at: seatIn(step, worth.open, m), by: 'end' })
-    const set = moveAll(machines, worth, { suspect: step.suspect, back: true })
-    const own = odds[step.suspect] ?? 0
-    present[i] = own * inner(was, set.values)
-    worth = plus(worth, set, own)
-    for (const m of [...step.opens].reverse()) worth = fold(machines, worth, { m, by: 'start' })
+  step: Step,
+  { front, worth, weights }: { front: Front; worth: Worth; weights: Weights },
+): { having: number; log: number; worth: Worth } {
+  const { absent, present } = weights[step.suspect] ?? ABSENT
+  let next = worth.grid
+  for (const m of [...step.closes].reverse())
+    next = spread(machines, next, { m, at: seatIn(step, next.open, m), by: 'end' })
+  const set = moveAll(machines, next, { suspect: step.suspect, back: true })
+  const having = present * inner(sum(front.some, front.none).values, set.values)
+  next = mix(next, absent, { more: set, times: present })
+  for (const m of [...step.opens].reverse()) next = fold(machines, next, { m, by: 'start' })
+  const most = largest(next)
+  const isSmall = most > 0 && most < SMALL
+  return {
+    having,
+    log: front.log + worth.log,
+    worth: isSmall
+      ? { grid: mix(next, 1 / most, null), log: worth.log + Math.log(most) }
+      : { grid: next, log: worth.log },
   }
-  return present
 }
 
 /** Where a machine stands among the open ones of a step when only `open` of them are there yet. */
@@ -217,10 +275,21 @@ function move(
   return next
 }
 
-const plus = (grid: Grid, more: Grid, times: number): Grid => ({
-  open: grid.open,
-  values: grid.values.map((x, s) => x + times * (more.values[s] ?? 0)),
+const grid = (values: readonly number[]): Grid => ({ open: [], values: Float64Array.from(values) })
+
+const sum = (a: Grid, b: Grid): Grid => ({
+  open: a.open,
+  values: a.values.map((x, s) => x + (b.values[s] ?? 0)),
 })
+
+function mix(of: Grid, factor: number, add: { more: Grid; times: number } | null): Grid {
+  if (add === null) return factor === 1 ? of : { ...of, values: of.values.map((x) => factor * x) }
+  const { more, times } = add
+  const values = of.values.map((x, s) => factor * x + times * (more.values[s] ?? 0))
+  return { open: of.open, values }
+}
+
+const largest = ({ values }: Grid): number => values.reduce((most, x) => Math.max(most, x), 0)
 
 function inner(a: ArrayLike<number>, b: ArrayLike<number>): number {
   let total = 0
