@@ -3,7 +3,8 @@
  * point (bounded real-time dynamic programming, McMahan, Likhachev and Gordon 2005; heuristic search value
  * iteration, Smith and Simmons 2004). Each trial goes into the action that could be cheapest and there to the
  * outcome about which least is known. When the bounds of the start meet, the answer is the exact optimum; past
- * `limit` expansions the action with the least upper bound is one that a real plan of that cost begins with.
+ * `limit` expansions it is the action that is thought to cost least (guessOf), and its upper bound is the cost
+ * of a plan that can be carried out.
  */
 import { knownCosts } from './known-cost'
 import {
@@ -33,7 +34,14 @@ export type Option = {
   children: Node[] | null
 }
 
-export type Node = { point: Point; low: number; high: number; options: Option[] | null }
+export type Node = {
+  point: Point
+  low: number
+  high: number
+  options: Option[] | null
+  /** Where it is thought to lie, while its bounds are apart; null: not asked yet. */
+  guess: number | null
+}
 
 export type Search = Bounds & {
   nodes: Map<number | string, Node>
@@ -72,7 +80,8 @@ export function nodeAt(search: Search, point: Point): Node {
   const known = search.nodes.get(key)
   if (known !== undefined) return known
   const high = upperBound(search, point)
-  const node = { point, low: Math.min(high, lowerBound(search, point)), high, options: null }
+  const low = Math.min(high, lowerBound(search, point))
+  const node = { point, low, high, options: null, guess: null }
   search.nodes.set(key, node)
   return node
 }
@@ -92,17 +101,47 @@ export function solve(search: Search, node: Node): void {
 const isOpen = ({ slack, expanded, limit }: Search, { low, high }: Node): boolean =>
   high - low > slack && expanded < limit
 
-/** The option with the least upper bound, and the next one; the first of equals in the order of the options. */
-export function topTwo(options: readonly Option[]): { best: Option | null; second: Option | null } {
-  let best: Option | null = null
-  let second: Option | null = null
+/** The two options least by a measure; the first of equals in the order of the options. */
+export function topTwo(
+  options: readonly Option[],
+  measure: (option: Option) => number,
+): { best: Option | null; second: Option | null } {
+  let best: [Option, number] | null = null
+  let second: [Option, number] | null = null
   for (const option of options) {
-    if (best === null || option.high < best.high) {
+    const x = measure(option)
+    if (best === null || x < best[1]) {
       second = best
-      best = option
-    } else if (second === null || option.high < second.high) second = option
+      best = [option, x]
+    } else if (second === null || x < second[1]) second = [option, x]
   }
-  return { best, second }
+  return { best: best?.[0] ?? null, second: second?.[0] ?? null }
+}
+
+/**
+ * Where an option is thought to lie: the middle between the bounds of every point at the edge of what was
+ * looked at. The lower bound is too low by the checks that it leaves out and the upper one too high by those
+ * that its plan leaves out; of two options neither alone says which is better. Ask once
+ * the search is over: points keep their guesses.
+ */
+export function guessOf(option: Option): number {
+  if (option.children === null) return option.high
+  let sum = option.fixed
+  for (const child of option.children) sum += guessAt(child)
+  return Math.min(option.high, Math.max(option.low, sum))
+}
+
+function guessAt(node: Node): number {
+  if (node.guess !== null) return node.guess
+  let guess = (node.low + node.high) / 2
+  if (node.options !== null && node.high > node.low) {
+    let least = Number.POSITIVE_INFINITY
+    for (const option of node.options)
+      if (option.children !== null) least = Math.min(least, guessOf(option))
+    guess = Math.min(node.high, Math.max(node.low, least))
+  }
+  node.guess = guess
+  return guess
 }
 
 function keyOf({ problem, numeric }: Search, point: Point): number | string {

@@ -6,7 +6,17 @@
 import { AppError } from '@/lib/model/result'
 import { leastCosts, lookAhead } from './look-ahead'
 import { noisyOrMarginals } from './noisy-or'
-import { type ActionType, nodeAt, type Option, solve, startSearch, topTwo } from './search'
+import {
+  type ActionType,
+  guessOf,
+  type Node,
+  nodeAt,
+  type Option,
+  type Search,
+  solve,
+  startSearch,
+  topTwo,
+} from './search'
 import { leftOf, MOST_IN_MASK, openOf, type Problem, problemOf, weightsOf } from './search-problem'
 import { dot, massOf } from './search-steps'
 import type { NoisyOrModel, SearchState, SingleModel } from './troubleshoot-model'
@@ -45,10 +55,10 @@ export function nextAction(model: SingleModel, state: SearchState, limit?: numbe
   if (!(massOf(w) > 0)) throw new AppError('impossible')
   const small = Math.max(problem.checks.length, problem.repairs.length) <= MOST_IN_MASK
   if (!small) return looked(problem, spot)
-  const found = searched(problem, spot, limit ?? budgetOf(spot))
+  const { found, cheapest } = searched(problem, spot, limit ?? budgetOf(spot))
   if (found.gap === 0) return found
   const two = looked(problem, spot)
-  if (two.expectedCost >= found.expectedCost) return found
+  if (two.expectedCost >= cheapest) return found
   const least = found.expectedCost - found.gap
   return { ...two, gap: two.expectedCost - least, expansions: found.expansions }
 }
@@ -72,36 +82,52 @@ function budgetOf({ w, checks, repairs }: Spot): number {
   return Math.max(LEAST_EXPANSIONS, Math.ceil(EXPANSIONS * (share > 1 ? share ** 4 : share)))
 }
 
-function searched(problem: Problem, spot: Spot, limit: number): NextAction {
+/** What the search found, and the cost of the cheapest plan that it came across. */
+function searched(
+  problem: Problem,
+  spot: Spot,
+  limit: number,
+): { found: NextAction; cheapest: number } {
   const search = startSearch(problem, limit)
   const mask = (left: readonly number[]) => left.reduce((m, i) => m | (1 << i), 0)
   const { w, open, elapsed } = spot
   const checks = mask(spot.checks)
   const root = nodeAt(search, { w, checks, repairs: mask(spot.repairs), open, elapsed, code: 0 })
   search.slack = SLACK * Math.max(1, root.high)
+  const plain = root.high
   solve(search, root)
-  const { best } = topTwo(root.options ?? [])
-  if (best === null) throw new AppError('noAction')
+  const options = root.options ?? []
   const isExact = root.high - root.low <= search.slack
-  const others = (root.options ?? []).filter((option) => option !== best)
-  const rest = { point: root.point, low: root.low, high: Number.POSITIVE_INFINITY, options: others }
-  if (isExact && others.length > 0) solve(search, rest)
-  const { best: second } = topTwo(others)
+  // Nothing is advised whose plan is dearer than repairs without checks.
+  const sound = options.filter(({ high }) => high <= plain + search.slack)
+  const { best } = topTwo(sound, isExact ? highOf : guessOf)
+  if (best === null) throw new AppError('noAction')
+  const others = options.filter((option) => option !== best)
+  const isSure =
+    isExact && isSolved(search, { ...root, high: Number.POSITIVE_INFINITY, options: others })
+  const { best: second } = topTwo(others, isExact ? highOf : guessOf)
   const mass = massOf(w)
-  return {
+  const found: NextAction = {
     ...named(problem, best),
     expectedCost: best.high / mass,
     gap: isExact ? 0 : (best.high - root.low) / mass,
-    runnerUp:
-      second === null
-        ? null
-        : {
-            ...named(problem, second),
-            expectedCost: second.high / mass,
-            exact: isExact && rest.high - rest.low <= search.slack,
-          },
+    runnerUp: second && {
+      ...named(problem, second),
+      expectedCost: Math.max(second.high, best.high) / mass,
+      exact: isSure,
+    },
     expansions: search.expanded,
   }
+  return { found, cheapest: root.high / mass }
+}
+
+const highOf = ({ high }: Option): number => high
+
+/** Whether the bounds of a node meet within what is left of the budget. */
+function isSolved(search: Search, node: Node): boolean {
+  if (node.options?.length === 0) return true
+  solve(search, node)
+  return node.high - node.low <= search.slack
 }
 
 function looked(problem: Problem, spot: Spot): NextAction {
