@@ -90,16 +90,6 @@ export function survive(
   return { w, fixed, mass }
 }
 
-/** Cheapest stop here, with its cost; infinite when there is none. The first of equals wins. */
-export function bestStop(problem: Problem, w: Float64Array): { stop: number; cost: number } {
-  let best = { stop: -1, cost: Number.POSITIVE_INFINITY }
-  problem.stops.forEach(({ byFault }, stop) => {
-    const cost = dot(w, byFault)
-    if (cost < best.cost) best = { stop, cost }
-  })
-  return best
-}
-
 /** The whole weight of a point: the chance of having come here. */
 export function massOf(w: Float64Array): number {
   let mass = 0
