@@ -6,6 +6,7 @@ import { readFileSync } from 'node:fs'
 import { readModel } from '@/lib/diag/read-model'
 import { marginals, nextAction, posterior } from '@/lib/diag/troubleshoot'
 import { START } from '@/lib/diag/troubleshoot-model'
+import { AppError } from '@/lib/model/result'
 
 /** The answer to a file's text, or the sentence that says what is wrong with it. */
 export function answerTo(text: string): { ok: boolean; text: string; notices: string[] } {
@@ -19,11 +20,24 @@ export function answerTo(text: string): { ok: boolean; text: string; notices: st
   if (!read.ok) return { ok: false, text: read.problem.sentence, notices: [] }
   const { model, state, notices } = read.value
   const at = state ?? START
-  const answer =
-    model.kind === 'single'
-      ? { next: nextAction(model, at), posterior: posterior(model, at) }
-      : { marginals: marginals(model) }
-  return { ok: true, text: JSON.stringify(answer, null, 2), notices }
+  try {
+    const answer =
+      model.kind === 'single'
+        ? { next: nextAction(model, at), posterior: posterior(model, at) }
+        : { marginals: marginals(model) }
+    return { ok: true, text: JSON.stringify(answer, null, 2), notices }
+  } catch (error) {
+    if (!(error instanceof AppError)) throw error
+    return { ok: false, text: sentenceOf(error), notices }
+  }
+}
+
+/** What the engine refuses, by kind. */
+function sentenceOf({ kind, context }: AppError): string {
+  if (kind === 'impossible') return '"evidence" cannot come about under this model.'
+  if (kind === 'noAction') return '"stops" must hold a way to end the job, as no repair can.'
+  if (kind === 'tooLarge') return '"evidence" holds more present findings over one another than 20.'
+  return `"${String(context.field ?? 'the file')}" is not right.`
 }
 
 function main(file: string | undefined): number {

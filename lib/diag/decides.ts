@@ -36,7 +36,8 @@ export function effectsOf(
 }
 
 function effectOf(row: Outcome, suspects: readonly Suspect[]): Effect | null {
-  const after = (suspect: Suspect) => row.chances[suspect.fault] ?? suspect.chance
+  const after = ({ fault, chance }: Suspect) =>
+    (Object.hasOwn(row.chances, fault) ? row.chances[fault] : undefined) ?? chance
   const [first] = [...suspects].sort((a, b) => after(b) - after(a))
   const [now] = suspects
   if (first === undefined || now === undefined) return null

@@ -13,10 +13,16 @@ import { type Factor, tableFactor } from './factor'
 import { meanMachine } from './machine'
 import { between } from './normal'
 import { canDecide, judge, middleOf } from './reading'
-import { budgetOf, partTempsApart } from './reading-budget'
+import { budgetOf } from './reading-budget'
+import { problemWords, readingProblem } from './reading-problem'
+import { agrees, differenceU } from './twin-difference'
 
 /** Share of readings that have nothing to do with the part (slipped probe, wrong pin; guess). */
 const OUTLIERS = 0.02
+/** Such a reading lies anywhere within ten nominal values (guess): a density of 1 in 20 nominals. */
+const ANYWHERE = 1 / 20
+/** However far out a reading lies, it keeps a likelihood: below this it tells the states apart no more. */
+const LEAST = 1e-60
 
 type Model = NonNullable<CheckItem['reading']>
 type Shown = { at: number; standardU: number; overRange: boolean }
@@ -30,6 +36,8 @@ export function readingEvidence(
   const check = sight.c.index.checks.get(body.checkId)
   const label = `${check?.name ?? body.checkId}: ${body.asTyped} ${body.unit}`
   if (body.subject === 'knownGood') return nothing(entry, 'reading', `${label} on a known-good one`)
+  const problem = readingProblem(body)
+  if (problem !== null) return nothing(entry, 'reading', `${label}: ${problemWords(problem)}`)
   if (check === undefined) return nothing(entry, 'reading', label)
   const twin = twinOf(sight, body)
   const model = check.reading
@@ -50,7 +58,7 @@ export function readingEvidence(
 
 /** Whether a good twin reads the same and the meter cannot decide the figure: then the check says nothing. */
 export function isShedByTwin(sight: Sight, body: ReadingBody): boolean {
-  const twin = twinOf(sight, body)
+  const twin = readingProblem(body) === null ? twinOf(sight, body) : null
   return twin !== null && agrees(body, twin) && !decides(body)
 }
 
@@ -62,39 +70,21 @@ export function nominalOf(spec: SpecValue | null, model: Model): number | null {
   return value === 0 ? null : value
 }
 
-/** The living twin reading of the same check and quantity, the latest; null without one. */
-const twinOf = ({ log }: Sight, body: ReadingBody): ReadingBody | null =>
-  log.twins.get(twinKey(body)) ?? null
-
-/**
- * u of the difference of two readings. With the same meter and leads gain, steps and contact remain, and the
- * temperature of the parts: a hot suspect and a cold twin do not share it.
- */
-export function differenceU(a: ReadingBody, b: ReadingBody): number {
-  if (!sameSetUp(a, b)) return Math.hypot(budgetOf(a).standardU, budgetOf(b).standardU)
-  const { percent, resolution } = a.meterFunction
-  const gain = (percent / 100) * Math.abs(a.value - b.value)
-  const step = resolution / 2
-  const contact = a.quantity === 'resistance' ? step : 0
-  const warmth = partTempsApart(a, b).reduce((sum, halfWidth) => sum + halfWidth ** 2, 0)
-  return Math.sqrt((gain ** 2 + 2 * step ** 2 + contact ** 2 + warmth) / 3)
-}
-
-/** Whether suspect and twin read alike within U = 2u of their difference. */
-export function agrees(suspect: ReadingBody, twin: ReadingBody): boolean {
-  if (suspect.overRange || twin.overRange) return suspect.overRange === twin.overRange
-  const apart = Math.abs(budgetOf(suspect).estimate - budgetOf(twin).estimate)
-  return apart <= 2 * differenceU(suspect, twin) + 1e-12
+/** The living twin reading of the same check and quantity, the latest; null without one that can be. */
+function twinOf({ log }: Sight, body: ReadingBody): ReadingBody | null {
+  const twin = log.twins.get(twinKey(body))
+  return twin === undefined || readingProblem(twin) !== null ? null : twin
 }
 
 /** Likelihood of a shown value under a state, in units of 1 / nominal, with the floor; a chance over range. */
 export function likelihood(pieces: readonly Piece[], shown: Shown, nominal: number): number {
   const size = Math.abs(nominal)
-  if (shown.overRange) return (1 - OUTLIERS) * tail(pieces, shown.at / nominal) + OUTLIERS * 0.05
+  if (shown.overRange)
+    return (1 - OUTLIERS) * tail(pieces, shown.at / nominal) + OUTLIERS * ANYWHERE
   const x = shown.at / nominal
   const u = Math.max(shown.standardU / size, 1e-9)
   const far = Math.abs(x) <= 5 ? 1 : (5 / Math.abs(x)) ** 2
-  return (1 - OUTLIERS) * density(pieces, x, u) + (OUTLIERS * far) / 20
+  return (1 - OUTLIERS) * density(pieces, x, u) + Math.max(LEAST, OUTLIERS * far * ANYWHERE)
 }
 
 function densityFactor(
@@ -123,6 +113,7 @@ function densityFactor(
 const weightOf = (pieces: readonly Piece[]): number => pieces.reduce((sum, p) => sum + p.weight, 0)
 
 function density(pieces: readonly Piece[], x: number, u: number): number {
+  if (pieces.length === 0) return ANYWHERE
   const sum = pieces.reduce((total, { weight, from, to }) => {
     const width = Math.max(to - from, u * 1e-3)
     return total + (weight / width) * between((from - x) / u, (from + width - x) / u)
@@ -131,6 +122,7 @@ function density(pieces: readonly Piece[], x: number, u: number): number {
 }
 
 function tail(pieces: readonly Piece[], x: number): number {
+  if (pieces.length === 0) return ANYWHERE
   const sum = pieces.reduce((total, { weight, from, to }) => {
     const width = to - from
     const above = width > 0 ? Math.min(1, Math.max(0, (to - x) / width)) : from > x ? 1 : 0
@@ -150,7 +142,7 @@ function againstTwin(
   twin: ReadingBody,
   { model, nominal }: { model: Model; nominal: number },
 ): Shown {
-  if (body.overRange || twin.overRange) return shownBy(body)
+  if (body.overRange || twin.overRange || model.good.length === 0) return shownBy(body)
   const total = weightOf(model.good)
   const mean = model.good.reduce((s, p) => s + (p.weight * (p.from + p.to)) / 2, 0) / total
   const variance =
@@ -179,11 +171,5 @@ function verdictFactor(
   })
   return tableFactor(tableAt(sight, tableOf(sight.place, check), at), weights)
 }
-
-const sameSetUp = (a: ReadingBody, b: ReadingBody): boolean =>
-  a.meterId === b.meterId &&
-  a.nulled === b.nulled &&
-  a.meterFunction.resolution === b.meterFunction.resolution &&
-  a.meterFunction.percent === b.meterFunction.percent
 
 const decides = (body: ReadingBody): boolean => canDecide(body).decides

@@ -51,7 +51,7 @@ export const nothing = (entry: LogEntry, about: About, label: string): Evidence 
   slot: entry.id,
 })
 
-/** A table over the suspects of this case from a book's rows; rows equal to `otherwise` touch nothing. */
+/** A table over the suspects of this case from a book's rows; rows equal to `otherwise`, or of another length, touch nothing. */
 export function tableOf(
   place: Sight['place'],
   book: { table: Readonly<Record<string, readonly number[]>>; otherwise: readonly number[] },
@@ -60,7 +60,7 @@ export function tableOf(
   const rows = new Map<number, readonly number[]>()
   for (const [fault, row] of Object.entries(book.table)) {
     const at = place.get(fault)
-    if (at === undefined) continue
+    if (at === undefined || row.length !== otherwise.length) continue
     const chances = chancesOf(row)
     if (chances.some((p, k) => p !== otherwise[k])) rows.set(at, chances)
   }

@@ -15,11 +15,13 @@ export type OutcomeTable = {
 /** No single outcome may set a suspect to nought: every row is mixed with this much of an even one. */
 export const TABLE_FLOOR = 0.001
 
-/** A book row "of 100" as chances with the floor mixed in; a row of nothing but zeros says nothing: it is even. */
+/** A book row "of 100" as chances with the floor mixed in; a row without a number above 0 says nothing: it is even. */
 export function chancesOf(row: readonly number[]): number[] {
-  const sum = row.reduce((total, x) => total + x, 0)
+  const held = row.map((x) => (x > 0 && Number.isFinite(x) ? x : 0))
+  const sum = held.reduce((total, x) => total + x, 0)
   if (!(sum > 0)) return row.map(() => 1 / row.length)
-  return row.map((x) => (x / sum) * (1 - TABLE_FLOOR * row.length) + TABLE_FLOOR)
+  const floor = Math.min(TABLE_FLOOR, 0.1 / row.length)
+  return held.map((x) => (x / sum) * (1 - floor * row.length) + floor)
 }
 
 /** How a fault's row stands to `otherwise`: what it does alone, and beside others. */

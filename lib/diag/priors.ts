@@ -26,7 +26,7 @@ export function candidates({ index, features, symptom }: Case): Candidate[] {
   let elicited = 0
   for (const fault of symptom === null ? [] : index.faults.values()) {
     const share = shareFor(fault.shares, symptom, features)
-    if (share === null) continue
+    if (share === null || !(share > 0 && Number.isFinite(share))) continue
     if (fault.id === SOMETHING_ELSE) else100 = share
     else elicited += share
     if (fault.id !== SOMETHING_ELSE && letsThrough(fault.gate, features))
@@ -52,7 +52,7 @@ export function candidates({ index, features, symptom }: Case): Candidate[] {
  * A chance of 0 answers the smallest c reckoned with (1e-9); with a single suspect any c serves: 0.1.
  */
 export function solveC(shares: readonly number[], twoOrMore: number): number {
-  if (shares.filter((s) => s > 0).length < 2) return 0.1
+  if (usable(shares).length < 2) return 0.1
   let low = 1e-9
   let high = 1e6
   if (chanceOfTwo(shares, low) >= twoOrMore) return low
@@ -66,10 +66,15 @@ export function solveC(shares: readonly number[], twoOrMore: number): number {
 
 /** P(two or more | at least one) for independent faults with odds c s. */
 export function chanceOfTwo(shares: readonly number[], c: number): number {
-  const atLeastOne = Math.expm1(shares.reduce((sum, s) => sum + Math.log1p(c * s), 0))
-  const one = shares.reduce((sum, s) => sum + c * s, 0)
-  return Math.max(0, 1 - one / atLeastOne)
+  const all = usable(shares)
+  const atLeastOne = Math.expm1(all.reduce((sum, s) => sum + Math.log1p(c * s), 0))
+  const one = all.reduce((sum, s) => sum + c * s, 0)
+  return atLeastOne > 0 ? Math.max(0, 1 - one / atLeastOne) : 0
 }
+
+/** Shares above 0; anything else is none. */
+const usable = (shares: readonly number[]): number[] =>
+  shares.filter((s) => s > 0 && Number.isFinite(s))
 
 const elseName = (index: BookIndex): string =>
   index.faults.get(SOMETHING_ELSE)?.name ?? 'Something else'

@@ -14,6 +14,9 @@ export type Advice = {
   words: string
 }
 
+/** Above this a 12 V battery with a lamp in series does not drive 1 A, and a sensor would not bear it (common practice). */
+const FOUR_WIRE_OHM = 5
+
 /** A number as the screens print it: three places below 10, fewer above, never in exponents. */
 export function figure(value: number): string {
   const size = Math.abs(value)
@@ -28,7 +31,7 @@ export function adviceFor(input: ReadingInput): Advice[] {
   const all = [
     kelvinsOutside(input.meterTempC) > 0 ? warmMeter(input, middle) : null,
     resistance && !input.nulled ? nullLeads(input, middle) : null,
-    resistance ? fourWire(input, middle) : null,
+    resistance && middle <= FOUR_WIRE_OHM ? fourWire(input, middle) : null,
     resistance ? swap() : null,
     resistance ? finerRange(input, middle) : null,
   ].filter((a) => a !== null)

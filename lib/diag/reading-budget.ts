@@ -6,8 +6,9 @@
 import type { SpecValue } from '@/lib/model/code-book'
 import type { ReadingBody } from '@/lib/model/log-entry'
 import { copperAt } from './copper'
+import { type Condition, conditionWidths } from './reading-conditions'
 
-/** What a verdict needs. `extra` holds further conditions (engine speed, cranking speed...) as half-widths. */
+/** What a verdict needs. `conditions` are those the limit holds for; `extra` further half-widths with their names. */
 export type ReadingInput = Pick<
   ReadingBody,
   | 'quantity'
@@ -21,6 +22,7 @@ export type ReadingInput = Pick<
   | 'perKelvin'
 > & {
   spec: SpecValue | null
+  conditions?: readonly Condition[]
   extra?: readonly { source: string; halfWidth: number }[]
   /** The maker states that nulling takes the meter's own offset away too: only gain, steps and contact remain. */
   nullCancels?: boolean
@@ -56,6 +58,7 @@ export function budgetOf(input: ReadingInput): Budget {
     ...meterWidths(input).map((w) => ({ ...w, halfWidth: w.halfWidth * factor })),
     ...leadWidths(input).map((w) => ({ ...w, halfWidth: w.halfWidth * factor })),
     ...partTempWidths(input, shown * factor),
+    ...conditionWidths(shown * factor, input.conditions ?? []),
     ...(input.extra ?? []).map((e) => ({ source: e.source, halfWidth: Math.abs(e.halfWidth) })),
   ].filter((w) => w.halfWidth > 0)
   const variance = groups(widths).reduce((sum, a) => sum + (a * a) / 3, 0)

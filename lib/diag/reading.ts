@@ -3,6 +3,8 @@
  * or `out` only when the whole of estimate +-U lies inside or outside the limits, else `tooClose`. The chance
  * shown is the normal one; the exact one convolves the rectangles of the budget.
  */
+
+import type { FigureProblem } from './figure-bounds'
 import { between, ONE_SIDED_95, phi, TWO_SIDED_95 } from './normal'
 import { type Advice, adviceFor, figure } from './reading-advice'
 import {
@@ -14,6 +16,7 @@ import {
   rectangles,
   SOURCES,
 } from './reading-budget'
+import { problemWords, readingProblem } from './reading-problem'
 import { rectSumCdf } from './rect-sum'
 
 export type { Advice, BudgetLine, ReadingInput }
@@ -38,6 +41,8 @@ export type ReadingResult = {
   toLimit: number | null
   /** What would let a meter decide; empty when this reading does. */
   wouldDecide: Advice[]
+  /** The first field that cannot be; then there is no verdict, and every figure is 0 or null. */
+  problem: FigureProblem | null
 }
 
 /** Whether a meter can decide a figure at all, said before the panel comes off. */
@@ -51,8 +56,13 @@ export type MeterFitness = {
   wouldDecide: Advice[]
 }
 
-/** The verdict on one reading with its whole budget. Over range (`OL`) the value is the top of the range. */
+/**
+ * The verdict on one reading with its whole budget. Over range (`OL`) the value is the top of the range. A reading
+ * that cannot be has no verdict and names its `problem`.
+ */
 export function judge(input: ReadingInput): ReadingResult {
+  const problem = readingProblem(input)
+  if (problem !== null) return { ...NO_RESULT, problem }
   const { estimate, lines, standardU, worst } = budgetOf(input)
   const limits = limitsOf(input.spec)
   const expandedU = 2 * standardU
@@ -70,7 +80,22 @@ export function judge(input: ReadingInput): ReadingResult {
     limits,
     toLimit: limits === null ? null : distance(estimate, limits),
     wouldDecide: verdict === 'tooClose' ? adviceFor(input) : [],
+    problem: null,
   }
+}
+
+const NO_RESULT: Omit<ReadingResult, 'problem'> = {
+  estimate: 0,
+  standardU: 0,
+  expandedU: 0,
+  budget: [],
+  verdict: null,
+  conformance: null,
+  conformanceExact: null,
+  span: { low: 0, high: null },
+  limits: null,
+  toLimit: null,
+  wouldDecide: [],
 }
 
 /**
@@ -81,6 +106,9 @@ export function canDecide(input: Omit<ReadingInput, 'value' | 'overRange'>): Met
   const limits = limitsOf(input.spec)
   const middle = middleOf(input.spec)
   const asRead = readingAt(input, middle ?? 0)
+  const problem = readingProblem(asRead)
+  if (problem !== null)
+    return { ...NOT_FIT, words: `This meter cannot be judged: ${problemWords(problem)}` }
   const { standardU } = budgetOf(asRead)
   const needed = neededFor(input.spec)
   const decides = limits !== null && (needed === null || standardU <= needed)
@@ -93,6 +121,14 @@ export function canDecide(input: Omit<ReadingInput, 'value' | 'overRange'>): Met
     because: decides ? [] : reasons(asRead, needed),
     wouldDecide: adviceFor(asRead).filter((a) => !decides || a.way === 'warmMeter'),
   }
+}
+
+const NOT_FIT: Omit<MeterFitness, 'words'> = {
+  decides: false,
+  standardUNeeded: null,
+  standardUHas: 0,
+  because: [],
+  wouldDecide: [],
 }
 
 /** The largest u that reaches 95 % with the reading in the middle (JCGM 106); null when no middle is known. */

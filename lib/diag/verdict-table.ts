@@ -13,6 +13,7 @@ import { phi } from './normal'
 import { type OutcomeTable, TABLE_FLOOR } from './outcome-table'
 import { canDecide, type MeterFitness } from './reading'
 import { budgetOf, limitsOf, type ReadingInput, rectangles } from './reading-budget'
+import { readingProblem } from './reading-problem'
 import { specFor } from './spec-of'
 
 const VERDICTS = ['in', 'tooClose', 'outLow', 'outHigh'] as const
@@ -46,7 +47,8 @@ export function verdictTable({ c, place }: Sight, check: CheckItem): OutcomeTabl
   if (c.meter === null || model === null || spec === null || limits === null) return null
   const input = readingWith(c.meter, model.quantity, spec)
   const nominal = nominalOf(spec, model)
-  if (input === null || nominal === null) return null
+  if (input === null || nominal === null || model.good.length === 0) return null
+  if (readingProblem({ ...input, value: nominal, overRange: false }) !== null) return null
   const seats = VERDICTS.map((v) => check.outcomes.findIndex((o) => o.id === v))
   const u = uAlong(input)
   const edges = edgesOf(u, limits)

@@ -1,6 +1,7 @@
 import { describe, expect, it } from 'vitest'
 import { belief } from '@/lib/diag/belief'
-import { agrees, differenceU, likelihood } from '@/lib/diag/evidence-reading'
+import { likelihood } from '@/lib/diag/evidence-reading'
+import { agrees, differenceU } from '@/lib/diag/twin-difference'
 import type { LogBody, ReadingBody } from '@/lib/model/log-entry'
 import { caseOf, checked, code, log, ohms } from './fixtures/entries'
 import { specOf } from './fixtures/readings'

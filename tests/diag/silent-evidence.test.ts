@@ -1,8 +1,8 @@
 // What says nothing takes nothing back, and silences nothing (docs/spec/diag.md).
 import { describe, expect, it } from 'vitest'
 import { belief } from '@/lib/diag/belief'
-import { agrees, differenceU } from '@/lib/diag/evidence-reading'
 import { NTC_PER_KELVIN } from '@/lib/diag/reading-budget'
+import { agrees, differenceU } from '@/lib/diag/twin-difference'
 import type { LogBody } from '@/lib/model/log-entry'
 import { caseOf, checked, code, couldNot, log, ohms, pocketMeter } from './fixtures/entries'
 import { coilSpec } from './fixtures/readings'
