@@ -56,6 +56,8 @@ function runFactor(stays: ReadonlyMap<number, number>, seen: boolean): Factor {
   return {
     scope: [...stays.keys()],
     at: (present) => (seen ? 1 - (1 - STRAY) * clean(present) : clean(present)),
-    machine: seen ? seenMachine(STRAY, stays) : productMachine(stays),
+    machine: seen
+      ? seenMachine(STRAY, new Map([...stays].map(([f, stay]) => [f, 1 - stay])))
+      : productMachine(stays),
   }
 }

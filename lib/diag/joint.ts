@@ -8,7 +8,8 @@
 import type { Factor } from './factor'
 import { heaviestSets } from './heaviest-sets'
 import { type Machine, runMachine } from './machine'
-import { orderOf, type Sums, sweep } from './sweep'
+import { type Sums, sweep } from './sweep'
+import { orderOf } from './sweep-order'
 
 /** Combinations of states carried at once: 2^18 numbers a suspect. */
 export const MOST_STATES = 262_144

@@ -43,15 +43,15 @@ export function productMachine(of: ReadonlyMap<number, number>): Machine {
 }
 
 /**
- * A noisy-OR that was seen: 1 - (1 - leak) prod over the present of stays(f), without a difference. State 0: nothing
+ * A noisy-OR that was seen: 1 - (1 - leak) prod over the present of 1 - sets(f), without a difference. State 0: nothing
  * set it yet; state 1: it is set.
  */
-export function seenMachine(leak: number, stays: ReadonlyMap<number, number>): Machine {
+export function seenMachine(leak: number, sets: ReadonlyMap<number, number>): Machine {
   const moves = new Map(
-    [...stays].map(([f, stay]) => {
+    [...sets].map(([f, set]) => {
       const own: Move[] = [
-        [0, 0, stay],
-        [0, 1, 1 - stay],
+        [0, 0, 1 - set],
+        [0, 1, set],
         [1, 1, 1],
       ]
       return [f, own]

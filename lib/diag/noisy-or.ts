@@ -6,7 +6,8 @@
  */
 import { AppError } from '@/lib/model/result'
 import { type Machine, seenMachine } from './machine'
-import { orderOf, sweep } from './sweep'
+import { sweep } from './sweep'
+import { orderOf } from './sweep-order'
 import type { NoisyOrModel } from './troubleshoot-model'
 
 /** Present and virtual findings that may stand over one another: 2^20 combinations carried at once. */
@@ -54,9 +55,9 @@ function evidenceOf(model: NoisyOrModel): { machines: Machine[]; weights: Weight
   for (const finding of model.findings) {
     const seen = own(model.evidence, finding.id)
     if (seen === undefined) continue
-    const stays = staysOf(model, finding)
-    if (seen === 0) weights = withAbsent(weights, finding.leak, stays)
-    else machines.push(machineOf(finding.leak, stays, seen === 1 ? [0, 1] : seen.virtual))
+    const sets = linksOf(model, finding)
+    if (seen === 0) weights = withAbsent(weights, finding.leak, sets)
+    else machines.push(machineOf(finding.leak, sets, seen === 1 ? [0, 1] : seen.virtual))
   }
   if (weights.some((w) => !(w.absent + w.present > 0))) throw new AppError('impossible')
   return { machines, weights }
@@ -65,34 +66,34 @@ function evidenceOf(model: NoisyOrModel): { machines: Machine[]; weights: Weight
 function withAbsent(
   weights: readonly Weight[],
   leak: number,
-  stays: ReadonlyMap<number, number>,
+  sets: ReadonlyMap<number, number>,
 ): Weight[] {
   if (leak === 1) throw new AppError('impossible')
   return weights.map(({ absent, present }, f) => ({
     absent,
-    present: present * (stays.get(f) ?? 1),
+    present: present * (1 - (sets.get(f) ?? 0)),
   }))
 }
 
-/** The chance that each linked fault leaves the finding absent. */
-function staysOf({ faults }: NoisyOrModel, { links }: Finding): Map<number, number> {
-  const stays = new Map<number, number>()
+/** The chance that each linked fault sets the finding. */
+function linksOf({ faults }: NoisyOrModel, { links }: Finding): Map<number, number> {
+  const sets = new Map<number, number>()
   faults.forEach(({ id }, f) => {
     const link = own(links, id) ?? 0
-    if (link > 0) stays.set(f, 1 - link)
+    if (link > 0) sets.set(f, link)
   })
-  return stays
+  return sets
 }
 
 /** A finding that was seen, or whose two likelihoods (absent, present) are known; only their ratio counts. */
 function machineOf(
   leak: number,
-  stays: ReadonlyMap<number, number>,
+  sets: ReadonlyMap<number, number>,
   [ifAbsent, ifPresent]: readonly [number, number],
 ): Machine {
   const most = Math.max(ifAbsent, ifPresent)
   if (most === 0) throw new AppError('impossible')
-  return { ...seenMachine(leak, stays), end: [ifAbsent / most, ifPresent / most] }
+  return { ...seenMachine(leak, sets), end: [ifAbsent / most, ifPresent / most] }
 }
 
 function checkChances({ faults, findings, evidence }: NoisyOrModel): void {

@@ -5,17 +5,7 @@
  * that moves it to the last. Nothing is subtracted anywhere.
  */
 import type { Machine, Move } from './machine'
-
-/** The suspects in the order they are taken, and how many combinations of states stand at once at most. */
-export type Order = { steps: readonly Step[]; mostStates: number }
-
-/** One suspect's turn: machines it opens, those open in its turn (in order), and those it closes. */
-type Step = {
-  suspect: number
-  opens: readonly number[]
-  open: readonly number[]
-  closes: readonly number[]
-}
+import { type Order, type Step, statesOf } from './sweep-order'
 
 /** How a suspect weighs in every sum: absent and present, both 0 or more (1 and the odds, or the two chances). */
 export type Weights = readonly { absent: number; present: number }[]
@@ -29,48 +19,13 @@ export type Sums = {
   shares: readonly number[]
 }
 
-/** An order with few states open at once: the better of two greedy ones where the first leaves many. */
-export function orderOf(machines: readonly Machine[]): Order {
-  const first = greedyOrder(machines, (after) => after)
-  if (first.mostStates <= MANY_STATES) return first
-  const second = greedyOrder(machines, (_, during) => during)
-  return second.mostStates < first.mostStates ? second : first
-}
-
-/** From here on a second order is tried. */
-const MANY_STATES = 256
-
-/** Always the suspect that costs least next, by the states that stand during its turn and after it. */
-function greedyOrder(
-  machines: readonly Machine[],
-  cost: (after: number, during: number) => number,
-): Order {
-  const left = machines.map((m) => new Set(m.moves.keys()))
-  const waiting = new Set(left.flatMap((suspects) => [...suspects]))
-  const isOpen = machines.map(() => false)
-  const steps: Step[] = []
-  let open: number[] = []
-  let mostStates = 1
-  while (waiting.size > 0) {
-    const { suspect, opens } = nextSuspect({ machines, left, waiting, isOpen, open, cost })
-    waiting.delete(suspect)
-    for (const m of opens) isOpen[m] = true
-    const standing = [...open, ...opens]
-    const closes = standing.filter((m) => left[m]?.delete(suspect) === true && left[m]?.size === 0)
-    mostStates = Math.max(mostStates, statesOf(machines, standing))
-    steps.push({ suspect, opens, open: standing, closes })
-    open = standing.filter((m) => !closes.includes(m))
-  }
-  return { steps, mostStates }
-}
-
 /** The sums over all sets of the suspects in the order; machines that nobody moves are taken in as they stand. */
 export function sweep(machines: readonly Machine[], order: Order, weights: Weights): Sums {
-  const still = machines.filter((m) => m.moves.size === 0)
-  const fixed = still.reduce((product, m) => product * inner(m.start, m.end), 1)
+  const still = machines.filter((m) => m.moves.size === 0).map((m) => inner(m.start, m.end))
+  const isPossible = still.every((x) => x > 0)
   const { steps } = order
   const stride = strideOf(order)
-  let at: Front = { some: grid([0]), none: grid([fixed]), log: 0 }
+  let at: Front = { some: grid([0]), none: grid([isPossible ? 1 : 0]), log: sumOfLogs(still) }
   const kept: Front[] = []
   steps.forEach((step, i) => {
     if (i % stride === 0) kept.push(at)
@@ -115,7 +70,8 @@ function passed(
   { front, weights }: { front: Front; weights: Weights },
 ): { opened: Front; after: Front } {
   const { absent, present } = weights[suspect] ?? ABSENT
-  let { some, none, log } = front
+  const { log } = front
+  let { some, none } = front
   for (const m of opens) {
     some = spread(machines, some, { m, at: some.open.length, by: 'start' })
     none = spread(machines, none, { m, at: none.open.length, by: 'start' })
@@ -124,21 +80,31 @@ function passed(
   const set = moveAll(machines, sum(some, none), { suspect, back: false })
   some = mix(some, absent, { more: set, times: present })
   none = mix(none, absent, null)
-  for (const m of closes) {
-    some = fold(machines, some, { m, by: 'end' })
-    none = fold(machines, none, { m, by: 'end' })
-  }
-  const most = Math.max(largest(some), largest(none))
-  if (most > 0 && most < SMALL) {
-    some = mix(some, 1 / most, null)
-    none = mix(none, 1 / most, null)
-    log += Math.log(most)
-  }
-  return { opened, after: { some, none, log } }
+  let after = scaled({ some, none, log })
+  for (const m of closes)
+    after = scaled({
+      some: fold(machines, after.some, { m, by: 'end' }),
+      none: fold(machines, after.none, { m, by: 'end' }),
+      log: after.log,
+    })
+  return { opened, after }
 }
 
+/** Sums that have become small are scaled up, so that long rows of unlikely evidence do not run out of digits. */
+function scaled({ some, none, log }: Front): Front {
+  const most = Math.max(largest(some), largest(none))
+  if (!(most > 0 && most < SMALL)) return { some, none, log }
+  return {
+    some: mix(some, 1 / most, null),
+    none: mix(none, 1 / most, null),
+    log: log + Math.log(most),
+  }
+}
+
+const sumOfLogs = (of: readonly number[]): number =>
+  of.reduce((total, x) => total + (x > 0 ? Math.log(x) : 0), 0)
+
 const ABSENT = { absent: 1, present: 0 }
-/** Sums below this are scaled up, so that long rows of unlikely evidence do not run out of digits. */
 const SMALL = 1e-120
 
 /** What each combination of states is still worth, over e^log. */
@@ -171,38 +137,6 @@ function backward(
 /** Where a machine stands among the open ones of a step when only `open` of them are there yet. */
 const seatIn = (step: Step, open: readonly number[], m: number): number =>
   step.open.filter((other) => other === m || open.includes(other)).indexOf(m)
-
-type Waiting = {
-  machines: readonly Machine[]
-  left: readonly ReadonlySet<number>[]
-  waiting: ReadonlySet<number>
-  isOpen: readonly boolean[]
-  open: readonly number[]
-  cost: (after: number, during: number) => number
-}
-
-function nextSuspect({ machines, left, waiting, isOpen, open, cost }: Waiting): {
-  suspect: number
-  opens: number[]
-} {
-  let best = { suspect: -1, opens: [] as number[], first: Number.POSITIVE_INFINITY, second: 0 }
-  for (const suspect of waiting) {
-    const opens = machines.flatMap((_, m) =>
-      isOpen[m] !== true && left[m]?.has(suspect) === true ? [m] : [],
-    )
-    const standing = [...open, ...opens]
-    const during = statesOf(machines, standing)
-    const closing = standing.filter((m) => left[m]?.size === 1 && left[m]?.has(suspect) === true)
-    const after = during / statesOf(machines, closing)
-    const [first, second] = [cost(after, during), after + during]
-    if (first < best.first || (first === best.first && second < best.second))
-      best = { suspect, opens, first, second }
-  }
-  return best
-}
-
-const statesOf = (machines: readonly Machine[], of: readonly number[]): number =>
-  of.reduce((product, m) => product * (machines[m]?.end.length ?? 1), 1)
 
 /** Values by the states of the open machines, the last one's changing fastest. */
 type Grid = { open: readonly number[]; values: Float64Array }

@@ -171,6 +171,19 @@ describe('[E1] many suspects', () => {
     for (const [f, p] of exact.marginals.entries())
       expect(Math.abs(short.marginals[f]! - p)).toBeLessThan(1e-2)
   })
+  it('[E1] where the way forward is too long to keep, the way back is the same', () => {
+    const factors = Array.from({ length: 16 }, (_, i) => plain(steadyTable(30, 2, i + 1), 1))
+    const odds = evenOdds(30)
+    const all = summarise(odds, factors)
+    for (const f of [0, 17]) {
+      const without = summarise(
+        odds.map((o, i) => (i === f ? 0 : o)),
+        factors,
+      )
+      const absent = Math.exp(without.logEvidence - all.logEvidence)
+      expect(Math.abs(all.marginals[f]! - (1 - absent))).toBeLessThan(1e-10)
+    }
+  }, 60_000)
   it('[E1] suspects that no evidence touches factor out exactly', () => {
     const n = 12
     const factors = [1, 2, 3].map((i) => plain(steadyTable(n, 2, i), 1))

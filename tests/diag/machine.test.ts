@@ -94,13 +94,14 @@ describe('[E1] products, seen and means', () => {
   const of = (set: readonly number[]) => set.map((f) => values.get(f) ?? 1)
   it('[E1] a product, a noisy-OR that was seen, a mean of the present ones', () => {
     const stays = new Map([...values].map(([f, v]) => [f, Math.min(1, v)]))
+    const sets = new Map([...stays].map(([f, v]) => [f, 1 - v]))
     for (const set of setsOf(5)) {
       const inside = set.filter((f) => f < 4)
       const product = of(inside).reduce((a, b) => a * b, 1)
       const held = inside.reduce((a, f) => a * stays.get(f)!, 1)
       const mean = inside.length === 0 ? 0.7 : of(inside).reduce((a, b) => a + b, 0) / inside.length
       expect(runMachine(productMachine(values), set)).toBeCloseTo(product, 14)
-      expect(runMachine(seenMachine(0.01, stays), set)).toBeCloseTo(1 - 0.99 * held, 14)
+      expect(runMachine(seenMachine(0.01, sets), set)).toBeCloseTo(1 - 0.99 * held, 14)
       expect(runMachine(meanMachine(0.7, values), set)).toBeCloseTo(mean, 14)
     }
   })
