@@ -244,9 +244,9 @@ describe('[E6] long logs', () => {
       const b = belief(caseOf(many(10_000, bodyAt), { meter: pocketMeter }))
       expect(performance.now() - started).toBeLessThan(20_000)
       expectNumbers(b.suspects.map((s) => s.chance))
-      const speaking = b.suspects[0]!.why.filter((w) => !w.saysNothing)
-      if (speaking.length > MOST_PIECES + 1)
-        expect(b.suspects[0]!.why.some((w) => w.label.includes('Fixed'))).toBe(false)
+      // Beside the share only so many pieces speak; the steps of one swap are one piece.
+      const why = b.suspects[0]!.why.filter((w) => !w.saysNothing && w.about !== 'swap')
+      expect(why.length).toBeLessThanOrEqual(MOST_PIECES + 1)
     },
     60_000,
   )
