@@ -135,6 +135,16 @@ describe('[E3] noisy-OR in exact arithmetic', () => {
     const other = noisyOrMarginals({ ...model, faults: [...faults].reverse() })
     for (const { id } of faults) expect(Math.abs(got[id]! - other[id]!)).toBeLessThan(1e-11)
   }, 60_000)
+  it('[E3] a long row of unlikely evidence keeps its digits: eighty findings of chance 2 in a million each', () => {
+    const faults = Array.from({ length: 80 }, (_, f) => ({ id: `f${f}`, prior: 1e-6 }))
+    const findings = faults.map(({ id }) => ({ id: `s${id}`, leak: 1e-6, links: { [id]: 1 } }))
+    const evidence = Object.fromEntries(findings.map((s) => [s.id, 1 as const]))
+    const own = 1e-6 / (1e-6 + (1 - 1e-6) * 1e-6)
+    for (const condition of ['none', 'atLeastOne'] as const) {
+      const got = noisyOrMarginals({ kind: 'noisyor', condition, faults, findings, evidence })
+      for (const p of Object.values(got)) expect(p).toBeCloseTo(own, 12)
+    }
+  })
   it('[E3] a number that is no chance is named; an id may be any word', () => {
     const model = (prior: number): NoisyOrModel => ({
       kind: 'noisyor',
