@@ -26,8 +26,8 @@ import { insertParty } from '@/db/queries/parties'
 import { insertPeople, listPeople, passwordHashOf, setPassword } from '@/db/queries/people'
 import { findShop, saveShop } from '@/db/queries/shop'
 import { hashPassword, verifyPassword } from '@/lib/auth/password'
-import type { MachineModel } from '@/lib/model/code-book'
 import type { Machine } from '@/lib/model/machine'
+import type { MachineModel } from '@/lib/model/machine-model'
 import type { Shop } from '@/lib/model/shop'
 import {
   BAG,

@@ -1,6 +1,7 @@
 import type { BookIndex } from '@/lib/diag/book-index'
 import type { SpecComponent } from '@/lib/diag/spec-of'
-import type { CheckItem, SpecSheet } from '@/lib/model/code-book'
+import type { CheckItem } from '@/lib/model/code-book'
+import type { SpecSheet } from '@/lib/model/machine-model'
 import { Figure } from '../ui/figure'
 import { Pins } from '../ui/pins'
 import { RuleEdge } from '../ui/rule-edge'

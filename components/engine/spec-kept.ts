@@ -1,4 +1,4 @@
-import type { SpecSheet, SpecValue } from '@/lib/model/code-book'
+import type { SpecSheet, SpecValue } from '@/lib/model/machine-model'
 
 /**
  * A spec sheet cut to what the engine reads: figures and prices, no prose, in rows, so that it fits into

@@ -22,7 +22,7 @@ export function OfJob({
     )
   }
   if (facts === 'gone') {
-    return <NotHere />
+    return <NotHere what="job" />
   }
   return children(facts)
 }

@@ -7,22 +7,14 @@ export type JobTab = 'job' | 'checks' | 'log' | 'parts'
 /** Screens that change one thing of a job. */
 export type SettingName = 'setPlace' | 'setAir' | 'setComplaint' | 'setMachine'
 
+/** Entries that a person writes of their own accord. */
+export type NewEntryName = 'note' | 'symptom' | 'photo' | 'voice'
+
 export type Route =
   | { name: 'jobs' | 'new' | 'unsent' | 'about' | 'unknown' }
   | { name: JobTab; jobId: string }
   | {
-      name:
-        | 'codes'
-        | 'sheet'
-        | 'fix'
-        | 'proof'
-        | 'wayOut'
-        | 'note'
-        | 'symptom'
-        | 'photo'
-        | 'voice'
-        | 'askPart'
-        | SettingName
+      name: 'codes' | 'sheet' | 'fix' | 'proof' | 'wayOut' | 'askPart' | NewEntryName | SettingName
       jobId: string
     }
   | { name: 'check' | 'reading'; jobId: string; checkId: string }

@@ -2,7 +2,6 @@
 
 import { type ComponentType, lazy, type ReactNode, Suspense, useEffect } from 'react'
 import { useJob } from '@/components/store/use-rows'
-import { KeyLink } from '@/components/ui/key'
 import { Screen } from '@/components/ui/screen'
 import { JobsScreen } from './jobs-screen'
 import type { Route } from './route'
@@ -49,18 +48,12 @@ const IntakeScreen = later(() => import('./intake/intake-screen').then((file) =>
 const SheetScreen = later(() => import('./job/sheet-screen').then((file) => file.SheetScreen))
 const CorrectScreen = later(() => import('./log/correct-screen').then((file) => file.CorrectScreen))
 const EntryScreen = later(() => import('./log/entry-screen').then((file) => file.EntryScreen))
-const NoteScreen = later(() => import('./log/note-screen').then((file) => file.NoteScreen))
-const PhotoScreen = later(() => import('./log/photo-screen').then((file) => file.PhotoScreen))
-const SymptomScreen = later(() => import('./log/symptom-screen').then((file) => file.SymptomScreen))
-const VoiceScreen = later(() => import('./log/voice-screen').then((file) => file.VoiceScreen))
-const AirScreen = later(() => import('./settings/air-screen').then((file) => file.AirScreen))
-const ComplaintScreen = later(() =>
-  import('./settings/complaint-screen').then((file) => file.ComplaintScreen),
+const NewEntryScreen = later(() =>
+  import('./log/new-entry-screen').then((file) => file.NewEntryScreen),
 )
-const MachineScreen = later(() =>
-  import('./settings/machine-screen').then((file) => file.MachineScreen),
+const JobSettingScreen = later(() =>
+  import('./settings/job-setting-screen').then((file) => file.JobSettingScreen),
 )
-const PlaceScreen = later(() => import('./settings/place-screen').then((file) => file.PlaceScreen))
 const AboutScreen = later(() => import('./phone/about-screen').then((file) => file.AboutScreen))
 const UnsentScreen = later(() => import('./phone/unsent-screen').then((file) => file.UnsentScreen))
 
@@ -104,7 +97,7 @@ function LandOnLead({ route, children }: { route: Route; children: ReactNode }) 
   useEffect(() => {
     if (moves) go(here.replace(jobId, leadId), { replace: true, from: here })
   }, [moves, go, here, jobId, leadId])
-  if (job === null && 'jobId' in route) return <NotHere />
+  if (job === null && 'jobId' in route) return <NotHere what="job" />
   return moves ? null : children
 }
 
@@ -131,13 +124,10 @@ function OneScreen({ route }: { route: Route }) {
     case 'correct':
       return <CorrectScreen jobId={route.jobId} entryId={route.entryId} />
     case 'note':
-      return <NoteScreen jobId={route.jobId} />
     case 'symptom':
-      return <SymptomScreen jobId={route.jobId} />
     case 'photo':
-      return <PhotoScreen jobId={route.jobId} />
     case 'voice':
-      return <VoiceScreen jobId={route.jobId} />
+      return <NewEntryScreen name={route.name} jobId={route.jobId} />
     case 'checks':
       return <ChecksScreen jobId={route.jobId} />
     case 'check':
@@ -157,29 +147,11 @@ function OneScreen({ route }: { route: Route }) {
     case 'askPart':
       return <AskPartScreen jobId={route.jobId} />
     case 'setPlace':
-      return <PlaceScreen jobId={route.jobId} />
     case 'setAir':
-      return <AirScreen jobId={route.jobId} />
     case 'setComplaint':
-      return <ComplaintScreen jobId={route.jobId} />
     case 'setMachine':
-      return <MachineScreen jobId={route.jobId} />
+      return <JobSettingScreen name={route.name} jobId={route.jobId} />
     case 'unknown':
-      return <Unknown />
+      return <NotHere what="screen" />
   }
-}
-
-function Unknown() {
-  return (
-    <Screen
-      title="Nothing here"
-      foot={
-        <KeyLink kind="main" href="/field">
-          Jobs on this phone
-        </KeyLink>
-      }
-    >
-      <p>There is no screen at this address.</p>
-    </Screen>
-  )
 }

@@ -2,10 +2,10 @@
 
 import { useMemo } from 'react'
 import { useJob, useMachines, useModels } from '@/components/store/use-rows'
-import type { MachineModel } from '@/lib/model/code-book'
 import type { Features } from '@/lib/model/features'
 import type { Job } from '@/lib/model/job'
 import type { MachineRow } from '@/lib/model/machine'
+import type { MachineModel } from '@/lib/model/machine-model'
 import { machineName } from './words'
 
 /** A job with its machine and model; `gone` when this phone does not hold it, undefined while opening. */

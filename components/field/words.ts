@@ -1,6 +1,6 @@
-import type { MachineModel } from '@/lib/model/code-book'
 import type { BEFORE, Job, JobMachineState, JobState, PeopleState, WayOut } from '@/lib/model/job'
 import { type Machine, machineWords } from '@/lib/model/machine'
+import type { MachineModel } from '@/lib/model/machine-model'
 
 /** Words of the field's screens, one table per fixed choice. */
 export const JOB_STATE_WORDS: Record<JobState, string> = {

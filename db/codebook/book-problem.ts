@@ -1,11 +1,6 @@
-import type {
-  CheckItem,
-  CodeBookItem,
-  MachineModel,
-  SwapItem,
-  WordItem,
-} from '@/lib/model/code-book'
+import type { CheckItem, CodeBookItem, SwapItem, WordItem } from '@/lib/model/code-book'
 import { FEATURES, type FeatureName, type Features, type Gate } from '@/lib/model/features'
+import type { MachineModel } from '@/lib/model/machine-model'
 
 /** What the checker of a code book can find; each kind is a rule of docs/spec/code-book.md. */
 export const BOOK_PROBLEMS = [

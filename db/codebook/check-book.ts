@@ -3,7 +3,8 @@
  * Rules CB1 to CB18 of docs/spec/code-book.md. Shape comes first; the rest is only looked at when every
  * record has its shape, because a wrong shape makes the other findings noise.
  */
-import { type CodeBookItem, type MachineModel, machineModel } from '@/lib/model/code-book'
+import type { CodeBookItem } from '@/lib/model/code-book'
+import { type MachineModel, machineModel } from '@/lib/model/machine-model'
 import { type BookProblem, type Books, shelve } from './book-problem'
 import { checkIds } from './check-ids'
 import { checkReach, checkShares } from './check-list'

@@ -1,5 +1,6 @@
-import type { CheckItem, FaultItem, MachineModel, SwapItem } from '@/lib/model/code-book'
+import type { CheckItem, FaultItem, SwapItem } from '@/lib/model/code-book'
 import type { Features, Gate } from '@/lib/model/features'
+import type { MachineModel } from '@/lib/model/machine-model'
 import {
   type BookProblem,
   type Books,

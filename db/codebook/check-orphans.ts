@@ -1,4 +1,5 @@
-import { codeBookItem, type MachineModel } from '@/lib/model/code-book'
+import { codeBookItem } from '@/lib/model/code-book'
+import type { MachineModel } from '@/lib/model/machine-model'
 import type { BookProblem, Books } from './book-problem'
 import { usesOf } from './check-ids'
 

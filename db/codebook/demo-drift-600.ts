@@ -1,4 +1,4 @@
-import type { MachineModel } from '@/lib/model/code-book'
+import type { MachineModel } from '@/lib/model/machine-model'
 import { DRIFT_600_COMPONENTS } from './demo-drift-600-components'
 import { type DemoPart, page, SHOP_FIGURE } from './demo-figures'
 

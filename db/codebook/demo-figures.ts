@@ -1,4 +1,4 @@
-import type { SpecSheet } from '@/lib/model/code-book'
+import type { SpecSheet } from '@/lib/model/machine-model'
 
 export type DemoComponent = SpecSheet['components'][number]
 export type DemoPart = SpecSheet['parts'][number]

@@ -1,4 +1,4 @@
-import type { MachineModel } from '@/lib/model/code-book'
+import type { MachineModel } from '@/lib/model/machine-model'
 import { DRIFT_600 } from './demo-drift-600'
 import { MOOR_450 } from './demo-moor-450'
 import { SKERRY_250 } from './demo-skerry-250'

@@ -1,4 +1,4 @@
-import type { MachineModel } from '@/lib/model/code-book'
+import type { MachineModel } from '@/lib/model/machine-model'
 import { page } from './demo-figures'
 import { MOOR_450_AIR } from './demo-moor-450-air'
 import { MOOR_450_ELECTRICS } from './demo-moor-450-electrics'

@@ -1,4 +1,4 @@
-import type { MachineModel } from '@/lib/model/code-book'
+import type { MachineModel } from '@/lib/model/machine-model'
 import { type DemoPart, page, SHOP_FIGURE } from './demo-figures'
 import { SKERRY_250_COMPONENTS } from './demo-skerry-250-components'
 

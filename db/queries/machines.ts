@@ -1,8 +1,8 @@
 import { type Selectable, sql } from 'kysely'
 import type { Bag } from '@/lib/model/bag'
-import type { MachineModel } from '@/lib/model/code-book'
 import type { Id } from '@/lib/model/id'
 import type { Machine, MachineRow } from '@/lib/model/machine'
+import type { MachineModel } from '@/lib/model/machine-model'
 import type { MeterProfile } from '@/lib/model/meter-profile'
 import type { ShopTx } from '../client'
 import type {

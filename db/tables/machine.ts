@@ -1,7 +1,8 @@
 import type { Generated, JSONColumnType } from 'kysely'
 import type { Bag } from '@/lib/model/bag'
-import type { CodeBookItem, SpecSheet } from '@/lib/model/code-book'
+import type { CodeBookItem } from '@/lib/model/code-book'
 import type { Features } from '@/lib/model/features'
+import type { SpecSheet } from '@/lib/model/machine-model'
 import type { MeterProfile } from '@/lib/model/meter-profile'
 
 export type MachineModelTable = {

@@ -1,7 +1,7 @@
-import type { SpecSheet } from '@/lib/model/code-book'
 import type { Features } from '@/lib/model/features'
 import type { Job } from '@/lib/model/job'
 import type { LogEntry } from '@/lib/model/log-entry'
+import type { SpecSheet } from '@/lib/model/machine-model'
 import type { MeterProfile } from '@/lib/model/meter-profile'
 import type { BookIndex } from './book-index'
 

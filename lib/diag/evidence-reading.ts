@@ -5,8 +5,9 @@
  * A good twin read with the same meter comes first (rules R7, R17): when the two agree and the meter cannot
  * decide the figure, the check says nothing; else the difference is the evidence, for it sheds what both share.
  */
-import type { CheckItem, Piece, SpecValue } from '@/lib/model/code-book'
+import type { CheckItem, Piece } from '@/lib/model/code-book'
 import type { LogEntry, ReadingBody } from '@/lib/model/log-entry'
+import type { SpecValue } from '@/lib/model/machine-model'
 import { twinKey } from './evidence-log'
 import { type Evidence, nothing, type Sight, stillThere, tableAt, tableOf } from './evidence-table'
 import { type Factor, tableFactor } from './factor'

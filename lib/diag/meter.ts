@@ -1,5 +1,5 @@
 import type { Bag } from '@/lib/model/bag'
-import type { SpecValue } from '@/lib/model/code-book'
+import type { SpecValue } from '@/lib/model/machine-model'
 import type { MeterProfile, Quantity } from '@/lib/model/meter-profile'
 import type { ReadingInput } from './reading'
 

@@ -1,4 +1,4 @@
-import type { SpecSheet } from '@/lib/model/code-book'
+import type { SpecSheet } from '@/lib/model/machine-model'
 import type { PartRequest } from '@/lib/model/part-request'
 
 /** Figures of the choice between a genuine and an aftermarket part: money in minor units, chances 0 to 1. */

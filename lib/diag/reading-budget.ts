@@ -3,8 +3,9 @@
  * half-width a and u = a / sqrt(3); independent sources add in square. The widening of a cold or hot meter
  * grows the same error as its accuracy, so those two lines add up straight, not in square (rule R7).
  */
-import type { SpecValue } from '@/lib/model/code-book'
+
 import type { ReadingBody } from '@/lib/model/log-entry'
+import type { SpecValue } from '@/lib/model/machine-model'
 import { copperAt } from './copper'
 import { type Condition, conditionWidths } from './reading-conditions'
 

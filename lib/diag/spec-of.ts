@@ -1,4 +1,5 @@
-import type { CheckItem, SpecSheet, SpecValue } from '@/lib/model/code-book'
+import type { CheckItem } from '@/lib/model/code-book'
+import type { SpecSheet, SpecValue } from '@/lib/model/machine-model'
 import type { Case } from './case'
 
 /** A component of a model's spec sheet. */

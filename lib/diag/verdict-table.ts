@@ -3,7 +3,8 @@
  * the meter's uncertainty there, and the places where the verdict turns (JCGM 106). So the outlook of a reading
  * is that of the meter in the bag, not of meters in general.
  */
-import type { CheckItem, Piece, SpecValue } from '@/lib/model/code-book'
+import type { CheckItem, Piece } from '@/lib/model/code-book'
+import type { SpecValue } from '@/lib/model/machine-model'
 import type { MeterProfile, Quantity } from '@/lib/model/meter-profile'
 import type { Case } from './case'
 import { nominalOf } from './evidence-reading'

@@ -1,9 +1,8 @@
 import * as z from 'zod/mini'
 import { slug } from './id'
+import { sentence, source } from './sentence'
 
-/** Shapes of the code book's tables: codes, failure kinds, set-ups and words; and what all records share. */
-export const source = z.string().check(z.minLength(3))
-export const sentence = z.string().check(z.minLength(3), z.maxLength(400))
+/** Shapes of the code book's tables: codes, failure kinds, set-ups and words. */
 
 /** What a fault is to the circuit a code names. */
 export const CIRCUIT_ROLES = ['part', 'wiring', 'supply', 'driver', 'sensor', 'mechanism'] as const

@@ -6,7 +6,7 @@ import { Figure } from '@/components/ui/figure'
 import { Pins } from '@/components/ui/pins'
 import { RuleEdge } from '@/components/ui/rule-edge'
 import { Screen } from '@/components/ui/screen'
-import type { SpecSheet, SpecValue } from '@/lib/model/code-book'
+import type { SpecSheet, SpecValue } from '@/lib/model/machine-model'
 import { OfJob } from '../of-job'
 
 type Component = SpecSheet['components'][number]
