@@ -28,7 +28,7 @@ export function SuspectRows(props: Props) {
   const { suspects, outlook = [] } = props
   const [all, setAll] = useState(false)
   const ranked = suspects.map((suspect, i) => ({ suspect, rank: i + 1 }))
-  const shown = all ? ranked : ranked.filter(({ suspect, rank }) => standsOut(suspect, rank, props))
+  const shown = all ? ranked : ranked.filter((row) => standsOut(row, ranked, props))
   const folded = ranked.length - shown.length
   const list = useSlide<HTMLOListElement>(shown.map(({ suspect }) => suspect.fault).join(' '))
   return (
@@ -59,15 +59,16 @@ export function SuspectRows(props: Props) {
 
 type Ranked = { suspect: Suspect; rank: number }
 
-/** A row each for the first five, all from 3 of 100 up, "something else", the ruled-out and the open one. */
-function standsOut(suspect: Suspect, rank: number, { open }: Props): boolean {
-  return (
-    rank <= 5 ||
-    suspect.chance >= 0.03 ||
-    suspect.fault === SOMETHING_ELSE ||
-    suspect.ruledOutBy !== null ||
-    suspect.fault === open
-  )
+/** So many of those ruled out have a row: one clean proof run rules out all the others at once. */
+const MOST_RULED_OUT = 4
+
+/** A row each for the first five, all from 3 of 100 up, "something else", some ruled-out and the open one. */
+function standsOut(row: Ranked, ranked: readonly Ranked[], { open }: Props): boolean {
+  const { suspect, rank } = row
+  if (suspect.fault === SOMETHING_ELSE || suspect.fault === open) return true
+  if (suspect.ruledOutBy === null) return rank <= 5 || suspect.chance >= 0.03
+  const firstOut = ranked.findIndex((one) => one.suspect.ruledOutBy !== null)
+  return rank - firstOut <= MOST_RULED_OUT
 }
 
 /** `33 more, each 2 of 100 or less`. */

@@ -68,6 +68,16 @@ describe('[F5] the suspects at the desk', () => {
     expect(page).not.toContain('Show all')
   })
 
+  it('[F5] a proof run that rules out all the others at once does not fill the page with them', () => {
+    const out = (i: number) => ({ ...suspect(i), chance: 0.001, ruledOutBy: 'proof' })
+    const after = [suspect(1), ...Array.from({ length: 20 }, (_, i) => out(i + 2))]
+    const belief = { suspects: after, notices: [] }
+    const page = shown({ answer: { belief } as unknown as JobCase['answer'] })
+    expect(page.match(/<li data-row/g)).toHaveLength(1 + 4)
+    expect(rowOf(page, 'fault5')).toContain('ruled out by')
+    expect(page).toContain('16 more, each 1 of 100 or less')
+  })
+
   it('[R23] says the code book version, and when an entry was written with a newer one', () => {
     expect(shown()).toContain('Worked out here with code book version 2.')
     expect(shown({ newerSeen: 3 })).toContain(
