@@ -2,6 +2,7 @@
 import { mkdtempSync, rmSync } from 'node:fs'
 import { tmpdir } from 'node:os'
 import { join } from 'node:path'
+import { setTimeout as sleep } from 'node:timers/promises'
 import type { Actor } from '@/lib/model/person'
 import { logAdd, note } from '../support/field-ops'
 import { RawDevice } from '../support/raw-device'
@@ -200,11 +201,16 @@ class PhoneLoop {
     this.#keeps = value as string | null
   }
 
+  /** Sends until nothing is left, with rests that double as the sender's own do (P16), within a minute. */
   async #sendAll(): Promise<void> {
-    for (let tries = 0; tries < 5; tries += 1) {
-      if ((await this.#handset.ask((page) => page.send(), null)) === 0) return
+    const said: string[] = []
+    for (let restMs = 125; restMs < 64_000; restMs *= 2) {
+      const left = await this.#handset.ask((page) => page.send(), null)
+      if (left.ops + left.photos === 0) return
+      said.push(JSON.stringify(left))
+      await sleep(restMs)
     }
-    broken('P16', 'five runs of the sender left something unsent')
+    broken('P16', `a minute of the sender left something unsent: ${said.join(', ')}`)
   }
 
   async end(): Promise<void> {

@@ -1,4 +1,5 @@
 import type { Actor } from '@/lib/model/person'
+import type { SendState } from '@/lib/sync/client/phone-sender'
 import type { NewPhoto } from '@/lib/sync/client/views'
 import type { OpInput } from '@/lib/sync/protocol/op'
 
@@ -18,6 +19,9 @@ export type Kept = {
   cursor: number
 }
 
+/** How much a run left unsent, and what it met. */
+export type Left = { ops: number; photos: number } & Pick<SendState, 'reached' | 'need'>
+
 /** What the test asks of the page. */
 export type KillPage = {
   /** Opens the store of this person; answers the phone's id. */
@@ -29,8 +33,8 @@ export type KillPage = {
   /** Writes a draft and waits until the store has it. */
   draft(key: string, value: unknown): Promise<void>
   record(ops: OpInput[], more: { photo: PhotoText | null; clearDrafts: string[] }): Promise<void>
-  /** One whole run of the sender; answers how much is still unsent. */
-  send(): Promise<number>
+  /** One whole run of the sender. */
+  send(): Promise<Left>
   look(draftKeys: readonly string[]): Promise<Kept>
 }
 

@@ -101,7 +101,9 @@ const page: KillPage = {
     await sender.sendNow('tap')
     isHeld = true
     const ops = await core.db.outbox.where('state').anyOf('waiting', 'blocked', 'stuck').count()
-    return ops + (await core.db.photo.where('state').notEqual('sent').count())
+    const photos = await core.db.photo.where('state').notEqual('sent').count()
+    const { reached, need } = sender.state.get()
+    return { ops, photos, reached, need }
   },
   look,
 }
