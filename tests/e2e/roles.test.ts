@@ -81,3 +81,19 @@ test('nobody, a guide, a mechanic and a stranger are refused what is not theirs'
   expect([foreign.status(), nowhere.status()]).toEqual([404, 404])
   expect(await foreign.text()).toBe(await nowhere.text())
 })
+
+test('documents carry the policies of a document, answers of the API only what they need', async ({
+  server,
+}) => {
+  const headersOf = async (path: string) => (await fetch(`${server.base}${path}`)).headers
+  for (const path of ['/login', '/field', '/field/unsent', '/sw.js']) {
+    const headers = await headersOf(path)
+    expect(headers.get('x-content-type-options')).toBe('nosniff')
+    expect(headers.get('referrer-policy')).toBe('same-origin')
+    expect(headers.get('cross-origin-opener-policy')).toBe('same-origin')
+    expect(headers.get('permissions-policy')).toContain('camera=(self)')
+  }
+  const headers = await headersOf('/api/me')
+  expect(headers.get('x-content-type-options')).toBe('nosniff')
+  expect(headers.get('permissions-policy')).toBeNull()
+})

@@ -1,4 +1,4 @@
-// The floor of the sync bars: the same Next.js, the same headers as the product's, and nothing in between.
+// The floor of the sync bars: the same Next.js, the same headers as the product's API, and nothing in between.
 import { fileURLToPath } from 'node:url'
 
 const root = fileURLToPath(new URL('../../..', import.meta.url))
@@ -11,18 +11,7 @@ export default {
   outputFileTracingRoot: root,
   headers: () =>
     Promise.resolve([
-      {
-        source: '/:path*',
-        headers: [
-          { key: 'x-content-type-options', value: 'nosniff' },
-          { key: 'referrer-policy', value: 'same-origin' },
-          { key: 'cross-origin-opener-policy', value: 'same-origin' },
-          {
-            key: 'permissions-policy',
-            value: 'geolocation=(self), camera=(self), microphone=(self)',
-          },
-        ],
-      },
+      { source: '/:path*', headers: [{ key: 'x-content-type-options', value: 'nosniff' }] },
     ]),
   serverExternalPackages: ['pg'],
 }
