@@ -3,6 +3,7 @@ import { afterEach, describe, expect, test, vi } from 'vitest'
 import { freeRoom } from '@/lib/sync/client/free-room'
 import { readMeta } from '@/lib/sync/client/phone-db'
 import { RoomWatch } from '@/lib/sync/client/room'
+import type { OpInput } from '@/lib/sync/protocol/op'
 import { newBrowser, startApp } from '../../support/field-app'
 import { jobOpen, machineAdd } from '../../support/field-ops'
 import { createPhone, testClock } from '../../support/phone'
@@ -39,6 +40,12 @@ function noRoomFor(isFull: (store: string, value: unknown) => boolean) {
     return add.call(this, value, key)
   })
 }
+
+const jobMove = (jobId: string): OpInput => ({
+  kind: 'job.move',
+  jobId,
+  fields: { from: 'open', to: 'underWay', reason: null },
+})
 
 /** The browser's storage manager with so much used of 100 MB. */
 function storage(usedShare: number, kept = false) {
@@ -145,6 +152,20 @@ describe('[P21] room on the phone', () => {
     const rows = await again.phone().core.db.row.where('entity').equals('job').toArray()
     expect(rows.map((row) => row.id)).toEqual([job.fields.id])
     await again.end()
+  })
+
+  test('[P21] what waits goes out though no row can be worked out for want of room', async () => {
+    const { shop, phone, machine, job, jobId } = await atWork()
+    await phone.record([machine, job])
+    shop.fault = () => ({ noLine: true })
+    await phone.record([jobMove(jobId)])
+    shop.fault = () => null
+    // As a sender leaves it that may not look into the rows: still to be worked out.
+    await phone.phone.core.db.outbox.where('state').equals('waiting').modify({ unsettled: 1 })
+    noRoomFor((store) => store === 'row')
+    await phone.sync()
+    expect(shop.row('job', jobId)).toMatchObject({ state: 'underWay' })
+    expect(await phone.see(phone.phone.unsent)).toMatchObject({ count: 0 })
   })
 
   test('[P1] with nothing left to free it says so, and nothing of the record is there', async () => {
