@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest'
-import { minutesToLeaveBy, sunTimes } from '@/lib/diag/daylight'
+import { minutesToLeaveBy, sunBearing, sunHeight, sunTimes } from '@/lib/diag/daylight'
 
 const MINUTE = 60_000
 const HOUR = 60 * MINUTE
@@ -68,13 +68,12 @@ describe('sunrise and sunset, USNO (seen in a solar-energy library)', () => {
     near(sun.sunset, '2020-06-26T07:42:00Z')
     expect(sun).toMatchObject({ civilDusk: null, civilDawn: null, never: 'darkens' })
   })
-  it.each(['2020-01-05', '2020-01-20', '2020-02-05'])(
-    '[STD] 78.2 N on %s: below the horizon all day',
-    (day) => {
-      const sun = sunTimes(78.2167, 15.6333, at(`${day}T12:00:00Z`))
+  it('[STD] 78.2167 N 15.6333 E from 2020-01-05 to 02-05: below the horizon all day (USNO, seen)', () => {
+    for (let day = 0; day < 32; day++) {
+      const sun = sunTimes(78.2167, 15.6333, at('2020-01-05T12:00:00Z') + day * 24 * HOUR)
       expect(sun).toMatchObject({ sunrise: null, sunset: null, never: 'rises' })
-    },
-  )
+    }
+  })
   it('[STD] 78.2 N at midsummer: the sun does not set', () => {
     expect(sunTimes(78.2167, 15.6333, at('2020-06-25T12:00:00Z'))).toMatchObject({
       sunset: null,
@@ -85,6 +84,31 @@ describe('sunrise and sunset, USNO (seen in a solar-energy library)', () => {
     const sun = sunTimes(39.742476, -105.1786, at('2003-10-17T19:00:00Z'))
     near(sun.sunrise, '2003-10-17T13:12:43Z', 10_000)
     near(sun.sunset, '2003-10-18T00:18:50Z', 10_000)
+  })
+  it('[STD] SPA example 2003-10-17 12:30:30: azimuth 194.340241, declination -9.31434 degrees (seen)', () => {
+    const [lat, lon, noon] = [39.742476, -105.1786, at('2003-10-17T19:30:30Z')]
+    const bearing = sunBearing(lat, lon, noon)
+    expect(Math.abs(bearing - 194.340241)).toBeLessThan(0.01)
+    // Declination from height and bearing, without the refraction of the example (90 - 50.11162 with 0.0163).
+    const rad = Math.PI / 180
+    const height = (sunHeight(lat, lon, noon) - 0.0163) * rad
+    const sine =
+      Math.sin(lat * rad) * Math.sin(height) +
+      Math.cos(lat * rad) * Math.cos(height) * Math.cos(bearing * rad)
+    expect(Math.abs(Math.asin(sine) / rad + 9.31434)).toBeLessThan(0.01)
+  })
+  it('[STD] zenith 90.833 at sunrise and sunset, 96 at civil dawn and dusk, before refraction of 0.4841', () => {
+    for (const day of ['2020-03-25', '2020-09-25', '2020-12-15']) {
+      const sun = sunTimes(61.216667, -149.866667, at(`${day}T22:00:00Z`))
+      const zenith = (ms: number | null) =>
+        90 - (sunHeight(61.216667, -149.866667, ms ?? 0) - 0.4841)
+      expect([sun.sunrise, sun.sunset].map(zenith)).toEqual(
+        Array(2).fill(expect.closeTo(90.833, 2)),
+      )
+      expect([sun.civilDawn, sun.civilDusk].map(zenith)).toEqual(
+        Array(2).fill(expect.closeTo(96, 2)),
+      )
+    }
   })
   it('[R6] the acceptance day, 47.1 N 93.2 W: sunset 16:29, civil dusk 17:03, leave by 16:13 with 20 min to ride out', () => {
     const sun = sunTimes(47.1, -93.2, at('2026-11-24T18:00:00Z'))
