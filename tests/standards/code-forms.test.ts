@@ -103,10 +103,13 @@ describe('SAE J2012 / ISO 15031-6, letters and digits', () => {
 
 describe('SAE J1939-21 and -73, fault messages from frames', () => {
   it('[STD] 18FECAAA is DM1 (PGN 65226) from address AA at priority 6; FECB is DM2 (65227)', () => {
-    expect(identifierOf(0x18fecaaa)).toEqual({ priority: 6, pgn: 65_226, sender: 0xaa })
-    expect(identifierOf(0x18fecb00)).toEqual({ priority: 6, pgn: 65_227, sender: 0 })
+    const all = 255
+    expect(identifierOf(0x18fecaaa)).toEqual({ priority: 6, pgn: 65_226, sender: 0xaa, to: all })
+    expect(identifierOf(0x18fecb00)).toEqual({ priority: 6, pgn: 65_227, sender: 0, to: all })
     // Below 240 the low byte is an address and no part of the group.
-    expect(identifierOf(0x18ecff03)).toEqual({ priority: 6, pgn: 60_416, sender: 3 })
+    expect(identifierOf(0x18ecff03)).toEqual({ priority: 6, pgn: 60_416, sender: 3, to: all })
+    expect(identifierOf(0x1cebf903)).toEqual({ priority: 7, pgn: 60_160, sender: 3, to: 0xf9 })
+    expect(identifierOf(0x1dfecaaa)).toMatchObject({ priority: 7, pgn: 0x1_fe_ca })
   })
   it('[STD] 18FECAAA 00 FF D2 04 1F 01 FF FF: SPN 1234 FMI 31 count 1 from AA (C++ stack test, seen)', () => {
     const [message] = theValue(messages('18FECAAA#00FFD2041F01FFFF'))
@@ -135,6 +138,40 @@ describe('SAE J1939-21 and -73, fault messages from frames', () => {
     expect(messages([log[0], log[1]].join('\n'))).toMatchObject({
       problem: { kind: 'unfinished', sender: 0 },
     })
+  })
+  it('[STD] earlier codes asked for by one address come to it alone, beside those to all (J1939-21, memory)', () => {
+    const log = [
+      '18ECFF00 20 0E 00 02 FF CA FE 00',
+      '18ECF900 10 0A 00 02 FF CB FE 00',
+      '18EBF900 01 04 FF D2 04 1F 01 F4',
+      '18EBFF00 01 04 FF D2 04 1F 01 F4',
+      // The asker's own answer, and a group that is not about faults.
+      '18EC00F9 11 02 01 FF FF CB FE 00',
+      '18ECFF07 20 0E 00 02 FF 00 EF 00',
+      '18EBF900 02 04 05 01 FF FF FF FF',
+      '18EBFF00 02 04 05 01 B8 04 03 0A',
+    ]
+    const got = theValue(messages(log.join('\n')))
+    expect(got.map(({ kind, message }) => [kind, message.codes.map((c) => c.spn)])).toEqual([
+      ['earlier', [1234, 1268]],
+      ['active', [1234, 1268, 1208]],
+    ])
+  })
+  it('[R11] no half list: a second announcement, a short packet and a wrong count of packets are refused', () => {
+    const start = '18ECFF00 20 0E 00 02 FF CA FE 00'
+    const first = '18EBFF00 01 04 FF D2 04 1F 01 F4'
+    const wrong = (frame: number, got: number) => ({
+      ok: false,
+      problem: { kind: 'badMessage', frame, problem: { kind: 'wrongLength', got } },
+    })
+    expect(messages([start, first, start].join('\n'))).toMatchObject({
+      problem: { kind: 'unfinished', sender: 0 },
+    })
+    expect(messages([start, '18EBFF00 01 04 FF D2 04 1F 01'].join('\n'))).toMatchObject(wrong(2, 6))
+    expect(messages([start, first, '18EBFF00 02 04 05 01'].join('\n'))).toMatchObject(wrong(3, 3))
+    expect(messages('18ECFF00 20 0E 00 01 FF CA FE 00')).toMatchObject(wrong(1, 14))
+    expect(messages('18ECFF00 20 08 00 02 FF CA FE 00')).toMatchObject(wrong(1, 8))
+    expect(messages('18ECFF00 20 00 07 00 FF CA FE 00')).toMatchObject(wrong(1, 1792))
   })
   it('[R11] a line that is no frame is named by its number, as is a message that cannot be', () => {
     expect(framesFromText('18FECAAA 00 FF\nhello')).toMatchObject({ problem: { frame: 2 } })
