@@ -2,38 +2,50 @@
  * Exact intervals for counts: Garwood (1936) for Poisson, Clopper and Pearson (1934) for the binomial.
  * Both by bisection on the distribution function itself: no special functions, right to about 1e-12.
  */
-import { AppError } from '@/lib/model/result'
 import { crossing } from './bisection'
+import { mustFit } from './figure-bounds'
 
 export type Interval = { low: number; high: number }
 
-/** P(X <= k) for a Poisson count of this mean; 0 below 0. Sums terms by recurrence from the largest. */
+/** Largest count that these sums go through one by one; above it a screen would wait. */
+export const MOST_COUNTED = 10_000
+const MOST_TRIALS = Number.MAX_SAFE_INTEGER
+const CONFIDENCE = [Number.MIN_VALUE, 1 - Number.EPSILON] as const
+
+/** P(X <= k) for a Poisson count of this mean (from 0), k up to 1e6; 0 below 0. Terms by recurrence of logarithms. */
 export function poissonCdf(k: number, mean: number): number {
+  mustFit({ k: [k, -1, 1e6], mean: [mean, 0, 1e6] })
   if (k < 0) return 0
-  if (mean <= 0) return 1
-  let sum = 0
-  for (let i = 0; i <= k; i++) sum += Math.exp(i * Math.log(mean) - mean - logFactorial(i))
+  if (mean === 0) return 1
+  let log = -mean
+  let sum = Math.exp(log)
+  for (let i = 1; i <= k; i++) {
+    log += Math.log(mean / i)
+    sum += Math.exp(log)
+  }
   return Math.min(1, sum)
 }
 
-/** P(X <= k) for k of n trials with chance p each. */
+/** P(X <= k) for k (up to 1e6, or n) of n trials with chance p (0 to 1) each; 0 below 0. Terms by recurrence. */
 export function binomialCdf(k: number, n: number, p: number): number {
+  mustFit({ n: [n, 0, MOST_TRIALS], k: [k, -1, MOST_TRIALS], p: [p, 0, 1] })
   if (k < 0) return 0
-  if (k >= n) return 1
-  if (p <= 0) return 1
-  if (p >= 1) return 0
-  const lp = Math.log(p)
-  const lq = Math.log1p(-p)
-  let sum = 0
-  for (let i = 0; i <= k; i++)
-    sum += Math.exp(logFactorial(n) - logFactorial(i) - logFactorial(n - i) + i * lp + (n - i) * lq)
+  if (k >= n || p === 0) return 1
+  if (p === 1) return 0
+  mustFit({ k: [k, 0, 1e6] })
+  const odds = Math.log(p) - Math.log1p(-p)
+  let log = n * Math.log1p(-p)
+  let sum = Math.exp(log)
+  for (let i = 1; i <= k; i++) {
+    log += Math.log((n - i + 1) / i) + odds
+    sum += Math.exp(log)
+  }
   return Math.min(1, sum)
 }
 
-/** Garwood's exact two-sided interval for the mean of a Poisson count `n` from 0 at this confidence (0 to 1). */
+/** Garwood's exact two-sided interval for the mean of a whole count `n`, 0 to 10,000, at this confidence (0 to 1). */
 export function poissonInterval(n: number, confidence = 0.95): Interval {
-  mustBe(n >= 0 && Number.isFinite(n), { n })
-  mustBe(confidence > 0 && confidence < 1, { confidence })
+  mustFit({ n: [whole(n), 0, MOST_COUNTED], confidence: [confidence, ...CONFIDENCE] })
   const tail = (1 - confidence) / 2
   const top = n + 10 * Math.sqrt(n + 1) + 40
   return {
@@ -42,24 +54,26 @@ export function poissonInterval(n: number, confidence = 0.95): Interval {
   }
 }
 
-/** Clopper-Pearson's exact two-sided interval for `k` of `n`, 0 to n of 1 or more, at this confidence (0 to 1). */
+/**
+ * Clopper-Pearson's exact two-sided interval for whole `k` of `n`, n of 1 or more, at this confidence (0 to 1). k or
+ * what is left of n at most 10,000: of the two the lesser is counted through.
+ */
 export function clopperPearson(k: number, n: number, confidence = 0.95): Interval {
-  mustBe(k >= 0 && k <= n && n >= 1 && Number.isFinite(n), { k, n })
-  mustBe(confidence > 0 && confidence < 1, { confidence })
+  mustFit({
+    n: [whole(n), 1, MOST_TRIALS],
+    k: [whole(k), 0, n],
+    confidence: [confidence, ...CONFIDENCE],
+  })
+  if (k > n - k) {
+    const { low, high } = clopperPearson(n - k, n, confidence)
+    return { low: 1 - high, high: 1 - low }
+  }
+  mustFit({ k: [k, 0, MOST_COUNTED] })
   const tail = (1 - confidence) / 2
   return {
     low: k === 0 ? 0 : crossing((p) => 1 - binomialCdf(k - 1, n, p) - tail, 0, 1),
-    high: k === n ? 1 : crossing((p) => tail - binomialCdf(k, n, p), 0, 1),
+    high: crossing((p) => tail - binomialCdf(k, n, p), 0, 1),
   }
 }
 
-/** Callers parse first: rate-comparison.ts answers a typed figure with its field. */
-function mustBe(holds: boolean, context: Record<string, number>): void {
-  if (!holds) throw new AppError('figureOutOfRange', { context })
-}
-
-function logFactorial(n: number): number {
-  for (let i = logs.length; i <= n; i++) logs.push((logs[i - 1] ?? 0) + Math.log(i))
-  return logs[n] ?? 0
-}
-const logs: number[] = [0]
+const whole = (count: number): number => (Number.isInteger(count) ? count : Number.NaN)

@@ -3,6 +3,8 @@
  * be, so that no NaN and no impossible figure comes out of it (rule [A1] of docs/spec/diag.md).
  */
 
+import { AppError } from '@/lib/model/result'
+
 /** A figure that cannot be: its field, and the bound it breaks in the field's own unit. */
 export type FigureProblem =
   | { kind: 'notANumber'; field: string }
@@ -30,3 +32,9 @@ export const eachWithin = (
   most: number,
 ): Record<string, Bounded> =>
   Object.fromEntries(values.map((value, i) => [`${name}.${i + 1}`, [value, least, most]]))
+
+/** Breaks off (AppError) at a figure outside its bounds: for sums whose callers have parsed their figures first. */
+export function mustFit(fields: Readonly<Record<string, Bounded>>): void {
+  const problem = unfit(fields)
+  if (problem !== null) throw new AppError('figureOutOfRange', { context: problem })
+}

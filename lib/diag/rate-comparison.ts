@@ -5,7 +5,13 @@
  * smaller tail and at most 1, so that it agrees with the interval. The price: it is cautious for few events.
  */
 import { fail, ok, type Result } from '@/lib/model/result'
-import { binomialCdf, clopperPearson, type Interval, poissonInterval } from './exact-intervals'
+import {
+  binomialCdf,
+  clopperPearson,
+  type Interval,
+  MOST_COUNTED,
+  poissonInterval,
+} from './exact-intervals'
 import { type FigureProblem, unfit } from './figure-bounds'
 
 /** Events counted and what they were counted over: machine-hours, starts or days, the same unit on both sides. */
@@ -14,10 +20,13 @@ export type Counted = { events: number; exposure: number }
 /** No rate without hours: the screen then says "cannot say". */
 export type RateProblem = FigureProblem | { kind: 'noExposure' } | { kind: 'noEvents' }
 
-/** More events than a shop sees; above it the exact sums would keep a screen waiting. */
-const MOST_EVENTS = 10_000
+/** Least exposure; under it a rate has no meaning and the sums no digits. */
+const LEAST_EXPOSURE = 1e-6
 
-/** Events per unit of exposure with Garwood's exact interval. Events 0 to 10,000, confidence 0.5 to 0.9999. */
+/**
+ * Events per unit of exposure with Garwood's exact interval. Whole events 0 to 10,000, exposure 1e-6 to 1e12,
+ * confidence 0.5 to 0.9999.
+ */
 export function rateOf(
   { events, exposure }: Counted,
   confidence = 0.95,
@@ -42,7 +51,7 @@ export type RateComparison = {
   p: number
 }
 
-/** Compares two rates exactly; `noEvents` when neither had one, `noExposure` where hours are missing. */
+/** Compares two rates exactly, each in the bounds of `rateOf`; `noEvents` when neither had one, `noExposure` without hours. */
 export function compareRates(
   first: Counted,
   second: Counted,
@@ -52,9 +61,10 @@ export function compareRates(
   if (problem !== null) return fail(problem)
   const all = first.events + second.events
   if (all === 0) return fail({ kind: 'noEvents' })
-  const share = first.exposure / (first.exposure + second.exposure)
-  const below = binomialCdf(first.events, all, share)
-  const above = 1 - binomialCdf(first.events - 1, all, share)
+  const exposure = first.exposure + second.exposure
+  const below = binomialCdf(first.events, all, first.exposure / exposure)
+  // P(X >= k) as P(n - X <= n - k): a small chance keeps its digits.
+  const above = binomialCdf(second.events, all, second.exposure / exposure)
   const ofAll = clopperPearson(first.events, all, confidence)
   return ok({
     ratio: (first.events / second.events / first.exposure) * second.exposure,
@@ -85,8 +95,8 @@ function countsProblem(
   for (const [name, { events, exposure }] of Object.entries(groups)) {
     if (exposure === 0) return { kind: 'noExposure' }
     const problem = unfit({
-      [`${name}.events`]: [events, 0, MOST_EVENTS],
-      [`${name}.exposure`]: [exposure, Number.MIN_VALUE, Number.MAX_SAFE_INTEGER],
+      [`${name}.events`]: [events, 0, MOST_COUNTED],
+      [`${name}.exposure`]: [exposure, LEAST_EXPOSURE, 1e12],
       confidence: [confidence, 0.5, 0.9999],
     })
     if (problem !== null) return problem

@@ -76,6 +76,21 @@ describe('two rates by the conditional binomial', () => {
     expect(open.interval.low).toBeGreaterThan(0)
     expect(theValue(compareRates(none, five))).toMatchObject({ ratio: 0, interval: { low: 0 } })
   })
+  it('[A2] 100 events against none over the same hours: p is 2 of 2^100, and not nought', () => {
+    const hours = { events: 0, exposure: 50 }
+    const got = theValue(compareRates({ events: 100, exposure: 50 }, hours))
+    expect(got.p * 2 ** 99).toBeCloseTo(1, 9)
+  })
+  it('[A1] no rate over less than a millionth of an hour, nor from more events than are counted', () => {
+    const one = { events: 1, exposure: 10 }
+    expect(rateOf({ events: 1, exposure: Number.MIN_VALUE })).toMatchObject({
+      problem: { kind: 'below', field: 'events.exposure', limit: 1e-6 },
+    })
+    expect(compareRates(one, { events: 20_000, exposure: 10 })).toMatchObject({
+      problem: { kind: 'above', field: 'second.events' },
+    })
+    expect(theValue(compareRates(one, { events: 10_000, exposure: 1e5 })).p).toBeGreaterThan(0)
+  })
   it('[R25] an alarm over 20 parts asks p at or below 0.0025', () => {
     expect(raisesAlarm(0.0025, 20)).toEqual({ ok: true, value: true })
     expect(raisesAlarm(0.0026, 20)).toEqual({ ok: true, value: false })

@@ -1,5 +1,10 @@
 import { describe, expect, it } from 'vitest'
-import { clopperPearson, poissonInterval } from '@/lib/diag/exact-intervals'
+import {
+  binomialCdf,
+  clopperPearson,
+  poissonCdf,
+  poissonInterval,
+} from '@/lib/diag/exact-intervals'
 import {
   boundAfterClean,
   chanceLeft,
@@ -29,22 +34,32 @@ describe('exact Poisson intervals (Garwood 1936)', () => {
     const at95 = poissonInterval(n, 0.95)
     const at90 = poissonInterval(n, 0.9)
     expect([at95.low, at95.high, at90.low, at90.high]).toEqual(
-      [low95, high95, low90, high90].map((x) => expect.closeTo(x, 3)),
+      [low95, high95, low90, high90].map((x) => expect.closeTo(x, 4)),
     )
   })
 })
 
 describe('exact binomial intervals (Clopper and Pearson 1934)', () => {
   it.each([
-    [682, 925, 0.7076683, 0.7654066],
-    [0, 10, 0, 0.3085],
-    [1, 10, 0.00253, 0.44502],
-    [5, 10, 0.18709, 0.81291],
-    [10, 10, 0.6915, 1],
-    [0, 30, 0, 0.1157],
-  ])('[STD] %i of %i: %f to %f (Conover; recomputed)', (k, n, low, high) => {
+    [682, 925, 0.7076683, 0.7654066, 7],
+    [0, 10, 0, 0.3085, 4],
+    [1, 10, 0.00253, 0.44502, 5],
+    [5, 10, 0.18709, 0.81291, 5],
+    [10, 10, 0.6915, 1, 4],
+    [0, 30, 0, 0.1157, 4],
+  ])('[STD] %i of %i: %f to %f (Conover; recomputed)', (k, n, low, high, digits) => {
     const got = clopperPearson(k, n)
-    expect([got.low, got.high]).toEqual([expect.closeTo(low, 4), expect.closeTo(high, 4)])
+    expect([got.low, got.high]).toEqual([expect.closeTo(low, digits), expect.closeTo(high, digits)])
+  })
+  it('[A1] 1 of a thousand million is Garwood’s 5.5716 and 0.0253 over it, all but one its mirror', () => {
+    const n = 1e9
+    const { low, high } = clopperPearson(1, n)
+    expect([n * low, n * high]).toEqual([expect.closeTo(0.0253, 4), expect.closeTo(5.5716, 4)])
+    const most = clopperPearson(n - 1, n)
+    expect([n * (1 - most.high), n * (1 - most.low)]).toEqual([
+      expect.closeTo(0.0253, 4),
+      expect.closeTo(5.5716, 4),
+    ])
   })
 })
 
@@ -53,6 +68,25 @@ describe('counts that cannot be', () => {
     for (const bad of [
       () => poissonInterval(Number.NaN),
       () => poissonInterval(-1),
+      () => poissonInterval(2.5),
+      () => poissonInterval(1e9),
+      () => clopperPearson(1.5, 2),
+      () => clopperPearson(5e8, 1e9),
+      () => poissonCdf(1, Number.NaN),
+      () => poissonCdf(Number.POSITIVE_INFINITY, 1),
+      () => binomialCdf(1, 2, 1.1),
+      () => binomialCdf(Number.NaN, 2, 0.5),
+      () => boundAfterClean(-1),
+      () => boundAfterClean(Number.NaN),
+      () => upperBound(1, Number.POSITIVE_INFINITY),
+      () => ruleOfThree(Number.NaN),
+      () => cleanStartsFor(Number.NaN),
+      () => cleanStartsFor(0.1, 1),
+      () => proofBound({ starts: Number.NaN, faults: 0 }),
+      () => chanceLeft(1.1, 0.05, 30),
+      () => chanceLeft(0.3, -1, 30),
+      () => chanceLeft(0.3, 0.05, Number.POSITIVE_INFINITY),
+      () => minutesFor(0.3, 0.05, Number.NaN),
       () => poissonInterval(3, 1),
       () => clopperPearson(3, 2),
       () => clopperPearson(0, 0),
@@ -103,5 +137,23 @@ describe('proof runs', () => {
     expect(proofBound({ starts: 12, faults: 0 }).ruleOfThree).toBe(0.25)
     const seen = proofBound({ starts: 12, faults: 1 })
     expect(seen).toMatchObject({ exact: upperBound(1, 12), ruleOfThree: null })
+  })
+  it('[A1] huge counts keep their digits and end soon: 1 fault is 4.7439 over the starts (Garwood, 90 %)', () => {
+    expect(1e9 * upperBound(1, 1e9)).toBeCloseTo(4.7439, 4)
+    expect(1e12 * boundAfterClean(1e12)).toBeCloseTo(2.9957, 4)
+    // Beta(50001, 50000) at 95 of 100 is 0.502606; the counts are divided to the safe side.
+    const half = upperBound(50_000, 100_000)
+    expect(half).toBeGreaterThan(0.502606)
+    expect(half).toBeLessThan(0.51)
+    expect(upperBound(Number.MAX_SAFE_INTEGER, Number.MAX_SAFE_INTEGER)).toBe(1)
+    expect(upperBound(7, 3)).toBe(1)
+  })
+  it('[F7] a share of nought asks starts without end, of one none; no rate and no target nothing that helps', () => {
+    expect([cleanStartsFor(0), cleanStartsFor(1)]).toEqual([Number.POSITIVE_INFINITY, 0])
+    // 1 - 0.95^(1/n): with a share of 0.95 wanted, one clean start is enough, and its bound is met exactly.
+    expect(cleanStartsFor(0.95)).toBe(1)
+    expect(minutesFor(0.3, 0, 0.05)).toBe(Number.POSITIVE_INFINITY)
+    expect(minutesFor(0.3, 0.05, 0)).toBe(Number.POSITIVE_INFINITY)
+    expect(minutesFor(1, 0.05, 0.5)).toBe(Number.POSITIVE_INFINITY)
   })
 })
