@@ -2,7 +2,8 @@
  * Whether a rigging holds: what the line carries with sheaves that lose, what the anchor carries, and which rated
  * part is the weakest (rules R10, [B3] to [B5]). Choice: the winch sits on the stuck machine or on another, the
  * parts of line at the load are counted, and the anchor is reckoned at as many times the line as there are parts,
- * without the losses, which is on the safe side. A part without a rating is never taken for strong enough.
+ * without the losses, which is on the safe side. A block always carries twice its line: one more than the parts ask
+ * for only turns the line, and loses as well. A part without a rating is never taken for strong enough.
  */
 import { fail, ok, type Result } from '@/lib/model/result'
 import { type FigureProblem, unfit } from './figure-bounds'
@@ -10,7 +11,10 @@ import { type FigureProblem, unfit } from './figure-bounds'
 /** Share of its pull that a line loses over one sheave: 10 of 100 (recovery sheet, seen). */
 export const SHEAVE_LOSS = 0.1
 
-/** Newtons in the line at the winch: pull / (1 + k + k^2 ...), k = 1 - loss, one term for each part of line. */
+/**
+ * Newtons in the line at the winch: pull / (1 + k + k^2 ...), k = 1 - loss, one term for each part of line. Pull 0 to
+ * 1e7 N, whole parts 1 to 6, loss 0 to 0.9 of the line's pull over each sheave.
+ */
 export function linePull(
   pullNewtons: number,
   partsOfLine: number,
@@ -22,8 +26,9 @@ export function linePull(
     sheaveLoss: [sheaveLoss, 0, 0.9],
   })
   if (problem !== null) return fail(problem)
+  if (!Number.isInteger(partsOfLine)) return fail({ kind: 'notANumber', field: 'partsOfLine' })
   let gain = 0
-  for (let part = 0; part < Math.floor(partsOfLine); part++) gain += (1 - sheaveLoss) ** part
+  for (let part = 0; part < partsOfLine; part++) gain += (1 - sheaveLoss) ** part
   return ok(pullNewtons / gain)
 }
 
@@ -62,7 +67,7 @@ export type RigProblem = FigureProblem | { kind: 'noWinch' }
 /** More parts of line than this are not laid by hand. */
 const MOST_PARTS = 4
 
-/** Judges a rigging for a pull with its margin. Parts of line 1 to 6; ratings from 1 N; one winch or more. */
+/** Judges a rigging for a pull with its margin. Parts of line 1 to 6; ratings 1 to 1e7 N; one winch or more. */
 export function judgeRig(rig: {
   withMarginNewtons: number
   partsOfLine: number
@@ -70,33 +75,65 @@ export function judgeRig(rig: {
   sheaveLoss?: number
 }): Result<RigVerdict, RigProblem> {
   const { withMarginNewtons, partsOfLine, sheaveLoss = SHEAVE_LOSS } = rig
-  const line = linePull(withMarginNewtons, partsOfLine, sheaveLoss)
+  const blocks = rig.links.filter(({ kind }) => kind === 'block').length
+  const line = windPull({ pull: withMarginNewtons, blocks, loss: sheaveLoss }, partsOfLine)
   if (!line.ok) return line
-  const problem = unfit(
+  const problem = ratingsProblem(rig.links)
+  if (problem !== null) return fail(problem)
+  if (!rig.links.some(({ kind }) => kind === 'winch')) return fail({ kind: 'noWinch' })
+  const anchorNewtons = line.value * Math.max(partsOfLine, blocks > 0 ? 2 : 1)
+  const judged = judgeLinks(rig.links, line.value, anchorNewtons)
+  const wind = { pull: withMarginNewtons, blocks, loss: sheaveLoss }
+  return ok({ ...judged, partsThatWouldDo: partsNeeded(judged.links, wind) })
+}
+
+/**
+ * Judges what joins two machines in a tow (rule R10): every part carries the tow's force with its margin, 0 to 1e7 N.
+ * One part or more; ratings 1 to 1e7 N. There is no second part of line to lay.
+ */
+export function judgeTow(
+  withMarginNewtons: number,
+  links: readonly Link[],
+): Result<RigVerdict, FigureProblem | { kind: 'noLinks' }> {
+  const problem = unfit({ withMarginNewtons: [withMarginNewtons, 0, 1e7] }) ?? ratingsProblem(links)
+  if (problem !== null) return fail(problem)
+  if (links.length === 0) return fail({ kind: 'noLinks' })
+  const judged = judgeLinks(links, withMarginNewtons, withMarginNewtons)
+  return ok({ ...judged, partsThatWouldDo: null })
+}
+
+const ratingsProblem = (links: readonly Link[]): FigureProblem | null =>
+  unfit(
     Object.fromEntries(
-      rig.links.map(({ kind, ratedNewtons }, i) => [
+      links.map(({ kind, ratedNewtons }, i) => [
         `${kind}.${i + 1}`,
         [ratedNewtons ?? 1, 1, 1e7] as const,
       ]),
     ),
   )
-  if (problem !== null) return fail(problem)
-  if (!rig.links.some(({ kind }) => kind === 'winch')) return fail({ kind: 'noWinch' })
-  const anchorNewtons = line.value * Math.floor(partsOfLine)
-  const links = rig.links.map((link) => loaded(link, line.value, anchorNewtons))
+
+function judgeLinks(
+  rated: readonly Link[],
+  lineNewtons: number,
+  anchorNewtons: number,
+): Omit<RigVerdict, 'partsThatWouldDo'> {
+  const links = rated.map((link) => loaded(link, lineNewtons, anchorNewtons))
   const weakest = links
     .filter(({ share }) => share !== null)
     .reduce<LoadedLink | null>((worst, one) => (shareOf(one) > shareOf(worst) ? one : worst), null)
   const over = links.some(({ share }) => share !== null && share > 1)
   const unrated = links.some(({ share }) => share === null)
-  return ok({
-    verdict: over ? 'refused' : unrated ? 'notRated' : 'offered',
-    lineNewtons: line.value,
-    anchorNewtons,
-    links,
-    weakest,
-    partsThatWouldDo: partsNeeded(links, withMarginNewtons, sheaveLoss),
-  })
+  const verdict = over ? 'refused' : unrated ? 'notRated' : 'offered'
+  return { verdict, lineNewtons, anchorNewtons, links, weakest }
+}
+
+type Wind = { pull: number; blocks: number; loss: number }
+
+/** The line at the winch, with what is lost over blocks that only turn it: those beyond one for each further part. */
+function windPull({ pull, blocks, loss }: Wind, parts: number): Result<number, FigureProblem> {
+  const line = linePull(pull, parts, loss)
+  if (!line.ok) return line
+  return ok(line.value / (1 - loss) ** Math.max(0, blocks - (parts - 1)))
 }
 
 const shareOf = (link: LoadedLink | null): number => link?.share ?? Number.NEGATIVE_INFINITY
@@ -108,11 +145,11 @@ function loaded(link: Link, lineNewtons: number, anchorNewtons: number): LoadedL
 }
 
 /** Fewest parts of line that every rated part on the line can carry; null when none is overloaded there. */
-function partsNeeded(links: readonly LoadedLink[], pull: number, loss: number): number | null {
+function partsNeeded(links: readonly LoadedLink[], wind: Wind): number | null {
   const onLine = links.filter(({ kind, share }) => LINKS[kind] === 'line' && share !== null)
   if (!onLine.some(({ share }) => (share ?? 0) > 1)) return null
   for (let parts = 2; parts <= MOST_PARTS; parts++) {
-    const line = linePull(pull, parts, loss)
+    const line = windPull(wind, parts)
     if (line.ok && onLine.every(({ ratedNewtons }) => line.value <= (ratedNewtons ?? 0)))
       return parts
   }

@@ -82,6 +82,7 @@ function fieldRule(weight: number, slopeDegrees: number, factor: number): number
 /** A tow: the pull to keep it moving, and what must hold it back downhill. */
 export type Tow = {
   pullNewtons: number
+  /** What line or bar are rated against: the pull, or what must be held back where that is more, with the margin. */
   withMarginNewtons: number
   /** What the brakes of the tower must hold on this slope when the towed machine cannot brake; 0 on the flat. */
   holdBackNewtons: number
@@ -90,8 +91,8 @@ export type Tow = {
 }
 
 /**
- * The tow of a machine with its wheels or track free, on the flat (slope 0), up (positive) or down a slope of at
- * most 45 degrees. `brakesWork` is the towed machine's own brakes with somebody on it to use them.
+ * The tow of a machine of 1 to 20,000 kg with its wheels or track free, on the flat (slope 0), up (positive) or down
+ * a slope of at most 45 degrees, at a steady speed. `brakesWork` is the towed machine's own brakes with somebody on it to use them.
  */
 export function towOf(
   towed: Omit<Stuck, 'locked'> & { brakesWork: boolean },
@@ -102,12 +103,12 @@ export function towOf(
   if (steep !== null) return fail(steep)
   const pull = pullOf({ massKg, slopeDegrees, ground, locked: 'none' }, margin)
   if (!pull.ok) return pull
-  const { gravityNewtons, groundNewtons, pullNewtons, withMarginNewtons } = pull.value
-  const runsOn = Math.max(0, -gravityNewtons - groundNewtons)
+  const { gravityNewtons, groundNewtons, pullNewtons } = pull.value
+  const holdBackNewtons = brakesWork ? 0 : Math.max(0, -gravityNewtons - groundNewtons)
   return ok({
     pullNewtons,
-    withMarginNewtons,
-    holdBackNewtons: brakesWork ? 0 : runsOn,
+    withMarginNewtons: (1 + margin) * Math.max(pullNewtons, holdBackNewtons),
+    holdBackNewtons,
     needsRigidBar: !brakesWork && slopeDegrees < 0,
   })
 }

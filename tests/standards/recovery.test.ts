@@ -1,6 +1,6 @@
 import fc from 'fast-check'
 import { describe, expect, it } from 'vitest'
-import { judgeRig, type Link, linePull } from '@/lib/diag/rigging'
+import { judgeRig, judgeTow, type Link, linePull } from '@/lib/diag/rigging'
 import { PULL_CAUTIONS, rigSentences } from '@/lib/diag/rigging-words'
 import { GROUNDS, type Ground, LOCKED, pullOf, type Stuck, towOf } from '@/lib/diag/winch-pull'
 import { theValue } from './the-value'
@@ -93,6 +93,33 @@ describe('the line with sheaves', () => {
     expect(theValue(linePull(2710, 3))).toBeCloseTo(1000, 9)
     expect(theValue(linePull(3000, 3, 0))).toBe(1000)
     expect(linePull(1000, 0)).toMatchObject({ problem: { field: 'partsOfLine' } })
+    expect(linePull(1000, 1.5)).toMatchObject({ problem: { field: 'partsOfLine' } })
+  })
+  it('[B3] a block that only turns a single line carries twice the line, and takes its 10 of 100', () => {
+    const links: Link[] = [
+      { kind: 'winch', ratedNewtons: 20_000 },
+      { kind: 'block', ratedNewtons: 15_000 },
+    ]
+    const got = (partsOfLine: number) =>
+      theValue(judgeRig({ withMarginNewtons: 9000, partsOfLine, links }))
+    expect(got(1)).toMatchObject({
+      verdict: 'refused',
+      weakest: { kind: 'block' },
+      lineNewtons: expect.closeTo(10_000, 9),
+      anchorNewtons: expect.closeTo(20_000, 9),
+    })
+    // The same block doubles the line: 9 kN / 1.9 in it, and twice that on the block.
+    expect(got(2)).toMatchObject({
+      verdict: 'offered',
+      lineNewtons: expect.closeTo(9000 / 1.9, 9),
+      anchorNewtons: expect.closeTo(18_000 / 1.9, 9),
+    })
+    const weak = judgeRig({
+      withMarginNewtons: 9000,
+      partsOfLine: 1,
+      links: [{ kind: 'winch', ratedNewtons: 9500 }, ...links.slice(1)],
+    })
+    expect(theValue(weak).partsThatWouldDo).toBe(2)
   })
 })
 
@@ -218,6 +245,8 @@ describe('tow (CHECKS 2.10 factors, rule R10)', () => {
     expect(tow.needsRigidBar).toBe(true)
     expect(tow.holdBackNewtons).toBeCloseTo(weight * (Math.sin(a) - 0.14 * Math.cos(a)), 6)
     expect(tow.pullNewtons).toBe(0)
+    // The bar carries what is held back, with the same margin as a pull.
+    expect(tow.withMarginNewtons).toBeCloseTo(1.25 * tow.holdBackNewtons, 9)
     expect(theValue(towOf({ ...towed, slopeDegrees: -15, brakesWork: true }))).toMatchObject({
       holdBackNewtons: 0,
       needsRigidBar: false,
@@ -229,6 +258,31 @@ describe('tow (CHECKS 2.10 factors, rule R10)', () => {
     expect(up.withMarginNewtons).toBe(pull.withMarginNewtons)
     expect(towOf({ ...towed, slopeDegrees: 50 })).toMatchObject({
       problem: { field: 'slopeDegrees' },
+    })
+  })
+  it('[R10] names the weakest rated link of a tow against the force with its margin', () => {
+    const force = theValue(towOf({ ...towed, slopeDegrees: 10 })).withMarginNewtons
+    // 1.25 x 300 kg x 9.80665 x (sin 10 + 0.14 cos 10) = 1,145.6 N.
+    expect(force).toBeCloseTo(1145.6, 1)
+    const links: Link[] = [
+      { kind: 'hook', ratedNewtons: 3000 },
+      { kind: 'line', ratedNewtons: 1145 },
+      { kind: 'shackle', ratedNewtons: 1146 },
+    ]
+    const got = theValue(judgeTow(force, links))
+    expect(got).toMatchObject({ verdict: 'refused', weakest: { kind: 'line' } })
+    expect(rigSentences(got)[0]).toMatch(/^The line is the weakest link: it would carry 1.15 kN/)
+    expect(theValue(judgeTow(force, [links[0], links[2]] as Link[]))).toMatchObject({
+      verdict: 'offered',
+      weakest: { kind: 'shackle' },
+    })
+    expect(theValue(judgeTow(force, [{ kind: 'strap', ratedNewtons: null }])).verdict).toBe(
+      'notRated',
+    )
+    expect(judgeTow(force, [])).toMatchObject({ problem: { kind: 'noLinks' } })
+    expect(judgeTow(Number.NaN, links)).toMatchObject({ problem: { field: 'withMarginNewtons' } })
+    expect(judgeTow(force, [{ kind: 'line', ratedNewtons: 0 }])).toMatchObject({
+      problem: { field: 'line.1' },
     })
   })
 })
