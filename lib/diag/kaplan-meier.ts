@@ -4,7 +4,7 @@
  * no failure. At equal times failures come before censored ones.
  */
 import { fail, ok, type Result } from '@/lib/model/result'
-import { eachWithin, type FigureProblem, unfit } from './figure-bounds'
+import { eachWithin, type FigureProblem, mustFit, unfit } from './figure-bounds'
 
 /** One part's life in any one unit (hours, days, kilometres), and whether it ended by the failure meant. */
 export type Life = { time: number; failed: boolean }
@@ -39,20 +39,27 @@ export function kaplanMeier(lives: readonly Life[]): Result<SurvivalStep[], Live
   return ok(steps)
 }
 
-/** Share still running at a time, from the steps of a curve: 1 before the first failure. */
-export const survivalAt = (steps: readonly SurvivalStep[], time: number): number =>
-  steps.findLast((step) => step.time <= time)?.survival ?? 1
+/**
+ * Share still running at a time from 0, from the steps of a curve: 1 before the first failure. Past the longest life
+ * it stays what it was there, where the curve says nothing more.
+ */
+export function survivalAt(steps: readonly SurvivalStep[], time: number): number {
+  mustFit({ time: [time, 0, Number.MAX_SAFE_INTEGER] })
+  return steps.findLast((step) => step.time <= time)?.survival ?? 1
+}
 
 /** Times at which lives failed, in order, with how many were at risk and how many failed there. */
 export function failureTimes(
   lives: readonly Life[],
 ): { time: number; atRisk: number; failures: number }[] {
-  const times = [...new Set(lives.filter((l) => l.failed).map((l) => l.time))].sort((a, b) => a - b)
-  return times.map((time) => ({
-    time,
-    atRisk: lives.filter((l) => l.time >= time).length,
-    failures: lives.filter((l) => l.failed && l.time === time).length,
-  }))
+  const sorted = lives.toSorted((a, b) => a.time - b.time)
+  const steps: { time: number; atRisk: number; failures: number }[] = []
+  for (const [before, { time, failed }] of sorted.entries()) {
+    const last = steps.at(-1)
+    if (last?.time === time) last.failures += failed ? 1 : 0
+    else steps.push({ time, atRisk: sorted.length - before, failures: failed ? 1 : 0 })
+  }
+  return steps.filter(({ failures }) => failures > 0)
 }
 
 /** The first time that cannot be, as field `time.1`, `time.2`...; null when all fit. */

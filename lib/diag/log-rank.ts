@@ -23,12 +23,14 @@ export function logRank(
   if (first.length === 0 || second.length === 0) return fail({ kind: 'noLives' })
   const problem = timesProblem(first, 'first') ?? timesProblem(second, 'second')
   if (problem !== null) return fail(problem)
-  let observed = 0
+  const observed = first.filter(({ failed }) => failed).length
   let expected = 0
   let variance = 0
+  const times = first.map(({ time }) => time).sort((x, y) => x - y)
+  let ended = 0
   for (const { time, atRisk, failures } of failureTimes([...first, ...second])) {
-    const share = first.filter((l) => l.time >= time).length / atRisk
-    observed += first.filter((l) => l.failed && l.time === time).length
+    while ((times[ended] ?? time) < time) ended++
+    const share = (first.length - ended) / atRisk
     expected += failures * share
     if (atRisk > 1)
       variance += (failures * share * (1 - share) * (atRisk - failures)) / (atRisk - 1)

@@ -26,7 +26,10 @@ export type PowerLaw = {
 
 export type PowerLawProblem = FigureProblem | { kind: 'tooFewFailures'; needed: 2 }
 
-/** The fit over one or more alike machines. Two failures in all are the least; hours above 0, none past its end. */
+/**
+ * The fit over one or more alike machines. Two failures in all, before the last hour, are the least; hours 1e-6 to
+ * 1e9, no failure past its machine's end. A scale too small for a number is 0.
+ */
 export function fitPowerLaw(machines: readonly Watched[]): Result<PowerLaw, PowerLawProblem> {
   const problem = unfit(boundsOf(machines))
   if (problem !== null) return fail(problem)
@@ -36,10 +39,12 @@ export function fitPowerLaw(machines: readonly Watched[]): Result<PowerLaw, Powe
     0,
   )
   if (failures < 2 || sum <= 0) return fail({ kind: 'tooFewFailures', needed: 2 })
-  const longest = Math.max(...machines.map((m) => m.endsAt))
+  const longest = machines.reduce((most, m) => Math.max(most, m.endsAt), 0)
   const fitted = (shape: number): PowerLawFit => {
-    const scale = failures / machines.reduce((all, m) => all + m.endsAt ** shape, 0)
-    return { shape, scale, hoursBetweenAtEnd: longest ** (1 - shape) / (scale * shape) }
+    // As many machines watched to the longest end: the powers of hours cancel before they can overflow.
+    const asMany = machines.reduce((all, m) => all + (m.endsAt / longest) ** shape, 0)
+    const scale = (failures / asMany) * longest ** -shape
+    return { shape, scale, hoursBetweenAtEnd: (longest * asMany) / (failures * shape) }
   }
   const plain = failures / sum
   const shapeInterval = {

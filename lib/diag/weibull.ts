@@ -27,7 +27,7 @@ export type Weibull = {
 const SHAPES = { least: 0.05, most: 500 } as const
 
 /**
- * The likeliest curve. Times above 0. `noFailures` when all are censored; `noFit` when the lives have no curve
+ * The likeliest curve. Times above 0 to 9e15, in any one unit. `noFailures` when all are censored; `noFit` when the lives have no curve
  * within shapes 0.05 to 500, as when every failure came at the one longest time.
  */
 export function fitWeibull(
@@ -40,7 +40,7 @@ export function fitWeibull(
   if (zero >= 0) return fail({ kind: 'below', field: `time.${zero + 1}`, limit: Number.MIN_VALUE })
   const failed = lives.filter((l) => l.failed)
   if (failed.length === 0) return fail({ kind: 'noFailures' })
-  const longest = Math.max(...lives.map((l) => l.time))
+  const longest = lives.reduce((most, l) => Math.max(most, l.time), 0)
   const logs = lives.map((l) => Math.log(l.time / longest))
   const meanLog = failed.reduce((sum, l) => sum + Math.log(l.time / longest), 0) / failed.length
   const slope = (shape: number): number => weightedLog(logs, shape) - 1 / shape - meanLog
@@ -73,11 +73,12 @@ function fitOf(failed: readonly Life[], scale: number, shape: number) {
 }
 
 function curve(scale: number, shape: number) {
-  const mean = scale * Math.exp(logGamma(1 + 1 / shape))
-  const square = scale ** 2 * Math.exp(logGamma(1 + 2 / shape))
+  // Gamma(1 + 2/b) - Gamma(1 + 1/b)^2, kept as a share of the square so that no scale overflows.
+  const [first, second] = [logGamma(1 + 1 / shape), logGamma(1 + 2 / shape)]
+  const mean = scale * Math.exp(first)
   return {
     mean,
-    standardDeviation: Math.sqrt(Math.max(0, square - mean ** 2)),
+    standardDeviation: mean * Math.sqrt(Math.max(0, Math.expm1(second - 2 * first))),
     b10: scale * (-Math.log(0.9)) ** (1 / shape),
   }
 }

@@ -145,6 +145,13 @@ describe('Kaplan-Meier with Greenwood, Freireich 1963 (memory, recomputed)', () 
     expect(logRank(lives('5'), lives('1+'))).toMatchObject({ problem: { kind: 'noComparison' } })
     expect(logRank([], lives('1'))).toMatchObject({ problem: { kind: 'noLives' } })
   })
+  it('[A1] ten thousand lives are read at once, and a time that is none is no whole share', () => {
+    const many = Array.from({ length: 10_000 }, (_, i) => ({ time: i, failed: true }))
+    const curve = theValue(kaplanMeier(many))
+    expect(survivalAt(curve, 4999)).toBeCloseTo(0.5, 9)
+    expect(() => survivalAt(curve, Number.NaN)).toThrow('figureOutOfRange')
+    expect(theValue(logRank(many, many)).chiSquare).toBeCloseTo(0, 9)
+  })
   it('[A2] without censoring the curve is the share of lives that are longer', () => {
     const times = fc.array(fc.integer({ min: 1, max: 20 }), { minLength: 1, maxLength: 30 })
     fc.assert(
@@ -199,6 +206,16 @@ describe('Weibull with censoring, NIST/SEMATECH e-Handbook 8.4.1.3 (seen)', () =
     ] as const)
       expect(logL(fit.scale * a, fit.shape * b)).toBeLessThan(-fit.minusLogLikelihood)
   })
+  it('[A1] two hundred thousand lives with one early failure overflow nothing', () => {
+    const many = [{ time: 10, failed: true }]
+    for (let i = 0; i < 200_000; i++) many.push({ time: 1e9, failed: false })
+    const got = theValue(fitWeibull(many))
+    for (const figure of Object.values(got)) expect(Number.isFinite(figure)).toBe(true)
+    // Deviation over mean is sqrt(Gamma(1 + 2/b) / Gamma(1 + 1/b)^2 - 1), whatever the scale.
+    const one = theValue(fitWeibull(NIST_LIVES))
+    const variance = logGamma(1 + 2 / one.shape) - 2 * logGamma(1 + 1 / one.shape)
+    expect((one.standardDeviation / one.mean) ** 2).toBeCloseTo(Math.expm1(variance), 12)
+  })
   it('[A1] says why there is no curve', () => {
     expect(fitWeibull([])).toMatchObject({ problem: { kind: 'noLives' } })
     expect(fitWeibull(lives('5+ 7+'))).toMatchObject({ problem: { kind: 'noFailures' } })
@@ -242,6 +259,13 @@ describe('power law of machines that are mended, NIST/SEMATECH e-Handbook 8.4.5.
     const two = theValue(fitPowerLaw([machine, machine]))
     expect(two.plain.shape).toBeCloseTo(fit.plain.shape, 12)
     expect(two.plain.hoursBetweenAtEnd).toBeCloseTo(fit.plain.hoursBetweenAtEnd, 9)
+  })
+  it('[A1] failures at the very end give a steep curve and no NaN', () => {
+    const got = theValue(fitPowerLaw([{ failures: [1499.9999, 1499.99995], endsAt: 1500 }]))
+    // Sum of ln(T / t) = 1e-7: shape 2 / 1e-7, and T / (n b) hours between.
+    expect(got.plain.shape / 2e7).toBeCloseTo(1, 4)
+    expect(got.plain.hoursBetweenAtEnd).toBeCloseTo(1500 / (2 * got.plain.shape), 12)
+    expect(got.plain.scale).toBe(0)
   })
   it('[A1] one failure, or one after the end, is refused by name', () => {
     expect(fitPowerLaw([{ failures: [5], endsAt: 10 }])).toMatchObject({
