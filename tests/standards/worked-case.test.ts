@@ -81,6 +81,21 @@ describe('JCGM 106:2012 clause 9, risks over all parts: N(0, 0.12), u 0.04, +-0.
     const u = Math.hypot(0.12, 0.04)
     expect(conforming - producer + consumer).toBeCloseTo(between(-0.2 / u, 0.2 / u), 9)
   })
+  it('[A1] a meter far finer or coarser than the parts: shares of all parts, and right', () => {
+    const risks = (meterU: number, halfTolerance: number, accept: number) =>
+      theValue(inspectionRisks({ halfTolerance, processU: 1, meterU, accept }))
+    // A perfect meter refuses the good parts between the limits, 2 (Phi(2) - Phi(1)), and accepts no bad one.
+    expect(risks(1e-9, 2, 1).producer).toBeCloseTo(2 * 0.135905121983, 9)
+    expect(risks(1e-9, 2, 1).consumer).toBe(0)
+    // Its acceptance past the limits takes the bad ones to 2: 2 (Phi(2) - Phi(1)) again.
+    expect(risks(1e-9, 1, 2).consumer).toBeCloseTo(2 * 0.135905121983, 9)
+    // Limits that no part reaches: all conform, and all are refused where nothing is accepted.
+    expect(risks(1, 1e9, 0)).toEqual({
+      conforming: expect.closeTo(1, 12),
+      consumer: 0,
+      producer: expect.closeTo(1, 9),
+    })
+  })
   it('[A1] a process or a meter without spread is named', () => {
     const one = { halfTolerance: 0.2, processU: 0.12, meterU: 0, accept: 0.2 }
     expect(inspectionRisks(one)).toMatchObject({ problem: { kind: 'below', field: 'meterU' } })
