@@ -4,12 +4,12 @@
  * comes first.
  */
 import { fail, ok, type Result } from '@/lib/model/result'
-import { type FigureProblem, unfit } from './figure-bounds'
+import { type Bounded, type FigureProblem, unfit } from './figure-bounds'
 import { heldAgainst } from './held-against'
 import { PRACTICE_LIMITS } from './practice-limits'
 import type { Verdict } from './reading'
 
-/** Shares of the supply at the ends of the working sweep. */
+/** Shares of the supply at the ends of the working sweep, 0 to 1, the high one above the low one. */
 export type Sweep = { lowShare: number; highShare: number }
 export const COMMON_SWEEP: Sweep = { lowShare: 0.1, highShare: 0.9 }
 
@@ -36,8 +36,7 @@ export function sensorVolts(
     signalVolts: [signalVolts, 0, 30],
     supplyVolts: [supplyVolts, 1, 30],
     supplyU: [supplyU, 0, 30],
-    lowShare: [sweep.lowShare, 0, 1],
-    highShare: [sweep.highShare, sweep.lowShare + 0.01, 1],
+    ...sweepBounds(sweep),
   })
   if (problem !== null) return fail(problem)
   const share = signalVolts / supplyVolts
@@ -55,15 +54,25 @@ export function signalFor(
   supplyVolts: number,
   sweep: Sweep = COMMON_SWEEP,
 ): Result<number, FigureProblem> {
-  const problem = unfit({ position: [position, 0, 1], supplyVolts: [supplyVolts, 1, 30] })
+  const problem = unfit({
+    position: [position, 0, 1],
+    supplyVolts: [supplyVolts, 1, 30],
+    ...sweepBounds(sweep),
+  })
   if (problem !== null) return fail(problem)
   return ok(supplyVolts * (sweep.lowShare + position * (sweep.highShare - sweep.lowShare)))
 }
 
+/** A sweep within the supply, its ends a hundredth of it apart or more. */
+const sweepBounds = ({ lowShare, highShare }: Sweep): Record<string, Bounded> => ({
+  lowShare: [lowShare, 0, 1],
+  highShare: [highShare, lowShare + 0.01, 1],
+})
+
+/** What lies within the sweep is working, also where the sweep itself goes to a rail. */
 function stateOf(share: number, { lowShare, highShare }: Sweep): SensorVolts['state'] {
-  if (share <= AT_RAIL) return 'atGround'
-  if (share >= 1 - AT_RAIL) return 'atSupply'
   // A hair of rounding does not leave the sweep.
-  if (share < lowShare - 1e-9) return 'belowSweep'
-  return share > highShare + 1e-9 ? 'aboveSweep' : 'working'
+  if (share < lowShare - 1e-9) return share <= AT_RAIL ? 'atGround' : 'belowSweep'
+  if (share <= highShare + 1e-9) return 'working'
+  return share >= 1 - AT_RAIL ? 'atSupply' : 'aboveSweep'
 }

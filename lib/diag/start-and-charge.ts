@@ -24,7 +24,7 @@ export type CrankingVerdict = {
   outside: boolean
 }
 
-/** Whether a battery holds while it cranks. Volts 0 to 20. */
+/** Whether a battery holds while it cranks. Volts 0 to 20, air -60 to 60 C. */
 export function judgeCranking(
   read: VoltsRead,
   airTempC: number,
@@ -64,15 +64,21 @@ export function judgeCharging(
     ({ low, high }) => heldAgainst(read.volts, read.expandedU, { low, high }) === 'in',
   )
   const verdict = zone?.verdict ?? 'tooClose'
-  const low = verdict === 'notCharging' || verdict === 'weak' || verdict === 'tooClose'
+  // Too close between good and high is no low reading: it stands at any speed.
+  const low =
+    verdict === 'notCharging' ||
+    verdict === 'weak' ||
+    (verdict === 'tooClose' && read.volts - read.expandedU < CHARGING_FROM)
   if (low && at.engineRpm < CHARGING_RPM) return ok({ verdict: 'tooSlow', coldExplains: false })
   return ok({ verdict, coldExplains: verdict === 'high' && at.airTempC < 0 })
 }
 
+/** Volts from which on a machine charges. */
+const CHARGING_FROM = 13.5
 /** At a shared edge the sounder zone comes first; `notCharging` and `regulator` begin strictly past theirs. */
 const ZONES = [
-  { verdict: 'charging', low: 13.5, high: 14.8 },
-  { verdict: 'weak', low: 13.0, high: 13.5 },
+  { verdict: 'charging', low: CHARGING_FROM, high: 14.8 },
+  { verdict: 'weak', low: 13.0, high: CHARGING_FROM },
   { verdict: 'high', low: 14.8, high: 15.0 },
   { verdict: 'notCharging', low: null, high: 13.0 },
   { verdict: 'regulator', low: 15.0, high: null },

@@ -24,7 +24,7 @@ export type Balance = {
 
 export type BalanceProblem = FigureProblem | { kind: 'tooFewLegs' } | { kind: 'allNought' }
 
-/** How alike two or more legs are. Figures 0 to 100,000. Uneven only when no corner of the +-U would be even. */
+/** How alike two to twelve legs are. Figures 0 to 100,000. Uneven only when no corner of the +-U would be even. */
 export function legBalance(legs: readonly Leg[]): Result<Balance, BalanceProblem> {
   const figures = legs.map(({ figure }) => figure)
   const problem = unfit({
@@ -37,6 +37,8 @@ export function legBalance(legs: readonly Leg[]): Result<Balance, BalanceProblem
     ),
   })
   if (problem !== null) return fail(problem)
+  const count = unfit({ legs: [legs.length, 0, 12] })
+  if (count !== null) return fail(count)
   if (legs.length < 2) return fail({ kind: 'tooFewLegs' })
   const most = Math.max(...figures)
   if (most === 0) return fail({ kind: 'allNought' })
@@ -54,8 +56,11 @@ function spreadBounds(legs: readonly Leg[]): [number, number] {
   const top = Math.max(...low)
   const bottom = Math.min(...high)
   const least = top <= bottom || top === 0 ? 0 : (top - bottom) / top
-  const widest = (Math.max(...high) - Math.min(...low)) / Math.max(...high)
-  return [least, widest]
+  // Two legs make a spread: none can be its own highest and lowest.
+  const apart = high.flatMap((most, i) =>
+    low.flatMap((few, j) => (i === j ? [] : [(most - few) / most])),
+  )
+  return [least, Math.max(...apart)]
 }
 
 /** What was measured: volts per leg at an engine speed, and ohms from a leg to ground; null is over range. */
