@@ -41,15 +41,14 @@ export const FULL_VOLTS: Readonly<
   lithiumIronPhosphate: { low: 13.2, high: 13.4, tellsCharge: false },
 }
 
+export type BatteryProblem = FigureProblem | { kind: 'kindTellsNothing' }
+
 /** Charge with its bounds from an uncertain reading; `kindTellsNothing` where a table for the kind is missing. */
 export function chargeOf(battery: {
   restVolts: number
   expandedU: number
   kind: BatteryKind
-}): Result<
-  { charge: number; low: number; high: number },
-  FigureProblem | { kind: 'kindTellsNothing' }
-> {
+}): Result<{ charge: number; low: number; high: number }, BatteryProblem> {
   const { restVolts, expandedU, kind } = battery
   const problem = unfit({ restVolts: [restVolts, ...VOLTS], expandedU: [expandedU, 0, 20] })
   if (problem !== null) return fail(problem)
@@ -65,15 +64,16 @@ export function chargeOf(battery: {
 /** Charge kept back (rule R10; common practice, no source). */
 const RESERVE = 0.2
 
-/** How much of its rating a battery gives in the cold: 1 at 25 C, 0.65 at -15 C, linear, not under 0.5 (R10). */
+/** How much of its rating a battery gives in the cold: 1 at 25 C, 0.65 at -15 C, linear, not under 0.5 (R10; practice). */
 export function coldFactor(airTempC: number): Result<number, FigureProblem> {
   const problem = unfit({ airTempC: [airTempC, ...CELSIUS] })
   if (problem !== null) return fail(problem)
   return ok(Math.min(1, Math.max(0.5, 1 - ((25 - airTempC) * 0.35) / 40)))
 }
 
-/** A battery for a ride; the uncertainty is that of the volts at k = 2. */
+/** A battery for a ride; the uncertainty is that of the volts at k = 2. Only a flooded one tells by its volts. */
 export type RideBattery = {
+  kind: BatteryKind
   ratedAh: number
   restVolts: number
   expandedU: number
@@ -89,8 +89,11 @@ export type RideEnergy = {
   empty: boolean
 }
 
-/** What a battery can feed (rule R10); nought when it counts as empty. Rated 0.1 to 500 Ah, draw 0.1 to 500 A. */
-export function rideEnergy(battery: RideBattery): Result<RideEnergy, FigureProblem> {
+/**
+ * What a battery can feed (rule R10); nought when it counts as empty. Rated 0.1 to 500 Ah, draw 0.1 to 500 A, rest
+ * volts 0 to 20, -60 to 60 C. Of a kind whose volts tell no charge nothing is reckoned: `kindTellsNothing`.
+ */
+export function rideEnergy(battery: RideBattery): Result<RideEnergy, BatteryProblem> {
   const { ratedAh, restVolts, expandedU, airTempC, drawAmperes } = battery
   const problem = unfit({
     ratedAh: [ratedAh, 0.1, 500],
@@ -101,6 +104,7 @@ export function rideEnergy(battery: RideBattery): Result<RideEnergy, FigureProbl
   if (problem !== null) return fail(problem)
   const cold = coldFactor(airTempC)
   if (!cold.ok) return cold
+  if (!FULL_VOLTS[battery.kind].tellsCharge) return fail({ kind: 'kindTellsNothing' })
   const hoursAt = (volts: number): number => ratedAh * usable(volts) * cold.value
   return ok({
     ampereHours: hoursAt(restVolts),
@@ -113,7 +117,7 @@ export function rideEnergy(battery: RideBattery): Result<RideEnergy, FigureProbl
 /** A ride wanted asks for one and a half times its minutes (rule R10). */
 const RIDE_FACTOR = 1.5
 
-/** Whether the energy is enough for a ride of so many minutes, by the low end; `shortMinutes` is 0 when it is. */
+/** Whether the energy is enough for a ride of 0 to 1,440 minutes, by the low end; `shortMinutes` is 0 when it is. */
 export function rideVerdict(
   battery: RideBattery,
   rideMinutes: number,
@@ -123,7 +127,7 @@ export function rideVerdict(
     shortMinutes: number
     verdict: 'enough' | 'short' | 'empty'
   },
-  FigureProblem
+  BatteryProblem
 > {
   const problem = unfit({ rideMinutes: [rideMinutes, 0, 1440] })
   if (problem !== null) return fail(problem)

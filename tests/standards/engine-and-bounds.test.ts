@@ -130,6 +130,7 @@ describe('[A1] what cannot be is named and never NaN', () => {
           towOf({ massKg: a, slopeDegrees: b, ground: 'hard', brakesWork: false }, c),
           linePull(a, b, c),
           rideEnergy({
+            kind: 'flooded',
             ratedAh: a,
             restVolts: b,
             expandedU: c,

@@ -1,6 +1,7 @@
 import { describe, expect, it } from 'vitest'
 import { compressionKpa, compressionShare, geopotentialOf, pressureAt } from '@/lib/diag/atmosphere'
 import {
+  type BatteryKind,
   chargeAt,
   chargeOf,
   coldFactor,
@@ -223,6 +224,13 @@ describe('battery at rest (table credited to the battery makers, seen)', () => {
     })
     expect(theValue(rideVerdict(ride({ restVolts: 12.45 }), exactly - 0.01)).verdict).toBe('enough')
   })
+  it('[R10] no ride is reckoned from the volts of a kind that tells no charge by them', () => {
+    for (const kind of ['agm', 'lithiumIronPhosphate'] as const) {
+      const problem = { ok: false, problem: { kind: 'kindTellsNothing' } }
+      expect(rideEnergy(ride({ kind, restVolts: 13.2 }))).toEqual(problem)
+      expect(rideVerdict(ride({ kind, restVolts: 13.2 }), 25)).toEqual(problem)
+    }
+  })
   it('[A1] a draw of nought and a battery of nought are named', () => {
     expect(rideEnergy(ride({ drawAmperes: 0 }))).toMatchObject({
       problem: { field: 'drawAmperes' },
@@ -233,6 +241,7 @@ describe('battery at rest (table credited to the battery makers, seen)', () => {
 })
 
 const ride = (over: Partial<Parameters<typeof rideEnergy>[0]>) => ({
+  kind: 'flooded' as BatteryKind,
   ratedAh: 20,
   restVolts: 12.45,
   expandedU: 0.09,
