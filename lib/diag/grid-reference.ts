@@ -64,7 +64,10 @@ export function utmOf({ latitude, longitude }: Point): Result<Utm, GridProblem> 
   })
 }
 
-/** The point of a UTM position. Easting 0 to 1,000 km; northing so that it lies within 80 S to 84 N. */
+/**
+ * The point of a UTM position. Easting 0 to 1,000 km; northing so that it lies within 80 S to 84 N,
+ * or a metre and a half beyond, which is taken for the edge.
+ */
 export function pointOfUtm(utm: Omit<Utm, 'band'>): Result<Point, GridProblem> {
   const { zone, hemisphere, eastingMetres, northingMetres } = utm
   const [least, most] = hemisphere === 'N' ? [0, 9_400_000] : [1_100_000, 10_000_000]
@@ -76,14 +79,14 @@ export function pointOfUtm(utm: Omit<Utm, 'band'>): Result<Point, GridProblem> {
   if (problem !== null) return fail(problem)
   if (!Number.isInteger(zone)) return fail({ kind: 'noSuchSquare' })
   const { latitude, longitude } = pointAt(utm)
-  // Metres cut off to a millimetre may lie that much outside.
+  // Metres that were cut off may lie that much outside.
   if (latitude < -80 - EDGE_DEGREES || latitude > 84 + EDGE_DEGREES) return fail({ kind: 'polar' })
   return ok({ latitude: Math.min(84, Math.max(-80, latitude)), longitude })
 }
 
-/** The square that holds a position, with 0 to 5 digits each way (5 is a metre, 0 is 100 km). */
+/** The square that holds a position, with 0 to 5 whole digits each way (5 is a metre, 0 is 100 km). */
 export function squareOf(point: Point, digits: number): Result<GridSquare, GridProblem> {
-  const problem = unfit({ digits: [digits, 0, 5] })
+  const problem = unfit({ digits: [Number.isInteger(digits) ? digits : Number.NaN, 0, 5] })
   if (problem !== null) return fail(problem)
   const utm = utmOf(point)
   if (!utm.ok) return utm
@@ -92,7 +95,7 @@ export function squareOf(point: Point, digits: number): Result<GridSquare, GridP
   const cut = (metres: number): string =>
     String(Math.floor(metres) % 100_000)
       .padStart(5, '0')
-      .slice(0, Math.floor(digits))
+      .slice(0, digits)
   return ok({
     zone,
     band,
@@ -124,9 +127,10 @@ export function placeOfSquare(square: GridSquare): Result<GridPlace, GridProblem
   return ok({ corner: at(0, 0), centre: at(0.5, 0.5), sizeMetres, cut: inside.includes(false) })
 }
 
-/** A tenth of a millimetre, and two millimetres. */
+/** A tenth of a millimetre. */
 const HAIR_DEGREES = 1e-9
-const EDGE_DEGREES = 2e-8
+/** A metre and a half: UTM cut off to whole metres may lie that far beyond the edge it came from. */
+export const EDGE_DEGREES = 1.5e-5
 
 const BANDS = 'CDEFGHJKLMNPQRSTUVWX'
 const bandOf = (latitude: number): string =>

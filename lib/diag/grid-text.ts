@@ -6,6 +6,7 @@ import type { Place } from '@/lib/model/place'
 import { fail, ok, type Result } from '@/lib/model/result'
 import type { FigureProblem } from './figure-bounds'
 import {
+  EDGE_DEGREES,
   type GridProblem,
   type GridSquare,
   placeOfSquare,
@@ -80,7 +81,8 @@ export function parseShort(text: string, near: Point): Result<GridSquare, GridTe
 
 /**
  * UTM as text: zone with N, S or a band letter, metres east, metres north. `38S` may mean band S, which lies in
- * the north, or the southern half; where both fit, both are answered and neither is taken.
+ * the north, or the southern half; where both fit, both are answered and neither is taken. Another letter than N
+ * and S is a band, and metres that lie outside it are refused as `noSuchSquare`.
  */
 export function parseUtm(text: string): Result<Point, GridTextProblem> {
   const match = /^(\d{1,2})\s*([C-HJ-NP-X])[\s,]+(\d+(?:\.\d+)?)[\s,]+(\d+(?:\.\d+)?)$/.exec(
@@ -95,7 +97,11 @@ export function parseUtm(text: string): Result<Point, GridTextProblem> {
       eastingMetres: Number(east),
       northingMetres: Number(north),
     })
-  if (letter !== 'S') return at(letter >= 'N' ? 'N' : 'S')
+  if (letter === 'N') return at('N')
+  if (letter !== 'S') {
+    const point = at(letter > 'N' ? 'N' : 'S')
+    return point.ok && !isInBand(point.value, letter) ? fail({ kind: 'noSuchSquare' }) : point
+  }
   const [asBand, asHalf] = [at('N'), at('S')]
   if (!asBand.ok || asBand.value.latitude < 32 || asBand.value.latitude >= 40) return asHalf
   return asHalf.ok
@@ -112,6 +118,11 @@ function digitsOf(text = ''): { easting: string; northing: string } | null {
 }
 
 const BANDS = 'CDEFGHJKLMNPQRSTUVWX'
+function isInBand({ latitude }: Point, band: string): boolean {
+  const south = 8 * BANDS.indexOf(band) - 80
+  const north = band === 'X' ? 84 : south + 8
+  return latitude >= south - EDGE_DEGREES && latitude <= north + EDGE_DEGREES
+}
 
 function around({ zone, band }: GridSquare): { zone: number; band: string }[] {
   const at = BANDS.indexOf(band)

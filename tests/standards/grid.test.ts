@@ -80,6 +80,7 @@ describe('UTM, MGRS and USNG on WGS 84', () => {
     expect(utmOf(at(91, 0))).toMatchObject({ problem: { kind: 'above', field: 'latitude' } })
     expect(utmOf(at(0, Number.NaN))).toMatchObject({ problem: { field: 'longitude' } })
     expect(squareOf(at(0, 0), 6)).toMatchObject({ problem: { field: 'digits' } })
+    expect(squareOf(at(0, 0), 2.5)).toMatchObject({ problem: { field: 'digits' } })
     expect(
       pointOfUtm({ zone: 61, hemisphere: 'N', eastingMetres: 5e5, northingMetres: 0 }),
     ).toMatchObject({
@@ -103,7 +104,10 @@ describe('UTM, MGRS and USNG on WGS 84', () => {
     expect(two).toMatchObject({ ok: false, problem: { kind: 'twoWays' } })
     expect(theValue(parseUtm('38N 444140.545, 3684706.356')).latitude).toBeCloseTo(33.3, 6)
     expect(theValue(parseUtm('38S 444140 8684706')).latitude).toBeLessThan(0)
-    expect(theValue(parseUtm('38H 444140 6684706')).latitude).toBeLessThan(0)
+    // 30 degrees south is band J (32 to 24 S); under another letter a letter or a digit is wrong.
+    expect(theValue(parseUtm('38J 444140 6684706')).latitude).toBeCloseTo(-29.97, 2)
+    expect(parseUtm('38H 444140 6684706')).toMatchObject({ problem: { kind: 'noSuchSquare' } })
+    expect(parseUtm('38T 444140 3684706')).toMatchObject({ problem: { kind: 'noSuchSquare' } })
     expect(parseUtm('38N 444140')).toMatchObject({ problem: { kind: 'notGrid' } })
   })
 })
@@ -160,6 +164,10 @@ describe('grid references there and back', () => {
             : []
         const nearest = Math.min(...found.map((one) => distanceMetres(one, point)))
         expect(nearest).toBeLessThan(0.002)
+        // With its band for the half, cut to whole metres, it is still taken.
+        const banded = printUtm(utm).replace(/[NS]/, utm.band)
+        if (utm.band !== 'S')
+          expect(distanceMetres(theValue(parseUtm(banded)), point)).toBeLessThan(1.5)
       }),
       { seed: 23, numRuns: 500 },
     )
