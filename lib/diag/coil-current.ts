@@ -1,29 +1,29 @@
-/** Current and energy of an ignition coil's primary by time on (dwell), for inductive coils. */
+/**
+ * Current and energy of an ignition coil's primary by time on (dwell), for inductive coils: a resistance and an
+ * inductance in series at steady volts (textbook); the core's saturation is left out.
+ */
 import { fail, ok, type Result } from '@/lib/model/result'
-import { type FigureProblem, unfit } from './figure-bounds'
+import { type Bounded, type FigureProblem, unfit } from './figure-bounds'
 
 /** The primary circuit: ohms 0.01 to 100, henries 1e-5 to 1. */
 export type Primary = { ohm: number; henry: number }
 
-const primaryBounds = ({ ohm, henry }: Primary) => ({
-  ohm: [ohm, 0.01, 100] as const,
-  henry: [henry, 1e-5, 1] as const,
-})
+const OHM = [0.01, 100] as const
+const HENRY = [1e-5, 1] as const
+const AMPERES = [0, 100] as const
 
-/** Amperes after a dwell of 0 to 1 s at 0 to 60 V: V/R (1 - e^(-tR/L)). */
+/** Amperes after a dwell of 0 to 1 s at 0.1 to 60 V: V/R (1 - e^(-tR/L)). */
 export function primaryAmperes(
   primary: Primary,
   volts: number,
   dwellS: number,
 ): Result<number, FigureProblem> {
-  const problem = unfit({
-    ...primaryBounds(primary),
-    volts: [volts, 0, 60],
-    dwellS: [dwellS, 0, 1],
-  })
-  if (problem !== null) return fail(problem)
-  const { ohm, henry } = primary
-  return ok((volts / ohm) * -Math.expm1((-dwellS * ohm) / henry))
+  return charging(
+    primary,
+    volts,
+    { dwellS: [dwellS, 0, 1] },
+    ({ final, seconds }) => final * -Math.expm1(-dwellS / seconds),
+  )
 }
 
 /** Seconds to reach a current of 0 to 100 A; infinite when the volts, 0.1 to 60, cannot drive it. */
@@ -32,19 +32,29 @@ export function secondsTo(
   volts: number,
   amperes: number,
 ): Result<number, FigureProblem> {
-  const problem = unfit({
-    ...primaryBounds(primary),
-    volts: [volts, 0.1, 60],
-    amperes: [amperes, 0, 100],
-  })
-  if (problem !== null) return fail(problem)
-  const { ohm, henry } = primary
-  const share = (amperes * ohm) / volts
-  return ok(share >= 1 ? Number.POSITIVE_INFINITY : (-henry / ohm) * Math.log1p(-share))
+  return charging(primary, volts, { amperes: [amperes, ...AMPERES] }, ({ final, seconds }) =>
+    amperes >= final ? Number.POSITIVE_INFINITY : -seconds * Math.log1p(-amperes / final),
+  )
 }
 
-/** Joules stored at a current of 0 to 100 A: L I^2 / 2. */
+/** The current that a primary tends to at these volts, and its time constant L/R, once the figures fit. */
+function charging(
+  { ohm, henry }: Primary,
+  volts: number,
+  asked: Record<string, Bounded>,
+  answer: (circuit: { final: number; seconds: number }) => number,
+): Result<number, FigureProblem> {
+  const problem = unfit({
+    ohm: [ohm, ...OHM],
+    henry: [henry, ...HENRY],
+    volts: [volts, 0.1, 60],
+    ...asked,
+  })
+  return problem === null ? ok(answer({ final: volts / ohm, seconds: henry / ohm })) : fail(problem)
+}
+
+/** Joules stored at 1e-5 to 1 H and a current of 0 to 100 A: L I^2 / 2. */
 export function storedJoules(henry: number, amperes: number): Result<number, FigureProblem> {
-  const problem = unfit({ henry: [henry, 1e-5, 1], amperes: [amperes, 0, 100] })
+  const problem = unfit({ henry: [henry, ...HENRY], amperes: [amperes, ...AMPERES] })
   return problem === null ? ok((henry * amperes ** 2) / 2) : fail(problem)
 }

@@ -56,14 +56,16 @@ export type StockFigures = {
 
 /** Service level, fill rate and expected back-orders of a whole stock 0 to 2,000 at a mean 0 to 1,000. */
 export function stockFigures(stock: number, mean: number): Result<StockFigures, FigureProblem> {
-  const problem = unfit({ stock: [stock, 0, 2 * MOST_MEAN], mean: [mean, 0, MOST_MEAN] })
+  const problem = unfit({
+    stock: [Number.isInteger(stock) ? stock : Number.NaN, 0, 2 * MOST_MEAN],
+    mean: [mean, 0, MOST_MEAN],
+  })
   if (problem !== null) return fail(problem)
-  const whole = Math.floor(stock)
   let backOrders = mean
-  for (let s = 0; s < whole; s++) backOrders = Math.max(0, backOrders - short(s, mean))
+  for (let s = 0; s < stock; s++) backOrders = Math.max(0, backOrders - short(s, mean))
   return ok({
-    serviceLevel: poissonCdf(whole, mean),
-    fillRate: whole === 0 ? 0 : poissonCdf(whole - 1, mean),
+    serviceLevel: poissonCdf(stock, mean),
+    fillRate: stock === 0 ? 0 : poissonCdf(stock - 1, mean),
     backOrders,
   })
 }

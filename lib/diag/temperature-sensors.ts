@@ -22,7 +22,7 @@ export function ntcOhm(r25: number, beta: number, celsius: number): Result<numbe
 /** `noTemperature`: no temperature gives these ohms on this curve. */
 export type CurveProblem = FigureProblem | { kind: 'noTemperature' }
 
-/** Degrees Celsius of an NTC from its ohms by the beta equation. */
+/** Degrees Celsius of an NTC from its ohms, 1e-3 to 1e9, by the beta equation. */
 export function ntcCelsius(r25: number, beta: number, ohm: number): Result<number, CurveProblem> {
   const problem = unfit({ ...betaBounds(r25, beta), ohm: [ohm, ...OHM] })
   return problem === null ? celsiusOf(1 / 298.15 + Math.log(ohm / r25) / beta) : fail(problem)
@@ -30,7 +30,7 @@ export function ntcCelsius(r25: number, beta: number, ohm: number): Result<numbe
 
 export type SteinhartHart = { a: number; b: number; c: number }
 
-/** Degrees Celsius from ohms: 1/T = A + B ln R + C (ln R)^3. */
+/** Degrees Celsius from ohms, 1e-3 to 1e9: 1/T = A + B ln R + C (ln R)^3. Coefficients -1 to 1. */
 export function steinhartCelsius(
   { a, b, c }: SteinhartHart,
   ohm: number,
@@ -44,10 +44,14 @@ export function steinhartCelsius(
 /** One row of a sensor's table: ohms and degrees Celsius. */
 export type CurvePoint = readonly [ohm: number, celsius: number]
 
-/** The coefficients through three points, solved from the linear equations; `sameTwice` when two have the same ohms. */
+/**
+ * The coefficients through three points, solved from the linear equations. `sameTwice` when two have the same ohms,
+ * `noCurve` when the logarithms of the three sum to 0, where no one curve goes through them. Ohms 1e-3 to 1e9, -100
+ * to 500 C.
+ */
 export function fitSteinhart(
   points: readonly [CurvePoint, CurvePoint, CurvePoint],
-): Result<SteinhartHart, FigureProblem | { kind: 'sameTwice' }> {
+): Result<SteinhartHart, FigureProblem | { kind: 'sameTwice' } | { kind: 'noCurve' }> {
   const problem = unfit(
     Object.fromEntries(
       points.flatMap(([ohm, celsius], i) => [
@@ -60,6 +64,7 @@ export function fitSteinhart(
   const [[o1, t1], [o2, t2], [o3, t3]] = points
   const [l1, l2, l3] = [Math.log(o1), Math.log(o2), Math.log(o3)]
   if (l1 === l2 || l1 === l3 || l2 === l3) return fail({ kind: 'sameTwice' })
+  if (Math.abs(l1 + l2 + l3) < 1e-9) return fail({ kind: 'noCurve' })
   const [y1, y2, y3] = [1 / (t1 + KELVIN), 1 / (t2 + KELVIN), 1 / (t3 + KELVIN)]
   const g2 = (y2 - y1) / (l2 - l1)
   const g3 = (y3 - y1) / (l3 - l1)

@@ -4,6 +4,7 @@
  * mismatch warns and never blocks.
  */
 import { fail, ok, type Result } from '@/lib/model/result'
+import { mustFit } from './figure-bounds'
 
 const WEIGHTS = [8, 7, 6, 5, 4, 3, 2, 10, 0, 9, 8, 7, 6, 5, 4, 3, 2]
 const VALUES: Record<string, number> = {
@@ -43,9 +44,11 @@ const YEARS = 'ABCDEFGHJKLMNPRSTVWXY123456789'
 
 /**
  * The years position 10 can mean, 30 apart from 1980 on, up to `thisYear` and the next (models come early); empty
- * when it is no year letter, as on many off-road machines and outside North America. 49 CFR 565.15, table.
+ * when it is no year letter, as on many off-road machines and outside North America. 49 CFR 565.15, table. `thisYear`
+ * 1980 to 9999, of the caller's clock.
  */
 export function modelYears(text: string, thisYear: number): Result<number[], VinProblem> {
+  mustFit({ thisYear: [thisYear, 1980, 9999] })
   const vin = text.trim().toUpperCase()
   if (vin.length !== 17) return fail({ kind: 'notSeventeen', length: vin.length })
   const at = YEARS.indexOf(vin.charAt(9))

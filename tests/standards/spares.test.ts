@@ -62,6 +62,7 @@ describe('spares (Poisson, Palm)', () => {
       problem: { kind: 'below', field: 'A.costMinor' },
     })
     expect(spareStock(1, 1.2)).toMatchObject({ problem: { kind: 'above', field: 'service' } })
+    expect(stockFigures(1.5, 1)).toMatchObject({ problem: { field: 'stock' } })
     expect(stockFigures(Number.NaN, 1)).toMatchObject({ problem: { field: 'stock' } })
   })
 })

@@ -2,6 +2,7 @@ import fc from 'fast-check'
 import { describe, expect, it } from 'vitest'
 import { binomialP } from '@/lib/diag/binomial-test'
 import { readDm1 } from '@/lib/diag/codes'
+import { copperAt } from '@/lib/diag/copper'
 import { sunHeight } from '@/lib/diag/daylight'
 import { coursesBetween, distanceMetres } from '@/lib/diag/distance'
 import { parsePlace, printDegrees, printMinutes } from '@/lib/diag/place-text'
@@ -64,6 +65,8 @@ describe('vehicle numbers, 49 CFR 565.15', () => {
   it('[STD] Y is 2030 as well once its models come', () => {
     expect(theValue(modelYears('1M8GDM9AXYP042788', 2029))).toEqual([2000, 2030])
     expect(modelYears('SHORT', 2026)).toMatchObject({ problem: { kind: 'notSeventeen' } })
+    for (const year of [Number.NaN, Number.POSITIVE_INFINITY])
+      expect(() => modelYears('1M8GDM9AXYP042788', year)).toThrow('figureOutOfRange')
   })
 })
 
@@ -183,6 +186,18 @@ describe('values of CHECKS that stand alone', () => {
     )
     expect(theValue(steinhartCelsius(fit, 5231))).toBeCloseTo(40, 1)
     expect(theValue(steinhartCelsius(fit, 5331))).toBeLessThan(39.6)
+  })
+  it('[A1] three resistances whose logarithms sum to nought have no one curve', () => {
+    const fit = fitSteinhart([
+      [0.5, 0],
+      [1, 25],
+      [2, 50],
+    ])
+    expect(fit).toEqual({ ok: false, problem: { kind: 'noCurve' } })
+  })
+  it('[A1] copper outside its straight line breaks an assumption', () => {
+    expect(() => copperAt(1, -234.45, 20)).toThrow('figureOutOfRange')
+    expect(() => copperAt(Number.NaN, 20, 20)).toThrow('figureOutOfRange')
   })
   it('[STD] IEC 60751 and not the older coefficients: 138.51 at 100, 84.27 at -40 (CHECKS 2.5 trap: 138.50, 84.21)', () => {
     expect(theValue(pt100Ohm(100))).toBeCloseTo(138.5055, 4)
