@@ -5,8 +5,7 @@
  */
 
 import { repairsOnly } from './repairs-only'
-import type { ActionType } from './search'
-import type { Problem, Repair } from './search-problem'
+import type { ActionType, Problem, Repair } from './search-problem'
 import { dot, massOf, priceOf, survive } from './search-steps'
 
 /** A state by lists, for any number of checks and repairs. */

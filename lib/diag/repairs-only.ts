@@ -1,14 +1,15 @@
 /**
  * The plan without checks: repairs in p/c order with the cheapest stop at the best place in the row (optimal
  * without checks and set-ups: Heckerman, Breese and Rommelse 1995). It can always be carried out, so its cost
- * is never below the true one. Asked for every point of a search: no object is made on the way.
+ * is never below the true one; `room.first` then holds the repair it begins with, -1 for a stop. Asked for every
+ * point of a search: no object is made on the way.
  */
 import { opening, type Problem, type Repair } from './search-problem'
 
-/** Where a plan begins: joint weights, open set-ups, minutes gone. */
-export type From = { w: Float64Array; open: number; elapsed: number }
+/** Where a plan begins: joint weights (a row of a larger array from `at` on), open set-ups, minutes gone. */
+export type From = { w: Float64Array; at?: number; open: number; elapsed: number }
 
-/** Its expected cost, weighted by the mass of `from.w`; `left` names the repairs that are left, in their order. */
+/** Its expected cost, weighted by the mass of its weights; `left` names the repairs that are left, in their order. */
 export function repairsOnly(problem: Problem, from: From, left: ArrayLike<number>): number {
   return costOf(problem, from, { left, count: left.length })
 }
@@ -25,41 +26,40 @@ export function repairsOnlyOf(problem: Problem, from: From, repairs: number): nu
 type Left = { left: ArrayLike<number>; count: number }
 
 function costOf(problem: Problem, from: From, left: Left): number {
-  const { room, repairs, daylight, closed } = problem
+  const { room, repairs, daylight, closed, gift } = problem
   let mass = begin(problem, from)
   let best = leastOf(room.stops)
+  room.first = -1
   let { open, elapsed } = from
   let spent = 0
+  let first = -1
   const count = inOrder(problem, from, left)
-  for (let k = 0; k < count; k++) {
-    const repair = repairs[room.order[k] ?? 0]
-    if (repair === undefined) continue
-    let { price, minutes } = repair
-    if ((repair.setups & ~open) !== 0) {
-      const more = opening(problem, repair.setups, open)
-      price += more.price
-      minutes += more.minutes
-    }
-    if (elapsed + minutes > daylight + 1e-9) continue
-    spent += price * mass
-    if (spent >= best) break
+  for (let k = 0; k < count && mass > NO_MASS && spent + gift * mass < best; k++) {
+    const index = room.order[k] ?? 0
+    const repair = repairs[index]
+    const more = opening(problem, repair?.setups ?? 0, open)
+    const minutes = more.minutes + (repair?.minutes ?? 0)
+    if (repair === undefined || elapsed + minutes > daylight + 1e-9) continue
+    if (first < 0) first = index
     const gone = mend(problem, repair)
+    spent += (repair.price + more.price) * mass + gone.wrong * problem.comeback
     mass -= gone.mass
-    spent += gone.wrong * problem.comeback
     open = (open | repair.setups) & ~closed
     elapsed += minutes
-    if (mass <= 1e-15) return Math.min(best, spent)
-    best = Math.min(best, spent + Math.max(0, leastOf(room.stops)))
+    const total = spent + (mass > NO_MASS ? leastOf(room.stops) : 0)
+    if (total >= best) continue
+    best = total
+    room.first = first
   }
   return best
 }
 
 /** Fills the room with the weights and what each stop would cost; answers the mass. */
-function begin({ room, stops }: Problem, { w }: From): number {
+function begin({ room, stops, faults }: Problem, { w, at = 0 }: From): number {
   room.stops.fill(0)
   let mass = 0
-  for (let f = 0; f < w.length; f++) {
-    const x = w[f] ?? 0
+  for (let f = 0; f < faults.length; f++) {
+    const x = w[at + f] ?? 0
     room.w[f] = x
     mass += x
     for (let s = 0; s < stops.length; s++)
@@ -74,6 +74,8 @@ function leastOf(costs: Float64Array): number {
   return least
 }
 
+/** Less than this is left by rounding. */
+const NO_MASS = 1e-15
 const GONE = { mass: 0, wrong: 0 }
 
 /** Takes out what a repair mends and what passes its test run wrongly. */
@@ -99,8 +101,8 @@ function mendOne({ room, falsePass, stops }: Problem, repair: Repair, f: number)
 }
 
 /** Repairs by what they cure per unit of price, best first, the first of equals in the model's order; how many. */
-function inOrder(problem: Problem, { w, open }: From, { left, count }: Left): number {
-  const { ratios, order } = problem.room
+function inOrder(problem: Problem, { open }: From, { left, count }: Left): number {
+  const { ratios, order, w } = problem.room
   let placed = 0
   for (let k = 0; k < count; k++) {
     const index = left[k] ?? 0

@@ -1,129 +1,184 @@
 /**
- * What a point costs at least and at most. At least: one action further than "the fault is known from here
- * on", which is admissible, since knowing more never costs more. At most: repairs without checks.
+ * What a point costs at least. An action costs at least its price, and after it what the fault would cost if it
+ * were known: knowing more never costs more. That is a plain sum over the weights, with one coefficient per
+ * fault, the same at every point with these set-ups open, these repairs left and these minutes gone: a level.
  */
-import type { KnownCosts } from './known-cost'
-import { repairsOnlyOf } from './repairs-only'
-import { type Check, opening, type Point, type Problem, type Repair } from './search-problem'
-import { dot, massOf } from './search-steps'
+import { type KnownCost, knownCosts } from './known-cost'
+import { type Check, opening, type Problem, type Repair } from './search-problem'
 
-/** Prices and minutes of every check and repair, with the set-ups that are not open yet. */
-export type Prices = { checks: Priced; repairs: Priced }
-type Priced = { price: Float64Array; minutes: Float64Array }
+/** Actions of one kind at a level. `fit` is a mask of those that may still start (rule 5 of engine.md 2.1). */
+export type Side = {
+  fit: number
+  /** Price per unit of mass and minutes, with the set-ups that are not open yet. */
+  price: Float64Array
+  minutes: Float64Array
+  /** The few faults that would be known to cost more after the action, and by how much: from `from[i]` to `from[i + 1]`. */
+  from: Int32Array
+  fault: Int32Array
+  more: Float64Array
+}
+
+/** `known` is what a unit of each fault costs when it is known here. */
+export type Level = { known: Float64Array; checks: Side; repairs: Side }
 
 export type Bounds = {
   problem: Problem
-  known: KnownCosts
-  /** By the set-ups that are open. */
-  prices: Map<number, Prices>
+  known: KnownCost
+  /** By open set-ups, repairs left, and minutes gone where there is a clock. */
+  levels: Map<number, Map<number, Map<number, Level>>>
 }
 
-/** Prices with these set-ups open. */
-export function pricesAt({ problem, prices }: Bounds, open: number): Prices {
-  const present = prices.get(open)
-  if (present !== undefined) return present
-  const priced = (actions: readonly (Check | Repair)[]): Priced => {
-    const more = actions.map((a) => opening(problem, a.setups, open))
-    return {
-      price: Float64Array.from(actions, (a, i) => a.price + (more[i]?.price ?? 0)),
-      minutes: Float64Array.from(actions, (a, i) => a.minutes + (more[i]?.minutes ?? 0)),
+/** Bounds of a problem with at most 30 checks and 30 repairs. */
+export function boundsOf(problem: Problem): Bounds {
+  return { problem, known: knownCosts(problem), levels: new Map() }
+}
+
+type Where = { open: number; repairs: number; elapsed: number }
+
+/** The level of a point. */
+export function levelAt(bounds: Bounds, open: number, repairs: number, elapsed: number): Level {
+  const minutes = bounds.problem.daylight === Number.POSITIVE_INFINITY ? 0 : elapsed
+  const byMinutes = inner(inner(bounds.levels, open), repairs)
+  let level = byMinutes.get(minutes)
+  if (level === undefined) {
+    level = makeLevel(bounds, { open, repairs, elapsed: minutes })
+    byMinutes.set(minutes, level)
+  }
+  return level
+}
+
+function inner<V>(map: Map<number, Map<number, V>>, key: number): Map<number, V> {
+  let found = map.get(key)
+  if (found === undefined) {
+    found = new Map()
+    map.set(key, found)
+  }
+  return found
+}
+
+function makeLevel({ problem, known }: Bounds, at: Where): Level {
+  const { falsePass, comeback, closed, faults } = problem
+  const here = Float64Array.from(faults, (_, f) => known(f, at))
+  const checks = sideOf({ problem, at, here }, problem.checks, ({ setups }, minutes) => {
+    const then = { open: at.open | setups, repairs: at.repairs, elapsed: at.elapsed + minutes }
+    return (f) => known(f, then)
+  })
+  const repairs = sideOf(
+    { problem, at, here },
+    problem.repairs,
+    ({ setups, fails }, minutes, r) => {
+      const then = {
+        open: (at.open | setups) & ~closed,
+        repairs: at.repairs & ~(1 << r),
+        elapsed: at.elapsed + minutes,
+      }
+      return (f) => {
+        const stays = fails[f] ?? 1
+        const slips = stays * (falsePass[f] ?? 0)
+        return slips * comeback + (stays > slips ? (stays - slips) * known(f, then) : 0)
+      }
+    },
+  )
+  return { known: here, checks, repairs }
+}
+
+type Here = { problem: Problem; at: Where; here: Float64Array }
+/** What a unit of a fault costs at least once an action is done. */
+type After<A> = (action: A, minutes: number, index: number) => (fault: number) => number
+
+function sideOf<A extends Check | Repair>(
+  { problem, at, here }: Here,
+  actions: readonly A[],
+  after: After<A>,
+): Side {
+  const price = new Float64Array(actions.length)
+  const times = new Float64Array(actions.length)
+  const from = new Int32Array(actions.length + 1)
+  const fault: number[] = []
+  const more: number[] = []
+  let fit = 0
+  actions.forEach((action, i) => {
+    const shut = opening(problem, action.setups, at.open)
+    const minutes = action.minutes + shut.minutes
+    price[i] = action.price + shut.price
+    times[i] = minutes
+    if (at.elapsed + minutes <= problem.daylight + 1e-9) {
+      fit |= 1 << i
+      const costs = after(action, minutes, i)
+      here.forEach((known, f) => {
+        const cost = costs(f)
+        // Where no end is in sight there is none after the action either.
+        if (cost === known || known === Number.POSITIVE_INFINITY) return
+        fault.push(f)
+        more.push(cost - known)
+      })
     }
+    from[i + 1] = fault.length
+  })
+  return {
+    fit,
+    price,
+    minutes: times,
+    from,
+    fault: Int32Array.from(fault),
+    more: Float64Array.from(more),
   }
-  const made = { checks: priced(problem.checks), repairs: priced(problem.repairs) }
-  prices.set(open, made)
-  return made
 }
 
-/** True when something of these minutes may still start (rule 5 of engine.md 2.1). */
-export const inTime = ({ daylight }: Problem, elapsed: number, minutes: number): boolean =>
-  elapsed + minutes <= daylight + 1e-9
+/** Weights, in a row of a larger array that begins at `at`. */
+export type Row = { w: Float64Array; at: number }
 
-/** What a repair done here costs at least; `price` and `minutes` with its set-ups. */
-export function repairBound(
-  { problem, known }: Bounds,
-  point: Point,
-  at: { index: number; price: number; minutes: number },
-): number {
-  const repair = problem.repairs[at.index]
-  if (repair === undefined) return Number.POSITIVE_INFINITY
-  const { w } = point
-  const open = (point.open | repair.setups) & ~problem.closed
-  const costs = known(open, point.repairs & ~(1 << at.index), point.elapsed + at.minutes)
-  let total = 0
-  for (let f = 0; f < w.length; f++) {
-    const x = w[f] ?? 0
-    if (x <= 0) continue
-    total += at.price * x
-    const stays = x * (repair.fails[f] ?? 1)
-    if (stays <= 0) continue
-    const wrong = stays * (problem.falsePass[f] ?? 0)
-    total += wrong * problem.comeback
-    if (stays > wrong) total += (stays - wrong) * (costs[f] ?? 0)
+/** What a point costs when its fault is known, and its mass: what the bounds of all its actions share. */
+export type Shared = { known: number; mass: number }
+
+/** The shared part of a point. */
+export function sharedOf(level: Level, row: Row): Shared {
+  const width = level.known.length
+  let mass = 0
+  for (let f = 0; f < width; f++) mass += row.w[row.at + f] ?? 0
+  return { known: rowCost(row, level.known), mass }
+}
+
+/** What an action costs at least at a point. */
+export function actionBound(side: Side, index: number, row: Row, { known, mass }: Shared): number {
+  let cost = known + mass * (side.price[index] ?? 0)
+  const end = side.from[index + 1] ?? 0
+  for (let k = side.from[index] ?? 0; k < end; k++) {
+    const x = row.w[row.at + (side.fault[k] ?? 0)] ?? 0
+    if (x > 0) cost += x * (side.more[k] ?? 0)
   }
-  return total
+  return cost
 }
 
-/** What all checks of a point share: its mass, and what the known fault costs when nothing new is opened. */
-export type Common = { mass: number; known: number | null }
+type Left = { checks: number; repairs: number }
 
-/** The common part of a point's checks. */
-export function commonOf({ known, problem }: Bounds, point: Point): Common {
-  const { w, open, repairs, elapsed } = point
-  const timeless = problem.daylight === Number.POSITIVE_INFINITY
-  return { mass: massOf(w), known: timeless ? dot(w, known(open, repairs, elapsed)) : null }
-}
-
-/** What a check done here costs at least. */
-export function checkBound(
-  { problem, known }: Bounds,
-  point: Point,
-  at: { index: number; price: number; minutes: number; common: Common },
-): number {
-  const { common, price } = at
-  const setups = problem.checks[at.index]?.setups ?? 0
-  if (common.known !== null && (setups & ~point.open) === 0)
-    return price * common.mass + common.known
-  const costs = known(point.open | setups, point.repairs, point.elapsed + at.minutes)
-  return price * common.mass + dot(point.w, costs)
-}
-
-/** The least over the actions of a point. */
-export function lowerBound(bounds: Bounds, point: Point): number {
-  let stop = Number.POSITIVE_INFINITY
-  for (const { byFault } of bounds.problem.stops) stop = Math.min(stop, dot(point.w, byFault))
-  const common = commonOf(bounds, point)
-  return leastRepair(bounds, point, {
-    common,
-    least: leastCheck(bounds, point, { common, least: stop }),
+/** The least over the checks and repairs (masks) left at a point, and `most`: the cost of a plan, stops among them. */
+export function lowerBound(level: Level, row: Row, left: Left, most: number): number {
+  const shared = sharedOf(level, row)
+  return leastOf(level.checks, row, shared, {
+    left: left.checks,
+    most: leastOf(level.repairs, row, shared, { left: left.repairs, most }),
   })
 }
 
-type SoFar = { common: Common; least: number }
-
-function leastCheck(bounds: Bounds, point: Point, { common, least }: SoFar): number {
-  const { price: prices, minutes: times } = pricesAt(bounds, point.open).checks
-  let best = least
-  for (let index = 0, left = point.checks; left !== 0; index++, left >>>= 1) {
-    const [price, minutes] = [prices[index] ?? 0, times[index] ?? 0]
-    if ((left & 1) === 0 || price * common.mass >= best) continue
-    if (inTime(bounds.problem, point.elapsed, minutes))
-      best = Math.min(best, checkBound(bounds, point, { index, price, minutes, common }))
-  }
-  return best
+function leastOf(
+  side: Side,
+  row: Row,
+  shared: Shared,
+  { left, most }: { left: number; most: number },
+): number {
+  let least = most
+  for (let i = 0, mask = left & side.fit; mask !== 0; i++, mask >>>= 1)
+    if ((mask & 1) !== 0) least = Math.min(least, actionBound(side, i, row, shared))
+  return least
 }
 
-function leastRepair(bounds: Bounds, point: Point, { common, least }: SoFar): number {
-  const { price: prices, minutes: times } = pricesAt(bounds, point.open).repairs
-  let best = least
-  for (let index = 0, left = point.repairs; left !== 0; index++, left >>>= 1) {
-    const [price, minutes] = [prices[index] ?? 0, times[index] ?? 0]
-    if ((left & 1) === 0 || price * common.mass >= best) continue
-    if (inTime(bounds.problem, point.elapsed, minutes))
-      best = Math.min(best, repairBound(bounds, point, { index, price, minutes }))
+/** Weights times costs; a fault without weight costs nothing, even where no end is in sight. */
+export function rowCost({ w, at }: Row, costs: Float64Array): number {
+  let total = 0
+  for (let f = 0; f < costs.length; f++) {
+    const x = w[at + f] ?? 0
+    if (x > 0) total += x * (costs[f] ?? 0)
   }
-  return best
+  return total
 }
-
-/** Repairs without checks from a point on. */
-export const upperBound = ({ problem }: Bounds, point: Point): number =>
-  repairsOnlyOf(problem, point, point.repairs)

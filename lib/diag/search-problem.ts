@@ -1,7 +1,7 @@
 /**
- * A `single` model with numbers for names: what one step costs and what it leaves. Beliefs are carried as joint
- * weights (prior x likelihood x chance of having failed so far), never normalised: the cost of a plan is then
- * linear in them, and a state is worth the same whichever way it was reached.
+ * A `single` model with numbers for names: what one step costs and what it leaves. From where a search begins,
+ * beliefs are carried as joint weights (chance x likelihood x chance of having failed so far), never normalised:
+ * the cost of a plan is then linear in them, and a state is worth the same whichever way it was reached.
  */
 import { AppError } from '@/lib/model/result'
 import type { SearchState, SingleModel } from './troubleshoot-model'
@@ -39,6 +39,8 @@ export type Problem = {
   /** Whether any test run can pass wrongly. */
   slips: boolean
   comeback: number
+  /** What the cheapest stop costs for its cheapest fault, where that is below 0; else 0. */
+  gift: number
   /** Minutes in all; infinite without daylight. */
   daylight: number
   /** Room to reckon in. */
@@ -47,6 +49,8 @@ export type Problem = {
 
 /** Room in which the plan without checks is reckoned (repairs-only.ts), so that it makes nothing on the way. */
 export type Room = {
+  /** The repair the plan begins with; -1 for a stop. */
+  first: number
   w: Float64Array
   stops: Float64Array
   ratios: Float64Array
@@ -55,6 +59,7 @@ export type Room = {
 }
 
 const roomOf = (size: { faults: number; repairs: number; stops: number }): Room => ({
+  first: -1,
   w: new Float64Array(size.faults),
   stops: new Float64Array(size.stops),
   ratios: new Float64Array(size.repairs),
@@ -62,16 +67,7 @@ const roomOf = (size: { faults: number; repairs: number; stops: number }): Room 
   left: new Int32Array(size.repairs),
 })
 
-/** A point in the search: joint weights, checks and repairs left as masks, open set-ups, minutes gone. */
-export type Point = {
-  w: Float64Array
-  checks: number
-  repairs: number
-  open: number
-  elapsed: number
-  /** Outcomes seen so far as digits, one place per check: part of the point's key. */
-  code: number
-}
+export type ActionType = 'check' | 'repair' | 'stop'
 
 /** Checks and repairs up to this many are searched exactly; above it a mask no longer holds them. */
 export const MOST_IN_MASK = 30
@@ -79,8 +75,7 @@ export const MOST_IN_MASK = 30
 /** The model as a problem; throws AppError `badModel` on names that do not exist or more than 30 set-ups. */
 export function problemOf(model: SingleModel): Problem {
   const faults = model.faults.map((f) => f.id)
-  const setupIds = (model.setups ?? []).map((s) => s.id)
-  if (setupIds.length > 30) throw new AppError('badModel', { context: { field: 'setups' } })
+  if ((model.setups?.length ?? 0) > 30) throw strange('setups')
   const closure = closureOf(model)
   const maskOf = (ids: readonly string[]) => ids.reduce((mask, id) => mask | closure(id), 0)
   const rate = model.ratePerMinute
@@ -107,17 +102,19 @@ export function problemOf(model: SingleModel): Problem {
       Float64Array.from(faults, (f) => c.p[f]?.[o] ?? 1 / c.outcomes.length),
     ),
   }))
+  const stops = model.stops.map((s) => ({
+    id: s.id,
+    byFault: Float64Array.from(
+      faults,
+      (f) => s.cost + rate * (s.minutes ?? 0) + (s.costByFault?.[f] ?? 0),
+    ),
+  }))
   return {
     faults,
     repairs,
     checks,
-    stops: model.stops.map((s) => ({
-      id: s.id,
-      byFault: Float64Array.from(
-        faults,
-        (f) => s.cost + rate * (s.minutes ?? 0) + (s.costByFault?.[f] ?? 0),
-      ),
-    })),
+    stops,
+    gift: stops.reduce((least, { byFault }) => Math.min(least, ...byFault), 0),
     setups: (model.setups ?? []).map((s) => ({
       price: (s.cost ?? 0) + rate * s.minutes,
       minutes: s.minutes,
@@ -135,17 +132,21 @@ export function problemOf(model: SingleModel): Problem {
   }
 }
 
-/** Joint weights of a state: prior x likelihood of its outcomes x chance that its repairs failed (sum <= 1). */
+/**
+ * The chance of each fault in a state: prior x likelihood of its outcomes x chance that its repairs failed. Sums to
+ * 1; all zero when the state cannot come about. Throws AppError `badModel` for names that the model has not.
+ */
 export function weightsOf(model: SingleModel, problem: Problem, state: SearchState): Float64Array {
-  const total = model.faults.reduce((sum, f) => sum + f.prior, 0)
-  const w = Float64Array.from(model.faults, (f) => f.prior / total)
+  checkNames(model, state)
+  const w = Float64Array.from(model.faults, (f) => f.prior)
+  normalise(w)
   for (const check of problem.checks) {
-    const outcome = state.evidence[check.id]
+    const outcome = Object.hasOwn(state.evidence, check.id) ? state.evidence[check.id] : undefined
     if (outcome === undefined) continue
     const row = check.p[check.outcomes.indexOf(outcome)]
-    if (row === undefined)
-      throw new AppError('badModel', { context: { field: `state.evidence.${check.id}` } })
+    if (row === undefined) throw strange(`state.evidence.${check.id}`)
     for (let f = 0; f < w.length; f++) w[f] = (w[f] ?? 0) * (row[f] ?? 0)
+    normalise(w)
   }
   for (const { id, fixes } of repairsOf(model)) {
     if (!state.tried.includes(id)) continue
@@ -153,9 +154,27 @@ export function weightsOf(model: SingleModel, problem: Problem, state: SearchSta
       const stays = (1 - (fixes[fault] ?? 0)) * (1 - (problem.falsePass[f] ?? 0))
       w[f] = (w[f] ?? 0) * stays
     })
+    normalise(w)
   }
   return w
 }
+
+/** After each piece, so that much unlikely evidence does not run out of digits. */
+function normalise(w: Float64Array): void {
+  let mass = 0
+  for (let f = 0; f < w.length; f++) mass += w[f] ?? 0
+  if (mass > 0) for (let f = 0; f < w.length; f++) w[f] = (w[f] ?? 0) / mass
+}
+
+function checkNames(model: SingleModel, { evidence, tried }: SearchState): void {
+  for (const id of Object.keys(evidence))
+    if (!model.checks.some((c) => c.id === id)) throw strange(`state.evidence.${id}`)
+  for (const id of tried)
+    if (![...model.faults, ...(model.extraRepairs ?? [])].some((r) => r.id === id))
+      throw strange('state.tried')
+}
+
+const strange = (field: string): AppError => new AppError('badModel', { context: { field } })
 
 /** What is left of checks and repairs in a state, by place. */
 export function leftOf(
@@ -163,7 +182,7 @@ export function leftOf(
   state: SearchState,
 ): { checks: number[]; repairs: number[] } {
   return {
-    checks: problem.checks.flatMap((c, i) => (state.evidence[c.id] === undefined ? [i] : [])),
+    checks: problem.checks.flatMap((c, i) => (Object.hasOwn(state.evidence, c.id) ? [] : [i])),
     repairs: problem.repairs.flatMap((r, i) => (state.tried.includes(r.id) ? [] : [i])),
   }
 }
@@ -205,21 +224,24 @@ const falsePassOf = (
   fault: string,
 ): number => (typeof falsePass === 'number' ? falsePass : (falsePass?.[fault] ?? 0))
 
+/** A set-up with all that it requires, as a mask. */
 function closureOf(model: SingleModel): (id: string) => number {
   const setups = model.setups ?? []
   const at = new Map(setups.map((s, i) => [s.id, i]))
-  const masks = new Map<string, number>()
-  const closure = (id: string): number => {
-    const known = masks.get(id)
-    if (known !== undefined) return known
+  const placeOf = (id: string): number => {
     const i = at.get(id)
-    if (i === undefined) throw new AppError('badModel', { context: { field: `setup ${id}` } })
-    masks.set(id, 1 << i)
-    const mask = (setups[i]?.requires ?? []).reduce((m, other) => m | closure(other), 1 << i)
-    masks.set(id, mask)
-    return mask
+    if (i === undefined) throw strange(`setup ${id}`)
+    return i
   }
-  return closure
+  const masks = setups.map(({ requires }, i) =>
+    requires.reduce((m, other) => m | (1 << placeOf(other)), 1 << i),
+  )
+  // Once round adds what is required one step further; a ring of set-ups that require each other settles too.
+  for (let round = 0; round < setups.length; round++)
+    masks.forEach((mask, i) => {
+      masks[i] = masks.reduce((m, other, j) => ((mask & (1 << j)) === 0 ? m : m | other), mask)
+    })
+  return (id) => masks[placeOf(id)] ?? 0
 }
 
 function closedMask(model: SingleModel, closure: (id: string) => number): number {

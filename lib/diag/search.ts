@@ -6,116 +6,90 @@
  * `limit` expansions it is the action that is thought to cost least (guessOf), and its upper bound is the cost
  * of a plan that can be carried out.
  */
-import { knownCosts } from './known-cost'
-import {
-  type Bounds,
-  checkBound,
-  commonOf,
-  inTime,
-  lowerBound,
-  pricesAt,
-  repairBound,
-  upperBound,
-} from './search-bounds'
-import type { Point, Problem } from './search-problem'
-import { afterCheck, afterRepair, dot } from './search-steps'
+import { boundsOf } from './search-bounds'
+import { deepen, expand, nodeAt, refreshOption, type Search } from './search-moves'
+import { startPool, type Wanted } from './search-nodes'
+import type { Problem } from './search-problem'
 
-export type ActionType = 'check' | 'repair' | 'stop'
-
-/** An action at a point; its true cost lies between `low` and `high`. */
-export type Option = {
-  type: ActionType
-  index: number
-  price: number
-  minutes: number
-  low: number
-  high: number
-  fixed: number
-  children: Node[] | null
-}
-
-export type Node = {
-  point: Point
-  low: number
-  high: number
-  options: Option[] | null
-  /** Where it is thought to lie, while its bounds are apart; null: not asked yet. */
-  guess: number | null
-}
-
-export type Search = Bounds & {
-  nodes: Map<number | string, Node>
-  /** Whether a point's key fits one number; else it is a string. */
-  numeric: boolean
-  expanded: number
-  limit: number
-  /** Bounds this near each other have met. */
-  slack: number
-}
+/** Where a search begins: weights that sum to 1, checks and repairs left and set-ups open as masks. */
+export type Start = Wanted & { w: Float64Array }
 
 /** A trial ends where less than this share of what is unknown at the start is unknown. */
 const WORTH = 0.02
 /** Trials in a row that expand nothing, after which bounds that have not met are left so. */
 const MOST_IDLE = 200
-
-/** A search over a problem, with a budget of expansions. */
-export function startSearch(problem: Problem, limit: number): Search {
-  const codes = problem.checks.reduce((n, c) => n * (c.p.length + 1), 1)
-  const size = codes * 2 ** (problem.repairs.length + problem.setups.length)
-  return {
-    problem,
-    known: knownCosts(problem),
-    prices: new Map(),
-    nodes: new Map(),
-    numeric: size < 2 ** 52 && problem.daylight === Number.POSITIVE_INFINITY,
-    expanded: 0,
-    limit,
-    slack: 0,
-  }
+/** Bounds that differ by less than this share of the cost have met: what is left is rounding. */
+const SLACK = 1e-12
+/** A search over a problem with at most 30 checks and 30 repairs, with a budget of expansions, and its first point. */
+export function startSearch(
+  problem: Problem,
+  start: Start,
+  limit: number,
+): { search: Search; root: number } {
+  const pool = startPool(problem)
+  const search = { problem, bounds: boundsOf(problem), pool, expanded: 0, limit, slack: 0 }
+  pool.room.w.set(start.w)
+  const root = nodeAt(search, start)
+  const { low, high } = pool.nodes
+  const size = [high[root] ?? 0, low[root] ?? 0].find(Number.isFinite) ?? 0
+  search.slack = SLACK * Math.max(1, Math.abs(size))
+  return { search, root }
 }
 
-/** The node of a point: known already, or new with its bounds. */
-export function nodeAt(search: Search, point: Point): Node {
-  const key = keyOf(search, point)
-  const known = search.nodes.get(key)
-  if (known !== undefined) return known
-  const high = upperBound(search, point)
-  const low = Math.min(high, lowerBound(search, point))
-  const node = { point, low, high, options: null, guess: null }
-  search.nodes.set(key, node)
-  return node
-}
-
-/** Brings the bounds of a node together until they meet or the budget is spent; every action of it is looked at. */
-export function solve(search: Search, node: Node): void {
-  if (node.options === null) expand(search, node, Number.POSITIVE_INFINITY)
-  for (const option of node.options ?? []) deepen(search, node, option)
-  refreshNode(node)
+/** Brings the bounds of a point together until they meet or the budget is spent; every action of it is looked at. */
+export function solve(search: Search, node: number): void {
+  const { nodes, options } = search.pool
+  if ((nodes.first[node] ?? 0) < 0) expand(search, node, Number.POSITIVE_INFINITY)
+  const first = nodes.first[node] ?? 0
+  for (let o = first; o < first + (nodes.many[node] ?? 0); o++)
+    if ((options.kid[o] ?? 0) < 0) deepen(search, node, o)
+  refreshNode(search, node)
   for (let idle = 0; idle < MOST_IDLE && isOpen(search, node); ) {
     const before = search.expanded
-    trial(search, node, idle > 0 ? 0 : (node.high - node.low) * WORTH)
+    trial(search, node, idle > 0 ? 0 : gapOf(search, node) * WORTH)
     idle = search.expanded === before ? idle + 1 : 0
   }
 }
 
-const isOpen = ({ slack, expanded, limit }: Search, { low, high }: Node): boolean =>
-  high - low > slack && expanded < limit
+function isOpen(search: Search, node: number): boolean {
+  return search.expanded < search.limit && !(gapOf(search, node) <= search.slack)
+}
 
-/** The two options least by a measure; the first of equals in the order of the options. */
-export function topTwo(
-  options: readonly Option[],
-  measure: (option: Option) => number,
-): { best: Option | null; second: Option | null } {
-  let best: [Option, number] | null = null
-  let second: [Option, number] | null = null
-  for (const option of options) {
-    const x = measure(option)
-    if (best === null || x < best[1]) {
-      second = best
-      best = [option, x]
-    } else if (second === null || x < second[1]) second = [option, x]
-  }
-  return { best: best?.[0] ?? null, second: second?.[0] ?? null }
+/** The options of a point in their order: stops, repairs, checks, each as in the model. */
+export function optionsOf({ pool: { nodes } }: Search, node: number): number[] {
+  const first = nodes.first[node] ?? -1
+  return first < 0 ? [] : Array.from({ length: nodes.many[node] ?? 0 }, (_, i) => first + i)
+}
+
+/** The points an option leads to. */
+export function pointsAfter({ pool: { options, kids } }: Search, option: number): Int32Array {
+  const kid = options.kid[option] ?? 0
+  return kids.list.subarray(kid, kid + (options.many[option] ?? 0))
+}
+
+/** Solves a point as if one of its options were not there; its bounds without it. The point is left as it was. */
+export function solveWithout(
+  search: Search,
+  node: number,
+  option: number,
+): { low: number; high: number } {
+  const { nodes, options } = search.pool
+  const kept = [nodes.low[node], nodes.high[node], options.low[option], options.high[option]]
+  nodes.low[node] = Number.NEGATIVE_INFINITY
+  for (const [list, at] of [
+    [nodes.high, node],
+    [options.low, option],
+    [options.high, option],
+  ] as const)
+    list[at] = Number.POSITIVE_INFINITY
+  solve(search, node)
+  const found = { low: nodes.low[node] ?? 0, high: nodes.high[node] ?? 0 }
+  const [low = 0, high = 0, optionLow = 0, optionHigh = 0] = kept
+  nodes.low[node] = low
+  nodes.high[node] = high
+  options.low[option] = optionLow
+  options.high[option] = optionHigh
+  return found
 }
 
 /**
@@ -124,132 +98,102 @@ export function topTwo(
  * that its plan leaves out; of two options neither alone says which is better. Ask once
  * the search is over: points keep their guesses.
  */
-export function guessOf(option: Option): number {
-  if (option.children === null) return option.high
-  let sum = option.fixed
-  for (const child of option.children) sum += guessAt(child)
-  return Math.min(option.high, Math.max(option.low, sum))
+export function guessOf(search: Search, option: number): number {
+  const { options } = search.pool
+  const high = options.high[option] ?? 0
+  if ((options.kid[option] ?? 0) < 0) return high
+  let sum = options.fixed[option] ?? 0
+  for (const node of pointsAfter(search, option)) sum += guessAt(search, node)
+  return Math.min(high, Math.max(options.low[option] ?? 0, sum))
 }
 
-function guessAt(node: Node): number {
-  if (node.guess !== null) return node.guess
-  let guess = (node.low + node.high) / 2
-  if (node.options !== null && node.high > node.low) {
+function guessAt(search: Search, node: number): number {
+  const { nodes, options } = search.pool
+  const known = nodes.guess[node] ?? 0
+  if (!Number.isNaN(known)) return known
+  const [low, high] = [nodes.low[node] ?? 0, nodes.high[node] ?? 0]
+  let guess = high > low ? (low + high) / 2 : high
+  const first = nodes.first[node] ?? 0
+  if (first >= 0 && high > low) {
     let least = Number.POSITIVE_INFINITY
-    for (const option of node.options)
-      if (option.children !== null) least = Math.min(least, guessOf(option))
-    guess = Math.min(node.high, Math.max(node.low, least))
+    for (let o = first; o < first + (nodes.many[node] ?? 0); o++)
+      if ((options.kid[o] ?? 0) >= 0) least = Math.min(least, guessOf(search, o))
+    guess = Math.min(high, Math.max(low, least))
   }
-  node.guess = guess
+  nodes.guess[node] = guess
   return guess
 }
 
-function keyOf({ problem, numeric }: Search, point: Point): number | string {
-  const place =
-    (point.code * 2 ** problem.repairs.length + point.repairs) * 2 ** problem.setups.length +
-    point.open
-  if (numeric) return place
-  return `${point.code}|${point.repairs}|${point.open}|${point.elapsed.toFixed(6)}`
-}
-
 /** One way down, and the bounds on it anew on the way up. */
-function trial(search: Search, node: Node, need: number): void {
-  if (node.high - node.low <= Math.max(need, search.slack * 1e-3)) return
-  if (node.options === null) {
+function trial(search: Search, node: number, need: number): void {
+  const { nodes, options } = search.pool
+  if (gapOf(search, node) <= Math.max(need, search.slack * 1e-3)) return
+  if ((nodes.first[node] ?? 0) < 0) {
     if (search.expanded >= search.limit) return
-    expand(search, node)
+    expand(search, node, nodes.high[node] ?? 0)
   }
-  let option = cheapest(node.options ?? [])
-  while (option !== null && option.children === null) {
+  let option = cheapest(search, node)
+  while (option >= 0 && (options.kid[option] ?? 0) < 0) {
     deepen(search, node, option)
-    refreshNode(node)
-    option = cheapest(node.options ?? [])
+    refreshNode(search, node)
+    option = cheapest(search, node)
   }
-  if (option === null) return
-  const child = widest(option.children ?? [])
-  if (child !== null) trial(search, child, need)
-  refreshOption(option)
-  refreshNode(node)
+  if (option < 0) return
+  const child = widest(search, option)
+  if (child >= 0) trial(search, child, need)
+  refreshOption(search, option)
+  refreshNode(search, node)
 }
 
-/** The option that could be cheapest, by upper bound among equals. */
-function cheapest(options: readonly Option[]): Option | null {
-  let best: Option | null = null
-  for (const option of options)
-    if (
-      best === null ||
-      option.low < best.low ||
-      (option.low === best.low && option.high < best.high)
-    )
-      best = option
+/** The option that could be cheapest, by upper bound among equals; -1 where there is none. */
+function cheapest({ pool: { nodes, options } }: Search, node: number): number {
+  const { low, high } = options
+  const first = nodes.first[node] ?? 0
+  const end = first + (nodes.many[node] ?? 0)
+  let best = -1
+  let [leastLow, leastHigh] = [Number.POSITIVE_INFINITY, Number.POSITIVE_INFINITY]
+  for (let o = first; o < end; o++) {
+    const x = low[o] ?? 0
+    if (x > leastLow || (x === leastLow && (high[o] ?? 0) >= leastHigh)) continue
+    best = o
+    leastLow = x
+    leastHigh = high[o] ?? 0
+  }
   return best
 }
 
-/** The child of which least is known; weights are joint, so that gaps add up as they stand. */
-function widest(children: readonly Node[]): Node | null {
-  let pick: Node | null = null
-  let gap = 0
-  for (const child of children)
-    if (child.high - child.low > gap) {
-      gap = child.high - child.low
-      pick = child
+/** The point of which least is known; weights are joint, so that gaps add up as they stand. -1: all is known. */
+function widest(search: Search, option: number): number {
+  const { kids, options } = search.pool
+  const kid = options.kid[option] ?? 0
+  let pick = -1
+  let most = 0
+  for (let k = kid; k < kid + (options.many[option] ?? 0); k++) {
+    const gap = gapOf(search, kids.list[k] ?? 0)
+    if (gap > most) {
+      most = gap
+      pick = kids.list[k] ?? 0
     }
+  }
   return pick
 }
 
-function deepen(search: Search, { point }: Node, option: Option): void {
-  if (option.children !== null) return
-  const after = option.type === 'check' ? afterCheck : afterRepair
-  const step = after(search.problem, point, option)
-  option.fixed = step.fixed
-  option.children = step.next.map((next) => nodeAt(search, next))
-  refreshOption(option)
-}
-
-function refreshOption(option: Option): void {
-  let low = option.fixed
-  let high = option.fixed
-  for (const child of option.children ?? []) {
-    low += child.low
-    high += child.high
-  }
-  if (high < option.high) option.high = high
-  option.low = Math.min(option.high, Math.max(option.low, low))
-}
-
-function refreshNode(node: Node): void {
+function refreshNode({ pool: { nodes, options } }: Search, node: number): void {
   let low = Number.POSITIVE_INFINITY
-  for (const option of node.options ?? []) {
-    if (option.low < low) low = option.low
-    if (option.high < node.high) node.high = option.high
+  let high = nodes.high[node] ?? 0
+  const first = nodes.first[node] ?? 0
+  const end = first + (nodes.many[node] ?? 0)
+  for (let o = first; o < end; o++) {
+    const [a, b] = [options.low[o] ?? 0, options.high[o] ?? 0]
+    if (a < low) low = a
+    if (b < high) high = b
   }
-  node.low = Math.min(node.high, Math.max(node.low, low))
+  nodes.high[node] = high
+  nodes.low[node] = Math.min(high, Math.max(nodes.low[node] ?? 0, low))
 }
 
-/** Lists the actions of a node whose lower bound is no more than `most`. */
-function expand(search: Search, node: Node, most = node.high): void {
-  search.expanded++
-  const { problem } = search
-  const { point } = node
-  const prices = pricesAt(search, point.open)
-  const common = commonOf(search, point)
-  const options: Option[] = problem.stops.map(({ byFault }, index) => {
-    const cost = dot(point.w, byFault)
-    const free = { price: 0, minutes: 0, fixed: cost, children: [] }
-    return { type: 'stop', index, low: cost, high: cost, ...free }
-  })
-  const offer = (type: 'check' | 'repair', index: number, bound: typeof repairBound): void => {
-    const { price: all, minutes: times } = type === 'check' ? prices.checks : prices.repairs
-    const [price, minutes] = [all[index] ?? 0, times[index] ?? 0]
-    if (!inTime(problem, point.elapsed, minutes)) return
-    const low = bound(search, point, { index, price, minutes })
-    const high = Number.POSITIVE_INFINITY
-    if (low <= most)
-      options.push({ type, index, price, minutes, low, high, fixed: 0, children: null })
-  }
-  for (let i = 0, left = point.repairs; left !== 0; i++, left >>>= 1)
-    if ((left & 1) !== 0) offer('repair', i, repairBound)
-  for (let i = 0, left = point.checks; left !== 0; i++, left >>>= 1)
-    if ((left & 1) !== 0) offer('check', i, (b, p, at) => checkBound(b, p, { ...at, common }))
-  node.options = options
+/** How far the bounds of a point are apart. */
+export function gapOf({ pool: { nodes } }: Search, node: number): number {
+  const [low, high] = [nodes.low[node] ?? 0, nodes.high[node] ?? 0]
+  return high > low ? high - low : 0
 }

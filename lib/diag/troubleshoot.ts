@@ -6,18 +6,17 @@
 import { AppError } from '@/lib/model/result'
 import { leastCosts, lookAhead } from './look-ahead'
 import { noisyOrMarginals } from './noisy-or'
+import { gapOf, guessOf, optionsOf, solve, solveWithout, startSearch } from './search'
+import { type Action, actionOf, type Search } from './search-moves'
 import {
   type ActionType,
-  guessOf,
-  type Node,
-  nodeAt,
-  type Option,
-  type Search,
-  solve,
-  startSearch,
-  topTwo,
-} from './search'
-import { leftOf, MOST_IN_MASK, openOf, type Problem, problemOf, weightsOf } from './search-problem'
+  leftOf,
+  MOST_IN_MASK,
+  openOf,
+  type Problem,
+  problemOf,
+  weightsOf,
+} from './search-problem'
 import { dot, massOf } from './search-steps'
 import type { NoisyOrModel, SearchState, SingleModel } from './troubleshoot-model'
 
@@ -28,8 +27,6 @@ import type { NoisyOrModel, SearchState, SingleModel } from './troubleshoot-mode
 const EXPANSIONS = 1500
 const WIDTH = 8 * 17
 const LEAST_EXPANSIONS = 100
-/** Bounds that differ by less than this share have met: what is left is rounding. */
-const SLACK = 1e-12
 
 export type NextAction = {
   type: ActionType
@@ -88,46 +85,60 @@ function searched(
   spot: Spot,
   limit: number,
 ): { found: NextAction; cheapest: number } {
-  const search = startSearch(problem, limit)
   const mask = (left: readonly number[]) => left.reduce((m, i) => m | (1 << i), 0)
-  const { w, open, elapsed } = spot
-  const checks = mask(spot.checks)
-  const root = nodeAt(search, { w, checks, repairs: mask(spot.repairs), open, elapsed, code: 0 })
-  search.slack = SLACK * Math.max(1, root.high)
-  const plain = root.high
+  const start = { ...spot, checks: mask(spot.checks), repairs: mask(spot.repairs) }
+  const { search, root } = startSearch(problem, start, limit)
+  const { nodes, options } = search.pool
+  const plain = nodes.high[root] ?? 0
   solve(search, root)
-  const options = root.options ?? []
-  const isExact = root.high - root.low <= search.slack
+  const isExact = gapOf(search, root) <= search.slack
+  const highOf = (option: number): number => options.high[option] ?? 0
+  const measure = isExact ? highOf : (option: number) => guessOf(search, option)
   // Nothing is advised whose plan is dearer than repairs without checks.
-  const sound = options.filter(({ high }) => high <= plain + search.slack)
-  const { best } = topTwo(sound, isExact ? highOf : guessOf)
-  if (best === null) throw new AppError('noAction')
-  const others = options.filter((option) => option !== best)
-  const isSure =
-    isExact && isSolved(search, { ...root, high: Number.POSITIVE_INFINITY, options: others })
-  const { best: second } = topTwo(others, isExact ? highOf : guessOf)
-  const mass = massOf(w)
-  const found: NextAction = {
-    ...named(problem, best),
-    expectedCost: best.high / mass,
-    gap: isExact ? 0 : (best.high - root.low) / mass,
-    runnerUp: second && {
-      ...named(problem, second),
-      expectedCost: Math.max(second.high, best.high) / mass,
-      exact: isSure,
-    },
-    expansions: search.expanded,
+  const all = optionsOf(search, root)
+  const best = least(
+    all.filter((option) => highOf(option) <= plain + search.slack),
+    measure,
+  )
+  if (best === null || !Number.isFinite(highOf(best))) throw new AppError('noAction')
+  const cost = highOf(best)
+  const gap = isExact ? 0 : cost - (nodes.low[root] ?? 0)
+  const second = secondOf(search, { root, best, measure, isExact })
+  const runnerUp = second && {
+    ...named(problem, actionOf(search, second.option)),
+    expectedCost: Math.max(second.cost, cost),
+    exact: second.isSure,
   }
-  return { found, cheapest: root.high / mass }
+  const action = named(problem, actionOf(search, best))
+  const expansions = search.expanded
+  const found = { ...action, expectedCost: cost, gap, runnerUp, expansions }
+  return { found, cheapest: nodes.high[root] ?? 0 }
 }
 
-const highOf = ({ high }: Option): number => high
+type Chosen = { root: number; best: number; measure: (option: number) => number; isExact: boolean }
 
-/** Whether the bounds of a node meet within what is left of the budget. */
-function isSolved(search: Search, node: Node): boolean {
-  if (node.options?.length === 0) return true
-  solve(search, node)
-  return node.high - node.low <= search.slack
+/** The best of the other first actions, its cost solved for where the budget allows; null where there is no other. */
+function secondOf(
+  search: Search,
+  { root, best, measure, isExact }: Chosen,
+): { option: number; cost: number; isSure: boolean } | null {
+  const others = optionsOf(search, root).filter((option) => option !== best)
+  const without = isExact && others.length > 0 ? solveWithout(search, root, best) : null
+  const option = least(others, measure)
+  if (option === null) return null
+  const cost = search.pool.options.high[option] ?? 0
+  if (!Number.isFinite(cost)) return null
+  return { option, cost, isSure: without !== null && without.high - without.low <= search.slack }
+}
+
+/** The least by a measure; the first of equals in the order of the list. */
+function least(options: readonly number[], measure: (option: number) => number): number | null {
+  let best: { option: number; x: number } | null = null
+  for (const option of options) {
+    const x = measure(option)
+    if (best === null || x < best.x) best = { option, x }
+  }
+  return best?.option ?? null
 }
 
 function looked(problem: Problem, spot: Spot): NextAction {
@@ -147,12 +158,12 @@ function looked(problem: Problem, spot: Spot): NextAction {
   }
 }
 
-const named = (problem: Problem, option: { type: ActionType; index: number }) => ({
-  type: option.type,
-  id: idOf(problem, option),
+const named = (problem: Problem, action: Action): { type: ActionType; id: string } => ({
+  type: action.type,
+  id: idOf(problem, action),
 })
 
-function idOf(problem: Problem, { type, index }: Pick<Option, 'type' | 'index'>): string {
+function idOf(problem: Problem, { type, index }: Action): string {
   const list = { check: problem.checks, repair: problem.repairs, stop: problem.stops }[type]
   return list[index]?.id ?? ''
 }

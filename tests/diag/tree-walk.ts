@@ -120,9 +120,10 @@ function openFor(model: SingleModel, needs: readonly string[], open: readonly st
 
 function closeAfterTest(model: SingleModel, open: readonly string[]): string[] {
   const setups = model.setups ?? []
-  const closes = (id: string): boolean => {
+  const closes = (id: string, seen: readonly string[] = []): boolean => {
     const setup = setups.find((s) => s.id === id)
-    return setup !== undefined && (setup.closedByTest || setup.requires.some(closes))
+    if (setup === undefined || seen.includes(id)) return false
+    return setup.closedByTest || setup.requires.some((other) => closes(other, [...seen, id]))
   }
   return open.filter((id) => !closes(id))
 }
