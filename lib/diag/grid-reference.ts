@@ -121,9 +121,9 @@ export function placeOfSquare(square: GridSquare): Result<GridPlace, GridProblem
       eastingMetres: corner.eastingMetres + east * sizeMetres,
       northingMetres: corner.northingMetres + north * sizeMetres,
     })
-  const corners = [at(0, 0), at(1, 0), at(0, 1), at(1, 1)]
+  const corners = [at(0, 0), at(1, 0), at(0, 1), at(1, 1)].map((one) => besides(one, edges))
   const inside = corners.map((one) => liesIn(one, edges))
-  if (!inside.includes(true) && !touches(corners, edges)) return fail({ kind: 'noSuchSquare' })
+  if (!touches(corners, edges)) return fail({ kind: 'noSuchSquare' })
   return ok({ corner: at(0, 0), centre: at(0.5, 0.5), sizeMetres, cut: inside.includes(false) })
 }
 
@@ -163,16 +163,26 @@ const EXCEPTIONS: Readonly<Record<string, readonly [number, number]>> = {
 }
 
 const liesIn = ({ latitude, longitude }: Point, { west, east, south, north }: Edges): boolean =>
-  latitude >= south && latitude <= north && longitude >= west && longitude <= east
+  latitude >= south - HAIR_DEGREES &&
+  latitude <= north + HAIR_DEGREES &&
+  longitude >= west - HAIR_DEGREES &&
+  longitude <= east + HAIR_DEGREES
 
+/** The point with its longitude counted on from the zone's own, past 180 where a square lies over the date line. */
+const besides = ({ latitude, longitude }: Point, { west, east }: Edges): Point => {
+  const middle = (west + east) / 2
+  return { latitude, longitude: middle + ((((longitude - middle + 180) % 360) + 360) % 360) - 180 }
+}
+
+/** Whether the square that these corners stand for has ground in common with the zone and band, not an edge alone. */
 function touches(corners: readonly Point[], { west, east, south, north }: Edges): boolean {
   const latitudes = corners.map((c) => c.latitude)
   const longitudes = corners.map((c) => c.longitude)
   return (
-    Math.max(...latitudes) >= south &&
-    Math.min(...latitudes) <= north &&
-    Math.max(...longitudes) >= west &&
-    Math.min(...longitudes) <= east
+    Math.max(...latitudes) > south + HAIR_DEGREES &&
+    Math.min(...latitudes) < north - HAIR_DEGREES &&
+    Math.max(...longitudes) > west + HAIR_DEGREES &&
+    Math.min(...longitudes) < east - HAIR_DEGREES
   )
 }
 
@@ -188,7 +198,9 @@ function cornerOf({ zone, band, column, row, easting, northing }: GridSquare): C
     return null
   const metres = (text: string): number => Number(text.padEnd(5, '0'))
   const south = 8 * BANDS.indexOf(band) - 80
-  const bottom = Math.floor(new LatLon(south, 3).toUtm().northing / 100_000) * 100_000
+  // South of the equator a band reaches lowest at the zone's edge, north of it in its middle.
+  const lowest = new LatLon(south, south < 0 ? 0 : 3).toUtm().northing
+  const bottom = Math.floor(lowest / 100_000) * 100_000
   let start = 100_000 * line
   while (start < bottom) start += 2_000_000
   return {

@@ -70,6 +70,10 @@ describe('UTM, MGRS and USNG on WGS 84', () => {
     ['38TMB4488', 'noSuchSquare'],
     ['32XMB4488', 'noSuchSquare'],
     ['34XMB4488', 'noSuchSquare'],
+    // Zone 2 lies at the date line: its band X has no squares on the far side of the globe.
+    ['2XKG5050', 'noSuchSquare'],
+    // Only its lower edge, the equator, is in band M: its ground is 31NAA.
+    ['31MAA5000', 'noSuchSquare'],
     ['', 'notGrid'],
   ])('[A7] %s is refused: %s', (text, kind) => {
     expect(parseGrid(text)).toMatchObject({ ok: false, problem: { kind } })
@@ -132,6 +136,28 @@ describe('grid references there and back', () => {
         expect(utm.band).toBe(square.band)
       }),
       { seed: 21, numRuns: 1500 },
+    )
+  })
+  it('[A7] along every edge of bands and zones, and over the date line, what is printed is read back', () => {
+    const corner = fc.record({
+      band: fc.integer({ min: 0, max: 19 }),
+      zone: fc.constantFrom(1, 2, 17, 31, 32, 33, 59, 60),
+      alongBand: fc.boolean(),
+      share: fc.double({ min: 0.001, max: 0.999, noNaN: true }),
+      beside: fc.constantFrom(1e-7, 1e-5, 1e-3, 0.1),
+    })
+    fc.assert(
+      fc.property(corner, fc.integer({ min: 0, max: 5 }), (c, digits) => {
+        const [south, west] = [8 * c.band - 80, 6 * c.zone - 186]
+        const point = c.alongBand
+          ? at(south + c.beside, west + 6 * c.share)
+          : at(south + 8 * c.share, west + c.beside)
+        const square = theValue(squareOf(point, digits))
+        expect(theValue(parseGrid(printMgrs(square)))).toEqual(square)
+        const { centre, sizeMetres } = theValue(placeOfSquare(square))
+        expect(distanceMetres(centre, point)).toBeLessThan(sizeMetres)
+      }),
+      { seed: 24, numRuns: 1500 },
     )
   })
   it('[A7] the short form near the place is the same ground', () => {
