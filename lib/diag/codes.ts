@@ -99,11 +99,15 @@ export function readDm1(bytes: readonly number[], version?: DtcVersion): Result<
   return ok({ lampsUsed: solid !== 255, lamps, codes })
 }
 
-/** The bytes in a line of hex, with or without blanks, commas, colons or `0x`. */
+/**
+ * The bytes in a line of hex, with or without blanks, commas, colons, hyphens or `0x`. Each piece holds whole bytes
+ * of two digits: `1 2` could be one byte or two, and is `notBytes`.
+ */
 export function bytesFromHex(text: string): Result<number[], CodeProblem> {
-  const digits = text.replace(/0x/gi, '').replace(/[\s,:-]/g, '')
-  if (digits.length === 0 || digits.length % 2 === 1 || /[^0-9a-f]/i.test(digits))
+  const pieces = text.split(/[\s,:-]+/).filter((piece) => piece !== '')
+  if (pieces.length === 0 || !pieces.every((piece) => /^(0x)?([0-9a-f]{2})+$/i.test(piece)))
     return fail({ kind: 'notBytes' })
+  const digits = pieces.map((piece) => piece.replace(/^0x/i, '')).join('')
   return ok((digits.match(/../g) ?? []).map((pair) => Number.parseInt(pair, 16)))
 }
 

@@ -22,6 +22,17 @@ const value = <T>(r: { ok: true; value: T } | { ok: false }): T => {
   return r.value
 }
 
+describe('bytes in hex', () => {
+  it.each(['D2041F01', 'd2 04 1f 01', '0xD2, 0x04, 0x1F, 0x01', 'D2:04-1F 01', ' D204 1F01 '])(
+    '[A8] %s are the same four bytes',
+    (text) => expect(bytes(text)).toEqual([0xd2, 0x04, 0x1f, 0x01]),
+  )
+  it.each(['', ' ', 'D2 4 1F 1', '1 2', 'D204F', '0x', 'G0', '10x2'])(
+    '[A8] "%s" is refused and not guessed',
+    (text) => expect(bytesFromHex(text)).toMatchObject({ problem: { kind: 'notBytes' } }),
+  )
+})
+
 /** Hex, version named or null, SPN, FMI, count, where the figures come from. */
 const DTCS: [string, Dtc['version'] | null, number, number, number, string][] = [
   ['D2 04 1F 01', null, 1234, 31, 1, 'agricultural-bus C++ stack, unit test of DM1 (seen)'],
@@ -54,6 +65,17 @@ describe('SAE J1939-73 trouble codes in four bytes', () => {
     expect(decodeDtc([0xd2, 0x04, 0x1f, 0x01], 2)).toMatchObject({
       problem: { kind: 'versionMismatch' },
     })
+  })
+  it('[A1] what no code holds is named, in both directions', () => {
+    expect(decodeDtc([1, 2, 3])).toMatchObject({ problem: { kind: 'wrongLength', got: 3 } })
+    for (const wrong of [256, -1, 1.5, Number.NaN])
+      expect(decodeDtc([1, 2, 3, wrong])).toMatchObject({ problem: { kind: 'notBytes' } })
+    const dtc: Dtc = { spn: 1, fmi: 1, count: 1, version: 4 }
+    const field = (over: Partial<Dtc>) => encodeDtc({ ...dtc, ...over })
+    expect(field({ spn: 524_288 })).toMatchObject({ problem: { field: 'spn' } })
+    expect(field({ fmi: 32 })).toMatchObject({ problem: { field: 'fmi' } })
+    expect(field({ count: 127 })).toMatchObject({ problem: { field: 'count' } })
+    expect(field({ spn: Number.NaN })).toMatchObject({ problem: { field: 'spn' } })
   })
   it('[STD] a count of 127 is "not available", in both directions (SAE J1939-73)', () => {
     const dtc = value(decodeDtc([0xf4, 0x04, 0x05, 0x7f]))
