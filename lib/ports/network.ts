@@ -35,6 +35,19 @@ function patienceMs(bytes: number): number {
   return LEAST_WAIT_MS + (bytes / SLOWEST_BYTES_PER_SECOND) * 1000
 }
 
+function toFetch({ method, headers, body }: NetworkRequest): RequestInit {
+  return {
+    method,
+    // A POST is answered from no cache, and saying so costs two lines of every request.
+    cache: method === 'POST' ? 'default' : 'no-store',
+    credentials: 'same-origin',
+    referrerPolicy: 'no-referrer',
+    redirect: 'error',
+    ...(headers === undefined ? {} : { headers }),
+    ...(body === undefined ? {} : { body }),
+  }
+}
+
 /** A network over any fetch; `online` is the hint. Tests hand in their own fetch. */
 export function networkOf(how: {
   fetch: typeof fetch
@@ -51,17 +64,7 @@ export function networkOf(how: {
         cut.abort()
       })
       try {
-        const answer = await how.fetch(request.path, {
-          method: request.method,
-          // A POST is answered from no cache, and saying so costs two lines of every request.
-          cache: request.method === 'POST' ? 'default' : 'no-store',
-          credentials: 'same-origin',
-          referrerPolicy: 'no-referrer',
-          redirect: 'error',
-          signal: cut.signal,
-          ...(request.headers === undefined ? {} : { headers: request.headers }),
-          ...(request.body === undefined ? {} : { body: request.body }),
-        })
+        const answer = await how.fetch(request.path, { ...toFetch(request), signal: cut.signal })
         const text = await answer.text()
         if (answer.redirected) return fail({ kind: 'noConnection' })
         return ok({
