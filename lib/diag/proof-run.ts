@@ -2,7 +2,7 @@
  * What a proof run proves (F7). Bounds are one-sided Clopper-Pearson (1934): the largest fault share at
  * which seeing this few faults still has chance 1 - confidence; found by bisection on the exact binomial.
  */
-import { binomialCdf, clopperPearson, MOST_COUNTED } from './exact-intervals'
+import { binomialCdf, clopperPearson, MOST_COUNTED, poissonInterval } from './exact-intervals'
 import { mustFit } from './figure-bounds'
 
 /** Counts up to the largest whole number that is exact; callers have parsed them, else AppError. */
@@ -98,6 +98,22 @@ export function minutesFor(before: number, ratePerMinute: number, target: number
   if (ratePerMinute === 0 || target === 0) return Number.POSITIVE_INFINITY
   const ratio = (before * (1 - target)) / (target * (1 - before))
   return Math.ceil(Math.log(ratio) / ratePerMinute - 1e-9)
+}
+
+/**
+ * Upper bound, one-sided, on how often a minute a fault shows that came `faults` times (whole, 0 to 10,000) in
+ * `minutes` under its condition: Garwood (1936). Infinite without a minute.
+ */
+export function rateBound(faults: number, minutes: number, confidence = 0.95): number {
+  mustFit({ minutes: [minutes, ...MINUTES], confidence: [confidence, ...CONFIDENCE] })
+  const { high } = poissonInterval(faults, 2 * confidence - 1)
+  return minutes === 0 ? Number.POSITIVE_INFINITY : high / minutes
+}
+
+/** Whole clean minutes needed before that bound falls to `ratePerMinute` or below: ln(1 / (1 - confidence)) / rate. */
+export function cleanMinutesFor(ratePerMinute: number, confidence = 0.95): number {
+  mustFit({ ratePerMinute: [ratePerMinute, ...RATE], confidence: [confidence, ...CONFIDENCE] })
+  return Math.ceil(-Math.log(1 - confidence) / ratePerMinute - 1e-9)
 }
 
 /** Chance of at most `faults` faults in `trials` at a true share (0 to 1); the figure behind the bounds. */

@@ -9,9 +9,11 @@ import {
   boundAfterClean,
   chanceLeft,
   chanceOfAtMost,
+  cleanMinutesFor,
   cleanStartsFor,
   minutesFor,
   proofBound,
+  rateBound,
   ruleOfThree,
   upperBound,
 } from '@/lib/diag/proof-run'
@@ -147,6 +149,21 @@ describe('proof runs', () => {
     expect(half).toBeLessThan(0.51)
     expect(upperBound(Number.MAX_SAFE_INTEGER, Number.MAX_SAFE_INTEGER)).toBe(1)
     expect(upperBound(7, 3)).toBe(1)
+  })
+  it('[STD] by the minute: 2.9957 over clean minutes, 4.7439 once it came (Garwood 1936, 90 %)', () => {
+    expect(60 * rateBound(0, 60)).toBeCloseTo(2.9957, 4)
+    expect(60 * rateBound(1, 60)).toBeCloseTo(4.7439, 4)
+    expect(rateBound(0, 0)).toBe(Number.POSITIVE_INFINITY)
+    // 2.9957 / 0.05 = 59.9: the 60th minute brings it under 0.05 a minute.
+    expect(cleanMinutesFor(0.05)).toBe(60)
+    expect(rateBound(0, 60)).toBeLessThan(0.05)
+    expect(rateBound(0, 59)).toBeGreaterThan(0.05)
+    expect(cleanMinutesFor(0)).toBe(Number.POSITIVE_INFINITY)
+    // The more sure, the longer: 99 of 100 ask ln 100 / 0.05.
+    expect(cleanMinutesFor(0.05, 0.99)).toBe(Math.ceil(Math.log(100) / 0.05))
+    expect([cleanStartsFor(0.1, 0.9), cleanStartsFor(0.1, 0.99)]).toEqual([22, 44])
+    expect(() => rateBound(0, Number.NaN)).toThrow('figureOutOfRange')
+    expect(() => cleanMinutesFor(-1)).toThrow('figureOutOfRange')
   })
   it('[F7] a share of nought asks starts without end, of one none; no rate and no target nothing that helps', () => {
     expect([cleanStartsFor(0), cleanStartsFor(1)]).toEqual([Number.POSITIVE_INFINITY, 0])
