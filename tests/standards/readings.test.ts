@@ -34,6 +34,15 @@ describe('JCGM 106:2012 clause 7 (also OIML G 1-106), conformance', () => {
     expect(erfc(0.5)).toBeCloseTo(0.4795001221869535, 14)
     expect(erfc(4)).toBeCloseTo(1.541725790028002e-8, 19)
   })
+  it.each([
+    [1.5, 0.033894853524689274],
+    [2, 0.004677734981047266],
+    [2.5, 0.000406952017444959],
+    [2.9, 0.000041097878099458858],
+    [3.5, 7.430983723414128e-7],
+  ])('[STD] the tail of erf keeps its digits at %s (forty-digit arithmetic)', (x, want) => {
+    expect(Math.abs(erfc(x) / want - 1)).toBeLessThan(1e-14)
+  })
 })
 
 describe('JCGM 100:2008 4.3.7, a meter data sheet as a standard uncertainty', () => {
