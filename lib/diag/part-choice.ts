@@ -1,7 +1,11 @@
 import type { SpecSheet } from '@/lib/model/machine-model'
 import type { PartRequest } from '@/lib/model/part-request'
+import { type Bounded, mustFit, unfit } from './figure-bounds'
 
-/** Figures of the choice between a genuine and an aftermarket part: money in minor units, chances 0 to 1. */
+/**
+ * Figures of the choice between a genuine and an aftermarket part: money in minor units from 0, chances 0 to 1. What
+ * is outside breaks an assumption here (AppError); `adviceFor` parses the sheet's own figures.
+ */
 export type PartFigures = {
   genuineMinor: number
   aftermarketMinor: number
@@ -25,13 +29,15 @@ export type PartAdvice = {
  * recovery only the prices count.
  */
 export function breakEven(figures: PartFigures): number {
+  mustFit(boundsOf(figures))
   const saved = figures.genuineMinor - figures.aftermarketMinor
-  if (figures.recoveryMinor <= 0) return saved > 0 ? 1 : saved < 0 ? 0 : figures.genuineFails
+  if (figures.recoveryMinor === 0) return saved > 0 ? 1 : saved < 0 ? 0 : figures.genuineFails
   return Math.min(1, Math.max(0, figures.genuineFails + saved / figures.recoveryMinor))
 }
 
 /** Which part to fit by expected cost = price + chance of failing x second recovery; equal within half a minor unit. */
 export function advisePart(figures: PartFigures & { aftermarketFails: number | null }): PartAdvice {
+  mustFit(boundsOf(figures))
   const expectedGenuineMinor = figures.genuineMinor + figures.genuineFails * figures.recoveryMinor
   const shared = { breakEven: breakEven(figures), expectedGenuineMinor }
   if (figures.aftermarketFails === null)
@@ -54,7 +60,8 @@ export type AdvisedPart = {
 
 /**
  * Genuine against aftermarket for a part of the spec sheet (F8). `recoveryMinor`: what a second recovery costs
- * the shop. Null when there is no choice to advise on: no such part, no aftermarket one, no recovery cost.
+ * the shop. Null when there is no choice to advise on: no such part, no aftermarket one, no recovery cost, or
+ * figures that cannot be, as more failures than parts.
  */
 export function adviceFor(
   part: SheetPart | null,
@@ -69,8 +76,20 @@ export function adviceFor(
     genuineFails: genuineFailsOf100 / 100,
     aftermarketFails: aftermarketFailsOf100 === null ? null : aftermarketFailsOf100 / 100,
   }
-  return { figures, advice: advisePart(figures) }
+  return unfit(boundsOf(figures)) === null ? { figures, advice: advisePart(figures) } : null
 }
+
+const MONEY = [0, Number.MAX_SAFE_INTEGER] as const
+
+const boundsOf = (
+  figures: PartFigures & { aftermarketFails?: number | null },
+): Record<string, Bounded> => ({
+  genuineMinor: [figures.genuineMinor, ...MONEY],
+  aftermarketMinor: [figures.aftermarketMinor, ...MONEY],
+  recoveryMinor: [figures.recoveryMinor, ...MONEY],
+  genuineFails: [figures.genuineFails, 0, 1],
+  aftermarketFails: [figures.aftermarketFails ?? 0, 0, 1],
+})
 
 /** The sum as it goes with the part request, so that the desk sees what was shown in the field (F8). */
 export function adviceRecord(advised: AdvisedPart | null): PartRequest['advice'] {

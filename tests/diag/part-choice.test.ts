@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest'
 import { condemnedBy } from '@/lib/diag/condemned-by'
-import { adviceFor, adviceRecord } from '@/lib/diag/part-choice'
+import { adviceFor, adviceRecord, advisePart, breakEven } from '@/lib/diag/part-choice'
 
 describe('genuine or aftermarket part, from the spec sheet', () => {
   const coil = {
@@ -13,6 +13,20 @@ describe('genuine or aftermarket part, from the spec sheet', () => {
     aftermarketFailsOf100: 12,
     source: 'the demo shop (invented)',
   }
+
+  it('[A1] figures that cannot be give no advice, and never one that is no number', () => {
+    for (const wrong of [
+      { genuineFailsOf100: 102 },
+      { genuineFailsOf100: -1 },
+      { aftermarketFailsOf100: 101 },
+      { aftermarketMinor: -2500 },
+    ])
+      expect(adviceFor({ ...coil, ...wrong }, 30_000)).toBeNull()
+    expect(adviceFor(coil, -1)).toBeNull()
+    const figures = { genuineMinor: 1, aftermarketMinor: 1, recoveryMinor: 1, genuineFails: 0 }
+    expect(() => breakEven({ ...figures, genuineFails: Number.NaN })).toThrow('figureOutOfRange')
+    expect(() => advisePart({ ...figures, aftermarketFails: 2 })).toThrow('figureOutOfRange')
+  })
 
   // By hand: 2 of 100 + (135 - 25) / 300 = 38.67 of 100; 135 + 0.02 x 300 = 141 and 25 + 0.12 x 300 = 61.
   it('[F8] goes with the request as it was shown, in shares', () => {
