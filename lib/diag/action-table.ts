@@ -1,6 +1,7 @@
 import type { CheckItem, SwapItem } from '@/lib/model/code-book'
+import { standingFor } from './evidence'
 import { swapSlot } from './evidence-swap'
-import { type Sight, tableOf } from './evidence-table'
+import { type Sight, tableAt, tableOf } from './evidence-table'
 import { type Factor, tableFactor } from './factor'
 import { type OutcomeTable, outcomeChances, turned } from './outcome-table'
 import { swapWeights } from './swap-weights'
@@ -13,9 +14,9 @@ export type ActionTable = {
   scope: readonly number[]
   /** Chances of the outcomes with these suspects present (sum 1). */
   chances: (present: readonly number[]) => number[]
-  /** The evidence of each outcome, and what it would stand in the place of. */
+  /** The evidence of each outcome, and the slots of what it would stand in the place of. */
   factors: readonly Factor[]
-  slot: string
+  replaces: readonly string[]
 }
 
 /** Outcomes of a swap in the order of its table. */
@@ -25,9 +26,13 @@ export const SWAP_OUTCOMES = [
   { id: 'goneAndBack', name: 'Gone, and back again with the old part', good: false },
 ] as const
 
-/** The table of a check: with the meter at hand where it is a reading, else the book's own. */
+/**
+ * The table of a check done now: with the meter at hand where it is a reading, else the book's own. Of a fault
+ * that was fixed it sees the new part.
+ */
 export function checkTable(sight: Sight, check: CheckItem): ActionTable {
-  const table: OutcomeTable = verdictTable(sight, check) ?? tableOf(sight.place, check)
+  const book: OutcomeTable = verdictTable(sight, check) ?? tableOf(sight.place, check)
+  const table = tableAt(sight, book, sight.c.entries.length)
   return {
     outcomes: check.outcomes,
     scope: [...table.rows.keys()],
@@ -38,7 +43,7 @@ export function checkTable(sight: Sight, check: CheckItem): ActionTable {
         check.outcomes.map((_o, k) => (k === seen ? 1 : 0)),
       ),
     ),
-    slot: `outlook ${check.id}`,
+    replaces: standingFor(sight, check.id),
   }
 }
 
@@ -62,6 +67,6 @@ export function swapTable({ c, place }: Sight, swap: SwapItem): ActionTable | nu
     factors: SWAP_OUTCOMES.map((_, seen) =>
       tableFactor(table, done.map((w, k) => (k === seen ? w : 0)).reverse()),
     ),
-    slot: swapSlot(swap.id),
+    replaces: [swapSlot(swap.id)],
   }
 }

@@ -3,10 +3,11 @@
  * of the job log. `why` splits the change of log-odds in the order of the log: each piece gets the change it
  * makes after all earlier ones, so the pieces sum to the whole exactly; the chances do not depend on that order.
  */
+import { AppError } from '@/lib/model/result'
 import { SOMETHING_ELSE } from './book-index'
 import type { Case } from './case'
 import { evidenceOf } from './evidence'
-import type { About, Evidence } from './evidence-table'
+import { type About, type Evidence, leftOut } from './evidence-table'
 import type { Factor } from './factor'
 import { type Summary, summarise } from './joint'
 import { type Candidate, candidates } from './priors'
@@ -36,8 +37,8 @@ export type Belief = {
   chanceOfTwoOrMore: number
   chanceOnlySomethingElse: number
   notices: ('moreThanOneLikely' | 'maybeNotInList')[]
-  /** False where the evidence was too wide to be summed to the end (joint.ts). */
-  isExact: boolean
+  /** Entries that do not count, as more evidence than can be summed came before them (joint.ts, evidence.ts). */
+  notCounted: string[]
 }
 
 /** Above this chance the screen gives notice and the plan looks one action ahead (rule R5). */
@@ -70,25 +71,30 @@ export function belief(c: Case): Belief {
     chanceOfTwoOrMore: last.twoOrMore,
     chanceOnlySomethingElse: only,
     notices,
-    isExact: last.isExact,
+    notCounted: reckoning.evidence.filter((e) => e.isLeftOut).map((e) => e.entryId),
   }
 }
 
-/** The evidence of a case taken in one piece after the other. */
+const TOO_WIDE = 'too much evidence over the same suspects'
+
+/** The evidence of a case taken in one piece after the other; one that cannot be summed with the rest is left out. */
 export function reckon(c: Case): Reckoning {
   const suspects = candidates(c)
   const odds = suspects.map((s) => s.odds)
-  const evidence = evidenceOf(c, suspects)
   const factors = new Map<string, Factor>()
-  let last = summarise(odds, [])
+  const prior = summarise(odds, [])
+  if (prior === null) throw new AppError('tooLarge')
+  let last: Summary = prior
   const steps = [last]
-  for (const piece of evidence) {
-    if (piece.factor !== null) {
-      factors.set(piece.slot, piece.factor)
-      last = summarise(odds, [...factors.values()])
-    }
+  const evidence = evidenceOf(c, suspects).map((piece) => {
+    const { slot, factor } = piece
+    const after =
+      factor === null ? last : summarise(odds, [...new Map(factors).set(slot, factor).values()])
+    if (factor !== null && after !== null) factors.set(slot, factor)
+    last = after ?? last
     steps.push(last)
-  }
+    return after === null ? leftOut(piece, TOO_WIDE) : piece
+  })
   return { suspects, evidence, steps, last, factors }
 }
 

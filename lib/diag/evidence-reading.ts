@@ -11,8 +11,8 @@ import type { SpecValue } from '@/lib/model/machine-model'
 import { twinKey } from './evidence-log'
 import { type Evidence, nothing, type Sight, stillThere, tableAt, tableOf } from './evidence-table'
 import { type Factor, tableFactor } from './factor'
-import { meanMachine } from './machine'
-import { between } from './normal'
+import { meanMachine, runMachine } from './machine'
+import { between, density as normalDensity } from './normal'
 import { canDecide, judge, middleOf } from './reading'
 import { budgetOf } from './reading-budget'
 import { problemWords, readingProblem } from './reading-problem'
@@ -20,8 +20,10 @@ import { agrees, differenceU } from './twin-difference'
 
 /** Share of readings that have nothing to do with the part (slipped probe, wrong pin; guess). */
 const OUTLIERS = 0.02
-/** Such a reading lies anywhere within ten nominal values (guess): a density of 1 in 20 nominals. */
+/** Such a reading lies anywhere within five nominal values, or thins out beyond (guess): 1 in 20 per nominal. */
 const ANYWHERE = 1 / 20
+/** A piece of the true value narrower than this share of u counts as a point (right to 1e-6 within 5 u). */
+const NARROW = 1e-3
 /** However far out a reading lies, it keeps a likelihood: below this it tells the states apart no more. */
 const LEAST = 1e-60
 
@@ -101,14 +103,8 @@ function densityFactor(
     const there = stillThere(sight, fault, at)
     bad.set(place, there * likelihood(pieces, shown, nominal) + (1 - there) * good)
   }
-  return {
-    scope: [...bad.keys()],
-    at: (present) => {
-      if (present.length === 0) return good
-      return present.reduce((sum, f) => sum + (bad.get(f) ?? good), 0) / present.length
-    },
-    machine: meanMachine(good, bad),
-  }
+  const machine = meanMachine(good, bad)
+  return { scope: [...bad.keys()], at: (present) => runMachine(machine, present), machine }
 }
 
 const weightOf = (pieces: readonly Piece[]): number => pieces.reduce((sum, p) => sum + p.weight, 0)
@@ -116,8 +112,11 @@ const weightOf = (pieces: readonly Piece[]): number => pieces.reduce((sum, p) =>
 function density(pieces: readonly Piece[], x: number, u: number): number {
   if (pieces.length === 0) return ANYWHERE
   const sum = pieces.reduce((total, { weight, from, to }) => {
-    const width = Math.max(to - from, u * 1e-3)
-    return total + (weight / width) * between((from - x) / u, (from + width - x) / u)
+    const [a, b] = [(from - x) / u, (to - x) / u]
+    // A piece that is narrow beside u is a point: between its ends the digits would cancel.
+    const isPoint = to - from < NARROW * u
+    const high = isPoint ? normalDensity((a + b) / 2) / u : between(a, b) / (to - from)
+    return total + weight * high
   }, 0)
   return sum / weightOf(pieces)
 }

@@ -24,6 +24,8 @@ export type Evidence = {
   factor: Factor | null
   /** The factor stands in the place of an earlier one of the same slot: the steps of one swap say one thing. */
   slot: string
+  /** It would speak, but is more than can be counted. */
+  isLeftOut: boolean
 }
 
 /** Everything a builder of evidence may look at; `place` is where each fault stands among the suspects. */
@@ -49,6 +51,15 @@ export const nothing = (entry: LogEntry, about: About, label: string): Evidence 
   label,
   factor: null,
   slot: entry.id,
+  isLeftOut: false,
+})
+
+/** A piece that does not count, and why. */
+export const leftOut = (piece: Evidence, why: string): Evidence => ({
+  ...piece,
+  label: `${piece.label} (not counted: ${why})`,
+  factor: null,
+  isLeftOut: true,
 })
 
 /** A table over the suspects of this case from a book's rows; rows equal to `otherwise`, or of another length, touch nothing. */

@@ -11,7 +11,15 @@ import { fixesBefore } from './evidence-log'
 import { isShedByTwin, readingEvidence } from './evidence-reading'
 import { runEvidence } from './evidence-run'
 import { swapEvidence } from './evidence-swap'
-import { type Evidence, nothing, type Sight, sightOf, tableAt, tableOf } from './evidence-table'
+import {
+  type Evidence,
+  leftOut,
+  nothing,
+  type Sight,
+  sightOf,
+  tableAt,
+  tableOf,
+} from './evidence-table'
 import { saysNothing, tableFactor } from './factor'
 import type { Candidate } from './priors'
 
@@ -60,8 +68,7 @@ function counted(piece: Evidence, speaking: Set<string>): Evidence {
     speaking.add(piece.slot)
     return piece
   }
-  const label = `${piece.label} (not counted: ${MOST_PIECES} pieces of evidence are the most)`
-  return { ...piece, factor: null, label }
+  return leftOut(piece, `${MOST_PIECES} pieces of evidence are the most`)
 }
 
 /** The place of the newest entry by its key, see `keyOf`. */
@@ -125,15 +132,19 @@ function codeEvidence(
     const seat = fault.circuits.find((s) => s.circuit === circuit)
     if (seatAt === undefined || seat === undefined) continue
     const of100 = (failure === null ? null : roleOf100(failure, seat.role)) ?? CIRCUIT_ONLY.member
-    rows.set(seatAt, [1 - of100 / 100, of100 / 100])
+    const set = neverSure(of100)
+    rows.set(seatAt, [1 - set, set])
   }
   const known = failure !== null && failure.byRole !== null
-  const leak = Math.max(0.01, known ? failure.otherwise : CIRCUIT_ONLY.otherwise) / 100
+  const leak = neverSure(known ? failure.otherwise : CIRCUIT_ONLY.otherwise)
   const old = OLD_CODE[body.context.status]
   const table = { rows, otherwise: [1 - leak, leak] }
   const now = body.context.status === 'active' ? tableAt(sight, table, at) : table
   return { ...nothing(entry, 'code', label), factor: tableFactor(now, [old, 1]) }
 }
+
+/** Of 100 as a chance, never under 1 of 10,000 nor so near to 1 (guess): one code may rule nothing out for good. */
+const neverSure = (of100: number): number => Math.min(99.99, Math.max(0.01, of100)) / 100
 
 function checkEvidence(
   { sight, latest }: Seen,
@@ -175,6 +186,19 @@ function fixesTouching({ c, log }: Sight, checkId: string, at: number): number {
     ...Object.keys(check?.reading?.byFault ?? {}),
   ])
   return [...faults].reduce((count, fault) => count + fixesBefore(log, fault, at), 0)
+}
+
+/** The entries whose place a check would take if it were done again now. */
+export function standingFor(sight: Sight, checkId: string): string[] {
+  const { entries } = sight.c
+  const round = fixesTouching(sight, checkId, entries.length)
+  return entries.flatMap(({ id, body }, at) => {
+    const isOfCheck =
+      body.kind === 'check' || (body.kind === 'reading' && body.subject === 'suspect')
+    const isStanding =
+      isOfCheck && body.checkId === checkId && fixesTouching(sight, checkId, at) === round
+    return isStanding ? [id] : []
+  })
 }
 
 /** Where an outcome stands: by its own id, else `good` is the first and `bad` the last; null for any other. */

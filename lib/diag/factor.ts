@@ -21,8 +21,13 @@ export function tableFactor(table: OutcomeTable, weights: readonly number[]): Fa
   }
 }
 
-/** Whether the evidence is the same under every set of its suspects: then it says nothing. */
-export function saysNothing(factor: Factor): boolean {
-  const base = factor.at([])
-  return factor.scope.every((f) => factor.at([f]) === base)
+/**
+ * Whether the evidence is the same under every set of up to two of its suspects: then it says nothing. One at a time
+ * would not do: an outcome between two others may be as likely under each as under none, but not under both.
+ */
+export function saysNothing({ scope, at }: Factor): boolean {
+  const base = at([])
+  return scope.every(
+    (f, i) => at([f]) === base && scope.slice(0, i).every((g) => at([g, f]) === base),
+  )
 }

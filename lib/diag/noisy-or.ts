@@ -5,8 +5,8 @@
  * nothing cancels (compare Heckerman 1989, whose sum alternates).
  */
 import { AppError } from '@/lib/model/result'
+import { sumsOver } from './all-sets'
 import { type Machine, seenMachine } from './machine'
-import { sweep } from './sweep'
 import { orderOf } from './sweep-order'
 import type { NoisyOrModel } from './troubleshoot-model'
 
@@ -19,15 +19,14 @@ type Weight = { absent: number; present: number }
 /**
  * P(each fault | evidence). With condition `atLeastOne` no-fault is excluded. Throws AppError `badModel` (with the
  * field) for a number that is no chance, `tooLarge` where more than 2^20 combinations of present findings stand at
- * once, and `impossible` when the evidence cannot come about.
+ * once over more than sixteen faults, and `impossible` when the evidence cannot come about.
  */
 export function noisyOrMarginals(model: NoisyOrModel): Record<string, number> {
   checkChances(model)
   const { machines, weights } = evidenceOf(model)
   const order = orderOf(machines)
-  if (order.mostStates > 2 ** MOST_POSITIVE)
-    throw new AppError('tooLarge', { context: { states: order.mostStates } })
-  const sums = sweep(machines, order, weights)
+  const sums = sumsOver(machines, { order, weights, mostStates: 2 ** MOST_POSITIVE })
+  if (sums === null) throw new AppError('tooLarge', { context: { states: order.mostStates } })
   const places = new Map(order.steps.map((step, i) => [step.suspect, i]))
   const free = weights.map((w, f) => (places.has(f) ? 0 : w.present / (w.absent + w.present)))
   const isOneThere = model.condition === 'atLeastOne' ? anyOf(free) : 1

@@ -31,14 +31,12 @@ export type Push = {
   isBetter: boolean
   /** Beside others: q by outcome, rising, 1 at the last; `otherwise` alone where the row is better. */
   beside: readonly number[]
-  /** Whether the row alone is `otherwise` times those q, so that alone and beside need no telling apart. */
-  isSteady: boolean
   /** How far the row lies from `otherwise` toward the good outcome. */
   far: number
 }
 
 /** Rounding of a sum of a row's chances; a smaller difference is none. */
-const EVEN = 1e-12
+export const EVEN = 1e-12
 
 /** The push of each row of a table, by suspect. */
 export function pushesOf({ rows, otherwise }: OutcomeTable): Map<number, Push> {
@@ -92,7 +90,6 @@ function pushOf(row: readonly number[], base: readonly number[]): Push {
     row,
     isBetter: apart.every((d) => d >= -EVEN),
     beside,
-    isSteady: upTo.every((own, k) => Math.abs(own - (base[k] ?? 1) * (beside[k] ?? 1)) < EVEN),
     far: apart.reduce((sum, d) => sum + d, 0),
   }
 }

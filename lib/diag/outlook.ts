@@ -2,7 +2,7 @@ import { type ActionTable, checkTable, swapTable } from './action-table'
 import { type Reckoning, reckon } from './belief'
 import type { Case } from './case'
 import { type Sight, sightOf } from './evidence-table'
-import { type Summary, summarise } from './joint'
+import { MOST_STATES, summarise } from './joint'
 import { SAYS_NOTHING_BELOW } from './news'
 
 /** What one outcome would lead to: how likely it is now, and every suspect's chance after it (0 to 1). */
@@ -35,34 +35,34 @@ export function tableFor(
   return swap === undefined ? null : swapTable(sight, swap)
 }
 
-/** The outlook on a reckoned belief, and whether no outcome moves any suspect by 3 of 100 or more. */
+/** Combinations of states of an outlook: four times those of the belief it is an outlook on. */
+const MOST_OUTLOOK_STATES = 4 * MOST_STATES
+
+/**
+ * The outlook on a reckoned belief, and whether no outcome moves any suspect by 3 of 100 or more. Without outcomes
+ * where one of them cannot be summed with the evidence (joint.ts).
+ */
 export function outlookOf(
-  reckoning: Reckoning,
+  { suspects, last, factors }: Reckoning,
   table: ActionTable,
-): { outcomes: Outcome[]; saysNothing: boolean; summaries: Summary[] } {
-  const { suspects, last } = reckoning
-  const summaries = summariesAfter(reckoning, table)
-  const most = Math.max(...summaries.map((s) => s.logEvidence))
-  const weights = summaries.map((s) => Math.exp(s.logEvidence - most))
+): { outcomes: Outcome[]; saysNothing: boolean } {
+  const odds = suspects.map((s) => s.odds)
+  const others = [...factors].flatMap(([slot, f]) => (table.replaces.includes(slot) ? [] : [f]))
+  const summaries = table.factors.map((factor) =>
+    summarise(odds, [...others, factor], MOST_OUTLOOK_STATES),
+  )
+  const all = summaries.filter((s) => s !== null)
+  if (all.length < summaries.length) return { outcomes: [], saysNothing: false }
+  const most = Math.max(...all.map((s) => s.logEvidence))
+  const weights = all.map((s) => Math.exp(s.logEvidence - most))
   const total = weights.reduce((sum, w) => sum + w, 0)
   const outcomes = table.outcomes.map(({ id, name, good }, k) => {
-    const summary = summaries[k]
     const probability = (weights[k] ?? 0) / total
-    const chances = suspects.map((s, f) => [s.fault, summary?.marginals[f] ?? 0] as const)
+    const chances = suspects.map((s, f) => [s.fault, all[k]?.marginals[f] ?? 0] as const)
     return { outcome: id, name, good, probability, chances: Object.fromEntries(chances) }
   })
-  const moved = summaries.some((s) =>
+  const moved = all.some((s) =>
     s.marginals.some((p, f) => Math.abs(p - (last.marginals[f] ?? 0)) >= SAYS_NOTHING_BELOW),
   )
-  return { outcomes, saysNothing: !moved, summaries }
-}
-
-/** Combinations of states an outlook may carry: it is reckoned for every check at hand, on a phone (joint.ts). */
-const MOST_OUTLOOK_STATES = 16_384
-
-function summariesAfter({ suspects, factors }: Reckoning, table: ActionTable): Summary[] {
-  const odds = suspects.map((s) => s.odds)
-  return table.factors.map((factor) =>
-    summarise(odds, [...new Map(factors).set(table.slot, factor).values()], MOST_OUTLOOK_STATES),
-  )
+  return { outcomes, saysNothing: !moved }
 }

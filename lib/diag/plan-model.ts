@@ -4,9 +4,10 @@
  * rows of the lump are what is left of each outcome's chance when the single faults are taken out.
  */
 import type { CheckItem, FaultItem, SwapItem } from '@/lib/model/code-book'
+import type { LogBody } from '@/lib/model/log-entry'
 import { type ActionTable, checkTable, swapTable } from './action-table'
 import { type Reckoning, reckon } from './belief'
-import { SOMETHING_ELSE } from './book-index'
+import { type BookIndex, SOMETHING_ELSE } from './book-index'
 import type { Case } from './case'
 import { type Sight, sightOf } from './evidence-table'
 import { letsThrough } from './gate'
@@ -87,7 +88,7 @@ function checksOf(doing: Doing, outlooks: Map<string, Outcome[]>): SingleModel['
     if (!letsThrough(check.gate, c.features)) return []
     const table = checkTable(doing.sight, check)
     if (table.scope.length === 0) return []
-    const why = recorded(c, check) ?? whyNotCheck(c.index, check, means)
+    const why = recorded(doing.sight, check) ?? whyNotCheck(c.index, check, means)
     const action = {
       id: check.id,
       cost: check.costMinor,
@@ -132,6 +133,7 @@ function enter(
   const cannot = given.cannot?.() ?? null
   if (cannot !== null) return cannot
   const { outcomes, saysNothing } = outlookOf(reckoning, table)
+  if (outcomes.length === 0) return 'Cannot be summed with everything that was recorded.'
   if (saysNothing) return 'Says nothing here: no outcome moves a suspect by 3 of 100.'
   outlooks.set(`${kind}:${action.id}`, outcomes)
   return {
@@ -202,15 +204,25 @@ function repairOf(
   }
 }
 
-function recorded({ entries }: Case, check: CheckItem): string | null {
-  const last = entries.findLast(
-    ({ body }) =>
-      (body.kind === 'check' || body.kind === 'couldNot' || body.kind === 'reading') &&
-      body.checkId === check.id,
-  )?.body
-  if (last === undefined) return null
-  return last.kind === 'couldNot' ? `Could not be done: ${last.reason}` : 'Done.'
+/**
+ * Why a check is not offered again; null when it is open. What was seen before a fix of something the check looks
+ * at speaks of the old part (docs/spec/diag.md, E4): such a check is offered once more.
+ */
+function recorded({ c: { entries }, log }: Sight, check: CheckItem): string | null {
+  const at = entries.findLastIndex(({ body }) => isOf(body, check))
+  const body = entries[at]?.body
+  if (body === undefined) return null
+  if (body.kind === 'couldNot') return `Could not be done: ${body.reason}`
+  const looksAt = [...Object.keys(check.table), ...Object.keys(check.reading?.byFault ?? {})]
+  return looksAt.some((fault) => (log.fixes.get(fault)?.at(-1) ?? -1) > at) ? null : 'Done.'
 }
+
+/** Whether an entry is of this check; a reading of the good twin alone leaves the suspect still to be read. */
+const isOf = (body: LogBody, check: CheckItem): boolean =>
+  (body.kind === 'check' ||
+    body.kind === 'couldNot' ||
+    (body.kind === 'reading' && body.subject === 'suspect')) &&
+  body.checkId === check.id
 
 function cannotDecide(c: Case, check: CheckItem): string | null {
   const fitness = fitnessFor(c, check)
@@ -220,21 +232,41 @@ function cannotDecide(c: Case, check: CheckItem): string | null {
 const allParts = ({ c }: Doing): string[] =>
   [...c.index.faults.values()].flatMap((f) => (f.repair?.part == null ? [] : [f.repair.part]))
 
-/** Set-ups opened by what was done since the last proof run, where a test run closes them, else for good. */
+/** Set-ups opened by what was done since the last test run, where a test run closes them, else for good. */
 function openSetups({ entries, index }: Case): string[] {
+  const closed = closedByTest(index)
   let open: string[] = []
   for (const { body } of entries) {
-    if (body.kind === 'proofRun' && body.starts > 0)
-      open = open.filter((id) => index.setups.get(id)?.closedByTest !== true)
-    const item =
-      body.kind === 'check' || body.kind === 'reading'
-        ? index.checks.get(body.checkId)
-        : body.kind === 'swap'
-          ? index.swaps.get(body.swapId)
-          : undefined
-    open.push(...(item?.setups ?? []).filter((id) => index.setups.has(id)))
+    if (body.kind === 'proofRun' && body.starts + body.minutes > 0)
+      open = open.filter((id) => !closed.has(id))
+    open.push(...setupsFor(index, body).filter((id) => index.setups.has(id)))
   }
   return [...new Set(open)]
+}
+
+function setupsFor(index: BookIndex, body: LogBody): readonly string[] {
+  switch (body.kind) {
+    case 'check':
+    case 'reading':
+      return index.checks.get(body.checkId)?.setups ?? []
+    case 'swap':
+      return index.swaps.get(body.swapId)?.setups ?? []
+    case 'fix':
+      return index.faults.get(body.fault)?.repair?.setups ?? []
+    default:
+      return []
+  }
+}
+
+/** Set-ups that a test run closes: those that say so and all that require them. */
+function closedByTest({ setups }: BookIndex): ReadonlySet<string> {
+  const all = [...setups.values()]
+  const closed = new Set(all.flatMap((s) => (s.closedByTest ? [s.id] : [])))
+  for (let before = -1; before < closed.size; ) {
+    before = closed.size
+    for (const { id, requires } of all) if (requires.some((r) => closed.has(r))) closed.add(id)
+  }
+  return closed
 }
 
 /** What no longer fits before the leave-by time, set-ups and test run included, with how far it is over (rule R6). */

@@ -11,8 +11,10 @@ import { type Candidate, lookAhead } from './look-ahead'
 import type { Outcome } from './outlook'
 import { type Kind, type LeftOut, type Means, minutesHere } from './plan-means'
 import { fixedFaults, type PlanModel, planModel, TEST_RUN_MINUTES } from './plan-model'
-import { leftOf, openOf, problemOf, weightsOf } from './search-problem'
-import { type NextAction, nextAction } from './troubleshoot'
+import { kindOf, type PlanOutcome, planOutcomes, stepName } from './plan-outcomes'
+import type { Action } from './search-moves'
+import { leftOf, openOf, type Problem, problemOf, weightsOf } from './search-problem'
+import { type NextAction, nextAction, oneAhead, outcomesAhead } from './troubleshoot'
 
 export type { LeftOut, Means }
 
@@ -40,6 +42,8 @@ export type Plan = {
   others: PlannedAction[]
   /** What the next step decides, in one plain sentence. */
   decides: string
+  /** What each outcome of the next step leads to; empty for a way out, and while a fix is to be proved. */
+  outcomes: PlanOutcome[]
   /** `prove`: a fix is in and the fault was not seen since; what is left is the proof run. */
   stage: 'find' | 'prove'
 }
@@ -59,17 +63,24 @@ export function nextStep(c: Case, means: Means): Plan {
   const { twoOrMore, only } = built.reckoning.last
   const at = built.reckoning.suspects.findIndex((s) => s.fault === SOMETHING_ELSE)
   const oneStep = twoOrMore > NOTICE_ABOVE || (only[at] ?? 0) > NOTICE_ABOVE
-  const ranked = lookAhead(problem, spot, oneStep ? 1 : 2).map((r) => named(c, problem, r))
-  const best: Ranked = oneStep
-    ? first(ranked)
-    : searched(nextAction(built.model, built.state), ranked)
-  const rows = inOrder(c, best, ranked)
+  const ranked = lookAhead(problem, spot, oneStep ? 0 : undefined)
+  const best = oneStep ? oneAhead({ problem, spot }, ranked) : nextAction(built.model, built.state)
+  const rows = inOrder(
+    c,
+    rowsOf(c, best),
+    ranked.map((r) => rowOf(c, problem, r)),
+  )
   const planned = rows.map((r) => plannedAction(c, means, r))
   const [next, runnerUp = null, ...others] = planned
   const chosen =
     next ?? plannedAction(c, means, { type: 'stop', id: 'tow', cost: means.shop.towMinor })
   const differenceMinor =
     runnerUp === null ? 0 : runnerUp.expectedCostMinor - chosen.expectedCostMinor
+  // The step put first for its safety is not the one that was searched for: its outcomes are looked up.
+  const leads =
+    chosen.id === best.id
+      ? best.outcomes
+      : outcomesAhead({ problem, spot }, placeOf(problem, chosen), oneStep ? 0 : undefined)
   return {
     next: chosen,
     runnerUp,
@@ -79,48 +90,39 @@ export function nextStep(c: Case, means: Means): Plan {
     leftOut: built.leftOut,
     others,
     decides: decidesWords(c, built, chosen),
+    outcomes: planOutcomes(c, chosen, leads),
     stage: 'find',
   }
 }
 
 type Row = { type: Kind; id: string; cost: number }
-type Ranked = { rows: Row[]; gap: number }
 
-const named = (
-  c: Case,
-  problem: ReturnType<typeof problemOf>,
-  { type, index, cost }: Candidate,
-): Row => {
+const rowOf = (c: Case, problem: Problem, { type, index, cost }: Candidate): Row => {
   const list = { check: problem.checks, repair: problem.repairs, stop: problem.stops }[type]
   return { ...kindOf(c, { type, id: list[index]?.id ?? '' }), cost }
 }
 
-/** Checks and swaps share one list in the model; the book tells them apart. */
-const kindOf = (c: Case, { type, id }: { type: 'check' | 'repair' | 'stop'; id: string }) => ({
-  type: type === 'check' && c.index.swaps.has(id) ? ('swap' as const) : type,
-  id,
-})
+/** Where a step stands in the problem. */
+function placeOf(problem: Problem, { type, id }: PlannedAction): Action {
+  const kind = type === 'swap' ? 'check' : type
+  const list = { check: problem.checks, repair: problem.repairs, stop: problem.stops }[kind]
+  return { type: kind, index: list.findIndex((one) => one.id === id) }
+}
 
-const first = (rows: readonly Row[]): Ranked => ({ rows: rows.slice(0, 2), gap: 0 })
-
-/** The search's own two best; behind them the costs of plans that the look-ahead found. */
-function searched(answer: NextAction, ranked: readonly Row[]): Ranked {
-  const { type, id, expectedCost, runnerUp, gap } = answer
-  const rowOf = (a: { id: string; expectedCost: number }, kind: string): Row => {
-    const known = ranked.find((r) => r.id === a.id && (r.type === kind || r.type === 'swap'))
-    return { type: known?.type ?? 'stop', id: a.id, cost: a.expectedCost }
-  }
-  const rows = [rowOf({ id, expectedCost }, type)]
-  if (runnerUp !== null) rows.push(rowOf(runnerUp, runnerUp.type))
-  return { rows, gap }
+/** The two best by the search; behind them stand the costs of plans that the look-ahead found. */
+function rowsOf(c: Case, { type, id, expectedCost, runnerUp }: NextAction): Row[] {
+  const best = { ...kindOf(c, { type, id }), cost: expectedCost }
+  return runnerUp === null
+    ? [best]
+    : [best, { ...kindOf(c, runnerUp), cost: runnerUp.expectedCost }]
 }
 
 /** Best first; among equals a check that costs nothing and carries no caution goes before the rest. */
-function inOrder(c: Case, best: Ranked, ranked: readonly Row[]): Row[] {
-  const seen = new Set(best.rows.map((r) => `${r.type}:${r.id}`))
-  const least = best.rows[0]?.cost ?? 0
+function inOrder(c: Case, best: readonly Row[], ranked: readonly Row[]): Row[] {
+  const seen = new Set(best.map((r) => `${r.type}:${r.id}`))
+  const least = best[0]?.cost ?? 0
   const rest = ranked.filter((r) => !seen.has(`${r.type}:${r.id}`) && Number.isFinite(r.cost))
-  const rows = [...best.rows, ...rest.map((r) => ({ ...r, cost: Math.max(r.cost, least) }))]
+  const rows = [...best, ...rest.map((r) => ({ ...r, cost: Math.max(r.cost, least) }))]
   const safe = (r: Row) =>
     r.type === 'check' && c.index.checks.get(r.id)?.costMinor === 0 && cautionOf(c, r) === null
   const [a, b] = rows
@@ -130,38 +132,21 @@ function inOrder(c: Case, best: Ranked, ranked: readonly Row[]): Row[] {
 }
 
 function plannedAction(c: Case, means: Means, row: Row): PlannedAction {
-  const check = c.index.checks.get(row.id)
-  const swap = c.index.swaps.get(row.id)
-  const shared = { type: row.type, id: row.id, expectedCostMinor: row.cost }
-  const caution = cautionOf(c, row)
-  if (row.type === 'check' && check !== undefined) {
-    const tools = check.tools.map((t) => t.tool)
-    const people = Math.min(check.people, means.people)
-    const minutes = minutesHere(check.minutes, means)
-    return { ...shared, name: check.name, minutes, tools, people, caution }
-  }
-  if (row.type === 'swap' && swap !== undefined) {
-    const minutes = minutesHere(swap.minutes, means)
-    return { ...shared, name: swap.name, minutes, tools: [], people: 1, caution }
-  }
-  const fault = c.index.faults.get(row.id)
-  if (row.type === 'repair' && fault !== undefined) {
-    const minutes = minutesHere((fault.repair?.minutes ?? 0) + TEST_RUN_MINUTES, means)
-    return { ...shared, name: `Repair: ${fault.name}`, minutes, tools: [], people: 1, caution }
-  }
+  const check = row.type === 'check' ? c.index.checks.get(row.id) : undefined
+  const swap = row.type === 'swap' ? c.index.swaps.get(row.id) : undefined
+  const repair = row.type === 'repair' ? c.index.faults.get(row.id)?.repair : undefined
+  const testRun = row.type === 'repair' ? TEST_RUN_MINUTES : 0
+  const minutes = (check ?? swap ?? repair)?.minutes ?? 0
   return {
-    ...shared,
-    name: STOP_NAMES[row.id] ?? row.id,
-    minutes: 0,
-    tools: [],
-    people: 1,
-    caution,
+    type: row.type,
+    id: row.id,
+    name: stepName(c, row),
+    minutes: minutesHere(minutes + testRun, means),
+    expectedCostMinor: row.cost,
+    tools: check?.tools.map((t) => t.tool) ?? [],
+    people: check === undefined ? 1 : Math.min(check.people, means.people),
+    caution: cautionOf(c, row),
   }
-}
-
-const STOP_NAMES: Record<string, string> = {
-  tow: 'Tow it out',
-  returnLater: 'Return later',
 }
 
 const SEVERITY = ['DANGER', 'WARNING', 'CAUTION', 'NOTICE']
@@ -244,6 +229,7 @@ function provePlan(
     leftOut: built.leftOut,
     others: [],
     decides,
+    outcomes: [],
     stage: 'prove',
   }
 }

@@ -5,6 +5,7 @@
  * point of a search: no object is made on the way.
  */
 import { opening, type Problem, type Repair } from './search-problem'
+import { NO_MASS } from './search-steps'
 
 /** Where a plan begins: joint weights (a row of a larger array from `at` on), open set-ups, minutes gone. */
 export type From = { w: Float64Array; at?: number; open: number; elapsed: number }
@@ -21,6 +22,14 @@ export function repairsOnlyOf(problem: Problem, from: From, repairs: number): nu
   for (let i = 0, rest = repairs; rest !== 0; i++, rest >>>= 1)
     if ((rest & 1) !== 0) left[count++] = i
   return costOf(problem, from, { left, count })
+}
+
+/** The repairs that may cure something here, in the order of that plan; the others behind them. */
+export function inPlanOrder(problem: Problem, from: From, left: readonly number[]): number[] {
+  begin(problem, from)
+  const count = inOrder(problem, from, { left, count: left.length })
+  const first = [...problem.room.order.subarray(0, count)]
+  return [...first, ...left.filter((r) => !first.includes(r))]
 }
 
 type Left = { left: ArrayLike<number>; count: number }
@@ -74,8 +83,6 @@ function leastOf(costs: Float64Array): number {
   return least
 }
 
-/** Less than this is left by rounding. */
-const NO_MASS = 1e-15
 const GONE = { mass: 0, wrong: 0 }
 
 /** Takes out what a repair mends and what passes its test run wrongly. */

@@ -11,6 +11,7 @@ import {
 } from './search-bounds'
 import { addKid, addNode, addOption, findNode, type Pool, type Wanted } from './search-nodes'
 import type { ActionType, Problem } from './search-problem'
+import { NO_MASS } from './search-steps'
 
 export type Search = {
   problem: Problem
@@ -21,9 +22,6 @@ export type Search = {
   /** Bounds this near each other have met. */
   slack: number
 }
-
-/** A point that is reached less often than this costs nothing. */
-const NO_MASS = 1e-15
 
 /** An option as an action of the problem. */
 export type Action = { type: ActionType; index: number }

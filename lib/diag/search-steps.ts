@@ -1,6 +1,9 @@
 /** One action from a belief: its own cost and what it leaves. */
 import { type Check, opening, type Problem, type Repair } from './search-problem'
 
+/** A state that is reached less often than this costs nothing: what is left is rounding. */
+export const NO_MASS = 1e-15
+
 /** An action with its place, its price per unit of mass and its minutes, set-ups included. */
 export type Priced = { index: number; price: number; minutes: number }
 

@@ -6,21 +6,20 @@
  * alone for good, and one of them waiting for company.
  */
 import type { Machine, Move } from './machine'
-import { type OutcomeTable, type Push, pushesOf, running } from './outcome-table'
+import { EVEN, type OutcomeTable, type Push, pushesOf, running } from './outcome-table'
 
 /** The machine of `tableFactor`. */
 export function tableMachine(table: OutcomeTable, weights: readonly number[]): Machine {
   const levels = levelsOf(table.otherwise.length, weights)
+  const base = running(table.otherwise)
   const pushes = [...pushesOf(table)]
   const better = pushes.filter(([, p]) => p.isBetter).sort(([, a], [, b]) => a.far - b.far)
-  const worse = pushes.filter(([, p]) => !p.isBetter)
-  if (better.length === 0 && worse.every(([, p]) => p.isSteady))
-    return steadyMachine({ table, levels, worse })
-  const seats = seatsOf(
-    better.length,
-    levels.length,
-    worse.some(([, p]) => !p.isSteady),
-  )
+  const worse = pushes
+    .filter(([, p]) => !p.isBetter)
+    .map(([f, p]): Row => [f, { ...p, isSteady: isSteady(p, { base, levels }) }])
+  const hasUnsteady = worse.some(([, p]) => !p.isSteady)
+  if (better.length === 0 && !hasUnsteady) return steadyMachine({ levels, base, worse })
+  const seats = seatsOf(better.length, levels.length, hasUnsteady)
   const worth = (row: readonly number[]) => dot(row, weights)
   const end = new Array<number>(seats.size).fill(0)
   ;[table.otherwise, ...better.map(([, p]) => p.row)].forEach((row, j) => {
@@ -30,7 +29,6 @@ export function tableMachine(table: OutcomeTable, weights: readonly number[]): M
     end[seats.level + l] = weight
   })
   if (seats.alone !== null) end[seats.alone] = 1
-  const base = running(table.otherwise)
   const moves = new Map<number, readonly Move[]>()
   for (const [rank, [f]] of better.entries()) moves.set(f, betterMoves(seats, rank + 1))
   for (const [f, push] of worse)
@@ -52,22 +50,33 @@ function levelsOf(outcomes: number, weights: readonly number[]): Level[] {
   return levels.at(-1)?.weight === 0 ? levels.slice(0, -1) : levels
 }
 
-type Rows = readonly (readonly [number, Push])[]
+/** A suspect and its push; `isSteady` where it need not be told apart whether the row stands alone or beside others. */
+type Row = readonly [number, Push & { isSteady: boolean }]
+
+/** Whether at the end of every level the row alone is `otherwise` times its q. */
+function isSteady(
+  { row, beside }: Push,
+  { base, levels }: { base: readonly number[]; levels: readonly Level[] },
+): boolean {
+  const upTo = running(row)
+  return levels.every(
+    ({ last }) => Math.abs((upTo[last] ?? 1) - (base[last] ?? 1) * (beside[last] ?? 1)) < EVEN,
+  )
+}
 
 function steadyMachine({
-  table,
   levels,
+  base,
   worse,
 }: {
-  table: OutcomeTable
   levels: readonly Level[]
-  worse: Rows
+  base: readonly number[]
+  worse: readonly Row[]
 }): Machine {
   if (levels.length === 0) return { start: [1], end: [0], moves: new Map() }
-  const start = shares(levels, running(table.otherwise))
   const seats = { level: 0, waiting: null }
   const moves = new Map(worse.map(([f, p]) => [f, rising(seats, levels, p.beside)]))
-  return { start, end: levels.map((l) => l.weight), moves }
+  return { start: shares(levels, base), end: levels.map((l) => l.weight), moves }
 }
 
 /** Where the states stand: 0 to `better` none but better ones; then the levels, then alone and waiting. */
@@ -102,7 +111,7 @@ function worseMoves(given: {
   seats: Seats
   levels: readonly Level[]
   base: readonly number[]
-  push: Push
+  push: Row[1]
   worth: number
 }): Move[] {
   const { seats, levels, base, push } = given

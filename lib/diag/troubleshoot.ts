@@ -4,9 +4,9 @@
  * limit is a count, never a time, so that the same input gives the same answer on every machine and later.
  */
 import { AppError } from '@/lib/model/result'
-import { leastCosts, lookAhead } from './look-ahead'
+import { type Candidate, leastCosts, lookAhead, type Spot, stepAfter } from './look-ahead'
 import { noisyOrMarginals } from './noisy-or'
-import { gapOf, guessOf, optionsOf, solve, solveWithout, startSearch } from './search'
+import { gapOf, guessOf, optionsOf, pointsAfter, solve, solveWithout, startSearch } from './search'
 import { type Action, actionOf, type Search } from './search-moves'
 import {
   type ActionType,
@@ -17,7 +17,7 @@ import {
   problemOf,
   weightsOf,
 } from './search-problem'
-import { dot, massOf } from './search-steps'
+import { dot, massOf, NO_MASS } from './search-steps'
 import type { NoisyOrModel, SearchState, SingleModel } from './troubleshoot-model'
 
 /**
@@ -28,6 +28,16 @@ const EXPANSIONS = 1500
 const WIDTH = 8 * 17
 const LEAST_EXPANSIONS = 100
 
+/** An action by the names of the model. */
+export type NamedAction = { type: ActionType; id: string }
+
+/**
+ * What an action can lead to: an outcome of a check, or for a repair `cured`, `passedWrongly` (the test run passed
+ * and the fault is still there) or `failed`. `chance` is 0 to 1; `next` the action after it, null when the job is
+ * over or the outcome cannot come up.
+ */
+export type LeadsTo = { outcome: string; chance: number; next: NamedAction | null }
+
 export type NextAction = {
   type: ActionType
   id: string
@@ -37,6 +47,8 @@ export type NextAction = {
   gap: number
   /** The next best first action; `exact` false when its cost is that of a plan that was found, and not surely the least. */
   runnerUp: { type: ActionType; id: string; expectedCost: number; exact: boolean } | null
+  /** Every outcome of the action, in the model's order; their chances sum to 1. Empty for a stop. */
+  outcomes: LeadsTo[]
   expansions: number
 }
 
@@ -51,13 +63,13 @@ export function nextAction(model: SingleModel, state: SearchState, limit?: numbe
   const spot = { w, ...leftOf(problem, state), open: openOf(model, state), elapsed: state.elapsed }
   if (!(massOf(w) > 0)) throw new AppError('impossible')
   const small = Math.max(problem.checks.length, problem.repairs.length) <= MOST_IN_MASK
-  if (!small) return looked(problem, spot)
+  if (!small) return looked({ problem, spot })
   const { found, cheapest } = searched(problem, spot, limit ?? budgetOf(spot))
   if (found.gap === 0) return found
-  const two = looked(problem, spot)
+  const two = looked({ problem, spot })
   if (two.expectedCost >= cheapest) return found
-  const least = found.expectedCost - found.gap
-  return { ...two, gap: two.expectedCost - least, expansions: found.expansions }
+  const floor = found.expectedCost - found.gap
+  return { ...two, gap: two.expectedCost - floor, expansions: found.expansions }
 }
 
 /** P(each fault | outcomes, and that the tried repairs were seen to fail), for kind `single`. */
@@ -71,8 +83,6 @@ export function posterior(model: SingleModel, state: SearchState): Record<string
 export function marginals(model: NoisyOrModel): Record<string, number> {
   return noisyOrMarginals(model)
 }
-
-type Spot = Parameters<typeof lookAhead>[1]
 
 function budgetOf({ w, checks, repairs }: Spot): number {
   const share = WIDTH / Math.max(1, w.length * (checks.length + repairs.length))
@@ -109,10 +119,63 @@ function searched(
     expectedCost: Math.max(second.cost, cost),
     exact: second.isSure,
   }
-  const action = named(problem, actionOf(search, best))
+  const action = actionOf(search, best)
   const expansions = search.expanded
-  const found = { ...action, expectedCost: cost, gap, runnerUp, expansions }
+  const after = pointsAfter(search, best)
+  let at = 0
+  const outcomes = outcomesOf({ problem, spot }, action, () => nextAt(search, after[at++] ?? 0))
+  const found = {
+    ...named(problem, action),
+    expectedCost: cost,
+    gap,
+    runnerUp,
+    outcomes,
+    expansions,
+  }
   return { found, cheapest: nodes.high[root] ?? 0 }
+}
+
+/** Expansions for the action after an outcome, beyond what the search has found out there already. */
+const EXPANSIONS_AFTER = 40
+
+/** The best action at a point that a search came by. */
+function nextAt(search: Search, node: number): NamedAction | null {
+  search.limit = search.expanded + EXPANSIONS_AFTER
+  solve(search, node)
+  const isExact = gapOf(search, node) <= search.slack
+  const highOf = (option: number): number => search.pool.options.high[option] ?? 0
+  const measure = isExact ? highOf : (option: number) => guessOf(search, option)
+  const best = least(optionsOf(search, node), measure)
+  return best === null ? null : named(search.problem, actionOf(search, best))
+}
+
+/** A problem and where it stands; the weights sum to 1. */
+type At = { problem: Problem; spot: Spot }
+
+/** Every outcome of an action, and what is next after those that can come up and leave something to do. */
+function outcomesOf(
+  { problem, spot: { w } }: At,
+  { type, index }: Action,
+  next: (outcome: number) => NamedAction | null,
+): LeadsTo[] {
+  const [check, repair] = [problem.checks[index], problem.repairs[index]]
+  if (type === 'check' && check !== undefined)
+    return check.p.map((row, o) => {
+      const chance = dot(w, row)
+      return { outcome: check.outcomes[o] ?? '', chance, next: chance > 0 ? next(o) : null }
+    })
+  if (type !== 'repair' || repair === undefined) return []
+  const stays = dot(w, repair.fails)
+  const wrong = w.reduce(
+    (sum, x, f) => sum + x * (repair.fails[f] ?? 1) * (problem.falsePass[f] ?? 0),
+    0,
+  )
+  const failed = stays - wrong
+  return [
+    { outcome: 'cured', chance: 1 - stays, next: null },
+    ...(problem.slips ? [{ outcome: 'passedWrongly', chance: wrong, next: null }] : []),
+    { outcome: 'failed', chance: failed, next: failed > NO_MASS ? next(0) : null },
+  ]
 }
 
 type Chosen = { root: number; best: number; measure: (option: number) => number; isExact: boolean }
@@ -141,24 +204,43 @@ function least(options: readonly number[], measure: (option: number) => number):
   return best?.option ?? null
 }
 
-function looked(problem: Problem, spot: Spot): NextAction {
-  const [best, second] = lookAhead(problem, spot)
-  if (best === undefined) throw new AppError('noAction')
-  const mass = massOf(spot.w)
-  const least = dot(spot.w, leastCosts(problem))
+/** The look-ahead alone. */
+const looked = (at: At): NextAction => aheadOf(at, lookAhead(at.problem, at.spot), DEEP_AFTER)
+
+/** The answer of a one-step look-ahead, given by `ranked`: what follows its outcomes is seen no further either. */
+export const oneAhead = (at: At, ranked: readonly Candidate[]): NextAction => aheadOf(at, ranked, 0)
+
+/** First actions looked at two steps deep after an outcome: its own best is seldom further down. */
+const DEEP_AFTER = 3
+
+function aheadOf(at: At, [best, second]: readonly Candidate[], deep: number): NextAction {
+  if (best === undefined || !Number.isFinite(best.cost)) throw new AppError('noAction')
+  const { problem, spot } = at
   return {
     ...named(problem, best),
-    expectedCost: best.cost / mass,
-    gap: Math.max(0, best.cost - least) / mass,
+    expectedCost: best.cost,
+    gap: Math.max(0, best.cost - dot(spot.w, leastCosts(problem))),
     runnerUp:
-      second === undefined
+      second === undefined || !Number.isFinite(second.cost)
         ? null
-        : { ...named(problem, second), expectedCost: second.cost / mass, exact: false },
+        : { ...named(problem, second), expectedCost: second.cost, exact: false },
+    outcomes: outcomesAhead(at, best, deep),
     expansions: 0,
   }
 }
 
-const named = (problem: Problem, action: Action): { type: ActionType; id: string } => ({
+/** Every outcome of an action, with what a look-ahead puts next; `deep` as there. */
+export function outcomesAhead(at: At, action: Action, deep = DEEP_AFTER): LeadsTo[] {
+  const { problem, spot } = at
+  const after = stepAfter(problem, spot, action)?.next ?? []
+  return outcomesOf(at, action, (outcome) => {
+    const behind = after[outcome] ?? null
+    const [next] = behind === null ? [] : lookAhead(problem, behind, deep)
+    return next === undefined ? null : named(problem, next)
+  })
+}
+
+const named = (problem: Problem, action: Action): NamedAction => ({
   type: action.type,
   id: idOf(problem, action),
 })

@@ -1,8 +1,10 @@
 import { describe, expect, it } from 'vitest'
 import { belief } from '@/lib/diag/belief'
+import { indexBook } from '@/lib/diag/book-index'
 import type { Case } from '@/lib/diag/case'
 import type { LogBody } from '@/lib/model/log-entry'
 import { caseOf, code, fixed, log, run, swapped } from './fixtures/entries'
+import { SMALL_ITEMS } from './fixtures/small-book'
 
 const chances = (c: Case): Record<string, number> =>
   Object.fromEntries(belief(c).suspects.map((s) => [s.fault, s.chance]))
@@ -30,6 +32,18 @@ describe('[E1] codes', () => {
         context: { module: null, status: 'active', count: null, order: 1, photo: null },
       }),
     ).toEqual(of())
+  })
+  it('[E1] a kind that a role never sets, or always, leaves every suspect possible', () => {
+    const items = SMALL_ITEMS.map((item) =>
+      item.kind === 'failure' && item.id === 'fmi3'
+        ? { ...item, byRole: { part: 0, wiring: 100, driver: 30 }, otherwise: 0 }
+        : item,
+    )
+    const index = indexBook({ version: 1, hash: '', publishedAt: '', items })
+    const after = chances(caseOf(log(code(1268, 3)), { index }))
+    for (const p of Object.values(after)) expect(p).toBeGreaterThan(0)
+    expect(after.wire).toBeGreaterThan(after.driver!)
+    expect(after.coil).toBeLessThan(after.driver!)
   })
   it('[R11] a stored code says less than an active one', () => {
     expect(of(code(1268, 3, 'stored')).coil).toBeLessThan(of(code(1268, 3)).coil!)

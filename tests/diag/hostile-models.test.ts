@@ -52,7 +52,8 @@ describe.each([
       fc.property(fc.constantFrom(...places), values, (path, value) => {
         const answer = answerTo(JSON.stringify(put(good, path, value)))
         if (answer.ok) {
-          expect(answer.text).not.toContain('null')
+          // A number that is none would be printed as null; an outcome that leads nowhere is one.
+          expect(answer.text.replaceAll('"next": null', '')).not.toContain('null')
           return
         }
         refused++

@@ -4,7 +4,17 @@ import { outlook } from '@/lib/diag/outlook'
 import { specFor } from '@/lib/diag/spec-of'
 import { fitnessFor } from '@/lib/diag/verdict-table'
 import type { LogBody } from '@/lib/model/log-entry'
-import { caseOf, checked, code, log, pocketMeter, smallSpec, swapped } from './fixtures/entries'
+import {
+  caseOf,
+  checked,
+  code,
+  fixed,
+  log,
+  ohms,
+  pocketMeter,
+  smallSpec,
+  swapped,
+} from './fixtures/entries'
 import { smallIndex } from './fixtures/small-book'
 
 const now = [code(1268, 3), checked('plug', 'bad')]
@@ -45,6 +55,23 @@ describe('[F5] the outlook of a check', () => {
     ])
     expect(outlook(at(now), { kind: 'check', id: 'nothing' })).toEqual([])
     expect(outlook(at(now), { kind: 'swap', id: 'nothing' })).toEqual([])
+  })
+})
+
+describe('[F5] the outlook of a check after something was done', () => {
+  it.each([
+    ['a fix of what it looks at', 'module', [fixed('driver')]],
+    ['the same check', 'spark', [checked('spark', 'poor')]],
+    ['the same check before and after a fix', 'spark', [checked('spark', 'poor'), fixed('coil')]],
+    ['its reading', 'coilOhms', [ohms(1.9)]],
+  ])('[F5] %s: each outcome leads where recording it leads', (_, id, done) => {
+    const before = [...now, ...done]
+    // A reading again takes the reading's place: what is pressed by hand would not count beside it.
+    const kept = before.filter((b) => b.kind !== 'reading')
+    for (const row of outlook(at(before), { kind: 'check', id })) {
+      const after = chances([...kept, checked(id, row.outcome)])
+      for (const [fault, p] of Object.entries(row.chances)) expect(p).toBeCloseTo(after[fault]!, 12)
+    }
   })
 })
 

@@ -30,6 +30,23 @@ describe('[E1] the density of what was read', () => {
     const shown = { at: x * 0.5, standardU: u * 0.5, overRange: false }
     expect(likelihood(pieces, shown, 0.5)).toBeCloseTo(want, 7)
   })
+  it.each([0, 1e-6, 1e-5, 1e-4])(
+    '[E1] a piece %s wide is a point: the normal density about its middle, also far from it',
+    (width) => {
+      const [from, u] = [0.9, 0.05]
+      for (const sigmas of [0, 1, 4, 6]) {
+        const middle = from + width / 2
+        const at = middle + sigmas * u
+        const got = likelihood(
+          [{ weight: 2, from, to: from + width }],
+          { at, standardU: u, overRange: false },
+          1,
+        )
+        const density = Math.exp(-(sigmas ** 2) / 2) / (u * Math.sqrt(2 * Math.PI))
+        expect(got / (0.98 * density + 0.001) - 1).toBeCloseTo(0, 5)
+      }
+    },
+  )
   it('[E1] the whole of all readings has chance 1, floor included', () => {
     const pieces = [{ weight: 1, from: 0.8, to: 1.3 }]
     let sum = 0

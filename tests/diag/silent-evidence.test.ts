@@ -1,6 +1,7 @@
 // What says nothing takes nothing back, and silences nothing (docs/spec/diag.md).
 import { describe, expect, it } from 'vitest'
 import { belief } from '@/lib/diag/belief'
+import { saysNothing, tableFactor } from '@/lib/diag/factor'
 import { NTC_PER_KELVIN } from '@/lib/diag/reading-budget'
 import { agrees, differenceU } from '@/lib/diag/twin-difference'
 import type { LogBody } from '@/lib/model/log-entry'
@@ -70,5 +71,22 @@ describe('[R17] the temperature of suspect and twin', () => {
     const alike = differenceU(at(20, 'suspect'), at(20, 'knownGood'))
     expect(alike).toBeCloseTo(Math.hypot(1000, 1000) * (NTC_PER_KELVIN / Math.sqrt(3)), 0)
     expect(differenceU(at(20, 'suspect'), at(30, 'knownGood'))).toBeGreaterThan(5 * alike)
+  })
+})
+
+describe('[E1] an outcome between two others', () => {
+  it('[E1] speaks of two faults together, though each alone makes it as likely as none does', () => {
+    const table = {
+      rows: new Map([
+        [0, [0.2, 0.2, 0.6]],
+        [1, [0.2, 0.2, 0.6]],
+      ]),
+      otherwise: [0.7, 0.2, 0.1],
+    }
+    const middle = tableFactor(table, [0, 1, 0])
+    expect(middle.at([0, 1])).not.toBeCloseTo(middle.at([]), 2)
+    expect(saysNothing(middle)).toBe(false)
+    const lone = { ...table, rows: new Map([[0, [0.2, 0.2, 0.6]]]) }
+    expect(saysNothing(tableFactor(lone, [0, 1, 0]))).toBe(true)
   })
 })

@@ -150,7 +150,7 @@ describe('large models', () => {
     const one = lookAhead(
       problem,
       { w: weightsOf(model, problem, START), ...leftOf(problem, START), open: 0, elapsed: 0 },
-      1,
+      0,
     )
     expect(got.expectedCost).toBeLessThanOrEqual(one[0]!.cost + 1e-9)
   })
@@ -190,13 +190,12 @@ describe('marginals', () => {
       evidence: { s: 1 },
     }
     expect(() => marginals(impossible)).toThrow('impossible')
-    const findings = Array.from({ length: 22 }, (_, i) => ({
-      id: `s${i}`,
-      leak: 0.1,
-      links: { a: 0.5 },
-    }))
+    const faults = Array.from({ length: 17 }, (_, i) => ({ id: `f${i}`, prior: 0.1 }))
+    const links = Object.fromEntries(faults.map((f) => [f.id, 0.5]))
+    const findings = Array.from({ length: 22 }, (_, i) => ({ id: `s${i}`, leak: 0.1, links }))
     const many: NoisyOrModel = {
       ...impossible,
+      faults,
       findings,
       evidence: Object.fromEntries(findings.map((f) => [f.id, 1 as const])),
     }

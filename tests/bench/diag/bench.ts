@@ -39,7 +39,7 @@ const oneStep = (model: SingleModel): Policy => {
       open: openOf(model, state),
       elapsed: state.elapsed,
     }
-    const [best] = lookAhead(problem, spot, 1)
+    const [best] = lookAhead(problem, spot, 0)
     if (best === undefined) throw new Error('nothing ends the job')
     const list = { check: problem.checks, repair: problem.repairs, stop: problem.stops }[best.type]
     return { type: best.type, id: list[best.index]?.id ?? '' }
