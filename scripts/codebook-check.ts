@@ -1,9 +1,9 @@
 /** Checks the repository's code book with its demo models: one line per finding, exit 1 on any. */
-import { BOOK_ITEMS } from '@/db/codebook/book'
+import { BOOK_ITEMS, UNSEPARATED } from '@/db/codebook/book'
 import { checkBook } from '@/db/codebook/check-book'
 import { DEMO_MODELS } from '@/db/codebook/demo-models'
 
-const problems = checkBook(BOOK_ITEMS, DEMO_MODELS)
+const problems = checkBook(BOOK_ITEMS, DEMO_MODELS, UNSEPARATED)
 for (const { kind, id, words } of problems) console.log(`${kind}: ${id}: ${words}`)
 
 const count = (kind: string) => BOOK_ITEMS.filter((item) => item.kind === kind).length

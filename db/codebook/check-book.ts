@@ -11,16 +11,16 @@ import { checkReach, checkShares } from './check-list'
 import { checkOrphans, checkSources, shapeProblem } from './check-orphans'
 import { checkSafety } from './check-safety'
 import { checkFailures, checkReadings, checkTables } from './check-tables'
-import { UNSEPARATED, type Unseparated } from './unseparated'
+import type { Unseparated } from './unseparated'
 
 /**
  * Everything wrong with a book and the models it is published with, in the order of the rules; empty is right.
- * `unseparated` is the table of pairs left together with a reason; the repository's own by default.
+ * `unseparated` is the table of pairs left together with a reason.
  */
 export function checkBook(
   items: readonly CodeBookItem[],
   models: readonly MachineModel[],
-  unseparated: readonly Unseparated[] = UNSEPARATED,
+  unseparated: readonly Unseparated[] = [],
 ): BookProblem[] {
   const shapes = [...items.map(shapeProblem), ...models.map(modelShape)].filter((p) => p !== null)
   if (shapes.length > 0) return shapes

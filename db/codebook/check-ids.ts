@@ -62,6 +62,9 @@ export function usesOf({ shelf, models }: Books): Use[] {
       ...list(f.id, 'part', [f.repair?.part ?? null]),
       ...list(f.id, 'setup', f.repair?.setups ?? []),
     ]),
+    ...shelf.symptom.flatMap((s) =>
+      s.conditions.flatMap((c) => list(s.id, 'fault', Object.keys(c.tells?.of100 ?? {}))),
+    ),
     ...shelf.check.flatMap((c) => [
       ...list(c.id, 'setup', c.setups),
       ...list(

@@ -1,7 +1,7 @@
 import type { SetupItem } from '@/lib/model/code-book'
 import { PRACTICE } from './sources'
 
-type Row = readonly [
+export type SetupRow = readonly [
   id: string,
   name: string,
   minutes: number,
@@ -10,7 +10,7 @@ type Row = readonly [
 ]
 
 /** Minutes are for bare hands in daylight; `true` marks what must be closed again before a test run. */
-const ROWS: readonly Row[] = [
+const ROWS: readonly SetupRow[] = [
   ['seatOff', 'Seat off', 1, [], false],
   ['sidePanelOff', 'Side panel off', 2, [], false],
   ['frontCoverOff', 'Front cover off', 3, [], false],
@@ -28,12 +28,17 @@ const ROWS: readonly Row[] = [
 ]
 
 /** What has to be opened or waited for before a check or a repair, paid once while it stays open. */
-export const SETUPS: SetupItem[] = ROWS.map(([id, name, minutes, requires, closedByTest]) => ({
-  kind: 'setup',
-  id,
-  name,
-  minutes,
-  requires: [...requires],
-  closedByTest,
-  source: PRACTICE,
-}))
+export const SETUPS: SetupItem[] = setups(ROWS)
+
+/** Set-ups from their rows. */
+export function setups(rows: readonly SetupRow[]): SetupItem[] {
+  return rows.map(([id, name, minutes, requires, closedByTest]) => ({
+    kind: 'setup',
+    id,
+    name,
+    minutes,
+    requires: [...requires],
+    closedByTest,
+    source: PRACTICE,
+  }))
+}

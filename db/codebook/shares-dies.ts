@@ -1,26 +1,23 @@
-import type { Gate } from '@/lib/model/features'
+import type { ShareList } from './chapter'
 
-/** One elicited list: of 100 calls with this complaint on this kind of machine (rule R5). */
-type ShareGroup = { symptom: string; gate: Gate; somethingElse: number }
-
-/** The groups of machines that were thought of one by one. They do not overlap. */
-export const SHARE_GROUPS = {
-  injectionFour: {
+/** The groups of machines that were thought of one by one, in the order of the columns below. */
+const GROUPS: readonly Omit<ShareList, 'of100'>[] = [
+  {
     symptom: 'startsThenDies',
     gate: { fuelling: ['injection'], strokes: ['four'] },
     somethingElse: 7,
   },
-  injectionTwo: {
+  {
     symptom: 'startsThenDies',
     gate: { fuelling: ['injection'], strokes: ['two'] },
     somethingElse: 8,
   },
-  carburettor: {
+  {
     symptom: 'startsThenDies',
     gate: { fuelling: ['carburettor'] },
     somethingElse: 8,
   },
-} as const satisfies Record<string, ShareGroup>
+]
 
 type Row = readonly [
   fault: string,
@@ -34,7 +31,7 @@ type Row = readonly [
  * "something else" add to 100. Guesses of people who do the work, no count behind them: the shop's
  * own closed jobs replace them (rule R5, 20 pseudo-jobs).
  */
-export const SHARE_ROWS: readonly Row[] = [
+const ROWS: readonly Row[] = [
   // fuel
   ['fuelOutOrShut', 7, 8, 12],
   ['fuelStale', 5, 6, 11],
@@ -88,3 +85,14 @@ export const SHARE_ROWS: readonly Row[] = [
   ['crankSealLeak', 0, 1, 0],
   ['reedBroken', 0, 0.5, 0],
 ]
+
+/** What lies behind "starts, then dies". */
+export const DIES_SHARES: ShareList[] = GROUPS.map((group, column) => ({
+  ...group,
+  of100: Object.fromEntries(
+    ROWS.flatMap(([fault, ...of100]) => {
+      const share = of100[column] ?? 0
+      return share > 0 ? [[fault, share]] : []
+    }),
+  ),
+}))

@@ -1,8 +1,8 @@
 import type { SymptomItem } from '@/lib/model/code-book'
 import { OWN_WORDS } from './sources'
 
-/** Complaints the book holds suspects for. `twoWrongOf100` is m of rule R5: practice where nobody knows. */
-export const SYMPTOMS: SymptomItem[] = [
+/** The complaint of the first chapter. `twoWrongOf100` is m of rule R5: practice where nobody knows. */
+export const DIES_SYMPTOMS: SymptomItem[] = [
   {
     kind: 'symptom',
     id: 'startsThenDies',
@@ -28,14 +28,14 @@ export const SYMPTOMS: SymptomItem[] = [
       'dies when I let go of the starter',
     ],
     conditions: [
-      { id: 'afterSeconds', name: 'After one to three seconds' },
-      { id: 'afterMinutes', name: 'After some minutes' },
-      { id: 'whenCold', name: 'When cold' },
-      { id: 'whenHot', name: 'When hot' },
-      { id: 'whenWet', name: 'When wet' },
-      { id: 'whenLeaning', name: 'When leaning or on a slope' },
-      { id: 'always', name: 'Every time' },
-      { id: 'nowAndThen', name: 'Now and then' },
+      { id: 'afterSeconds', name: 'After one to three seconds', tells: null },
+      { id: 'afterMinutes', name: 'After some minutes', tells: null },
+      { id: 'whenCold', name: 'When cold', tells: null },
+      { id: 'whenHot', name: 'When hot', tells: null },
+      { id: 'whenWet', name: 'When wet', tells: null },
+      { id: 'whenLeaning', name: 'When leaning or on a slope', tells: null },
+      { id: 'always', name: 'Every time', tells: null },
+      { id: 'nowAndThen', name: 'Now and then', tells: null },
     ],
     twoWrongOf100: 5,
     source: `${OWN_WORDS}; two things wrong in 5 of 100 where nobody knows (common practice, no source)`,

@@ -1,4 +1,2 @@
 /** Two faults that no check or swap of the book tells apart, and why that is left so (rule CB11). */
 export type Unseparated = { faults: readonly [string, string]; reason: string }
-
-export const UNSEPARATED: readonly Unseparated[] = []

@@ -1,9 +1,9 @@
 import type { WordItem } from '@/lib/model/code-book'
 import { OWN_WORDS } from './sources'
 
-type Row = readonly [id: string, name: string]
+export type WordRow = readonly [id: string, name: string]
 
-const SYSTEMS: readonly Row[] = [
+const SYSTEMS: readonly WordRow[] = [
   ['fuelSystem', 'Fuel'],
   ['ignitionSystem', 'Ignition'],
   ['timingSystem', 'Crank signal and timing'],
@@ -13,7 +13,7 @@ const SYSTEMS: readonly Row[] = [
   ['engineInside', 'Engine inside'],
 ]
 
-const CIRCUITS: readonly Row[] = [
+const CIRCUITS: readonly WordRow[] = [
   ['ignitionCoil1', 'Ignition coil 1, primary side'],
   ['ignitionCoil2', 'Ignition coil 2, primary side'],
   ['ignitionCoil3', 'Ignition coil 3, primary side'],
@@ -37,7 +37,7 @@ const CIRCUITS: readonly Row[] = [
   ['controlModule', 'Engine control module'],
 ]
 
-const PARTS: readonly Row[] = [
+const PARTS: readonly WordRow[] = [
   ['ignitionCoil', 'Ignition coil'],
   ['sparkPlug', 'Spark plug'],
   ['plugCap', 'Plug cap and lead'],
@@ -70,7 +70,7 @@ const PARTS: readonly Row[] = [
   ['freshFuel', 'Fresh fuel, one litre'],
 ]
 
-const TOOLS: readonly Row[] = [
+const TOOLS: readonly WordRow[] = [
   ['multimeter', 'Pocket meter'],
   ['backProbes', 'Thin back probes'],
   ['loadBulb', '21 W bulb on two leads'],
@@ -91,14 +91,14 @@ const TOOLS: readonly Row[] = [
   ['caseTester', 'Hand pump and plugs for a crankcase test'],
 ]
 
-const word =
-  (kind: WordItem['kind']) =>
-  ([id, name]: Row): WordItem => ({ kind, id, name, source: OWN_WORDS })
+/** Words of one kind from their rows. */
+export const words = (kind: WordItem['kind'], rows: readonly WordRow[]): WordItem[] =>
+  rows.map(([id, name]) => ({ kind, id, name, source: OWN_WORDS }))
 
 /** Systems, circuits, parts and tools by the names the trade uses. Ids are unique over all kinds. */
 export const WORDS: WordItem[] = [
-  ...SYSTEMS.map(word('system')),
-  ...CIRCUITS.map(word('circuit')),
-  ...PARTS.map(word('part')),
-  ...TOOLS.map(word('tool')),
+  ...words('system', SYSTEMS),
+  ...words('circuit', CIRCUITS),
+  ...words('part', PARTS),
+  ...words('tool', TOOLS),
 ]

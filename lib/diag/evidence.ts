@@ -79,7 +79,7 @@ function pieceOf({ sight, latest }: Seen, entry: LogEntry, at: number): Evidence
   const { body } = entry
   switch (body.kind) {
     case 'symptom':
-      return symptomEvidence(sight, entry, body.symptom)
+      return symptomEvidence(sight, entry, body)
     case 'code':
       return codeEvidence(sight, entry, { body, at })
     case 'check':
@@ -103,8 +103,12 @@ function pieceOf({ sight, latest }: Seen, entry: LogEntry, at: number): Evidence
   }
 }
 
-function symptomEvidence(sight: Sight, entry: LogEntry, symptom: string): Evidence | null {
-  if (symptom === sight.c.symptom) return null
+function symptomEvidence(
+  sight: Sight,
+  entry: LogEntry,
+  { symptom, conditions }: Extract<LogBody, { kind: 'symptom' }>,
+): Evidence | null {
+  if (symptom === sight.c.symptom) return conditionEvidence(sight, entry, conditions)
   const name = sight.c.index.symptoms.get(symptom)?.name ?? symptom
   const table: Record<string, number[]> = {}
   for (const fault of sight.c.index.faults.values()) {
@@ -114,6 +118,31 @@ function symptomEvidence(sight: Sight, entry: LogEntry, symptom: string): Eviden
   const otherwise = [100 - FURTHER_SYMPTOM.otherwise, FURTHER_SYMPTOM.otherwise]
   const factor = tableFactor(tableOf(sight.place, { table, otherwise }), [0, 1])
   return { ...nothing(entry, 'symptom', `Also: ${name}`), factor }
+}
+
+/**
+ * When the complaint comes, as it was told: P(all of this is said | fault), the conditions taken as said one by one
+ * without regard to each other. Conditions that were not named say nothing.
+ */
+function conditionEvidence(
+  sight: Sight,
+  entry: LogEntry,
+  said: readonly string[],
+): Evidence | null {
+  const known = sight.c.index.symptoms.get(sight.c.symptom ?? '')?.conditions ?? []
+  const told = known.flatMap(({ id, name, tells }) =>
+    said.includes(id) && tells !== null ? [{ name, ...tells }] : [],
+  )
+  if (told.length === 0) return null
+  const faults = new Set(told.flatMap(({ of100 }) => Object.keys(of100)))
+  const row = (fault: string): [number, number] => {
+    const p = told.reduce((all, t) => all * ((t.of100[fault] ?? t.otherwise) / 100), 1)
+    return [100 * (1 - p), 100 * p]
+  }
+  const table = Object.fromEntries([...faults].map((fault) => [fault, row(fault)]))
+  const factor = tableFactor(tableOf(sight.place, { table, otherwise: row('') }), [0, 1])
+  const label = `Said of it: ${told.map(({ name }) => name.toLowerCase()).join(', ')}`
+  return { ...nothing(entry, 'symptom', label), factor }
 }
 
 /** P(code | fault) by its role in the circuit; P(code | none of them) = `otherwise`; noisy-OR with that leak. */

@@ -13,6 +13,9 @@ import { sentence, source } from './sentence'
 /** "Of 100 such cases", one number per outcome; each row sums to 100. */
 const of100 = z.array(z.number().check(z.minimum(0), z.maximum(100))).check(z.minLength(2))
 
+/** "Of 100", never all and never none: what a person says is no proof. */
+const share = z.number().check(z.minimum(1), z.maximum(99))
+
 /** ANSI Z535.6 signal words. */
 export const SIGNALS = ['DANGER', 'WARNING', 'CAUTION', 'NOTICE'] as const
 export const caution = z.strictObject({ signal: z.enum(SIGNALS), text: sentence })
@@ -35,7 +38,14 @@ export const symptomItem = z.strictObject({
   gate,
   /** How riders say it; searched as typed. */
   riderWords: z.array(z.string()),
-  conditions: z.array(z.strictObject({ id: slug, name: z.string() })),
+  /** When it does it. `tells`: of 100 such calls with this fault behind them, in how many it would be said so. */
+  conditions: z.array(
+    z.strictObject({
+      id: slug,
+      name: z.string(),
+      tells: z.nullable(z.strictObject({ of100: z.record(slug, share), otherwise: share })),
+    }),
+  ),
   /** m of rule R5: in how many of 100 such calls two things were wrong. */
   twoWrongOf100: z.number().check(z.minimum(0), z.maximum(50)),
   source,

@@ -1,5 +1,5 @@
 import { expect, test } from 'vitest'
-import { BOOK_ITEMS } from '@/db/codebook/book'
+import { BOOK_ITEMS, UNSEPARATED } from '@/db/codebook/book'
 import { BOOK_PROBLEMS } from '@/db/codebook/book-problem'
 import { checkBook } from '@/db/codebook/check-book'
 import { DEMO_MODELS } from '@/db/codebook/demo-models'
@@ -29,5 +29,5 @@ test('[CB11] a pair left together needs a reason, and a reason needs such a pair
 })
 
 test('[CB1] the book that is published makes no finding', () => {
-  expect(checkBook(BOOK_ITEMS, DEMO_MODELS)).toEqual([])
+  expect(checkBook(BOOK_ITEMS, DEMO_MODELS, UNSEPARATED)).toEqual([])
 })

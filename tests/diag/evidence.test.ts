@@ -105,6 +105,23 @@ describe('[E1] proof runs after a fix', () => {
     expect(of(...start, run(6, 0), run(6, 0)).coil).toBeCloseTo(of(...start, run(12, 0)).coil!, 12)
     expect(of(code(1268, 3), run(12, 0))).toEqual(of(code(1268, 3)))
   })
+  it('[E1] when it comes tells for the faults that come so, once, and the unnamed says nothing', () => {
+    const said = (...conditions: string[]): LogBody => ({
+      kind: 'symptom',
+      symptom: 'stalls',
+      conditions,
+      words: null,
+    })
+    const [plain, hot] = [of(), of(said('whenHot'))]
+    expect(hot.coil).toBeGreaterThan(plain.coil!)
+    expect(hot.filter).toBeLessThan(plain.filter!)
+    expect(of(said('always'))).toEqual(plain)
+    expect(of(said('whenHot'), said('whenHot', 'always'))).toEqual(hot)
+    // Against suspects of 30 and of 10 of 100 the odds of one of 80 grow by between 80 / 30 and 80 / 10.
+    const ratio = (b: Record<string, number>) => b.coil! / (1 - b.coil!)
+    expect(ratio(hot) / ratio(plain)).toBeGreaterThan(80 / 30)
+    expect(ratio(hot) / ratio(plain)).toBeLessThan(80 / 10)
+  })
   it('[S7] a cold run does not count for a fault that comes when hot', () => {
     const hot: LogBody = {
       kind: 'symptom',
