@@ -11,6 +11,7 @@ import { fixesBefore } from './evidence-log'
 import { isShedByTwin, readingEvidence } from './evidence-reading'
 import { runEvidence } from './evidence-run'
 import { swapEvidence } from './evidence-swap'
+import { symptomEvidence } from './evidence-symptom'
 import {
   type Evidence,
   leftOut,
@@ -30,8 +31,6 @@ type CheckBody = Extract<LogBody, { kind: 'check' }>
 const CIRCUIT_ONLY = { member: 20, otherwise: 10 }
 /** How likely a code that is not shown as active is left from another day, before it counts (guess). */
 const OLD_CODE = { active: 0, unknown: 0.25, stored: 0.5 }
-/** A further symptom, of 100: faults known to show it, and others (guess). */
-const FURTHER_SYMPTOM = { member: 60, otherwise: 20 }
 
 /** Pieces that may speak in one job: more than anybody takes down, and a bound on what is reckoned. */
 export const MOST_PIECES = 60
@@ -101,48 +100,6 @@ function pieceOf({ sight, latest }: Seen, entry: LogEntry, at: number): Evidence
     default:
       return null
   }
-}
-
-function symptomEvidence(
-  sight: Sight,
-  entry: LogEntry,
-  { symptom, conditions }: Extract<LogBody, { kind: 'symptom' }>,
-): Evidence | null {
-  if (symptom === sight.c.symptom) return conditionEvidence(sight, entry, conditions)
-  const name = sight.c.index.symptoms.get(symptom)?.name ?? symptom
-  const table: Record<string, number[]> = {}
-  for (const fault of sight.c.index.faults.values()) {
-    if (!fault.shares.some((s) => s.symptom === symptom)) continue
-    table[fault.id] = [100 - FURTHER_SYMPTOM.member, FURTHER_SYMPTOM.member]
-  }
-  const otherwise = [100 - FURTHER_SYMPTOM.otherwise, FURTHER_SYMPTOM.otherwise]
-  const factor = tableFactor(tableOf(sight.place, { table, otherwise }), [0, 1])
-  return { ...nothing(entry, 'symptom', `Also: ${name}`), factor }
-}
-
-/**
- * When the complaint comes, as it was told: P(all of this is said | fault), the conditions taken as said one by one
- * without regard to each other. Conditions that were not named say nothing.
- */
-function conditionEvidence(
-  sight: Sight,
-  entry: LogEntry,
-  said: readonly string[],
-): Evidence | null {
-  const known = sight.c.index.symptoms.get(sight.c.symptom ?? '')?.conditions ?? []
-  const told = known.flatMap(({ id, name, tells }) =>
-    said.includes(id) && tells !== null ? [{ name, ...tells }] : [],
-  )
-  if (told.length === 0) return null
-  const faults = new Set(told.flatMap(({ of100 }) => Object.keys(of100)))
-  const row = (fault: string): [number, number] => {
-    const p = told.reduce((all, t) => all * ((t.of100[fault] ?? t.otherwise) / 100), 1)
-    return [100 * (1 - p), 100 * p]
-  }
-  const table = Object.fromEntries([...faults].map((fault) => [fault, row(fault)]))
-  const factor = tableFactor(tableOf(sight.place, { table, otherwise: row('') }), [0, 1])
-  const label = `Said of it: ${told.map(({ name }) => name.toLowerCase()).join(', ')}`
-  return { ...nothing(entry, 'symptom', label), factor }
 }
 
 /** P(code | fault) by its role in the circuit; P(code | none of them) = `otherwise`; noisy-OR with that leak. */
