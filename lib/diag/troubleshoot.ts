@@ -123,7 +123,10 @@ function searched(
   const expansions = search.expanded
   const after = pointsAfter(search, best)
   let at = 0
-  const outcomes = outcomesOf({ problem, spot }, action, () => nextAt(search, after[at++] ?? 0))
+  const outcomes = outcomesOf({ problem, spot }, action, () => {
+    const node = after[at++]
+    return node === undefined ? null : nextAt(search, node)
+  })
   const found = {
     ...named(problem, action),
     expectedCost: cost,
