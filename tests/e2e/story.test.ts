@@ -73,6 +73,7 @@ test('the main job, from flight mode to the desk', async ({
     await shot(page, 'intake-place')
     await press(page, 'Open the job')
     await expect(page).toHaveURL(/\/field\/jobs\/[0-9a-f-]{36}$/)
+    await expect(page.getByText('Codes taken down')).toBeVisible()
     await shot(page, 'job')
   })
   const jobPath = new URL(phone.page().url()).pathname
