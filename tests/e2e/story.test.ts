@@ -20,7 +20,6 @@ test('the main job, from flight mode to the desk', async ({
   shot,
 }) => {
   test.setTimeout(600_000)
-
   await test.step('signed in once with signal, the phone holds all it needs', async () => {
     const page = await phone.open('/login')
     await signIn(page, 'mechanic@demo.invalid', /\/field$/)
