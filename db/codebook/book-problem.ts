@@ -21,6 +21,9 @@ export const BOOK_PROBLEMS = [
   'reading',
   'failureKinds',
   'people',
+  'readingLevel',
+  'sameRows',
+  'firstLook',
 ] as const
 export type BookProblemKind = (typeof BOOK_PROBLEMS)[number]
 

@@ -1,5 +1,5 @@
 import type { CodeBookItem, FaultItem } from '@/lib/model/code-book'
-import { assemble, type Chapter } from './chapter'
+import { type Assembled, assemble, type Chapter } from './chapter'
 import { DIES } from './chapter-dies'
 import type { FaultData } from './fault-data'
 import { FEATURE_ITEMS } from './features'
@@ -19,26 +19,40 @@ const book = assemble(CHAPTERS)
 /** Pairs of faults that no check or swap of the book tells apart, each with its reason (rule CB11). */
 export const UNSEPARATED: readonly Unseparated[] = book.unseparated
 
-/** The whole code book, in the order it is published. Faults get their shares from the lists of the chapters. */
-export const BOOK_ITEMS: CodeBookItem[] = [
-  ...FEATURE_ITEMS,
-  ...book.words,
-  ...book.setups,
-  ...book.symptoms,
-  ...book.faults.map(withShares),
-  ...book.checks,
-  ...book.swaps,
-  ...FMI_LINE,
-  ...FMI_UPPER,
-  ...PCODE_KINDS,
-  ...SPNS,
-  ...PCODES,
-]
+/** The whole code book, in the order it is published. */
+export const BOOK_ITEMS: CodeBookItem[] = itemsOf(book)
 
-function withShares(fault: FaultData): FaultItem {
-  const shares = book.shares.flatMap(({ symptom, gate, of100 }) => {
-    const share = of100[fault.id] ?? 0
-    return share > 0 ? [{ symptom, gate: structuredClone(gate), of100: share }] : []
+/** What the chapters make, with the tables of codes. Faults get their shares from the lists of the chapters. */
+export function itemsOf({
+  words,
+  setups,
+  symptoms,
+  faults,
+  shares,
+  checks,
+  swaps,
+}: Assembled): CodeBookItem[] {
+  const withShares = (fault: FaultData): FaultItem => ({
+    kind: 'fault',
+    ...fault,
+    shares: shares.flatMap(({ symptom, gate, of100 }) => {
+      const share = of100[fault.id] ?? 0
+      return share > 0 ? [{ symptom, gate: structuredClone(gate), of100: share }] : []
+    }),
+    source: GUESS,
   })
-  return { kind: 'fault', ...fault, shares, source: GUESS }
+  return [
+    ...FEATURE_ITEMS,
+    ...words,
+    ...setups,
+    ...symptoms,
+    ...faults.map(withShares),
+    ...checks,
+    ...swaps,
+    ...FMI_LINE,
+    ...FMI_UPPER,
+    ...PCODE_KINDS,
+    ...SPNS,
+    ...PCODES,
+  ]
 }

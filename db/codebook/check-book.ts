@@ -1,6 +1,6 @@
 /**
  * The gate a code book has to pass before it is published: one list of findings, empty when it is right.
- * Rules CB1 to CB18 of docs/spec/code-book.md. Shape comes first; the rest is only looked at when every
+ * Rules CB1 to CB21 of docs/spec/code-book.md. Shape comes first; the rest is only looked at when every
  * record has its shape, because a wrong shape makes the other findings noise.
  */
 import type { CodeBookItem } from '@/lib/model/code-book'
@@ -11,6 +11,8 @@ import { checkReach, checkShares } from './check-list'
 import { checkOrphans, checkSources, shapeProblem } from './check-orphans'
 import { checkSafety } from './check-safety'
 import { checkFailures, checkReadings, checkTables } from './check-tables'
+import { checkWords } from './check-words'
+import { checkSameRows } from './same-rows'
 import type { Unseparated } from './unseparated'
 
 /**
@@ -35,6 +37,8 @@ export function checkBook(
     ...checkShares(books),
     ...checkReach(books, unseparated),
     ...checkSafety(books),
+    ...checkWords(books),
+    ...checkSameRows(books.shelf),
   ]
 }
 

@@ -2,7 +2,7 @@ import { FEATURES, type FeatureName, type Gate } from '@/lib/model/features'
 import type { BookProblem, Books } from './book-problem'
 
 type Sets = Record<
-  'symptom' | 'fault' | 'circuit' | 'setup' | 'tool' | 'part' | 'system' | 'failure',
+  'symptom' | 'fault' | 'check' | 'circuit' | 'setup' | 'tool' | 'part' | 'system' | 'failure',
   ReadonlySet<string>
 >
 
@@ -31,6 +31,7 @@ function setsOf({ shelf }: Books): Sets {
   return {
     symptom: ids(shelf.symptom),
     fault: ids(shelf.fault),
+    check: ids(shelf.check),
     circuit: ids(shelf.circuit),
     setup: ids(shelf.setup),
     tool: ids(shelf.tool),
@@ -62,6 +63,7 @@ export function usesOf({ shelf, models }: Books): Use[] {
       ...list(f.id, 'part', [f.repair?.part ?? null]),
       ...list(f.id, 'setup', f.repair?.setups ?? []),
     ]),
+    ...shelf.symptom.flatMap((s) => list(s.id, 'check', s.firstLook)),
     ...shelf.symptom.flatMap((s) =>
       s.conditions.flatMap((c) => list(s.id, 'fault', Object.keys(c.tells?.of100 ?? {}))),
     ),

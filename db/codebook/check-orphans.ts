@@ -75,7 +75,7 @@ export function checkOrphans(books: Books): BookProblem[] {
       .filter((f) => f.fmi === null && !used.has(`failure:${f.id}`))
       .map((f) => orphan(f.id, 'failure kind that no code names')),
     ...shelf.symptom
-      .filter((s) => !used.has(`symptom:${s.id}`))
+      .filter((s) => s.opens === 'suspects' && !used.has(`symptom:${s.id}`))
       .map((s) => orphan(s.id, 'symptom that no fault shares')),
     ...shelf.fault
       .filter((f) => f.shares.length === 0)

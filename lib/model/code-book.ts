@@ -46,6 +46,12 @@ export const symptomItem = z.strictObject({
       tells: z.nullable(z.strictObject({ of100: z.record(slug, share), otherwise: share })),
     }),
   ),
+  /** A complaint that is no fault opens the way out and its rigging at once, without suspects (rule R4). */
+  opens: z.enum(['suspects', 'wayOut']),
+  /** Said before anything is touched. */
+  cautions: z.array(caution),
+  /** Checks by eye, ear and hand that come before any other: a minute or two each, no tools to speak of. */
+  firstLook: z.array(slug),
   /** m of rule R5: in how many of 100 such calls two things were wrong. */
   twoWrongOf100: z.number().check(z.minimum(0), z.maximum(50)),
   source,
