@@ -5,9 +5,10 @@ import { checkBook } from '@/db/codebook/check-book'
 import { DEMO_MODELS } from '@/db/codebook/demo-models'
 import { LIST_BREAKS } from './breaks-lists'
 import { RECORD_BREAKS } from './breaks-records'
+import { WORD_BREAKS } from './breaks-words'
 import { copyBook } from './broken-book'
 
-const BREAKS = [...RECORD_BREAKS, ...LIST_BREAKS]
+const BREAKS = [...RECORD_BREAKS, ...LIST_BREAKS, ...WORD_BREAKS]
 
 test.each(BREAKS)('[%s] is found as %s', (_, kind, at, breakIt) => {
   const book = copyBook()
