@@ -2,14 +2,16 @@
 import { useState } from 'react'
 import { bookForJob } from '@/lib/diag/book-for-job'
 import type { BookIndex } from '@/lib/diag/book-index'
-import { hasSymptom, living } from '@/lib/diag/case'
+import { living, symptomsOf } from '@/lib/diag/case'
+import { knownSymptoms, looksLeft, opensWayOut } from '@/lib/diag/first-look'
 import type { Outcome } from '@/lib/diag/outlook'
 import type { Plan } from '@/lib/diag/plan'
+import type { SymptomItem } from '@/lib/model/code-book'
 import type { Id } from '@/lib/model/id'
 import type { LogEntry } from '@/lib/model/log-entry'
 import { decidesWords, nextOutlook } from '../engine/decides'
 import { useBelief } from '../engine/use-belief'
-import { useCase } from '../engine/use-case'
+import { type JobCase, useCase } from '../engine/use-case'
 import { type PlanView, usePlan } from '../engine/use-plan'
 import type { Answer } from '../engine/work'
 import { entryMention } from '../log/entry-words'
@@ -20,13 +22,15 @@ import { useShop } from '../store/use-rows'
 import { behindWords } from '../suspects/book-words'
 import { NOTICE_WORDS } from '../suspects/notice-words'
 import { SuspectRows } from '../suspects/suspect-rows'
-import { Key, KeyLink } from '../ui/key'
+import { Key } from '../ui/key'
 import { Plate } from '../ui/plate'
 import { RuleEdge } from '../ui/rule-edge'
 import { Screen } from '../ui/screen'
 import { AssumesPanel } from './assumes-panel'
 import { BookGate } from './book-gate'
+import { FirstLook } from './first-look'
 import { NextPlate } from './next-plate'
+import { Cautions, NoFault, NoSymptom, ToWayOut, Waiting } from './no-checks'
 import { OtherChecks } from './other-checks'
 import type { AdviceState } from './pick-instead'
 import { RunnerUp } from './runner-up'
@@ -41,10 +45,14 @@ export function ChecksScreen({ jobId }: { jobId: Id }) {
   // Asked before the plan: the suspects are there at once, the plan may take its time.
   const suspects = useBelief(jobId)
   const plan = usePlan(jobId)
+  const ids = found === null ? null : symptomsOf(found)
+  const symptoms = index === null || ids === null ? [] : knownSymptoms(index, ids)
   return (
     <BookGate>
-      {found !== null && !hasSymptom(found) ? (
+      {ids?.length === 0 ? (
         <NoSymptom jobId={jobId} />
+      ) : opensWayOut(symptoms) ? (
+        <NoFault jobId={jobId} symptoms={symptoms} />
       ) : index === null || found === null || suspects.answer === null ? (
         <Waiting failed={suspects.failed} />
       ) : (
@@ -54,40 +62,11 @@ export function ChecksScreen({ jobId }: { jobId: Id }) {
           view={plan}
           belief={suspects.answer.belief}
           state={stateOf(suspects)}
-          entries={found.entries}
+          found={found}
+          symptoms={symptoms}
         />
       )}
     </BookGate>
-  )
-}
-
-function NoSymptom({ jobId }: { jobId: Id }) {
-  return (
-    <Screen
-      title="No symptom yet"
-      foot={
-        <KeyLink kind="main" href={`/field/jobs/${jobId}/symptom`}>
-          What does it do?
-        </KeyLink>
-      }
-    >
-      <p>The suspects start from what the machine does. Pick that, and they are here.</p>
-    </Screen>
-  )
-}
-
-function Waiting({ failed }: { failed: boolean }) {
-  return (
-    <Screen title="Checks">
-      {failed ? (
-        <p role="alert">
-          The sums could not be done for this job. Nothing recorded is lost, and notes, readings and
-          the way out can still be recorded.
-        </p>
-      ) : (
-        <p role="status">Working out the suspects.</p>
-      )}
-    </Screen>
   )
 }
 
@@ -98,19 +77,22 @@ type ReadyProps = {
   belief: Answer['belief']
   /** Whether the newest entry is in these suspects. */
   state: AdviceState
-  entries: readonly LogEntry[]
+  found: JobCase
+  symptoms: readonly SymptomItem[]
 }
 
 const stateOf = (view: Pick<PlanView, 'working' | 'failed'>): AdviceState =>
   view.working ? 'working' : view.failed ? 'failed' : 'ready'
 
-function Ready({ jobId, index, view, belief, state, entries }: ReadyProps) {
+function Ready({ jobId, index, view, belief, state, found, symptoms }: ReadyProps) {
+  const { entries, input } = found
   const shop = useShop()
   const actOn = useActOn(jobId, view)
   const plan = view.answer?.plan ?? null
   const currency = shop?.currency ?? ''
   const run = cleanRun(entries)
   const steps = { jobId, currency, index, actOn, advice: stateOf(view) }
+  const looks = looksLeft(index, { symptoms, features: input.features, entries })
   useFirstSaid(jobId, belief.suspects)
   return (
     <Screen
@@ -126,11 +108,13 @@ function Ready({ jobId, index, view, belief, state, entries }: ReadyProps) {
         />
       }
     >
+      <Cautions symptoms={symptoms} />
       {plan === null || view.failed ? (
         <NoPlanYet failed={view.failed} older={plan !== null} />
       ) : (
         <Top plan={plan} answer={view.answer} index={index} run={run} />
       )}
+      <FirstLook jobId={jobId} looks={looks} />
       <Suspects
         jobId={jobId}
         index={index}
@@ -207,12 +191,6 @@ function StartKey({ jobId, plan, view, run, onPress }: StartProps) {
     </Key>
   )
 }
-
-const ToWayOut = ({ jobId }: { jobId: Id }) => (
-  <KeyLink kind="main" href={`/field/jobs/${jobId}/wayout`}>
-    To the way out
-  </KeyLink>
-)
 
 const START = {
   check: 'Start this check',

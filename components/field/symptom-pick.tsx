@@ -2,26 +2,40 @@
 
 import { useMemo, useState } from 'react'
 import { useBook } from '@/components/store/use-book'
+import { SymptomCautions } from '@/components/suspects/symptom-cautions'
 import { Choice, ChoiceMany } from '@/components/ui/choice'
 import { Field } from '@/components/ui/field'
+import { Key } from '@/components/ui/key'
 import { RuleEdge } from '@/components/ui/rule-edge'
-import { letsThrough } from '@/lib/diag/gate'
 import type { SymptomItem } from '@/lib/model/code-book'
 import type { Features } from '@/lib/model/features'
+import { SymptomSearch } from './symptom-search'
 
 /** What a machine does, as picked: a symptom of the code book and when it shows. */
 export type Symptom = { symptom: string | null; conditions: string[] }
-type Props = Symptom & { features: Features; change: (next: Partial<Symptom>) => void }
+type Props = Symptom & {
+  features: Features
+  /** What the rider said: what it speaks of stands first. */
+  said?: string
+  change: (next: Partial<Symptom>) => void
+}
+
+/** How many are shown before the rest is asked for. */
+const AT_FIRST = 6
 
 /** What it does, from the symptoms that fit the machine, searched as riders say it. */
-export function SymptomPick({ features, symptom, conditions, change }: Props) {
+export function SymptomPick({ features, said = '', symptom, conditions, change }: Props) {
   const [wanted, setWanted] = useState('')
+  const [all, setAll] = useState(false)
   const { index } = useBook()
-  const found = useMemo(
-    () => search([...(index?.symptoms.values() ?? [])], features, wanted),
-    [index, features, wanted],
+  const search = useMemo(
+    () => new SymptomSearch([...(index?.symptoms.values() ?? [])], features),
+    [index, features],
   )
+  const found = useMemo(() => offered(search, wanted.trim(), said), [search, wanted, said])
   const picked = symptom === null ? undefined : index?.symptoms.get(symptom)
+  const short = all || wanted.trim() !== '' ? found : found.slice(0, AT_FIRST)
+  const shown = picked && !short.includes(picked) ? [picked, ...short] : short
   return (
     <>
       <RuleEdge>What does it do?</RuleEdge>
@@ -45,14 +59,17 @@ export function SymptomPick({ features, symptom, conditions, change }: Props) {
             legendHidden
             value={symptom}
             onChange={(next) => change({ symptom: next, conditions: [] })}
-            options={(picked && !found.includes(picked) ? [picked, ...found] : found).map((s) => ({
-              value: s.id,
-              label: s.name,
-            }))}
+            options={shown.map((s) => ({ value: s.id, label: s.name }))}
           />
           {found.length === 0 ? <p>Nothing in the list fits. The rider’s words are kept.</p> : null}
+          {short.length < found.length ? (
+            <Key small onClick={() => setAll(true)}>
+              All {found.length} of the list
+            </Key>
+          ) : null}
         </>
       )}
+      {picked ? <SymptomCautions symptom={picked} /> : null}
       {picked && picked.conditions.length > 0 ? (
         <ChoiceMany
           legend="When does it do it?"
@@ -66,16 +83,7 @@ export function SymptomPick({ features, symptom, conditions, change }: Props) {
   )
 }
 
-function search(
-  symptoms: readonly SymptomItem[],
-  features: Features,
-  wanted: string,
-): SymptomItem[] {
-  const words = wanted.toLowerCase().split(/\s+/).filter(Boolean)
-  return symptoms
-    .filter((symptom) => letsThrough(symptom.gate, features))
-    .filter((symptom) => {
-      const text = [symptom.name, ...symptom.riderWords].join(' ').toLowerCase()
-      return words.every((word) => text.includes(word))
-    })
+/** What was looked for; with nothing looked for, all, those first that the rider's words speak of. */
+function offered(search: SymptomSearch, wanted: string, said: string): readonly SymptomItem[] {
+  return wanted === '' ? [...new Set([...search.find(said), ...search.all])] : search.find(wanted)
 }

@@ -44,13 +44,21 @@ export function buildCase(input: {
   }
 }
 
-/** True once it is known what the machine does: before that the model has nothing to rank suspects by. */
-export const hasSymptom = (of: {
+/** What the machine is said to do, each once: the complaint's symptom first, then what was taken down later. */
+export function symptomsOf(of: {
   job: Pick<Job, 'complaint'>
   entries: readonly LogEntry[]
-}): boolean =>
-  of.job.complaint.symptom !== null ||
-  living(of.entries).some(({ body }) => body.kind === 'symptom')
+}): string[] {
+  const later = living(of.entries).flatMap(({ body }) =>
+    body.kind === 'symptom' ? [body.symptom] : [],
+  )
+  const first = of.job.complaint.symptom
+  return [...new Set(first === null ? later : [first, ...later])]
+}
+
+/** True once it is known what the machine does: before that the model has nothing to rank suspects by. */
+export const hasSymptom = (of: Parameters<typeof symptomsOf>[0]): boolean =>
+  symptomsOf(of).length > 0
 
 /** The entries still in evidence, in the order they happened; corrections themselves are left out. */
 export function living(entries: readonly LogEntry[]): LogEntry[] {

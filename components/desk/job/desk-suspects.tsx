@@ -8,7 +8,8 @@ import { NOTICE_WORDS } from '@/components/suspects/notice-words'
 import { SuspectRows } from '@/components/suspects/suspect-rows'
 import { RuleEdge } from '@/components/ui/rule-edge'
 import type { Belief } from '@/lib/diag/belief'
-import { hasSymptom } from '@/lib/diag/case'
+import { symptomsOf } from '@/lib/diag/case'
+import { knownSymptoms, opensWayOut } from '@/lib/diag/first-look'
 import type { DeskJob } from '@/lib/model/desk'
 import { counted } from '../../field/words'
 import type { JobCase } from './use-job-case'
@@ -21,7 +22,9 @@ export function DeskSuspects({ found, reckoned }: { found: DeskJob; reckoned: Jo
     () => new Map(found.entries.map(({ id, body }) => [id, entryMention(body, index)])),
     [found.entries, index],
   )
-  const belief = reckoned.answer?.belief
+  const ids = symptomsOf(found)
+  const noFault = index !== null && opensWayOut(knownSymptoms(index, ids))
+  const belief = ids.length === 0 || noFault ? undefined : reckoned.answer?.belief
   return (
     <section className="mt-7" aria-busy={reckoned.working}>
       <RuleEdge end="of 100">
@@ -35,12 +38,15 @@ export function DeskSuspects({ found, reckoned }: { found: DeskJob; reckoned: Jo
           The suspects could not be worked out here. The job log below is whole.
         </p>
       ) : null}
-      {hasSymptom(found) ? null : (
+      {ids.length > 0 ? null : (
         <p className="mt-1 font-bold">
           Nobody has said yet what it does, so there is nothing to rank suspects by.
         </p>
       )}
-      {belief && hasSymptom(found) ? (
+      {noFault ? (
+        <p className="mt-1 font-bold">No fault to look for: what is wanted is a way out.</p>
+      ) : null}
+      {belief ? (
         <>
           <Notices notices={belief.notices} />
           <div className="mt-2">

@@ -25,6 +25,7 @@ export function ComplaintStep({ draft, change }: StepProps) {
       />
       <SymptomPick
         features={features}
+        said={draft.words}
         symptom={draft.symptom}
         conditions={draft.conditions}
         change={change}

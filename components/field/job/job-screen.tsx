@@ -9,7 +9,7 @@ import { KeyLink } from '@/components/ui/key'
 import { Row } from '@/components/ui/row'
 import { RuleEdge } from '@/components/ui/rule-edge'
 import { Screen } from '@/components/ui/screen'
-import { hasSymptom, living } from '@/lib/diag/case'
+import { hasSymptom, living, symptomsOf } from '@/lib/diag/case'
 import type { Job } from '@/lib/model/job'
 import type { LogEntry } from '@/lib/model/log-entry'
 import { CodeLines } from '../codes/code-lines'
@@ -148,9 +148,7 @@ function Air({ job }: { job: Job }) {
 
 function Complaint({ job, entries }: { job: Job; entries: readonly LogEntry[] }) {
   const { index } = useBook()
-  const later = entries.flatMap(({ body }) => (body.kind === 'symptom' ? [body.symptom] : []))
-  const known = job.complaint.symptom === null ? later : [job.complaint.symptom, ...later]
-  const symptoms = [...new Set(known)].map((id) => index?.symptoms.get(id)?.name ?? null)
+  const symptoms = symptomsOf({ job, entries }).map((id) => index?.symptoms.get(id)?.name ?? null)
   return (
     <section className="grid gap-1">
       <p className="text-row font-bold">“{job.complaint.words}”</p>

@@ -60,7 +60,12 @@ function OneSymptom({ facts }: { facts: JobFacts }) {
         </>
       }
     >
-      <SymptomPick features={facts.features} {...draft} change={change} />
+      <SymptomPick
+        features={facts.features}
+        said={facts.job.complaint.words}
+        {...draft}
+        change={change}
+      />
       <NotSaved problem={problem} />
     </Screen>
   )
