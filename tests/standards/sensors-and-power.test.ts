@@ -55,7 +55,7 @@ describe('Steinhart-Hart (1968)', () => {
     [3833.327593, 20],
     [2470.600113, 30],
   ])('[STD] %f ohm is %i C (coefficients seen in code)', (ohm, celsius) => {
-    expect(theValue(steinhartCelsius(seen, ohm))).toBeCloseTo(celsius, 7)
+    expect(theValue(steinhartCelsius(seen, ohm))).toBeCloseTo(celsius, 8)
   })
   it('[STD] fit through 0, 25 and 50 C of a 10 kohm table gives its 10, 20 and 30 C rows (instrument manual, seen)', () => {
     const fit = theValue(
@@ -68,9 +68,9 @@ describe('Steinhart-Hart (1968)', () => {
     expect(fit.a).toBeCloseTo(1.10415912e-3, 9)
     expect(fit.b).toBeCloseTo(2.38917947e-4, 10)
     expect(fit.c).toBeCloseTo(6.93162653e-8, 12)
-    expect(theValue(steinhartCelsius(fit, 19549))).toBeCloseTo(10.0, 2)
-    expect(theValue(steinhartCelsius(fit, 12262))).toBeCloseTo(19.999, 2)
-    expect(theValue(steinhartCelsius(fit, 7908))).toBeCloseTo(29.998, 2)
+    expect(theValue(steinhartCelsius(fit, 19549))).toBeCloseTo(10.0, 3)
+    expect(theValue(steinhartCelsius(fit, 12262))).toBeCloseTo(19.999, 3)
+    expect(theValue(steinhartCelsius(fit, 7908))).toBeCloseTo(29.998, 3)
   })
 })
 
@@ -90,7 +90,7 @@ describe('Pt100, IEC 60751 (three tables, seen)', () => {
     [400, 247.09],
     [600, 313.71],
   ])('[STD] %i C is %f ohm', (celsius, ohm) => {
-    expect(Math.abs(theValue(pt100Ohm(celsius)) - ohm)).toBeLessThan(0.00501)
+    expect(Math.abs(theValue(pt100Ohm(celsius)) - ohm)).toBeLessThan(0.005)
     expect(theValue(pt100Celsius(theValue(pt100Ohm(celsius))))).toBeCloseTo(celsius, 9)
   })
 })
@@ -131,7 +131,7 @@ describe('US Standard Atmosphere 1976 / ISO 2533', () => {
   })
   it('[STD] a compression gauge reads 0.887, 0.7846 and 0.6919 of sea level at 1, 2 and 3 km', () => {
     expect([1000, 2000, 3000].map((m) => theValue(compressionShare(m)))).toEqual(
-      [0.887, 0.7846, 0.6919].map((x) => expect.closeTo(x, 3)),
+      [0.887, 0.7846, 0.6919].map((x) => expect.closeTo(x, 4)),
     )
   })
   it.each([
@@ -266,7 +266,7 @@ describe('ignition coil current (L I^2 / 2, V/R (1 - e^(-tR/L)); recomputed)', (
   ])('[STD] %f V for %f s drive %f A through 0.5 ohm and 3 mH', (volts, seconds, amperes) => {
     expect(theValue(primaryAmperes({ ohm: 0.5, henry: 0.003 }, volts, seconds))).toBeCloseTo(
       amperes,
-      3,
+      4,
     )
   })
   it('[STD] 6 A take 1.447 ms at 14 V and 2.433 ms at 9 V: why a weak battery gives a weak spark', () => {

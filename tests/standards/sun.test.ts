@@ -4,8 +4,8 @@ import { minutesToLeaveBy, sunBearing, sunHeight, sunTimes } from '@/lib/diag/da
 const MINUTE = 60_000
 const HOUR = 60 * MINUTE
 const at = (iso: string) => Date.parse(iso)
-/** Within a minute of a published minute (which may be rounded), within the test's tolerance of 1 min. */
-const near = (got: number | null, iso: string, ms = 1.5 * MINUTE) => {
+/** Within a minute of a published minute (CHECKS 3.1); published seconds are met within three. */
+const near = (got: number | null, iso: string, ms = MINUTE) => {
   expect(got).not.toBeNull()
   expect(Math.abs((got ?? 0) - at(iso))).toBeLessThan(ms)
 }
@@ -29,8 +29,8 @@ describe('sunrise and sunset, USNO (seen in a solar-energy library)', () => {
     [35, 0, '1994-01-02', '07:08:12', '16:59:55'],
   ])('[STD] %i N %i E on %s to the second: %s and %s', (lat, lon, day, rise, set) => {
     const sun = sunTimes(lat, lon, at(`${day}T12:00:00Z`))
-    near(sun.sunrise, `${day}T${rise}Z`, 10_000)
-    near(sun.sunset, `${day}T${set}Z`, 10_000)
+    near(sun.sunrise, `${day}T${rise}Z`, 3000)
+    near(sun.sunset, `${day}T${set}Z`, 3000)
   })
   it.each([
     ['2020-01-15', '2020-01-15T18:57:00Z', '2020-01-15T18:01:00Z'],
@@ -60,12 +60,17 @@ describe('sunrise and sunset, USNO (seen in a solar-energy library)', () => {
   })
   it('[STD] SPA example: the set of the local day before is 17:20:18, not that of 10-17 (CHECKS 3.1 trap)', () => {
     const before = sunTimes(39.742476, -105.1786, at('2003-10-16T19:00:00Z'))
-    near(before.sunset, '2003-10-17T00:20:18Z', 10_000)
+    near(before.sunset, '2003-10-17T00:20:18Z', 3000)
   })
   it('[STD] midsummer at 61 N: rise 12:22, set 07:42, civil twilight all night', () => {
     const sun = sunTimes(61.216667, -149.866667, at('2020-06-25T22:00:00Z'))
     near(sun.sunrise, '2020-06-25T12:22:00Z')
     near(sun.sunset, '2020-06-26T07:42:00Z')
+    // The table lists by UTC date: 07:42 on 06-25 is the evening of 06-24 there.
+    near(
+      sunTimes(61.216667, -149.866667, at('2020-06-24T22:00:00Z')).sunset,
+      '2020-06-25T07:42:00Z',
+    )
     expect(sun).toMatchObject({ civilDusk: null, civilDawn: null, never: 'darkens' })
   })
   it('[STD] 78.2167 N 15.6333 E from 2020-01-05 to 02-05: below the horizon all day (USNO, seen)', () => {
@@ -82,8 +87,8 @@ describe('sunrise and sunset, USNO (seen in a solar-energy library)', () => {
   })
   it('[STD] SPA example 2003-10-17: rise 06:12:43, set of the local day 17:18:50 (memory, recomputed)', () => {
     const sun = sunTimes(39.742476, -105.1786, at('2003-10-17T19:00:00Z'))
-    near(sun.sunrise, '2003-10-17T13:12:43Z', 10_000)
-    near(sun.sunset, '2003-10-18T00:18:50Z', 10_000)
+    near(sun.sunrise, '2003-10-17T13:12:43Z', 3000)
+    near(sun.sunset, '2003-10-18T00:18:50Z', 3000)
   })
   it('[STD] SPA example 2003-10-17 12:30:30: azimuth 194.340241, declination -9.31434 degrees (seen)', () => {
     const [lat, lon, noon] = [39.742476, -105.1786, at('2003-10-17T19:30:30Z')]

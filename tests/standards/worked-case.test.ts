@@ -31,7 +31,9 @@ describe('CHECKS 2.3, the worked case: what else it says (all recomputed)', () =
     const u = Math.sqrt(widths.reduce((sum, a) => sum + a * a, 0) / 3)
     expect(u).toBeCloseTo(0.0409, 4)
     expect(chance(0.5, u)).toBeCloseTo(0.779, 3)
+    // Printed without the gain of 0.004 ohm: two even rectangles are a triangle.
     expect(Math.abs(2 * rectSumCdf(widths, 0.05) - 1 - 0.75)).toBeLessThan(0.001)
+    expect(2 * rectSumCdf([0.05, 0.05], 0.05) - 1).toBeCloseTo(0.75, 12)
   })
   it('[STD] as one rectangle 95 % asks +-0.0526 exactly, +-0.0442 by the normal rule', () => {
     expect(0.05 / 0.95).toBeCloseTo(0.0526, 4)
