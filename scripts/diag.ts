@@ -3,6 +3,7 @@
  * as JSON on standard output. A bad file gets one sentence that names the field, and exit code 1.
  */
 import { readFileSync } from 'node:fs'
+import { jsonBreak } from '@/lib/diag/json-break'
 import { readModel } from '@/lib/diag/read-model'
 import { marginals, nextAction, posterior } from '@/lib/diag/troubleshoot'
 import { START } from '@/lib/diag/troubleshoot-model'
@@ -13,8 +14,8 @@ export function answerTo(text: string): { ok: boolean; text: string; notices: st
   let json: unknown
   try {
     json = JSON.parse(text)
-  } catch (cause) {
-    return { ok: false, text: `The file is not JSON: ${String(cause)}`, notices: [] }
+  } catch {
+    return { ok: false, text: notJson(text), notices: [] }
   }
   const read = readModel(json)
   if (!read.ok) return { ok: false, text: read.problem.sentence, notices: [] }
@@ -32,6 +33,17 @@ export function answerTo(text: string): { ok: boolean; text: string; notices: st
   }
 }
 
+/** Where the text stops being JSON, with the field it stops in. */
+function notJson(text: string): string {
+  const at = jsonBreak(text)
+  if (at === null) return 'The file is not JSON.'
+  const place = `line ${at.line}, column ${at.column}`
+  const field = at.field === '' ? '' : `, in "${at.field.slice(0, 120)}"`
+  return at.word === null
+    ? `The file is not JSON: it ends at ${place}${field}.`
+    : `The file is not JSON: ${JSON.stringify(at.word)} cannot stand at ${place}${field}.`
+}
+
 /** What the engine refuses, by kind. */
 function sentenceOf({ kind, context }: AppError): string {
   if (kind === 'impossible') return '"evidence" cannot come about under this model.'
@@ -40,12 +52,25 @@ function sentenceOf({ kind, context }: AppError): string {
   return `"${String(context.field ?? 'the file')}" is not right.`
 }
 
+function textOf(file: string): string | null {
+  try {
+    return readFileSync(file, 'utf8')
+  } catch {
+    return null
+  }
+}
+
 function main(file: string | undefined): number {
   if (file === undefined) {
     console.error('Name a file: npm run diag -- FILE.json')
     return 1
   }
-  const answer = answerTo(readFileSync(file, 'utf8'))
+  const text = textOf(file)
+  if (text === null) {
+    console.error(`"${file}" cannot be read as a file.`)
+    return 1
+  }
+  const answer = answerTo(text)
   for (const notice of answer.notices) console.error(notice)
   if (answer.ok) console.log(answer.text)
   else console.error(answer.text)

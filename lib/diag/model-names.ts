@@ -1,4 +1,5 @@
 /** Names in a model file that do not exist or stand twice, and rows that do not fit: one sentence with the field. */
+import { ROW_SLACK } from './model-figures'
 import type { NoisyOrModel, SearchState, SingleModel } from './troubleshoot-model'
 
 /** What is wrong with a model file: the field, and a sentence that names it. */
@@ -61,6 +62,15 @@ function badName(model: SingleModel): Bad | null {
   if (stranger !== null) return bad(stranger, 'names a fault that is not listed')
   if (!(model.faults.reduce((sum, f) => sum + f.prior, 0) > 0))
     return bad('faults', 'must have priors above 0')
+  const unset = strangeSetup(model, setups)
+  if (unset !== null) return unset
+  const ring = (model.setups ?? []).find(({ id }) => leadsTo(model, id, id))
+  if (ring !== undefined) return bad(`setups.${ring.id}.requires`, 'leads back to itself')
+  return badRow(model, faults)
+}
+
+/** A set-up that something asks for and that is not there. */
+function strangeSetup(model: SingleModel, setups: ReadonlySet<string>): Bad | null {
   const needs = [
     ...model.faults.map((f) => ({
       at: `faults.${f.id}.repair.setup`,
@@ -78,7 +88,20 @@ function badName(model: SingleModel): Bad | null {
     if (missing !== undefined)
       return bad(at, `names a set-up "${short(missing)}" that is not listed`)
   }
-  return badRow(model, faults)
+  return null
+}
+
+/** Whether opening a set-up asks for another one, straight or by what it requires. */
+function leadsTo({ setups = [] }: SingleModel, from: string, wanted: string): boolean {
+  const seen = new Set<string>()
+  const open = [from]
+  for (let at = open.pop(); at !== undefined; at = open.pop())
+    for (const next of setups.find((s) => s.id === at)?.requires ?? []) {
+      if (next === wanted) return true
+      if (!seen.has(next)) open.push(next)
+      seen.add(next)
+    }
+  return false
 }
 
 /** Set-ups are kept as bits of one number (search-problem.ts). */
@@ -114,7 +137,7 @@ function badRow(model: SingleModel, faults: readonly string[]): Bad | null {
       if (row.length !== check.outcomes.length)
         return bad(at, `must have ${check.outcomes.length} chances, one per outcome`)
       const sum = row.reduce((total, p) => total + p, 0)
-      if (Math.abs(sum - 1) > 1e-6) return bad(at, `must sum to 1, not ${sum}`)
+      if (Math.abs(sum - 1) > ROW_SLACK) return bad(at, `must sum to 1, not ${sum}`)
     }
   }
   return null

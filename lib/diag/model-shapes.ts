@@ -61,7 +61,12 @@ export const single = z.object({
     z.object({
       cost: amount,
       minutes: amount,
-      falsePass: z.optional(z.union([chance, z.record(name, chance)])),
+      falsePass: z.optional(
+        z.union(
+          [chance, z.record(name, chance)],
+          'must be a chance from 0 to 1, or one for each fault',
+        ),
+      ),
       comebackCost: z.optional(amount),
     }),
   ),
@@ -84,7 +89,10 @@ export const noisyOr = z.object({
   findings: z.array(z.object({ id: name, leak: chance, links: z.record(name, chance) })),
   evidence: z.record(
     name,
-    z.union([z.literal(0), z.literal(1), z.object({ virtual: z.tuple([amount, amount]) })]),
+    z.union(
+      [z.literal(0), z.literal(1), z.object({ virtual: z.tuple([amount, amount]) })],
+      'must be 1, 0 or { "virtual": [likelihood if absent, likelihood if present] }',
+    ),
   ),
 })
 /** Where a job stands. */

@@ -34,15 +34,36 @@ export function readModel(json: unknown): Result<ModelFile, ModelProblem> {
     return issueOf(parsedState.error.issues, 'state')
   const at = parsedState === null ? null : (bare(parsedState.data) as SearchState)
   const strange = strangeName(model, at)
-  return strange ?? ok({ model, state: at, notices: noticesOf(json, model.kind) })
+  if (strange !== null) return strange
+  const unknown = [
+    ...leftAlone(json, parsed.data).filter((field) => !BESIDE.includes(field)),
+    ...(parsedState === null ? [] : leftAlone(given, parsedState.data, 'state')),
+  ]
+  return ok({ model, state: at, notices: noticesOf([...new Set(unknown)]) })
 }
 
-function noticesOf(json: object, kind: 'single' | 'noisyor'): string[] {
-  const known = kind === 'single' ? single.shape : noisyOr.shape
-  return Object.keys(json)
-    .filter((key) => !Object.hasOwn(known, key) && !BESIDE.includes(key))
-    .map((key) => `The field "${short(key)}" is not known and was left alone.`)
+/** Notices shown one by one; of more only their number is said. */
+const MOST_NOTICES = 20
+
+function noticesOf(fields: readonly string[]): string[] {
+  const shown = fields
+    .slice(0, MOST_NOTICES)
+    .map((field) => `The field "${short(field)}" is not known and was left alone.`)
+  const more = fields.length - shown.length
+  return more > 0 ? [...shown, `${more} more fields are not known and were left alone.`] : shown
 }
+
+/** The fields of a file that its shape does not know: those that parsing left out, at any depth, lists as one. */
+function leftAlone(given: unknown, kept: unknown, under = ''): string[] {
+  if (!isRecord(given) || !isRecord(kept)) return []
+  return Object.keys(given).flatMap((key) => {
+    const at = Array.isArray(given) ? under : under === '' ? key : `${under}.${key}`
+    return Object.hasOwn(kept, key) ? leftAlone(given[key], kept[key], at) : [at]
+  })
+}
+
+const isRecord = (value: unknown): value is Record<string, unknown> =>
+  typeof value === 'object' && value !== null
 
 type Place = { value: unknown; key: string; under: Place | null }
 
@@ -80,6 +101,7 @@ type Issue = {
   minimum?: unknown
   maximum?: unknown
   values?: readonly unknown[]
+  message?: string
 }
 
 function issueOf(issues: readonly Issue[], under = ''): Bad {
@@ -88,8 +110,10 @@ function issueOf(issues: readonly Issue[], under = ''): Bad {
   return bad(path.join('.') || 'the file', issue === undefined ? 'is not right' : wordsOf(issue))
 }
 
-function wordsOf({ code, expected, minimum, maximum, values, origin }: Issue): string {
-  if (code === 'invalid_type') return `must be a ${String(expected)}`
+function wordsOf({ code, expected, minimum, maximum, values, origin, message }: Issue): string {
+  if (code === 'invalid_type') return `must be ${KINDS[String(expected)] ?? 'of another kind'}`
+  // Both unions of the shapes say themselves what they may be.
+  if (code === 'invalid_union') return message ?? 'must be of another kind'
   if (code === 'too_small' && origin === 'string') return 'must not be empty'
   if (code === 'too_big' && origin === 'string')
     return `must have ${String(maximum)} letters at most`
@@ -99,4 +123,14 @@ function wordsOf({ code, expected, minimum, maximum, values, origin }: Issue): s
   if (code === 'too_big') return `must be at most ${String(maximum)}`
   if (values !== undefined) return `must be one of ${values.map(String).join(', ')}`
   return 'does not have one of the forms it may have'
+}
+
+/** What a field may be asked to be, by the schema's own words. */
+const KINDS: Readonly<Record<string, string>> = {
+  array: 'a list',
+  boolean: 'true or false',
+  number: 'a number',
+  object: 'an object',
+  record: 'an object',
+  string: 'a string',
 }

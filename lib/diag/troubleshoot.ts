@@ -5,6 +5,7 @@
  */
 import { AppError } from '@/lib/model/result'
 import { type Candidate, leastCosts, lookAhead, type Spot, stepAfter } from './look-ahead'
+import { mustBeFigures } from './model-figures'
 import { noisyOrMarginals } from './noisy-or'
 import { gapOf, guessOf, optionsOf, pointsAfter, solve, solveWithout, startSearch } from './search'
 import { type Action, actionOf, type Search } from './search-moves'
@@ -54,10 +55,11 @@ export type NextAction = {
 
 /**
  * The cheapest next action from a state. `limit`: how many points may be expanded; a default by the size of what
- * is left. Throws AppError `badModel` for unknown names, `noAction` when nothing can end the job, `impossible`
- * when the evidence cannot come about.
+ * is left. Throws AppError `badModel` (with the field) for unknown names and figures that cannot be, `noAction` when
+ * nothing can end the job, `impossible` when the evidence cannot come about.
  */
 export function nextAction(model: SingleModel, state: SearchState, limit?: number): NextAction {
+  mustBeFigures(model, state)
   const problem = problemOf(model)
   const w = weightsOf(model, problem, state)
   const spot = { w, ...leftOf(problem, state), open: openOf(model, state), elapsed: state.elapsed }
@@ -72,14 +74,21 @@ export function nextAction(model: SingleModel, state: SearchState, limit?: numbe
   return { ...two, gap: two.expectedCost - floor, expansions: found.expansions }
 }
 
-/** P(each fault | outcomes, and that the tried repairs were seen to fail), for kind `single`. */
+/**
+ * P(each fault | outcomes, and that the tried repairs were seen to fail), for kind `single`: 0 to 1, sum 1; all 0
+ * when the state cannot come about. Throws AppError `badModel` for unknown names and figures that cannot be.
+ */
 export function posterior(model: SingleModel, state: SearchState): Record<string, number> {
+  mustBeFigures(model, state)
   const w = weightsOf(model, problemOf(model), state)
   const mass = massOf(w)
   return Object.fromEntries(model.faults.map((f, i) => [f.id, mass > 0 ? (w[i] ?? 0) / mass : 0]))
 }
 
-/** P(each fault | evidence) for kind `noisyor`, exact. */
+/**
+ * P(each fault | evidence) for kind `noisyor`, exact: 0 to 1 each. Throws AppError `badModel` for figures that cannot
+ * be, `impossible` when the evidence cannot come about, `tooLarge` past 2^20 combinations.
+ */
 export function marginals(model: NoisyOrModel): Record<string, number> {
   return noisyOrMarginals(model)
 }

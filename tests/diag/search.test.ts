@@ -160,6 +160,67 @@ describe('[E2] where a job stands', () => {
       expectedCost: expect.closeTo(30 + 20 * a, 9),
     })
   })
+  it('[E6] figures that cannot be are named, by the action and by the belief, and never left out in silence', () => {
+    const whole = modelOf({
+      checks: [sure('c')],
+      extraRepairs: [{ ...free, id: 'x', fixes: { a: 0.5 } }],
+      setups: [{ id: 's', minutes: 1, requires: [], closedByTest: false }],
+      verify: { cost: 1, minutes: 1, falsePass: { a: 0.1 }, comebackCost: 5 },
+      daylight: { minutes: 100 },
+    })
+    const wild: [string, (bad: number) => Partial<SingleModel>][] = [
+      ['ratePerMinute', (bad) => ({ ratePerMinute: bad })],
+      [
+        'faults.b.prior',
+        (bad) => ({ faults: [whole.faults[0]!, { id: 'b', prior: bad, repair: null }] }),
+      ],
+      [
+        'faults.a.repair.cost',
+        (bad) => ({ faults: [{ id: 'a', prior: 1, repair: { ...free, cost: bad } }] }),
+      ],
+      [
+        'faults.a.repair.minutes',
+        (bad) => ({ faults: [{ id: 'a', prior: 1, repair: { ...free, minutes: bad } }] }),
+      ],
+      [
+        'faults.a.repair.success',
+        (bad) => ({ faults: [{ id: 'a', prior: 1, repair: { ...free, success: bad } }] }),
+      ],
+      [
+        'extraRepairs.x.fixes.a',
+        (bad) => ({ extraRepairs: [{ ...free, id: 'x', fixes: { a: bad } }] }),
+      ],
+      ['checks.c.cost', (bad) => ({ checks: [{ ...sure('c'), cost: bad }] })],
+      ['checks.c.minutes', (bad) => ({ checks: [sure('c', bad)] })],
+      ['checks.c.p.a.0', (bad) => ({ checks: [{ ...sure('c'), p: { a: [bad, 0], b: [0, 1] } }] })],
+      ['setups.s.minutes', (bad) => ({ setups: [{ ...whole.setups![0]!, minutes: bad }] })],
+      ['stops.tow.cost', (bad) => ({ stops: [{ id: 'tow', cost: bad }] })],
+      ['verify.comebackCost', (bad) => ({ verify: { ...whole.verify!, comebackCost: bad } })],
+      ['verify.falsePass', (bad) => ({ verify: { ...whole.verify!, falsePass: bad } })],
+      ['verify.falsePass.a', (bad) => ({ verify: { ...whole.verify!, falsePass: { a: bad } } })],
+      ['daylight.minutes', (bad) => ({ daylight: { minutes: bad } })],
+    ]
+    const named = (field: string) =>
+      expect.objectContaining({ kind: 'badModel', context: { field } })
+    for (const ask of [nextAction, posterior]) {
+      expect(ask(whole, START)).toBeDefined()
+      for (const [field, over] of wild)
+        for (const bad of [Number.NaN, Number.POSITIVE_INFINITY, -1])
+          expect(() => ask({ ...whole, ...over(bad) }, START), `${field} ${bad}`).toThrow(
+            named(field),
+          )
+      const elapsed = Number.NaN
+      expect(() => ask(whole, { ...START, elapsed })).toThrow(named('state.elapsed'))
+      for (const faults of [[], whole.faults.map((f) => ({ ...f, prior: 0 }))])
+        expect(() => ask({ ...whole, faults }, START)).toThrow(named('faults'))
+      for (const row of [[0.9, 0.9], [1], [0.5, 0.2, 0.3]]) {
+        const checks = [{ ...sure('c'), p: { a: [1, 0], b: row } }]
+        expect(() => ask({ ...whole, checks }, START)).toThrow(named('checks.c.p.b'))
+      }
+      const stops = [{ id: 'tow', cost: 1, costByFault: { a: Number.NaN } }]
+      expect(() => ask({ ...whole, stops }, START)).toThrow(named('stops.tow.costByFault.a'))
+    }
+  })
   it('[E2] names that the model has not are named', () => {
     const model = modelOf({ checks: [sure('c')] })
     const field = (state: Partial<SearchState>): unknown => {
