@@ -1,6 +1,7 @@
 /**
- * Sunrise, sunset and civil twilight of one local day. suncalc finds the moments; this file is the only one
- * that may import it or hold a Date. Standard zeniths: 90.833 degrees for rise and set, 96 for civil twilight.
+ * Sunrise, sunset and the twilights of one local day. suncalc finds the moments; this file is the only one that may
+ * import it or hold a Date. Standard zeniths: 90.833 degrees for rise and set, 96, 102 and 108 for civil, nautical
+ * and astronomical twilight.
  */
 import { getPosition, getTimes } from 'suncalc'
 import { AppError } from '@/lib/model/result'
@@ -27,19 +28,42 @@ export type SunTimes = {
 export function sunTimes(lat: number, lon: number, dayMs: number): SunTimes {
   mustBePlaceAndTime(lat, lon, dayMs)
   const times = getTimes(new Date(dayMs), lat, lon)
-  const at = (d: Date | null): number | null =>
-    d === null || Number.isNaN(d.getTime()) ? null : d.getTime()
   const noon = times.solarNoon.getTime()
   const sun = {
     noon,
-    sunrise: at(times.sunrise),
-    sunset: at(times.sunset),
-    civilDawn: at(times.dawn),
-    civilDusk: at(times.dusk),
+    sunrise: momentOf(times.sunrise),
+    sunset: momentOf(times.sunset),
+    civilDawn: momentOf(times.dawn),
+    civilDusk: momentOf(times.dusk),
   }
   const darkAllDay = sun.civilDusk === null && sunHeight(lat, lon, noon) < CIVIL_HEIGHT
   return { ...sun, never: never(sun, times.alwaysUp === true), darkAllDay }
 }
+
+/** When a twilight begins in the morning and ends in the evening, ms UTC; null where it does not that day. */
+export type Twilight = { dawn: number | null; dusk: number | null }
+
+/**
+ * The three twilights of the same day as sunTimes: the sun 6, 12 and 18 degrees under the horizon. The later ones say
+ * how long shapes (civil), the horizon (nautical) and a last glow (astronomical) are to be seen. Degrees north and
+ * east, ms UTC; a place or instant that is none: AppError.
+ */
+export function twilights(
+  lat: number,
+  lon: number,
+  dayMs: number,
+): Record<'civil' | 'nautical' | 'astronomical', Twilight> {
+  mustBePlaceAndTime(lat, lon, dayMs)
+  const times = getTimes(new Date(dayMs), lat, lon)
+  return {
+    civil: { dawn: momentOf(times.dawn), dusk: momentOf(times.dusk) },
+    nautical: { dawn: momentOf(times.nauticalDawn), dusk: momentOf(times.nauticalDusk) },
+    astronomical: { dawn: momentOf(times.nightEnd), dusk: momentOf(times.night) },
+  }
+}
+
+const momentOf = (d: Date | null): number | null =>
+  d === null || Number.isNaN(d.getTime()) ? null : d.getTime()
 
 /**
  * Apparent height of the sun over the horizon in degrees, -90 to 90, refraction included, at an instant (ms).

@@ -52,12 +52,13 @@ export function readingProblem(input: ReadingInput): FigureProblem | null {
   return unfit(fields) ?? unfit({ value: [input.value, leastValue(input), MOST] })
 }
 
-/** What conditions a limit can hold for: engine and cranking speed per minute, volts, metres. */
+/** What conditions a limit can hold for: engine and cranking speed per minute, volts, metres, minutes. */
 const ASKED = {
   engineSpeed: [1, 1e5],
   crankingSpeed: [1, 1e5],
   batteryVolts: [0.1, 1e3],
   altitude: [-1000, 11_000],
+  sincePriming: [0, 60],
 } as const
 
 /** A sentence about a problem, for a screen and a log. */

@@ -2,7 +2,7 @@
 import fc from 'fast-check'
 import { describe, expect, it } from 'vitest'
 import { judge, type ReadingInput } from '@/lib/diag/reading'
-import { CONDITION_NAMES, type Condition } from '@/lib/diag/reading-conditions'
+import { CONDITION_KINDS, CONDITION_NAMES, type Condition } from '@/lib/diag/reading-conditions'
 import { rectSumCdf } from '@/lib/diag/rect-sum'
 import { twinDifference } from '@/lib/diag/twin-difference'
 import { inKeptUnit, unitOf } from '@/lib/diag/typed-units'
@@ -76,6 +76,27 @@ describe('[R7] of any reading', () => {
     // US Standard Atmosphere 1976: 101.325 kPa (1 - 0.0065 h / 288.15)^5.255876.
     const air = (h: number) => (1 - (0.0065 * h) / 288.15) ** 5.255876
     expect(width('altitude')).toBeCloseTo(27.4 * (air(1200) / air(1500) - 1), 9)
+    expect(conditions.map((c) => c.kind)).toEqual(
+      CONDITION_KINDS.filter((kind) => kind !== 'sincePriming'),
+    )
+  })
+  it('[R7] fuel pressure read five minutes late may have lost 1 - 0.8^0.5 of itself, ten minutes late 20 of 100', () => {
+    const spec = specOf({ quantity: 'pressure', unit: 'kPa', low: 250, high: 400 })
+    const meterFunction = { percent: 1, digits: 0, resolution: 1 }
+    const at = (halfWidth: number) =>
+      judge({
+        ...coilInput,
+        quantity: 'pressure',
+        value: 265,
+        meterFunction,
+        spec,
+        conditions: [{ kind: 'sincePriming', asked: 0, halfWidth }],
+      })
+    const width = (halfWidth: number) =>
+      at(halfWidth).budget.find((line) => line.source === 'Time since priming')?.halfWidth
+    expect(width(10)).toBeCloseTo(265 * 0.2, 9)
+    expect(width(5)).toBeCloseTo(265 * (1 - Math.sqrt(0.8)), 9)
+    expect([at(0).verdict, at(5).verdict]).toEqual(['in', 'tooClose'])
   })
   it('[S5] 27.4 V AC at 3,000 +-150 per minute reads +-1.7: meter 0.66, speed 1.58; out, low', () => {
     const leg = judge({

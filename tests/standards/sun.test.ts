@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest'
-import { minutesToLeaveBy, sunBearing, sunHeight, sunTimes } from '@/lib/diag/daylight'
+import { minutesToLeaveBy, sunBearing, sunHeight, sunTimes, twilights } from '@/lib/diag/daylight'
 
 const MINUTE = 60_000
 const HOUR = 60 * MINUTE
@@ -114,6 +114,31 @@ describe('sunrise and sunset, USNO (seen in a solar-energy library)', () => {
         Array(2).fill(expect.closeTo(96, 2)),
       )
     }
+  })
+  it('[STD] zenith 102 at nautical and 108 at astronomical twilight; civil is that of sunTimes', () => {
+    for (const day of ['2020-03-25', '2020-09-25', '2020-12-15']) {
+      const at12 = at(`${day}T22:00:00Z`)
+      const { civil, nautical, astronomical } = twilights(61.216667, -149.866667, at12)
+      const zenith = (ms: number | null) =>
+        90 - (sunHeight(61.216667, -149.866667, ms ?? 0) - 0.4841)
+      for (const [twilight, degrees] of [
+        [nautical, 102],
+        [astronomical, 108],
+      ] as const)
+        expect([twilight.dawn, twilight.dusk].map(zenith)).toEqual(
+          Array(2).fill(expect.closeTo(degrees, 2)),
+        )
+      const sun = sunTimes(61.216667, -149.866667, at12)
+      expect(civil).toEqual({ dawn: sun.civilDawn, dusk: sun.civilDusk })
+    }
+  })
+  it('[STD] 52 N at midsummer: nautical twilight ends, astronomical lasts all night; at 61 N not even civil ends', () => {
+    const middle = twilights(52, 0, at('2020-06-21T12:00:00Z'))
+    expect(middle.nautical.dusk).not.toBeNull()
+    expect(middle.astronomical).toEqual({ dawn: null, dusk: null })
+    const north = twilights(61.216667, -149.866667, at('2020-06-25T22:00:00Z'))
+    expect(Object.values(north)).toEqual(Array(3).fill({ dawn: null, dusk: null }))
+    expect(() => twilights(91, 0, 0)).toThrow('notAPoint')
   })
   it('[R6] the acceptance day, 47.1 N 93.2 W: sunset 16:29, civil dusk 17:03, leave by 16:13 with 20 min to ride out', () => {
     const sun = sunTimes(47.1, -93.2, at('2026-11-24T18:00:00Z'))
