@@ -82,11 +82,11 @@ export function usesOf({ shelf, models }: Books): Use[] {
       ...list(s.id, 'setup', s.setups),
     ]),
     ...shelf.setup.flatMap((s) => list(s.id, 'setup', s.requires)),
-    ...shelf.spn.flatMap((s) => list(s.id, 'circuit', [s.circuit])),
-    ...shelf.pcode.flatMap((p) => [
-      ...list(p.id, 'circuit', [p.circuit]),
-      ...list(p.id, 'failure', [p.failure]),
+    ...[...shelf.spn, ...shelf.pcode].flatMap((code) => [
+      ...list(code.id, 'circuit', [code.circuit]),
+      ...list(code.id, 'fault', Object.keys(code.tells?.of100 ?? {})),
     ]),
+    ...shelf.pcode.flatMap((p) => list(p.id, 'failure', [p.failure])),
     ...models.flatMap((m) => [
       ...list(m.model, 'setup', m.specSheet?.components.flatMap((c) => c.setups) ?? []),
       ...list(m.model, 'part', m.specSheet?.parts.map((p) => p.part) ?? []),

@@ -14,6 +14,8 @@ export const FMI_UPPER: FailureItem[] = [
     otherwise: 0.4,
     supports: 'The signal is believed and a little too high.',
     arguesAgainst: 'Argues against a plain broken wire.',
+    doesNotProve:
+      'It does not prove the thing truly too high: this is the mildest step, and a sensor misleads by as much. Measure it.',
     source: `${STANDARD}; ${FIGURES}`,
   },
   {
@@ -27,6 +29,8 @@ export const FMI_UPPER: FailureItem[] = [
     otherwise: 0.4,
     supports: 'The signal is believed and clearly too high.',
     arguesAgainst: 'Argues against a plain broken wire.',
+    doesNotProve:
+      'It does not prove the thing truly too high: a sensor that reads high does the same. Measure the thing itself.',
     source: `${STANDARD}; ${FIGURES}`,
   },
   {
@@ -40,6 +44,8 @@ export const FMI_UPPER: FailureItem[] = [
     otherwise: 0.8,
     supports: 'The signal is believed and a little too low.',
     arguesAgainst: 'Argues against a plain broken wire.',
+    doesNotProve:
+      'It does not prove the thing truly too low: this is the mildest step, and a sensor misleads by as much. Measure it.',
     source: `${STANDARD}; ${FIGURES}`,
   },
   {
@@ -53,6 +59,8 @@ export const FMI_UPPER: FailureItem[] = [
     otherwise: 0.8,
     supports: 'The signal is believed and clearly too low.',
     arguesAgainst: 'Argues against a plain broken wire.',
+    doesNotProve:
+      'It does not prove the thing truly too low: a sensor that reads low does the same. Measure the thing itself.',
     source: `${STANDARD}; ${FIGURES}`,
   },
   {
@@ -66,6 +74,8 @@ export const FMI_UPPER: FailureItem[] = [
     otherwise: 1,
     supports: null,
     arguesAgainst: null,
+    doesNotProve:
+      'It does not prove the module that reports it bad: it only passes on that what came over the network made no sense.',
     source: STANDARD,
   },
   {
@@ -79,6 +89,8 @@ export const FMI_UPPER: FailureItem[] = [
     otherwise: 0.4,
     supports: 'Supports a sensor or its ground that has drifted up.',
     arguesAgainst: 'Argues against a lasting open or short.',
+    doesNotProve:
+      'It does not prove the sensor bad: a poor ground or a pin with resistance drifts a signal too, and so may the thing itself.',
     source: `${STANDARD}; ${FIGURES}`,
   },
   {
@@ -92,6 +104,8 @@ export const FMI_UPPER: FailureItem[] = [
     otherwise: 0.4,
     supports: 'Supports a sensor or its supply that has drifted down.',
     arguesAgainst: 'Argues against a lasting open or short.',
+    doesNotProve:
+      'It does not prove the sensor bad: a pin with resistance or a weak supply drifts a signal too, and so may the thing itself.',
     source: `${STANDARD}; ${FIGURES}`,
   },
   {
@@ -105,6 +119,8 @@ export const FMI_UPPER: FailureItem[] = [
     otherwise: 1,
     supports: null,
     arguesAgainst: null,
+    doesNotProve:
+      'It says nothing: the standard keeps this kind free. A maker that uses it has its own meaning for it.',
     source: STANDARD_MEMORY,
   },
   {
@@ -118,6 +134,8 @@ export const FMI_UPPER: FailureItem[] = [
     otherwise: 1,
     supports: null,
     arguesAgainst: null,
+    doesNotProve:
+      'It says nothing: the standard keeps this kind free. A maker that uses it has its own meaning for it.',
     source: STANDARD_MEMORY,
   },
   {
@@ -131,6 +149,8 @@ export const FMI_UPPER: FailureItem[] = [
     otherwise: 1,
     supports: null,
     arguesAgainst: null,
+    doesNotProve:
+      'It says nothing: the standard keeps this kind free. A maker that uses it has its own meaning for it.',
     source: STANDARD_MEMORY,
   },
   {
@@ -144,6 +164,8 @@ export const FMI_UPPER: FailureItem[] = [
     otherwise: 1,
     supports: null,
     arguesAgainst: null,
+    doesNotProve:
+      'It says nothing: the standard keeps this kind free. A maker that uses it has its own meaning for it.',
     source: STANDARD_MEMORY,
   },
   {
@@ -157,6 +179,8 @@ export const FMI_UPPER: FailureItem[] = [
     otherwise: 1,
     supports: null,
     arguesAgainst: null,
+    doesNotProve:
+      'It says nothing: the standard keeps this kind free. A maker that uses it has its own meaning for it.',
     source: STANDARD_MEMORY,
   },
   {
@@ -170,6 +194,8 @@ export const FMI_UPPER: FailureItem[] = [
     otherwise: 1,
     supports: null,
     arguesAgainst: null,
+    doesNotProve:
+      'It says nothing: the standard keeps this kind free. A maker that uses it has its own meaning for it.',
     source: STANDARD_MEMORY,
   },
   {
@@ -183,6 +209,8 @@ export const FMI_UPPER: FailureItem[] = [
     otherwise: 1,
     supports: null,
     arguesAgainst: null,
+    doesNotProve:
+      'It says nothing: the standard keeps this kind free. A maker that uses it has its own meaning for it.',
     source: STANDARD_MEMORY,
   },
   {
@@ -196,6 +224,8 @@ export const FMI_UPPER: FailureItem[] = [
     otherwise: 1,
     supports: null,
     arguesAgainst: null,
+    doesNotProve:
+      'It says nothing: the standard keeps this kind free. A maker that uses it has its own meaning for it.',
     source: STANDARD_MEMORY,
   },
   {
@@ -209,6 +239,8 @@ export const FMI_UPPER: FailureItem[] = [
     otherwise: 1,
     supports: null,
     arguesAgainst: null,
+    doesNotProve:
+      'It says nothing: the standard keeps this kind free. A maker that uses it has its own meaning for it.',
     source: STANDARD_MEMORY,
   },
   {
@@ -222,6 +254,8 @@ export const FMI_UPPER: FailureItem[] = [
     otherwise: 1,
     supports: null,
     arguesAgainst: null,
+    doesNotProve:
+      'It does not say why: the thing named by the number is there, and nothing is said of its cause.',
     source: STANDARD,
   },
 ]

@@ -20,6 +20,8 @@ export const FMI_LINE: FailureItem[] = [
     supports: 'The signal is believed; the thing it measures may truly be too high.',
     arguesAgainst:
       'Argues against a plain broken wire, which the module would report as volts or current.',
+    doesNotProve:
+      'It does not prove the thing truly too high: a sensor that reads high does the same. Measure the thing itself.',
     source: `${STANDARD}; ${FIGURES}`,
   },
   {
@@ -35,6 +37,8 @@ export const FMI_LINE: FailureItem[] = [
       'The signal is believed; the thing it measures may truly be too low: a weak pump, a blocked filter, a low supply.',
     arguesAgainst:
       'Argues against a plain broken wire, which the module would report as volts or current.',
+    doesNotProve:
+      'It does not prove the thing truly too low: a sensor that reads low does the same. Measure the thing itself.',
     source: `${STANDARD}; ${FIGURES}`,
   },
   {
@@ -49,6 +53,8 @@ export const FMI_LINE: FailureItem[] = [
     supports:
       'Supports a loose pin, a chafed wire, wet plugs or interference; then the part itself.',
     arguesAgainst: 'Argues against a clean, lasting open or short.',
+    doesNotProve:
+      'It does not prove the sensor bad: a loose pin or a chafed wire makes the same jumps, and may be quiet while you look.',
     source: `${STANDARD}; ${FIGURES}`,
   },
   {
@@ -65,6 +71,8 @@ export const FMI_LINE: FailureItem[] = [
       'Supports a shorted winding or a driver that cannot pull the line down, a control or signal wire touching a supply wire, a lost ground or reference on a sensor.',
     arguesAgainst:
       'Argues against a coil or pump that is unplugged or open (that is kind 5) and against a lost supply (the line would read low).',
+    doesNotProve:
+      'It does not prove a short in the part: a wire touching supply, a lost sensor ground, an open wire on a pulled-up input or the driver read the same.',
     source: `${STANDARD}; ${FIGURES}`,
   },
   {
@@ -79,6 +87,8 @@ export const FMI_LINE: FailureItem[] = [
     supports:
       'Supports a lost or low supply, a wire rubbed through to the frame, a driver stuck on, a signal shorted to ground.',
     arguesAgainst: 'Argues against a wire touching a supply wire.',
+    doesNotProve:
+      'It does not prove a short in the part: a wire rubbed through to metal, a lost supply or the driver read the same.',
     source: `${STANDARD}; ${FIGURES}`,
   },
   {
@@ -94,6 +104,8 @@ export const FMI_LINE: FailureItem[] = [
       'Supports an unplugged coil, injector or pump, a broken wire or pin, an open winding, a lost supply.',
     arguesAgainst:
       'Argues against a shorted winding or a wire to ground: those draw more current, not less.',
+    doesNotProve:
+      'It does not prove the part open: a pin pushed back, a broken wire or a plug left off read the same.',
     source: `${STANDARD}; ${FIGURES}`,
   },
   {
@@ -109,6 +121,8 @@ export const FMI_LINE: FailureItem[] = [
       'Supports a shorted winding, or a control wire rubbed through to ground or supply, or a driver that has failed shorted.',
     arguesAgainst:
       'Argues against anything unplugged, broken or without supply: no current flows there.',
+    doesNotProve:
+      'It does not prove the part shorted: a wire rubbed through to metal behind the driver draws the same current.',
     source: `${STANDARD}; ${FIGURES}`,
   },
   {
@@ -123,6 +137,8 @@ export const FMI_LINE: FailureItem[] = [
     supports:
       'Supports something that was told to move and did not: stuck, frozen, dirty, out of adjustment, blocked.',
     arguesAgainst: 'Argues against the wiring, which the module would report as volts or current.',
+    doesNotProve:
+      'It does not prove the actuator bad: what it moves may be stuck, bent, iced or at the end of its travel.',
     source: `${STANDARD}; ${FIGURES}`,
   },
   {
@@ -137,6 +153,8 @@ export const FMI_LINE: FailureItem[] = [
     supports:
       'Supports a bad air gap, a damaged trigger wheel, a loose sensor, interference on its cable.',
     arguesAgainst: 'Argues against a lasting open or short.',
+    doesNotProve:
+      'It does not prove the sensor bad: the gap, the toothed wheel, a poor ground or noise of the ignition spoil the same signal.',
     source: `${STANDARD}; ${FIGURES}`,
   },
   {
@@ -150,6 +168,8 @@ export const FMI_LINE: FailureItem[] = [
     otherwise: 1,
     supports: null,
     arguesAgainst: null,
+    doesNotProve:
+      'It does not prove a module bad: one without power or ground, or with a loose plug, goes silent in the same way.',
     source: STANDARD,
   },
   {
@@ -164,6 +184,8 @@ export const FMI_LINE: FailureItem[] = [
     supports:
       'Supports a loose contact or a sensor that jumps faster than the thing it measures can.',
     arguesAgainst: 'Argues against a lasting open or short.',
+    doesNotProve:
+      'It does not prove the sensor bad: a loose pin makes leaps too, and the thing itself may truly have changed that fast.',
     source: `${STANDARD}; ${FIGURES}`,
   },
   {
@@ -177,6 +199,8 @@ export const FMI_LINE: FailureItem[] = [
     otherwise: 1,
     supports: null,
     arguesAgainst: null,
+    doesNotProve:
+      'It does not say what is wrong: the module saw a fault and could not name its kind.',
     source: STANDARD,
   },
   {
@@ -192,6 +216,8 @@ export const FMI_LINE: FailureItem[] = [
       'Supports the module or the part judging itself bad; power and ground to it come first.',
     arguesAgainst:
       'Argues against nothing with certainty: a bad supply makes good modules report themselves.',
+    doesNotProve:
+      'It does not prove the device bad: with poor power or ground it reports itself bad. Measure both at its plug first.',
     source: `${STANDARD}; ${FIGURES}`,
   },
   {
@@ -205,6 +231,8 @@ export const FMI_LINE: FailureItem[] = [
     otherwise: 1,
     supports: null,
     arguesAgainst: null,
+    doesNotProve:
+      'It does not prove a part bad: one fitted lately may only want to be learned or set.',
     source: STANDARD,
   },
   {
@@ -218,6 +246,8 @@ export const FMI_LINE: FailureItem[] = [
     otherwise: 1,
     supports: null,
     arguesAgainst: null,
+    doesNotProve:
+      'It does not say what is wrong without the instructions that belong to it: they stand in the manual of the machine.',
     source: STANDARD,
   },
 ]

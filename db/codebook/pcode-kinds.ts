@@ -14,6 +14,8 @@ export const PCODE_KINDS: FailureItem[] = [
     otherwise: 0.5,
     supports: 'Supports every member of the circuit: part, wiring, supply and driver.',
     arguesAgainst: 'Argues against nothing inside the circuit; it does not say which member.',
+    doesNotProve:
+      'It does not prove the part bad: plug, wire, supply and driver of the circuit set the same code.',
     source: `${PCODE_KIND}; ${FIGURES}`,
   },
   {
@@ -28,6 +30,8 @@ export const PCODE_KINDS: FailureItem[] = [
     supports:
       'Supports a drifting sensor, a high-resistance pin, or the thing measured truly being off.',
     arguesAgainst: 'Argues against a clean open or short.',
+    doesNotProve:
+      'It does not prove the sensor bad: what it measures may truly be off, or another sensor it is compared with.',
     source: `${PCODE_KIND}; ${FIGURES}`,
   },
   {
@@ -41,6 +45,8 @@ export const PCODE_KINDS: FailureItem[] = [
     otherwise: 0.5,
     supports: 'Supports a wire rubbed through to ground, a lost or low supply, a driver stuck on.',
     arguesAgainst: 'Argues against a wire touching a supply wire.',
+    doesNotProve:
+      'It does not prove a short in the part: a wire rubbed through to metal or a lost supply pulls the line down too.',
     source: `${PCODE_KIND}; ${FIGURES}`,
   },
   {
@@ -56,6 +62,8 @@ export const PCODE_KINDS: FailureItem[] = [
     supports:
       'Supports a shorted winding or a driver that cannot pull down, a wire touching a supply wire, a lost sensor ground, an open signal wire on a pulled-up input.',
     arguesAgainst: 'Argues against a lost supply.',
+    doesNotProve:
+      'It does not prove the part bad: an open wire on a pulled-up input, a lost ground or a wire touching supply read high too.',
     source: `${PCODE_KIND}; ${FIGURES}`,
   },
   {
@@ -69,6 +77,8 @@ export const PCODE_KINDS: FailureItem[] = [
     otherwise: 0.6,
     supports: 'Supports a loose pin, a chafed wire, wet plugs; then the part.',
     arguesAgainst: 'Argues against a clean, lasting open or short.',
+    doesNotProve:
+      'It does not prove the part bad: a loose pin or a chafed wire comes first, and may be quiet while you look.',
     source: `${PCODE_KIND}; ${FIGURES}`,
   },
   {
@@ -82,6 +92,8 @@ export const PCODE_KINDS: FailureItem[] = [
     otherwise: 0.5,
     supports: 'Supports an unplugged or broken cable, a dead sensor, a gap far too wide.',
     arguesAgainst: 'Argues against a small drift.',
+    doesNotProve:
+      'It does not prove the sensor dead: plug, cable and gap come first, and what it watches may truly stand still.',
     source: `${PCODE_KIND}; ${FIGURES}`,
   },
   {
@@ -95,6 +107,8 @@ export const PCODE_KINDS: FailureItem[] = [
     otherwise: 1,
     supports: null,
     arguesAgainst: null,
+    doesNotProve:
+      'It tells what was seen, not why: several faults lead there, and none of them is proved by it.',
     source: PCODE_KIND,
   },
   {
@@ -108,6 +122,54 @@ export const PCODE_KINDS: FailureItem[] = [
     otherwise: 1,
     supports: null,
     arguesAgainst: null,
+    doesNotProve:
+      'It does not prove a part bad: a learning step left out after work makes the same code.',
     source: PCODE_KIND,
+  },
+  {
+    kind: 'failure',
+    id: 'tooLow',
+    fmi: null,
+    name: 'measured truly too low',
+    failure: 'tooLow',
+    firstThought: 'Believe the signal first: look at the thing it measures.',
+    byRole: { part: 4, wiring: 3, supply: 8, driver: 2, sensor: 6, mechanism: 24 },
+    otherwise: 0.8,
+    supports:
+      'The signal is believed: a weak pump, a blocked filter, a leak or a low supply may be behind it.',
+    arguesAgainst: 'Argues against a plain open or short, which has codes of its own.',
+    doesNotProve:
+      'It does not prove the thing truly too low: a sensor that reads low does the same. Measure the thing itself.',
+    source: `${PCODE_KIND}; ${FIGURES}`,
+  },
+  {
+    kind: 'failure',
+    id: 'tooHigh',
+    fmi: null,
+    name: 'measured truly too high',
+    failure: 'tooHigh',
+    firstThought: 'Believe the signal first: look at the thing it measures.',
+    byRole: { part: 4, wiring: 3, supply: 1, driver: 3, sensor: 6, mechanism: 12 },
+    otherwise: 0.8,
+    supports: 'The signal is believed: what holds the thing down may be stuck or blocked.',
+    arguesAgainst: 'Argues against a plain open or short, which has codes of its own.',
+    doesNotProve:
+      'It does not prove the thing truly too high: a sensor that reads high does the same. Measure the thing itself.',
+    source: `${PCODE_KIND}; ${FIGURES}`,
+  },
+  {
+    kind: 'failure',
+    id: 'stuck',
+    fmi: null,
+    name: 'does not move as told',
+    failure: 'stuck',
+    firstThought: 'Dirt, ice or a bent part before the motor: look and move it by hand, key off.',
+    byRole: { part: 18, wiring: 6, supply: 6, driver: 5, sensor: 8, mechanism: 30 },
+    otherwise: 0.5,
+    supports: 'Supports something that binds, ice or dirt, a worn gear; then the actuator itself.',
+    arguesAgainst: 'Argues against a plain broken wire, which has codes of its own.',
+    doesNotProve:
+      'It does not prove the actuator bad: what it moves may be stuck, bent, iced or at the end of its travel.',
+    source: `${PCODE_KIND}; ${FIGURES}`,
   },
 ]

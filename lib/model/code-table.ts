@@ -9,12 +9,26 @@ export const CIRCUIT_ROLES = ['part', 'wiring', 'supply', 'driver', 'sensor', 'm
 export const circuitRole = z.enum(CIRCUIT_ROLES)
 export type CircuitRole = z.infer<typeof circuitRole>
 
+/**
+ * What a code tells of faults without a look at any circuit: a condition, as a misfire or too little pressure. Of 100
+ * machines that log codes and have this fault and no other, how many set it; `otherwise` with none of them. Codes
+ * that tell the same story share `id`, and together count once. `fmis`: the kinds it holds for; null: whatever kind.
+ */
+export const codeTells = z.strictObject({
+  id: slug,
+  fmis: z.nullable(z.array(z.int().check(z.minimum(0), z.maximum(31))).check(z.minLength(1))),
+  of100: z.record(slug, z.number().check(z.positive(), z.maximum(99))),
+  otherwise: z.number().check(z.positive(), z.maximum(99)),
+})
+export type CodeTells = z.infer<typeof codeTells>
+
 export const spnItem = z.strictObject({
   kind: z.literal('spn'),
   id: z.string(),
   spn: z.int(),
   name: sentence,
   circuit: z.nullable(slug),
+  tells: z.nullable(codeTells),
   group: z.string(),
   confidence: z.string(),
   makersDiffer: z.boolean(),
@@ -28,6 +42,7 @@ export const pcodeItem = z.strictObject({
   name: sentence,
   circuit: z.nullable(slug),
   failure: z.string(),
+  tells: z.nullable(codeTells),
   group: z.string(),
   makersDiffer: z.boolean(),
   source,
@@ -46,6 +61,8 @@ export const failureItem = z.strictObject({
   otherwise: z.number(),
   supports: z.nullable(sentence),
   arguesAgainst: z.nullable(sentence),
+  /** What a code of this kind leaves open, whatever circuit it names. */
+  doesNotProve: sentence,
   source,
 })
 

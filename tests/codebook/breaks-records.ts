@@ -52,6 +52,42 @@ export const RECORD_BREAKS: Break[] = [
     },
   ],
   [
+    'CB3 a code that tells of a fault that is not there',
+    'unresolved',
+    /pcodeP0301/,
+    (b) => {
+      const { tells } = b.item('pcode', 'pcodeP0301')
+      if (tells) tells.of100.sparkPlgBad = 30
+    },
+  ],
+  [
+    'CB22 a fault that sets a code less often than none does',
+    'order',
+    /pcodeP0301/,
+    (b) => {
+      const { tells } = b.item('pcode', 'pcodeP0301')
+      if (tells) tells.of100.sparkPlugBad = 1
+    },
+  ],
+  [
+    'CB22 a code whose figures tell nothing',
+    'tellsNothing',
+    /spn1323/,
+    (b) => {
+      const { tells } = b.item('spn', 'spn1323')
+      if (tells) tells.of100 = { sparkPlugBad: tells.otherwise }
+    },
+  ],
+  [
+    'CB22 one story with two sets of figures',
+    'order',
+    /^spn1323$/,
+    (b) => {
+      const { tells } = b.item('spn', 'spn1323')
+      if (tells) tells.otherwise = 1
+    },
+  ],
+  [
     'CB3 a set-up that is not there',
     'unresolved',
     /plugRead/,

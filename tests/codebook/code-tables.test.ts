@@ -1,4 +1,6 @@
 import { expect, test } from 'vitest'
+import { BOOK_ITEMS } from '@/db/codebook/book'
+import { STORIES } from '@/db/codebook/code-tells'
 import { FMI_LINE } from '@/db/codebook/fmi'
 import { FMI_UPPER } from '@/db/codebook/fmi-upper'
 import { PCODE_KINDS } from '@/db/codebook/pcode-kinds'
@@ -11,7 +13,10 @@ const pcode = (code: string) => PCODES.find((p) => p.code === code)
 const fmi = (n: number) => FAILURES.find((f) => f.fmi === n)
 
 test('[CB17] the tables hold all rows of the checked starting set', () => {
-  expect([SPNS.length, PCODES.length]).toEqual([174, 157])
+  expect(SPNS).toHaveLength(174)
+  expect(PCODES.filter((p) => !/from memory/.test(p.source)).length).toBeGreaterThan(100)
+  expect(PCODES.length).toBeGreaterThanOrEqual(500)
+  expect(new Set(PCODES.map((p) => p.code)).size).toBe(PCODES.length)
   expect(FAILURES.filter((f) => f.fmi !== null).map((f) => f.fmi)).toEqual(
     Array.from({ length: 32 }, (_, n) => n),
   )
@@ -20,7 +25,7 @@ test('[CB17] the tables hold all rows of the checked starting set', () => {
 // Number and subject: SAE J1939 Digital Annex, also seen in an open J1939 list.
 test.each([
   [51, /throttle position/, 'throttleSensor'],
-  [84, /vehicle speed/, null],
+  [84, /vehicle speed/, 'vehicleSpeed'],
   [94, /fuel supply.*pressure/, 'fuelPressure'],
   [102, /intake manifold.*pressure/, 'mapSensor'],
   [110, /coolant temperature/, 'coolantTempSensor'],
@@ -30,7 +35,7 @@ test.each([
   [620, /5 V sensor supply/, 'sensorSupply'],
   [636, /position sensor \(crank or cam\)/, 'crankSensor'],
   [651, /injector, cylinder 1/, 'injector1'],
-  [677, /starter motor relay/, null],
+  [677, /starter motor relay/, 'starterCircuit'],
   [1268, /ignition coil 1/, 'ignitionCoil1'],
   [1269, /ignition coil 2/, 'ignitionCoil2'],
   [1323, /misfire, cylinder 1/, null],
@@ -124,4 +129,67 @@ test('[CB4] every row names the standard it comes from, or says it is from memor
     expect(row.source, row.id).toMatch(/^SAE J(1939|2012)/)
   expect(pcode('P0562')?.source).toMatch(/from memory/)
   expect(pcode('P0351')?.source).not.toMatch(/from memory/)
+})
+
+// SAE J2012 / ISO 15031-6, from memory.
+test.each([
+  ['P0016', /crank and cam/, 'range', 'camSensor'],
+  ['P0087', /pressure too low/, 'tooLow', 'fuelPressure'],
+  ['P0113', /intake air temperature signal high/, 'high', 'airTempSensor'],
+  ['P0135', /heater circuit/, 'circuit', 'oxygenHeater'],
+  ['P0171', /too lean, bank 1/, 'condition', null],
+  ['P0217', /over temperature/, 'condition', null],
+  ['P0340', /cam position sensor circuit/, 'circuit', 'camSensor'],
+  ['P0480', /cooling fan 1 control/, 'circuit', 'fanControl'],
+  ['P0500', /vehicle speed sensor/, 'circuit', 'vehicleSpeed'],
+  ['P0616', /starter relay circuit low/, 'low', 'starterCircuit'],
+  ['P0622', /generator field/, 'circuit', 'chargingSystem'],
+  ['P2106', /power held back/, 'condition', null],
+  ['P2111', /stuck open/, 'stuck', 'throttleActuator'],
+  ['P2128', /accelerator position E signal high/, 'high', 'gripSensor'],
+  ['P2138', /accelerator position D\/E disagree/, 'range', 'gripSensor'],
+  ['P2503', /charging system voltage low/, 'tooLow', 'chargingSystem'],
+  ['U0073', /gone off the network/, 'noSignal', 'network'],
+  ['U0100', /engine module A not heard/, 'noSignal', 'network'],
+  ['U0131', /power steering module/, 'noSignal', 'network'],
+] as const)('[CB17] %s is what the standard says (memory)', (code, name, failure, circuit) => {
+  expect(pcode(code)?.name).toMatch(name)
+  expect([pcode(code)?.failure, pcode(code)?.circuit]).toEqual([failure, circuit])
+})
+
+test('[CB17] only standard codes stand in the table; letters that makers put to parts of their own say so', () => {
+  for (const { code } of PCODES) expect(code).toMatch(/^(P0|P2|U0)[0-9A-F]{3}$/)
+  for (const code of ['P2122', 'P2138', 'P0500', 'P0705', 'P0385', 'P0352'])
+    expect(pcode(code)?.makersDiffer, code).toBe(true)
+  for (const code of ['P0117', 'P0335', 'P0562', 'U0100'])
+    expect(pcode(code)?.makersDiffer, code).toBe(false)
+})
+
+test('[CB22] each story has its codes, each code one story, and every fault in it is set more often than none', () => {
+  const codes = STORIES.flatMap(({ pcodes, spns }) => [...pcodes, ...spns.map(String)])
+  expect(new Set(codes).size).toBe(codes.length)
+  for (const { id, pcodes, spns, of100, otherwise } of STORIES) {
+    for (const code of pcodes) expect(pcode(code), code).toBeDefined()
+    for (const number of spns) expect(spn(number), `${number}`).toBeDefined()
+    expect(Object.keys(of100).length, id).toBeGreaterThan(1)
+    for (const [fault, figure] of Object.entries(of100))
+      expect(figure, `${id}: ${fault}`).toBeGreaterThanOrEqual(1.5 * otherwise)
+  }
+})
+
+test('[CB22] the book keeps of a code what its faults and circuits bear out, and nothing else', () => {
+  const faults = new Set(BOOK_ITEMS.flatMap((i) => (i.kind === 'fault' ? [i.id] : [])))
+  const misfire = BOOK_ITEMS.find((i) => i.id === 'pcodeP0301')
+  if (misfire?.kind !== 'pcode') throw new Error('no P0301')
+  expect(Object.keys(misfire.tells?.of100 ?? {})).toContain('sparkPlugBad')
+  for (const item of BOOK_ITEMS)
+    if (item.kind === 'spn' || item.kind === 'pcode')
+      for (const fault of Object.keys(item.tells?.of100 ?? {})) expect(faults).toContain(fault)
+})
+
+test('[R11] what a blink pattern means is no part of the book: it comes from a table of the shop', () => {
+  for (const item of BOOK_ITEMS)
+    if (item.kind === 'spn' || item.kind === 'pcode')
+      expect(`${item.id} ${item.name}`).not.toMatch(/blink|flash code/i)
+  expect(new Set(BOOK_ITEMS.map((i) => i.kind))).not.toContain('flash')
 })

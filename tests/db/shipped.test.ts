@@ -54,6 +54,7 @@ describe('[D9] the code book', () => {
       spn: n,
       name: `Number ${n}`,
       circuit: null,
+      tells: null,
       group: 'x',
       confidence: 'x',
       makersDiffer: false,
