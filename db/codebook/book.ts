@@ -5,6 +5,7 @@ import type { FaultData } from './fault-data'
 import { FEATURE_ITEMS } from './features'
 import { FMI_LINE } from './fmi'
 import { FMI_UPPER } from './fmi-upper'
+import { knownCodes } from './known-codes'
 import { PCODE_KINDS } from './pcode-kinds'
 import { PCODES } from './pcodes'
 import { GUESS } from './sources'
@@ -52,7 +53,7 @@ export function itemsOf({
     ...FMI_LINE,
     ...FMI_UPPER,
     ...PCODE_KINDS,
-    ...SPNS,
-    ...PCODES,
+    ...knownCodes(SPNS, { words, faults }),
+    ...knownCodes(PCODES, { words, faults }),
   ]
 }
