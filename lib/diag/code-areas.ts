@@ -2,10 +2,12 @@
  * What a code's number says by its own form, where the code book has no word for it: SAE J2012 / ISO 15031-6 for
  * letters and digits, SAE J1939 for the maker's range of SPNs. Digits of P3, C, B and U are from memory.
  */
-import type { Pcode } from './codes'
+import type { CodeSeen } from '@/lib/model/code-seen'
+import { definedBy, type Pcode, parsePcode } from './codes'
 
-/** SPNs that each maker gives out as it likes: 520192 to 524287 (SAE J1939). */
-export const isMakerSpn = (spn: number): boolean => spn >= 520_192 && spn <= 524_287
+/** SPNs that each maker gives out as it likes: 516096 to 524287 (SAE J1939; the part below 520192 from memory). */
+export const isMakerSpn = (spn: number): boolean => spn >= FIRST_MAKER_SPN && spn <= 524_287
+const FIRST_MAKER_SPN = 516_096
 
 /** The part of the machine a letter stands for. */
 export const LETTER_SYSTEMS = { P: 'powertrain', C: 'chassis', B: 'body', U: 'network' } as const
@@ -58,12 +60,44 @@ export function suffixKind({ letter, first, digits }: Pcode): SuffixKind | null 
   return number === 503 ? 'intermittent' : (KINDS[number % 5] ?? null)
 }
 
+/** Groups of five; those of knock 2, cam and crank B, purge flow, outside air and second air sensor from memory. */
 const GROUPS = [
+  [70, 74],
+  [95, 99],
   [105, 124],
+  [180, 184],
   [220, 229],
-  [325, 329],
-  [335, 344],
-  [460, 464],
+  [325, 349],
+  [365, 369],
+  [385, 394],
+  [460, 469],
   [500, 503],
 ] as const
 const KINDS: readonly SuffixKind[] = ['circuit', 'range', 'low', 'high', 'intermittent']
+
+/** What the form of a number says where the book has no word for it, in a sentence; null where it says nothing. */
+export function formWords(seen: CodeSeen): string | null {
+  if (seen.format === 'spn')
+    return isMakerSpn(seen.spn)
+      ? `Numbers from ${FIRST_MAKER_SPN} up are each maker's own: only the maker's manual says what ${seen.spn} is. The failure kind is the standard's.`
+      : null
+  if (seen.format !== 'pcode') return null
+  const code = parsePcode(seen.code)
+  if (!code.ok) return null
+  const system = LETTER_SYSTEMS[code.value.letter]
+  if (definedBy(code.value) === 'maker')
+    return `A code of this form is each maker's own: only the maker's manual says what ${seen.code} is. Its letter stands for ${system}.`
+  const area = areaOf(code.value)
+  const where = area === null ? '' : ` Its digits put it to ${AREA_WORDS[area]}.`
+  return `A number of the standard that the code book does not hold. Its letter stands for ${system}.${where}`
+}
+
+const AREA_WORDS: Record<PcodeArea, string> = {
+  fuelAndAir: 'fuel and air',
+  ignition: 'ignition and misfire',
+  auxiliaryEmission: 'exhaust and fuel vapour',
+  speedIdleInputs: 'speed, idle and inputs',
+  computerOutputs: 'the module and what it drives',
+  transmission: 'the transmission',
+  hybrid: 'an electric drive',
+}

@@ -35,7 +35,7 @@ const oneOf =
   (word: string | null): boolean =>
     word !== null && words.includes(word)
 
-const tooLow = oneOf('voltLow', 'lowSevere', 'lowModerate', 'lowMild', 'low', 'driftLow')
+const tooLow = oneOf('voltLow', 'lowSevere', 'lowModerate', 'lowMild', 'low', 'tooLow', 'driftLow')
 const unsteady = oneOf(
   'erratic',
   'intermittent',
@@ -47,10 +47,32 @@ const unsteady = oneOf(
 const fromTheNet = oneOf('networkError', 'updateRate')
 const offScale = oneOf('voltLow', 'voltHigh', 'low', 'high', 'range')
 const lifted = oneOf('voltHigh', 'high', 'erratic', 'intermittent', 'range')
-const onTheRail = oneOf('throttleSensor', 'mapSensor', 'fuelPressure', 'coolantTempSensor')
+const onTheRail = oneOf(
+  'throttleSensor',
+  'mapSensor',
+  'fuelPressure',
+  'coolantTempSensor',
+  'gripSensor',
+  'airTempSensor',
+  'oilPressure',
+  'oilTemp',
+  'ambientTemp',
+)
 const railGroups = oneOf('air', 'oil', 'cooling')
+/** Coils, injectors, motors and relays: they live on the battery's volts. */
+const runOnSupply = oneOf(
+  'fuelPump',
+  'idleAir',
+  'mainRelay',
+  'throttleActuator',
+  'oxygenHeater',
+  'starterCircuit',
+  'fanControl',
+  'fourWheelActuator',
+  'steeringAssist',
+)
 const fedBySupply = (circuit: string | null): boolean =>
-  circuit !== null && /^(ignitionCoil\d|injector\d|fuelPump|idleAir|mainRelay)$/.test(circuit)
+  runOnSupply(circuit) || (circuit !== null && /^(ignitionCoil|injector)\d$/.test(circuit))
 
 /** The causes by name. */
 export const CAUSES: Readonly<Record<CommonCause, CauseRow>> = {
@@ -63,6 +85,7 @@ export const CAUSES: Readonly<Record<CommonCause, CauseRow>> = {
     source: PRACTICE_SOURCE,
     leads: ({ circuit, kind }) =>
       (circuit === 'systemVoltage' && (tooLow(kind) || unsteady(kind))) ||
+      (circuit === 'chargingSystem' && tooLow(kind)) ||
       (circuit === 'mainRelay' && (tooLow(kind) || unsteady(kind) || kind === 'currentLow')),
     canSet: ({ circuit, group, kind, isNetworkCode }) =>
       (oneOf('sensorSupply', 'controlModule')(circuit) && (tooLow(kind) || unsteady(kind))) ||
@@ -90,7 +113,8 @@ export const CAUSES: Readonly<Record<CommonCause, CauseRow>> = {
     doesNotProve:
       'does not convict a module: one that has no power or a loose plug is missed by the others in the same way.',
     source: PRACTICE_SOURCE,
-    leads: ({ group, isNetworkCode }) => group === 'network' || isNetworkCode,
+    leads: ({ circuit, group, isNetworkCode }) =>
+      circuit === 'network' || group === 'network' || isNetworkCode,
     canSet: ({ kind }) => fromTheNet(kind),
   },
   ground: {

@@ -3,10 +3,9 @@
  * and no evidence (rule R5). The same check, code or symptom again is not new evidence: the latest replaces.
  * `couldNot`, notes, photos, fixes and ways out move nothing. Numbers marked "guess" have no source.
  */
-import type { CodeContext, CodeSeen } from '@/lib/model/code-seen'
 import type { LogBody, LogEntry } from '@/lib/model/log-entry'
 import type { Case } from './case'
-import { codeMeaning, roleOf100 } from './code-words'
+import { codeEvidence, codeRound, isOldCode, tellersOf } from './evidence-code'
 import { fixesBefore } from './evidence-log'
 import { isShedByTwin, readingEvidence } from './evidence-reading'
 import { runEvidence } from './evidence-run'
@@ -24,13 +23,7 @@ import {
 import { saysNothing, tableFactor } from './factor'
 import type { Candidate } from './priors'
 
-type CodeBody = { seen: CodeSeen; context: CodeContext }
 type CheckBody = Extract<LogBody, { kind: 'check' }>
-
-/** How much a code tells a fault of its circuit from others when the kind is silent, of 100 (guess). */
-const CIRCUIT_ONLY = { member: 20, otherwise: 10 }
-/** How likely a code that is not shown as active is left from another day, before it counts (guess). */
-const OLD_CODE = { active: 0, unknown: 0.25, stored: 0.5 }
 
 /** Pieces that may speak in one job: more than anybody takes down, and a bound on what is reckoned. */
 export const MOST_PIECES = 60
@@ -46,6 +39,10 @@ export function evidenceOf(c: Case, suspects: readonly Candidate[]): Evidence[] 
     if (latest.has(key) && isOldCode(sight, at)) leftOver.add(at)
     else latest.set(key, at)
   })
+  const tellers = tellersOf(
+    sight,
+    keys.flatMap((key, at) => (key !== null && latest.get(key) === at ? [at] : [])),
+  )
   const speaking = new Set<string>()
   const list: Evidence[] = []
   c.entries.forEach((entry, at) => {
@@ -54,7 +51,7 @@ export function evidenceOf(c: Case, suspects: readonly Candidate[]): Evidence[] 
     const piece = leftOver.has(at)
       ? nothing(entry, 'code', 'Stored, and seen before the fix')
       : isLast
-        ? pieceOf({ sight, latest }, entry, at)
+        ? pieceOf({ sight, latest, tellers }, entry, at)
         : replacedBy(entry)
     if (piece !== null) list.push(counted(quiet(piece), speaking))
   })
@@ -74,13 +71,17 @@ function counted(piece: Evidence, speaking: Set<string>): Evidence {
 type Latest = Map<string, number>
 type Seen = { sight: Sight; latest: Latest }
 
-function pieceOf({ sight, latest }: Seen, entry: LogEntry, at: number): Evidence | null {
+function pieceOf(
+  { sight, latest, tellers }: Seen & { tellers: ReadonlySet<number> },
+  entry: LogEntry,
+  at: number,
+): Evidence | null {
   const { body } = entry
   switch (body.kind) {
     case 'symptom':
       return symptomEvidence(sight, entry, body)
     case 'code':
-      return codeEvidence(sight, entry, { body, at })
+      return codeEvidence(sight, entry, { body, at, isTeller: tellers.has(at) })
     case 'check':
       return checkEvidence({ sight, latest }, entry, { body, at })
     case 'couldNot':
@@ -101,36 +102,6 @@ function pieceOf({ sight, latest }: Seen, entry: LogEntry, at: number): Evidence
       return null
   }
 }
-
-/** P(code | fault) by its role in the circuit; P(code | none of them) = `otherwise`; noisy-OR with that leak. */
-function codeEvidence(
-  sight: Sight,
-  entry: LogEntry,
-  { body, at }: { body: CodeBody; at: number },
-): Evidence {
-  const { c, place } = sight
-  const { title, circuit, failure, subject } = codeMeaning(c.index, body.seen)
-  const label = subject === null ? title : `${title}: ${subject}`
-  if (circuit === null) return nothing(entry, 'code', label)
-  const rows = new Map<number, readonly number[]>()
-  for (const fault of c.index.faults.values()) {
-    const seatAt = place.get(fault.id)
-    const seat = fault.circuits.find((s) => s.circuit === circuit)
-    if (seatAt === undefined || seat === undefined) continue
-    const of100 = (failure === null ? null : roleOf100(failure, seat.role)) ?? CIRCUIT_ONLY.member
-    const set = neverSure(of100)
-    rows.set(seatAt, [1 - set, set])
-  }
-  const known = failure !== null && failure.byRole !== null
-  const leak = neverSure(known ? failure.otherwise : CIRCUIT_ONLY.otherwise)
-  const old = OLD_CODE[body.context.status]
-  const table = { rows, otherwise: [1 - leak, leak] }
-  const now = body.context.status === 'active' ? tableAt(sight, table, at) : table
-  return { ...nothing(entry, 'code', label), factor: tableFactor(now, [old, 1]) }
-}
-
-/** Of 100 as a chance, never under 1 of 10,000 nor so near to 1 (guess): one code may rule nothing out for good. */
-const neverSure = (of100: number): number => Math.min(99.99, Math.max(0.01, of100)) / 100
 
 function checkEvidence(
   { sight, latest }: Seen,
@@ -222,29 +193,6 @@ const readingKey = (
   { subject, checkId }: { subject: string; checkId: string },
   at: number,
 ): string => `reading ${subject} ${fixesTouching(sight, checkId, at)} ${checkId}`
-
-const codeRound = (sight: Sight, body: CodeBody, at: number): number =>
-  body.context.status === 'active' ? fixesInCircuit(sight, body.seen, at) : 0
-
-/** Whether an entry is a code that is not active, after a fix in its circuit. */
-function isOldCode(sight: Sight, at: number): boolean {
-  const body = sight.c.entries[at]?.body
-  return (
-    body?.kind === 'code' &&
-    body.context.status !== 'active' &&
-    fixesInCircuit(sight, body.seen, at) > 0
-  )
-}
-
-/** How many fixes in a code's circuit came before a place in the log. */
-function fixesInCircuit({ c, log }: Sight, seen: CodeSeen, at: number): number {
-  if (log.fixes.size === 0) return 0
-  const { circuit } = codeMeaning(c.index, seen)
-  let count = 0
-  for (const { id, circuits } of c.index.faults.values())
-    if (circuits.some((s) => s.circuit === circuit)) count += fixesBefore(log, id, at)
-  return count
-}
 
 function replacedBy(entry: LogEntry): Evidence | null {
   const { kind } = entry.body

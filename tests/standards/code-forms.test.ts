@@ -92,11 +92,12 @@ describe('SAE J2012 / ISO 15031-6, letters and digits', () => {
     expect(name('P0562')).toMatch(/voltage low/)
   })
   it.each([
-    [520_191, false],
+    [516_095, false],
+    [516_096, true],
     [520_192, true],
     [524_287, true],
     [524_288, false],
-  ])('[STD] SPN %i in the maker range: %s (SAE J1939)', (spn, maker) => {
+  ])('[STD] SPN %i in the maker range: %s (SAE J1939; below 520192 from memory)', (spn, maker) => {
     expect(isMakerSpn(spn)).toBe(maker)
   })
 })
