@@ -8,7 +8,8 @@ const STATUS = { active: 'active', stored: 'stored', unknown: 'active or stored 
 export function codeMeans(words: CodeWords): string {
   if (words.unknown) return 'Not in the code book: kept as shown.'
   const failure = words.failure === null ? '' : `: ${words.failure.name}`
-  return `${sentence(words.circuitName)}${failure}.`
+  const differs = words.makersDiffer ? ' This maker may differ.' : ''
+  return `${sentence(words.circuitName)}${failure}.${differs}`
 }
 
 /** How a code stood when it was taken down: "Module 0, active, counted 4." */

@@ -29,20 +29,24 @@ export function CodeMeaning({ seen, context, features }: Props) {
         {words.failure === null ? null : <p className="text-row">{sentence(words.failure.name)}</p>}
       </Plate>
       <p className="text-row font-bold">{words.doesNotProve}</p>
+      {words.makersDiffer ? (
+        <p className="font-bold">This maker may differ: the maker’s manual decides.</p>
+      ) : null}
+      {words.formWords === null ? null : <p>{words.formWords}</p>}
       {words.failure === null ? null : (
         <>
           <RuleEdge level={3}>{kindTitle(seen)}</RuleEdge>
           {words.firstThought === null ? null : <p>{words.firstThought}</p>}
           {words.supportsWords === null ? null : <p>{words.supportsWords}</p>}
           {words.arguesAgainstWords === null ? null : <p>{words.arguesAgainstWords}</p>}
+          {words.kindDoesNotProve === null ? null : (
+            <p className="font-bold">{words.kindDoesNotProve}</p>
+          )}
         </>
       )}
       <Faults title="It supports" sign="for" faults={words.kindSupports} />
       <Faults title="It argues against" sign="against" faults={words.kindArguesAgainst} />
-      <p className="text-second text-ink2">
-        {words.makersDiffer ? 'Makers differ here: the maker’s manual decides. ' : ''}
-        From: {words.source}
-      </p>
+      <p className="text-second text-ink2">From: {words.source}</p>
     </section>
   )
 }
