@@ -1,6 +1,6 @@
 'use client'
 import { useState } from 'react'
-import { DARK_FACTOR } from '@/lib/diag/plan-means'
+import { DARK_FACTOR, GLOVE_FACTOR, GLOVES_BELOW_C } from '@/lib/diag/plan-means'
 import type { Id } from '@/lib/model/id'
 import type { Shop } from '@/lib/model/shop'
 import { moneyWords } from '@/lib/shop/currency'
@@ -40,7 +40,7 @@ export function AssumesPanel({ jobId, view, shop, bookVersion }: Props) {
         legend="Light"
         value={choice.dark}
         onChange={(next) => choose({ ...choice, dark: next })}
-        hint={`In the dark every minute counts ${DARK_FACTOR} (common practice, no source).`}
+        hint={`In the dark every minute counts ${DARK_FACTOR}, below −${-GLOVES_BELOW_C} °C ${GLOVE_FACTOR} for gloves (common practice, no source).`}
         options={[
           { value: 'bySun', label: `By the sun: ${view.darkBySun ? 'dark' : 'light'} now` },
           { value: 'no', label: 'Light enough' },

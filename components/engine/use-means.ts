@@ -44,6 +44,7 @@ export function useMeans(jobId: Id): MeansView {
   const sun = useMemo(() => sunAt(job?.place ?? null, now), [job?.place, now])
   const minutesLeft = choice.leaveBy === null ? null : minutesTo(choice.leaveBy, now)
   const dark = choice.dark === 'bySun' ? sun.dark : choice.dark === 'yes'
+  const airTempC = job?.airTempC ?? null
   const means = useMemo<Means | null>(() => {
     if (shop === undefined || bag === undefined || session.kind !== 'ready') return null
     const { perMinuteMinor, towMinor, recoveryMinor } = shop
@@ -54,8 +55,9 @@ export function useMeans(jobId: Id): MeansView {
       shop: { perMinuteMinor, towMinor, recoveryMinor },
       dark,
       people: choice.people,
+      airTempC,
     }
-  }, [shop, bag, session, minutesLeft, dark, choice.people])
+  }, [shop, bag, session, minutesLeft, dark, choice.people, airTempC])
   return { means, choice, choose: set, duskMs: sun.duskMs, darkBySun: sun.dark, nowMs: now }
 }
 

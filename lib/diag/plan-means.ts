@@ -13,8 +13,11 @@ export type Means = {
   shop: Pick<Shop, 'perMinuteMinor' | 'towMinor' | 'recoveryMinor'>
   dark: boolean
   people: 1 | 2
+  /** Air at the machine in C; null or left out where nobody said it. */
+  airTempC?: number | null
 }
 
+/** What kind of step it is that is left out. */
 export type Kind = 'check' | 'swap' | 'repair' | 'stop'
 /** Something that cannot be done now, with the reason as a sentence. */
 export type LeftOut = { id: string; kind: Kind; reason: string }
@@ -22,9 +25,16 @@ export type LeftOut = { id: string; kind: Kind; reason: string }
 /** After dusk minutes grow by this factor (rule R6; common practice, no source). */
 export const DARK_FACTOR = 1.3
 
-/** Minutes of work as they will be taken here. */
-export const minutesHere = (minutes: number, means: Means): number =>
-  means.dark ? minutes * DARK_FACTOR : minutes
+/** Below this air temperature in C work is done in gloves (rule R6). */
+export const GLOVES_BELOW_C = -5
+/** In gloves minutes grow by this factor (rule R6; common practice, no source). */
+export const GLOVE_FACTOR = 1.5
+
+/** Minutes of work, from 0, as they will be taken here: longer in the dark and in gloves, and by both where both hold. */
+export function minutesHere(minutes: number, { dark, airTempC = null }: Means): number {
+  const gloves = airTempC !== null && airTempC < GLOVES_BELOW_C
+  return minutes * (dark ? DARK_FACTOR : 1) * (gloves ? GLOVE_FACTOR : 1)
+}
 
 /** Why a check cannot be done with these means, in a sentence; null when it can. */
 export function whyNotCheck(index: BookIndex, check: CheckItem, means: Means): string | null {

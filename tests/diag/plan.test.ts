@@ -192,6 +192,18 @@ describe('[E2] what is left out, and why', () => {
       [p.next, p.runnerUp, ...p.others].find((a) => a?.id === 'plug')?.minutes
     expect(minutesOf(dark)).toBeCloseTo(1.3 * minutesOf(lit)!, 9)
   })
+  it('[R6] below -5 C minutes grow by 1.5 for gloves, in the dark by both; where nobody said it they do not', () => {
+    const minutesAt = (over: Partial<Means>) => {
+      const p = plan([code(1268, 3)], over)
+      return [p.next, p.runnerUp, ...p.others].find((a) => a?.id === 'plug')?.minutes ?? 0
+    }
+    const lit = minutesAt({})
+    expect([-5, -5.1, -15].map((airTempC) => minutesAt({ airTempC }) / lit)).toEqual(
+      [1, 1.5, 1.5].map((x) => expect.closeTo(x, 9)),
+    )
+    expect(minutesAt({ airTempC: null })).toBe(lit)
+    expect(minutesAt({ airTempC: -15, dark: true }) / lit).toBeCloseTo(1.95, 9)
+  })
   it('[R10] limping out is refused while the cause is not known, and when the fault is not one to ride on', () => {
     expect(reason(plan([code(1268, 3)]), 'limpOut')).toMatch(/cause is not known/)
     const proved = [code(1268, 3), swapped('spareFitted', false), swapped('oldRefitted', true)]
