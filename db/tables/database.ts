@@ -1,4 +1,11 @@
 import type {
+  CodeBookContentTable,
+  CodeBookDraftItemTable,
+  CodeBookDraftTable,
+  CodeBookItemTable,
+  CodeBookVersionTable,
+} from './code-book'
+import type {
   ConsentTable,
   ContactPlanTable,
   JobAssignmentTable,
@@ -11,8 +18,6 @@ import type { AuditEntryTable, LogEntryTable } from './log-entry'
 import type {
   BagTable,
   BookingTable,
-  CodeBookItemTable,
-  CodeBookVersionTable,
   MachineModelTable,
   MachineTable,
   MeterProfileTable,
@@ -55,6 +60,9 @@ export type Database = {
   booking: BookingTable
   codeBookVersion: CodeBookVersionTable
   codeBookItem: CodeBookItemTable
+  codeBookContent: CodeBookContentTable
+  codeBookDraft: CodeBookDraftTable
+  codeBookDraftItem: CodeBookDraftItemTable
   job: JobTable
   jobAssignment: JobAssignmentTable
   partRequest: PartRequestTable

@@ -1,6 +1,5 @@
 import type { Generated, JSONColumnType } from 'kysely'
 import type { Bag } from '@/lib/model/bag'
-import type { CodeBookItem } from '@/lib/model/code-book'
 import type { Features } from '@/lib/model/features'
 import type { SpecSheet } from '@/lib/model/machine-model'
 import type { MeterProfile } from '@/lib/model/meter-profile'
@@ -68,21 +67,4 @@ export type BookingTable = {
   toAt: string
   zone: string
   state: 'booked' | 'out' | 'back' | 'cancelled'
-}
-
-export type CodeBookVersionTable = {
-  shopId: string
-  version: number
-  hash: string
-  publishedAt: string
-  publishedBy: string | null
-}
-
-export type CodeBookItemTable = {
-  shopId: string
-  version: number
-  kind: CodeBookItem['kind']
-  itemId: string
-  place: number
-  body: JSONColumnType<CodeBookItem>
 }

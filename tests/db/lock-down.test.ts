@@ -82,8 +82,14 @@ async function fillEveryTable(shop: TestShop): Promise<void> {
     )
     await sql`insert into code_book_version (shop_id, version, hash, published_at)
       values (${ids.shop}, 1, repeat('a', 64), ${AT})`.execute(tx)
-    await sql`insert into code_book_item (shop_id, version, kind, item_id, place, body)
-      values (${ids.shop}, 1, 'fault', 'x', 1, '{}')`.execute(tx)
+    await sql`insert into code_book_content (shop_id, hash, kind, item_id, body)
+      values (${ids.shop}, repeat('c', 64), 'fault', 'x', '{}')`.execute(tx)
+    await sql`insert into code_book_item (shop_id, version, kind, item_id, place, hash)
+      values (${ids.shop}, 1, 'fault', 'x', 1, repeat('c', 64))`.execute(tx)
+    await sql`insert into code_book_draft (shop_id, hash, made_at)
+      values (${ids.shop}, repeat('a', 64), ${AT})`.execute(tx)
+    await sql`insert into code_book_draft_item (shop_id, kind, item_id, place, hash)
+      values (${ids.shop}, 'fault', 'x', 1, repeat('c', 64))`.execute(tx)
     await sql`insert into job_assignment (shop_id, job_id, person_id) values (${ids.shop}, ${ids.job}, ${ids.person})`.execute(
       tx,
     )
@@ -277,6 +283,7 @@ describe('[D3] evidence is insert only (R23)', () => {
     'consent',
     'contact_plan',
     'code_book_item',
+    'code_book_content',
     'photo',
     'quarantine_op',
     'quarantine_decision',
