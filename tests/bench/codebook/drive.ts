@@ -195,7 +195,8 @@ function withNeeds(index: BookIndex, setups: readonly string[]): string[] {
   return setups.flatMap((one) => [...withNeeds(index, index.setups.get(one)?.requires ?? []), one])
 }
 
-function caseOf(of: {
+/** The case of a job so far. */
+export function caseOf(of: {
   index: BookIndex
   told: Features
   symptom: string

@@ -17,11 +17,11 @@ export type Machine = {
   conditions: readonly string[]
 }
 
+/** Of which complaint on which kind of machine. */
+export type Given = { index: BookIndex; symptom: string; features: Features }
+
 /** A machine as the book says they come, under one symptom. */
-export function drawMachine(
-  of: { index: BookIndex; symptom: string; features: Features },
-  random: () => number,
-): Machine {
+export function drawMachine(of: Given, random: () => number): Machine {
   const { index, symptom, features } = of
   const list = candidates(
     buildCase({
