@@ -20,7 +20,10 @@ const TABLE = [
 const VOLTS = [0, 20] as const
 const CELSIUS = [-60, 60] as const
 
-/** Share of full charge (0 to 1) and specific gravity of a flooded 12 V battery at rest, 0 to 20 V. */
+/**
+ * Share of full charge (0 to 1) and specific gravity of a flooded 12 V battery at rest, 0 to 20 V, straight between
+ * the rows of the table and held beyond both ends. Answers the volts where they lie outside.
+ */
 export function chargeAt(
   restVolts: number,
 ): Result<{ charge: number; gravity: number }, FigureProblem> {
@@ -29,7 +32,9 @@ export function chargeAt(
   return ok({ charge: between(restVolts, 'charge'), gravity: between(restVolts, 'gravity') })
 }
 
+/** Kinds of 12 V battery that a field bag meets. */
 export const BATTERY_KINDS = ['flooded', 'agm', 'lithiumIronPhosphate'] as const
+/** One of them. */
 export type BatteryKind = (typeof BATTERY_KINDS)[number]
 
 /** What rest volts say of a kind: full ones by common practice, and whether they tell the charge at all. */
@@ -41,6 +46,7 @@ export const FULL_VOLTS: Readonly<
   lithiumIronPhosphate: { low: 13.2, high: 13.4, tellsCharge: false },
 }
 
+/** `kindTellsNothing`: the rest volts of this kind do not tell its charge. */
 export type BatteryProblem = FigureProblem | { kind: 'kindTellsNothing' }
 
 /** Charge with its bounds from an uncertain reading; `kindTellsNothing` where a table for the kind is missing. */
@@ -64,7 +70,10 @@ export function chargeOf(battery: {
 /** Charge kept back (rule R10; common practice, no source). */
 const RESERVE = 0.2
 
-/** How much of its rating a battery gives in the cold: 1 at 25 C, 0.65 at -15 C, linear, not under 0.5 (R10; practice). */
+/**
+ * How much of its rating a battery gives in the cold, air -60 to 60 C: 1 at 25 C, 0.65 at -15 C, linear, not under
+ * 0.5 (R10; practice). Answers the temperature where it lies outside.
+ */
 export function coldFactor(airTempC: number): Result<number, FigureProblem> {
   const problem = unfit({ airTempC: [airTempC, ...CELSIUS] })
   if (problem !== null) return fail(problem)

@@ -31,6 +31,7 @@ export type Suspect = {
   why: Why[]
 }
 
+/** What is believed of a case: suspects from the likeliest down, and what must be said beside them. */
 export type Belief = {
   /** By chance, ruled-out ones last; `somethingElse` is always among them. */
   suspects: Suspect[]

@@ -12,7 +12,10 @@ const OHM = [0.01, 100] as const
 const HENRY = [1e-5, 1] as const
 const AMPERES = [0, 100] as const
 
-/** Amperes after a dwell of 0 to 1 s at 0.1 to 60 V: V/R (1 - e^(-tR/L)). */
+/**
+ * Amperes after a dwell in seconds, 0 to 1, at 0.1 to 60 V: V/R (1 - e^(-tR/L)), the textbook's circuit of one
+ * resistance and one inductance. Answers the first field that lies outside.
+ */
 export function primaryAmperes(
   primary: Primary,
   volts: number,
@@ -26,7 +29,10 @@ export function primaryAmperes(
   )
 }
 
-/** Seconds to reach a current of 0 to 100 A; infinite when the volts, 0.1 to 60, cannot drive it. */
+/**
+ * Seconds to reach a current of 0 to 100 A at 0.1 to 60 V, by the same law turned round; infinite when the volts
+ * cannot drive it. Answers the first field that lies outside.
+ */
 export function secondsTo(
   primary: Primary,
   volts: number,
@@ -53,7 +59,10 @@ function charging(
   return problem === null ? ok(answer({ final: volts / ohm, seconds: henry / ohm })) : fail(problem)
 }
 
-/** Joules stored at 1e-5 to 1 H and a current of 0 to 100 A: L I^2 / 2. */
+/**
+ * Joules stored at 1e-5 to 1 H and a current of 0 to 100 A: L I^2 / 2 (textbook). Answers the first field that lies
+ * outside.
+ */
 export function storedJoules(henry: number, amperes: number): Result<number, FigureProblem> {
   const problem = unfit({ henry: [henry, ...HENRY], amperes: [amperes, ...AMPERES] })
   return problem === null ? ok((henry * amperes ** 2) / 2) : fail(problem)

@@ -10,6 +10,7 @@ import { eachWithin, type FigureProblem, unfit } from './figure-bounds'
 /** Cylinders may differ by this share of the best: sound up to the first, not above the second. */
 export const CYLINDER_SPREAD = { sound: 0.1, most: 0.15 } as const
 
+/** How alike the cylinders are: `spread` best minus weakest, of the best. */
 export type CompressionSpread = {
   /** Best minus worst, of the best: 0 to 1. */
   spread: number
@@ -18,9 +19,13 @@ export type CompressionSpread = {
   weakest: number
 }
 
+/** `tooFewCylinders`: one alone has nothing to be held against. */
 export type CompressionProblem = FigureProblem | { kind: 'tooFewCylinders' }
 
-/** How alike the cylinders are, all in one unit. Two or more, above 0. */
+/**
+ * How alike two or more cylinders are, gauge readings in any one unit above 0, to 100,000 (spread: common practice,
+ * no source). Answers the first cylinder that lies outside, counted from 1, or `tooFewCylinders`.
+ */
 export function compressionSpread(
   gauge: readonly number[],
 ): Result<CompressionSpread, CompressionProblem> {
@@ -38,7 +43,10 @@ export function compressionSpread(
   return ok({ spread, verdict, weakest: gauge.indexOf(worst) + 1 })
 }
 
-/** A gauge reading taken at a height, as it would read at sea level; height in geopotential metres. */
+/**
+ * A gauge reading (any one unit, 0 to 100,000) taken at a height of -1,000 to 11,000 geopotential metres, as it
+ * would read at sea level (US Standard Atmosphere 1976). Answers the first field that lies outside.
+ */
 export function atSeaLevel(gauge: number, heightM: number): Result<number, FigureProblem> {
   const problem = unfit({ gauge: [gauge, 0, 100_000] })
   if (problem !== null) return fail(problem)
@@ -52,7 +60,10 @@ export const DECOMPRESSOR_PSI = { least: 40, most: 80 } as const
 /** A rise from here on speaks for rings, up to the first for valves or head gasket; between, for neither. */
 export const WET_RISE = { none: 0.1, rings: 0.15 } as const
 
-/** The wet test: the rise after a little oil, as a share of the dry figure, and what it speaks for. */
+/**
+ * The wet test: the rise after a little oil, as a share of the dry figure, and what it speaks for (common practice,
+ * no source). Both in one unit, dry above 0, to 100,000. Answers the first field that lies outside.
+ */
 export function wetTest(
   dry: number,
   wet: number,
@@ -66,8 +77,9 @@ export function wetTest(
 }
 
 /**
- * Leak-down by two gauges and an orifice: the share lost. Under 10 of 100 good, to 20 worn, to 30 poor, above it
- * must be mended; `failsAviation` where less than 60 of 80 is kept (figures from memory of aviation practice).
+ * Leak-down by two gauges and an orifice, both in one unit: supply 1 to 100,000, kept 0 to the supply. The share
+ * lost (0 to 1): under 10 of 100 good, to 20 worn, to 30 poor, above it must be mended; `failsAviation` where less
+ * than 60 of 80 is kept (figures from memory of aviation practice). Answers the first field that lies outside.
  */
 export function leakDown(
   supply: number,

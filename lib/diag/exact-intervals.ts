@@ -5,6 +5,7 @@
 import { crossing } from './bisection'
 import { mustFit } from './figure-bounds'
 
+/** Both ends belong to it; in the unit of what it is the interval of. */
 export type Interval = { low: number; high: number }
 
 /** Largest count that these sums go through one by one; above it a screen would wait. */

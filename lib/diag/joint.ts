@@ -13,6 +13,7 @@ import { orderOf } from './sweep-order'
 /** Combinations of states carried at once: 2^16 numbers a suspect. */
 export const MOST_STATES = 65_536
 
+/** The sum over all sets of suspects, at least one present. */
 export type Summary = {
   /** P(each suspect present | evidence, at least one). */
   marginals: number[]

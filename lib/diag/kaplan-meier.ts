@@ -20,6 +20,7 @@ export type SurvivalStep = {
   standardError: number | null
 }
 
+/** `noLives`: an empty list has no curve. */
 export type LivesProblem = FigureProblem | { kind: 'noLives' }
 
 /** The curve as steps at the times of failure, first to last; empty when every life is censored. Times from 0. */

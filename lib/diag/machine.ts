@@ -8,6 +8,7 @@
 /** A move of a present suspect: from one state to another, with a weight of 0 or more. */
 export type Move = readonly [from: number, to: number, weight: number]
 
+/** A piece of evidence as a small machine that reads the suspects one by one. */
 export type Machine = {
   start: readonly number[]
   end: readonly number[]

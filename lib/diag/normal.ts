@@ -25,6 +25,7 @@ export function between(a: number, b: number): number {
 
 /** Two-sided 95 % and one-sided 95 % factors of the normal distribution. */
 export const TWO_SIDED_95 = 1.959963984540054
+/** The one-sided 95 % factor. */
 export const ONE_SIDED_95 = 1.6448536269514722
 
 function erfSeries(x: number): number {

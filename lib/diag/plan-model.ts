@@ -33,6 +33,7 @@ export const TEST_RUN_MINUTES = 5
 /** A repair that cannot be done is only listed for suspects from this chance on. */
 const WORTH_NAMING = 0.02
 
+/** The planner's model of a case and where it stands, with what is not in it. */
 export type PlanModel = {
   model: SingleModel
   state: SearchState

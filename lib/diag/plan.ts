@@ -30,6 +30,7 @@ export type PlannedAction = {
   caution: Caution | null
 }
 
+/** What to do next, its price, what else could be done and what was left out; money in minor units. */
 export type Plan = {
   next: PlannedAction
   runnerUp: PlannedAction | null

@@ -14,6 +14,7 @@ export type Watched = { failures: readonly number[]; endsAt: number }
 /** One convention's figures: shape b, scale a (per machine), and hours between failures at the longest watch. */
 export type PowerLawFit = { shape: number; scale: number; hoursBetweenAtEnd: number }
 
+/** Both conventions beside each other, and what the trend is. */
 export type PowerLaw = {
   failures: number
   plain: PowerLawFit
@@ -24,6 +25,7 @@ export type PowerLaw = {
   trend: 'worse' | 'better' | 'cannotTell'
 }
 
+/** `tooFewFailures`: a trend asks for two. */
 export type PowerLawProblem = FigureProblem | { kind: 'tooFewFailures'; needed: 2 }
 
 /**

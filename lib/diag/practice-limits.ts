@@ -9,6 +9,7 @@ import type { Verdict } from './reading'
 
 type Limit = { low: number | null; high: number | null; unit: string; words: string }
 
+/** What stands as the source of each of these limits. */
 export const PRACTICE_SOURCE = 'common practice, no source'
 
 /** Each with its unit and the condition it is meant for. */
@@ -42,9 +43,13 @@ export const PRACTICE_LIMITS = {
   drainSmall: { low: null, high: 5, unit: 'mA', words: 'key off, small machine, after it slept' },
   drainCar: { low: null, high: 50, unit: 'mA', words: 'key off, car, after it slept' },
 } as const satisfies Record<string, Limit>
+/** One of the limits. */
 export type PracticeLimit = keyof typeof PRACTICE_LIMITS
 
-/** A figure in the limit's unit held against it, with its expanded uncertainty (k = 2; 0 where none is known). */
+/**
+ * A figure in the limit's unit, within +-1e6, held against it, with its expanded uncertainty from 0 to 1e6 (k = 2; 0
+ * where none is known): the verdict of ISO 14253-1. Answers the first field that lies outside.
+ */
 export function judgePractice(
   name: PracticeLimit,
   figure: number,
@@ -56,25 +61,38 @@ export function judgePractice(
     : fail(problem)
 }
 
-/** Resistance behind a drop, in milliohms: 0.2 V at 10 A are 20. Volts 0 to 1,000, amperes above 0. */
+/**
+ * Resistance behind a drop, in milliohms (Ohm's law): 0.2 V at 10 A are 20. Volts 0 to 1,000, amperes 0.001 to
+ * 10,000. Answers the first field that lies outside.
+ */
 export function milliohmsOf(dropVolts: number, amperes: number): Result<number, FigureProblem> {
   const problem = unfit({ dropVolts: [dropVolts, 0, 1000], amperes: [amperes, 0.001, 10_000] })
   return problem === null ? ok((1000 * dropVolts) / amperes) : fail(problem)
 }
 
-/** Peak of a sine from what an AC meter shows: sqrt(2) times. Volts 0 to 100,000. */
+/**
+ * Peak of a sine from what an AC meter shows: sqrt(2) times (textbook). Volts 0 to 100,000. Answers the volts where
+ * they lie outside.
+ */
 export function sinePeak(rmsVolts: number): Result<number, FigureProblem> {
   const problem = unfit({ rmsVolts: [rmsVolts, 0, 100_000] })
   return problem === null ? ok(Math.SQRT2 * rmsVolts) : fail(problem)
 }
 
-/** Litres a minute from what ran into a jar: 0.125 L in 15 s are 0.5. */
+/**
+ * Litres a minute from what ran into a jar: 0.125 L in 15 s are 0.5. Litres 0 to 100, seconds 1 to 3,600. Answers
+ * the first field that lies outside.
+ */
 export function flowPerMinute(litres: number, seconds: number): Result<number, FigureProblem> {
   const problem = unfit({ litres: [litres, 0, 100], seconds: [seconds, 1, 3600] })
   return problem === null ? ok((60 * litres) / seconds) : fail(problem)
 }
 
-/** Share of fuel pressure lost, and whether it held: under 20 of 100 in 10 minutes (common practice, no source). */
+/**
+ * Share of fuel pressure lost (0 to 1), and whether it held: under 20 of 100 in 10 minutes (common practice, no
+ * source); null where the wait was too short or too long to say. Start 1 to 10,000 kPa, after 0 to the start,
+ * minutes 0 to 1,440. Answers the first field that lies outside.
+ */
 export function pressureHold(
   startKpa: number,
   afterKpa: number,

@@ -5,6 +5,7 @@ import { type Bad, bad, type ModelProblem, short, strangeName } from './model-na
 import { noisyOr, single, state } from './model-shapes'
 import type { NoisyOrModel, SearchState, SingleModel } from './troubleshoot-model'
 
+/** A file that was read, and what was found in it beside the model. */
 export type ModelFile = {
   model: SingleModel | NoisyOrModel
   state: SearchState | null

@@ -6,6 +6,7 @@
 import { ONE_SIDED_95, TWO_SIDED_95 } from './normal'
 import { budgetOf, kelvinsOutside, limitsOf, type ReadingInput } from './reading-budget'
 
+/** One way to a reading that would decide. */
 export type Advice = {
   way: 'nullLeads' | 'finerRange' | 'fourWire' | 'warmMeter' | 'swap'
   /** u of that set-up in the figure's unit; null where it is no measurement. */

@@ -32,12 +32,14 @@ export type ReadingInput = Pick<
 /** Where a share of the uncertainty comes from, in the kept unit; `share` of the variance (0 to 1, sum 1). */
 export type BudgetLine = { source: string; halfWidth: number; standardU: number; share: number }
 
+/** A reading's estimate and its uncertainty, in the kept unit; `worst` is the straight sum of the half-widths. */
 export type Budget = { estimate: number; lines: BudgetLine[]; standardU: number; worst: number }
 
 /** Half-width assumed for a copper part whose temperature was not taken, in kelvin (common practice, no source). */
 export const UNKNOWN_PART_TEMP_K = 20
 /** How far an NTC's resistance moves per kelvin near -20 C (rule R7), and how well its temperature is known. */
 export const NTC_PER_KELVIN = 0.06
+/** How well an NTC's temperature is known, in kelvin (common practice, no source). */
 export const NTC_TEMP_K = 1
 
 /** Names of the budget's own lines; conditions carry the name they are given. */

@@ -21,8 +21,10 @@ import { rectSumCdf } from './rect-sum'
 
 export type { Advice, BudgetLine, ReadingInput }
 
+/** The whole of +-U within the limits, outside them on a side, or neither (ISO 14253-1). */
 export type Verdict = 'in' | 'outLow' | 'outHigh' | 'tooClose'
 
+/** What a reading says; figures in the kept unit of its quantity. */
 export type ReadingResult = {
   estimate: number
   standardU: number

@@ -42,6 +42,7 @@ export const LINKS = {
   shackle: 'anchor',
   anchor: 'anchor',
 } as const
+/** One of them. */
 export type LinkKind = keyof typeof LINKS
 
 /** A part with its working load in newtons; null when it bears no figure. */
@@ -50,6 +51,7 @@ export type Link = { kind: LinkKind; ratedNewtons: number | null }
 /** A part held against what it carries; `share` is load / rating: above 1 it is overloaded. */
 export type LoadedLink = Link & { loadNewtons: number; share: number | null }
 
+/** Whether a rigging is offered, and what every part of it carries, in newtons. */
 export type RigVerdict = {
   /** `offered` only when every part is rated and none is overloaded. */
   verdict: 'offered' | 'refused' | 'notRated'
@@ -62,6 +64,7 @@ export type RigVerdict = {
   partsThatWouldDo: number | null
 }
 
+/** `noWinch`: nothing in the rigging pulls. */
 export type RigProblem = FigureProblem | { kind: 'noWinch' }
 
 /** More parts of line than this are not laid by hand. */

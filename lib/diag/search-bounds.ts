@@ -21,6 +21,7 @@ export type Side = {
 /** `known` is what a unit of each fault costs when it is known here. */
 export type Level = { known: Float64Array; checks: Side; repairs: Side }
 
+/** The lower bounds of a problem, made as levels are come by. */
 export type Bounds = {
   problem: Problem
   known: KnownCost

@@ -13,6 +13,7 @@ import { addKid, addNode, addOption, findNode, type Pool, type Wanted } from './
 import type { ActionType, Problem } from './search-problem'
 import { NO_MASS } from './search-steps'
 
+/** A search under way: what it looks at, within which count of expansions. */
 export type Search = {
   problem: Problem
   bounds: Bounds

@@ -39,6 +39,7 @@ type Options = {
 /** A point that is looked for; its rows are `w` and `code` of the pool's room. */
 export type Wanted = { checks: number; repairs: number; open: number; elapsed: number }
 
+/** All points and options of a search, in arrays that grow. */
 export type Pool = {
   /** How many faults there are. */
   width: number

@@ -25,6 +25,7 @@ export type Check = {
   p: readonly Float64Array[]
 }
 
+/** The model in numbers; money and minutes as in the model, set-ups as bits of a mask. */
 export type Problem = {
   faults: readonly string[]
   repairs: readonly Repair[]
@@ -67,6 +68,7 @@ const roomOf = (size: { faults: number; repairs: number; stops: number }): Room 
   left: new Int32Array(size.repairs),
 })
 
+/** The three kinds of action. */
 export type ActionType = 'check' | 'repair' | 'stop'
 
 /** Checks and repairs up to this many are searched exactly; above it a mask no longer holds them. */

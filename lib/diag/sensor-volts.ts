@@ -11,11 +11,13 @@ import type { Verdict } from './reading'
 
 /** Shares of the supply at the ends of the working sweep, 0 to 1, the high one above the low one. */
 export type Sweep = { lowShare: number; highShare: number }
+/** 0.5 to 4.5 V of 5 V (common practice, no source). */
 export const COMMON_SWEEP: Sweep = { lowShare: 0.1, highShare: 0.9 }
 
 /** Within this share of a rail the signal is open or shorted (guess). */
 const AT_RAIL = 0.04
 
+/** What a signal says: shares of the supply, and where on the sweep it stands. */
 export type SensorVolts = {
   /** Signal of supply, 0 to 1 and a little over where the meter errs. */
   share: number
@@ -26,7 +28,10 @@ export type SensorVolts = {
   state: 'working' | 'belowSweep' | 'aboveSweep' | 'atGround' | 'atSupply'
 }
 
-/** Reads a signal with its supply, both against sensor ground. Supply 1 to 30 V, signal 0 to 30 V. */
+/**
+ * Reads a signal with its supply, both against sensor ground. Supply 1 to 30 V, signal 0 to 30 V, `supplyU` the
+ * supply's expanded uncertainty, 0 to 30 V. Answers the first field that lies outside.
+ */
 export function sensorVolts(
   read: { signalVolts: number; supplyVolts: number; supplyU: number },
   sweep: Sweep = COMMON_SWEEP,
@@ -48,7 +53,10 @@ export function sensorVolts(
   })
 }
 
-/** The signal a position of the sweep (0 to 1) makes at a supply: the way back. */
+/**
+ * The volts that a position of the sweep (0 to 1) makes at a supply of 1 to 30 V: the way back. Answers the first
+ * field that lies outside.
+ */
 export function signalFor(
   position: number,
   supplyVolts: number,

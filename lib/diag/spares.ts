@@ -12,8 +12,8 @@ import { type FigureProblem, unfit } from './figure-bounds'
 const MOST_MEAN = 1000
 
 /**
- * Mean number of pieces under way: demand per day times mean resupply time in days (Palm).
- * Both from 0; the product at most 1,000.
+ * Mean number of pieces under way: demand per day times mean resupply time in days (Palm). Both from 0; the product
+ * at most 1,000. Answers the first field that lies outside.
  */
 export function pipelineMean(
   demandPerDay: number,

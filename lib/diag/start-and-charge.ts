@@ -6,7 +6,10 @@ import { fail, ok, type Result } from '@/lib/model/result'
 import { type FigureProblem, unfit } from './figure-bounds'
 import { heldAgainst } from './held-against'
 
-/** Least cranking volts: 9.6 V at 21 C over 15 s, 9.1 V at -10 C, straight between; held beyond both. */
+/**
+ * Least cranking volts at an air temperature of -60 to 60 C: 9.6 V at 21 C over 15 s, 9.1 V at -10 C, straight
+ * between; held beyond both (common practice, no source). Answers the temperature where it lies outside.
+ */
 export function crankingLimit(airTempC: number): Result<number, FigureProblem> {
   const problem = unfit({ airTempC: [airTempC, -60, 60] })
   if (problem !== null) return fail(problem)
@@ -24,7 +27,10 @@ export type CrankingVerdict = {
   outside: boolean
 }
 
-/** Whether a battery holds while it cranks. Volts 0 to 20, air -60 to 60 C. */
+/**
+ * Whether a battery holds while it cranks. Volts and their expanded uncertainty 0 to 20, air -60 to 60 C. Answers
+ * the first field that lies outside.
+ */
 export function judgeCranking(
   read: VoltsRead,
   airTempC: number,
@@ -41,6 +47,7 @@ export function judgeCranking(
 /** From this engine speed on a sound machine charges. */
 export const CHARGING_RPM = 3000
 
+/** Whether a machine charges; `tooSlow` where the condition of the limit was not kept. */
 export type ChargingVerdict = {
   /**
    * `notCharging` under 13.0 V; `weak` to 13.5; `charging` to 14.8; `high` to 15.0; `regulator` above;
@@ -51,7 +58,10 @@ export type ChargingVerdict = {
   coldExplains: boolean
 }
 
-/** Whether a running machine charges its battery. Volts 0 to 20, engine speed 0 to 20,000 rpm, -60 to 60 C. */
+/**
+ * Whether a running machine charges its battery. Volts and their expanded uncertainty 0 to 20, engine speed 0 to
+ * 20,000 rpm, -60 to 60 C. Answers the first field that lies outside.
+ */
 export function judgeCharging(
   read: VoltsRead,
   at: { engineRpm: number; airTempC: number },

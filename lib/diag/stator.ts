@@ -14,6 +14,7 @@ export const LEG_SPREAD = 0.05
 /** A leg's figure, volts or ohms, with its expanded uncertainty (k = 2). */
 export type Leg = { figure: number; expandedU: number }
 
+/** How alike the legs of a stator are. */
 export type Balance = {
   /** Largest minus smallest, of the largest: 0 to 1. */
   spread: number
@@ -22,9 +23,13 @@ export type Balance = {
   lowest: number | null
 }
 
+/** `tooFewLegs`: one has nothing to be held against. `allNought`: no leg shows anything. */
 export type BalanceProblem = FigureProblem | { kind: 'tooFewLegs' } | { kind: 'allNought' }
 
-/** How alike two to twelve legs are. Figures 0 to 100,000. Uneven only when no corner of the +-U would be even. */
+/**
+ * How alike two to twelve legs are. Figures 0 to 100,000 in one unit. Uneven only when no corner of the +-U would be
+ * even. Answers the first leg that lies outside, counted from 1, `tooFewLegs` or `allNought`.
+ */
 export function legBalance(legs: readonly Leg[]): Result<Balance, BalanceProblem> {
   const figures = legs.map(({ figure }) => figure)
   const problem = unfit({
@@ -70,6 +75,7 @@ export type StatorReadings = {
   groundOhm: number | null
 }
 
+/** What the readings point to, and what they do not prove. */
 export type StatorVerdict = {
   balance: Balance
   /** The mean of the sounder legs per 1,000 rpm, held against 15 to 25 V. */
@@ -84,7 +90,10 @@ export type StatorVerdict = {
 /** A leg that reads to ground at all is grounded; above this many ohms it is damp or the meter's own (guess). */
 const GROUND_OHM = 1_000_000
 
-/** Judges a stator unplugged from its regulator. Engine speed 300 to 20,000 rpm, ground ohms from 0. */
+/**
+ * Judges a stator unplugged from its regulator. Engine speed 300 to 20,000 rpm, ground ohms from 0, null over range;
+ * legs in the bounds of `legBalance`, whose problems it answers beside its own fields.
+ */
 export function judgeStator(readings: StatorReadings): Result<StatorVerdict, BalanceProblem> {
   const { legVolts, engineRpm, groundOhm } = readings
   const problem = unfit({

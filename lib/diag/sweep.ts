@@ -10,6 +10,7 @@ import { type Order, type Step, statesOf } from './sweep-order'
 /** How a suspect weighs in every sum: absent and present, both 0 or more (1 and the odds, or the two chances). */
 export type Weights = readonly { absent: number; present: number }[]
 
+/** The two sums over sets of suspects, and the share of each suspect in the first. */
 export type Sums = {
   /** The weight of no suspect being present, and of all other sets together, both over e^log. */
   none: number

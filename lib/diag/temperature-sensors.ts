@@ -12,7 +12,10 @@ const betaBounds = (r25: number, beta: number) => ({
   beta: [beta, 100, 20_000] as const,
 })
 
-/** Ohms of an NTC at -100 to 500 C: R25 exp(B (1/T - 1/298.15)). R25 in ohms, B in kelvins 100 to 20,000. */
+/**
+ * Ohms of an NTC at -100 to 500 C: R25 exp(B (1/T - 1/298.15)), the beta equation. R25 in ohms 1e-3 to 1e9, B in
+ * kelvins 100 to 20,000. Answers the first field that lies outside.
+ */
 export function ntcOhm(r25: number, beta: number, celsius: number): Result<number, FigureProblem> {
   const problem = unfit({ ...betaBounds(r25, beta), celsius: [celsius, ...CELSIUS] })
   if (problem !== null) return fail(problem)
@@ -22,15 +25,22 @@ export function ntcOhm(r25: number, beta: number, celsius: number): Result<numbe
 /** `noTemperature`: no temperature gives these ohms on this curve. */
 export type CurveProblem = FigureProblem | { kind: 'noTemperature' }
 
-/** Degrees Celsius of an NTC from its ohms, 1e-3 to 1e9, by the beta equation. */
+/**
+ * Degrees Celsius of an NTC from its ohms, 1e-3 to 1e9, by the beta equation; R25 and B as in `ntcOhm`. Answers the
+ * first field that lies outside, or `noTemperature`.
+ */
 export function ntcCelsius(r25: number, beta: number, ohm: number): Result<number, CurveProblem> {
   const problem = unfit({ ...betaBounds(r25, beta), ohm: [ohm, ...OHM] })
   return problem === null ? celsiusOf(1 / 298.15 + Math.log(ohm / r25) / beta) : fail(problem)
 }
 
+/** Coefficients of 1/T = A + B ln R + C (ln R)^3, T in kelvins and R in ohms. */
 export type SteinhartHart = { a: number; b: number; c: number }
 
-/** Degrees Celsius from ohms, 1e-3 to 1e9: 1/T = A + B ln R + C (ln R)^3. Coefficients -1 to 1. */
+/**
+ * Degrees Celsius from ohms, 1e-3 to 1e9: 1/T = A + B ln R + C (ln R)^3 (Steinhart and Hart 1968). Coefficients -1
+ * to 1. Answers the first field that lies outside, or `noTemperature`.
+ */
 export function steinhartCelsius(
   { a, b, c }: SteinhartHart,
   ohm: number,
@@ -73,13 +83,16 @@ export function fitSteinhart(
   return ok({ a: y1 - (b + l1 ** 2 * c) * l1, b, c })
 }
 
-/** Ohms of a Pt100 at -200 to 850 C (IEC 60751). */
+/** Ohms of a Pt100 at -200 to 850 C (IEC 60751). Answers the temperature where it lies outside. */
 export function pt100Ohm(celsius: number): Result<number, FigureProblem> {
   const problem = unfit({ celsius: [celsius, -200, 850] })
   return problem === null ? ok(platinum(celsius)) : fail(problem)
 }
 
-/** Degrees Celsius of a Pt100 from its ohms, those of -200 to 850 C: the way back, by halving. */
+/**
+ * Degrees Celsius of a Pt100 from its ohms, those of -200 to 850 C (IEC 60751): the way back, by halving. Answers
+ * the ohms where they lie outside.
+ */
 export function pt100Celsius(ohm: number): Result<number, FigureProblem> {
   const problem = unfit({ ohm: [ohm, platinum(-200), platinum(850)] })
   return problem === null ? ok(crossing((t) => platinum(t) - ohm, -200, 850)) : fail(problem)

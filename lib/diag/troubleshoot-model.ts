@@ -7,6 +7,7 @@ export type RepairSpec = {
   success?: number
 }
 
+/** Exactly one fault is present; priors are normalised. Costs in one currency, times in minutes, chances 0 to 1. */
 export type SingleModel = {
   id?: string
   kind: 'single'
@@ -55,6 +56,7 @@ export type SearchState = {
   elapsed: number
 }
 
+/** Independent faults and what shows them; chances 0 to 1, `virtual` the likelihoods if absent and if present. */
 export type NoisyOrModel = {
   id?: string
   kind: 'noisyor'
@@ -64,4 +66,5 @@ export type NoisyOrModel = {
   evidence: Readonly<Record<string, 0 | 1 | { virtual: readonly [number, number] }>>
 }
 
+/** The start of a job: nothing done, nothing open. */
 export const START: SearchState = { evidence: {}, tried: [], open: [], elapsed: 0 }

@@ -39,6 +39,7 @@ export type NamedAction = { type: ActionType; id: string }
  */
 export type LeadsTo = { outcome: string; chance: number; next: NamedAction | null }
 
+/** The advised action, its expected cost, how sure that is, and what each outcome leads to. */
 export type NextAction = {
   type: ActionType
   id: string

@@ -9,7 +9,10 @@ import { between, ONE_SIDED_95, phi } from './normal'
 
 const MOST = 1e9
 
-/** Bad states that can be told from a good one: at or below `below`, at or above `above`. Each 3.29 u away. */
+/**
+ * Bad states that can be told from a good one: at or below `below`, at or above `above`, each 3.29 u away (5 of 100
+ * wrong either way, normal). One unit, good within +-1e9, u 0 to 1e9. Answers the first field that lies outside.
+ */
 export function separableFrom(
   good: number,
   standardU: number,
@@ -20,7 +23,10 @@ export function separableFrom(
   return ok({ below: good - apart, above: good + apart })
 }
 
-/** Largest u by the four-to-one rule: U = 2 u at most a quarter of the half tolerance (common practice). */
+/**
+ * Largest u by the four-to-one rule: U = 2 u at most a quarter of the half tolerance, 0 to 1e9 (common practice).
+ * Answers the half tolerance where it lies outside.
+ */
 export function fourToOneU(halfTolerance: number): Result<number, FigureProblem> {
   const problem = unfit({ halfTolerance: [halfTolerance, 0, MOST] })
   return problem === null ? ok(halfTolerance / 8) : fail(problem)

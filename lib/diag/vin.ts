@@ -16,11 +16,15 @@ const VALUES: Record<string, number> = {
   ...Object.fromEntries([...'STUVWXYZ'].map((c, i) => [c, i + 2])),
 }
 
+/** What is no such number: another length, or a character it does not use, with its place from 1. */
 export type VinProblem =
   | { kind: 'notSeventeen'; length: number }
   | { kind: 'badCharacter'; character: string; at: number }
 
-/** The weighted sum, the digit it asks for and whether position 9 holds it; position 9 itself counts nothing. */
+/**
+ * The weighted sum, the digit it asks for and whether position 9 holds it; position 9 itself counts nothing (49 CFR
+ * 565.15). Any case, blanks around it left out. A mismatch is a value and not a problem: warn, never block.
+ */
 export function checkVin(
   text: string,
 ): Result<{ sum: number; expected: string; matches: boolean }, VinProblem> {

@@ -24,6 +24,7 @@ export const SAID_BY_HAND = [
   'knock',
   'unfit',
 ] as const
+/** One of them. */
 export type SaidByHand = (typeof SAID_BY_HAND)[number]
 
 /** A suspect at this chance (0 to 1) or more is likely enough for its own refusal to count (guess). */

@@ -22,10 +22,12 @@ export const GROUNDS = {
   wheelDepth: 1.0,
   bodyDepth: 1.33,
 } as const
+/** One of them. */
 export type Ground = keyof typeof GROUNDS
 
 /** Weight added when wheels or tracks do not turn: up to half of them, or more (recovery sheet, seen). */
 export const LOCKED = { none: 0, upToHalf: 0.33, moreThanHalf: 0.67 } as const
+/** One of them. */
 export type Locked = keyof typeof LOCKED
 
 /** Added to the pull before anything is rated against it: 20 to 25 of 100 is common practice; the upper one is ours. */
@@ -49,7 +51,10 @@ export type Pull = {
   fieldRuleNewtons: number | null
 }
 
-/** The pull of a stuck machine. Mass 1 to 20,000 kg, slope -60 to 60 degrees, margin 0 to 2. */
+/**
+ * The pull of a stuck machine in newtons: W (sin a + c cos a), textbook. Mass 1 to 20,000 kg, slope -60 to 60
+ * degrees, margin 0 to 2. Answers the first field that lies outside.
+ */
 export function pullOf(stuck: Stuck, margin = PULL_MARGIN): Result<Pull, FigureProblem> {
   const { massKg, slopeDegrees, ground, locked } = stuck
   const problem = unfit({

@@ -19,7 +19,10 @@ export type Run = {
   returnsByFrame: boolean
 }
 
-/** Ohms and volts of a run. Gauge 0 to 40, metres 0 to 1,000, amperes 0 to 1,000, -60 to 200 C. */
+/**
+ * Ohms and volts of a run (ASTM B258, IEC 60028). Gauge 0 to 40, metres and amperes 0 to 1,000, -60 to 200 C.
+ * Answers the first field that lies outside.
+ */
 export function wireDrop(
   gauge: number,
   run: Run,
@@ -32,7 +35,10 @@ export function wireDrop(
   return ok({ ohm, volts: ohm * run.amperes })
 }
 
-/** The thinnest gauge of the list that loses no more than the volts wanted; null when none of them does. */
+/**
+ * The thinnest gauge of the list that loses no more than the volts wanted, 0 to 1,000; null when none of them does.
+ * The run in the bounds of `wireDrop`; answers the first field that lies outside.
+ */
 export function gaugeFor(run: Run, mostVolts: number): Result<number | null, FigureProblem> {
   const problem = runProblem(run) ?? unfit({ mostVolts: [mostVolts, 0, 1000] })
   if (problem !== null) return fail(problem)
