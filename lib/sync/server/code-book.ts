@@ -1,6 +1,16 @@
-import { asShop } from '@/db/client'
-import { publishedBook, publishedVersion, versionsByNumber } from '@/db/queries/code-book'
+import { asShop, type ShopTx } from '@/db/client'
+import {
+  type BookVersion,
+  contentByHash,
+  itemsOfVersion,
+  publishedBook,
+  publishedVersion,
+  versionByHash,
+  versionsByNumber,
+} from '@/db/queries/code-book'
 import type { Actor } from '@/lib/model/person'
+import { type BookManifest, type BookPatch, itemKey } from '@/lib/sync/protocol/book'
+import { changesBetween, withContents } from './book/make-patch'
 import { problemAnswer } from './problems'
 
 /** A version is never changed, so an address that names one may be kept for good. */
@@ -13,15 +23,28 @@ const CACHE = {
 const MAX_VERSION = 2_147_483_647
 
 /**
- * Answers a whole published version of the actor's shop; the ETag is the version's hash. `wanted` null:
- * the newest. A version that is not there, or no number at all, is `notFound`.
+ * What is asked: which version (`version`; null: the newest), from which hash on (`from`: only what changed
+ * since the version that the phone holds), or its list of hashes (`as=manifest`).
+ */
+export type BookWanted = { version: string | null; from: string | null; as: string | null }
+
+/** Reads the question out of an address. */
+export const bookWanted = (url: string): BookWanted => {
+  const { searchParams: asked } = new URL(url)
+  return { version: asked.get('version'), from: asked.get('from'), as: asked.get('as') }
+}
+
+/**
+ * Answers a published version of the actor's shop: whole, as what changed since another, or as its list of
+ * hashes. The ETag is the version's hash. A version that is not there, or no number at all, is `notFound`;
+ * a `from` that the shop does not know is answered with the whole version.
  */
 export async function answerBook(
   actor: Actor,
-  wanted: string | null,
+  wanted: BookWanted,
   ifNoneMatch: string | null,
 ): Promise<Response> {
-  const version = wanted === null ? undefined : readVersion(wanted)
+  const version = wanted.version === null ? undefined : readVersion(wanted.version)
   if (version === null) return problemAnswer({ kind: 'notFound' })
   return await asShop(actor.shopId, async (tx) => {
     const head =
@@ -33,10 +56,46 @@ export async function answerBook(
     const cache = version === undefined ? CACHE.newest : CACHE.named
     const headers = { etag, 'cache-control': cache, vary: 'cookie' }
     if (holds(ifNoneMatch, etag)) return new Response(null, { status: 304, headers })
-    const book = await publishedBook(tx, head.version)
     const type = { 'content-type': 'application/json' }
-    return new Response(JSON.stringify(book), { headers: { ...headers, ...type } })
+    const body = await bodyOf(tx, head, wanted)
+    return new Response(JSON.stringify(body), { headers: { ...headers, ...type } })
   })
+}
+
+async function bodyOf(tx: ShopTx, head: BookVersion, { from, as }: BookWanted): Promise<unknown> {
+  if (as === 'manifest') return await manifestOf(tx, head)
+  const base = from === null ? undefined : await versionByHash(tx, from)
+  if (base !== undefined) return await patchOf(tx, base, head)
+  return await publishedBook(tx, head.version)
+}
+
+async function patchOf(tx: ShopTx, base: BookVersion, head: BookVersion): Promise<BookPatch> {
+  const [before, after] = [
+    await itemsOfVersion(tx, base.version),
+    await itemsOfVersion(tx, head.version),
+  ]
+  const { drop, put, move } = changesBetween(before, after)
+  const contents = await contentByHash(
+    tx,
+    put.map(([, hash]) => hash),
+  )
+  const { version, hash, publishedAt } = head
+  return {
+    version,
+    hash,
+    publishedAt,
+    from: base.hash,
+    drop,
+    put: withContents(put, contents),
+    move,
+  }
+}
+
+async function manifestOf(tx: ShopTx, head: BookVersion): Promise<BookManifest> {
+  const placed = await itemsOfVersion(tx, head.version)
+  const items = placed.map(({ kind, itemId, hash }) => [itemKey({ kind, id: itemId }), hash])
+  const { version, hash, publishedAt } = head
+  return { version, hash, publishedAt, items: Object.fromEntries(items) }
 }
 
 function readVersion(text: string): number | null {
