@@ -1,0 +1,181 @@
+import { fault } from './draft'
+import type { FaultData } from './fault-data'
+import { BELT, FOUR_WHEELS, SLED, TWO_FRONT } from './gates-drive'
+
+/** Belt, its two clutches, shafts and the front drive. */
+export const BELT_FAULTS: FaultData[] = [
+  fault({
+    id: 'beltBroken',
+    name: 'Drive belt broken',
+    system: 'driveSystem',
+    gate: BELT,
+    repair: {
+      words:
+        'Get every cord out of both clutches and the cover ducts, look why it broke, fit the spare belt in its direction of run.',
+      doesNotFix: 'A clutch that sticks or a dragging brake eats the next belt too.',
+      minutes: 20,
+      part: 'driveBelt',
+      setups: ['beltCoverOff'],
+      successOf100: 92,
+    },
+    onset: 'A bang, a howl of the engine, then no pull.',
+    wayOut: 'repairHere',
+    limpRefused:
+      'No belt, no drive. Without a spare it is towed, with the cords out of the clutches.',
+    provedBy: 'Pulls away cleanly and the belt stays hand-warm after a gentle proof run.',
+  }),
+  fault({
+    id: 'beltSlips',
+    name: 'Drive belt slips: glazed, worn or wet',
+    system: 'driveSystem',
+    gate: BELT,
+    repair: {
+      words:
+        'Dry belt and clutch faces with a clean rag, scuff the glaze off, or fit the spare belt.',
+      doesNotFix: 'A belt worn narrow slips again; drying it does not help.',
+      minutes: 18,
+      costMinor: 100,
+      part: 'driveBelt',
+      setups: ['beltCoverOff'],
+      successOf100: 80,
+    },
+    onset: 'After a ford, deep mud, or pulling hard in the high range.',
+    wayOut: 'limpOut',
+    provedBy: 'Takes up without squeal or flare; speed and engine note rise together.',
+  }),
+  fault({
+    id: 'clutchDriveStuck',
+    name: 'Drive clutch sticks or is broken',
+    system: 'driveSystem',
+    gate: BELT,
+    repair: {
+      words:
+        'Blow and wipe the dust out of the sheave and its bushes; a broken weight, spring or button is a shop job.',
+      doesNotFix: 'Grease in a clutch makes it stick sooner.',
+      minutes: 35,
+      part: 'driveClutchUnit',
+      setups: ['beltCoverOff', 'beltOff'],
+      successOf100: 55,
+    },
+    onset: 'Jerks away late, or will not let go at idle.',
+    wayOut: 'tow',
+    limpRefused:
+      'Loose clutch parts fly. Tow with the belt off, or in neutral, as the spec sheet says.',
+    provedBy:
+      'Takes up at the engagement speed of the spec sheet and lets go at idle, hot and cold.',
+  }),
+  fault({
+    id: 'clutchDrivenStuck',
+    name: 'Driven clutch sticks or its spring is broken',
+    system: 'driveSystem',
+    gate: BELT,
+    repair: {
+      words: 'Clean the sheave and ramps dry so that it snaps shut; a broken spring is a shop job.',
+      doesNotFix: 'A new belt does not cure a sheave that does not close.',
+      minutes: 35,
+      part: 'drivenClutchUnit',
+      setups: ['beltCoverOff', 'beltOff'],
+      successOf100: 58,
+    },
+    onset: 'Weak on hills, does not shift back when it slows down.',
+    wayOut: 'limpOut',
+    provedBy: 'Opens by hand and snaps shut; holds its pull on a climb.',
+  }),
+  fault({
+    id: 'axleOrJointBroken',
+    name: 'Axle, joint or prop shaft broken',
+    system: 'driveSystem',
+    gate: FOUR_WHEELS,
+    circuits: [{ circuit: 'wheelSpeed', role: 'mechanism' }],
+    repair: {
+      words:
+        'Fit the axle shaft, or take the loose half out and tie the stub so that it cannot flail.',
+      doesNotFix: 'A stub left swinging cuts brake lines and the boot next to it.',
+      minutes: 60,
+      part: 'axleShaft',
+      setups: ['wheelOff'],
+      successOf100: 85,
+    },
+    onset: 'Clicks in turns for days, then a bang on a climb.',
+    wayOut: 'tow',
+    limpRefused:
+      'A loose shaft end flails about and can lock a wheel. Take it out or tie it before the tow.',
+    provedBy: 'Every driven wheel pulls, no click at full lock; then the proof run.',
+  }),
+  fault({
+    id: 'chainCaseFailed',
+    name: 'Chain case or jackshaft failed',
+    system: 'driveSystem',
+    gate: SLED,
+    repair: {
+      words: 'Shop job: new chain, sprockets and tensioner, and every broken bit found.',
+      doesNotFix: 'More oil does not cure a stretched chain.',
+      minutes: 120,
+      part: 'chainCaseKit',
+      setups: ['chainCaseOpen'],
+      successOf100: 88,
+    },
+    onset: 'Rattles low down, then a crack, and the clutch turns alone.',
+    wayOut: 'tow',
+    limpRefused:
+      'With the brake above the chain, a broken chain means no brake at the track either. Belt off, sled on a deck or skis.',
+    provedBy: 'Chain tight, oil clean after the proof run, brake holds the track.',
+  }),
+  fault({
+    id: 'fourWheelFault',
+    name: 'Front drive does not engage: actuator, hub or gears',
+    system: 'driveSystem',
+    gate: FOUR_WHEELS,
+    circuits: [{ circuit: 'fourWheelActuator', role: 'part' }],
+    repair: {
+      words: 'Work the actuator free, or set the fork by hand to two-wheel for the ride out.',
+      doesNotFix: 'A fuse or a dirty plug is not the actuator: prove its volts first.',
+      minutes: 40,
+      part: 'fourWheelUnit',
+      setups: ['endRaised'],
+      successOf100: 70,
+    },
+    onset: 'The rear wheels spin alone, or the front hums and lets go.',
+    wayOut: 'limpOut',
+    provedBy: 'Front wheels pull when it is switched in and run free when it is out.',
+  }),
+  fault({
+    id: 'fourWheelWiring',
+    name: 'Front drive without power: switch, fuse or wire',
+    system: 'driveSystem',
+    gate: FOUR_WHEELS,
+    circuits: [{ circuit: 'fourWheelActuator', role: 'wiring' }],
+    repair: {
+      words:
+        'Fuse of the same rating, plug cleaned and pushed home, broken wire mended and tied clear.',
+      doesNotFix: 'A fuse that blows again means a short: no third one.',
+      minutes: 25,
+      costMinor: 200,
+      part: 'wireKit',
+      setups: ['sidePanelOff'],
+      successOf100: 85,
+    },
+    onset: 'Since water, mud or a branch under the floor.',
+    wayOut: 'limpOut',
+    provedBy: 'Actuator heard both ways and the front pulls; then the proof run over bumps.',
+  }),
+  fault({
+    id: 'parkBrakeSwitchBad',
+    name: 'Park brake switch holds the engine back',
+    system: 'driveSystem',
+    gate: TWO_FRONT,
+    circuits: [{ circuit: 'parkBrakeSwitch', role: 'part' }],
+    repair: {
+      words: 'Clean and set the switch so that it changes with the lever, mend its wire.',
+      doesNotFix: 'By-passing it hides a brake that is really on.',
+      minutes: 15,
+      costMinor: 50,
+      part: 'parkBrakeSwitchUnit',
+      setups: ['frontCoverOff'],
+      successOf100: 88,
+    },
+    onset: 'Brake lamp stays on, engine will not pass a low speed.',
+    wayOut: 'repairHere',
+    provedBy: 'Lamp follows the lever and the engine revs freely; then the proof run.',
+  }),
+]
