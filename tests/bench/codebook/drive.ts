@@ -11,12 +11,12 @@ import type { LogBody, LogEntry } from '@/lib/model/log-entry'
 import { afterRepair, checksFor, endOfCheck, endOfSwap, type Machine } from './machine'
 import { shuffled } from './random'
 
-/** All tools and parts at hand, one mechanic, daylight, no time to leave by; money is invented. */
+/** All tools and parts at hand, one mechanic, daylight, no time to leave by; money as in the demo shop, invented. */
 export const MEANS: Means = {
   bag: null,
   roles: ['mechanic'],
   minutesToLeaveBy: null,
-  shop: { perMinuteMinor: 150, towMinor: 25_000, recoveryMinor: 60_000 },
+  shop: { perMinuteMinor: 160, towMinor: 30_000, recoveryMinor: 30_000 },
   dark: false,
   people: 1,
 }
