@@ -93,7 +93,7 @@ export const CYLINDER_CHECKS: CheckItem[] = [
     purpose: 'Finds a bent rod: its piston no longer reaches the top.',
     gate: {},
     setups: ['plugOut'],
-    tools: ['softStick', 'tapeRule'],
+    tools: ['softStick', 'tapeMeasure'],
     mayMoveMachine: true,
     minutes: 7,
     steps: [

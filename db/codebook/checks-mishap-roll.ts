@@ -104,7 +104,7 @@ export const ROLL_CHECKS: CheckItem[] = [
     purpose: 'Shows bent rods or a twisted post by sighting along them.',
     gate: {},
     guideSafe: true,
-    tools: ['lamp', 'tapeRule'],
+    tools: ['lamp', 'tapeMeasure'],
     minutes: 3,
     steps: [
       'Level ground. Set the bars or wheel straight ahead.',
@@ -189,7 +189,7 @@ export const ROLL_CHECKS: CheckItem[] = [
     gate: { kind: ['atv', 'sideBySide', 'snowmobile'] },
     people: 2,
     onePersonWay: 'Hook the tape or a string with a clamp at one corner.',
-    tools: ['tapeRule', 'lamp', 'cleanRag'],
+    tools: ['tapeMeasure', 'lamp', 'cleanRag'],
     minutes: 12,
     steps: [
       'Pick two pairs of equal bolts, left and right, front and back.',

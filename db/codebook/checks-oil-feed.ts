@@ -1,10 +1,10 @@
 import type { CheckItem } from '@/lib/model/code-book'
-import { HOT_ENGINE, MONOXIDE, MOVES, VAPOUR } from './cautions'
-import { HOT_OIL, OIL_STOP, SPRAYS_OUT } from './cautions-mishap'
+import { MONOXIDE, MOVES, VAPOUR } from './cautions'
+import { OIL_STOP, SPRAYS_OUT } from './cautions-mishap'
 import { check } from './draft'
 import { PRACTICE } from './sources'
 
-/** Oil feed of two-strokes, smoke, and the oil of gear cases. */
+/** Oil feed of two-strokes, and what the smoke says. */
 export const OIL_FEED_CHECKS: CheckItem[] = [
   check({
     id: 'oilFeedPulse',
@@ -134,42 +134,5 @@ export const OIL_FEED_CHECKS: CheckItem[] = [
     stopWhen: 'Thick smoke, knock or lamp: stop it.',
     basis: 'commonPractice',
     basisWords: 'Guess: three of four such faults show their colour within two minutes.',
-  }),
-  check({
-    id: 'caseOilLook',
-    name: 'Gear, chain case and hub oil',
-    purpose: 'Shows low, milky or metal-laden oil in the cases after the engine.',
-    gate: {},
-    setups: ['engineCool'],
-    tools: ['socketSet', 'cleanRag', 'lamp'],
-    minutes: 8,
-    steps: [
-      ['Feel each case with the back of the hand. One far hotter than the rest?', HOT_OIL],
-      'Clean round the level plug or stick. Open it.',
-      'Oil at the hole? Clear, milky, or grey with metal?',
-      'Close it. Turn the wheel or track by hand and listen.',
-    ],
-    cautions: [HOT_ENGINE],
-    record: 'Each case: level, colour, metal, heat.',
-    outcomes: [
-      ['right', 'At the mark and clear'],
-      ['low', 'Low'],
-      ['milky', 'Milky'],
-      ['metal', 'Chips of metal'],
-    ],
-    table: {
-      gearOilLeak: [10, 84, 3, 3],
-      caseHoled: [58, 38, 2, 2],
-      waterInOil: [46, 3, 50, 1],
-      gearboxBroken: [30, 10, 2, 58],
-      driveBearingFailed: [62, 22, 5, 11],
-      chainCaseFailed: [24, 30, 4, 42],
-    },
-    otherwise: [92, 6, 1, 1],
-    expected: [{ words: 'Oil at the level hole, clear, no chips.', source: PRACTICE }],
-    passDoesNotProve: 'The right level now says nothing of how long it was dry.',
-    stopWhen: 'Chips, or a case too hot to touch: no ride.',
-    basis: 'physics',
-    basisWords: 'The plug shows what is in the case. Shares are guesses.',
   }),
 ]

@@ -192,7 +192,7 @@ export const THROTTLE_CHECKS: CheckItem[] = [
     purpose: 'Shows ice: what warmth alone sets free was frozen.',
     gate: {},
     guideSafe: true,
-    tools: ['warmBottle', 'cleanRag'],
+    tools: ['warmWater', 'cleanRag'],
     weather: 'Means something only near or below freezing.',
     minutes: 10,
     steps: [

@@ -178,6 +178,22 @@ const DRIVE_CHECKS: Chapter['rows'] = {
   shiftLinkLook: { frameBent: [74, 23, 3] },
   gearLampSweep: { waterInElectrics: [68, 18, 14] },
   fourWheelListen: { waterInElectrics: [69, 16, 15] },
+  chainCaseDip: {
+    gearOilLeak: [17, 80, 3],
+    waterInOil: [38, 58, 4],
+    caseHoled: [50, 43, 7],
+  },
+  frontLook: { frameBent: [63, 28, 9], barsBent: [75, 22, 3] },
+  barRock: { barsBent: [51, 10, 36, 3] },
+  armSight: { frameBent: [68, 19, 13] },
+  toeMeasure: { frameBent: [50, 31, 19] },
+  barAgainstWheel: { barsBent: [60, 19, 21] },
+  forkSight: { barsBent: [67, 30, 3] },
+  shockBounce: { frameBent: [70, 25, 5] },
+  assistLamp: { waterInElectrics: [75, 17, 8] },
+  trackLook: { stoneCaught: [68, 26, 4, 2] },
+  iceLook: { stoneCaught: [28, 19, 4, 49] },
+  trackTurn: { stoneCaught: [52, 41, 2, 5] },
   speedRingLook: { stoneCaught: [58, 30, 12], waterInElectrics: [74, 23, 3] },
 }
 

@@ -35,9 +35,7 @@ const PARTS: readonly WordRow[] = [
   ['tankCap', 'Tank cap with vent'],
   ['pumpPlateSeal', 'Seal of the pump plate'],
   ['fuelTapPart', 'Fuel tap'],
-  ['camChainKit', 'Cam chain and tensioner'],
   ['rodAndBearings', 'Rod, crank and bearings'],
-  ['pistonSet', 'Piston, rings and cylinder'],
   ['handlebarSet', 'Handlebar, levers and mounts'],
   ['engineMountPart', 'Engine mount'],
   ['shieldBolts', 'Shield bolts, clips and washers'],
@@ -51,8 +49,6 @@ const TOOLS: readonly WordRow[] = [
   ['cleanRag', 'Clean rag or paper'],
   ['softStick', 'Clean wooden stick or drinking straw'],
   ['oilGauge', 'Oil pressure gauge with adapter'],
-  ['tapeRule', 'Tape rule or string'],
-  ['warmBottle', 'Bottle of warm water'],
 ]
 
 /** Words this chapter needs beyond the first ones. Ids are unique over all kinds. */
