@@ -87,7 +87,7 @@ export const OIL_CHECKS: CheckItem[] = [
       oilInAirbox: [56, 38, 1, 2, 2, 1],
       twoStrokeOilFeed: [73, 6, 1, 1, 18, 1],
     },
-    otherwise: [94, 4, 0.8, 0.5, 0.5, 0.2],
+    otherwise: [94, 4, 1, 0.4, 0.4, 0.2],
     expected: [{ words: 'Dry, or a dusty film nowhere fresh.', source: PRACTICE }],
     passDoesNotProve: 'Wind blows oil upward: after a fast ride it is wet everywhere.',
     stopWhen: 'A hole, or oil on exhaust or brake: no start, no ride.',
