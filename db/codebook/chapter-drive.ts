@@ -18,6 +18,7 @@ import { GEAR_FAULTS } from './faults-drive-gears'
 import { STEERING_FAULTS } from './faults-drive-steering'
 import { TRACK_FAULTS } from './faults-drive-track'
 import { TYRE_FAULTS } from './faults-drive-tyres'
+import { DRIVE_ROWS } from './rows-drive'
 import { DRIVE_SETUPS } from './setups-drive'
 import { DRIVE_SHARES } from './shares-drive'
 import { CHASSIS_SHARES } from './shares-drive-chassis'
@@ -65,7 +66,7 @@ export const DRIVE: Chapter = {
   swaps: DRIVE_SWAPS,
   setups: DRIVE_SETUPS,
   words: DRIVE_WORDS,
-  rows: {},
+  rows: DRIVE_ROWS,
   swapRows: {},
   unseparated: [],
 }
