@@ -249,6 +249,7 @@ export const CHAIN_CHECKS: CheckItem[] = [
     setups: ['endRaised'],
     tools: ['guardedStandTool'],
     steps: [
+      'No clutch lever on this machine: skip this check.',
       ['Driven end up on the guarded stand, strapped.', ON_STAND],
       ['Start it, let it warm. Rear brake on hard and held on.', STAND_JUMPS],
       ['Fourth gear in. A little gas. Let the lever out smoothly.', TURNING_DRIVE],

@@ -1,5 +1,6 @@
 import type { CheckItem } from '@/lib/model/code-book'
-import { IT_ROLLS, KEY_OUT, ON_STAND, PINCH_TRACK } from './cautions-drive'
+import { VAPOUR } from './cautions'
+import { KEY_OUT, ON_STAND, PINCH_TRACK } from './cautions-drive'
 import { check } from './draft'
 import { SLED } from './gates-drive'
 
@@ -163,7 +164,7 @@ export const TRACK_CHECKS: CheckItem[] = [
     minutes: 15,
     tools: ['warmWater'],
     steps: [
-      ['Key out. Tip it on its side, clutch side up if you can. Fuel cap tight.', IT_ROLLS],
+      ['Key out. Fuel cap tight. Tip it onto the side that the spec sheet allows.', VAPOUR],
       'Knock ice off wheels, rails and tunnel with a stick. Not with steel.',
       'Warm water on what stays. Not boiling, not on a hot brake.',
       ['Pull the track by hand to and fro until it turns.', PINCH_TRACK],
@@ -172,6 +173,7 @@ export const TRACK_CHECKS: CheckItem[] = [
     mayMoveMachine: true,
     cautions: [
       PINCH_TRACK,
+      VAPOUR,
       {
         signal: 'WARNING',
         text: 'A sled that slides or tips back pins legs. Two people, uphill side, brake on until it is to turn.',

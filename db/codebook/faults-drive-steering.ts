@@ -240,7 +240,8 @@ export const STEERING_FAULTS: FaultData[] = [
       successOf100: 75,
     },
     onset: 'Knocks when braking in front; catches in the middle.',
-    wayOut: 'limpOut',
+    wayOut: 'repairHere',
+    limpRefused: LOOSE_NO_RIDE,
     provedBy: 'No knock with the front brake on, no catch in the middle.',
   }),
   fault({

@@ -97,7 +97,8 @@ export const TYRE_FAULTS: FaultData[] = [
       successOf100: 65,
     },
     onset: 'One hard edge; loses air again after each pumping.',
-    wayOut: 'limpOut',
+    wayOut: 'tow',
+    limpRefused: 'No ride on a rim that is cracked or does not hold its air.',
     provedBy: 'Bead tight all round, wheel runs true; then the proof run.',
   }),
   fault({
