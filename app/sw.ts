@@ -10,7 +10,8 @@ import {
 import { browserSyncPorts } from '@/lib/ports/sync-ports'
 import type { WorkerMessage } from '@/lib/sync/client/app-worker'
 import { SEND_TAG, sendInBackground } from '@/lib/sync/client/background'
-import { BookDb, fetchBook } from '@/lib/sync/client/book-store'
+import { type BookAsk, fetchBook } from '@/lib/sync/client/book-fetch'
+import { BookDb } from '@/lib/sync/client/book-store'
 import { currentPerson, DeviceDb } from '@/lib/sync/client/device-db'
 
 /**
@@ -85,7 +86,7 @@ serwist.addEventListeners()
 
 self.addEventListener('message', (event) => {
   const message = event.data as WorkerMessage | undefined
-  if (message?.type === 'book') event.waitUntil(loadBook(message.shopId))
+  if (message?.type === 'book') event.waitUntil(loadBook(message))
 })
 
 // Not waited for: a slow book must not hold up pages, nor a failing one the app's update.
@@ -99,10 +100,10 @@ self.addEventListener('sync', (event) => {
   if (event.tag === SEND_TAG) event.waitUntil(sendInBackground(browserSyncPorts))
 })
 
-async function loadBook(shopId: string): Promise<void> {
+async function loadBook(ask: BookAsk): Promise<void> {
   const db = new BookDb()
   try {
-    await fetchBook(db, browserSyncPorts.network, shopId)
+    await fetchBook(db, browserSyncPorts.network, ask)
   } finally {
     db.close()
   }
@@ -112,7 +113,7 @@ async function loadBookOfCurrent(): Promise<void> {
   const device = new DeviceDb()
   try {
     const person = await currentPerson(device)
-    if (person !== null) await loadBook(person.shopId)
+    if (person !== null) await loadBook({ shopId: person.shopId })
   } finally {
     device.close()
   }

@@ -1,10 +1,11 @@
 import { envPublic } from '@/lib/env-public'
 import type { Id } from '@/lib/model/id'
 import { SEND_TAG } from './background'
+import type { Needs } from './book-fetch'
 import { Cell } from './watch'
 
 /** What the page says to the service worker (app/sw.ts). */
-export type WorkerMessage = { type: 'SKIP_WAITING' } | { type: 'book'; shopId: Id }
+export type WorkerMessage = { type: 'SKIP_WAITING' } | { type: 'book'; shopId: Id; needs?: Needs }
 
 type SyncManager = { register(tag: string): Promise<void> }
 
@@ -52,9 +53,9 @@ export class AppWorker {
     this.#tell(this.#registration?.waiting, { type: 'SKIP_WAITING' })
   }
 
-  /** Has the worker look for a newer code book; false when there is no worker to do it. */
-  loadBook(shopId: Id): boolean {
-    return this.#tell(this.#registration?.active, { type: 'book', shopId })
+  /** Has the worker look for a newer code book and those needed; false when there is no worker to do it. */
+  loadBook(shopId: Id, needs: Needs): boolean {
+    return this.#tell(this.#registration?.active, { type: 'book', shopId, needs })
   }
 
   /** Has the browser wake the worker when there is signal, where it can (P20). */

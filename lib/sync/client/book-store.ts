@@ -2,96 +2,87 @@ import Dexie, { type Table } from 'dexie'
 import { type BookIndex, indexBook } from '@/lib/diag/book-index'
 import type { CodeBook } from '@/lib/model/code-book'
 import type { Id } from '@/lib/model/id'
-import type { Network } from '@/lib/ports/network'
 import { liveCell } from './live'
 import type { Indexed } from './phone-db'
 import type { BookView } from './views'
 import type { Watch } from './watch'
 
 /**
- * The code book on the phone (rule R24), one for each shop. A whole version is one record, so a newer
- * one takes its place in one write: the old one stays until the new one is read, checked and whole.
+ * The code book on the phone (rule R24), by shop. A whole version is one record, so a newer one comes in by one
+ * write: the old one stays until the new one is read, checked and whole, and after that for as long as an open
+ * job holds it. What fetches versions is `book-fetch.ts`, which pages load only where there is no worker.
  */
-export type BookRecord = {
+export type HeldVersion = {
   shopId: Id
   version: number
-  etag: string | null
-  /** The version as the shop serves it. */
+  /** SHA-256 of the canonical JSON of its items. */
+  hash: string
+  /** The version as the shop serves it whole. */
   text: string
 }
 
+/** The versions that open jobs of a person of this phone hold. */
+export type BookNeed = { shopId: Id; personId: Id; versions: number[] }
+
+/** What version 1 of the store held: the newest version alone. It is read until another one comes in. */
+type OldRecord = { shopId: Id; version: number; etag: string | null; text: string }
+
 export class BookDb extends Dexie {
-  declare book: Table<BookRecord, Id>
+  declare book: Table<OldRecord, Id>
+  declare held: Table<HeldVersion, [Id, number]>
+  declare need: Table<BookNeed, [Id, Id]>
 
   constructor(indexed: Indexed = {}) {
     super('farbench-book', { chromeTransactionDurability: 'strict', cache: 'disabled', ...indexed })
     this.version(1).stores({ book: 'shopId' })
+    this.version(2).stores({ held: '[shopId+version], shopId', need: '[shopId+personId], shopId' })
     this.on('versionchange', () => this.close({ disableAutoOpen: false }))
   }
 }
 
-/** How a look for a newer book ended. */
-export type BookFetch = 'new' | 'same' | 'notReached' | 'notWhole'
-
-/** Asks the shop for a newer code book and keeps it when it is whole. */
-export async function fetchBook(db: BookDb, network: Network, shopId: Id): Promise<BookFetch> {
-  const [held] = await db.book.where('shopId').equals(shopId).toArray()
-  const tag = held?.etag ?? null
-  const sent = await network.send({
-    method: 'GET',
-    path: '/api/codebook',
-    ...(tag === null ? {} : { headers: { 'if-none-match': tag } }),
-  })
-  if (!sent.ok) return 'notReached'
-  const { status, text, contentType, header } = sent.value
-  if (status === 304) return 'same'
-  if (status !== 200 || !contentType.includes('json')) return 'notReached'
-  const book = wholeBook(text)
-  if (book === null) return 'notWhole'
-  if (held !== undefined && held.version > book.version) return 'same'
-  await db.book.put({ shopId, version: book.version, etag: header('etag'), text })
-  return 'new'
+/** Every version held of a shop, the oldest first. */
+export async function heldVersions(db: BookDb, shopId: Id): Promise<HeldVersion[]> {
+  const held = await db.held.where('shopId').equals(shopId).toArray()
+  if (held.length > 0) return held.sort((a, b) => a.version - b.version)
+  const [old] = await db.book.where('shopId').equals(shopId).toArray()
+  if (old === undefined) return []
+  const { version, text } = old
+  return [{ shopId, version, hash: (JSON.parse(text) as CodeBook).hash, text }]
 }
 
-/** The book in a text; null when the text is cut or is something else. */
-function wholeBook(text: string): CodeBook | null {
-  let read: unknown
-  try {
-    read = JSON.parse(text)
-  } catch {
-    return null
-  }
-  if (typeof read !== 'object' || read === null) return null
-  const { version, items } = read as { version?: unknown; items?: unknown }
-  if (!Number.isInteger(version) || !Array.isArray(items) || items.length === 0) return null
-  return items.every(isItem) ? (read as CodeBook) : null
+const nothingOf = () => null
+const OPENING: BookView = {
+  status: 'opening',
+  index: null,
+  version: null,
+  versions: [],
+  of: nothingOf,
 }
+const MISSING: BookView = { ...OPENING, status: 'missing' }
 
-const isItem = (item: unknown): boolean =>
-  typeof item === 'object' &&
-  item !== null &&
-  typeof (item as { kind?: unknown }).kind === 'string' &&
-  typeof (item as { id?: unknown }).id === 'string'
-
-const OPENING: BookView = { status: 'opening', index: null, version: null }
-const MISSING: BookView = { status: 'missing', index: null, version: null }
-
-/** The book of a shop, indexed for the engine; read and indexed once for each version. */
+/** The books of a shop, indexed for the engine; each version is read and indexed once, when it is wanted. */
 export function watchBook(
   db: BookDb,
   shopId: Id,
   failed: (cause: unknown) => void,
 ): Watch<BookView> {
-  let last: { version: number; index: BookIndex } | null = null
-  return liveCell<BookRecord[], BookView>({
+  const indexes = new Map<string, BookIndex>()
+  return liveCell<HeldVersion[], BookView>({
     initial: OPENING,
-    read: () => db.book.where('shopId').equals(shopId).toArray(),
-    open: ([held]) => {
-      if (held === undefined) return MISSING
-      if (last?.version !== held.version) {
-        last = { version: held.version, index: indexBook(JSON.parse(held.text) as CodeBook) }
+    read: () => heldVersions(db, shopId),
+    open: (held) => {
+      const newest = held.at(-1)
+      if (newest === undefined) return MISSING
+      const of = (version: number): BookIndex | null => {
+        const one = held.find((other) => other.version === version)
+        if (one === undefined) return null
+        const key = `${one.version} ${one.hash}`
+        const index = indexes.get(key) ?? indexBook(JSON.parse(one.text) as CodeBook)
+        indexes.set(key, index)
+        return index
       }
-      return { status: 'ready', index: last.index, version: last.version }
+      const versions = held.map(({ version }) => version)
+      return { status: 'ready', index: of(newest.version), version: newest.version, versions, of }
     },
     failed,
   })

@@ -1,10 +1,9 @@
 import { guideSafeOf } from '@/lib/diag/book-index'
-import type { Id } from '@/lib/model/id'
 import type { Actor } from '@/lib/model/person'
 import { AppError, fail } from '@/lib/model/result'
 import type { SyncPorts } from '@/lib/ports/sync-ports'
 import { AppWorker } from './app-worker'
-import { BookDb, fetchBook, watchBook } from './book-store'
+import { Books } from './books'
 import { listenToBrowser } from './browser-events'
 import {
   currentPerson,
@@ -22,16 +21,11 @@ import { type Indexed, readMeta } from './phone-db'
 import type { Cause } from './phone-sender'
 import { endSession } from './sign-out'
 import type { BookView, Session } from './views'
-import { Cell, LiveCell } from './watch'
+import { Cell, type Watch } from './watch'
 import { beginWipe, resumeWipes, type WipeTools } from './wipe'
 
 /** How long an app that could open from what it holds waits for the shop's word on who is at work. */
 const PATIENCE_MS = 400
-/** A code book that is held is asked after no more often than this (a choice). */
-const BOOK_EVERY_MS = 10 * 60 * 1000
-
-const NO_BOOK_YET: BookView = { status: 'opening', index: null, version: null }
-
 /** The field app's store: who is at work, their open phone store, the code book, the service worker. */
 export class FieldStore {
   readonly ports: SyncPorts
@@ -40,22 +34,22 @@ export class FieldStore {
   readonly worker = new AppWorker()
   /** `blocked`: another window keeps the store from opening. `lost`: load the page again (P25). */
   readonly trouble = new Cell<'none' | 'blocked' | 'lost'>('none')
-  readonly book: LiveCell<BookView>
+  readonly book: Watch<BookView>
   readonly #indexed: Indexed
   readonly #device: DeviceDb
-  readonly #books: BookDb
+  readonly #books: Books
   readonly #wiping: WipeTools
   #opening: Promise<void> | null = null
-  #bookAskedMs = Number.NEGATIVE_INFINITY
 
   /** `step` is called with the name of each step of emptying a store; tests let it throw. */
   constructor(ports: SyncPorts, indexed: Indexed = {}, step: (name: string) => void = none) {
     this.ports = ports
     this.#indexed = indexed
     this.#device = new DeviceDb(indexed)
-    this.#books = new BookDb(indexed)
     this.#wiping = { device: this.#device, ports, indexed, step }
-    this.book = new LiveCell(NO_BOOK_YET, (emit) => this.#followBook(emit))
+    const { phone, worker } = this
+    this.#books = new Books({ ports, indexed, worker, phone, failed: report })
+    this.book = this.#books.view
   }
 
   /** Opens what the phone holds and listens to the browser; answers the way to stop listening. */
@@ -63,8 +57,8 @@ export class FieldStore {
     const ends = [this.book.subscribe(() => undefined), this.#listen()]
     this.#open('open')
     this.worker.register().then(
-      () => this.#askForBook(true),
-      () => this.#askForBook(true),
+      () => this.#books.ask(true),
+      () => this.#books.ask(true),
     )
     return () => {
       for (const end of ends) end()
@@ -145,7 +139,7 @@ export class FieldStore {
   #open(cause: Cause): void {
     if (this.phone.get() !== null) {
       this.phone.get()?.sender.poke(cause)
-      this.#askForBook(false)
+      this.#books.ask(false)
       return
     }
     this.#opening ??= this.#findWho()
@@ -193,7 +187,7 @@ export class FieldStore {
       actor,
       ports: this.ports,
       indexed: this.#indexed,
-      onBook: () => this.#askForBook(true),
+      onBook: () => this.#books.ask(true),
       guideSafe: () => guideSafeOf(this.book.get().index),
       failed: (cause) => this.#failed(this.phone.get(), cause),
       onWipe: (wiped) => this.#empty(wiped),
@@ -220,7 +214,7 @@ export class FieldStore {
     this.session.set({ kind: 'ready', actor, shopId: actor.shopId, deviceId })
     phone.sender.poke('open')
     phone.room.watch(this.ports.timer, report)
-    this.#askForBook(true)
+    this.#books.ask(true)
   }
 
   /** Takes down who is at work; without room for it a phone that knows them already opens all the same. */
@@ -244,35 +238,8 @@ export class FieldStore {
     })
   }
 
-  #followBook(emit: (view: BookView) => void): () => void {
-    let leave: () => void = () => undefined
-    const follow = () => {
-      leave()
-      leave = () => undefined
-      const phone = this.phone.get()
-      if (phone === null) return
-      const book = watchBook(this.#books, phone.actor.shopId, report)
-      leave = book.subscribe(() => emit(book.get()))
-    }
-    const end = this.phone.subscribe(follow)
-    follow()
-    return () => {
-      end()
-      leave()
-    }
-  }
-
-  /** Has the code book looked after, by the worker where there is one. */
-  #askForBook(now: boolean): void {
-    const shopId: Id | undefined = this.phone.get()?.actor.shopId
-    const isHeld = this.book.get().status === 'ready'
-    const sinceMs = this.ports.clock.now() - this.#bookAskedMs
-    if (shopId === undefined || (!now && isHeld && sinceMs < BOOK_EVERY_MS)) return
-    this.#bookAskedMs = this.ports.clock.now()
-    if (!this.worker.loadBook(shopId)) {
-      fetchBook(this.#books, this.ports.network, shopId).catch(() => undefined)
-    }
-  }
+  /** Has the code books looked after now: a job holds one that this phone has not. */
+  readonly askForBook = (): void => this.#books.ask(true)
 
   #listen(): () => void {
     return listenToBrowser({

@@ -22,11 +22,14 @@ export type StoredEntry = { entry: LogEntry; sent: boolean; order: number | null
  */
 export type PhotoView = { url: string | null; thumb: string | null; onPhone: boolean }
 
-/** The code book this phone works with. */
+/** The code books of this phone: the newest one, and which others are held for open jobs. */
 export type BookView = {
   status: 'opening' | 'missing' | 'ready'
   index: BookIndex | null
   version: number | null
+  versions: readonly number[]
+  /** One that is held, indexed; null for any other. */
+  of: (version: number) => BookIndex | null
 }
 
 /** The bytes of a photo or a voice note to keep with an entry, and the small copy of a picture. */

@@ -99,7 +99,7 @@ async function emptyStore(tools: WipeTools, wipe: WipeRecord): Promise<void> {
   step('wipe:keepsake')
   await dropPerson(device, wipe)
   step('wipe:person')
-  if ((await knownPersons(device)).length === 0) await dropBook(indexed)
+  await dropBook(indexed, (await knownPersons(device)).length === 0 ? null : wipe)
   step('wipe:book')
   await finishWipe(device, wipe, ports.clock.now())
   step('wipe:done')
@@ -114,10 +114,12 @@ function forget({ ports }: WipeTools, wipe: WipeRecord): void {
   keep(keeper, wipe.deviceId, stays ? { ...held, deleted: wipe.unsent } : null)
 }
 
-async function dropBook(indexed: Indexed): Promise<void> {
+/** The code books go with the last person (null); with another one, what that person's jobs held them for. */
+async function dropBook(indexed: Indexed, left: WipeRecord | null): Promise<void> {
   const books = new BookDb(indexed)
   try {
-    await books.book.clear()
+    if (left === null) await Promise.all(books.tables.map((table) => table.clear()))
+    else await books.need.delete([left.shopId, left.personId])
   } finally {
     books.close()
   }

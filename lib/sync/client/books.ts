@@ -1,0 +1,82 @@
+import type { SyncPorts } from '@/lib/ports/sync-ports'
+import type { AppWorker } from './app-worker'
+import { BookDb, watchBook } from './book-store'
+import type { Phone } from './phone'
+import type { Indexed } from './phone-db'
+import type { BookView } from './views'
+import { type Cell, LiveCell } from './watch'
+
+/** A code book that is held is asked after no more often than this (a choice). */
+const BOOK_EVERY_MS = 10 * 60 * 1000
+
+const NO_BOOK_YET: BookView = {
+  status: 'opening',
+  index: null,
+  version: null,
+  versions: [],
+  of: () => null,
+}
+
+/** The code books of who is at work: what is held, and when the shop is asked for more. */
+export class Books {
+  readonly view: LiveCell<BookView>
+  readonly #db: BookDb
+  readonly #ports: Pick<SyncPorts, 'clock' | 'network'>
+  readonly #worker: Pick<AppWorker, 'loadBook'>
+  readonly #phone: Cell<Phone | null>
+  readonly #failed: (cause: unknown) => void
+  #askedMs = Number.NEGATIVE_INFINITY
+
+  constructor(of: {
+    ports: Pick<SyncPorts, 'clock' | 'network'>
+    indexed: Indexed
+    worker: Pick<AppWorker, 'loadBook'>
+    phone: Cell<Phone | null>
+    failed: (cause: unknown) => void
+  }) {
+    this.#db = new BookDb(of.indexed)
+    this.#ports = of.ports
+    this.#worker = of.worker
+    this.#phone = of.phone
+    this.#failed = of.failed
+    this.view = new LiveCell(NO_BOOK_YET, (emit) => this.#follow(emit))
+  }
+
+  #follow(emit: (view: BookView) => void): () => void {
+    let leave: () => void = () => undefined
+    const follow = () => {
+      leave()
+      leave = () => undefined
+      const phone = this.#phone.get()
+      if (phone === null) return
+      const book = watchBook(this.#db, phone.actor.shopId, this.#failed)
+      leave = book.subscribe(() => emit(book.get()))
+    }
+    const end = this.#phone.subscribe(follow)
+    follow()
+    return () => {
+      end()
+      leave()
+    }
+  }
+
+  /** Has the code books looked after; unless `now`, only when none is held or it is a while since. */
+  ask(now: boolean): void {
+    const phone = this.#phone.get()
+    const isHeld = this.view.get().status === 'ready'
+    const sinceMs = this.#ports.clock.now() - this.#askedMs
+    if (phone === null || (!now && isHeld && sinceMs < BOOK_EVERY_MS)) return
+    this.#askedMs = this.#ports.clock.now()
+    this.#lookAfter(phone).catch(() => undefined)
+  }
+
+  /** By the worker where there is one. What does it here is fetched only where there is none. */
+  async #lookAfter(phone: Phone): Promise<void> {
+    const { neededBooks } = await import('./book-needs')
+    const { shopId } = phone.actor
+    const needs = await neededBooks(phone.core, this.view.get().version)
+    if (this.#worker.loadBook(shopId, needs)) return
+    const { fetchBook } = await import('./book-fetch')
+    await fetchBook(this.#db, this.#ports.network, { shopId, needs })
+  }
+}
