@@ -9,7 +9,8 @@ export const RUN_DASH_CHECKS: CheckItem[] = [
   check({
     id: 'dashAtKeyOn',
     name: 'Dash at key on',
-    purpose: 'Shows in a moment whether the machine has power and its modules talk.',
+    purpose:
+      'Shows in a moment whether the machine has power, its modules talk and it knows its key.',
     gate: { battery: ['yes'] },
     guideSafe: true,
     light: 'any',
@@ -20,11 +21,12 @@ export const RUN_DASH_CHECKS: CheckItem[] = [
       'Does the dash light up fully, all lamps for a moment, needles sweep?',
       'Put the lights on. Do they dim the dash?',
       'Turn the bars from lock to lock. Does anything flicker?',
+      'Does a key, lock, fall or engine sign stay lit or blink?',
     ],
-    record: 'Normal, dim, flickers, dashes in place of figures, or dark; photo.',
+    record: 'Normal, dim, flickers, dashes for figures, which sign stayed, or dark; photo.',
     outcomes: [
       ['normal', 'Lights up as always, steady'],
-      ['odd', 'Dim, flickers, or dashes in place of figures'],
+      ['odd', 'Dim, flickers, dashes for figures, or a sign stays'],
       ['dark', 'Dark'],
     ],
     table: {
@@ -35,7 +37,9 @@ export const RUN_DASH_CHECKS: CheckItem[] = [
       groundPoor: [54, 38, 8],
       networkFault: [40, 54, 6],
       controlModuleFault: [54, 34, 12],
-      sensorSupplyDown: [80, 18, 2],
+      sensorSupplyDown: [62, 36, 2],
+      securityRefuses: [40, 57, 3],
+      tipOverTripped: [74, 25, 1],
     },
     otherwise: [94, 5, 1],
     expected: [{ words: 'Full light, lamp test, steady with the lights on.', source: PRACTICE }],

@@ -1,5 +1,7 @@
 import type { SymptomItem } from '@/lib/model/code-book'
+import { VAPOUR } from './cautions'
 import { OWN_WORDS } from './sources'
+import { DIES_WHEN } from './symptoms-dies-when'
 
 /** The complaint of the first chapter. `twoWrongOf100` is m of rule R5: practice where nobody knows. */
 export const DIES_SYMPTOMS: SymptomItem[] = [
@@ -27,20 +29,17 @@ export const DIES_SYMPTOMS: SymptomItem[] = [
       'catches and dies',
       'dies when I let go of the starter',
     ],
-    conditions: [
-      { id: 'afterSeconds', name: 'After one to three seconds', tells: null },
-      { id: 'afterMinutes', name: 'After some minutes', tells: null },
-      { id: 'whenCold', name: 'When cold', tells: null },
-      { id: 'whenHot', name: 'When hot', tells: null },
-      { id: 'whenWet', name: 'When wet', tells: null },
-      { id: 'whenLeaning', name: 'When leaning or on a slope', tells: null },
-      { id: 'always', name: 'Every time', tells: null },
-      { id: 'nowAndThen', name: 'Now and then', tells: null },
-    ],
+    conditions: DIES_WHEN,
     opens: 'suspects',
-    cautions: [],
-    firstLook: [],
+    cautions: [
+      VAPOUR,
+      {
+        signal: 'WARNING',
+        text: 'It may start and pull away: neutral proved by pushing, brake on, nobody in front.',
+      },
+    ],
+    firstLook: ['fuelLevelTap', 'pumpPrimeListen', 'chokePosition', 'intakeIceLook', 'exhaustLook'],
     twoWrongOf100: 5,
-    source: `${OWN_WORDS}; two things wrong in 5 of 100 where nobody knows (common practice, no source)`,
+    source: `${OWN_WORDS}; two things wrong in 5 of 100 where nobody knows and figures of "when" (common practice, no source)`,
   },
 ]

@@ -2,7 +2,7 @@ import type { SymptomItem } from '@/lib/model/code-book'
 import { VAPOUR } from './cautions'
 import { BACKFIRE_BURNS } from './cautions-run'
 import { OWN_WORDS } from './sources'
-import { told } from './symptoms-run-told'
+import { told } from './told'
 
 /** Burns where it should not. */
 export const BACKFIRES: SymptomItem = {

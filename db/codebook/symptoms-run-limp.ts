@@ -1,7 +1,7 @@
 import type { SymptomItem } from '@/lib/model/code-book'
 import { LIMITED } from './cautions-run'
 import { OWN_WORDS } from './sources'
-import { told } from './symptoms-run-told'
+import { told } from './told'
 
 /** The module holds the engine back. */
 export const LIMP_MODE: SymptomItem = {

@@ -2,7 +2,7 @@ import type { SymptomItem } from '@/lib/model/code-book'
 import { MOVES, VAPOUR } from './cautions'
 import { NO_MORE_STARTS } from './cautions-run'
 import { OWN_WORDS } from './sources'
-import { told } from './symptoms-run-told'
+import { told } from './told'
 
 /** Turns at its usual speed or nearly so, and does not catch. */
 export const CRANKS_NO_START: SymptomItem = {
@@ -32,30 +32,47 @@ export const CRANKS_NO_START: SymptomItem = {
     'dead on the trail but it cranks',
   ],
   conditions: [
-    told('quitOnRide', 'Ran well, then quit on the ride', 42, {
-      fuelOutOrShut: 70,
-      fuelPumpDead: 60,
-      fuelPumpRelay: 60,
-      fuelPumpWiring: 62,
-      tipOverTripped: 55,
-      stopCircuitFault: 48,
-      crankSensorPart: 65,
-      crankSensorWiring: 60,
-      ignitionCoilWiring: 58,
-      mainRelayFault: 60,
+    told('cutDead', 'Quit on the ride, as if switched off', 6, {
       keySwitchHarness: 60,
-      camTimingSlipped: 60,
-      triggerWheelSlipped: 52,
-      cylinderFlooded: 8,
-      chokeWrong: 4,
-      fuelStale: 10,
-      jetsBlocked: 10,
-      batteryLow: 10,
-      securityRefuses: 5,
+      crankSensorPart: 60,
+      crankSensorWiring: 58,
+      tipOverTripped: 56,
+      mainRelayFault: 56,
+      ignitionCoilWiring: 52,
+      ignitionCoilSupply: 50,
+      stopCircuitFault: 48,
+      sensorSupplyDown: 44,
+      ignitionCoilPart: 42,
+      camTimingSlipped: 44,
+      triggerWheelSlipped: 40,
+      ignitionCoilDriver: 40,
+      fuelPumpRelay: 36,
+      fuelPumpWiring: 32,
+      fuelPumpDead: 26,
+      fuelOutOrShut: 8,
+      lowCompression: 10,
+      fuelStale: 2,
+      jetsBlocked: 2,
+      chokeWrong: 1,
+      cylinderFlooded: 2,
+      batteryLow: 3,
+      securityRefuses: 3,
+    }),
+    told('fadedOut', 'Quit on the ride after it stumbled or faded', 4, {
+      fuelOutOrShut: 62,
+      pulsePumpWeak: 50,
+      fuelFilterBlocked: 60,
+      fuelLineIce: 36,
+      fuelPumpDead: 34,
+      lowCompression: 30,
+      fuelPumpWiring: 24,
+      fuelPumpRelay: 20,
+      coilOutputLeaks: 20,
+      sparkPlugBad: 16,
+      camTimingSlipped: 12,
       valveTight: 14,
-      floatNeedleStuck: 18,
-      sparkPlugBad: 20,
-      injectorLeaking: 14,
+      jetsBlocked: 10,
+      fuelStale: 9,
     }),
     told('afterStanding', 'Has stood for weeks', 7, {
       fuelStale: 80,
@@ -223,7 +240,7 @@ export const CRANKS_NO_START: SymptomItem = {
     MOVES,
     NO_MORE_STARTS,
   ],
-  firstLook: ['stopSwitchLook', 'fuelLevelTap', 'pumpPrimeListen', 'chokePosition', 'tipOverLook'],
+  firstLook: ['stopSwitchLook', 'fuelLevelTap', 'pumpPrimeListen', 'chokePosition', 'dashAtKeyOn'],
   twoWrongOf100: 7,
   source: `${OWN_WORDS}; figures of "when" are guesses`,
 }

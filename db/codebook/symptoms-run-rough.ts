@@ -1,7 +1,7 @@
 import type { SymptomItem } from '@/lib/model/code-book'
 import { VAPOUR } from './cautions'
 import { OWN_WORDS } from './sources'
-import { told } from './symptoms-run-told'
+import { told } from './told'
 
 /** Keeps running, and badly. */
 export const RUNS_ROUGH: SymptomItem = {
@@ -33,7 +33,7 @@ export const RUNS_ROUGH: SymptomItem = {
     'smokes black and stumbles',
   ],
   conditions: [
-    told('atIdle', 'At idle or with the throttle almost shut', 24, {
+    told('atIdle', 'At idle or with the throttle almost shut', 14, {
       idleAirStuck: 76,
       jetsBlocked: 60,
       intakeLeak: 60,
@@ -53,7 +53,7 @@ export const RUNS_ROUGH: SymptomItem = {
       ignitionCoilSupply: 10,
       powerValveStuck: 12,
     }),
-    told('underLoad', 'Only when it pulls hard or wide open', 20, {
+    told('underLoad', 'Only when it pulls hard or wide open', 13, {
       fuelFilterBlocked: 72,
       fuelPumpWeak: 72,
       powerValveStuck: 70,
@@ -175,7 +175,7 @@ export const RUNS_ROUGH: SymptomItem = {
       fuelFilterBlocked: 24,
       tankVentBlocked: 8,
     }),
-    told('overWeeks', 'Got worse over weeks', 12, {
+    told('overWeeks', 'Got worse over weeks', 7, {
       lowCompression: 66,
       powerValveStuck: 60,
       valveTight: 55,
@@ -195,7 +195,7 @@ export const RUNS_ROUGH: SymptomItem = {
       airFilterBlocked: 56,
       lowCompression: 12,
     }),
-    told('lampOn', 'The engine lamp is on', 7, {
+    told('lampOn', 'The engine lamp is on', 5, {
       sensorSupplyDown: 86,
       mapSensorBad: 76,
       throttleSensorBad: 76,
@@ -225,7 +225,7 @@ export const RUNS_ROUGH: SymptomItem = {
     },
     VAPOUR,
   ],
-  firstLook: ['plugCapsTight', 'intakeBootFeel', 'storedCodes', 'chokePosition', 'intakeIceLook'],
+  firstLook: ['tailpipeColour', 'plugCapsTight', 'intakeBootFeel', 'storedCodes', 'intakeIceLook'],
   twoWrongOf100: 8,
   source: `${OWN_WORDS}; figures of "when" are guesses`,
 }
