@@ -48,29 +48,54 @@ export type Assembled = {
   unseparated: Unseparated[]
 }
 
-/** The chapters put together: every check and swap with the rows that later chapters give it. */
+/**
+ * The chapters put together: every check and swap with the rows that later chapters give it. Throws where a list of
+ * shares does not make 100, and where rows are given to a check or swap that no chapter has.
+ */
 export function assemble(chapters: readonly Chapter[]): Assembled {
   const all = <T>(of: (chapter: Chapter) => readonly T[]): T[] =>
     chapters.flatMap((c) => [...of(c)])
+  const [checks, swaps] = [all((c) => c.checks), all((c) => c.swaps)]
+  mustFind(
+    checks,
+    all((c) => Object.keys(c.rows)),
+  )
+  mustFind(
+    swaps,
+    all((c) => Object.keys(c.swapRows)),
+  )
+  const shares = all((c) => c.shares)
+  shares.forEach(mustMake100)
   const rowsFor = (id: string) => chapters.flatMap((c) => Object.entries(c.rows[id] ?? {}))
   const swapRowsFor = (id: string) => chapters.flatMap((c) => Object.entries(c.swapRows[id] ?? {}))
   return {
     symptoms: all((c) => c.symptoms),
     faults: all((c) => c.faults),
-    checks: all((c) => c.checks).map((check) => ({
+    checks: checks.map((check) => ({
       ...check,
       table: { ...check.table, ...mutable(rowsFor(check.id)) },
     })),
-    swaps: all((c) => c.swaps).map((swap) => ({
+    swaps: swaps.map((swap) => ({
       ...swap,
       table: { ...swap.table, ...Object.fromEntries(swapRowsFor(swap.id)) },
     })),
     setups: all((c) => c.setups),
     words: all((c) => c.words),
-    shares: all((c) => c.shares),
+    shares,
     unseparated: all((c) => c.unseparated),
   }
 }
 
 const mutable = (rows: readonly (readonly [string, readonly number[]])[]) =>
   Object.fromEntries(rows.map(([fault, row]) => [fault, [...row]]))
+
+function mustFind(actions: readonly { id: string }[], named: readonly string[]): void {
+  const lost = named.filter((id) => !actions.some((action) => action.id === id))
+  if (lost.length > 0) throw new Error(`rows for what no chapter has: ${lost.join(', ')}`)
+}
+
+function mustMake100({ symptom, gate, somethingElse, of100 }: ShareList): void {
+  const sum = Object.values(of100).reduce((total, share) => total + share, somethingElse)
+  if (Math.abs(sum - 100) > 1e-9)
+    throw new Error(`${symptom} ${JSON.stringify(gate)} makes ${sum} of 100`)
+}

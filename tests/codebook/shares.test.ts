@@ -1,21 +1,43 @@
 import { expect, test } from 'vitest'
 import { BOOK_ITEMS } from '@/db/codebook/book'
+import { assemble, type Chapter } from '@/db/codebook/chapter'
 import { DEMO_MODELS } from '@/db/codebook/demo-models'
-import { DIES_SHARES } from '@/db/codebook/shares-dies'
 import type { FaultItem } from '@/lib/model/code-book'
 
 const faults = BOOK_ITEMS.filter((i): i is FaultItem => i.kind === 'fault')
 
-test('[CB9] each list of shares and its something else add to 100', () => {
-  for (const { of100, somethingElse } of DIES_SHARES) {
-    const listed = Object.values(of100).reduce((sum, share) => sum + share, 0)
-    expect(listed + somethingElse).toBeCloseTo(100, 9)
-  }
+/** A chapter with nothing in it but what is given. */
+const chapter = (over: Partial<Chapter>): Chapter => ({
+  symptoms: [],
+  faults: [],
+  shares: [],
+  checks: [],
+  swaps: [],
+  setups: [],
+  words: [],
+  rows: {},
+  swapRows: {},
+  unseparated: [],
+  ...over,
 })
 
-test('[CB9] every share has its fault and every fault its shares', () => {
-  const listed = DIES_SHARES.flatMap(({ of100 }) => Object.keys(of100))
-  expect([...new Set(listed)].sort()).toEqual(faults.map((f) => f.id).sort())
+test('[CB9] a list of shares and its something else make 100, or no book is made', () => {
+  const list = { symptom: 'startsThenDies', gate: {}, of100: { fuelStale: 60, batteryLow: 30 } }
+  expect(() => assemble([chapter({ shares: [{ ...list, somethingElse: 9 }] })])).toThrow(
+    'startsThenDies {} makes 99 of 100',
+  )
+  const { shares } = assemble([chapter({ shares: [{ ...list, somethingElse: 10 }] })])
+  expect(shares).toHaveLength(1)
+})
+
+test('[CB3] rows for a check that no chapter has make no book', () => {
+  const rows = { lookHard: { fuelStale: [10, 90] } }
+  expect(() => assemble([chapter({ rows })])).toThrow('rows for what no chapter has: lookHard')
+  expect(() => assemble([chapter({ swapRows: { swapHard: {} } })])).toThrow('swapHard')
+})
+
+test('[CB9] every fault of the book has a share of some complaint', () => {
+  expect(faults.filter((f) => f.shares.length === 0)).toEqual([])
 })
 
 test('[R4] the list of the demo ATV holds no carburettor, two-stroke or snowmobile fault', () => {
