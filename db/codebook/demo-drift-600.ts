@@ -1,5 +1,6 @@
 import type { MachineModel } from '@/lib/model/machine-model'
 import { DRIFT_600_COMPONENTS } from './demo-drift-600-components'
+import { DRIFT_600_MACHINE } from './demo-drift-600-machine'
 import { type DemoPart, page, SHOP_FIGURE } from './demo-figures'
 
 /** The parts the demo shop buys for this model; numbers, prices and failure shares are invented. */
@@ -133,7 +134,7 @@ export const DRIFT_600: MachineModel = {
       ],
       source: page(61),
     },
-    components: DRIFT_600_COMPONENTS,
+    components: [...DRIFT_600_COMPONENTS, ...DRIFT_600_MACHINE],
     cutOut: 'opensToStop',
     engagementRpm: 3600,
     massKg: 238,

@@ -1,6 +1,7 @@
 import type { MachineModel } from '@/lib/model/machine-model'
 import { page } from './demo-figures'
 import { MOOR_450_AIR } from './demo-moor-450-air'
+import { MOOR_450_DRIVE } from './demo-moor-450-drive'
 import { MOOR_450_ELECTRICS } from './demo-moor-450-electrics'
 import { MOOR_450_FUEL } from './demo-moor-450-fuel'
 import { MOOR_450_PARTS } from './demo-moor-450-parts'
@@ -44,7 +45,7 @@ export const MOOR_450: MachineModel = {
       ],
       source: page(88),
     },
-    components: [...MOOR_450_FUEL, ...MOOR_450_AIR, ...MOOR_450_ELECTRICS],
+    components: [...MOOR_450_FUEL, ...MOOR_450_AIR, ...MOOR_450_ELECTRICS, ...MOOR_450_DRIVE],
     cutOut: 'opensToStop',
     engagementRpm: 1900,
     massKg: 296,

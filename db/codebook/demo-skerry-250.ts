@@ -1,5 +1,6 @@
 import type { MachineModel } from '@/lib/model/machine-model'
 import { type DemoPart, page, SHOP_FIGURE } from './demo-figures'
+import { SKERRY_250_CHASSIS } from './demo-skerry-250-chassis'
 import { SKERRY_250_COMPONENTS } from './demo-skerry-250-components'
 
 /** The parts the demo shop buys for this model; numbers, prices and failure shares are invented. */
@@ -93,7 +94,7 @@ export const SKERRY_250: MachineModel = {
       clearSteps: ['Nothing to clear.'],
       source: page(4),
     },
-    components: SKERRY_250_COMPONENTS,
+    components: [...SKERRY_250_COMPONENTS, ...SKERRY_250_CHASSIS],
     cutOut: 'closesToStop',
     engagementRpm: null,
     massKg: 104,
