@@ -167,7 +167,7 @@ export const LIST_BREAKS: Break[] = [
     'reading',
     /coilPrimaryResistance/,
     (b) => {
-      b.item('check', 'coilPrimaryResistance').reading!.value = 'secondaryResistance'
+      b.item('check', 'coilPrimaryResistance').reading!.value = 'resistanceOfNobody'
     },
   ],
   [

@@ -1,6 +1,8 @@
-import { BOOK_ITEMS } from '@/db/codebook/book'
 import type { BookProblemKind } from '@/db/codebook/book-problem'
+import { assemble } from '@/db/codebook/chapter'
+import { DIES } from '@/db/codebook/chapter-dies'
 import { DEMO_MODELS } from '@/db/codebook/demo-models'
+import { itemsOf } from '@/db/codebook/items'
 import type { CodeBookItem } from '@/lib/model/code-book'
 
 type Kind = CodeBookItem['kind']
@@ -11,9 +13,11 @@ export type Book = {
   item: <K extends Kind>(kind: K, id: string) => Of<K>
 }
 
-/** The real book, free to be broken. */
+const FIRST = itemsOf(assemble([DIES]))
+
+/** The first chapter as a book, free to be broken. */
 export function copyBook(): Book {
-  const items = structuredClone(BOOK_ITEMS)
+  const items = structuredClone(FIRST)
   return {
     items,
     models: structuredClone(DEMO_MODELS),
