@@ -55,8 +55,6 @@ const onTheRail = oneOf(
   'gripSensor',
   'airTempSensor',
   'oilPressure',
-  'oilTemp',
-  'ambientTemp',
 )
 const railGroups = oneOf('air', 'oil', 'cooling')
 /** Coils, injectors, motors and relays: they live on the battery's volts. */
@@ -69,7 +67,7 @@ const runOnSupply = oneOf(
   'starterCircuit',
   'fanControl',
   'fourWheelActuator',
-  'steeringAssist',
+  'steeringAssistMotor',
 )
 const fedBySupply = (circuit: string | null): boolean =>
   runOnSupply(circuit) || (circuit !== null && /^(ignitionCoil|injector)\d$/.test(circuit))
