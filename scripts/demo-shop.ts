@@ -57,6 +57,15 @@ export const UNITS = [
   { id: demoId('302'), unitNumber: '11', modelId: demoId('201'), year: 2022, hours: 655 },
   { id: demoId('303'), unitNumber: '22', modelId: demoId('202'), year: 2024, hours: 188 },
   { id: demoId('304'), unitNumber: '31', modelId: demoId('203'), year: 2021, hours: 97 },
+  { id: demoId('305'), unitNumber: '41', modelId: demoId('204'), year: 2024, hours: 233 },
+  { id: demoId('306'), unitNumber: '42', modelId: demoId('204'), year: 2022, hours: 871 },
+  { id: demoId('307'), unitNumber: '23', modelId: demoId('205'), year: 2016, hours: 540 },
+  { id: demoId('308'), unitNumber: '32', modelId: demoId('206'), year: 2020, hours: 310 },
+  { id: demoId('309'), unitNumber: '24', modelId: demoId('207'), year: 2025, hours: 64 },
+  { id: demoId('310'), unitNumber: '16', modelId: demoId('208'), year: 2018, hours: 1240 },
+  { id: demoId('311'), unitNumber: '17', modelId: demoId('208'), year: 2019, hours: 980 },
+  { id: demoId('312'), unitNumber: '33', modelId: demoId('209'), year: 2023, hours: 121 },
+  { id: demoId('313'), unitNumber: '51', modelId: demoId('210'), year: 2021, hours: 402 },
 ] as const
 
 /** Hand-held meter with plain leads; accuracy as a typical data sheet states it, invented. */

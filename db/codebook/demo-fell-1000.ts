@@ -30,7 +30,7 @@ const PARTS = demoParts([
   ['wheelBearingSet', ['TF-1000-311', 7400, 1], ['AX-3111', 3600, 6]],
 ])
 
-/** Unit 41 of the demo fleet: a side-by-side, two cylinders, electronic throttle. Maker, model and every figure are invented. */
+/** Units 41 and 42 of the demo fleet: a side-by-side, two cylinders, electronic throttle. Maker, model and every figure are invented. */
 export const FELL_1000: MachineModel = {
   id: '01980000-0000-7000-8000-000000000204',
   maker: 'Tarnholt',

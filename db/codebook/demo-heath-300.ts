@@ -236,7 +236,7 @@ const PARTS = demoParts([
   ['fourWheelUnit', ['TH-0300-074', 26900, 3]],
 ])
 
-/** Unit 16 of the demo fleet: an air-cooled ATV with a carburettor and a shaft. Maker, model and every figure are invented. */
+/** Units 16 and 17 of the demo fleet: an air-cooled ATV with a carburettor and a shaft. Maker, model and every figure are invented. */
 export const HEATH_300: MachineModel = {
   id: '01980000-0000-7000-8000-000000000208',
   maker: 'Tarnholt',
