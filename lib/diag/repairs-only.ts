@@ -89,8 +89,7 @@ const GONE = { mass: 0, wrong: 0 }
 function mend(problem: Problem, repair: Repair): typeof GONE {
   GONE.mass = 0
   GONE.wrong = 0
-  if (problem.slips) for (let f = 0; f < problem.faults.length; f++) mendOne(problem, repair, f)
-  else for (const f of repair.cures) mendOne(problem, repair, f)
+  for (const f of repair.ends) mendOne(problem, repair, f)
   return GONE
 }
 

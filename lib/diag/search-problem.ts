@@ -6,10 +6,14 @@
 import { AppError } from '@/lib/model/result'
 import type { SearchState, SingleModel } from './troubleshoot-model'
 
-/** A repair: `fails[f]` is the chance that fault f survives it; `cures` lists the faults it may mend. */
+/**
+ * A repair: `fails[f]` is the chance that fault f survives it; `cures` lists the faults it may mend, `ends` those for
+ * which it may end the job, by mending them or by a test run that passes wrongly.
+ */
 export type Repair = {
   id: string
   cures: readonly number[]
+  ends: readonly number[]
   price: number
   minutes: number
   setups: number
@@ -89,6 +93,9 @@ export function problemOf(model: SingleModel): Problem {
     .map((r) => ({
       id: r.id,
       cures: faults.flatMap((f, i) => ((r.fixes[f] ?? 0) > 0 ? [i] : [])),
+      ends: faults.flatMap((f, i) =>
+        (r.fixes[f] ?? 0) > 0 || falsePassOf(test.falsePass, f) > 0 ? [i] : [],
+      ),
       price: r.cost + rate * r.minutes + testPrice,
       minutes: r.minutes + test.minutes,
       setups: maskOf(r.setup),

@@ -22,12 +22,16 @@ import { dot, massOf, NO_MASS } from './search-steps'
 import type { NoisyOrModel, SearchState, SingleModel } from './troubleshoot-model'
 
 /**
- * Expansions where the caller names none, at 8 faults and 17 actions: some 50 ms (docs/performance.md). A wider
- * problem's expansions cost more, and it gets fewer; a narrower one gets as many as close it nearly always.
+ * Expansions where the caller names none, at 8 faults and 17 actions: some 30 ms (docs/performance.md). A wider
+ * problem's expansions cost more, and it gets fewer; a narrower one gets as many as close it nearly always, as far
+ * as 50 ms go: an expansion takes so long as there are faults times actions, and half as long again where test runs
+ * can pass wrongly.
  */
-const EXPANSIONS = 1500
+const EXPANSIONS = 2000
 const WIDTH = 8 * 17
 const LEAST_EXPANSIONS = 100
+const MOST_WORK = 560_000
+const MOST_WORK_WITH_SLIPS = 430_000
 
 /** An action by the names of the model. */
 export type NamedAction = { type: ActionType; id: string }
@@ -67,7 +71,7 @@ export function nextAction(model: SingleModel, state: SearchState, limit?: numbe
   if (!(massOf(w) > 0)) throw new AppError('impossible')
   const small = Math.max(problem.checks.length, problem.repairs.length) <= MOST_IN_MASK
   if (!small) return looked({ problem, spot })
-  const { found, cheapest } = searched(problem, spot, limit ?? budgetOf(spot))
+  const { found, cheapest } = searched(problem, spot, limit ?? budgetOf(problem, spot))
   if (found.gap === 0) return found
   const two = looked({ problem, spot })
   if (two.expectedCost >= cheapest) return found
@@ -94,9 +98,12 @@ export function marginals(model: NoisyOrModel): Record<string, number> {
   return noisyOrMarginals(model)
 }
 
-function budgetOf({ w, checks, repairs }: Spot): number {
-  const share = WIDTH / Math.max(1, w.length * (checks.length + repairs.length))
-  return Math.max(LEAST_EXPANSIONS, Math.ceil(EXPANSIONS * (share > 1 ? share ** 4 : share)))
+function budgetOf({ slips }: Problem, { w, checks, repairs }: Spot): number {
+  const width = Math.max(1, w.length * (checks.length + repairs.length))
+  const share = WIDTH / width
+  const wanted = EXPANSIONS * (share > 1 ? share ** 4 : share)
+  const most = (slips ? MOST_WORK_WITH_SLIPS : MOST_WORK) / width
+  return Math.max(LEAST_EXPANSIONS, Math.ceil(Math.min(wanted, most)))
 }
 
 /** What the search found, and the cost of the cheapest plan that it came across. */

@@ -2,9 +2,10 @@
 import fc from 'fast-check'
 import { describe, expect, it } from 'vitest'
 import { addNode, findNode, startPool } from '@/lib/diag/search-nodes'
-import { problemOf } from '@/lib/diag/search-problem'
+import { leftOf, problemOf } from '@/lib/diag/search-problem'
 import { nextAction, posterior } from '@/lib/diag/troubleshoot'
 import { type SearchState, type SingleModel, START } from '@/lib/diag/troubleshoot-model'
+import { FAMILIES, inventedModel } from '../bench/diag/models'
 import { wildModels } from './fixtures/wild-models'
 import { bruteOptimum, treeCost } from './tree-walk'
 
@@ -139,6 +140,19 @@ describe('[E2] points of the search', () => {
     for (let i = 0; i < 5000; i++) expect(addNode(pool, at(i))).toBe(i)
     for (let i = 0; i < 5000; i++) expect(findNode(pool, at(i))).toBe(i)
     expect(findNode(pool, at(5000))).toBe(-1)
+  })
+})
+
+describe('[E2] expansions where nobody names a limit', () => {
+  it('[E2] are as many as 50 ms bear (docs/performance.md): by faults times actions, at every size up to eight', () => {
+    for (const size of [5, 6, 7, 8])
+      for (const family of FAMILIES) {
+        const model = inventedModel(family, { faults: size, checks: size }, 1)
+        const { expansions, gap } = nextAction(model, START)
+        const { checks, repairs } = leftOf(problemOf(model), START)
+        expect(expansions * size * (checks.length + repairs.length)).toBeLessThan(570_000)
+        if (size === 5) expect(gap).toBe(0)
+      }
   })
 })
 
