@@ -1,14 +1,6 @@
 import type { CheckItem } from '@/lib/model/code-book'
-import {
-  FUEL_PRESSURE,
-  HIGH_VOLTAGE,
-  HOT_ENGINE,
-  KEY_OFF,
-  MOVES,
-  MOVING_PARTS,
-  VAPOUR,
-} from './cautions'
-import { BACKFIRE_BURNS, NO_FIRE, NO_MORE_STARTS, PLUG_HOLE } from './cautions-run'
+import { HIGH_VOLTAGE, HOT_ENGINE, MONOXIDE, MOVES, VAPOUR } from './cautions'
+import { BACKFIRE_BURNS, NO_FIRE, NO_MORE_STARTS } from './cautions-run'
 import { check } from './draft'
 import { PRACTICE } from './sources'
 
@@ -24,13 +16,16 @@ export const NO_START_CHECKS: CheckItem[] = [
     machineState: 'cranking',
     minutes: 4,
     steps: [
-      ['Plug in, cap on, choke as for the weather. Crank five seconds.', MOVES],
+      [
+        'Plug in, cap on, choke as for the weather. Crank five seconds. If it starts, stop it soon.',
+        MOVES,
+      ],
       ['Key off. Pull the cap. Take the plug out at once.', HOT_ENGINE],
       'Look at the tip and wipe it on paper: dry, damp or dripping. Smell it.',
       ['Hold the paper over the hole, face away. Does fuel drip or spit out?', VAPOUR],
       ['Dry it and refit it, or go on to the spark test.', HIGH_VOLTAGE],
     ],
-    cautions: [MOVES, HIGH_VOLTAGE, VAPOUR],
+    cautions: [MOVES, HIGH_VOLTAGE, VAPOUR, MONOXIDE],
     record: 'Dry, damp or soaked, and each cylinder.',
     outcomes: [
       ['damp', 'Damp, smells of petrol'],
@@ -39,13 +34,13 @@ export const NO_START_CHECKS: CheckItem[] = [
     ],
     table: {
       fuelOutOrShut: [10, 84, 6],
-      fuelFilterBlocked: [26, 68, 6],
+      fuelFilterBlocked: [38, 56, 6],
       fuelLineIce: [12, 82, 6],
       tankVentBlocked: [34, 60, 6],
       fuelPumpDead: [8, 86, 6],
       fuelPumpRelay: [11, 83, 6],
       fuelPumpWiring: [14, 80, 6],
-      fuelPumpWeak: [46, 48, 6],
+      fuelPumpWeak: [58, 36, 6],
       fuelRegulatorLeak: [48, 44, 8],
       injectorBlocked: [22, 72, 6],
       injectorCircuit: [12, 81, 7],
@@ -150,7 +145,8 @@ export const NO_START_CHECKS: CheckItem[] = [
   check({
     id: 'primeDrops',
     name: 'A few drops of fuel in the cylinder',
-    purpose: 'If it fires on fuel put in by hand, spark and squeeze are there and fuel is not.',
+    purpose:
+      'Only where it does not start: if it fires on fuel put in by hand, spark and squeeze are there.',
     gate: {},
     setups: ['plugOut'],
     tools: ['plugSocket', 'jar'],
@@ -158,7 +154,10 @@ export const NO_START_CHECKS: CheckItem[] = [
     machineState: 'cranking',
     minutes: 6,
     steps: [
-      ['Engine only warm. Half a teaspoon of clean fuel from the jar into the plug hole.', VAPOUR],
+      [
+        'Only if it does not start. Engine not hot. Half a teaspoon of clean fuel from the jar into the plug hole.',
+        VAPOUR,
+      ],
       [
         'Jar shut and ten steps away. Wipe spills. Refit plug and cap. Wait a minute.',
         HIGH_VOLTAGE,
@@ -262,36 +261,3 @@ export const NO_START_CHECKS: CheckItem[] = [
     basisWords: 'Guess: more than half of flooded engines clear this way.',
   }),
 ]
-
-/** A dripping injector, seen. */
-export const INJECTOR_DRIP: CheckItem = check({
-  id: 'injectorDrip',
-  name: 'Injector tip under pressure',
-  purpose: 'Finds an injector that drips when it should be shut.',
-  gate: { fuelling: ['injection'] },
-  setups: ['tankCoverOff', 'railRelieved', 'injectorOut'],
-  tools: ['jar', 'lamp'],
-  machineState: 'keyOn',
-  minutes: 6,
-  steps: [
-    ['Key off. Injector on its line, tip over the jar, its plug off.', KEY_OFF],
-    ['Plug caps off and away. Glasses on. Key on so that the pump runs once.', FUEL_PRESSURE],
-    'Key off. Watch the tip for one minute.',
-    'A wet tip is fine. A drop that falls is not.',
-    'Refit with whole seals. Key on, look for leaks.',
-  ],
-  cautions: [FUEL_PRESSURE, VAPOUR, HIGH_VOLTAGE, MOVING_PARTS, PLUG_HOLE],
-  record: 'Drops in a minute, each injector.',
-  outcomes: [
-    ['dry', 'Dry or just wet'],
-    ['slow', 'One drop in a minute'],
-    ['drips', 'Drips, or sprays'],
-  ],
-  table: { injectorLeaking: [8, 20, 72], injectorBlocked: [72, 20, 8] },
-  otherwise: [92, 6, 2],
-  expected: [{ words: 'No drop in a minute.', source: PRACTICE }],
-  passDoesNotProve: 'It can hang open hot or dirty and be shut now.',
-  stopWhen: 'Fuel on a hot part: key off, air it.',
-  basis: 'physics',
-  basisWords: 'You can see a drop. How often it hides is a guess.',
-})
