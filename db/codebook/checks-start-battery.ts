@@ -1,0 +1,216 @@
+import type { CheckItem } from '@/lib/model/code-book'
+import { BATTERY_GAS } from './cautions'
+import { BRIDGE_BURNS, BURNT_WIRE, JUMP_RULES, SAME_FUSE } from './cautions-start'
+import { check } from './draft'
+import { PRACTICE } from './sources'
+
+const VOLTMETER = ['multimeter', '0.5 % + 2 digits, 0.01 V steps'] as const
+
+/** Fuse, battery under load, and what it loses standing. */
+export const START_BATTERY_CHECKS: CheckItem[] = [
+  check({
+    id: 'fuseBothSides',
+    name: 'Volts on both sides of the main fuse',
+    purpose: 'Shows how far the battery volts get: post, cable, fuse, key.',
+    gate: { battery: ['yes'] },
+    setups: ['seatOff'],
+    tools: [VOLTMETER, 'backProbes'],
+    machineState: 'keyOn',
+    minutes: 4,
+    steps: [
+      ['Meter on DC volts. Battery first, post to post. Read.', BATTERY_GAS],
+      'Black stays on the minus post. Key on, lights on.',
+      'Red on the battery side of the main fuse. Read. Then on the far side. Read.',
+      'Red on the feed of the key switch or main relay. Read.',
+      'Black on bare frame metal. Read the battery plus once more.',
+    ],
+    cautions: [BRIDGE_BURNS],
+    record: 'Volts at each place with the lights on.',
+    outcomes: [
+      ['all', 'Alike at each place'],
+      ['lessFrame', 'Less with black on the frame'],
+      ['before', 'Low or lost before the fuse'],
+      ['over', 'Lost over the fuse'],
+    ],
+    table: {
+      mainFuseOpen: [3, 1, 3, 93],
+      batteryTerminalLoose: [30, 18, 50, 2],
+      groundPoor: [28, 66, 5, 1],
+      batteryLow: [36, 3, 60, 1],
+      batteryFailed: [32, 3, 64, 1],
+      parasiticDrain: [30, 4, 65, 1],
+      regulatorFailed: [56, 2, 6, 36],
+      waterInElectrics: [70, 7, 8, 15],
+      mainRelayFault: [76, 3, 7, 14],
+      keySwitchHarness: [79, 4, 7, 10],
+    },
+    otherwise: [90, 5, 4, 1],
+    expected: [{ words: 'Within 0.2 V of the battery everywhere, lights on.', source: PRACTICE }],
+    passDoesNotProve: 'A lamp load does not show a joint that fails under the starter.',
+    basis: 'physics',
+    basisWords: 'The volts stop where the way is open. Shares are guesses.',
+  }),
+  check({
+    id: 'newFuseHolds',
+    name: 'One new fuse, loads on one by one',
+    purpose: 'Finds which branch blows the main fuse.',
+    gate: { battery: ['yes'] },
+    setups: ['seatOff'],
+    tools: ['lamp', 'loadBulb'],
+    machineState: 'keyOn',
+    minutes: 9,
+    steps: [
+      ['Key off. All small fuses out, winch and add-ons unplugged.', BURNT_WIRE],
+      [
+        'Bulb across the empty main fuse holder. Bright with all off: a short. Look for the rub.',
+        SAME_FUSE,
+      ],
+      'Unplug the regulator. Does the bulb go dark? Then the short is there.',
+      'Dark bulb: one new main fuse of the same figure. Key on.',
+      'Small fuses in one by one, move the loom each time. Which one brings the bulb or fuse down?',
+    ],
+    cautions: [SAME_FUSE, BURNT_WIRE],
+    record: 'Bulb bright or dark, which branch, what was found.',
+    outcomes: [
+      ['holds', 'Dark bulb, fuse holds with all on'],
+      ['branch', 'Goes with one branch or a moved wire'],
+      ['regulator', 'Bright until the regulator is unplugged'],
+      ['atOnce', 'Bright with all off'],
+    ],
+    table: {
+      mainFuseOpen: [42, 36, 4, 18],
+      regulatorFailed: [18, 4, 74, 4],
+      keySwitchHarness: [54, 34, 1, 11],
+      waterInElectrics: [54, 38, 2, 6],
+      controlModuleFault: [72, 26, 1, 1],
+      parasiticDrain: [60, 34, 2, 4],
+    },
+    otherwise: [95, 4, 0.5, 0.5],
+    expected: [{ words: 'Bulb dark with all off, fuse stays whole.', source: PRACTICE }],
+    passDoesNotProve: 'A rub that needs a bump does not show standing.',
+    stopWhen: 'The one new fuse blows: no other. Minus off, tow.',
+    basis: 'physics',
+    basisWords: 'The bulb takes what would blow the fuse. Shares are guesses.',
+  }),
+  check({
+    id: 'batteryLoadHold',
+    name: 'Charged battery under load, and after an hour',
+    purpose: 'Parts a battery that was only empty from one that is worn out.',
+    gate: { battery: ['yes'] },
+    setups: ['seatOff', 'batteryCharged'],
+    tools: [VOLTMETER, 'batteryLoader'],
+    minutes: 6,
+    steps: [
+      [
+        'Look first: frozen, swollen, wet or of unknown kind? Then no charge and no load.',
+        JUMP_RULES,
+      ],
+      'It must have been charged by a charger made for its kind, then rested an hour.',
+      ['Loads and key off. Read the volts at the posts.', BATTERY_GAS],
+      'Load of half its cold cranking figure for fifteen seconds. Read at the end. Write down the temperature.',
+      'Off. After a minute read again. Warm, hissing, or one cell boils?',
+    ],
+    cautions: [BATTERY_GAS, JUMP_RULES, BRIDGE_BURNS],
+    record: 'Volts before, at the end and after; temperature, load, kind of battery.',
+    outcomes: [
+      ['in', 'Within limits'],
+      ['tooClose', 'Too close to call'],
+      ['outLow', 'Below limits'],
+    ],
+    table: { batteryFailed: [8, 10, 82], batteryLow: [66, 12, 22] },
+    otherwise: [89, 8, 3],
+    expected: [
+      { words: '9.6 V or more at 21 C; about 0.1 V less for each 6 C colder.', source: PRACTICE },
+    ],
+    reading: {
+      quantity: 'dcVoltage',
+      component: 'batteryMain',
+      value: 'loadVolts',
+      fallback: { low: 9.6, high: null, unit: 'V', source: PRACTICE },
+      good: [{ weight: 1, from: 1.02, to: 1.2 }],
+      byFault: {
+        batteryFailed: [
+          { weight: 0.12, from: 1.01, to: 1.1 },
+          { weight: 0.88, from: 0.1, to: 0.99 },
+        ],
+        batteryLow: [
+          { weight: 0.74, from: 1.01, to: 1.18 },
+          { weight: 0.26, from: 0.5, to: 0.99 },
+        ],
+      },
+    },
+    passDoesNotProve: 'A battery good at 20 C can fail at 20 below.',
+    stopWhen: 'It hisses, swells or gets warm: load off, stand back.',
+    basis: 'commonPractice',
+    basisWords: 'Limit and load are common practice for lead batteries; shares are guesses.',
+  }),
+  check({
+    id: 'drainCurrent',
+    name: 'Current with the key off',
+    purpose: 'Finds what empties the battery while it stands.',
+    gate: { battery: ['yes'] },
+    setups: ['batteryMinusOff'],
+    tools: [['milliMeter', '1 % + 3 digits, 0.001 A steps']],
+    minutes: 15,
+    steps: [
+      ['Key out, all off. Meter on its 10 A range, leads in the 10 A holes.', BATTERY_GAS],
+      'Minus cable off. Meter in line: minus post to cable end. Nobody turns the key now.',
+      'Wait ten minutes until the modules sleep. Read. Under 0.2 A you may go to the mA range.',
+      'Too much? Pull fuses and unplug add-ons one by one until it falls.',
+      'Unplug the regulator as well. Note what made it fall.',
+    ],
+    cautions: [
+      BRIDGE_BURNS,
+      {
+        signal: 'NOTICE',
+        text: 'Key or starter through the meter blows its fuse. Take the key away.',
+      },
+    ],
+    record: 'Ampere asleep, and the branch that made it fall.',
+    outcomes: [
+      ['in', 'Within limits'],
+      ['tooClose', 'Too close to call'],
+      ['outHigh', 'Above limits'],
+    ],
+    table: {
+      parasiticDrain: [7, 8, 85],
+      regulatorFailed: [64, 8, 28],
+      waterInElectrics: [58, 10, 32],
+      keySwitchHarness: [78, 8, 14],
+      controlModuleFault: [74, 8, 18],
+      networkFault: [72, 9, 19],
+    },
+    otherwise: [91, 6, 3],
+    expected: [
+      {
+        words: 'A few thousandths of an ampere; with clock, alarm or tracker up to 0.02 A.',
+        source: PRACTICE,
+      },
+    ],
+    reading: {
+      quantity: 'dcCurrent',
+      component: 'keySupply',
+      value: 'sleepCurrent',
+      fallback: { low: null, high: 0.02, unit: 'A', source: PRACTICE },
+      good: [{ weight: 1, from: 0, to: 0.9 }],
+      byFault: {
+        parasiticDrain: [
+          { weight: 0.1, from: 0, to: 0.9 },
+          { weight: 0.9, from: 1.2, to: 60 },
+        ],
+        regulatorFailed: [
+          { weight: 0.68, from: 0, to: 0.9 },
+          { weight: 0.32, from: 1.2, to: 50 },
+        ],
+        waterInElectrics: [
+          { weight: 0.64, from: 0, to: 0.9 },
+          { weight: 0.36, from: 1.2, to: 40 },
+        ],
+      },
+    },
+    passDoesNotProve: 'A draw that comes and goes may sleep while you look.',
+    stopWhen: 'More than 5 A: off, there is a short.',
+    basis: 'physics',
+    basisWords: 'What flows with the key off empties it. The limit and shares are guesses.',
+  }),
+]
