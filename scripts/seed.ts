@@ -29,6 +29,7 @@ import { hashPassword, verifyPassword } from '@/lib/auth/password'
 import type { Machine } from '@/lib/model/machine'
 import type { MachineModel } from '@/lib/model/machine-model'
 import type { Shop } from '@/lib/model/shop'
+import { touchedWithdrawals } from '@/lib/sync/server/book/withdraw'
 import {
   BAG,
   type DemoPerson,
@@ -161,7 +162,7 @@ async function seedBook(tx: ShopTx): Promise<Change[]> {
   const version = (newest?.version ?? 0) + 1
   const publishedAt = new Date().toISOString()
   await publishBook(tx, { version, items: BOOK_ITEMS, publishedAt, publishedBy: null })
-  return [{ entity: 'book', id: String(version), jobId: null }]
+  return [{ entity: 'book', id: String(version), jobId: null }, ...(await touchedWithdrawals(tx))]
 }
 
 /** Unit 11 is out tomorrow from 9 to 17 by the shop's clock (UTC-6); made once, on the first run. */

@@ -6,6 +6,7 @@ import type { Role } from '@/lib/model/role'
 import type { ShopTx } from '../client'
 import type { ChangeEntity } from './changes'
 import { versionsByNumber } from './code-book'
+import { listWithdrawals } from './code-book-withdrawal'
 import type { LogStand } from './exchange'
 import { jobsById, onPhoneOf } from './jobs'
 import { logEntriesById, placesOfEntries } from './log-entries'
@@ -193,7 +194,8 @@ function isVisible(scope: Scope): RawBuilder<SqlBool> {
   if (has(ALL)) return sql<SqlBool>`true`
   const parts: RawBuilder<SqlBool>[] = []
   if (scope.roles.length > 0) {
-    parts.push(sql`c.entity in ('shop', 'person', 'machineModel', 'machine', 'book')`)
+    parts.push(sql`c.entity in ('shop', 'person', 'machineModel', 'machine', 'book',
+      'bookWithdrawal')`)
   }
   if (has(['parts'])) parts.push(sql`c.entity = 'partRequest'`)
   if (has(FIELD)) {
@@ -231,6 +233,7 @@ const READ: Record<ChangeEntity, (tx: ShopTx, ids: string[]) => Promise<Keyed[]>
   photo: async (tx, hashes) => keyed(await photosByHash(tx, hashes), (row) => row.hash),
   book: async (tx, ids) =>
     keyed(await versionsByNumber(tx, ids.map(Number)), (row) => String(row.version)),
+  bookWithdrawal: async (tx, ids) => keyed(await listWithdrawals(tx, ids), (row) => row.id),
 }
 
 /** Puts the rows to the heads. One deleted since then is told as such: its own number follows. */

@@ -15,6 +15,7 @@ export type ChangeEntity =
   | 'partRequest'
   | 'photo'
   | 'book'
+  | 'bookWithdrawal'
 
 /**
  * One row that changed. `jobId` is the job it belongs to (a job's own id for a job), null for none.

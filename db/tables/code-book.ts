@@ -1,4 +1,5 @@
 import type { JSONColumnType } from 'kysely'
+import type { Withdrawn } from '@/lib/model/book-withdrawal'
 import type { CodeBookItem } from '@/lib/model/code-book'
 
 /** Two faults left together with a reason (rule CB11), as kept with a version. */
@@ -31,6 +32,29 @@ export type CodeBookContentTable = {
   kind: CodeBookItem['kind']
   itemId: string
   body: JSONColumnType<CodeBookItem>
+}
+
+export type CodeBookWithdrawalTable = {
+  shopId: string
+  id: string
+  what: Withdrawn
+  itemId: string | null
+  version: number | null
+  name: string
+  hashes: string[]
+  reason: string
+  instead: string | null
+  withdrawnAt: string
+  withdrawnBy: string | null
+}
+
+export type CodeBookHeardTable = {
+  shopId: string
+  withdrawalId: string
+  personId: string
+  deviceId: string
+  heardAt: string
+  receivedAt: string
 }
 
 export type CodeBookDraftTable = {

@@ -2,8 +2,10 @@ import type {
   CodeBookContentTable,
   CodeBookDraftItemTable,
   CodeBookDraftTable,
+  CodeBookHeardTable,
   CodeBookItemTable,
   CodeBookVersionTable,
+  CodeBookWithdrawalTable,
 } from './code-book'
 import type {
   ConsentTable,
@@ -63,6 +65,8 @@ export type Database = {
   codeBookContent: CodeBookContentTable
   codeBookDraft: CodeBookDraftTable
   codeBookDraftItem: CodeBookDraftItemTable
+  codeBookWithdrawal: CodeBookWithdrawalTable
+  codeBookHeard: CodeBookHeardTable
   job: JobTable
   jobAssignment: JobAssignmentTable
   partRequest: PartRequestTable

@@ -31,6 +31,10 @@ export type BookIndex = {
   setups: ReadonlyMap<string, SetupItem>
   words: ReadonlyMap<string, WordItem>
   features: ReadonlyMap<string, FeatureItem>
+  /** Ids of the withdrawals that were applied to it (lib/diag/withdrawn.ts); empty as it was published. */
+  withdrawn: readonly string[]
+  /** Limits of the book's own that were withdrawn, by check. */
+  withdrawnLimits: ReadonlyMap<string, { low: number | null; high: number | null; source: string }>
 }
 
 /** The book as maps by id; order of insertion is the order of the book. A later item of the same id wins. */
@@ -82,6 +86,8 @@ const emptyMaps = (version: number) => ({
   setups: new Map<string, SetupItem>(),
   words: new Map<string, WordItem>(),
   features: new Map<string, FeatureItem>(),
+  withdrawn: [],
+  withdrawnLimits: new Map<string, { low: number | null; high: number | null; source: string }>(),
 })
 
 function place(maps: ReturnType<typeof emptyMaps>, item: CodeBookItem): void {

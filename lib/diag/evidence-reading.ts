@@ -42,6 +42,8 @@ export function readingEvidence(
   const problem = readingProblem(body)
   if (problem !== null) return nothing(entry, 'reading', `${label}: ${problemWords(problem)}`)
   if (check === undefined) return nothing(entry, 'reading', label)
+  if (isOfWithdrawnLimit(sight, body))
+    return nothing(entry, 'reading', `${label}: its limit was withdrawn`)
   const twin = twinOf(sight, body)
   const model = check.reading
   const nominal = model === null ? null : nominalOf(body.spec, model)
@@ -57,6 +59,13 @@ export function readingEvidence(
     ...nothing(entry, 'reading', label),
     factor: densityFactor(sight, model, { shown, nominal, at }),
   }
+}
+
+/** Whether it was read against a limit of the book's own that was withdrawn since (rule R23). */
+function isOfWithdrawnLimit({ c }: Sight, { checkId, spec }: ReadingBody): boolean {
+  const gone = c.index.withdrawnLimits.get(checkId)
+  if (gone === undefined || spec === null || spec.nominal !== null) return false
+  return spec.low === gone.low && spec.high === gone.high && spec.source === gone.source
 }
 
 /** Whether a good twin reads the same and the meter cannot decide the figure: then the check says nothing. */

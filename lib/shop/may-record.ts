@@ -22,6 +22,7 @@ export type Deed =
   | { kind: 'partRequest.ask' | 'advice.keep' }
   | { kind: 'job.set' | 'job.settle' | 'machine.set' | 'machine.settle' | 'machine.drop' }
   | { kind: 'partLine.add' | 'partLine.cancel' | 'partLine.quantity' | 'partRequest.drop' }
+  | { kind: 'book.heard' }
   | { kind: 'job.move'; fields: { to: JobState } }
   | { kind: 'log.add'; fields: Pick<LogEntry, 'body' | 'supersedes'> }
 
@@ -54,6 +55,9 @@ const isGuideSafe = (body: LogBody, { guideSafe }: Writer): boolean => {
 export function mayRecord(deed: Deed, writer: Writer, target?: LogEntry): boolean {
   const { roles, personId } = writer
   switch (deed.kind) {
+    case 'book.heard':
+      // Whoever sees the field is told of it, and says so.
+      return may(roles, 'field.see')
     case 'job.move':
       return mayInField(roles, actionToMoveJob(deed.fields.to))
     case 'log.add': {
@@ -84,4 +88,4 @@ const ACTION_OF = {
   'partLine.cancel': 'part.ask',
   'partLine.quantity': 'part.ask',
   'advice.keep': 'advice.keep',
-} as const satisfies Record<Exclude<Deed['kind'], 'job.move' | 'log.add'>, Action>
+} as const satisfies Record<Exclude<Deed['kind'], 'book.heard' | 'job.move' | 'log.add'>, Action>

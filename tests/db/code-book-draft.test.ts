@@ -142,6 +142,8 @@ describe('[CB34] books from before items were stored once', () => {
 /** The tables as they stood before: bodies within the versions. */
 async function undoMigration(): Promise<void> {
   await sql`
+    drop table code_book_heard, code_book_withdrawal;
+    alter table device drop column book_version;
     drop table code_book_draft_item, code_book_draft;
     alter table code_book_item add body jsonb;
     update code_book_item i set body = c.body from code_book_content c

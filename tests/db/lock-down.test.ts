@@ -86,6 +86,11 @@ async function fillEveryTable(shop: TestShop): Promise<void> {
       values (${ids.shop}, repeat('c', 64), 'fault', 'x', '{}')`.execute(tx)
     await sql`insert into code_book_item (shop_id, version, kind, item_id, place, hash)
       values (${ids.shop}, 1, 'fault', 'x', 1, repeat('c', 64))`.execute(tx)
+    const withdrawal = newId()
+    await sql`insert into code_book_withdrawal (shop_id, id, what, item_id, name, hashes, reason, withdrawn_at)
+      values (${ids.shop}, ${withdrawal}, 'fault', 'x', 'X', '{}', 'test', ${AT})`.execute(tx)
+    await sql`insert into code_book_heard (shop_id, withdrawal_id, person_id, device_id, heard_at, received_at)
+      values (${ids.shop}, ${withdrawal}, ${ids.person}, ${ids.device}, ${AT}, ${AT})`.execute(tx)
     await sql`insert into code_book_draft (shop_id, hash, made_at)
       values (${ids.shop}, repeat('a', 64), ${AT})`.execute(tx)
     await sql`insert into code_book_draft_item (shop_id, kind, item_id, place, hash)
@@ -132,6 +137,7 @@ async function fillEveryTable(shop: TestShop): Promise<void> {
       { entity: 'meterProfile', id: meter, jobId: null },
       { entity: 'bag', id: bag, jobId: null },
       { entity: 'book', id: '1', jobId: null },
+      { entity: 'bookWithdrawal', id: withdrawal, jobId: null },
       { entity: 'photo', id: 'b'.repeat(64), jobId },
     ])
   })
@@ -284,6 +290,8 @@ describe('[D3] evidence is insert only (R23)', () => {
     'contact_plan',
     'code_book_item',
     'code_book_content',
+    'code_book_withdrawal',
+    'code_book_heard',
     'photo',
     'quarantine_op',
     'quarantine_decision',

@@ -30,6 +30,7 @@ export function world(roles: Role[] = ['mechanic']) {
     writes: new Map(),
     firsts: new Map(),
     advice: new Set(),
+    withdrawals: new Set(),
     guideSafe: new Set(['tetherLook']),
   }
   const jobId = v7()

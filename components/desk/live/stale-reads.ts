@@ -30,6 +30,7 @@ export function staleReads(change: Change): QueryKey[] {
     case 'bag':
       return []
     case 'book':
+    case 'bookWithdrawal':
       return [reads.book]
     default:
       return [reads.all]

@@ -33,6 +33,7 @@ const SHAPES: Record<UnsentItem['kind'], LogShape> = {
   'partLine.quantity': 'hexagon',
   'partRequest.drop': 'hexagon',
   'machine.drop': 'ring',
+  'book.heard': 'flag',
   photoBytes: 'frame',
 }
 

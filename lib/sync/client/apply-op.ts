@@ -1,3 +1,4 @@
+import type { BookWithdrawal } from '@/lib/model/book-withdrawal'
 import type { Id } from '@/lib/model/id'
 import type { Job } from '@/lib/model/job'
 import type { MachineRow } from '@/lib/model/machine'
@@ -43,6 +44,8 @@ export function rowsTouched(op: Op): Touched[] {
     case 'partLine.quantity':
     case 'partRequest.drop':
       return [{ entity: 'partRequest', id: op.entityId, jobId: op.jobId }]
+    case 'book.heard':
+      return [{ entity: 'bookWithdrawal', id: op.entityId, jobId: null }]
     case 'advice.keep':
       return []
     default:
@@ -57,11 +60,23 @@ export function applyOpLocally(row: unknown, at: Touched, op: Op, who: Who): unk
   if (at.entity === 'job') return applyToJob(row as Job | undefined, op, who)
   if (op.entityId !== at.id) return row
   if (at.entity === 'machine') return applyToMachine(row as MachineRow | undefined, op)
+  if (op.kind === 'book.heard') {
+    return heardBy(row as BookWithdrawal | undefined, { personId: who.personId, at: op.fields.at })
+  }
   if (at.entity === 'partRequest') {
     return applyToRequest(row as PartRequestRow | undefined, op, who.personId)
   }
   // Evidence is only ever added: what is there stays.
   return row === undefined && op.kind === 'log.add' ? op.fields : row
+}
+
+/** The withdrawal with who acknowledged it; the first time counts. */
+function heardBy(
+  row: BookWithdrawal | undefined,
+  one: BookWithdrawal['heard'][number],
+): BookWithdrawal | undefined {
+  if (row === undefined || row.heard.some(({ personId }) => personId === one.personId)) return row
+  return { ...row, heard: [...row.heard, one] }
 }
 
 function applyToJob(job: Job | undefined, op: Op, who: Who): Job | undefined {

@@ -1,5 +1,6 @@
 import * as z from 'zod/mini'
 import { bag } from '@/lib/model/bag'
+import { bookWithdrawal } from '@/lib/model/book-withdrawal'
 import { job } from '@/lib/model/job'
 import { type LogEntry, logRow } from '@/lib/model/log-entry'
 import { machineRow } from '@/lib/model/machine'
@@ -26,6 +27,7 @@ const SHAPES = {
   logEntry: phoneLogRow,
   partRequest: partRequestRow,
   photo: photoRow,
+  bookWithdrawal,
 } as const
 
 export type StoredEntity = keyof typeof SHAPES

@@ -105,5 +105,7 @@ function placeOf(input: OpInput): { entity: string; entityId: Id; jobId: Id | nu
       return { entity: 'partRequest', entityId: input.fields.requestId, jobId: input.jobId }
     case 'partRequest.drop':
       return { entity: 'partRequest', entityId: input.requestId, jobId: input.jobId }
+    case 'book.heard':
+      return { entity: 'bookWithdrawal', entityId: input.fields.withdrawalId, jobId: null }
   }
 }

@@ -82,6 +82,7 @@ const OP_TITLES: Readonly<Record<Exclude<OpKind, 'log.add' | 'job.set' | 'machin
     'partLine.quantity': 'Quantity of a part line',
     'partRequest.drop': 'Part request taken back',
     'machine.drop': 'Machine taken back',
+    'book.heard': 'Withdrawal acknowledged',
   }
 
 /** What a kind of record is called; undefined for one this version does not know. */

@@ -85,7 +85,8 @@ export type OpResult = z.infer<typeof opResult>
 
 /**
  * One row of a pull, in change order. `entity` is shop, person, machineModel, machine, meterProfile, bag, job,
- * logEntry, partRequest, photo or book (only that a new version is published); others are ignored.
+ * logEntry, partRequest, photo, book (only that a new version is published) or bookWithdrawal; others are
+ * ignored.
  * `evict`: it left this person's scope; `deleted`: a tombstone. */
 export const pullRow = z.object({
   seq: z.int(),

@@ -1,5 +1,6 @@
 import * as z from 'zod/mini'
 import { advice } from '@/lib/model/advice'
+import { bookHeard } from '@/lib/model/book-withdrawal'
 import { id } from '@/lib/model/id'
 import { jobMachineState, jobOpening, jobState, peopleState } from '@/lib/model/job'
 import { logEntry } from '@/lib/model/log-entry'
@@ -82,6 +83,8 @@ export const op = z.discriminatedUnion('kind', [
   // Rows made by mistake.
   z.strictObject({ ...head, kind: z.literal('partRequest.drop'), fields: nothing }),
   z.strictObject({ ...head, kind: z.literal('machine.drop'), fields: nothing }),
+  // Since schema 3. The entity is the withdrawal from the code book.
+  z.strictObject({ ...head, kind: z.literal('book.heard'), fields: bookHeard }),
 ])
 export type Op = z.infer<typeof op>
 export type OpKind = Op['kind']
@@ -104,6 +107,6 @@ export type OpInput = {
 
 /**
  * Version of the op shapes; the server takes every earlier one (P13). Schema 2 added the kinds from
- * `job.set` on; the kinds of schema 1 kept their shapes.
+ * `job.set` on, schema 3 `book.heard`; the kinds before kept their shapes.
  */
-export const OP_SCHEMA = 2
+export const OP_SCHEMA = 3

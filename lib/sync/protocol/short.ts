@@ -7,14 +7,14 @@ import { OP_SCHEMA } from './op'
  * costs as much as a word of a note. Only a part that says just what would be put back is left out, so that
  * both forms are one op; nothing past the message knows of the short form.
  */
-export type Said = { dev: Id; personId: Id }
+export type Said = { dev: Id; personId: Id; schema?: number }
 
 type Part = Record<string, unknown>
 const isPart = (value: unknown): value is Part =>
   typeof value === 'object' && value !== null && !Array.isArray(value)
 
 /** What is put back into an op, in the order in which ops are written. */
-const opRest = (op: Part, { dev }: Said): Part => ({
+const opRest = (op: Part, { dev, schema = OP_SCHEMA }: Said): Part => ({
   id: op.id,
   dev,
   dseq: op.dseq,
@@ -22,7 +22,7 @@ const opRest = (op: Part, { dev }: Said): Part => ({
   entityId: op.id,
   jobId: null,
   base: null,
-  schema: OP_SCHEMA,
+  schema,
 })
 
 /** What is put back into the fields of an entry. */

@@ -2,6 +2,7 @@ import type { ShopTx } from '@/db/client'
 import { insertAdvice } from '@/db/queries/advice'
 import { appendAudit } from '@/db/queries/audit'
 import { type Change, takeChanges, takeJobNumbers } from '@/db/queries/changes'
+import { insertHeard } from '@/db/queries/code-book-withdrawal'
 import { type Evidence, takeEvidence } from '@/db/queries/evidence'
 import { insertJobs, setJobStand } from '@/db/queries/jobs'
 import { insertLinks, linkEntries, type NewLinks } from '@/db/queries/log-entries'
@@ -51,6 +52,16 @@ export async function applyPlan(
       advice,
       personId: actor.personId,
       deviceId,
+      receivedAt: at,
+    })),
+  )
+  await insertHeard(
+    tx,
+    effects.heard.map(({ withdrawalId, at: heardAt }) => ({
+      withdrawalId,
+      personId: actor.personId,
+      deviceId,
+      heardAt,
       receivedAt: at,
     })),
   )
@@ -108,7 +119,25 @@ const statesOf = ({ state, peopleState, machineState, wayOut }: JobStand) => ({
   wayOut,
 })
 
-const auditOf = ({ steps }: Effects, { actor, deviceId, at, newId }: Sender) =>
+const auditOf = (effects: Effects, sender: Sender) => [
+  ...auditOfSteps(effects, sender),
+  ...auditOfHeard(effects, sender),
+]
+
+const auditOfHeard = ({ heard }: Effects, { actor, deviceId, at, newId }: Sender) =>
+  heard.map((one) => ({
+    id: newId(),
+    jobId: null,
+    at,
+    actorId: actor.personId,
+    deviceId,
+    action: 'book.heard',
+    entity: 'bookWithdrawal',
+    entityId: one.withdrawalId,
+    detail: { heardAt: one.at },
+  }))
+
+const auditOfSteps = ({ steps }: Effects, { actor, deviceId, at, newId }: Sender) =>
   steps.map(({ jobId, what, from, to }) => ({
     id: newId(),
     jobId,
@@ -188,6 +217,9 @@ function changesOf(effects: Effects, known: Known): Change[] {
   }
   for (const { id, jobId } of effects.partRequests) {
     if (!whole.has(jobId)) changes.push({ entity: 'partRequest', id, jobId })
+  }
+  for (const { withdrawalId } of effects.heard) {
+    changes.push({ entity: 'bookWithdrawal', id: withdrawalId, jobId: null })
   }
   return withOnce(changes, changesOfValues(effects))
 }

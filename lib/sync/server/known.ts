@@ -10,6 +10,7 @@ import type { PartLine, PartRequest } from '@/lib/model/part-request'
 import type { Actor } from '@/lib/model/person'
 import type { Place } from '@/lib/model/place'
 import type { JobSetting, MachineSetting } from '@/lib/model/setting'
+import type { Instant } from '@/lib/model/time'
 import type { Arrival } from './field-merge'
 import type { Rejected } from './read-ops'
 
@@ -61,6 +62,8 @@ export type Known = {
   /** Lines that exist, of those that the batch adds. */
   lines: ReadonlySet<Id>
   advice: ReadonlySet<Id>
+  /** Withdrawals from the code book that the batch acknowledges, as far as the shop made them. */
+  withdrawals: ReadonlySet<Id>
   /** Writes of the values that the batch sets, by fieldKey; and what the rows were written with. */
   writes: ReadonlyMap<string, readonly FieldWrite[]>
   firsts: ReadonlyMap<Id, FirstValues>
@@ -98,6 +101,7 @@ export type Effects = {
   entries: LogEntry[]
   partRequests: PartRequest[]
   advice: Advice[]
+  heard: { withdrawalId: Id; at: Instant }[]
   /** By fieldKey. */
   fields: Map<string, FieldEffect>
   standing: Map<string, Standing>
@@ -119,6 +123,7 @@ export const noEffects = (): Effects => ({
   entries: [],
   partRequests: [],
   advice: [],
+  heard: [],
   fields: new Map(),
   standing: new Map(),
   looked: [],

@@ -1,6 +1,7 @@
 import type { ShopTx } from '@/db/client'
 import { knownAdvice } from '@/db/queries/advice'
 import { guideSafeIds } from '@/db/queries/code-book'
+import { knownWithdrawals } from '@/db/queries/code-book-withdrawal'
 import {
   type FieldWrite,
   type FirstValues,
@@ -107,6 +108,7 @@ export async function loadKnown(
     partRequests,
     lines: await knownLines(tx, [...named.newLines]),
     advice: await knownAdvice(tx, [...named.advice]),
+    withdrawals: await knownWithdrawals(tx, [...named.withdrawals]),
     ...(await valuesOf(tx, { named, machines })),
     guideSafe: asksSafe ? await guideSafeIds(tx) : new Set(),
   }

@@ -15,6 +15,7 @@ const KINDS = [
   'setMachines',
   'setRequests',
   'droppedMachines',
+  'withdrawals',
 ] as const
 
 /** Ids of each kind that a batch speaks of; `set`: rows whose values it sets or takes back. */
@@ -63,6 +64,9 @@ function addNames(named: Named, op: Op): void {
     case 'partLine.quantity':
     case 'partRequest.drop':
       addRequest(named, op)
+      return
+    case 'book.heard':
+      named.withdrawals.add(op.entityId)
       return
     case 'advice.keep':
       named.jobs.add(op.fields.jobId)

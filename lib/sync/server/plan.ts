@@ -4,6 +4,7 @@ import type { Op } from '@/lib/sync/protocol/op'
 import { Draft } from './draft'
 import type { Effects, Known, Outcome } from './known'
 import { planAdviceKeep } from './ops/advice'
+import { planBookHeard } from './ops/book-heard'
 import { planJobOpen, planJobStep } from './ops/job'
 import { planLogAdd } from './ops/log-entry'
 import { planMachineAdd, planMachineDrop } from './ops/machine'
@@ -45,6 +46,8 @@ function step(op: Op, draft: Draft): Outcome {
       return planPartRequestAsk(op, draft)
     case 'advice.keep':
       return planAdviceKeep(op, draft)
+    case 'book.heard':
+      return planBookHeard(op, draft)
     case 'job.set':
       return planJobSet(op, draft)
     case 'machine.set':

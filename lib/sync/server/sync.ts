@@ -60,7 +60,8 @@ export async function readPush(packed: PackedPush): Promise<Result<SyncRequest, 
 /** With its ops in full, whatever it left out of them to be brief (lib/sync/protocol/short.ts). */
 function inFull(message: SyncRequest, { deviceId, personId }: Claim): SyncRequest {
   if (!isBrief(message)) return message
-  return { ...message, ops: message.ops.map((op) => fullOp(op, { dev: deviceId, personId })) }
+  const said = { dev: deviceId, personId, schema: message.schema }
+  return { ...message, ops: message.ops.map((op) => fullOp(op, said)) }
 }
 
 const isBrief = ({ protocol, brief }: SyncRequest): boolean => protocol >= 2 && brief === true

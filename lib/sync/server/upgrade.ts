@@ -7,12 +7,12 @@ import type { HttpProblem } from './problems'
  * Old phones (P13). A request of this protocol or the one before is taken; an older one keeps its work
  * and updates the app. An op is never rewritten on the phone, so ops of EVERY earlier shape are brought
  * up to date here, one step per version: `STEPS[n]` turns shape n into n + 1. Shape 1 is the first;
- * shape 2 added kinds and changed none, so its step keeps the op as it is.
+ * shapes 2 and 3 added kinds and changed none, so their steps keep the op as it is.
  */
 type RawOp = Readonly<Record<string, unknown>>
 export type UpgradeStep = (op: RawOp) => RawOp
 
-const STEPS: Readonly<Record<number, UpgradeStep>> = { 1: (op) => op }
+const STEPS: Readonly<Record<number, UpgradeStep>> = { 1: (op) => op, 2: (op) => op }
 
 /** Whether a request of this protocol version is taken: `tooOld` asks for an update, `tooNew` to wait. */
 export function takesProtocol(

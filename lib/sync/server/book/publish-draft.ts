@@ -5,6 +5,7 @@ import { type BookVersion, publishBook, publishedVersion } from '@/db/queries/co
 import { draftItems, dropDraft, findDraft } from '@/db/queries/code-book-draft'
 import { fail, ok, type Result } from '@/lib/model/result'
 import { type BookHand, findingsOf, mayPublish, note, readDraft } from './take-draft'
+import { touchedWithdrawals } from './withdraw'
 
 export type PublishProblem =
   | { kind: 'forbidden' | 'noDraft' }
@@ -58,6 +59,9 @@ async function publishChecked(
     detail: { hash, basedOn, madeBy },
   }
   await note(tx, hand, of)
-  await takeChanges(tx, [{ entity: 'book', id: String(version), jobId: null }])
+  await takeChanges(tx, [
+    { entity: 'book', id: String(version), jobId: null },
+    ...(await touchedWithdrawals(tx)),
+  ])
   return ok(made)
 }

@@ -1,0 +1,58 @@
+import * as z from 'zod/mini'
+import { bookWithdrawal } from './book-withdrawal'
+
+/** The code book at the desk: what the owner's page reads. Unknown fields are ignored. */
+const count = z.int().check(z.minimum(0))
+const counts = z.record(z.string(), count)
+const person = z.nullable(z.object({ id: z.string(), name: z.nullable(z.string()) }))
+
+const leading = z.nullable(z.object({ name: z.string(), of100: z.number() }))
+
+/** A job whose verdict a withdrawal changes: the likeliest suspect before and after. */
+export const changedJob = z.object({
+  jobId: z.string(),
+  number: z.nullable(z.string()),
+  state: z.string(),
+  words: z.string(),
+  before: leading,
+  after: leading,
+})
+export type ChangedJob = z.infer<typeof changedJob>
+export const changedJobsAnswer = z.object({ jobs: z.array(changedJob) })
+
+/** How many items of each kind came, changed and went since the version it was made from. */
+const since = z.nullable(
+  z.object({
+    version: z.int(),
+    added: z.array(z.string()),
+    changed: z.array(z.string()),
+    gone: z.array(z.string()),
+  }),
+)
+
+export const bookVersionRow = z.object({
+  /** Null of the draft. */
+  version: z.nullable(z.int()),
+  state: z.enum(['draft', 'published', 'withdrawn']),
+  hash: z.string(),
+  at: z.string(),
+  /** Who brought it, and who published it; null: it came with the program, or by command. */
+  madeBy: person,
+  publishedBy: person,
+  note: z.nullable(z.string()),
+  counts,
+  sources: z.array(z.string()),
+  since,
+})
+export type BookVersionRow = z.infer<typeof bookVersionRow>
+
+export const finding = z.object({ kind: z.string(), id: z.string(), words: z.string() })
+export type Finding = z.infer<typeof finding>
+
+export const deskBook = z.object({
+  versions: z.array(bookVersionRow),
+  withdrawals: z.array(bookWithdrawal),
+  /** How many people of the shop are told of a withdrawal, and the phones by the version they hold. */
+  people: z.array(z.object({ id: z.string(), name: z.nullable(z.string()) })),
+})
+export type DeskBook = z.infer<typeof deskBook>
