@@ -24,9 +24,16 @@ const PARTS: readonly WordRow[] = [
   ['fanBelt', 'Fan belt'],
 ]
 
+const TOOLS: readonly WordRow[] = [
+  ['coolingPump', 'Hand pump with gauge for the cooling system'],
+  ['fusedLeads', 'Two leads with a 15 A fuse'],
+  ['snowShovel', 'Snow shovel'],
+]
+
 /** Words this chapter needs beyond those of the chapters before it. */
 export const CHARGE_WORDS: WordItem[] = [
   ...words('system', SYSTEMS),
   ...words('circuit', CIRCUITS),
   ...words('part', PARTS),
+  ...words('tool', TOOLS),
 ]

@@ -1,0 +1,168 @@
+import type { CheckItem } from '@/lib/model/code-book'
+import { BATTERY_GAS, KEY_OFF } from './cautions'
+import { BOILING_BATTERY, HOT_REGULATOR } from './cautions-charge'
+import { check } from './draft'
+import { WITH_BATTERY } from './gates-charge'
+import { PRACTICE } from './sources'
+
+/** Charging by eye, nose and hand, engine still. */
+export const CHARGE_LOOKS: CheckItem[] = [
+  check({
+    id: 'batteryCaseLook',
+    name: 'Battery: case, smell, clamps by hand',
+    purpose: 'Finds a boiled or dead battery and a clamp that does not hold.',
+    gate: WITH_BATTERY,
+    guideSafe: true,
+    setups: ['seatOff'],
+    minutes: 2,
+    steps: [
+      ['Key off. Look from a step away: swollen, wet, cracked, hot or hissing?', BOILING_BATTERY],
+      'Smell. Rotten eggs mean that it was boiled.',
+      ['Try to turn each clamp by hand. No tool on it.', BATTERY_GAS],
+      'Look for green or white crust, and for a loose ground bolt.',
+    ],
+    cautions: [BOILING_BATTERY, BATTERY_GAS],
+    record: 'Case, smell, clamps, crust, age on the label; photo.',
+    outcomes: [
+      ['sound', 'Flat sides, dry, clamps tight'],
+      ['loose', 'A clamp moves, or crust on it'],
+      ['boiled', 'Swollen, wet, hot or smells'],
+    ],
+    table: {
+      batteryTerminalLoose: [11, 82, 7],
+      regulatorOvercharges: [27, 15, 58],
+      batteryFailed: [47, 23, 30],
+      groundPoor: [57, 39, 4],
+      batteryLow: [68, 27, 5],
+    },
+    otherwise: [81, 17, 2],
+    expected: [
+      { words: 'Case flat and dry, no smell, clamps do not turn by hand.', source: PRACTICE },
+    ],
+    passDoesNotProve: 'A battery can look new and have a dead cell.',
+    stopWhen: 'Swollen, hissing or hot: leave it and stand away.',
+    basis: 'commonPractice',
+    basisWords: 'Overcharge boils a battery and shows on its case. Shares are guesses.',
+  }),
+  check({
+    id: 'chargingPlugLook',
+    name: 'Charging plug: brown, melted or loose',
+    purpose: 'Finds the plug between stator, regulator and battery that has burnt.',
+    gate: WITH_BATTERY,
+    guideSafe: true,
+    setups: ['sidePanelOff'],
+    tools: ['lamp'],
+    minutes: 3,
+    steps: [
+      ['Key off. Find the finned box and follow its thick wires to the plugs.', HOT_REGULATOR],
+      'Look for brown, shiny or sunken plastic, and for stiff wires.',
+      ['Part each plug. Look at the pins: bright, black, green or wet?', KEY_OFF],
+      'Push it home until it clicks. Tug each wire once.',
+    ],
+    cautions: [HOT_REGULATOR, KEY_OFF],
+    record: 'Which plug, colour of plastic and pins; photo.',
+    outcomes: [
+      ['bright', 'Plastic as new, pins bright, tight'],
+      ['doubt', 'Dirty, damp or loose'],
+      ['burnt', 'Brown, melted or black pins'],
+    ],
+    table: {
+      chargingPlugBurnt: [7, 18, 75],
+      statorFault: [59, 24, 17],
+      regulatorFailed: [63, 23, 14],
+      regulatorOvercharges: [70, 20, 10],
+      keySwitchHarness: [70, 24, 6],
+      groundPoor: [72, 25, 3],
+    },
+    otherwise: [82, 17, 1],
+    expected: [
+      { words: 'Same colour as the other plugs, pins bright, clicks in.', source: PRACTICE },
+    ],
+    passDoesNotProve: 'A pin can be open inside a plug that looks new.',
+    stopWhen: 'Smoke or a hot plug with the key off: battery off.',
+    basis: 'physics',
+    basisWords: 'A poor joint that carries the whole charge heats its plastic. Shares are guesses.',
+  }),
+  check({
+    id: 'chargeFuseLook',
+    name: 'Main and charging fuse by eye',
+    purpose: 'Finds the open fuse between charging and battery.',
+    gate: WITH_BATTERY,
+    guideSafe: true,
+    setups: ['seatOff'],
+    tools: ['lamp'],
+    minutes: 3,
+    steps: [
+      'Key off. Find the main fuse and the charging fuse on the lid or the sheet.',
+      'Pull one at a time. Look at its wire against the light.',
+      'Look into the holder: brown plastic, green blades, loose grip?',
+      'Put it back. Never a bigger one, no foil, no nail.',
+    ],
+    cautions: [
+      {
+        signal: 'WARNING',
+        text: 'A bigger fuse or a bridge sets the loom alight. Same rating, once; blown again means a short.',
+      },
+    ],
+    record: 'Each fuse: rating, whole or blown, holder; photo.',
+    outcomes: [
+      ['whole', 'Whole, holder clean and tight'],
+      ['doubt', 'Whole, holder brown, green or loose'],
+      ['blown', 'Blown'],
+    ],
+    table: {
+      mainFuseOpen: [9, 17, 74],
+      regulatorFailed: [81, 8, 11],
+      keySwitchHarness: [75, 12, 13],
+      mainRelayFault: [70, 26, 4],
+      chargingPlugBurnt: [80, 16, 4],
+      batteryTerminalLoose: [86, 11, 3],
+      loadTooGreat: [82, 14, 4],
+    },
+    otherwise: [93, 6, 1],
+    expected: [{ words: 'Wire whole, rating as marked, blades bright.', source: PRACTICE }],
+    passDoesNotProve: 'A hair crack does not show: the meter on both sides decides.',
+    stopWhen: 'The new fuse blows at once: no third one.',
+    basis: 'physics',
+    basisWords: 'An open fuse cuts the charge off. How often it shows by eye is a guess.',
+  }),
+  check({
+    id: 'extraLoadLook',
+    name: 'What draws, and how it was ridden',
+    purpose: 'Tells a charging fault from a machine that used more than it makes.',
+    gate: WITH_BATTERY,
+    guideSafe: true,
+    light: 'any',
+    minutes: 2,
+    steps: [
+      'Ask how it was ridden today: walking pace, long idling, winching?',
+      'Look for added lamps, heaters, pumps, music and a winch.',
+      'Feel if any of them stays warm with the key off.',
+      'Note which were on, and for how long.',
+    ],
+    record: 'Each added load, how long on, pace of the day.',
+    outcomes: [
+      ['asBuilt', 'As built, ridden briskly'],
+      ['some', 'Some added load or slow hours'],
+      ['heavy', 'Much load for long at low engine speed'],
+    ],
+    table: {
+      loadTooGreat: [8, 28, 64],
+      parasiticDrain: [34, 45, 21],
+      mainFuseOpen: [52, 28, 20],
+      statorFault: [56, 28, 16],
+      batteryFailed: [62, 27, 11],
+      chargingPlugBurnt: [61, 27, 12],
+    },
+    otherwise: [70, 23, 7],
+    expected: [
+      {
+        words: 'A small machine makes some 100 to 400 W at speed, at idle a third of it.',
+        source: PRACTICE,
+      },
+    ],
+    passDoesNotProve: 'A heater that was built in draws as much as an added one.',
+    basis: 'guess',
+    basisWords: 'Sums of watts are physics; what riders remember is a guess.',
+  }),
+]
