@@ -7,7 +7,7 @@ import type { CheckItem, FaultItem, SwapItem } from '@/lib/model/code-book'
 import type { LogBody } from '@/lib/model/log-entry'
 import { type ActionTable, checkTable, swapTable } from './action-table'
 import { type Reckoning, reckon } from './belief'
-import { type BookIndex, SOMETHING_ELSE } from './book-index'
+import { SOMETHING_ELSE } from './book-index'
 import type { Case } from './case'
 import { type Sight, sightOf } from './evidence-table'
 import { letsThrough } from './gate'
@@ -21,6 +21,7 @@ import {
   whyNotRepair,
   whyNotSwap,
 } from './plan-means'
+import { openSetups, setupsFor } from './plan-setups'
 import { stopsOf } from './plan-stops'
 import { opening, openOf, problemOf } from './search-problem'
 import type { SearchState, SingleModel } from './troubleshoot-model'
@@ -56,6 +57,11 @@ export function planModel(c: Case, means: Means): PlanModel {
   const stops = stopsOf(c, means, reckoning)
   doing.leftOut.push(...stops.leftOut)
   const minutes = means.minutesToLeaveBy
+  const setups = setupsFor(c, {
+    used: [...checks, ...repairsIn(faults)].flatMap(({ setup }) => setup),
+    means,
+  })
+  const listed = new Set(setups.map(({ id }) => id))
   const model: SingleModel = {
     kind: 'single',
     ratePerMinute: means.shop.perMinuteMinor,
@@ -64,17 +70,17 @@ export function planModel(c: Case, means: Means): PlanModel {
       onHand: means.bag?.parts.filter((p) => p.quantity > 0).map((p) => p.part) ?? allParts(doing),
     },
     checks,
-    setups: [...c.index.setups.values()].map(({ id, minutes: m, requires, closedByTest }) => ({
-      id,
-      minutes: minutesHere(m, means),
-      requires,
-      closedByTest,
-    })),
+    setups,
     verify: { cost: 0, minutes: minutesHere(TEST_RUN_MINUTES, means) },
     stops: stops.stops,
     ...(minutes === null ? {} : { daylight: { minutes: Math.max(0, minutes) } }),
   }
-  const state = { evidence: {}, tried: [], open: openSetups(c), elapsed: 0 }
+  const state = {
+    evidence: {},
+    tried: [],
+    open: openSetups(c).filter((id) => listed.has(id)),
+    elapsed: 0,
+  }
   return { model, state, leftOut: tooLate(model, state, doing), reckoning, outlooks }
 }
 
@@ -233,42 +239,7 @@ function cannotDecide(c: Case, check: CheckItem): string | null {
 const allParts = ({ c }: Doing): string[] =>
   [...c.index.faults.values()].flatMap((f) => (f.repair?.part == null ? [] : [f.repair.part]))
 
-/** Set-ups opened by what was done since the last test run, where a test run closes them, else for good. */
-function openSetups({ entries, index }: Case): string[] {
-  const closed = closedByTest(index)
-  let open: string[] = []
-  for (const { body } of entries) {
-    if (body.kind === 'proofRun' && body.starts + body.minutes > 0)
-      open = open.filter((id) => !closed.has(id))
-    open.push(...setupsFor(index, body).filter((id) => index.setups.has(id)))
-  }
-  return [...new Set(open)]
-}
-
-function setupsFor(index: BookIndex, body: LogBody): readonly string[] {
-  switch (body.kind) {
-    case 'check':
-    case 'reading':
-      return index.checks.get(body.checkId)?.setups ?? []
-    case 'swap':
-      return index.swaps.get(body.swapId)?.setups ?? []
-    case 'fix':
-      return index.faults.get(body.fault)?.repair?.setups ?? []
-    default:
-      return []
-  }
-}
-
-/** Set-ups that a test run closes: those that say so and all that require them. */
-function closedByTest({ setups }: BookIndex): ReadonlySet<string> {
-  const all = [...setups.values()]
-  const closed = new Set(all.flatMap((s) => (s.closedByTest ? [s.id] : [])))
-  for (let before = -1; before < closed.size; ) {
-    before = closed.size
-    for (const { id, requires } of all) if (requires.some((r) => closed.has(r))) closed.add(id)
-  }
-  return closed
-}
+const repairsIn = (faults: SingleModel['faults']) => faults.flatMap(({ repair }) => repair ?? [])
 
 /** What no longer fits before the leave-by time, set-ups and test run included, with how far it is over (rule R6). */
 function tooLate(model: SingleModel, state: SearchState, { c, leftOut }: Doing): LeftOut[] {
