@@ -2,7 +2,8 @@ import type { SpecValue } from '@/lib/model/machine-model'
 import { QUANTITIES } from '@/lib/model/meter-profile'
 import { type DemoComponent, type DemoPart, NO_LIMITS, page, SHOP_FIGURE } from './demo-figures'
 
-type ValueDraft = Pick<SpecValue, 'id' | 'name' | 'quantity'> &
+/** A value as it is written down; left out means: that limit is not known. */
+export type ValueDraft = Pick<SpecValue, 'id' | 'name' | 'quantity'> &
   Partial<Omit<SpecValue, 'id' | 'name' | 'quantity' | 'unit' | 'source'>>
 
 /** A component as it is written down; left out means: nothing to open, no plug, no torque known, nothing to measure. */

@@ -1,12 +1,13 @@
 import { component, drop, winding } from './demo-build'
+import { brakePads, driveChain, engineOil, tyres } from './demo-common'
 import {
   battery,
-  brakePads,
-  driveChain,
+  charging,
   engineGround,
-  engineOil,
   sensorSupply,
-} from './demo-common'
+  sleepCurrent,
+  starter,
+} from './demo-common-electrics'
 import type { DemoComponent } from './demo-figures'
 
 /** Crag 450: where things are and what they read. All invented. */
@@ -172,6 +173,8 @@ export const CRAG_450_COMPONENTS: DemoComponent[] = [
     page: 100,
     restLow: 13.1,
     crankingLow: 10.2,
+    chargeVolts: [13.8, 14.6],
+    chargeRpm: 3000,
   }),
   engineGround({
     place: 'Black cable, battery to the head stay.',
@@ -192,7 +195,10 @@ export const CRAG_450_COMPONENTS: DemoComponent[] = [
       ['4', 'black', 'ground'],
     ],
     page: 102,
-    values: [drop('drop', 'Volts lost over one contact', 0.2, 'Run switch on')],
+    values: [
+      drop('drop', 'Volts lost over one contact', 0.2, 'Run switch on'),
+      sleepCurrent(0.002),
+    ],
   }),
   component({
     id: 'stopSwitch',
@@ -228,6 +234,22 @@ export const CRAG_450_COMPONENTS: DemoComponent[] = [
     low: 40,
   }),
   driveChain({ place: 'Left side; closed chain with a riveted link.', page: 110, slack: [55, 65] }),
+  ...starter({
+    relayPlace: 'Under the seat, right.',
+    motorPlace: 'Behind the cylinder, above the gearbox.',
+    setups: ['seatOff'],
+    page: 106,
+  }),
+  ...charging({
+    place: 'Left engine cover, inside; plug under the tank.',
+    regulatorPlace: 'On the frame in front of the cylinder.',
+    setups: ['tankCoverOff'],
+    page: 104,
+    leg: [0.6, 20],
+    legAcVolts: 15,
+    rpm: 3000,
+  }),
+  tyres({ place: 'Front and rear alike, with tubes.', page: 112, kPa: [85, 105] }),
   brakePads({
     place: 'Front wheel, seen from below the caliper.',
     page: 114,

@@ -1,5 +1,13 @@
 import { component, drop } from './demo-build'
-import { brakePads, engineGround, sensorSupply } from './demo-common'
+import { brakePads } from './demo-common'
+import {
+  charging,
+  engineGround,
+  networkPair,
+  sensorSupply,
+  sleepCurrent,
+  starter,
+} from './demo-common-electrics'
 import type { DemoComponent } from './demo-figures'
 
 /** Drift 600, grounds, supplies, exhaust valves, drive and brake: where things are and what they read. All invented. */
@@ -22,12 +30,36 @@ export const DRIFT_600_MACHINE: DemoComponent[] = [
       ['3', 'brown', 'start'],
     ],
     page: 52,
-    values: [drop('drop', 'Volts lost over one contact', 0.2, 'Key on, heated grips on')],
+    values: [
+      drop('drop', 'Volts lost over one contact', 0.2, 'Key on, heated grips on'),
+      sleepCurrent(0.008),
+    ],
   }),
   sensorSupply({
     place: 'Measured at the throttle sensor plug on the left throttle body.',
     setups: ['tankCoverOff'],
     page: 41,
+  }),
+  ...starter({
+    relayPlace: 'Under the seat, beside the battery.',
+    motorPlace: 'Front of the crankcase, right.',
+    setups: ['seatOff'],
+    page: 56,
+  }),
+  ...charging({
+    place: 'Under the flywheel, behind the recoil; plug under the right panel.',
+    regulatorPlace: 'On the front of the tunnel, left.',
+    setups: ['sidePanelOff'],
+    page: 54,
+    leg: [0.28, 20],
+    legAcVolts: 22,
+    rpm: 3000,
+  }),
+  networkPair({
+    place: 'Service plug under the console, right: pin 1 and pin 2.',
+    setups: ['sidePanelOff'],
+    page: 58,
+    pins: ['1', '2'],
   }),
   component({
     id: 'exhaustValve1',
@@ -58,7 +90,7 @@ export const DRIFT_600_MACHINE: DemoComponent[] = [
     values: [{ id: 'width', name: 'Belt width, outside', quantity: 'length', low: 33 }],
   }),
   component({
-    id: 'track1',
+    id: 'track',
     name: 'Track and slides',
     place: 'Under the tunnel; adjusters at the rear, left and right.',
     fasteners: 'Rear axle bolts 17 mm head, adjusters 13 mm.',

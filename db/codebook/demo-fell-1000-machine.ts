@@ -1,5 +1,14 @@
 import { component, drop } from './demo-build'
-import { battery, brakePads, engineGround, sensorSupply } from './demo-common'
+import { brakePads, tyres } from './demo-common'
+import {
+  battery,
+  charging,
+  engineGround,
+  networkPair,
+  sensorSupply,
+  sleepCurrent,
+  starter,
+} from './demo-common-electrics'
 import type { DemoComponent } from './demo-figures'
 
 /** Fell 1000, battery, modules, drive, steering and brakes: where things are and what they read. All invented. */
@@ -11,6 +20,8 @@ export const FELL_1000_MACHINE: DemoComponent[] = [
     page: 260,
     restLow: 12.5,
     crankingLow: 9.8,
+    chargeVolts: [13.8, 14.8],
+    chargeRpm: 1500,
   }),
   engineGround({
     place: 'Black strap, battery to the rear of the gearbox, left.',
@@ -30,7 +41,10 @@ export const FELL_1000_MACHINE: DemoComponent[] = [
       ['3', 'brown with white', 'start'],
     ],
     page: 262,
-    values: [drop('drop', 'Volts lost over one contact', 0.2, 'Key on, lights on')],
+    values: [
+      drop('drop', 'Volts lost over one contact', 0.2, 'Key on, lights on'),
+      sleepCurrent(0.015),
+    ],
   }),
   component({
     id: 'pumpRelay',
@@ -81,27 +95,11 @@ export const FELL_1000_MACHINE: DemoComponent[] = [
       },
     ],
   }),
-  component({
-    id: 'networkPair1',
-    name: 'Network between the modules',
+  networkPair({
     place: 'Service plug under the dash, left: pin 3 and pin 6.',
-    connector: 'Green, nine pins, cap on a strap.',
-    pins: [
-      ['3', 'yellow', 'network plus'],
-      ['6', 'green', 'network minus'],
-      ['2', 'black', 'ground'],
-    ],
+    setups: [],
     page: 270,
-    values: [
-      {
-        id: 'pairResistance',
-        name: 'Ohms across the pair',
-        quantity: 'resistance',
-        low: 55,
-        high: 65,
-        conditions: 'Key off for a minute, battery connected',
-      },
-    ],
+    pins: ['3', '6'],
   }),
   component({
     id: 'controlModule1',
@@ -234,5 +232,21 @@ export const FELL_1000_MACHINE: DemoComponent[] = [
       },
     ],
   }),
+  ...starter({
+    relayPlace: 'Under the left seat, beside the battery.',
+    motorPlace: 'Front of the engine, below the intake.',
+    setups: ['seatOff'],
+    page: 266,
+  }),
+  ...charging({
+    place: 'Under the flywheel, left of the engine; plug behind the seats.',
+    regulatorPlace: 'Behind the front grille, right.',
+    setups: ['seatOff'],
+    page: 265,
+    leg: [0.15, 20],
+    legAcVolts: 19,
+    rpm: 1500,
+  }),
+  tyres({ place: 'Front and rear alike.', page: 312, kPa: [83, 97] }),
   brakePads({ place: 'Four wheels, seen through the rim.', page: 310, low: 1.5, torqueNm: 42 }),
 ]

@@ -1,5 +1,14 @@
 import { component, drop } from './demo-build'
-import { battery, brakePads, engineGround, sensorSupply } from './demo-common'
+import { brakePads } from './demo-common'
+import {
+  battery,
+  charging,
+  engineGround,
+  networkPair,
+  sensorSupply,
+  sleepCurrent,
+  starter,
+} from './demo-common-electrics'
 import type { DemoComponent } from './demo-figures'
 
 /** Firn 900, battery, modules, drive and brakes: where things are and what they read. All invented. */
@@ -11,6 +20,8 @@ export const FIRN_900_MACHINE: DemoComponent[] = [
     page: 160,
     restLow: 12.5,
     crankingLow: 9.6,
+    chargeVolts: [13.7, 14.8],
+    chargeRpm: 2400,
   }),
   engineGround({
     place: 'Black strap, battery to the front engine mount.',
@@ -31,34 +42,21 @@ export const FIRN_900_MACHINE: DemoComponent[] = [
       ['4', 'black', 'ground of the key ring'],
     ],
     page: 162,
-    values: [drop('drop', 'Volts lost over one contact', 0.2, 'Key on, heated grips on')],
+    values: [
+      drop('drop', 'Volts lost over one contact', 0.2, 'Key on, heated grips on'),
+      sleepCurrent(0.012),
+    ],
   }),
   sensorSupply({
     place: 'Measured at the throttle body plug, pin 1 to pin 4.',
     setups: ['tankCoverOff'],
     page: 145,
   }),
-  component({
-    id: 'networkPair1',
-    name: 'Network between the modules',
+  networkPair({
     place: 'Service plug in the nose, right: pin C and pin D.',
     setups: ['sidePanelOff'],
-    connector: 'Black, nine pins, cap on a strap.',
-    pins: [
-      ['C', 'yellow', 'network plus'],
-      ['D', 'green', 'network minus'],
-    ],
     page: 170,
-    values: [
-      {
-        id: 'pairResistance',
-        name: 'Ohms across the pair',
-        quantity: 'resistance',
-        low: 55,
-        high: 65,
-        conditions: 'Key off for a minute, battery connected',
-      },
-    ],
+    pins: ['C', 'D'],
   }),
   component({
     id: 'gripSensor1',
@@ -106,6 +104,21 @@ export const FIRN_900_MACHINE: DemoComponent[] = [
     torqueNm: 1,
     page: 163,
   }),
+  ...starter({
+    relayPlace: 'In the nose, beside the battery.',
+    motorPlace: 'Right of the block, below the exhaust shield.',
+    setups: ['sidePanelOff'],
+    page: 167,
+  }),
+  ...charging({
+    place: 'Under the flywheel, right end of the crank; plug under the right panel.',
+    regulatorPlace: 'In the nose, beside the battery.',
+    setups: ['sidePanelOff'],
+    page: 165,
+    leg: [0.2, 20],
+    legAcVolts: 20,
+    rpm: 2400,
+  }),
   component({
     id: 'driveBelt1',
     name: 'Drive belt',
@@ -116,7 +129,7 @@ export const FIRN_900_MACHINE: DemoComponent[] = [
     values: [{ id: 'width', name: 'Belt width, outside', quantity: 'length', low: 35 }],
   }),
   component({
-    id: 'track1',
+    id: 'track',
     name: 'Track and slides',
     place: 'Under the tunnel; adjusters at the rear, left and right.',
     fasteners: 'Rear axle bolts 19 mm head, adjusters 13 mm.',

@@ -1,6 +1,6 @@
 import type { MachineModel } from '@/lib/model/machine-model'
 import { component, demoParts, winding } from './demo-build'
-import { brakePads, driveChain } from './demo-common'
+import { brakePads, driveChain, tyres } from './demo-common'
 import { type DemoComponent, page } from './demo-figures'
 
 const COMPONENTS: DemoComponent[] = [
@@ -185,6 +185,7 @@ const COMPONENTS: DemoComponent[] = [
     page: 37,
     slack: [30, 40],
   }),
+  tyres({ place: 'Front and rear alike, with tubes.', page: 39, kPa: [90, 110] }),
   brakePads({
     place: 'Front wheel, seen from the front of the caliper.',
     page: 40,

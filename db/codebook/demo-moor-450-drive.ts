@@ -1,5 +1,6 @@
 import { component, drop } from './demo-build'
-import { brakePads, engineOil } from './demo-common'
+import { brakePads, engineOil, tyres } from './demo-common'
+import { charging, networkPair, starter } from './demo-common-electrics'
 import type { DemoComponent } from './demo-figures'
 
 /** Moor 450, oil, drive, cooling and brakes: where things are and what they read. All invented. */
@@ -64,5 +65,27 @@ export const MOOR_450_DRIVE: DemoComponent[] = [
       },
     ],
   }),
+  ...starter({
+    relayPlace: 'Under the seat, beside the battery.',
+    motorPlace: 'Front of the engine, left, below the cylinder.',
+    setups: ['seatOff'],
+    page: 78,
+  }),
+  ...charging({
+    place: 'Under the flywheel, left; plug behind the left side panel.',
+    regulatorPlace: 'Front, under the headlamp, fins forward.',
+    setups: ['sidePanelOff'],
+    page: 76,
+    leg: [0.32, 20],
+    legAcVolts: 18,
+    rpm: 1700,
+  }),
+  networkPair({
+    place: 'Service plug under the seat, beside the module: pin 1 and pin 2.',
+    setups: ['seatOff'],
+    page: 91,
+    pins: ['1', '2'],
+  }),
+  tyres({ place: 'Front and rear alike.', page: 112, kPa: [32, 40] }),
   brakePads({ place: 'Both front wheels, seen from behind.', page: 110, low: 1, torqueNm: 32 }),
 ]

@@ -177,7 +177,7 @@ const COMPONENTS: DemoComponent[] = [
     values: [{ id: 'width', name: 'Belt width, outside', quantity: 'length', low: 31 }],
   }),
   component({
-    id: 'track1',
+    id: 'track',
     name: 'Track and slides',
     place: 'Under the tunnel; adjusters at the rear, left and right.',
     fasteners: 'Rear axle bolts 17 mm head, adjusters 13 mm.',

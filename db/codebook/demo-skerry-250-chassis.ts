@@ -1,5 +1,5 @@
 import { component } from './demo-build'
-import { brakePads, driveChain } from './demo-common'
+import { brakePads, driveChain, tyres } from './demo-common'
 import type { DemoComponent } from './demo-figures'
 
 /** Skerry 250, kick start, clutch, chain and brake: where things are and what they read. All invented. */
@@ -30,5 +30,6 @@ export const SKERRY_250_CHASSIS: DemoComponent[] = [
     ],
   }),
   driveChain({ place: 'Left side; joining link with a clip.', page: 36, slack: [35, 50] }),
+  tyres({ place: 'Front and rear alike, with tubes.', page: 37, kPa: [80, 100] }),
   brakePads({ place: 'Front wheel, seen from below the caliper.', page: 38, low: 1, torqueNm: 25 }),
 ]
