@@ -5,6 +5,7 @@ import { START_METER_CHECKS } from './checks-start-meter'
 import { PRESS_CHECKS } from './checks-start-press'
 import { START_SWITCH_CHECKS } from './checks-start-switch'
 import { START_FAULTS } from './faults-start'
+import { START_ROWS } from './rows-start'
 import { START_SETUPS } from './setups-start'
 import { START_SHARES } from './shares-start'
 import { START_SWAPS } from './swaps-start'
@@ -26,7 +27,9 @@ export const STARTING: Chapter = {
   swaps: START_SWAPS,
   setups: START_SETUPS,
   words: START_WORDS,
-  rows: {},
-  swapRows: {},
+  rows: START_ROWS,
+  swapRows: {
+    plugSwap: { hydraulicLock: [60, 38, 2] },
+  },
   unseparated: [],
 }
