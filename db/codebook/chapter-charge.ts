@@ -7,6 +7,7 @@ import { COOLANT_CHECKS } from './checks-cooling-deep'
 import { COOLING_FAN_CHECKS } from './checks-cooling-fan'
 import { CHARGE_FAULTS } from './faults-charge'
 import { COOLING_FAULTS } from './faults-cooling'
+import { CHARGE_ROWS, CHARGE_SWAP_ROWS } from './rows-charge'
 import { CHARGE_SETUPS } from './setups-charge'
 import { CHARGE_SHARES } from './shares-charge'
 import { CHARGE_SWAPS } from './swaps-charge'
@@ -30,7 +31,7 @@ export const CHARGE: Chapter = {
   swaps: CHARGE_SWAPS,
   setups: CHARGE_SETUPS,
   words: CHARGE_WORDS,
-  rows: {},
-  swapRows: {},
+  rows: CHARGE_ROWS,
+  swapRows: CHARGE_SWAP_ROWS,
   unseparated: [],
 }

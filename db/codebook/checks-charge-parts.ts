@@ -111,7 +111,8 @@ export const CHARGE_PART_CHECKS: CheckItem[] = [
       ['dead', 'Both ways or no way on a pin'],
     ],
     table: {
-      regulatorFailed: [33, 21, 46],
+      regulatorDead: [35, 22, 43],
+      regulatorFailed: [12, 13, 75],
       regulatorOvercharges: [68, 21, 11],
       statorFault: [84, 11, 5],
     },

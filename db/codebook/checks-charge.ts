@@ -22,7 +22,10 @@ export const CHARGE_CHECKS: CheckItem[] = [
     mayMoveMachine: true,
     minutes: 4,
     steps: [
-      ['Lights and heaters off. Clip the meter to the posts, not to the clamps.', BATTERY_GAS],
+      [
+        'Heaters and added loads off, lights as built. Clip the meter to the posts, not to the clamps.',
+        BATTERY_GAS,
+      ],
       ['Brake on. Start it. Let it idle for a minute.', SPEED_CAP],
       'Raise it to the speed of the sheet, or to just under where it pulls.',
       ['Hold it there ten seconds. Read. Leave the clamps alone.', UNPLUGGED_RUNS],
@@ -38,7 +41,8 @@ export const CHARGE_CHECKS: CheckItem[] = [
     ],
     table: {
       statorFault: [5, 7, 87, 1],
-      regulatorFailed: [4, 6, 89, 1],
+      regulatorDead: [4, 6, 89, 1],
+      regulatorFailed: [6, 5, 88, 1],
       mainFuseOpen: [9, 5, 85, 1],
       chargingPlugBurnt: [24, 12, 63, 1],
       regulatorOvercharges: [9, 9, 1, 81],
@@ -67,7 +71,7 @@ export const CHARGE_CHECKS: CheckItem[] = [
           { weight: 0.08, from: 0.96, to: 1.02 },
           { weight: 0.92, from: 0.7, to: 0.94 },
         ],
-        regulatorFailed: [
+        regulatorDead: [
           { weight: 0.06, from: 0.96, to: 1.02 },
           { weight: 0.94, from: 0.7, to: 0.94 },
         ],
@@ -119,7 +123,8 @@ export const CHARGE_CHECKS: CheckItem[] = [
     table: {
       loadTooGreat: [9, 82, 9],
       statorFault: [4, 27, 69],
-      regulatorFailed: [4, 15, 81],
+      regulatorDead: [4, 15, 81],
+      regulatorFailed: [3, 11, 86],
       chargingPlugBurnt: [16, 36, 48],
       mainFuseOpen: [7, 5, 88],
       batteryFailed: [46, 37, 17],
@@ -171,6 +176,7 @@ export const CHARGE_CHECKS: CheckItem[] = [
       batteryTerminalLoose: [50, 14, 36],
       keySwitchHarness: [53, 10, 37],
       regulatorOvercharges: [80, 10, 10],
+      regulatorFailed: [47, 6, 47],
     },
     otherwise: [93, 5, 2],
     expected: [{ words: 'At most 0.2 V with lights on.', source: PRACTICE }],

@@ -28,8 +28,8 @@ export const CHARGE_FAULTS: FaultData[] = [
       'Three legs alike in ohms and AC volts, none to ground, charge volts in limits hot; then the proof run.',
   }),
   fault({
-    id: 'regulatorFailed',
-    name: 'Regulator/rectifier dead: no or weak charge',
+    id: 'regulatorDead',
+    name: 'Regulator/rectifier open: no or weak charge',
     system: 'chargeSystem',
     circuits: [{ circuit: 'chargingSystem', role: 'part' }],
     repair: {
@@ -47,6 +47,28 @@ export const CHARGE_FAULTS: FaultData[] = [
     limpRefused:
       'Energy sum short, or a battery at or below 11.9 V at rest: no limp-out. Burnt wire: no ride at all.',
     provedBy: 'Charge volts in limits with lights off and on, cold and hot; then the proof run.',
+  }),
+  fault({
+    id: 'regulatorFailed',
+    name: 'Regulator shorted inside: blows fuse or drains',
+    system: 'chargeSystem',
+    circuits: [{ circuit: 'chargingSystem', role: 'part' }],
+    repair: {
+      words:
+        'Unplug it, wrap the ends. Then one fuse of the same rating, and a regulator of the same kind.',
+      doesNotFix: 'Unplugged it charges nothing: the ride is on the battery alone.',
+      minutes: 28,
+      costMinor: 100,
+      part: 'regulatorUnit',
+      setups: ['sidePanelOff'],
+      successOf100: 90,
+    },
+    onset:
+      'Main fuse blown or battery flat overnight; after a jump start the wrong way round, or heat.',
+    wayOut: 'limpOut',
+    limpRefused:
+      'Fuse blows again with it unplugged, or burnt wire: no ride. Energy sum short: no limp-out.',
+    provedBy: 'Fuse whole, no draw with the key off, charge volts in limits; then the proof run.',
   }),
   fault({
     id: 'regulatorOvercharges',

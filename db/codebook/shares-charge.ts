@@ -8,7 +8,8 @@ export const CHARGE_SHARES: ShareList[] = [
     gate: { ...WITH_BATTERY, kind: ['atv', 'sideBySide', 'dirtBike', 'smallEngine'] },
     somethingElse: 7,
     of100: {
-      regulatorFailed: 21,
+      regulatorDead: 19,
+      regulatorFailed: 2,
       statorFault: 18,
       chargingPlugBurnt: 15,
       batteryFailed: 10,
@@ -26,7 +27,8 @@ export const CHARGE_SHARES: ShareList[] = [
     gate: { ...WITH_BATTERY, kind: ['snowmobile'] },
     somethingElse: 8,
     of100: {
-      regulatorFailed: 20,
+      regulatorDead: 18,
+      regulatorFailed: 2,
       statorFault: 23,
       chargingPlugBurnt: 12,
       batteryFailed: 10,

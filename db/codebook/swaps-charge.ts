@@ -10,7 +10,7 @@ export const CHARGE_SWAPS: SwapItem[] = [
     kind: 'swap',
     id: 'regulatorSwap',
     name: 'Regulator swap',
-    fault: 'regulatorFailed',
+    fault: 'regulatorDead',
     part: 'regulatorUnit',
     gate: WITH_BATTERY,
     minutes: 18,
@@ -25,7 +25,8 @@ export const CHARGE_SWAPS: SwapItem[] = [
       { text: 'Fit the good one for good, if they were.', caution: null },
     ],
     table: {
-      regulatorFailed: [6, 12, 82],
+      regulatorDead: [6, 12, 82],
+      regulatorFailed: [22, 22, 56],
       regulatorOvercharges: [9, 13, 78],
       chargingPlugBurnt: [44, 49, 7],
       groundPoor: [66, 30, 4],
