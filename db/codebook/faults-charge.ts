@@ -8,7 +8,10 @@ export const CHARGE_FAULTS: FaultData[] = [
     id: 'statorFault',
     name: 'Stator winding open, shorted or to ground',
     system: 'chargeSystem',
-    circuits: [{ circuit: 'chargingSystem', role: 'part' }],
+    circuits: [
+      { circuit: 'chargingSystem', role: 'part' },
+      { circuit: 'systemVoltage', role: 'supply' },
+    ],
     repair: {
       words:
         'Shop job: stator and cover gasket. Mend its cable here if it only chafed outside the cover.',
@@ -31,7 +34,10 @@ export const CHARGE_FAULTS: FaultData[] = [
     id: 'regulatorDead',
     name: 'Regulator/rectifier open: no or weak charge',
     system: 'chargeSystem',
-    circuits: [{ circuit: 'chargingSystem', role: 'part' }],
+    circuits: [
+      { circuit: 'chargingSystem', role: 'part' },
+      { circuit: 'systemVoltage', role: 'supply' },
+    ],
     repair: {
       words:
         'Fit a regulator of the same kind on bare clean metal with its screws tight, fins in the wind, plugs cleaned.',
@@ -52,7 +58,10 @@ export const CHARGE_FAULTS: FaultData[] = [
     id: 'regulatorFailed',
     name: 'Regulator shorted inside: blows fuse or drains',
     system: 'chargeSystem',
-    circuits: [{ circuit: 'chargingSystem', role: 'part' }],
+    circuits: [
+      { circuit: 'chargingSystem', role: 'part' },
+      { circuit: 'systemVoltage', role: 'supply' },
+    ],
     repair: {
       words:
         'Unplug it, wrap the ends. Then one fuse of the same rating, and a regulator of the same kind.',
@@ -98,7 +107,10 @@ export const CHARGE_FAULTS: FaultData[] = [
     id: 'chargingPlugBurnt',
     name: 'Charging plug burnt or loose',
     system: 'chargeSystem',
-    circuits: [{ circuit: 'chargingSystem', role: 'wiring' }],
+    circuits: [
+      { circuit: 'chargingSystem', role: 'wiring' },
+      { circuit: 'systemVoltage', role: 'wiring' },
+    ],
     repair: {
       words:
         'Cut out the brown part; crimp new pins or join each wire with a sealed splice of full thickness.',

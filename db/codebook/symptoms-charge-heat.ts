@@ -115,38 +115,35 @@ export const HEAT_SYMPTOMS: SymptomItem[] = [
         fanCircuitFault: 14,
         radiatorPacked: 14,
       }),
-      told('gaugeOnly', 'Only lamp or gauge says so, nothing smells or feels hot', 5, {
+      told('gaugeOnly', 'Only lamp or gauge says so, nothing smells or feels hot', 2.5, {
         coolantSensorBad: 78,
-        coolantLow: 3,
         headGasketLeaking: 2,
       }),
-      told('draggedHot', 'Feels held back, a wheel or the track is stiff', 3, {
+      told('draggedHot', 'Feels held back, a wheel or the track is stiff', 2, {
         parkBrakeDragging: 80,
         caliperSeized: 78,
         trackFrozen: 82,
       }),
-      told('rubberSmell', 'Smell of burnt rubber or clutch, speed falls behind the revs', 3, {
+      told('rubberSmell', 'Smell of burnt rubber or clutch, speed falls behind the revs', 1.5, {
         beltSlips: 74,
         handClutchSlips: 70,
         parkBrakeDragging: 20,
         caliperSeized: 16,
       }),
-      told('leanSigns', 'Idle hangs or races, pings, weak on top', 5, {
+      told('leanSigns', 'Idle hangs or races, better with some choke', 2, {
         intakeLeak: 66,
         crankSealLeak: 66,
         jetsBlocked: 46,
         triggerWheelSlipped: 34,
-        fuelStale: 40,
-        valveTight: 14,
+        valveTight: 9,
       }),
-      told('oilSigns', 'Oil lamp, smoke, or nobody looked at the oil', 4, {
+      told('oilSigns', 'Oil lamp, or nobody looked at or mixed in the oil', 2, {
         oilLow: 62,
         noOilInMix: 56,
         twoStrokeOilFeed: 46,
       }),
     ],
     opens: 'suspects',
-    engine: 'runs',
     cautions: [SCALDS, TWO_STROKE_SEIZES, FAN_STARTS, COOL_FIRST, HOT_ENGINE],
     firstLook: [
       'coolantBottleLook',
