@@ -1,4 +1,5 @@
 import type { CheckItem, FaultItem, SwapItem } from '@/lib/model/code-book'
+import { allows } from '@/lib/model/engine-state'
 import type { Features, Gate } from '@/lib/model/features'
 import type { MachineModel } from '@/lib/model/machine-model'
 import {
@@ -82,8 +83,11 @@ const listGates = (faults: readonly FaultItem[]): Gate[] =>
 
 /** [CB10] [CB11] Faults no action can reach, and pairs of one list that no action tells apart. */
 export function checkReach(books: Books, unseparated: readonly Unseparated[]): BookProblem[] {
-  const actions: Action[] = [...books.shelf.check, ...books.shelf.swap]
-  return books.shelf.symptom.flatMap(({ id: symptom }) => {
+  return books.shelf.symptom.flatMap(({ id: symptom, engine }) => {
+    const actions: Action[] = [
+      ...books.shelf.check.filter((check) => allows(engine, check.machineState)),
+      ...books.shelf.swap,
+    ]
     const faults = books.shelf.fault.filter((f) => f.shares.some((s) => s.symptom === symptom))
     const sees = seenTogether({ faults, symptom })
     return [

@@ -144,6 +144,7 @@ export const HEAT_SYMPTOMS: SymptomItem[] = [
       }),
     ],
     opens: 'suspects',
+    engine: 'runs',
     cautions: [SCALDS, TWO_STROKE_SEIZES, FAN_STARTS, COOL_FIRST, HOT_ENGINE],
     firstLook: [
       'coolantBottleLook',

@@ -31,6 +31,7 @@ export const DIES_SYMPTOMS: SymptomItem[] = [
     ],
     conditions: DIES_WHEN,
     opens: 'suspects',
+    engine: 'runs',
     cautions: [
       VAPOUR,
       {

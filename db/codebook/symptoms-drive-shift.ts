@@ -129,6 +129,7 @@ export const SHIFT_SYMPTOMS: SymptomItem[] = [
       },
     ],
     opens: 'suspects',
+    engine: 'runs',
     cautions: [
       {
         signal: 'WARNING',

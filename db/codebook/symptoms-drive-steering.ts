@@ -152,6 +152,7 @@ export const STEERING_SYMPTOMS: SymptomItem[] = [
       },
     ],
     opens: 'suspects',
+    engine: 'runs',
     cautions: [NO_STEERING, ON_STAND],
     firstLook: ['frontLook', 'barRock', 'nutsFeel', 'forkSight', 'runnerFeel'],
     twoWrongOf100: 10,

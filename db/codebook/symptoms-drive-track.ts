@@ -122,6 +122,7 @@ export const TRACK_SYMPTOMS: SymptomItem[] = [
       },
     ],
     opens: 'suspects',
+    engine: 'runs',
     cautions: [KEY_OUT, PINCH_TRACK, HARD_LOAD, ON_STAND],
     firstLook: ['iceLook', 'trackLook', 'slideLook', 'parkBrakeLook'],
     twoWrongOf100: 10,

@@ -204,6 +204,7 @@ export const DRIVE_SYMPTOMS: SymptomItem[] = [
       },
     ],
     opens: 'suspects',
+    engine: 'runs',
     cautions: [KEY_OUT, TURNING_DRIVE, HARD_LOAD, BELT_TOW],
     firstLook: ['beltHouseLook', 'chainLook', 'rangeLever', 'axleLook', 'pushRoll'],
     twoWrongOf100: 8,

@@ -46,6 +46,7 @@ export const EVENT_SYMPTOMS: SymptomItem[] = [
       noted('stuckAlone', 'Nobody else there'),
     ],
     opens: 'wayOut',
+    engine: 'runs',
     cautions: [
       PEOPLE_FIRST,
       {
@@ -153,6 +154,7 @@ export const EVENT_SYMPTOMS: SymptomItem[] = [
       noted('saltWater', 'Salt water'),
     ],
     opens: 'suspects',
+    engine: 'cranks',
     cautions: [PEOPLE_FIRST, NO_CRANK_WATER, COLD_SKIN],
     firstLook: ['waterlineLook', 'boxDrainLook', 'oilMilkLook', 'pinsWetLook'],
     twoWrongOf100: 14,
@@ -238,6 +240,7 @@ export const EVENT_SYMPTOMS: SymptomItem[] = [
       }),
     ],
     opens: 'suspects',
+    engine: 'cranks',
     cautions: [PEOPLE_FIRST, UNSTEADY, NO_FLAME, HOLD_ROLLED],
     firstLook: ['underDrips', 'rolledWalk', 'straightAhead', 'boxDrainLook', 'stopSwitchLook'],
     twoWrongOf100: 12,

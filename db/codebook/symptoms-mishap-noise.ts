@@ -87,6 +87,7 @@ export const NOISE_SYMPTOMS: SymptomItem[] = [
       }),
     ],
     opens: 'suspects',
+    engine: 'cranks',
     cautions: [
       STOP_SWITCH_FIRST,
       {
@@ -192,6 +193,7 @@ export const NOISE_SYMPTOMS: SymptomItem[] = [
       }),
     ],
     opens: 'suspects',
+    engine: 'runs',
     cautions: [KNOCK_STOP, OIL_STOP],
     firstLook: ['oilLevelLook', 'shakeWalk', 'rollByHand'],
     twoWrongOf100: 7,

@@ -86,6 +86,7 @@ export const MISHAP_SYMPTOMS: SymptomItem[] = [
       heard('wrongCan', 'Filled from a strange can', 2, { noOilInMix: 64 }),
     ],
     opens: 'suspects',
+    engine: 'runs',
     cautions: [OIL_STOP, HOT_OIL, SLIPPERY_OIL],
     firstLook: ['oilLevelLook', 'oilWhere', 'oilMilkLook'],
     twoWrongOf100: 6,
@@ -163,6 +164,7 @@ export const MISHAP_SYMPTOMS: SymptomItem[] = [
       }),
     ],
     opens: 'suspects',
+    engine: 'runs',
     cautions: [
       KICKS_BACK,
       {
@@ -262,6 +264,7 @@ export const MISHAP_SYMPTOMS: SymptomItem[] = [
       }),
     ],
     opens: 'suspects',
+    engine: 'still',
     cautions: [
       NO_FLAME,
       {

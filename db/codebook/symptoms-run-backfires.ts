@@ -140,6 +140,7 @@ export const BACKFIRES: SymptomItem = {
     }),
   ],
   opens: 'suspects',
+  engine: 'runs',
   cautions: [BACKFIRE_BURNS, VAPOUR],
   firstLook: [
     'exhaustJointLook',

@@ -183,6 +183,7 @@ export const LIMP_MODE: SymptomItem = {
     }),
   ],
   opens: 'suspects',
+  engine: 'runs',
   cautions: [
     {
       signal: 'WARNING',

@@ -226,6 +226,7 @@ export const CRANKS_NO_START: SymptomItem = {
     }),
   ],
   opens: 'suspects',
+  engine: 'cranks',
   cautions: [
     {
       signal: 'DANGER',

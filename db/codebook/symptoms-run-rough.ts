@@ -210,6 +210,7 @@ export const RUNS_ROUGH: SymptomItem = {
     }),
   ],
   opens: 'suspects',
+  engine: 'runs',
   cautions: [
     {
       signal: 'WARNING',

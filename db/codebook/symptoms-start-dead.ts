@@ -141,6 +141,7 @@ export const ELECTRICAL_DEAD: SymptomItem = {
     }),
   ],
   opens: 'suspects',
+  engine: 'still',
   cautions: [BURNT_WIRE, BATTERY_GAS, SAME_FUSE],
   firstLook: ['directLoads', 'postsFeel', 'mainFuseLook', 'keyWiggle', 'stopSwitchLook'],
   twoWrongOf100: 9,

@@ -1,5 +1,6 @@
 import type { Bag } from '@/lib/model/bag'
 import type { CheckItem, FaultItem, SwapItem } from '@/lib/model/code-book'
+import { allows } from '@/lib/model/engine-state'
 import type { Role } from '@/lib/model/role'
 import type { Shop } from '@/lib/model/shop'
 import { type BookIndex, wordName } from './book-index'
@@ -34,6 +35,19 @@ export const GLOVE_FACTOR = 1.5
 export function minutesHere(minutes: number, { dark, airTempC = null }: Means): number {
   const gloves = airTempC !== null && airTempC < GLOVES_BELOW_C
   return minutes * (dark ? DARK_FACTOR : 1) * (gloves ? GLOVE_FACTOR : 1)
+}
+
+/** Why a check cannot be done on a machine with this complaint, in a sentence; null when it can. */
+export function whyNotNow(
+  { index, symptom }: { index: BookIndex; symptom: string | null },
+  check: CheckItem,
+): string | null {
+  const engine = index.symptoms.get(symptom ?? '')?.engine ?? 'runs'
+  return allows(engine, check.machineState)
+    ? null
+    : engine === 'still'
+      ? 'Not while the engine must not or cannot turn.'
+      : 'Not while the engine does not run.'
 }
 
 /** Why a check cannot be done with these means, in a sentence; null when it can. */

@@ -18,6 +18,7 @@ import {
   type Means,
   minutesHere,
   whyNotCheck,
+  whyNotNow,
   whyNotRepair,
   whyNotSwap,
 } from './plan-means'
@@ -95,7 +96,8 @@ function checksOf(doing: Doing, outlooks: Map<string, Outcome[]>): SingleModel['
     if (!letsThrough(check.gate, c.features)) return []
     const table = checkTable(doing.sight, check)
     if (table.scope.length === 0) return []
-    const why = recorded(doing.sight, check) ?? whyNotCheck(c.index, check, means)
+    const why =
+      recorded(doing.sight, check) ?? whyNotNow(c, check) ?? whyNotCheck(c.index, check, means)
     const action = {
       id: check.id,
       cost: check.costMinor,

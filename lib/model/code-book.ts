@@ -48,6 +48,8 @@ export const symptomItem = z.strictObject({
   ),
   /** A complaint that is no fault opens the way out and its rigging at once, without suspects (rule R4). */
   opens: z.enum(['suspects', 'wayOut']),
+  /** What the engine can be brought to with this complaint: to run, if badly; to turn; or to neither. */
+  engine: z.enum(['runs', 'cranks', 'still']),
   /** Said before anything is touched. */
   cautions: z.array(caution),
   /** Checks by eye, ear and hand that come before any other: a minute or two each, no tools to speak of. */
