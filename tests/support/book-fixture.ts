@@ -115,7 +115,6 @@ export const smallRightBook = (): CodeBookItem[] => [
     engine: 'runs',
     cautions: [],
     firstLook: ['lookAtPlug'],
-    engine: 'runs',
     twoWrongOf100: 5,
     source,
   },
