@@ -24,7 +24,10 @@ const LAST_KEPT = 40
 export function useEngine(name: string, question: Question | null): EngineView {
   const { index } = useBook()
   const key = useMemo(
-    () => (question === null || index === null ? null : `${index.version} ${keyOf(question)}`),
+    () =>
+      question === null || index === null
+        ? null
+        : `${index.version} ${index.withdrawn.join()} ${keyOf(question)}`,
     [question, index],
   )
   const [held, setHeld] = useState<Held | null>(() => last.get(name) ?? null)

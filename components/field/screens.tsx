@@ -1,6 +1,7 @@
 'use client'
 
 import { type ComponentType, lazy, type ReactNode, Suspense, useEffect } from 'react'
+import { JobsBook } from '@/components/store/jobs-book'
 import { useJob } from '@/components/store/use-rows'
 import { Screen } from '@/components/ui/screen'
 import { JobsScreen } from './jobs-screen'
@@ -98,7 +99,8 @@ function LandOnLead({ route, children }: { route: Route; children: ReactNode }) 
     if (moves) go(here.replace(jobId, leadId), { replace: true, from: here })
   }, [moves, go, here, jobId, leadId])
   if (job === null && 'jobId' in route) return <NotHere what="job" />
-  return moves ? null : children
+  if (moves) return null
+  return jobId === '' ? children : <JobsBook jobId={jobId}>{children}</JobsBook>
 }
 
 function OneScreen({ route }: { route: Route }) {

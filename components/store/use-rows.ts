@@ -1,8 +1,10 @@
 'use client'
 import { useMemo } from 'react'
 import type { Bag } from '@/lib/model/bag'
+import type { BookWithdrawal } from '@/lib/model/book-withdrawal'
 import type { Id } from '@/lib/model/id'
 import type { Job } from '@/lib/model/job'
+import type { LogEntry } from '@/lib/model/log-entry'
 import type { MachineRow } from '@/lib/model/machine'
 import type { MachineModel } from '@/lib/model/machine-model'
 import type { MeterProfile } from '@/lib/model/meter-profile'
@@ -57,6 +59,13 @@ export function useMachines(): MachineRow[] | undefined {
 export const useModels = (): MachineModel[] | undefined => useRows('machineModel')
 
 export const useMeters = (): MeterProfile[] | undefined => useRows('meterProfile')
+
+/** Safety withdrawals from the code book, the same list until one of them changes (R23). */
+export const useWithdrawals = (): readonly BookWithdrawal[] => useRows('bookWithdrawal') ?? NONE
+const NONE: readonly BookWithdrawal[] = []
+
+/** Every entry of the logs on this phone, in no order; undefined while opening. */
+export const useAllEntries = (): LogEntry[] | undefined => useRows('logEntry')
 
 export const usePeople = (): Person[] | undefined => useRows('person')
 

@@ -6,6 +6,7 @@ import { AppError } from '@/lib/model/result'
 import type { Instant } from '@/lib/model/time'
 import type { OpInput } from '@/lib/sync/protocol/op'
 import { usePhone, useStore } from './store-provider'
+import { useBook } from './use-book'
 
 export type Stamp = {
   newId(): Id
@@ -16,7 +17,7 @@ export type Stamp = {
   entry(
     jobId: Id,
     body: LogBody,
-    extra?: { happenedAt?: Instant; supersedes?: Id },
+    extra?: { happenedAt?: Instant; supersedes?: Id; bookVersion?: number },
   ): OpInput & { kind: 'log.add' }
 }
 
@@ -24,6 +25,7 @@ export type Stamp = {
 export function useStamp(): Stamp {
   const store = useStore()
   const phone = usePhone()
+  const { version } = useBook()
   return useMemo(
     () => ({
       newId: () => store.ports.ids.next(),
@@ -31,9 +33,9 @@ export function useStamp(): Stamp {
       zone: store.ports.zone(),
       entry: (jobId, body, extra) => {
         if (phone === null) throw new AppError('nobodyAtWork')
-        return phone.entry(jobId, body, { ...extra, bookVersion: store.book.get().version })
+        return phone.entry(jobId, body, { bookVersion: version, ...extra })
       },
     }),
-    [store, phone],
+    [store, phone, version],
   )
 }

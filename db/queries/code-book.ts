@@ -136,13 +136,12 @@ export async function bookItem(
   return row && { version: newest.version, item: row.body }
 }
 
-/** Answers the ids of checks and swaps that the newest version marks safe for guides. */
+/** Answers the ids of checks and swaps that a published version marks safe for guides: a job may hold any of them. */
 export async function guideSafeIds(tx: ShopTx): Promise<Set<string>> {
   const { rows } = await sql<{ itemId: string }>`
-    select i.item_id from code_book_item i
+    select distinct i.item_id from code_book_item i
       join code_book_content c on c.shop_id = i.shop_id and c.hash = i.hash
     where i.shop_id = ${tx.shopId} and i.kind in ('check', 'swap') and c.body ->> 'guideSafe' = 'true'
-      and i.version = (select max(version) from code_book_version where shop_id = ${tx.shopId})
   `.execute(tx)
   return new Set(rows.map((row) => row.itemId))
 }

@@ -90,6 +90,7 @@ export type Contact = {
   highestDseq: number | null
   held?: Held | null
   canary?: Id | null
+  bookVersion?: number | null
 }
 
 /** Notes that the phone was here: its clock against ours, and how far its ops have come (P22). */

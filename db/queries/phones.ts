@@ -55,6 +55,7 @@ const phoneOf = (row: PhoneRow): Omit<DeskPhone, 'missing' | 'items'> => ({
   lastSeenAt: row.lastSeenAt,
   clockOffsetMs: row.clockOffsetMs,
   held: heldOf(row),
+  bookVersion: row.bookVersion,
   revoked: row.revokedAt === null ? null : { at: row.revokedAt, reason: row.revokedReason },
   wipeToldAt: row.wipeToldAt,
   gone: goneOf(row),

@@ -65,6 +65,7 @@ export type DeviceTable = {
   heldOldestAt: string | null
   heldToldAt: string | null
   canary: string | null
+  bookVersion: number | null
   gapsToldAt: string | null
   replacedBy: string | null
   replacedAt: string | null

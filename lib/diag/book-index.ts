@@ -1,3 +1,4 @@
+import { inShape } from '@/lib/model/book-shape'
 import type {
   CheckItem,
   CodeBook,
@@ -40,7 +41,7 @@ export type BookIndex = {
 /** The book as maps by id; order of insertion is the order of the book. A later item of the same id wins. */
 export function indexBook(book: CodeBook): BookIndex {
   const maps = emptyMaps(book.version)
-  for (const item of book.items) place(maps, item)
+  for (const item of book.items) place(maps, inShape(item))
   return maps
 }
 

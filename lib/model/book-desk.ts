@@ -1,5 +1,6 @@
 import * as z from 'zod/mini'
 import { bookWithdrawal } from './book-withdrawal'
+import type { CodeBookItem } from './code-book'
 
 /** The code book at the desk: what the owner's page reads. Unknown fields are ignored. */
 const count = z.int().check(z.minimum(0))
@@ -56,3 +57,19 @@ export const deskBook = z.object({
   people: z.array(z.object({ id: z.string(), name: z.nullable(z.string()) })),
 })
 export type DeskBook = z.infer<typeof deskBook>
+
+const isItem = (item: unknown): boolean =>
+  typeof item === 'object' &&
+  item !== null &&
+  'kind' in item &&
+  'id' in item &&
+  typeof item.kind === 'string' &&
+  typeof item.id === 'string'
+
+/** A whole version as the shop serves it, of whatever age: its items were in shape when it was published. */
+export const servedBook = z.object({
+  version: z.int(),
+  hash: z.string(),
+  publishedAt: z.string(),
+  items: z.array(z.custom<CodeBookItem>(isItem)),
+})

@@ -41,6 +41,8 @@ export const deskPhone = z.object({
   held: z.nullable(
     z.object({ ops: count, photos: count, oldestAt: z.nullable(z.string()), toldAt: z.string() }),
   ),
+  /** The newest version of the code book it holds, as it told; null when it never told. */
+  bookVersion: z.nullable(z.int()),
   /** Numbers of it that never came, by what came after them (P22). */
   missing: count,
   revoked: z.nullable(z.object({ at: z.string(), reason: z.nullable(z.string()) })),

@@ -18,6 +18,7 @@ const phoneOf = (
   revoked: null,
   wipeToldAt: null,
   gone: null,
+  bookVersion: null,
   missing: 0,
   items: [],
 })

@@ -47,6 +47,7 @@ function Facts({ phone }: { phone: DeskPhone }) {
     ['Last reached', [reachedWords(phone.lastSeenAt, times)]],
     ['Its clock', [clockWords(phone.clockOffsetMs)]],
     ['Unsent, as it told', heldWords(phone, times)],
+    ['Code book', [phone.bookVersion === null ? 'Not told yet' : `Version ${phone.bookVersion}`]],
   ]
   if (phone.missing > 0) {
     lines.push(['Never came', [`${counted(phone.missing, 'record')} in between`]])

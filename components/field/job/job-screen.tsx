@@ -20,6 +20,7 @@ import { AlsoEnteredOfJob, AlsoEnteredOfMachine } from '../settings/also-entered
 import { clockTime, dayOf } from '../times'
 import type { JobFacts } from '../use-job-facts'
 import { askedWords, counted } from '../words'
+import { BookPart } from './book-part'
 import { DaylightLine } from './daylight-line'
 import { NextRows } from './next-rows'
 import { ReopenedNotice } from './reopened-notice'
@@ -91,6 +92,7 @@ function Open({ facts }: { facts: JobFacts }) {
           <AlsoEnteredOfMachine machine={machine} zone={job.zone} mayUse={mayChange} />
         )}
       </section>
+      <BookPart job={job} />
       <PutRight facts={facts} entries={entries} mayWork={mayWork} mayChange={mayChange} />
       <Caution signal="NOTICE">
         The maker’s manual, local rules and licensed practice come before anything shown here.

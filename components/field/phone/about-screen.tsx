@@ -63,7 +63,10 @@ function Holds() {
   const machines = useMachines()
   const models = useModels()
   const now = useNow()
-  const lines = [
+  const older = book.versions.filter((version) => version !== book.version)
+  const held: [string, string][] =
+    older.length === 0 ? [] : [['Held for open jobs', `Version ${older.join(', ')}`]]
+  const lines: [string, string][] = [
     ['Shop', shop?.name ?? 'Not fetched yet'],
     ['Jobs', String(jobs?.length ?? 0)],
     ['Machines', String(machines?.length ?? 0)],
@@ -73,10 +76,11 @@ function Holds() {
       unsent.fetchedAt === null ? 'Never' : `${span(now - Date.parse(unsent.fetchedAt))} ago`,
     ],
     ['Code book', book.version === null ? 'None' : `Version ${book.version}`],
+    ...held,
     ['Checks in it', String(book.index?.checks.size ?? 0)],
     ['Engine', `Version ${ENGINE_VERSION}`],
     ['Unsent', unsentWords(unsent)],
-  ] as const
+  ]
   return (
     <section className="grid gap-2">
       <RuleEdge>It holds</RuleEdge>

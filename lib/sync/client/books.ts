@@ -2,7 +2,7 @@ import type { SyncPorts } from '@/lib/ports/sync-ports'
 import type { AppWorker } from './app-worker'
 import { BookDb, watchBook } from './book-store'
 import type { Phone } from './phone'
-import type { Indexed } from './phone-db'
+import { type Indexed, writeMeta } from './phone-db'
 import type { BookView } from './views'
 import { type Cell, LiveCell } from './watch'
 
@@ -25,6 +25,7 @@ export class Books {
   readonly #worker: Pick<AppWorker, 'loadBook'>
   readonly #phone: Cell<Phone | null>
   readonly #failed: (cause: unknown) => void
+  #noted: number | null = null
   #askedMs = Number.NEGATIVE_INFINITY
 
   constructor(of: {
@@ -50,7 +51,10 @@ export class Books {
       const phone = this.#phone.get()
       if (phone === null) return
       const book = watchBook(this.#db, phone.actor.shopId, this.#failed)
-      leave = book.subscribe(() => emit(book.get()))
+      leave = book.subscribe(() => {
+        emit(book.get())
+        this.#noteVersion(phone, book.get().version)
+      })
     }
     const end = this.#phone.subscribe(follow)
     follow()
@@ -58,6 +62,15 @@ export class Books {
       end()
       leave()
     }
+  }
+
+  /** Has the shop told of a version that came in, and those looked through that no job needs any more. */
+  #noteVersion({ core }: Phone, version: number | null): void {
+    if (version === null || version === this.#noted) return
+    const isNewer = this.#noted !== null
+    this.#noted = version
+    writeMeta(core.db, 'bookVersion', version).catch(() => undefined)
+    if (isNewer) this.ask(true)
   }
 
   /** Has the code books looked after; unless `now`, only when none is held or it is a while since. */

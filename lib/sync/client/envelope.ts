@@ -64,6 +64,8 @@ export async function packRequest(of: {
   /** What the phone still holds besides the first so many ops; and the id of its store (P22). */
   held?: (sent: number) => NonNullable<SyncRequest['held']>
   canary?: Id | null
+  /** The version of the code book held. */
+  book?: number | undefined
 }): Promise<Packed> {
   const said = { dev: of.sender.deviceId, personId: of.sender.personId }
   const short = of.ops.map((op) => shortOp(op, said))
@@ -79,6 +81,7 @@ export async function packRequest(of: {
       pull: of.pull,
       ...(of.held === undefined ? {} : { held: of.held(count) }),
       canary: of.canary ?? null,
+      ...(of.book === undefined ? {} : { book: of.book }),
       brief: true,
     }
     const body = await gzip(text.encode(JSON.stringify(request)))

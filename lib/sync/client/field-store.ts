@@ -188,7 +188,7 @@ export class FieldStore {
       ports: this.ports,
       indexed: this.#indexed,
       onBook: () => this.#books.ask(true),
-      guideSafe: () => guideSafeOf(this.book.get().index),
+      guideSafe: () => guideSafeIn(this.book.get()),
       failed: (cause) => this.#failed(this.phone.get(), cause),
       onWipe: (wiped) => this.#empty(wiped),
       onBlocked: () => this.trouble.set('blocked'),
@@ -252,6 +252,10 @@ export class FieldStore {
     })
   }
 }
+
+/** Safe in any version held, as the shop takes it: jobs are worked out with different ones. */
+const guideSafeIn = ({ versions, of }: BookView): ReadonlySet<string> =>
+  new Set(versions.flatMap((version) => [...guideSafeOf(of(version))]))
 
 const none = (): void => undefined
 

@@ -95,6 +95,8 @@ export type MetaValues = {
   device: { deviceId: Id; enrolled: boolean }
   /** Written once when the store is made: tells an emptied store from a new one (P22). */
   canary: { id: Id; madeAt: number }
+  /** The newest version of the code book on this phone, told to the shop with every exchange. */
+  bookVersion: number
   /** When the tab that sends last moved (P19). */
   heartbeat: number
   setAside: { entity: string; id: string; seq: number }[]

@@ -141,6 +141,7 @@ export class SyncRun {
       clientTime: new Date(sentMs).toISOString(),
       held,
       canary: (await readMeta(db, 'canary'))?.id ?? null,
+      book: await readMeta(db, 'bookVersion'),
     })
     this.#toldPhotos = held(0).photos
     const signed = await signedHeaders(sender, packed.dseq, packed.body)

@@ -46,6 +46,8 @@ export const syncRequest = z.object({
   ),
   /** Since protocol 2: the id written when this phone's store was made (P22). */
   canary: z.optional(z.nullable(id)),
+  /** Which version of the code book the phone holds. */
+  book: z.optional(z.nullable(z.int().check(z.minimum(1), z.maximum(2_147_483_647)))),
   /**
    * Since protocol 2: the answer may leave out what the phone has just said (brief.ts) and never reads; the
    * ops here, and rows there, what is said beside them (short.ts).

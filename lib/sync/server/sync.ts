@@ -162,6 +162,7 @@ function contactOf({ message, dseq, now }: Pick<Exchange, 'message' | 'dseq' | '
     highestDseq: dseq?.last ?? null,
     held: heldOf(message),
     canary: message.canary ?? null,
+    bookVersion: message.book ?? null,
   }
 }
 
