@@ -1,5 +1,4 @@
 import { useQuery } from '@tanstack/react-query'
-import { type CodeBook, codeBook } from '@/lib/model/code-book'
 import {
   type DeskBoard,
   type DeskJob,
@@ -37,17 +36,5 @@ export function useDeskParts() {
   return useQuery<DeskParts>({
     queryKey: reads.parts,
     queryFn: () => read(ports.line, '/api/desk/parts', deskParts),
-  })
-}
-
-/** The shop's newest code book: what a job is worked out with (lib/diag/book-for-job.ts). */
-export function useDeskBook(wanted: boolean) {
-  const { ports } = useDesk()
-  return useQuery<CodeBook>({
-    queryKey: reads.book,
-    queryFn: () => read(ports.line, '/api/codebook', codeBook),
-    enabled: wanted,
-    staleTime: 60_000,
-    gcTime: Number.POSITIVE_INFINITY,
   })
 }

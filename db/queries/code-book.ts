@@ -115,13 +115,13 @@ export async function contentByHash(
   return new Map(rows.map(({ hash, body }) => [hash, body]))
 }
 
-/** Answers an item of the newest version, and that version's number; undefined when it is not in it. */
+/** Answers an item of a version (null: the newest), and that version's number; undefined when it is not in it. */
 export async function bookItem(
   tx: ShopTx,
-  { kind, id }: { kind: CodeBookItem['kind']; id: string },
+  { kind, id, version = null }: { kind: CodeBookItem['kind']; id: string; version?: number | null },
 ): Promise<{ version: number; item: CodeBookItem } | undefined> {
-  const newest = await publishedVersion(tx)
-  if (!newest) return undefined
+  const of = version ?? (await publishedVersion(tx))?.version
+  if (of === undefined) return undefined
   const row = await tx
     .selectFrom('codeBookItem as i')
     .innerJoin('codeBookContent as c', (join) =>
@@ -129,11 +129,21 @@ export async function bookItem(
     )
     .select('c.body')
     .where('i.shopId', '=', tx.shopId)
-    .where('i.version', '=', newest.version)
+    .where('i.version', '=', of)
     .where('i.kind', '=', kind)
     .where('i.itemId', '=', id)
     .executeTakeFirst()
-  return row && { version: newest.version, item: row.body }
+  return row && { version: of, item: row.body }
+}
+
+/** Answers the version that a job and those merged into it hold: the newest an entry was written with; null: none. */
+export async function versionOfJob(tx: ShopTx, jobId: Id): Promise<number | null> {
+  const { rows } = await sql<{ version: number | null }>`
+    select max(e.book_version) as version from log_entry e
+      join job j on j.shop_id = e.shop_id and j.id = e.job_id
+    where e.shop_id = ${tx.shopId} and (j.id = ${jobId} or j.merged_root = ${jobId})
+  `.execute(tx)
+  return rows[0]?.version ?? null
 }
 
 /** Answers the ids of checks and swaps that a published version marks safe for guides: a job may hold any of them. */

@@ -8,7 +8,7 @@ import type { Instant } from '@/lib/model/time'
 import { asShop, type ShopTx } from '../client'
 import { appendAudit } from './audit'
 import { lockShop, takeChanges } from './changes'
-import { bookItem } from './code-book'
+import { bookItem, versionOfJob } from './code-book'
 import type { NotThere } from './desk-writes'
 import { findJob, setJobStand } from './jobs'
 import { appendLogEntries } from './log-entries'
@@ -19,7 +19,7 @@ import { enqueueWork } from './work'
 export type Move = { to: JobState; words: string; detail: Record<string, unknown> }
 type Input = {
   jobId: Id
-  /** The fault named as the cause; its name is looked up in the newest code book. */
+  /** The fault named as the cause; its name is looked up in the code book that the job holds. */
   fault: string | null
   stamp: { auditId: Id; entryId: Id; at: Instant; engineVersion: string }
   /** When a job closed now leaves the phones. */
@@ -39,7 +39,9 @@ export function moveJobAtDesk<P>(
   return asShop(actor.shopId, async (tx) => {
     await lockShop(tx, [jobId])
     const job = await findJob(tx, jobId)
-    const named = fault === null ? null : await bookItem(tx, { kind: 'fault', id: fault })
+    // By the job's own book: its suspects were listed from that one, and the closing moves it to no other.
+    const version = await versionOfJob(tx, jobId)
+    const named = fault === null ? null : await bookItem(tx, { kind: 'fault', id: fault, version })
     if (!job || named === undefined) return fail({ kind: 'notFound' as const })
     const decided = decide(job, named?.item.kind === 'fault' ? named.item.name : null)
     if (!decided.ok) return decided

@@ -1,4 +1,5 @@
 import { afterAll, beforeAll, describe, expect, it } from 'vitest'
+import { GET as getBook } from '@/app/api/codebook/route'
 import { asShop } from '@/db/client'
 import { listAudit } from '@/db/queries/audit'
 import { publishedBook, publishedVersion } from '@/db/queries/code-book'
@@ -6,6 +7,7 @@ import { listWithdrawals } from '@/db/queries/code-book-withdrawal'
 import { type BookWithdrawal, bookWithdrawal, type WithdrawForm } from '@/lib/model/book-withdrawal'
 import type { CodeBookItem } from '@/lib/model/code-book'
 import type { LogBody } from '@/lib/model/log-entry'
+import { bookManifest, bookNotices } from '@/lib/sync/protocol/book'
 import { changedJobs } from '@/lib/sync/server/book/changed-jobs'
 import { publishDraft } from '@/lib/sync/server/book/publish-draft'
 import { type BookHand, takeDraft } from '@/lib/sync/server/book/take-draft'
@@ -115,6 +117,14 @@ describe('[R23] [CB41] a safety withdrawal', () => {
     ])
     const personId = world.a.people.guide?.id ?? ''
     expect(told(await pullAll(second.device, second.cookie))[0]?.heard).toEqual([{ personId, at }])
+    const url = 'http://shop.invalid/api/codebook?as='
+    const ask = async (as: string) =>
+      (await getBook(new Request(`${url}${as}`, { headers: { cookie: second.cookie } }))).json()
+    expect(bookNotices.parse(await ask('notices'))).toMatchObject({
+      newest: 1,
+      withdrawals: [{ id }],
+    })
+    expect(bookManifest.parse(await ask('manifest')).withdrawals).toMatchObject([{ id }])
     const trail = await asShop(world.a.id, (tx) => listAudit(tx, null))
     const lines = trail.filter(({ action }) => action === 'book.heard')
     expect(lines[0]).toMatchObject({ actorId: personId, entityId: id, deviceId: guide.device.id })

@@ -4,10 +4,9 @@ import { engine } from '@/components/engine/engine-client'
 import { specForEngine } from '@/components/engine/spec-kept'
 import { keyOf } from '@/components/engine/use-engine'
 import type { Answer, Question } from '@/components/engine/work'
-import { bookForJob } from '@/lib/diag/book-for-job'
-import { type BookIndex, indexBook } from '@/lib/diag/book-index'
+import type { BookIndex } from '@/lib/diag/book-index'
 import type { DeskJob } from '@/lib/model/desk'
-import { useDeskBook } from '../use-desk-reads'
+import { useDeskBook } from '../use-desk-book'
 
 /** What the engine is asked: the very input the phone gives it, from the same entries and spec sheet. */
 export function questionOf(found: DeskJob): Question {
@@ -36,11 +35,17 @@ export type JobCase = {
 
 /** Suspects of a job, worked out here by the engine of the phone. The last answer stands meanwhile. */
 export function useJobCase(found: DeskJob | undefined): JobCase {
-  const book = useDeskBook(found !== undefined)
-  const index = useMemo(() => (book.data ? indexBook(book.data) : null), [book.data])
+  const book = useDeskBook(found !== undefined, found?.entries)
+  const { index, newerSeen } = book
   const question = useMemo(() => (found ? questionOf(found) : null), [found])
   const reckoned = useQuery<Answer>({
-    queryKey: ['reckoned', found?.job.id, index?.version, question ? keyOf(question) : null],
+    queryKey: [
+      'reckoned',
+      found?.job.id,
+      index?.version,
+      index?.withdrawn.join(),
+      question ? keyOf(question) : null,
+    ],
     queryFn: () => {
       if (!index || !question) throw new Error('asked before the book was there')
       return engine.ask(index, question)
@@ -51,7 +56,7 @@ export function useJobCase(found: DeskJob | undefined): JobCase {
   })
   return {
     index,
-    newerSeen: bookForJob(index ? [index.version] : [], found?.entries ?? []).newerSeen,
+    newerSeen,
     answer: reckoned.data ?? null,
     working: reckoned.isPlaceholderData || reckoned.isPending,
     failed: reckoned.isError || book.isError,

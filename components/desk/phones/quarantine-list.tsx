@@ -1,11 +1,10 @@
 'use client'
 
-import { useMemo, useState } from 'react'
+import { useState } from 'react'
 import { Key } from '@/components/ui/key'
-import { indexBook } from '@/lib/diag/book-index'
 import type { DeskPhone } from '@/lib/model/phones'
 import { counted } from '../../field/words'
-import { useDeskBook } from '../use-desk-reads'
+import { useDeskBook } from '../use-desk-book'
 import type { DecideAction, Decided } from './phone-actions'
 import { QuarantineItem } from './quarantine-item'
 import { RefuseForm } from './refuse-form'
@@ -18,8 +17,7 @@ export function QuarantineList({ phone, decideOn }: Props) {
   const [left, setLeft] = useState<ReadonlyMap<string, Decided>>(new Map())
   const [refusing, setRefusing] = useState(false)
   const { busy, refusal, act } = usePhoneActing()
-  const book = useDeskBook(true)
-  const index = useMemo(() => (book.data ? indexBook(book.data) : null), [book.data])
+  const { index } = useDeskBook(true)
   const waiting = phone.items.filter((item) => item.decision === null)
   const decide = async (form: Parameters<DecideAction>[0]) => {
     const done = await act(() => decideOn(form), summaryOf)

@@ -1,4 +1,5 @@
 import * as z from 'zod/mini'
+import { bookWithdrawal } from '@/lib/model/book-withdrawal'
 import { sha256Hex } from '@/lib/model/id'
 
 /**
@@ -25,8 +26,17 @@ export const bookManifest = z.object({
   hash: sha256Hex,
   publishedAt: z.string(),
   items: z.record(z.string(), sha256Hex),
+  /** What was withdrawn from this version. */
+  withdrawals: z.array(bookWithdrawal),
 })
 export type BookManifest = z.infer<typeof bookManifest>
+
+/** What `GET /api/codebook?as=notices` answers: the newest version, and every withdrawal (R23). */
+export const bookNotices = z.object({
+  newest: z.nullable(z.int()),
+  withdrawals: z.array(bookWithdrawal),
+})
+export type BookNotices = z.infer<typeof bookNotices>
 
 /** The name of an item within a book: words share ids across kinds. */
 export const itemKey = ({ kind, id }: { kind: string; id: string }): string => `${kind}:${id}`

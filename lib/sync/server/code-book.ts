@@ -8,8 +8,15 @@ import {
   versionByHash,
   versionsByNumber,
 } from '@/db/queries/code-book'
+import { listWithdrawals } from '@/db/queries/code-book-withdrawal'
+import { holdsIn } from '@/lib/diag/withdrawn'
 import type { Actor } from '@/lib/model/person'
-import { type BookManifest, type BookPatch, itemKey } from '@/lib/sync/protocol/book'
+import {
+  type BookManifest,
+  type BookNotices,
+  type BookPatch,
+  itemKey,
+} from '@/lib/sync/protocol/book'
 import { changesBetween, withContents } from './book/make-patch'
 import { problemAnswer } from './problems'
 
@@ -24,7 +31,8 @@ const MAX_VERSION = 2_147_483_647
 
 /**
  * What is asked: which version (`version`; null: the newest), from which hash on (`from`: only what changed
- * since the version that the phone holds), or its list of hashes (`as=manifest`).
+ * since the version that the phone holds), its list of hashes (`as=manifest`), or what was withdrawn
+ * (`as=notices`), which no tag holds for.
  */
 export type BookWanted = { version: string | null; from: string | null; as: string | null }
 
@@ -47,6 +55,7 @@ export async function answerBook(
   const version = wanted.version === null ? undefined : readVersion(wanted.version)
   if (version === null) return problemAnswer({ kind: 'notFound' })
   return await asShop(actor.shopId, async (tx) => {
+    if (wanted.as === 'notices') return Response.json(await noticesOf(tx), { headers: NEVER_KEPT })
     const head =
       version === undefined
         ? await publishedVersion(tx)
@@ -91,11 +100,19 @@ async function patchOf(tx: ShopTx, base: BookVersion, head: BookVersion): Promis
   }
 }
 
+const NEVER_KEPT = { 'cache-control': 'no-store' }
+
+async function noticesOf(tx: ShopTx): Promise<BookNotices> {
+  const newest = await publishedVersion(tx)
+  return { newest: newest?.version ?? null, withdrawals: await listWithdrawals(tx) }
+}
+
 async function manifestOf(tx: ShopTx, head: BookVersion): Promise<BookManifest> {
   const placed = await itemsOfVersion(tx, head.version)
   const items = placed.map(({ kind, itemId, hash }) => [itemKey({ kind, id: itemId }), hash])
   const { version, hash, publishedAt } = head
-  return { version, hash, publishedAt, items: Object.fromEntries(items) }
+  const withdrawals = (await listWithdrawals(tx)).filter((one) => holdsIn(one, version))
+  return { version, hash, publishedAt, items: Object.fromEntries(items), withdrawals }
 }
 
 function readVersion(text: string): number | null {
