@@ -46,6 +46,11 @@ export function DeskHeader() {
             Phones
           </a>
         ) : null}
+        {may(actor.roles, 'book.publish') ? (
+          <a href={deskPaths.book} aria-current={path === deskPaths.book ? 'page' : undefined}>
+            Code book
+          </a>
+        ) : null}
         {may(actor.roles, 'field.see') ? <a href="/field">Field</a> : null}
       </nav>
       <LineState />

@@ -8,6 +8,7 @@ export const deskPaths = {
   parts: '/desk/parts',
   handOver: '/desk/import',
   phones: '/desk/phones',
+  book: '/desk/codebook',
 }
 
 /** The id of the job the address names, or null. */

@@ -4,7 +4,7 @@ import type { Id } from '@/lib/model/id'
 import type { Instant } from '@/lib/model/time'
 import type { ShopTx } from '../client'
 import type { KeptUnseparated } from '../tables/code-book'
-import { bookHash, storeItems } from './code-book'
+import { bookHash, type PlacedItem, storeItems } from './code-book'
 
 /** The draft of a shop's code book: what is published next. A shop has one or none. */
 export type BookDraft = {
@@ -37,6 +37,16 @@ export async function draftItems(tx: ShopTx): Promise<CodeBookItem[]> {
     .orderBy('d.place')
     .execute()
   return rows.map((row) => row.body)
+}
+
+/** Answers which items the draft has, in its order; none without a draft. */
+export async function placedOfDraft(tx: ShopTx): Promise<PlacedItem[]> {
+  return await tx
+    .selectFrom('codeBookDraftItem')
+    .select(['kind', 'itemId', 'place', 'hash'])
+    .where('shopId', '=', tx.shopId)
+    .orderBy('place')
+    .execute()
 }
 
 /** Puts a draft down. One that is there is an error of the caller (23505): drop it first. */

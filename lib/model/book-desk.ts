@@ -47,8 +47,37 @@ export const bookVersionRow = z.object({
 })
 export type BookVersionRow = z.infer<typeof bookVersionRow>
 
-export const finding = z.object({ kind: z.string(), id: z.string(), words: z.string() })
+const place = z.object({ file: z.string(), line: z.int(), column: z.int() })
+
+/** POST /api/desk/codebook/import: one JSON file, or CSV files; `replace`: in place of the draft there is. */
+export const bookImport = z.strictObject({
+  files: z
+    .array(z.strictObject({ name: z.string().check(z.maxLength(80)), text: z.string() }))
+    .check(z.minLength(1), z.maxLength(20)),
+  note: z.nullable(z.string().check(z.trim(), z.minLength(1), z.maxLength(500))),
+  replace: z.boolean(),
+})
+export type BookImport = z.infer<typeof bookImport>
+
+/** Something the checker finds in a book; `place`: where in the file, when it came from one. */
+export const finding = z.object({
+  kind: z.string(),
+  id: z.string(),
+  words: z.string(),
+  place: z.optional(z.nullable(place)),
+})
 export type Finding = z.infer<typeof finding>
+
+/** `taken` null: the files were wrong, and there is no draft of them. */
+export const bookImported = z.object({
+  taken: z.nullable(z.object({ hash: z.string(), items: count })),
+  problems: z.array(z.object({ ...place.shape, words: z.string() })),
+  findings: z.array(finding),
+})
+export type BookImported = z.infer<typeof bookImported>
+
+/** Nothing is asked with these. */
+export const noForm = z.strictObject({})
 
 export const deskBook = z.object({
   versions: z.array(bookVersionRow),

@@ -9,6 +9,7 @@ export const reads = {
   job: (jobId: string) => ['desk', 'job', jobId] as const,
   parts: ['desk', 'parts'] as const,
   book: ['book'] as const,
+  books: ['book', 'desk'] as const,
   phones: ['desk', 'phones'] as const,
 }
 

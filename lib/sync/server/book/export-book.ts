@@ -1,4 +1,6 @@
 import { asShop } from '@/db/client'
+import { writeBookCsv } from '@/db/codebook/file-csv'
+import { writeBookJson } from '@/db/codebook/file-json'
 import type { BookFile } from '@/db/codebook/file-problem'
 import { publishedBook, unseparatedOf } from '@/db/queries/code-book'
 import type { Id } from '@/lib/model/id'
@@ -22,4 +24,19 @@ export async function exportBook(
     const { version, hash, items } = found
     return { version, hash, book: { items, unseparated: await unseparatedOf(tx, version) } }
   })
+}
+
+/** The book as one file to be handed out: JSON (`kind` null), or the CSV of one kind; null for a kind that is none. */
+export function exportedFile(
+  { book, version, hash }: Exported,
+  kind: string | null,
+): { name: string; text: string; type: string } | null {
+  if (kind === null) {
+    const text = writeBookJson(book, { version, hash })
+    const name = `codebook-${version ?? 'draft'}.json`
+    return { name, text, type: 'application/json; charset=utf-8' }
+  }
+  const name = `${kind}.csv`
+  const text = writeBookCsv(book).get(name)
+  return text === undefined ? null : { name, text, type: 'text/csv; charset=utf-8' }
 }
