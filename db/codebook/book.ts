@@ -1,11 +1,16 @@
 import type { CodeBookItem } from '@/lib/model/code-book'
 import { assemble, type Chapter } from './chapter'
+import { CHARGE } from './chapter-charge'
 import { DIES } from './chapter-dies'
+import { DRIVE } from './chapter-drive'
+import { MISHAP } from './chapter-mishap'
+import { RUN } from './chapter-run'
+import { STARTING } from './chapter-start'
 import { itemsOf } from './items'
 import type { Unseparated } from './unseparated'
 
 /** The chapters in their order: a later one builds on what stands in an earlier one. */
-const CHAPTERS: readonly Chapter[] = [DIES]
+const CHAPTERS: readonly Chapter[] = [DIES, RUN, STARTING, CHARGE, DRIVE, MISHAP]
 
 const book = assemble(CHAPTERS)
 

@@ -1,5 +1,4 @@
 import type { MachineModel } from '@/lib/model/machine-model'
-import { BOOK_ITEMS } from './book'
 import { CRAG_450 } from './demo-crag-450'
 import { DRIFT_600 } from './demo-drift-600'
 import { FELL_1000 } from './demo-fell-1000'
@@ -10,23 +9,6 @@ import { HOLM_28 } from './demo-holm-28'
 import { MOOR_450 } from './demo-moor-450'
 import { RIME_440 } from './demo-rime-440'
 import { SKERRY_250 } from './demo-skerry-250'
-
-const named = (kind: 'part' | 'setup') =>
-  new Set(BOOK_ITEMS.flatMap((item) => (item.kind === kind ? [item.id] : [])))
-const PARTS = named('part')
-const SETUPS = named('setup')
-
-/** A model with the set-ups and parts that the book knows: a book of some of the chapters has fewer words. */
-function inTheBook(model: MachineModel): MachineModel {
-  const { specSheet } = model
-  if (specSheet === null) return model
-  const components = specSheet.components.map((component) => ({
-    ...component,
-    setups: component.setups.filter((setup) => SETUPS.has(setup)),
-  }))
-  const parts = specSheet.parts.filter(({ part }) => PARTS.has(part))
-  return { ...model, specSheet: { ...specSheet, components, parts } }
-}
 
 /** The models of the demo shop: all invented, and marked so in every figure's source. */
 export const DEMO_MODELS: MachineModel[] = [
@@ -40,4 +22,4 @@ export const DEMO_MODELS: MachineModel[] = [
   HEATH_300,
   CRAG_450,
   HOLM_28,
-].map(inTheBook)
+]

@@ -91,6 +91,12 @@ const POWERED: Chapter['rows'] = {
     batteryFailed: [55, 35, 10],
     parasiticDrain: [56, 31, 13],
   },
+  fanAtKeyOn: {
+    mainFuseOpen: [4, 3, 93],
+    batteryFailed: [54, 32, 14],
+    parasiticDrain: [55, 31, 14],
+  },
+  fanPlugBulb: { mainFuseOpen: [3, 1, 96], batteryFailed: [62, 25, 13] },
   fourWheelListen: {
     mainFuseOpen: [4, 3, 93],
     batteryFailed: [58, 25, 17],
