@@ -5,7 +5,7 @@ import { existsSync, readFileSync } from 'node:fs'
 import { resolve } from 'node:path'
 import { fileURLToPath } from 'node:url'
 import { asShopOn, type Db, openDb, type ShopTx } from '@/db/client'
-import { BOOK_ITEMS } from '@/db/codebook/book'
+import { BOOK_ITEMS, UNSEPARATED } from '@/db/codebook/book'
 import { DEMO_MODELS } from '@/db/codebook/demo-models'
 import { type Change, takeChanges, takeJobNumbers } from '@/db/queries/changes'
 import { bookHash, publishBook, publishedVersion } from '@/db/queries/code-book'
@@ -155,13 +155,26 @@ async function seedBag(tx: ShopTx): Promise<Change[]> {
   return [{ entity: 'bag', id: BAG.id, jobId: null }]
 }
 
+const PAIRS = UNSEPARATED.map(
+  ({ faults: [a, b], reason }): { faults: [string, string]; reason: string } => ({
+    faults: [a, b],
+    reason,
+  }),
+)
+
 /** Version 1, and a next one when the shipped book changed, unless a person has published since. */
 async function seedBook(tx: ShopTx): Promise<Change[]> {
   const newest = await publishedVersion(tx)
   if (newest && (newest.publishedBy !== null || newest.hash === bookHash(BOOK_ITEMS))) return []
   const version = (newest?.version ?? 0) + 1
   const publishedAt = new Date().toISOString()
-  await publishBook(tx, { version, items: BOOK_ITEMS, publishedAt, publishedBy: null })
+  await publishBook(tx, {
+    version,
+    items: BOOK_ITEMS,
+    publishedAt,
+    publishedBy: null,
+    origin: { basedOn: newest?.version ?? null, madeBy: null, note: null, unseparated: PAIRS },
+  })
   return [{ entity: 'book', id: String(version), jobId: null }, ...(await touchedWithdrawals(tx))]
 }
 

@@ -1,5 +1,5 @@
 'use client'
-import { guideSafeOf } from '@/lib/diag/book-index'
+import { guideSafeOf } from '@/lib/diag/guide-safe'
 import type { LogEntry, LogKind } from '@/lib/model/log-entry'
 import { mayInField, mayLogInField, mayRecord } from '@/lib/shop/may-record'
 import type { Action } from '@/lib/shop/permissions'

@@ -1,7 +1,6 @@
 'use client'
 
 import { type ComponentType, lazy, type ReactNode, Suspense, useEffect } from 'react'
-import { JobsBook } from '@/components/store/jobs-book'
 import { useJob } from '@/components/store/use-rows'
 import { Screen } from '@/components/ui/screen'
 import { JobsScreen } from './jobs-screen'
@@ -40,6 +39,7 @@ const AskPartScreen = later(() =>
 const PartsScreen = later(() =>
   import('@/components/parts/parts-screen').then((file) => file.PartsScreen),
 )
+const JobsBook = later(() => import('@/components/store/jobs-book').then((file) => file.JobsBook))
 const NotHere = later(() => import('./not-here').then((file) => file.NotHere))
 const SignedOut = later(() => import('./signed-out').then((file) => file.SignedOut))
 const JobScreen = later(() => import('./job/job-screen').then((file) => file.JobScreen))

@@ -6,7 +6,6 @@ import { useJob, useMachines, useModels } from '@/components/store/use-rows'
 import { useSilent } from '@/components/store/use-silent'
 import { useUnsent } from '@/components/store/use-unsent'
 import { useAppUpdate } from '@/components/store/use-updates'
-import { useUnheard } from '@/components/store/use-withdrawals'
 import { announce } from '@/components/ui/announce'
 import { classes } from '@/components/ui/class-names'
 import { JobTag } from '@/components/ui/job-tag'
@@ -86,20 +85,19 @@ const SilentNotice = lazy(() =>
   import('./phone/silent-notice').then((file) => ({ default: file.SilentNotice })),
 )
 
-const WithdrawalNotice = lazy(() =>
-  import('./phone/withdrawal-notice').then((file) => ({ default: file.WithdrawalNotice })),
+const Withdrawals = lazy(() =>
+  import('./phone/withdrawals').then((file) => ({ default: file.Withdrawals })),
 )
 
 /** What hardly ever is to be said is fetched when it is. */
 function Notices() {
   const isLost = useLost().lost !== null
   const isSilent = useSilent().silent !== null
-  const isTold = useUnheard().length > 0
   return (
     <Suspense fallback={null}>
       {isLost ? <LostNotice /> : null}
       {isSilent ? <SilentNotice /> : null}
-      {isTold ? <WithdrawalNotice /> : null}
+      <Withdrawals />
     </Suspense>
   )
 }

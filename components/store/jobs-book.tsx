@@ -1,7 +1,7 @@
 'use client'
 import { type ReactNode, useEffect, useMemo } from 'react'
 import { bookForJob } from '@/lib/diag/book-for-job'
-import { withdrawnVersions } from '@/lib/diag/withdrawn'
+import { withdrawnVersions } from '@/lib/diag/withdrawn-in'
 import type { Id } from '@/lib/model/id'
 import { useStore } from './store-provider'
 import { type JobsBook as Held, JobsBookContext } from './use-book'

@@ -1,8 +1,7 @@
 'use client'
 import { createContext, use, useMemo } from 'react'
 import type { BookForJob } from '@/lib/diag/book-for-job'
-import type { BookIndex } from '@/lib/diag/book-index'
-import { withdrawnVersions, withoutWithdrawn } from '@/lib/diag/withdrawn'
+import { withdrawnVersions } from '@/lib/diag/withdrawn-in'
 import type { BookWithdrawal } from '@/lib/model/book-withdrawal'
 import type { BookView } from '@/lib/sync/client/views'
 import { useStore } from './store-provider'
@@ -33,7 +32,7 @@ export function bookView(
   job: JobsBook | null,
   taken: readonly BookWithdrawal[],
 ): BookView {
-  const of = (version: number) => indexWithout(held.of(version), taken)
+  const of = (version: number) => held.of(version, taken)
   if (job?.opening === true) return { ...held, status: 'opening', index: null, version: null, of }
   const gone = withdrawnVersions(taken)
   const newest = held.versions.filter((version) => !gone.has(version)).at(-1) ?? null
@@ -42,19 +41,4 @@ export function bookView(
   if (held.status !== 'ready') return held
   if (index === null) return { ...held, status: 'missing', index, version: null, of }
   return { ...held, index, version, of }
-}
-
-/** One index for one book and one list of withdrawals: the engine is sent it only when it is another. */
-const made = new WeakMap<BookIndex, { taken: readonly BookWithdrawal[]; index: BookIndex }>()
-
-function indexWithout(whole: BookIndex | null, taken: readonly BookWithdrawal[]): BookIndex | null {
-  if (whole === null) return null
-  const last = made.get(whole)
-  if (last?.taken === taken) return last.index
-  const next = withoutWithdrawn(whole, taken)
-  // A row that came again, with nothing new for this book, is no new book.
-  const same = last !== undefined && last.index.withdrawn.join() === next.withdrawn.join()
-  const index = same ? last.index : next
-  made.set(whole, { taken, index })
-  return index
 }

@@ -1,6 +1,6 @@
 'use client'
 import { useMemo } from 'react'
-import { holdsIn } from '@/lib/diag/withdrawn'
+import { holdsIn } from '@/lib/diag/withdrawn-in'
 import type { BookWithdrawal } from '@/lib/model/book-withdrawal'
 import { useStore } from './store-provider'
 import { useWithdrawals } from './use-rows'

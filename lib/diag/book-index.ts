@@ -66,14 +66,6 @@ export function swapsFor(index: BookIndex, check: CheckItem): SwapItem[] {
   return [...index.swaps.values()].filter((swap) => faults.has(swap.fault))
 }
 
-/** Ids of the checks and swaps marked safe for guides; none without a book. */
-export const guideSafeOf = (index: BookIndex | null): ReadonlySet<string> =>
-  new Set(
-    [...(index?.checks.values() ?? []), ...(index?.swaps.values() ?? [])]
-      .filter((item) => item.guideSafe)
-      .map((item) => item.id),
-  )
-
 const emptyMaps = (version: number) => ({
   version,
   symptoms: new Map<string, SymptomItem>(),

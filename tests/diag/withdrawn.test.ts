@@ -4,7 +4,8 @@ import { belief } from '@/lib/diag/belief'
 import { bookChanges } from '@/lib/diag/book-changes'
 import { type BookIndex, indexBook } from '@/lib/diag/book-index'
 import { buildCase } from '@/lib/diag/case'
-import { restsOn, verdictChange, withdrawnVersions, withoutWithdrawn } from '@/lib/diag/withdrawn'
+import { restsOn, verdictChange, withoutWithdrawn } from '@/lib/diag/withdrawn'
+import { withdrawnVersions } from '@/lib/diag/withdrawn-in'
 import type { BookWithdrawal } from '@/lib/model/book-withdrawal'
 import type { CheckItem, CodeBookItem } from '@/lib/model/code-book'
 import type { LogBody, LogEntry, ReadingBody } from '@/lib/model/log-entry'
@@ -182,14 +183,18 @@ describe('[CB38] the book a screen works with', () => {
     expect(bookView(held, null, [gone])).toMatchObject({ version: 1, index: first })
   })
 
-  it('[CB41] offers no withdrawn check in any version, and is one object until that changes', () => {
+  it('[CB41] is read without what was withdrawn, in every version', () => {
     const taken = [withdrawal({ versions: [1, 2], upTo: 2 })]
-    const view = bookView(held, job({}), taken)
-    expect(view.index?.checks.size).toBe(0)
-    expect(view.of(2)?.checks.size).toBe(0)
-    expect(bookView(held, job({}), taken).index).toBe(view.index)
-    const heard = taken.map((one) => ({ ...one, heard: [{ personId: newId(), at: AT }] }))
-    expect(bookView(held, job({}), heard).index).toBe(view.index)
+    const asked: unknown[] = []
+    const of: BookView['of'] = (version, without) => {
+      asked.push([version, without])
+      return held.of(version)
+    }
+    bookView({ ...held, of }, job({}), taken).of(2)
+    expect(asked).toEqual([
+      [1, taken],
+      [2, taken],
+    ])
   })
 })
 

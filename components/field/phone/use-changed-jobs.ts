@@ -13,13 +13,8 @@ import { belief } from '@/lib/diag/belief'
 import { bookForJob } from '@/lib/diag/book-for-job'
 import type { BookIndex } from '@/lib/diag/book-index'
 import { buildCase } from '@/lib/diag/case'
-import {
-  restsOn,
-  type VerdictChange,
-  verdictChange,
-  withdrawnVersions,
-  withoutWithdrawn,
-} from '@/lib/diag/withdrawn'
+import { restsOn, type VerdictChange, verdictChange, withoutWithdrawn } from '@/lib/diag/withdrawn'
+import { withdrawnVersions } from '@/lib/diag/withdrawn-in'
 import type { BookWithdrawal } from '@/lib/model/book-withdrawal'
 import type { Job } from '@/lib/model/job'
 import type { LogEntry } from '@/lib/model/log-entry'

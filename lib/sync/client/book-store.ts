@@ -1,11 +1,7 @@
 import Dexie, { type Table } from 'dexie'
-import { type BookIndex, indexBook } from '@/lib/diag/book-index'
 import type { CodeBook } from '@/lib/model/code-book'
 import type { Id } from '@/lib/model/id'
-import { liveCell } from './live'
 import type { Indexed } from './phone-db'
-import type { BookView } from './views'
-import type { Watch } from './watch'
 
 /**
  * The code book on the phone (rule R24), by shop. A whole version is one record, so a newer one comes in by one
@@ -48,42 +44,4 @@ export async function heldVersions(db: BookDb, shopId: Id): Promise<HeldVersion[
   if (old === undefined) return []
   const { version, text } = old
   return [{ shopId, version, hash: (JSON.parse(text) as CodeBook).hash, text }]
-}
-
-const nothingOf = () => null
-const OPENING: BookView = {
-  status: 'opening',
-  index: null,
-  version: null,
-  versions: [],
-  of: nothingOf,
-}
-const MISSING: BookView = { ...OPENING, status: 'missing' }
-
-/** The books of a shop, indexed for the engine; each version is read and indexed once, when it is wanted. */
-export function watchBook(
-  db: BookDb,
-  shopId: Id,
-  failed: (cause: unknown) => void,
-): Watch<BookView> {
-  const indexes = new Map<string, BookIndex>()
-  return liveCell<HeldVersion[], BookView>({
-    initial: OPENING,
-    read: () => heldVersions(db, shopId),
-    open: (held) => {
-      const newest = held.at(-1)
-      if (newest === undefined) return MISSING
-      const of = (version: number): BookIndex | null => {
-        const one = held.find((other) => other.version === version)
-        if (one === undefined) return null
-        const key = `${one.version} ${one.hash}`
-        const index = indexes.get(key) ?? indexBook(JSON.parse(one.text) as CodeBook)
-        indexes.set(key, index)
-        return index
-      }
-      const versions = held.map(({ version }) => version)
-      return { status: 'ready', index: of(newest.version), version: newest.version, versions, of }
-    },
-    failed,
-  })
 }

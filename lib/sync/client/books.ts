@@ -1,6 +1,6 @@
 import type { SyncPorts } from '@/lib/ports/sync-ports'
 import type { AppWorker } from './app-worker'
-import { BookDb, watchBook } from './book-store'
+import type { BookDb } from './book-store'
 import type { Phone } from './phone'
 import { type Indexed, writeMeta } from './phone-db'
 import type { BookView } from './views'
@@ -17,10 +17,13 @@ const NO_BOOK_YET: BookView = {
   of: () => null,
 }
 
+const none = (): void => undefined
+
 /** The code books of who is at work: what is held, and when the shop is asked for more. */
 export class Books {
   readonly view: LiveCell<BookView>
-  readonly #db: BookDb
+  readonly #indexed: Indexed
+  #db: BookDb | null = null
   readonly #ports: Pick<SyncPorts, 'clock' | 'network'>
   readonly #worker: Pick<AppWorker, 'loadBook'>
   readonly #phone: Cell<Phone | null>
@@ -35,7 +38,7 @@ export class Books {
     phone: Cell<Phone | null>
     failed: (cause: unknown) => void
   }) {
-    this.#db = new BookDb(of.indexed)
+    this.#indexed = of.indexed
     this.#ports = of.ports
     this.#worker = of.worker
     this.#phone = of.phone
@@ -44,22 +47,39 @@ export class Books {
   }
 
   #follow(emit: (view: BookView) => void): () => void {
-    let leave: () => void = () => undefined
+    let leave: () => void = none
     const follow = () => {
       leave()
-      leave = () => undefined
+      leave = none
       const phone = this.#phone.get()
-      if (phone === null) return
-      const book = watchBook(this.#db, phone.actor.shopId, this.#failed)
-      leave = book.subscribe(() => {
-        emit(book.get())
-        this.#noteVersion(phone, book.get().version)
-      })
+      if (phone !== null) leave = this.#watch(phone, emit)
     }
     const end = this.#phone.subscribe(follow)
     follow()
     return () => {
       end()
+      leave()
+    }
+  }
+
+  /** Watches the books of who is at work, with what reads them fetched first. */
+  #watch(phone: Phone, emit: (view: BookView) => void): () => void {
+    let isOver = false
+    let leave: () => void = none
+    Promise.all([import('./book-store'), import('./book-watch')]).then(
+      ([{ BookDb }, { watchBook }]) => {
+        if (isOver) return
+        this.#db ??= new BookDb(this.#indexed)
+        const book = watchBook(this.#db, phone.actor.shopId, this.#failed)
+        leave = book.subscribe(() => {
+          emit(book.get())
+          this.#noteVersion(phone, book.get().version)
+        })
+      },
+      this.#failed,
+    )
+    return () => {
+      isOver = true
       leave()
     }
   }
@@ -89,7 +109,11 @@ export class Books {
     const { shopId } = phone.actor
     const needs = await neededBooks(phone.core, this.view.get().version)
     if (this.#worker.loadBook(shopId, needs)) return
-    const { fetchBook } = await import('./book-fetch')
+    const [{ BookDb }, { fetchBook }] = await Promise.all([
+      import('./book-store'),
+      import('./book-fetch'),
+    ])
+    this.#db ??= new BookDb(this.#indexed)
     await fetchBook(this.#db, this.#ports.network, { shopId, needs })
   }
 }

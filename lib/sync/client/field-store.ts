@@ -1,4 +1,4 @@
-import { guideSafeOf } from '@/lib/diag/book-index'
+import { guideSafeOf } from '@/lib/diag/guide-safe'
 import type { Actor } from '@/lib/model/person'
 import { AppError, fail } from '@/lib/model/result'
 import type { SyncPorts } from '@/lib/ports/sync-ports'

@@ -1,4 +1,5 @@
 import type { BookIndex } from '@/lib/diag/book-index'
+import type { BookWithdrawal } from '@/lib/model/book-withdrawal'
 import type { Id } from '@/lib/model/id'
 import type { LogBody, LogEntry } from '@/lib/model/log-entry'
 import type { Actor } from '@/lib/model/person'
@@ -28,8 +29,8 @@ export type BookView = {
   index: BookIndex | null
   version: number | null
   versions: readonly number[]
-  /** One that is held, indexed; null for any other. */
-  of: (version: number) => BookIndex | null
+  /** One that is held, indexed, without what was withdrawn from it; null for any other. */
+  of: (version: number, taken?: readonly BookWithdrawal[]) => BookIndex | null
 }
 
 /** The bytes of a photo or a voice note to keep with an entry, and the small copy of a picture. */

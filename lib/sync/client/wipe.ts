@@ -1,6 +1,5 @@
 import type { Actor } from '@/lib/model/person'
 import type { SyncPorts } from '@/lib/ports/sync-ports'
-import { BookDb } from './book-store'
 import type { Core } from './core'
 import {
   type DeviceDb,
@@ -116,6 +115,7 @@ function forget({ ports }: WipeTools, wipe: WipeRecord): void {
 
 /** The code books go with the last person (null); with another one, what that person's jobs held them for. */
 async function dropBook(indexed: Indexed, left: WipeRecord | null): Promise<void> {
+  const { BookDb } = await import('./book-store')
   const books = new BookDb(indexed)
   try {
     if (left === null) await Promise.all(books.tables.map((table) => table.clear()))

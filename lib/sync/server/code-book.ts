@@ -9,7 +9,7 @@ import {
   versionsByNumber,
 } from '@/db/queries/code-book'
 import { listWithdrawals } from '@/db/queries/code-book-withdrawal'
-import { holdsIn } from '@/lib/diag/withdrawn'
+import { holdsIn } from '@/lib/diag/withdrawn-in'
 import type { Actor } from '@/lib/model/person'
 import {
   type BookManifest,

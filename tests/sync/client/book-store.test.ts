@@ -3,8 +3,10 @@ import { bookHash, itemHash, type PlacedItem } from '@/db/queries/code-book'
 import type { CodeBookItem } from '@/lib/model/code-book'
 import { type Network, networkOf } from '@/lib/ports/network'
 import { type BookAsk, fetchBook, type Needs } from '@/lib/sync/client/book-fetch'
-import { BookDb, heldVersions, watchBook } from '@/lib/sync/client/book-store'
+import { BookDb, heldVersions } from '@/lib/sync/client/book-store'
+import { watchBook } from '@/lib/sync/client/book-watch'
 import type { Indexed } from '@/lib/sync/client/phone-db'
+import type { BookView } from '@/lib/sync/client/views'
 import { changesBetween, withContents } from '@/lib/sync/server/book/make-patch'
 import { MECHANIC, newIndexed, noTimer } from '../../support/phone'
 
@@ -193,6 +195,36 @@ describe('[CB39] versions that open jobs hold', () => {
     await fetchFrom(db, serve(2), { needs: needing([], 2) })
     expect((await ready(db)).versions).toEqual([2])
   })
+})
+
+test('[CB41] a book is read without what was withdrawn, and is one object until that changes', async () => {
+  const db = new BookDb(newIndexed())
+  await fetchFrom(db, serve(2))
+  const view = await new Promise<BookView>((resolve, reject) => {
+    const book = watchBook(db, shopId, reject)
+    const leave = book.subscribe(() => {
+      queueMicrotask(leave)
+      resolve(book.get())
+    })
+  })
+  const whole = view.of(2)
+  expect(view.of(1)).toBeNull()
+  expect(view.of(2, [])).toBe(whole)
+  const one = {
+    id: personId,
+    what: 'fault',
+    itemId: 'coil',
+    name: 'Coil',
+    reason: 'Wrong.',
+  } as const
+  const rest = { instead: null, at: publishedAt, by: null, versions: [2], upTo: 2, heard: [] }
+  const taken = [{ ...one, ...rest }]
+  const without = view.of(2, taken)
+  expect(without).not.toBe(whole)
+  expect(without?.withdrawn).toEqual([personId])
+  expect(view.of(2, taken)).toBe(without)
+  const heard = [{ ...one, ...rest, heard: [{ personId, at: publishedAt }] }]
+  expect(view.of(2, heard)).toBe(without)
 })
 
 /** A start of the store that stops dead at its nth step; answers the names of the steps it passed. */

@@ -4,7 +4,7 @@ import { placedOfDraft } from '@/db/queries/code-book-draft'
 import { type BookHead, bookHeads, sourcesOf } from '@/db/queries/code-book-heads'
 import { listWithdrawals } from '@/db/queries/code-book-withdrawal'
 import { listPeople } from '@/db/queries/people'
-import { withdrawnVersions } from '@/lib/diag/withdrawn'
+import { withdrawnVersions } from '@/lib/diag/withdrawn-in'
 import type { BookVersionRow, DeskBook } from '@/lib/model/book-desk'
 import type { Id } from '@/lib/model/id'
 

@@ -10,7 +10,7 @@ import {
   versionsByNumber,
 } from '@/db/queries/code-book'
 import { contentsOf, insertWithdrawal, listWithdrawals } from '@/db/queries/code-book-withdrawal'
-import { withdrawnVersions } from '@/lib/diag/withdrawn'
+import { withdrawnVersions } from '@/lib/diag/withdrawn-in'
 import type { WithdrawForm } from '@/lib/model/book-withdrawal'
 import type { Id } from '@/lib/model/id'
 import { fail, ok, type Result } from '@/lib/model/result'
