@@ -222,7 +222,9 @@ describe('[P7] rows without a number', () => {
     `.execute(test.admin)
     expect(rows.map((row) => row.name)).toEqual([
       'bag',
+      'code_book_heard',
       'code_book_version',
+      'code_book_withdrawal',
       'job',
       'job_assignment',
       'log_entry',

@@ -1,6 +1,6 @@
 import { sql } from 'kysely'
 import { afterAll, beforeAll, describe, expect, it } from 'vitest'
-import { asShop, asShopOn, type Db } from '@/db/client'
+import { asShop, asShopOn, type Db, openDb } from '@/db/client'
 import { appendAudit } from '@/db/queries/audit'
 import { takeChanges } from '@/db/queries/changes'
 import { insertPartRequests } from '@/db/queries/part-requests'
@@ -328,7 +328,6 @@ describe('[D3] evidence is insert only (R23)', () => {
   })
 
   it('[D3] the work role reads no table of a shop', async () => {
-    const { openDb } = await import('@/db/client')
     const work = openDb(test.workUrl, 1)
     for (const name of await tableNames(test.admin)) {
       const read = asShopOn(work, home.id, (tx) =>
@@ -354,6 +353,5 @@ it('[D3] an entry of a made-up place in the chain is refused by the database its
     })
   expect(await codeOf(forged('0'.repeat(64), null, 1))).toBe('23514')
   const { linkHash } = await import('@/db/chain')
-  const nowhere = 'f'.repeat(64)
-  expect(await codeOf(forged(linkHash(nowhere, '{}'), nowhere, 2))).toBe('23503')
+  expect(await codeOf(forged(linkHash('f'.repeat(64), '{}'), 'f'.repeat(64), 2))).toBe('23503')
 })
