@@ -106,7 +106,8 @@ function readingOf(check: CheckItem, values: readonly Value[]): BookProblem[] {
   if (reading === null) return []
   const found: string[] = []
   const figure = values.find((v) => v.component === reading.component && v.id === reading.value)
-  if (figure === undefined && reading.fallback === null)
+  // A shop without any spec sheet yet has none to look for it on; its readings are kept without a verdict.
+  if (figure === undefined && reading.fallback === null && values.length > 0)
     found.push(`no spec sheet has ${reading.component}/${reading.value}, and there is no fallback`)
   if (figure !== undefined && figure.quantity !== reading.quantity)
     found.push(`${reading.component}/${reading.value} is a ${figure.quantity}`)

@@ -1,7 +1,6 @@
 import { asShop, type ShopTx } from '@/db/client'
 import type { BookProblem } from '@/db/codebook/book-problem'
 import { checkBook } from '@/db/codebook/check-book'
-import { DEMO_MODELS } from '@/db/codebook/demo-models'
 import type { BookFile } from '@/db/codebook/file-problem'
 import { appendAudit } from '@/db/queries/audit'
 import { lockShop } from '@/db/queries/changes'
@@ -84,14 +83,9 @@ export async function readDraft(shopId: Id): Promise<{ hash: string; book: BookF
   })
 }
 
-/**
- * What the checker finds in a book together with the shop's own models and those that the program comes with: a
- * shop without spec sheets is held to the same.
- */
+/** What the checker finds in a book together with the shop's own models. */
 export async function findingsOf(shopId: Id, book: BookFile): Promise<BookProblem[]> {
-  const own = await asShop(shopId, (tx) => listModels(tx))
-  const ids = new Set(own.map(({ id }) => id))
-  const models = [...own, ...DEMO_MODELS.filter(({ id }) => !ids.has(id))]
+  const models = await asShop(shopId, (tx) => listModels(tx))
   return checkBook(book.items, models, book.unseparated)
 }
 
