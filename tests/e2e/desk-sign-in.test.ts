@@ -13,7 +13,7 @@ const ROLES = [
   {
     who: 'owner',
     home: /\/desk$/,
-    sections: ['Jobs', 'Parts', 'Take in', 'Phones', 'Field'],
+    sections: ['Jobs', 'Parts', 'Take in', 'Phones', 'Code book', 'Field'],
     reads: [200, 200, 200],
   },
 ] as const
