@@ -1,8 +1,9 @@
 // The optimum where it can be had: the likeliest suspects of a complaint with the checks that tell them apart.
 import { planModel } from '@/lib/diag/plan-model'
 import { nextAction } from '@/lib/diag/troubleshoot'
-import { type SearchState, type SingleModel, START } from '@/lib/diag/troubleshoot-model'
-import { type Policy, treeCost } from '../../diag/tree-walk'
+import { type SingleModel, START } from '@/lib/diag/troubleshoot-model'
+import { treeCost } from '../../diag/tree-walk'
+import { enginePolicy } from '../engine-policy'
 import { caseOf, MEANS } from './drive'
 import type { Given } from './machine'
 
@@ -16,7 +17,7 @@ export function aboveOptimum(given: Given): number | null {
   const c = caseOf({ ...given, told: given.features, bodies: [] })
   const model = smaller(planModel(c, MEANS).model)
   const optimum = nextAction(model, START, PATIENT)
-  return optimum.gap > 0 ? null : treeCost(model, engine(model)) / optimum.expectedCost - 1
+  return optimum.gap > 0 ? null : treeCost(model, enginePolicy(model)) / optimum.expectedCost - 1
 }
 
 /** The likeliest suspects, and of the checks those whose outcomes lie furthest apart between them. */
@@ -30,15 +31,4 @@ function smaller(model: SingleModel): SingleModel {
     }, 0)
   const checks = [...model.checks].sort((a, b) => spread(b) - spread(a)).slice(0, CHECKS)
   return { ...model, faults, checks }
-}
-
-/** The engine, asked once for each state. */
-function engine(model: SingleModel): Policy {
-  const known = new Map<string, ReturnType<Policy>>()
-  return (state: SearchState) => {
-    const key = JSON.stringify(state)
-    const answer = known.get(key) ?? nextAction(model, state)
-    known.set(key, answer)
-    return answer
-  }
 }

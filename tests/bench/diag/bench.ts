@@ -4,14 +4,10 @@ import { performance } from 'node:perf_hooks'
 import { lookAhead } from '@/lib/diag/look-ahead'
 import { leftOf, openOf, problemOf, weightsOf } from '@/lib/diag/search-problem'
 import { marginals, nextAction } from '@/lib/diag/troubleshoot'
-import {
-  type NoisyOrModel,
-  type SearchState,
-  type SingleModel,
-  START,
-} from '@/lib/diag/troubleshoot-model'
+import { type NoisyOrModel, type SingleModel, START } from '@/lib/diag/troubleshoot-model'
 import { bruteMarginals } from '../../diag/fixtures/models'
 import { type Policy, treeCost } from '../../diag/tree-walk'
+import { enginePolicy } from '../engine-policy'
 import { machineFacts, table, writePart } from '../marked-part'
 import { simulatedCost } from './job'
 import { FAMILIES, inventedModel, randomFrom } from './models'
@@ -45,17 +41,6 @@ const oneStep = (model: SingleModel): Policy => {
     return { type: best.type, id: list[best.index]?.id ?? '' }
   }
 }
-/** The engine, asked once for each state. */
-const engine = (model: SingleModel): Policy => {
-  const known = new Map<string, ReturnType<Policy>>()
-  return (state: SearchState) => {
-    const key = JSON.stringify(state)
-    const answer = known.get(key) ?? nextAction(model, state)
-    known.set(key, answer)
-    return answer
-  }
-}
-
 const timed = <T>(run: () => T): { ms: number; value: T } => {
   const from = performance.now()
   const value = run()
@@ -109,13 +94,13 @@ function measureModel(model: SingleModel, jobs: number, row: Row): void {
 function priceExactly(model: SingleModel, row: Row): void {
   const optimum = nextAction(model, START, PATIENT)
   if (optimum.gap > 0) return
-  row.above.push(treeCost(model, engine(model)) / optimum.expectedCost - 1)
+  row.above.push(treeCost(model, enginePolicy(model)) / optimum.expectedCost - 1)
   row.ruleAbove.push(treeCost(model, oneStep(model)) / optimum.expectedCost - 1)
 }
 
 /** Both policies on the same invented jobs: what the engine's cost more or less than the rule's. */
 function priceByJobs(model: SingleModel, jobs: number, row: Row): void {
-  const [ours, plain] = [engine(model), oneStep(model)]
+  const [ours, plain] = [enginePolicy(model), oneStep(model)]
   const costs = { ours: 0, plain: 0 }
   for (let job = 1; job <= jobs; job++) {
     costs.ours += simulatedCost(model, ours, job)
