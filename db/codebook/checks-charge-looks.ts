@@ -105,7 +105,7 @@ export const CHARGE_LOOKS: CheckItem[] = [
     table: {
       loadTooGreat: [8, 28, 64],
       parasiticDrain: [34, 45, 21],
-      mainFuseOpen: [52, 28, 20],
+      chargeFuseOpen: [52, 28, 20],
       statorFault: [56, 28, 16],
       batteryFailed: [62, 27, 11],
       chargingPlugBurnt: [61, 27, 12],

@@ -51,7 +51,7 @@ export const CHARGE_PART_CHECKS: CheckItem[] = [
     id: 'statorVoltsRunning',
     name: 'Stator volts, leg against leg, running',
     purpose: 'Shows whether the stator makes its share in every leg under way.',
-    gate: {},
+    gate: { battery: ['yes'] },
     people: 2,
     onePersonWay: 'Fix the probes before each start, then work the throttle only.',
     light: 'daylight',
@@ -63,6 +63,7 @@ export const CHARGE_PART_CHECKS: CheckItem[] = [
     steps: [
       ['Engine off. Part the stator plug. Fix both probes in two of its pins.', STATOR_SHOCK],
       ['Meter on AC volts, highest range. Hands off. Brake on, start it.', SPEED_CAP],
+      'It will not start with this plug off? Plug it in and stop here: that tells nothing of the stator.',
       'Read at idle, then at one steady speed under where it pulls.',
       ['Stop it before you move a probe. Do the next two pairs.', STATOR_SHOCK],
     ],

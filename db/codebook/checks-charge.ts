@@ -43,7 +43,7 @@ export const CHARGE_CHECKS: CheckItem[] = [
       statorFault: [5, 7, 87, 1],
       regulatorDead: [4, 6, 89, 1],
       regulatorFailed: [6, 5, 88, 1],
-      mainFuseOpen: [9, 5, 85, 1],
+      chargeFuseOpen: [9, 5, 85, 1],
       chargingPlugBurnt: [24, 12, 63, 1],
       regulatorOvercharges: [9, 9, 1, 81],
       batteryFailed: [53, 16, 24, 7],
@@ -75,7 +75,7 @@ export const CHARGE_CHECKS: CheckItem[] = [
           { weight: 0.06, from: 0.96, to: 1.02 },
           { weight: 0.94, from: 0.7, to: 0.94 },
         ],
-        mainFuseOpen: [
+        chargeFuseOpen: [
           { weight: 0.1, from: 0.96, to: 1.03 },
           { weight: 0.9, from: 0.75, to: 0.92 },
         ],
@@ -126,7 +126,7 @@ export const CHARGE_CHECKS: CheckItem[] = [
       regulatorDead: [4, 15, 81],
       regulatorFailed: [3, 11, 86],
       chargingPlugBurnt: [16, 36, 48],
-      mainFuseOpen: [7, 5, 88],
+      chargeFuseOpen: [7, 5, 88],
       batteryFailed: [46, 37, 17],
       groundPoor: [38, 35, 27],
       keySwitchHarness: [54, 22, 24],
@@ -172,7 +172,7 @@ export const CHARGE_CHECKS: CheckItem[] = [
     ],
     table: {
       chargingPlugBurnt: [15, 10, 75],
-      mainFuseOpen: [11, 4, 85],
+      chargeFuseOpen: [11, 4, 85],
       batteryTerminalLoose: [50, 14, 36],
       keySwitchHarness: [53, 10, 37],
       regulatorOvercharges: [80, 10, 10],
@@ -192,7 +192,7 @@ export const CHARGE_CHECKS: CheckItem[] = [
           { weight: 0.52, from: 1.3, to: 6 },
           { weight: 0.28, from: 6, to: 30 },
         ],
-        mainFuseOpen: [
+        chargeFuseOpen: [
           { weight: 0.14, from: 0, to: 0.9 },
           { weight: 0.12, from: 1.3, to: 6 },
           { weight: 0.74, from: 6, to: 70 },

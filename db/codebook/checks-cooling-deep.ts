@@ -1,11 +1,11 @@
 import type { CheckItem } from '@/lib/model/code-book'
 import { MONOXIDE, MOVES, MOVING_PARTS } from './cautions'
-import { COOL_FIRST, FAN_STARTS, POISON, SCALDS } from './cautions-charge'
+import { COOL_FIRST, FAN_STARTS, POISON, SCALDS, SPEED_CAP } from './cautions-charge'
 import { check } from './draft'
 import { COOLANT, SNOW } from './gates-charge'
 import { PRACTICE } from './sources'
 
-const OPEN_RUNNING = [SCALDS, POISON, MOVES, MOVING_PARTS, MONOXIDE]
+const OPEN_RUNNING = [SCALDS, POISON, SPEED_CAP, MOVING_PARTS, MONOXIDE]
 
 /** Coolant: how much, whether it moves, whether it stays, whether gas is in it. */
 export const COOLANT_CHECKS: CheckItem[] = [
@@ -106,9 +106,12 @@ export const COOLANT_CHECKS: CheckItem[] = [
     minutes: 8,
     steps: [
       ['Engine cold through. Cap off. Fill to the neck. Face away.', SCALDS],
-      ['Brake on. Start it, let it idle. Look at the neck.', MOVES],
+      ['Brake on. Start it, let it idle. Look at the neck.', SPEED_CAP],
       'Bubbles from the first second, or only some that stop?',
-      'Short blip. More bubbles, or a surge out of the neck?',
+      [
+        'A little throttle, under the speed where it pulls. More bubbles, or a surge out of the neck?',
+        SPEED_CAP,
+      ],
       ['Warm to the hand? Stop, and put the cap on.', SCALDS],
     ],
     cautions: OPEN_RUNNING,
@@ -137,15 +140,18 @@ export const COOLANT_CHECKS: CheckItem[] = [
     purpose: 'Shows whether the pump moves the coolant.',
     gate: COOLANT,
     people: 2,
-    onePersonWay: 'Look while it idles, then again after a blip.',
+    onePersonWay: 'Look while it idles, then again with the throttle held a little open.',
     setups: ['engineCold'],
     tools: ['lamp', 'thermometer'],
     machineState: 'runningNeutral',
     minutes: 9,
     steps: [
       ['Engine cold through. Cap off, full to the neck. Face away.', SCALDS],
-      ['Brake on. Start it, let it idle till the upper hose gets warm.', MOVES],
-      'Look at the neck: does it flow, faster with a short blip?',
+      ['Brake on. Start it, let it idle till the upper hose gets warm.', SPEED_CAP],
+      [
+        'Look at the neck: does it flow, faster with a little throttle, under the speed where it pulls?',
+        SPEED_CAP,
+      ],
       ['Above 60 C on the thermometer: stop, cap on.', SCALDS],
     ],
     cautions: OPEN_RUNNING,

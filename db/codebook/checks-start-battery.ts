@@ -102,7 +102,7 @@ export const START_BATTERY_CHECKS: CheckItem[] = [
     minutes: 6,
     steps: [
       [
-        'Look first: frozen, swollen, wet or of unknown kind? Then no charge and no load.',
+        'Look first: frozen, swollen, wet, lithium or of unknown kind? Then no charge and no load here.',
         JUMP_RULES,
       ],
       'It must have been charged by a charger made for its kind, then rested an hour.',

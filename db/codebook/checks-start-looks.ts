@@ -92,8 +92,8 @@ export const START_LOOKS: CheckItem[] = [
   }),
   check({
     id: 'mainFuseLook',
-    name: 'Main fuse and its holder by eye',
-    purpose: 'Finds a blown main fuse, a burnt holder or a melted link.',
+    name: 'Main and charging fuse, and their holders, by eye',
+    purpose: 'Finds a blown main or charging fuse, a burnt holder or a melted link.',
     gate: { battery: ['yes'] },
     guideSafe: true,
     setups: ['seatOff'],
@@ -104,7 +104,8 @@ export const START_LOOKS: CheckItem[] = [
       ['Feel and sniff at it from outside. Hot or burnt: stop here.', BURNT_WIRE],
       'Pull it out. Hold it to the light. Is the strip whole?',
       'Look at its legs and the holder. Brown, melted, green?',
-      'Put it back, or a new one of the same figure. Only one.',
+      'Is there a charging fuse of its own? Look at it the same way.',
+      'Put it back, or a new one of the same figure. Only one new one.',
     ],
     record: 'Whole or blown, its figure in ampere, holder; photo.',
     outcomes: [
@@ -114,6 +115,7 @@ export const START_LOOKS: CheckItem[] = [
     ],
     table: {
       mainFuseOpen: [8, 10, 82],
+      chargeFuseOpen: [9, 13, 78],
       mainRelayFault: [66, 30, 4],
       regulatorFailed: [62, 10, 28],
       waterInElectrics: [72, 24, 4],

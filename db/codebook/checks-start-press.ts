@@ -86,7 +86,6 @@ export const PRESS_CHECKS: CheckItem[] = [
     name: 'Set every interlock by hand and press again',
     purpose: 'Shows an interlock that opens: it cranks when lever or switch is worked by hand.',
     gate: GATE,
-    guideSafe: true,
     light: 'any',
     people: 2,
     onePersonWay: 'Brake on by its lock or a strap round the lever; the other hand presses start.',
@@ -94,13 +93,17 @@ export const PRESS_CHECKS: CheckItem[] = [
     minutes: 3,
     steps: [
       ['Level ground, nobody in front. Rock it: neutral or park is truly in.', MOVES],
-      'Key on, stop switch to run. Work each brake and the clutch lever hard ten times.',
+      'Key on, stop switch to run. Work each brake and the clutch lever hard ten times. Do not press yet.',
       'Sit on the seat, belt on, side stand up, if it has such switches.',
       [
-        'Hold the brake hard and press start, two seconds. Move the shift lever a little as you press.',
+        'Hold the brake hard and press start, two seconds, hand ready at the stop switch. Let go.',
         MOVES,
       ],
-      'Try the other brake, then neutral in place of park. Which one made it crank?',
+      [
+        'Change one thing at a time, start button let go: lever out and back into neutral, other brake, park. Prove neutral, press again.',
+        MOVES,
+      ],
+      'Which one made it crank?',
     ],
     cautions: [MOVES, NO_SECOND_CRANK],
     record: 'Which lever or switch made the difference.',

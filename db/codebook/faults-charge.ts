@@ -129,6 +129,32 @@ export const CHARGE_FAULTS: FaultData[] = [
     provedBy: 'At most 0.2 V lost over the joint with lights on, and it stays cool to the hand.',
   }),
   fault({
+    id: 'chargeFuseOpen',
+    name: 'Charging fuse open, or its holder burnt',
+    system: 'chargeSystem',
+    gate: WITH_BATTERY,
+    circuits: [
+      { circuit: 'chargingSystem', role: 'supply' },
+      { circuit: 'systemVoltage', role: 'wiring' },
+    ],
+    repair: {
+      words:
+        'Look for what blew it: rubbed wire, jump the wrong way, shorted regulator. One new fuse of the same rating.',
+      doesNotFix:
+        'A second fuse that blows means a short that is still there, often in the regulator: no third one.',
+      minutes: 12,
+      costMinor: 100,
+      part: 'fuseSet',
+      setups: ['seatOff'],
+      successOf100: 82,
+    },
+    onset: 'All at once after winching, a jump the wrong way round, or a new battery put in.',
+    wayOut: 'limpOut',
+    limpRefused:
+      'Fuse blows again, melted holder or burnt wire: no ride. Energy sum short: no limp-out.',
+    provedBy: 'Charge volts in limits, fuse and holder cool with all loads on; then the proof run.',
+  }),
+  fault({
     id: 'loadTooGreat',
     name: 'More load than it makes: lamps, heat, slow ride',
     system: 'chargeSystem',

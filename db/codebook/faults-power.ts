@@ -4,7 +4,7 @@ import type { FaultData } from './fault-data'
 export const POWER_FAULTS: FaultData[] = [
   {
     id: 'batteryLow',
-    name: 'Battery flat or failed',
+    name: 'Battery flat',
     system: 'powerSystem',
     gate: { battery: ['yes'] },
     circuits: [
@@ -12,7 +12,7 @@ export const POWER_FAULTS: FaultData[] = [
       { circuit: 'fuelPump', role: 'supply' },
     ],
     repair: {
-      words: 'Charge it or fit a good one of the same kind and size.',
+      words: 'Charge it by a charger for its kind, or fit a charged one of the same kind and size.',
       doesNotFix: 'Comes back if it is not being charged: check the charging next.',
       minutes: 20,
       costMinor: 0,

@@ -42,7 +42,7 @@ export const CHARGE_SYMPTOMS: SymptomItem[] = [
         regulatorDead: 74,
         regulatorFailed: 50,
         chargingPlugBurnt: 66,
-        mainFuseOpen: 50,
+        chargeFuseOpen: 50,
         loadTooGreat: 44,
         groundPoor: 40,
         batteryFailed: 14,
@@ -60,7 +60,7 @@ export const CHARGE_SYMPTOMS: SymptomItem[] = [
         regulatorFailed: 36,
         batteryFailed: 68,
         batteryTerminalLoose: 18,
-        mainFuseOpen: 3,
+        chargeFuseOpen: 3,
       }),
       told('slowOrLoaded', 'Only at walking pace, or with lamps, heaters or winch on', 6, {
         loadTooGreat: 86,
@@ -74,7 +74,7 @@ export const CHARGE_SYMPTOMS: SymptomItem[] = [
         regulatorFailed: 28,
         statorFault: 12,
         regulatorOvercharges: 10,
-        mainFuseOpen: 12,
+        chargeFuseOpen: 12,
         keySwitchHarness: 14,
       }),
       told('rottenEggs', 'Smell of rotten eggs, battery wet, hot or swollen', 2, {
@@ -86,7 +86,7 @@ export const CHARGE_SYMPTOMS: SymptomItem[] = [
         keySwitchHarness: 62,
         groundPoor: 48,
         chargingPlugBurnt: 46,
-        mainFuseOpen: 12,
+        chargeFuseOpen: 12,
         regulatorDead: 4,
       }),
       told('onlyWhenHot', 'Charges cold, stops when hot', 5, {
@@ -95,7 +95,7 @@ export const CHARGE_SYMPTOMS: SymptomItem[] = [
         chargingPlugBurnt: 26,
       }),
       told('sinceJumpStart', 'Since a jump start, a new battery, winching or welding', 7, {
-        mainFuseOpen: 66,
+        chargeFuseOpen: 66,
         regulatorFailed: 60,
         regulatorDead: 26,
         regulatorOvercharges: 22,
