@@ -70,17 +70,36 @@ export function SymptomPick({ features, said = '', symptom, conditions, change }
         </>
       )}
       {picked ? <SymptomCautions symptom={picked} /> : null}
-      {picked && picked.conditions.length > 0 ? (
-        <ChoiceMany
-          legend="When does it do it?"
-          columns={2}
-          value={conditions}
-          onChange={(next) => change({ conditions: next })}
-          options={picked.conditions.map((c) => ({ value: c.id, label: c.name }))}
-        />
-      ) : null}
+      {picked
+        ? questions(picked).map((question) => (
+            <ChoiceMany
+              key={question ?? ''}
+              legend={question ?? 'What else is there to say of it?'}
+              columns={2}
+              value={conditions}
+              onChange={(next) => change({ conditions: oneEach(picked, conditions, next) })}
+              options={picked.conditions
+                .filter((c) => c.answers === question)
+                .map((c) => ({ value: c.id, label: c.name }))}
+            />
+          ))
+        : null}
     </>
   )
+}
+
+/** What is asked of a complaint, in its order; last, without a question, what stands for itself. */
+const questions = ({ conditions }: SymptomItem) =>
+  [...new Set(conditions.map((c) => c.answers))].sort(
+    (a, b) => Number(a === undefined) - Number(b === undefined),
+  )
+
+/** Of the answers to one question the one picked last stays. */
+function oneEach({ conditions }: SymptomItem, before: readonly string[], now: readonly string[]) {
+  const added = conditions.find((c) => now.includes(c.id) && !before.includes(c.id))
+  const kept = (id: string) =>
+    id === added?.id || conditions.find((c) => c.id === id)?.answers !== added?.answers
+  return added?.answers === undefined ? [...now] : now.filter(kept)
 }
 
 /** What was looked for; with nothing looked for, all, those first that the rider's words speak of. */

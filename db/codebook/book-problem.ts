@@ -24,6 +24,7 @@ export const BOOK_PROBLEMS = [
   'readingLevel',
   'sameRows',
   'firstLook',
+  'asked',
 ] as const
 export type BookProblemKind = (typeof BOOK_PROBLEMS)[number]
 

@@ -1,11 +1,12 @@
 /**
  * The gate a code book has to pass before it is published: one list of findings, empty when it is right.
- * Rules CB1 to CB22 of docs/spec/code-book.md. Shape comes first; the rest is only looked at when every
+ * Rules CB1 to CB23 of docs/spec/code-book.md. Shape comes first; the rest is only looked at when every
  * record has its shape, because a wrong shape makes the other findings noise.
  */
 import type { CodeBookItem } from '@/lib/model/code-book'
 import { type MachineModel, machineModel } from '@/lib/model/machine-model'
 import { type BookProblem, type Books, shelve } from './book-problem'
+import { checkAsked } from './check-asked'
 import { checkCodes } from './check-codes'
 import { checkIds } from './check-ids'
 import { checkReach, checkShares } from './check-list'
@@ -36,6 +37,7 @@ export function checkBook(
     ...checkReadings(books),
     ...checkFailures(books),
     ...checkCodes(books),
+    ...checkAsked(books),
     ...checkShares(books),
     ...checkReach(books, unseparated),
     ...checkSafety(books),

@@ -9,3 +9,7 @@ export const told = (
   otherwise: number,
   of100: Readonly<Record<string, number>>,
 ): Condition => ({ id, name, tells: { of100, otherwise } })
+
+/** Conditions of which a rider names one at most: the answers to one question. */
+export const asked = (answers: string, conditions: readonly Condition[]): Condition[] =>
+  conditions.map((one) => ({ ...one, answers }))

@@ -43,6 +43,8 @@ export const symptomItem = z.strictObject({
     z.strictObject({
       id: slug,
       name: z.string(),
+      /** The question that it is one answer to: of conditions with the same question only one is said. */
+      answers: z.optional(sentence),
       tells: z.nullable(z.strictObject({ of100: z.record(slug, share), otherwise: share })),
     }),
   ),

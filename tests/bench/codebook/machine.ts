@@ -3,7 +3,7 @@ import type { BookIndex } from '@/lib/diag/book-index'
 import { buildCase } from '@/lib/diag/case'
 import { letsThrough } from '@/lib/diag/gate'
 import { candidates } from '@/lib/diag/priors'
-import type { CodeBookItem } from '@/lib/model/code-book'
+import type { CodeBookItem, SymptomItem } from '@/lib/model/code-book'
 import type { Features } from '@/lib/model/features'
 import type { LogBody } from '@/lib/model/log-entry'
 import { pick } from './random'
@@ -44,12 +44,26 @@ export function drawMachine(of: Given, random: () => number): Machine {
   const two = random() * 100 < (item?.twoWrongOf100 ?? 0)
   const drawn = two ? [draw(), draw()] : [draw()]
   const faults = [...new Set(drawn.filter((fault) => fault !== null))]
-  const conditions = (item?.conditions ?? []).flatMap(({ id, tells }) => {
-    if (tells === null) return []
-    const chance = Math.max(...faults.map((f) => tells.of100[f] ?? tells.otherwise), 0)
-    return random() * 100 < (faults.length === 0 ? tells.otherwise : chance) ? [id] : []
+  return { symptom, features, faults, conditions: saidOf(item?.conditions ?? [], faults, random) }
+}
+
+/** What a rider says of it: of the answers to one question one at most, the rest each for itself. */
+function saidOf(
+  conditions: SymptomItem['conditions'],
+  faults: readonly string[],
+  random: () => number,
+): string[] {
+  const said = ({ tells }: SymptomItem['conditions'][number]): number => {
+    const rows = faults.map((fault) => tells?.of100[fault] ?? tells?.otherwise ?? 0)
+    return Math.max(...(rows.length === 0 ? [tells?.otherwise ?? 0] : rows))
+  }
+  const questions = new Set(conditions.map((c) => c.answers ?? c.id))
+  return [...questions].flatMap((question) => {
+    const answers = conditions.filter((c) => (c.answers ?? c.id) === question)
+    const weights = answers.map(said)
+    const silent = Math.max(0, 100 - weights.reduce((a, b) => a + b, 0))
+    return answers[pick([...weights, silent], random)]?.id ?? []
   })
-  return { symptom, features, faults, conditions }
 }
 
 /** How a check on this machine ends: the worst that any of its faults makes of it. */
@@ -83,7 +97,11 @@ export function endOfSwap(
   const rows = machine.faults.map((fault) => swap.table[fault] ?? swap.otherwise)
   // With two faults the good part cures neither: whichever is left keeps it as it was.
   const ends = (rows.length === 0 ? [swap.otherwise] : rows).map((row) => pick(row, random))
-  const end = Math.min(...ends)
+  return swapSteps(swapId, Math.min(...ends))
+}
+
+/** The log of a swap: 0 the spare changed nothing, 1 it cured and so did the old part put back, 2 the part was it. */
+export function swapSteps(swapId: string, end: number): LogBody[] {
   const step = (
     name: 'spareFitted' | 'oldRefitted' | 'newFitted',
     faultPresent: boolean,
