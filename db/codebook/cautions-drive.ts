@@ -57,6 +57,10 @@ export const HARD_LOAD: Caution = {
   signal: 'WARNING',
   text: 'Never free it with full throttle: the belt burns, or it lets go and jumps ahead.',
 }
+export const BRAKE_BEFORE_CHAIN: Caution = {
+  signal: 'WARNING',
+  text: 'With chain or shaft broken the brake may hold nothing, though its lever is firm. Chock it; on tow a rigid bar.',
+}
 export const BELT_TOW: Caution = {
   signal: 'NOTICE',
   text: 'Towing with the belt on and no neutral harms clutch and engine. Belt off, or neutral, as the spec sheet says.',

@@ -147,7 +147,7 @@ export const COOLANT_CHECKS: CheckItem[] = [
     minutes: 9,
     steps: [
       ['Engine cold through. Cap off, full to the neck. Face away.', SCALDS],
-      ['Brake on. Start it, let it idle till the upper hose gets warm.', SPEED_CAP],
+      ['Brake on. Start it, let it idle, thermometer at the neck.', SPEED_CAP],
       [
         'Look at the neck: does it flow, faster with a little throttle, under the speed where it pulls?',
         SPEED_CAP,
@@ -155,21 +155,24 @@ export const COOLANT_CHECKS: CheckItem[] = [
       ['Above 60 C on the thermometer: stop, cap on.', SCALDS],
     ],
     cautions: OPEN_RUNNING,
-    record: 'Flows, weak, still; temperature when the hose got warm.',
+    record: 'Flows, weak, still; temperature when you stopped.',
     outcomes: [
       ['flows', 'Flows, more with speed'],
       ['weak', 'Hardly'],
       ['still', 'Nothing moves'],
     ],
     table: {
-      coolantPumpFailed: [9, 26, 65],
-      thermostatStuck: [38, 31, 31],
-      airInCoolant: [33, 43, 24],
-      coolantLow: [43, 38, 19],
+      coolantPumpFailed: [6, 22, 72],
+      airInCoolant: [30, 40, 30],
+      coolantLow: [34, 37, 29],
     },
-    otherwise: [84, 13, 3],
+    otherwise: [56, 24, 20],
     expected: [
-      { words: 'Moves as soon as the thermostat opens, more with speed.', source: PRACTICE },
+      {
+        words:
+          'A neck with a bypass flows from cold. Others stay still till the thermostat opens, and by then the cap must be on: still says little there.',
+        source: PRACTICE,
+      },
     ],
     passDoesNotProve: 'A worn wheel moves some coolant at idle and too little on a climb.',
     stopWhen: 'It rises in the neck or steams: stop it, cap on.',

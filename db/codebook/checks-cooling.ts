@@ -56,7 +56,7 @@ export const COOLING_LOOKS: CheckItem[] = [
     minutes: 2,
     steps: [
       ['Engine off. Look at the front of the radiator through the grille.', FAN_STARTS],
-      'Look from behind with the lamp on the other side: does light come through?',
+      'Look from behind, shroud lifted where it lifts by hand, lamp on the other side: does light come through?',
       'Look at the fins: laid flat, bent, oily?',
       'Bags, number plates, winch or snow in front of it?',
     ],

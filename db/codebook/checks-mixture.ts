@@ -26,6 +26,7 @@ export const MIXTURE_CHECKS: CheckItem[] = [
       { text: 'Neutral proved by pushing, brake on, stand beside it.', caution: null },
       { text: 'Start it while you hold a little throttle, an eighth at most.', caution: MOVES },
       { text: 'Does it stay running? Let go slowly. Does it die now?', caution: null },
+      { text: 'It idles well without? Then leave this check: it tells nothing.', caution: null },
       { text: 'Do it twice.', caution: null },
     ],
     cautions: [

@@ -47,15 +47,15 @@ export const NOISE_INSIDE_CHECKS: CheckItem[] = [
     steps: [
       ['Cover off. Turn slowly by hand, the right way round only.', BY_HAND],
       'Press the chain between the sprockets. It must be taut.',
-      'Look at the marks on the cam wheel at top.',
-      'If you take the tensioner out: count its clicks. At the end means a worn chain.',
+      'Look at the marks on the cam wheel at top. With the tensioner out nothing is turned.',
+      'Tensioner out only if the sheet says how it goes back: at its end, or does it not spring out?',
     ],
     cautions: [HOT_ENGINE],
     record: 'Slack in mm, clicks, marks; photo.',
     outcomes: [
       ['taut', 'Taut, marks right'],
       ['some', 'Some slack'],
-      ['slack', 'Slack, or tensioner at its end'],
+      ['slack', 'Slack, or tensioner stuck or at its end'],
       ['off', 'Marks off'],
     ],
     table: {

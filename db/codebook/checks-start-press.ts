@@ -234,7 +234,8 @@ export const PRESS_CHECKS: CheckItem[] = [
     expected: [
       { words: 'A flat battery cranks as usual with a good one beside it.', source: PRACTICE },
     ],
-    passDoesNotProve: 'It says volts were missing, not why they went.',
+    passDoesNotProve:
+      'It says volts were missing, not why: the last clamp on the engine also goes round a bad engine ground.',
     stopWhen: 'Battery hisses, swells, warms or smells: clamps off at the giver, stand back.',
     basis: 'physics',
     basisWords: 'A second battery gives what the first lacks. Shares are guesses.',

@@ -225,7 +225,7 @@ export const THROTTLE_CHECKS: CheckItem[] = [
     id: 'gripOpenLook',
     name: 'Throttle housing open and look',
     purpose: 'Finds dirt, ice, a bent bar end or a frayed cable end in the housing.',
-    gate: {},
+    gate: { kind: ['atv', 'snowmobile', 'dirtBike'] },
     setups: ['throttleHousingOpen'],
     tools: ['screwdriver', 'lamp'],
     minutes: 6,

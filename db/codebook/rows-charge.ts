@@ -88,10 +88,10 @@ const RUN_DOWN: Chapter['rows'] = {
     loadTooGreat: [53, 8, 32, 7],
   },
   fuseBothSides: {
-    statorFault: [66, 4, 29, 1],
-    regulatorDead: [64, 4, 31, 1],
-    chargingPlugBurnt: [68, 5, 22, 5],
-    loadTooGreat: [72, 4, 23, 1],
+    statorFault: [66, 4, 28, 1, 1],
+    regulatorDead: [64, 4, 30, 1, 1],
+    chargingPlugBurnt: [68, 5, 21, 5, 1],
+    loadTooGreat: [72, 4, 22, 1, 1],
   },
   keyWiggle: {
     statorFault: [74, 24, 2],

@@ -68,11 +68,11 @@ export const CHARGE_SYMPTOMS: SymptomItem[] = [
         batteryFailed: 14,
         chargingPlugBurnt: 14,
       }),
-      told('burntPlastic', 'Smell of hot plastic or a hot plug', 3, {
+      told('burntPlastic', 'Smell of hot plastic or burnt varnish, or a hot plug', 3, {
         chargingPlugBurnt: 62,
         regulatorDead: 13,
         regulatorFailed: 28,
-        statorFault: 12,
+        statorFault: 32,
         regulatorOvercharges: 10,
         chargeFuseOpen: 12,
         keySwitchHarness: 14,

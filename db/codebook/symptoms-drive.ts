@@ -1,5 +1,5 @@
 import type { SymptomItem } from '@/lib/model/code-book'
-import { BELT_TOW, HARD_LOAD, KEY_OUT, TURNING_DRIVE } from './cautions-drive'
+import { BELT_TOW, BRAKE_BEFORE_CHAIN, HARD_LOAD, KEY_OUT, TURNING_DRIVE } from './cautions-drive'
 import { RIDDEN } from './gates-drive'
 import { OWN_WORDS } from './sources'
 
@@ -205,7 +205,7 @@ export const DRIVE_SYMPTOMS: SymptomItem[] = [
     ],
     opens: 'suspects',
     engine: 'runs',
-    cautions: [KEY_OUT, TURNING_DRIVE, HARD_LOAD, BELT_TOW],
+    cautions: [KEY_OUT, TURNING_DRIVE, BRAKE_BEFORE_CHAIN, HARD_LOAD, BELT_TOW],
     firstLook: ['beltHouseLook', 'chainLook', 'rangeLever', 'axleLook', 'pushRoll'],
     twoWrongOf100: 8,
     source: `${OWN_WORDS}; two wrong in 8 of 100: a belt and what broke it (guess)`,

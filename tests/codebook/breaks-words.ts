@@ -37,6 +37,24 @@ export const WORD_BREAKS: Break[] = [
     },
   ],
   [
+    'CB23 a question with one answer',
+    'asked',
+    /startsThenDies/,
+    (b) => {
+      const { conditions } = b.item('symptom', 'startsThenDies')
+      conditions.push({ id: 'alone', name: 'Alone', answers: 'Alone?', tells: null })
+    },
+  ],
+  [
+    'CB23 a question that one fault answers twice over',
+    'asked',
+    /startsThenDies/,
+    (b) => {
+      for (const { answers, tells } of b.item('symptom', 'startsThenDies').conditions)
+        if (answers === 'How often?' && tells !== null) tells.of100.fuelStale = 60
+    },
+  ],
+  [
     'CB21 a first look that turns the engine',
     'firstLook',
     /startsThenDies/,
