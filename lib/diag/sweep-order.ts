@@ -64,20 +64,28 @@ function nextSuspect({ machines, left, waiting, isOpen, open, cost }: Waiting): 
   suspect: number
   opens: number[]
 } {
-  let best = { suspect: -1, opens: [] as number[], first: Number.POSITIVE_INFINITY, second: 0 }
+  let best = { suspect: -1, first: Number.POSITIVE_INFINITY, second: 0 }
+  const standing = statesOf(machines, open)
   for (const suspect of waiting) {
-    const opens = machines.flatMap((_, m) =>
-      isOpen[m] !== true && left[m]?.has(suspect) === true ? [m] : [],
-    )
-    const standing = [...open, ...opens]
-    const during = statesOf(machines, standing)
-    const closing = standing.filter((m) => left[m]?.size === 1 && left[m]?.has(suspect) === true)
-    const after = during / statesOf(machines, closing)
+    let during = standing
+    let closing = 1
+    for (let m = 0; m < machines.length; m++) {
+      const moved = left[m]
+      if (moved?.has(suspect) !== true) continue
+      const states = machines[m]?.end.length ?? 1
+      if (isOpen[m] !== true) during *= states
+      if (moved.size === 1) closing *= states
+    }
+    const after = during / closing
     const [first, second] = [cost(after, during), after + during]
     if (first < best.first || (first === best.first && second < best.second))
-      best = { suspect, opens, first, second }
+      best = { suspect, first, second }
   }
-  return best
+  const { suspect } = best
+  const opens = machines.flatMap((_, m) =>
+    isOpen[m] !== true && left[m]?.has(suspect) === true ? [m] : [],
+  )
+  return { suspect, opens }
 }
 
 /** How many combinations of states these machines have together. */

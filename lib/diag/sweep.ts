@@ -28,18 +28,21 @@ export function sweep(machines: readonly Machine[], order: Order, weights: Weigh
   const stride = strideOf(order)
   let at: Front = { some: grid([0]), none: grid([isPossible ? 1 : 0]), log: sumOfLogs(still) }
   const kept: Front[] = []
+  const whole: Front[] = []
   steps.forEach((step, i) => {
     if (i % stride === 0) kept.push(at)
-    at = passed(machines, step, { front: at, weights }).after
+    const pass = passed(machines, step, { front: at, weights })
+    if (stride === 1) whole.push(pass.opened)
+    at = pass.after
   })
   const shares = steps.map(() => 0)
   const total = Math.log(at.some.values[0] ?? 0) + at.log
   let worth: Worth = { grid: grid([1]), log: 0 }
   for (let block = kept.length - 1; block >= 0; block--) {
     const from = block * stride
-    const opened: Front[] = []
+    const opened = stride === 1 ? whole.slice(from, from + 1) : []
     let front = kept[block] as Front
-    for (const step of steps.slice(from, from + stride)) {
+    for (const step of stride === 1 ? [] : steps.slice(from, from + stride)) {
       const pass = passed(machines, step, { front, weights })
       opened.push(pass.opened)
       front = pass.after
@@ -151,11 +154,12 @@ function spread(
   const vector = machines[m]?.[by] ?? []
   const [n, behind] = [vector.length, statesOf(machines, open.slice(at))]
   const next = new Float64Array(values.length * n)
-  for (let i = 0; i < values.length; i++) {
-    const front = Math.floor(i / behind)
-    const base = front * behind * n + (i - front * behind)
-    for (let s = 0; s < n; s++) next[base + s * behind] = (values[i] ?? 0) * (vector[s] ?? 0)
-  }
+  for (let from = 0, to = 0; from < values.length; from += behind, to += behind * n)
+    for (let s = 0; s < n; s++) {
+      const share = vector[s] ?? 0
+      if (share > 0)
+        for (let i = 0; i < behind; i++) next[to + s * behind + i] = (values[from + i] ?? 0) * share
+    }
   return { open: [...open.slice(0, at), m, ...open.slice(at)], values: next }
 }
 
@@ -169,13 +173,13 @@ function fold(
   const at = open.indexOf(m)
   const [n, behind] = [vector.length, statesOf(machines, open.slice(at + 1))]
   const next = new Float64Array(values.length / n)
-  for (let i = 0; i < next.length; i++) {
-    const front = Math.floor(i / behind)
-    const base = front * behind * n + (i - front * behind)
-    let sum = 0
-    for (let s = 0; s < n; s++) sum += (values[base + s * behind] ?? 0) * (vector[s] ?? 0)
-    next[i] = sum
-  }
+  for (let to = 0, from = 0; to < next.length; to += behind, from += behind * n)
+    for (let s = 0; s < n; s++) {
+      const share = vector[s] ?? 0
+      if (share > 0)
+        for (let i = 0; i < behind; i++)
+          next[to + i] = (next[to + i] ?? 0) + (values[from + s * behind + i] ?? 0) * share
+    }
   return { open: [...open.slice(0, at), ...open.slice(at + 1)], values: next }
 }
 
@@ -210,21 +214,33 @@ function move(
   return next
 }
 
-const grid = (values: readonly number[]): Grid => ({ open: [], values: Float64Array.from(values) })
+const grid = (values: readonly number[]): Grid => ({ open: [], values: new Float64Array(values) })
 
-const sum = (a: Grid, b: Grid): Grid => ({
-  open: a.open,
-  values: a.values.map((x, s) => x + (b.values[s] ?? 0)),
-})
-
-function mix(of: Grid, factor: number, add: { more: Grid; times: number } | null): Grid {
-  if (add === null) return factor === 1 ? of : { ...of, values: of.values.map((x) => factor * x) }
-  const { more, times } = add
-  const values = of.values.map((x, s) => factor * x + times * (more.values[s] ?? 0))
-  return { open: of.open, values }
+// Loops and no callbacks from here on: an outlook of a big book comes through some hundred thousand times.
+function sum({ open, values }: Grid, other: Grid): Grid {
+  const both = new Float64Array(values.length)
+  for (let s = 0; s < both.length; s++) both[s] = (values[s] ?? 0) + (other.values[s] ?? 0)
+  return { open, values: both }
 }
 
-const largest = ({ values }: Grid): number => values.reduce((most, x) => Math.max(most, x), 0)
+function mix(of: Grid, factor: number, add: { more: Grid; times: number } | null): Grid {
+  if (add === null && factor === 1) return of
+  const { open, values } = of
+  const next = new Float64Array(values.length)
+  if (add === null) for (let s = 0; s < next.length; s++) next[s] = factor * (values[s] ?? 0)
+  else {
+    const { values: more } = add.more
+    for (let s = 0; s < next.length; s++)
+      next[s] = factor * (values[s] ?? 0) + add.times * (more[s] ?? 0)
+  }
+  return { open, values: next }
+}
+
+function largest({ values }: Grid): number {
+  let most = 0
+  for (let s = 0; s < values.length; s++) most = Math.max(most, values[s] ?? 0)
+  return most
+}
 
 function inner(a: ArrayLike<number>, b: ArrayLike<number>): number {
   let total = 0
