@@ -95,7 +95,10 @@ export const BATTERY_CHECKS: CheckItem[] = [
         text: 'Meter on DC volts, probes on the posts, leads clear of belt and fan.',
         caution: MOVING_PARTS,
       },
-      { text: 'Crank five seconds. Read the lowest steady volts.', caution: MOVES },
+      {
+        text: 'Crank five seconds. Read the lowest steady volts. It does not turn? Then they tell nothing.',
+        caution: MOVES,
+      },
       { text: 'Write down the air temperature and how fast it turned.', caution: null },
     ],
     cautions: [BATTERY_GAS, MOVES],
@@ -158,7 +161,10 @@ export const BATTERY_CHECKS: CheckItem[] = [
         text: 'Meter on DC volts. One probe on the post, the other on the clamp of the same post.',
         caution: null,
       },
-      { text: 'Crank three seconds. Read. Do the other post.', caution: MOVES },
+      {
+        text: 'Crank three seconds. Read. Do the other post. It does not turn? Then they tell nothing.',
+        caution: MOVES,
+      },
       { text: 'Key on: wiggle both cables and watch the dash.', caution: null },
     ],
     cautions: [
@@ -224,7 +230,10 @@ export const BATTERY_CHECKS: CheckItem[] = [
         caution: MOVING_PARTS,
       },
       { text: 'Scratch one spot bright if the probe slips.', caution: null },
-      { text: 'Crank three seconds. Read.', caution: MOVES },
+      {
+        text: 'Crank three seconds. Read. It does not turn? Then it tells nothing.',
+        caution: MOVES,
+      },
       { text: 'Do the same from the minus post to bare frame metal.', caution: null },
     ],
     cautions: [BATTERY_GAS, MOVES],

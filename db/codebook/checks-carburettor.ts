@@ -125,7 +125,7 @@ export const CARBURETTOR_CHECKS: CheckItem[] = [
         caution: null,
       },
       {
-        text: 'Shut the drain. Tap on. Wait a minute. Open it again: full once more?',
+        text: 'Shut the drain. Tap on. Wait a minute; with a pulse pump pull it over ten times, stop switch to stop. Open it again: full once more?',
         caution: null,
       },
       { text: 'Wipe up. Look at the overflow: dry.', caution: null },
@@ -175,7 +175,10 @@ export const CARBURETTOR_CHECKS: CheckItem[] = [
     minutes: 7,
     costMinor: 0,
     steps: [
-      { text: 'Pull the pulse hose at the pump, rag under it.', caution: VAPOUR },
+      {
+        text: 'No pump, the fuel falls from the tank? Leave this. Else pull the pulse hose at the pump, rag under it.',
+        caution: VAPOUR,
+      },
       { text: 'Fuel in the pulse hose means a split diaphragm.', caution: null },
       { text: 'Bend the hose: cracks, splits, loose on its stub?', caution: null },
       {

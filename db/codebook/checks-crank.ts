@@ -1,5 +1,6 @@
 import type { CheckItem } from '@/lib/model/code-book'
 import { HOT_ENGINE, KEY_OFF, MOVES, MOVING_PARTS } from './cautions'
+import { check } from './draft'
 import { GUESS, PRACTICE } from './sources'
 
 /** The crank signal. */
@@ -138,6 +139,38 @@ export const CRANK_CHECKS: CheckItem[] = [
     basisWords: 'No signal, no spark and no fuel. Shares are guesses.',
     source: GUESS,
   },
+  check({
+    id: 'crankLoomMeter',
+    name: 'Crank sensor circuit from the module plug',
+    purpose: 'Measures sensor, plug and loom together: what the module sees.',
+    gate: { fuelling: ['injection'] },
+    setups: ['sidePanelOff', 'modulePlugOff'],
+    tools: [['multimeter', '1 % + 3 digits'], 'backProbes'],
+    minutes: 8,
+    steps: [
+      ['Key off, a minute of rest. Take the module plug off.', KEY_OFF],
+      'Find the two pins of the crank sensor in the spec sheet. Thin probes, do not spread the pins.',
+      'Meter on ohms across the two. Write it down. Then from each to engine metal: open.',
+      'Bend the loom in small lengths and press the sensor plug while you watch.',
+      'Plug the module in until it clicks.',
+    ],
+    record: 'Ohms across, to metal, and where it jumped.',
+    outcomes: [
+      ['steady', 'As the spec sheet says, steady, none to metal'],
+      ['jumps', 'Jumps while the loom or plug is moved'],
+      ['wrong', 'Open, short or to metal'],
+    ],
+    table: {
+      crankSensorWiring: [16, 36, 48],
+      crankSensorPart: [34, 10, 56],
+    },
+    otherwise: [94, 4, 2],
+    expected: [{ words: 'The ohms of the sensor alone, plus less than one.', source: PRACTICE }],
+    passDoesNotProve: 'A sensor can read right and give no signal; a rub can need heat or shaking.',
+    basis: 'physics',
+    basisWords:
+      'All that lies between sensor and module is in the way of the meter. Shares are guesses.',
+  }),
   {
     kind: 'check',
     id: 'crankSensorLook',

@@ -77,7 +77,10 @@ export const ENGINE_CHECKS: CheckItem[] = [
     minutes: 35,
     costMinor: 0,
     steps: [
-      { text: 'Engine cool. Plug the intake and exhaust with the test plugs.', caution: null },
+      {
+        text: 'Engine cool. Plug intake, exhaust and the stub of the pulse hose with the test plugs.',
+        caution: null,
+      },
       { text: 'Pump to the figure of the kit. Never more.', caution: null },
       { text: 'Watch for five minutes.', caution: null },
       { text: 'If it falls: soapy water on the seals shows bubbles.', caution: null },

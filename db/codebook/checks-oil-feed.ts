@@ -59,7 +59,10 @@ export const OIL_FEED_CHECKS: CheckItem[] = [
     weather: 'Under cover in rain or snow.',
     minutes: 7,
     steps: [
-      ['Engine cool, no flame. Draw a little fuel into the jar.', VAPOUR],
+      [
+        'Only on a machine that takes mixed petrol; with an oil tank of its own leave this. Engine cool. Draw a little fuel into the jar.',
+        VAPOUR,
+      ],
       'One drop on white paper. Next to it a drop of known mix, if you have one.',
       'Keep the paper in open air for five minutes.',
       'Mix leaves an oily ring that stays. Plain petrol leaves nothing.',

@@ -27,7 +27,7 @@ export const PRESSURE_CHECKS: CheckItem[] = [
     costMinor: 0,
     steps: [
       {
-        text: 'Let the pressure off: pump fuse out, crank two seconds, key off.',
+        text: 'Let the pressure off: pump fuse out, crank two seconds, key off. Does not crank? Use the valve of the rail, if it has one, or leave this.',
         caution: FUEL_PRESSURE,
       },
       {

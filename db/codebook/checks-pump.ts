@@ -147,7 +147,7 @@ export const PUMP_CHECKS: CheckItem[] = [
     costMinor: 0,
     steps: [
       {
-        text: 'Let the pressure off. Rag, glasses. Open the joint at the injector end.',
+        text: 'Let the pressure off: pump fuse out, crank two seconds, or the valve of the rail. Rag, glasses. Fuse in. Open the joint at the injector end.',
         caution: FUEL_PRESSURE,
       },
       { text: 'Lead the hose into a closed metal can that stands lower.', caution: VAPOUR },

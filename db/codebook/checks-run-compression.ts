@@ -108,7 +108,7 @@ export const COMPRESSION_CHECKS: CheckItem[] = [
     machineState: 'cranking',
     minutes: 7,
     steps: [
-      ['After the dry figure: a spoon of engine oil, 10 ml, into the plug hole.', PLUG_HOLE],
+      ['After the dry figure: half a spoon of engine oil, 5 ml, into the plug hole.', PLUG_HOLE],
       ['Turn it over twice with a rag over the hole, face away.', MOVES],
       ['Gauge in. Throttle open. Crank as before, caps on grounded plugs.', HIGH_VOLTAGE],
       'Compare with the dry figure.',

@@ -219,15 +219,23 @@ export const NO_START_CHECKS: CheckItem[] = [
     machineState: 'cranking',
     minutes: 4,
     steps: [
-      'Choke off. On a carburettor shut the fuel tap.',
+      'Only where it does not start. Choke off. On a carburettor shut the fuel tap.',
       ['Neutral proved, brake on. Hold the throttle wide open.', MOVES],
-      ['Crank ten seconds, rest a minute. Three times at most.', NO_MORE_STARTS],
+      ['Crank ten seconds or ten pulls, rest a minute. Three times at most.', NO_MORE_STARTS],
       'Let go of the throttle the moment it fires.',
       'Did it start, cough with smoke, or nothing?',
     ],
     cautions: [
       MOVES,
       NO_MORE_STARTS,
+      {
+        signal: 'WARNING',
+        text: 'No neutral: when it fires wide open the belt takes hold and it leaps. Driven end raised on a stand and guarded, or leave this check.',
+      },
+      {
+        signal: 'WARNING',
+        text: 'A kick or recoil start kicks back. Decompressor pulled, foot or rope let go at once.',
+      },
       {
         signal: 'WARNING',
         text: 'It can race when it fires. Hand ready to shut the throttle and to press stop.',

@@ -26,7 +26,7 @@ export const DIES_WHEN: SymptomItem['conditions'] = [
       pulsePumpWeak: 18,
       airFilterBlocked: 22,
     }),
-    told('afterMinutes', 'After some minutes', 18, {
+    told('afterMinutes', 'After half a minute or more', 18, {
       tankVentBlocked: 86,
       crankSensorPart: 66,
       fuelPumpWeak: 56,

@@ -172,6 +172,15 @@ export const RUNS_ROUGH: SymptomItem = {
       idleAirStuck: 22,
       sparkPlugBad: 12,
     }),
+    told('afterWork', 'Since work on it', 4, {
+      intakeLeak: 38,
+      ignitionCoilWiring: 20,
+      jetsBlocked: 16,
+      injectorCircuit: 16,
+      crankSensorWiring: 14,
+      sparkPlugBad: 12,
+      valveTight: 10,
+    }),
     told('afterFuel', 'Since the last refuelling', 3, {
       fuelStale: 46,
       fuelFilterBlocked: 24,

@@ -66,17 +66,20 @@ function nextSuspect({ machines, left, waiting, isOpen, open, cost }: Waiting): 
 } {
   let best = { suspect: -1, first: Number.POSITIVE_INFINITY, second: 0 }
   const standing = statesOf(machines, open)
-  for (const suspect of waiting) {
+  const turn = (suspect: number): [after: number, during: number] => {
     let during = standing
     let closing = 1
     for (let m = 0; m < machines.length; m++) {
-      const moved = left[m]
-      if (moved?.has(suspect) !== true) continue
+      const waits = left[m]
+      if (waits?.has(suspect) !== true) continue
       const states = machines[m]?.end.length ?? 1
       if (isOpen[m] !== true) during *= states
-      if (moved.size === 1) closing *= states
+      if (waits.size === 1) closing *= states
     }
-    const after = during / closing
+    return [during / closing, during]
+  }
+  for (const suspect of waiting) {
+    const [after, during] = turn(suspect)
     const [first, second] = [cost(after, during), after + during]
     if (first < best.first || (first === best.first && second < best.second))
       best = { suspect, first, second }

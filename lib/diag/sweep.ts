@@ -35,18 +35,23 @@ export function sweep(machines: readonly Machine[], order: Order, weights: Weigh
     if (stride === 1) whole.push(pass.opened)
     at = pass.after
   })
+  const openedFrom = (first: Front, of: readonly Step[]): Front[] => {
+    let front = first
+    return of.map((step) => {
+      const pass = passed(machines, step, { front, weights })
+      front = pass.after
+      return pass.opened
+    })
+  }
   const shares = steps.map(() => 0)
   const total = Math.log(at.some.values[0] ?? 0) + at.log
   let worth: Worth = { grid: grid([1]), log: 0 }
   for (let block = kept.length - 1; block >= 0; block--) {
     const from = block * stride
-    const opened = stride === 1 ? whole.slice(from, from + 1) : []
-    let front = kept[block] as Front
-    for (const step of stride === 1 ? [] : steps.slice(from, from + stride)) {
-      const pass = passed(machines, step, { front, weights })
-      opened.push(pass.opened)
-      front = pass.after
-    }
+    const opened =
+      stride === 1
+        ? whole.slice(from, from + 1)
+        : openedFrom(kept[block] as Front, steps.slice(from, from + stride))
     for (let i = opened.length - 1; i >= 0; i--) {
       const step = steps[from + i] as Step
       const back = backward(machines, step, { front: opened[i] as Front, worth, weights })
