@@ -1,6 +1,6 @@
-// npm run bench:codebook [-- --quick] [-- --symptom ID]: what the code book is worth. Machines are drawn from the
+// npm run bench:codebook [-- --quick] [-- --symptom ID] [-- --described]: what the code book is worth. Machines are drawn from the
 // book's own figures and from figures off by up to two; the plan is driven to the end, beside checks in a drawn
-// order and beside repairing the likeliest first. Prints, and writes docs/performance.md.
+// order and beside repairing the likeliest first; then twelve machines that were described beforehand. Prints, and writes docs/performance.md.
 import { BOOK_ITEMS } from '@/db/codebook/book'
 import { DEMO_MODELS } from '@/db/codebook/demo-models'
 import { type BookIndex, indexBook } from '@/lib/diag/book-index'
@@ -9,6 +9,7 @@ import type { CodeBookItem, SymptomItem } from '@/lib/model/code-book'
 import { FEATURE_NAMES, type Features } from '@/lib/model/features'
 import { randomFrom } from '../diag/models'
 import { machineFacts, table, writePart } from '../marked-part'
+import { describedTable } from './described-table'
 import { byPlan, type Drive, drawnAnswers, drive, mostLikely, type Policy, randomly } from './drive'
 import { drawMachine, perturbed } from './machine'
 import { aboveOptimum } from './small'
@@ -16,7 +17,7 @@ import { aboveOptimum } from './small'
 const quick = process.argv.includes('--quick')
 const only = process.argv[process.argv.indexOf('--symptom') + 1]
 const one = process.argv.includes('--symptom') ? only : undefined
-const MACHINES = quick ? 4 : 24
+const MACHINES = quick ? 4 : 16
 /** Of 100 features of a machine, how many nobody can tell in the perturbed world. */
 const UNKNOWN_OF_100 = 20
 
@@ -89,7 +90,15 @@ function aboveCell(symptom: SymptomItem): string {
 }
 
 function main(): void {
-  const facts = machineFacts()
+  if (!process.argv.includes('--described')) drawn(machineFacts())
+  if (quick || one !== undefined) return
+  const facts = ['Command: `npm run bench:codebook -- --described`', ...machineFacts()]
+  const body = describedTable(index, console.log)
+  console.log(body)
+  writePart({ name: 'bench:codebook -- --described', facts, body })
+}
+
+function drawn(facts: readonly string[]): void {
   const symptoms = [...index.symptoms.values()].filter(
     (s) => s.opens === 'suspects' && (one === undefined || s.id === one),
   )

@@ -24,3 +24,17 @@ export type Stranded = {
 /** The looks as a list, from what was looked at to what was seen. */
 export const looks = (seen: Record<string, string>): Look[] =>
   Object.entries(seen).map(([look, what]) => ({ look, seen: what }))
+
+/** How the checks of the book end on one of these machines, told by someone who saw outcomes and no figure. */
+export type Answered = {
+  /** Conditions of the complaint that the rider's words name. */
+  conditions: readonly string[]
+  /** By check; a check that is not named ends as its first outcome says: nothing wrong to be seen. */
+  ends: Readonly<Record<string, string>>
+  /** Swaps after which the machine was well: 1 a contact or plug had cured it, 2 the part was it. */
+  swaps: Readonly<Record<string, 1 | 2>>
+  /** Checks that cannot be done on this machine as it stands. */
+  cannot: readonly string[]
+  /** With two faults: the ends once only the one named is mended. */
+  after?: Readonly<Record<string, Readonly<Record<string, string>>>>
+}
