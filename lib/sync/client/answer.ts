@@ -5,7 +5,9 @@ import { commit, noWrites, type Writes } from './commit'
 import type { Core } from './core'
 import { isStored, readRow } from './entities'
 import { bringsBack } from './free-room'
+import { getMany } from './get-many'
 import { receiveHlc } from './hlc'
+import { recordsIn } from './outbox'
 import { type Answered, type Applied, outcomesOf } from './outcomes'
 import { type OutboxRecord, type RowRecord, readMeta, rowKey } from './phone-db'
 import { photosToOffer } from './photo-store'
@@ -152,7 +154,7 @@ class AnswerPlan {
     const restored = held !== null && logOf(held) !== logOf(cursor)
     if (!restored) return
     // The shop was restored from a backup: what it took lately is offered again (P12).
-    for (const record of await db.outbox.where('state').anyOf('taken', 'done').toArray()) {
+    for (const record of await recordsIn(db, 'taken', 'done')) {
       this.#changed.set(record.dseq, { ...record, state: 'waiting', takenAt: null })
     }
     this.#writes.photos = await photosToOffer(db, this.#of.nowMs - KEEP_TAKEN_MS)
@@ -235,7 +237,8 @@ class AnswerPlan {
     rows: readonly PullRow[],
   ): Promise<Map<string, Pick<RowRecord, 'base' | 'told'>>> {
     const own = rows.filter((row) => row.own === true)
-    const held = await this.#core.db.row.bulkGet(own.map((row) => rowKey(row.entity, row.id)))
+    const keys = own.map((row) => rowKey(row.entity, row.id))
+    const held = await getMany(this.#core.db.row, keys, (row) => row.key)
     const bases = new Map<string, Pick<RowRecord, 'base' | 'told'>>()
     for (const [index, { id, row }] of own.entries()) {
       const { base = null, body = null } = held[index] ?? {}
@@ -256,15 +259,15 @@ class AnswerPlan {
   /** Rows whose ops on top have changed, though the shop's row has not. */
   async #touchedAgain(records: readonly OutboxRecord[], overlay: Overlay): Promise<void> {
     const { cache, keys, db } = this.#core
-    for (const record of records) {
-      const op = await cache.op(keys.outbox, record)
-      for (const at of rowsTouched(op)) {
-        const key = rowKey(at.entity, at.id)
-        const held = await db.row.get(key)
-        // Taken, but not shown to this person: what they wrote stays visible to them.
-        if (this.#rows.has(key) || held === undefined || held.base === null) continue
-        this.#rows.set(key, await rebasedRow(this.#core, key, held, overlay))
-      }
+    const ops = await Promise.all(records.map((record) => cache.op(keys.outbox, record)))
+    const touched = new Set(
+      ops.flatMap((op) => rowsTouched(op).map((at) => rowKey(at.entity, at.id))),
+    )
+    const left = [...touched].filter((key) => !this.#rows.has(key))
+    for (const held of await getMany(db.row, left, (row) => row.key)) {
+      // Taken, but not shown to this person: what they wrote stays visible to them.
+      if (held === undefined || held.base === null) continue
+      this.#rows.set(held.key, await rebasedRow(this.#core, held.key, held, overlay))
     }
     cache.forgetOps(records.map((record) => record.opId))
   }

@@ -9,6 +9,7 @@ import {
 import type { Core } from './core'
 import { openOp } from './core'
 import { base64, hashOf, type Sender, signText } from './envelope'
+import { recordsIn } from './outbox'
 import { type LetGoRecord, type OutboxRecord, type PhotoRecord, sealedPhoto } from './phone-db'
 import { photoPlace } from './record'
 import { openBytes } from './seal'
@@ -20,7 +21,7 @@ import { openBytes } from './seal'
  */
 export async function exportUnsent(core: Core, sender: Sender, at: string): Promise<Blob[]> {
   const { db } = core
-  const records = await db.outbox.where('state').anyOf('waiting', 'blocked', 'stuck').sortBy('dseq')
+  const records = await recordsIn(db, 'waiting', 'blocked', 'stuck')
   const letGo = await db.letGo.toArray()
   const held = [...letGo, ...records].sort((a, b) => a.dseq - b.dseq)
   const photos = await db.photo.where('state').anyOf('waiting', 'stuck').sortBy('since')

@@ -3,6 +3,7 @@ import type { Job } from '@/lib/model/job'
 import type { PullRow } from '@/lib/sync/protocol/message'
 import { commit, noWrites } from './commit'
 import type { Core } from './core'
+import { ON_TOP, recordsIn } from './outbox'
 import { type PhoneDb, type RowRecord, readMeta } from './phone-db'
 import { dropSentThumbs } from './photo-store'
 
@@ -21,9 +22,8 @@ async function dropClosedJobs(core: Core): Promise<boolean> {
   return await commit(core, async () => {
     const { db } = core
     const closed = await closedJobs(core)
-    const unsent = new Set(
-      (await db.outbox.where('state').notEqual('done').toArray()).map((record) => record.jobId),
-    )
+    const records = await recordsIn(db, ...ON_TOP)
+    const unsent = new Set(records.map((record) => record.jobId))
     const jobIds = new Set(closed.map((row) => row.id).filter((jobId) => !unsent.has(jobId)))
     if (jobIds.size === 0) return null
     const rows = await db.row.filter((row) => row.jobId !== null && jobIds.has(row.jobId)).toArray()

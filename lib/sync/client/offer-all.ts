@@ -1,5 +1,6 @@
 import { commit, noWrites } from './commit'
 import type { Core } from './core'
+import { recordsIn } from './outbox'
 import { type OutboxRecord, type PhotoRecord, sealedPhoto } from './phone-db'
 import { photosToOffer } from './photo-store'
 
@@ -11,7 +12,7 @@ import { photosToOffer } from './photo-store'
 export async function offerAll(core: Pick<Core, 'db' | 'step'>): Promise<boolean> {
   return await commit(core, async () => {
     const { db } = core
-    const held = await db.outbox.where('state').anyOf('stuck', 'taken', 'done').toArray()
+    const held = await recordsIn(db, 'stuck', 'taken', 'done')
     const letGo = await db.letGo.toArray()
     const refused = await refusedPhotos(core)
     const photos = [...refused, ...(await photosToOffer(db, 0))]

@@ -1,6 +1,7 @@
 import type { Cursor, OpResult, SyncResponse } from '@/lib/sync/protocol/message'
 import { commit, noWrites } from './commit'
 import type { Core } from './core'
+import { getMany } from './get-many'
 import type { OutboxRecord, PhoneDb } from './phone-db'
 
 /** One answer of the shop, with what was sent for it. */
@@ -32,7 +33,7 @@ export async function outcomesOf(
 ): Promise<OutboxRecord[]> {
   const results = new Map(of.response.results.map((result) => [result.opId, result]))
   const taken = new Set(of.response.taken)
-  const held = await db.outbox.bulkGet([...of.dseqs])
+  const held = await getMany(db.outbox, of.dseqs, (record) => record.dseq)
   return held.flatMap((record) => {
     if (record === undefined || record.state === 'taken' || record.state === 'done') return []
     const result = results.get(record.opId)

@@ -33,7 +33,7 @@ export type RowRecord = {
  * kept. `taken`: the shop has it, its row has not come back. `done`: kept a while, to be offered again
  * should the shop be restored from a backup (P12).
  */
-type OutboxState = 'waiting' | 'blocked' | 'stuck' | 'taken' | 'done'
+export type OutboxState = 'waiting' | 'blocked' | 'stuck' | 'taken' | 'done'
 
 export type OutboxRecord = {
   dseq: number

@@ -1,6 +1,7 @@
 import type { Op } from '@/lib/sync/protocol/op'
 import { applyOpLocally, rowsTouched, type Touched } from './apply-op'
 import { type Core, openBase } from './core'
+import { numbersIn, ON_TOP } from './outbox'
 import { type OutboxRecord, type RowRecord, rowKey } from './phone-db'
 import { type Sealed, sealJson } from './seal'
 
@@ -36,7 +37,7 @@ export async function readOverlay(
 ): Promise<Overlay> {
   const { outbox } = core.db
   const changed = new Map(changes.map((record) => [record.dseq, record]))
-  const dseqs = await outbox.where('state').notEqual('done').primaryKeys()
+  const dseqs = await numbersIn(core.db, ...ON_TOP)
   const others = await outbox.bulkGet(dseqs.filter((dseq) => !changed.has(dseq)))
   const records = [...changes, ...others.flatMap((record) => record ?? [])]
   records.sort((a, b) => a.dseq - b.dseq)

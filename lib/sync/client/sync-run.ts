@@ -7,6 +7,7 @@ import { packRequest, type Sender, signedHeaders } from './envelope'
 import { heldBeyond } from './held'
 import { measureOffset } from './hlc'
 import { offerAll } from './offer-all'
+import { countIn, recordsIn } from './outbox'
 import { type Answered, type Applied, setAside } from './outcomes'
 import { type OutboxRecord, type PhoneDb, readMeta, writeMeta } from './phone-db'
 import type { Pace } from './photo-pace'
@@ -106,18 +107,18 @@ export class SyncRun {
   }
 
   async #count(): Promise<void> {
-    const ops = await this.#waiting().count()
+    const ops = await countIn(this.#store.db, 'waiting', 'blocked')
     this.#progress = { done: 0, total: ops + (await this.#photos.count()) }
   }
 
-  #waiting() {
-    return this.#store.db.outbox.where('state').anyOf('waiting', 'blocked')
+  #waiting(): Promise<OutboxRecord[]> {
+    return recordsIn(this.#store.db, 'waiting', 'blocked')
   }
 
   /** Sends and pulls until both ends are even; null when they are. */
   async #records(): Promise<RunEnd | null> {
     for (;;) {
-      const waiting = await this.#waiting().sortBy('dseq')
+      const waiting = await this.#waiting()
       const records = waiting.filter((record) => !this.#heldOps.has(record.dseq))
       if (records.length === 0 && this.#upToDate) return null
       const end = await this.#exchange({ records, waiting })
@@ -201,7 +202,7 @@ export class SyncRun {
   /** Ops that are still to send after the answer wait for the next run. */
   async #holdWhatStays(batch: OutboxRecord[]): Promise<void> {
     const sent = new Set(batch.map((record) => record.dseq))
-    for (const { dseq, state } of await this.#waiting().toArray()) {
+    for (const { dseq, state } of await this.#waiting()) {
       if (!sent.has(dseq)) continue
       if (state === 'waiting') this.#waits = true
       this.#heldOps.add(dseq)

@@ -3,6 +3,7 @@ import type { Op } from '@/lib/sync/protocol/op'
 import type { Core } from './core'
 import { type Line, stalledOf } from './health'
 import { liveCell } from './live'
+import { recordsIn } from './outbox'
 import { type OutboxRecord, type PhotoRecord, readMeta } from './phone-db'
 import type { SendState } from './phone-sender'
 import type { Room } from './room'
@@ -137,7 +138,7 @@ class Pulse {
 
 async function readKept(core: Core): Promise<Kept> {
   const { db } = core
-  const records = await db.outbox.where('state').anyOf('waiting', 'blocked', 'stuck').sortBy('dseq')
+  const records = await recordsIn(db, 'waiting', 'blocked', 'stuck')
   const photos = await db.photo.where('state').anyOf('waiting', 'stuck').sortBy('since')
   const fetchedAt = (await readMeta(db, 'fetchedAt')) ?? null
   const setAside = ((await readMeta(db, 'setAside')) ?? []).length
