@@ -22,6 +22,7 @@ export class RoomWatch {
   readonly state = new Cell<Room>({ storageKept: null, quotaShare: null, freeBytes: null })
   #asked: boolean = false
   #ended: boolean = false
+  #looking: Promise<void> | null = null
   #callOff: () => void = () => undefined
 
   /** Looks now and every few minutes, until it is ended. */
@@ -36,8 +37,15 @@ export class RoomWatch {
     this.#callOff()
   }
 
-  /** Looks again at how much is used. */
-  async look(): Promise<void> {
+  /** Looks again at how much is used; who comes while one look goes on has that one, as looks are dear. */
+  look(): Promise<void> {
+    this.#looking ??= this.#lookNow().finally(() => {
+      this.#looking = null
+    })
+    return this.#looking
+  }
+
+  async #lookNow(): Promise<void> {
     const manager = storage()
     if (manager === undefined) return
     const [kept, used] = await Promise.all([manager.persisted(), manager.estimate()])
