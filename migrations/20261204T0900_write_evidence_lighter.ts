@@ -7,7 +7,7 @@ import { type Kysely, sql } from 'kysely'
  * of the shop's counter alone, which cannot be without its shop.
  */
 export async function up(db: Kysely<unknown>): Promise<void> {
-  await sql`alter table change_log drop constraint change_log_shop_id_fkey`.execute(db)
+  await sql`alter table change_log drop constraint if exists change_log_shop_id_fkey`.execute(db)
   await replaceEvidence(db)
 }
 

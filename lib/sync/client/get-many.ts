@@ -24,7 +24,8 @@ export async function getMany<T, K extends string | number>(
 
 /** Strings compare here as in IndexedDB, by code units. */
 function boundsOf<K extends string | number>([first, ...others]: readonly [K, ...K[]]): [K, K] {
-  let [least, most] = [first, first]
+  let least: K = first
+  let most: K = first
   for (const key of others) {
     if (key < least) least = key
     if (key > most) most = key

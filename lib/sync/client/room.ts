@@ -74,6 +74,8 @@ export class RoomWatch {
     if (!this.#asked) {
       this.#asked = true
       await manager.persist()
+      // A look begun before the answer does not know it.
+      await this.#looking
     }
     await this.look()
   }

@@ -244,6 +244,17 @@ describe('[P21] room on the phone', () => {
     expect(rings).toHaveLength(2)
   })
 
+  test('who comes while it is looked has that look; one after the browser was asked knows its answer', async () => {
+    const manager = storage(0.5)
+    const estimate = vi.spyOn(manager, 'estimate')
+    const room = new RoomWatch()
+    await Promise.all([room.look(), room.look(), room.look()])
+    expect(estimate).toHaveBeenCalledTimes(1)
+    await Promise.all([room.look(), room.askToKeep()])
+    expect(estimate).toHaveBeenCalledTimes(3)
+    expect(room.state.get().storageKept).toBe(false)
+  })
+
   test('[fault 20] [P8] a page that finds no room moves no cursor, is told, and holds up no sending', async () => {
     const { shop, phone, machine, job, jobId } = await atWork()
     await phone.record([machine, job])
