@@ -99,6 +99,10 @@ export const BAG: Bag = {
     part('fuelFilter', 1),
     part('connectorKit', 1),
     part('wireKit', 1),
+    part('fuelHose', 1),
+    part('carburettorKit', 1),
+    part('intakeBoot', 1),
+    part('driveBelt', 1),
   ],
   tools: [
     'multimeter',

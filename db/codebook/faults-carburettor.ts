@@ -17,6 +17,7 @@ export const CARBURETTOR_FAULTS: FaultData[] = [
       part: 'carburettorKit',
       setups: ['carburettorOff'],
       successOf100: 88,
+      withoutPartOf100: 72,
     },
     onset: 'After storage; runs only with the choke on.',
     wayOut: 'repairHere',

@@ -173,6 +173,7 @@ export const BELT_FAULTS: FaultData[] = [
       part: 'parkBrakeSwitchUnit',
       setups: ['frontCoverOff'],
       successOf100: 88,
+      withoutPartOf100: 45,
     },
     onset: 'Brake lamp stays on, engine will not pass a low speed.',
     wayOut: 'repairHere',

@@ -192,6 +192,7 @@ export const GEAR_FAULTS: FaultData[] = [
       part: 'gearSwitch',
       setups: ['sidePanelOff'],
       successOf100: 85,
+      withoutPartOf100: 35,
     },
     onset: 'Display blank or wrong; reverse or start locked out.',
     wayOut: 'limpOut',

@@ -121,6 +121,7 @@ export const IGNITION_FAULTS: FaultData[] = [
       part: 'plugCap',
       setups: ['sidePanelOff'],
       successOf100: 92,
+      withoutPartOf100: 40,
     },
     onset: 'Wet weather, after washing, or when hot.',
     wayOut: 'repairHere',

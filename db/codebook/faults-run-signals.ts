@@ -101,6 +101,7 @@ export const RUN_SIGNAL_FAULTS: FaultData[] = [
       minutes: 20,
       part: 'speedSensorUnit',
       successOf100: 91,
+      withoutPartOf100: 30,
     },
     onset: 'Brush or ice tore the wire; speed on the dash dead or jumping.',
     wayOut: 'limpOut',

@@ -77,6 +77,7 @@ export const SIGNAL_FAULTS: FaultData[] = [
       part: 'stopSwitch',
       setups: [],
       successOf100: 93,
+      withoutPartOf100: 45,
     },
     onset: 'Wet, or when the bars are turned.',
     wayOut: 'repairHere',

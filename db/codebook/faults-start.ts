@@ -96,6 +96,7 @@ export const START_FAULTS: FaultData[] = [
       costMinor: 100,
       part: 'startButtonUnit',
       successOf100: 90,
+      withoutPartOf100: 45,
     },
     onset: 'Starts on some presses or with the bars turned; after rain, washing or a fall.',
     wayOut: 'repairHere',

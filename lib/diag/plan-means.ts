@@ -80,10 +80,14 @@ export function whyNotRepair(index: BookIndex, fault: FaultItem, means: Means): 
   const { repair } = fault
   if (repair === null) return 'Not repaired in the field.'
   if (!means.roles.includes('mechanic')) return 'For mechanics only.'
-  if (repair.part === null || means.bag === null) return null
-  const held = means.bag.parts.some((p) => p.part === repair.part && p.quantity > 0)
-  return held ? null : `No ${wordName(index, 'part', repair.part).toLowerCase()} in the bag.`
+  if (repair.part === null || isHeld(repair.part, means) || repair.withoutPartOf100 !== undefined)
+    return null
+  return `No ${wordName(index, 'part', repair.part).toLowerCase()} in the bag.`
 }
+
+/** Whether a part is in the bag; everything is where nobody counted one. */
+export const isHeld = (part: string, { bag }: Means): boolean =>
+  bag === null || bag.parts.some((p) => p.part === part && p.quantity > 0)
 
 function missingTools(index: BookIndex, tools: readonly string[], { bag }: Means): string | null {
   if (bag === null) return null

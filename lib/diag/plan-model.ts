@@ -13,6 +13,7 @@ import { type Sight, sightOf } from './evidence-table'
 import { letsThrough } from './gate'
 import { type Outcome, outlookOf } from './outlook'
 import {
+  isHeld,
   type Kind,
   type LeftOut,
   type Means,
@@ -197,19 +198,22 @@ function faultsOf(doing: Doing): SingleModel['faults'] {
   return [...faults, { id: LUMP, prior: Math.max(1e-9, lump), repair: null }]
 }
 
-/** A repair at its price: the book's own, and the part's from the spec sheet. */
+/** A repair at its price: the book's own, and the part's from the spec sheet; by hand where the part is not there. */
 function repairOf(
   { c, means }: Doing,
   { repair }: FaultItem,
 ): SingleModel['faults'][number]['repair'] {
   if (repair === null) return null
-  const part = c.spec?.parts.find((p) => p.part === repair.part)
+  const { withoutPartOf100 } = repair
+  const byHand =
+    repair.part === null || (withoutPartOf100 !== undefined && !isHeld(repair.part, means))
+  const part = byHand ? undefined : c.spec?.parts.find((p) => p.part === repair.part)
   return {
     cost: repair.costMinor + (part?.genuineMinor ?? 0),
     minutes: minutesHere(repair.minutes, means),
     setup: repair.setups,
-    success: repair.successOf100 / 100,
-    ...(repair.part === null ? {} : { needsPart: repair.part }),
+    success: (byHand ? (withoutPartOf100 ?? repair.successOf100) : repair.successOf100) / 100,
+    ...(byHand || repair.part === null ? {} : { needsPart: repair.part }),
   }
 }
 

@@ -84,6 +84,8 @@ export const faultItem = z.strictObject({
       setups: z.array(slug),
       /** Chance of 100 that the repair, rightly done, cures this fault. */
       successOf100: z.number().check(z.minimum(1), z.maximum(100)),
+      /** The same by hand alone, cleaned, tightened or tied, where the part is not there; missing where it must be. */
+      withoutPartOf100: z.optional(z.number().check(z.minimum(1), z.maximum(100))),
     }),
   ),
   onset: z.nullable(sentence),
