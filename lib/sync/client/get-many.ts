@@ -12,23 +12,12 @@ export async function getMany<T, K extends string | number>(
   keys: readonly K[],
   keyOf: (record: T) => K,
 ): Promise<(T | undefined)[]> {
-  const [first, ...others] = keys
-  if (first === undefined) return []
   if (keys.length < MANY) return await table.bulkGet([...keys])
-  const [least, most] = boundsOf([first, ...others])
-  const stretch = table.where(':id').between(least, most, true, true)
+  // Strings compare here as in IndexedDB, by code units.
+  const sorted = [...keys].sort((a, b) => (a < b ? -1 : 1))
+
+  const stretch = table.where(':id').between(sorted[0], sorted.at(-1), true, true)
   if ((await stretch.count()) > 2 * keys.length) return await table.bulkGet([...keys])
   const found = new Map((await stretch.toArray()).map((record) => [keyOf(record), record]))
   return keys.map((key) => found.get(key))
-}
-
-/** Strings compare here as in IndexedDB, by code units. */
-function boundsOf<K extends string | number>([first, ...others]: readonly [K, ...K[]]): [K, K] {
-  let least: K = first
-  let most: K = first
-  for (const key of others) {
-    if (key < least) least = key
-    if (key > most) most = key
-  }
-  return [least, most]
 }

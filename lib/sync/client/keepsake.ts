@@ -3,7 +3,6 @@ import type { Id } from '@/lib/model/id'
 import type { Keeper } from '@/lib/ports/keeper'
 import type { SyncPorts } from '@/lib/ports/sync-ports'
 import { type Keepsake, keepsake, MOST_KEEPSAKES } from '@/lib/sync/protocol/device'
-import { countIn } from './outbox'
 import { type PhoneDb, readMeta } from './phone-db'
 
 /**
@@ -46,7 +45,7 @@ export function keep(keeper: Keeper | undefined, deviceId: Id, next: Keepsake | 
 
 /** How much of a store is unsent, as its person is told: records and files, also what is stuck. */
 export async function countUnsent(db: PhoneDb): Promise<number> {
-  const ops = await countIn(db, 'waiting', 'blocked', 'stuck')
+  const ops = await db.outbox.where('state').anyOf('waiting', 'blocked', 'stuck').count()
   return ops + (await db.photo.where('state').anyOf('waiting', 'stuck').count())
 }
 

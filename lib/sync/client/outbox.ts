@@ -1,3 +1,4 @@
+import type { Collection } from 'dexie'
 import type { OutboxRecord, OutboxState, PhoneDb } from './phone-db'
 
 /**
@@ -10,23 +11,18 @@ import type { OutboxRecord, OutboxState, PhoneDb } from './phone-db'
 export const ON_TOP: readonly OutboxState[] = ['waiting', 'blocked', 'stuck', 'taken']
 
 /** The records in one of these states, in the order of their numbers. */
-export const recordsIn = (db: PhoneDb, ...states: OutboxState[]): Promise<OutboxRecord[]> =>
-  db.transaction('r', db.outbox, async () => {
-    const found = await Promise.all(states.map((state) => inState(db, state).toArray()))
-    return found.flat().sort((a, b) => a.dseq - b.dseq)
-  })
+export const recordsIn = async (db: PhoneDb, ...states: OutboxState[]): Promise<OutboxRecord[]> =>
+  (await each(db, states, (one) => one.toArray())).flat().sort((a, b) => a.dseq - b.dseq)
 
 /** The numbers of the records in one of these states, in no order. */
-export const numbersIn = (db: PhoneDb, ...states: OutboxState[]): Promise<number[]> =>
-  db.transaction('r', db.outbox, async () =>
-    (await Promise.all(states.map((state) => inState(db, state).primaryKeys()))).flat(),
+export const numbersIn = async (db: PhoneDb, ...states: OutboxState[]): Promise<number[]> =>
+  (await each(db, states, (one) => one.primaryKeys())).flat()
+
+const each = <T>(
+  db: PhoneDb,
+  states: readonly OutboxState[],
+  look: (one: Collection<OutboxRecord, number>) => Promise<T>,
+): Promise<T[]> =>
+  db.transaction('r', db.outbox, () =>
+    Promise.all(states.map((state) => look(db.outbox.where('state').equals(state)))),
   )
-
-/** How many records are in one of these states. */
-export const countIn = (db: PhoneDb, ...states: OutboxState[]): Promise<number> =>
-  db.transaction('r', db.outbox, async () => {
-    const counts = await Promise.all(states.map((state) => inState(db, state).count()))
-    return counts.reduce((sum, count) => sum + count, 0)
-  })
-
-const inState = (db: PhoneDb, state: OutboxState) => db.outbox.where('state').equals(state)

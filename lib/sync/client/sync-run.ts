@@ -7,7 +7,7 @@ import { packRequest, type Sender, signedHeaders } from './envelope'
 import { heldBeyond } from './held'
 import { measureOffset } from './hlc'
 import { offerAll } from './offer-all'
-import { countIn, recordsIn } from './outbox'
+import { recordsIn } from './outbox'
 import { type Answered, type Applied, setAside } from './outcomes'
 import { type OutboxRecord, type PhoneDb, readMeta, writeMeta } from './phone-db'
 import type { Pace } from './photo-pace'
@@ -107,7 +107,7 @@ export class SyncRun {
   }
 
   async #count(): Promise<void> {
-    const ops = await countIn(this.#store.db, 'waiting', 'blocked')
+    const ops = (await this.#waiting()).length
     this.#progress = { done: 0, total: ops + (await this.#photos.count()) }
   }
 
