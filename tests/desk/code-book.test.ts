@@ -124,7 +124,7 @@ describe('[CB45] in words', () => {
     expect(sinceLines(none)).toEqual(['The same as version 3.'])
     const many = Array.from({ length: 9 }, (_, n) => `check c${n}`)
     expect(sinceLines({ ...none, changed: many })[0]).toMatch(
-      /^Changed since version 3, 9: check c0, .* and 1 more\.$/,
+      /^Changed since version 3 \(9\): check c0, .* and 1 more\.$/,
     )
     const place = { file: 'book.json', line: 4, column: 2 }
     expect(findingLine({ kind: 'orphan', id: 'x', words: 'unused', place })).toBe(

@@ -33,7 +33,7 @@ export function sinceLines(since: NonNullable<BookVersionRow['since']>): string[
   return lines.map(([how, names]) => {
     const more = names.length - MOST
     const shown = names.slice(0, MOST).join(', ')
-    return `${how} since version ${since.version}, ${names.length}: ${shown}${more > 0 ? ` and ${more} more` : ''}.`
+    return `${how} since version ${since.version} (${names.length}): ${shown}${more > 0 ? ` and ${more} more` : ''}.`
   })
 }
 
