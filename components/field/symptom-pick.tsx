@@ -9,6 +9,7 @@ import { Key } from '@/components/ui/key'
 import { RuleEdge } from '@/components/ui/rule-edge'
 import type { SymptomItem } from '@/lib/model/code-book'
 import type { Features } from '@/lib/model/features'
+import { oneEach, questions } from './symptom-questions'
 import { SymptomSearch } from './symptom-search'
 
 /** What a machine does, as picked: a symptom of the code book and when it shows. */
@@ -86,20 +87,6 @@ export function SymptomPick({ features, said = '', symptom, conditions, change }
         : null}
     </>
   )
-}
-
-/** What is asked of a complaint, in its order; last, without a question, what stands for itself. */
-const questions = ({ conditions }: SymptomItem) =>
-  [...new Set(conditions.map((c) => c.answers))].sort(
-    (a, b) => Number(a === undefined) - Number(b === undefined),
-  )
-
-/** Of the answers to one question the one picked last stays. */
-function oneEach({ conditions }: SymptomItem, before: readonly string[], now: readonly string[]) {
-  const added = conditions.find((c) => now.includes(c.id) && !before.includes(c.id))
-  const kept = (id: string) =>
-    id === added?.id || conditions.find((c) => c.id === id)?.answers !== added?.answers
-  return added?.answers === undefined ? [...now] : now.filter(kept)
 }
 
 /** What was looked for; with nothing looked for, all, those first that the rider's words speak of. */

@@ -1,6 +1,6 @@
 /**
  * The gate a code book has to pass before it is published: one list of findings, empty when it is right.
- * Rules CB1 to CB23 of docs/spec/code-book.md. Shape comes first; the rest is only looked at when every
+ * Rules CB1 to CB24 of docs/spec/code-book.md. Shape comes first; the rest is only looked at when every
  * record has its shape, because a wrong shape makes the other findings noise.
  */
 import type { CodeBookItem } from '@/lib/model/code-book'

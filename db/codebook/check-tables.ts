@@ -1,4 +1,4 @@
-import type { CheckItem, SwapItem } from '@/lib/model/code-book'
+import type { CheckItem, FaultItem, SwapItem } from '@/lib/model/code-book'
 import { QUANTITIES } from '@/lib/model/meter-profile'
 import {
   type BookProblem,
@@ -12,12 +12,26 @@ import {
 const isHundred = (row: readonly number[]): boolean =>
   Math.abs(row.reduce((sum, x) => sum + x, 0) - 100) < 1e-6
 
-/** [CB6] to [CB8] Rows that do not add up, stand in the wrong order, or tell nothing. */
+/** [CB6] to [CB8] [CB24] Rows that do not add up, stand in the wrong order, or tell nothing. */
 export function checkTables({ shelf }: Books): BookProblem[] {
   return [
     ...shelf.check.flatMap((c) => [...rows(c), ...firstGood(c), ...order(c), ...tellsNothing(c)]),
     ...shelf.swap.flatMap((s) => [...rows(s), ...ownFaultMoves(s), ...tellsNothing(s)]),
+    ...shelf.fault.flatMap(byHand),
   ]
+}
+
+/** A repair by hand does without the repair's part, and is no surer than with it. */
+function byHand({ id, repair }: FaultItem): BookProblem[] {
+  const { part, withoutPartOf100, successOf100 } = repair ?? {}
+  if (withoutPartOf100 === undefined || successOf100 === undefined) return []
+  const words =
+    part === null
+      ? 'can be repaired without a part, and its repair has none'
+      : withoutPartOf100 > successOf100
+        ? 'is cured more often without the part than with it'
+        : null
+  return words === null ? [] : [{ kind: 'order', id, words }]
 }
 
 const columnsOf = (item: CheckItem | SwapItem): number =>

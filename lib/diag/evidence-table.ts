@@ -78,11 +78,14 @@ export function tableOf(
   return { rows, otherwise }
 }
 
-/** The chance (0 to 1) that a fault, rightly repaired, is gone: by hand, where that can be done; 0.9 where the book has no repair (guess). */
-export const successOf = ({ index }: Case, fault: string): number =>
-  (index.faults.get(fault)?.repair?.withoutPartOf100 ??
-    index.faults.get(fault)?.repair?.successOf100 ??
-    90) / 100
+/**
+ * The chance (0 to 1) that a fault, rightly repaired, is gone; by hand, where that can be done, as the log does not
+ * tell whether the part was fitted. 0.9 where the book has no repair (guess).
+ */
+export function successOf({ index }: Case, fault: string): number {
+  const repair = index.faults.get(fault)?.repair
+  return (repair?.withoutPartOf100 ?? repair?.successOf100 ?? 90) / 100
+}
 
 /**
  * The chance that a fault which was the cause is still there at a place in the log: 1 before it was fixed, then

@@ -204,16 +204,16 @@ function repairOf(
   { repair }: FaultItem,
 ): SingleModel['faults'][number]['repair'] {
   if (repair === null) return null
-  const { withoutPartOf100 } = repair
-  const byHand =
-    repair.part === null || (withoutPartOf100 !== undefined && !isHeld(repair.part, means))
-  const part = byHand ? undefined : c.spec?.parts.find((p) => p.part === repair.part)
+  const { part, withoutPartOf100, successOf100 } = repair
+  const byHand = withoutPartOf100 !== undefined && part !== null && !isHeld(part, means)
+  const needsPart = byHand ? null : part
+  const price = c.spec?.parts.find((p) => p.part === needsPart)?.genuineMinor ?? 0
   return {
-    cost: repair.costMinor + (part?.genuineMinor ?? 0),
+    cost: repair.costMinor + price,
     minutes: minutesHere(repair.minutes, means),
     setup: repair.setups,
-    success: (byHand ? (withoutPartOf100 ?? repair.successOf100) : repair.successOf100) / 100,
-    ...(byHand || repair.part === null ? {} : { needsPart: repair.part }),
+    success: (byHand ? withoutPartOf100 : successOf100) / 100,
+    ...(needsPart === null ? {} : { needsPart }),
   }
 }
 

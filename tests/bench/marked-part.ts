@@ -23,6 +23,8 @@ export const machineFacts = (): string[] => [
   `Date: ${new Date().toISOString().slice(0, 16).replace('T', ' ')} UTC, commit ${ask('git', ['rev-parse', '--short', 'HEAD'])}`,
 ]
 
+export const mean = (xs: readonly number[]) => xs.reduce((a, b) => a + b, 0) / xs.length
+
 /** A table in Markdown. */
 export function table(head: readonly string[], rows: readonly (readonly string[])[]): string {
   const line = (cells: readonly string[]) => `| ${cells.join(' | ')} |`

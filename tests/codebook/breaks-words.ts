@@ -55,6 +55,24 @@ export const WORD_BREAKS: Break[] = [
     },
   ],
   [
+    'CB24 a repair that does better without its part',
+    'order',
+    /groundPoor/,
+    (b) => {
+      const { repair } = b.item('fault', 'groundPoor')
+      if (repair !== null) repair.withoutPartOf100 = repair.successOf100 + 1
+    },
+  ],
+  [
+    'CB24 a repair without a part that does without one',
+    'order',
+    /groundPoor/,
+    (b) => {
+      const { repair } = b.item('fault', 'groundPoor')
+      if (repair !== null) repair.part = null
+    },
+  ],
+  [
     'CB21 a first look that turns the engine',
     'firstLook',
     /startsThenDies/,

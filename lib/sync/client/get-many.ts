@@ -15,7 +15,6 @@ export async function getMany<T, K extends string | number>(
   if (keys.length < MANY) return await table.bulkGet([...keys])
   // Strings compare here as in IndexedDB, by code units.
   const sorted = [...keys].sort((a, b) => (a < b ? -1 : 1))
-
   const stretch = table.where(':id').between(sorted[0], sorted.at(-1), true, true)
   if ((await stretch.count()) > 2 * keys.length) return await table.bulkGet([...keys])
   const found = new Map((await stretch.toArray()).map((record) => [keyOf(record), record]))

@@ -3,6 +3,7 @@ import type { Id } from '@/lib/model/id'
 import type { Keeper } from '@/lib/ports/keeper'
 import type { SyncPorts } from '@/lib/ports/sync-ports'
 import { type Keepsake, keepsake, MOST_KEEPSAKES } from '@/lib/sync/protocol/device'
+import { numbersIn } from './outbox'
 import { type PhoneDb, readMeta } from './phone-db'
 
 /**
@@ -45,8 +46,8 @@ export function keep(keeper: Keeper | undefined, deviceId: Id, next: Keepsake | 
 
 /** How much of a store is unsent, as its person is told: records and files, also what is stuck. */
 export async function countUnsent(db: PhoneDb): Promise<number> {
-  const ops = await db.outbox.where('state').anyOf('waiting', 'blocked', 'stuck').count()
-  return ops + (await db.photo.where('state').anyOf('waiting', 'stuck').count())
+  const ops = await numbersIn(db, 'waiting', 'blocked', 'stuck')
+  return ops.length + (await db.photo.where('state').anyOf('waiting', 'stuck').count())
 }
 
 /** A file whose bytes nobody has any more: the phone confirmed it was sent, the shop was restored since. */

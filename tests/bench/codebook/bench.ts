@@ -1,6 +1,7 @@
-// npm run bench:codebook [-- --quick] [-- --symptom ID] [-- --described]: what the code book is worth. Machines are drawn from the
-// book's own figures and from figures off by up to two; the plan is driven to the end, beside checks in a drawn
-// order and beside repairing the likeliest first; then twelve machines that were described beforehand. Prints, and writes docs/performance.md.
+// npm run bench:codebook [-- --quick | --symptom ID | --described]: what the code book is worth. Machines are drawn
+// from the book's own figures and from figures off by up to two; the plan is driven to the end, beside checks in a
+// drawn order and beside repairing the likeliest first; then twelve machines that were described beforehand. Prints,
+// and writes docs/performance.md.
 import { BOOK_ITEMS } from '@/db/codebook/book'
 import { DEMO_MODELS } from '@/db/codebook/demo-models'
 import { type BookIndex, indexBook } from '@/lib/diag/book-index'
@@ -8,7 +9,7 @@ import { letsThrough } from '@/lib/diag/gate'
 import type { CodeBookItem, SymptomItem } from '@/lib/model/code-book'
 import { FEATURE_NAMES, type Features } from '@/lib/model/features'
 import { randomFrom } from '../diag/models'
-import { machineFacts, table, writePart } from '../marked-part'
+import { machineFacts, mean, table, writePart } from '../marked-part'
 import { describedTable } from './described-table'
 import { byPlan, type Drive, drawnAnswers, drive, mostLikely, type Policy, randomly } from './drive'
 import { drawMachine, perturbed } from './machine'
@@ -24,7 +25,6 @@ const UNKNOWN_OF_100 = 20
 const open = (items: readonly CodeBookItem[]): BookIndex =>
   indexBook({ version: 1, hash: '', publishedAt: '', items: [...items] })
 const index = open(BOOK_ITEMS)
-const mean = (xs: readonly number[]) => xs.reduce((a, b) => a + b, 0) / xs.length
 const of100 = (xs: readonly boolean[]) =>
   `${Math.round((100 * xs.filter(Boolean).length) / xs.length)}`
 

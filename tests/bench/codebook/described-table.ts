@@ -1,13 +1,12 @@
 // The twelve described machines: what the plan does on each, beside the two other ways to go about it.
 import type { BookIndex } from '@/lib/diag/book-index'
 import { randomFrom } from '../diag/models'
-import { table } from '../marked-part'
+import { mean, table } from '../marked-part'
 import { ANSWERED_CASES } from './cases'
 import { describedAnswers, describedMachine } from './described'
 import { byPlan, type Drive, drive, mostLikely, type Policy, randomly } from './drive'
 
 const DRAWN_ORDERS = 20
-const mean = (xs: readonly number[]) => xs.reduce((a, b) => a + b, 0) / xs.length
 
 const endOf = (drives: readonly Drive[]): string => {
   const [right, fixed] = (['rightAtEnd', 'fixed'] as const).map(

@@ -1,8 +1,7 @@
 // A machine that was described in words, as one that answers: every check ends as its description says, never drawn.
 import type { BookIndex } from '@/lib/diag/book-index'
 import type { Answers } from './drive'
-import type { Machine } from './machine'
-import { swapSteps } from './machine'
+import { type Machine, swapSteps } from './machine'
 import { type Answered, SOMETHING_ELSE_TRUE, type Stranded } from './stranded'
 
 export function describedMachine(of: Stranded, told: Answered): Machine {
@@ -22,9 +21,9 @@ export function describedAnswers(index: BookIndex, of: Stranded, told: Answered)
   }
   return {
     check: (machine, checkId) => {
-      const outcome = endsOf(machine)[checkId] ?? index.checks.get(checkId)?.outcomes[0]?.id ?? ''
       if (told.cannot.includes(checkId))
         return { kind: 'couldNot', checkId, reason: 'Not to be done on this machine.' }
+      const outcome = endsOf(machine)[checkId] ?? index.checks.get(checkId)?.outcomes[0]?.id ?? ''
       return { kind: 'check', checkId, outcome, asWritten: true, differed: null }
     },
     swap: (_, swapId) => swapSteps(swapId, told.swaps[swapId] ?? 0),

@@ -8,7 +8,7 @@ import { type NoisyOrModel, type SingleModel, START } from '@/lib/diag/troublesh
 import { bruteMarginals } from '../../diag/fixtures/models'
 import { type Policy, treeCost } from '../../diag/tree-walk'
 import { enginePolicy } from '../engine-policy'
-import { machineFacts, table, writePart } from '../marked-part'
+import { machineFacts, mean, table, writePart } from '../marked-part'
 import { simulatedCost } from './job'
 import { FAMILIES, inventedModel, randomFrom } from './models'
 
@@ -49,7 +49,6 @@ const timed = <T>(run: () => T): { ms: number; value: T } => {
 const sorted = (xs: readonly number[]) => [...xs].sort((a, b) => a - b)
 const at = (xs: readonly number[], share: number) =>
   sorted(xs)[Math.min(xs.length - 1, Math.floor(share * xs.length))] ?? Number.NaN
-const mean = (xs: readonly number[]) => xs.reduce((a, b) => a + b, 0) / xs.length
 const percent = (x: number) => `${(100 * x).toFixed(x !== 0 && Math.abs(x) < 0.001 ? 4 : 2)} %`
 const most = (xs: readonly number[]) => (xs.length === 0 ? 0 : Math.max(...xs))
 

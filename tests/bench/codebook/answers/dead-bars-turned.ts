@@ -4,6 +4,8 @@ import type { Answered } from '../stranded'
 export const DEAD_BARS_TURNED: Answered = {
   conditions: ['darkOnRide', 'comesBack', 'barsMove', 'afterWork'],
   ends: {
+    // Whole over the fuse, 0.3 V where the key switch is fed.
+    fuseBothSides: 'after',
     // All that the key feeds is dead, all that the battery feeds straight is alive.
     dashAtKeyOn: 'dark',
     directLoads: 'keyDead',
@@ -65,6 +67,5 @@ export const DEAD_BARS_TURNED: Answered = {
     'gaugeAgainstMetal',
     'fanPlugBulb',
     // Whole up to and past the fuse, gone at the key switch: none of the outcomes says so.
-    'fuseBothSides',
   ],
 }

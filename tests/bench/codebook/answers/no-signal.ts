@@ -7,6 +7,7 @@ export const NO_SIGNAL: Answered = {
   ends: {
     // Water inside the plug, one pin green; sensor, gap and trigger wheel are sound.
     crankSensorLook: 'bad',
+    crankLoomMeter: 'jumps',
     sensorSweep: 'bad',
     // P0335, active, and back each time it is cranked; so the engine sign is lit.
     storedCodes: 'oneCircuit',
