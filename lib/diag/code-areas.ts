@@ -12,6 +12,7 @@ const FIRST_MAKER_SPN = 516_096
 /** The part of the machine a letter stands for. */
 export const LETTER_SYSTEMS = { P: 'powertrain', C: 'chassis', B: 'body', U: 'network' } as const
 
+/** The area that the second digit of a standard P0 code names, see `areaOf`. */
 export type PcodeArea =
   | 'fuelAndAir'
   | 'ignition'
@@ -46,6 +47,7 @@ const AREAS: readonly PcodeArea[] = [
   'hybrid',
 ]
 
+/** The kind of failure that a last digit can name in the classic groups, see `suffixKind`. */
 export type SuffixKind = 'circuit' | 'range' | 'low' | 'high' | 'intermittent'
 
 /**

@@ -8,6 +8,7 @@ import { PRACTICE_SOURCE } from './practice-limits'
 
 /** In the order in which they are looked at: each can set what comes after it. */
 export const COMMON_CAUSES = ['lowSupply', 'sensorSupply', 'network', 'ground'] as const
+/** One of the causes that set several codes at once. */
 export type CommonCause = (typeof COMMON_CAUSES)[number]
 
 /** A code as the causes see it; nulls where the book is silent. */

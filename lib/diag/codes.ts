@@ -6,12 +6,15 @@
  */
 import { fail, ok, type Result } from '@/lib/model/result'
 
+/** The conversion versions of SAE J1939-73: 1 to 3 with the conversion bit set, 4 with it clear. */
 export const DTC_VERSIONS = [1, 2, 3, 4] as const
+/** One of the four conversion versions; which of 1 to 3 is not on the wire. */
 export type DtcVersion = (typeof DTC_VERSIONS)[number]
 
 /** A J1939 trouble code: SPN 0 to 524287, FMI 0 to 31, count 0 to 126 or null for "not available" (127). */
 export type Dtc = { spn: number; fmi: number; count: number | null; version: DtcVersion }
 
+/** Why bytes or a number are no code: each kind is a sentence on the screen. */
 export type CodeProblem =
   | { kind: 'wrongLength'; expected: string; got: number }
   | { kind: 'notBytes' }
@@ -23,6 +26,7 @@ export type CodeProblem =
 
 const LAMP = ['off', 'on', 'error', 'notAvailable'] as const
 const FLASH = ['slow', 'fast', 'reserved', 'steady'] as const
+/** One of the four lamps of DM1: two bits of state and two of flashing each (SAE J1939-73). */
 export type Lamp = { state: (typeof LAMP)[number]; flash: (typeof FLASH)[number] }
 
 /** A DM1 message. `lampsUsed` is false when the sender leaves the lamp byte unused (FF, agricultural mode). */

@@ -8,6 +8,7 @@ import { ALL_OPEN, type SwapWeights, swapWeights } from './swap-weights'
 
 type RunBody = Extract<LogBody, { kind: 'proofRun' }>
 
+/** The log as evidence needs it; every place is an index into the log, the oldest entry at 0. */
 export type EvidenceLog = {
   /** Where each fault was fixed, as places in the log, rising. */
   fixes: ReadonlyMap<string, readonly number[]>
