@@ -66,6 +66,5 @@ export const DEAD_BARS_TURNED: Answered = {
     'storedCodes',
     'gaugeAgainstMetal',
     'fanPlugBulb',
-    // Whole up to and past the fuse, gone at the key switch: none of the outcomes says so.
   ],
 }
