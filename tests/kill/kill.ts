@@ -1,4 +1,4 @@
-// npm run kill -- [--rounds 50] [--only server|postgres|phone] [--seed 7] [--brief]
+// One of the loops of npm run kill: --only server|postgres|phone [--rounds 50] [--seed 7] [--brief]
 import { parseArgs } from 'node:util'
 import { phoneRounds } from './phone-rounds'
 import { postgresRounds } from './postgres-rounds'
@@ -8,7 +8,7 @@ import type { Loop, Tally } from './tally'
 const { values } = parseArgs({
   options: {
     rounds: { type: 'string', default: '50' },
-    only: { type: 'string' },
+    only: { type: 'string', default: '' },
     seed: { type: 'string', default: String(Date.now() % 1_000_000) },
     /** The phone at some moments only, as in the tests. */
     brief: { type: 'boolean', default: false },
@@ -23,25 +23,22 @@ const loops: Record<string, (of: Loop) => Promise<Tally>> = {
 
 async function main(): Promise<number> {
   const { only } = values
-  if (only !== undefined && loops[only] === undefined) {
+  const loop = loops[only]
+  if (loop === undefined) {
     console.error('usage: npm run kill -- [--rounds 50] [--only server|postgres|phone] [--seed 7]')
     return 2
   }
   const [rounds, seed] = [Number(values.rounds), Number(values.seed)]
-  let failed = 0
-  for (const [name, loop] of Object.entries(loops)) {
-    if (only !== undefined && only !== name) continue
-    const say = (words: string) => console.log(`${name} ${words}`)
-    say(`seed ${seed}`)
-    try {
-      const tally = await loop({ rounds, seed, say })
-      say(`kept every promise: ${tally.line()}`)
-    } catch (error) {
-      failed += 1
-      console.error(`${name} BROKE with seed ${seed}:`, error)
-    }
+  const say = (words: string) => console.log(`${only} ${words}`)
+  say(`seed ${seed}`)
+  try {
+    const tally = await loop({ rounds, seed, say })
+    say(`kept every promise: ${tally.line()}`)
+    return 0
+  } catch (error) {
+    console.error(`${only} BROKE with seed ${seed}:`, error)
+    return 1
   }
-  return failed === 0 ? 0 : 1
 }
 
 // Told to stop: the handlers of "exit" end what is running.
