@@ -1,5 +1,5 @@
 import * as z from 'zod/mini'
-import { bookWithdrawal } from './book-withdrawal'
+import { bookWithdrawal, withdrawn } from './book-withdrawal'
 import type { CodeBookItem } from './code-book'
 
 /** The code book at the desk: what the owner's page reads. Unknown fields are ignored. */
@@ -86,6 +86,11 @@ export const deskBook = z.object({
   people: z.array(z.object({ id: z.string(), name: z.nullable(z.string()) })),
 })
 export type DeskBook = z.infer<typeof deskBook>
+
+/** Something of the newest version that may be withdrawn by its name; of a limit, the check that has it. */
+export const withdrawable = z.object({ what: withdrawn, id: z.string(), name: z.string() })
+export type Withdrawable = z.infer<typeof withdrawable>
+export const withdrawableAnswer = z.object({ items: z.array(withdrawable) })
 
 const isItem = (item: unknown): boolean =>
   typeof item === 'object' &&

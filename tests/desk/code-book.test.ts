@@ -3,10 +3,16 @@ import { GET as exportFile } from '@/app/api/desk/codebook/export/route'
 import { POST as importFiles } from '@/app/api/desk/codebook/import/route'
 import { GET as readBooks } from '@/app/api/desk/codebook/route'
 import { GET as readJobs } from '@/app/api/desk/codebook/withdrawals/[id]/route'
+import { GET as readNames } from '@/app/api/desk/codebook/withdrawals/route'
 import { bookSentence } from '@/components/desk/codebook/book-actions'
 import { countWords, findingLine, sinceLines } from '@/components/desk/codebook/book-words'
 import { readBookJson } from '@/db/codebook/file-json'
-import { bookImported, changedJobsAnswer, deskBook } from '@/lib/model/book-desk'
+import {
+  bookImported,
+  changedJobsAnswer,
+  deskBook,
+  withdrawableAnswer,
+} from '@/lib/model/book-desk'
 import { publishDraft } from '@/lib/sync/server/book/publish-draft'
 import { withdraw } from '@/lib/sync/server/book/withdraw'
 import { smallRightBook } from '../support/book-fixture'
@@ -46,6 +52,7 @@ describe('[CB45] the owner’s code book', () => {
         await readBooks(request('', other)),
         await exportFile(request('/export', other)),
         await importFiles(request('/import', other, { files: [], note: null, replace: false })),
+        await readNames(request('/withdrawals', other)),
         await readJobs(request('/withdrawals/x', other), withId(newId())),
       ]
       for (const answer of answers)
@@ -101,6 +108,22 @@ describe('[CB45] the owner’s code book', () => {
     const jobs = await readJobs(request(`/withdrawals/${id}`, cookie), withId(id))
     expect(changedJobsAnswer.parse(await jobs.json()).jobs).toEqual([])
     expect((await readJobs(request('/withdrawals/x', cookie), withId('x'))).status).toBe(404)
+  })
+
+  it('[CB45] offers by name what may be withdrawn, and what was withdrawn no more', async () => {
+    const names = async () =>
+      withdrawableAnswer.parse(await (await readNames(request('/withdrawals', cookie))).json())
+        .items
+    const before = await names()
+    expect(before.filter(({ what }) => what !== 'fault')).toEqual([
+      { what: 'check', id: 'lookAtPlug', name: 'Look at the plug' },
+    ])
+    expect(before.filter(({ what }) => what === 'fault')).toHaveLength(2)
+    const of = { what: 'check', itemId: 'lookAtPlug' } as const
+    expect(await withdraw(hand(), { ...of, reason: 'May burn.', instead: null })).toMatchObject({
+      ok: true,
+    })
+    expect(await names()).toEqual(before.filter(({ what }) => what === 'fault'))
   })
 
   it('[CB45] hands out every version as JSON and each kind as CSV', async () => {

@@ -92,9 +92,11 @@ test('[F11] [R23] a new book is published and taken, a check is withdrawn and ac
 
   await test.step('the owner withdraws the check', async () => {
     await press(board, 'Withdraw something for safety')
-    await board.getByLabel('Its id in the code book').fill(look.id)
+    await board.getByRole('textbox', { name: 'Which check' }).fill(look.id)
+    await board.getByRole('radio', { name: look.name }).check()
     await board.getByLabel('Why, in one sentence').fill('The part may be hot.')
     await board.getByLabel('What to do instead').fill('Wait ten minutes first.')
+    await shot(board, 'desk-withdraw')
     await board.getByRole('button', { name: 'Withdraw it' }).press('Enter')
     await board.getByRole('button', { name: 'Withdraw it' }).last().click()
     await expect(board.getByText('Nobody has acknowledged it yet.')).toBeVisible()

@@ -21,7 +21,7 @@ async function findings(page: Page): Promise<string[]> {
   return found
 }
 
-test('sign-in, board, job and parts have no finding of axe-core in any theme', async ({
+test('sign-in, board, job, parts and code book have no finding of axe-core in any theme', async ({
   server,
   desk,
 }) => {
@@ -53,6 +53,9 @@ test('sign-in, board, job and parts have no finding of axe-core in any theme', a
     .first()
     .click()
   expect(await findings(page)).toEqual([])
+  await page.goto('/desk/codebook')
+  await expect(page.getByRole('heading', { level: 1, name: 'Code book' })).toBeVisible()
+  expect(await findings(page)).toEqual([])
 })
 
 test('the desk holds at 320 px and at double text size: nothing runs off the side', async ({
@@ -60,7 +63,14 @@ test('the desk holds at 320 px and at double text size: nothing runs off the sid
 }) => {
   const page = await desk.open('/login')
   await signIn(page, 'owner@demo.invalid', /\/desk$/)
-  for (const path of ['/desk', '/desk/parts', '/desk/import', '/desk/phones', '/login']) {
+  for (const path of [
+    '/desk',
+    '/desk/parts',
+    '/desk/import',
+    '/desk/phones',
+    '/desk/codebook',
+    '/login',
+  ]) {
     for (const [width, text] of [
       [320, '100%'],
       [640, '200%'],

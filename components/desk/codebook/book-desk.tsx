@@ -41,7 +41,7 @@ export function BookDesk({ actions }: { actions: BookActions }) {
             <WithdrawalPart key={one.id} one={one} people={people} />
           ))}
         </ul>
-        <WithdrawForm withdraw={actions.withdraw} />
+        <WithdrawForm withdraw={actions.withdraw} versions={published} />
       </section>
       {published.map((row) => (
         <VersionPart key={row.version} row={row} />

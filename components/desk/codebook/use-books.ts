@@ -7,6 +7,8 @@ import {
   type DeskBook,
   deskBook,
   type Finding,
+  type Withdrawable,
+  withdrawableAnswer,
 } from '@/lib/model/book-desk'
 import type { Result } from '@/lib/model/result'
 import { useDesk } from '../desk-context'
@@ -30,6 +32,15 @@ export function useChangedJobsOf(id: string, wanted: boolean) {
     queryKey: [...reads.books, 'jobs', id],
     queryFn: () => read(ports.line, `/api/desk/codebook/withdrawals/${id}`, changedJobsAnswer),
     enabled: wanted,
+  })
+}
+
+/** What of the newest version may be withdrawn. */
+export function useWithdrawable() {
+  const { ports } = useDesk()
+  return useQuery<{ items: Withdrawable[] }>({
+    queryKey: [...reads.books, 'withdrawable'],
+    queryFn: () => read(ports.line, '/api/desk/codebook/withdrawals', withdrawableAnswer),
   })
 }
 

@@ -6,9 +6,11 @@ import { Choice } from '@/components/ui/choice'
 import { Field } from '@/components/ui/field'
 import { Hold } from '@/components/ui/hold'
 import { Key } from '@/components/ui/key'
+import type { BookVersionRow } from '@/lib/model/book-desk'
 import { type WithdrawForm as Form, WITHDRAWN, type Withdrawn } from '@/lib/model/book-withdrawal'
 import type { BookActions } from './book-actions'
 import { useBookActing } from './use-books'
+import { WhichWithdrawn } from './which-withdrawn'
 
 const WORDS: Record<Withdrawn, string> = {
   check: 'A check',
@@ -19,8 +21,10 @@ const WORDS: Record<Withdrawn, string> = {
 }
 const OPTIONS = WITHDRAWN.map((value) => ({ value, label: WORDS[value] }))
 
+type Props = Pick<BookActions, 'withdraw'> & { versions: readonly BookVersionRow[] }
+
 /** Withdraws something from the code book for safety: what, why, and what to do instead. */
-export function WithdrawForm({ withdraw }: Pick<BookActions, 'withdraw'>) {
+export function WithdrawForm({ withdraw, versions }: Props) {
   const [open, setOpen] = useState(false)
   const [what, setWhat] = useState<Withdrawn>('check')
   const [which, setWhich] = useState('')
@@ -37,7 +41,11 @@ export function WithdrawForm({ withdraw }: Pick<BookActions, 'withdraw'>) {
           ? 'Withdrawn. Phones are told at their next contact.'
           : `Withdrawn. The version before is published again as version ${published.version}.`,
     )
-    if (done !== null) setOpen(false)
+    if (done === null) return
+    setOpen(false)
+    setWhich('')
+    setReason('')
+    setInstead('')
   }
   if (!open) {
     return (
@@ -55,14 +63,17 @@ export function WithdrawForm({ withdraw }: Pick<BookActions, 'withdraw'>) {
         field has to acknowledge it. What was found with it counts no more. It cannot be taken back;
         what is put right comes with a new version.
       </Caution>
-      <Choice legend="What" options={OPTIONS} columns={2} value={what} onChange={setWhat} />
-      <Field
-        label={what === 'version' ? 'Number of the version' : 'Its id in the code book'}
-        value={which}
-        onChange={setWhich}
-        maxLength={64}
-        required
+      <Choice
+        legend="What"
+        options={OPTIONS}
+        columns={2}
+        value={what}
+        onChange={(next) => {
+          setWhat(next)
+          setWhich('')
+        }}
       />
+      <WhichWithdrawn key={what} what={what} versions={versions} which={which} onPick={setWhich} />
       <Field
         label="Why, in one sentence"
         value={reason}
@@ -95,8 +106,7 @@ type Typed = { what: Withdrawn; which: string; reason: string; instead: string }
 /** The form as it is sent; null while something is missing. */
 function formOf({ what, which, reason, instead }: Typed): Form | null {
   const said = { reason: reason.trim(), instead: instead.trim() === '' ? null : instead.trim() }
-  const named = which.trim()
-  if (said.reason.length < 3 || named === '') return null
-  if (what !== 'version') return { what, itemId: named, ...said }
-  return /^[1-9]\d{0,8}$/.test(named) ? { what, version: Number(named), ...said } : null
+  if (said.reason.length < 3 || which === '') return null
+  if (what !== 'version') return { what, itemId: which, ...said }
+  return { what, version: Number(which), ...said }
 }
