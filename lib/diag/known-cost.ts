@@ -47,7 +47,8 @@ export function endCost({ stops, falsePass, comeback }: Problem, fault: number):
 }
 
 function known(problem: Problem, fault: Fault, at: Where): number {
-  let [count, left] = [0, 0]
+  let count = 0
+  let left = 0
   for (const r of fault.cures)
     if ((at.repairs & (1 << r)) !== 0) {
       count++

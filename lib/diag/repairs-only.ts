@@ -46,9 +46,10 @@ function costOf(problem: Problem, from: From, left: Left): number {
   for (let k = 0; k < count && mass > NO_MASS && spent + gift * mass < best; k++) {
     const index = room.order[k] ?? 0
     const repair = repairs[index]
-    const more = opening(problem, repair?.setups ?? 0, open)
-    const minutes = more.minutes + (repair?.minutes ?? 0)
-    if (repair === undefined || elapsed + minutes > daylight + 1e-9) continue
+    if (repair === undefined) continue
+    const more = (repair.setups & ~open) === 0 ? OPEN : opening(problem, repair.setups, open)
+    const minutes = more.minutes + repair.minutes
+    if (elapsed + minutes > daylight + 1e-9) continue
     if (first < 0) first = index
     const gone = mend(problem, repair)
     spent += (repair.price + more.price) * mass + gone.wrong * problem.comeback
@@ -62,6 +63,8 @@ function costOf(problem: Problem, from: From, left: Left): number {
   }
   return best
 }
+
+const OPEN = { price: 0, minutes: 0 }
 
 /** Fills the room with the weights and what each stop would cost; answers the mass. */
 function begin({ room, stops, faults }: Problem, { w, at = 0 }: From): number {

@@ -47,6 +47,7 @@ export function nodeAt({ problem, bounds, pool }: Search, wanted: Wanted): numbe
   const row = { w: pool.nodes.w, at: node * pool.width, open, elapsed }
   const high = repairsOnlyOf(problem, row, repairs)
   pool.nodes.high[node] = high
+  pool.nodes.begins[node] = problem.room.first
   pool.nodes.low[node] = lowerBound(levelAt(bounds, open, repairs, elapsed), row, wanted, high)
   return node
 }
@@ -56,14 +57,12 @@ export function expand(search: Search, node: number, most: number): void {
   search.expanded++
   const { problem, bounds, pool } = search
   const { nodes, options } = pool
-  const [open, repairs, elapsed] = [
-    nodes.open[node] ?? 0,
-    nodes.repairs[node] ?? 0,
-    nodes.elapsed[node] ?? 0,
-  ]
+  const open = nodes.open[node] ?? 0
+  const repairs = nodes.repairs[node] ?? 0
+  const elapsed = nodes.elapsed[node] ?? 0
   const row = { w: nodes.w, at: node * pool.width, open, elapsed }
-  const plan = repairsOnlyOf(problem, row, repairs)
-  const begins = problem.room.first
+  const plan = nodes.high[node] ?? 0
+  const begins = nodes.begins[node] ?? -1
   const first = options.count
   problem.stops.forEach(({ byFault }, index) => {
     const cost = rowCost(row, byFault)
@@ -104,9 +103,11 @@ export function deepen(search: Search, node: number, option: number): void {
 function checkDone(search: Search, node: number, index: number): number {
   const { problem, bounds, pool } = search
   const { nodes, room } = pool
-  const [check, place] = [problem.checks[index], pool.places[index]]
+  const check = problem.checks[index]
+  const place = pool.places[index]
   if (check === undefined || place === undefined) return 0
-  const [open, elapsed] = [nodes.open[node] ?? 0, nodes.elapsed[node] ?? 0]
+  const open = nodes.open[node] ?? 0
+  const elapsed = nodes.elapsed[node] ?? 0
   const repairs = nodes.repairs[node] ?? 0
   const { price, minutes } = levelAt(bounds, open, repairs, elapsed).checks
   const wanted = {
@@ -115,14 +116,16 @@ function checkDone(search: Search, node: number, index: number): number {
     open: open | check.setups,
     elapsed: elapsed + (minutes[index] ?? 0),
   }
-  check.p.forEach((row, o) => {
-    if (!fillRow(pool, node, row)) return
+  for (let o = 0; o < check.p.length; o++) {
+    if (!fillRow(pool, node, check.p[o] ?? NO_ROW)) continue
     copyCode(pool, node)
     room.code[place.word] = (room.code[place.word] ?? 0) + (o + 1) * place.value
     addKid(pool, nodeAt(search, wanted))
-  })
+  }
   return (price[index] ?? 0) * massAt(pool, node)
 }
+
+const NO_ROW = new Float64Array(0)
 
 /** The room's weights: those of a point times a row; false when nothing is left of them. */
 function fillRow({ nodes, room, width }: Pool, node: number, row: Float64Array): boolean {
@@ -145,7 +148,8 @@ function repairDone(search: Search, node: number, index: number): number {
   const { nodes, room, width } = pool
   const repair = problem.repairs[index]
   if (repair === undefined) return 0
-  const [open, elapsed] = [nodes.open[node] ?? 0, nodes.elapsed[node] ?? 0]
+  const open = nodes.open[node] ?? 0
+  const elapsed = nodes.elapsed[node] ?? 0
   const repairs = nodes.repairs[node] ?? 0
   const { price, minutes } = levelAt(bounds, open, repairs, elapsed).repairs
   let fixed = (price[index] ?? 0) * massAt(pool, node)

@@ -14,6 +14,8 @@ type Nodes = {
   code: Float64Array
   low: Float64Array
   high: Float64Array
+  /** The repair that the plan without checks begins with here; -1 for a stop. */
+  begins: Int32Array
   /** Where it is thought to lie; NaN: not asked yet. */
   guess: Float64Array
   elapsed: Float64Array
@@ -85,6 +87,7 @@ export function startPool({ checks, faults }: Problem): Pool {
       code: reals(words),
       low: reals(),
       high: reals(),
+      begins: whole(),
       guess: reals(),
       elapsed: reals(),
       checks: whole(),
@@ -201,6 +204,7 @@ function growNodes(nodes: Nodes): void {
   nodes.code = larger(nodes.code)
   nodes.low = larger(nodes.low)
   nodes.high = larger(nodes.high)
+  nodes.begins = largerInt(nodes.begins)
   nodes.guess = larger(nodes.guess)
   nodes.elapsed = larger(nodes.elapsed)
   nodes.checks = largerInt(nodes.checks)

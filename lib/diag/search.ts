@@ -20,6 +20,11 @@ const WORTH = 0.02
 const MOST_IDLE = 200
 /** Bounds that differ by less than this share of the cost have met: what is left is rounding. */
 const SLACK = 1e-12
+/**
+ * How far above its lower bound a point at the edge is thought to lie, as a share of the gap (a choice: of 0.1 to
+ * 0.7 it lost least against the optimum over 100 invented models of 8 faults and 8 checks).
+ */
+const OF_GAP = 0.45
 /** A search over a problem with at most 30 checks and 30 repairs, with a budget of expansions, and its first point. */
 export function startSearch(
   problem: Problem,
@@ -93,7 +98,7 @@ export function solveWithout(
 }
 
 /**
- * Where an option is thought to lie: the middle between the bounds of every point at the edge of what was
+ * Where an option is thought to lie: a share of the way between the bounds of every point at the edge of what was
  * looked at. The lower bound is too low by the checks that it leaves out and the upper one too high by those
  * that its plan leaves out; of two options neither alone says which is better. Ask once
  * the search is over: points keep their guesses.
@@ -111,8 +116,9 @@ function guessAt(search: Search, node: number): number {
   const { nodes, options } = search.pool
   const known = nodes.guess[node] ?? 0
   if (!Number.isNaN(known)) return known
-  const [low, high] = [nodes.low[node] ?? 0, nodes.high[node] ?? 0]
-  let guess = high > low ? (low + high) / 2 : high
+  const low = nodes.low[node] ?? 0
+  const high = nodes.high[node] ?? 0
+  let guess = high > low ? low + OF_GAP * (high - low) : high
   const first = nodes.first[node] ?? 0
   if (first >= 0 && high > low) {
     let least = Number.POSITIVE_INFINITY
@@ -151,7 +157,8 @@ function cheapest({ pool: { nodes, options } }: Search, node: number): number {
   const first = nodes.first[node] ?? 0
   const end = first + (nodes.many[node] ?? 0)
   let best = -1
-  let [leastLow, leastHigh] = [Number.POSITIVE_INFINITY, Number.POSITIVE_INFINITY]
+  let leastLow = Number.POSITIVE_INFINITY
+  let leastHigh = Number.POSITIVE_INFINITY
   for (let o = first; o < end; o++) {
     const x = low[o] ?? 0
     if (x > leastLow || (x === leastLow && (high[o] ?? 0) >= leastHigh)) continue
@@ -184,9 +191,8 @@ function refreshNode({ pool: { nodes, options } }: Search, node: number): void {
   const first = nodes.first[node] ?? 0
   const end = first + (nodes.many[node] ?? 0)
   for (let o = first; o < end; o++) {
-    const [a, b] = [options.low[o] ?? 0, options.high[o] ?? 0]
-    if (a < low) low = a
-    if (b < high) high = b
+    low = Math.min(low, options.low[o] ?? 0)
+    high = Math.min(high, options.high[o] ?? 0)
   }
   nodes.high[node] = high
   nodes.low[node] = Math.min(high, Math.max(nodes.low[node] ?? 0, low))
@@ -194,6 +200,7 @@ function refreshNode({ pool: { nodes, options } }: Search, node: number): void {
 
 /** How far the bounds of a point are apart. */
 export function gapOf({ pool: { nodes } }: Search, node: number): number {
-  const [low, high] = [nodes.low[node] ?? 0, nodes.high[node] ?? 0]
+  const low = nodes.low[node] ?? 0
+  const high = nodes.high[node] ?? 0
   return high > low ? high - low : 0
 }

@@ -27,7 +27,7 @@ import type { NoisyOrModel, SearchState, SingleModel } from './troubleshoot-mode
  * as 50 ms go: an expansion takes so long as there are faults times actions, and half as long again where test runs
  * can pass wrongly.
  */
-const EXPANSIONS = 2400
+const EXPANSIONS = 4000
 const WIDTH = 8 * 17
 const LEAST_EXPANSIONS = 100
 const MOST_WORK = 560_000
