@@ -23,13 +23,12 @@ export function NextPlate({ plan, decides, index }: Props) {
         {plan.stage === 'prove' ? 'Next: the proof run' : HEADINGS[next.type]}
       </p>
       <h2 className="caps mt-1 text-plate">{next.name}</h2>
-      <p className="mt-2 flex flex-wrap items-baseline gap-x-4 gap-y-1">
-        <span className="figures text-key">{minutesWords(next.minutes)}</span>
-        <span className="text-second text-scribe2">
-          {toolWords(next.tools, index)}
-          {next.people > 1 ? ', two people' : ''}
-        </span>
-      </p>
+      {next.type !== 'stop' && (
+        <p className="mt-2 flex flex-wrap items-baseline gap-x-4 gap-y-1">
+          <span className="figures text-key">{minutesWords(next.minutes)}</span>
+          <span className="text-second text-scribe2">{needsWords(next, index)}</span>
+        </p>
+      )}
       <p className="mt-2 text-body">{decides}</p>
       {next.caution !== null && (
         <Caution signal={next.caution.signal} onPlate className="mt-3">
@@ -43,8 +42,17 @@ export function NextPlate({ plan, decides, index }: Props) {
 /** The plate has room for one line of risk; the check itself says it whole before the first step. */
 const firstSentence = (text: string): string => /^.*?[.!](?=\s|$)/.exec(text)?.[0] ?? text
 
-/** Tools by the names of the trade. */
-export function toolWords(tools: readonly string[], index: BookIndex): string {
-  if (tools.length === 0) return 'no tools'
-  return tools.map((tool) => wordName(index, 'tool', tool).toLowerCase()).join(', ')
+type Takes = Pick<PlannedAction, 'type' | 'minutes' | 'tools' | 'people'>
+
+/** What a step takes, in one line. */
+export function takesWords(step: Takes, index: BookIndex): string {
+  if (step.type === 'stop') return 'way out'
+  return [minutesWords(step.minutes), needsWords(step, index)].filter(Boolean).join(', ')
+}
+
+/** Tools by the names of the trade, and hands; nothing of tools where the book does not say. */
+function needsWords({ tools, people }: Takes, index: BookIndex): string {
+  const names = tools?.map((tool) => wordName(index, 'tool', tool).toLowerCase())
+  const named = names?.length === 0 ? ['no tools'] : (names ?? [])
+  return [...named, ...(people > 1 ? ['two people'] : [])].join(', ')
 }

@@ -8,10 +8,9 @@ import { moneyWords } from '@/lib/shop/currency'
 import { WAY_OUT_WORDS } from '../field/words'
 import { Key } from '../ui/key'
 import { RuleEdge } from '../ui/rule-edge'
-import { toolWords } from './next-plate'
+import { takesWords } from './next-plate'
 import { type AdviceState, PickInstead } from './pick-instead'
 import type { ActOn } from './use-act-on'
-import { minutesWords } from './words'
 
 type Props = {
   jobId: Id
@@ -51,7 +50,7 @@ export function OtherChecks({ jobId, plan, currency, index, actOn, advice }: Pro
                 insteadOf={plan.next}
                 actOn={actOn}
                 advice={advice}
-                second={`${minutesWords(one.minutes)}, ${toolWords(one.tools, index)}`}
+                second={takesWords(one, index)}
                 end={dearer(one, plan, currency)}
               />
             </li>

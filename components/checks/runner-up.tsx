@@ -4,10 +4,9 @@ import type { Plan } from '@/lib/diag/plan'
 import type { Id } from '@/lib/model/id'
 import { moneyWords } from '@/lib/shop/currency'
 import { RuleEdge } from '../ui/rule-edge'
-import { toolWords } from './next-plate'
+import { takesWords } from './next-plate'
 import { type AdviceState, PickInstead } from './pick-instead'
 import type { ActOn } from './use-act-on'
-import { minutesWords } from './words'
 
 type Props = {
   jobId: Id
@@ -32,7 +31,7 @@ export function RunnerUp({ jobId, plan, currency, index, actOn, advice }: Props)
         insteadOf={next}
         actOn={actOn}
         advice={advice}
-        second={`${minutesWords(runnerUp.minutes)}, ${toolWords(runnerUp.tools, index)}`}
+        second={takesWords(runnerUp, index)}
       />
       <p className="text-second">{whyItLoses(plan, currency)}</p>
     </section>

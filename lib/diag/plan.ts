@@ -25,7 +25,8 @@ export type PlannedAction = {
   name: string
   minutes: number
   expectedCostMinor: number
-  tools: string[]
+  /** Null where the book does not say: of a swap, a repair and a way out. */
+  tools: string[] | null
   people: number
   caution: Caution | null
 }
@@ -144,7 +145,7 @@ function plannedAction(c: Case, means: Means, row: Row): PlannedAction {
     name: stepName(c, row),
     minutes: minutesHere(minutes + testRun, means),
     expectedCostMinor: row.cost,
-    tools: check?.tools.map((t) => t.tool) ?? [],
+    tools: check?.tools.map((t) => t.tool) ?? null,
     people: check === undefined ? 1 : Math.min(check.people, means.people),
     caution: cautionOf(c, row),
   }
@@ -216,7 +217,7 @@ function provePlan(
     name: `Prove the fix: ${name}`,
     minutes,
     expectedCostMinor: minutes * means.shop.perMinuteMinor,
-    tools: [],
+    tools: null,
     people: 1,
     caution: null,
   }
