@@ -98,7 +98,12 @@ describe('[F5] the plan', () => {
   })
   it('[F5] once the swap has gone there and back, the repair comes first, with its part on hand', () => {
     const got = plan([code(1268, 3), swapped('spareFitted', false), swapped('oldRefitted', true)])
-    expect(got.next).toMatchObject({ type: 'repair', id: 'coil', name: 'Repair: The coil', tools: null })
+    expect(got.next).toMatchObject({
+      type: 'repair',
+      id: 'coil',
+      name: 'Repair: The coil',
+      tools: null,
+    })
     expect(reason(got, 'coilSwap')).toBe('Done.')
   })
   it('[F7] after a fix it asks for the proof; after a failed one it goes on without it', () => {
