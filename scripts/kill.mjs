@@ -32,6 +32,7 @@ await ends.around(async () => {
   let worst = 0
   // Each in a process of its own: the server's settings are read once per process, and each has its own file store.
   for (const part of parts) {
+    if (ends.begun) return
     const { status } = await call(tsx, ['tests/kill/kill.ts', ...args, '--only', part])
     worst = Math.max(worst, status ?? 1)
   }
